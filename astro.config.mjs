@@ -1,0 +1,46 @@
+import node from '@astrojs/node';
+import react from '@astrojs/react';
+import tailwindcss from '@tailwindcss/vite';
+import { defineConfig, passthroughImageService } from 'astro/config';
+import { expressLayer } from './src/integrations/express-layer.mjs';
+
+/** Host names whose form posts are accepted; the public one is fixed at build time (see .env.example). */
+const publicHost = process.env.APP_PUBLIC_HOST;
+const allowedDomains = [
+  { hostname: '127.0.0.1' },
+  { hostname: 'localhost' },
+  ...(publicHost ? [{ hostname: publicHost, protocol: 'https' }] : []),
+];
+
+export default defineConfig({
+  output: 'server',
+  adapter: node({ mode: 'middleware' }),
+  integrations: [react(), expressLayer()],
+  image: { service: passthroughImageService() },
+  security: { checkOrigin: true, allowedDomains },
+  experimental: { csp: { algorithm: 'SHA-256' } },
+  devToolbar: { enabled: false },
+  vite: {
+    plugins: [tailwindcss()],
+    ssr: {
+      external: [
+        'sequelize',
+        'sqlite3',
+        'express',
+        'express-session',
+        'passport',
+        'passport-local',
+        'connect-session-sequelize',
+        'piscina',
+        'xlsx',
+        'jsdom',
+        '@resvg/resvg-js',
+        '@node-rs/argon2',
+        'nodemailer',
+        'umzug',
+        'pino',
+        'date-holidays',
+      ],
+    },
+  },
+});

@@ -1,0 +1,409 @@
+import { DataTypes, literal, type ModelAttributeColumnOptions, type QueryInterface } from 'sequelize';
+
+type Columns = Record<string, ModelAttributeColumnOptions>;
+
+const id: Columns = { id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true } };
+const stamps: Columns = {
+  created_at: { type: DataTypes.DATE, allowNull: false, defaultValue: literal('CURRENT_TIMESTAMP') },
+  updated_at: { type: DataTypes.DATE, allowNull: false, defaultValue: literal('CURRENT_TIMESTAMP') },
+};
+const version: Columns = { version: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 } };
+
+const text = (allowNull = false) => ({ type: DataTypes.TEXT, allowNull });
+const whole = (allowNull = false) => ({ type: DataTypes.INTEGER, allowNull });
+const real = (allowNull = false) => ({ type: DataTypes.DOUBLE, allowNull });
+const date = (allowNull = false) => ({ type: DataTypes.DATEONLY, allowNull });
+const instant = (allowNull = false) => ({ type: DataTypes.DATE, allowNull });
+const json = (allowNull = false) => ({ type: DataTypes.JSON, allowNull });
+const bytes = (allowNull = false) => ({ type: DataTypes.BLOB, allowNull });
+const flag = (defaultValue: boolean) => ({ type: DataTypes.BOOLEAN, allowNull: false, defaultValue });
+const link = (model: string, allowNull = false, onDelete = 'RESTRICT') => ({
+  type: DataTypes.INTEGER,
+  allowNull,
+  references: { model, key: 'id' },
+  onDelete,
+});
+
+/** Tables in the order they can be made; each with the columns that get an index of their own. */
+const tables: [name: string, columns: Columns, indexes: (string | string[])[]][] = [
+  [
+    'practices',
+    { ...id, name: text(), legal_name: text(), phone: text(), currency: text(), ...version, ...stamps },
+    [],
+  ],
+  [
+    'clients',
+    { ...id, name: text(), city: text(true), contact: text(true), currency: text(), ...version, ...stamps },
+    [],
+  ],
+  [
+    'users',
+    {
+      ...id,
+      email: { ...text(), unique: true },
+      name: text(),
+      role: text(),
+      client_id: link('clients', true),
+      password_hash: text(true),
+      rights: json(),
+      licence_jurisdiction: text(true),
+      licence_number: text(true),
+      licence_expires: date(true),
+      licence_checked_by_id: link('users', true),
+      disabled_at: instant(true),
+      session_epoch: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
+      ...version,
+      ...stamps,
+    },
+    ['client_id', 'licence_checked_by_id'],
+  ],
+  [
+    'sessions',
+    { sid: { type: DataTypes.STRING(64), primaryKey: true }, expires: instant(true), data: text(true), ...stamps },
+    ['expires'],
+  ],
+  [
+    'tokens',
+    {
+      ...id,
+      user_id: link('users', false, 'CASCADE'),
+      kind: text(),
+      hash: { ...text(), unique: true },
+      target: text(true),
+      expires_at: instant(),
+      used_at: instant(true),
+      ...stamps,
+    },
+    ['user_id'],
+  ],
+  [
+    'sites',
+    {
+      ...id,
+      client_id: link('clients'),
+      name: text(),
+      place: text(true),
+      time_zone: text(),
+      jurisdiction: text(true),
+      ...version,
+      ...stamps,
+    },
+    ['client_id'],
+  ],
+  [
+    'meters',
+    { ...id, site_id: link('sites'), label: text(), service_voltage_kv: real(true), ...version, ...stamps },
+    ['site_id'],
+  ],
+  [
+    'engagements',
+    {
+      ...id,
+      code: { ...text(), unique: true },
+      title: text(),
+      client_id: link('clients'),
+      site_id: link('sites'),
+      meter_id: link('meters'),
+      year_from: date(),
+      year_to: date(),
+      currency: text(),
+      budget_hours: real(true),
+      closed_at: instant(true),
+      ...version,
+      ...stamps,
+    },
+    ['client_id', 'site_id', 'meter_id'],
+  ],
+  [
+    'memberships',
+    {
+      ...id,
+      engagement_id: link('engagements', false, 'CASCADE'),
+      user_id: link('users', false, 'CASCADE'),
+      ...stamps,
+    },
+    ['engagement_id', 'user_id'],
+  ],
+  [
+    'column_maps',
+    {
+      ...id,
+      name: text(),
+      kind: text(),
+      signature: text(),
+      map: json(),
+      created_by_id: link('users', true),
+      ...stamps,
+    },
+    ['signature', 'created_by_id'],
+  ],
+  [
+    'intakes',
+    {
+      ...id,
+      engagement_id: link('engagements', false, 'CASCADE'),
+      kind: text(),
+      file_name: text(),
+      bytes: whole(),
+      sha256: text(),
+      state: text(),
+      column_map: json(true),
+      preview: json(true),
+      report: json(true),
+      problems: json(true),
+      brought_by_id: link('users', true),
+      kept_at: instant(true),
+      undone_at: instant(true),
+      ...version,
+      ...stamps,
+    },
+    ['engagement_id', 'brought_by_id', 'sha256'],
+  ],
+  [
+    'reading_blocks',
+    {
+      ...id,
+      meter_id: link('meters'),
+      intake_id: link('intakes', false, 'CASCADE'),
+      channel: text(),
+      month: text(),
+      start_ms: { type: DataTypes.BIGINT, allowNull: false },
+      step_minutes: whole(),
+      count: whole(),
+      missing: whole(),
+      total: real(true),
+      values: bytes(),
+      ...stamps,
+    },
+    ['intake_id', ['meter_id', 'channel', 'start_ms']],
+  ],
+  [
+    'bills',
+    {
+      ...id,
+      engagement_id: link('engagements', false, 'CASCADE'),
+      intake_id: link('intakes', true, 'CASCADE'),
+      period_from: date(),
+      period_to: date(),
+      quantities: json(),
+      currency: text(),
+      total_minor: whole(true),
+      source_row: text(true),
+      ...version,
+      ...stamps,
+    },
+    ['engagement_id', 'intake_id'],
+  ],
+  [
+    'bill_lines',
+    {
+      ...id,
+      bill_id: link('bills', false, 'CASCADE'),
+      position: whole(),
+      label: text(),
+      amount_minor: whole(),
+      ...stamps,
+    },
+    ['bill_id'],
+  ],
+  [
+    'tariff_choices',
+    {
+      ...id,
+      engagement_id: { ...link('engagements', false, 'CASCADE'), unique: true },
+      schedule_id: text(),
+      schedule_text: text(),
+      sha256: text(),
+      contract: json(),
+      history: json(true),
+      line_matches: json(),
+      ...version,
+      ...stamps,
+    },
+    [],
+  ],
+  [
+    'motors',
+    {
+      ...id,
+      engagement_id: link('engagements', false, 'CASCADE'),
+      position: whole(),
+      name: text(),
+      drives: text(true),
+      plate: json(),
+      calendar: json(),
+      field_today_a: real(),
+      ...version,
+      ...stamps,
+    },
+    ['engagement_id'],
+  ],
+  [
+    'plans',
+    {
+      ...id,
+      engagement_id: link('engagements', false, 'CASCADE'),
+      name: text(),
+      actions: json(),
+      capital_cost_minor: whole(),
+      yearly_upkeep_minor: whole(),
+      economics: json(),
+      chosen: flag(false),
+      search: json(true),
+      ...version,
+      ...stamps,
+    },
+    ['engagement_id'],
+  ],
+  [
+    'jobs',
+    {
+      ...id,
+      engagement_id: link('engagements', false, 'CASCADE'),
+      kind: text(),
+      subject_id: whole(true),
+      state: text(),
+      done: whole(),
+      planned: whole(true),
+      unit: text(true),
+      result: json(true),
+      error: text(true),
+      started_by_id: link('users', true),
+      ended_at: instant(true),
+      ...stamps,
+    },
+    ['engagement_id', 'started_by_id'],
+  ],
+  [
+    'editions',
+    {
+      ...id,
+      engagement_id: link('engagements', false, 'CASCADE'),
+      plan_id: link('plans', true, 'SET NULL'),
+      number: whole(),
+      content: json(),
+      digest: text(),
+      made_by_id: link('users', true),
+      shown_at: instant(true),
+      ...stamps,
+    },
+    ['engagement_id', 'plan_id', 'made_by_id'],
+  ],
+  [
+    'edition_images',
+    {
+      ...id,
+      edition_id: link('editions', false, 'CASCADE'),
+      name: text(),
+      media_type: text(),
+      body: bytes(),
+      ...stamps,
+    },
+    ['edition_id'],
+  ],
+  [
+    'letters',
+    {
+      ...id,
+      engagement_id: link('engagements', true, 'CASCADE'),
+      edition_id: link('editions', true, 'CASCADE'),
+      user_id: link('users', true),
+      kind: text(),
+      recipient: text(),
+      subject: text(),
+      message_id: text(true),
+      state: text(),
+      error: text(true),
+      sent_at: instant(true),
+      ...stamps,
+    },
+    ['engagement_id', 'edition_id', 'user_id'],
+  ],
+  [
+    'rates',
+    {
+      ...id,
+      user_id: link('users', false, 'CASCADE'),
+      engagement_id: link('engagements', true, 'CASCADE'),
+      per_hour_minor: whole(),
+      currency: text(),
+      from: date(),
+      ...version,
+      ...stamps,
+    },
+    ['user_id', 'engagement_id'],
+  ],
+  [
+    'hour_entries',
+    {
+      ...id,
+      engagement_id: link('engagements'),
+      user_id: link('users'),
+      day: date(),
+      minutes: whole(),
+      station: text(),
+      note: text(),
+      billable: flag(true),
+      ...version,
+      ...stamps,
+    },
+    ['engagement_id', 'user_id', ['user_id', 'day']],
+  ],
+  [
+    'trail_rows',
+    {
+      ...id,
+      at: instant(),
+      actor_id: whole(true),
+      ip: text(true),
+      action: text(),
+      subject: text(),
+      subject_id: whole(true),
+      before: json(true),
+      after: json(true),
+    },
+    [['subject', 'subject_id'], 'actor_id', 'at'],
+  ],
+];
+
+/** Closed sets that the database itself holds to. SQLite takes a CHECK only when the table is made. */
+const checks: Record<string, string[]> = {
+  users: ["role IN ('partner','consultant','client')", "(role = 'client') = (client_id IS NOT NULL)"],
+  tokens: ["kind IN ('invitation','reset')"],
+  intakes: ["kind IN ('intervals','bills')", "state IN ('read','refused','kept','undone','given-up')"],
+  jobs: ["state IN ('running','done','failed','cancelled')"],
+  letters: ["state IN ('sent','failed')"],
+  bills: ['period_from < period_to'],
+  hour_entries: ['minutes > 0', 'minutes <= 1440'],
+  engagements: ['year_from < year_to'],
+};
+
+async function addChecks(database: QueryInterface, table: string): Promise<void> {
+  for (const condition of checks[table] ?? []) {
+    for (const event of ['INSERT', 'UPDATE']) {
+      const name = `${table}_${event.toLowerCase()}_${checks[table]?.indexOf(condition)}`;
+      const onNew = condition.replace(
+        /\b(role|client_id|kind|state|period_from|period_to|minutes|year_from|year_to)\b/g,
+        'NEW.$1',
+      );
+      await database.sequelize.query(
+        `CREATE TRIGGER ${name} BEFORE ${event} ON ${table} WHEN NOT (${onNew})
+         BEGIN SELECT RAISE(ABORT, '${table}: ${condition.replaceAll("'", "''")}'); END`,
+      );
+    }
+  }
+}
+
+export async function up(database: QueryInterface): Promise<void> {
+  for (const [name, columns, indexes] of tables) {
+    await database.createTable(name, columns);
+    for (const fields of indexes) await database.addIndex(name, Array.isArray(fields) ? fields : [fields]);
+    await addChecks(database, name);
+  }
+  await database.addIndex('memberships', ['engagement_id', 'user_id'], { unique: true, name: 'memberships_once' });
+  await database.addIndex('editions', ['engagement_id', 'number'], { unique: true, name: 'editions_number' });
+}
+
+export async function down(database: QueryInterface): Promise<void> {
+  for (const [name] of [...tables].reverse()) await database.dropTable(name);
+}

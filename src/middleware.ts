@@ -1,0 +1,40 @@
+import { defineMiddleware } from 'astro:middleware';
+
+/** Pages that need no account. Everything else asks for one; services then decide what the person may see. */
+const openPaths = [/^\/sign-in$/, /^\/reset(\/|$)/, /^\/invitation\//, /^\/404$/, /^\/500$/];
+
+const contentPolicy = [
+  "default-src 'self'",
+  "img-src 'self' data: blob:",
+  "font-src 'self'",
+  "connect-src 'self'",
+  "object-src 'none'",
+  "base-uri 'self'",
+  "form-action 'self'",
+  "frame-ancestors 'none'",
+  "style-src-attr 'unsafe-inline'",
+].join('; ');
+
+/** Adds what Astro's own policy (hashes of scripts and styles) cannot say, and keeps pages of people out of caches. */
+function harden(response: Response): Response {
+  const own = response.headers.get('content-security-policy');
+  if (response.headers.get('content-type')?.startsWith('text/html')) {
+    response.headers.set(
+      'content-security-policy',
+      own ? `${own.replace(/;\s*$/, '')}; ${contentPolicy}` : contentPolicy,
+    );
+  }
+  if (!response.headers.has('cache-control')) response.headers.set('cache-control', 'private, no-store');
+  return response;
+}
+
+/** Signed-out people are sent to sign in and come back; endpoints answer 401 themselves. */
+export const onRequest = defineMiddleware(async (context, next) => {
+  const { pathname, search } = context.url;
+  const open = openPaths.some((path) => path.test(pathname)) || pathname.startsWith('/api/');
+  if (!open && !context.locals.user) {
+    const back = context.request.method === 'GET' ? `?next=${encodeURIComponent(pathname + search)}` : '';
+    return harden(context.redirect(`/sign-in${back}`, 303));
+  }
+  return harden(await next());
+});

@@ -1,0 +1,73 @@
+import { randomBytes } from 'node:crypto';
+import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
+import path from 'node:path';
+import closeWithGrace from 'close-with-grace';
+import { configureEnv } from './env';
+
+/** A secret of this machine for the demo, made once, so that sessions outlive a restart. */
+function demoSecret(folder: string): string {
+  const file = path.join(folder, 'demo-secret');
+  mkdirSync(folder, { recursive: true });
+  if (!existsSync(file)) writeFileSync(file, randomBytes(48).toString('hex'), { mode: 0o600 });
+  return readFileSync(file, 'utf8');
+}
+
+async function serve(stopMore: () => void = () => undefined): Promise<void> {
+  const { startServer, stopServer } = await import('./main');
+  const { closeOrphanedJobs } = await import('./services/jobs');
+  const server = await startServer();
+  await closeOrphanedJobs();
+  closeWithGrace({ delay: 10_000 }, async () => {
+    stopMore();
+    await stopServer(server);
+  });
+}
+
+/** The demo: local fakes of the outside services, a seeded scenario, then the server itself. */
+async function demo(): Promise<void> {
+  const folder = path.resolve(process.argv[3] ?? 'db/data');
+  const env = configureEnv({
+    NODE_ENV: 'production',
+    DATA_DIR: folder,
+    SESSION_SECRET: demoSecret(folder),
+    LOG_LEVEL: 'warn',
+  });
+  const { startMailCatcher, caughtMailFolder } = await import('./mail/catcher');
+  const catcher = await startMailCatcher(env.SMTP_PORT);
+  const { migrate } = await import('./db/migrations');
+  const { seeder } = await import('./db/seeders');
+  await migrate();
+  const pending = await seeder().pending();
+  if (pending.length > 0) print('Setting up the demo scenario (about half a minute) ...');
+  await seeder().up();
+  await serve(() => catcher.close());
+  const { demoAccounts } = await import('./demo-accounts');
+  print(
+    `\nCounterlag runs at ${env.APP_ORIGIN}\n\nPeople of the demo (every name is invented), password "${demoAccounts.password}":`,
+  );
+  for (const { email, what } of demoAccounts.people) print(`  ${email.padEnd(38)} ${what}`);
+  print(`\nMails are caught and lie as .eml files in ${path.relative(process.cwd(), caughtMailFolder())}`);
+  print('Stop with Ctrl-C; what you did is still there at the next start. Remove db/data to begin anew.\n');
+}
+
+async function start(): Promise<void> {
+  configureEnv({ NODE_ENV: 'production' });
+  await serve();
+}
+
+function print(line: string): void {
+  process.stdout.write(`${line}\n`);
+}
+
+const commands: Record<string, () => Promise<void>> = { demo, start };
+const command = commands[process.argv[2] ?? ''];
+
+if (!command) {
+  print('Say what to run: demo or start.');
+  process.exitCode = 2;
+} else {
+  command().catch((error: unknown) => {
+    process.stderr.write(`${error instanceof Error ? error.message : String(error)}\n`);
+    process.exit(1);
+  });
+}

@@ -1,0 +1,38 @@
+import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import { sequelize } from '../db/connection';
+import { withTrail } from './Trail';
+
+/** A set of actions priced as a whole against the standing plant. */
+export class Plan extends Model<InferAttributes<Plan>, InferCreationAttributes<Plan>> {
+  declare id: CreationOptional<number>;
+  declare engagementId: number;
+  declare name: string;
+  declare actions: Record<string, unknown>[];
+  declare capitalCostMinor: number;
+  declare yearlyUpkeepMinor: number;
+  declare economics: Record<string, number>;
+  declare chosen: CreationOptional<boolean>;
+  declare search: Record<string, unknown> | null;
+  declare version: CreationOptional<number>;
+  declare createdAt: CreationOptional<Date>;
+  declare updatedAt: CreationOptional<Date>;
+}
+
+Plan.init(
+  {
+    id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
+    engagementId: { type: DataTypes.INTEGER, allowNull: false },
+    name: { type: DataTypes.TEXT, allowNull: false },
+    actions: { type: DataTypes.JSON, allowNull: false },
+    capitalCostMinor: { type: DataTypes.INTEGER, allowNull: false },
+    yearlyUpkeepMinor: { type: DataTypes.INTEGER, allowNull: false },
+    economics: { type: DataTypes.JSON, allowNull: false },
+    chosen: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
+    search: { type: DataTypes.JSON, allowNull: true },
+    version: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
+    createdAt: DataTypes.DATE,
+    updatedAt: DataTypes.DATE,
+  },
+  { sequelize, tableName: 'plans', version: true },
+);
+withTrail(Plan);

@@ -1,0 +1,76 @@
+import { notFound } from '../errors';
+import { Client } from '../models/Client';
+import { Engagement } from '../models/Engagement';
+import { Membership } from '../models/Membership';
+import { Meter } from '../models/Meter';
+import { Site } from '../models/Site';
+import { User } from '../models/User';
+import type { Actor, EngagementScope } from '../policies/actor';
+import { canReadReleased, canWorkOn } from '../policies/engagement';
+
+/** An engagement with what stands in its title strip. */
+export interface OpenEngagement {
+  engagement: Engagement;
+  client: Client;
+  site: Site;
+  meter: Meter;
+  members: User[];
+  scope: EngagementScope;
+}
+
+async function open(engagement: Engagement): Promise<OpenEngagement> {
+  const [client, site, meter, memberships] = await Promise.all([
+    Client.findByPk(engagement.clientId, { rejectOnEmpty: true }),
+    Site.findByPk(engagement.siteId, { rejectOnEmpty: true }),
+    Meter.findByPk(engagement.meterId, { rejectOnEmpty: true }),
+    Membership.findAll({ where: { engagementId: engagement.id } }),
+  ]);
+  const memberIds = memberships.map((membership) => membership.userId);
+  const members = await User.findAll({ where: { id: memberIds }, order: ['name'] });
+  return { engagement, client, site, meter, members, scope: { clientId: engagement.clientId, memberIds } };
+}
+
+/**
+ * Opens an engagement for somebody who works on it.
+ *
+ * @throws {ServiceError} 404 where there is none, or none this person may know of
+ */
+export async function openEngagement(actor: Actor, code: string): Promise<OpenEngagement> {
+  const engagement = await Engagement.findOne({ where: { code } });
+  if (!engagement) throw notFound();
+  const opened = await open(engagement);
+  if (!canWorkOn(actor, opened.scope)) throw notFound();
+  return opened;
+}
+
+/** The same by its id, for rows that hang off an engagement (a motor, a plan, an intake, a job). */
+export async function openEngagementById(actor: Actor, id: number): Promise<OpenEngagement> {
+  const engagement = await Engagement.findByPk(id);
+  if (!engagement) throw notFound();
+  return openEngagement(actor, engagement.code);
+}
+
+/** Opens an engagement for reading what was released: its client's people, and those who work on it. */
+export async function openReleased(actor: Actor, code: string): Promise<OpenEngagement> {
+  const engagement = await Engagement.findOne({ where: { code } });
+  if (!engagement) throw notFound();
+  const opened = await open(engagement);
+  if (!canReadReleased(actor, opened.scope)) throw notFound();
+  return opened;
+}
+
+/** The engagements a person works on, newest first: all for partners, those they are a member of for consultants. */
+export async function listEngagements(actor: Actor): Promise<OpenEngagement[]> {
+  if (actor.role === 'client') return [];
+  const all = await Engagement.findAll({ order: [['id', 'DESC']] });
+  const opened = await Promise.all(all.map(open));
+  return opened.filter((one) => canWorkOn(actor, one.scope));
+}
+
+/** The engagements whose released material a client's person may read. */
+export async function listReleased(actor: Actor): Promise<OpenEngagement[]> {
+  if (actor.clientId === null) return [];
+  const all = await Engagement.findAll({ where: { clientId: actor.clientId }, order: [['id', 'DESC']] });
+  const opened = await Promise.all(all.map(open));
+  return opened.filter((one) => canReadReleased(actor, one.scope));
+}

@@ -1,0 +1,153 @@
+import { EventEmitter } from 'node:events';
+import { inTx } from '../db/tx';
+import { actAs } from '../db/context';
+import { notFound, ServiceError } from '../errors';
+import { log } from '../log';
+import { Job } from '../models/Job';
+import type { Actor } from '../policies/actor';
+import { openEngagementById } from './engagements';
+
+export interface JobProgress {
+  id: number;
+  kind: string;
+  subjectId: number | null;
+  state: Job['state'];
+  done: number;
+  planned: number | null;
+  unit: string | null;
+  startedAt: string;
+  result: Record<string, unknown> | null;
+  error: string | null;
+}
+
+interface Running {
+  controller: AbortController;
+  progress: JobProgress;
+  events: EventEmitter;
+}
+
+/** What the work may tell and hear: how far it is, and whether it is to stop. */
+export interface JobControls {
+  report(done: number, planned?: number): void;
+  signal: AbortSignal;
+}
+
+type Work = (controls: JobControls) => Promise<Record<string, unknown>>;
+
+const shared = globalThis as typeof globalThis & { counterlagJobs?: Map<number, Running> };
+const running = (shared.counterlagJobs ??= new Map());
+
+function present(job: Job): JobProgress {
+  const { id, kind, subjectId, state, done, planned, unit, result, error, createdAt } = job;
+  return { id, kind, subjectId, state, done, planned, unit, result, error, startedAt: createdAt.toISOString() };
+}
+
+/**
+ * Begins long work in the background in the person's name. It goes on when the page is left; its row tells how it ended.
+ */
+export async function startJob(
+  actor: Actor,
+  what: { engagementId: number; kind: string; subjectId?: number; unit: string },
+  work: Work,
+): Promise<JobProgress> {
+  const subjectId = what.subjectId ?? null;
+  const job = await inTx(() =>
+    Job.create({
+      ...what,
+      subjectId,
+      state: 'running',
+      done: 0,
+      planned: null,
+      startedById: actor.id,
+      result: null,
+      error: null,
+      endedAt: null,
+    }),
+  );
+  const entry: Running = { controller: new AbortController(), progress: present(job), events: new EventEmitter() };
+  entry.events.setMaxListeners(100);
+  running.set(job.id, entry);
+  void actAs({ actorId: actor.id, ip: null }, () => carryOut(job, entry, work));
+  return entry.progress;
+}
+
+async function carryOut(job: Job, entry: Running, work: Work): Promise<void> {
+  const report: JobControls['report'] = (done, planned) => {
+    Object.assign(entry.progress, { done, planned: planned ?? entry.progress.planned });
+    entry.events.emit('progress', entry.progress);
+  };
+  const { signal } = entry.controller;
+  let ending: Pick<JobProgress, 'state' | 'result' | 'error'>;
+  try {
+    const result = await work({ report, signal });
+    ending = { state: signal.aborted ? 'cancelled' : 'done', result, error: null };
+  } catch (error) {
+    ending = signal.aborted ? { state: 'cancelled', result: null, error: null } : failure(job.id, error);
+  }
+  const { done, planned } = entry.progress;
+  await inTx(() => job.update({ ...ending, done, planned, endedAt: new Date() }));
+  Object.assign(entry.progress, ending);
+  running.delete(job.id);
+  entry.events.emit('progress', entry.progress);
+}
+
+function failure(id: number, error: unknown): Pick<JobProgress, 'state' | 'result' | 'error'> {
+  if (error instanceof ServiceError) return { state: 'failed', result: null, error: error.message };
+  log().error({ job: id, err: error }, 'job failed');
+  return {
+    state: 'failed',
+    result: null,
+    error: `This work failed on our side and was noted as job ${id}. Start it again.`,
+  };
+}
+
+async function authorize(actor: Actor, id: number): Promise<Job> {
+  const job = await Job.findByPk(id);
+  if (!job) throw notFound();
+  await openEngagementById(actor, job.engagementId);
+  return job;
+}
+
+/** How far a job is, or how it ended. */
+export async function readJob(actor: Actor, id: number): Promise<JobProgress> {
+  const job = await authorize(actor, id);
+  return running.get(id)?.progress ?? present(job);
+}
+
+/** The jobs of an engagement that still run, for pages that are opened in between. */
+export function runningJobs(engagementId: number, kind: string): Promise<JobProgress[]> {
+  return Job.findAll({ where: { engagementId, kind, state: 'running' } }).then((jobs) =>
+    jobs.flatMap((job) => running.get(job.id)?.progress ?? []),
+  );
+}
+
+/** Asks a job to stop; it ends as cancelled. */
+export async function cancelJob(actor: Actor, id: number): Promise<JobProgress> {
+  const job = await authorize(actor, id);
+  running.get(id)?.controller.abort();
+  return running.get(id)?.progress ?? present(job);
+}
+
+/** Calls back at every step of a job until it ends; returns the undoing. */
+export async function watchJob(
+  actor: Actor,
+  id: number,
+  listener: (progress: JobProgress) => void,
+): Promise<() => void> {
+  const progress = await readJob(actor, id);
+  listener(progress);
+  const entry = running.get(id);
+  if (!entry) return () => undefined;
+  entry.events.on('progress', listener);
+  return () => entry.events.off('progress', listener);
+}
+
+/** Marks the jobs that a stopped server left running. Called at boot. */
+export async function closeOrphanedJobs(): Promise<void> {
+  const orphans = await Job.findAll({ where: { state: 'running' } });
+  const error = 'The server was stopped while this ran. Start it again.';
+  await inTx(async () => {
+    for (const job of orphans)
+      if (!running.has(job.id)) await job.update({ state: 'failed', error, endedAt: new Date() });
+  });
+}

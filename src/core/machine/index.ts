@@ -1,0 +1,10 @@
+export { NotConvergedError, PullOutError } from './errors';
+export { excitation, pullOut, reactivePower } from './kernel';
+export type { MachineImpedance } from './kernel';
+export { ASSUMED_SPLIT, DEFAULT_PULL_OUT_MARGIN, lossSplitKw, ratedCurrentA, ratedKva, remainingLossKw } from './motor';
+export type { SynchronousMotor } from './motor';
+export { operatingPoint } from './operating-point';
+export type { Excitation, Limit, OperatingPoint } from './operating-point';
+export { capability } from './capability';
+export type { Capability } from './capability';
+export { fieldCurrentAtPanelA, noLoadFieldCurrentA, panelCurrentA } from './panel';

@@ -1,0 +1,246 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { PullOutError, operatingPoint, pullOut, ratedCurrentA, ratedKva } from '../../../src/core/machine';
+import { leastEmfCases, lossCase, lossSegregationCase } from '../../published/machine-capability';
+import { buildLosslessMotor, buildMotor, openCircuitCurve, randomMotor } from './build-motor';
+
+const sum = (losses: Record<string, number>) => Object.values(losses).reduce((a, b) => a + b, 0);
+const double = (min: number, max: number) => fc.double({ min, max, noNaN: true });
+
+describe('operatingPoint against published figures', () => {
+  it('segregates the losses of [FIT] ex. 5.8', () => {
+    const c = lossSegregationCase;
+    const ratedAmperes = (c.armatureKva * 1000) / (Math.sqrt(3) * c.voltageV);
+    const copperKw = (3 * ratedAmperes ** 2 * c.armatureResistanceOhm) / 1000;
+    const shaftKw = c.armatureKva * c.powerFactor - copperKw - c.coreKw - c.frictionWindageKw - c.strayKw;
+    const motor = buildMotor({
+      ratedOutputKw: shaftKw,
+      ratedVoltageV: c.voltageV,
+      ratedEfficiency: shaftKw / (c.armatureKva * c.powerFactor),
+      ratedFieldCurrentA: c.fieldCurrentA,
+      fieldResistanceOhm: c.fieldResistanceOhm,
+      exciterEfficiency: 1,
+      exciterSupply: 'bus',
+      raPu: (c.armatureResistanceOhm * c.armatureKva * 1000) / c.voltageV ** 2,
+      lossSplit: { coreKw: c.coreKw, frictionWindageKw: c.frictionWindageKw, strayKw: c.strayKw },
+    });
+    const point = operatingPoint(motor, { shaftKw, kvar: -c.armatureKva * 0.6 });
+    expect(Math.abs(point.lossesKw.armature - c.expected.armatureKw)).toBeLessThan(0.005);
+    expect(Math.abs(point.lossesKw.field - c.expected.fieldKw)).toBeLessThan(0.005);
+    expect(Math.abs(point.inputKw - c.expected.inputKw)).toBeLessThan(0.05);
+    expect(Math.abs((100 * shaftKw) / point.inputKw - c.expected.efficiencyPercent)).toBeLessThan(0.05);
+  });
+
+  it.each(lossCase.points)('has the variable losses of the 2000 hp example at $kvarDelivered kvar', (row) => {
+    const ratedOutputKw = lossCase.ratedHp * 0.746;
+    const kva = ratedOutputKw / (lossCase.efficiency * 0.8);
+    const motor = buildMotor({
+      ratedOutputKw,
+      fieldResistanceOhm: (0.009 * kva * 1000) / 150 ** 2,
+      lossSplit: { frictionWindageKw: 0, coreKw: 0, strayKw: 0.004 * kva },
+    });
+    const shaftKw = 0.6 * kva - row.armatureKw - row.strayKw - row.exciterInputKw;
+    const { lossesKw } = operatingPoint(motor, { shaftKw, kvar: -row.kvarDelivered });
+    expect(lossesKw.armature / row.armatureKw).toBeCloseTo(1, 3);
+    expect(lossesKw.stray / row.strayKw).toBeCloseTo(1, 3);
+    expect(Math.abs((lossesKw.field + lossesKw.exciter) / row.exciterInputKw - 1)).toBeLessThan(0.01);
+  });
+
+  it.each(leastEmfCases)('keeps the pull-out ratio $ratio at $loadPu pu with an emf of $emfPu pu', (row) => {
+    const motor = buildLosslessMotor({ ratedPowerFactor: 0.8, xdPu: 1, xqPu: 0.65 });
+    const greatest = pullOut({ phaseVoltageV: 1, emfV: row.emfPu }, { raOhm: 0, xdOhm: 1, xqOhm: 0.65 }).activePowerW;
+    expect(greatest / row.loadPu).toBeCloseTo(row.ratio, 4);
+    if (row.kvarDeliveredPu === null) return;
+    const point = operatingPoint(motor, { shaftKw: row.loadPu * 1000, kvar: -row.kvarDeliveredPu * 1000 });
+    expect(point.emfPu).toBeCloseTo(row.emfPu, 4);
+    expect(point.pullOutRatio).toBeCloseTo(row.ratio, 4);
+  });
+
+  it('finds the pull-out ratio in developed power: [Guru and Hiziroglu] ex. 8.5, p. 491, 4740 W developed', () => {
+    // 69.28 V, 87.54 V of emf, 0.5 + j3 ohm: base of 100 V and 1 ohm puts the ohms straight into per unit.
+    const baseKva = (3 * 69.28 ** 2) / 1000;
+    const motor = buildLosslessMotor({
+      ratedOutputKw: baseKva * 0.8,
+      ratedPowerFactor: 0.8,
+      raPu: 0.5,
+      xdPu: 3,
+      xqPu: 3,
+    });
+    // 33.64 A at 22.98 degrees lagging: P = 3 x 69.28 x 33.64 x cos 22.98, developed = P - 3 x 33.64^2 x 0.5.
+    const developed = 3 * 69.28 * 33.642 * Math.cos((22.98 * Math.PI) / 180) - 3 * 33.642 ** 2 * 0.5;
+    const kvar = (3 * 69.28 * 33.642 * Math.sin((22.98 * Math.PI) / 180)) / 1000;
+    const point = operatingPoint(motor, { shaftKw: developed / 1000, kvar });
+    expect(Math.abs((point.emfPu * 69.28) / 87.54 - 1)).toBeLessThan(2e-4);
+    expect(Math.abs((point.pullOutRatio * developed) / 4740 - 1)).toBeLessThan(5e-4);
+  });
+});
+
+describe('operatingPoint at the limits of its range', () => {
+  it('stands at rated current, rated field and rated input at the rated point', () => {
+    const motor = buildMotor();
+    const point = operatingPoint(motor, { shaftKw: 1492, powerFactor: 0.8, leading: true });
+    expect(point.lineCurrentA).toBeCloseTo(ratedCurrentA(motor), 8);
+    expect(point.fieldCurrentA).toBeCloseTo(150, 9);
+    expect(point.inputKw).toBeCloseTo(1492 / 0.96, 9);
+    expect(point.kvar).toBeCloseTo(-ratedKva(motor) * 0.6, 8);
+    expect(point.leading).toBe(true);
+    expect(point.beyond).toEqual([]);
+  });
+
+  it('needs exactly the no-load field at unity power factor without load or loss', () => {
+    const motor = buildLosslessMotor({ ratedPowerFactor: 0.8, xdPu: 1, xqPu: 0.65 });
+    const point = operatingPoint(motor, { shaftKw: 0, kvar: 0 });
+    expect(point.emfPu).toBeCloseTo(1, 12);
+    expect(point.lineCurrentA).toBeCloseTo(0, 9);
+    expect(point.pullOutRatio).toBe(Infinity);
+  });
+
+  it('names every limit a point breaks', () => {
+    const motor = buildMotor();
+    expect(operatingPoint(motor, { shaftKw: 1492, kvar: -1500 }).beyond).toEqual(['armature', 'field']);
+    expect(operatingPoint(motor, { shaftKw: 1492, kvar: 1250 }).beyond).toEqual(['armature', 'pull-out']);
+    expect(operatingPoint(motor, { shaftKw: 700, kvar: 1700 }).beyond).toContain('pull-out');
+    expect(
+      operatingPoint(buildMotor({ limits: { reserve: 0.05 } }), { shaftKw: 1492, fieldCurrentA: 150 }).beyond,
+    ).toEqual(['armature', 'field']);
+  });
+
+  it('throws PullOutError with the greatest shaft power, which itself can be carried', () => {
+    for (const motor of [buildMotor(), buildMotor({ xlPu: 0.15, openCircuitCurve })]) {
+      let greatestKw = 0;
+      try {
+        operatingPoint(motor, { shaftKw: 1492, fieldCurrentA: 30 });
+      } catch (error) {
+        expect(error).toBeInstanceOf(PullOutError);
+        greatestKw = (error as PullOutError).pullOutPowerW / 1000;
+      }
+      expect(greatestKw).toBeGreaterThan(0);
+      expect(operatingPoint(motor, { shaftKw: greatestKw * (1 - 1e-9), fieldCurrentA: 30 }).beyond).toContain(
+        'pull-out',
+      );
+      expect(() => operatingPoint(motor, { shaftKw: greatestKw * (1 + 1e-6), fieldCurrentA: 30 })).toThrow(
+        PullOutError,
+      );
+    }
+  });
+
+  it('draws the exciter beside the armature when it is fed from the bus', () => {
+    const shaft = operatingPoint(buildMotor(), { shaftKw: 1200, kvar: -900 });
+    const bus = operatingPoint(buildMotor({ exciterSupply: 'bus' }), { shaftKw: 1200, kvar: -900 });
+    expect(bus.lineCurrentA).toBeLessThan(shaft.lineCurrentA);
+    const armatureKva = (Math.sqrt(3) * 4.16 * bus.lineCurrentA) as number;
+    const armatureKw = bus.inputKw - bus.lossesKw.field - bus.lossesKw.exciter;
+    expect(Math.hypot(armatureKw, bus.kvar)).toBeCloseTo(armatureKva, 8);
+  });
+
+  it('reads saturation behind the leakage reactance, as a hand calculation does', () => {
+    // No load, no loss: I = j q at 1 pu voltage, so Ep = 1 + 0.15 q and E = 1 + 1.1 q for q delivered.
+    // Air-gap line: 0.45 pu at 30 A = 0.015 pu/A. q = 0.8: Ep = 1.12, curve 110 A, increment 110 - 1.12/0.015 = 35.333 A;
+    // E/k = 1.88/0.015 = 125.333 A; field 160.667 A.
+    const motor = buildLosslessMotor({ ratedPowerFactor: 0.8, xdPu: 1.1, xqPu: 0.7, xlPu: 0.15, openCircuitCurve });
+    const point = operatingPoint(motor, { shaftKw: 0, kvar: -800 });
+    expect(point.fieldCurrentA).toBeCloseTo(160.6667, 3);
+    // Beyond the last point its segment (50 A for 0.13 pu) is prolonged: q = 2, Ep = 1.3, 160 + 50 x 0.05/0.13 = 179.231 A.
+    // E/k = 3.2/0.015 = 213.333; increment 179.231 - 1.3/0.015 = 92.564; field 305.897 A.
+    expect(operatingPoint(motor, { shaftKw: 0, kvar: -2000 }).fieldCurrentA).toBeCloseTo(305.897, 3);
+  });
+
+  it('shows the exciter field of a brushless machine on the panel, linear from no load to rated', () => {
+    const motor = buildLosslessMotor({ ratedPowerFactor: 0.8, exciterField: { ratedA: 5, noLoadA: 2 } });
+    expect(operatingPoint(motor, { shaftKw: 0, kvar: 0 }).panelCurrentA).toBeCloseTo(2, 12);
+    const rated = operatingPoint(motor, { shaftKw: 800, powerFactor: 0.8, leading: true });
+    expect(rated.panelCurrentA).toBeCloseTo(5, 9);
+    expect(rated.fieldCurrentA).toBeCloseTo(150, 9);
+  });
+});
+
+describe('operatingPoint for random motors', () => {
+  it('balances input, output and losses, and satisfies its own current and power factor', () => {
+    fc.assert(
+      fc.property(randomMotor(), double(0, 1.1), double(-0.9, 0.3), double(0.9, 1.1), (motor, load, q, voltagePu) => {
+        const shaftKw = load * motor.ratedOutputKw;
+        const point = operatingPoint(motor, { shaftKw, kvar: q * ratedKva(motor), voltagePu });
+        const scale = ratedKva(motor);
+        expect(Math.abs(point.inputKw - shaftKw - sum(point.lossesKw)) / scale).toBeLessThan(1e-12);
+        const beside = motor.exciterSupply === 'bus' ? point.lossesKw.field + point.lossesKw.exciter : 0;
+        const kva = (Math.sqrt(3) * motor.ratedVoltageV * voltagePu * point.lineCurrentA) / 1000;
+        expect(Math.abs(Math.hypot(point.inputKw - beside, point.kvar) - kva) / scale).toBeLessThan(1e-11);
+        expect(point.powerFactor).toBeCloseTo(point.inputKw / Math.hypot(point.inputKw, point.kvar), 12);
+      }),
+      { numRuns: 1000 },
+    );
+  });
+
+  it('comes back to the same point from its field current and from its power factor', () => {
+    fc.assert(
+      fc.property(randomMotor(), double(0.01, 1), double(-0.8, 0.1), (motor, load, q) => {
+        const shaftKw = load * motor.ratedOutputKw;
+        const kva = ratedKva(motor);
+        const point = operatingPoint(motor, { shaftKw, kvar: q * kva });
+        // Towards nought power factor the losses of the kvar themselves fix it: two solutions meet.
+        fc.pre(point.powerFactor > 0.2);
+        fc.pre(point.pullOutRatio > 1.05 && !(point.pullOutRatio > 1.3 && point.beyond.includes('pull-out')));
+        const byField = operatingPoint(motor, { shaftKw, fieldCurrentA: point.fieldCurrentA });
+        expect(Math.abs(byField.kvar - point.kvar) / kva).toBeLessThan(1e-9);
+        expect(Math.abs(byField.inputKw - point.inputKw) / kva).toBeLessThan(1e-9);
+        const byFactor = operatingPoint(motor, { shaftKw, powerFactor: point.powerFactor, leading: point.leading });
+        // cos is flat at unity: the power factor fixes the kvar only to the square root of rounding there.
+        expect(Math.abs(byFactor.kvar - point.kvar) / kva).toBeLessThan(point.powerFactor > 0.9999 ? 1e-6 : 1e-9);
+      }),
+      { numRuns: 1000 },
+    );
+  });
+
+  it('delivers less as the shaft load rises at constant field, without saturation', () => {
+    fc.assert(
+      fc.property(randomMotor(), double(0.05, 0.9), (random, load) => {
+        const { openCircuitCurve: _curve, ...motor } = random;
+        const at = (share: number) =>
+          operatingPoint(motor, { shaftKw: share * motor.ratedOutputKw, fieldCurrentA: motor.ratedFieldCurrentA });
+        expect(at(load + 0.05).kvar).toBeGreaterThan(at(load).kvar);
+      }),
+      { numRuns: 300 },
+    );
+  });
+});
+
+describe('operatingPoint on nonsense', () => {
+  it.each([
+    [{ ratedEfficiency: 1.1 }, /ratedEfficiency must be in \(0, 1\], got 1.1/],
+    [{ ratedPowerFactor: 0 }, /ratedPowerFactor/],
+    [{ poles: 5 }, /poles must be even/],
+    [{ xqPu: 1.2 }, /xqPu must be at most xdPu/],
+    [{ ratedOutputKw: NaN }, /ratedOutputKw/],
+    [{ raPu: -0.1 }, /raPu/],
+    [{ exciterEfficiency: 0 }, /exciterEfficiency/],
+    [{ ratedEfficiency: 0.99 }, /ratedEfficiency must leave room/],
+    [{ lossSplit: { coreKw: -1, frictionWindageKw: 0, strayKw: 0 } }, /coreKw/],
+    [{ limits: { reserve: 1 } }, /limits.reserve/],
+    [{ limits: { pullOutMargin: 0.9 } }, /limits.pullOutMargin/],
+    [{ limits: { fieldCurrentA: 0 } }, /limits.fieldCurrentA/],
+    [{ exciterField: { ratedA: 5, noLoadA: 6 } }, /exciterField.noLoadA/],
+    [{ openCircuitCurve }, /xlPu must be given/],
+    [{ xlPu: 0.1, openCircuitCurve: [...openCircuitCurve].reverse() }, /openCircuitCurve\[1\].fieldCurrentA/],
+    [{ xlPu: 0.1, openCircuitCurve: [] }, /openCircuitCurve/],
+  ])('refuses a motor with %o', (wrong, message) => {
+    const run = () => operatingPoint(buildMotor(wrong), { shaftKw: 1000, kvar: 0 });
+    expect(run).toThrow(RangeError);
+    expect(run).toThrow(message);
+  });
+
+  it.each([
+    [{ shaftKw: -1, kvar: 0 }, /shaftKw must be >= 0, got -1/],
+    [{ shaftKw: 1, kvar: NaN }, /kvar/],
+    [{ shaftKw: 1, fieldCurrentA: -5 }, /fieldCurrentA/],
+    [{ shaftKw: 1, powerFactor: 1.2, leading: true }, /powerFactor/],
+    [{ shaftKw: 1, kvar: 0, voltagePu: 0 }, /voltagePu/],
+    [{ shaftKw: 0, kvar: 2400 }, /reversed|field of 0 A or more/],
+  ])('refuses the point %o', (at, message) => {
+    expect(() => operatingPoint(buildMotor(), at)).toThrow(message);
+  });
+
+  it('does not change its arguments', () => {
+    const motor = Object.freeze(buildMotor({ limits: Object.freeze({ reserve: 0.1 }) }));
+    expect(() => operatingPoint(motor, Object.freeze({ shaftKw: 1000, kvar: -200 }))).not.toThrow();
+  });
+});

@@ -1,0 +1,110 @@
+import type { BillingPeriod } from '../core/load';
+import type { PricedBill, PricedLine } from '../core/tariff';
+
+/** Whether bills are priced from the meter's intervals or from the quantities printed on them. */
+export type PricingRoute = 'intervals' | 'printed';
+
+/** A line charge as printed on a bill. */
+export interface BilledLine {
+  id: number;
+  label: string;
+  amountMinor: number;
+}
+
+/** A kept bill as the utility issued it. */
+export interface BilledBill {
+  id: number;
+  /** Month in which the period ends, the name people give the bill: "Aug 2025". */
+  name: string;
+  period: BillingPeriod;
+  quantities: Record<string, number>;
+  currency: string;
+  totalMinor: number | null;
+  sourceRow: string | null;
+  intakeId: number | null;
+  lines: BilledLine[];
+}
+
+/** How a printed line found its place: told by a person, by its label, by its group and order, or not at all. */
+export type MatchedBy = 'person' | 'label' | 'amount' | 'group' | 'none';
+
+/** A line as priced beside what the bill says; either side may be missing. Differences are billed minus priced. */
+export interface LinePair {
+  line: PricedLine | null;
+  billed: BilledLine[];
+  pricedMinor: number | null;
+  billedMinor: number | null;
+  differenceMinor: number;
+  matchedBy: MatchedBy;
+}
+
+/** One bill of the year, priced beside billed. */
+export interface ReconciledBill {
+  bill: BilledBill;
+  priced: PricedBill;
+  pricedMinor: number;
+  /** Printed total, or the sum of the printed lines where no total is printed; null where neither is. */
+  billedMinor: number | null;
+  differenceMinor: number | null;
+  reactiveMinor: number;
+  pairs: LinePair[];
+  /** Letters of the findings in this bill. */
+  findings: string[];
+}
+
+export type FindingKind =
+  | 'ratchet-not-released'
+  | 'wrong-season'
+  | 'wrong-version'
+  | 'wrong-quantity'
+  | 'bill-arithmetic'
+  | 'line-not-in-schedule'
+  | 'unexplained';
+
+/** One explanation that was tried: how far it missed what was billed, in minor units; 0 fits to the cent. */
+export interface TriedCause {
+  kind: FindingKind;
+  label: string;
+  missMinor: number;
+  fits: boolean;
+}
+
+/** A difference between a bill and what the schedule says it should be. */
+export interface Finding {
+  /** A, B, ... in order of the bills; the same on the row and the slip. */
+  letter: string;
+  billId: number;
+  /** Line of the schedule the difference lies in; null for the bill's own arithmetic and unknown lines. */
+  lineId: string | null;
+  kind: FindingKind;
+  title: string;
+  /** Billed minus priced with everything that follows from it (tax, percentages): over-billed is positive. */
+  amountMinor: number;
+  /** The line's own part of it. */
+  lineAmountMinor: number;
+  sentence: string;
+  causes: TriedCause[];
+}
+
+/** The year priced beside billed. */
+export interface PricedYear {
+  route: PricingRoute;
+  currency: string;
+  timeZone: string;
+  bills: ReconciledBill[];
+  findings: Finding[];
+  totals: {
+    pricedMinor: number;
+    billedMinor: number;
+    /** Billed minus priced over the bills that say what they billed. */
+    differenceMinor: number;
+    reactiveMinor: number;
+    billsWithoutTotal: number;
+  };
+  /** Readings laid under the year: present and expected; both 0 on the printed route. */
+  readings: { present: number; expected: number };
+  notes: string[];
+}
+
+/** Differences of a line up to this many minor units are rounding, not findings. */
+export const lineToleranceMinor = 5;

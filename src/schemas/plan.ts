@@ -1,0 +1,247 @@
+import { z } from 'zod';
+import type { AssumedValue } from './motor';
+
+export type ChargeGroup = 'energy' | 'demand' | 'reactive' | 'fixed' | 'adjustment' | 'tax';
+
+/** One priced line of a bill. Amounts in major units, as priced. */
+export interface BillLineView {
+  id: string;
+  label: string;
+  group: ChargeGroup;
+  amount: number;
+  quantity?: number;
+  unit?: string;
+  rate?: number;
+  explanation: string;
+  clause?: string;
+}
+
+/** One priced bill, [from, to). Major units. */
+export interface BillView {
+  from: string;
+  to: string;
+  total: number;
+  reactiveCost: number;
+  lines: BillLineView[];
+  notes: string[];
+}
+
+/** What a plan's money is worth, on the assumptions of its own form. */
+export interface AppraisalView {
+  simplePaybackYears: number | null;
+  discountedPaybackYears: number | null;
+  npv: number;
+  irr: number | null;
+  notes: string[];
+}
+
+export interface PlanEconomics {
+  discountPercent: number;
+  escalationPercent: number;
+  horizonYears: number;
+}
+
+/** One month of the cumulative cash flow; `low` and `high` hold eight of ten samples. Major units. */
+export interface CashFlowMonth {
+  month: number;
+  cumulative: number;
+  low?: number;
+  high?: number;
+}
+
+/** One motor at the standing setting and under the plan. Kvar delivered is positive when leading. */
+export interface PlanMotorView {
+  motorId: number;
+  name: string;
+  usualShaftKw: number;
+  usualLoadPercent: number;
+  kvarToday: number;
+  kvarPlan: number;
+  armatureTodayA: number;
+  armaturePlanA: number;
+  /** Mean over running hours and energy over the year, both against standing. */
+  extraLossKw: number;
+  extraLossKwh: number;
+  /** After the reserve. */
+  fieldLimitA: number;
+  fieldSharePercent: number;
+  leastPullOut: number;
+  pullOutMargin: number;
+  hoursRunning: number;
+  /** Running hours by the limit that lies nearest. */
+  hoursNearest: { field: number; armature: number; pullOut: number };
+  /** Hours beyond a limit, all limits; a plan on offer has none. */
+  hoursBeyond: number;
+}
+
+export interface PlanField {
+  motorId: number;
+  name: string;
+  fieldA: number;
+  todayA: number;
+  /** What a brushless machine's panel shows at fieldA. */
+  panelA?: number;
+}
+
+/** Total of the year at one field current of one motor, the others held. Major units. */
+export interface CurvePoint {
+  fieldA: number;
+  total: number;
+  admissible: boolean;
+}
+
+export interface CostCurveView {
+  motorId: number;
+  name: string;
+  chosenA: number;
+  todayA: number;
+  /** Limit after and before the reserve. */
+  limitA: number;
+  ratedLimitA: number;
+  points: CurvePoint[];
+  /** Field currents round the chosen one within which the year moves by less than `toleranceAmount`. */
+  tolerance: { lowA: number; highA: number; amount: number } | null;
+}
+
+/** What a search found, as stored with the plan made of it. */
+export interface SearchView {
+  fields: { motorId: number; name: string; fieldA: number; todayA: number }[];
+  yearTotal: number;
+  standingTotal: number;
+  saving: number;
+  priced: number;
+  stepA: number;
+  curves: CostCurveView[];
+  /** A total no admissible kvar in any interval can beat; null where none was proven. */
+  bound: { total: number; note: string } | null;
+  notes: string[];
+  /** What the search was made on; another fingerprint means it is stale. */
+  fingerprint: string;
+}
+
+/** A plan, or the plant as it runs now (id null), priced over the year. */
+export interface PlanView {
+  id: number | null;
+  version: number;
+  name: string;
+  currency: string;
+  fields: PlanField[];
+  bills: BillView[];
+  yearTotal: number;
+  /** Standing total minus this total; 0 for standing. */
+  saving: number;
+  reactiveCost: number;
+  groupTotals: Record<ChargeGroup, number>;
+  capitalCost: number;
+  yearlyUpkeep: number;
+  economics: PlanEconomics;
+  appraisal: AppraisalView;
+  /** Simple payback in words: "20 months", "at once", "never". */
+  paybackWords: string;
+  cashFlow: CashFlowMonth[];
+  motors: PlanMotorView[];
+  /** Extra energy drawn by the motors over the year, and its cost at the mean energy price. */
+  extraLossKwh: number;
+  hoursLeading: { before: number; after: number };
+  /** "field, M-1 at 80 %". */
+  nearestLimit: string;
+  /** Power factor at the interval of greatest demand, per bill; the worst of them. */
+  worstPf: { value: number; leading: boolean; bill: string } | null;
+  chosen: boolean;
+  assumed: AssumedValue[];
+  search: SearchView | null;
+  /** Words on why a figure may be out of date: the search is older than the motors, the tariff or the readings. */
+  stale: string[];
+}
+
+/** A stored plan that cannot be offered: a field lies beyond a limit since the motor was changed, for instance. */
+export interface UnpricedPlan {
+  id: number;
+  version: number;
+  name: string;
+  chosen: boolean;
+  fields: PlanField[];
+  reason: string;
+}
+
+/** The year of an engagement: standing, its plans, the chosen one. What pages, report and client read. */
+export interface YearView {
+  currency: string;
+  from: string;
+  to: string;
+  /** `intervals`: from metered readings; the only route for plans. */
+  route: 'intervals';
+  scheduleTitle: string;
+  readings: { intervals: number; missing: number; estimated: number; stepMinutes: number };
+  standing: PlanView;
+  plans: PlanView[];
+  unpriced: UnpricedPlan[];
+  chosen: PlanView | null;
+  /** Distinct notes of the priced bills. */
+  notes: string[];
+}
+
+/** What must be done before plans can be priced. */
+export interface Missing {
+  station: 'intervals' | 'bills' | 'tariff' | 'motors';
+  what: string;
+  remedy: string;
+}
+
+const money = z
+  .number({ error: 'Write an amount.' })
+  .min(0, 'Write an amount of 0 or more.')
+  .max(1e10, 'This amount is too large.');
+
+/** A plan as its form sends it. Amounts in major units. */
+export const planInput = z.object({
+  name: z.string().trim().min(1, 'Give the plan a name.').max(80, 'A name has at most 80 characters.'),
+  fields: z
+    .array(
+      z.object({
+        motorId: z.number().int(),
+        fieldA: z
+          .number({ error: 'Write a field current in amperes.' })
+          .positive('The field current must be above 0 A.'),
+      }),
+    )
+    .max(40, 'A plan has at most 40 motors.'),
+  capitalCost: money,
+  yearlyUpkeep: money,
+  economics: z.object({
+    discountPercent: z
+      .number({ error: 'Write the discount rate in per cent.' })
+      .min(0, 'The discount rate lies between 0 and 40 %.')
+      .max(40, 'The discount rate lies between 0 and 40 %.'),
+    escalationPercent: z
+      .number({ error: 'Write the yearly rise of prices in per cent.' })
+      .min(-20, 'The yearly rise lies between −20 and 30 %.')
+      .max(30, 'The yearly rise lies between −20 and 30 %.'),
+    horizonYears: z
+      .number({ error: 'Write the horizon in years.' })
+      .int('Write whole years.')
+      .min(1, 'The horizon lies between 1 and 30 years.')
+      .max(30, 'The horizon lies between 1 and 30 years.'),
+  }),
+  /** Job whose result the plan is made of. */
+  searchJobId: z.number().int().optional(),
+});
+export type PlanInput = z.output<typeof planInput>;
+
+/** A change of a plan carries the version that was seen. */
+export const planChangeInput = planInput.extend({ version: z.number().int() });
+export type PlanChangeInput = z.output<typeof planChangeInput>;
+
+export const planChoiceInput = z.object({ version: z.number().int(), chosen: z.boolean() });
+
+/** How the search is made. */
+export const searchInput = z.object({
+  stepA: z
+    .number({ error: 'Write the step of the field current in amperes.' })
+    .min(0.5, 'The step is at least 0.5 A: nobody sets a rheostat finer.')
+    .max(50, 'The step is at most 50 A.')
+    .default(2),
+});
+export type SearchInput = z.output<typeof searchInput>;
+
+export const planDefaults = { discountPercent: 8, escalationPercent: 0, horizonYears: 10 } as const;

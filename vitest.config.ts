@@ -9,10 +9,15 @@ const alias = { '@': fileURLToPath(new URL('./src', import.meta.url)) };
  */
 export default defineConfig({
   test: {
+    reporters: ['default', './tests/setup/closing-line.ts'],
     projects: [
       {
         resolve: { alias },
-        test: { name: 'core', include: ['tests/core/**/*.test.ts', 'tests/published/**/*.test.ts'], testTimeout: 60_000 },
+        test: {
+          name: 'core',
+          include: ['tests/core/**/*.test.ts', 'tests/published/**/*.test.ts'],
+          testTimeout: 60_000,
+        },
       },
       {
         resolve: { alias },

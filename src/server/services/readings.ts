@@ -1,17 +1,10 @@
 import { Op } from 'sequelize';
-import { TZDate } from '@date-fns/tz';
 import type { LoadSeries } from '../../core/load';
 import { conflict, notFound } from '../errors';
 import { ReadingBlock, type ReadingChannel } from '../models/ReadingBlock';
 
 const minuteMs = 60_000;
 const energyChannels = ['kwh', 'kvarhLagging', 'kvarhLeading'] as const;
-
-/** UTC instant at which a local date begins. */
-export function localMidnightMs(date: string, timeZone: string): number {
-  const [year, month, day] = date.split('-').map(Number) as [number, number, number];
-  return new TZDate(year, month - 1, day, 0, 0, 0, 0, timeZone).getTime();
-}
 
 interface Slice {
   month: string;

@@ -1,0 +1,35 @@
+import { benchIntake } from './intake';
+import { benchPricing } from './pricing';
+import { benchSearch } from './search';
+import { benchServer } from './server';
+
+/** One measured figure: a ratio within this run, or a rate, with the limit it is held to where there is one. */
+export interface Measured {
+  name: string;
+  figures: string;
+  ratio?: number;
+  atMost?: number;
+  perSecond?: number;
+  atLeast?: number;
+}
+
+function verdict({ ratio, atMost, perSecond, atLeast }: Measured): string {
+  if (ratio !== undefined && atMost !== undefined) return ratio <= atMost ? `within ${atMost}` : `OVER ${atMost}`;
+  if (perSecond !== undefined && atLeast !== undefined)
+    return perSecond >= atLeast ? `at least ${atLeast}` : `UNDER ${atLeast}`;
+  return 'for information';
+}
+
+async function main(): Promise<void> {
+  const parts = [benchPricing, benchSearch, benchIntake, benchServer];
+  for (const part of parts) {
+    for (const measured of await part()) {
+      const value = measured.ratio ?? measured.perSecond;
+      process.stdout.write(
+        `${measured.name}: ${value?.toFixed(2) ?? ''} (${verdict(measured)}); ${measured.figures}\n`,
+      );
+    }
+  }
+}
+
+await main();

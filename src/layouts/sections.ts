@@ -1,0 +1,37 @@
+/** Where a staff page belongs among the global links. */
+export type StaffSection =
+  | 'today'
+  | 'engagements'
+  | 'clients'
+  | 'schedules'
+  | 'hours'
+  | 'practice'
+  | 'invoices'
+  | 'people'
+  | 'trail'
+  | 'profile';
+
+export interface SectionLink {
+  id: StaffSection;
+  label: string;
+}
+
+const everybody: SectionLink[] = [
+  { id: 'today', label: 'Today' },
+  { id: 'engagements', label: 'Engagements' },
+  { id: 'clients', label: 'Clients' },
+  { id: 'schedules', label: 'Schedules' },
+  { id: 'hours', label: 'Hours' },
+];
+
+const partnerOnly: SectionLink[] = [
+  { id: 'practice', label: 'Practice' },
+  { id: 'invoices', label: 'Invoices' },
+  { id: 'people', label: 'People and rates' },
+  { id: 'trail', label: 'Trail' },
+];
+
+/** Global links of a role, in two groups; the second is empty for a consultant. The address of each is `/id`. */
+export function sectionLinks(role: string): { shared: SectionLink[]; partner: SectionLink[] } {
+  return { shared: everybody, partner: role === 'partner' ? partnerOnly : [] };
+}

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import type { SynchronousMotor } from '../core/machine';
 
 /** Ways of making the field's current. `static`: rectifier and slip rings; `dc-exciter`: an exciter with commutator. */
 export const exciterKinds = ['static', 'brushless', 'dc-exciter'] as const;
@@ -176,26 +177,7 @@ export interface PlateNote {
 }
 
 /** The machine as the core reads it, complete; plain JSON for the browser's own calculation. */
-export interface MachineView {
-  ratedOutputKw: number;
-  ratedVoltageV: number;
-  frequencyHz: number;
-  poles: number;
-  ratedPowerFactor: number;
-  ratedEfficiency: number;
-  ratedFieldCurrentA: number;
-  fieldResistanceOhm: number;
-  exciterEfficiency: number;
-  exciterSupply?: 'shaft' | 'bus';
-  raPu: number;
-  xdPu: number;
-  xqPu: number;
-  xlPu?: number;
-  openCircuitCurve?: { fieldCurrentA: number; voltagePu: number }[];
-  exciterField?: { ratedA: number; noLoadA?: number };
-  lossSplit?: { frictionWindageKw: number; coreKw: number; strayKw: number };
-  limits?: { fieldCurrentA?: number; armatureCurrentA?: number; pullOutMargin?: number; reserve?: number };
-}
+export type MachineView = SynchronousMotor;
 
 /** A motor with its present state and what it may give at its usual load. Kvar delivered is positive when leading. */
 export interface MotorView {
@@ -224,3 +206,6 @@ export interface MotorView {
   /** Extra watts per kvar gained from today to the most it may deliver. */
   wattsPerKvar: number | null;
 }
+
+/** The version of a row that was seen, for changes that carry nothing else. */
+export const versionInput = z.object({ version: z.number().int() });

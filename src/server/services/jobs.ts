@@ -1,4 +1,5 @@
 import { EventEmitter } from 'node:events';
+import type { JobProgress } from '../../schemas/job';
 import { inTx } from '../db/tx';
 import { actAs } from '../db/context';
 import { notFound, ServiceError } from '../errors';
@@ -6,19 +7,6 @@ import { log } from '../log';
 import { Job } from '../models/Job';
 import type { Actor } from '../policies/actor';
 import { openEngagementById } from './engagements';
-
-export interface JobProgress {
-  id: number;
-  kind: string;
-  subjectId: number | null;
-  state: Job['state'];
-  done: number;
-  planned: number | null;
-  unit: string | null;
-  startedAt: string;
-  result: Record<string, unknown> | null;
-  error: string | null;
-}
 
 interface Running {
   controller: AbortController;

@@ -1,0 +1,8 @@
+import { matchInput } from '@/schemas/tariff';
+import { endpoint, parseOrThrow, readJson } from '@/server/http';
+import { matchLine } from '@/server/services/tariff';
+
+export const PUT = endpoint(async ({ actor, params, request }) => {
+  const input = parseOrThrow(matchInput, await readJson(request));
+  return Response.json(await matchLine(actor, params.code ?? '', input));
+});

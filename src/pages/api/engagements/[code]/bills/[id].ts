@@ -1,0 +1,14 @@
+import { billChange, billRemoval } from '@/schemas/bill';
+import { endpoint, parseOrThrow, readJson } from '@/server/http';
+import { changeBill, removeBill } from '@/server/services/bills';
+
+export const PUT = endpoint(async ({ actor, params, request }) => {
+  const change = parseOrThrow(billChange, await readJson(request));
+  return Response.json(await changeBill(actor, params.code ?? '', Number(params.id), change));
+});
+
+export const DELETE = endpoint(async ({ actor, params, request }) => {
+  const seen = parseOrThrow(billRemoval, await readJson(request));
+  await removeBill(actor, params.code ?? '', Number(params.id), seen);
+  return new Response(null, { status: 204 });
+});

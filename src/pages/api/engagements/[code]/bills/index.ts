@@ -1,0 +1,8 @@
+import { billInput } from '@/schemas/bill';
+import { endpoint, parseOrThrow, readJson } from '@/server/http';
+import { addBill } from '@/server/services/bills';
+
+export const POST = endpoint(async ({ actor, params, request }) => {
+  const input = parseOrThrow(billInput, await readJson(request));
+  return Response.json(await addBill(actor, params.code ?? '', input), { status: 201 });
+});

@@ -1,0 +1,153 @@
+import { z } from 'zod';
+import { isCalendarDate } from '../core/load';
+
+/** A line charge as printed. */
+export interface BillLineView {
+  id: number;
+  label: string;
+  amountMinor: number;
+}
+
+/** A kept bill with its lines, period [from, to). */
+export interface BillView {
+  id: number;
+  /** Goes back with a change, so that two people do not overwrite each other. */
+  version: number;
+  from: string;
+  to: string;
+  days: number;
+  /** As printed, by name; energies in kWh and kvarh, demands in kW and kVA, power factor as a fraction. */
+  quantities: Record<string, number>;
+  currency: string;
+  lines: BillLineView[];
+  linesMinor: number;
+  /** The total as printed; null where the bill shows none. */
+  totalMinor: number | null;
+  /** Sum of the lines less the printed total; null without a total or without lines. */
+  differenceMinor: number | null;
+  /** The file the bill came in; null where it was typed. */
+  source: { intakeId: number; fileName: string; row: string | null } | null;
+}
+
+/** Days of a half-open period. */
+export const daysBetween = (from: string, to: string) => Math.round((Date.parse(to) - Date.parse(from)) / 86_400_000);
+
+/** A quantity that bills print, with its unit. */
+export interface BillQuantity {
+  name: string;
+  label: string;
+  unit: string;
+  decimals: number;
+}
+
+/** Quantities a bill is likely to print, in the order of the form and the table. */
+export const billQuantities: readonly BillQuantity[] = [
+  { name: 'kwh', label: 'Energy', unit: 'kWh', decimals: 0 },
+  { name: 'kwhPeak', label: 'Energy, on peak', unit: 'kWh', decimals: 0 },
+  { name: 'kwhShoulder', label: 'Energy, shoulder', unit: 'kWh', decimals: 0 },
+  { name: 'kwhOffPeak', label: 'Energy, off peak', unit: 'kWh', decimals: 0 },
+  { name: 'maxKw', label: 'Peak demand', unit: 'kW', decimals: 0 },
+  { name: 'billedKw', label: 'Billed demand', unit: 'kW', decimals: 0 },
+  { name: 'maxKva', label: 'Peak demand', unit: 'kVA', decimals: 0 },
+  { name: 'billedKva', label: 'Billed demand', unit: 'kVA', decimals: 0 },
+  { name: 'kvarh', label: 'Reactive, lagging', unit: 'kvarh', decimals: 0 },
+  { name: 'kvarhLeading', label: 'Reactive, leading', unit: 'kvarh', decimals: 0 },
+  { name: 'maxKvar', label: 'Peak reactive', unit: 'kvar', decimals: 0 },
+  { name: 'powerFactor', label: 'Power factor', unit: '', decimals: 4 },
+];
+
+const unitEndings: [RegExp, string][] = [
+  [/^kwh/i, 'kWh'],
+  [/^kvarh/i, 'kvarh'],
+  [/kvar$/i, 'kvar'],
+  [/kva$/i, 'kVA'],
+  [/kw$/i, 'kW'],
+];
+
+/** What a quantity is called on the screen; one that is not among the usual ones keeps its own name. */
+export function billQuantity(name: string): BillQuantity {
+  const known = billQuantities.find((quantity) => quantity.name === name);
+  if (known) return known;
+  const unit = unitEndings.find(([pattern]) => pattern.test(name))?.[1] ?? '';
+  return { name, label: name, unit, decimals: /factor|^pf/i.test(name) ? 4 : 0 };
+}
+
+const localDate = z.string().refine(isCalendarDate, 'Write a day of the calendar, such as 9 Jun 2026.');
+const amountMinor = z
+  .number('Write an amount, such as 1,947.33.')
+  .int('An amount cannot be finer than the smallest coin of the currency.')
+  .min(-1e13, 'The amount is too large.')
+  .max(1e13, 'The amount is too large.');
+const quantity = z
+  .number('Write a number, such as 2,479,826.')
+  .min(0, 'A printed quantity is not negative.')
+  .max(1e12, 'The quantity is too large.');
+
+/** A bill typed or changed by hand, period half-open. */
+export const billInput = z
+  .object({
+    from: localDate,
+    to: localDate,
+    quantities: z
+      .record(z.string().regex(/^[a-z][A-Za-z0-9]{0,40}$/, 'A quantity has a name such as kwhPeak.'), quantity)
+      .refine((quantities) => (quantities.powerFactor ?? 1) <= 1, {
+        path: ['powerFactor'],
+        message: 'A power factor lies between 0 and 1.',
+      }),
+    lines: z
+      .array(
+        z.object({
+          label: z
+            .string()
+            .trim()
+            .min(1, 'Name the line as the bill does.')
+            .max(120, 'The name is longer than 120 characters.'),
+          amountMinor,
+        }),
+      )
+      .max(60, 'A bill has at most 60 lines here; add small ones together.'),
+    totalMinor: amountMinor.nullable(),
+  })
+  .refine((bill) => bill.from < bill.to, { path: ['to'], message: 'The last day lies before the first.' })
+  .refine((bill) => !(bill.from < bill.to) || daysBetween(bill.from, bill.to) <= 400, {
+    path: ['to'],
+    message: 'A bill covers at most 400 days. Look at the years of the two dates.',
+  })
+  .refine((bill) => bill.lines.length > 0 || bill.totalMinor !== null, {
+    path: ['totalMinor'],
+    message: 'Type at least one line or the printed total.',
+  });
+
+export type BillInput = z.infer<typeof billInput>;
+
+/** A changed bill carries the version its editor saw. */
+export const billChange = z.object({ version: z.number().int().min(0), bill: billInput });
+export const billRemoval = z.object({ version: z.number().int().min(0) });
+
+/** A stretch of the engagement's year that no bill covers, or that two cover, [from, to). */
+export interface PeriodFlaw {
+  kind: 'gap' | 'overlap';
+  from: string;
+  to: string;
+  days: number;
+}
+
+/** Gaps and overlaps of periods, in order; with a year given also those at its ends. */
+export function periodFlaws(
+  periods: readonly { from: string; to: string }[],
+  year?: { from: string; to: string },
+): PeriodFlaw[] {
+  const flaws: PeriodFlaw[] = [];
+  const add = (kind: PeriodFlaw['kind'], from: string, to: string) =>
+    flaws.push({ kind, from, to, days: daysBetween(from, to) });
+  const ordered = [...periods].sort((a, b) => a.from.localeCompare(b.from) || a.to.localeCompare(b.to));
+  let reached = year?.from ?? ordered[0]?.from;
+  if (reached === undefined) return [];
+  ordered.forEach(({ from, to }, index) => {
+    if (from > reached!) add('gap', reached!, from);
+    else if (index > 0 && from < reached!) add('overlap', from, to < reached! ? to : reached!);
+    if (to > reached!) reached = to;
+  });
+  if (year && reached < year.to) add('gap', reached, year.to);
+  return flaws;
+}

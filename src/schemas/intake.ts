@@ -1,0 +1,220 @@
+import { z } from 'zod';
+import type { BillPreview, ColumnEvidence, ColumnMap, Guess, IntakeProblem, IntervalPreview } from '../core/intake';
+import { isTimeZone } from '../core/load';
+
+export type IntakePreview = IntervalPreview | BillPreview;
+
+/** A remembered way to read files of one shape. */
+export interface RememberedMap {
+  id: number;
+  name: string;
+  /** ISO instant of its making or last change. */
+  at: string;
+}
+
+/** A file on its way in, as lists show it. */
+export interface IntakeRow {
+  id: number;
+  kind: 'intervals' | 'bills';
+  fileName: string;
+  bytes: number;
+  sha256: string;
+  state: 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
+  /** Who brought it in. */
+  broughtBy: string | null;
+  broughtAt: string;
+  keptAt: string | null;
+  undoneAt: string | null;
+  version: number;
+}
+
+/** A file on its way in with everything its four steps show. */
+export interface IntakeView extends IntakeRow {
+  engagement: { code: string; currency: string; meter: string; yearFrom: string; yearTo: string; siteTimeZone: string };
+  /** Zone of stamps without offset. */
+  timeZone: string;
+  /** Keys of the columns and guesses a person gave their word for. */
+  confirmed: string[];
+  preview: IntakePreview | null;
+  problems: IntakeProblem[];
+  /** The remembered map it was read with. */
+  readWith: RememberedMap | null;
+  /** Remembered maps of files of this shape, newest first. */
+  offered: RememberedMap[];
+}
+
+/** Name under which a person's word for a column is kept. */
+export const columnKey = (column: Pick<ColumnEvidence, 'index'>) => `column:${column.index}`;
+
+/** Name under which a person's word for a decision about the whole file is kept. */
+export const guessKey = (guess: Pick<Guess, 'key'>) => `guess:${guess.key}`;
+
+/** What still wants a person's word before the file can be kept. */
+export function toConfirm(
+  preview: IntakePreview,
+  confirmed: readonly string[],
+): { columns: ColumnEvidence[]; guesses: Guess[]; count: number } {
+  const asks = new Set(confirmed);
+  const columns = preview.columns.filter((column) => !column.sure && !asks.has(columnKey(column)));
+  const guesses = preview.guesses.filter((guess) => !guess.sure && !asks.has(guessKey(guess)));
+  return { columns, guesses, count: columns.length + guesses.length };
+}
+
+const shortText = z.string().max(200);
+const index = z.number().int().min(0).max(5000);
+
+const columnUse = z.object({
+  index,
+  name: z.string().max(1000),
+  role: z.enum([
+    'stamp',
+    'date',
+    'time',
+    'interval-number',
+    'stamp-begin',
+    'stamp-end',
+    'day-value',
+    'meter',
+    'channel',
+    'unit',
+    'value',
+    'active',
+    'export',
+    'reactive-lagging',
+    'reactive-leading',
+    'reactive-signed',
+    'apparent',
+    'power-factor',
+    'quality',
+    'period-from',
+    'period-to',
+    'month',
+    'days',
+    'quantity',
+    'charge',
+    'total',
+    'ignore',
+  ]),
+  unit: shortText.optional(),
+  measure: z.enum(['energy', 'power', 'register']).optional(),
+  factor: z
+    .number('Write the multiplier as a number.')
+    .positive('A multiplier is above nought.')
+    .max(1e9, 'The multiplier is too large.')
+    .optional(),
+  quantity: z.string().max(60).optional(),
+  minuteOfDay: z.number().int().min(0).max(1440).optional(),
+});
+
+/** The whole map as a person corrected it. */
+export const columnMapInput = z.object({
+  kind: z.enum(['intervals', 'bills']),
+  sheet: shortText.optional(),
+  delimiter: z.string().max(4).optional(),
+  decimalMark: z.enum(['.', ',']).optional(),
+  headerRow: z.number().int().min(1).max(1_000_000).nullable().optional(),
+  firstRow: z.number().int().min(1).max(1_000_000).optional(),
+  layout: z.enum(['long', 'wide', 'transposed']).optional(),
+  columns: z.array(columnUse).max(5000).optional(),
+  stamp: z
+    .object({
+      order: z.enum(['DMY', 'MDY', 'YMD', 'serial', 'epoch']).optional(),
+      marks: z.enum(['begin', 'end', 'own-day-end']).optional(),
+      clock: z.enum(['local', 'standard', 'utc', 'offset']).optional(),
+      stepMinutes: z.number().int().min(1).max(60).optional(),
+    })
+    .optional(),
+  meter: shortText.optional(),
+  periodEnds: z.enum(['inclusive', 'exclusive']).optional(),
+}) satisfies z.ZodType<ColumnMap>;
+
+const version = z.number().int().min(0);
+const confirmed = z.array(z.string().max(40)).max(6000);
+
+/** A correction of the step Match: the file is read again with it. */
+export const matchInput = z.object({
+  version,
+  timeZone: z.string().max(80).refine(isTimeZone, 'Write a time zone such as America/Chicago.'),
+  columnMap: columnMapInput,
+  confirmed,
+});
+export type MatchInput = z.infer<typeof matchInput>;
+
+/** A remembered map to read the file with. */
+export const useMapInput = z.object({ version, mapId: z.number().int().min(1) });
+
+/** A name for the map the file was read with. */
+export const rememberInput = z.object({
+  name: z
+    .string()
+    .trim()
+    .min(3, 'Give the map a name of at least three letters.')
+    .max(80, 'The name is longer than 80 characters.'),
+});
+
+/** Keep, undo, give up: the version of the row the person saw. */
+export const intakeStep = z.object({ version });
+
+/** Mean kW of every interval, for the carpet picture; null where missing. */
+export interface LoadPicture {
+  startMs: number;
+  stepMinutes: number;
+  timeZone: string;
+  kw: (number | null)[];
+  /** Positions of estimated intervals. */
+  estimated: number[];
+}
+
+/** A stretch of missing readings, half-open. */
+export interface ReadingGap {
+  fromMs: number;
+  toMs: number;
+  intervals: number;
+}
+
+/** A kept file and what of the meter it covers. */
+export interface KeptFile {
+  intakeId: number;
+  fileName: string;
+  fromMs: number;
+  toMs: number;
+  stepMinutes: number;
+  intervals: number;
+  missing: number;
+}
+
+/** Totals of one calendar month of the site's time; null where nothing is known. */
+export interface MonthOfLoad {
+  /** First day of the month within the year. */
+  from: string;
+  intervals: number;
+  present: number;
+  estimated: number;
+  kwh: number | null;
+  kvarhLagging: number | null;
+  kvarhLeading: number | null;
+  maxKw: number | null;
+  maxKwMs: number | null;
+}
+
+/** What is kept of the engagement's year. */
+export interface KeptYear {
+  stepMinutes: number;
+  intervals: number;
+  present: number;
+  estimated: number;
+  peak: { ms: number; kw: number; date: string } | null;
+  gaps: ReadingGap[];
+  gapCount: number;
+  months: MonthOfLoad[];
+}
+
+/** The station Intervals. */
+export interface IntervalsStation {
+  files: IntakeRow[];
+  kept: KeptFile[];
+  timeZone: string;
+  fromMs: number;
+  toMs: number;
+  year: KeptYear | null;
+}

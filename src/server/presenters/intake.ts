@@ -1,0 +1,62 @@
+import type { ColumnMapRow } from '../models/ColumnMapRow';
+import type { Intake } from '../models/Intake';
+import type { IntakePreview, IntakeRow, IntakeView, RememberedMap } from '../../schemas/intake';
+
+/** What the row of a file holds besides its state: what reading found, and the word of the person. */
+export interface StoredReading {
+  timeZone: string;
+  confirmed: string[];
+  readWithId: number | null;
+  preview: IntakePreview;
+}
+
+/** The stored reading of a row; null where the file could not be read at all. */
+export const storedReading = (intake: Intake) => intake.preview as unknown as StoredReading | null;
+
+const iso = (date: Date | null) => date?.toISOString() ?? null;
+
+/** A file on its way in, as lists show it. */
+export function presentIntakeRow(intake: Intake, broughtBy: string | null = null): IntakeRow {
+  const { id, kind, fileName, bytes, sha256, state, version } = intake;
+  return {
+    id,
+    kind,
+    fileName,
+    bytes,
+    sha256,
+    state,
+    broughtBy,
+    broughtAt: intake.createdAt.toISOString(),
+    keptAt: iso(intake.keptAt),
+    undoneAt: iso(intake.undoneAt),
+    version,
+  };
+}
+
+/** A remembered map without its columns. */
+export function presentMap(row: ColumnMapRow): RememberedMap {
+  return { id: row.id, name: row.name, at: row.updatedAt.toISOString() };
+}
+
+/** A file with everything its four steps show. */
+export function presentIntake(
+  intake: Intake,
+  around: {
+    engagement: IntakeView['engagement'];
+    broughtBy: string | null;
+    maps: ColumnMapRow[];
+  },
+): IntakeView {
+  const stored = storedReading(intake);
+  const readWith = around.maps.find((map) => map.id === stored?.readWithId);
+  return {
+    ...presentIntakeRow(intake, around.broughtBy),
+    engagement: around.engagement,
+    timeZone: stored?.timeZone ?? around.engagement.siteTimeZone,
+    confirmed: stored?.confirmed ?? [],
+    preview: stored?.preview ?? null,
+    problems: intake.problems ?? [],
+    readWith: readWith ? presentMap(readWith) : null,
+    offered: around.maps.map(presentMap),
+  };
+}

@@ -1,0 +1,141 @@
+import type { BillInput, BillView } from '../../schemas/bill';
+import { inTx } from '../db/tx';
+import { conflict, notFound, staleVersion } from '../errors';
+import { Bill } from '../models/Bill';
+import { BillLine } from '../models/BillLine';
+import { Intake } from '../models/Intake';
+import type { Actor } from '../policies/actor';
+import { presentBill } from '../presenters/bill';
+import { billsWithin, openForChange } from './intake-guard';
+import { wordDays } from './intake-words';
+
+async function present(bills: Bill[]): Promise<BillView[]> {
+  const billIds = bills.map((bill) => bill.id);
+  const intakeIds = bills.flatMap((bill) => bill.intakeId ?? []);
+  const [lines, intakes] = await Promise.all([
+    BillLine.findAll({ where: { billId: billIds }, order: ['position', 'id'] }),
+    Intake.findAll({ where: { id: intakeIds }, attributes: ['id', 'fileName'] }),
+  ]);
+  return bills.map((bill) =>
+    presentBill(
+      bill,
+      lines.filter((line) => line.billId === bill.id),
+      intakes.find((intake) => intake.id === bill.intakeId),
+    ),
+  );
+}
+
+/** The kept bills of an engagement with their lines, ordered by period. The caller has opened the engagement. */
+export async function listBills(engagementId: number): Promise<BillView[]> {
+  return present(await Bill.findAll({ where: { engagementId }, order: ['periodFrom', 'periodTo', 'id'] }));
+}
+
+/**
+ * A bill shares no day with another of its engagement: its charges would count twice.
+ *
+ * @throws {ServiceError} 409 naming both periods
+ */
+export async function assertNoOverlap(
+  engagementId: number,
+  period: { from: string; to: string },
+  exceptId?: number,
+): Promise<void> {
+  const others = await billsWithin(engagementId, period.from, period.to);
+  const other = others.find((bill) => bill.id !== exceptId);
+  if (!other) return;
+  const theirs = { from: other.periodFrom, to: other.periodTo };
+  const intake = other.intakeId === null ? null : await Intake.findByPk(other.intakeId);
+  const remedy = intake
+    ? `Undo the file ${intake.fileName} first, or change that bill.`
+    : 'Change or remove that bill first.';
+  throw conflict(
+    `The bill of ${wordDays(period)} overlaps the bill of ${wordDays(theirs)} that is already kept. ${remedy}`,
+    { period, kept: theirs, intakeId: other.intakeId },
+  );
+}
+
+async function writeLines(billId: number, lines: BillInput['lines']): Promise<void> {
+  for (const [position, line] of lines.entries()) await BillLine.create({ billId, position, ...line });
+}
+
+function valuesOf(input: BillInput) {
+  const { from, to, quantities, totalMinor } = input;
+  return { periodFrom: from, periodTo: to, quantities, totalMinor };
+}
+
+/** Keeps a bill with its lines. Call inside inTx. */
+export async function createBill(
+  input: BillInput,
+  belongs: { engagementId: number; currency: string; intakeId: number | null; sourceRow: string | null },
+): Promise<Bill> {
+  await assertNoOverlap(belongs.engagementId, input);
+  const bill = await Bill.create({ ...belongs, ...valuesOf(input) });
+  await writeLines(bill.id, input.lines);
+  return bill;
+}
+
+/** Removes a bill with its lines. Call inside inTx. */
+export async function destroyBill(bill: Bill): Promise<void> {
+  for (const line of await BillLine.findAll({ where: { billId: bill.id } })) await line.destroy();
+  await bill.destroy();
+}
+
+/**
+ * Adds a bill typed by hand.
+ *
+ * @throws {ServiceError} 404 for those who do not work on the engagement, 409 where it overlaps a kept bill
+ */
+export async function addBill(actor: Actor, code: string, input: BillInput): Promise<BillView> {
+  const { engagement } = await openForChange(actor, code);
+  const belongs = { engagementId: engagement.id, currency: engagement.currency, intakeId: null, sourceRow: null };
+  const bill = await inTx(() => createBill(input, belongs));
+  return first(await present([bill]));
+}
+
+/** Changes a bill; its lines are replaced where they differ. */
+export async function changeBill(
+  actor: Actor,
+  code: string,
+  id: number,
+  change: { version: number; bill: BillInput },
+): Promise<BillView> {
+  const bill = await openBill(actor, code, id, change);
+  await inTx(async () => {
+    await assertNoOverlap(bill.engagementId, change.bill, bill.id);
+    bill.set(valuesOf(change.bill));
+    // A change of lines alone is a change of the bill too: its version must move.
+    bill.changed('quantities', true);
+    await bill.save();
+    const kept = await BillLine.findAll({ where: { billId: id }, order: ['position', 'id'] });
+    const { lines } = change.bill;
+    for (const [position, line] of lines.entries()) {
+      const row = kept[position];
+      if (row) await row.update({ position, ...line });
+      else await BillLine.create({ billId: id, position, ...line });
+    }
+    for (const row of kept.slice(lines.length)) await row.destroy();
+  });
+  return first(await present([bill]));
+}
+
+/** Removes a bill. */
+export async function removeBill(actor: Actor, code: string, id: number, seen: { version: number }): Promise<void> {
+  const bill = await openBill(actor, code, id, seen);
+  await inTx(() => destroyBill(bill));
+}
+
+async function openBill(actor: Actor, code: string, id: number, seen: { version: number; bill?: BillInput }) {
+  const { engagement } = await openForChange(actor, code);
+  const bill = Number.isSafeInteger(id) ? await Bill.findOne({ where: { id, engagementId: engagement.id } }) : null;
+  if (!bill) throw notFound();
+  if (bill.version !== seen.version) {
+    throw staleVersion('This bill', seen.bill ?? null, first(await present([bill])));
+  }
+  return bill;
+}
+
+function first(views: BillView[]): BillView {
+  const [view] = views;
+  if (!view) throw notFound();
+  return view;
+}

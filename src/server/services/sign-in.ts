@@ -41,39 +41,51 @@ function failuresOf(email: string, now: number): Failures {
   return known && now - known.since < windowMs ? known : { count: 0, since: now };
 }
 
-function refuse(email: string, now: number): SignInResult {
+/** Counts a try before its password is checked, so that tries made at the same time count too. */
+function countTry(email: string, now: number): number {
   const { count, since } = failuresOf(email, now);
   failures.set(email, { count: count + 1, since });
   if (failures.size > 10_000) failures.delete(failures.keys().next().value as string);
-  const left = triesAllowed - count - 1;
-  const tries = left === 1 ? 'One try is left' : `${left} tries are left`;
+  return triesAllowed - count - 1;
+}
+
+function refuse(triesLeft: number): SignInResult {
+  const words = [
+    'No try is left',
+    'One try is left',
+    'Two tries are left',
+    'Three tries are left',
+    'Four tries are left',
+  ];
+  const left = words[triesLeft];
   return {
-    message:
-      left > 4
-        ? 'This password does not fit this e-mail. Check both, or ask for a new password.'
-        : `This password does not fit this e-mail. ${tries}, then wait 15 minutes.`,
+    message: left
+      ? `This password does not fit this e-mail. ${left}, then wait 15 minutes.`
+      : 'This password does not fit this e-mail. Check both, or ask for a new password.',
   };
 }
 
 /** Checks an e-mail and password. Wrong ones are counted per account; the answer never tells whether the account exists. */
 export async function checkSignIn(email: string, password: string, now = Date.now()): Promise<SignInResult> {
-  if (failuresOf(email, now).count >= triesAllowed) {
+  const triesLeft = countTry(email, now);
+  if (triesLeft < 0) {
     return { message: 'Too many wrong passwords for this e-mail. Wait 15 minutes, or ask for a new password.' };
   }
   const user = await User.findOne({ where: { email } });
   const fits = await checkPassword(user?.passwordHash ?? null, password);
-  if (!user || !fits) return refuse(email, now);
-  if (user.disabledAt) return { message: 'This account is closed. Ask the practice to open it again.' };
+  if (!user || !fits) return refuse(triesLeft);
   failures.delete(email);
+  if (user.disabledAt) return { message: 'This account is closed. Ask the practice to open it again.' };
   return { user: toActor(user) };
 }
 
-/** Sets a new password and ends all sessions of the account. The hash is made before the transaction opens. */
+/** Sets a new password, forgets wrong tries and ends all sessions of the account. The hash is made before the transaction opens. */
 export async function setPasswordHash(userId: number, passwordHash: string): Promise<void> {
   await actAs({ actorId: userId, ip: null }, () =>
     inTx(async () => {
       const user = await User.findByPk(userId, { rejectOnEmpty: true });
       await user.update({ passwordHash, sessionEpoch: user.sessionEpoch + 1 });
+      failures.delete(user.email);
     }),
   );
 }

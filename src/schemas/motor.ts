@@ -1,8 +1,9 @@
 import { z } from 'zod';
+import { isCalendarDate } from '../core/load';
 import type { SynchronousMotor } from '../core/machine';
 
-/** Ways of making the field's current. `static`: rectifier and slip rings; `dc-exciter`: an exciter with commutator. */
-export const exciterKinds = ['static', 'brushless', 'dc-exciter'] as const;
+/** Ways of making the field's current. `static`: rectifier and slip rings; `shaft-dc`: an exciter with commutator on the shaft. */
+export const exciterKinds = ['static', 'brushless', 'shaft-dc'] as const;
 export type ExciterKind = (typeof exciterKinds)[number];
 
 export const outputUnits = ['hp', 'kW'] as const;
@@ -59,7 +60,6 @@ export const plateInput = z
     exciterFieldA: optionalNumber(0.1, 500, 'The exciter field current lies between 0.1 and 500 A.'),
     exciterNoLoadA: optionalNumber(0, 500, 'The exciter field current at no load lies between 0 and 500 A.'),
     exciterEfficiencyPercent: optionalNumber(30, 100, 'The exciter efficiency lies between 30 and 100 %.'),
-    exciterSupply: z.enum(['shaft', 'bus']).default('bus'),
     rotor: z.enum(['salient', 'round']).default('salient'),
     xdPu: optionalNumber(0.1, 5, 'Xd lies between 0.1 and 5 per unit.'),
     xqPu: optionalNumber(0.1, 5, 'Xq lies between 0.1 and 5 per unit.'),
@@ -98,14 +98,20 @@ export const plateInput = z
   });
 export type PlateInput = z.output<typeof plateInput>;
 
-const isoDay = z.string().regex(/^\d{4}-\d{2}-\d{2}$/, 'Write a date as 2026-02-28.');
+const isoDay = z.string().refine(isCalendarDate, 'Write a day of the calendar as 2026-02-28.');
+
+const clockHour = z
+  .number({ error: 'Write an hour of the day, 0 to 24.' })
+  .min(0, 'Hours lie between 0 and 24.')
+  .max(24, 'Hours lie between 0 and 24.')
+  .multipleOf(0.25, 'Hours go by quarters: 6, 6.25, 6.5, 6.75.');
 
 /** Shaft load of part of a week. Hours are local clock hours, [fromHour, toHour); toHour 24 is midnight. */
 const loadRule = z
   .object({
     days: z.array(z.enum(dayNames)).min(1, 'Choose at least one day.'),
-    fromHour: z.number().min(0, 'Hours lie between 0 and 24.').max(24, 'Hours lie between 0 and 24.'),
-    toHour: z.number().min(0, 'Hours lie between 0 and 24.').max(24, 'Hours lie between 0 and 24.'),
+    fromHour: clockHour,
+    toHour: clockHour,
     load: z
       .number({ error: 'Write the load.' })
       .min(0, 'The load is 0 or more.')

@@ -1,0 +1,10 @@
+import type { MotorInput, MotorView } from '../schemas/motor';
+import { call } from './api';
+
+export const createMotor = (code: string, input: MotorInput) =>
+  call<MotorView>('POST', `/api/engagements/${code}/motors`, input);
+
+export const changeMotor = (id: number, version: number, input: MotorInput) =>
+  call<MotorView>('PUT', `/api/motors/${id}`, { ...input, version });
+
+export const removeMotor = (id: number, version: number) => call<void>('DELETE', `/api/motors/${id}`, { version });

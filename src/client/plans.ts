@@ -1,0 +1,25 @@
+import type { JobProgress } from '../schemas/job';
+import type { PlanInput, SearchInput } from '../schemas/plan';
+import { call } from './api';
+
+/** What the server answers to a saved plan: its row, not its prices. */
+export interface SavedPlan {
+  id: number;
+  version: number;
+  name: string;
+  chosen: boolean;
+}
+
+export const createPlan = (code: string, input: PlanInput) =>
+  call<SavedPlan>('POST', `/api/engagements/${code}/plans`, input);
+
+export const changePlan = (id: number, version: number, input: PlanInput) =>
+  call<SavedPlan>('PUT', `/api/plans/${id}`, { ...input, version });
+
+export const choosePlan = (id: number, version: number, chosen: boolean) =>
+  call<SavedPlan>('PATCH', `/api/plans/${id}`, { version, chosen });
+
+export const removePlan = (id: number, version: number) => call<void>('DELETE', `/api/plans/${id}`, { version });
+
+export const startSearch = (code: string, input: SearchInput) =>
+  call<JobProgress>('POST', `/api/engagements/${code}/plans/search`, input);

@@ -1,0 +1,184 @@
+import {
+  fieldCurrentAtPanelA,
+  NotConvergedError,
+  operatingPoint,
+  PullOutError,
+  type SynchronousMotor,
+} from '../../core/machine';
+import { wordNumber } from '../../core/units';
+import type { CalendarInput, MotorChangeInput, MotorInput, MotorView, PlateInput } from '../../schemas/motor';
+import { inTx } from '../db/tx';
+import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
+import { Motor } from '../models/Motor';
+import { Plan } from '../models/Plan';
+import type { Actor } from '../policies/actor';
+import { limitsOf, presentMotor, storedMotor } from '../presenters/motor';
+import { openEngagementById, type OpenEngagement } from './engagements';
+import { completePlate, machineOrThrow } from './nameplates';
+import { loadHours, ruleLoadKw } from './shaft-load';
+
+/** A motor's row opened by somebody who works on its engagement. */
+export interface OpenMotor {
+  motor: Motor;
+  opened: OpenEngagement;
+}
+
+/** The motors of an engagement in their order. */
+export const listMotors = (engagementId: number) =>
+  Motor.findAll({ where: { engagementId }, order: ['position', 'id'] });
+
+/** The motors with their present state and what they may give. */
+export async function motorsOf(opened: OpenEngagement): Promise<MotorView[]> {
+  return (await listMotors(opened.engagement.id)).map((motor) => viewOf(motor, opened));
+}
+
+/**
+ * A motor's row by its id.
+ *
+ * @throws {ServiceError} 404 where there is none, or none this person may know of
+ */
+export async function openMotor(actor: Actor, id: number): Promise<OpenMotor> {
+  const motor = await Motor.findByPk(id);
+  if (!motor) throw notFound();
+  return { motor, opened: await openEngagementById(actor, motor.engagementId) };
+}
+
+/**
+ * Adds a motor.
+ *
+ * @throws {ServiceError} 422 where the plate contradicts itself, or today's field lies beyond a limit or below pull-out
+ */
+export async function createMotor(opened: OpenEngagement, input: MotorInput): Promise<MotorView> {
+  const values = checkedValues(input);
+  await refuseSameName(opened.engagement.id, input.name);
+  const engagementId = opened.engagement.id;
+  const motor = await inTx(async () => {
+    const position = await Motor.count({ where: { engagementId } });
+    return Motor.create({ ...values, engagementId, position });
+  });
+  return viewOf(motor, opened);
+}
+
+/**
+ * Changes a motor.
+ *
+ * @throws {ServiceError} 409 with both versions where somebody saved in between; 422 as when it is added
+ */
+export async function changeMotor({ motor, opened }: OpenMotor, input: MotorChangeInput): Promise<MotorView> {
+  const values = checkedValues(input);
+  await refuseSameName(motor.engagementId, input.name, motor.id);
+  const { version, ...mine } = input;
+  if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, mine, storedMotor(motor));
+  await inTx(() => motor.update(values));
+  return viewOf(motor, opened);
+}
+
+/**
+ * Removes a motor no plan sets.
+ *
+ * @throws {ServiceError} 409 where a plan sets its field, naming it, or where it was changed in between
+ */
+export async function removeMotor({ motor }: OpenMotor, { version }: { version: number }): Promise<void> {
+  if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, { version }, storedMotor(motor));
+  const plans = await Plan.findAll({ where: { engagementId: motor.engagementId } });
+  const setting = plans.filter((plan) => plan.actions.some((action) => action.motorId === motor.id));
+  if (setting.length > 0) {
+    const named = setting.map((plan) => plan.name).join(', ');
+    throw conflict(`${motor.name} is set by ${named}. Take it out of the plan first, or remove the plan.`);
+  }
+  await inTx(() => motor.destroy());
+}
+
+/** The columns of a row, after every check that can refuse it. */
+function checkedValues(input: MotorInput) {
+  const machine = machineOrThrow(input.plate);
+  const fieldTodayA = fieldOfReading(machine, input);
+  refuseField(machine, input, fieldTodayA);
+  return {
+    name: input.name,
+    drives: input.drives || null,
+    plate: input.plate as unknown as Record<string, unknown>,
+    calendar: input.calendar as unknown as Record<string, unknown>,
+    fieldTodayA,
+  };
+}
+
+/** The machine's own field current of what was read at its panel. */
+function fieldOfReading(machine: SynchronousMotor, input: MotorInput): number {
+  if (input.fieldReadAt === 'field') return input.fieldTodayA;
+  if (!machine.exciterField) {
+    throw invalid('The reading at the panel cannot be turned into the motor’s field current.', {
+      'plate.exciterFieldA': [
+        'Write the exciter field current at rated field, or the reading of the motor’s own field.',
+      ],
+    });
+  }
+  return fieldCurrentAtPanelA(machine, input.fieldTodayA);
+}
+
+/** Refuses a field beyond its limit, or one that cannot hold the motor's loads. */
+function refuseField(machine: SynchronousMotor, input: MotorInput, fieldA: number): void {
+  const limitA = limitsOf(machine).fieldBeforeReserveA;
+  const amperes = (value: number) => `${wordNumber(value, 0.1).replace(/\.0$/, '')} A`;
+  if (fieldA > limitA * (1 + 1e-9)) {
+    throw invalid(`The field current today lies beyond the limit of ${input.name}.`, {
+      fieldTodayA: [
+        `${amperes(fieldA)} is ${amperes(fieldA - limitA)} beyond the field limit of ${input.name}, ${amperes(limitA)}. ` +
+          'Read the ammeter again. If it is right the motor runs too hot: lower the field now, or correct the limit.',
+      ],
+    });
+  }
+  const fields: FieldErrors = {};
+  input.calendar.rules.forEach((rule, index) => {
+    const shaftKw = ruleLoadKw(rule, machine.ratedOutputKw);
+    const fault = cannotHold(machine, shaftKw, fieldA);
+    if (fault === null) return;
+    const loadWords = `${wordNumber(shaftKw, 1)} kW (${wordNumber((100 * shaftKw) / machine.ratedOutputKw, 1)} % of rated)`;
+    (fields[`calendar.rules.${index}.load`] ??= []).push(
+      `At ${amperes(fieldA)} of field ${input.name} cannot carry ${loadWords}: it ${fault}. Check the load and the field current.`,
+    );
+    fields.fieldTodayA = [
+      `At ${amperes(fieldA)} ${input.name} ${fault}, and its load reaches ${loadWords}. Read the ammeter at that load again.`,
+    ];
+  });
+  if (Object.keys(fields).length > 0) throw invalid('Load and field current of today cannot both be right.', fields);
+}
+
+/** Why a field current cannot hold a load; null where it can. */
+function cannotHold(machine: SynchronousMotor, shaftKw: number, fieldCurrentA: number): string | null {
+  try {
+    operatingPoint(machine, { shaftKw, fieldCurrentA });
+    return null;
+  } catch (error) {
+    if (error instanceof PullOutError) {
+      return `falls out of step above ${wordNumber(error.pullOutPowerW / 1000, 1)} kW`;
+    }
+    if (error instanceof NotConvergedError) return 'draws more current than it can carry';
+    throw error;
+  }
+}
+
+async function refuseSameName(engagementId: number, name: string, except?: number): Promise<void> {
+  const same = await Motor.findOne({ where: { engagementId, name } });
+  if (same && same.id !== except) {
+    throw invalid('Two motors of one plant cannot have the same name.', {
+      name: [`There is a motor ${name} already. Give this one another name.`],
+    });
+  }
+}
+
+/** What a stored motor is to the calculations: its machine, its loads over the year. */
+export function loadOf(motor: Motor, machine: SynchronousMotor, opened: OpenEngagement) {
+  const { yearFrom, yearTo } = opened.engagement;
+  const calendar = motor.calendar as unknown as CalendarInput;
+  const hours = loadHours(calendar, machine.ratedOutputKw, { from: yearFrom, to: yearTo });
+  const usualShaftKw = hours[0]?.shaftKw ?? ruleLoadKw(calendar.rules[0]!, machine.ratedOutputKw);
+  return { usualShaftKw, hoursRunning: hours.reduce((sum, one) => sum + one.hours, 0), hours };
+}
+
+function viewOf(motor: Motor, opened: OpenEngagement): MotorView {
+  const completed = completePlate(motor.plate as unknown as PlateInput);
+  const { motor: machine } = completed;
+  if (!machine) throw conflict(`The plate of ${motor.name} can no longer be read. Open it at the station Motors.`);
+  return presentMotor(motor, { ...completed, motor: machine }, loadOf(motor, machine, opened));
+}

@@ -1,0 +1,69 @@
+import { completeNameplate, type CompletedMotor, type Nameplate, type SynchronousMotor } from '../../core/machine';
+import type { PlateInput } from '../../schemas/motor';
+import { invalid, type FieldErrors } from '../errors';
+
+const fraction = (percent: number | undefined) => (percent === undefined ? undefined : percent / 100);
+
+/** A plate in the words of the core. */
+export function toNameplate(plate: PlateInput): Nameplate {
+  const { exciterFieldA, exciterNoLoadA, limits } = plate;
+  return {
+    output: plate.output,
+    outputUnit: plate.outputUnit,
+    voltageV: plate.voltageV,
+    currentA: plate.currentA,
+    powerFactor: plate.powerFactor,
+    speedRpm: plate.speedRpm,
+    poles: plate.poles,
+    frequencyHz: plate.frequencyHz,
+    efficiency: fraction(plate.efficiencyPercent),
+    fieldCurrentA: plate.fieldCurrentA,
+    fieldVoltageV: plate.fieldVoltageV,
+    fieldResistanceOhm: plate.fieldResistanceOhm,
+    exciter: plate.exciterKind,
+    exciterEfficiency: fraction(plate.exciterEfficiencyPercent),
+    exciterField: exciterFieldA === undefined ? undefined : { ratedA: exciterFieldA, noLoadA: exciterNoLoadA },
+    rotor: plate.rotor,
+    raPu: plate.raPu,
+    xdPu: plate.xdPu,
+    xqPu: plate.xqPu,
+    xlPu: plate.xlPu,
+    openCircuitCurve: plate.openCircuitCurve,
+    limits: {
+      fieldCurrentA: limits.fieldCurrentA,
+      armatureCurrentA: limits.armatureCurrentA,
+      pullOutMargin: limits.pullOutMargin,
+      reserve: fraction(limits.reservePercent),
+    },
+  };
+}
+
+/** Where an entry of the core's nameplate stands in the form. */
+const formPaths: Record<string, string> = {
+  efficiency: 'plate.efficiencyPercent',
+  exciter: 'plate.exciterKind',
+  exciterEfficiency: 'plate.exciterEfficiencyPercent',
+  exciterField: 'plate.exciterFieldA',
+  motor: 'plate.output',
+  lossSplit: 'plate.efficiencyPercent',
+};
+
+export const formPath = (field: string) => formPaths[field] ?? `plate.${field}`;
+
+/** The completed motor of a stored plate. */
+export function completePlate(plate: PlateInput): CompletedMotor {
+  return completeNameplate(toNameplate(plate));
+}
+
+/**
+ * The machine of a plate that agrees with itself.
+ *
+ * @throws {ServiceError} 422 at the entries that disagree, with by how much and what to do
+ */
+export function machineOrThrow(plate: PlateInput): SynchronousMotor {
+  const { motor, problems } = completePlate(plate);
+  if (motor && problems.length === 0) return motor;
+  const fields: FieldErrors = {};
+  for (const { field, message, remedy } of problems) (fields[formPath(field)] ??= []).push(`${message} ${remedy}`);
+  throw invalid('The plate contradicts itself. Each entry that disagrees is marked with by how much.', fields);
+}

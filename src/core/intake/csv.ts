@@ -1,0 +1,95 @@
+import { intakeError } from './errors';
+import { gridCaps, TextGrid } from './grid';
+
+/** A growing list of offsets without boxing. */
+class Offsets {
+  private values: Uint32Array;
+  length = 0;
+
+  constructor(capacity: number) {
+    this.values = new Uint32Array(capacity);
+  }
+
+  push(offset: number): void {
+    if (this.length === this.values.length) {
+      const grown = new Uint32Array(this.values.length * 2);
+      grown.set(this.values);
+      this.values = grown;
+    }
+    this.values[this.length] = offset;
+    this.length += 1;
+  }
+
+  finish(): Uint32Array {
+    return this.values.subarray(0, this.length);
+  }
+}
+
+/**
+ * Splits delimited text into a grid of offsets in one pass: quotes doubled inside quoted cells (RFC 4180), line ends LF, CRLF
+ * or CR, line breaks inside quotes, rows of any length.
+ * @throws {IntakeError} beyond the caps, or when a quote is opened and never closed.
+ */
+export function splitDelimited(text: string, delimiter: string, fileName: string): TextGrid {
+  const mark = delimiter.charCodeAt(0);
+  const cells = new Offsets(Math.max(64, text.length >> 2));
+  const rows = new Offsets(1024);
+  const ends = new Offsets(1024);
+  const lines = new Offsets(1024);
+  const quoted = text.includes('"');
+  const length = text.length;
+  let line = 1;
+  let at = 0;
+  while (at < length) {
+    rows.push(cells.length);
+    lines.push(line);
+    cells.push(at);
+    for (; at < length; at += 1) {
+      const code = text.charCodeAt(at);
+      if (code === mark) cells.push(at + 1);
+      else if (code < 14 && (code === 10 || code === 13)) break;
+      else if (quoted && code === 34 && isCellStart(text, at, mark)) {
+        const close = closingQuote(text, at);
+        if (close < 0) throw unclosedQuote(fileName, line);
+        for (let inner = at; inner < close; inner += 1) if (text.charCodeAt(inner) === 10) line += 1;
+        at = close;
+      }
+    }
+    ends.push(at);
+    if (text.charCodeAt(at) === 13 && text.charCodeAt(at + 1) === 10) at += 1;
+    at += 1;
+    line += 1;
+    if (rows.length > gridCaps.rows) throw tooLarge(fileName);
+  }
+  rows.push(cells.length);
+  return new TextGrid(text, cells.finish(), rows.finish(), quoted ? lines.finish() : null, ends.finish());
+}
+
+/** A quote opens a quoted cell only as the first sign of the cell, blanks and the guard of ="..." apart. */
+function isCellStart(text: string, at: number, mark: number): boolean {
+  let before = at - 1;
+  while (before >= 0 && (text.charCodeAt(before) === 32 || text.charCodeAt(before) === 61)) before -= 1;
+  const code = text.charCodeAt(before);
+  return before < 0 || code === mark || code === 10 || code === 13;
+}
+
+function closingQuote(text: string, open: number): number {
+  let at = text.indexOf('"', open + 1);
+  while (at >= 0 && text.charCodeAt(at + 1) === 34) at = text.indexOf('"', at + 2);
+  if (at - open > gridCaps.cellCharacters) return -1;
+  return at;
+}
+
+const unclosedQuote = (fileName: string, line: number) =>
+  intakeError(
+    'A quotation mark is opened and not closed.',
+    `${fileName}, row ${line}`,
+    'Close or remove the quotation mark, or export the file again: it may have been cut off.',
+  );
+
+const tooLarge = (fileName: string) =>
+  intakeError(
+    `The file has more than ${gridCaps.rows} rows.`,
+    fileName,
+    'Split the file by year or by meter and bring in the parts.',
+  );

@@ -1,0 +1,211 @@
+import type { TableBlock } from './block';
+import { shareOf, type ColumnProfile } from './cells';
+import { channelMeaning, type ChannelMeaning } from './channel-words';
+import { preambleUnit } from './preamble';
+import type { RoleFinding, Test } from './evidence';
+import type { Grid } from './grid';
+import { mentions, unitMeaning } from './words';
+
+interface ValueInput {
+  grid: Grid;
+  block: TableBlock;
+  profiles: readonly ColumnProfile[];
+  rows: readonly number[];
+  decimalMark: '.' | ',';
+  findings: Map<number, RoleFinding>;
+}
+
+interface Candidate {
+  profile: ColumnProfile;
+  meaning: ChannelMeaning;
+  figures: Float64Array;
+}
+
+/** Finds what the columns of figures of a long table measure. */
+export function findChannels(input: ValueInput): void {
+  const candidates = input.profiles
+    .filter((profile) => isFigures(profile))
+    .map((profile) => ({ profile, meaning: channelMeaning(profile.name), figures: figuresOf(input, profile) }));
+  const explained = [...input.findings.values()].some(
+    (finding) => finding.role === 'channel' || finding.role === 'unit',
+  );
+  if (explained && !candidates.some((candidate) => candidate.meaning.isPlain && candidate.meaning.unit))
+    return findExplainedValue(input, candidates);
+  const used = candidates.filter((candidate) => candidate.meaning.role !== 'ignore');
+  if (used.some((candidate) => candidate.meaning.role === 'active')) {
+    for (const candidate of used) markRegister(candidate);
+    chooseActive(input, used);
+  } else nameActive(input, candidates);
+  chooseReactive(input, used);
+  for (const candidate of candidates) {
+    if (input.findings.has(candidate.profile.index)) continue;
+    const role = candidate.meaning.role === 'export' ? 'export' : 'ignore';
+    set(input, candidate, role, [[true, candidate.meaning.why]]);
+  }
+}
+
+function isFigures(profile: ColumnProfile): boolean {
+  const filled = profile.sampled - profile.kinds.blank;
+  return filled === 0 ? channelMeaning(profile.name).unit !== null : shareOf(profile, 'number') > 0.9;
+}
+
+function figuresOf(input: ValueInput, profile: ColumnProfile): Float64Array {
+  return Float64Array.from(input.rows, (row) => input.grid.number(row, profile.index, input.decimalMark));
+}
+
+function set(input: ValueInput, candidate: Candidate, role: RoleFinding['role'], tests: Test[]): void {
+  const { unit, measure } = candidate.meaning;
+  const isUsed = role !== 'ignore' && role !== 'power-factor';
+  input.findings.set(candidate.profile.index, { role, tests, ...(isUsed ? { unit: unit?.unit, measure } : {}) });
+}
+
+/** One value column whose quantity another column of the row names. */
+function findExplainedValue(input: ValueInput, candidates: Candidate[]): void {
+  const value =
+    candidates.find((candidate) => mentions(candidate.profile.name, 'value')) ??
+    candidates.find((candidate) => candidate.profile.isManyValued) ??
+    candidates[0];
+  if (value)
+    input.findings.set(value.profile.index, {
+      role: 'value',
+      tests: [[true, 'Explained by the column that names quantity or unit']],
+    });
+}
+
+/** Totals only ever grow: a register, whose differences are the energy. */
+function markRegister(candidate: Candidate): void {
+  const figures = candidate.figures.filter((figure) => !Number.isNaN(figure));
+  if (figures.length < 4 || candidate.meaning.measure !== 'energy') return;
+  let falls = 0;
+  let steps = 0;
+  let largest = 0;
+  for (let at = 1; at < figures.length; at += 1) {
+    const step = (figures[at] ?? 0) - (figures[at - 1] ?? 0);
+    if (step < 0) falls += 1;
+    else largest = Math.max(largest, step);
+    if (step > 0) steps += 1;
+  }
+  const named = mentions(candidate.profile.name, 'register');
+  const large = (figures[0] ?? 0) > 20 * (largest / Math.max(1, candidate.figures.length / 100));
+  const isMonotone = falls <= figures.length * 0.01 && steps > figures.length * 0.2;
+  if (isMonotone && (named || (large && figures.length >= 10))) {
+    candidate.meaning = {
+      ...candidate.meaning,
+      measure: 'register',
+      why: `${candidate.meaning.why}; it only ever grows, so it is a register and its differences are the energy`,
+    };
+  }
+}
+
+/** The energy drawn: energy before power before registers; parts of a total are not counted beside it. */
+function chooseActive(input: ValueInput, used: Candidate[]): void {
+  const active = used.filter((candidate) => candidate.meaning.role === 'active');
+  const rank = { energy: 0, power: 1, register: 2 };
+  const best = Math.min(...active.map((candidate) => rank[candidate.meaning.measure]));
+  const chosen = active.filter((candidate) => rank[candidate.meaning.measure] === best);
+  for (const candidate of active.filter((other) => !chosen.includes(other))) {
+    set(input, candidate, 'ignore', [[true, `The ${best === 0 ? 'energy' : 'power'} column says the same`]]);
+  }
+  const total =
+    chosen.length > 2
+      ? chosen.find((candidate) =>
+          isSumOf(
+            candidate,
+            chosen.filter((other) => other !== candidate),
+          ),
+        )
+      : undefined;
+  for (const candidate of chosen) {
+    if (total && candidate !== total)
+      set(input, candidate, 'ignore', [[true, `Part of ${total.profile.name}, which is counted`]]);
+    else set(input, candidate, 'active', activeTests(candidate, chosen.length > 1 && !total));
+  }
+}
+
+function activeTests(candidate: Candidate, isShared: boolean): Test[] {
+  const filled = candidate.figures.filter((figure) => !Number.isNaN(figure));
+  const tests: Test[] = [
+    [candidate.meaning.isPlain, candidate.meaning.why],
+    [filled.length > 0, filled.length > 0 ? 'Figures throughout' : 'No figure in the sample'],
+  ];
+  const below = filled.filter((figure) => figure < 0).length;
+  tests.push([
+    below === 0,
+    below === 0 ? 'None below nought' : `${below} sampled figures below nought: read as export`,
+  ]);
+  if (isShared)
+    tests.push([
+      mentions(candidate.profile.name, 'touRegister'),
+      'One of several registers of the energy drawn, added',
+    ]);
+  return tests;
+}
+
+function isSumOf(total: Candidate, parts: Candidate[]): boolean {
+  let tried = 0;
+  let met = 0;
+  total.figures.forEach((figure, at) => {
+    const sum = parts.reduce((running, part) => running + (part.figures[at] ?? Number.NaN), 0);
+    if (Number.isNaN(figure) || Number.isNaN(sum)) return;
+    tried += 1;
+    if (Math.abs(figure - sum) <= Math.max(0.02, Math.abs(figure) * 0.002)) met += 1;
+  });
+  return tried > 2 && met > tried * 0.95 && total.figures.some((figure) => figure > 0);
+}
+
+/** No name speaks of energy: the only column of figures is taken, in the unit named above the table or kWh, to be confirmed. */
+function nameActive(input: ValueInput, candidates: Candidate[]): void {
+  const plain = candidates.filter(
+    (candidate) =>
+      candidate.meaning.role === 'ignore' &&
+      !candidate.meaning.isPlain &&
+      !mentions(candidate.profile.name, 'ignorable'),
+  );
+  const preamble = preambleUnit(input.grid, input.block);
+  const unit = preamble ?? unitMeaning('kWh');
+  const preferred = plain.filter((candidate) => mentions(candidate.profile.name, 'value'));
+  const chosen = preferred.length === 1 ? preferred : plain;
+  for (const candidate of chosen) {
+    candidate.meaning = {
+      role: 'active',
+      unit,
+      measure: unit?.measure ?? 'energy',
+      why: preamble ? `${preamble.unit} is named above the table` : 'No unit is named: taken as kWh',
+      isPlain: preamble !== null,
+    };
+    if (!preamble) markRegister(candidate);
+    const several: Test[] =
+      chosen.length > 1 ? [[false, `One of ${chosen.length} columns that may each be a meter`]] : [];
+    set(input, candidate, 'active', [...activeTests(candidate, false), ...several]);
+  }
+}
+
+/** Lagging and leading apart, or one signed column; apparent energy or a power factor serve only where both lack. */
+function chooseReactive(input: ValueInput, used: Candidate[]): void {
+  const reactive = used.filter((candidate) => candidate.meaning.role.startsWith('reactive'));
+  const best = reactive.some((candidate) => candidate.meaning.measure === 'energy')
+    ? 'energy'
+    : reactive[0]?.meaning.measure;
+  for (const candidate of reactive) {
+    const tests: Test[] = [[candidate.meaning.isPlain, candidate.meaning.why]];
+    const filled = candidate.figures.filter((figure) => !Number.isNaN(figure));
+    const isVaried = filled.some((figure) => figure !== 0);
+    tests.push([isVaried, isVaried ? 'Figures throughout' : 'Nought throughout: cannot be tested on this file']);
+    const signed = filled.some((figure) => figure < 0);
+    if (candidate.meaning.measure !== best)
+      set(input, candidate, 'ignore', [[true, 'The other reactive column says the same']]);
+    else if (candidate.meaning.role === 'reactive-signed' && !signed) {
+      set(input, candidate, 'reactive-lagging', [...tests, [true, 'None below nought: taken as lagging']]);
+    } else set(input, candidate, candidate.meaning.role, tests);
+  }
+  for (const candidate of used) {
+    const { role } = candidate.meaning;
+    if (role !== 'apparent' && role !== 'power-factor') continue;
+    const serves =
+      reactive.length === 0 && (role === 'apparent' || !used.some((other) => other.meaning.role === 'apparent'));
+    const why = serves
+      ? 'No reactive column: kvarh are worked out from it, taken as lagging'
+      : 'Not needed beside the reactive columns';
+    set(input, candidate, serves ? role : 'ignore', [[!serves, why]]);
+  }
+}

@@ -1,0 +1,173 @@
+import { profileColumns, sampleRows, shareOf, type ColumnProfile } from './cells';
+import type { TableBlock } from './block';
+import { findChannels } from './detect-values';
+import { findTimeColumns } from './detect-time';
+import { columnEvidence, guess, useOf, valuesShown, type RoleFinding, type Test } from './evidence';
+import type { Grid } from './grid';
+import { isBlankWord, voteDecimalMark, type DecimalVote } from './numbers';
+import { preambleUnit } from './preamble';
+import { qualityOf } from './quality';
+import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, StampStyle } from './types';
+import { findWideColumns, type WideColumns } from './wide';
+import { mentions, unitMeaning, unitOfHeader } from './words';
+
+/** Everything about the columns of a file of intervals that can be told before its rows are read one by one. */
+export interface IntervalDetection {
+  layout: 'long' | 'wide';
+  decimalMark: '.' | ',';
+  columns: ColumnUse[];
+  stamp: StampStyle;
+  evidence: ColumnEvidence[];
+  guesses: Guess[];
+}
+
+/** Detects the meaning of every column; what the column map says is not overruled here but by `mergeMap`. */
+export function detectColumns(
+  grid: Grid,
+  block: TableBlock,
+  options: { timeZone: string; delimiter?: string; map: Partial<ColumnMap> },
+): IntervalDetection {
+  const rows = sampleRows(block.firstRow, block.lastRow, 360);
+  const profiles = profileColumns(grid, block.names, rows);
+  const guesses: Guess[] = [headerGuess(grid, block)];
+  const decimals = decimalVote(grid, profiles, rows, options);
+  guesses.push(decimalGuess(decimals, options.map));
+  const decimalMark = options.map.decimalMark ?? decimals.mark;
+  const wide = options.map.layout === 'long' ? null : findWideColumns(profiles);
+  guesses.push(
+    guess('layout', wide ? 'wide' : 'long', [
+      [wide?.sure ?? true, wide?.why ?? 'Each row holds the readings of one interval'],
+    ]),
+  );
+  const time = findTimeColumns({
+    grid,
+    profiles,
+    rows,
+    timeZone: options.timeZone,
+    map: options.map,
+    wide,
+    decimalMark,
+  });
+  guesses.push(...time.guesses);
+  const findings = new Map<number, RoleFinding>(time.findings);
+  if (wide) for (const use of wide.columns) findings.set(use.index, wideFinding(wide));
+  const open = profiles.filter((profile) => !findings.has(profile.index));
+  findLabels(open, findings);
+  const remaining = profiles.filter((profile) => !findings.has(profile.index));
+  if (!wide) findChannels({ grid, block, profiles: remaining, rows, decimalMark, findings });
+  for (const profile of remaining)
+    if (!findings.has(profile.index))
+      findings.set(profile.index, { role: 'ignore', tests: [[true, 'Holds nothing an interval needs']] });
+  const evidence = profiles.map((profile) =>
+    columnEvidence(
+      profile,
+      findings.get(profile.index) ?? { role: 'ignore', tests: [] },
+      valuesShown(grid, profile, rows, decimalMark),
+    ),
+  );
+  const minutes = new Map(wide?.columns.map((use) => [use.index, use.minuteOfDay]) ?? []);
+  const columns = evidence.map((line) =>
+    useOf(line, minutes.has(line.index) ? { minuteOfDay: minutes.get(line.index) ?? 0 } : {}),
+  );
+  const stamp: StampStyle = { ...time.stamp, ...(wide ? { stepMinutes: wide.stepMinutes, marks: 'begin' } : {}) };
+  return {
+    layout: wide ? 'wide' : 'long',
+    decimalMark,
+    columns: withWideUnit(grid, block, columns, wide),
+    stamp,
+    evidence,
+    guesses,
+  };
+}
+
+function wideFinding(wide: WideColumns): RoleFinding {
+  return { role: 'day-value', tests: [[wide.sure, wide.why]] };
+}
+
+/** A wide table's unit stands in a header, beside the figures or nowhere. */
+function withWideUnit(grid: Grid, block: TableBlock, columns: ColumnUse[], wide: WideColumns | null): ColumnUse[] {
+  if (!wide) return columns;
+  const hasOwnUnit = columns.some((use) => use.role === 'unit' || use.role === 'channel');
+  const named = columns.map((use) => unitOfHeader(use.name)).find((unit) => unit !== null);
+  const unit = named ?? preambleUnit(grid, block);
+  return columns.map((use) =>
+    use.role === 'day-value' && unit && !hasOwnUnit ? { ...use, unit: unit.unit, measure: unit.measure } : use,
+  );
+}
+
+function headerGuess(grid: Grid, block: TableBlock): Guess {
+  if (block.headerRow === null)
+    return guess('header-row', 'none', [[false, 'No row of names stands above the first row of readings']]);
+  const number = grid.rowNumber(block.headerRow);
+  return guess('header-row', `row ${number}`, [
+    [true, `Words in row ${number}, dates and figures from row ${grid.rowNumber(block.firstRow)}`],
+  ]);
+}
+
+function decimalVote(
+  grid: Grid,
+  profiles: readonly ColumnProfile[],
+  rows: readonly number[],
+  options: { delimiter?: string },
+): DecimalVote {
+  const figures = profiles.filter((profile) => shareOf(profile, 'number') > 0.6);
+  const cells = figures.flatMap((profile) =>
+    rows
+      .slice(0, 200)
+      .map((row) => grid.text(row, profile.index))
+      .filter((text) => !isBlankWord(text)),
+  );
+  return voteDecimalMark(cells, options.delimiter === ';' ? ',' : '.');
+}
+
+function decimalGuess(vote: DecimalVote, map: Partial<ColumnMap>): Guess {
+  const named = (mark: string): string => (mark === ',' ? 'comma' : 'point');
+  if (map.decimalMark) return guess('decimal-mark', named(map.decimalMark), [[true, 'Given by the column map']]);
+  if (vote.comma + vote.point === 0)
+    return guess('decimal-mark', named(vote.mark), [[vote.sure, 'No figure shows which mark is the decimal one']]);
+  const share = `${Math.max(vote.comma, vote.point)} of ${vote.comma + vote.point} telling figures agree`;
+  return guess('decimal-mark', named(vote.mark), [[vote.sure, share]]);
+}
+
+/** Columns of words: meter, quality, channel and unit. */
+function findLabels(profiles: readonly ColumnProfile[], findings: Map<number, RoleFinding>): void {
+  for (const profile of profiles) {
+    const filled = profile.sampled - profile.kinds.blank;
+    if (filled === 0 || profile.isManyValued || unitOfHeader(profile.name)) continue;
+    const words = [...profile.distinct.keys()];
+    const isText = shareOf(profile, 'text') > 0.5;
+    const isUnits = isText && words.every((word) => unitMeaning(word) !== null);
+    const unitsInside =
+      isText && !isUnits && words.filter((word) => unitOfHeader(word) !== null).length * 2 >= words.length;
+    const known = words.filter((word) => qualityOf(word) !== null).length;
+    const isQuality = mentions(profile.name, 'quality') ? known * 2 >= words.length : known === words.length && isText;
+    if (isUnits)
+      findings.set(profile.index, {
+        role: 'unit',
+        tests: [[true, `Every cell is a unit: ${words.slice(0, 4).join(', ')}`]],
+      });
+    else if (unitsInside || (mentions(profile.name, 'channel') && isText && words.some(namesChannel))) {
+      findings.set(profile.index, {
+        role: 'channel',
+        tests: [[true, `Names the quantity of each row: ${words.slice(0, 4).join(', ')}`]],
+      });
+    } else if (isQuality && (isText || mentions(profile.name, 'quality')))
+      findings.set(profile.index, { role: 'quality', tests: qualityTests(profile, known) });
+    else if (mentions(profile.name, 'meter') || (isText && /\bid\b/i.test(profile.name))) {
+      findings.set(profile.index, {
+        role: 'meter',
+        tests: [[words.length === 1, words.length === 1 ? 'One value throughout' : `${words.length} values`]],
+      });
+    }
+  }
+}
+
+const namesChannel = (word: string): boolean =>
+  mentions(word, 'active') || mentions(word, 'reactive') || mentions(word, 'export');
+
+function qualityTests(profile: ColumnProfile, known: number): Test[] {
+  return [
+    [mentions(profile.name, 'quality'), 'Its name is that of a mark of quality'],
+    [known === profile.distinct.size, `${known} of ${profile.distinct.size} marks are known`],
+  ];
+}

@@ -1,0 +1,204 @@
+import { quality as grades } from '../load';
+import type { TableBlock } from './block';
+import { channelMeaning } from './channel-words';
+import { cellPlace, type Grid } from './grid';
+import { isBlankWord } from './numbers';
+import { qualityOf } from './quality';
+import { readStamps } from './read-stamps';
+import { runsBackwards, turnStrand, type Strand, type StrandChannel } from './strand';
+import type { ColumnUse, IntakeNote, IntervalRole, StampStyle } from './types';
+import { unitMeaning, type UnitMeaning } from './words';
+
+/** The columns of a table by what they are for. */
+export interface ColumnPlan {
+  grid: Grid;
+  block: TableBlock;
+  columns: ColumnUse[];
+  decimalMark: '.' | ',';
+  stamp: StampStyle;
+  layout: 'long' | 'wide';
+  meter?: string | undefined;
+}
+
+/** Readings as stamped, and what could not be read. */
+export interface Extraction {
+  strands: Strand[];
+  rowsRead: number;
+  /** Cells of value columns that are neither figure nor blank. */
+  badValues: { place: string; text: string }[];
+  /** Rows whose stamp cannot be read. */
+  badStamps: { place: string; text: string }[];
+  notes: IntakeNote[];
+}
+
+export const valueRoles: ReadonlySet<string> = new Set([
+  'active',
+  'export',
+  'reactive-lagging',
+  'reactive-leading',
+  'reactive-signed',
+  'apparent',
+  'power-factor',
+]);
+
+/** First column of a role, or -1. */
+export function columnOf(columns: readonly ColumnUse[], role: ColumnUse['role']): number {
+  return columns.find((use) => use.role === role)?.index ?? -1;
+}
+
+/** Reads every row of a long table. */
+export function extractLong(plan: ColumnPlan): Extraction {
+  const { grid, columns } = plan;
+  const stamps = readStamps(plan);
+  const { rows } = stamps;
+  const extraction: Extraction = {
+    strands: [],
+    rowsRead: rows.length,
+    badValues: [],
+    badStamps: stamps.badStamps,
+    notes: stamps.notes,
+  };
+  const explained = columns.find((use) => use.role === 'value');
+  const values = columns.filter((use) => valueRoles.has(use.role));
+  const channels = values.map((use): StrandChannel => ({
+    role: use.role as IntervalRole,
+    measure: use.measure ?? unitMeaning(use.unit ?? '')?.measure ?? 'energy',
+    name: use.name,
+    values: readFigures(plan, rows, use.index, factorOf(use), extraction),
+  }));
+  const marks = readMarks(grid, rows, columnOf(columns, 'quality'), extraction);
+  const whole: Strand = {
+    walls: stamps.walls,
+    offsets: stamps.offsets,
+    spans: stamps.spans,
+    rows,
+    channels,
+    quality: marks,
+    isTurned: false,
+  };
+  const strands = explained ? splitChannels(plan, whole, explained, extraction) : [whole];
+  extraction.strands = strands.map((strand) => (runsBackwards(strand.walls) ? turnStrand(strand) : strand));
+  return extraction;
+}
+
+/** What a figure of the column is multiplied by to give kWh, kvarh or kVAh. */
+export function factorOf(use: ColumnUse, unit: UnitMeaning | null = unitMeaning(use.unit ?? '')): number {
+  return (unit?.factor ?? 1) * (use.factor ?? 1);
+}
+
+/** Figures of a column over rows; words that are no blank are collected. */
+function readFigures(
+  plan: ColumnPlan,
+  rows: Uint32Array,
+  column: number,
+  factor: number,
+  extraction: Extraction,
+): Float64Array {
+  const { grid, decimalMark } = plan;
+  const figures = new Float64Array(rows.length);
+  for (let at = 0; at < rows.length; at += 1) {
+    const row = rows[at] ?? 0;
+    const figure = grid.number(row, column, decimalMark);
+    figures[at] = factor === 1 ? figure : figure * factor;
+    if (Number.isNaN(figure)) collectBad(grid, row, column, extraction);
+  }
+  return figures;
+}
+
+/** Keeps the place of a cell that is neither figure nor blank. */
+export function collectBad(grid: Grid, row: number, column: number, extraction: Extraction): void {
+  const text = grid.text(row, column);
+  if (!isBlankWord(text)) extraction.badValues.push({ place: cellPlace(grid, row, column), text });
+}
+
+/** Quality of every row; marks nobody knows count as measured, with a note. */
+export function readMarks(grid: Grid, rows: Uint32Array, column: number, extraction: Extraction): Uint8Array | null {
+  if (column < 0) return null;
+  const known = new Map<string, number>();
+  const strange = new Set<string>();
+  const marks = new Uint8Array(rows.length);
+  for (let at = 0; at < rows.length; at += 1) {
+    const text = grid.text(rows[at] ?? 0, column);
+    let grade = known.get(text);
+    if (grade === undefined) {
+      const found = qualityOf(text);
+      if (found === null) strange.add(text);
+      grade = found ?? grades.measured;
+      known.set(text, grade);
+    }
+    marks[at] = grade;
+  }
+  if (strange.size > 0) {
+    extraction.notes.push({
+      code: 'quality-unknown',
+      message: `Marks of quality that are not known are read as measured: ${[...strange].slice(0, 8).join(', ')}.`,
+    });
+  }
+  return marks;
+}
+
+/** Quantity, unit and factor of a row that names them. */
+export interface RowChannel {
+  role: IntervalRole;
+  measure: StrandChannel['measure'];
+  factor: number;
+  name: string;
+}
+
+/** A reader of the channel a row belongs to, by its channel and unit columns; null for rows of other quantities. */
+export function rowChannelReader(plan: ColumnPlan, extraction: Extraction): (row: number) => RowChannel | null {
+  const { grid, columns } = plan;
+  const channelColumn = columnOf(columns, 'channel');
+  const unitColumn = columnOf(columns, 'unit');
+  const known = new Map<string, RowChannel | null>();
+  return (row) => {
+    const name = channelColumn < 0 ? '' : grid.text(row, channelColumn);
+    const unitText = unitColumn < 0 ? '' : grid.text(row, unitColumn);
+    const key = `${name}\n${unitText}`;
+    let found = known.get(key);
+    if (found === undefined) {
+      const unit = unitMeaning(unitText);
+      const meaning = channelMeaning(name === '' ? unitText : name, unit);
+      const role = meaning.role === 'reactive-signed' && !/signed|net/i.test(name) ? 'reactive-lagging' : meaning.role;
+      found =
+        valueRoles.has(role) && !(unitText !== '' && !unit)
+          ? { role, measure: meaning.measure, factor: (unit ?? meaning.unit)?.factor ?? 1, name: name || unitText }
+          : null;
+      if (!found)
+        extraction.notes.push({
+          code: 'channel-left-out',
+          message: `Rows of “${[name, unitText].filter((text) => text !== '').join(', ')}” hold no energy or power and are left out.`,
+        });
+      known.set(key, found);
+    }
+    return found;
+  };
+}
+
+/** A strand for each quantity that the rows of a stacked table name. */
+function splitChannels(plan: ColumnPlan, whole: Strand, value: ColumnUse, extraction: Extraction): Strand[] {
+  const channelOf = rowChannelReader(plan, extraction);
+  const groups = new Map<RowChannel, number[]>();
+  whole.rows.forEach((row, at) => {
+    const channel = channelOf(row);
+    if (!channel) return;
+    const group = groups.get(channel);
+    if (group) group.push(at);
+    else groups.set(channel, [at]);
+  });
+  return [...groups].map(([channel, positions]) => {
+    const rows = Uint32Array.from(positions, (at) => whole.rows[at] ?? 0);
+    const pick = (source: Float64Array | null): Float64Array | null =>
+      source && Float64Array.from(positions, (at) => source[at] ?? Number.NaN);
+    const values = readFigures(plan, rows, value.index, channel.factor * (value.factor ?? 1), extraction);
+    return {
+      walls: pick(whole.walls) ?? new Float64Array(),
+      offsets: pick(whole.offsets),
+      spans: pick(whole.spans),
+      rows,
+      channels: [{ role: channel.role, measure: channel.measure, name: channel.name, values }],
+      quality: whole.quality && Uint8Array.from(positions, (at) => whole.quality?.[at] ?? 0),
+      isTurned: false,
+    };
+  });
+}

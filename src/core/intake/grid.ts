@@ -1,0 +1,146 @@
+import { parseNumberAt, parseNumberText } from './numbers';
+import type { StampScanner } from './stamps';
+
+/** Most rows, columns and characters of a cell that a file may have. */
+export const gridCaps = { rows: 1_200_000, columns: 512, cellCharacters: 20_000 };
+
+/** A table of raw cells, whatever file it came from. Rows and columns count from 0; absent cells read as ''. */
+export interface Grid {
+  readonly rows: number;
+  /** Cells in one row, absent trailing ones not counted. */
+  width(row: number): number;
+  /** The cell as text, trimmed. */
+  text(row: number, column: number): string;
+  /** The cell as a number; NaN if it is blank or no number. */
+  number(row: number, column: number, decimalMark: '.' | ','): number;
+  /** Hands the cell to the scanner; false if it is blank or cannot be a date or time. */
+  scan(row: number, column: number, scanner: StampScanner): boolean;
+  /** Number of the row in the file as people see it, 1 is the first. */
+  rowNumber(row: number): number;
+}
+
+/** A grid over delimited text: cells are offsets into the text and are cut out only when asked for. */
+export class TextGrid implements Grid {
+  readonly rows: number;
+
+  constructor(
+    readonly source: string,
+    /** Beginning of every cell; the cell ends before the next one's beginning less one (its delimiter). */
+    private readonly cellStarts: Uint32Array,
+    /** First cell of every row, and one past the last cell of the last row. */
+    private readonly rowStarts: Uint32Array,
+    /** Line of the file each row begins on, or null if rows and lines agree. */
+    private readonly lines: Uint32Array | null,
+    private readonly rowEnds: Uint32Array,
+  ) {
+    this.rows = rowStarts.length - 1;
+  }
+
+  width(row: number): number {
+    const cells = (this.rowStarts[row + 1] ?? 0) - (this.rowStarts[row] ?? 0);
+    return cells === 1 && this.text(row, 0) === '' ? 0 : cells;
+  }
+
+  /** Beginning of a cell in the source, or -1 if the row has no such cell. */
+  start(row: number, column: number): number {
+    const cell = (this.rowStarts[row] ?? 0) + column;
+    return cell < (this.rowStarts[row + 1] ?? 0) ? (this.cellStarts[cell] ?? -1) : -1;
+  }
+
+  /** One past the last character of a cell that exists. */
+  end(row: number, column: number): number {
+    const next = (this.rowStarts[row] ?? 0) + column + 1;
+    return next < (this.rowStarts[row + 1] ?? 0) ? (this.cellStarts[next] ?? 0) - 1 : (this.rowEnds[row] ?? 0);
+  }
+
+  text(row: number, column: number): string {
+    const start = this.start(row, column);
+    if (start < 0) return '';
+    const cell = this.source.slice(start, this.end(row, column)).trim();
+    if (cell.startsWith('"') && cell.endsWith('"') && cell.length > 1) {
+      return cell.slice(1, -1).replaceAll('""', '"').trim();
+    }
+    // A formula that only protects leading noughts, ="0012", is the text inside.
+    const guarded = /^="(.*)"$/.exec(cell);
+    return guarded ? (guarded[1] ?? '') : cell;
+  }
+
+  number(row: number, column: number, decimalMark: '.' | ','): number {
+    const start = this.start(row, column);
+    if (start < 0) return Number.NaN;
+    const quick = parseNumberAt(this.source, start, this.end(row, column), decimalMark === ',' ? 44 : 46);
+    return Number.isNaN(quick) ? parseNumberText(this.text(row, column), decimalMark) : quick;
+  }
+
+  scan(row: number, column: number, scanner: StampScanner): boolean {
+    const start = this.start(row, column);
+    return start >= 0 && scanner.scan(this.source, start, this.end(row, column));
+  }
+
+  rowNumber(row: number): number {
+    return this.lines ? (this.lines[row] ?? row + 1) : row + 1;
+  }
+}
+
+/** A cell of a spreadsheet: text (dates already as ISO text), a number, or nothing. */
+export type Cell = string | number | null;
+
+/** A grid over the cells of a sheet. */
+export class CellGrid implements Grid {
+  readonly rows: number;
+
+  constructor(
+    private readonly cells: readonly (readonly Cell[])[],
+    private readonly firstRowNumber = 1,
+  ) {
+    this.rows = cells.length;
+  }
+
+  width(row: number): number {
+    const cells = this.cells[row] ?? [];
+    let width = cells.length;
+    while (width > 0 && (cells[width - 1] === null || cells[width - 1] === '')) width -= 1;
+    return width;
+  }
+
+  text(row: number, column: number): string {
+    const cell = this.cells[row]?.[column];
+    return cell === null || cell === undefined ? '' : String(cell).trim();
+  }
+
+  number(row: number, column: number, decimalMark: '.' | ','): number {
+    const cell = this.cells[row]?.[column];
+    if (typeof cell === 'number') return cell;
+    return typeof cell === 'string' ? parseNumberText(cell, decimalMark) : Number.NaN;
+  }
+
+  scan(row: number, column: number, scanner: StampScanner): boolean {
+    const text = this.text(row, column);
+    return text !== '' && scanner.scan(text, 0, text.length);
+  }
+
+  rowNumber(row: number): number {
+    return this.firstRowNumber + row;
+  }
+}
+
+/** Rows become columns: a table with a column a month read as one with a row a month. */
+export function transpose(grid: Grid): CellGrid {
+  let columns = 0;
+  for (let row = 0; row < grid.rows; row += 1) columns = Math.max(columns, grid.width(row));
+  const cells = Array.from({ length: columns }, (_, column) =>
+    Array.from({ length: grid.rows }, (_unused, row): Cell => grid.text(row, column)),
+  );
+  return new CellGrid(cells);
+}
+
+/** Spreadsheet letters of a column, 0 is A. */
+export function columnLetter(column: number): string {
+  const last = String.fromCharCode(65 + (column % 26));
+  return column < 26 ? last : columnLetter(Math.floor(column / 26) - 1) + last;
+}
+
+/** Place of a cell as people write it, such as `row 12, column C`. */
+export function cellPlace(grid: Grid, row: number, column: number): string {
+  return `row ${grid.rowNumber(row)}, column ${columnLetter(column)}`;
+}

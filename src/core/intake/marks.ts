@@ -1,0 +1,117 @@
+import { guess, type Test } from './evidence';
+import type { Guess, StampStyle } from './types';
+
+/** Length of an interval and which end of it the stamps name. */
+export interface MarkFinding {
+  marks: NonNullable<StampStyle['marks']>;
+  guess: Guess;
+}
+
+const clockTime = (wall: number): string => {
+  const minute = ((wall % 1440) + 1440) % 1440;
+  return `${String(Math.floor(minute / 60)).padStart(2, '0')}:${String(Math.floor(minute % 60)).padStart(2, '0')}`;
+};
+
+/** Most frequent step between neighbouring stamps and the share of steps that are of that length. */
+export function findStep(walls: Float64Array): { stepMinutes: number; share: number; others: number[] } {
+  const counts = new Map<number, number>();
+  let total = 0;
+  const stride = Math.max(1, Math.floor(walls.length / 20_000));
+  for (let at = 1; at < walls.length; at += stride) {
+    const step = (walls[at] ?? Number.NaN) - (walls[at - 1] ?? Number.NaN);
+    if (!(step > 0 && step <= 1440)) continue;
+    counts.set(step, (counts.get(step) ?? 0) + 1);
+    total += 1;
+  }
+  const ranked = [...counts].sort((a, b) => b[1] - a[1] || a[0] - b[0]);
+  const [best] = ranked;
+  if (!best) return { stepMinutes: Number.NaN, share: 0, others: [] };
+  return {
+    stepMinutes: best[0],
+    share: best[1] / total,
+    others: ranked
+      .slice(1)
+      .filter(([, count]) => count > total * 0.02)
+      .map(([step]) => step),
+  };
+}
+
+/**
+ * Whether stamps name the beginning or the end of their intervals. A midnight that follows the last stamp of the same date
+ * closes that date (`own-day-end`); otherwise the first and last stamps of the file, or the names of the columns, tell.
+ */
+export function findMarks(
+  walls: Float64Array,
+  stepMinutes: number,
+  hint: StampStyle['marks'],
+  isGiven: boolean,
+): MarkFinding {
+  const first = walls[0] ?? Number.NaN;
+  const last = walls[walls.length - 1] ?? Number.NaN;
+  const { ownDay, nextDay } = countMidnights(walls, stepMinutes);
+  if (isGiven && hint)
+    return { marks: hint, guess: guess('marks', marksInWords(hint), [[true, 'Given by the column map']]) };
+  const span = `first stamp ${clockTime(first)}, last ${clockTime(last)}`;
+  if (ownDay > nextDay) {
+    const tests: Test[] = [
+      [true, `${ownDay} midnights follow the last stamp of the same date: they close that day`],
+      [nextDay === 0, nextDay === 0 ? 'no midnight opens a day' : `${nextDay} midnights open a day`],
+      [clockTime(first) === clockTime(stepMinutes), span],
+    ];
+    return { marks: 'own-day-end', guess: guess('marks', marksInWords('own-day-end'), tests) };
+  }
+  const opensAtStep = clockTime(first) === clockTime(stepMinutes);
+  const closesAtMidnight = clockTime(last) === '00:00';
+  const opensAtMidnight = clockTime(first) === '00:00';
+  const closesBefore = clockTime(last) === clockTime(1440 - stepMinutes);
+  const endTests: Test[] = [
+    [opensAtStep, span],
+    [closesAtMidnight, 'the last stamp is midnight'],
+  ];
+  const beginTests: Test[] = [
+    [opensAtMidnight, span],
+    [closesBefore, `the last stamp is ${clockTime(1440 - stepMinutes)}`],
+  ];
+  const score = (tests: Test[]): number => tests.filter(([isMet]) => isMet).length;
+  const fromName = hint === 'end' || hint === 'begin' ? hint : null;
+  const marks = fromName ?? (score(endTests) > score(beginTests) ? 'end' : 'begin');
+  const own = marks === 'end' ? endTests : beginTests;
+  const named: Test[] = fromName
+    ? [[true, `The column is named as ${fromName === 'end' ? 'the end' : 'the beginning'} of the interval`]]
+    : [];
+  // A name settles it; a file need not open or close at midnight.
+  const tests = fromName ? named : own;
+  return {
+    marks,
+    guess: { ...guess('marks', marksInWords(marks), tests), ...(fromName || score(own) === 2 ? {} : { sure: false }) },
+  };
+}
+
+/** Marks in words. */
+export function marksInWords(marks: NonNullable<StampStyle['marks']>): string {
+  if (marks === 'begin') return 'beginning of interval';
+  return marks === 'end' ? 'end of interval' : 'end of interval, midnight dated by the day it closes';
+}
+
+function countMidnights(walls: Float64Array, stepMinutes: number): { ownDay: number; nextDay: number } {
+  let ownDay = 0;
+  let nextDay = 0;
+  for (let at = 1; at < walls.length; at += 1) {
+    const wall = walls[at] ?? Number.NaN;
+    if (wall % 1440 !== 0) continue;
+    const step = wall - (walls[at - 1] ?? Number.NaN);
+    if (step === stepMinutes) nextDay += 1;
+    else if (step === stepMinutes - 1440) ownDay += 1;
+  }
+  return { ownDay, nextDay };
+}
+
+/** Wall-clock minutes of the beginnings of the intervals. */
+export function beginnings(
+  walls: Float64Array,
+  stepMinutes: number,
+  marks: NonNullable<StampStyle['marks']>,
+): Float64Array {
+  if (marks === 'begin') return walls;
+  return walls.map((wall) => (marks === 'own-day-end' && wall % 1440 === 0 ? wall + 1440 : wall) - stepMinutes);
+}

@@ -1,0 +1,401 @@
+import { quality as grades, type LoadSeries } from '../load';
+import { intakeError } from './errors';
+import type { Grid } from './grid';
+import type { Strand, StrandChannel } from './strand';
+import type { Timeline } from './timeline';
+import type { IntakeNote, IntervalRole } from './types';
+
+const mostIntervals = 1_200_000;
+
+/** A strand with its place in time. */
+export interface PlacedStrand {
+  strand: Strand;
+  timeline: Timeline;
+}
+
+/** Channels on one regular grid of time, before they become a load. */
+export interface GriddedChannels {
+  startMs: number;
+  stepMinutes: number;
+  length: number;
+  /** Figures by role, kWh, kvarh, kVAh or a ratio per interval; NaN where missing. */
+  channels: Map<IntervalRole, Float64Array>;
+  quality: Uint8Array;
+  duplicates: number;
+  notes: IntakeNote[];
+}
+
+/**
+ * Lays strands on one regular grid. The first reading of an interval is kept, later ones are duplicates; readings off the
+ * grid are left out.
+ * @throws {IntakeError} if many readings are off the grid, strands differ in step, or the span is out of proportion.
+ */
+export function gridChannels(placed: readonly PlacedStrand[], grid: Grid, fileName: string): GriddedChannels {
+  const stepMinutes = placed[0]?.timeline.stepMinutes ?? Number.NaN;
+  const other = placed.find(({ timeline }) => timeline.stepMinutes !== stepMinutes);
+  if (other) {
+    throw intakeError(
+      `The file holds readings of ${stepMinutes} and of ${other.timeline.stepMinutes} minutes.`,
+      `${fileName}, ${other.strand.channels[0]?.name ?? ''}`,
+      'Export each length of interval into its own file.',
+    );
+  }
+  const phase = phaseOf(placed, stepMinutes);
+  let least = Infinity;
+  let most = -Infinity;
+  let readings = 0;
+  const offGrid: number[] = [];
+  for (const { strand, timeline } of placed) {
+    timeline.utc.forEach((minute, at) => {
+      if (Number.isNaN(minute)) return;
+      readings += 1;
+      if ((minute - phase) % stepMinutes !== 0) return void offGrid.push(strand.rows[at] ?? 0);
+      if (minute < least) least = minute;
+      if (minute > most) most = minute;
+    });
+  }
+  const length = (most - least) / stepMinutes + 1;
+  checkSpan({ readings, length, offGrid, least, most, grid, fileName, stepMinutes });
+  const notes: IntakeNote[] = [];
+  if (offGrid.length > 0) {
+    notes.push({
+      code: 'off-grid',
+      message: `${offGrid.length} readings do not lie on the ${stepMinutes}-minute grid and are left out.`,
+      where: rowsInWords(grid, offGrid),
+    });
+  }
+  const gridded: GriddedChannels = {
+    startMs: least * 60_000,
+    stepMinutes,
+    length,
+    channels: new Map(),
+    quality: new Uint8Array(length),
+    duplicates: 0,
+    notes,
+  };
+  const differing: number[] = [];
+  for (const one of placed) layStrand(one, least, phase, gridded, differing);
+  if (differing.length > 0) {
+    notes.push({
+      code: 'duplicates-differ',
+      message: `${differing.length} repeated readings differ from the first of their interval; the first is kept.`,
+      where: rowsInWords(grid, differing),
+    });
+  }
+  return gridded;
+}
+
+/** Rows in words, at most six of them. */
+export function rowsInWords(grid: Grid, rows: readonly number[]): string {
+  const shown = rows.slice(0, 6).map((row) => grid.rowNumber(row));
+  return `${rows.length === 1 ? 'row' : 'rows'} ${shown.join(', ')}${rows.length > 6 ? ' …' : ''}`;
+}
+
+function phaseOf(placed: readonly PlacedStrand[], stepMinutes: number): number {
+  const counts = new Map<number, number>();
+  for (const { timeline } of placed) {
+    for (let at = 0; at < timeline.utc.length; at += 1) {
+      const phase = (timeline.utc[at] ?? Number.NaN) % stepMinutes;
+      if (!Number.isNaN(phase)) counts.set(phase, (counts.get(phase) ?? 0) + 1);
+    }
+  }
+  const [best] = [...counts].sort((a, b) => b[1] - a[1]);
+  return best?.[0] ?? 0;
+}
+
+function checkSpan(span: {
+  readings: number;
+  length: number;
+  offGrid: number[];
+  least: number;
+  most: number;
+  grid: Grid;
+  fileName: string;
+  stepMinutes: number;
+}): void {
+  const { readings, length, offGrid, grid, fileName } = span;
+  if (!Number.isFinite(length) || readings === 0) {
+    throw intakeError(
+      'No reading could be placed in time.',
+      fileName,
+      'Check the columns of date and time in the column map.',
+    );
+  }
+  if (offGrid.length > Math.max(4, readings * 0.005)) {
+    throw intakeError(
+      `${offGrid.length} of ${readings} readings do not lie on a regular ${span.stepMinutes}-minute grid.`,
+      `${fileName}, ${rowsInWords(grid, offGrid)}`,
+      'Bring in a regular export, or split the file where the length of its intervals changes.',
+    );
+  }
+  const years = (day: number): string => new Date(day * 60_000).toISOString().slice(0, 10);
+  if (length > mostIntervals || (length > 5000 && length > readings * 20)) {
+    throw intakeError(
+      `The stamps run from ${years(span.least)} to ${years(span.most)}, but only ${readings} of ${length} intervals have a reading.`,
+      fileName,
+      'Check the order of day, month and year in the column map, and rows with a wrong year.',
+    );
+  }
+}
+
+function layStrand(
+  placed: PlacedStrand,
+  leastMinute: number,
+  phase: number,
+  gridded: GriddedChannels,
+  differing: number[],
+): void {
+  const { strand, timeline } = placed;
+  const { stepMinutes, length } = gridded;
+  const channels = strand.channels.map((channel) => ({
+    channel,
+    figures: new Float64Array(length).fill(Number.NaN),
+    factor: channel.measure === 'power' && channel.role !== 'power-factor' ? stepMinutes / 60 : 1,
+  }));
+  const isFilled = new Uint8Array(length);
+  const count = strand.rows.length;
+  for (let turn = 0; turn < count; turn += 1) {
+    // A file that runs backwards was turned round; the first reading of the file still wins.
+    const at = strand.isTurned ? count - 1 - turn : turn;
+    const minute = timeline.utc[at] ?? Number.NaN;
+    if (Number.isNaN(minute) || (minute - phase) % stepMinutes !== 0) continue;
+    const slot = (minute - leastMinute) / stepMinutes;
+    const mark = strand.quality?.[at] ?? grades.measured;
+    const hasFigure =
+      mark !== grades.missing && channels.some(({ channel }) => !Number.isNaN(channel.values[at] ?? Number.NaN));
+    if (isFilled[slot] === 1) {
+      if (!hasFigure) continue;
+      gridded.duplicates += 1;
+      if (
+        channels.some(({ channel, figures, factor }) =>
+          differs(figures[slot], (channel.values[at] ?? Number.NaN) * factor),
+        )
+      )
+        differing.push(strand.rows[at] ?? 0);
+      continue;
+    }
+    if (!hasFigure) continue;
+    isFilled[slot] = 1;
+    if (mark === grades.estimated) gridded.quality[slot] = grades.estimated;
+    for (const { channel, figures, factor } of channels) figures[slot] = (channel.values[at] ?? Number.NaN) * factor;
+  }
+  for (const { channel, figures } of channels) addChannel(gridded, channel, figures);
+}
+
+function differs(kept: number | undefined, other: number): boolean {
+  return (
+    (kept !== undefined &&
+      !(Number.isNaN(kept) && Number.isNaN(other)) &&
+      Math.abs(kept - other) > 1e-9 * Math.max(1, Math.abs(kept))) ||
+    Number.isNaN(kept ?? 0) !== Number.isNaN(other)
+  );
+}
+
+/** Several registers of one direction are added. */
+function addChannel(gridded: GriddedChannels, channel: StrandChannel, figures: Float64Array): void {
+  const own = gridded.channels.get(channel.role);
+  if (!own) return void gridded.channels.set(channel.role, figures);
+  for (let slot = 0; slot < own.length; slot += 1)
+    own[slot] = (own[slot] ?? Number.NaN) + (figures[slot] ?? Number.NaN);
+}
+
+/** Register readings become the energy between them: one interval fewer than readings. */
+export function differenceRegisters(gridded: GriddedChannels): GriddedChannels {
+  const length = Math.max(0, gridded.length - 1);
+  const notes = [
+    ...gridded.notes,
+    {
+      code: 'register-differences',
+      message: 'The figures are register readings: each interval is the difference of two of them.',
+    },
+  ];
+  const channels = new Map<IntervalRole, Float64Array>();
+  let falls = 0;
+  for (const [role, readings] of gridded.channels) {
+    const size = 10 ** Math.ceil(Math.log10(readings.reduce((most, figure) => (figure > most ? figure : most), 1) + 1));
+    const energy = new Float64Array(length);
+    for (let slot = 0; slot < length; slot += 1) {
+      const before = readings[slot] ?? Number.NaN;
+      const step = (readings[slot + 1] ?? Number.NaN) - before;
+      const isRollover = step < 0 && before > size * 0.95 && before + step < size * 0.05;
+      if (step < 0) falls += 1;
+      energy[slot] = step >= 0 ? step : isRollover ? step + size : Number.NaN;
+    }
+    channels.set(role, energy);
+  }
+  if (falls > 0)
+    notes.push({
+      code: 'register-falls',
+      message: `A register falls ${falls} ${falls === 1 ? 'time' : 'times'}: a roll-over is carried on, a reset leaves its interval missing.`,
+    });
+  return { ...gridded, length, channels, quality: gridded.quality.slice(1), notes };
+}
+
+/** The load of gridded channels, with notes on what was assumed about reactive energy and export. */
+export function loadOf(gridded: GriddedChannels): { load: LoadSeries; notes: IntakeNote[]; negative: number } {
+  const { length } = gridded;
+  const notes: IntakeNote[] = [...gridded.notes];
+  const channels = withoutEmpty(gridded.channels, notes);
+  const absent = (): Float64Array => new Float64Array(length).fill(Number.NaN);
+  const drawn = channels.get('active');
+  const { kwh, negative, exported } = withoutExport(drawn ?? absent());
+  const exportKwh = exported + sumOf(channels.get('export'));
+  if (negative > 0 || channels.has('export')) {
+    notes.push({
+      code: 'export-left-out',
+      message: `${round(exportKwh)} kWh delivered to the grid are neither netted nor kept.`,
+    });
+  }
+  const reactive = reactiveOf(channels, kwh, notes);
+  const carried = [...channels].filter(([role]) => role !== 'export').map(([, figures]) => figures);
+  const quality = gridded.quality.slice();
+  const lagging = reactive.lagging ?? absent();
+  const leading = reactive.leading ?? absent();
+  for (let slot = 0; slot < length; slot += 1) {
+    if (!carried.some((figures) => Number.isNaN(figures[slot] ?? Number.NaN))) continue;
+    quality[slot] = grades.missing;
+    kwh[slot] = lagging[slot] = leading[slot] = Number.NaN;
+  }
+  const missing = [
+    drawn ? '' : 'kWh',
+    reactive.lagging ? '' : 'lagging kvarh',
+    reactive.leading ? '' : 'leading kvarh',
+  ].filter((name) => name !== '');
+  for (const name of missing) notes.push({ code: 'channel-absent', message: `The file carries no ${name}.` });
+  return {
+    load: {
+      startMs: gridded.startMs,
+      stepMinutes: gridded.stepMinutes,
+      kwh,
+      kvarhLagging: lagging,
+      kvarhLeading: leading,
+      quality,
+    },
+    notes,
+    negative,
+  };
+}
+
+/** A channel without a single figure is absent, not missing throughout. */
+function withoutEmpty(
+  channels: ReadonlyMap<IntervalRole, Float64Array>,
+  notes: IntakeNote[],
+): Map<IntervalRole, Float64Array> {
+  const filled = [...channels].filter(([, figures]) => figures.some((figure) => !Number.isNaN(figure)));
+  const empty = [...channels.keys()].filter((role) => !filled.some(([other]) => other === role));
+  if (empty.length > 0)
+    notes.push({
+      code: 'channel-empty',
+      message: `Columns without a single figure are left out: ${empty.join(', ')}.`,
+    });
+  return new Map(filled);
+}
+
+const sumOf = (figures: Float64Array | undefined): number =>
+  figures?.reduce((sum, figure) => (Number.isNaN(figure) ? sum : sum + Math.abs(figure)), 0) ?? 0;
+const round = (figure: number): number => Math.round(figure * 1000) / 1000;
+
+function withoutExport(net: Float64Array): { kwh: Float64Array; negative: number; exported: number } {
+  let negative = 0;
+  let exported = 0;
+  const kwh = net.map((figure) => {
+    if (!(figure < 0)) return figure;
+    negative += 1;
+    exported -= figure;
+    return 0;
+  });
+  return { kwh, negative, exported };
+}
+
+interface Reactive {
+  lagging: Float64Array | null;
+  leading: Float64Array | null;
+}
+
+function reactiveOf(
+  channels: ReadonlyMap<IntervalRole, Float64Array>,
+  kwh: Float64Array,
+  notes: IntakeNote[],
+): Reactive {
+  const signed = channels.get('reactive-signed');
+  const lagging = channels.get('reactive-lagging');
+  const leading = channels.get('reactive-leading');
+  if (signed) {
+    notes.push({
+      code: 'reactive-signed',
+      message: 'Reactive energy is one signed column: positive is read as lagging, negative as leading.',
+    });
+    return splitSigned(signed);
+  }
+  if (lagging && !leading) {
+    if (!lagging.some((figure) => figure < 0)) return { lagging, leading: null };
+    notes.push({
+      code: 'reactive-signed',
+      message: 'The lagging column holds negative figures and there is no leading one: negative is read as leading.',
+    });
+    return splitSigned(lagging);
+  }
+  if (lagging || leading) return keepSigns(lagging ?? null, leading ?? null, notes);
+  const apparent = channels.get('apparent');
+  const factor = channels.get('power-factor');
+  if (!apparent && !factor) return { lagging: null, leading: null };
+  notes.push({
+    code: 'reactive-derived',
+    message: `kvarh are worked out from ${apparent ? 'apparent energy' : 'the power factor'} and taken as lagging: the file does not tell the sense.`,
+  });
+  return {
+    lagging: kwh.map((energy, slot) =>
+      apparent ? fromApparent(energy, apparent[slot]) : fromPowerFactor(energy, factor?.[slot]),
+    ),
+    leading: null,
+  };
+}
+
+function splitSigned(signed: Float64Array): Reactive {
+  return {
+    lagging: signed.map((figure) => (figure < 0 ? 0 : figure)),
+    leading: signed.map((figure) => (figure > 0 ? 0 : -figure || figure * 0)),
+  };
+}
+
+/** Registers of their own sense are never negative: a column of negative figures has lost its sign, a stray one belongs to the other. */
+function keepSigns(lagging: Float64Array | null, leading: Float64Array | null, notes: IntakeNote[]): Reactive {
+  const lag = lagging?.slice() ?? null;
+  let lead = leading?.slice() ?? null;
+  if (lead && lead.some((figure) => figure < 0) && !lead.some((figure) => figure > 0)) {
+    lead = lead.map((figure) => Math.abs(figure));
+    notes.push({ code: 'leading-sign', message: 'The leading column is printed negative: its size is kept.' });
+  }
+  let moved = 0;
+  const length = (lag ?? lead)?.length ?? 0;
+  for (let slot = 0; slot < length; slot += 1) {
+    for (const [own, other] of [
+      [lag, lead],
+      [lead, lag],
+    ] as const) {
+      const figure = own?.[slot] ?? 0;
+      if (!own || !(figure < 0)) continue;
+      own[slot] = 0;
+      if (other) other[slot] = (other[slot] ?? 0) - figure;
+      moved += 1;
+    }
+  }
+  if (moved > 0)
+    notes.push({
+      code: 'reactive-negative',
+      message: `${moved} negative reactive readings are counted in the opposite sense.`,
+    });
+  return { lagging: lag, leading: lead };
+}
+
+/** kvarh of an interval from its kVAh: the other side of the right triangle. */
+function fromApparent(kwh: number, kvah: number | undefined): number {
+  return Math.sqrt(Math.max(0, (kvah ?? Number.NaN) ** 2 - kwh ** 2));
+}
+
+/** kvarh of an interval from its mean power factor, a fraction or per cent. */
+function fromPowerFactor(kwh: number, printed: number | undefined): number {
+  const size = Math.abs(printed ?? Number.NaN);
+  const factor = size > 1.5 ? size / 100 : size;
+  return kwh === 0 ? 0 : factor > 0 && factor <= 1 ? kwh * Math.tan(Math.acos(factor)) : Number.NaN;
+}

@@ -1,0 +1,139 @@
+import * as XLSX from 'xlsx';
+import { intakeError } from './errors';
+import { CellGrid, gridCaps, type Cell } from './grid';
+import { checkZip } from './zip-caps';
+
+interface SheetCell {
+  t: string;
+  v?: unknown;
+  w?: string;
+  z?: unknown;
+}
+
+/** A sheet opened as a grid, its name and the names of all sheets. */
+export interface OpenedSheet {
+  grid: CellGrid;
+  sheet: string;
+  sheets: string[];
+}
+
+/** Rows of a sheet that are read; a year of five-minute readings has 105,120. */
+export const sheetRowCap = 250_000;
+
+/**
+ * Opens a workbook (.xlsx, .xls, .ods). Dates are taken from raw serials by whole seconds, never from Date objects, so
+ * that no zone of the machine enters. Formulas are not run: their kept values are read.
+ * @throws {IntakeError} if the workbook is damaged, locked, too large or lacks the sheet asked for.
+ */
+export function openWorkbook(bytes: Uint8Array, fileName: string, wanted?: string): OpenedSheet {
+  if (bytes[0] === 0x50) checkZip(bytes, fileName);
+  const workbook = parse(bytes, fileName);
+  const sheets = workbook.SheetNames;
+  const is1904 = workbook.Workbook?.WBProps?.date1904 === true;
+  if (wanted !== undefined && !sheets.includes(wanted)) {
+    throw intakeError(
+      `The workbook has no sheet “${wanted}”.`,
+      `${fileName}, sheets: ${sheets.join(', ')}`,
+      'Choose one of its sheets in the column map.',
+    );
+  }
+  const opened = (wanted === undefined ? sheets : [wanted]).map((sheet) => ({
+    sheet,
+    cells: cellsOf(workbook.Sheets[sheet], is1904, fileName),
+  }));
+  const [best] = opened.sort((a, b) => weightOf(b.cells) - weightOf(a.cells));
+  if (!best || weightOf(best.cells) === 0)
+    throw intakeError(
+      'The workbook holds no cell.',
+      fileName,
+      'Check that the right file was saved, then bring it in again.',
+    );
+  return { grid: new CellGrid(best.cells), sheet: best.sheet, sheets };
+}
+
+function parse(bytes: Uint8Array, fileName: string): XLSX.WorkBook {
+  try {
+    const workbook = XLSX.read(bytes, {
+      type: 'array',
+      dense: true,
+      cellFormula: false,
+      cellHTML: false,
+      cellText: false,
+      cellNF: true,
+      sheetRows: sheetRowCap,
+    });
+    if (workbook.SheetNames.length === 0) throw new Error('no sheet');
+    return workbook;
+  } catch (cause) {
+    const isLocked = cause instanceof Error && /password|encrypt/i.test(cause.message);
+    throw intakeError(
+      isLocked
+        ? 'The workbook is locked by a password.'
+        : 'The workbook is damaged or cut off: its parts cannot be read.',
+      fileName,
+      isLocked
+        ? 'Save it without a password and bring it in again.'
+        : 'Open it in a spreadsheet program, save it again, and bring in the new file.',
+    );
+  }
+}
+
+/** Rows with two cells or more: the sheet with the most of them holds the table. */
+function weightOf(cells: Cell[][]): number {
+  let rows = 0;
+  for (const row of cells)
+    if (row.reduce<number>((count, cell) => count + (cell === null || cell === '' ? 0 : 1), 0) > 1) rows += 1;
+  return rows;
+}
+
+function cellsOf(sheet: XLSX.WorkSheet | undefined, is1904: boolean, fileName: string): Cell[][] {
+  const rows = (Array.isArray(sheet) ? sheet : []) as (SheetCell | undefined)[][];
+  const cells: Cell[][] = [];
+  for (let row = 0; row < rows.length; row += 1) {
+    const source = rows[row] ?? [];
+    if (source.length > gridCaps.columns && source.slice(gridCaps.columns).some((cell) => cell?.v !== undefined)) {
+      throw intakeError(
+        `Row ${row + 1} has more than ${gridCaps.columns} cells.`,
+        fileName,
+        'Keep the table alone on its sheet and bring the file in again.',
+      );
+    }
+    cells.push(
+      Array.from({ length: Math.min(source.length, gridCaps.columns) }, (_, column) =>
+        plainCell(source[column], is1904),
+      ),
+    );
+  }
+  return cells;
+}
+
+function plainCell(cell: SheetCell | undefined, is1904: boolean): Cell {
+  if (!cell || cell.v === undefined || cell.v === null || cell.t === 'z') return null;
+  if (cell.t === 'e') return '#N/A';
+  if (cell.t === 'b') return cell.v === true ? 'true' : 'false';
+  if (typeof cell.v === 'number') {
+    if (typeof cell.z === 'string' && XLSX.SSF.is_date(cell.z))
+      return serialText(cell.v + (is1904 && cell.v >= 1 ? 1462 : 0), cell.z);
+    return cell.v;
+  }
+  return String(cell.v).slice(0, gridCaps.cellCharacters).trim();
+}
+
+const two = (figure: number): string => String(figure).padStart(2, '0');
+
+/** ISO text of a date serial of the 1900 system, by whole seconds; a time alone below one day. */
+export function serialText(serial: number, format: string): Cell {
+  if (/\[h+\]/i.test(format) && serial >= 1 && serial <= 1.0000001) return '24:00';
+  const seconds = Math.round(serial * 86_400);
+  const day = Math.floor(seconds / 86_400);
+  const rest = seconds - day * 86_400;
+  const time = `${two(Math.floor(rest / 3600))}:${two(Math.floor(rest / 60) % 60)}${rest % 60 === 0 ? '' : `:${two(rest % 60)}`}`;
+  if (serial < 0 || serial > 110_000) return serial;
+  const showsDay = /[dy]/i.test(format.replace(/\[[^\]]*\]|"[^"]*"/g, ''));
+  if (day === 0 && !showsDay) return time;
+  if (day === 1 && rest === 0 && !showsDay) return '24:00';
+  // Serial 60 is a day that never was; real tables begin long after it.
+  const date = new Date((day - 25_569) * 86_400_000).toISOString().slice(0, 10);
+  const showsTime = /h/i.test(format) || rest !== 0;
+  return showsTime ? `${date} ${time}` : date;
+}

@@ -1,0 +1,268 @@
+import type { LoadSeries } from '../load';
+
+/** How a file is to be read. */
+export interface ReadOptions {
+  /** Name as uploaded; used in messages only, never trusted for the format. */
+  fileName: string;
+  /** IANA zone of local stamps without offset, such as `America/Chicago`. */
+  timeZone: string;
+  /** A column map to follow; what it leaves out is detected. Omitted: detect everything. */
+  columnMap?: ColumnMap;
+}
+
+/** Container and dialect family a file was recognised as. */
+export type IntakeFormat = 'delimited' | 'spreadsheet' | 'espi' | 'nem12';
+
+/** One thing wrong with a file: what, where in it, and what to do. */
+export interface IntakeProblem {
+  message: string;
+  where: string;
+  remedy: string;
+}
+
+/** An assumption or repair, in words, with the rows it concerns. */
+export interface IntakeNote {
+  code: string;
+  message: string;
+  where?: string;
+}
+
+/** What a column of an interval file is taken for. */
+export type IntervalRole =
+  | 'stamp' // date and time in one column; begin or end by StampStyle.marks
+  | 'date' // date alone
+  | 'time' // time of day alone, beside a date column
+  | 'interval-number' // 1..24, 1..48, 1..96 within the day, beside a date column
+  | 'stamp-begin'
+  | 'stamp-end'
+  | 'day-value' // wide layout: the reading of one time of day
+  | 'meter' // names the meter of the row
+  | 'channel' // names the quantity of the row, one value column
+  | 'unit' // names the unit of the row
+  | 'value' // the value that `channel` or `unit` explains
+  | 'active' // energy drawn (or average power drawn, or its register)
+  | 'export' // energy delivered to the grid
+  | 'reactive-lagging'
+  | 'reactive-leading'
+  | 'reactive-signed' // positive is lagging
+  | 'apparent'
+  | 'power-factor'
+  | 'quality'
+  | 'ignore';
+
+/** What a column of a table of bills is taken for. */
+export type BillRole = 'period-from' | 'period-to' | 'month' | 'days' | 'quantity' | 'charge' | 'total' | 'ignore';
+
+/** What the figures of a column measure. */
+export type Measure = 'energy' | 'power' | 'register';
+
+/** What one column is taken for. */
+export interface ColumnUse {
+  /** Position in the file, 0 is the first. */
+  index: number;
+  /** Name in the header row; '' where the file has none. */
+  name: string;
+  role: IntervalRole | BillRole;
+  /** Unit of the figures: Wh, kWh, MWh, W, kW, MW, varh, kvarh, Mvarh, var, kvar, Mvar, VAh, kVAh, VA, kVA, %, or a currency code. */
+  unit?: string;
+  measure?: Measure;
+  /** Every figure is multiplied by this (a meter's multiplier that is not in the figures yet). */
+  factor?: number;
+  /** Bills: name of the quantity (kwh, kwhPeak, maxKw, billedKw, maxKva, kvarh, kvarhLeading, powerFactor ...). */
+  quantity?: string;
+  /** Wide layout: start of the reading, minutes after local midnight. */
+  minuteOfDay?: number;
+}
+
+/** Order of day, month and year; `serial` counts days since 1899-12-30, `epoch` seconds or ms since 1970. */
+export type DateOrder = 'DMY' | 'MDY' | 'YMD' | 'serial' | 'epoch';
+
+/** How the stamps are to be read. */
+export interface StampStyle {
+  order?: DateOrder;
+  /** `own-day-end`: as `end`, and the last interval of a day carries that day's own date with 00:00. */
+  marks?: 'begin' | 'end' | 'own-day-end';
+  /** `local`: wall clock with clock changes; `standard`: no summer time; `utc`; `offset`: each stamp carries its own. */
+  clock?: 'local' | 'standard' | 'utc' | 'offset';
+  stepMinutes?: number;
+}
+
+/**
+ * A way to read one kind of file. Plain JSON, every field but `kind` optional: what is there is followed, what is not is
+ * detected. The map a preview returns is complete and can be kept, corrected by a person and given again.
+ */
+export interface ColumnMap {
+  kind: 'intervals' | 'bills';
+  /** Name of the sheet of a workbook. */
+  sheet?: string;
+  delimiter?: string;
+  decimalMark?: '.' | ',';
+  /** Row of the file that holds the names, 1 is the first; null: the file has none. */
+  headerRow?: number | null;
+  /** First row of readings or bills, 1 is the first row of the file. */
+  firstRow?: number;
+  layout?: 'long' | 'wide' | 'transposed';
+  columns?: ColumnUse[];
+  stamp?: StampStyle;
+  /** The meter to keep where the file holds several. */
+  meter?: string;
+  /** Bills: whether the last day printed belongs to the period. */
+  periodEnds?: 'inclusive' | 'exclusive';
+}
+
+/** Stretch of missing intervals, half-open UTC. */
+export interface IntakeGap {
+  fromMs: number;
+  toMs: number;
+  intervals: number;
+}
+
+/** What reading a file found. */
+export interface IntakeReport {
+  format: IntakeFormat;
+  rowsRead: number;
+  intervals: number;
+  missing: number;
+  duplicates: number;
+  estimated: number;
+  firstMs: number;
+  lastMs: number;
+  totalKwh: number;
+  totalKvarhLagging: number;
+  totalKvarhLeading: number;
+  maxKw: number;
+  notes: IntakeNote[];
+  /** Intervals: every stretch of missing readings, in order. */
+  gaps?: IntakeGap[];
+  /** Intervals: the highest average power and the beginning of its interval. */
+  peak?: { ms: number; kw: number };
+  /** Intervals: rows of the file whose drawn energy is below nought. */
+  negative?: number;
+  stepMinutes?: number;
+  /** The complete map the file was read with. */
+  columnMap?: ColumnMap;
+  /** Bills: the row of the file each bill stands in, in the order of the bills. */
+  billRows?: number[];
+  /** Bills: the currency named in the file, as an ISO code, where one could be told. */
+  currency?: string;
+}
+
+/** A bill as printed. */
+export interface BillRecord {
+  period: { from: string; to: string };
+  quantities: Record<string, number>;
+  charges: { label: string; amount: number }[];
+  total: number | null;
+}
+
+/** How the bytes of a file were turned into cells. */
+export interface Dialect {
+  encoding?: string;
+  delimiter?: string;
+  decimalMark?: '.' | ',';
+  sheet?: string;
+  sheets?: string[];
+}
+
+/** One decision about the whole file and what speaks for it. */
+export interface Guess {
+  key:
+    | 'header-row'
+    | 'delimiter'
+    | 'decimal-mark'
+    | 'layout'
+    | 'date-order'
+    | 'marks'
+    | 'clock'
+    | 'step'
+    | 'period-ends'
+    | 'meter';
+  takenAs: string;
+  why: string;
+  testsMet: number;
+  testsTotal: number;
+  /** False: a person has to confirm it. */
+  sure: boolean;
+}
+
+/** What one column (or a run of like columns) is taken for, and what speaks for it. */
+export interface ColumnEvidence {
+  /** Position of the first column, 0 is the first in the file. */
+  index: number;
+  /** How many neighbouring columns this line speaks for; 1 but for the readings of a wide layout. */
+  span: number;
+  /** Spreadsheet letter of the first column. */
+  letter: string;
+  name: string;
+  /** Range or values met, as text, such as `375.9 to 1170.5` or `A, E`. */
+  values: string;
+  takenAs: IntervalRole | BillRole;
+  unit: string;
+  measure?: Measure;
+  quantity?: string;
+  why: string;
+  testsMet: number;
+  testsTotal: number;
+  sure: boolean;
+}
+
+/** A row of the file as shown to a person. */
+export interface PreviewRow {
+  /** Number of the row in the file, 1 is the first. */
+  number: number;
+  cells: string[];
+  isHeader: boolean;
+}
+
+interface Preview {
+  fileName: string;
+  format: IntakeFormat;
+  dialect: Dialect;
+  /** Rows of the file with anything in them. */
+  rowsInFile: number;
+  /** Number of the row with the names, null where there is none. */
+  headerRow: number | null;
+  /** Numbers of the first and last row of data. */
+  firstRow: number;
+  lastRow: number;
+  /** The first rows, at most twelve, all columns. */
+  rows: PreviewRow[];
+  /** Complete map: the one proposed, or the one given with what it left out. */
+  columnMap: ColumnMap;
+  /** True if a map was given and followed. */
+  mapApplied: boolean;
+  /** Equal for files of one shape, so that a map can be remembered and offered again. */
+  shape: string;
+  columns: ColumnEvidence[];
+  guesses: Guess[];
+  /** Why the file cannot be read with this map; empty if it can. */
+  problems: IntakeProblem[];
+  /** What reading with this map gives; null if it cannot be read. */
+  report: IntakeReport | null;
+}
+
+/** What the steps Read and Match show of an interval file. */
+export interface IntervalPreview extends Preview {
+  kind: 'intervals';
+  /** Meters met in the file, as named there. */
+  meters: string[];
+}
+
+/** What the steps Read and Match show of a table of bills. */
+export interface BillPreview extends Preview {
+  kind: 'bills';
+  /** The bills as they would be kept; empty if the table cannot be read. */
+  bills: BillRecord[];
+}
+
+/** Result of reading intervals. */
+export interface IntervalReading {
+  load: LoadSeries;
+  report: IntakeReport;
+}
+
+/** Result of reading a table of bills. */
+export interface BillReading {
+  bills: BillRecord[];
+  report: IntakeReport;
+}

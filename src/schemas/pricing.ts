@@ -1,29 +1,8 @@
-import type { BillingPeriod } from '../core/load';
+import type { BillLineView, BillView } from './bill';
 import type { PricedBill, PricedLine } from '../core/tariff';
 
 /** Whether bills are priced from the meter's intervals or from the quantities printed on them. */
 export type PricingRoute = 'intervals' | 'printed';
-
-/** A line charge as printed on a bill. */
-export interface BilledLine {
-  id: number;
-  label: string;
-  amountMinor: number;
-}
-
-/** A kept bill as the utility issued it. */
-export interface BilledBill {
-  id: number;
-  /** Month in which the period ends, the name people give the bill: "Aug 2025". */
-  name: string;
-  period: BillingPeriod;
-  quantities: Record<string, number>;
-  currency: string;
-  totalMinor: number | null;
-  sourceRow: string | null;
-  intakeId: number | null;
-  lines: BilledLine[];
-}
 
 /** How a printed line found its place: told by a person, by its label, by its group and order, or not at all. */
 export type MatchedBy = 'person' | 'label' | 'amount' | 'group' | 'none';
@@ -31,7 +10,7 @@ export type MatchedBy = 'person' | 'label' | 'amount' | 'group' | 'none';
 /** A line as priced beside what the bill says; either side may be missing. Differences are billed minus priced. */
 export interface LinePair {
   line: PricedLine | null;
-  billed: BilledLine[];
+  billed: BillLineView[];
   pricedMinor: number | null;
   billedMinor: number | null;
   differenceMinor: number;
@@ -40,7 +19,9 @@ export interface LinePair {
 
 /** One bill of the year, priced beside billed. */
 export interface ReconciledBill {
-  bill: BilledBill;
+  /** Month of the last day, the name people give a bill: "Aug 2025". */
+  name: string;
+  bill: BillView;
   priced: PricedBill;
   pricedMinor: number;
   /** Printed total, or the sum of the printed lines where no total is printed; null where neither is. */
@@ -59,6 +40,7 @@ export type FindingKind =
   | 'wrong-quantity'
   | 'bill-arithmetic'
   | 'line-not-in-schedule'
+  | 'line-not-billed'
   | 'unexplained';
 
 /** One explanation that was tried: how far it missed what was billed, in minor units; 0 fits to the cent. */

@@ -1,11 +1,12 @@
 import type { PricedLine } from '../../core/tariff';
-import type { BilledLine, MatchedBy } from '../../schemas/pricing';
+import type { BillLineView } from '../../schemas/bill';
+import type { MatchedBy } from '../../schemas/pricing';
 import { noLine } from '../../schemas/tariff';
 
 /** A line of the schedule with the printed lines that belong to it; either side may be missing. */
 export interface Match {
   line: PricedLine | null;
-  billed: BilledLine[];
+  billed: BillLineView[];
   matchedBy: MatchedBy;
 }
 
@@ -63,11 +64,11 @@ const similarityTo = (label: string, line: PricedLine) => {
 /** The matching as it grows: what is still free on both sides, and what belongs together. */
 class Matching {
   readonly matches: Map<string, Match>;
-  free: BilledLine[];
+  free: BillLineView[];
 
   constructor(
     readonly lines: PricedLine[],
-    billed: BilledLine[],
+    billed: BillLineView[],
   ) {
     this.matches = new Map(lines.map((line) => [line.id, { line, billed: [], matchedBy: 'none' }]));
     this.free = [...billed];
@@ -77,7 +78,7 @@ class Matching {
     return this.lines.filter((line) => this.matches.get(line.id)!.billed.length === 0);
   }
 
-  join(line: PricedLine, billed: BilledLine, matchedBy: MatchedBy): void {
+  join(line: PricedLine, billed: BillLineView, matchedBy: MatchedBy): void {
     const match = this.matches.get(line.id)!;
     match.billed.push(billed);
     match.matchedBy = matchedBy;
@@ -85,8 +86,8 @@ class Matching {
   }
 }
 
-function byPerson(matching: Matching, remembered: Record<string, string>): BilledLine[] {
-  const apart: BilledLine[] = [];
+function byPerson(matching: Matching, remembered: Record<string, string>): BillLineView[] {
+  const apart: BillLineView[] = [];
   for (const billed of [...matching.free]) {
     const told = Object.hasOwn(remembered, billed.label) ? remembered[billed.label] : undefined;
     const line = matching.lines.find((one) => one.id === told);
@@ -134,7 +135,7 @@ function byGroup(matching: Matching): void {
  */
 export function matchLines(
   lines: PricedLine[],
-  billed: BilledLine[],
+  billed: BillLineView[],
   remembered: Record<string, string>,
   minorOf: (line: PricedLine) => number,
 ): Match[] {

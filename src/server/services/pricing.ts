@@ -1,16 +1,17 @@
 import { localDateStartMs, type BillingPeriod, type LoadSeries } from '../../core/load';
-import { priceBills, priceQuantities, readSchedule, ScheduleError } from '../../core/tariff';
-import type { PricedBill, PriceOptions, Schedule } from '../../core/tariff';
-import type { BilledBill, PricedYear, PricingRoute } from '../../schemas/pricing';
+import { PriceError, priceBills, priceQuantities, readSchedule, ScheduleError } from '../../core/tariff';
+import type { PricedBill, Schedule } from '../../core/tariff';
+import type { BillView } from '../../schemas/bill';
+import type { PricedYear, PricingRoute } from '../../schemas/pricing';
 import { conflict, ServiceError } from '../errors';
-import { Bill } from '../models/Bill';
-import { BillLine } from '../models/BillLine';
 import { ReadingBlock } from '../models/ReadingBlock';
 import { TariffChoice } from '../models/TariffChoice';
-import { presentBilledBill } from '../presenters/pricing';
+import { billName } from '../presenters/pricing';
+import { listBills } from './bills';
 import type { OpenEngagement } from './engagements';
 import { keptSpans, loadSeries } from './readings';
 import { reconcileYear } from './reconcile';
+import { digestOf } from './schedules';
 
 /** A regular grid of intervals from the first period's beginning to the last one's end. */
 export interface PricingGrid {
@@ -30,7 +31,7 @@ export interface PricingBasis {
   history: Record<string, number[]> | undefined;
   /** Per period: what the bill itself must say, since no meter measures it. */
   given: Record<string, number>[];
-  bills: BilledBill[];
+  bills: BillView[];
   load: LoadSeries | null;
   grid: PricingGrid | null;
   /** Changes whenever bills, readings or the choice change; key of anything worked out from them. */
@@ -84,22 +85,37 @@ export async function pricingBasis(opened: OpenEngagement): Promise<PricingBasis
  */
 export async function pricedYear(opened: OpenEngagement): Promise<PricedYear> {
   const entry = await cachedEntry(opened);
-  entry.year ??= reconcileYear(entry.basis, priceBasis(entry.basis));
+  const { basis } = entry;
+  entry.year ??= reconcileYear(basis, priceBasis(basis), (schedule) => priceOn(basis, schedule));
   return entry.year;
 }
 
-/** Prices a basis by its route, optionally on another schedule. */
-export function priceBasis(basis: PricingBasis, schedule: Schedule = basis.schedule): PricedBill[] {
-  const { periods, contract, history, given } = basis;
-  const options: PriceOptions = { periods, contract, given, ...(history ? { history } : {}) };
+/** How many findings the year has. @throws {ServiceError} 409 like {@link pricedYear} */
+export async function findingsCount(opened: OpenEngagement): Promise<number> {
+  return (await pricedYear(opened)).findings.length;
+}
+
+/**
+ * Prices a basis by its route.
+ *
+ * @throws {ServiceError} 409 with the core's words where a bill cannot be priced
+ */
+export function priceBasis(basis: PricingBasis): PricedBill[] {
   try {
-    if (basis.load) return priceBills(schedule, basis.load, options);
-    const rows = basis.bills.map((bill) => ({ ...bill.period, quantities: bill.quantities }));
-    return priceQuantities(schedule, rows, { contract, given, ...(history ? { history } : {}) });
+    return priceOn(basis, basis.schedule);
   } catch (error) {
-    if (!(error instanceof Error) || error instanceof RangeError || error instanceof TypeError) throw error;
+    if (!(error instanceof PriceError)) throw error;
     throw conflict(`The bills cannot be priced: ${error.message}`, { station: 'tariff' });
   }
+}
+
+/** Prices a basis on any schedule. @throws {PriceError} */
+function priceOn(basis: PricingBasis, schedule: Schedule): PricedBill[] {
+  const { periods, contract, history, given, load } = basis;
+  const told = { contract, given, ...(history ? { history } : {}) };
+  if (load) return priceBills(schedule, load, { periods, ...told });
+  const rows = basis.bills.map((bill) => ({ from: bill.from, to: bill.to, quantities: knownTo(schedule, bill) }));
+  return priceQuantities(schedule, rows, told);
 }
 
 async function cachedEntry(opened: OpenEngagement): Promise<CacheEntry> {
@@ -123,54 +139,44 @@ async function cachedEntry(opened: OpenEngagement): Promise<CacheEntry> {
   return entry;
 }
 
-/** Bills whose greater part lies in the engagement's year, in order, with their lines. */
-async function billsOfYear({ engagement }: OpenEngagement): Promise<{ bill: Bill; lines: BillLine[] }[]> {
-  const all = await Bill.findAll({ where: { engagementId: engagement.id }, order: ['periodFrom', 'id'] });
-  const middle = (bill: Bill) => (Date.parse(bill.periodFrom) + Date.parse(bill.periodTo)) / 2;
-  const bills = all.filter(
-    (bill) => middle(bill) >= Date.parse(engagement.yearFrom) && middle(bill) < Date.parse(engagement.yearTo),
-  );
-  const lines = await BillLine.findAll({ where: { billId: bills.map((bill) => bill.id) }, order: ['position', 'id'] });
-  return bills.map((bill) => ({ bill, lines: lines.filter((line) => line.billId === bill.id) }));
+/** The bills whose middle day lies in the engagement's year, in order. */
+async function billsOfYear({ engagement }: OpenEngagement): Promise<BillView[]> {
+  const middle = (bill: BillView) => (Date.parse(bill.from) + Date.parse(bill.to)) / 2;
+  const fromMs = Date.parse(engagement.yearFrom);
+  const toMs = Date.parse(engagement.yearTo);
+  return (await listBills(engagement.id)).filter((bill) => middle(bill) >= fromMs && middle(bill) < toMs);
 }
 
-async function dataKeyOf(opened: OpenEngagement, bills: { bill: Bill; lines: BillLine[] }[], choice: TariffChoice) {
+async function dataKeyOf(opened: OpenEngagement, bills: BillView[], choice: TariffChoice): Promise<string> {
   const where = { meterId: opened.meter.id };
   const [count, newest, changed] = await Promise.all([
     ReadingBlock.count({ where }),
     ReadingBlock.max('id', { where }),
     ReadingBlock.max('updatedAt', { where }),
   ]);
-  const ofBills = bills.map(({ bill, lines }) => [
-    bill.id,
-    bill.version,
-    bill.updatedAt.getTime(),
-    ...lines.map((line) => `${line.id}@${line.updatedAt.getTime()}`),
-  ]);
   const ofChoice = [choice.id, choice.version, choice.updatedAt.getTime()];
-  return JSON.stringify([count, newest, changed, ofBills, ofChoice]);
+  return digestOf(JSON.stringify([count, newest, changed, bills, ofChoice]));
 }
 
 async function readBasis(
   opened: OpenEngagement,
-  bills: { bill: Bill; lines: BillLine[] }[],
+  bills: BillView[],
   choice: TariffChoice,
   dataKey: string,
 ): Promise<PricingBasis> {
   const schedule = readFrozen(choice);
-  const billed = bills.map(({ bill, lines }) => presentBilledBill(bill, lines));
-  refuseMixed(billed, schedule);
-  const load = await readLoad(opened, billed, schedule.timeZone);
+  refuseMixed(bills, schedule);
+  const load = await readLoad(opened, bills, schedule.timeZone);
   return {
     route: load ? 'intervals' : 'printed',
     schedule,
     scheduleText: choice.scheduleText,
     choice,
-    periods: billed.map((bill) => bill.period),
+    periods: bills.map(({ from, to }) => ({ from, to })),
     contract: choice.contract,
     history: choice.history ?? undefined,
-    given: billed.map((bill) => pickGiven(bill, schedule)),
-    bills: billed,
+    given: bills.map((bill) => pickGiven(bill, schedule)),
+    bills,
     load,
     grid: load && { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length },
     dataKey,
@@ -192,34 +198,40 @@ function readFrozen(choice: TariffChoice): Schedule {
   }
 }
 
-function refuseMixed(bills: BilledBill[], schedule: Schedule): void {
+function refuseMixed(bills: BillView[], schedule: Schedule): void {
   const foreign = bills.find((bill) => bill.currency !== schedule.currency);
   if (foreign) {
     throw conflict(
-      `The bill of ${foreign.name} is in ${foreign.currency}, the schedule ${schedule.id} in ${schedule.currency}. Correct the bill, or choose another schedule.`,
+      `The bill of ${billName(foreign.to)} is in ${foreign.currency}, the schedule ${schedule.id} in ${schedule.currency}. Correct the bill, or choose another schedule.`,
       { station: 'tariff' },
     );
   }
   bills.forEach((bill, index) => {
     const before = bills[index - 1];
-    if (!before || before.period.to <= bill.period.from) return;
+    if (!before || before.to <= bill.from) return;
     throw conflict(
-      `The bills of ${before.name} and ${bill.name} overlap: one runs to ${before.period.to}, the other begins on ${bill.period.from}. Correct a period at the station Bills.`,
+      `The bills of ${billName(before.to)} and ${billName(bill.to)} overlap: one runs to ${before.to}, the other begins on ${bill.from}. Correct a period at the station Bills.`,
       { station: 'bills' },
     );
   });
 }
 
 /** The kept readings under the bills; null where the meter has none in that time. */
-async function readLoad(opened: OpenEngagement, bills: BilledBill[], timeZone: string): Promise<LoadSeries | null> {
-  const fromMs = localDateStartMs(bills[0]!.period.from, timeZone);
-  const toMs = localDateStartMs(bills.at(-1)!.period.to, timeZone);
+async function readLoad(opened: OpenEngagement, bills: BillView[], timeZone: string): Promise<LoadSeries | null> {
+  const fromMs = localDateStartMs(bills[0]!.from, timeZone);
+  const toMs = localDateStartMs(bills.at(-1)!.to, timeZone);
   const spans = await keptSpans(opened.meter.id, fromMs, toMs);
   return spans.length === 0 ? null : loadSeries(opened.meter.id, fromMs, toMs);
 }
 
+/** Of a bill's printed quantities those the schedule has a name for. */
+function knownTo(schedule: Schedule, bill: BillView): Record<string, number> {
+  const names = new Set(schedule.texts.flatMap((text) => text.quantities.map((quantity) => quantity.name)));
+  return Object.fromEntries(Object.entries(bill.quantities).filter(([name]) => names.has(name)));
+}
+
 /** Of a bill's printed quantities those the schedule expects from the bill, not from the meter. */
-function pickGiven(bill: BilledBill, schedule: Schedule): Record<string, number> {
+function pickGiven(bill: BillView, schedule: Schedule): Record<string, number> {
   const names = new Set(
     schedule.texts.flatMap((text) =>
       text.quantities.filter((one) => one.definition.kind === 'given').map(({ name }) => name),

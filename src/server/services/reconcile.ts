@@ -1,42 +1,125 @@
-import type { PricedBill } from '../../core/tariff';
+import { addDays } from '../../core/load';
+import type { PricedBill, PricedLine, Schedule } from '../../core/tariff';
 import { toMinorUnits } from '../../core/units';
-import type { PricedYear, ReconciledBill } from '../../schemas/pricing';
+import {
+  lineToleranceMinor,
+  type Finding,
+  type LinePair,
+  type PricedYear,
+  type ReconciledBill,
+} from '../../schemas/pricing';
+import { billName } from '../presenters/pricing';
+import { faultsOf } from './blame';
+import { CauseTrial } from './causes';
+import { findingOfArithmetic, findingOfFault, findingOfTotal } from './findings';
+import { matchLines } from './line-matching';
 import type { PricingBasis } from './pricing';
+import { baseOfPercent, textOn } from './schedule-variants';
 
-/** Lays a priced year beside what was billed. */
-export function reconcileYear(basis: PricingBasis, priced: PricedBill[]): PricedYear {
-  const bills = basis.bills.map((bill, index): ReconciledBill => {
-    const own = priced[index]!;
-    const pricedMinor = toMinorUnits(own.total, own.currency);
-    const lineSum = bill.lines.reduce((sum, line) => sum + line.amountMinor, 0);
-    const billedMinor = bill.totalMinor ?? (bill.lines.length > 0 ? lineSum : null);
-    return {
-      bill,
-      priced: own,
-      pricedMinor,
-      billedMinor,
-      differenceMinor: billedMinor === null ? null : billedMinor - pricedMinor,
-      reactiveMinor: toMinorUnits(own.reactiveCost, own.currency),
-      pairs: [],
-      findings: [],
-    };
+/** Lays a priced year beside what was billed and tries to find out why they differ. */
+export function reconcileYear(
+  basis: PricingBasis,
+  priced: PricedBill[],
+  priceYear: (schedule: Schedule) => PricedBill[],
+): PricedYear {
+  const bills = priced.map((one, index) => reconcileBill(basis, one, index));
+  const trial = new CauseTrial(basis, priced, priceYear);
+  const findings: Finding[] = [];
+  bills.forEach((bill, index) => {
+    for (const found of findingsOfBill(basis, bill, index, trial)) {
+      const letter = letterOf(findings.length);
+      findings.push({ ...found, letter });
+      bill.findings.push(letter);
+    }
   });
-  const sum = (of: (bill: ReconciledBill) => number | null) =>
-    bills.reduce((total, bill) => total + (of(bill) ?? 0), 0);
   return {
     route: basis.route,
     currency: basis.schedule.currency,
     timeZone: basis.schedule.timeZone,
     bills,
-    findings: [],
-    totals: {
-      pricedMinor: sum((bill) => bill.pricedMinor),
-      billedMinor: sum((bill) => bill.billedMinor),
-      differenceMinor: sum((bill) => bill.differenceMinor),
-      reactiveMinor: sum((bill) => bill.reactiveMinor),
-      billsWithoutTotal: bills.filter((bill) => bill.billedMinor === null).length,
-    },
-    readings: { present: 0, expected: 0 },
-    notes: [],
+    findings,
+    totals: totalsOf(bills),
+    readings: readingsOf(basis),
+    notes: notesOf(bills),
   };
+}
+
+function reconcileBill(basis: PricingBasis, priced: PricedBill, index: number): ReconciledBill {
+  const bill = basis.bills[index]!;
+  const minorOf = (line: PricedLine) => toMinorUnits(line.amount, priced.currency);
+  const pairs = matchLines(priced.lines, bill.lines, basis.choice.lineMatches, minorOf).map((match): LinePair => {
+    const pricedMinor = match.line ? minorOf(match.line) : null;
+    const billedMinor = match.billed.length > 0 ? match.billed.reduce((sum, line) => sum + line.amountMinor, 0) : null;
+    return { ...match, pricedMinor, billedMinor, differenceMinor: (billedMinor ?? 0) - (pricedMinor ?? 0) };
+  });
+  const pricedMinor = toMinorUnits(priced.total, priced.currency);
+  const billedMinor = bill.totalMinor ?? (bill.lines.length > 0 ? bill.linesMinor : null);
+  return {
+    name: billName(bill.to),
+    bill,
+    priced,
+    pricedMinor,
+    billedMinor,
+    differenceMinor: billedMinor === null ? null : billedMinor - pricedMinor,
+    reactiveMinor: toMinorUnits(priced.reactiveCost, priced.currency),
+    pairs,
+    findings: [],
+  };
+}
+
+function findingsOfBill(
+  basis: PricingBasis,
+  bill: ReconciledBill,
+  index: number,
+  trial: CauseTrial,
+): Omit<Finding, 'letter'>[] {
+  if (bill.bill.lines.length === 0) {
+    const tolerance = lineToleranceMinor * bill.pairs.length;
+    if (bill.billedMinor === null || Math.abs(bill.differenceMinor ?? 0) <= tolerance) return [];
+    const causes = trial.causesOf({ index, lineId: null, billedMinor: bill.billedMinor });
+    return [findingOfTotal(bill, causes)];
+  }
+  const text = textOn(basis.schedule, addDays(bill.bill.to, -1));
+  const faults = faultsOf(bill.pairs, (lineId) => baseOfPercent(text, lineId));
+  const found = faults.map((fault) => {
+    const { line, billedMinor } = fault.pair;
+    // A fault on top of followed ones must be explained without them.
+    const target = (fault.pair.pricedMinor ?? 0) + fault.ownMinor;
+    const canTry = line !== null && billedMinor !== null;
+    return findingOfFault(bill, fault, canTry ? trial.causesOf({ index, lineId: line.id, billedMinor: target }) : []);
+  });
+  const arithmetic = findingOfArithmetic(bill);
+  return arithmetic ? [...found, arithmetic] : found;
+}
+
+/** A ... Z, then AA, AB ... */
+function letterOf(index: number): string {
+  const letter = String.fromCharCode(65 + (index % 26));
+  return index < 26 ? letter : letterOf(Math.floor(index / 26) - 1) + letter;
+}
+
+function totalsOf(bills: ReconciledBill[]): PricedYear['totals'] {
+  const sum = (of: (bill: ReconciledBill) => number | null) =>
+    bills.reduce((total, bill) => total + (of(bill) ?? 0), 0);
+  return {
+    pricedMinor: sum((bill) => bill.pricedMinor),
+    billedMinor: sum((bill) => bill.billedMinor),
+    differenceMinor: sum((bill) => bill.differenceMinor),
+    reactiveMinor: sum((bill) => bill.reactiveMinor),
+    billsWithoutTotal: bills.filter((bill) => bill.billedMinor === null).length,
+  };
+}
+
+function readingsOf({ load }: PricingBasis): PricedYear['readings'] {
+  if (!load) return { present: 0, expected: 0 };
+  return { present: load.quality.filter((mark) => mark !== 2).length, expected: load.quality.length };
+}
+
+/** Notes of the bills, each with the bills it stands on; one that stands on every bill without. */
+function notesOf(bills: ReconciledBill[]): string[] {
+  const names = new Map<string, string[]>();
+  for (const { name, priced } of bills) {
+    for (const note of priced.notes) names.set(note, [...(names.get(note) ?? []), name]);
+  }
+  return [...names].map(([note, on]) => (on.length === bills.length ? note : `${on.join(', ')}: ${note}`));
 }

@@ -1,4 +1,6 @@
+import type { APIContext, MiddlewareNext } from 'astro';
 import { defineMiddleware } from 'astro:middleware';
+import { ServiceError } from './server/errors';
 
 /** Pages that need no account. Everything else asks for one; services then decide what the person may see. */
 const openPaths = [/^\/sign-in$/, /^\/reset(\/|$)/, /^\/invitation\//, /^\/404$/, /^\/500$/];
@@ -28,6 +30,16 @@ function harden(response: Response): Response {
   return response;
 }
 
+/** Pages let services throw: what a person may not know of is the plain page of what does not exist. */
+async function answer(context: APIContext, next: MiddlewareNext): Promise<Response> {
+  try {
+    return await next();
+  } catch (error) {
+    if (error instanceof ServiceError && error.status === 404) return context.rewrite('/404');
+    throw error;
+  }
+}
+
 /** Signed-out people are sent to sign in and come back; endpoints answer 401 themselves. */
 export const onRequest = defineMiddleware(async (context, next) => {
   const { pathname, search } = context.url;
@@ -36,5 +48,5 @@ export const onRequest = defineMiddleware(async (context, next) => {
     const back = context.request.method === 'GET' ? `?next=${encodeURIComponent(pathname + search)}` : '';
     return harden(context.redirect(`/sign-in${back}`, 303));
   }
-  return harden(await next());
+  return harden(await answer(context, next));
 });

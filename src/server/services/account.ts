@@ -30,6 +30,12 @@ export const absoluteUrl = (path: string) => new URL(path, getEnv().APP_ORIGIN).
 /** Where a person begins. */
 export const homeOf = (actor: Pick<Actor, 'role'>) => (actor.role === 'client' ? '/client' : '/today');
 
+/** Where a person begins who has just signed in with this e-mail. */
+export async function signedInHome(email: string): Promise<string> {
+  const user = await User.findOne({ where: { email } });
+  return user ? homeOf(user) : '/';
+}
+
 /** Name of the practice, for letters and the pages outside the sheet. */
 export async function practiceName(): Promise<string> {
   return (await Practice.findOne())?.name ?? 'this practice';

@@ -1,0 +1,8 @@
+import { whyQuery } from '@/schemas/tariff-why';
+import { endpoint, parseOrThrow } from '@/server/http';
+import { explainFigure } from '@/server/services/tariff-why';
+
+export const GET = endpoint(async ({ actor, params, url }) => {
+  const query = parseOrThrow(whyQuery, Object.fromEntries(url.searchParams));
+  return Response.json(await explainFigure(actor, params.code ?? '', query));
+});

@@ -1,0 +1,218 @@
+import { JSDOM } from 'jsdom';
+import type { ReactElement } from 'react';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { packCarpet } from '@/components/charts/carpet';
+import { lightPalette } from '@/components/charts/palette';
+import { ledgerCsv } from '@/components/ui/ledger';
+
+const borrowed = [
+  'document',
+  'HTMLElement',
+  'SVGElement',
+  'Element',
+  'Node',
+  'requestAnimationFrame',
+  'cancelAnimationFrame',
+  'getComputedStyle',
+] as const;
+
+const dom = new JSDOM('<!doctype html><div id="root"></div>', { pretendToBeVisual: true });
+
+/** Draws one chart the way the server's worker does, and gives its svg element. */
+async function draw(element: ReactElement): Promise<SVGSVGElement> {
+  const { createRoot } = await import('react-dom/client');
+  const { flushSync } = await import('react-dom');
+  const holder = dom.window.document.createElement('div');
+  const root = createRoot(holder);
+  flushSync(() => root.render(element));
+  await new Promise((resolve) => setTimeout(resolve, 30));
+  const svg = holder.querySelector('svg')?.cloneNode(true) as SVGSVGElement | undefined;
+  root.unmount();
+  if (!svg) throw new Error('The chart drew no svg.');
+  return svg;
+}
+
+const words = (svg: SVGSVGElement) => [...svg.querySelectorAll('text')].map((text) => text.textContent);
+const size = { width: 592, height: 300, palette: lightPalette };
+
+const bills = [
+  { label: 'Nov', year: '2025', before: 30_000, after: 25_000 },
+  { label: 'Dec', before: 31_000, after: 24_000 },
+];
+
+beforeAll(() => {
+  const target = globalThis as Record<string, unknown>;
+  target.window = dom.window;
+  for (const name of borrowed) target[name] = dom.window[name];
+  if (!('navigator' in globalThis)) target.navigator = dom.window.navigator;
+});
+
+afterAll(() => dom.window.close());
+
+describe('charts drawn without a browser', () => {
+  it('PaybackChart marks the payback and carries literal colours', async () => {
+    const { PaybackChart, paybackTable } = await import('@/components/charts/PaybackChart');
+    const data = {
+      currency: 'USD',
+      capitalCost: 100_000,
+      points: [0, 1, 2, 3].map((year) => ({
+        year,
+        cumulative: -100_000 + 50_000 * year,
+        p10: -100_000 + 45_000 * year,
+        p90: -100_000 + 55_000 * year,
+        yours: -100_000 + 40_000 * year,
+      })),
+      paybackYears: 2,
+      paybackRange: { fromYears: 1.8, toYears: 2.25 },
+      editionName: 'edition 1',
+    };
+    const svg = await draw(<PaybackChart {...data} {...size} />);
+    expect(svg.outerHTML).not.toContain('var(');
+    expect(words(svg)).toEqual(expect.arrayContaining(['paid back after 24 months', 'edition 1', 'your figures']));
+    expect(svg.querySelectorAll('.recharts-line-curve').length).toBe(5);
+    expect(paybackTable(data).rows).toHaveLength(4);
+  });
+
+  it('BillsBeforeAfterChart prints the saving above each bill', async () => {
+    const { BillsBeforeAfterChart, billsBeforeAfterTable } = await import('@/components/charts/BillsBeforeAfterChart');
+    const data = { currency: 'USD', bills, what: 'all lines', planName: 'plan A' };
+    const svg = await draw(<BillsBeforeAfterChart {...data} {...size} />);
+    expect(words(svg)).toEqual(expect.arrayContaining(['5,000', '7,000', 'Nov', '2025']));
+    expect(svg.querySelectorAll(`rect[stroke="${lightPalette.verdigris}"]`).length).toBe(2);
+    expect(billsBeforeAfterTable(data).total).toMatchObject({ before: 61_000, after: 49_000, saved: 12_000 });
+  });
+
+  it('ReactiveCostChart draws a solid and an outlined part of each bill', async () => {
+    const { ReactiveCostChart, reactiveCostTable } = await import('@/components/charts/ReactiveCostChart');
+    const data = { currency: 'USD', bills: [{ label: 'Nov', demand: 4000, reactive: 1500 }] };
+    const svg = await draw(<ReactiveCostChart {...data} {...size} />);
+    expect(words(svg)).toContain('5,500');
+    const rects = [...svg.querySelectorAll('rect')].map((rect) => Number(rect.getAttribute('height')));
+    const [solid, outlined] = rects.filter((height) => height > 0).slice(-2);
+    expect(solid! / outlined!).toBeCloseTo(4000 / 1500, 2);
+    expect(reactiveCostTable(data).total).toMatchObject({ demand: 4000, reactive: 1500, total: 5500 });
+  });
+
+  it('VCurveChart names limits, loads and marks', async () => {
+    const { VCurveChart } = await import('@/components/charts/VCurveChart');
+    const { vCurveTable } = await import('@/components/charts/v-curve');
+    const curve = [60, 100, 140, 180].map((fieldA) => ({
+      fieldA,
+      armatureA: 120 + Math.abs(fieldA - 100),
+      leading: fieldA > 100,
+    }));
+    const data = {
+      motorName: 'M-1',
+      curves: [{ loadPercent: 75, points: curve }],
+      unity: [{ fieldA: 100, armatureA: 120 }],
+      usualLoadPercent: 75,
+      limits: { armatureA: 270, fieldA: 204, pullOut: [{ fieldA: 50, armatureA: 200 }] },
+      today: { fieldA: 109, armatureA: 129 },
+      plan: { fieldA: 164, armatureA: 184 },
+      planName: 'plan A',
+    };
+    const svg = await draw(<VCurveChart {...data} {...size} />);
+    const expected = ['stator, 270\u00a0A', 'field, 204\u00a0A', 'today 109\u00a0A', 'plan A 164\u00a0A', '75 % load'];
+    expect(words(svg)).toEqual(expect.arrayContaining(expected));
+    expect(svg.querySelectorAll('path[stroke-dasharray="6 3"]').length).toBe(1);
+    const row = vCurveTable(data).rows.find((entry) => entry.id === '120');
+    expect(row?.cells['load-75']).toBeCloseTo(140, 9);
+  });
+
+  it('CapabilityChart says delivers and absorbs instead of signs', async () => {
+    const { CapabilityChart, capabilityTable } = await import('@/components/charts/CapabilityChart');
+    const points = (kvar: number) => [0, 50, 100].map((loadPercent) => ({ loadPercent, kvarDelivered: kvar }));
+    const data = {
+      motorName: 'M-1',
+      capability: [
+        ...points(900).map((p) => ({ ...p, binding: 'field' as const })),
+        { loadPercent: 125, kvarDelivered: null, binding: 'armature' as const },
+      ],
+      today: points(-300),
+      plan: points(600),
+      planName: 'plan A',
+      usualLoadPercent: 50,
+    };
+    const svg = await draw(<CapabilityChart {...data} {...size} />);
+    expect(words(svg)).toEqual(expect.arrayContaining(['today absorbs 300', 'plan A delivers 600', 'field']));
+    expect(words(svg).join(' ')).not.toMatch(/[-\u2212]\d/);
+    expect(capabilityTable(data).rows.at(-1)?.cells.most).toBe('not admissible');
+  });
+
+  it('CostCurveChart says that its axis is cut', async () => {
+    const { CostCurveChart, costCurveTable } = await import('@/components/charts/CostCurveChart');
+    const data = {
+      currency: 'USD',
+      points: [100, 150, 200].map((fieldA) => ({ fieldA, yearCost: 2_100_000 - fieldA * 100 })),
+      chosen: { fieldA: 150, yearCost: 2_085_000 },
+      limitFieldA: 204,
+      reserveFieldA: 194,
+      bound: 2_078_000,
+      axisName: 'Field current of M-1, A',
+    };
+    const svg = await draw(<CostCurveChart {...data} {...size} />);
+    expect(words(svg).some((text) => text?.includes('axis cut'))).toBe(true);
+    expect(words(svg)).toEqual(expect.arrayContaining(['chosen 150\u00a0A', '2,085,000', 'reserve, 194\u00a0A']));
+    expect(costCurveTable(data).rows.map((row) => row.cells.note)).toEqual(['', 'chosen', 'within the reserve']);
+  });
+
+  it('DayChart marks the interval that set the peak', async () => {
+    const { DayChart, dayTable } = await import('@/components/charts/DayChart');
+    const points = Array.from({ length: 96 }, (_, index) => ({ minute: index * 15, kw: 100 + index, kvarLagging: 60 }));
+    const data = { dayName: 'Mon 4 Aug 2025', stepMinutes: 15, points, peak: { minute: 1425, kw: 195 } };
+    const svg = await draw(<DayChart {...data} {...size} />);
+    expect(words(svg)).toContain('195\u00a0kW, 23:45 to 24:00');
+    expect(dayTable(data).rows.at(-1)?.kind).toBe('chosen');
+  });
+
+  it('CashFlowChart draws spending below the line and saving above it', async () => {
+    const { CashFlowChart, cashFlowTable } = await import('@/components/charts/CashFlowChart');
+    const data = {
+      currency: 'USD',
+      years: [
+        { year: 0, flow: -100_000 },
+        { year: 1, flow: 60_000 },
+      ],
+    };
+    const svg = await draw(<CashFlowChart {...data} {...size} />);
+    expect(words(svg)).toEqual(expect.arrayContaining(['\u2212100,000', '60,000']));
+    expect(cashFlowTable(data).rows.at(-1)?.cells.soFar).toBe(-40_000);
+  });
+
+  it('CarpetChart draws a year of quarter-hours with few nodes', async () => {
+    const { CarpetChart, carpetTable } = await import('@/components/charts/CarpetChart');
+    const days = Array.from({ length: 365 }, (_, day) => ({
+      date: new Date(Date.UTC(2025, 6, 10 + day)).toISOString().slice(0, 10),
+      readings: Array.from({ length: 96 }, (_, at) =>
+        day === 56 && at < 30 ? null : 1000 + 20 * at + (day % 7) * 100,
+      ),
+    }));
+    const data = packCarpet({ unit: 'kW', stepMinutes: 15, days });
+    expect(data.days[56]).toMatchObject({ missing: 30 });
+    const svg = await draw(<CarpetChart {...data} {...size} />);
+    expect(svg.querySelectorAll('*').length).toBeLessThan(200);
+    expect(words(svg)).toEqual(expect.arrayContaining(['Aug', 'missing']));
+    expect(carpetTable(data).rows).toHaveLength(365);
+  });
+});
+
+describe('ledgerCsv', () => {
+  it('keeps text that a spreadsheet would run as a formula as text', () => {
+    const columns = [
+      { key: 'name', head: '=cmd' },
+      { key: 'kvar', head: 'kvar', kind: 'number' as const },
+    ];
+    const rows = ['=1+1', '+1', '-x', '@sum'].map((name, index) => ({ id: String(index), cells: { name, kvar: -5 } }));
+    const csv = ledgerCsv({ columns, rows });
+    expect(csv).toBe("'=cmd,kvar\r\n'=1+1,-5\r\n'+1,-5\r\n'-x,-5\r\n'@sum,-5\r\n");
+  });
+
+  it('writes money in major units with a point and quotes what needs it', () => {
+    const columns = [
+      { key: 'bill', head: 'Bill' },
+      { key: 'due', head: 'Due', kind: 'money' as const, currency: 'USD' },
+    ];
+    const csv = ledgerCsv({ columns, rows: [{ id: '1', cells: { bill: 'Aug, "late"', due: 1552491 } }] });
+    expect(csv).toBe('Bill,Due (USD)\r\n"Aug, ""late""",15524.91\r\n');
+  });
+});

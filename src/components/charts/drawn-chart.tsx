@@ -2,7 +2,8 @@ import type { ReactElement } from 'react';
 import { BillsBeforeAfterChart, type BillsBeforeAfterData } from './BillsBeforeAfterChart';
 import { palettes, type PaletteName } from './palette';
 import { PaybackChart, type PaybackData } from './PaybackChart';
-import { VCurveChart, type VCurveData } from './VCurveChart';
+import type { VCurveData } from './v-curve';
+import { VCurveChart } from './VCurveChart';
 
 interface Size {
   width: number;

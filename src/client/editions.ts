@@ -1,0 +1,9 @@
+import type { EditionSummary, MailEditionInput } from '../schemas/edition';
+import type { JobProgress } from '../schemas/job';
+import { call } from './api';
+
+export const makeEdition = (code: string, planId: number) =>
+  call<JobProgress>('POST', `/api/engagements/${code}/editions`, { planId });
+
+export const mailEdition = (id: number, input: MailEditionInput) =>
+  call<EditionSummary>('POST', `/api/editions/${id}/mail`, input);

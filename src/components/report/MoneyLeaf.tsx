@@ -1,0 +1,83 @@
+import type { EditionContent } from '../../schemas/edition';
+import { formatNumber, formatPayback, formatPercent } from '../ui/format';
+import type { LedgerData } from '../ui/ledger';
+import { LedgerTable } from '../ui/LedgerTable';
+import { ResultSums, type SumRow } from '../ui/ResultSums';
+import type { LeafContext } from './AnswerLeaf';
+import { Leaf, LeafRow } from './Leaf';
+import { Picture } from './Picture';
+import { paybackFinding } from './words';
+
+/** Cumulative cash at the end of each year. */
+function yearsTable({ cashFlow, currency }: EditionContent): LedgerData {
+  const figure = { kind: 'number' as const, unit: currency };
+  const years = cashFlow.filter((point) => point.month % 12 === 0);
+  const banded = years.some((point) => point.low !== undefined);
+  return {
+    columns: [
+      { key: 'year', head: 'After year', align: 'right' },
+      { key: 'flow', head: 'In the year', ...figure },
+      { key: 'sum', head: 'All so far', ...figure, strong: true },
+      ...(banded
+        ? [
+            { key: 'low', head: '1 in 10 below', ...figure, quiet: true },
+            { key: 'high', head: '1 in 10 above', ...figure, quiet: true },
+          ]
+        : []),
+    ],
+    rows: years.map((point, index) => ({
+      id: String(point.month),
+      cells: {
+        year: formatNumber(point.month / 12),
+        flow: index === 0 ? point.cumulative : point.cumulative - (years[index - 1]?.cumulative ?? 0),
+        sum: point.cumulative,
+        low: point.low ?? null,
+        high: point.high ?? null,
+      },
+    })),
+  };
+}
+
+function sums({ plan, currency }: EditionContent): SumRow[] {
+  const { appraisal, economics } = plan;
+  return [
+    { label: `Work, once, ${currency}`, value: formatNumber(plan.capitalCost) },
+    { label: 'Saved a year', value: formatNumber(plan.saving) },
+    { label: 'Upkeep a year', value: formatNumber(plan.yearlyUpkeep) },
+    { label: 'Net a year', value: formatNumber(plan.saving - plan.yearlyUpkeep), kind: 'total' },
+    { label: 'Pays back', value: plan.paybackWords, kind: 'strong' },
+    { label: `At ${economics.discountPercent} % interest`, value: formatPayback(appraisal.discountedPaybackYears) },
+    { label: `Worth today, ${economics.horizonYears} years`, value: formatNumber(appraisal.npv) },
+    { label: 'Internal rate', value: appraisal.irr === null ? 'none' : formatPercent(appraisal.irr) },
+  ];
+}
+
+/** Page 4: payback and cash flow. */
+export function MoneyLeaf({ content, taps, foot, pictures }: LeafContext & { pictures: Record<string, string> }) {
+  const { plan } = content;
+  return (
+    <Leaf page={4} taps={taps} foot={foot} finding={paybackFinding(content)}>
+      <LeafRow
+        first
+        number="4.1"
+        title="Payback"
+        reference={<p>Work and upkeep as quoted or entered; prices rise {plan.economics.escalationPercent} % a year</p>}
+      >
+        <Picture svg={pictures['payback-page']} label="Payback" />
+      </LeafRow>
+      <LeafRow
+        number="4.2"
+        title="Cash flow"
+        reference={<p>Savings arrive evenly through each year</p>}
+        result={<ResultSums rows={sums(content)} />}
+      >
+        <LedgerTable label="Cash flow by year" {...yearsTable(content)} />
+        {plan.appraisal.notes.map((note) => (
+          <p key={note} className="hint mt-2">
+            {note}
+          </p>
+        ))}
+      </LeafRow>
+    </Leaf>
+  );
+}

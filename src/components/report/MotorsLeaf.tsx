@@ -1,0 +1,113 @@
+import type { EditionContent, EditionMotor } from '../../schemas/edition';
+import { Caution } from '../ui/Caution';
+import { formatNumber, formatQuantity } from '../ui/format';
+import type { LedgerData } from '../ui/ledger';
+import { LedgerTable } from '../ui/LedgerTable';
+import { ResultSums } from '../ui/ResultSums';
+import { Stamp } from '../ui/Stamp';
+import type { LeafContext } from './AnswerLeaf';
+import { Leaf, LeafRow } from './Leaf';
+import { Picture } from './Picture';
+
+const amperes = (value: number) => formatNumber(value, { upTo: 1 });
+
+/** "delivers 637 kvar" or "absorbs 382 kvar": never a bare minus. */
+export function kvarWords(kvarDelivered: number): string {
+  const words = kvarDelivered >= 0 ? 'delivers' : 'absorbs';
+  return `${words} ${formatQuantity(Math.abs(kvarDelivered), 'kvar')}`;
+}
+
+function settingsTable({ motors }: EditionContent): LedgerData {
+  const row = (id: string, label: string, unit: string, of: (motor: EditionMotor) => string) => ({
+    id,
+    cells: { what: label, unit, ...Object.fromEntries(motors.map((motor) => [motor.name, of(motor)])) },
+  });
+  return {
+    columns: [
+      { key: 'what', head: 'Field current' },
+      { key: 'unit', head: 'Unit', quiet: true },
+      ...motors.map(({ name, drives }) => ({
+        key: name,
+        head: name,
+        unit: drives ?? undefined,
+        align: 'right' as const,
+      })),
+    ],
+    rows: [
+      row('today', 'Today', 'A', (motor) => amperes(motor.fieldTodayA)),
+      row('plan', 'Proposed', 'A', (motor) => amperes(motor.fieldPlanA)),
+      row('limit', 'Limit after the reserve', 'A', (motor) => amperes(motor.fieldLimitA)),
+      row('rated', 'On the nameplate', 'A', (motor) => amperes(motor.fieldRatedA)),
+      row('kvarToday', 'At its usual load, today', '', (motor) => kvarWords(motor.kvarToday)),
+      row('kvarPlan', 'At its usual load, proposed', '', (motor) => kvarWords(motor.kvarPlan)),
+      row(
+        'stator',
+        'Stator current, proposed, of rated',
+        'A',
+        (motor) => `${amperes(motor.armaturePlanA)} of ${amperes(motor.armatureRatedA)}`,
+      ),
+      row(
+        'pullout',
+        'Least pull-out over load, margin asked',
+        'ratio',
+        (motor) =>
+          `${formatNumber(motor.leastPullOut, { decimals: 2 })}, ${formatNumber(motor.pullOutMargin, { decimals: 2 })}`,
+      ),
+      row('loss', 'Extra losses a year', 'kWh', (motor) => formatNumber(motor.extraLossKwh)),
+    ],
+  };
+}
+
+function motorsFinding({ motors }: EditionContent): string {
+  const [first] = motors;
+  if (!first) return 'The plan changes no motor.';
+  const below = first.fieldLimitA - first.fieldPlanA;
+  return `At ${amperes(first.fieldPlanA)} A ${first.name} ${kvarWords(first.kvarPlan)} and stays ${amperes(below)} A under its field limit.`;
+}
+
+/** Page 3: what the motors can do, and where their limits lie. */
+export function MotorsLeaf({ content, taps, foot, pictures }: LeafContext & { pictures: Record<string, string> }) {
+  const { motors } = content;
+  return (
+    <Leaf page={3} taps={taps} foot={foot} finding={motorsFinding(content)}>
+      {motors.slice(0, 2).map((motor, index) => (
+        <LeafRow
+          key={motor.motorId}
+          first={index === 0}
+          number={`3.${index + 1}`}
+          title={`${motor.name}${motor.drives ? `, ${motor.drives.toLowerCase()}` : ''}`}
+          lead="V-curves: stator current over field current. Solid copper lagging, dashed verdigris leading; hatched ground is not allowed."
+          reference={<p>{motor.rated}</p>}
+          result={
+            <ResultSums
+              rows={[
+                { label: 'Field, today', value: formatQuantity(motor.fieldTodayA, 'A', { upTo: 1 }) },
+                { label: 'Field, proposed', value: formatQuantity(motor.fieldPlanA, 'A', { upTo: 1 }), kind: 'strong' },
+                { label: 'Usual load', value: formatQuantity(motor.usualLoadPercent, '%') },
+                { label: 'Hours running', value: formatNumber(motor.hoursRunning) },
+              ]}
+            />
+          }
+        >
+          <Picture svg={pictures[`v-curve-${motor.motorId}`]} label={`V-curves of ${motor.name}`} />
+        </LeafRow>
+      ))}
+      <LeafRow
+        number="3.3"
+        title="Settings and limits"
+        reference={<p>Constant field current, set by hand</p>}
+        result={<Stamp title="Not released" detail="no setting card exists yet" refused />}
+      >
+        <LedgerTable label="Settings and limits" {...settingsTable(content)} />
+      </LeafRow>
+      <LeafRow reference={<p>Stands wherever a setting is shown</p>}>
+        <Caution title="Settings are calculated values" narrow>
+          <p>
+            Too much field overheats the rotor while the stator stays cool; too little pulls the motor out of step under
+            load. At light load the bus voltage rises. Work from the released card at the panel.
+          </p>
+        </Caution>
+      </LeafRow>
+    </Leaf>
+  );
+}

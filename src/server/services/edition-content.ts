@@ -1,0 +1,149 @@
+import type {
+  EditionBill,
+  EditionContent,
+  EditionFinding,
+  EditionMotor,
+  EditionPlan,
+  EditionSource,
+} from '../../schemas/edition';
+import type { MotorView } from '../../schemas/motor';
+import type { BillView, PlanView, YearView } from '../../schemas/plan';
+import type { PricedYear } from '../../schemas/pricing';
+import { fromMinorUnits } from '../../core/units';
+import { Intake } from '../models/Intake';
+import { Practice } from '../models/Practice';
+import type { Actor } from '../policies/actor';
+import type { OpenEngagement } from './engagements';
+
+/** What an edition is made of, gathered once so that all its parts agree. */
+export interface EditionBasis {
+  opened: OpenEngagement;
+  year: YearView;
+  plan: PlanView;
+  priced: PricedYear;
+  motors: MotorView[];
+  schedule: { title: string; sha256: string };
+}
+
+function editionPlan(plan: PlanView): EditionPlan {
+  const { name, fields, yearTotal, saving, reactiveCost, groupTotals, capitalCost, yearlyUpkeep } = plan;
+  const { economics, appraisal, paybackWords, nearestLimit, extraLossKwh, hoursLeading, worstPf } = plan;
+  return {
+    name,
+    fields,
+    yearTotal,
+    saving,
+    reactiveCost,
+    groupTotals,
+    capitalCost,
+    yearlyUpkeep,
+    economics,
+    appraisal,
+    paybackWords,
+    nearestLimit,
+    extraLossKwh,
+    hoursLeading: hoursLeading.after,
+    worstPf: worstPf?.value ?? null,
+  };
+}
+
+function editionBill(before: BillView, after: BillView, billedMinor: number | null, currency: string): EditionBill {
+  const afterLines = new Map(after.lines.map((line) => [line.id, line]));
+  return {
+    from: before.from,
+    to: before.to,
+    before: before.total,
+    after: after.total,
+    billed: billedMinor === null ? null : fromMinorUnits(billedMinor, currency),
+    reactiveCost: before.reactiveCost,
+    lines: before.lines.map(({ id, label, group, amount }) => ({
+      id,
+      label,
+      group,
+      before: amount,
+      after: afterLines.get(id)?.amount ?? 0,
+    })),
+  };
+}
+
+function editionFindings(priced: PricedYear): EditionFinding[] {
+  const bills = new Map(priced.bills.map((one) => [one.bill.id, one.bill]));
+  return priced.findings.map(({ letter, title, sentence, billId, amountMinor }) => ({
+    letter,
+    title,
+    sentence,
+    billFrom: bills.get(billId)?.from ?? '',
+    billTo: bills.get(billId)?.to ?? '',
+    amountMinor,
+  }));
+}
+
+function editionMotors(plan: PlanView, motors: MotorView[]): EditionMotor[] {
+  return motors.flatMap((motor) => {
+    const planned = plan.motors.find((one) => one.motorId === motor.id);
+    if (!planned) return [];
+    const field = plan.fields.find((one) => one.motorId === motor.id);
+    return {
+      motorId: motor.id,
+      name: motor.name,
+      drives: motor.drives,
+      rated: `${motor.plate.output} ${motor.plate.outputUnit}, ${motor.plate.voltageV} V, ${motor.plate.powerFactor} leading`,
+      fieldTodayA: motor.fieldTodayA,
+      fieldPlanA: field?.fieldA ?? motor.fieldTodayA,
+      fieldLimitA: planned.fieldLimitA,
+      fieldRatedA: motor.plate.fieldCurrentA,
+      armatureTodayA: planned.armatureTodayA,
+      armaturePlanA: planned.armaturePlanA,
+      armatureRatedA: motor.ratedCurrentA,
+      kvarToday: planned.kvarToday,
+      kvarPlan: planned.kvarPlan,
+      usualLoadPercent: planned.usualLoadPercent,
+      leastPullOut: planned.leastPullOut,
+      pullOutMargin: planned.pullOutMargin,
+      extraLossKwh: planned.extraLossKwh,
+      hoursRunning: planned.hoursRunning,
+    };
+  });
+}
+
+async function editionSources(engagementId: number): Promise<EditionSource[]> {
+  const intakes = await Intake.findAll({ where: { engagementId, state: 'kept' }, order: ['id'] });
+  return intakes.map(({ fileName, kind, sha256, keptAt, updatedAt }) => ({
+    fileName,
+    kind,
+    sha256,
+    keptAt: (keptAt ?? updatedAt).toISOString(),
+  }));
+}
+
+/** Gathers everything an edition says. Nothing in it is read again once it is frozen. */
+export async function editionContent(actor: Actor, basis: EditionBasis, number: number): Promise<EditionContent> {
+  const { opened, year, plan, priced, motors, schedule } = basis;
+  const { engagement, client, site, meter } = opened;
+  const [practice, sources] = await Promise.all([Practice.findOne(), editionSources(engagement.id)]);
+  return {
+    number,
+    madeOn: new Date().toISOString().slice(0, 10),
+    currency: year.currency,
+    practice: { name: practice?.name ?? '', phone: practice?.phone ?? '' },
+    by: actor.name,
+    client: client.name,
+    site: { name: site.name, place: site.place, timeZone: site.timeZone },
+    meter: meter.label,
+    schedule,
+    year: { from: year.from, to: year.to },
+    readings: year.readings,
+    standing: editionPlan(year.standing),
+    plan: editionPlan(plan),
+    others: year.plans.filter((other) => other.id !== plan.id).map(editionPlan),
+    bills: year.standing.bills.map((before, index) =>
+      editionBill(before, plan.bills[index] as BillView, priced.bills[index]?.billedMinor ?? null, year.currency),
+    ),
+    findings: editionFindings(priced),
+    motors: editionMotors(plan, motors),
+    assumed: plan.assumed,
+    cashFlow: plan.cashFlow,
+    sources,
+    notes: year.notes,
+  };
+}

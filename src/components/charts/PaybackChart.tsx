@@ -178,7 +178,7 @@ function Notes({
           ahead
         </Words>
       )}
-      {!narrow && data.paybackYears !== null && data.paybackYears > 1 && (
+      {!narrow && data.paybackYears !== null && plot.x(data.paybackYears * 0.66) - plot.left > 110 && (
         <Words x={plot.x(data.paybackYears * 0.66)} y={plot.y(0) - 10} palette={palette} tone="ink2" anchor="end" halo>
           still paying back
         </Words>
@@ -253,6 +253,7 @@ export function PaybackChart({ width, height, palette = pagePalette, ...data }: 
               { x: plot.right, y: plot.y(0) },
             ])}
             stroke={palette.ink}
+            shapeRendering="crispEdges"
           />
         )}
       </OnPlot>

@@ -5,7 +5,7 @@ import { ChartFigure, type FigureText } from './ChartFigure';
 import { HatchDefs, useHatch } from './HatchDefs';
 import { axisLook, linePath, narrowBelow, OnPlot, PlotFrame, PointMark, Words, type ChartSize, type Plot } from './kit';
 import { pagePalette, type Palette } from './palette';
-import { domainOf, niceTicks, valueAt } from './scale';
+import { ticksWithin, valueAt } from './scale';
 
 export type BindingLimit = 'armature' | 'field' | 'pull-out';
 
@@ -154,9 +154,11 @@ export function CapabilityChart({ width, height, palette = pagePalette, ...data 
   const narrow = width < 380;
   const known = data.capability.filter(isKnown);
   const values = [...known, ...(data.today ?? []), ...(data.plan ?? [])].map(kvar);
-  const yTicks = niceTicks(Math.min(0, ...values), Math.max(0, ...values) * 1.12, narrow ? 5 : 7);
+  const kvarEnds = [Math.min(0, ...values) * 1.12, Math.max(0, ...values) * 1.14] as const;
+  const yTicks = ticksWithin(...kvarEnds, narrow ? 5 : 7);
   const loads = data.capability.map((p) => p.loadPercent);
-  const xTicks = niceTicks(Math.min(...loads), Math.max(...loads), narrow ? 4 : 6);
+  const loadEnds = [Math.min(...loads), Math.max(...loads)] as const;
+  const xTicks = ticksWithin(...loadEnds, narrow ? 4 : 6);
   const rows = data.capability.map((p) => ({
     loadPercent: p.loadPercent,
     today: data.today && valueAt(data.today, p.loadPercent, load, kvar),
@@ -177,13 +179,13 @@ export function CapabilityChart({ width, height, palette = pagePalette, ...data 
       <XAxis
         dataKey="loadPercent"
         type="number"
-        domain={domainOf(xTicks)}
+        domain={[...loadEnds]}
         ticks={xTicks}
         height={20}
         {...axisLook(palette)}
       />
       <YAxis
-        domain={domainOf(yTicks)}
+        domain={[...kvarEnds]}
         ticks={yTicks}
         width={48}
         tickFormatter={(v: number) => formatNumber(Math.abs(v))}

@@ -30,18 +30,19 @@ export function CashFlowChart({ width, height, palette = pagePalette, years, cur
     (Math.max(0, ...flows) * 1.12) / scale.divisor,
     4,
   );
+  const rows = flows.map((flow, index) => ({ index, flow: flow / scale.divisor }));
   const names = years.map((year) => ({ label: String(year.year) }));
   return (
     <ComposedChart
       width={width}
       height={height}
-      data={years}
+      data={rows}
       margin={{ top: 28, right: 2, bottom: 4, left: 0 }}
       role="img"
       accessibilityLayer={false}
       aria-label="Cash of each year"
     >
-      <XAxis dataKey="year" height={20} {...axisLook(palette)} tick={false} />
+      <XAxis dataKey="index" height={20} {...axisLook(palette)} tick={false} />
       <YAxis
         domain={domainOf(yTicks)}
         ticks={yTicks}
@@ -59,34 +60,31 @@ export function CashFlowChart({ width, height, palette = pagePalette, years, cur
       />
       <Bar dataKey="flow" fill="none" isAnimationActive={false} />
       <OnPlot at="over">
-        {(plot) => {
-          const byIndex = { ...plot, x: (index: unknown) => plot.x(years[Number(index)]?.year) };
-          return (
-            <>
-              {years.map(({ flow }, index) => {
-                const box = barBox(plot, byIndex.x(index), barWidth(plot, years.length), 0, flow / scale.divisor);
-                const fill = flow < 0 ? palette.ink : `url(#${hatch.saving})`;
-                return (
-                  <g key={index}>
-                    <rect {...box} fill={fill} stroke={flow < 0 ? palette.ink : palette.verdigris} />
-                    <BarFigure
-                      plot={byIndex}
-                      index={index}
-                      count={years.length}
-                      y={flow < 0 ? box.y + box.height + 20 : box.y}
-                      palette={palette}
-                      tone={flow < 0 ? 'ink' : 'verdigris'}
-                      bold
-                    >
-                      {formatNumber(flow)}
-                    </BarFigure>
-                  </g>
-                );
-              })}
-              <BarNames plot={byIndex} bills={names} palette={palette} />
-            </>
-          );
-        }}
+        {(plot) => (
+          <>
+            {years.map(({ flow }, index) => {
+              const box = barBox(plot, plot.x(index), barWidth(plot, years.length), 0, flow / scale.divisor);
+              const fill = flow < 0 ? palette.ink : `url(#${hatch.saving})`;
+              return (
+                <g key={index}>
+                  <rect {...box} fill={fill} stroke={flow < 0 ? palette.ink : palette.verdigris} />
+                  <BarFigure
+                    plot={plot}
+                    index={index}
+                    count={years.length}
+                    y={flow < 0 ? box.y + box.height + 20 : box.y}
+                    palette={palette}
+                    tone={flow < 0 ? 'ink' : 'verdigris'}
+                    bold
+                  >
+                    {formatNumber(flow)}
+                  </BarFigure>
+                </g>
+              );
+            })}
+            <BarNames plot={plot} bills={names} palette={palette} />
+          </>
+        )}
       </OnPlot>
     </ComposedChart>
   );

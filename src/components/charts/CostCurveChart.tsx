@@ -5,7 +5,7 @@ import { ChartFigure, type FigureText } from './ChartFigure';
 import { HatchDefs, useHatch } from './HatchDefs';
 import { axisLook, narrowBelow, OnPlot, PlotFrame, PointMark, Words, type ChartSize, type Plot } from './kit';
 import { pagePalette, type Palette } from './palette';
-import { domainOf, moneyScale, niceTicks, tickDecimals } from './scale';
+import { domainOf, moneyScale, niceTicks, tickDecimals, ticksWithin } from './scale';
 
 export interface CostPoint {
   fieldA: number;
@@ -86,7 +86,7 @@ function Marks({ data, plot, palette, divisor }: Parts) {
             strokeDasharray="8 4"
           />
           <Words x={plot.left + 6} y={plot.y(bound / divisor) + 14} palette={palette} bold halo>
-            {`bound, every interval its own best kvar: ${formatNumber(bound)}`}
+            {`${plot.right - plot.left < 380 ? 'bound' : 'bound, every interval its own best kvar'}: ${formatNumber(bound)}`}
           </Words>
         </>
       )}
@@ -129,7 +129,8 @@ export function CostCurveChart({ width, height, palette = pagePalette, ...data }
     narrow ? 4 : 5,
   );
   const fields = [...data.points.map((p) => p.fieldA), data.limitFieldA];
-  const xTicks = niceTicks(Math.min(...fields), Math.max(...fields) * 1.01, narrow ? 5 : 10);
+  const fieldEnds = [Math.min(...fields), Math.max(...fields) * 1.02] as const;
+  const xTicks = ticksWithin(...fieldEnds, narrow ? 5 : 10);
   const decimals = tickDecimals(yTicks);
   const rows = data.points.map((p) => ({ fieldA: p.fieldA, cost: p.yearCost / divisor }));
   return (
@@ -142,14 +143,7 @@ export function CostCurveChart({ width, height, palette = pagePalette, ...data }
       accessibilityLayer={false}
       aria-label="Bills of the year against the field current"
     >
-      <XAxis
-        dataKey="fieldA"
-        type="number"
-        domain={domainOf(xTicks)}
-        ticks={xTicks}
-        height={20}
-        {...axisLook(palette)}
-      />
+      <XAxis dataKey="fieldA" type="number" domain={[...fieldEnds]} ticks={xTicks} height={20} {...axisLook(palette)} />
       <YAxis
         domain={domainOf(yTicks)}
         ticks={yTicks}

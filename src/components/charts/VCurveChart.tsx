@@ -3,9 +3,9 @@ import { ChartFigure, type FigureText } from './ChartFigure';
 import { HatchDefs, useHatch } from './HatchDefs';
 import { axisLook, narrowBelow, OnPlot, PlotFrame, type ChartSize } from './kit';
 import { pagePalette } from './palette';
-import { domainOf, niceTicks } from './scale';
+import { ticksWithin } from './scale';
 import { vCurveTable, type VCurveData } from './v-curve';
-import { VCurveGrounds, VCurveLimits, VCurveLines, VCurveMarks, VCurveNames } from './VCurveParts';
+import { VCurveGrounds, VCurveLimits, VCurveLines, VCurveMarks, VCurveNames, type VCurveParts } from './VCurveParts';
 
 /** Family of V-curves: armature over field current at several loads, with the limits of stator, field and pull-out. */
 export function VCurveChart({ width, height, palette = pagePalette, ...data }: VCurveData & ChartSize) {
@@ -13,9 +13,12 @@ export function VCurveChart({ width, height, palette = pagePalette, ...data }: V
   const narrow = width < 380;
   const all = data.curves.flatMap((curve) => curve.points);
   const fields = all.map((p) => p.fieldA);
-  const xTicks = niceTicks(Math.min(...fields), Math.max(...fields, data.limits.fieldA * 1.08), narrow ? 5 : 9);
-  const yTicks = niceTicks(0, data.limits.armatureA * 1.15, narrow ? 4 : 6);
-  const ends = { field: domainOf(xTicks), armature: domainOf(yTicks) };
+  const ends: VCurveParts['ends'] = {
+    field: [Math.floor(Math.min(...fields)), Math.ceil(Math.max(...fields, data.limits.fieldA * 1.1))],
+    armature: [0, Math.ceil(data.limits.armatureA * 1.2)],
+  };
+  const xTicks = ticksWithin(...ends.field, narrow ? 5 : 9);
+  const yTicks = ticksWithin(...ends.armature, narrow ? 4 : 6);
   const clip = `${hatch.limit}-clip`;
   return (
     <ComposedChart

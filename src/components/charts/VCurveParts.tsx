@@ -117,12 +117,12 @@ export function VCurveNames({ data, plot, palette, ends, narrow }: VCurveParts) 
         );
       })}
       <Words
-        x={(plot.left + plot.right) / 2}
+        x={narrow ? plot.left + 8 : (plot.left + plot.right) / 2}
         y={plot.y(armatureA) - 5}
         palette={palette}
         tone="madder"
         bold
-        anchor="middle"
+        anchor={narrow ? 'start' : 'middle'}
         halo
       >
         {`stator, ${formatQuantity(armatureA, 'A')}`}
@@ -141,14 +141,7 @@ export function VCurveNames({ data, plot, palette, ends, narrow }: VCurveParts) 
         </Words>
       )}
       {edge && (
-        <Words
-          x={plot.left + 8}
-          y={Math.max(plot.y(armatureA) + 18, plot.y(edge.armatureA) - 22)}
-          palette={palette}
-          tone="ochre"
-          bold
-          halo
-        >
+        <Words x={plot.left + 8} y={plot.y(armatureA) + 20} palette={palette} tone="ochre" bold halo>
           {pullOutName ?? 'pull-out'}
         </Words>
       )}
@@ -162,24 +155,20 @@ export function VCurveNames({ data, plot, palette, ends, narrow }: VCurveParts) 
   );
 }
 
-export function VCurveMarks({ data, plot, palette }: VCurveParts) {
+export function VCurveMarks({ data, plot, palette, narrow }: VCurveParts) {
+  const { today, plan, nameplate } = data;
+  const at = toPixels(plot);
   const marks: { at: CurrentPoint; shape: MarkShape; words: string; above?: boolean }[] = [];
-  if (data.nameplate) marks.push({ at: data.nameplate, shape: 'square', words: 'nameplate', above: true });
-  if (data.today)
-    marks.push({
-      at: data.today,
-      shape: 'circle',
-      words: `today ${formatQuantity(data.today.fieldA, 'A', { upTo: 1 })}`,
-    });
-  if (data.plan) {
-    marks.push({
-      at: data.plan,
-      shape: 'diamond',
-      words: `${data.planName ?? 'plan'} ${formatQuantity(data.plan.fieldA, 'A', { upTo: 1 })}`,
-    });
+  if (nameplate) marks.push({ at: nameplate, shape: 'square', words: narrow ? '' : 'nameplate', above: true });
+  if (today)
+    marks.push({ at: today, shape: 'circle', words: `today ${formatQuantity(today.fieldA, 'A', { upTo: 1 })}` });
+  if (plan) {
+    const near = today && Math.abs(at(plan).x - at(today).x) < 104 && Math.abs(at(plan).y - at(today).y) < 30;
+    const words = `${data.planName ?? 'plan'} ${formatQuantity(plan.fieldA, 'A', { upTo: 1 })}`;
+    marks.push({ at: plan, shape: 'diamond', words, above: Boolean(near) });
   }
   return marks.map((mark) => {
-    const { x, y } = toPixels(plot)(mark.at);
+    const { x, y } = at(mark.at);
     const right = x > plot.right - 60;
     return (
       <g key={mark.shape}>

@@ -17,3 +17,6 @@ export type { CompletedMotor } from './nameplate';
 export type { ExciterKind, RotorKind, TypicalValue } from './typical';
 export { assumedSensitivity } from './sensitivity';
 export type { AssumedSwing } from './sensitivity';
+export { fixField } from './fixed-field';
+export type { FixedField, TakenPower } from './fixed-field';
+export { leastField } from './least-field';

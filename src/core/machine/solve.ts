@@ -105,21 +105,35 @@ export function solveAtPowerFactor(
  * @throws {PullOutError} with the greatest three-phase shaft power in watts
  */
 export function solveAtField(model: MotorModel, shaft: number, fieldCurrentA: number, v: number): MachineState {
+  return holdField(model, fieldCurrentA, v).solve(shaft);
+}
+
+/** A field current held at a voltage: its greatest shaft power and the state at any load below it. [pu] */
+export interface HeldField {
+  greatest: number;
+  solve: (shaft: number) => MachineState;
+}
+
+/** Prepares the states of a constant field current; loads are then solved one by one without searching pull-out again. */
+export function holdField(model: MotorModel, fieldCurrentA: number, v: number): HeldField {
   const held = shaftOverAngle(model, fieldCurrentA, v);
-  if (shaft > held.greatest + 1e-12 * (1 + shaft)) {
-    const greatestW = held.greatest * model.baseKva * 1000;
-    throw new PullOutError(
-      `The shaft load of ${shaft * model.baseKva} kW exceeds the ${greatestW / 1000} kW that a field of ${fieldCurrentA} A can hold.`,
-      greatestW,
-    );
-  }
-  const angle = angleFor(held.shaftAt, shaft, held.topRad);
-  if (angle === null) throw new NotConvergedError('load angle at a field current', 36, held.greatest - shaft);
-  const e = held.emfAt(angle);
-  const { iq, x } = axisCurrents(v, e, angle, model.z);
-  const p = v * (Math.cos(angle) * iq + Math.sin(angle) * x);
-  const q = v * (Math.sin(angle) * iq - Math.cos(angle) * x);
-  return { v, p, q, e, angle, current: Math.hypot(iq, x), fieldCurrentA };
+  const solve = (shaft: number): MachineState => {
+    if (shaft > held.greatest + 1e-12 * (1 + shaft)) {
+      const greatestW = held.greatest * model.baseKva * 1000;
+      throw new PullOutError(
+        `The shaft load of ${shaft * model.baseKva} kW exceeds the ${greatestW / 1000} kW that a field of ${fieldCurrentA} A can hold.`,
+        greatestW,
+      );
+    }
+    const angle = angleFor(held.shaftAt, shaft, held.topRad);
+    if (angle === null) throw new NotConvergedError('load angle at a field current', 36, held.greatest - shaft);
+    const e = held.emfAt(angle);
+    const { iq, x } = axisCurrents(v, e, angle, model.z);
+    const p = v * (Math.cos(angle) * iq + Math.sin(angle) * x);
+    const q = v * (Math.sin(angle) * iq - Math.cos(angle) * x);
+    return { v, p, q, e, angle, current: Math.hypot(iq, x), fieldCurrentA };
+  };
+  return { greatest: held.greatest, solve };
 }
 
 interface HeldPower {

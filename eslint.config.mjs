@@ -3,7 +3,11 @@ import boundaries from 'eslint-plugin-boundaries';
 import astro from 'eslint-plugin-astro';
 import tseslint from 'typescript-eslint';
 
-const layer = (type, pattern, mode = 'folder') => ({ type, pattern, mode });
+const layer = (type, pattern) => ({ type, pattern });
+const may = (from, ...to) => ({
+  from: { element: { type: from } },
+  allow: [{ to: { element: { type: [...to, 'format'] } } }],
+});
 
 export default tseslint.config(
   { ignores: ['dist', 'node_modules', '.astro', 'db/data', 'coverage'] },
@@ -16,6 +20,7 @@ export default tseslint.config(
     settings: {
       'import/resolver': { node: { extensions: ['.ts', '.tsx', '.astro', '.mjs', '.js'] } },
       'boundaries/elements': [
+        { type: 'format', pattern: 'src/components/ui/format.ts', partialMatch: false },
         layer('core', 'src/core'),
         layer('schemas', 'src/schemas'),
         layer('policies', 'src/server/policies'),
@@ -32,27 +37,25 @@ export default tseslint.config(
       ],
     },
     rules: {
-      'boundaries/element-types': [
+      'boundaries/dependencies': [
         'error',
         {
           default: 'disallow',
-          rules: [
-            { from: 'core', allow: ['core'] },
-            { from: 'schemas', allow: ['schemas', 'core'] },
-            { from: 'policies', allow: ['policies', 'schemas'] },
-            { from: 'db', allow: ['db', 'server'] },
-            { from: 'models', allow: ['models', 'db', 'schemas', 'core', 'policies'] },
-            { from: 'presenters', allow: ['presenters', 'models', 'schemas', 'core', 'policies'] },
-            { from: 'services', allow: ['services', 'policies', 'presenters', 'models', 'db', 'server', 'schemas', 'core'] },
-            {
-              from: 'server',
-              allow: ['server', 'services', 'policies', 'presenters', 'models', 'db', 'schemas', 'core', 'components'],
-            },
-            { from: 'client', allow: ['client', 'schemas', 'core'] },
-            { from: 'components', allow: ['components', 'client', 'schemas', 'core'] },
-            { from: 'layouts', allow: ['layouts', 'components', 'schemas', 'core', 'client'] },
-            { from: 'integrations', allow: ['integrations'] },
-            { from: 'pages', allow: ['pages', 'layouts', 'components', 'services', 'server', 'schemas', 'core', 'client'] },
+          policies: [
+            may('format'),
+            may('core', 'core'),
+            may('schemas', 'schemas', 'core'),
+            may('policies', 'policies', 'schemas'),
+            may('db', 'db', 'server'),
+            may('models', 'models', 'db', 'schemas', 'core', 'policies'),
+            may('presenters', 'presenters', 'models', 'schemas', 'core', 'policies'),
+            may('services', 'services', 'policies', 'presenters', 'models', 'db', 'server', 'schemas', 'core'),
+            may('server', 'server', 'services', 'policies', 'presenters', 'models', 'db', 'schemas', 'core', 'components'),
+            may('client', 'client', 'schemas', 'core'),
+            may('components', 'components', 'client', 'schemas', 'core'),
+            may('layouts', 'layouts', 'components', 'schemas', 'core', 'client'),
+            may('integrations', 'integrations'),
+            may('pages', 'pages', 'layouts', 'components', 'services', 'server', 'schemas', 'core', 'client'),
           ],
         },
       ],

@@ -28,11 +28,12 @@ export function findBlock(
   fileName: string,
   given: { headerRow?: number | null; firstRow?: number },
   what: 'readings' | 'bills',
+  kindOf: (text: string, scanner: StampScanner) => CellKind = cellKind,
 ): TableBlock {
   const scanner = new StampScanner();
   const kinds: CellKind[][] = [];
   const limit = Math.min(grid.rows, searchRows);
-  for (let row = 0; row < limit; row += 1) kinds.push(kindsOf(grid, row, scanner));
+  for (let row = 0; row < limit; row += 1) kinds.push(kindsOf(grid, row, scanner, kindOf));
   const lastRow = lastFilledRow(grid);
   const givenHeader = typeof given.headerRow === 'number' ? rowOfNumber(grid, given.headerRow) : given.headerRow;
   let firstRow = given.firstRow === undefined ? -1 : rowOfNumber(grid, given.firstRow);
@@ -62,9 +63,9 @@ export function findBlock(
   return { headerRow, firstRow, lastRow, names, preambleRows };
 }
 
-function kindsOf(grid: Grid, row: number, scanner: StampScanner): CellKind[] {
+function kindsOf(grid: Grid, row: number, scanner: StampScanner, kindOf: typeof cellKind): CellKind[] {
   const width = Math.min(grid.width(row), gridCaps.columns + 1);
-  return Array.from({ length: width }, (_, column) => cellKind(grid.text(row, column), scanner));
+  return Array.from({ length: width }, (_, column) => kindOf(grid.text(row, column), scanner));
 }
 
 function rowOfNumber(grid: Grid, number: number): number {

@@ -53,8 +53,22 @@ export function sampleRows(first: number, last: number, wanted = 500): number[] 
   return [...rows].sort((a, b) => a - b);
 }
 
+/** First words of rows of totals, averages and remarks under or between the data. */
+export const footerWords =
+  /^["'\s]*(grand\s+)?(sub)?(total|sum|summe|gesamt|totale|somma|suma|average|mean|mittel|media|moyenne|max|maximum|min|minimum|end of|note|remark|source|eof|report|generated|printed)/i;
+
+/** The rows that do not begin like a footer. */
+export function withoutFooters(grid: Grid, rows: readonly number[]): number[] {
+  return rows.filter((row) => ![0, 1, 2].some((column) => footerWords.test(grid.text(row, column))));
+}
+
 /** Profiles every column over sample rows. */
-export function profileColumns(grid: Grid, names: readonly string[], rows: readonly number[]): ColumnProfile[] {
+export function profileColumns(
+  grid: Grid,
+  names: readonly string[],
+  rows: readonly number[],
+  kindOf: (text: string, scanner: StampScanner) => CellKind = cellKind,
+): ColumnProfile[] {
   const scanner = new StampScanner();
   return names.map((name, index) => {
     const profile: ColumnProfile = {
@@ -69,7 +83,7 @@ export function profileColumns(grid: Grid, names: readonly string[], rows: reado
     };
     for (const row of rows) {
       const text = grid.text(row, index);
-      const kind = cellKind(text, scanner);
+      const kind = kindOf(text, scanner);
       profile.kinds[kind] += 1;
       if (kind === 'blank') continue;
       if (profile.first === '') profile.first = text;

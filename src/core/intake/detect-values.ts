@@ -4,7 +4,7 @@ import { channelMeaning, type ChannelMeaning } from './channel-words';
 import { preambleUnit } from './preamble';
 import type { RoleFinding, Test } from './evidence';
 import type { Grid } from './grid';
-import { mentions, unitMeaning } from './words';
+import { mentions } from './words';
 
 interface ValueInput {
   grid: Grid;
@@ -29,8 +29,12 @@ export function findChannels(input: ValueInput): void {
   const explained = [...input.findings.values()].some(
     (finding) => finding.role === 'channel' || finding.role === 'unit',
   );
-  if (explained && !candidates.some((candidate) => candidate.meaning.isPlain && candidate.meaning.unit))
-    return findExplainedValue(input, candidates);
+  const isSpoken = candidates.some((candidate) => candidate.meaning.isPlain && candidate.meaning.unit !== null);
+  if (explained && !isSpoken) return findExplainedValue(input, candidates);
+  for (const [index, finding] of input.findings) {
+    if (finding.role !== 'channel' && finding.role !== 'unit') continue;
+    input.findings.set(index, { role: 'ignore', tests: [[true, 'Each column of figures names its own quantity']] });
+  }
   const used = candidates.filter((candidate) => candidate.meaning.role !== 'ignore');
   if (used.some((candidate) => candidate.meaning.role === 'active')) {
     for (const candidate of used) markRegister(candidate);
@@ -53,10 +57,14 @@ function figuresOf(input: ValueInput, profile: ColumnProfile): Float64Array {
   return Float64Array.from(input.rows, (row) => input.grid.number(row, profile.index, input.decimalMark));
 }
 
+const usualUnit = (role: string): string =>
+  role.startsWith('reactive') ? 'kvarh' : role === 'apparent' ? 'kVAh' : 'kWh';
+
 function set(input: ValueInput, candidate: Candidate, role: RoleFinding['role'], tests: Test[]): void {
   const { unit, measure } = candidate.meaning;
   const isUsed = role !== 'ignore' && role !== 'power-factor';
-  input.findings.set(candidate.profile.index, { role, tests, ...(isUsed ? { unit: unit?.unit, measure } : {}) });
+  const own = unit ? { unit: unit.unit, measure } : { unit: usualUnit(role), measure, isUnitAssumed: true };
+  input.findings.set(candidate.profile.index, { role, tests, ...(isUsed ? own : {}) });
 }
 
 /** One value column whose quantity another column of the row names. */
@@ -162,14 +170,13 @@ function nameActive(input: ValueInput, candidates: Candidate[]): void {
       !mentions(candidate.profile.name, 'ignorable'),
   );
   const preamble = preambleUnit(input.grid, input.block);
-  const unit = preamble ?? unitMeaning('kWh');
   const preferred = plain.filter((candidate) => mentions(candidate.profile.name, 'value'));
   const chosen = preferred.length === 1 ? preferred : plain;
   for (const candidate of chosen) {
     candidate.meaning = {
       role: 'active',
-      unit,
-      measure: unit?.measure ?? 'energy',
+      unit: preamble,
+      measure: preamble?.measure ?? 'energy',
       why: preamble ? `${preamble.unit} is named above the table` : 'No unit is named: taken as kWh',
       isPlain: preamble !== null,
     };

@@ -1,4 +1,4 @@
-import { profileColumns, sampleRows, shareOf, type ColumnProfile } from './cells';
+import { profileColumns, sampleRows, shareOf, withoutFooters, type ColumnProfile } from './cells';
 import type { TableBlock } from './block';
 import { findChannels } from './detect-values';
 import { findTimeColumns } from './detect-time';
@@ -27,7 +27,7 @@ export function detectColumns(
   block: TableBlock,
   options: { timeZone: string; delimiter?: string; map: Partial<ColumnMap> },
 ): IntervalDetection {
-  const rows = sampleRows(block.firstRow, block.lastRow, 360);
+  const rows = withoutFooters(grid, sampleRows(block.firstRow, block.lastRow, 360));
   const profiles = profileColumns(grid, block.names, rows);
   const guesses: Guess[] = [headerGuess(grid, block)];
   const decimals = decimalVote(grid, profiles, rows, options);
@@ -50,7 +50,7 @@ export function detectColumns(
   });
   guesses.push(...time.guesses);
   const findings = new Map<number, RoleFinding>(time.findings);
-  if (wide) for (const use of wide.columns) findings.set(use.index, wideFinding(wide));
+  if (wide) for (const use of wide.columns) findings.set(use.index, wideFinding(grid, block, wide));
   const open = profiles.filter((profile) => !findings.has(profile.index));
   findLabels(open, findings);
   const remaining = profiles.filter((profile) => !findings.has(profile.index));
@@ -73,29 +73,29 @@ export function detectColumns(
   return {
     layout: wide ? 'wide' : 'long',
     decimalMark,
-    columns: withWideUnit(grid, block, columns, wide),
+    columns,
     stamp,
     evidence,
     guesses,
   };
 }
 
-function wideFinding(wide: WideColumns): RoleFinding {
-  return { role: 'day-value', tests: [[wide.sure, wide.why]] };
-}
-
-/** A wide table's unit stands in a header, beside the figures or nowhere. */
-function withWideUnit(grid: Grid, block: TableBlock, columns: ColumnUse[], wide: WideColumns | null): ColumnUse[] {
-  if (!wide) return columns;
-  const hasOwnUnit = columns.some((use) => use.role === 'unit' || use.role === 'channel');
-  const named = columns.map((use) => unitOfHeader(use.name)).find((unit) => unit !== null);
+/** A wide table's unit stands in a header, above the table, or nowhere. */
+function wideFinding(grid: Grid, block: TableBlock, wide: WideColumns): RoleFinding {
+  const named = block.names.map((name) => unitOfHeader(name)).find((unit) => unit !== null);
   const unit = named ?? preambleUnit(grid, block);
-  return columns.map((use) =>
-    use.role === 'day-value' && unit && !hasOwnUnit ? { ...use, unit: unit.unit, measure: unit.measure } : use,
-  );
+  const tests: Test[] = [[wide.sure, wide.why]];
+  if (unit) return { role: 'day-value', unit: unit.unit, measure: unit.measure, tests };
+  return {
+    role: 'day-value',
+    unit: 'kWh',
+    isUnitAssumed: true,
+    tests: [...tests, [false, 'No unit is named: taken as kWh']],
+  };
 }
 
-function headerGuess(grid: Grid, block: TableBlock): Guess {
+/** The header row with what speaks for it. */
+export function headerGuess(grid: Grid, block: TableBlock): Guess {
   if (block.headerRow === null)
     return guess('header-row', 'none', [[false, 'No row of names stands above the first row of readings']]);
   const number = grid.rowNumber(block.headerRow);
@@ -104,7 +104,8 @@ function headerGuess(grid: Grid, block: TableBlock): Guess {
   ]);
 }
 
-function decimalVote(
+/** The decimal mark by the cells of the columns of figures. */
+export function decimalVote(
   grid: Grid,
   profiles: readonly ColumnProfile[],
   rows: readonly number[],
@@ -114,17 +115,21 @@ function decimalVote(
   const cells = figures.flatMap((profile) =>
     rows
       .slice(0, 200)
-      .map((row) => grid.text(row, profile.index))
+      .map((row) => grid.figureText(row, profile.index))
       .filter((text) => !isBlankWord(text)),
   );
   return voteDecimalMark(cells, options.delimiter === ';' ? ',' : '.');
 }
 
-function decimalGuess(vote: DecimalVote, map: Partial<ColumnMap>): Guess {
+/** The decimal mark with what speaks for it. */
+export function decimalGuess(vote: DecimalVote, map: Partial<ColumnMap>): Guess {
   const named = (mark: string): string => (mark === ',' ? 'comma' : 'point');
-  if (map.decimalMark) return guess('decimal-mark', named(map.decimalMark), [[true, 'Given by the column map']]);
+  if (map.decimalMark && map.decimalMark !== vote.mark)
+    return guess('decimal-mark', named(map.decimalMark), [[true, 'Given by the column map']]);
   if (vote.comma + vote.point === 0)
-    return guess('decimal-mark', named(vote.mark), [[vote.sure, 'No figure shows which mark is the decimal one']]);
+    return guess('decimal-mark', named(vote.mark), [
+      [vote.sure, vote.sure ? 'No figure has a mark' : 'No figure shows which mark is the decimal one'],
+    ]);
   const share = `${Math.max(vote.comma, vote.point)} of ${vote.comma + vote.point} telling figures agree`;
   return guess('decimal-mark', named(vote.mark), [[vote.sure, share]]);
 }

@@ -26,6 +26,7 @@ export function guess(key: Guess['key'], takenAs: string, tests: readonly Test[]
 export interface RoleFinding {
   role: IntervalRole | BillRole;
   unit?: string | undefined;
+  isUnitAssumed?: boolean;
   measure?: Measure | undefined;
   quantity?: string | undefined;
   tests: Test[];
@@ -41,9 +42,12 @@ export function columnEvidence(profile: ColumnProfile, finding: RoleFinding, val
     values: valuesShown,
     takenAs: finding.role,
     unit: finding.unit ?? '',
+    ...(finding.isUnitAssumed ? { isUnitAssumed: true } : {}),
     ...(finding.measure ? { measure: finding.measure } : {}),
     ...(finding.quantity ? { quantity: finding.quantity } : {}),
     ...weigh(finding.tests),
+    // What is left out needs nobody's word.
+    ...(finding.role === 'ignore' ? { sure: true } : {}),
   };
 }
 

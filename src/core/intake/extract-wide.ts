@@ -8,7 +8,7 @@ import {
   type Extraction,
   type RowChannel,
 } from './extract';
-import { footerWords } from './read-stamps';
+import { footerWords } from './cells';
 import { StampScanner } from './stamps';
 import type { Strand } from './strand';
 import type { ColumnUse } from './types';

@@ -11,6 +11,8 @@ export interface Grid {
   width(row: number): number;
   /** The cell as text, trimmed. */
   text(row: number, column: number): string;
+  /** The cell as text if its figure hangs on the decimal mark; '' for numbers a spreadsheet stores as such. */
+  figureText(row: number, column: number): string;
   /** The cell as a number; NaN if it is blank or no number. */
   number(row: number, column: number, decimalMark: '.' | ','): number;
   /** Hands the cell to the scanner; false if it is blank or cannot be a date or time. */
@@ -65,6 +67,10 @@ export class TextGrid implements Grid {
     return guarded ? (guarded[1] ?? '') : cell;
   }
 
+  figureText(row: number, column: number): string {
+    return this.text(row, column);
+  }
+
   number(row: number, column: number, decimalMark: '.' | ','): number {
     const start = this.start(row, column);
     if (start < 0) return Number.NaN;
@@ -108,6 +114,11 @@ export class CellGrid implements Grid {
     return cell === null || cell === undefined ? '' : String(cell).trim();
   }
 
+  figureText(row: number, column: number): string {
+    const cell = this.cells[row]?.[column];
+    return typeof cell === 'string' ? cell : '';
+  }
+
   number(row: number, column: number, decimalMark: '.' | ','): number {
     const cell = this.cells[row]?.[column];
     if (typeof cell === 'number') return cell;
@@ -127,11 +138,15 @@ export class CellGrid implements Grid {
 /** Rows become columns: a table with a column a month read as one with a row a month. */
 export function transpose(grid: Grid): CellGrid {
   let columns = 0;
-  for (let row = 0; row < grid.rows; row += 1) columns = Math.max(columns, grid.width(row));
-  const cells = Array.from({ length: columns }, (_, column) =>
-    Array.from({ length: grid.rows }, (_unused, row): Cell => grid.text(row, column)),
+  const rows = Math.min(grid.rows, gridCaps.columns);
+  for (let row = 0; row < rows; row += 1) columns = Math.max(columns, grid.width(row));
+  const cellAt = (row: number, column: number): Cell => {
+    const stored = grid.figureText(row, column) === '' ? grid.number(row, column, '.') : Number.NaN;
+    return Number.isNaN(stored) ? grid.text(row, column) : stored;
+  };
+  return new CellGrid(
+    Array.from({ length: columns }, (_, column) => Array.from({ length: rows }, (_unused, row) => cellAt(row, column))),
   );
-  return new CellGrid(cells);
 }
 
 /** Spreadsheet letters of a column, 0 is A. */

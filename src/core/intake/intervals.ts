@@ -5,6 +5,7 @@ import { intakeError, IntakeError } from './errors';
 import { guess } from './evidence';
 import { columnOf, extractLong, valueRoles, type ColumnPlan, type Extraction } from './extract';
 import { extractWide } from './extract-wide';
+import { delimiterGuesses } from './guesses';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
 import { preambleMultiplier } from './preamble';
@@ -84,24 +85,6 @@ function completeMap(opened: OpenedTable, block: TableBlock, plan: ColumnPlan): 
     stamp: plan.stamp,
     ...(plan.meter === undefined ? {} : { meter: plan.meter }),
   };
-}
-
-const delimiterNames: Record<string, string> = { ',': 'comma', ';': 'semicolon', '\t': 'tab', '|': 'bar' };
-
-/** The delimiter with what speaks for it. */
-export function delimiterGuesses(opened: OpenedTable, map: Partial<ColumnMap>): Guess[] {
-  const { vote, dialect } = opened;
-  if (!vote || dialect.delimiter === undefined) return [];
-  const name = delimiterNames[dialect.delimiter] ?? dialect.delimiter;
-  if (map.delimiter) return [guess('delimiter', name, [[true, 'Given by the column map']])];
-  return [
-    guess('delimiter', name, [
-      [
-        vote.linesAgreeing * 2 > vote.linesTried,
-        `${vote.linesAgreeing} of the first ${vote.linesTried} lines have ${vote.columns} cells`,
-      ],
-    ]),
-  ];
 }
 
 function meterGuesses(meters: string[], map: Partial<ColumnMap>): Guess[] {
@@ -276,20 +259,14 @@ function checkExtraction(extraction: Extraction, options: ReadOptions): void {
 /** Units nobody named and multipliers nobody applied. */
 function assumptions(planned: IntervalPlan): IntakeNote[] {
   const notes: IntakeNote[] = [];
-  const unnamed = planned.plan.columns.filter(
-    (use) =>
-      (use.role === 'active' || use.role === 'day-value') &&
-      !planned.evidence.some(
-        (line) =>
-          line.index <= use.index &&
-          use.index < line.index + line.span &&
-          (line.takenAs === 'day-value' ? use.unit : line.testsMet > 0 && !/No unit is named/.test(line.why)),
-      ),
-  );
-  if (unnamed.length > 0 && !planned.plan.columns.some((use) => use.role === 'unit' || use.role === 'channel')) {
+  const isExplained = planned.plan.columns.some((use) => use.role === 'unit' || use.role === 'channel');
+  const assumed = planned.evidence.filter((line) => line.isUnitAssumed && line.takenAs !== 'ignore');
+  if (assumed.length > 0 && !isExplained) {
+    const units = [...new Set(assumed.map((line) => line.unit))].join(' and ');
     notes.push({
       code: 'unit-assumed',
-      message: 'No unit is named in the file: the figures are taken as kWh per interval.',
+      message: `No unit is named in the file: the figures are taken as ${units} per interval.`,
+      where: assumed.map((line) => `column ${line.letter}`).join(', '),
     });
   }
   const multiplier = preambleMultiplier(planned.opened.grid, planned.block);

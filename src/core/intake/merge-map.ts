@@ -71,10 +71,10 @@ export function mergeEvidence(
     const shown: ColumnEvidence = { ...line, takenAs: use.role, unit: use.unit ?? '' };
     if (use.measure) shown.measure = use.measure;
     if (use.quantity) shown.quantity = use.quantity;
-    if (same && !given.has(line.index)) return shown;
-    if (same) return { ...shown, sure: true };
+    if (same) return shown;
     return {
       ...shown,
+      isUnitAssumed: false,
       why: given.has(line.index) ? 'Given by the column map' : 'Left out: the column map gives its place to another',
       testsMet: 1,
       testsTotal: 1,

@@ -1,3 +1,4 @@
+import { footerWords } from './cells';
 import type { ColumnPlan } from './extract';
 import { columnLetter, type Grid } from './grid';
 import { isBlankWord } from './numbers';
@@ -15,10 +16,6 @@ export interface StampRows {
 }
 
 type StampReader = (row: number) => number;
-
-/** Rows of totals, averages and remarks under or between the readings. */
-export const footerWords =
-  /^["'\s]*(grand\s+)?(sub)?(total|sum|summe|gesamt|totale|somma|suma|average|mean|mittel|media|moyenne|max|maximum|min|minimum|end of|note|remark|source|eof|report|generated|printed)/i;
 
 /** Reads the stamp of every row of a long table, one meter's rows only; minutes of the wall clock. */
 export function readStamps(plan: ColumnPlan): StampRows {

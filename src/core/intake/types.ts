@@ -198,6 +198,8 @@ export interface ColumnEvidence {
   values: string;
   takenAs: IntervalRole | BillRole;
   unit: string;
+  /** No unit is named in the file: `unit` is what is usual. */
+  isUnitAssumed?: boolean;
   measure?: Measure;
   quantity?: string;
   why: string;

@@ -1,0 +1,240 @@
+import { billCellKind, monthDay } from './bill-months';
+import { billMeaning } from './bill-words';
+import { findBlock, type TableBlock } from './block';
+import { profileColumns, sampleRows, shareOf, withoutFooters, type ColumnProfile } from './cells';
+import { decimalGuess, decimalVote, headerGuess } from './detect';
+import { IntakeError } from './errors';
+import { columnEvidence, guess, useOf, valuesShown, type RoleFinding } from './evidence';
+import { transpose, type Grid } from './grid';
+import { delimiterGuesses } from './guesses';
+import { mergeColumns, mergeEvidence } from './merge-map';
+import type { OpenedTable } from './open';
+import { findDateOrder, orderInWords } from './stamp-order';
+import type { ColumnEvidence, ColumnMap, ColumnUse, DateOrder, Guess, ReadOptions } from './types';
+import { mentions } from './words';
+
+/** A table of bills with its meaning settled. */
+export interface BillPlan {
+  opened: OpenedTable;
+  /** The table with a row a bill; the file's own grid turned where it has a column a bill. */
+  grid: Grid;
+  block: TableBlock;
+  columns: ColumnUse[];
+  decimalMark: '.' | ',';
+  order: DateOrder;
+  isTransposed: boolean;
+  columnMap: ColumnMap;
+  evidence: ColumnEvidence[];
+  guesses: Guess[];
+}
+
+/**
+ * Settles the meaning of a table of bills: detection first, the column map over it.
+ * @throws {IntakeError} if no table is found or the map does not fit it.
+ */
+export function planBills(opened: OpenedTable, options: ReadOptions): BillPlan {
+  const map: Partial<ColumnMap> = options.columnMap ?? {};
+  const { grid, block, isTransposed } = locateBills(opened.grid, options.fileName, map);
+  const rows = withoutFooters(grid, sampleRows(block.firstRow, block.lastRow, 400));
+  const profiles = profileColumns(grid, block.names, rows, billCellKind);
+  const vote = decimalVote(
+    grid,
+    profiles,
+    rows,
+    opened.dialect.delimiter ? { delimiter: opened.dialect.delimiter } : {},
+  );
+  const decimalMark = map.decimalMark ?? vote.mark;
+  const findings = new Map<number, RoleFinding>();
+  const order = findPeriods({ grid, profiles, rows, map, timeZone: options.timeZone, findings });
+  for (const profile of profiles)
+    if (!findings.has(profile.index)) findings.set(profile.index, meaningOf(grid, profile, rows));
+  settleTotals(grid, profiles, rows, decimalMark, findings);
+  settleDoubles(profiles, findings);
+  const evidence = profiles.map((profile) =>
+    columnEvidence(
+      profile,
+      findings.get(profile.index) ?? { role: 'ignore', tests: [] },
+      valuesShown(grid, profile, rows, decimalMark),
+    ),
+  );
+  const columns = mergeColumns(
+    evidence.map((line) => useOf(line)),
+    map,
+    block,
+    options.fileName,
+  );
+  const layout = guess('layout', isTransposed ? 'transposed' : 'long', [
+    [true, isTransposed ? 'A column holds one bill' : 'A row holds one bill'],
+  ]);
+  return {
+    opened: { ...opened, dialect: { ...opened.dialect, decimalMark } },
+    grid,
+    block,
+    columns,
+    decimalMark,
+    order: order.order,
+    isTransposed,
+    columnMap: {
+      kind: 'bills',
+      ...(opened.dialect.sheet === undefined ? {} : { sheet: opened.dialect.sheet }),
+      ...(opened.dialect.delimiter === undefined ? {} : { delimiter: opened.dialect.delimiter }),
+      decimalMark,
+      headerRow: block.headerRow === null ? null : grid.rowNumber(block.headerRow),
+      firstRow: grid.rowNumber(block.firstRow),
+      layout: isTransposed ? 'transposed' : 'long',
+      columns,
+      stamp: { order: order.order },
+      ...(map.periodEnds ? { periodEnds: map.periodEnds } : {}),
+    },
+    evidence: mergeEvidence(evidence, columns, map),
+    guesses: [...delimiterGuesses(opened, map), headerGuess(grid, block), layout, decimalGuess(vote, map), order],
+  };
+}
+
+/** A row a bill, or, where no row holds a date beside figures, a column a bill. */
+function locateBills(
+  grid: Grid,
+  fileName: string,
+  map: Partial<ColumnMap>,
+): { grid: Grid; block: TableBlock; isTransposed: boolean } {
+  if (map.layout === 'transposed') {
+    const turned = transpose(grid);
+    return { grid: turned, block: findBlock(turned, fileName, map, 'bills', billCellKind), isTransposed: true };
+  }
+  try {
+    return { grid, block: findBlock(grid, fileName, map, 'bills', billCellKind), isTransposed: false };
+  } catch (cause) {
+    if (!(cause instanceof IntakeError) || map.layout === 'long' || grid.rows > 300) throw cause;
+    const turned = transpose(grid);
+    try {
+      return { grid: turned, block: findBlock(turned, fileName, {}, 'bills', billCellKind), isTransposed: true };
+    } catch {
+      throw cause;
+    }
+  }
+}
+
+interface PeriodInput {
+  grid: Grid;
+  profiles: readonly ColumnProfile[];
+  rows: readonly number[];
+  map: Partial<ColumnMap>;
+  timeZone: string;
+  findings: Map<number, RoleFinding>;
+}
+
+/** Columns of the period: from and to, a month, or the day of reading with the days before it. */
+function findPeriods(input: PeriodInput): Guess & { order: DateOrder } {
+  const { grid, profiles, rows, map, findings } = input;
+  const months = profiles.filter((profile) => isMonths(grid, profile, rows));
+  const dates = profiles.filter((profile) => !months.includes(profile) && shareOf(profile, 'date', 'stamp') > 0.8);
+  const relevant = dates.filter(
+    (profile) =>
+      !/\b(due|paid|payment|issued?|printed|invoice|bill) ?(date)?\b/i.test(profile.name.replaceAll('_', ' ')) ||
+      mentions(profile.name, 'begin') ||
+      mentions(profile.name, 'end'),
+  );
+  const [only = dates[0]] = relevant;
+  const from =
+    relevant.find((profile) => mentions(profile.name, 'begin')) ?? (relevant.length > 1 ? relevant[0] : undefined);
+  const to =
+    relevant.find(
+      (profile) => profile !== from && (mentions(profile.name, 'end') || /\b(through|thru|read)\b/i.test(profile.name)),
+    ) ?? relevant.find((profile) => profile !== from && from !== undefined);
+  const put = (profile: ColumnProfile, role: RoleFinding['role'], why: string, isSure: boolean): void =>
+    void findings.set(profile.index, { role, tests: [[isSure, why]] });
+  if (from && to) {
+    put(from, 'period-from', 'The earlier date of the row', mentions(from.name, 'begin') || relevant.length === 2);
+    put(to, 'period-to', 'The later date of the row', mentions(to.name, 'end') || relevant.length === 2);
+  } else if (months[0]) put(months[0], 'month', 'Each cell names a month', true);
+  else if (only) {
+    if (mentions(only.name, 'begin'))
+      put(only, 'period-from', 'The only date of the row: each period runs to the next', false);
+    else put(only, 'period-to', 'The only date of the row: each period begins where the one before ends', false);
+  }
+  const days = profiles.find(
+    (profile) =>
+      /\b(days|tage|giorni|jours|dias|días)\b/i.test(profile.name.replaceAll('_', ' ')) &&
+      shareOf(profile, 'number') > 0.8,
+  );
+  if (days) put(days, 'days', 'Named as days', true);
+  for (const profile of dates)
+    if (!findings.has(profile.index)) put(profile, 'ignore', 'A date that bounds no period', true);
+  const dated = [from, to, only].find(
+    (profile) => profile !== undefined && findings.get(profile.index)?.role !== 'ignore',
+  );
+  const found = dated
+    ? findDateOrder(grid, dated.index, rows, input.timeZone)
+    : { order: 'YMD' as const, tests: [[true, 'Months are named']] as [boolean, string][] };
+  const given = map.stamp?.order;
+  const order = given ?? found.order;
+  const tests: [boolean, string][] = given && given !== found.order ? [[true, 'Given by the column map']] : found.tests;
+  return { ...guess('date-order', orderInWords(order), tests), order };
+}
+
+function isMonths(grid: Grid, profile: ColumnProfile, rows: readonly number[]): boolean {
+  const filled = profile.sampled - profile.kinds.blank;
+  if (
+    filled === 0 || shareOf(profile, 'number') > 0.8
+      ? !/\b(month|monat|mese|mois|mes|period)\b/i.test(profile.name)
+      : false
+  )
+    return false;
+  const named = rows.filter((row) => !Number.isNaN(monthDay(grid.text(row, profile.index)))).length;
+  return named > 0 && named >= filled * 0.8;
+}
+
+/** Money shows in currency signs, brackets, or two decimals throughout. */
+function meaningOf(grid: Grid, profile: ColumnProfile, rows: readonly number[]): RoleFinding {
+  const isFigures = shareOf(profile, 'number') > 0.7;
+  if (!isFigures)
+    return {
+      role: 'ignore',
+      tests: [[true, profile.kinds.blank === profile.sampled ? 'Blank throughout' : 'Words, no figures']],
+    };
+  const texts = rows.map((row) => grid.figureText(row, profile.index)).filter((text) => text !== '');
+  const isMoney =
+    texts.filter((text) => /[$€£¥₹]|\b(USD|EUR|GBP|CAD|AUD|CHF|INR)\b|^\(.*\)$/.test(text)).length >
+      texts.length * 0.3 && texts.length > 0;
+  const { role, quantity, unit, tests } = billMeaning(profile.name, isMoney);
+  return { role, quantity, unit, tests };
+}
+
+/** One total: the greatest of those named so; others are subtotals, which repeat the lines. */
+function settleTotals(
+  grid: Grid,
+  profiles: readonly ColumnProfile[],
+  rows: readonly number[],
+  decimalMark: '.' | ',',
+  findings: Map<number, RoleFinding>,
+): void {
+  const sumOf = (profile: ColumnProfile): number =>
+    rows.reduce((sum, row) => sum + (grid.number(row, profile.index, decimalMark) || 0), 0);
+  const totals = profiles
+    .filter((profile) => findings.get(profile.index)?.role === 'total')
+    .sort((a, b) => sumOf(b) - sumOf(a) || b.index - a.index);
+  const subtotals = profiles.filter(
+    (profile) =>
+      findings.get(profile.index)?.role === 'charge' &&
+      /sub ?-?total|total .*(before|excl)|net total/i.test(profile.name),
+  );
+  for (const profile of [...totals.slice(1), ...subtotals]) {
+    findings.set(profile.index, { role: 'ignore', tests: [[true, 'A subtotal: it repeats lines of the bill']] });
+  }
+}
+
+/** A quantity has one column: a second one of the same meaning is left out, to be looked at. */
+function settleDoubles(profiles: readonly ColumnProfile[], findings: Map<number, RoleFinding>): void {
+  const seen = new Map<string, ColumnProfile>();
+  for (const profile of profiles) {
+    const finding = findings.get(profile.index);
+    if (!finding?.quantity) continue;
+    const first = seen.get(finding.quantity);
+    if (first)
+      findings.set(profile.index, {
+        role: 'ignore',
+        tests: [[false, `Means the same as “${first.name}”, which is taken`]],
+      });
+    else seen.set(finding.quantity, profile);
+  }
+}

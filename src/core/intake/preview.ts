@@ -1,0 +1,120 @@
+import { planBills, type BillPlan } from './bill-plan';
+import { readPlannedBills } from './bills';
+import type { TableBlock } from './block';
+import { IntakeError } from './errors';
+import type { Grid } from './grid';
+import { planIntervals, readPlanned, type IntervalPlan } from './intervals';
+import type { OpenedTable } from './open';
+import { shapeOf } from './shape';
+import type {
+  BillPreview,
+  BillReading,
+  ColumnMap,
+  Guess,
+  IntakeProblem,
+  IntervalPreview,
+  IntervalReading,
+  PreviewRow,
+  ReadOptions,
+} from './types';
+
+const rowsShown = 12;
+const charactersShown = 160;
+
+/** What intake shows of a table of intervals, whether or not it can be read. */
+export function previewOfIntervals(opened: OpenedTable, options: ReadOptions): IntervalPreview {
+  const plan = attempt(() => planIntervals(opened, options));
+  const reading = plan.result && attempt(() => readPlanned(plan.result as IntervalPlan, options));
+  const read = reading?.result ?? null;
+  return {
+    kind: 'intervals',
+    ...common(opened, options, plan.result, read),
+    columnMap: read?.report.columnMap ?? plan.result?.columnMap ?? fallbackMap('intervals', options),
+    problems: reading?.problems ?? plan.problems,
+    meters: plan.result?.meters ?? [],
+  };
+}
+
+/** What intake shows of a table of bills, whether or not it can be read. */
+export function previewOfBills(opened: OpenedTable, options: ReadOptions): BillPreview {
+  const plan = attempt(() => planBills(opened, options));
+  const reading = plan.result && attempt(() => readPlannedBills(plan.result as BillPlan, options));
+  const read = reading?.result ?? null;
+  return {
+    kind: 'bills',
+    ...common(opened, options, plan.result, read),
+    columnMap: read?.report.columnMap ?? plan.result?.columnMap ?? fallbackMap('bills', options),
+    problems: reading?.problems ?? plan.problems,
+    bills: read?.bills ?? [],
+  };
+}
+
+interface Attempt<T> {
+  result: T | null;
+  problems: IntakeProblem[];
+}
+
+/** A refusal becomes problems to show; anything else is a fault of ours and passes on. */
+function attempt<T>(work: () => T): Attempt<T> {
+  try {
+    return { result: work(), problems: [] };
+  } catch (cause) {
+    if (!(cause instanceof IntakeError)) throw cause;
+    return { result: null, problems: cause.problems };
+  }
+}
+
+const fallbackMap = (kind: ColumnMap['kind'], options: ReadOptions): ColumnMap => options.columnMap ?? { kind };
+
+type Common = Omit<IntervalPreview, 'kind' | 'meters' | 'problems' | 'columnMap'>;
+
+function common(
+  opened: OpenedTable,
+  options: ReadOptions,
+  plan: IntervalPlan | BillPlan | null,
+  read: ((IntervalReading | BillReading) & { guesses: Guess[] }) | null,
+): Common {
+  const grid = plan && 'grid' in plan ? plan.grid : opened.grid;
+  const block = plan?.block ?? null;
+  return {
+    fileName: options.fileName,
+    format: opened.format,
+    dialect: plan?.opened.dialect ?? opened.dialect,
+    rowsInFile: filledRows(opened.grid),
+    headerRow: block?.headerRow === null || !block ? null : grid.rowNumber(block.headerRow),
+    firstRow: grid.rowNumber(block?.firstRow ?? 0),
+    lastRow: grid.rowNumber(block?.lastRow ?? Math.max(0, grid.rows - 1)),
+    rows: firstRows(grid, block),
+    mapApplied: options.columnMap !== undefined,
+    shape: shapeOf(opened.grid, opened.vote?.delimiter),
+    columns: plan?.evidence ?? [],
+    guesses: withReadGuesses(plan?.guesses ?? [], read?.guesses ?? []),
+    report: read?.report ?? null,
+  };
+}
+
+/** Decisions made while reading stand behind those made before. */
+function withReadGuesses(planned: readonly Guess[], read: readonly Guess[]): Guess[] {
+  return [...planned.filter((one) => !read.some((other) => other.key === one.key)), ...read];
+}
+
+function filledRows(grid: Grid): number {
+  let filled = 0;
+  for (let row = 0; row < grid.rows; row += 1) if (grid.width(row) > 0) filled += 1;
+  return filled;
+}
+
+/** The beginning of the table with what stands just above it: enough to see header and data together. */
+function firstRows(grid: Grid, block: TableBlock | null): PreviewRow[] {
+  const start = Math.max(0, (block?.headerRow ?? block?.firstRow ?? 0) - 5);
+  return Array.from({ length: Math.min(rowsShown, grid.rows - start) }, (_, at) => {
+    const row = start + at;
+    return {
+      number: grid.rowNumber(row),
+      cells: Array.from({ length: grid.width(row) }, (_unused, column) =>
+        grid.text(row, column).slice(0, charactersShown),
+      ),
+      isHeader: row === block?.headerRow,
+    };
+  });
+}

@@ -20,3 +20,5 @@ export type { AssumedSwing } from './sensitivity';
 export { fixField } from './fixed-field';
 export type { FixedField, TakenPower } from './fixed-field';
 export { leastField } from './least-field';
+export { pqLimits } from './pq-limits';
+export type { PqLimits, PqPoint } from './pq-limits';

@@ -32,7 +32,7 @@ export interface CarpetMark {
 
 /** Six round thresholds between the second and ninety-eighth hundredth of the readings. */
 function carpetThresholds(readings: number[]): number[] {
-  const sorted = readings.toSorted ? readings.toSorted((a, b) => a - b) : [...readings].sort((a, b) => a - b);
+  const sorted = [...readings].sort((a, b) => a - b);
   const at = (share: number) => sorted[Math.round(share * (sorted.length - 1))] ?? 0;
   const [low, high] = [at(0.02), at(0.98)];
   const step = (high - low) / 6 || 1;

@@ -100,7 +100,7 @@ function csvValue(column: LedgerColumn, value: LedgerValue): string {
   const plain = toCell(value).value;
   if (plain === null) return '';
   if (typeof plain === 'string') return plain;
-  if (column.kind !== 'money') return String(plain);
+  if (column.kind !== 'money') return String(Number(plain.toPrecision(12)));
   const places = currencyDecimals(column.currency ?? 'USD');
   return (plain / 10 ** places).toFixed(places);
 }

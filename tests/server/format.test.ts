@@ -1,0 +1,74 @@
+import { describe, expect, it } from 'vitest';
+import {
+  formatAmount,
+  formatClock,
+  formatDate,
+  formatDateTime,
+  formatHours,
+  formatMajor,
+  formatMoney,
+  formatNumber,
+  formatPayback,
+  formatPercent,
+  formatPeriod,
+  formatQuantity,
+  formatWeekday,
+} from '@/components/ui/format';
+
+const noBreak = '\u00a0';
+
+describe('formatNumber', () => {
+  it('groups thousands and uses the true minus sign', () => {
+    expect(formatNumber(-1234567.891, { decimals: 2 })).toBe('\u22121,234,567.89');
+  });
+  it('gives a value that rounds to nought no sign', () => {
+    expect(formatNumber(-0.004, { decimals: 2, signed: true })).toBe('0.00');
+  });
+  it('signs positive differences on demand', () => {
+    expect(formatNumber(3673, { signed: true })).toBe('+3,673');
+  });
+  it('drops trailing noughts with upTo', () => {
+    expect([164, 164.5].map((value) => formatNumber(value, { upTo: 1 }))).toEqual(['164', '164.5']);
+  });
+});
+
+describe('quantities and money', () => {
+  it('keep figure and unit together', () => {
+    expect(formatQuantity(1334, 'kvar')).toBe(`1,334${noBreak}kvar`);
+    expect(formatPercent(0.9991, 2)).toBe(`99.91${noBreak}%`);
+  });
+  // Decimals of USD, JPY and KWD: ISO 4217, list of minor units (2, 0 and 3).
+  it('use the minor units of the currency', () => {
+    expect(formatMoney(1552491, 'USD')).toBe(`15,524.91${noBreak}USD`);
+    expect(formatMoney(1552491, 'JPY')).toBe(`1,552,491${noBreak}JPY`);
+    expect(formatAmount(1552491, 'KWD')).toBe('1,552.491');
+  });
+  it('round to whole units in sentences', () => {
+    expect(formatMajor(71884.36, 'USD', { whole: true })).toBe(`71,884${noBreak}USD`);
+  });
+});
+
+describe('dates and times', () => {
+  it('read a local date without shifting it by a zone', () => {
+    expect(formatDate('2025-07-10')).toBe('10 Jul 2025');
+    expect(formatWeekday('2026-12-18')).toBe('Fri 18 Dec');
+  });
+  it('print a half-open period with its last day', () => {
+    expect(formatPeriod('2025-07-10', '2025-08-11')).toBe('10 Jul – 10 Aug');
+    expect(formatPeriod('2025-07-10', '2026-07-10', { year: true })).toBe('10 Jul 2025 to 9 Jul 2026');
+  });
+  it('print an instant in the zone of the site', () => {
+    // 22:15 UTC is 17:15 in Chicago under summer time (UTC-5).
+    expect(formatDateTime(Date.UTC(2025, 7, 4, 22, 15), 'America/Chicago')).toBe('4 Aug 2025, 17:15');
+  });
+  it('print minutes as hours and as a clock', () => {
+    expect([formatHours(105), formatClock(102)]).toEqual(['1.75', '1:42']);
+  });
+  it('print a payback in months', () => {
+    expect([formatPayback(1.65), formatPayback(1 / 12), formatPayback(null)]).toEqual([
+      '20 months',
+      '1 month',
+      'never',
+    ]);
+  });
+});

@@ -9,7 +9,8 @@ import { transpose, type Grid } from './grid';
 import { delimiterGuesses } from './guesses';
 import { mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
-import { findDateOrder, orderInWords } from './stamp-order';
+import { findPeriodOrder } from './bill-order';
+import { orderInWords } from './stamp-order';
 import type { ColumnEvidence, ColumnMap, ColumnUse, DateOrder, Guess, ReadOptions } from './types';
 import { mentions } from './words';
 
@@ -160,12 +161,16 @@ function findPeriods(input: PeriodInput): Guess & { order: DateOrder } {
   if (days) put(days, 'days', 'Named as days', true);
   for (const profile of dates)
     if (!findings.has(profile.index)) put(profile, 'ignore', 'A date that bounds no period', true);
-  const dated = [from, to, only].find(
-    (profile) => profile !== undefined && findings.get(profile.index)?.role !== 'ignore',
-  );
-  const found = dated
-    ? findDateOrder(grid, dated.index, rows, input.timeZone)
-    : { order: 'YMD' as const, tests: [[true, 'Months are named']] as [boolean, string][] };
+  const roleOf = (role: string): ColumnProfile | undefined =>
+    profiles.find((profile) => findings.get(profile.index)?.role === role);
+  const found = findPeriodOrder({
+    grid,
+    rows,
+    timeZone: input.timeZone,
+    from: roleOf('period-from'),
+    to: roleOf('period-to'),
+    days,
+  });
   const given = map.stamp?.order;
   const order = given ?? found.order;
   const tests: [boolean, string][] = given && given !== found.order ? [[true, 'Given by the column map']] : found.tests;

@@ -61,7 +61,7 @@ export function findDateOrder(grid: Grid, column: number, rows: readonly number[
   const custom: DateOrder = /^(America\/(?!.*(Argentina|Sao|Bogota|Lima|Santiago))|US\/)/.test(timeZone)
     ? 'MDY'
     : 'DMY';
-  if (best.jumps < second.jumps) {
+  if (best.jumps * 1.5 < second.jumps) {
     return {
       order: best.order,
       tests: [[true, `Only as ${orderWords[best.order]} do the days follow each other without a jump`]],

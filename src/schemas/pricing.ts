@@ -58,6 +58,8 @@ export interface Finding {
   billId: number;
   /** Line of the schedule the difference lies in; null for the bill's own arithmetic and unknown lines. */
   lineId: string | null;
+  /** What the line is called, on the schedule or else on the bill; null for the bill as a whole. */
+  lineLabel: string | null;
   kind: FindingKind;
   title: string;
   /** Billed minus priced with everything that follows from it (tax, percentages): over-billed is positive. */
@@ -83,6 +85,8 @@ export interface PricedYear {
     reactiveMinor: number;
     billsWithoutTotal: number;
   };
+  /** Quantities that look back at earlier bills. */
+  lookBacks: string[];
   /** Readings laid under the year: present and expected; both 0 on the printed route. */
   readings: { present: number; expected: number };
   notes: string[];

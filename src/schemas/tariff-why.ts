@@ -9,19 +9,14 @@ export interface WhyStepView {
   source?: string;
 }
 
-/** The local day of the interval that set a peak. Powers are means of the metered intervals; null where a reading is missing. */
+/** The local day of the cell that set a peak, in means of `stepMinutes`; null where a reading is missing. */
 export interface DayPicture {
   /** Local date, YYYY-MM-DD. */
   date: string;
-  timeZone: string;
-  startMs: number;
   stepMinutes: number;
-  kw: (number | null)[];
-  /** Absorbed less delivered; negative is delivered. */
-  kvar: (number | null)[];
-  /** The cell that set the peak: instants of its beginning and end. */
-  peakFromMs: number;
-  peakToMs: number;
+  points: { minute: number; kw: number | null; kvarLagging: number | null; kvarLeading: number | null }[];
+  peak: { minute: number; kw: number; kvarLagging: number; powerFactor: number } | null;
+  /** The quantity whose peak it is. */
   quantity: string;
   value: number;
   unit: string;

@@ -33,6 +33,7 @@ export function findingOfFault(bill: ReconciledBill, fault: Fault, causes: Tried
   return {
     billId: bill.bill.id,
     lineId: pair.line?.id ?? null,
+    lineLabel: labelOf(fault),
     kind,
     title: titles[kind],
     amountMinor: wholeMinor,
@@ -42,6 +43,8 @@ export function findingOfFault(bill: ReconciledBill, fault: Fault, causes: Tried
   };
 }
 
+const labelOf = ({ pair }: Fault) => pair.line?.label ?? pair.billed.map((line) => line.label).join(' + ');
+
 function kindOf({ pair }: Fault, causes: TriedCause[]): FindingKind {
   if (!pair.line) return 'line-not-in-schedule';
   if (pair.billedMinor === null) return 'line-not-billed';
@@ -49,10 +52,9 @@ function kindOf({ pair }: Fault, causes: TriedCause[]): FindingKind {
 }
 
 function sentenceOf(bill: ReconciledBill, fault: Fault, kind: FindingKind, causes: TriedCause[]): string {
-  const { pair, ownMinor, wholeMinor } = fault;
-  const label = pair.line?.label ?? pair.billed[0]?.label ?? '';
+  const { ownMinor, wholeMinor } = fault;
   const more = wholeMinor === ownMinor ? '' : `, ${money(wholeMinor, bill)} with what follows from it`;
-  const head = `${bill.name}, ${label}: ${money(Math.abs(ownMinor), bill)} ${ownMinor > 0 ? 'too much' : 'too little'}${more}.`;
+  const head = `${bill.name}, ${labelOf(fault)}: ${money(Math.abs(ownMinor), bill)} ${ownMinor > 0 ? 'too much' : 'too little'}${more}.`;
   if (kind === 'line-not-in-schedule') {
     return `${head} The bill prints it, and no line of the schedule was found for it. Match it to one, or ask the utility.`;
   }
@@ -89,6 +91,7 @@ export function findingOfArithmetic(bill: ReconciledBill): Found | null {
   return {
     billId: id,
     lineId: null,
+    lineLabel: null,
     kind: 'bill-arithmetic',
     title: titles['bill-arithmetic'],
     amountMinor,
@@ -109,6 +112,7 @@ export function findingOfTotal(bill: ReconciledBill, causes: TriedCause[]): Foun
   return {
     billId: bill.bill.id,
     lineId: null,
+    lineLabel: null,
     kind,
     title: titles[kind],
     amountMinor,

@@ -39,6 +39,7 @@ export function reconcileYear(
     bills,
     findings,
     totals: totalsOf(bills),
+    lookBacks: lookBacksOf(basis.schedule),
     readings: readingsOf(basis),
     notes: notesOf(bills),
   };
@@ -108,6 +109,13 @@ function totalsOf(bills: ReconciledBill[]): PricedYear['totals'] {
     reactiveMinor: sum((bill) => bill.reactiveMinor),
     billsWithoutTotal: bills.filter((bill) => bill.billedMinor === null).length,
   };
+}
+
+function lookBacksOf({ texts }: Schedule): string[] {
+  const names = texts.flatMap(({ quantities }) =>
+    quantities.filter((one) => one.definition.kind === 'past').map(({ name }) => name),
+  );
+  return [...new Set(names)];
 }
 
 function readingsOf({ load }: PricingBasis): PricedYear['readings'] {

@@ -87,40 +87,49 @@ function dayPicture({ load, schedule }: PricingBasis, bill: ReconciledBill, name
   const name = names.find((one) => bill.priced.quantities[one]?.at !== undefined);
   const quantity = name === undefined ? undefined : bill.priced.quantities[name];
   if (!load || name === undefined || quantity?.at === undefined) return null;
-  const { timeZone } = schedule;
-  const peakFromMs = Date.parse(quantity.at);
-  const date = localDateOf(peakFromMs, timeZone);
-  const stepMs = load.stepMinutes * minuteMs;
-  const startMs = localDateStartMs(date, timeZone);
-  const first = Math.round((startMs - load.startMs) / stepMs);
-  const count = Math.round((localDateStartMs(addDays(date, 1), timeZone) - startMs) / stepMs);
-  const window = textOn(schedule, bill.bill.from).demandWindow?.minutes ?? load.stepMinutes;
+  const window = textOn(schedule, bill.bill.from).demandWindow;
+  const isBlock = window && window.everyMinutes === undefined && window.minutes % load.stepMinutes === 0;
   return {
-    date,
-    timeZone,
-    startMs,
-    stepMinutes: load.stepMinutes,
-    ...dayPowers(load, first, count),
-    peakFromMs,
-    peakToMs: peakFromMs + Math.max(window, load.stepMinutes) * minuteMs,
+    ...dayPowers(load, Date.parse(quantity.at), schedule.timeZone, isBlock ? window.minutes : load.stepMinutes),
     quantity: quantity.label ?? wordsOfName(name),
     value: quantity.value,
     unit: quantity.unit,
   };
 }
 
-function dayPowers(load: LoadSeries, first: number, count: number): Pick<DayPicture, 'kw' | 'kvar'> {
-  const hours = load.stepMinutes / 60;
-  const powers = (energy: (index: number) => number) =>
-    Array.from({ length: count }, (_, at) => {
-      const power = energy(first + at) / hours;
-      return Number.isFinite(power) ? Math.round(power * 10) / 10 : null;
-    });
-  return {
-    kw: powers((index) => load.kwh[index] ?? NaN),
-    kvar: powers((index) => (load.kvarhLagging[index] ?? NaN) - (load.kvarhLeading[index] ?? NaN)),
+/** Means of a local day in cells of so many minutes, and the cell that begins at the peak. */
+function dayPowers(load: LoadSeries, peakMs: number, timeZone: string, cellMinutes: number) {
+  const date = localDateOf(peakMs, timeZone);
+  const stepMs = load.stepMinutes * minuteMs;
+  const startMs = localDateStartMs(date, timeZone);
+  const steps = cellMinutes / load.stepMinutes;
+  const first = Math.round((startMs - load.startMs) / stepMs);
+  const cells = Math.floor((localDateStartMs(addDays(date, 1), timeZone) - startMs) / (cellMinutes * minuteMs));
+  const mean = (channel: Float64Array, cell: number) => {
+    const values = Array.from({ length: steps }, (_, at) => channel[first + cell * steps + at] ?? NaN);
+    const power = values.reduce((sum, value) => sum + value, 0) / (cellMinutes / 60);
+    return Number.isFinite(power) ? Math.round(power * 10) / 10 : null;
   };
+  const points = Array.from({ length: cells }, (_, cell) => ({
+    minute: cell * cellMinutes,
+    kw: mean(load.kwh, cell),
+    kvarLagging: mean(load.kvarhLagging, cell),
+    kvarLeading: mean(load.kvarhLeading, cell),
+  }));
+  const at = points.find((point) => startMs + point.minute * minuteMs === peakMs);
+  const peak =
+    at?.kw == null
+      ? null
+      : {
+          minute: at.minute,
+          kw: at.kw,
+          kvarLagging: at.kvarLagging ?? 0,
+          powerFactor: factorOf(at.kw, at.kvarLagging ?? 0),
+        };
+  return { date, stepMinutes: cellMinutes, points, peak };
 }
+
+const factorOf = (kw: number, kvar: number) => (kw === 0 ? 1 : Math.abs(kw) / Math.hypot(kw, kvar));
 
 /** Earlier values of what the first ratchet among the names looks back at. */
 function lookBackPicture(

@@ -1,0 +1,187 @@
+import { useRef, useState } from 'react';
+import { useForm, type Resolver, type UseFormReturn } from 'react-hook-form';
+import { ApiError } from '../../client/api';
+import { chooseSchedule } from '../../client/tariff';
+import type { ChoiceView, ChooseInput, ContractField, HistoryField, LibraryEntry } from '../../schemas/tariff';
+import { messageAt, nestErrors } from '../motors/form-errors';
+import { Button } from '../ui/Button';
+import { CheckField, Field, NumberField, SelectField } from '../ui/Field';
+import { formatCount, formatNumber } from '../ui/format';
+import { Notice } from '../ui/Notice';
+import { StaleCompare } from '../ui/StaleCompare';
+import { differencesOf, draftOf, faultsOf, toChooseInput, type Choosable, type ChoiceDraft } from './choice-draft';
+
+export interface ChooseScheduleProps {
+  code: string;
+  library: LibraryEntry[];
+  choice: ChoiceView | null;
+  /** Month before the first bill, which the last value of a series of earlier months stands for: "Oct 2025". */
+  monthBefore: string | null;
+}
+
+type Form = UseFormReturn<ChoiceDraft>;
+
+function schedulesOf(library: LibraryEntry[], choice: ChoiceView | null): Map<string, Choosable> {
+  const all = new Map<string, Choosable>(library.map((entry) => [entry.id, entry]));
+  if (choice && choice.contractFields.length + choice.historyFields.length > 0) {
+    all.set(choice.scheduleId, {
+      id: choice.scheduleId,
+      contract: choice.contractFields,
+      history: choice.historyFields,
+    });
+  }
+  return all;
+}
+
+function rangeWords({ range, unit, default: usual }: ContractField): string {
+  const number = (value: number) => formatNumber(value, { upTo: 6 });
+  const words = [
+    range && `${number(range[0])} to ${number(range[1])}${unit ? ` ${unit}` : ''}`,
+    usual !== null && `${number(usual)} if left empty`,
+  ];
+  return words.filter(Boolean).join('; ');
+}
+
+function ContractInput({ field, form }: { field: ContractField; form: Form }) {
+  const name = `contract.${field.name}` as const;
+  const error = messageAt(form.formState.errors, name);
+  if (field.kind === 'flag') return <CheckField label={field.label} error={error} {...form.register(name)} />;
+  if (field.kind === 'date') return <Field type="date" label={field.label} error={error} {...form.register(name)} />;
+  return (
+    <NumberField
+      label={field.label}
+      unit={field.unit || undefined}
+      hint={rangeWords(field)}
+      error={error}
+      {...form.register(name)}
+    />
+  );
+}
+
+function HistoryInput({ field, form, monthBefore }: { field: HistoryField; form: Form; monthBefore: string | null }) {
+  const name = `history.${field.name}` as const;
+  const last = monthBefore ? ` The last stands for ${monthBefore}.` : '';
+  return (
+    <Field
+      label={`${field.label} of earlier months${field.unit ? `, ${field.unit}` : ''}`}
+      hint={`Oldest first, blanks between: 5,210 5,340 4,980.${last} The schedule looks back ${formatCount(field.months, 'month')}; older ones help to find a ratchet that was not released.`}
+      error={messageAt(form.formState.errors, name)}
+      {...form.register(name)}
+    />
+  );
+}
+
+function libraryOptions(library: LibraryEntry[], choice: ChoiceView | null) {
+  const options = library.map(({ id, title, publisher, problems }) => ({
+    value: id,
+    label: title
+      ? `${title}${publisher ? `, ${publisher}` : ''}`
+      : `${id} (${formatCount(problems.length, 'error')} in its file)`,
+    disabled: title === null && id !== choice?.scheduleId,
+  }));
+  if (!choice || options.some((option) => option.value === choice.scheduleId)) return options;
+  return [
+    { value: choice.scheduleId, label: `${choice.title} (no longer in the library)`, disabled: false },
+    ...options,
+  ];
+}
+
+/** Keeps the form's version and sends; a choice changed meanwhile is shown beside one's own. */
+function useSaving(props: ChooseScheduleProps, form: Form, schedules: Map<string, Choosable>) {
+  const version = useRef(props.choice?.version ?? null);
+  const [fault, setFault] = useState<{
+    message: string;
+    stale: { mine: ChooseInput; theirs: ChoiceView } | null;
+  } | null>(null);
+  const send = async (draft: ChoiceDraft) => {
+    const schedule = schedules.get(draft.scheduleId);
+    if (!schedule) return;
+    const input = toChooseInput(draft, schedule, version.current);
+    setFault(null);
+    try {
+      await chooseSchedule(props.code, input);
+      location.reload();
+    } catch (error) {
+      if (!(error instanceof ApiError)) throw error;
+      const theirs = error.code === 'stale' ? (error.details.theirs as ChoiceView) : null;
+      for (const [path, [message]] of Object.entries(error.fields)) form.setError(path as 'scheduleId', { message });
+      setFault({ message: error.message, stale: theirs && { mine: input, theirs } });
+    }
+  };
+  const saveOver = (theirs: ChoiceView) => {
+    version.current = theirs.version;
+    void form.handleSubmit(send)();
+  };
+  return { fault, submit: form.handleSubmit(send), saveOver };
+}
+
+/** Island: chooses the schedule an engagement is priced on, with what its contract supplies. */
+export function ChooseSchedule(props: ChooseScheduleProps) {
+  const { library, choice, monthBefore } = props;
+  const schedules = schedulesOf(library, choice);
+  const resolver: Resolver<ChoiceDraft> = (draft) => {
+    const schedule = schedules.get(draft.scheduleId);
+    const blank = { id: '', contract: [], history: [] };
+    const faults = faultsOf(toChooseInput(draft, schedule ?? blank, null), schedule);
+    return Object.keys(faults).length === 0
+      ? { values: draft, errors: {} }
+      : { values: {}, errors: nestErrors(faults) };
+  };
+  const form = useForm<ChoiceDraft>({
+    defaultValues: draftOf(schedules.get(choice?.scheduleId ?? ''), choice),
+    resolver,
+    mode: 'onTouched',
+  });
+  const { fault, submit, saveOver } = useSaving(props, form, schedules);
+  const scheduleId = form.watch('scheduleId');
+  const schedule = schedules.get(scheduleId);
+  const isChosen = choice?.scheduleId === scheduleId;
+  return (
+    <form onSubmit={(event) => void submit(event)} noValidate className="choose-schedule">
+      <div className="form-grid">
+        <SelectField
+          label="Schedule"
+          placeholder="Choose a schedule"
+          options={libraryOptions(library, choice)}
+          error={messageAt(form.formState.errors, 'scheduleId')}
+          {...form.register('scheduleId', {
+            onChange: (event: { target: { value: string } }) =>
+              form.reset(draftOf(schedules.get(event.target.value), choice), { keepDefaultValues: true }),
+          })}
+        />
+        {schedule?.contract.map((field) => (
+          <ContractInput key={`${scheduleId}.${field.name}`} field={field} form={form} />
+        ))}
+      </div>
+      {schedule && schedule.history.length > 0 && (
+        <div className="form-grid mt-4">
+          {schedule.history.map((field) => (
+            <HistoryInput key={`${scheduleId}.${field.name}`} field={field} form={form} monthBefore={monthBefore} />
+          ))}
+        </div>
+      )}
+      {isChosen && choice.library === 'changed' && (
+        <CheckField
+          label="Take the library's file as it stands today"
+          hint="Otherwise the text kept with this engagement stays in force."
+          {...form.register('takeNewText')}
+        />
+      )}
+      {fault && !fault.stale && <Notice kind="fault" title="Nothing was kept.">{` ${fault.message}`}</Notice>}
+      {fault?.stale && (
+        <StaleCompare
+          what="The choice of the schedule"
+          differences={differencesOf(fault.stale.mine, fault.stale.theirs)}
+          onLoadTheirs={() => location.reload()}
+          onSaveMine={() => fault.stale && saveOver(fault.stale.theirs)}
+          busy={form.formState.isSubmitting}
+        />
+      )}
+      <div className="actions actions-inline mt-4">
+        <Button type="submit" kind={choice ? 'secondary' : 'primary'} busy={form.formState.isSubmitting}>
+          {isChosen ? 'Keep and price again' : 'Choose and price'}
+        </Button>
+      </div>
+    </form>
+  );
+}

@@ -1,0 +1,75 @@
+import { addDays } from '../../core/load';
+import { fromMinorUnits, wordMoney, wordNumber } from '../../core/units';
+import type { PricedYear } from '../../schemas/pricing';
+
+const spelled = 'no one two three four five six seven eight nine ten eleven twelve'.split(' ');
+const word = (count: number) => spelled[count] ?? wordNumber(count);
+const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
+const billsWord = (count: number) => (count === 1 ? 'bill' : 'bills');
+
+const monthNames = 'Jan Feb Mar Apr May Jun Jul Aug Sep Oct Nov Dec'.split(' ');
+
+/** 2025-07-10 -> "10 Jul 2025". */
+export const dayInWords = (date: string) =>
+  `${Number(date.slice(8))} ${monthNames[Number(date.slice(5, 7)) - 1]} ${date.slice(0, 4)}`;
+
+/** The sheet's heading: the finding with its amount. */
+export function tariffHeadline(year: PricedYear): string {
+  const { bills, currency, totals } = year;
+  const money = (minor: number) => wordMoney(fromMinorUnits(minor, currency), currency);
+  const compared = bills.filter((bill) => bill.differenceMinor !== null);
+  if (compared.length === 0) {
+    return `${capital(word(bills.length))} ${billsWord(bills.length)} priced at ${money(totals.pricedMinor)}; none says what the utility charged.`;
+  }
+  const faulty = compared.filter((bill) => bill.findings.length > 0);
+  const rest = compared.filter((bill) => bill.findings.length === 0);
+  const largest = Math.max(0, ...rest.map((bill) => Math.abs(bill.differenceMinor ?? 0)));
+  const agreement = largest === 0 ? 'agree to the cent' : `agree within ${cents(largest, currency)}`;
+  if (faulty.length === 0) {
+    return `The utility billed rightly: ${rest.length === 1 ? 'the bill' : `all ${word(rest.length)} bills`} ${agreement.replace('agree', rest.length === 1 ? 'agrees' : 'agree')}.`;
+  }
+  const whole = faulty.reduce((sum, bill) => sum + (bill.differenceMinor ?? 0), 0);
+  const verb = whole >= 0 ? 'over-billed' : 'under-billed';
+  const head = `The utility ${verb} ${money(Math.abs(whole))} in ${word(faulty.length)} of ${word(compared.length)} ${billsWord(compared.length)}`;
+  if (rest.length === 0) return `${head}.`;
+  return `${head}; the other ${rest.length === 1 ? `one ${agreement.replace('agree', 'agrees')}` : `${word(rest.length)} ${agreement}`}.`;
+}
+
+function cents(minor: number, currency: string): string {
+  return minor < 13 && currency === 'USD'
+    ? `${word(minor)} ${minor === 1 ? 'cent' : 'cents'}`
+    : wordMoney(fromMinorUnits(minor, currency), currency);
+}
+
+/** The line under the heading: from what, on what, and what poor power factor costs. */
+export function tariffLead(year: PricedYear, schedule: { title: string; inForce: string | null }): string {
+  const { readings, route, totals, currency } = year;
+  const source =
+    route === 'intervals'
+      ? `Priced from ${wordNumber(readings.present)} readings`
+      : 'Priced from the quantities printed on the bills, since no meter intervals are kept,';
+  const force = schedule.inForce ? ` as in force from ${dayInWords(schedule.inForce)}` : '';
+  const cost = `Poor power factor costs ${wordNumber(Math.round(fromMinorUnits(totals.reactiveMinor, currency)))} ${currency} of this year.`;
+  return `${source} on ${schedule.title}${force}. ${cost}`;
+}
+
+/** What share of the cost of poor power factor sits in which lines, as a sentence with its amount. */
+export function reactiveFinding(parts: { demand: number; reactive: number; other: number }, currency: string): string {
+  const total = parts.demand + parts.reactive + parts.other;
+  if (Math.abs(total) < 0.005) return 'Poor power factor cost nothing on these bills.';
+  const named: [string, number][] = [
+    ['the demand lines', parts.demand],
+    ['the lines for kvarh and power factor', parts.reactive],
+    ['taxes, adjustments and energy', parts.other],
+  ];
+  const [place, amount] = named.sort((a, b) => Math.abs(b[1]) - Math.abs(a[1]))[0]!;
+  const share = Math.round((100 * amount) / total);
+  return `${share} % of the ${wordMoney(total, currency)} sit in ${place}.`;
+}
+
+/** First and last day of the year's bills in words. */
+export function spanInWords(year: PricedYear): string {
+  const first = year.bills[0]!.bill.from;
+  const last = addDays(year.bills.at(-1)!.bill.to, -1);
+  return `${dayInWords(first)} to ${dayInWords(last)}`;
+}

@@ -35,7 +35,7 @@ async function answer(context: APIContext, next: MiddlewareNext): Promise<Respon
   try {
     return await next();
   } catch (error) {
-    if (error instanceof ServiceError && error.status === 404) return context.rewrite('/404');
+    if (error instanceof ServiceError && (error.status === 404 || error.status === 403)) return context.rewrite('/404');
     throw error;
   }
 }

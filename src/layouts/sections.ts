@@ -4,9 +4,7 @@ export type StaffSection =
   | 'engagements'
   | 'clients'
   | 'schedules'
-  | 'hours'
   | 'practice'
-  | 'invoices'
   | 'people'
   | 'trail'
   | 'profile';
@@ -21,12 +19,10 @@ const everybody: SectionLink[] = [
   { id: 'engagements', label: 'Engagements' },
   { id: 'clients', label: 'Clients' },
   { id: 'schedules', label: 'Schedules' },
-  { id: 'hours', label: 'Hours' },
 ];
 
 const partnerOnly: SectionLink[] = [
   { id: 'practice', label: 'Practice' },
-  { id: 'invoices', label: 'Invoices' },
   { id: 'people', label: 'People and rates' },
   { id: 'trail', label: 'Trail' },
 ];

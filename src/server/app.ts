@@ -152,7 +152,14 @@ async function build(): Promise<Express> {
   const env = getEnv();
   const app = express();
   app.disable('x-powered-by');
-  app.use(helmet({ contentSecurityPolicy: false, crossOriginResourcePolicy: { policy: 'same-origin' } }));
+  app.use(
+    helmet({
+      contentSecurityPolicy: false,
+      crossOriginResourcePolicy: { policy: 'same-origin' },
+      // With no referrer at all browsers send `Origin: null` on form posts, which checkOrigin must refuse.
+      referrerPolicy: { policy: 'same-origin' },
+    }),
+  );
   app.use(checkOrigin(trustedOrigins()));
   app.use(
     session({

@@ -1,0 +1,308 @@
+import type { ChargeDefinition, ChargeEntry, ChargeGroup, Expression, Tier } from '../model';
+import { didYouMean } from '../nearest';
+import type { RawExpression } from './expressions';
+import { asMap, asText, asWords, checkFields, checkTornValues, readRounding } from './fields';
+import { readWords } from './inputs';
+import { bindPlace, expressionsIn, readPlace, type RawPlace } from './places';
+import { memberName } from './scope';
+import type { TextContext } from './text-reader';
+import { entryOf, valueOf, type ListTree, type MapEntry, type MapTree, type Tree } from './tree';
+
+const groups: readonly string[] = ['energy', 'demand', 'reactive', 'fixed', 'adjustment', 'tax'];
+const common = ['group', 'when', 'round', 'label', 'clause', 'before'];
+const fieldsOf = {
+  amount: ['amount'],
+  per: ['per', 'rate', 'tiers'],
+  percentOf: ['percentOf', 'per', 'rate', 'tiers'],
+  topUp: ['topUp', 'to'],
+  cap: ['cap', 'to'],
+} as const;
+type Kind = keyof typeof fieldsOf;
+
+/** A charge parsed: its formulas, for the families they use, and its definition for a window. */
+interface RawCharge {
+  expressions: RawExpression[];
+  define(window: string | undefined): ChargeDefinition;
+}
+
+/** Reads one entry of `charges`, expanding it over the windows of its family. */
+export function readCharge(entry: MapEntry, context: TextContext): void {
+  const { problems, reader, scope } = context;
+  const map = asMap(entry.value, problems, 'Write { per: kwh, rate: 0.10, group: energy } and so on.');
+  const raw = map && readRaw(entry, map, context);
+  const head = map && readHead(entry, map, context);
+  const windows = raw && head && reader.windowsOf([...raw.expressions, ...(head.when ? [head.when] : [])], entry);
+  if (!raw || !head || windows === 'problem') {
+    scope.makeBroken(entry.key);
+    return;
+  }
+  const add = (name: string, window: string | undefined): void => {
+    const when = head.when && reader.bind(head.when, window);
+    const label = labelOf(head.words.label, entry.key, window);
+    const charge: ChargeEntry = { name, slot: scope.slots.of(name), path: entry.path, group: head.group, rounding: head.rounding, ...head.words, label, when, definition: raw.define(window) };
+    context.charges.push(charge);
+  };
+  const info = { kind: 'line', unit: context.currency, hasUnit: true } as const;
+  if (!windows) {
+    add(entry.key, undefined);
+    scope.make(entry.key, info);
+    return;
+  }
+  const members = windows.map((window) => memberName(entry.key, window));
+  for (const member of members) if (scope.made.has(member) || scope.later.has(member)) {
+    problems.add(entry, `makes a line "${member}", a name that is used already.`, 'Every name is used once.');
+  }
+  for (const [i, window] of windows.entries()) add(members[i]!, window);
+  scope.makeFamily(entry.key, { kind: 'line', windows, members }, info);
+}
+
+function labelOf(label: string | undefined, name: string, window: string | undefined): string {
+  const base = label ?? wordsOf(name);
+  return window === undefined ? base : `${base}, ${wordsOf(window).toLowerCase()}`;
+}
+
+/** `fuelRider` in words: `Fuel rider`. */
+function wordsOf(name: string): string {
+  const words = name.replace(/([a-z0-9])([A-Z])/g, (_, before: string, after: string) => `${before} ${after.toLowerCase()}`);
+  return words.charAt(0).toUpperCase() + words.slice(1);
+}
+
+interface Head {
+  group: ChargeGroup;
+  rounding: ChargeEntry['rounding'];
+  when?: RawExpression;
+  words: { label?: string; clause?: string };
+}
+
+function readHead(entry: MapEntry, map: MapTree, context: TextContext): Head | undefined {
+  const { problems, reader } = context;
+  const groupTree = valueOf(map, 'group');
+  if (!groupTree) {
+    problems.add(entry, 'does not say its group.', `Add group: ${groups.join(', ')}.`);
+    return undefined;
+  }
+  const group = asText(groupTree, problems, `Write ${groups.join(', ')}.`);
+  if (group && !groups.includes(group.text)) {
+    problems.add(groupTree, `"${group.text}" is not a group.`, didYouMean(group.text, groups, `Write ${groups.join(', ')}.`));
+    return undefined;
+  }
+  const roundTree = valueOf(map, 'round');
+  const rounding = roundTree ? readRounding(roundTree, problems) : context.rounding;
+  const whenTree = valueOf(map, 'when');
+  const when = whenTree && reader.parse(whenTree);
+  if (!group || !rounding || (whenTree && !when)) return undefined;
+  return { group: group.text as ChargeGroup, rounding, when, words: readWords(map, problems) };
+}
+
+function kindOf(entry: MapEntry, map: MapTree, context: TextContext): Kind | undefined {
+  const said = (['amount', 'percentOf', 'topUp', 'cap'] as const).filter((kind) => entryOf(map, kind));
+  const all: Kind[] = said.length === 0 && entryOf(map, 'per') ? ['per'] : said;
+  if (all.length === 1) return all[0]!;
+  const known = ['amount', 'per', 'percentOf', 'topUp', 'cap', 'rate', 'tiers', 'to', ...common];
+  if (all.length === 0 && !checkFields(map, known, 'a charge', context.problems)) return undefined;
+  const message = all.length === 0 ? 'does not say what it charges.' : `says both ${all.join(' and ')}.`;
+  context.problems.add(entry, message, 'Say exactly one of amount, per, percentOf, topUp, cap.');
+  return undefined;
+}
+
+function readRaw(entry: MapEntry, map: MapTree, context: TextContext): RawCharge | undefined {
+  const { problems, reader, seasons } = context;
+  if (checkTornValues(map, problems)) return undefined;
+  const kind = kindOf(entry, map, context);
+  if (!kind || !checkFields(map, [...fieldsOf[kind], ...common], `a charge that says ${kind}`, problems)) return undefined;
+  switch (kind) {
+    case 'amount': {
+      const amount = readPlace(valueOf(map, 'amount')!, reader, { seasons });
+      if (!amount) return undefined;
+      return { expressions: expressionsIn(amount), define: (window) => ({ kind, amount: bindPlace(amount, window, reader) }) };
+    }
+    case 'per':
+      return readPer(map, context);
+    case 'percentOf':
+      return readPercent(map, context);
+    default:
+      return readLimit(kind, map, context);
+  }
+}
+
+function readPer(map: MapTree, context: TextContext): RawCharge | undefined {
+  const per = readPerName(map, context);
+  if (!per) return undefined;
+  const price = readPrice(map, per, context);
+  if (!price) return undefined;
+  return {
+    expressions: [per, ...price.expressions],
+    define: (window) => ({ kind: 'per', ...perOf(per, window, context), price: price.bind(window) }),
+  };
+}
+
+function perOf(raw: RawExpression, window: string | undefined, { reader, scope }: TextContext): { per: Expression; perName: string; unit: string } {
+  const per = reader.bind(raw, window);
+  const perName = per.names[0] ?? (raw.formula.kind === 'name' ? raw.formula.name : '');
+  return { per, perName, unit: scope.made.get(perName)?.unit ?? perName };
+}
+
+function readPerName(map: MapTree, context: TextContext): RawExpression | undefined {
+  const { problems, reader, scope } = context;
+  const tree = valueOf(map, 'per')!;
+  const raw = reader.parse(tree);
+  if (!raw) return undefined;
+  if (raw.formula.kind !== 'name') {
+    problems.add(tree, 'takes the name of a quantity.', 'Make a quantity of the formula, and name it here.');
+    return undefined;
+  }
+  const { name } = raw.formula;
+  const info = scope.made.get(scope.families.get(name)?.members[0] ?? name);
+  if (info?.kind === 'broken') return undefined;
+  if (info?.kind === 'quantity' && !info.hasUnit) {
+    problems.add(tree, `"${name}" is a formula without a unit.`, `Give it one: ${name}: { formula: ..., unit: kWh }.`);
+    return undefined;
+  }
+  return raw;
+}
+
+interface RawPrice {
+  expressions: RawExpression[];
+  bind(window: string | undefined): Tier[];
+}
+
+/** `rate`, or `tiers`; one rate is one tier without an end. */
+function readPrice(map: MapTree, per: RawExpression | undefined, context: TextContext): RawPrice | undefined {
+  const { problems, reader, seasons, scope } = context;
+  const rateTree = valueOf(map, 'rate');
+  const tiersTree = valueOf(map, 'tiers');
+  const family = per?.families[0];
+  const windows = family === undefined ? undefined : scope.families.get(family)?.windows;
+  if ((rateTree === undefined) === (tiersTree === undefined)) {
+    problems.add(map, rateTree ? 'says both rate and tiers.' : 'has no rate.', 'Say exactly one of rate, tiers.');
+    return undefined;
+  }
+  if (rateTree) {
+    const rate = readPlace(rateTree, reader, { seasons, windows });
+    return rate && priceOf([{ rate }], context);
+  }
+  if (!per) {
+    problems.add(tiersTree!, 'tiers need a quantity.', 'Add per: and its name.');
+    return undefined;
+  }
+  return readTiers(tiersTree!, windows, context);
+}
+
+interface RawTier {
+  to?: RawExpression;
+  rate: RawPlace;
+}
+
+function priceOf(tiers: RawTier[], { reader }: TextContext): RawPrice {
+  return {
+    expressions: tiers.flatMap((tier) => [...(tier.to ? [tier.to] : []), ...expressionsIn(tier.rate)]),
+    bind: (window) =>
+      tiers.map((tier) => ({ to: tier.to && reader.bind(tier.to, window), rate: bindPlace(tier.rate, window, reader) })),
+  };
+}
+
+function readTiers(tree: Tree, windows: string[] | undefined, context: TextContext): RawPrice | undefined {
+  const { problems } = context;
+  const items = tree.kind === 'list' ? (tree as ListTree).items : [];
+  if (items.length === 0) {
+    problems.add(tree, 'is not a list of tiers.', 'Write [ { to: 1000, rate: 0.08 }, { rate: 0.06 } ].');
+    return undefined;
+  }
+  const tiers: RawTier[] = [];
+  for (const [i, item] of items.entries()) {
+    const tier = readTier(item, i === items.length - 1, windows, context);
+    if (!tier) return undefined;
+    tiers.push(tier);
+  }
+  const numbers = tiers.flatMap((tier) => (tier.to?.formula.kind === 'number' ? [tier.to.formula.value] : []));
+  if (numbers.some((number, i) => i > 0 && number <= numbers[i - 1]!)) {
+    problems.add(tree, 'the upper ends of the tiers do not rise.', 'Write them from the lowest to the highest.');
+    return undefined;
+  }
+  return priceOf(tiers, context);
+}
+
+function readTier(item: Tree, isLast: boolean, windows: string[] | undefined, context: TextContext): RawTier | undefined {
+  const { problems, reader, seasons } = context;
+  const map = asMap(item, problems, 'Write { to: 1000, rate: 0.08 }.');
+  if (!map || checkTornValues(map, problems) || !checkFields(map, ['to', 'rate'], 'a tier', problems)) return undefined;
+  const toTree = valueOf(map, 'to');
+  const rateTree = valueOf(map, 'rate');
+  if (isLast && toTree) {
+    problems.add(map, 'the last tier has an upper end.', 'Leave out "to", so that nothing goes unpriced.');
+    return undefined;
+  }
+  if (!isLast && !toTree) {
+    problems.add(map, 'a tier before the last has no upper end.', 'Add to: and the limit.');
+    return undefined;
+  }
+  if (!rateTree) {
+    problems.add(map, 'has no rate.', 'Add rate:.');
+    return undefined;
+  }
+  const rate = readPlace(rateTree, reader, { seasons, windows });
+  const to = toTree && reader.parse(toTree);
+  return rate && (!toTree || to) ? { rate, to } : undefined;
+}
+
+function readPercent(map: MapTree, context: TextContext): RawCharge | undefined {
+  const of = readLines(valueOf(map, 'percentOf')!, context);
+  const hasPer = valueOf(map, 'per') !== undefined;
+  const per = hasPer ? readPerNameOfPercent(map, context) : undefined;
+  if (!of || (hasPer && !per)) return undefined;
+  const price = readPrice(map, per, context);
+  if (!price) return undefined;
+  return {
+    expressions: [...(per ? [per] : []), ...price.expressions],
+    define: (window) => ({ kind: 'percent', ...of, ...(per ? perOf(per, window, context) : {}), price: price.bind(window) }),
+  };
+}
+
+function readPerNameOfPercent(map: MapTree, { problems, reader }: TextContext): RawExpression | undefined {
+  const tree = valueOf(map, 'per')!;
+  const raw = reader.parse(tree);
+  if (raw && raw.formula.kind !== 'name') {
+    problems.add(tree, 'takes the name of a quantity.', 'Make a quantity of the formula, and name it here.');
+    return undefined;
+  }
+  return raw;
+}
+
+/** Names of lines above: `all above`, one name or a list; a family means all its lines. */
+function readLines(tree: Tree, context: TextContext): { of: string[]; isAllAbove: boolean } | undefined {
+  const { problems, scope, charges } = context;
+  if (tree.kind === 'scalar' && tree.text === 'all above') return { of: charges.map((charge) => charge.name), isAllAbove: true };
+  const words = asWords(tree, problems, 'Name lines above: [demand, energy], or all above.');
+  const of: string[] = [];
+  for (const word of words ?? []) {
+    const family = scope.families.get(word.text);
+    const kind = family?.kind ?? scope.made.get(word.text)?.kind;
+    if (kind === 'line' || kind === 'broken') of.push(...(family?.members ?? [word.text]));
+    else {
+      const isBelow = scope.later.get(word.text)?.words === 'a charge';
+      const lines = charges.map((charge) => charge.name);
+      if (isBelow) problems.add(tree, `"${word.text}" stands below this line;`, 'move this one down.');
+      else if (kind) problems.add(word, `"${word.text}" is not a line of the bill.`, 'Name charges above.');
+      else problems.add(word, `no line above is called "${word.text}".`, didYouMean(word.text, lines, 'Name charges above.'));
+      return undefined;
+    }
+  }
+  if (new Set(of).size < of.length) {
+    problems.add(tree, 'names a line twice.', 'Name each once.');
+    return undefined;
+  }
+  return words && { of, isAllAbove: false };
+}
+
+function readLimit(kind: 'topUp' | 'cap', map: MapTree, context: TextContext): RawCharge | undefined {
+  const { problems, reader, seasons } = context;
+  const toTree = valueOf(map, 'to');
+  if (!toTree) {
+    problems.add(map, 'does not say to what.', 'Add to: and an amount.');
+    return undefined;
+  }
+  const of = readLines(valueOf(map, kind)!, context);
+  const to = readPlace(toTree, reader, { seasons });
+  if (!of || !to) return undefined;
+  return { expressions: expressionsIn(to), define: (window) => ({ kind, ...of, to: bindPlace(to, window, reader) }) };
+}

@@ -1,0 +1,126 @@
+import { didYouMean } from '../nearest';
+import type { Problems } from './problems';
+import { entryOf, isWord, valueOf, type MapEntry, type MapTree, type Tree } from './tree';
+
+/** Sections whose entries keep an order that decides what a bill says. */
+const orderedSections: ReadonlySet<string> = new Set(['quantities', 'charges']);
+
+/** Sections of named entries that a version may change one by one. */
+const entrySections: ReadonlySet<string> = new Set(['contract', 'rates', 'seasons', 'windows', 'quantities', 'charges']);
+
+/** Sections a version may change. */
+export const versionSections = [...entrySections, 'rounding', 'zeroKwh', 'demandWindow', 'holidays', 'note'];
+
+/** Fields that say what kind of thing an entry is; a version that says another kind drops what belonged to the old one. */
+const kindFields = {
+  quantities: ['sum', 'highest', 'lowest', 'value', 'formula', 'pick', 'past', 'given'],
+  charges: ['amount', 'per', 'percentOf', 'topUp', 'cap'],
+  windows: ['rest', 'days'],
+} as const;
+const lastingFields: ReadonlySet<string> = new Set(['label', 'clause', 'unit', 'round', 'group', 'when', 'before']);
+
+/**
+ * The text of a schedule from a version's day on: the earlier text with what the version changes.
+ *
+ * Entries keep their place; added ones stand where `before` says. A map by season, window or month is changed key by key where all keys
+ * of the version are known to it (months are always added), else replaced; lists are replaced whole.
+ *
+ * @param base  The whole schedule as it was
+ * @param version  What the version says
+ */
+export function mergeVersion(base: MapTree, version: MapTree, problems: Problems): MapTree {
+  let merged = base;
+  for (const section of version.entries) {
+    if (section.key === 'note') continue;
+    merged = setEntry(merged, { ...section, value: mergeSection(section, valueOf(base, section.key), problems) });
+  }
+  return merged;
+}
+
+function mergeSection(section: MapEntry, base: Tree | undefined, problems: Problems): Tree {
+  const { value } = section;
+  if (base?.kind === 'map' && value.kind === 'map') {
+    return entrySections.has(section.key) ? mergeEntries(section.key, base, value, problems) : mergeFields(base, value);
+  }
+  return value;
+}
+
+function mergeEntries(section: string, base: MapTree, changes: MapTree, problems: Problems): MapTree {
+  let merged = base;
+  for (const change of changes.entries) {
+    const existing = entryOf(merged, change.key);
+    if (isWord(change.value, 'removed')) {
+      if (existing) merged = { ...merged, entries: merged.entries.filter((entry) => entry !== existing) };
+      else problems.add(change, 'is not there to be removed.', didYouMean(change.key, merged.entries.map((entry) => entry.key)));
+    } else if (existing) {
+      const value = mergeEntry(section, existing.value, change.value);
+      merged = { ...merged, entries: merged.entries.map((entry) => (entry === existing ? { ...change, value } : entry)) };
+    } else {
+      merged = { ...merged, entries: insert(section, merged.entries, change, problems) };
+    }
+  }
+  return merged;
+}
+
+function insert(section: string, entries: MapEntry[], added: MapEntry, problems: Problems): MapEntry[] {
+  if (!orderedSections.has(section) || added.value.kind !== 'map') return [...entries, added];
+  const before = valueOf(added.value, 'before');
+  const names = entries.map((entry) => entry.key);
+  if (before?.kind !== 'scalar') {
+    const remedy = didYouMean(added.key, names, 'Add before: and the name it stands before, or before: end.');
+    problems.add(added, 'is new in this version but does not say where it stands.', remedy);
+    return [...entries, added];
+  }
+  if (before.text === 'end') return [...entries, added];
+  const index = names.indexOf(before.text);
+  if (index < 0) {
+    problems.add(before, `nothing in ${section} is called "${before.text}".`, didYouMean(before.text, names));
+    return [...entries, added];
+  }
+  return [...entries.slice(0, index), added, ...entries.slice(index)];
+}
+
+function mergeEntry(section: string, base: Tree, change: Tree): Tree {
+  if (base.kind !== 'map' || change.kind !== 'map') return change;
+  return mergeFields(dropOldKind(section, base, change), change);
+}
+
+function dropOldKind(section: string, base: MapTree, change: MapTree): MapTree {
+  if (section !== 'quantities' && section !== 'charges' && section !== 'windows') return base;
+  const kinds: readonly string[] = kindFields[section];
+  const kindOf = (map: MapTree): string | undefined => kinds.find((field) => entryOf(map, field));
+  const newKind = kindOf(change);
+  if (newKind === undefined || entryOf(base, newKind)) return dropPriceForm(base, change);
+  return { ...base, entries: base.entries.filter((entry) => lastingFields.has(entry.key)) };
+}
+
+/** `rate` and `tiers` stand for each other: saying one drops the other. */
+function dropPriceForm(base: MapTree, change: MapTree): MapTree {
+  const dropped = entryOf(change, 'tiers') ? 'rate' : entryOf(change, 'rate') ? 'tiers' : undefined;
+  return dropped === undefined ? base : { ...base, entries: base.entries.filter((entry) => entry.key !== dropped) };
+}
+
+function mergeFields(base: MapTree, change: MapTree): MapTree {
+  let merged = base;
+  for (const field of change.entries) {
+    if (isWord(field.value, 'removed')) {
+      merged = { ...merged, entries: merged.entries.filter((entry) => entry.key !== field.key) };
+      continue;
+    }
+    const old = valueOf(merged, field.key);
+    merged = setEntry(merged, { ...field, value: mergeField(field.key, old, field.value) });
+  }
+  return { ...merged, offset: change.offset, path: change.path };
+}
+
+function mergeField(key: string, old: Tree | undefined, value: Tree): Tree {
+  if (old?.kind !== 'map' || value.kind !== 'map') return value;
+  const isKnown = value.entries.every((entry) => entryOf(old, entry.key));
+  return isKnown || key === 'months' ? mergeFields(old, value) : value;
+}
+
+function setEntry(map: MapTree, entry: MapEntry): MapTree {
+  const index = map.entries.findIndex((existing) => existing.key === entry.key);
+  if (index < 0) return { ...map, entries: [...map.entries, entry] };
+  return { ...map, entries: map.entries.map((existing, i) => (i === index ? entry : existing)) };
+}

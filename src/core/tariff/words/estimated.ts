@@ -1,0 +1,47 @@
+import type { MeasurePlan } from '../price/reduction';
+import type { QuantityEntry } from '../model';
+import { expressionsOf, expressionsOfQuantity } from '../price/text-plan';
+import type { Speech } from './speak';
+
+/** Places of the quantities and lines that an estimated interval has a part in, carried through formulas and percentages. */
+export function estimatedSlots(speech: Speech): Set<number> {
+  const { state, run } = speech;
+  const { text } = state.piece.text;
+  const estimated = new Set<number>();
+  for (const quantity of text.quantities) {
+    const names = expressionsOfQuantity(quantity).flatMap((expression) => expression.slots);
+    const at = quantity.definition.kind === 'value' ? [run.schedule.slots.get(quantity.definition.at)!] : [];
+    if (isMeasuredFromEstimates(speech, quantity) || [...names, ...at].some((slot) => estimated.has(slot))) estimated.add(quantity.slot);
+  }
+  for (const { definition, slot, when } of text.charges) {
+    const lines = 'of' in definition ? definition.of.map((name) => run.schedule.slots.get(name)!) : [];
+    const parts = [...expressionsOf(definition), ...(when ? [when] : [])].flatMap((expression) => expression.slots);
+    if ([...parts, ...lines].some((part) => estimated.has(part))) estimated.add(slot);
+  }
+  return estimated;
+}
+
+function isMeasuredFromEstimates({ source, bill, state }: Speech, { definition, slot }: QuantityEntry): boolean {
+  if (!source || definition.kind !== 'measure') return false;
+  const { plan, reduction } = source.planOf(bill, state, slot);
+  const { quality } = source.load;
+  if (plan.kind === 'sum') {
+    const { runFirst, runEnd, runClass } = reduction.classes;
+    return runFirst.some((first, run) => plan.classes[runClass[run]!] === 1 && holdsEstimate(quality, first, runEnd[run]!));
+  }
+  if (definition.operation !== 'sum') return isCellEstimated(plan, quality, state.atCell[slot]!);
+  return plan.kind === 'cells' && plan.cells.starts.some((_, cell) => isCellEstimated(plan, quality, cell));
+}
+
+function holdsEstimate(quality: Uint8Array, first: number, end: number): boolean {
+  for (let i = first; i < end; i++) if (quality[i] === 1) return true;
+  return false;
+}
+
+function isCellEstimated(plan: MeasurePlan, quality: Uint8Array, cell: number): boolean {
+  if (cell < 0) return false;
+  if (plan.kind !== 'cells') return quality[cell] === 1;
+  const { starts, ends, members, base } = plan.cells;
+  for (let k = starts[cell]!; k < ends[cell]!; k++) if (quality[members === null ? base + k : members[k]!] === 1) return true;
+  return false;
+}

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { isCalendarDate } from '../core/load';
+import type { IntakeRow } from './intake';
 
 /** A line charge as printed. */
 export interface BillLineView {
@@ -150,4 +151,26 @@ export function periodFlaws(
   });
   if (year && reached < year.to) add('gap', reached, year.to);
   return flaws;
+}
+
+/** Energy of one bill as printed and as the kept readings sum it. */
+export interface MeterCheck {
+  billId: number;
+  billedKwh: number;
+  meterKwh: number;
+}
+
+/** The station Bills. */
+export interface BillsStation {
+  code: string;
+  currency: string;
+  timeZone: string;
+  year: { from: string; to: string };
+  /** Bills whose middle day lies in the year, in order. */
+  bills: BillView[];
+  /** The others: earlier ones, and later ones for the proof. */
+  laterBills: BillView[];
+  files: IntakeRow[];
+  /** Bills with a printed energy whose period has every reading. */
+  meterChecks: MeterCheck[];
 }

@@ -155,14 +155,10 @@ export const rememberInput = z.object({
 /** Keep, undo, give up: the version of the row the person saw. */
 export const intakeStep = z.object({ version });
 
-/** Mean kW of every interval, for the carpet picture; null where missing. */
-export interface LoadPicture {
-  startMs: number;
+/** Mean kW of every interval by local day, for the carpet picture; null where missing. */
+export interface LoadDays {
   stepMinutes: number;
-  timeZone: string;
-  kw: (number | null)[];
-  /** Positions of estimated intervals. */
-  estimated: number[];
+  days: { date: string; readings: (number | null)[] }[];
 }
 
 /** A stretch of missing readings, half-open. */
@@ -197,13 +193,31 @@ export interface MonthOfLoad {
   maxKwMs: number | null;
 }
 
+/** One interval of a day: minutes after its local midnight, means over the interval. */
+export interface DayReading {
+  minute: number;
+  kw: number | null;
+  kvarLagging: number | null;
+  kvarLeading: number | null;
+}
+
+/** The interval of the highest mean kW and the day it lies in. */
+export interface PeakOfYear {
+  ms: number;
+  kw: number;
+  date: string;
+  minute: number;
+  kvarLagging: number | null;
+  day: DayReading[];
+}
+
 /** What is kept of the engagement's year. */
 export interface KeptYear {
   stepMinutes: number;
   intervals: number;
   present: number;
   estimated: number;
-  peak: { ms: number; kw: number; date: string } | null;
+  peak: PeakOfYear | null;
   gaps: ReadingGap[];
   gapCount: number;
   months: MonthOfLoad[];
@@ -213,6 +227,8 @@ export interface KeptYear {
 export interface IntervalsStation {
   files: IntakeRow[];
   kept: KeptFile[];
+  /** By local day; null where nothing is kept. */
+  picture: LoadDays | null;
   timeZone: string;
   fromMs: number;
   toMs: number;

@@ -1,0 +1,52 @@
+import type { BillInput, BillView } from '../schemas/bill';
+import type { IntakeView, LoadDays, MatchInput } from '../schemas/intake';
+import { call, sendFile } from './api';
+
+type Kind = 'intervals' | 'bills';
+type Seen = { id: number; version: number };
+
+/** Brings a file in; `onProgress` hears the share that has gone up. */
+export function bringIn(
+  code: string,
+  kind: Kind,
+  file: File,
+  onProgress: (share: number) => void,
+  signal: AbortSignal,
+): Promise<IntakeView> {
+  const query = new URLSearchParams({ kind, fileName: file.name });
+  return sendFile(`/api/engagements/${encodeURIComponent(code)}/uploads?${query}`, file, onProgress, signal);
+}
+
+export const intakePage = (code: string, id: number) => `/engagements/${encodeURIComponent(code)}/intake/${id}`;
+export const originalPath = (id: number) => `/api/intakes/${id}/original`;
+
+const step =
+  (name: 'keep' | 'undo' | 'give-up') =>
+  ({ id, version }: Seen) =>
+    call<IntakeView>('POST', `/api/intakes/${id}/${name}`, { version });
+
+export const keepIntake = step('keep');
+export const undoIntake = step('undo');
+export const giveUpIntake = step('give-up');
+
+/** Reads the file again as corrected. */
+export const matchIntake = (id: number, input: MatchInput) =>
+  call<IntakeView>('POST', `/api/intakes/${id}/match`, input);
+
+/** Remembers the map under a name. */
+export const rememberMap = (id: number, name: string) => call<IntakeView>('POST', `/api/intakes/${id}/map`, { name });
+
+/** Reads the file with a remembered map. */
+export const readWithMap = ({ id, version }: Seen, mapId: number) =>
+  call<IntakeView>('PUT', `/api/intakes/${id}/map`, { version, mapId });
+
+/** Mean kW by day of a file that is not kept yet. */
+export const fetchIntakeDays = (id: number) => call<LoadDays>('GET', `/api/intakes/${id}/load`);
+
+const billsPath = (code: string) => `/api/engagements/${encodeURIComponent(code)}/bills`;
+
+export const addBill = (code: string, bill: BillInput) => call<BillView>('POST', billsPath(code), bill);
+export const changeBill = (code: string, { id, version }: Seen, bill: BillInput) =>
+  call<BillView>('PUT', `${billsPath(code)}/${id}`, { version, bill });
+export const removeBill = (code: string, { id, version }: Seen) =>
+  call<void>('DELETE', `${billsPath(code)}/${id}`, { version });

@@ -1,0 +1,125 @@
+import { useRef, useState, type DragEvent } from 'react';
+import { ApiError } from '../../client/api';
+import { bringIn, intakePage } from '../../client/intake';
+import { Button } from '../ui/Button';
+import { Notice } from '../ui/Notice';
+import { Progress } from '../ui/Progress';
+
+export interface BringInProps {
+  code: string;
+  kind: 'intervals' | 'bills';
+  /** The one primary button of the screen. */
+  primary?: boolean;
+}
+
+const accepted = {
+  intervals: '.csv,.txt,.tsv,.xlsx,.xls,.ods,.xml,.zip',
+  bills: '.csv,.txt,.tsv,.xlsx,.xls,.ods,.zip',
+};
+const kinds = {
+  intervals: 'Delimited text, a workbook (xlsx, xls, ods), ESPI XML or NEM12, also zipped; up to 128 MiB.',
+  bills: 'A table of bills as delimited text or a workbook (xlsx, xls, ods), also zipped; up to 128 MiB.',
+};
+
+interface Sending {
+  file: File;
+  sent: number;
+  stop: AbortController;
+}
+
+/** Picks or takes a dropped file, sends it with an honest measure, and opens its intake. */
+export function BringIn({ code, kind, primary = false }: BringInProps) {
+  const picker = useRef<HTMLInputElement>(null);
+  const [sending, setSending] = useState<Sending | null>(null);
+  const [fault, setFault] = useState<string | null>(null);
+  const [over, setOver] = useState(false);
+
+  const send = async (file: File) => {
+    const stop = new AbortController();
+    setFault(null);
+    setSending({ file, sent: 0, stop });
+    const onProgress = (share: number) => setSending({ file, sent: share * file.size, stop });
+    try {
+      const intake = await bringIn(code, kind, file, onProgress, stop.signal);
+      window.location.assign(intakePage(code, intake.id));
+    } catch (error) {
+      setSending(null);
+      setFault(error instanceof ApiError ? error.message : 'The file could not be sent. Try again.');
+    }
+  };
+  const take = (files: FileList | null) => {
+    const [file] = files ?? [];
+    if (file && !sending) void send(file);
+  };
+  const handleDrop = (event: DragEvent) => {
+    event.preventDefault();
+    setOver(false);
+    take(event.dataTransfer.files);
+  };
+  return (
+    <div
+      className={`drop-place ${over ? 'drop-place-over' : ''}`}
+      onDragOver={(event) => {
+        event.preventDefault();
+        setOver(true);
+      }}
+      onDragLeave={() => setOver(false)}
+      onDrop={handleDrop}
+    >
+      <input
+        ref={picker}
+        type="file"
+        className="unseen"
+        tabIndex={-1}
+        aria-hidden="true"
+        accept={accepted[kind]}
+        onChange={(event) => {
+          take(event.target.files);
+          event.target.value = '';
+        }}
+      />
+      {sending ? (
+        <SendingFile {...sending} />
+      ) : (
+        <div className="actions">
+          <Button kind={primary ? 'primary' : 'secondary'} onClick={() => picker.current?.click()}>
+            Bring in a file
+          </Button>
+          <span>or drop it here</span>
+          <span className="hint">{kinds[kind]}</span>
+        </div>
+      )}
+      {fault && (
+        <div className="mt-3">
+          <Notice kind="fault" title="The file was not taken in.">
+            {fault}
+          </Notice>
+        </div>
+      )}
+    </div>
+  );
+}
+
+function SendingFile({ file, sent, stop }: Sending) {
+  if (sent < file.size) {
+    return (
+      <Progress
+        title={`Sending ${file.name}`}
+        done={Math.round(sent / 1000)}
+        total={Math.max(1, Math.round(file.size / 1000))}
+        units="kB"
+        onStop={() => stop.abort()}
+      />
+    );
+  }
+  return (
+    <div className="progress" role="status">
+      <div className="progress-line">
+        <span>Reading {file.name}</span>
+      </div>
+      <div className="progress-line hint">
+        <span>The file is here. Reading goes on when you leave; it then waits in the list of this station.</span>
+      </div>
+    </div>
+  );
+}

@@ -1,0 +1,80 @@
+import type { BillPreview } from '../../core/intake';
+import { periodFlaws } from '../../schemas/bill';
+import type { IntakeView } from '../../schemas/intake';
+import { FindingSlip } from '../ui/FindingSlip';
+import { formatAmount, formatCount, formatPeriod } from '../ui/format';
+import { LedgerTable } from '../ui/LedgerTable';
+import { ResultSums } from '../ui/ResultSums';
+import { billedMinor, billLedger, billName, lessTotal, lineSums, readBill } from './bill-ledger';
+import { coverage } from './bill-words';
+import { Notes } from './Notes';
+import { SheetPart } from './Sheet';
+
+/** The bills as they would be kept: lines, sums against totals, days, overlaps. */
+export function CheckBills({ intake, preview }: { intake: IntakeView; preview: BillPreview }) {
+  const { currency, yearFrom, yearTo } = intake.engagement;
+  const { report } = preview;
+  const bills = preview.bills.map((bill, index) => readBill(bill, index, currency, report?.billRows?.[index]));
+  const flaws = periodFlaws(bills);
+  const odd = bills.filter((bill) => (lessTotal(bill) ?? 0) !== 0);
+  const asks = new Set([
+    ...odd.map((bill) => bill.id),
+    ...bills
+      .filter((bill) => flaws.some((flaw) => flaw.kind === 'overlap' && flaw.from === bill.from))
+      .map((bill) => bill.id),
+  ]);
+  const total = bills.reduce((sum, bill) => sum + billedMinor(bill), 0);
+  return (
+    <SheetPart
+      id="check"
+      number="3"
+      title="Check"
+      lead={
+        bills.length > 0
+          ? `Amounts in ${currency}. A total opens the whole bill. ${coverage(bills, { from: yearFrom, to: yearTo })}`
+          : 'The bills follow when the table can be read.'
+      }
+      reference={<p>Lines less total: the sum of the lines less the printed total.</p>}
+      result={
+        bills.length > 0 && (
+          <>
+            <ResultSums
+              rows={[
+                ...lineSums(bills)
+                  .slice(0, 12)
+                  .map(({ label, amountMinor }) => ({ label, value: formatAmount(amountMinor, currency) })),
+                { label: `Billed, ${currency}`, value: formatAmount(total, currency), kind: 'total' as const },
+              ]}
+            />
+            {odd.map((bill) => (
+              <FindingSlip key={bill.id} caution letter="+" title={`${billName(bill.to)} does not add up`}>
+                {`Its lines come to ${formatAmount(lessTotal(bill) ?? 0, currency, { signed: true })} ${currency} against the printed total. It is kept as printed.`}
+              </FindingSlip>
+            ))}
+            {flaws.map((flaw, index) => (
+              <FindingSlip
+                key={index}
+                letter={String(index + 1)}
+                title={
+                  flaw.kind === 'gap'
+                    ? `${formatCount(flaw.days, 'day')} without a bill`
+                    : `${formatCount(flaw.days, 'day')} billed twice`
+                }
+              >
+                {formatPeriod(flaw.from, flaw.to, { year: true })}.
+                {flaw.kind === 'overlap' && ' It must be corrected before the file can be kept.'}
+              </FindingSlip>
+            ))}
+          </>
+        )
+      }
+    >
+      {bills.length > 0 && (
+        <div className="stacked">
+          <LedgerTable {...billLedger(bills, currency, asks)} label="Bills of the file" />
+          {report && <Notes report={report} />}
+        </div>
+      )}
+    </SheetPart>
+  );
+}

@@ -1,0 +1,127 @@
+import { useQuery } from '@tanstack/react-query';
+import { fetchIntakeDays } from '../../client/intake';
+import type { IntakeReport, IntervalPreview } from '../../core/intake';
+import type { IntakeView } from '../../schemas/intake';
+import { packCarpet } from '../charts/carpet';
+import { CarpetFigure } from '../charts/CarpetChart';
+import { FindingSlip } from '../ui/FindingSlip';
+import { formatCount, formatDateTime, formatNumber, formatQuantity } from '../ui/format';
+import { Notice } from '../ui/Notice';
+import { ResultSums, type SumRow } from '../ui/ResultSums';
+import { gapInWords, gapMarks, longestGaps } from './carpet-marks';
+import { isKnown } from './interval-words';
+import { Notes } from './Notes';
+import { SheetPart } from './Sheet';
+
+export interface CheckIntervalsProps {
+  intake: IntakeView;
+  preview: IntervalPreview;
+}
+
+/** The readings as they would be kept: picture, gaps, sums, peak, notes. */
+export function CheckIntervals({ intake, preview }: CheckIntervalsProps) {
+  const { report } = preview;
+  const { siteTimeZone } = intake.engagement;
+  return (
+    <SheetPart
+      id="check"
+      number="3"
+      title="Check"
+      lead={report ? undefined : 'The picture follows when the file can be read.'}
+      reference={
+        <>
+          <p>Each column of the picture is a day, midnight at the foot, local time.</p>
+          <p>Missing stays missing: nothing is filled in.</p>
+        </>
+      }
+      result={report && <Results report={report} timeZone={siteTimeZone} />}
+    >
+      {report && (
+        <div className="stacked">
+          <Picture intake={intake} report={report} />
+          <Notes report={report} />
+        </div>
+      )}
+    </SheetPart>
+  );
+}
+
+function Picture({ intake, report }: { intake: IntakeView; report: IntakeReport }) {
+  const { timeZone } = intake;
+  const { data, error, isPending } = useQuery({
+    queryKey: ['intake-days', intake.id, intake.version],
+    queryFn: () => fetchIntakeDays(intake.id),
+  });
+  if (error) return <Notice kind="fault" title={error.message} />;
+  if (isPending) {
+    return (
+      <p className="hint carpet-waiting" role="status">
+        The picture is being drawn from {formatNumber(report.intervals)} readings.
+      </p>
+    );
+  }
+  const finding =
+    report.missing === 0
+      ? 'Every interval of the span has its reading.'
+      : `${formatCount(report.missing, 'reading')} ${report.missing === 1 ? 'is' : 'are'} missing, in ${formatCount(report.gaps?.length ?? 1, 'gap')}.`;
+  return (
+    <CarpetFigure
+      {...packCarpet({ unit: 'kW', ...data, marks: gapMarks(report.gaps ?? [], timeZone) })}
+      finding={finding}
+      reading="Mean kW of each interval. The stronger the ink, the higher."
+      fileName={`${intake.engagement.code}-${intake.fileName.replace(/\W+/g, '-')}`}
+    />
+  );
+}
+
+function Results({ report, timeZone }: { report: IntakeReport; timeZone: string }) {
+  const gaps = longestGaps(report.gaps ?? []);
+  const energy = (label: string, value: number, tone?: SumRow['tone']): SumRow => ({
+    label,
+    value: isKnown(value) ? formatNumber(value) : 'not in the file',
+    tone,
+  });
+  return (
+    <>
+      <ResultSums
+        rows={[
+          { label: 'Intervals', value: formatNumber(report.intervals) },
+          { label: 'Missing', value: formatNumber(report.missing) },
+          { label: 'Estimated', value: formatNumber(report.estimated) },
+          { label: 'Repeated, dropped', value: formatNumber(report.duplicates) },
+          ...(report.negative
+            ? [{ label: 'Below nought', value: formatNumber(report.negative), tone: 'fault' as const }]
+            : []),
+        ]}
+      />
+      <ResultSums
+        rows={[
+          energy('Energy, kWh', report.totalKwh),
+          energy('Lagging, kvarh', report.totalKvarhLagging, 'lagging'),
+          energy('Leading, kvarh', report.totalKvarhLeading, 'leading'),
+        ]}
+      />
+      {isKnown(report.maxKw) && (
+        <>
+          <h3>Highest reading</h3>
+          <p>
+            {formatQuantity(report.maxKw, 'kW', { upTo: 2 })}
+            {report.peak && ` on ${formatDateTime(report.peak.ms, timeZone)}`}
+          </p>
+        </>
+      )}
+      {gaps.map((gap, index) => (
+        <FindingSlip
+          key={gap.fromMs}
+          letter={String(index + 1)}
+          title={`Gap, ${formatCount(gap.intervals, 'reading')}`}
+        >
+          {gapInWords(gap, timeZone)}. Left missing; no peak can be proven then.
+        </FindingSlip>
+      ))}
+      {(report.gaps?.length ?? 0) > gaps.length && (
+        <p>{formatCount((report.gaps?.length ?? 0) - gaps.length, 'shorter gap')} more.</p>
+      )}
+    </>
+  );
+}

@@ -1,0 +1,290 @@
+import type { CarpetData } from '../charts/carpet';
+import { CarpetFigure } from '../charts/CarpetChart';
+import { DayFigure } from '../charts/DayChart';
+import type { IntervalsStation, KeptYear, MonthOfLoad } from '../../schemas/intake';
+import { FindingSlip } from '../ui/FindingSlip';
+import {
+  formatCount,
+  formatDate,
+  formatDateTime,
+  formatLongDate,
+  formatMonth,
+  formatNumber,
+  formatPeriod,
+  formatQuantity,
+  formatTime,
+} from '../ui/format';
+import type { LedgerData, LedgerRow } from '../ui/ledger';
+import { LedgerTable } from '../ui/LedgerTable';
+import { ResultSums } from '../ui/ResultSums';
+import { BringIn } from './BringIn';
+import { gapInWords, longestGaps } from './carpet-marks';
+import { FileList } from './FileList';
+import { intervalName, presentInWords, readingsOf } from './interval-words';
+import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
+
+export interface IntervalsSheetProps {
+  code: string;
+  meter: string;
+  yearDates: { from: string; to: string };
+  station: Omit<IntervalsStation, 'picture'>;
+  carpet: CarpetData | null;
+}
+
+/** Station Intervals: what is kept of the year, its picture, the day of the peak, gaps, months, files. */
+export function IntervalsSheet({ code, meter, yearDates, station, carpet }: IntervalsSheetProps) {
+  const { year, files, kept, timeZone } = station;
+  const period = formatPeriod(yearDates.from, yearDates.to, { year: true });
+  const goes = Object.fromEntries(
+    kept.map((file) => [
+      file.intakeId,
+      `${formatCount(file.intervals - file.missing, 'reading')} of ${formatDateTime(file.fromMs, timeZone)} to ${formatDateTime(file.toMs, timeZone)}`,
+    ]),
+  );
+  return (
+    <>
+      <SheetHeading {...heading(year, station, meter, period)} />
+      <ColumnNames />
+      {year && carpet && (
+        <>
+          <YearPart year={year} carpet={carpet} timeZone={timeZone} code={code} />
+          {year.peak && <PeakPart year={year} peak={year.peak} timeZone={timeZone} code={code} />}
+          <MonthsPart year={year} timeZone={timeZone} />
+        </>
+      )}
+      <SheetPart
+        id="files"
+        number={year ? (year.peak ? '2.4' : '2.3') : '2.1'}
+        title={files.length > 0 ? 'Files' : 'Bring in the meter’s readings'}
+        lead={
+          files.length > 0
+            ? 'Each file is kept byte for byte as it came, with its check sum.'
+            : `Ask the client or the utility for the interval readings of ${meter}, ${period}: active energy, and reactive energy lagging and leading if the meter has them. Nothing is stored until you have seen it and keep it; keeping can be undone.`
+        }
+        reference={kept.length > 0 && <p>Times are those of {timeZone.replaceAll('_', ' ')}.</p>}
+      >
+        <div className="stacked">
+          <BringIn code={code} kind="intervals" primary={files.length === 0} />
+          {files.length > 0 && <FileList code={code} files={files} timeZone={timeZone} goes={goes} />}
+        </div>
+      </SheetPart>
+    </>
+  );
+}
+
+function heading(year: KeptYear | null, station: IntervalsSheetProps['station'], meter: string, period: string) {
+  if (!year) {
+    return {
+      title: 'No readings of this year are kept yet.',
+      lead: `The year is ${period} at ${meter}. Bills can be priced from what they print; plans need the readings.`,
+    };
+  }
+  const files = station.kept.map((file) => file.fileName);
+  const from =
+    files.length === 0
+      ? 'They came with another engagement of this meter.'
+      : files.length === 1
+        ? `They come from ${files[0]}.`
+        : `They come from ${formatNumber(files.length)} files.`;
+  const peak = year.peak
+    ? ` The highest is ${formatQuantity(year.peak.kw, 'kW')} on ${formatDateTime(year.peak.ms, station.timeZone)}.`
+    : '';
+  return {
+    title: `One year of ${readingsOf(year.stepMinutes)}, ${presentInWords(year.present, year.intervals)}.`,
+    lead: `${period} at ${meter}.${peak} ${from}`,
+  };
+}
+
+interface PartProps {
+  year: KeptYear;
+  timeZone: string;
+  code: string;
+}
+
+function YearPart({ year, carpet, timeZone, code }: PartProps & { carpet: CarpetData }) {
+  const missing = year.intervals - year.present;
+  const finding =
+    missing === 0
+      ? 'Every interval of the year has its reading.'
+      : `${formatCount(missing, 'reading')} of the year ${missing === 1 ? 'is' : 'are'} missing, in ${formatCount(year.gapCount, 'gap')}.`;
+  const gaps = longestGaps(year.gaps);
+  return (
+    <SheetPart
+      id="picture"
+      number="2.1"
+      title="The year at a glance"
+      reference={
+        <>
+          <p>Each column of the picture is a day, midnight at the foot, local time.</p>
+          <p>Numbered: the longest gaps. A peak that lies in one cannot be proven.</p>
+        </>
+      }
+      result={
+        <>
+          <ResultSums
+            rows={[
+              { label: `${intervalName(year.stepMinutes)} of the year`, value: formatNumber(year.intervals) },
+              { label: 'Missing', value: missing === 0 ? '0' : `\u2212 ${formatNumber(missing)}` },
+              { label: 'Present', value: formatNumber(year.present), kind: 'total' },
+              { label: 'of which estimated', value: formatNumber(year.estimated) },
+            ]}
+          />
+          {gaps.map((gap, index) => (
+            <FindingSlip
+              key={gap.fromMs}
+              letter={String(index + 1)}
+              title={`Gap, ${formatCount(gap.intervals, 'reading')}`}
+            >
+              {gapInWords(gap, timeZone)}. Left missing.
+            </FindingSlip>
+          ))}
+          {year.gapCount > gaps.length && (
+            <p>{formatCount(year.gapCount - gaps.length, 'shorter gap')} more, in the table of months.</p>
+          )}
+        </>
+      }
+    >
+      <CarpetFigure
+        {...carpet}
+        finding={finding}
+        reading="Mean kW of each interval. The stronger the ink, the higher."
+        fileName={`${code}-load-of-the-year`}
+      />
+    </SheetPart>
+  );
+}
+
+function PeakPart({ year, peak, timeZone, code }: PartProps & { peak: NonNullable<KeptYear['peak']> }) {
+  const { kw, kvarLagging } = peak;
+  const powerFactor = kvarLagging === null ? undefined : kw / Math.hypot(kw, kvarLagging);
+  const name = formatLongDate(peak.date);
+  return (
+    <SheetPart
+      id="peak"
+      number="2.2"
+      title="The day of the highest reading"
+      reference={<p>Mean power of an interval: its energy over its length.</p>}
+      result={
+        <ResultSums
+          rows={[
+            { label: 'Highest, kW', value: formatNumber(kw, { decimals: 1 }), kind: 'strong' },
+            {
+              label: 'Interval',
+              value: `${formatTime(peak.ms, timeZone)} to ${formatTime(peak.ms + year.stepMinutes * 60_000, timeZone)}`,
+            },
+            ...(kvarLagging === null
+              ? []
+              : [
+                  {
+                    label: 'Lagging then, kvar',
+                    value: formatNumber(kvarLagging, { decimals: 1 }),
+                    tone: 'lagging' as const,
+                  },
+                  { label: 'Power factor then', value: formatNumber(powerFactor ?? 1, { decimals: 3 }) },
+                ]),
+          ]}
+        />
+      }
+    >
+      <DayFigure
+        dayName={name}
+        stepMinutes={year.stepMinutes}
+        points={peak.day}
+        peak={{ minute: peak.minute, kw, kvarLagging: kvarLagging ?? undefined, powerFactor }}
+        finding={`${name} set the year’s highest demand, ${formatQuantity(kw, 'kW')} at ${formatTime(peak.ms, timeZone)}.`}
+        reading="Mean power of each interval of the day."
+        fileName={`${code}-day-of-peak`}
+      />
+    </SheetPart>
+  );
+}
+
+function MonthsPart({ year, timeZone }: Omit<PartProps, 'code'>) {
+  return (
+    <SheetPart
+      id="months"
+      number={year.peak ? '2.3' : '2.2'}
+      title="Month by month"
+      lead="Calendar months of the site’s time. Sums are of the readings that are there; nothing is filled in."
+      result={<Balance months={year.months} />}
+    >
+      <LedgerTable {...monthsTable(year.months, timeZone)} label="Readings month by month" />
+    </SheetPart>
+  );
+}
+
+const sum = (months: MonthOfLoad[], key: 'kwh' | 'kvarhLagging' | 'kvarhLeading') =>
+  months.some((month) => month[key] !== null) ? months.reduce((total, month) => total + (month[key] ?? 0), 0) : null;
+
+function Balance({ months }: { months: MonthOfLoad[] }) {
+  const kwh = sum(months, 'kwh');
+  const lagging = sum(months, 'kvarhLagging');
+  const leading = sum(months, 'kvarhLeading');
+  const figure = (value: number | null) => (value === null ? 'not in the files' : formatNumber(value));
+  return (
+    <>
+      <ResultSums
+        rows={[
+          { label: 'Energy, kWh', value: figure(kwh) },
+          { label: 'Lagging, kvarh', value: figure(lagging), tone: 'lagging' },
+          { label: 'Leading, kvarh', value: figure(leading), tone: 'leading' },
+        ]}
+      />
+      {kwh !== null && lagging !== null && kwh > 0 && (
+        <p>
+          Lagging kvarh are {formatNumber((lagging / kwh) * 100, { decimals: 1 })} % of the kWh: an average power factor
+          of {formatNumber(kwh / Math.hypot(kwh, lagging), { decimals: 3 })}.
+        </p>
+      )}
+    </>
+  );
+}
+
+function monthsTable(months: MonthOfLoad[], timeZone: string): LedgerData {
+  const figure = (key: string, head: string, unit?: string) => ({ key, head, unit, kind: 'number' as const });
+  const rows = months.map((month): LedgerRow => {
+    const missing = month.intervals - month.present;
+    const none = month.present === 0 ? 'none' : null;
+    return {
+      id: month.from,
+      cells: {
+        month: formatMonth(month.from),
+        intervals: month.intervals,
+        missing: { value: missing, tone: missing > 0 ? 'fault' : undefined },
+        estimated: month.estimated,
+        kwh: month.kwh ?? none,
+        lagging: month.kvarhLagging === null ? none : { value: month.kvarhLagging, tone: 'lagging' },
+        leading: month.kvarhLeading === null ? none : { value: month.kvarhLeading, tone: 'leading' },
+        peak: month.maxKw,
+        at: month.maxKwMs === null ? null : formatDateTime(month.maxKwMs, timeZone),
+      },
+    };
+  });
+  const total = (pick: (month: MonthOfLoad) => number) => months.reduce((all, month) => all + pick(month), 0);
+  const highest = months.reduce((top, month) => ((month.maxKw ?? 0) > (top.maxKw ?? 0) ? month : top), months[0]!);
+  return {
+    columns: [
+      { key: 'month', head: 'Month' },
+      figure('intervals', 'Intervals'),
+      figure('missing', 'Missing'),
+      figure('estimated', 'Estimated'),
+      figure('kwh', 'Energy', 'kWh'),
+      figure('lagging', 'Lagging', 'kvarh'),
+      figure('leading', 'Leading', 'kvarh'),
+      figure('peak', 'Highest', 'kW'),
+      { key: 'at', head: 'on', quiet: true },
+    ],
+    rows,
+    total: {
+      month: 'Year',
+      intervals: total((month) => month.intervals),
+      missing: total((month) => month.intervals - month.present),
+      estimated: total((month) => month.estimated),
+      kwh: sum(months, 'kwh'),
+      lagging: sum(months, 'kvarhLagging'),
+      leading: sum(months, 'kvarhLeading'),
+      peak: highest.maxKw,
+      at: highest.maxKwMs === null ? null : formatDate(highest.maxKwMs, timeZone),
+    },
+  };
+}

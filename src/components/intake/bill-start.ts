@@ -1,0 +1,48 @@
+import type { BillView } from '../../schemas/bill';
+import { formatAmount, formatNumber } from '../ui/format';
+import { dayBefore, type TypedBill } from './typed';
+
+const usualQuantities = ['kwh', 'maxKw', 'kvarh', 'powerFactor'];
+const usualLines = ['Service', 'Energy', 'Demand', 'Reactive', 'Tax'];
+
+const noMinusSign = (text: string) => text.replace('\u2212', '-');
+
+/** A kept bill as it would be typed. */
+export function keptAsTyped(bill: BillView, currency: string): TypedBill {
+  const amount = (minor: number) => noMinusSign(formatAmount(minor, currency));
+  return {
+    from: bill.from,
+    lastDay: dayBefore(bill.to),
+    quantities: Object.entries(bill.quantities).map(([name, value]) => ({
+      name,
+      figure: formatNumber(value, { upTo: 6 }),
+    })),
+    lines: bill.lines.map(({ label, amountMinor }) => ({ label, amount: amount(amountMinor) })),
+    total: bill.totalMinor === null ? '' : amount(bill.totalMinor),
+  };
+}
+
+/** The last day of a period of about a month that begins on a day. */
+function monthLater(from: string): string {
+  const next = new Date(`${from}T00:00:00Z`);
+  const day = next.getUTCDate();
+  next.setUTCMonth(next.getUTCMonth() + 1, 1);
+  const lastOfMonth = new Date(Date.UTC(next.getUTCFullYear(), next.getUTCMonth() + 1, 0)).getUTCDate();
+  next.setUTCDate(Math.min(day, lastOfMonth));
+  return dayBefore(next.toISOString().slice(0, 10));
+}
+
+/** A new bill: the period after the last one, its quantities and the names of its lines. */
+export function startOfTyped(bills: BillView[], yearFrom: string): TypedBill {
+  const last = bills.at(-1);
+  const from = last?.to ?? yearFrom;
+  const quantities = last && Object.keys(last.quantities).length > 0 ? Object.keys(last.quantities) : usualQuantities;
+  const labels = last && last.lines.length > 0 ? last.lines.map((line) => line.label) : usualLines;
+  return {
+    from,
+    lastDay: monthLater(from),
+    quantities: quantities.map((name) => ({ name, figure: '' })),
+    lines: labels.map((label) => ({ label, amount: '' })),
+    total: '',
+  };
+}

@@ -1,0 +1,66 @@
+import { daysBetween, periodFlaws } from '../../schemas/bill';
+import { formatCount, formatMoney, formatPeriod, formatSpelled } from '../ui/format';
+import { billedMinor, lessTotal, sumsInWords, type LedgerBill } from './bill-ledger';
+
+const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
+
+/** Gaps between bills and overlaps, as words for a heading. */
+function daysInWords(bills: LedgerBill[]): string {
+  const flaws = periodFlaws(bills);
+  const days = bills.reduce((sum, bill) => sum + daysBetween(bill.from, bill.to), 0);
+  const missing = flaws.filter((flaw) => flaw.kind === 'gap').reduce((sum, flaw) => sum + flaw.days, 0);
+  const twice = flaws.filter((flaw) => flaw.kind === 'overlap').reduce((sum, flaw) => sum + flaw.days, 0);
+  const faults = [
+    missing > 0 && `${formatCount(missing, 'day')} in between without a bill`,
+    twice > 0 && `${formatCount(twice, 'day')} billed twice`,
+  ].filter(Boolean);
+  return `${formatCount(days, 'day')} ${faults.length === 0 ? 'without a gap' : `with ${faults.join(' and ')}`}`;
+}
+
+/** The finding of the station Bills in one sentence. */
+export function billsHeading(
+  bills: LedgerBill[],
+  currency: string,
+  year: { from: string; to: string },
+): { title: string; lead: string } {
+  const period = formatPeriod(year.from, year.to, { year: true });
+  if (bills.length === 0) {
+    return {
+      title: 'No bill of this year is kept yet.',
+      lead: `The audit needs every bill of ${period}. Bring in the client’s table of bills, or type them from paper.`,
+    };
+  }
+  const billed = bills.reduce((sum, bill) => sum + billedMinor(bill), 0);
+  const count = bills.length === 1 ? 'The one bill kept' : `The ${formatSpelled(bills.length)} bills kept`;
+  const sums = bills.some((bill) => lessTotal(bill) !== null)
+    ? sumsInWords(bills, currency)
+    : 'show no lines or no totals to add up';
+  const singular = bills.length === 1 ? sums.replace('add up', 'adds up').replace('show', 'shows') : sums;
+  return {
+    title: `${count} ${singular}: ${formatMoney(billed, currency)} for ${daysInWords(bills)}.`,
+    lead: coverage(bills, year),
+  };
+}
+
+/** How the bills stand to the year's own ends. */
+export function coverage(bills: LedgerBill[], year: { from: string; to: string }): string {
+  const period = formatPeriod(year.from, year.to, { year: true });
+  const inside = periodFlaws(bills).length;
+  const ends = periodFlaws(bills, year).filter((flaw) => flaw.kind === 'gap');
+  const first = ends.find((flaw) => flaw.from === year.from);
+  const last = ends.find((flaw) => flaw.to === year.to && flaw.from !== year.from);
+  const open = [
+    first && `the first ${formatCount(first.days, 'day')}`,
+    last && `the last ${formatCount(last.days, 'day')}`,
+  ].filter(Boolean);
+  if (open.length > 0)
+    return `The year is ${period}; ${open.join(' and ')} of it ${open.length === 1 && (first ?? last)?.days === 1 ? 'has' : 'have'} no bill yet.`;
+  return inside === 0 ? `They cover the year, ${period}, day by day.` : `The year is ${period}.`;
+}
+
+/** The finding of a table of bills on its way in. */
+export function readBillsHeading(bills: LedgerBill[], currency: string): string {
+  const billed = bills.reduce((sum, bill) => sum + billedMinor(bill), 0);
+  const count = capital(bills.length === 1 ? 'one bill' : `${formatSpelled(bills.length)} bills`);
+  return `${count}, ${formatMoney(billed, currency)} for ${daysInWords(bills)}.`;
+}

@@ -1,0 +1,123 @@
+import type { ColumnEvidence, ColumnUse, Measure } from '../../core/intake';
+import { billQuantities, billQuantity } from '../../schemas/bill';
+import type { SelectOption } from '../ui/Field';
+
+type Role = ColumnUse['role'];
+
+const intervalRoles: [Role, string][] = [
+  ['stamp', 'Date and time'],
+  ['date', 'Date'],
+  ['time', 'Time of day'],
+  ['interval-number', 'Number of the interval'],
+  ['stamp-begin', 'Beginning of interval'],
+  ['stamp-end', 'End of interval'],
+  ['active', 'Energy, drawn'],
+  ['export', 'Energy, delivered'],
+  ['reactive-lagging', 'Reactive, lagging'],
+  ['reactive-leading', 'Reactive, leading'],
+  ['reactive-signed', 'Reactive, signed'],
+  ['apparent', 'Apparent'],
+  ['power-factor', 'Power factor'],
+  ['quality', 'Quality mark'],
+  ['meter', 'Meter'],
+  ['channel', 'Name of the quantity'],
+  ['unit', 'Unit of the row'],
+  ['value', 'Reading'],
+  ['ignore', 'leave out'],
+];
+
+const billRoles: [Role, string][] = [
+  ['period-from', 'First day'],
+  ['period-to', 'Last day'],
+  ['month', 'Month of the bill'],
+  ['days', 'Days'],
+  ['charge', 'Line charge'],
+  ['total', 'Printed total'],
+  ['ignore', 'leave out'],
+];
+
+/** What a column can be taken for; a quantity of a bill carries its name, as in `quantity:kwh`. */
+export function roleOptions(kind: 'intervals' | 'bills', column: ColumnEvidence): SelectOption[] {
+  if (column.takenAs === 'day-value' || column.span > 1) {
+    return [
+      { value: 'day-value', label: 'Readings of the day' },
+      { value: 'ignore', label: 'leave out' },
+    ];
+  }
+  if (kind === 'intervals') return intervalRoles.map(([value, label]) => ({ value, label }));
+  const quantities = billQuantities.map(({ name, label, unit }) => ({
+    value: `quantity:${name}`,
+    label: unit ? `${label}, ${unit}` : label,
+  }));
+  const own = column.quantity && !billQuantities.some(({ name }) => name === column.quantity) ? column.quantity : null;
+  return [
+    ...billRoles.slice(0, 4).map(([value, label]) => ({ value, label })),
+    ...quantities,
+    ...(own ? [{ value: `quantity:${own}`, label: billQuantity(own).label }] : []),
+    ...billRoles.slice(4).map(([value, label]) => ({ value, label })),
+  ];
+}
+
+/** The value of the select for what a column is taken for. */
+export const roleValue = (column: Pick<ColumnEvidence, 'takenAs' | 'quantity'>) =>
+  column.takenAs === 'quantity' ? `quantity:${column.quantity ?? ''}` : column.takenAs;
+
+const units = {
+  active: ['kWh', 'MWh', 'Wh', 'kW', 'MW', 'W'],
+  reactive: ['kvarh', 'Mvarh', 'varh', 'kvar', 'Mvar', 'var'],
+  apparent: ['kVAh', 'VAh', 'kVA', 'VA'],
+};
+
+const unitFamily: Partial<Record<Role, string[]>> = {
+  active: units.active,
+  export: units.active,
+  'reactive-lagging': units.reactive,
+  'reactive-leading': units.reactive,
+  'reactive-signed': units.reactive,
+  apparent: units.apparent,
+  'day-value': [...units.active, ...units.reactive],
+  value: [...units.active, ...units.reactive],
+};
+
+const isEnergy = (unit: string) => unit.endsWith('h');
+
+/** Units a column of this role may carry, each energy also as a register that only grows. */
+export function unitOptions(column: Pick<ColumnEvidence, 'takenAs' | 'unit'>): SelectOption[] {
+  const family = unitFamily[column.takenAs];
+  if (!family) return [];
+  const known = family.includes(column.unit) || column.unit === '' ? family : [column.unit, ...family];
+  return known.flatMap((unit) =>
+    isEnergy(unit)
+      ? [
+          { value: `${unit}|energy`, label: unit },
+          { value: `${unit}|register`, label: `${unit}, register` },
+        ]
+      : [{ value: `${unit}|power`, label: `${unit}, mean` }],
+  );
+}
+
+export const unitValue = (column: Pick<ColumnEvidence, 'unit' | 'measure'>) =>
+  `${column.unit}|${column.measure ?? (isEnergy(column.unit) ? 'energy' : 'power')}`;
+
+/** A column's use with another role. */
+export function withRole(use: ColumnUse, value: string): ColumnUse {
+  const { index, name, factor, minuteOfDay } = use;
+  const base: ColumnUse = { index, name, role: value as Role, ...(factor === undefined ? {} : { factor }) };
+  if (value.startsWith('quantity:')) return { ...base, role: 'quantity', quantity: value.slice('quantity:'.length) };
+  if (value === 'day-value') return { ...use, role: 'day-value', minuteOfDay };
+  const family = unitFamily[base.role];
+  if (!family) return base;
+  const kept = use.unit && family.includes(use.unit) ? use.unit : family[0];
+  return { ...base, unit: kept, measure: measureOf(kept ?? '', use.measure) };
+}
+
+function measureOf(unit: string, before: Measure | undefined): Measure {
+  if (!isEnergy(unit)) return 'power';
+  return before === 'register' ? 'register' : 'energy';
+}
+
+/** A column's use with another unit, given as the select's value. */
+export function withUnit(use: ColumnUse, value: string): ColumnUse {
+  const [unit = '', measure] = value.split('|');
+  return { ...use, unit, measure: measure as Measure };
+}

@@ -1,5 +1,5 @@
 import type { Grid } from './grid';
-import { isBlankWord, parseNumberText } from './numbers';
+import { isBlankWord, parseNumberAt, parseNumberText } from './numbers';
 import { StampScanner } from './stamps';
 import type { DateOrder } from './types';
 
@@ -10,6 +10,8 @@ const orders: DateOrder[] = ['DMY', 'MDY', 'YMD'];
 
 /** Kind of a cell: figures in either decimal style, dates in any order, times, stamps, blanks, words. */
 export function cellKind(text: string, scanner: StampScanner): CellKind {
+  const isPlain = text.length < 8 && !Number.isNaN(parseNumberAt(text, 0, text.length, 46));
+  if (isPlain) return 'number';
   if (isBlankWord(text)) return 'blank';
   if (text.length > 60) return 'text';
   const compact = /^\d{8}(\d{4}(\d{2})?)?$/.test(text);

@@ -1,9 +1,9 @@
 import { intakeError } from './errors';
 import { gridCaps, TextGrid } from './grid';
 
-/** A growing list of offsets without boxing. */
+/** A list of offsets that grows without boxing. */
 class Offsets {
-  private values: Uint32Array;
+  values: Uint32Array;
   length = 0;
 
   constructor(capacity: number) {
@@ -11,11 +11,7 @@ class Offsets {
   }
 
   push(offset: number): void {
-    if (this.length === this.values.length) {
-      const grown = new Uint32Array(this.values.length * 2);
-      grown.set(this.values);
-      this.values = grown;
-    }
+    if (this.length === this.values.length) this.values = grown(this.values);
     this.values[this.length] = offset;
     this.length += 1;
   }
@@ -25,18 +21,57 @@ class Offsets {
   }
 }
 
+function grown(values: Uint32Array): Uint32Array {
+  const larger = new Uint32Array(values.length * 2);
+  larger.set(values);
+  return larger;
+}
+
 /**
  * Splits delimited text into a grid of offsets in one pass: quotes doubled inside quoted cells (RFC 4180), line ends LF, CRLF
  * or CR, line breaks inside quotes, rows of any length.
  * @throws {IntakeError} beyond the caps, or when a quote is opened and never closed.
  */
 export function splitDelimited(text: string, delimiter: string, fileName: string): TextGrid {
+  return text.includes('"') ? splitQuoted(text, delimiter, fileName) : splitPlain(text, delimiter, fileName);
+}
+
+/** The fast path: no quote anywhere, so every delimiter and line end is one. */
+function splitPlain(text: string, delimiter: string, fileName: string): TextGrid {
+  const mark = delimiter.charCodeAt(0);
+  const length = text.length;
+  // A text that is stored in pieces is laid out flat by its first search, which the caller has made.
+  let cells = new Uint32Array(Math.max(64, length >> 2));
+  let cellCount = 0;
+  const rows = new Offsets(1024);
+  const ends = new Offsets(1024);
+  let at = 0;
+  while (at < length) {
+    rows.push(cellCount);
+    if (cellCount === cells.length) cells = grown(cells);
+    cells[cellCount++] = at;
+    let code = 0;
+    for (; at < length; at += 1) {
+      code = text.charCodeAt(at);
+      if (code === mark) {
+        if (cellCount === cells.length) cells = grown(cells);
+        cells[cellCount++] = at + 1;
+      } else if (code === 10 || code === 13) break;
+    }
+    ends.push(at);
+    at += code === 13 && text.charCodeAt(at + 1) === 10 ? 2 : 1;
+    if (rows.length > gridCaps.rows) throw tooLarge(fileName);
+  }
+  rows.push(cellCount);
+  return new TextGrid(text, cells.subarray(0, cellCount), rows.finish(), null, ends.finish());
+}
+
+function splitQuoted(text: string, delimiter: string, fileName: string): TextGrid {
   const mark = delimiter.charCodeAt(0);
   const cells = new Offsets(Math.max(64, text.length >> 2));
   const rows = new Offsets(1024);
   const ends = new Offsets(1024);
   const lines = new Offsets(1024);
-  const quoted = text.includes('"');
   const length = text.length;
   let line = 1;
   let at = 0;
@@ -47,8 +82,8 @@ export function splitDelimited(text: string, delimiter: string, fileName: string
     for (; at < length; at += 1) {
       const code = text.charCodeAt(at);
       if (code === mark) cells.push(at + 1);
-      else if (code < 14 && (code === 10 || code === 13)) break;
-      else if (quoted && code === 34 && isCellStart(text, at, mark)) {
+      else if (code === 10 || code === 13) break;
+      else if (code === 34 && isCellStart(text, at, mark)) {
         const close = closingQuote(text, at);
         if (close < 0) throw unclosedQuote(fileName, line);
         for (let inner = at; inner < close; inner += 1) if (text.charCodeAt(inner) === 10) line += 1;
@@ -62,7 +97,7 @@ export function splitDelimited(text: string, delimiter: string, fileName: string
     if (rows.length > gridCaps.rows) throw tooLarge(fileName);
   }
   rows.push(cells.length);
-  return new TextGrid(text, cells.finish(), rows.finish(), quoted ? lines.finish() : null, ends.finish());
+  return new TextGrid(text, cells.finish(), rows.finish(), lines.finish(), ends.finish());
 }
 
 /** A quote opens a quoted cell only as the first sign of the cell, blanks and the guard of ="..." apart. */

@@ -147,39 +147,45 @@ function layStrand(
 ): void {
   const { strand, timeline } = placed;
   const { stepMinutes, length } = gridded;
-  const channels = strand.channels.map((channel) => ({
-    channel,
-    figures: new Float64Array(length).fill(Number.NaN),
-    factor: channel.measure === 'power' && channel.role !== 'power-factor' ? stepMinutes / 60 : 1,
-  }));
   const isFilled = new Uint8Array(length);
   const count = strand.rows.length;
+  const sources = strand.channels.map((channel) => channel.values);
+  const targets = strand.channels.map(() => new Float64Array(length).fill(Number.NaN));
+  const factors = strand.channels.map((channel) =>
+    channel.measure === 'power' && channel.role !== 'power-factor' ? stepMinutes / 60 : 1,
+  );
   for (let turn = 0; turn < count; turn += 1) {
     // A file that runs backwards was turned round; the first reading of the file still wins.
     const at = strand.isTurned ? count - 1 - turn : turn;
     const minute = timeline.utc[at] ?? Number.NaN;
     if (Number.isNaN(minute) || (minute - phase) % stepMinutes !== 0) continue;
-    const slot = (minute - leastMinute) / stepMinutes;
     const mark = strand.quality?.[at] ?? grades.measured;
-    const hasFigure =
-      mark !== grades.missing && channels.some(({ channel }) => !Number.isNaN(channel.values[at] ?? Number.NaN));
+    if (mark === grades.missing || !hasFigure(sources, at)) continue;
+    const slot = (minute - leastMinute) / stepMinutes;
     if (isFilled[slot] === 1) {
-      if (!hasFigure) continue;
       gridded.duplicates += 1;
       if (
-        channels.some(({ channel, figures, factor }) =>
-          differs(figures[slot], (channel.values[at] ?? Number.NaN) * factor),
+        sources.some((source, index) =>
+          differs(targets[index]?.[slot], (source[at] ?? Number.NaN) * (factors[index] ?? 1)),
         )
       )
         differing.push(strand.rows[at] ?? 0);
       continue;
     }
-    if (!hasFigure) continue;
     isFilled[slot] = 1;
     if (mark === grades.estimated) gridded.quality[slot] = grades.estimated;
-    for (const { channel, figures, factor } of channels) figures[slot] = (channel.values[at] ?? Number.NaN) * factor;
+    for (let index = 0; index < sources.length; index += 1) {
+      const target = targets[index];
+      if (target) target[slot] = (sources[index]?.[at] ?? Number.NaN) * (factors[index] ?? 1);
+    }
   }
-  for (const { channel, figures } of channels) addChannel(gridded, channel, figures);
+  strand.channels.forEach((channel, index) => addChannel(gridded, channel, targets[index] ?? new Float64Array(length)));
+}
+
+function hasFigure(sources: readonly Float64Array[], at: number): boolean {
+  for (let index = 0; index < sources.length; index += 1)
+    if (!Number.isNaN(sources[index]?.[at] ?? Number.NaN)) return true;
+  return false;
 }
 
 function differs(kept: number | undefined, other: number): boolean {
@@ -252,7 +258,7 @@ export function loadOf(gridded: GriddedChannels): { load: LoadSeries; notes: Int
   const lagging = reactive.lagging ?? absent();
   const leading = reactive.leading ?? absent();
   for (let slot = 0; slot < length; slot += 1) {
-    if (!carried.some((figures) => Number.isNaN(figures[slot] ?? Number.NaN))) continue;
+    if (!lacks(carried, slot)) continue;
     quality[slot] = grades.missing;
     kwh[slot] = lagging[slot] = leading[slot] = Number.NaN;
   }
@@ -274,6 +280,12 @@ export function loadOf(gridded: GriddedChannels): { load: LoadSeries; notes: Int
     notes,
     negative,
   };
+}
+
+function lacks(carried: readonly Float64Array[], slot: number): boolean {
+  for (let index = 0; index < carried.length; index += 1)
+    if (Number.isNaN(carried[index]?.[slot] ?? Number.NaN)) return true;
+  return false;
 }
 
 /** A channel without a single figure is absent, not missing throughout. */
@@ -367,7 +379,8 @@ function keepSigns(lagging: Float64Array | null, leading: Float64Array | null, n
     notes.push({ code: 'leading-sign', message: 'The leading column is printed negative: its size is kept.' });
   }
   let moved = 0;
-  const length = (lag ?? lead)?.length ?? 0;
+  const isSigned = (figures: Float64Array | null): boolean => figures?.some((figure) => figure < 0) ?? false;
+  const length = isSigned(lag) || isSigned(lead) ? ((lag ?? lead)?.length ?? 0) : 0;
   for (let slot = 0; slot < length; slot += 1) {
     for (const [own, other] of [
       [lag, lead],

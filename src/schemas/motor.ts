@@ -124,7 +124,7 @@ const loadRule = z
     message: 'A load above 150 % of rated output is no lasting load. Check the figure.',
   });
 
-/** When a motor runs and at what load. Hours no rule names are standstill; from later rules wins over earlier ones. */
+/** When a motor runs and at what load. Hours that no rule names, and a load of 0, are standstill; later rules win. */
 export const calendarInput = z.object({
   rules: z.array(loadRule).min(1, 'Say at least once when the motor runs.').max(20, 'At most 20 rules.'),
   shutdowns: z

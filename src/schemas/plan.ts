@@ -66,11 +66,13 @@ export interface PlanMotorView {
   fieldLimitA: number;
   fieldSharePercent: number;
   leastPullOut: number;
+  /** Greatest share of the stator limit, after the reserve; 1 is at the limit. */
+  greatestArmatureShare: number;
   pullOutMargin: number;
   hoursRunning: number;
   /** Running hours by the limit that lies nearest. */
   hoursNearest: { field: number; armature: number; pullOut: number };
-  /** Hours beyond a limit, all limits; a plan on offer has none. */
+  /** Hours beyond the limit broken longest; a plan on offer has none. */
   hoursBeyond: number;
 }
 
@@ -110,6 +112,10 @@ export interface SearchView {
   standingTotal: number;
   saving: number;
   priced: number;
+  /** Every combination was priced: there is no better setting at this step. */
+  exhaustive: boolean;
+  /** No setting is cheaper than the fields of today. */
+  leaveAlone: boolean;
   stepA: number;
   curves: CostCurveView[];
   /** A total no admissible kvar in any interval can beat; null where none was proven. */
@@ -245,3 +251,6 @@ export const searchInput = z.object({
 export type SearchInput = z.output<typeof searchInput>;
 
 export const planDefaults = { discountPercent: 8, escalationPercent: 0, horizonYears: 10 } as const;
+
+/** How far the figures of a plan are taken to scatter when its cash flow is sampled: one standard deviation. */
+export const cashFlowSpread = { savingPercent: 10, costPercent: 15, escalationPercentPoints: 1 } as const;

@@ -15,7 +15,7 @@ import type { Actor } from '../policies/actor';
 import { limitsOf, presentMotor, storedMotor } from '../presenters/motor';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { completePlate, machineOrThrow } from './nameplates';
-import { loadHours, ruleLoadKw } from './shaft-load';
+import { loadHoursOf, ruleLoadKw } from './shaft-load';
 
 /** A motor's row opened by somebody who works on its engagement. */
 export interface OpenMotor {
@@ -171,7 +171,7 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
 export function loadOf(motor: Motor, machine: SynchronousMotor, opened: OpenEngagement) {
   const { yearFrom, yearTo } = opened.engagement;
   const calendar = motor.calendar as unknown as CalendarInput;
-  const hours = loadHours(calendar, machine.ratedOutputKw, { from: yearFrom, to: yearTo });
+  const hours = loadHoursOf(calendar, machine.ratedOutputKw, { from: yearFrom, to: yearTo });
   const usualShaftKw = hours[0]?.shaftKw ?? ruleLoadKw(calendar.rules[0]!, machine.ratedOutputKw);
   return { usualShaftKw, hoursRunning: hours.reduce((sum, one) => sum + one.hours, 0), hours };
 }

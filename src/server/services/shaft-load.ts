@@ -1,7 +1,8 @@
-import { dayNumber, isoDate, weekdayOf } from '../../core/load';
+import { addDays, dayNumber, isoDate, weekdayOf } from '../../core/load';
+import type { DayKind, ShiftCalendar } from '../../core/plan';
 import { dayNames, type CalendarInput, type LoadRule } from '../../schemas/motor';
 
-/** Rated shaft power of a rule's load. [kW] */
+/** Shaft power of a rule's load. [kW] */
 export const ruleLoadKw = (rule: LoadRule, ratedOutputKw: number) =>
   rule.unit === 'kW' ? rule.load : (rule.load / 100) * ratedOutputKw;
 
@@ -29,7 +30,7 @@ function weekOf({ rules }: CalendarInput): (LoadRule | null)[] {
 }
 
 /** Hours of [from, to) at each load, most hours first, by the clock: the odd hour of a clock change is not counted. */
-export function loadHours(
+export function loadHoursOf(
   calendar: CalendarInput,
   ratedOutputKw: number,
   year: { from: string; to: string },
@@ -41,12 +42,27 @@ export function loadHours(
     if (calendar.shutdowns.some((range) => date >= range.from && date <= range.lastDay)) continue;
     const start = ((weekdayOf(day) + 6) % 7) * stepsPerDay;
     for (const rule of week.slice(start, start + stepsPerDay)) {
-      if (!rule) continue;
-      const shaftKw = ruleLoadKw(rule, ratedOutputKw);
-      steps.set(shaftKw, (steps.get(shaftKw) ?? 0) + 1);
+      const shaftKw = rule ? ruleLoadKw(rule, ratedOutputKw) : 0;
+      if (shaftKw > 0) steps.set(shaftKw, (steps.get(shaftKw) ?? 0) + 1);
     }
   }
   return [...steps]
     .map(([shaftKw, count]) => ({ shaftKw, hours: count / stepsPerHour }))
     .sort((a, b) => b.hours - a.hours || b.shaftKw - a.shaftKw);
+}
+
+const clock = (hour: number) =>
+  `${String(Math.floor(hour)).padStart(2, '0')}:${String(Math.round((hour % 1) * 60)).padStart(2, '0')}`;
+
+/** The calendar in the words of the core. */
+export function toShiftCalendar(calendar: CalendarInput, ratedOutputKw: number): ShiftCalendar {
+  return {
+    rules: calendar.rules.map((rule) => ({
+      days: rule.days.map((day) => day.toLowerCase() as DayKind),
+      from: clock(rule.fromHour),
+      to: clock(rule.toHour),
+      shaftKw: ruleLoadKw(rule, ratedOutputKw),
+    })),
+    shutdowns: calendar.shutdowns.map(({ from, lastDay }) => ({ from, to: addDays(lastDay, 1) })),
+  };
 }

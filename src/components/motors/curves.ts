@@ -1,0 +1,172 @@
+import {
+  capabilityCurve,
+  operatingPoint,
+  PullOutError,
+  unityField,
+  vCurve,
+  type SynchronousMotor,
+} from '../../core/machine';
+import type { MotorView } from '../../schemas/motor';
+import type { CapabilityData, KvarPoint } from '../charts/CapabilityChart';
+import type { CurrentPoint, VCurveData } from '../charts/v-curve';
+import { formatNumber } from '../ui/format';
+
+const loadPercents = [0, 25, 50, 75, 100] as const;
+const pointsPerCurve = 70;
+
+/** A field setting on a picture: the plan's, or the one being tried. */
+export interface NamedField {
+  name: string;
+  fieldA: number;
+}
+
+/** Whether a field current holds a load with at least a pull-out ratio. */
+function holds(machine: SynchronousMotor, shaftKw: number, fieldCurrentA: number, ratio: number): boolean {
+  try {
+    return operatingPoint(machine, { shaftKw, fieldCurrentA }).pullOutRatio >= ratio;
+  } catch (error) {
+    if (error instanceof PullOutError) return false;
+    throw error;
+  }
+}
+
+/** Least field current that holds a load with a pull-out ratio, by halving; null above the search's end. */
+export function leastFieldA(machine: SynchronousMotor, shaftKw: number, ratio: number): number | null {
+  let low = 0;
+  let high = 2 * machine.ratedFieldCurrentA;
+  if (!holds(machine, shaftKw, high, ratio)) return null;
+  for (let step = 0; step < 24; step += 1) {
+    const middle = (low + high) / 2;
+    if (holds(machine, shaftKw, middle, ratio)) high = middle;
+    else low = middle;
+  }
+  return high;
+}
+
+function currentsAt(machine: SynchronousMotor, shaftKw: number, fieldCurrentA: number): CurrentPoint | null {
+  try {
+    return { fieldA: fieldCurrentA, armatureA: operatingPoint(machine, { shaftKw, fieldCurrentA }).lineCurrentA };
+  } catch (error) {
+    if (error instanceof PullOutError) return null;
+    throw error;
+  }
+}
+
+/** Least admissible field over the loads, as a line of the plane. */
+function pullOutEdge(machine: SynchronousMotor, margin: number): CurrentPoint[] {
+  const edge: CurrentPoint[] = [];
+  for (let percent = 5; percent <= 130; percent += 5) {
+    const shaftKw = (percent / 100) * machine.ratedOutputKw;
+    const fieldA = leastFieldA(machine, shaftKw, margin);
+    const point = fieldA === null ? null : currentsAt(machine, shaftKw, fieldA);
+    if (point) edge.push(point);
+  }
+  return edge;
+}
+
+/** The family of V-curves of a motor with its limits and marks. */
+export function vCurveData(motor: MotorView, plan: NamedField | null): VCurveData {
+  const { machine, limits, usualShaftKw } = motor;
+  const fieldToA = Math.max(limits.fieldA, machine.ratedFieldCurrentA) * 1.1;
+  const usualLoadPercent = Math.round(motor.usualLoadPercent);
+  const percents = [...new Set([...loadPercents, usualLoadPercent])].sort((a, b) => a - b);
+  const shaft = (percent: number) =>
+    percent === usualLoadPercent ? usualShaftKw : (percent / 100) * machine.ratedOutputKw;
+  return {
+    motorName: motor.name,
+    usualLoadPercent,
+    curves: percents.map((loadPercent) => ({
+      loadPercent,
+      points: vCurve(machine, {
+        shaftKw: shaft(loadPercent),
+        fieldFromA: 0.15 * machine.ratedFieldCurrentA,
+        fieldToA,
+        points: pointsPerCurve,
+      }).map((point) => ({ fieldA: point.fieldCurrentA, armatureA: point.lineCurrentA, leading: point.leading })),
+    })),
+    unity: percents.flatMap((percent) => {
+      const fieldA = unityField(machine, { shaftKw: shaft(percent) });
+      return currentsAt(machine, shaft(percent), fieldA) ?? [];
+    }),
+    limits: {
+      armatureA: limits.armatureA,
+      fieldA: limits.fieldA,
+      pullOut: pullOutEdge(machine, limits.pullOutMargin),
+      pullOutName: `pull-out below ${formatNumber(limits.pullOutMargin, { upTo: 2 })}`,
+    },
+    today: currentsAt(machine, usualShaftKw, motor.fieldTodayA),
+    plan: plan && currentsAt(machine, usualShaftKw, plan.fieldA),
+    planName: plan?.name,
+  };
+}
+
+/** Kvar delivered over the loads at a constant field; loads it cannot hold are left out. */
+function kvarOverLoad(machine: SynchronousMotor, fieldCurrentA: number, percents: number[]): KvarPoint[] {
+  return percents.flatMap((loadPercent) => {
+    try {
+      const shaftKw = (loadPercent / 100) * machine.ratedOutputKw;
+      return { loadPercent, kvarDelivered: -operatingPoint(machine, { shaftKw, fieldCurrentA }).kvar };
+    } catch (error) {
+      if (error instanceof PullOutError) return [];
+      throw error;
+    }
+  });
+}
+
+/** What a motor may deliver over its load, with today's field and the plan's. */
+export function capabilityData(motor: MotorView, plan: NamedField | null): CapabilityData {
+  const { machine } = motor;
+  const percents = Array.from({ length: 25 }, (_, index) => index * 5);
+  const curve = capabilityCurve(machine, { loads: percents.map((percent) => (percent / 100) * machine.ratedOutputKw) });
+  return {
+    motorName: motor.name,
+    usualLoadPercent: Math.round(motor.usualLoadPercent),
+    capability: curve.map(({ kvarDelivered, binding }, index) => ({
+      loadPercent: percents[index] ?? 0,
+      kvarDelivered,
+      binding,
+    })),
+    today: kvarOverLoad(machine, motor.fieldTodayA, percents),
+    plan: plan ? kvarOverLoad(machine, plan.fieldA, percents) : undefined,
+    planName: plan?.name,
+  };
+}
+
+/** A motor at its usual load and one field current, or the reason why it cannot run there. */
+export interface SettingReading {
+  fieldA: number;
+  kvarDelivered: number;
+  armatureA: number;
+  pullOut: number;
+  lossesKw: number;
+  /** Against today's setting. */
+  extraLossKw: number;
+  wattsPerKvar: number | null;
+  beyond: string[];
+}
+
+const limitWords = { armature: 'stator', field: 'field', 'pull-out': 'pull-out' } as const;
+
+/** Reads a motor at a field current and its usual load; null where it would fall out of step. */
+export function settingReading(motor: MotorView, fieldCurrentA: number): SettingReading | null {
+  const { machine, usualShaftKw: shaftKw } = motor;
+  try {
+    const point = operatingPoint(machine, { shaftKw, fieldCurrentA });
+    const today = operatingPoint(machine, { shaftKw, fieldCurrentA: motor.fieldTodayA });
+    const extraLossKw = point.inputKw - today.inputKw;
+    const gained = today.kvar - point.kvar;
+    return {
+      fieldA: fieldCurrentA,
+      kvarDelivered: -point.kvar,
+      armatureA: point.lineCurrentA,
+      pullOut: point.pullOutRatio,
+      lossesKw: point.inputKw - shaftKw,
+      extraLossKw,
+      wattsPerKvar: gained > 1 ? (1000 * extraLossKw) / gained : null,
+      beyond: point.beyond.map((limit) => limitWords[limit]),
+    };
+  } catch (error) {
+    if (error instanceof PullOutError) return null;
+    throw error;
+  }
+}

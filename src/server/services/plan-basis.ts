@@ -1,0 +1,100 @@
+import { createHash } from 'node:crypto';
+import type { CompletedMotor, SynchronousMotor } from '../../core/machine';
+import type { CalendarInput, PlateInput } from '../../schemas/motor';
+import { conflict } from '../errors';
+import type { Motor } from '../models/Motor';
+import { calculateYear } from '../workers/pool';
+import type { TaskBasis, TaskFields, TaskSetting } from '../workers/tasks';
+import type { OpenEngagement } from './engagements';
+import { listMotors } from './motors';
+import { completePlate } from './nameplates';
+import { pricingInputs, type PricingInputs } from './pricing';
+
+/** A motor's row with the machine its plate makes. */
+export interface PlanMotor {
+  row: Motor;
+  machine: SynchronousMotor;
+  completed: CompletedMotor;
+}
+
+/** Everything a plan of an engagement is priced from. */
+export interface PlanBasis {
+  pricing: PricingInputs;
+  motors: PlanMotor[];
+  task: TaskBasis;
+  /** Changes whenever readings, bills, tariff or a motor change. */
+  fingerprint: string;
+}
+
+/** Motors of an engagement with their machines. */
+export async function planMotors(engagementId: number): Promise<PlanMotor[]> {
+  return (await listMotors(engagementId)).map((row) => {
+    const completed = completePlate(row.plate as unknown as PlateInput);
+    if (!completed.motor) throw conflict(`The plate of ${row.name} cannot be read. Open it at the station Motors.`);
+    return { row, machine: completed.motor, completed };
+  });
+}
+
+/**
+ * What the plans of an engagement are priced from.
+ *
+ * @throws {ServiceError} 409 naming the station to visit, where readings, bills, tariff or motors are missing
+ */
+export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
+  const motors = await planMotors(opened.engagement.id);
+  if (motors.length === 0) {
+    throw conflict('No motor is entered yet. Enter one at the station Motors.', { station: 'motors' });
+  }
+  const pricing = await pricingInputs(opened);
+  const { scheduleText, periods, contract, history, given, load, schedule } = pricing;
+  const task: TaskBasis = {
+    scheduleText,
+    timeZone: schedule.timeZone,
+    periods,
+    contract,
+    history,
+    given,
+    load,
+    motors: motors.map(({ row, machine }) => ({
+      id: row.id,
+      name: row.name,
+      machine,
+      calendar: row.calendar as unknown as CalendarInput,
+      fieldTodayA: row.fieldTodayA,
+    })),
+  };
+  const ofMotors = motors.map(({ row }) => [row.id, row.version, row.updatedAt.getTime()]);
+  const fingerprint = createHash('sha256')
+    .update(JSON.stringify([pricing.dataKey, ofMotors]))
+    .digest('hex');
+  return { pricing, motors, task, fingerprint };
+}
+
+const cacheSize = 60;
+const shared = globalThis as typeof globalThis & { counterlagSettings?: Map<string, Promise<TaskSetting>> };
+const cache = (shared.counterlagSettings ??= new Map());
+
+const keyOf = (basis: PlanBasis, fields: TaskFields) =>
+  `${basis.fingerprint} ${JSON.stringify([...fields].sort((a, b) => a.motorId - b.motorId))}`;
+
+/** Prices settings over the year; each is worked out once as long as nothing it hangs on changes. */
+export async function priceSettings(basis: PlanBasis, settings: TaskFields[]): Promise<TaskSetting[]> {
+  const fresh = settings.filter((fields) => !cache.has(keyOf(basis, fields)));
+  const work = fresh.length > 0 ? calculateYear({ kind: 'year', basis: basis.task, settings: fresh }) : null;
+  const results = settings.map((fields) => {
+    const index = fresh.indexOf(fields);
+    const known = cache.get(keyOf(basis, fields));
+    return work && index >= 0 ? work.then((done) => done[index] as TaskSetting) : (known as Promise<TaskSetting>);
+  });
+  settings.forEach((fields, index) => keep(keyOf(basis, fields), results[index] as Promise<TaskSetting>));
+  return Promise.all(results);
+}
+
+/** Keeps a result, newest last; one that fails is forgotten, so that the next look tries again. */
+function keep(key: string, result: Promise<TaskSetting>): void {
+  cache.delete(key);
+  cache.set(key, result);
+  result.catch(() => cache.delete(key));
+  const [oldest] = cache.keys();
+  if (cache.size > cacheSize && oldest !== undefined) cache.delete(oldest);
+}

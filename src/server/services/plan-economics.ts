@@ -1,0 +1,66 @@
+import { appraise, cashFlow, escalatedSavings, sampleAppraisal, type Project } from '../../core/economics';
+import { cashFlowSpread, type AppraisalView, type CashFlowMonth, type PlanEconomics } from '../../schemas/plan';
+
+/** What a plan's money hangs on. Amounts in major units. */
+export interface PlanMoney {
+  /** First year's saving by group of charges; negative where the group costs more. */
+  savingByGroup: Record<string, number>;
+  capitalCost: number;
+  yearlyUpkeep: number;
+  economics: PlanEconomics;
+}
+
+const samples = 400;
+const seed = 20_260_907;
+
+function projectOf({ savingByGroup, capitalCost, yearlyUpkeep, economics }: PlanMoney): Project {
+  const years = economics.horizonYears;
+  return {
+    capitalCost,
+    yearlySaving: escalatedSavings({
+      firstYear: savingByGroup,
+      otherEscalation: economics.escalationPercent / 100,
+      years,
+    }),
+    yearlyUpkeep: new Array<number>(years).fill(yearlyUpkeep),
+    discountRate: economics.discountPercent / 100,
+  };
+}
+
+/** Paybacks, present value and rate of return of a plan. */
+export const appraisePlan = (money: PlanMoney): AppraisalView => appraise(projectOf(money));
+
+/** Cumulative cash flow by month with the band of eight of ten samples. The same plan gives the same band. */
+export function planCashFlow(money: PlanMoney): CashFlowMonth[] {
+  const { months } = cashFlow(projectOf(money));
+  const firstYearSaving = Object.values(money.savingByGroup).reduce((sum, amount) => sum + amount, 0);
+  const { band } = sampleAppraisal({
+    capitalCost: money.capitalCost,
+    firstYearSaving,
+    yearlyUpkeep: money.yearlyUpkeep,
+    escalationRate: money.economics.escalationPercent / 100,
+    discountRate: money.economics.discountPercent / 100,
+    years: money.economics.horizonYears,
+    uncertainty: {
+      saving: cashFlowSpread.savingPercent / 100,
+      cost: cashFlowSpread.costPercent / 100,
+      escalation: cashFlowSpread.escalationPercentPoints / 100,
+    },
+    samples,
+    seed,
+  });
+  return months.map(({ month, cumulative }, index) => ({
+    month,
+    cumulative,
+    low: band[index]?.p10,
+    high: band[index]?.p90,
+  }));
+}
+
+/** Simple payback in words. */
+export function paybackWords(years: number | null): string {
+  if (years === null) return 'never';
+  if (years === 0) return 'at once';
+  const months = Math.max(1, Math.round(years * 12));
+  return `${months} ${months === 1 ? 'month' : 'months'}`;
+}

@@ -1,0 +1,167 @@
+import type { PlanEconomics, Missing, PlanView, SearchView, UnpricedPlan, YearView } from '../../schemas/plan';
+import { planDefaults } from '../../schemas/plan';
+import { ServiceError } from '../errors';
+import type { Plan } from '../models/Plan';
+import { limitsOf, presentAssumed } from '../presenters/motor';
+import {
+  chargeGroups,
+  groupTotals,
+  nearestLimitWords,
+  presentPlan,
+  presentPlanField,
+  presentPlanMotor,
+  presentPricedBill,
+  storedPlan,
+} from '../presenters/plan';
+import type { TaskSetting } from '../workers/tasks';
+import type { OpenEngagement } from './engagements';
+import { loadOf } from './motors';
+import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
+import { appraisePlan, paybackWords, planCashFlow, type PlanMoney } from './plan-economics';
+import { fieldFault } from './plan-limits';
+import { fieldActions, listPlans, type FieldAction } from './plan-rows';
+
+/** What stands between an engagement and priced plans; nothing where all is there. */
+export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
+  try {
+    await planBasis(opened);
+    return null;
+  } catch (error) {
+    if (!(error instanceof ServiceError) || error.status !== 409) throw error;
+    const station = (error.details?.station ?? 'tariff') as Missing['station'];
+    return { station, what: error.message, remedy: `Open the station ${station}.` };
+  }
+}
+
+/** A motor with its load, as the views need it. */
+type LoadedMotor = PlanMotor & { load: ReturnType<typeof loadOf> };
+
+interface Year {
+  opened: OpenEngagement;
+  basis: PlanBasis;
+  motors: LoadedMotor[];
+  standing: TaskSetting;
+}
+
+/**
+ * The year of an engagement: standing, its plans, the chosen one, every bill priced.
+ *
+ * @throws {ServiceError} 409 naming the station to visit, where readings, bills, tariff or motors are missing
+ */
+export async function plansOf(opened: OpenEngagement): Promise<YearView> {
+  const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
+  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
+  const faults = rows.map((row) => faultOf(fieldActions(row), motors));
+  const priceable = rows.filter((_, index) => faults[index] === null);
+  const [standing, ...settings] = (await priceSettings(basis, [[], ...priceable.map(fieldActions)])) as [
+    TaskSetting,
+    ...TaskSetting[],
+  ];
+  const year: Year = { opened, basis, motors, standing };
+  const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
+  return {
+    currency: basis.pricing.schedule.currency,
+    from: basis.task.periods[0]!.from,
+    to: basis.task.periods.at(-1)!.to,
+    route: 'intervals',
+    scheduleTitle: basis.pricing.schedule.title,
+    readings: standing.readings,
+    standing: viewOf(year, null, standing),
+    plans,
+    unpriced: rows.flatMap((row, index): UnpricedPlan[] => {
+      const reason = faults[index];
+      return reason ? [unpricedOf(row, reason, motors)] : [];
+    }),
+    chosen: plans.find((plan) => plan.chosen) ?? null,
+    notes: [...new Set(standing.bills.flatMap((bill) => bill.notes))],
+  };
+}
+
+/** Why a stored plan cannot be offered any more; null where it can. */
+function faultOf(fields: FieldAction[], motors: LoadedMotor[]): string | null {
+  for (const { motorId, fieldA } of fields) {
+    const motor = motors.find(({ row }) => row.id === motorId);
+    if (!motor) return 'It sets a motor that is no longer there.';
+    const limited = { name: motor.row.name, machine: motor.machine, limits: limitsOf(motor.machine) };
+    const fault = fieldFault(limited, fieldA, motor.load.hours);
+    if (fault) return fault;
+  }
+  return null;
+}
+
+const motorFacts = ({ row, machine, load }: LoadedMotor) => ({
+  id: row.id,
+  name: row.name,
+  machine,
+  fieldTodayA: row.fieldTodayA,
+  usualShaftKw: load.usualShaftKw,
+});
+
+function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedPlan {
+  const fields = fieldActions(row).flatMap(({ motorId, fieldA }) => {
+    const motor = motors.find((one) => one.row.id === motorId);
+    return motor ? presentPlanField(motorFacts(motor), fieldA) : [];
+  });
+  return { id: row.id, version: row.version, name: row.name, chosen: row.chosen, fields, reason };
+}
+
+/** First year's saving by group of charges. */
+function savingByGroup(standing: ReturnType<typeof groupTotals>, plan: ReturnType<typeof groupTotals>) {
+  return Object.fromEntries(chargeGroups.map((group) => [group, standing[group] - plan[group]]));
+}
+
+const atRest: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconomics } = {
+  capitalCost: 0,
+  yearlyUpkeep: 0,
+  economics: { ...planDefaults },
+};
+
+function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
+  const { basis, motors, standing } = year;
+  const { currency } = basis.pricing.schedule;
+  const actions = row ? fieldActions(row) : [];
+  const fieldOf = (motor: LoadedMotor) =>
+    actions.find((action) => action.motorId === motor.row.id)?.fieldA ?? motor.row.fieldTodayA;
+  const bills = setting.bills.map(presentPricedBill);
+  const before = standing.bills.map(presentPricedBill);
+  const { capitalCost, yearlyUpkeep, economics } = row ? storedPlan(row, currency) : atRest;
+  const money: PlanMoney = {
+    savingByGroup: savingByGroup(groupTotals(before), groupTotals(bills)),
+    capitalCost,
+    yearlyUpkeep,
+    economics,
+  };
+  const appraisal = appraisePlan(money);
+  const views = motors.map((motor) => {
+    const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
+    return presentPlanMotor(motorFacts(motor), fieldOf(motor), figures);
+  });
+  const search = (row?.search ?? null) as unknown as SearchView | null;
+  return presentPlan({
+    plan: row,
+    currency,
+    fields: motors.map((motor) => presentPlanField(motorFacts(motor), fieldOf(motor))),
+    bills,
+    standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
+    money: { capitalCost, yearlyUpkeep, economics },
+    appraisal,
+    paybackWords: wordsOfPayback(money, appraisal.simplePaybackYears),
+    cashFlow: row ? planCashFlow(money) : [],
+    motors: views,
+    hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
+    nearestLimit: nearestLimitWords(views),
+    worstPf: setting.worstPf && { ...setting.worstPf, bill: bills[setting.worstPf.bill]?.to ?? '' },
+    assumed: motors.flatMap(({ row: motor, completed, load }) => presentAssumed(motor, completed, load.usualShaftKw)),
+    search,
+    stale: search && search.fingerprint !== basis.fingerprint ? [staleWords] : [],
+  });
+}
+
+const staleWords =
+  'Motors, bills, readings or tariff were changed after the search. The plan is priced afresh, but its settings may no longer be the best: search again.';
+
+/** A plan that saves nothing pays nothing back, however little it costs. */
+function wordsOfPayback({ savingByGroup, yearlyUpkeep }: PlanMoney, years: number | null): string {
+  const saving = Object.values(savingByGroup).reduce((sum, amount) => sum + amount, -yearlyUpkeep);
+  return saving > 0 ? paybackWords(years) : 'never';
+}

@@ -1,0 +1,155 @@
+import { toMinorUnits } from '../../core/units';
+import type { MotorView } from '../../schemas/motor';
+import type { PlanChangeInput, PlanInput, SearchView } from '../../schemas/plan';
+import { inTx } from '../db/tx';
+import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
+import { Job } from '../models/Job';
+import { Plan } from '../models/Plan';
+import type { Actor } from '../policies/actor';
+import { presentPlanRow, storedPlan } from '../presenters/plan';
+import { openEngagementById, type OpenEngagement } from './engagements';
+import { motorsOf } from './motors';
+import { fieldFault } from './plan-limits';
+import { loadHoursOf } from './shaft-load';
+
+export { missingForPlans, plansOf } from './plan-year';
+
+/** A plan's row opened by somebody who works on its engagement. */
+export interface OpenPlan {
+  plan: Plan;
+  opened: OpenEngagement;
+}
+
+/**
+ * A plan's row by its id.
+ *
+ * @throws {ServiceError} 404 where there is none, or none this person may know of
+ */
+export async function openPlan(actor: Actor, id: number): Promise<OpenPlan> {
+  const plan = await Plan.findByPk(id);
+  if (!plan) throw notFound();
+  return { plan, opened: await openEngagementById(actor, plan.engagementId) };
+}
+
+/**
+ * Adds a plan.
+ *
+ * @throws {ServiceError} 422 where a field current lies beyond a limit, naming motor and limit
+ */
+export async function createPlan(opened: OpenEngagement, input: PlanInput) {
+  const engagementId = opened.engagement.id;
+  const values = await checkedValues(opened, input);
+  await refuseSameName(engagementId, input.name);
+  const search = await searchOf(engagementId, input);
+  const plan = await inTx(() => Plan.create({ ...values, engagementId, search }));
+  return presentPlanRow(plan);
+}
+
+/**
+ * Changes a plan.
+ *
+ * @throws {ServiceError} 409 with both versions where somebody saved in between; 422 as when it is added
+ */
+export async function changePlan({ plan, opened }: OpenPlan, input: PlanChangeInput) {
+  const values = await checkedValues(opened, input);
+  await refuseSameName(plan.engagementId, input.name, plan.id);
+  const { version, ...mine } = input;
+  refuseStale(plan, opened, version, mine);
+  const found = plan.search as unknown as SearchView | null;
+  const search =
+    found && sameFields(found.fields, input.fields) ? plan.search : await searchOf(plan.engagementId, input);
+  await inTx(() => plan.update({ ...values, search }));
+  return presentPlanRow(plan);
+}
+
+/** Chooses a plan for the report, or takes the choice back; one plan of an engagement is chosen at most. */
+export async function choosePlan({ plan, opened }: OpenPlan, input: { version: number; chosen: boolean }) {
+  refuseStale(plan, opened, input.version, input);
+  await inTx(async () => {
+    if (input.chosen) {
+      const others = await Plan.findAll({ where: { engagementId: plan.engagementId, chosen: true } });
+      for (const other of others) if (other.id !== plan.id) await other.update({ chosen: false });
+    }
+    await plan.update({ chosen: input.chosen });
+  });
+  return presentPlanRow(plan);
+}
+
+/**
+ * Removes a plan. Editions made of it keep what they show.
+ *
+ * @throws {ServiceError} 409 where it was changed in between
+ */
+export async function removePlan({ plan, opened }: OpenPlan, { version }: { version: number }): Promise<void> {
+  refuseStale(plan, opened, version, { version });
+  await inTx(() => plan.destroy());
+}
+
+function refuseStale(plan: Plan, { engagement }: OpenEngagement, version: number, mine: unknown): void {
+  if (plan.version !== version) throw staleVersion(`Plan ${plan.name}`, mine, storedPlan(plan, engagement.currency));
+}
+
+/** The columns of a row, after every check that can refuse it. */
+async function checkedValues(opened: OpenEngagement, input: PlanInput) {
+  await refuseBeyondLimits(opened, input);
+  const { currency } = opened.engagement;
+  return {
+    name: input.name,
+    actions: input.fields.map(({ motorId, fieldA }) => ({ kind: 'field', motorId, fieldA })),
+    capitalCostMinor: toMinorUnits(input.capitalCost, currency),
+    yearlyUpkeepMinor: toMinorUnits(input.yearlyUpkeep, currency),
+    economics: input.economics as unknown as Record<string, number>,
+  };
+}
+
+/** Refuses fields of unknown motors, twice the same motor, and every field beyond a limit at a load of its calendar. */
+async function refuseBeyondLimits(opened: OpenEngagement, input: PlanInput): Promise<void> {
+  const motors = await motorsOf(opened);
+  const fields: FieldErrors = {};
+  const seen = new Set<number>();
+  input.fields.forEach(({ motorId, fieldA }, index) => {
+    const motor = motors.find((one) => one.id === motorId);
+    const fault = faultOf(motor, motorId, fieldA, seen, opened);
+    if (fault) fields[`fields.${index}.fieldA`] = [fault];
+    seen.add(motorId);
+  });
+  if (Object.keys(fields).length > 0) {
+    throw invalid('A field current cannot be set as asked. Each is marked with limit and motor.', fields);
+  }
+}
+
+function faultOf(
+  motor: MotorView | undefined,
+  motorId: number,
+  fieldA: number,
+  seen: Set<number>,
+  { engagement }: OpenEngagement,
+): string | null {
+  if (!motor) return 'This motor is not one of the plant’s. Load the page again.';
+  if (seen.has(motorId)) return `${motor.name} is set twice. Keep one of the two.`;
+  const { yearFrom: from, yearTo: to } = engagement;
+  return fieldFault(motor, fieldA, loadHoursOf(motor.calendar, motor.machine.ratedOutputKw, { from, to }));
+}
+
+async function refuseSameName(engagementId: number, name: string, except?: number): Promise<void> {
+  const same = await Plan.findOne({ where: { engagementId, name } });
+  if (same && same.id !== except) {
+    throw invalid('Two plans cannot have the same name.', {
+      name: [`There is a plan named ${name} already. Give this one another name.`],
+    });
+  }
+}
+
+type Fields = readonly { motorId: number; fieldA: number }[];
+
+const sameFields = (found: Fields, set: Fields) =>
+  found.every((one) => set.some((other) => other.motorId === one.motorId && other.fieldA === one.fieldA));
+
+/** The search a plan was made of, as long as the plan sets what it found. */
+async function searchOf(engagementId: number, input: PlanInput): Promise<Record<string, unknown> | null> {
+  if (input.searchJobId === undefined) return null;
+  const job = await Job.findOne({ where: { id: input.searchJobId, engagementId, kind: 'search', state: 'done' } });
+  if (!job?.result) throw conflict('The search this plan was to be made of is no longer there. Search again.');
+  const found = job.result as unknown as SearchView;
+  return sameFields(found.fields, input.fields) ? job.result : null;
+}

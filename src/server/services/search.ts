@@ -1,0 +1,49 @@
+import type { JobProgress } from '../../schemas/job';
+import type { SearchInput } from '../../schemas/plan';
+import { conflict } from '../errors';
+import { Job } from '../models/Job';
+import type { Actor } from '../policies/actor';
+import { calculateSearch } from '../workers/pool';
+import type { OpenEngagement } from './engagements';
+import { runningJobs, startJob } from './jobs';
+import { planBasis } from './plan-basis';
+
+const kind = 'search';
+const reportEveryMs = 150;
+
+/**
+ * Begins the search for the best field currents. One runs for an engagement at a time.
+ *
+ * @throws {ServiceError} 409 where one runs already, or where readings, bills, tariff or motors are missing
+ */
+export async function startSearch(actor: Actor, opened: OpenEngagement, input: SearchInput): Promise<JobProgress> {
+  const engagementId = opened.engagement.id;
+  const [running] = await runningJobs(engagementId, kind);
+  if (running) {
+    throw conflict('A search of this engagement is running already. Wait for it, or stop it first.', {
+      job: running.id,
+    });
+  }
+  const { task: basis, fingerprint } = await planBasis(opened);
+  return startJob(actor, { engagementId, kind, unit: 'settings' }, async ({ report, signal }) => {
+    let toldAtMs = 0;
+    const result = await calculateSearch(
+      { basis, stepA: input.stepA, fingerprint },
+      ({ done, planned }) => {
+        const nowMs = Date.now();
+        if (nowMs - toldAtMs < reportEveryMs && done < planned) return;
+        toldAtMs = nowMs;
+        report(done, planned);
+      },
+      signal,
+    );
+    return result as unknown as Record<string, unknown>;
+  });
+}
+
+/** The search a page opens with: the one that runs, else the newest that ended well. */
+export async function latestSearch(opened: OpenEngagement): Promise<{ id: number } | null> {
+  const where = { engagementId: opened.engagement.id, kind };
+  const [running] = await runningJobs(opened.engagement.id, kind);
+  return running ?? Job.findOne({ where: { ...where, state: 'done' }, order: [['id', 'DESC']], attributes: ['id'] });
+}

@@ -89,3 +89,10 @@ export interface PersonView extends ProfileView {
   /** `invited`: the account has no password yet. */
   access: 'open' | 'invited' | 'closed';
 }
+
+/** Whether a letter went, and if not, why. */
+export interface LetterOutcome {
+  recipient: string;
+  state: 'sent' | 'failed';
+  error: string | null;
+}

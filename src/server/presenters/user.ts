@@ -1,7 +1,6 @@
-import type { LicenceView, PersonView, ProfileView } from '../../schemas/account';
+import type { LetterOutcome, LicenceView, PersonView, ProfileView } from '../../schemas/account';
+import type { Letter } from '../models/Letter';
 import type { User } from '../models/User';
-
-export type { ProfileView };
 
 /** A licence as it was entered and checked; nothing where there is none. */
 export function presentLicence(user: User): LicenceView | null {
@@ -22,3 +21,6 @@ export function presentPerson(user: User): PersonView {
   const access = user.disabledAt ? 'closed' : user.passwordHash ? 'open' : 'invited';
   return { id, name, email, role, clientId, rights, version, access, licence: presentLicence(user) };
 }
+
+/** Whether a letter went. */
+export const presentOutcome = ({ recipient, state, error }: Letter): LetterOutcome => ({ recipient, state, error });

@@ -1,6 +1,13 @@
 import { Op } from 'sequelize';
 import type { z } from 'zod';
-import { choosePasswordInput, localPath, type changePasswordInput, type profileInput } from '../../schemas/account';
+import {
+  choosePasswordInput,
+  localPath,
+  type changePasswordInput,
+  type LetterOutcome,
+  type profileInput,
+  type ProfileView,
+} from '../../schemas/account';
 import { actAs } from '../db/context';
 import { inTx } from '../db/tx';
 import { getEnv } from '../env';
@@ -9,13 +16,12 @@ import { parseOrThrow } from '../http';
 import { log } from '../log';
 import { invitationLetter, resetLetter } from '../mail/account-letters';
 import { sendLetter } from '../mail/send';
-import type { Letter } from '../models/Letter';
 import { Practice } from '../models/Practice';
 import { Token } from '../models/Token';
 import { User } from '../models/User';
-import type { Actor } from '../policies/actor';
+import { isStaff, type Actor } from '../policies/actor';
 import { canInvite } from '../policies/people';
-import { presentProfile, type ProfileView } from '../presenters/user';
+import { presentOutcome, presentProfile } from '../presenters/user';
 import { listEngagements } from './engagements';
 import { checkPassword, hashPassword } from './passwords';
 import { setPasswordHash } from './sign-in';
@@ -111,15 +117,16 @@ export async function invite(
 }
 
 /** Mails an invitation. @throws {ServiceError} 404, 403, 422 where the person has a password already */
-export async function sendInvitation(actor: Actor, userId: number): Promise<Letter> {
+export async function sendInvitation(actor: Actor, userId: number): Promise<LetterOutcome> {
   const user = await User.findByPk(userId);
-  if (!user) throw notFound();
+  if (!user || !isStaff(actor)) throw notFound();
   await authorizeInvitation(actor, user);
   if (user.passwordHash) throw invalid(`${user.name} has a password already and can sign in.`);
   const { url, expiresAt } = await invite(actor, user);
   const practice = await practiceName();
   const words = invitationLetter({ name: user.name, by: actor.name, practice, url, expiresAt });
-  return sendLetter({ to: { name: user.name, address: user.email }, ...words, kind: 'invitation', userId });
+  const to = { name: user.name, address: user.email };
+  return presentOutcome(await sendLetter({ to, ...words, kind: 'invitation', userId }));
 }
 
 /** What a person sees of their own account. */

@@ -7,7 +7,6 @@ import type { BillState, Missing, PieceState } from './bill-state';
 import { completeTold, evaluatePast, pickValue, recordOf, type HistoryRecord } from './history';
 import { wordPeriod } from './period-plan';
 import { evaluateIn, roundedValue, setRounded, setValue, type Run } from './run';
-import { expressionsOfQuantity, inPlace } from './text-plan';
 
 /** Works out every value of a piece's text: facts, contract, rates, then the quantities from top to bottom. */
 export function evaluateQuantities(run: Run, bill: BillState, state: PieceState): void {
@@ -16,7 +15,7 @@ export function evaluateQuantities(run: Run, bill: BillState, state: PieceState)
   setFacts(bill, state);
   setContract(run, bill, state);
   for (const rate of state.piece.text.text.rates) setRate(run, state, rate);
-  for (const quantity of state.piece.text.text.quantities) settle(run, bill, state, quantity);
+  for (const { quantity, needs } of state.piece.text.quantities) settle(run, bill, state, quantity, needs);
 }
 
 function setFacts({ plan }: BillState, state: PieceState): void {
@@ -67,20 +66,20 @@ export function firstMissing(state: PieceState, slots: readonly number[]): Missi
   return undefined;
 }
 
-function settle(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry): void {
+function settle(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, needs: readonly number[]): void {
   const { definition, slot } = quantity;
   run.at = undefined;
   const printed = run.source.printed(bill, quantity);
   if (printed !== undefined && !run.isUnity) {
     setRounded(run, bill, state, quantity, printed);
     bill.printed[slot] = 1;
-    if (bill.notes) comparePrinted(run, bill, state, quantity, printed);
+    if (bill.notes) comparePrinted(run, bill, state, quantity, { printed, needs });
     return;
   }
   switch (definition.kind) {
     case 'measure':
     case 'value':
-      run.source.measure(run, bill, state, quantity);
+      run.source.measure(run, bill, state, quantity, needs);
       return;
     case 'given':
       settleGiven(run, bill, state, quantity, definition, printed);
@@ -89,7 +88,7 @@ function settle(run: Run, bill: BillState, state: PieceState, quantity: Quantity
       setRounded(run, bill, state, quantity, lookBack(run, bill, state, quantity, definition));
       return;
     default:
-      settleWorkedOut(run, bill, state, quantity, printed);
+      settleWorkedOut(run, bill, state, quantity, { printed, needs });
   }
 }
 
@@ -112,9 +111,16 @@ function workOut(run: Run, state: PieceState, { definition }: QuantityEntry, val
   return pickValue(definition, values);
 }
 
-function settleWorkedOut(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, printed: number | undefined): void {
+interface Known {
+  /** What the bill prints. */
+  printed: number | undefined;
+  /** Places of the values the quantity is worked out from. */
+  needs: readonly number[];
+}
+
+function settleWorkedOut(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, { printed, needs }: Known): void {
   const { slot } = quantity;
-  const cause = firstMissing(state, expressionsOfQuantity(quantity).flatMap((expression) => expression.slots));
+  const cause = firstMissing(state, needs);
   if (!cause) {
     setRounded(run, bill, state, quantity, workOut(run, state, quantity));
     return;
@@ -167,10 +173,10 @@ function notePast(bill: BillState, { name }: QuantityEntry, { take, over }: Past
 }
 
 /** Notes a printed figure that differs from what its printed parts give, beyond its rounding. */
-function comparePrinted(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, printed: number): void {
+function comparePrinted(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, { printed, needs }: Known & { printed: number }): void {
   const { definition, rounding, unit, name, slot } = quantity;
   if (definition.kind !== 'formula' && definition.kind !== 'pick') return;
-  if (firstMissing(state, expressionsOfQuantity(quantity).flatMap((expression) => expression.slots))) return;
+  if (firstMissing(state, needs)) return;
   const exact = workOut(run, state, quantity);
   const asPrinted = rounding ?? { step: Number(`1e-${decimalsOf(printed)}`), mode: 'nearest' as const };
   if (!Number.isFinite(exact) || isSame(roundToStep(exact, asPrinted), state.values[slot]!)) return;
@@ -195,9 +201,4 @@ export function missingError(bill: BillState, cause: Missing, line: string, unit
     case 'printed':
       return new PriceError(`${when}: the bill does not give "${cause.name}"${withUnit}, which line "${line}" needs.`, about);
   }
-}
-
-/** Formulas of a rate. */
-export function expressionsOfRate(rate: RateEntry) {
-  return inPlace(rate.place);
 }

@@ -119,11 +119,27 @@ function monthsOfYearBefore(from: string): number {
 }
 
 function isInSeason(period: BillingPeriod, season: NonNullable<PastDefinition['season']>, seasons: SeasonTable | undefined): boolean {
-  const first = dayNumber(period.from);
-  const days = dayNumber(period.to) - first;
-  let inside = 0;
-  for (let day = 0; day < days; day++) if (seasonOfDate(seasons, isoDate(first + day)) === season.index) inside++;
+  if (!seasons) return true;
+  const { days, inSeason } = seasonDays(period, seasons);
+  const inside = inSeason[season.index]!;
   return season.isWholly ? inside === days : inside > days / 2;
+}
+
+const countedDays = new WeakMap<SeasonTable, Map<string, { days: number; inSeason: Uint16Array }>>();
+
+/** Days of a period in each season; counted once. */
+function seasonDays({ from, to }: BillingPeriod, seasons: SeasonTable): { days: number; inSeason: Uint16Array } {
+  let counted = countedDays.get(seasons);
+  if (!counted) countedDays.set(seasons, (counted = new Map()));
+  const key = from + to;
+  let count = counted.get(key);
+  if (!count) {
+    const first = dayNumber(from);
+    count = { days: dayNumber(to) - first, inSeason: new Uint16Array(seasons.names.length) };
+    for (let day = 0; day < count.days; day++) count.inSeason[seasonOfDate(seasons, isoDate(first + day))]!++;
+    counted.set(key, count);
+  }
+  return count;
 }
 
 function takeOf(take: PastDefinition['take'], values: number[]): { value: number; index?: number } {

@@ -70,13 +70,13 @@ export class IntervalSource implements QuantitySource {
     return undefined;
   }
 
-  measure(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry): void {
+  measure(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, needs: readonly number[]): void {
     const { definition, slot } = quantity;
     state.atMs[slot] = NaN;
     state.atCell[slot] = -1;
     if (definition.kind === 'value') setRounded(run, bill, state, quantity, this.valueAt(run, bill, state, definition));
     else if (definition.kind === 'measure') {
-      const cause = firstMissing(state, [...definition.expression.slots, ...(definition.where?.slots ?? [])]);
+      const cause = firstMissing(state, needs);
       if (cause) state.missing[slot] = cause;
       else setRounded(run, bill, state, quantity, this.valueOf(run, bill, state, slot, definition));
     }

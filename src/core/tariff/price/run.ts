@@ -12,7 +12,7 @@ export interface QuantitySource {
   /** What the bill prints for a quantity; nothing when priced from intervals. */
   printed(bill: BillState, quantity: QuantityEntry): number | undefined;
   /** Sets a measure's or a value's result in the piece's state, or notes why it is missing. */
-  measure(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry): void;
+  measure(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, needs: readonly number[]): void;
   /** Whether measures have their sums in each piece, by which lines can be shared. */
   readonly hasIntervals: boolean;
 }

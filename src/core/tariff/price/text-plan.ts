@@ -22,6 +22,8 @@ export interface TextPlan {
   /** By place among all lines. */
   chargeOfLine: (ChargePlan | undefined)[];
   quantityOfSlot: ReadonlyMap<number, QuantityEntry>;
+  /** Quantities from top to bottom, each with the places of the values its formulas read. */
+  quantities: { quantity: QuantityEntry; needs: number[] }[];
 }
 
 /** Lays out a text. */
@@ -43,7 +45,11 @@ export function planText(schedule: Schedule, text: ScheduleText): TextPlan {
       finest: Number(`1e-${decimalsOf(charge.rounding.step)}`),
     };
   }
-  return { text, chargeOfLine, quantityOfSlot };
+  const quantities = text.quantities.map((quantity) => ({
+    quantity,
+    needs: [...new Set(expressionsOfQuantity(quantity).flatMap(({ slots }) => slots))],
+  }));
+  return { text, chargeOfLine, quantityOfSlot, quantities };
 }
 
 /** Formulas of a charge that every piece evaluates; a rate by season or month counts with the one in force. */

@@ -4,7 +4,15 @@ import type { LinePair } from '@/schemas/pricing';
 import { faultsOf } from '@/server/services/blame';
 
 const pair = (id: string, pricedMinor: number, billedMinor: number): LinePair => {
-  const line: PricedLine = { id, label: id, group: 'demand', amount: pricedMinor / 100, explanation: '' };
+  const line: PricedLine = {
+    id,
+    label: id,
+    group: 'demand',
+    amount: pricedMinor / 100,
+    explanation: '',
+    reactivePart: 0,
+    uses: [],
+  };
   const billed = [{ id: 1, label: id, amountMinor: billedMinor }];
   return { line, billed, pricedMinor, billedMinor, differenceMinor: billedMinor - pricedMinor, matchedBy: 'label' };
 };

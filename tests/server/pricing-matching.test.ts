@@ -8,6 +8,8 @@ const line = (id: string, label: string, group: PricedLine['group'], amount: num
   group,
   amount,
   explanation: '',
+  reactivePart: 0,
+  uses: [],
 });
 const billed = (id: number, label: string, amountMinor: number) => ({ id, label, amountMinor });
 const minorOf = (one: PricedLine) => Math.round(one.amount * 100);

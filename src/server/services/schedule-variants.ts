@@ -51,7 +51,7 @@ const placeExpressions = (place: NumberPlace): Expression[] => {
 function chargeExpressions({ when, definition }: ChargeEntry): Expression[] {
   const all = when ? [when] : [];
   if (definition.kind === 'amount') return [...all, ...placeExpressions(definition.amount)];
-  if (definition.kind === 'topUp' || definition.kind === 'cap') return [...all, ...placeExpressions(definition.to)];
+  if (!('price' in definition)) return [...all, ...placeExpressions(definition.to)];
   const tiers = definition.price.flatMap((tier) => [...(tier.to ? [tier.to] : []), ...placeExpressions(tier.rate)]);
   return [...all, ...(definition.per ? [definition.per] : []), ...tiers];
 }

@@ -11,6 +11,7 @@ import { TariffChoice } from '../models/TariffChoice';
 import type { Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
 import { openEngagement, type OpenEngagement } from './engagements';
+import { findingsCount } from './pricing';
 import { keptSpans } from './readings';
 
 /** An engagement's page around its sheet: title strip and stations. */
@@ -171,17 +172,14 @@ async function intervalsState(opened: OpenEngagement): Promise<State> {
   return coveredMs >= toMs - fromMs ? closed(reason) : open(reason);
 }
 
-type FindingsCount = (opened: OpenEngagement) => Promise<number>;
-const pricingModules = import.meta.glob<{ findingsCount?: FindingsCount }>('./pricing.ts');
-
-/** How many findings wait for a decision; nothing where they cannot be worked out (no bills or intervals yet). */
-export async function findingsOf(opened: OpenEngagement): Promise<number | null> {
-  const count = (await pricingModules['./pricing.ts']?.())?.findingsCount;
-  if (!count) return null;
-  return count(opened).catch((error: unknown) => {
+/** How many findings the year shows; null where it cannot be priced yet (no bills or intervals, or a gap in them). */
+async function findingsOf(opened: OpenEngagement): Promise<number | null> {
+  try {
+    return await findingsCount(opened);
+  } catch (error) {
     if (error instanceof ServiceError) return null;
     throw error;
-  });
+  }
 }
 
 async function tariffState(opened: OpenEngagement): Promise<State> {

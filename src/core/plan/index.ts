@@ -1,0 +1,12 @@
+export { shiftRegisters } from './registers';
+export { shaftLoadSeries } from './shaft-load';
+export type { DayKind, Grid, ShiftCalendar, ShiftRule } from './shaft-load';
+export { createSimulator } from './simulator';
+export type { Simulator } from './simulator';
+export { applyActions, simulatePlan } from './simulate-plan';
+export type { MotorInPlan, MotorPlanResult, PlanResult } from './simulate-plan';
+export { fieldBounds } from './field-bounds';
+export type { FieldBounds } from './field-bounds';
+export { searchFields } from './search-fields';
+export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './search-fields';
+export type { CapacitorStep, PlanAction, PlanMotor, Plant, Upstream } from './types';

@@ -1,0 +1,213 @@
+import { describe, expect, it } from 'vitest';
+import { PullOutError, operatingPoint } from '../../../src/core/machine';
+import { applyActions, createSimulator, fieldBounds, shiftRegisters, simulatePlan } from '../../../src/core/plan';
+import { buildMotor } from '../machine/build-motor';
+import { buildLoad, buildPlanMotor } from './build-plant';
+
+const load = buildLoad(7);
+const planMotor = buildPlanMotor(load);
+const at = (fieldCurrentA: number, shaftKw = 1200) => operatingPoint(planMotor.motor, { shaftKw, fieldCurrentA });
+
+describe('simulatePlan', () => {
+  it('changes every running interval by what the motor takes beyond standing, the others not at all', () => {
+    const result = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 140 }] });
+    const more = at(140).kvar - at(105).kvar;
+    const loss = at(140).inputKw - at(105).inputKw;
+    expect(more).toBeLessThan(-400);
+    load.kwh.forEach((kwh, i) => {
+      const running = planMotor.shaftKw[i]! > 0;
+      const expected = shiftRegisters(load.kvarhLagging[i]!, load.kvarhLeading[i]!, running ? more / 4 : 0);
+      expect(result.load.kvarhLagging[i]).toBeCloseTo(expected.kvarhLagging, 8);
+      expect(result.load.kvarhLeading[i]).toBeCloseTo(expected.kvarhLeading, 8);
+      expect(result.load.kwh[i]).toBeCloseTo(kwh + (running ? loss / 4 : 0), 8);
+    });
+    const [motor] = result.motors;
+    expect(motor!.hoursRunning).toBe(7 * 16);
+    expect(motor!.usualShaftKw).toBe(1200);
+    expect(motor!.kvarStanding).toBeCloseTo(-at(105).kvar, 8);
+    expect(motor!.kvarPlan).toBeCloseTo(-at(140).kvar, 8);
+    expect(motor!.extraLossKwh).toBeCloseTo(loss * 112, 6);
+    expect(result.extraKwh).toBeCloseTo(loss * 112, 6);
+    expect(motor!.leastPullOutRatio).toBeCloseTo(at(140).pullOutRatio, 10);
+    expect(motor!.leastPullOutRatioStanding).toBeCloseTo(at(105).pullOutRatio, 10);
+    expect(motor!.nearestLimitHours).toEqual({ armature: 0, field: 112, 'pull-out': 0 });
+    expect(motor!.beyondHours).toEqual({ armature: 0, field: 0, 'pull-out': 0 });
+    expect(motor!.greatestFieldShare).toBeCloseTo(140 / 150, 12);
+  });
+
+  it('changes nothing when the plan is standing', () => {
+    const result = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: planMotor.standingFieldA }] });
+    expect(result.load).toEqual(load);
+    expect(result.extraKwh).toBe(0);
+    expect(result.motors[0]!.extraLossKwh).toBe(0);
+  });
+
+  it('is the same change whether two motors are simulated together or one after the other', () => {
+    const other = buildPlanMotor(load, { motor: buildMotor({ ratedFieldCurrentA: 80 }), standingFieldA: 50 });
+    const both = simulatePlan({
+      load,
+      motors: [
+        { ...planMotor, planFieldA: 120 },
+        { ...other, planFieldA: 60 },
+      ],
+    });
+    const first = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 120 }] });
+    const second = simulatePlan({ load: first.load, motors: [{ ...other, planFieldA: 60 }] });
+    both.load.kvarhLagging.forEach((kvarh, i) => expect(kvarh).toBeCloseTo(second.load.kvarhLagging[i]!, 8));
+  });
+
+  it('adds capacitor steps from their date, their output with the square of the voltage, and their losses', () => {
+    const fromMs = load.startMs + 3 * 86_400_000;
+    const result = simulatePlan({
+      load,
+      motors: [],
+      capacitors: [{ kvar: 400, lossWPerKvar: 2, voltagePu: 1.05, fromMs }],
+    });
+    // 400 x 1.05^2 = 441 kvar, 0.882 kW.
+    expect(result.load.kvarhLagging[3 * 96 - 1]).toBe(load.kvarhLagging[3 * 96 - 1]);
+    expect(result.load.kvarhLagging[3 * 96 + 40]).toBeCloseTo(load.kvarhLagging[3 * 96 + 40]! - 441 / 4, 9);
+    expect(result.load.kwh[3 * 96 + 40]).toBeCloseTo(load.kwh[3 * 96 + 40]! + 0.882 / 4, 9);
+    expect(result.extraKwh).toBeCloseTo(0.882 * 4 * 24, 6);
+  });
+
+  it('meters the change of transformer loss: R (S2^2 - S1^2)/kVA and X alike, S at the meter', () => {
+    const upstream = { ratedKva: 7500, resistancePu: 0.008, reactancePu: 0.06 };
+    const result = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 140 }], upstream });
+    const i = 50;
+    const before = (load.kwh[i]! * 4) ** 2 + (load.kvarhLagging[i]! * 4) ** 2;
+    const after = (result.load.kwh[i]! * 4) ** 2 + (result.load.kvarhLagging[i]! * 4) ** 2;
+    const loss = at(140).inputKw - at(105).inputKw;
+    expect(result.load.kwh[i]! * 4).toBeCloseTo(load.kwh[i]! * 4 + loss + (0.008 / 7500) * (after - before), 6);
+    const more = at(140).kvar - at(105).kvar;
+    expect(result.load.kvarhLagging[i]! * 4).toBeCloseTo(
+      load.kvarhLagging[i]! * 4 + more + (0.06 / 7500) * (after - before),
+      6,
+    );
+    expect(after).toBeLessThan(before);
+  });
+
+  it('keeps missing intervals missing and their quality', () => {
+    const holed = buildLoad(1);
+    for (const channel of [holed.kwh, holed.kvarhLagging, holed.kvarhLeading]) channel[40] = NaN;
+    holed.quality[40] = 2;
+    holed.quality[41] = 1;
+    const result = simulatePlan({ load: holed, motors: [{ ...buildPlanMotor(holed), planFieldA: 130 }] });
+    expect([result.load.kwh[40], result.load.kvarhLagging[40], result.load.kvarhLeading[40]]).toEqual([NaN, NaN, NaN]);
+    expect([...result.load.quality.slice(39, 43)]).toEqual([0, 2, 1, 0]);
+    expect(Number.isFinite(result.extraKwh)).toBe(true);
+  });
+
+  it('takes an absent leading register as zero and says so', () => {
+    const single = buildLoad(1, { kvarhLeading: new Float64Array(96).fill(NaN) });
+    const result = simulatePlan({ load: single, motors: [{ ...buildPlanMotor(single), planFieldA: 130 }] });
+    expect(result.notes.join(' ')).toMatch(/no leading register/);
+    expect(result.load.kvarhLeading.every((kvarh) => kvarh >= 0)).toBe(true);
+  });
+
+  it('counts hours leading at the service point before and after', () => {
+    const light = buildLoad(1, { kvarhLagging: new Float64Array(96).fill(50) });
+    const result = simulatePlan({ load: light, motors: [{ ...buildPlanMotor(light), planFieldA: 140 }] });
+    expect(result.hoursLeadingBefore).toBe(0);
+    expect(result.hoursLeadingAfter).toBe(16);
+  });
+
+  it('gathers a submeter series of many loads without losing its highest, to 0.1 % of the loss', () => {
+    const shaftKw = Float64Array.from(load.kwh, (_, i) => (i % 7 === 0 ? 0 : 600 + 800 * Math.abs(Math.sin(i * 0.37))));
+    const result = simulatePlan({ load, motors: [{ ...planMotor, shaftKw, planFieldA: 140 }] });
+    let expected = 0;
+    for (const kw of shaftKw) if (kw > 0) expected += (at(140, kw).inputKw - at(105, kw).inputKw) / 4;
+    expect(Math.abs(result.motors[0]!.extraLossKwh / expected - 1)).toBeLessThan(1e-3);
+    expect(Math.abs(result.extraKwh / expected - 1)).toBeLessThan(1e-6);
+    expect(result.motors[0]!.leastPullOutRatio).toBeCloseTo(at(140, Math.max(...shaftKw)).pullOutRatio, 9);
+  });
+
+  it('names the motor whose field does not hold its load', () => {
+    const run = () => simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 30 }] });
+    expect(run).toThrow(PullOutError);
+    expect(run).toThrow(/motors\[0\]: The shaft load of 1200 kW exceeds/);
+  });
+
+  it.each([
+    [{ shaftKw: new Float64Array(3) }, /shaftKw must have 672 values/],
+    [{ shaftKw: new Float64Array(672).fill(-1) }, /shaftKw\[0\] must be >= 0, got -1/],
+    [{ shaftKw: new Float64Array(672).fill(NaN) }, /got NaN/],
+  ])('refuses a shaft load that does not fit', (wrong, message) => {
+    expect(() => simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 120, ...wrong }] })).toThrow(message);
+  });
+
+  it.each([
+    [{ kvar: 0, lossWPerKvar: 1 }, /kvar must be > 0/],
+    [{ kvar: 1, lossWPerKvar: -1 }, /lossWPerKvar/],
+    [{ kvar: 1, lossWPerKvar: 1, voltagePu: 3 }, /voltagePu/],
+  ])('refuses the capacitor %j', (step, message) => {
+    expect(() => simulatePlan({ load, motors: [], capacitors: [step] })).toThrow(message);
+  });
+
+  it.each([
+    [{ ratedKva: 0, resistancePu: 0.01, reactancePu: 0.06 }, /ratedKva/],
+    [{ ratedKva: 1, resistancePu: -0.01, reactancePu: 0.06 }, /resistancePu/],
+    [{ ratedKva: 1, resistancePu: 0.01, reactancePu: 6 }, /reactancePu/],
+  ])('refuses upstream data %j', (upstream, message) => {
+    expect(() => simulatePlan({ load, motors: [], upstream })).toThrow(message);
+  });
+
+  it('does not change its arguments', () => {
+    const copy = buildLoad(7);
+    simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 140 }], capacitors: [{ kvar: 10, lossWPerKvar: 1 }] });
+    expect(load).toEqual(copy);
+  });
+});
+
+describe('createSimulator', () => {
+  it('gives the same series however often and in whatever order fields are tried', () => {
+    const simulator = createSimulator({ load, motors: [planMotor] });
+    const first = Float64Array.from(simulator.apply([130]).kvarhLagging);
+    simulator.apply([90]);
+    simulator.apply([105]);
+    expect(simulator.apply([130]).kvarhLagging).toEqual(first);
+    expect(() => simulator.apply([1, 2])).toThrow(/fieldsA must have 1 values/);
+  });
+});
+
+describe('applyActions', () => {
+  it('leaves motors without an action as they stand', () => {
+    const plan = applyActions({ load, motors: [planMotor, planMotor] }, [
+      { kind: 'constant-field', motorIndex: 1, fieldCurrentA: 130 },
+      { kind: 'capacitor', kvar: 300, lossWPerKvar: 3 },
+    ]);
+    expect(plan.motors.map((m) => m.planFieldA)).toEqual([105, 130]);
+    expect(plan.capacitors).toEqual([{ kvar: 300, lossWPerKvar: 3 }]);
+  });
+
+  it('refuses an action on a motor that is not there, or two on one', () => {
+    const action = { kind: 'constant-field' as const, motorIndex: 0, fieldCurrentA: 130 };
+    expect(() => applyActions({ load, motors: [] }, [action])).toThrow(/motorIndex must be below 0/);
+    expect(() => applyActions({ load, motors: [planMotor] }, [action, action])).toThrow(/named once/);
+  });
+});
+
+describe('fieldBounds', () => {
+  it('keeps every limit at every load, and not a step more', () => {
+    const shaftKw = Float64Array.from(load.kwh, (_, i) => [0, 500, 1200, 1550][i % 4]!);
+    const bounds = fieldBounds({ ...planMotor, shaftKw });
+    if ('none' in bounds) throw new Error('bounds expected');
+    for (const kw of [500, 1200, 1550]) {
+      expect(at(bounds.lowA * (1 + 1e-9), kw).beyond).toEqual([]);
+      expect(at(bounds.highA * (1 - 1e-9), kw).beyond).toEqual([]);
+    }
+    expect(at(bounds.highA * 1.001, bounds.highBinding.shaftKw).beyond).toContain(bounds.highBinding.limit);
+    expect(at(bounds.lowA * 0.999, bounds.lowBinding.shaftKw).beyond).toContain(bounds.lowBinding.limit);
+    expect(bounds.highBinding).toEqual({ limit: 'armature', shaftKw: 1550 });
+  });
+
+  it('says at which load nothing is admissible', () => {
+    expect(fieldBounds({ ...planMotor, shaftKw: new Float64Array(4).fill(2500) })).toEqual({
+      none: { limit: 'armature', shaftKw: 2500 },
+    });
+  });
+
+  it('bounds a motor that never runs by its field limit', () => {
+    const bounds = fieldBounds({ ...planMotor, shaftKw: new Float64Array(4) });
+    expect('none' in bounds ? null : bounds.highA).toBeCloseTo(150, 9);
+  });
+});

@@ -41,7 +41,7 @@ function splitPlain(text: string, delimiter: string, fileName: string): TextGrid
   const mark = delimiter.charCodeAt(0);
   const length = text.length;
   // A text that is stored in pieces is laid out flat by its first search, which the caller has made.
-  let cells = new Uint32Array(Math.max(64, length >> 2));
+  let cells: Uint32Array = new Uint32Array(Math.max(64, length >> 2));
   let cellCount = 0;
   const rows = new Offsets(1024);
   const ends = new Offsets(1024);

@@ -88,6 +88,9 @@ function strandOf(
   const walls = new Float64Array(count);
   const values = new Float64Array(count);
   const rows = new Uint32Array(count);
+  const numbered =
+    cells.some((use) => (use.minuteOfDay ?? 0) >= 1440) || !cells.some((use) => /[:h.]\d\d/.test(use.name));
+  const dayOf = numbered ? new Float64Array(count) : null;
   const own = cells.some((use) => use.factor !== undefined);
   let at = 0;
   for (const { row, day } of ordered) {
@@ -95,7 +98,9 @@ function strandOf(
       const figure = grid.number(row, use.index, decimalMark);
       if (Number.isNaN(figure)) collectBad(grid, row, use.index, extraction);
       // A blank is no reading: extra columns for the long day of autumn are blank on all other days.
-      walls[at] = day * 1440 + (use.minuteOfDay ?? 0);
+      const isSpare = Number.isNaN(figure) && (use.minuteOfDay ?? 0) >= 1440;
+      walls[at] = isSpare ? Number.NaN : day * 1440 + (use.minuteOfDay ?? 0);
+      if (dayOf) dayOf[at] = day;
       values[at] = figure * channel.factor * (own ? factorOf({ ...use, unit: undefined }) : 1);
       rows[at] = row;
       at += 1;
@@ -106,6 +111,7 @@ function strandOf(
     walls,
     offsets: null,
     spans: null,
+    days: dayOf,
     rows,
     channels: [{ role: channel.role, measure: channel.measure, name: channel.name, values }],
     quality: marks,

@@ -10,6 +10,7 @@ export interface StampRows {
   walls: Float64Array;
   offsets: Float64Array | null;
   spans: Float64Array | null;
+  days: Float64Array | null;
   rows: Uint32Array;
   badStamps: { place: string; text: string }[];
   notes: IntakeNote[];
@@ -29,6 +30,8 @@ export function readStamps(plan: ColumnPlan): StampRows {
   const walls = new Float64Array(count);
   const offsets = new Float64Array(count);
   const spans = hasBegin && endColumn >= 0 ? new Float64Array(count) : null;
+  const isNumbered = plan.columns.some((use) => use.role === 'interval-number');
+  const days = isNumbered ? new Float64Array(count) : null;
   const rows = new Uint32Array(count);
   const order: DateOrder = plan.stamp.order ?? 'YMD';
   const left: { row: number; text: string }[] = [];
@@ -48,6 +51,7 @@ export function readStamps(plan: ColumnPlan): StampRows {
       continue;
     }
     walls[used] = wall;
+    if (days) days[used] = order === 'serial' ? Math.floor(wall / 1440) : scanner.day;
     const offset = scanner.offsetMinutes;
     offsets[used] = offset;
     if (!Number.isNaN(offset)) hasOffset = true;
@@ -65,6 +69,7 @@ export function readStamps(plan: ColumnPlan): StampRows {
     walls: walls.subarray(0, used),
     offsets: hasOffset ? offsets.subarray(0, used) : null,
     spans: spans?.subarray(0, used) ?? null,
+    days: days?.subarray(0, used) ?? null,
     rows: rows.subarray(0, used),
     badStamps,
     notes,

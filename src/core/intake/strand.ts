@@ -17,6 +17,8 @@ export interface Strand {
   offsets: Float64Array | null;
   /** Minutes each reading spans by its begin and end stamps, or null. */
   spans: Float64Array | null;
+  /** Day each reading belongs to where readings are numbered within the day (days since 1970-01-01), or null. */
+  days: Float64Array | null;
   /** Row of the grid each reading stands in. */
   rows: Uint32Array;
   channels: StrandChannel[];
@@ -32,6 +34,7 @@ export function turnStrand(strand: Strand): Strand {
     walls: strand.walls.slice().reverse(),
     offsets: strand.offsets?.slice().reverse() ?? null,
     spans: strand.spans?.slice().reverse() ?? null,
+    days: strand.days?.slice().reverse() ?? null,
     rows: strand.rows.slice().reverse(),
     channels: strand.channels.map((channel) => ({ ...channel, values: channel.values.slice().reverse() })),
     quality: strand.quality?.slice().reverse() ?? null,

@@ -19,7 +19,7 @@ const schedules = ['ostrander-lp4', 'millrace-kva', 'tidewater-kvarh'];
  * 35,040 numbers, sum and maximum of each. Median of 50 after 10 warm-ups, the two alternating so that both see the same machine.
  */
 export function benchPricing(): BenchRow[] {
-  return schedules.flatMap((id) => {
+  const rows = schedules.flatMap((id) => {
     const schedule = readSchedule(readFileSync(path.join('tariffs', `${id}.yaml`), 'utf8'));
     const load = generatedYear(schedule.timeZone);
     const options: PriceOptions = { periods: calendarMonths() };
@@ -29,11 +29,19 @@ export function benchPricing(): BenchRow[] {
     return [
       measure(`${id}: totals of a year`, load, () => pricing.totals(load)[0]!),
       measure(`${id}: totals after a kvar change`, load, () => pricing.totals(load, { isActiveUnchanged: true })[0]!),
-    ].map((row) => ({ ...row, figures: `${row.figures}; laid out in ${layOutMs(schedule, load, options).toFixed(1)} ms` }));
+    ].map((row) => ({ ...row, layOutMs: layOutMs(schedule, load, options) }));
   });
+  // The engine compiles the bare pass sometimes well, sometimes badly: the fastest median of this process counts for all rows.
+  const bareMs = Math.min(...rows.map((row) => row.bareMs));
+  return rows.map(({ name, pricedMs, layOutMs: ms }) => ({
+    name,
+    ratio: pricedMs / bareMs,
+    limit,
+    figures: `${pricedMs.toFixed(3)} ms, bare pass ${bareMs.toFixed(3)} ms; laid out in ${ms.toFixed(1)} ms`,
+  }));
 }
 
-function measure(name: string, load: LoadSeries, work: () => number): BenchRow {
+function measure(name: string, load: LoadSeries, work: () => number): { name: string; bareMs: number; pricedMs: number } {
   let kept = 0;
   const bare: number[] = [];
   const priced: number[] = [];
@@ -48,8 +56,7 @@ function measure(name: string, load: LoadSeries, work: () => number): BenchRow {
     priced.push(end - middle);
   }
   if (!Number.isFinite(kept)) throw new RangeError('the bench must add up finite numbers');
-  const [bareMs, pricedMs] = [median(bare), median(priced)];
-  return { name, ratio: pricedMs / bareMs, limit, figures: `${pricedMs.toFixed(3)} ms, bare pass ${bareMs.toFixed(3)} ms` };
+  return { name, bareMs: median(bare), pricedMs: median(priced) };
 }
 
 function layOutMs(schedule: Schedule, load: LoadSeries, options: PriceOptions): number {

@@ -34,13 +34,24 @@ export function roundToStep(value: number, { step, mode }: Rounding): number {
   if (!Number.isFinite(value)) throw new RangeError(`value must be finite, got ${value}`);
   if (!(step > 0) || !Number.isFinite(step)) throw new RangeError(`step must be a positive number, got ${step}`);
   const steps = Math.abs(value) / step;
-  const tolerance = Math.max(1e-9, 1e-12 * steps);
+  const tolerance = Math.min(0.25, Math.max(1e-9, 1e-12 * steps));
   const whole = wholeSteps(steps, tolerance, mode);
   if (whole === 0) return 0;
-  const decimals = decimalsOf(step);
-  const scale = 10 ** decimals;
+  const scale = scaleOf(step);
   const size = (whole * Math.round(step * scale)) / scale;
   return value < 0 ? -size : size;
+}
+
+const scales = new Map<number, number>();
+
+/** Power of ten that makes a step whole. */
+function scaleOf(step: number): number {
+  let scale = scales.get(step);
+  if (scale === undefined) {
+    scale = 10 ** decimalsOf(step);
+    if (scales.size < 1000) scales.set(step, scale);
+  }
+  return scale;
 }
 
 function wholeSteps(steps: number, tolerance: number, mode: RoundingMode): number {

@@ -12,6 +12,8 @@ export interface CellPlan {
   base: number;
   /** Every cell is one interval: the series itself holds their energies. */
   isSingle: boolean;
+  /** Whether some measure reads the cells' reactive energy. */
+  needsReactive: boolean;
   /** 1: an interval of the cell lies outside the series. uint8[cells] */
   broken: Uint8Array;
   /** Day of the period each cell begins on. int32[cells] */
@@ -142,6 +144,7 @@ function withRoom(cells: { starts: number[]; ends: number[]; members: number[]; 
     members: isContiguous ? null : Int32Array.from(members),
     base,
     isSingle,
+    needsReactive: false,
     broken: Uint8Array.from(cells.broken),
     day: Int32Array.from(cells.days),
     pieceStarts: Int32Array.from(cells.pieceStarts),

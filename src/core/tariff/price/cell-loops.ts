@@ -8,7 +8,7 @@ const { cellKwh, cellKvarhLagging, cellKvarhLeading, cellHours } = place;
 export function fillCells(plan: CellPlan, load: LoadSeries, isActiveKept: boolean): void {
   if (plan.isSingle) return;
   if (!isActiveKept) fillActive(plan, load);
-  fillReactive(plan, load);
+  if (plan.needsReactive) fillReactive(plan, load);
 }
 
 function fillActive(plan: CellPlan, { kwh, quality, stepMinutes }: LoadSeries): void {
@@ -123,7 +123,10 @@ export function extremeCells(
   const best: { value: number; cell: number }[] = [];
   for (let cell = 0; cell < plan.starts.length; cell++) {
     if (enterCell(plan, load, cell, values) !== 2 || (where !== undefined && where(values) === 0)) continue;
-    keepBest(best, { value: evaluate(values), cell }, plan.day, how);
+    const value = evaluate(values);
+    // What is not above the last of a full list changes nothing, whatever its day.
+    if (best.length === how.count && how.sign * value <= how.sign * best[how.count - 1]!.value) continue;
+    keepBest(best, { value, cell }, plan.day, how);
   }
   return best;
 }
@@ -137,7 +140,6 @@ function keepBest(best: { value: number; cell: number }[], entry: { value: numbe
       best.splice(sameDay, 1);
     }
   }
-  if (best.length === count && sign * entry.value <= sign * best[count - 1]!.value) return;
   const before = best.findIndex(({ value }) => sign * entry.value > sign * value);
   best.splice(before < 0 ? best.length : before, 0, entry);
   if (best.length > count) best.pop();

@@ -177,8 +177,7 @@ function sumClasses(plan: MeasurePlan & { kind: 'sum' }, classes: ClassPlan, sta
 
 /** Whether a quality occurs among some intervals. */
 export function hasQuality(quality: Uint8Array, wanted: number, first: number, end: number): boolean {
-  const at = quality.indexOf(wanted, first);
-  return at >= 0 && at < end;
+  return quality.subarray(first, end).includes(wanted);
 }
 
 /**

@@ -1,5 +1,6 @@
 import { layCells, type CellGround, type CellPlan } from '../calendar/cells';
 import { positionsInside } from '../calendar/period-calendar';
+import { channelOf } from '../channels';
 import type { MeasureDefinition, QuantityEntry } from '../model';
 import type { PricingGrid } from '../types';
 import type { ClassPlan } from './class-loops';
@@ -32,10 +33,19 @@ export function planReduction(text: TextPlan, plan: PeriodPlan, ground: CellGrou
   const windows = [...new Set(byClass.flatMap(({ definition }) => (definition.window === undefined ? [] : [definition.window])))];
   const { classOf, masks } = layout.classify(windows);
   for (const { quantity, definition } of measured) {
-    measures.set(quantity.slot, layout.planMeasure(definition, windows, masks));
+    const measure = layout.planMeasure(definition, windows, masks);
+    measures.set(quantity.slot, measure);
+    if (measure.kind === 'cells' && readsReactive(text, quantity, definition)) measure.cells.needsReactive = true;
   }
   const needs = needsOf(measures, measured);
   return { classes: layout.layRuns(classOf, masks.length, needs), cells: layout.cells, measures };
+}
+
+/** Whether a measure, or a value taken at its instant, reads reactive energy. */
+function readsReactive({ text }: TextPlan, { name }: QuantityEntry, definition: MeasureDefinition): boolean {
+  const atIt = text.quantities.flatMap((other) => (other.definition.kind === 'value' && other.definition.at === name ? [other.definition.expression] : []));
+  const expressions = [definition.expression, ...(definition.where ? [definition.where] : []), ...atIt];
+  return expressions.some(({ channels }) => channels.some((channel) => channelOf(channel).usesLagging || channelOf(channel).usesLeading));
 }
 
 function isPlainSum({ operation, channel, each, where }: MeasureDefinition): boolean {

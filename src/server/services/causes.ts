@@ -43,7 +43,10 @@ export class CauseTrial {
       ...this.versions(target),
       ...this.printed(target),
     ];
-    return causes.sort((a, b) => Math.abs(a.missMinor) - Math.abs(b.missMinor));
+    // What fits stands first, the most telling kind before a mere quantity; what does not, by how near it comes.
+    const fitting = causes.filter((cause) => cause.fits);
+    const others = causes.filter((cause) => !cause.fits);
+    return [...fitting, ...others.sort((a, b) => Math.abs(a.missMinor) - Math.abs(b.missMinor))];
   }
 
   private amountMinor(bill: PricedBill | undefined, { lineId }: CauseTarget): number | null {

@@ -1,0 +1,135 @@
+import { isMap, isScalar, LineCounter, parseDocument } from 'yaml';
+import { describeSchedule, type Schedule, type ScheduleDescription, type ScheduleProblem } from '../../core/tariff';
+import type { ChargeRow, QuantityRow, ScheduleSheetView } from '../../schemas/schedule-sheet';
+import { contractFields, wordsOfName } from './schedule';
+import { dayInWords } from './tariff-words';
+import { yearPicture } from './year-picture';
+
+type TextDescription = ScheduleDescription['versions'][number];
+type Sheet = NonNullable<ScheduleSheetView['sheet']>;
+/** Line of a path of two parts ("charges.demand") in the text, or of its first part. */
+type LineOf = (path: string) => number | null;
+
+/** A schedule's file as its page reads, with the year drawn for one year. */
+export function presentScheduleSheet(
+  file: {
+    id: string;
+    fileName: string;
+    sha256: string;
+    text: string;
+    schedule: Schedule | null;
+    problems: ScheduleProblem[];
+  },
+  today: string,
+): ScheduleSheetView {
+  const { id, fileName, sha256, text, schedule, problems } = file;
+  const lines = text.replace(/\n$/, '').split('\n');
+  return { id, fileName, sha256, lines, problems, sheet: schedule && sheetOf(schedule, linesOf(text), today) };
+}
+
+/** Finds lines of entries; a broken text has none. */
+function linesOf(text: string): LineOf {
+  const counter = new LineCounter();
+  const { contents } = parseDocument(text, { lineCounter: counter });
+  const lines = new Map<string, number>();
+  const keysOf = (node: unknown, prefix: string) => {
+    if (!isMap(node)) return;
+    for (const { key, value } of node.items) {
+      if (!isScalar(key) || !key.range) continue;
+      const path = `${prefix}${key.source ?? String(key.value)}`;
+      lines.set(path, counter.linePos(key.range[0]).line);
+      if (prefix === '') keysOf(value, `${path}.`);
+    }
+  };
+  keysOf(contents, '');
+  return (path) => {
+    const [first = '', second = ''] = path.split('.');
+    return lines.get(`${first}.${second}`) ?? lines.get(first) ?? null;
+  };
+}
+
+function sheetOf(schedule: Schedule, lineOf: LineOf, today: string): Sheet {
+  const description = describeSchedule(schedule);
+  const at = schedule.texts.findLastIndex((text) => text.from <= today);
+  const index = Math.max(0, at);
+  const text = schedule.texts[index]!;
+  const described = description.versions[index]!;
+  const { publisher, title, date, status } = schedule.source;
+  return {
+    title: schedule.title,
+    publisher: publisher ?? null,
+    sourceWords: [publisher, title, date && dayInWords(date)].filter(Boolean).join(', '),
+    status: status ?? null,
+    currency: schedule.currency,
+    timeZone: schedule.timeZone,
+    inForce: schedule.inForce,
+    charges: described.charges.map((charge, place) => chargeRow(charge, text.charges[place]!.path, lineOf)),
+    quantities: described.quantities.map((quantity, place) =>
+      quantityRow(quantity, text.quantities[place]!.path, lineOf),
+    ),
+    contract: contractFields(schedule),
+    versions: description.versions.map(({ from, note }, place) => ({
+      from,
+      note: note ?? (place === 0 ? (title ?? 'first text') : ''),
+      current: place === index,
+    })),
+    rules: rulesOf(description, described, lineOf),
+    notes: description.notes.map(({ path, message }) => ({ where: path, message, line: lineOf(path) })),
+    year: yearPicture(schedule, text, Number(today.slice(0, 4))),
+  };
+}
+
+function chargeRow(charge: TextDescription['charges'][number], path: string, lineOf: LineOf): ChargeRow {
+  const { name, label, words, group, clause, when } = charge;
+  return { name, label, words: when ? `${words}, when ${when}` : words, group, clause, line: lineOf(path) };
+}
+
+function quantityRow(quantity: TextDescription['quantities'][number], path: string, lineOf: LineOf): QuantityRow {
+  const { name, label, words, unit, clause } = quantity;
+  return { name, label: label ?? wordsOfName(name), words, unit, clause, line: lineOf(path) };
+}
+
+const straddleWords: Record<Schedule['straddle'], string> = {
+  intervals: 'shared by the intervals each text, season or rider month covers',
+  days: 'shared by days',
+  start: 'the text of the first day holds for the whole bill; seasons by days',
+  end: 'the text of the last day holds for the whole bill; seasons by days',
+};
+
+/** What else the text says, each with its line. */
+function rulesOf(description: ScheduleDescription, text: TextDescription, lineOf: LineOf): Sheet['rules'] {
+  const { demandWindow, rounding, zeroKwh, holidays } = text;
+  const rolling = demandWindow?.everyMinutes ? `, rolling every ${demandWindow.everyMinutes} min` : '';
+  const holidayWords = [
+    holidays.calendar && `public holidays of ${holidays.calendar}`,
+    holidays.add.length > 0 && `and ${holidays.add.map(dayInWords).join(', ')}`,
+    holidays.drop.length > 0 && `without ${holidays.drop.map(dayInWords).join(', ')}`,
+  ].filter(Boolean);
+  const zeroWords = [
+    zeroKwh.pf !== null && `power factor counts as ${zeroKwh.pf}`,
+    zeroKwh.ratio !== null && `kvarh per kWh counts as ${zeroKwh.ratio}`,
+  ].filter(Boolean);
+  const all: [string, string, string][] = [
+    ['Demand window', demandWindow ? `${demandWindow.minutes} min${rolling}` : '', 'demandWindow'],
+    ['Holidays', holidayWords.join(' '), 'holidays'],
+    ['Two texts in a bill', straddleWords[description.straddle], 'straddle'],
+    [
+      'Cents',
+      `each line to ${rounding.step}, ${rounding.mode === 'nearest' ? 'half away from nought' : rounding.mode}`,
+      'rounding',
+    ],
+    ['No kWh', zeroWords.join('; '), 'zeroKwh'],
+    ...text.seasons.map(({ name, words }): [string, string, string] => [`Season ${name}`, words, `seasons.${name}`]),
+    ...text.windows.map(({ name, words }): [string, string, string] => [
+      `Window ${wordsOfName(name).toLowerCase()}`,
+      words,
+      `windows.${name}`,
+    ]),
+    ...text.rates.map(({ name, words }): [string, string, string] => [
+      `Rate ${wordsOfName(name).toLowerCase()}`,
+      words,
+      `rates.${name}`,
+    ]),
+  ];
+  return all.flatMap(([label, words, path]) => (words ? [{ label, words, line: lineOf(path) }] : []));
+}

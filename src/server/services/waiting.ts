@@ -1,0 +1,200 @@
+import { addDays, dayNumber } from '../../core/load';
+import type { EditionContent } from '../../schemas/edition';
+import type { StationView } from '../../schemas/engagement';
+import type { WaitingView } from '../../schemas/today';
+import { dateOfInstant } from '../clock';
+import { ServiceError } from '../errors';
+import { Edition } from '../models/Edition';
+import { Intake } from '../models/Intake';
+import { TariffChoice } from '../models/TariffChoice';
+import type { ListedEngagement } from './engagement-list';
+import type { OpenEngagement } from './engagements';
+import { pricedYear } from './pricing';
+
+/** What an engagement's stations wait for. A station that something more particular waits at is not told twice. */
+export async function waitingAt({ opened, row }: ListedEngagement, today: string): Promise<WaitingView[]> {
+  if (opened.engagement.closedAt) return [];
+  const files = await halfBroughtIn(opened, today);
+  const findings = await findingsToDecide(opened, row.stations, today);
+  const editions = await editionsMade(opened, today);
+  const told = new Set([...files.stations, ...findings.stations, ...editions.stations]);
+  const { standsAt } = row;
+  const next = told.has(standsAt.id) ? [] : nextStation(opened, standsAt, today);
+  return [...files.rows, ...findings.rows, ...editions.rows, ...next];
+}
+
+interface Told {
+  rows: WaitingView[];
+  stations: string[];
+}
+
+const whereOf = ({ client, site, engagement }: OpenEngagement) => `${client.name}, ${site.name}, ${engagement.code}`;
+const daysBetween = (from: string, to: string) => Math.max(0, dayNumber(to) - dayNumber(from));
+
+async function halfBroughtIn(opened: OpenEngagement, today: string): Promise<Told> {
+  const { code, id } = opened.engagement;
+  const intakes = await Intake.findAll({
+    where: { engagementId: id, state: 'read' },
+    attributes: ['id', 'kind', 'fileName', 'createdAt'],
+    order: ['createdAt'],
+  });
+  const rows = intakes.map((intake): WaitingView => {
+    const date = dateOfInstant(intake.createdAt);
+    return {
+      id: `intake-${intake.id}`,
+      group: 'yours',
+      mark: 'half',
+      date,
+      dateIs: 'since',
+      days: daysBetween(date, today),
+      title: `Bring in ${intake.fileName} to the end`,
+      where: whereOf(opened),
+      why:
+        intake.kind === 'bills'
+          ? 'Nothing of it is kept yet; without its bills the year has a gap.'
+          : 'Nothing of it is kept yet; no bill can be priced from readings that are not kept.',
+      stake: null,
+      next: 'Match and Check take a minute; Keep lays it into the year and can be undone.',
+      href: `/engagements/${code}/intake/${intake.id}`,
+      action: 'Go on',
+    };
+  });
+  return { rows, stations: intakes.map((intake) => intake.kind) };
+}
+
+async function findingsToDecide(opened: OpenEngagement, stations: StationView[], today: string): Promise<Told> {
+  const tariff = stations.find((station) => station.id === 'tariff');
+  if (!tariff || !/finding/.test(tariff.reason)) return { rows: [], stations: [] };
+  const year = await pricedYear(opened).catch((error: unknown) => {
+    if (error instanceof ServiceError) return null;
+    throw error;
+  });
+  if (!year || year.findings.length === 0) return { rows: [], stations: [] };
+  const overBilledMinor = year.findings.reduce((sum, finding) => sum + Math.max(0, finding.amountMinor), 0);
+  const letters = year.findings.map((finding) => finding.letter);
+  const choice = await TariffChoice.findOne({ where: { engagementId: opened.engagement.id } });
+  const date = dateOfInstant(choice?.updatedAt ?? opened.engagement.updatedAt);
+  const one = year.findings.length === 1;
+  const row: WaitingView = {
+    id: `findings-${opened.engagement.id}`,
+    group: 'yours',
+    mark: 'hollow',
+    date,
+    dateIs: 'since',
+    days: daysBetween(date, today),
+    title: one ? `Finding ${letters[0]}: ${year.findings[0]?.title}` : `${letters.length} findings in the bills`,
+    where: whereOf(opened),
+    why: one
+      ? (year.findings[0]?.sentence ?? '')
+      : 'Billed and scheduled amounts differ; each finding says by which cause.',
+    stake: { amountMinor: overBilledMinor, currency: year.currency, note: 'billed above the schedule' },
+    next: 'What the schedule bears out goes into the edition as a claim of the client.',
+    href: tariff.href,
+    action: 'Look into them',
+  };
+  return { rows: [row], stations: ['tariff'] };
+}
+
+function savingOf(edition: Edition): WaitingView['stake'] {
+  const { plan, currency } = edition.content as unknown as Partial<EditionContent>;
+  if (!plan || !currency || !Number.isFinite(plan.saving)) return null;
+  const whole = plan.saving.toLocaleString('en-US', { maximumFractionDigits: 0 });
+  return { text: `${whole}\u00a0${currency}`, note: 'saving a year in it' };
+}
+
+async function editionsMade(opened: OpenEngagement, today: string): Promise<Told> {
+  const { id, code } = opened.engagement;
+  const edition = await Edition.findOne({ where: { engagementId: id }, order: [['number', 'DESC']] });
+  if (!edition) return { rows: [], stations: [] };
+  const shown = edition.shownAt !== null;
+  const date = dateOfInstant(edition.shownAt ?? edition.createdAt);
+  const row: WaitingView = {
+    id: `edition-${edition.id}`,
+    group: shown ? 'others' : 'yours',
+    mark: shown ? 'circle' : 'hollow',
+    date,
+    dateIs: 'since',
+    days: daysBetween(date, today),
+    title: shown ? `Edition ${edition.number} is with the client` : `Mail edition ${edition.number}`,
+    where: whereOf(opened),
+    why: shown
+      ? 'The client reads it and decides on its plan.'
+      : 'It is made but not shown: the client sees nothing of it yet.',
+    stake: savingOf(edition),
+    next: shown
+      ? 'The first bill after the change begins the proof.'
+      : 'The letter goes out; the edition stands in their pages.',
+    href: `/engagements/${code}/report`,
+    action: shown ? 'See edition' : 'Mail it',
+  };
+  return { rows: [row], stations: ['report', ...(shown ? ['proof', 'hours'] : [])] };
+}
+
+const stationWords: Record<string, { title: string; why: string; next: string; action: string }> = {
+  bills: {
+    title: 'Bring in the bills of the year',
+    why: 'Every finding and every saving is measured against what was billed.',
+    next: 'Typed or from a file; twelve bills close the station.',
+    action: 'Open Bills',
+  },
+  intervals: {
+    title: 'Bring in the meter intervals',
+    why: 'Demand and reactive energy of each bill are worked out from them.',
+    next: 'The year is drawn day by day, gaps marked.',
+    action: 'Open Intervals',
+  },
+  tariff: {
+    title: 'Choose the tariff schedule',
+    why: 'Without it no bill can be priced again.',
+    next: 'Each line is priced beside what was billed; differences become findings.',
+    action: 'Open Tariff',
+  },
+  motors: {
+    title: 'Enter the synchronous motors',
+    why: 'How far each may be over-excited follows from its nameplate.',
+    next: 'V-curves and limits are drawn; assumed values are marked.',
+    action: 'Open Motors',
+  },
+  plans: {
+    title: 'Choose a plan',
+    why: 'An edition is made of the plan that was chosen.',
+    next: 'The chosen plan stands beside the standing plant and the capacitors.',
+    action: 'Open Plans',
+  },
+  report: {
+    title: 'Make the first edition',
+    why: 'The client sees nothing before an edition is made and mailed.',
+    next: 'Pages and charts are drawn and frozen under a number.',
+    action: 'Open Report',
+  },
+};
+
+function nextStation(opened: OpenEngagement, station: StationView, today: string): WaitingView[] {
+  const words = stationWords[station.id];
+  if (!words) return [];
+  const date = dateOfInstant(opened.engagement.createdAt);
+  return [
+    {
+      id: `station-${opened.engagement.id}`,
+      group: 'yours',
+      mark: /to check|kept|present|choose|without/.test(station.reason) ? 'half' : 'hollow',
+      date,
+      dateIs: 'since',
+      days: daysBetween(date, today),
+      title: words.title,
+      where: whereOf(opened),
+      why: words.why,
+      stake: { text: station.reason, note: station.label },
+      next: words.next,
+      href: station.href,
+      action: words.action,
+    },
+  ];
+}
+
+/** Words and dates of a week: `2026-11-23` -> week 48. */
+export function weekNumber(monday: string): number {
+  const thursday = addDays(monday, 3);
+  const firstOfYear = dayNumber(`${thursday.slice(0, 4)}-01-01`);
+  return Math.floor((dayNumber(thursday) - firstOfYear) / 7) + 1;
+}

@@ -1,4 +1,4 @@
-import * as XLSX from 'xlsx';
+import XLSX from 'xlsx';
 import { intakeError } from './errors';
 import { CellGrid, gridCaps, type Cell } from './grid';
 import { checkZip } from './zip-caps';

@@ -45,7 +45,7 @@ async function demo(): Promise<void> {
   print(
     `\nCounterlag runs at ${env.APP_ORIGIN}\n\nPeople of the demo (every name is invented), password "${demoAccounts.password}":`,
   );
-  for (const { email, what } of demoAccounts.people) print(`  ${email.padEnd(38)} ${what}`);
+  for (const { email, name, what } of demoAccounts.people) print(`  ${email.padEnd(28)} ${name}, ${what}`);
   print(`\nMails are caught and lie as .eml files in ${path.relative(process.cwd(), caughtMailFolder())}`);
   print('Stop with Ctrl-C; what you did is still there at the next start. Remove db/data to begin anew.\n');
 }

@@ -47,7 +47,7 @@ const kilnTan = tanOf(0.82);
 const crusherTan = tanOf(0.7);
 const houseTan = tanOf(0.93);
 /** An old fixed capacitor at the house transformer that nobody switches: the plant leads when everything else stands. */
-const forgottenCapacitorKvar = 130;
+const forgottenCapacitorKvar = 200;
 
 /**
  * The plant's meter over the year, quarter-hour by quarter-hour. Repeatable: the same seed gives the same year.

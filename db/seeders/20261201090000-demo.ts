@@ -1,0 +1,198 @@
+import { randomUUID } from 'node:crypto';
+import { readFile } from 'node:fs/promises';
+import path from 'node:path';
+import { rightsInput } from '../../src/schemas/client';
+import { engagementInput } from '../../src/schemas/engagement';
+import { hourInput, type HourStation } from '../../src/schemas/hour';
+import { planDefaults, type SearchView } from '../../src/schemas/plan';
+import { demoAccounts } from '../../src/server/demo-accounts';
+import { getEnv } from '../../src/server/env';
+import type { Actor } from '../../src/server/policies/actor';
+import { createEngagement } from '../../src/server/services/create-engagement';
+import {
+  editionReaders,
+  listEditions,
+  mailEdition,
+  makeEdition,
+  openEdition,
+} from '../../src/server/services/editions';
+import { openEngagement, type OpenEngagement } from '../../src/server/services/engagements';
+import { foundPractice } from '../../src/server/services/first-run';
+import { logHours } from '../../src/server/services/hours';
+import { createMotor } from '../../src/server/services/motors';
+import { changePerson, openPerson } from '../../src/server/services/people';
+import { choosePlan, createPlan, openPlan } from '../../src/server/services/plans';
+import { setRate } from '../../src/server/services/rates';
+import { startSearch } from '../../src/server/services/search';
+import { chooseSchedule } from '../../src/server/services/tariff';
+import { addPersonWithPassword, bringIn, daysAgo, ended } from './demo/helpers';
+import { harrowBills } from './demo/harrow';
+import { kestrelBillsFile, kestrelMeterFile } from './demo/kestrel-year';
+import { earlierAdjustedKw, kestrel, kestrelMotors } from './demo/scenario';
+
+const [ilse, tom, sana, mira, jon] = demoAccounts.people;
+const readerRights = rightsInput.parse({ view: true, record: true, decide: true, pay: true });
+
+interface Staff {
+  ilse: Actor;
+  noor: Actor;
+  tom: Actor;
+  sana: Actor;
+}
+
+/** The practice: two partners, so that one checks the other's licence, and two consultants. */
+async function foundCalderVane(): Promise<Staff> {
+  const partner = await foundPractice({
+    practice: {
+      name: 'Calder & Vane, energy engineers',
+      legalName: 'Calder & Vane Energy Engineers LLP',
+      phone: '555 0142',
+      currency: 'USD',
+    },
+    partner: { name: ilse.name, email: ilse.email, password: demoAccounts.password },
+  });
+  const noor = await addPersonWithPassword(partner, {
+    role: 'partner',
+    name: 'Noor Calder',
+    email: 'noor@calder-vane.example',
+  });
+  const staff = {
+    ilse: partner,
+    noor,
+    tom: await addPersonWithPassword(partner, { role: 'consultant', name: tom.name, email: tom.email }),
+    sana: await addPersonWithPassword(partner, { role: 'consultant', name: sana.name, email: sana.email }),
+  };
+  const holder = await openPerson(noor, partner.id);
+  const licence = { jurisdiction: 'US-IL', number: 'PE 48213', expires: '2027-11-30' };
+  await changePerson(noor, holder, { change: 'licence', licence, version: holder.version });
+  for (const [person, perHour] of [[staff.ilse, 210] as const, [staff.tom, 145] as const, [staff.sana, 145] as const]) {
+    await setRate(partner, { userId: person.id, engagementId: null, perHour, from: '2025-01-01' });
+  }
+  return staff;
+}
+
+async function openKestrel({ ilse: partner, tom: consultant }: Staff): Promise<OpenEngagement> {
+  const code = await createEngagement(
+    consultant,
+    engagementInput.parse({
+      requestId: randomUUID(),
+      code: kestrel.code,
+      title: 'Power-bill audit of Works 2',
+      client: { kind: 'new', name: 'Kestrel Gap Lime & Stone', city: 'Kestrel Gap', currency: 'USD' },
+      site: { kind: 'new', name: 'Works 2', place: 'Kestrel Gap', timeZone: kestrel.timeZone, jurisdiction: 'US-IL' },
+      meter: { kind: 'new', label: 'OV 5510-274', serviceVoltageKv: 12.47 },
+      yearFrom: kestrel.yearFrom,
+      budgetHours: 60,
+      memberIds: [consultant.id, partner.id],
+    }),
+  );
+  const opened = await openEngagement(consultant, code);
+  await addPersonWithPassword(partner, {
+    role: 'client',
+    name: mira.name,
+    email: mira.email,
+    clientId: opened.client.id,
+    rights: readerRights,
+  });
+  return opened;
+}
+
+/** Files, tariff and motors of the first client, brought in as a consultant does. */
+async function auditKestrel(consultant: Actor, opened: OpenEngagement): Promise<void> {
+  const scheduleText = await readFile(path.join(getEnv().TARIFF_DIR, `${kestrel.scheduleId}.yaml`), 'utf8');
+  const meter = kestrelMeterFile();
+  await bringIn(consultant, opened, { kind: 'intervals', ...meter });
+  await bringIn(consultant, opened, { kind: 'bills', ...(await kestrelBillsFile(scheduleText, meter)) });
+  await chooseSchedule(consultant, opened.engagement.code, {
+    scheduleId: kestrel.scheduleId,
+    contract: kestrel.contract,
+    history: { adjustedKw: earlierAdjustedKw },
+    version: null,
+    takeNewText: false,
+  });
+  for (const motor of kestrelMotors) await createMotor(opened, motor);
+}
+
+/** Searches the best fields, makes the plan of them, and reports it to the client. */
+async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Promise<void> {
+  const search = await ended(consultant, await startSearch(consultant, opened, { stepA: 2 }));
+  const { fields } = search.result as unknown as SearchView;
+  const plan = await createPlan(opened, {
+    name: 'Plan A',
+    fields: fields.map(({ motorId, fieldA }) => ({ motorId, fieldA })),
+    capitalCost: 61_500,
+    yearlyUpkeep: 1_800,
+    economics: { ...planDefaults },
+    searchJobId: search.id,
+  });
+  const found = await openPlan(consultant, plan.id);
+  await choosePlan(found, { version: found.plan.version, chosen: true });
+  await ended(consultant, await makeEdition(consultant, opened, plan.id));
+  const [edition] = await listEditions(opened);
+  if (!edition) throw new Error('The edition of the demo scenario was not made');
+  const readers = await editionReaders(opened);
+  await mailEdition(consultant, await openEdition(consultant, edition.id), {
+    userIds: readers.map(({ id }) => id),
+    greeting: '',
+  });
+}
+
+/** The second client: small, with bills only, and nothing shown to it yet. */
+async function openHarrow({ ilse: partner, sana: consultant }: Staff): Promise<OpenEngagement> {
+  const code = await createEngagement(
+    consultant,
+    engagementInput.parse({
+      requestId: randomUUID(),
+      code: 'HS-01',
+      title: 'First look at the bills',
+      client: { kind: 'new', name: 'Harrow Sound Cold Store', city: 'Harrow Sound', currency: 'USD' },
+      site: { kind: 'new', name: 'Pier 4', place: 'Harrow Sound', timeZone: 'America/Chicago', jurisdiction: 'US-WI' },
+      meter: { kind: 'new', label: 'OV 2207-031', serviceVoltageKv: 12.47 },
+      yearFrom: kestrel.yearFrom,
+      budgetHours: 20,
+      memberIds: [consultant.id],
+    }),
+  );
+  const opened = await openEngagement(consultant, code);
+  await addPersonWithPassword(partner, {
+    role: 'client',
+    name: jon.name,
+    email: jon.email,
+    clientId: opened.client.id,
+    rights: readerRights,
+  });
+  await bringIn(consultant, opened, { kind: 'bills', ...harrowBills() });
+  return opened;
+}
+
+type Entry = [days: number, time: string, station: HourStation, note: string];
+
+const tomsHours: Entry[] = [
+  [13, '2.5', 'bills', 'Bills of twelve months read in and checked against the meter'],
+  [12, '1:45', 'intervals', 'Meter file matched; the week of the failed meter marked'],
+  [11, '3:15', 'tariff', 'Twelve bills priced; two differences traced to their cause'],
+  [8, '4:00', 'motors', 'Visit to Works 2: plates of M-1 and M-2 photographed, fields read'],
+  [8, '2:30', 'travel', 'Drive to Kestrel Gap and back'],
+  [7, '3:30', 'plans', 'Search of field currents; quotations for two regulators worked in'],
+  [5, '2:00', 'report', 'Edition 1 made and read over'],
+];
+const ilsesHours: Entry[] = [[6, '1:15', 'plans', 'Plan A checked: limits, pull-out, losses']];
+const sanasHours: Entry[] = [[4, '1.5', 'bills', 'First look at the bills of Pier 4']];
+
+async function log(actor: Actor, opened: OpenEngagement, entries: Entry[]): Promise<void> {
+  for (const [days, time, station, note] of entries) {
+    await logHours(actor, opened, hourInput.parse({ day: daysAgo(days), time, station, note, billable: true }));
+  }
+}
+
+/** The demo scenario: an invented practice, one invented client in full, a second one beside it. */
+export async function up(): Promise<void> {
+  const staff = await foundCalderVane();
+  const works = await openKestrel(staff);
+  await auditKestrel(staff.tom, works);
+  await proposeToKestrel(staff.tom, works);
+  const pier = await openHarrow(staff);
+  await log(staff.tom, works, tomsHours);
+  await log(staff.ilse, works, ilsesHours);
+  await log(staff.sana, pier, sanasHours);
+}

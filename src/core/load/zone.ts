@@ -78,7 +78,10 @@ export function localDateStartMs(date: string, timeZone: string): number {
   const offsetMs = zoneOffsetMs(guessMs, timeZone);
   const beforeMs = zoneOffsetMs(guessMs - 3 * hourMs, timeZone);
   // The midnight may be read twice (the clock goes back over it) or never: the earlier reading, or the instant of the change.
-  for (const candidateMs of [localMidnightMs - Math.max(offsetMs, beforeMs), localMidnightMs - Math.min(offsetMs, beforeMs)]) {
+  for (const candidateMs of [
+    localMidnightMs - Math.max(offsetMs, beforeMs),
+    localMidnightMs - Math.min(offsetMs, beforeMs),
+  ]) {
     if (candidateMs + zoneOffsetMs(candidateMs, timeZone) === localMidnightMs) return candidateMs;
   }
   return changeBetween(guessMs - 3 * hourMs, guessMs + 3 * hourMs, timeZone);

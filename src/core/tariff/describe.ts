@@ -1,5 +1,14 @@
 import { printFormula } from './formula/print';
-import type { ChargeDefinition, ChargeGroup, NumberPlace, QuantityEntry, Schedule, ScheduleSource, ScheduleText, Straddle } from './model';
+import type {
+  ChargeDefinition,
+  ChargeGroup,
+  NumberPlace,
+  QuantityEntry,
+  Schedule,
+  ScheduleSource,
+  ScheduleText,
+  Straddle,
+} from './model';
 
 /** A schedule as plain JSON, for a page that shows it. */
 export interface ScheduleDescription {
@@ -25,10 +34,32 @@ export interface TextDescription {
   holidays: { calendar: string | null; add: string[]; drop: string[] };
   seasons: { name: string; words: string }[];
   windows: { name: string; words: string }[];
-  contract: { name: string; label: string | null; unit: string; default: number | null; range: [number, number] | null; clause: string | null }[];
+  contract: {
+    name: string;
+    label: string | null;
+    unit: string;
+    default: number | null;
+    range: [number, number] | null;
+    clause: string | null;
+  }[];
   rates: { name: string; words: string }[];
-  quantities: { name: string; label: string | null; unit: string; clause: string | null; kind: QuantityEntry['definition']['kind']; words: string }[];
-  charges: { name: string; label: string; unit: string | null; clause: string | null; group: ChargeGroup; words: string; when: string | null }[];
+  quantities: {
+    name: string;
+    label: string | null;
+    unit: string;
+    clause: string | null;
+    kind: QuantityEntry['definition']['kind'];
+    words: string;
+  }[];
+  charges: {
+    name: string;
+    label: string;
+    unit: string | null;
+    clause: string | null;
+    group: ChargeGroup;
+    words: string;
+    when: string | null;
+  }[];
 }
 
 /** Describes a schedule in plain JSON: nothing in it is a function, and changing it changes no schedule. */
@@ -52,7 +83,9 @@ function describeText(text: ScheduleText): TextDescription {
   return {
     from: text.from,
     note: text.note ?? null,
-    demandWindow: demandWindow ? { minutes: demandWindow.minutes, everyMinutes: demandWindow.everyMinutes ?? null } : null,
+    demandWindow: demandWindow
+      ? { minutes: demandWindow.minutes, everyMinutes: demandWindow.everyMinutes ?? null }
+      : null,
     rounding: { ...rounding },
     zeroKwh: { pf: zeroKwh.pf ?? null, ratio: zeroKwh.ratio ?? null },
     holidays: { calendar: holidays.calendar ?? null, add: [...holidays.add], drop: [...holidays.drop] },
@@ -102,8 +135,14 @@ function wordQuantity({ definition }: QuantityEntry): string {
   switch (definition.kind) {
     case 'measure': {
       const { operation, expression, each, window, where, count, isDistinctDays } = definition;
-      const several = count > 1 ? `mean of the ${count} ${operation}${isDistinctDays ? ' on distinct days' : ''}` : operation;
-      const parts = [`${several} ${printFormula(expression.formula)}`, each && `each ${each}`, window && `in ${window}`, where && `where ${printFormula(where.formula)}`];
+      const several =
+        count > 1 ? `mean of the ${count} ${operation}${isDistinctDays ? ' on distinct days' : ''}` : operation;
+      const parts = [
+        `${several} ${printFormula(expression.formula)}`,
+        each && `each ${each}`,
+        window && `in ${window}`,
+        where && `where ${printFormula(where.formula)}`,
+      ];
       return parts.filter((part) => part !== undefined).join(', ');
     }
     case 'value':
@@ -127,7 +166,9 @@ function wordQuantity({ definition }: QuantityEntry): string {
 function wordCharge(definition: ChargeDefinition, text: ScheduleText): string {
   const price = (): string =>
     'price' in definition
-      ? definition.price.map((tier) => `${wordPlace(tier.rate, text)}${tier.to ? ` up to ${printFormula(tier.to.formula)}` : ''}`).join('; ')
+      ? definition.price
+          .map((tier) => `${wordPlace(tier.rate, text)}${tier.to ? ` up to ${printFormula(tier.to.formula)}` : ''}`)
+          .join('; ')
       : '';
   const lines = 'isAllAbove' in definition ? (definition.isAllAbove ? 'all above' : definition.of.join(', ')) : '';
   switch (definition.kind) {

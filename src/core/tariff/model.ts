@@ -121,12 +121,7 @@ export type QuantityEntry = Entry & {
   definition: QuantityDefinition;
 };
 export type QuantityDefinition =
-  | MeasureDefinition
-  | ValueDefinition
-  | FormulaDefinition
-  | PickDefinition
-  | PastDefinition
-  | GivenDefinition;
+  MeasureDefinition | ValueDefinition | FormulaDefinition | PickDefinition | PastDefinition | GivenDefinition;
 
 /** One tier: its upper end, if it has one, and its rate. */
 export interface Tier {
@@ -138,7 +133,15 @@ export interface Tier {
 export type ChargeDefinition =
   | { kind: 'amount'; amount: NumberPlace }
   | { kind: 'per'; per: Expression; perName: string; unit: string; price: Tier[] }
-  | { kind: 'percent'; of: string[]; isAllAbove: boolean; per?: Expression; perName?: string; unit?: string; price: Tier[] }
+  | {
+      kind: 'percent';
+      of: string[];
+      isAllAbove: boolean;
+      per?: Expression;
+      perName?: string;
+      unit?: string;
+      price: Tier[];
+    }
   | { kind: 'topUp' | 'cap'; of: string[]; isAllAbove: boolean; to: NumberPlace };
 
 /** A line of the bill. */

@@ -12,7 +12,8 @@ const knownDecimals = new Map<string, number>();
 export function minorUnitDecimals(currency: string): number {
   const known = knownDecimals.get(currency);
   if (known !== undefined) return known;
-  if (!/^[A-Z]{3}$/.test(currency)) throw new RangeError(`currency must be an ISO 4217 code such as EUR, got "${currency}"`);
+  if (!/^[A-Z]{3}$/.test(currency))
+    throw new RangeError(`currency must be an ISO 4217 code such as EUR, got "${currency}"`);
   const decimals =
     new Intl.NumberFormat('en', { style: 'currency', currency }).resolvedOptions().maximumFractionDigits ?? 2;
   knownDecimals.set(currency, decimals);

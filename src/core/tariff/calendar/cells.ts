@@ -52,11 +52,18 @@ interface Draft {
  * @param inside  uint8[positions], 1 inside the window; null: no window
  * @throws {PriceError} if a demand window is no multiple of the series' step
  */
-export function layCells(kind: CellKind, ground: CellGround, inside: Uint8Array | null, demandWindow: DemandWindow | undefined): CellPlan {
+export function layCells(
+  kind: CellKind,
+  ground: CellGround,
+  inside: Uint8Array | null,
+  demandWindow: DemandWindow | undefined,
+): CellPlan {
   const { stepMinutes } = ground;
   const isDemand = kind === 'demand window' && demandWindow !== undefined && stepMinutes < demandWindow.minutes;
-  if (isDemand) return finishCells(demandCells(ground, demandWindow), ground, inside, (draft) => isWhole(draft, inside));
-  if (kind === 'interval' || kind === 'demand window') return finishCells(blocks(ground, 0), ground, inside, () => true);
+  if (isDemand)
+    return finishCells(demandCells(ground, demandWindow), ground, inside, (draft) => isWhole(draft, inside));
+  if (kind === 'interval' || kind === 'demand window')
+    return finishCells(blocks(ground, 0), ground, inside, () => true);
   return finishCells(blocks(ground, kind === 'hour' ? 60 : 1440), ground, inside, () => true);
 }
 
@@ -88,9 +95,12 @@ function demandCells(ground: CellGround, { minutes, everyMinutes }: DemandWindow
   const { calendar, stepMinutes } = ground;
   for (const length of [minutes, everyMinutes ?? minutes]) {
     if (length % stepMinutes === 0) continue;
-    throw new PriceError(`demandWindow: ${length} minutes are no multiple of the series' step of ${stepMinutes} minutes. Use a series of a shorter step.`, {
-      name: 'demandWindow',
-    });
+    throw new PriceError(
+      `demandWindow: ${length} minutes are no multiple of the series' step of ${stepMinutes} minutes. Use a series of a shorter step.`,
+      {
+        name: 'demandWindow',
+      },
+    );
   }
   const size = minutes / stepMinutes;
   if (everyMinutes === undefined) return blocks(ground, minutes).filter(({ from, to }) => to - from === size);
@@ -101,7 +111,12 @@ function demandCells(ground: CellGround, { minutes, everyMinutes }: DemandWindow
   return drafts;
 }
 
-function finishCells(drafts: Draft[], ground: CellGround, inside: Uint8Array | null, isKept: (draft: Draft) => boolean): CellPlan {
+function finishCells(
+  drafts: Draft[],
+  ground: CellGround,
+  inside: Uint8Array | null,
+  isKept: (draft: Draft) => boolean,
+): CellPlan {
   const { calendar, seriesCount, pieceEnds } = ground;
   const members: number[] = [];
   const starts: number[] = [];
@@ -132,7 +147,14 @@ function finishCells(drafts: Draft[], ground: CellGround, inside: Uint8Array | n
   return withRoom({ starts, ends, members, broken, days, pieceStarts });
 }
 
-function withRoom(cells: { starts: number[]; ends: number[]; members: number[]; broken: number[]; days: number[]; pieceStarts: number[] }): CellPlan {
+function withRoom(cells: {
+  starts: number[];
+  ends: number[];
+  members: number[];
+  broken: number[];
+  days: number[];
+  pieceStarts: number[];
+}): CellPlan {
   const { starts, ends, members } = cells;
   const base = members[0] ?? 0;
   const isContiguous = members.every((member, i) => member === base + i);

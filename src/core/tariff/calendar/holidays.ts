@@ -12,7 +12,8 @@ export function problemWithCalendar(calendar: string): string | undefined {
   const [country = '', state, region, more] = calendar.split('-');
   const all = new Holidays();
   const has = (codes: object | undefined, code: string): boolean => codes !== undefined && Object.hasOwn(codes, code);
-  if (more !== undefined || !has(all.getCountries('en'), country)) return `no holiday calendar is called "${calendar}".`;
+  if (more !== undefined || !has(all.getCountries('en'), country))
+    return `no holiday calendar is called "${calendar}".`;
   if (state === undefined) return undefined;
   if (!has(all.getStates(country, 'en'), state)) return `the holiday calendar of ${country} has no part "${state}".`;
   if (region === undefined || has(all.getRegions(country, state, 'en'), region)) return undefined;
@@ -37,7 +38,12 @@ function publicDays(calendar: string, year: number): ReadonlySet<string> {
   let days = knownYears.get(key);
   if (!days) {
     const [country = '', state, region] = calendar.split('-');
-    const source = state === undefined ? new Holidays(country) : region === undefined ? new Holidays(country, state) : new Holidays(country, state, region);
+    const source =
+      state === undefined
+        ? new Holidays(country)
+        : region === undefined
+          ? new Holidays(country, state)
+          : new Holidays(country, state, region);
     days = new Set(
       source
         .getHolidays(year, 'en')

@@ -27,7 +27,13 @@ export function layPeriod(grid: PricingGrid, plan: PeriodPlan, timeZone: string)
   const stepMs = grid.stepMinutes * 60_000;
   const first = Math.ceil((plan.startMs - grid.startMs) / stepMs);
   const count = Math.ceil((plan.endMs - grid.startMs) / stepMs) - first;
-  const calendar: PeriodCalendar = { first, count, day: new Int32Array(count), clock: new Int16Array(count), turn: new Uint8Array(count) };
+  const calendar: PeriodCalendar = {
+    first,
+    count,
+    day: new Int32Array(count),
+    clock: new Int16Array(count),
+    turn: new Uint8Array(count),
+  };
   let startMs = plan.startMs;
   let offsetMs = zoneOffsetMs(startMs, timeZone);
   let position = 0;
@@ -36,7 +42,8 @@ export function layPeriod(grid: PricingGrid, plan: PeriodPlan, timeZone: string)
     const guessMs = midnightMs + dayMs - offsetMs;
     const nextOffsetMs = zoneOffsetMs(guessMs, timeZone);
     const endMs = nextOffsetMs === offsetMs ? guessMs : localDateStartMs(isoDate(plan.firstDay + day + 1), timeZone);
-    const changeMs = endMs - startMs === dayMs && nextOffsetMs === offsetMs ? Infinity : changeBetween(startMs, endMs, timeZone);
+    const changeMs =
+      endMs - startMs === dayMs && nextOffsetMs === offsetMs ? Infinity : changeBetween(startMs, endMs, timeZone);
     const laterOffsetMs = changeMs === Infinity ? offsetMs : zoneOffsetMs(changeMs, timeZone);
     for (; position < count; position++) {
       const ms = grid.startMs + (first + position) * stepMs;
@@ -58,7 +65,13 @@ export function layPeriod(grid: PricingGrid, plan: PeriodPlan, timeZone: string)
  * @returns uint8[count], 1 inside
  * @throws {PriceError} where a border of the window falls inside an interval
  */
-export function positionsInside(text: ScheduleText, window: string, plan: PeriodPlan, calendar: PeriodCalendar, stepMinutes: number): Uint8Array {
+export function positionsInside(
+  text: ScheduleText,
+  window: string,
+  plan: PeriodPlan,
+  calendar: PeriodCalendar,
+  stepMinutes: number,
+): Uint8Array {
   checkBorders(text, window, plan, calendar, stepMinutes);
   const inside = new Uint8Array(calendar.count);
   const templates = new Map<number, Uint8Array>();
@@ -82,15 +95,25 @@ export function dayOf(text: ScheduleText, day: number): { season: number; kinds:
   return { season: seasonOfDate(text.seasons, date), kinds: dayKindsOf(weekdayOf(day), isHoliday) };
 }
 
-function checkBorders(text: ScheduleText, name: string, plan: PeriodPlan, { clock, count }: PeriodCalendar, stepMinutes: number): void {
+function checkBorders(
+  text: ScheduleText,
+  name: string,
+  plan: PeriodPlan,
+  { clock, count }: PeriodCalendar,
+  stepMinutes: number,
+): void {
   const window = text.windows.get(name);
   const phase = count > 0 ? clock[0]! % stepMinutes : 0;
   for (const { spans } of window?.rules ?? []) {
     for (const border of spans.flat()) {
       if (border % 1440 === 0 ? phase === 0 : (border - phase) % stepMinutes === 0) continue;
       const time = `${String(Math.floor(border / 60)).padStart(2, '0')}:${String(border % 60).padStart(2, '0')}`;
-      throw new PriceError(`${window?.path}.hours: ${time} falls inside an interval of ${stepMinutes} minutes. Use a series of a shorter step.`, { period: plan.period, name });
+      throw new PriceError(
+        `${window?.path}.hours: ${time} falls inside an interval of ${stepMinutes} minutes. Use a series of a shorter step.`,
+        { period: plan.period, name },
+      );
     }
   }
-  for (const other of window?.restOf ?? []) checkBorders(text, other, plan, { clock, count } as PeriodCalendar, stepMinutes);
+  for (const other of window?.restOf ?? [])
+    checkBorders(text, other, plan, { clock, count } as PeriodCalendar, stepMinutes);
 }

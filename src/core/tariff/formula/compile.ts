@@ -78,7 +78,10 @@ function compileBinary(node: Formula & { kind: 'binary' }, left: Evaluate, right
 }
 
 function compileComparison(operator: '=' | '!=' | '<' | '<=' | '>' | '>=', left: Evaluate, right: Evaluate): Evaluate {
-  const compare = (test: (a: number, b: number) => boolean): Evaluate => (v) => (test(left(v), right(v)) ? 1 : 0);
+  const compare =
+    (test: (a: number, b: number) => boolean): Evaluate =>
+    (v) =>
+      test(left(v), right(v)) ? 1 : 0;
   switch (operator) {
     case '=':
       return compare(isSame);

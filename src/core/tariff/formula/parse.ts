@@ -16,7 +16,11 @@ export const deepestFormula = 40;
  */
 export function parseFormula(text: string): Formula {
   if (text.length > longestFormula) {
-    throw new FormulaMistake(0, `the formula has ${text.length} characters, at most ${longestFormula} are read.`, 'Split it in two.');
+    throw new FormulaMistake(
+      0,
+      `the formula has ${text.length} characters, at most ${longestFormula} are read.`,
+      'Split it in two.',
+    );
   }
   const parser = new Parser(readTokens(text));
   return parser.wholeFormula();
@@ -51,7 +55,11 @@ class Parser {
 
   private nested<T>(read: () => T): T {
     if (++this.depth > deepestFormula) {
-      throw new FormulaMistake(this.next().start, `the formula is nested deeper than ${deepestFormula} levels.`, 'Name a part of it.');
+      throw new FormulaMistake(
+        this.next().start,
+        `the formula is nested deeper than ${deepestFormula} levels.`,
+        'Name a part of it.',
+      );
     }
     const result = read();
     this.depth--;
@@ -135,7 +143,8 @@ class Parser {
 
   private closing(opening: Token): Token {
     if (this.isNext(')')) return this.take();
-    if (this.next().kind === 'end') throw new FormulaMistake(opening.start, 'a bracket opens here and never closes.', 'Add a ).');
+    if (this.next().kind === 'end')
+      throw new FormulaMistake(opening.start, 'a bracket opens here and never closes.', 'Add a ).');
     throw this.unexpected();
   }
 
@@ -151,14 +160,19 @@ class Parser {
     const { end } = this.closing(opening);
     if (args.length < arity[0] || args.length > arity[1]) {
       const many = args.length === 1 ? '1 value' : `${args.length} values`;
-      throw new FormulaMistake(name.start, `"${name.text}" is given ${many}.`, `Write ${functionForms.get(name.text)}.`);
+      throw new FormulaMistake(
+        name.start,
+        `"${name.text}" is given ${many}.`,
+        `Write ${functionForms.get(name.text)}.`,
+      );
     }
     return { kind: 'call', fn: name.text, args, start: name.start, end };
   }
 
   private unexpected(): FormulaMistake {
     const token = this.next();
-    if (token.kind === 'end') return new FormulaMistake(token.start, 'the formula ends too early.', 'Complete or shorten it.');
+    if (token.kind === 'end')
+      return new FormulaMistake(token.start, 'the formula ends too early.', 'Complete or shorten it.');
     return new FormulaMistake(token.start, `"${token.text}" is not expected here.`, expectation(token));
   }
 }
@@ -171,7 +185,11 @@ function expectation(token: Token): string {
 
 function noFunction(name: Token): FormulaMistake {
   if (/^(round|floor|ceil|trunc)/i.test(name.text)) {
-    return new FormulaMistake(name.start, `there is no function "${name.text}".`, 'Give the quantity round: 0.01 instead.');
+    return new FormulaMistake(
+      name.start,
+      `there is no function "${name.text}".`,
+      'Give the quantity round: 0.01 instead.',
+    );
   }
   const fallback = `There are ${[...functionArity.keys()].join(', ')}.`;
   return new FormulaMistake(

@@ -36,7 +36,11 @@ export function readTokens(text: string): Token[] {
     const token = tokenAt(text, offset);
     const last = tokens[tokens.length - 1];
     if (last?.kind === 'number' && token.kind !== 'mark' && last.end === offset) {
-      throw new FormulaMistake(last.start, `"${last.text}${token.text}" is neither a number nor a name.`, 'Write * between the two, or a name that begins with a small letter.');
+      throw new FormulaMistake(
+        last.start,
+        `"${last.text}${token.text}" is neither a number nor a name.`,
+        'Write * between the two, or a name that begins with a small letter.',
+      );
     }
     tokens.push(token);
     offset = token.end;
@@ -66,6 +70,11 @@ function strangeCharacter(text: string, offset: number): FormulaMistake {
   if (character === '%') return new FormulaMistake(offset, '"%" is not part of a formula.', 'Write 0.05 for 5 %.');
   if (character === '&') return new FormulaMistake(offset, '"&" is not part of a formula.', 'Write and.');
   if (character === '|') return new FormulaMistake(offset, '"|" is not part of a formula.', 'Write or.');
-  if (character === '!') return new FormulaMistake(offset, '"!" is not part of a formula.', 'Write not, or != for unequal.');
-  return new FormulaMistake(offset, `"${character}" is not part of a formula.`, 'Formulas hold numbers, names, functions and + - * / ^ = != < <= > >= ; ( ).');
+  if (character === '!')
+    return new FormulaMistake(offset, '"!" is not part of a formula.', 'Write not, or != for unequal.');
+  return new FormulaMistake(
+    offset,
+    `"${character}" is not part of a formula.`,
+    'Formulas hold numbers, names, functions and + - * / ^ = != < <= > >= ; ( ).',
+  );
 }

@@ -80,7 +80,14 @@ export interface CellFormula {
 }
 
 /** Sums a formula over the cells of each piece into `sums[at + piece]`; returns the whole sum. */
-export function sumCells(plan: CellPlan, load: LoadSeries, { evaluate, where }: CellFormula, values: Float64Array, sums: Float64Array, at: number): number {
+export function sumCells(
+  plan: CellPlan,
+  load: LoadSeries,
+  { evaluate, where }: CellFormula,
+  values: Float64Array,
+  sums: Float64Array,
+  at: number,
+): number {
   let whole = 0;
   for (let piece = 0; piece + 1 < plan.pieceStarts.length; piece++) {
     let sum = 0;
@@ -96,7 +103,13 @@ export function sumCells(plan: CellPlan, load: LoadSeries, { evaluate, where }: 
 }
 
 /** The greatest (sign 1) or least (sign -1) value of a formula over whole cells; the earliest cell wins a tie. Cell -1: there is none. */
-export function extremeCell(plan: CellPlan, load: LoadSeries, { evaluate, where }: CellFormula, values: Float64Array, sign: 1 | -1): { value: number; cell: number } {
+export function extremeCell(
+  plan: CellPlan,
+  load: LoadSeries,
+  { evaluate, where }: CellFormula,
+  values: Float64Array,
+  sign: 1 | -1,
+): { value: number; cell: number } {
   let best = -Infinity;
   let bestCell = -1;
   const count = plan.starts.length;
@@ -131,7 +144,12 @@ export function extremeCells(
   return best;
 }
 
-function keepBest(best: { value: number; cell: number }[], entry: { value: number; cell: number }, day: Int32Array, how: { sign: 1 | -1; count: number; isDistinctDays: boolean }): void {
+function keepBest(
+  best: { value: number; cell: number }[],
+  entry: { value: number; cell: number },
+  day: Int32Array,
+  how: { sign: 1 | -1; count: number; isDistinctDays: boolean },
+): void {
   const { sign, count, isDistinctDays } = how;
   if (isDistinctDays) {
     const sameDay = best.findIndex(({ cell }) => day[cell] === day[entry.cell]);

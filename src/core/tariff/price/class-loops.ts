@@ -51,7 +51,11 @@ export function gatherActive(plan: ClassPlan, { kwh, quality }: LoadSeries, hasM
 }
 
 /** Gathers reactive energy: sums by class. */
-export function gatherReactive(plan: ClassPlan, { kvarhLagging, kvarhLeading, quality }: LoadSeries, hasMissing: boolean): void {
+export function gatherReactive(
+  plan: ClassPlan,
+  { kvarhLagging, kvarhLeading, quality }: LoadSeries,
+  hasMissing: boolean,
+): void {
   const { runFirst, runEnd, runClass, runPiece, classCount } = plan;
   plan.kvarhLagging.fill(0);
   plan.kvarhLeading.fill(0);
@@ -71,7 +75,11 @@ export function gatherReactive(plan: ClassPlan, { kvarhLagging, kvarhLeading, qu
 }
 
 /** Gathers the highest apparent energy of an interval by class, squared: one root at the end is enough. */
-export function gatherApparent(plan: ClassPlan, { kwh, kvarhLagging, kvarhLeading, quality }: LoadSeries, hasMissing: boolean): void {
+export function gatherApparent(
+  plan: ClassPlan,
+  { kwh, kvarhLagging, kvarhLeading, quality }: LoadSeries,
+  hasMissing: boolean,
+): void {
   const { runFirst, runEnd, runClass } = plan;
   plan.highestSquare.fill(-Infinity);
   plan.highestSquareAt.fill(-1);

@@ -19,7 +19,13 @@ export function compilePricing(schedule: Schedule, grid: PricingGrid, options: P
   checkNames(schedule, options);
   const plans = planPeriods(schedule, options.periods);
   const ground = layGround(schedule, plans, grid);
-  return new Pricing(schedule, { startMs: grid.startMs, stepMinutes: grid.stepMinutes, count: grid.count }, options, plans, ground);
+  return new Pricing(
+    schedule,
+    { startMs: grid.startMs, stepMinutes: grid.stepMinutes, count: grid.count },
+    options,
+    plans,
+    ground,
+  );
 }
 
 /**
@@ -83,6 +89,9 @@ class Pricing implements CompiledPricing {
     assertLoadSeries(load);
     const { startMs, stepMinutes, count } = this.grid;
     if (load.startMs === startMs && load.stepMinutes === stepMinutes && load.kwh.length === count) return;
-    throw new PriceError('The series does not lie on the grid the pricing was laid out for. Lay it out for this series.', { name: 'load' });
+    throw new PriceError(
+      'The series does not lie on the grid the pricing was laid out for. Lay it out for this series.',
+      { name: 'load' },
+    );
   }
 }

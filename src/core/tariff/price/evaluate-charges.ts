@@ -16,7 +16,10 @@ export function evaluateCharges(run: Run, bill: BillState): void {
     const charge = lastCharge(bill, line);
     if (!charge) continue;
     const { definition } = charge.charge;
-    const raw = definition.kind === 'topUp' || definition.kind === 'cap' ? limitParts(run, bill, line) : pieceParts(run, bill, line);
+    const raw =
+      definition.kind === 'topUp' || definition.kind === 'cap'
+        ? limitParts(run, bill, line)
+        : pieceParts(run, bill, line);
     const amount = roundedValue(run, bill, charge.charge.name, raw, charge.charge.rounding);
     scaleParts(bill, line, count, raw, amount);
     bill.amounts[line] = amount;
@@ -39,7 +42,8 @@ export function lastCharge(bill: BillState, line: number): ChargePlan | undefine
 
 function scaleParts(bill: BillState, line: number, count: number, raw: number, amount: number): void {
   const scale = raw === 0 ? 0 : amount / raw;
-  for (let p = 0; p < count; p++) bill.parts[line * count + p] = count === 1 ? amount : bill.parts[line * count + p]! * scale;
+  for (let p = 0; p < count; p++)
+    bill.parts[line * count + p] = count === 1 ? amount : bill.parts[line * count + p]! * scale;
 }
 
 /** Whether a line is charged in a piece: its condition holds. */
@@ -77,7 +81,10 @@ function partOf(run: Run, bill: BillState, state: PieceState, plan: ChargePlan):
     case 'amount':
       return placeValue(run, state, definition.amount) * state.piece.share;
     case 'per':
-      return tieredPrice(run, state, definition.price, evaluateIn(run, state, definition.per)) * shareOf(run, bill, state, plan);
+      return (
+        tieredPrice(run, state, definition.price, evaluateIn(run, state, definition.per)) *
+        shareOf(run, bill, state, plan)
+      );
     case 'percent': {
       const percent = definition.per
         ? tieredPrice(run, state, definition.price, evaluateIn(run, state, definition.per))
@@ -99,7 +106,12 @@ export function partsOfLines(bill: BillState, state: PieceState, { ofLines }: Ch
 
 /** A number under a piece's season. Months stand under rates only. */
 export function placeValue(run: Run, state: PieceState, place: NumberPlace): number {
-  const expression = place.kind === 'same' ? place.expression : place.kind === 'seasons' ? place.bySeason[state.piece.season] : place.byMonth.get(state.piece.month);
+  const expression =
+    place.kind === 'same'
+      ? place.expression
+      : place.kind === 'seasons'
+        ? place.bySeason[state.piece.season]
+        : place.byMonth.get(state.piece.month);
   if (!expression) throw new RangeError(`season must be one of the text's, got ${state.piece.season}`);
   return evaluateIn(run, state, expression);
 }
@@ -124,7 +136,10 @@ export function shareOf(run: Run, bill: BillState, state: PieceState, plan: Char
   if (count === 1) return 1;
   if (run.schedule.straddle !== 'intervals') return state.piece.share;
   if (!run.source.hasIntervals) {
-    if (plan.shareBy.length > 0) bill.notes?.add('Lines of energy are shared by days: printed figures do not say what fell into each part of the period.');
+    if (plan.shareBy.length > 0)
+      bill.notes?.add(
+        'Lines of energy are shared by days: printed figures do not say what fell into each part of the period.',
+      );
     return state.piece.share;
   }
   let whole = 0;

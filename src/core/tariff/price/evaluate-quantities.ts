@@ -40,7 +40,10 @@ function setContract(run: Run, { plan }: BillState, state: PieceState): void {
     const isOutside = range !== undefined && (value < range[0] || value > range[1]);
     if (!Number.isFinite(value) || isOutside) {
       const allowed = range ? `between ${wordNumber(range[0])} and ${wordNumber(range[1])} ${unit}` : 'a number';
-      throw new PriceError(`The contract input "${name}" must be ${allowed}, got ${value}.`, { period: plan.period, name });
+      throw new PriceError(`The contract input "${name}" must be ${allowed}, got ${value}.`, {
+        period: plan.period,
+        name,
+      });
     }
     setValue(state, slot, value);
   }
@@ -48,9 +51,14 @@ function setContract(run: Run, { plan }: BillState, state: PieceState): void {
 
 function setRate(run: Run, state: PieceState, { name, slot, place: rate }: RateEntry): void {
   const { season, month } = state.piece;
-  const expression = rate.kind === 'same' ? rate.expression : rate.kind === 'seasons' ? rate.bySeason[season] : rate.byMonth.get(month);
+  const expression =
+    rate.kind === 'same' ? rate.expression : rate.kind === 'seasons' ? rate.bySeason[season] : rate.byMonth.get(month);
   if (!expression) {
-    state.missing[slot] = { name, kind: 'month', detail: `no ${name} rate for ${month}; add it under rates.${name}.months.` };
+    state.missing[slot] = {
+      name,
+      kind: 'month',
+      detail: `no ${name} rate for ${month}; add it under rates.${name}.months.`,
+    };
     return;
   }
   const cause = firstMissing(state, expression.slots);
@@ -92,7 +100,14 @@ function settle(run: Run, bill: BillState, state: PieceState, quantity: Quantity
   }
 }
 
-function settleGiven(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, definition: GivenDefinition, printed: number | undefined): void {
+function settleGiven(
+  run: Run,
+  bill: BillState,
+  state: PieceState,
+  quantity: QuantityEntry,
+  definition: GivenDefinition,
+  printed: number | undefined,
+): void {
   const given = run.given[bill.plan.index];
   const told = given && Object.hasOwn(given, quantity.name) ? given[quantity.name] : undefined;
   const asIs = printed ?? told ?? definition.default;
@@ -118,7 +133,13 @@ interface Known {
   needs: readonly number[];
 }
 
-function settleWorkedOut(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, { printed, needs }: Known): void {
+function settleWorkedOut(
+  run: Run,
+  bill: BillState,
+  state: PieceState,
+  quantity: QuantityEntry,
+  { printed, needs }: Known,
+): void {
   const { slot } = quantity;
   const cause = firstMissing(state, needs);
   if (!cause) {
@@ -129,7 +150,9 @@ function settleWorkedOut(run: Run, bill: BillState, state: PieceState, quantity:
     state.missing[slot] = cause;
     return;
   }
-  const results = state.samples.map((values) => roundedValue(run, bill, quantity.name, workOut(run, state, quantity, values), quantity.rounding));
+  const results = state.samples.map((values) =>
+    roundedValue(run, bill, quantity.name, workOut(run, state, quantity, values), quantity.rounding),
+  );
   if (results.every((result) => isSame(result, results[0]!))) setValue(state, slot, results[0]!);
   else if (printed !== undefined) keepPrinted(run, bill, state, quantity, printed);
   else {
@@ -139,14 +162,29 @@ function settleWorkedOut(run: Run, bill: BillState, state: PieceState, quantity:
 }
 
 /** At unity, what cannot be told keeps its printed value. */
-export function keepPrinted(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, printed: number): void {
+export function keepPrinted(
+  run: Run,
+  bill: BillState,
+  state: PieceState,
+  quantity: QuantityEntry,
+  printed: number,
+): void {
   setRounded(run, bill, state, quantity, printed);
-  bill.notes?.add(`At unity power factor "${quantity.name}" cannot be told from the figures printed: it keeps ${wordNumber(printed)} ${quantity.unit}.`);
+  bill.notes?.add(
+    `At unity power factor "${quantity.name}" cannot be told from the figures printed: it keeps ${wordNumber(printed)} ${quantity.unit}.`,
+  );
 }
 
-function lookBack(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, definition: PastDefinition): number {
+function lookBack(
+  run: Run,
+  bill: BillState,
+  state: PieceState,
+  quantity: QuantityEntry,
+  definition: PastDefinition,
+): number {
   const records = recordsBefore(run, bill, state);
-  if (definition.over.includesThis) records.push({ period: bill.plan.period, values: state.values, known: state.known, isTold: false });
+  if (definition.over.includesThis)
+    records.push({ period: bill.plan.period, values: state.values, known: state.known, isTold: false });
   run.at = definition.expression;
   const { text } = state.piece.text;
   const result = evaluatePast(definition, records, bill.plan.period, text.seasons);
@@ -163,9 +201,15 @@ export function recordsBefore(run: Run, bill: BillState, state: PieceState): His
   ];
 }
 
-function notePast(bill: BillState, { name }: QuantityEntry, { take, over }: PastDefinition, { asked, known, value }: { asked: number; known: number; value: number }): void {
+function notePast(
+  bill: BillState,
+  { name }: QuantityEntry,
+  { take, over }: PastDefinition,
+  { asked, known, value }: { asked: number; known: number; value: number },
+): void {
   if (take.kind === 'streak') {
-    if (asked > known) bill.notes?.add(`"${name}": ${known} in a row known; earlier periods are not, the row may be longer.`);
+    if (asked > known)
+      bill.notes?.add(`"${name}": ${known} in a row known; earlier periods are not, the row may be longer.`);
   } else if (known < asked) {
     const none = known === 0 && !over.includesThis ? `; it is ${wordNumber(value)}` : '';
     bill.notes?.add(`"${name}": ${known} of ${asked} earlier periods known${none}.`);
@@ -173,7 +217,13 @@ function notePast(bill: BillState, { name }: QuantityEntry, { take, over }: Past
 }
 
 /** Notes a printed figure that differs from what its printed parts give, beyond its rounding. */
-function comparePrinted(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, { printed, needs }: Known & { printed: number }): void {
+function comparePrinted(
+  run: Run,
+  bill: BillState,
+  state: PieceState,
+  quantity: QuantityEntry,
+  { printed, needs }: Known & { printed: number },
+): void {
   const { definition, rounding, unit, name, slot } = quantity;
   if (definition.kind !== 'formula' && definition.kind !== 'pick') return;
   if (firstMissing(state, needs)) return;
@@ -181,11 +231,20 @@ function comparePrinted(run: Run, bill: BillState, state: PieceState, quantity: 
   const asPrinted = rounding ?? { step: Number(`1e-${decimalsOf(printed)}`), mode: 'nearest' as const };
   if (!Number.isFinite(exact) || isSame(roundToStep(exact, asPrinted), state.values[slot]!)) return;
   const words = wordNumber(roundToStep(exact, asPrinted), asPrinted.step);
-  bill.notes?.add(`"${name}": the bill prints ${wordNumber(printed)} ${unit}, worked out from its parts it is ${words} ${unit}.`.replace(/ +/g, ' ').replace(/ ([,.])/g, '$1'));
+  bill.notes?.add(
+    `"${name}": the bill prints ${wordNumber(printed)} ${unit}, worked out from its parts it is ${words} ${unit}.`
+      .replace(/ +/g, ' ')
+      .replace(/ ([,.])/g, '$1'),
+  );
 }
 
 /** Error for a value that a line needs and nobody gives. */
-export function missingError(bill: BillState, cause: Missing, line: string, unitOf: (name: string) => string): PriceError {
+export function missingError(
+  bill: BillState,
+  cause: Missing,
+  line: string,
+  unitOf: (name: string) => string,
+): PriceError {
   const { period } = bill.plan;
   const about = { period, name: cause.name };
   const when = wordPeriod(period);
@@ -195,10 +254,19 @@ export function missingError(bill: BillState, cause: Missing, line: string, unit
     case 'month':
       return new PriceError(`${when}: ${cause.detail}`, about);
     case 'contract':
-      return new PriceError(`${when}: the contract does not give "${cause.name}"${withUnit}, which line "${line}" needs. Add it to the contract inputs.`, about);
+      return new PriceError(
+        `${when}: the contract does not give "${cause.name}"${withUnit}, which line "${line}" needs. Add it to the contract inputs.`,
+        about,
+      );
     case 'given':
-      return new PriceError(`${when}: nothing gives "${cause.name}"${withUnit}, which line "${line}" needs; it is said by the bill, not by the meter. Give it for this period.`, about);
+      return new PriceError(
+        `${when}: nothing gives "${cause.name}"${withUnit}, which line "${line}" needs; it is said by the bill, not by the meter. Give it for this period.`,
+        about,
+      );
     case 'printed':
-      return new PriceError(`${when}: the bill does not give "${cause.name}"${withUnit}, which line "${line}" needs.`, about);
+      return new PriceError(
+        `${when}: the bill does not give "${cause.name}"${withUnit}, which line "${line}" needs.`,
+        about,
+      );
   }
 }

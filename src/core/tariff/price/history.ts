@@ -17,13 +17,22 @@ export interface HistoryRecord {
 }
 
 /** Records of months told by the caller, oldest first. */
-export function tellHistory(schedule: Schedule, from: string, history: Record<string, number[]> | undefined): HistoryRecord[] {
+export function tellHistory(
+  schedule: Schedule,
+  from: string,
+  history: Record<string, number[]> | undefined,
+): HistoryRecord[] {
   const names = Object.entries(history ?? {}).filter(([name]) => schedule.slots.has(name));
   const length = Math.max(0, ...names.map(([, values]) => values.length));
   const records: HistoryRecord[] = [];
   for (let back = length; back >= 1; back--) {
     const period = { from: addMonths(from, -back), to: addMonths(from, -back + 1) };
-    const record = { period, values: new Float64Array(sizeOf(schedule)), known: new Uint8Array(sizeOf(schedule)), isTold: true };
+    const record = {
+      period,
+      values: new Float64Array(sizeOf(schedule)),
+      known: new Uint8Array(sizeOf(schedule)),
+      isTold: true,
+    };
     for (const [name, values] of names) {
       const value = values[values.length - back];
       if (value === undefined || !Number.isFinite(value)) continue;
@@ -60,7 +69,9 @@ export function completeTold(record: HistoryRecord, text: ScheduleText, present:
     const { definition, slot, rounding } = quantity;
     if (known[slot] === 1 || (definition.kind !== 'formula' && definition.kind !== 'pick')) continue;
     if (!expressionsOfQuantity(quantity).every(({ slots }) => slots.every((part) => known[part] === 1))) continue;
-    const value = attempt(() => (definition.kind === 'formula' ? definition.expression.evaluate(values) : pickValue(definition, values)));
+    const value = attempt(() =>
+      definition.kind === 'formula' ? definition.expression.evaluate(values) : pickValue(definition, values),
+    );
     if (value === undefined || !Number.isFinite(value)) continue;
     values[slot] = rounding ? roundToStep(value, rounding) : value;
     known[slot] = 1;
@@ -79,7 +90,11 @@ function attempt(work: () => number): number | undefined {
 
 /** Value of a pick: the step with the greatest beginning that is reached (to 1e-12). */
 export function pickValue(
-  definition: { of: { evaluate(v: Float64Array): number }; steps: { from: number; value: { evaluate(v: Float64Array): number } }[]; otherwise: { evaluate(v: Float64Array): number } },
+  definition: {
+    of: { evaluate(v: Float64Array): number };
+    steps: { from: number; value: { evaluate(v: Float64Array): number } }[];
+    otherwise: { evaluate(v: Float64Array): number };
+  },
   values: Float64Array,
 ): number {
   const at = definition.of.evaluate(values);
@@ -101,24 +116,41 @@ export interface PastResult {
  *
  * @param records  Earlier periods, oldest first, then the present one if the span includes it
  */
-export function evaluatePast(definition: PastDefinition, records: HistoryRecord[], present: BillingPeriod, seasons: SeasonTable | undefined): PastResult {
+export function evaluatePast(
+  definition: PastDefinition,
+  records: HistoryRecord[],
+  present: BillingPeriod,
+  seasons: SeasonTable | undefined,
+): PastResult {
   const { expression, take, over, season } = definition;
   if (take.kind === 'streak') return streak(definition, records);
-  const asked = over.kind === 'year' ? records.filter(({ period }) => period.from.slice(0, 4) === present.from.slice(0, 4)) : records.slice(-(over.count + (over.includesThis ? 1 : 0)));
+  const asked =
+    over.kind === 'year'
+      ? records.filter(({ period }) => period.from.slice(0, 4) === present.from.slice(0, 4))
+      : records.slice(-(over.count + (over.includesThis ? 1 : 0)));
   const known = asked.filter((record) => expression.slots.every((slot) => record.known[slot] === 1));
   const kept = season ? known.filter(({ period }) => isInSeason(period, season, seasons)) : known;
   const values = kept.map((record) => expression.evaluate(record.values));
   const askedCount = over.kind === 'last' ? over.count : monthsOfYearBefore(present.from);
   const knownEarlier = over.includesThis ? Math.max(0, known.length - 1) : known.length;
   const { value, index } = takeOf(take, values);
-  return { value, asked: askedCount, known: Math.min(askedCount, knownEarlier), setBy: index === undefined ? undefined : kept[index]!.period };
+  return {
+    value,
+    asked: askedCount,
+    known: Math.min(askedCount, knownEarlier),
+    setBy: index === undefined ? undefined : kept[index]!.period,
+  };
 }
 
 function monthsOfYearBefore(from: string): number {
   return Number(from.slice(5, 7)) - 1;
 }
 
-function isInSeason(period: BillingPeriod, season: NonNullable<PastDefinition['season']>, seasons: SeasonTable | undefined): boolean {
+function isInSeason(
+  period: BillingPeriod,
+  season: NonNullable<PastDefinition['season']>,
+  seasons: SeasonTable | undefined,
+): boolean {
   if (!seasons) return true;
   const { days, inSeason } = seasonDays(period, seasons);
   const inside = inSeason[season.index]!;

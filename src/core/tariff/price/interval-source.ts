@@ -39,8 +39,17 @@ export function layGround(schedule: Schedule, plans: PeriodPlan[], grid: Pricing
     const texts = [...new Set(plan.pieces.map((piece) => piece.text))];
     const first = Math.min(grid.count, Math.max(0, calendar.first));
     const end = Math.max(first, Math.min(grid.count, calendar.first + calendar.count));
-    if (end === first) throw new PriceError(`${wordPeriod(plan.period)}: the series has no interval of this period. Leave the period out, or add its readings.`, { period: plan.period });
-    return { ground, reductions: new Map(texts.map((text) => [text, planReduction(text, plan, ground, grid)])), first, end };
+    if (end === first)
+      throw new PriceError(
+        `${wordPeriod(plan.period)}: the series has no interval of this period. Leave the period out, or add its readings.`,
+        { period: plan.period },
+      );
+    return {
+      ground,
+      reductions: new Map(texts.map((text) => [text, planReduction(text, plan, ground, grid)])),
+      first,
+      end,
+    };
   });
 }
 
@@ -95,14 +104,19 @@ export class IntervalSource implements QuantitySource {
     if (plan.kind === 'peak') return this.peak(plan, reduction.classes, state, slot);
     const formula = { evaluate: definition.expression.evaluate, where: definition.where?.evaluate };
     const { cells } = plan;
-    if (definition.operation === 'sum') return sumCells(cells, this.load, formula, state.values, state.sums, slot * bill.pieces.length);
+    if (definition.operation === 'sum')
+      return sumCells(cells, this.load, formula, state.values, state.sums, slot * bill.pieces.length);
     const sign = definition.operation === 'highest' ? 1 : -1;
     if (definition.count === 1) {
       const { value, cell } = extremeCell(cells, this.load, formula, state.values, sign);
       this.setInstant(state, slot, plan, cell);
       return value;
     }
-    const best = extremeCells(cells, this.load, formula, state.values, { sign, count: definition.count, isDistinctDays: definition.isDistinctDays });
+    const best = extremeCells(cells, this.load, formula, state.values, {
+      sign,
+      count: definition.count,
+      isDistinctDays: definition.isDistinctDays,
+    });
     this.setInstant(state, slot, plan, best[0]?.cell ?? -1);
     return best.length === 0 ? 0 : best.reduce((sum, { value }) => sum + value, 0) / best.length;
   }
@@ -190,7 +204,11 @@ export function withCarriedChannels(schedule: Schedule, load: LoadSeries): { loa
     const first = load.quality.findIndex((quality) => quality !== 2);
     return first >= 0 && Number.isNaN(values[first]!) && values.every((value) => Number.isNaN(value));
   };
-  const absent = { kwh: isAbsent(load.kwh), lagging: isAbsent(load.kvarhLagging), leading: isAbsent(load.kvarhLeading) };
+  const absent = {
+    kwh: isAbsent(load.kwh),
+    lagging: isAbsent(load.kvarhLagging),
+    leading: isAbsent(load.kvarhLeading),
+  };
   const used = channelsUsed(schedule);
   for (const [name, channels] of used) {
     for (const channel of channels) {
@@ -202,19 +220,25 @@ export function withCarriedChannels(schedule: Schedule, load: LoadSeries): { loa
   }
   if (!absent.leading || absent.lagging) return { load };
   const isNetUsed = [...used.values()].some((channels) => channels.some((channel) => channelOf(channel).usesLeading));
-  const note = isNetUsed ? 'The series does not carry leading kvarh: net and apparent values count it as 0.' : undefined;
+  const note = isNetUsed
+    ? 'The series does not carry leading kvarh: net and apparent values count it as 0.'
+    : undefined;
   return { load: { ...load, kvarhLeading: new Float64Array(load.kwh.length) }, note };
 }
 
 function absentError(channel: string, name: string): PriceError {
-  return new PriceError(`The series does not carry ${channel}, which "${name}" measures. Bring in a file that has it, or price from the bills' figures.`, { name: channel });
+  return new PriceError(
+    `The series does not carry ${channel}, which "${name}" measures. Bring in a file that has it, or price from the bills' figures.`,
+    { name: channel },
+  );
 }
 
 function channelsUsed(schedule: Schedule): Map<string, ChannelName[]> {
   const used = new Map<string, ChannelName[]>();
   for (const { quantities } of schedule.texts) {
     for (const { name, definition } of quantities) {
-      if (definition.kind === 'measure') used.set(name, [...definition.expression.channels, ...(definition.where?.channels ?? [])]);
+      if (definition.kind === 'measure')
+        used.set(name, [...definition.expression.channels, ...(definition.where?.channels ?? [])]);
       else if (definition.kind === 'value') used.set(name, definition.expression.channels);
     }
   }

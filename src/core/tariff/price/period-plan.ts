@@ -45,7 +45,20 @@ export function wordPeriod({ from, to }: BillingPeriod): string {
 }
 
 /** Names of the months. */
-export const months = ['January', 'February', 'March', 'April', 'May', 'June', 'July', 'August', 'September', 'October', 'November', 'December'];
+export const months = [
+  'January',
+  'February',
+  'March',
+  'April',
+  'May',
+  'June',
+  'July',
+  'August',
+  'September',
+  'October',
+  'November',
+  'December',
+];
 
 /**
  * Lays out the periods: checks their order, cuts them into pieces.
@@ -62,21 +75,40 @@ export function planPeriods(schedule: Schedule, periods: readonly BillingPeriod[
     const endMs = localDateStartMs(period.to, schedule.timeZone);
     const pieces = cutPieces(schedule, textPlans, period, days);
     const { from, to } = period;
-    return { index, period: { from, to }, startMs, endMs, days, hours: (endMs - startMs) / 3_600_000, firstDay, pieces };
+    return {
+      index,
+      period: { from, to },
+      startMs,
+      endMs,
+      days,
+      hours: (endMs - startMs) / 3_600_000,
+      firstDay,
+      pieces,
+    };
   });
 }
 
 function checkPeriod({ inForce }: Schedule, period: BillingPeriod, before: BillingPeriod | undefined): void {
   const { from, to } = period;
   if (!isCalendarDate(from) || !isCalendarDate(to) || from >= to) {
-    throw new PriceError(`${from} to ${to} is no billing period. Give two dates YYYY-MM-DD, the second after the first.`, { period });
+    throw new PriceError(
+      `${from} to ${to} is no billing period. Give two dates YYYY-MM-DD, the second after the first.`,
+      { period },
+    );
   }
-  if (dayNumber(to) - dayNumber(from) > 1100) throw new PriceError(`${wordPeriod(period)} is longer than three years. Check its dates.`, { period });
+  if (dayNumber(to) - dayNumber(from) > 1100)
+    throw new PriceError(`${wordPeriod(period)} is longer than three years. Check its dates.`, { period });
   if (before && from < before.to) {
-    throw new PriceError(`${wordPeriod(period)} begins before the period above it ends, ${before.to}. Give the periods in order.`, { period });
+    throw new PriceError(
+      `${wordPeriod(period)} begins before the period above it ends, ${before.to}. Give the periods in order.`,
+      { period },
+    );
   }
   if (inForce !== null && from < inForce) {
-    throw new PriceError(`${wordPeriod(period)} begins on ${from}, but the schedule is in force from ${inForce} on. Choose the schedule of that time.`, { period });
+    throw new PriceError(
+      `${wordPeriod(period)} begins on ${from}, but the schedule is in force from ${inForce} on. Choose the schedule of that time.`,
+      { period },
+    );
   }
 }
 

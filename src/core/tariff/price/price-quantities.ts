@@ -14,7 +14,11 @@ import { PrintedSource } from './printed-source';
  * @returns bills in the order of the rows; a note marks each as priced from printed quantities
  * @throws {PriceError} where a line needs what no bill gives, naming bill, quantity and line
  */
-export function priceQuantities(schedule: Schedule, rows: PrintedRow[], options: Omit<PriceOptions, 'periods'> = {}): PricedBill[] {
+export function priceQuantities(
+  schedule: Schedule,
+  rows: PrintedRow[],
+  options: Omit<PriceOptions, 'periods'> = {},
+): PricedBill[] {
   checkNames(schedule, options);
   checkRows(rows);
   const plans = planPeriods(schedule, rows);
@@ -34,7 +38,10 @@ function checkRows(rows: PrintedRow[]): void {
   for (const { from, to, quantities } of rows) {
     for (const [name, value] of Object.entries(quantities)) {
       if (typeof value !== 'number' || Number.isNaN(value) || !Number.isFinite(value)) {
-        throw new PriceError(`"${name}" must be a number, got ${String(value)}. Leave it out where the bill does not print it.`, { period: { from, to }, name });
+        throw new PriceError(
+          `"${name}" must be a number, got ${String(value)}. Leave it out where the bill does not print it.`,
+          { period: { from, to }, name },
+        );
       }
     }
   }
@@ -43,6 +50,7 @@ function checkRows(rows: PrintedRow[]): void {
 function noteStrange(schedule: Schedule, row: PrintedRow, note: (text: string) => void): void {
   const known = new Set(schedule.texts.flatMap(({ quantities }) => quantities.map(({ name }) => name)));
   for (const name of Object.keys(row.quantities)) {
-    if (!known.has(name)) note(`The schedule has no quantity called "${name}"; it is not used. ${didYouMean(name, known)}`.trim());
+    if (!known.has(name))
+      note(`The schedule has no quantity called "${name}"; it is not used. ${didYouMean(name, known)}`.trim());
   }
 }

@@ -10,7 +10,12 @@ import type { PeriodPlan } from './period-plan';
 import { withPlace, type QuantitySource, type Run } from './run';
 
 /** Prepares a run: contract and given values by period, history, empty bills. */
-export function prepareRun(schedule: Schedule, plans: PeriodPlan[], options: Omit<PriceOptions, 'periods'>, how: { source: QuantitySource; isUnity: boolean; wantsNotes: boolean }): Run {
+export function prepareRun(
+  schedule: Schedule,
+  plans: PeriodPlan[],
+  options: Omit<PriceOptions, 'periods'>,
+  how: { source: QuantitySource; isUnity: boolean; wantsNotes: boolean },
+): Run {
   return {
     schedule,
     source: how.source,
@@ -23,9 +28,16 @@ export function prepareRun(schedule: Schedule, plans: PeriodPlan[], options: Omi
   };
 }
 
-function perPeriod(sets: Record<string, number> | Record<string, number>[] | undefined, count: number, what: string): (Record<string, number> | undefined)[] {
+function perPeriod(
+  sets: Record<string, number> | Record<string, number>[] | undefined,
+  count: number,
+  what: string,
+): (Record<string, number> | undefined)[] {
   if (!Array.isArray(sets)) return Array.from({ length: count }, () => sets);
-  if (sets.length !== count) throw new PriceError(`There are ${count} periods and ${sets.length} sets of "${what}". Give one for each period.`, { name: what });
+  if (sets.length !== count)
+    throw new PriceError(`There are ${count} periods and ${sets.length} sets of "${what}". Give one for each period.`, {
+      name: what,
+    });
   return sets;
 }
 
@@ -50,7 +62,11 @@ export function priceOne(run: Run, bill: BillState): void {
  */
 export function checkNames(schedule: Schedule, options: Omit<PriceOptions, 'periods'>): void {
   const inputs = new Set(schedule.texts.flatMap(({ contract }) => contract.map(({ name }) => name)));
-  const given = new Set(schedule.texts.flatMap(({ quantities }) => quantities.filter(({ definition }) => definition.kind === 'given').map(({ name }) => name)));
+  const given = new Set(
+    schedule.texts.flatMap(({ quantities }) =>
+      quantities.filter(({ definition }) => definition.kind === 'given').map(({ name }) => name),
+    ),
+  );
   refuse([options.contract ?? []].flat(), inputs, 'contract input');
   refuse(options.given ?? [], given, 'quantity given by the bill');
 }
@@ -62,7 +78,8 @@ function refuse(sets: Record<string, number>[], known: Set<string>, what: string
         const remedy = didYouMean(name, known, known.size ? `It has ${[...known].join(', ')}.` : 'It has none.');
         throw new PriceError(`The schedule has no ${what} called "${name}". ${remedy}`, { name });
       }
-      if (typeof value !== 'number' || !Number.isFinite(value)) throw new PriceError(`"${name}" must be a number, got ${String(value)}.`, { name });
+      if (typeof value !== 'number' || !Number.isFinite(value))
+        throw new PriceError(`"${name}" must be a number, got ${String(value)}.`, { name });
     }
   }
 }

@@ -41,7 +41,10 @@ export class PrintedSource implements QuantitySource {
     const definition = quantity.definition as Measured;
     const image = activeImage(run, state, definition);
     const printed = this.printed(bill, quantity);
-    if (image?.factor === 0 && (image.constant === 0 || definition.kind === 'value' || definition.operation !== 'sum')) {
+    if (
+      image?.factor === 0 &&
+      (image.constant === 0 || definition.kind === 'value' || definition.operation !== 'sum')
+    ) {
       setRounded(run, bill, state, quantity, image.constant);
       return;
     }
@@ -55,11 +58,17 @@ export class PrintedSource implements QuantitySource {
       return;
     }
     state.missing[quantity.slot] = missing;
-    for (const [i, values] of state.samples.entries()) values[quantity.slot] = someActive[i]! * (image && image.factor !== 0 ? image.factor : 1);
+    for (const [i, values] of state.samples.entries())
+      values[quantity.slot] = someActive[i]! * (image && image.factor !== 0 ? image.factor : 1);
   }
 
   /** The printed active measure of the same kind, window and cell. */
-  private partnerOf(bill: BillState, state: PieceState, quantity: QuantityEntry, basis: 'kwh' | 'kw'): number | undefined {
+  private partnerOf(
+    bill: BillState,
+    state: PieceState,
+    quantity: QuantityEntry,
+    basis: 'kwh' | 'kw',
+  ): number | undefined {
     const key = kindKey(quantity.definition as Measured);
     for (const other of state.piece.text.text.quantities) {
       const { definition } = other;
@@ -97,6 +106,7 @@ function activeImage(run: Run, state: PieceState, { expression, channel }: Measu
   });
   if (results.every((result) => isSame(result, results[0]!))) return { factor: 0, constant: results[0]!, basis };
   const factors = results.map((result, i) => result / someActive[i]!);
-  return factors.every((factor) => isSame(factor, factors[0]!)) ? { factor: factors[0]!, constant: 0, basis } : undefined;
+  return factors.every((factor) => isSame(factor, factors[0]!))
+    ? { factor: factors[0]!, constant: 0, basis }
+    : undefined;
 }
-

@@ -30,7 +30,9 @@ export function planReduction(text: TextPlan, plan: PeriodPlan, ground: CellGrou
     return definition.kind === 'measure' ? [{ quantity, definition }] : [];
   });
   const byClass = measured.filter(({ definition }) => isPlainSum(definition) || layout.isPeak(definition));
-  const windows = [...new Set(byClass.flatMap(({ definition }) => (definition.window === undefined ? [] : [definition.window])))];
+  const windows = [
+    ...new Set(byClass.flatMap(({ definition }) => (definition.window === undefined ? [] : [definition.window]))),
+  ];
   const { classOf, masks } = layout.classify(windows);
   for (const { quantity, definition } of measured) {
     const measure = layout.planMeasure(definition, windows, masks);
@@ -43,18 +45,28 @@ export function planReduction(text: TextPlan, plan: PeriodPlan, ground: CellGrou
 
 /** Whether a measure, or a value taken at its instant, reads reactive energy. */
 function readsReactive({ text }: TextPlan, { name }: QuantityEntry, definition: MeasureDefinition): boolean {
-  const atIt = text.quantities.flatMap((other) => (other.definition.kind === 'value' && other.definition.at === name ? [other.definition.expression] : []));
+  const atIt = text.quantities.flatMap((other) =>
+    other.definition.kind === 'value' && other.definition.at === name ? [other.definition.expression] : [],
+  );
   const expressions = [definition.expression, ...(definition.where ? [definition.where] : []), ...atIt];
-  return expressions.some(({ channels }) => channels.some((channel) => channelOf(channel).usesLagging || channelOf(channel).usesLeading));
+  return expressions.some(({ channels }) =>
+    channels.some((channel) => channelOf(channel).usesLagging || channelOf(channel).usesLeading),
+  );
 }
 
 function isPlainSum({ operation, channel, each, where }: MeasureDefinition): boolean {
-  return operation === 'sum' && channel !== undefined && channel !== 'kvah' && where === undefined && each === undefined;
+  return (
+    operation === 'sum' && channel !== undefined && channel !== 'kvah' && where === undefined && each === undefined
+  );
 }
 
-function needsOf(measures: ReadonlyMap<number, MeasurePlan>, measured: { quantity: QuantityEntry }[]): ClassPlan['needs'] {
+function needsOf(
+  measures: ReadonlyMap<number, MeasurePlan>,
+  measured: { quantity: QuantityEntry }[],
+): ClassPlan['needs'] {
   const plans = measured.map(({ quantity }) => measures.get(quantity.slot)!);
-  const has = (kind: string, test: (channel: string) => boolean): boolean => plans.some((plan) => plan.kind === kind && 'channel' in plan && test(plan.channel));
+  const has = (kind: string, test: (channel: string) => boolean): boolean =>
+    plans.some((plan) => plan.kind === kind && 'channel' in plan && test(plan.channel));
   return {
     kwh: has('sum', (channel) => channel === 'kwh'),
     reactive: has('sum', (channel) => channel !== 'kwh'),
@@ -79,7 +91,9 @@ class Layout {
   isPeak({ operation, channel, each, where, count }: MeasureDefinition): boolean {
     const isChannel = channel === 'kw' || channel === 'kva';
     const window = this.text.text.demandWindow;
-    const isInterval = each === 'interval' || (each === 'demand window' && (window === undefined || window.minutes <= this.grid.stepMinutes));
+    const isInterval =
+      each === 'interval' ||
+      (each === 'demand window' && (window === undefined || window.minutes <= this.grid.stepMinutes));
     return operation === 'highest' && isChannel && isInterval && where === undefined && count === 1;
   }
 
@@ -126,7 +140,12 @@ class Layout {
     const key = `${kind}|${window ?? ''}`;
     let cells = this.cellsByKey.get(key);
     if (!cells) {
-      cells = layCells(kind, this.ground, window === undefined ? null : this.inside(window), this.text.text.demandWindow);
+      cells = layCells(
+        kind,
+        this.ground,
+        window === undefined ? null : this.inside(window),
+        this.text.text.demandWindow,
+      );
       this.cellsByKey.set(key, cells);
       this.cells.push(cells);
     }

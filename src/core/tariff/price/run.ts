@@ -51,13 +51,22 @@ export function setRounded(run: Run, bill: BillState, state: PieceState, quantit
 }
 
 /** A value rounded; refuses what is no finite number. */
-export function roundedValue(run: Run, bill: BillState, name: string, value: number, rounding: Rounding | undefined): number {
+export function roundedValue(
+  run: Run,
+  bill: BillState,
+  name: string,
+  value: number,
+  rounding: Rounding | undefined,
+): number {
   if (!Number.isFinite(value)) {
     const where = run.at ? ` (${run.at.path})` : '';
-    throw new PriceError(`${wordPeriod(bill.plan.period)}: "${name}" has no finite value${where}. Check the series for values that are no numbers.`, {
-      period: bill.plan.period,
-      name,
-    });
+    throw new PriceError(
+      `${wordPeriod(bill.plan.period)}: "${name}" has no finite value${where}. Check the series for values that are no numbers.`,
+      {
+        period: bill.plan.period,
+        name,
+      },
+    );
   }
   return rounding ? roundToStep(value, rounding) : value;
 }
@@ -69,9 +78,12 @@ export function withPlace<T>(run: Run, bill: BillState, work: () => T): T {
   } catch (error) {
     if (!(error instanceof FormulaFault)) throw error;
     const path = run.at?.path ?? '';
-    throw new PriceError(`${wordPeriod(bill.plan.period)}: ${path}: the formula ${error.message} (characters ${error.start + 1} to ${error.end}).`, {
-      period: bill.plan.period,
-      name: path.split('.')[1] ?? path,
-    });
+    throw new PriceError(
+      `${wordPeriod(bill.plan.period)}: ${path}: the formula ${error.message} (characters ${error.start + 1} to ${error.end}).`,
+      {
+        period: bill.plan.period,
+        name: path.split('.')[1] ?? path,
+      },
+    );
   }
 }

@@ -1,5 +1,13 @@
 import { decimalsOf } from '../../units';
-import type { ChargeDefinition, ChargeEntry, Expression, NumberPlace, QuantityEntry, Schedule, ScheduleText } from '../model';
+import type {
+  ChargeDefinition,
+  ChargeEntry,
+  Expression,
+  NumberPlace,
+  QuantityEntry,
+  Schedule,
+  ScheduleText,
+} from '../model';
 
 /** A charge with its line's place and what it needs. */
 export interface ChargePlan {

@@ -39,7 +39,17 @@ export function readCharge(entry: MapEntry, context: TextContext): void {
   const add = (name: string, window: string | undefined): void => {
     const when = head.when && reader.bind(head.when, window);
     const label = labelOf(head.words.label, entry.key, window);
-    const charge: ChargeEntry = { name, slot: scope.slots.of(name), path: entry.path, group: head.group, rounding: head.rounding, ...head.words, label, when, definition: raw.define(window) };
+    const charge: ChargeEntry = {
+      name,
+      slot: scope.slots.of(name),
+      path: entry.path,
+      group: head.group,
+      rounding: head.rounding,
+      ...head.words,
+      label,
+      when,
+      definition: raw.define(window),
+    };
     context.charges.push(charge);
   };
   const info = { kind: 'line', unit: context.currency, hasUnit: true } as const;
@@ -49,9 +59,10 @@ export function readCharge(entry: MapEntry, context: TextContext): void {
     return;
   }
   const members = windows.map((window) => memberName(entry.key, window));
-  for (const member of members) if (scope.made.has(member) || scope.later.has(member)) {
-    problems.add(entry, `makes a line "${member}", a name that is used already.`, 'Every name is used once.');
-  }
+  for (const member of members)
+    if (scope.made.has(member) || scope.later.has(member)) {
+      problems.add(entry, `makes a line "${member}", a name that is used already.`, 'Every name is used once.');
+    }
   for (const [i, window] of windows.entries()) add(members[i]!, window);
   scope.makeFamily(entry.key, { kind: 'line', windows, members }, info);
 }
@@ -63,7 +74,10 @@ function labelOf(label: string | undefined, name: string, window: string | undef
 
 /** `fuelRider` in words: `Fuel rider`. */
 function wordsOf(name: string): string {
-  const words = name.replace(/([a-z0-9])([A-Z])/g, (_, before: string, after: string) => `${before} ${after.toLowerCase()}`);
+  const words = name.replace(
+    /([a-z0-9])([A-Z])/g,
+    (_, before: string, after: string) => `${before} ${after.toLowerCase()}`,
+  );
   return words.charAt(0).toUpperCase() + words.slice(1);
 }
 
@@ -83,7 +97,11 @@ function readHead(entry: MapEntry, map: MapTree, context: TextContext): Head | u
   }
   const group = asText(groupTree, problems, `Write ${groups.join(', ')}.`);
   if (group && !groups.includes(group.text)) {
-    problems.add(groupTree, `"${group.text}" is not a group.`, didYouMean(group.text, groups, `Write ${groups.join(', ')}.`));
+    problems.add(
+      groupTree,
+      `"${group.text}" is not a group.`,
+      didYouMean(group.text, groups, `Write ${groups.join(', ')}.`),
+    );
     return undefined;
   }
   const roundTree = valueOf(map, 'round');
@@ -109,12 +127,16 @@ function readRaw(entry: MapEntry, map: MapTree, context: TextContext): RawCharge
   const { problems, reader, seasons } = context;
   if (checkTornValues(map, problems)) return undefined;
   const kind = kindOf(entry, map, context);
-  if (!kind || !checkFields(map, [...fieldsOf[kind], ...common], `a charge that says ${kind}`, problems)) return undefined;
+  if (!kind || !checkFields(map, [...fieldsOf[kind], ...common], `a charge that says ${kind}`, problems))
+    return undefined;
   switch (kind) {
     case 'amount': {
       const amount = readPlace(valueOf(map, 'amount')!, reader, { seasons });
       if (!amount) return undefined;
-      return { expressions: expressionsIn(amount), define: (window) => ({ kind, amount: bindPlace(amount, window, reader) }) };
+      return {
+        expressions: expressionsIn(amount),
+        define: (window) => ({ kind, amount: bindPlace(amount, window, reader) }),
+      };
     }
     case 'per':
       return readPer(map, context);
@@ -136,7 +158,11 @@ function readPer(map: MapTree, context: TextContext): RawCharge | undefined {
   };
 }
 
-function perOf(raw: RawExpression, window: string | undefined, { reader, scope }: TextContext): { per: Expression; perName: string; unit: string } {
+function perOf(
+  raw: RawExpression,
+  window: string | undefined,
+  { reader, scope }: TextContext,
+): { per: Expression; perName: string; unit: string } {
   const per = reader.bind(raw, window);
   const perName = per.names[0] ?? (raw.formula.kind === 'name' ? raw.formula.name : '');
   return { per, perName, unit: scope.made.get(perName)?.unit ?? perName };
@@ -197,7 +223,10 @@ function priceOf(tiers: RawTier[], { reader }: TextContext): RawPrice {
   return {
     expressions: tiers.flatMap((tier) => [...(tier.to ? [tier.to] : []), ...expressionsIn(tier.rate)]),
     bind: (window) =>
-      tiers.map((tier) => ({ to: tier.to && reader.bind(tier.to, window), rate: bindPlace(tier.rate, window, reader) })),
+      tiers.map((tier) => ({
+        to: tier.to && reader.bind(tier.to, window),
+        rate: bindPlace(tier.rate, window, reader),
+      })),
   };
 }
 
@@ -222,7 +251,12 @@ function readTiers(tree: Tree, windows: string[] | undefined, context: TextConte
   return priceOf(tiers, context);
 }
 
-function readTier(item: Tree, isLast: boolean, windows: string[] | undefined, context: TextContext): RawTier | undefined {
+function readTier(
+  item: Tree,
+  isLast: boolean,
+  windows: string[] | undefined,
+  context: TextContext,
+): RawTier | undefined {
   const { problems, reader, seasons } = context;
   const map = asMap(item, problems, 'Write { to: 1000, rate: 0.08 }.');
   if (!map || checkTornValues(map, problems) || !checkFields(map, ['to', 'rate'], 'a tier', problems)) return undefined;
@@ -254,7 +288,12 @@ function readPercent(map: MapTree, context: TextContext): RawCharge | undefined 
   if (!price) return undefined;
   return {
     expressions: [...(per ? [per] : []), ...price.expressions],
-    define: (window) => ({ kind: 'percent', ...of, ...(per ? perOf(per, window, context) : {}), price: price.bind(window) }),
+    define: (window) => ({
+      kind: 'percent',
+      ...of,
+      ...(per ? perOf(per, window, context) : {}),
+      price: price.bind(window),
+    }),
   };
 }
 
@@ -271,7 +310,8 @@ function readPerNameOfPercent(map: MapTree, { problems, reader }: TextContext): 
 /** Names of lines above: `all above`, one name or a list; a family means all its lines. */
 function readLines(tree: Tree, context: TextContext): { of: string[]; isAllAbove: boolean } | undefined {
   const { problems, scope, charges } = context;
-  if (tree.kind === 'scalar' && tree.text === 'all above') return { of: charges.map((charge) => charge.name), isAllAbove: true };
+  if (tree.kind === 'scalar' && tree.text === 'all above')
+    return { of: charges.map((charge) => charge.name), isAllAbove: true };
   const words = asWords(tree, problems, 'Name lines above: [demand, energy], or all above.');
   const of: string[] = [];
   for (const word of words ?? []) {
@@ -283,7 +323,12 @@ function readLines(tree: Tree, context: TextContext): { of: string[]; isAllAbove
       const lines = charges.map((charge) => charge.name);
       if (isBelow) problems.add(tree, `"${word.text}" stands below this line;`, 'move this one down.');
       else if (kind) problems.add(word, `"${word.text}" is not a line of the bill.`, 'Name charges above.');
-      else problems.add(word, `no line above is called "${word.text}".`, didYouMean(word.text, lines, 'Name charges above.'));
+      else
+        problems.add(
+          word,
+          `no line above is called "${word.text}".`,
+          didYouMean(word.text, lines, 'Name charges above.'),
+        );
       return undefined;
     }
   }

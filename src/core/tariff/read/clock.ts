@@ -15,7 +15,8 @@ export function readSeasons(map: MapTree, problems: Problems): SeasonTable | und
   for (const entry of map.entries) {
     const index = table.names.push(entry.key) - 1;
     table.words.push('');
-    if (!/^[a-z][A-Za-z0-9]*$/.test(entry.key)) problems.add(entry, `"${entry.key}" is not a name.`, 'A name is a small letter, then letters and digits.');
+    if (!/^[a-z][A-Za-z0-9]*$/.test(entry.key))
+      problems.add(entry, `"${entry.key}" is not a name.`, 'A name is a small letter, then letters and digits.');
     const words = asWords(entry.value, problems, 'Write 05-01 to 10-31, or rest.');
     if (!words) return undefined;
     table.words[index] = words.map((word) => word.text).join(', ');
@@ -30,14 +31,22 @@ export function readSeasons(map: MapTree, problems: Problems): SeasonTable | und
 function fillSpan(word: ScalarTree, index: number, table: SeasonTable, problems: Problems): void {
   const [, fromMonth, fromDay, toMonth, toDay] = (spanOfYear.exec(word.text) ?? []).map(Number);
   if (!isDayOfYear(fromMonth, fromDay) || !isDayOfYear(toMonth, toDay)) {
-    problems.add(word, `"${word.text}" is not a span of the year.`, 'Write 05-01 to 10-31; 11-01 to 03-31 runs over the new year.');
+    problems.add(
+      word,
+      `"${word.text}" is not a span of the year.`,
+      'Write 05-01 to 10-31; 11-01 to 03-31 runs over the new year.',
+    );
     return;
   }
   const last = toMonth! * 32 + (toMonth === 2 && toDay === 28 ? 29 : toDay!);
   for (let day = fromMonth! * 32 + fromDay!; ; day = nextDay(day)) {
     const other = table.ofDay[day]!;
     if (other !== noSeason && other !== index) {
-      problems.add(word, `${wordDay(day)} is in season "${table.names[other]}" too.`, 'Every day belongs to one season.');
+      problems.add(
+        word,
+        `${wordDay(day)} is in season "${table.names[other]}" too.`,
+        'Every day belongs to one season.',
+      );
       return;
     }
     table.ofDay[day] = index;
@@ -50,7 +59,11 @@ function completeYear(map: MapTree, rest: MapEntry | undefined, table: SeasonTab
   for (let day = 33; ; day = nextDay(day)) {
     if (table.ofDay[day] === noSeason) {
       if (!rest) {
-        problems.add(map, `${wordDay(day)} belongs to no season.`, 'Together the seasons fill the year; one may be rest.');
+        problems.add(
+          map,
+          `${wordDay(day)} belongs to no season.`,
+          'Together the seasons fill the year; one may be rest.',
+        );
         return false;
       }
       table.ofDay[day] = restIndex;
@@ -77,7 +90,12 @@ function wordDay(day: number): string {
 const windowRemedy = 'Write { days: weekdays, hours: 08:00-20:00 }, a list of such rules, or { rest: peak }.';
 
 /** Reads one window of `windows`. `known` are the windows above it. */
-export function readWindow(entry: MapEntry, known: ReadonlyMap<string, WindowEntry>, seasons: SeasonTable | undefined, problems: Problems): WindowEntry | undefined {
+export function readWindow(
+  entry: MapEntry,
+  known: ReadonlyMap<string, WindowEntry>,
+  seasons: SeasonTable | undefined,
+  problems: Problems,
+): WindowEntry | undefined {
   const head = { name: entry.key, path: entry.path };
   if (!/^[a-z][A-Za-z0-9]*$/.test(entry.key)) {
     problems.add(entry, `"${entry.key}" is not a name.`, 'A name is a small letter, then letters and digits.');
@@ -88,7 +106,9 @@ export function readWindow(entry: MapEntry, known: ReadonlyMap<string, WindowEnt
   if (restTree && value.kind === 'map') {
     if (!checkFields(value, ['rest'], 'a window that is the rest', problems)) return undefined;
     const words = asWords(restTree, problems, 'Name one window or a list.');
-    const names = words?.map((word) => (known.has(word.text) ? word.text : unknownWindow(word, known.keys(), problems)));
+    const names = words?.map((word) =>
+      known.has(word.text) ? word.text : unknownWindow(word, known.keys(), problems),
+    );
     if (!names || names.some((name) => name === undefined)) return undefined;
     return { ...head, rules: [], restOf: names as string[], words: `all time outside ${names.join(', ')}` };
   }
@@ -102,7 +122,11 @@ export function readWindow(entry: MapEntry, known: ReadonlyMap<string, WindowEnt
 /** Notes a window nobody made. */
 export function unknownWindow(word: ScalarTree, known: Iterable<string>, problems: Problems): undefined {
   const names = [...known];
-  problems.add(word, `no window above is called "${word.text}".`, didYouMean(word.text, names, names.length ? `There are ${names.join(', ')}.` : 'Make it under windows.'));
+  problems.add(
+    word,
+    `no window above is called "${word.text}".`,
+    didYouMean(word.text, names, names.length ? `There are ${names.join(', ')}.` : 'Make it under windows.'),
+  );
   return undefined;
 }
 
@@ -111,7 +135,11 @@ function wordRule(tree: Tree): string {
   const part = (key: string): string => {
     const value = valueOf(tree, key);
     if (!value) return '';
-    return value.kind === 'list' ? value.items.map((item) => (item.kind === 'scalar' ? item.text : '')).join(', ') : value.kind === 'scalar' ? value.text : '';
+    return value.kind === 'list'
+      ? value.items.map((item) => (item.kind === 'scalar' ? item.text : '')).join(', ')
+      : value.kind === 'scalar'
+        ? value.text
+        : '';
   };
   return [part('season'), part('days'), part('hours')].filter((text) => text !== '').join(' ');
 }
@@ -122,7 +150,11 @@ function readRule(tree: Tree, seasons: SeasonTable | undefined, problems: Proble
   const days = valueOf(map, 'days');
   const hours = valueOf(map, 'hours');
   if (!days || !hours) {
-    problems.add(map, `does not say its ${days ? 'hours' : 'days'}.`, 'Both are required: { days: every day, hours: 22:00-06:00 }.');
+    problems.add(
+      map,
+      `does not say its ${days ? 'hours' : 'days'}.`,
+      'Both are required: { days: every day, hours: 22:00-06:00 }.',
+    );
     return undefined;
   }
   const mask = readDays(days, problems);
@@ -133,11 +165,20 @@ function readRule(tree: Tree, seasons: SeasonTable | undefined, problems: Proble
 }
 
 /** Indices of the seasons named. */
-export function readSeasonNames(tree: Tree, seasons: SeasonTable | undefined, problems: Problems): number[] | undefined {
+export function readSeasonNames(
+  tree: Tree,
+  seasons: SeasonTable | undefined,
+  problems: Problems,
+): number[] | undefined {
   const words = asWords(tree, problems, 'Name a season.');
   const indices = words?.map((word) => {
     const index = seasons?.names.indexOf(word.text) ?? -1;
-    if (index < 0) problems.add(word, `no season is called "${word.text}".`, didYouMean(word.text, seasons?.names ?? [], 'Make it under seasons.'));
+    if (index < 0)
+      problems.add(
+        word,
+        `no season is called "${word.text}".`,
+        didYouMean(word.text, seasons?.names ?? [], 'Make it under seasons.'),
+      );
     return index;
   });
   return indices?.every((index) => index >= 0) ? indices : undefined;

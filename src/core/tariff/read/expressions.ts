@@ -73,9 +73,19 @@ export class ExpressionReader {
         const message = `${node.fn}(...) is used, but the schedule doesn't say what it is in a period without kWh.`;
         isFine = this.complain(tree, node, message, `Add zeroKwh: ${rule}.`);
       } else if (node.fn === 'total' && !(first?.kind === 'name' && this.scope.families.has(first.name))) {
-        isFine = this.complain(tree, node, 'total( ) takes the name of a quantity that has one value per window.', 'Make it with inEach.');
+        isFine = this.complain(
+          tree,
+          node,
+          'total( ) takes the name of a quantity that has one value per window.',
+          'Make it with inEach.',
+        );
       } else if (node.fn === 'daysSince' && !(first?.kind === 'name' && this.dates.has(first.name))) {
-        isFine = this.complain(tree, node, 'daysSince( ) takes a contract input with unit: date.', 'Declare it under contract.');
+        isFine = this.complain(
+          tree,
+          node,
+          'daysSince( ) takes a contract input with unit: date.',
+          'Declare it under contract.',
+        );
       }
     });
     return isFine;
@@ -101,18 +111,26 @@ export class ExpressionReader {
   private unknownName(name: string): [string, string] {
     if (this.scope.later.has(name)) return [`"${name}" comes later in the file;`, 'move it above.'];
     if (functionArity.has(name)) return [`"${name}" is a function.`, `Write ${name}( ) with its values.`];
-    if (isChannelName(name)) return [`"${name}" is a channel of the meter, not a quantity.`, `Measure it above, for instance total: { ${name.startsWith('kwh') || name.endsWith('h') || name.startsWith('kvarh') ? 'sum' : 'highest'}: ${name} }.`];
+    if (isChannelName(name))
+      return [
+        `"${name}" is a channel of the meter, not a quantity.`,
+        `Measure it above, for instance total: { ${name.startsWith('kwh') || name.endsWith('h') || name.startsWith('kvarh') ? 'sum' : 'highest'}: ${name} }.`,
+      ];
     const later = nearestName(name, this.scope.later.keys());
     const near = nearestName(name, [...this.scope.knownNames(), 'days', 'hours']);
     const remedy = near ?? later;
-    return [`nothing is called "${name}".`, remedy ? `Did you mean "${remedy}"?` : 'Names used here are made above: contract inputs, rates, quantities.'];
+    return [
+      `nothing is called "${name}".`,
+      remedy ? `Did you mean "${remedy}"?` : 'Names used here are made above: contract inputs, rates, quantities.',
+    ];
   }
 
   private familiesIn(formula: Formula, rules: ExpressionRules): string[] {
     const found = new Set<string>();
     const collect = (node: Formula): void => {
       if (node.kind === 'call' && node.fn === 'total') return;
-      if (node.kind === 'name' && this.scope.families.has(node.name) && !(rules.channels && isChannelName(node.name))) found.add(node.name);
+      if (node.kind === 'name' && this.scope.families.has(node.name) && !(rules.channels && isChannelName(node.name)))
+        found.add(node.name);
       if (node.kind === 'call') node.args.forEach(collect);
       else if (node.kind === 'sign') collect(node.operand);
       else if (node.kind === 'binary') [node.left, node.right].forEach(collect);
@@ -122,13 +140,20 @@ export class ExpressionReader {
   }
 
   /** Windows over which the families of some formulas run; none if no family is used. Different ones are a problem. */
-  windowsOf(expressions: (RawExpression | undefined)[], at: { offset: number; path: string }): string[] | undefined | 'problem' {
+  windowsOf(
+    expressions: (RawExpression | undefined)[],
+    at: { offset: number; path: string },
+  ): string[] | undefined | 'problem' {
     let first: { name: string; windows: string[] } | undefined;
     for (const name of expressions.flatMap((expression) => expression?.families ?? [])) {
       const { windows } = this.scope.families.get(name)!;
       first ??= { name, windows };
       if ([...windows].sort().join() !== [...first.windows].sort().join()) {
-        this.problems.add(at, `"${first.name}" and "${name}" stand for different windows.`, 'Use total( ), or the member you mean, such as kwhPeak.');
+        this.problems.add(
+          at,
+          `"${first.name}" and "${name}" stand for different windows.`,
+          'Use total( ), or the member you mean, such as kwhPeak.',
+        );
         return 'problem';
       }
     }
@@ -197,7 +222,9 @@ export class ExpressionReader {
   checkLookedBack(): void {
     for (const { name, tree, offset } of this.lookedBack) {
       if (this.scope.made.has(name)) continue;
-      const message = this.scope.families.has(name) ? `"${name}" stands for one value per window.` : `nothing is called "${name}".`;
+      const message = this.scope.families.has(name)
+        ? `"${name}" stands for one value per window.`
+        : `nothing is called "${name}".`;
       if (this.scope.families.has(name)) continue;
       this.problems.add({ offset, path: tree.path }, message, didYouMean(name, this.scope.knownNames()));
     }
@@ -232,6 +259,7 @@ function unitOfCall(fn: string, units: string[]): string {
     return units.some((unit) => unit.endsWith('h')) ? 'kVAh' : 'kVA';
   }
   if (fn === 'if') return units.slice(1).find((unit) => unit !== '') ?? '';
-  if (['min', 'max', 'hypot', 'excess', 'between', 'abs', 'total'].includes(fn)) return units.find((unit) => unit !== '') ?? '';
+  if (['min', 'max', 'hypot', 'excess', 'between', 'abs', 'total'].includes(fn))
+    return units.find((unit) => unit !== '') ?? '';
   return '';
 }

@@ -42,7 +42,8 @@ export function asWords(tree: Tree, problems: Problems, remedy: string): ScalarT
 
 /** A plain number, or a problem. */
 export function asNumber(tree: Tree, problems: Problems, remedy: string): number | undefined {
-  if (tree.kind === 'scalar' && typeof tree.value === 'number' && Number.isFinite(tree.value) && tree.text !== '') return tree.value;
+  if (tree.kind === 'scalar' && typeof tree.value === 'number' && Number.isFinite(tree.value) && tree.text !== '')
+    return tree.value;
   const text = tree.kind === 'scalar' ? `"${tree.text}" is not a number.` : 'is not a number.';
   const comma = tree.kind === 'scalar' ? /^(-?\d+),(\d+)$/.exec(tree.text) : null;
   problems.add(tree, text, comma ? `Write ${comma[1]}.${comma[2]}.` : remedy);
@@ -85,7 +86,11 @@ export function checkTornValues(map: MapTree, problems: Problems): boolean {
     }
     const isOpen = (before.value.text.match(/\(/g) ?? []).length > (before.value.text.match(/\)/g) ?? []).length;
     if (isOpen || nullKey.test(entry.key)) {
-      problems.add({ offset: entry.offset, path: before.path }, 'a comma ends the value here.', 'Write ; between the values: max(a; b).');
+      problems.add(
+        { offset: entry.offset, path: before.path },
+        'a comma ends the value here.',
+        'Write ; between the values: max(a; b).',
+      );
       return true;
     }
   }

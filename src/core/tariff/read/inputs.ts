@@ -21,7 +21,11 @@ export function readContractInput(entry: MapEntry, context: TextContext): void {
 }
 
 function contractInput(entry: MapEntry, problems: Problems): Omit<ContractInput, 'name' | 'slot' | 'path'> | undefined {
-  const map = asMap(entry.value, problems, 'Write { unit: kVA, default: 2000, range: [100, 50000], label: Contract power }.');
+  const map = asMap(
+    entry.value,
+    problems,
+    'Write { unit: kVA, default: 2000, range: [100, 50000], label: Contract power }.',
+  );
   if (!map || !checkFields(map, contractFields, 'a contract input', problems)) return undefined;
   const unitTree = valueOf(map, 'unit');
   const unit = unitTree ? asText(unitTree, problems, 'Write unit: kVA, or flag, or date.') : { text: '' };
@@ -30,7 +34,11 @@ function contractInput(entry: MapEntry, problems: Problems): Omit<ContractInput,
   const range = rangeOf(map, problems);
   if (!unit || (defaultTree && standard === undefined) || range === 'problem') return undefined;
   if (standard !== undefined && range && (standard < range[0] || standard > range[1])) {
-    problems.add(defaultTree!, `${standard} lies outside the range ${range[0]} to ${range[1]}.`, 'Change the default or the range.');
+    problems.add(
+      defaultTree!,
+      `${standard} lies outside the range ${range[0]} to ${range[1]}.`,
+      'Change the default or the range.',
+    );
     return undefined;
   }
   if (unit.text === 'date' && standard !== undefined && !isDateNumber(standard)) {
@@ -82,5 +90,6 @@ export function readRate(entry: MapEntry, context: TextContext): void {
   const bound = bindPlace(place, undefined, reader);
   scope.make(entry.key, { kind: 'rate', unit: '', hasUnit: false });
   context.rates.push({ name: entry.key, slot: scope.slots.of(entry.key), path: entry.path, place: bound });
-  if (bound.kind === 'months' && bound.byMonth.size === 0) problems.add(entry, 'has no month.', 'Write { months: { 2026-07: 0.0031 } }.');
+  if (bound.kind === 'months' && bound.byMonth.size === 0)
+    problems.add(entry, 'has no month.', 'Write { months: { 2026-07: 0.0031 } }.');
 }

@@ -6,7 +6,14 @@ import { entryOf, isWord, valueOf, type MapEntry, type MapTree, type Tree } from
 const orderedSections: ReadonlySet<string> = new Set(['quantities', 'charges']);
 
 /** Sections of named entries that a version may change one by one. */
-const entrySections: ReadonlySet<string> = new Set(['contract', 'rates', 'seasons', 'windows', 'quantities', 'charges']);
+const entrySections: ReadonlySet<string> = new Set([
+  'contract',
+  'rates',
+  'seasons',
+  'windows',
+  'quantities',
+  'charges',
+]);
 
 /** Sections a version may change. */
 export const versionSections = [...entrySections, 'rounding', 'zeroKwh', 'demandWindow', 'holidays', 'note'];
@@ -51,10 +58,21 @@ function mergeEntries(section: string, base: MapTree, changes: MapTree, problems
     const existing = entryOf(merged, change.key);
     if (isWord(change.value, 'removed')) {
       if (existing) merged = { ...merged, entries: merged.entries.filter((entry) => entry !== existing) };
-      else problems.add(change, 'is not there to be removed.', didYouMean(change.key, merged.entries.map((entry) => entry.key)));
+      else
+        problems.add(
+          change,
+          'is not there to be removed.',
+          didYouMean(
+            change.key,
+            merged.entries.map((entry) => entry.key),
+          ),
+        );
     } else if (existing) {
       const value = mergeEntry(section, existing.value, change.value);
-      merged = { ...merged, entries: merged.entries.map((entry) => (entry === existing ? { ...change, value } : entry)) };
+      merged = {
+        ...merged,
+        entries: merged.entries.map((entry) => (entry === existing ? { ...change, value } : entry)),
+      };
     } else {
       merged = { ...merged, entries: insert(section, merged.entries, change, problems) };
     }

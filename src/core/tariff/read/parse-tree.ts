@@ -41,8 +41,10 @@ export function parseTree(text: string): { root: MapTree; problems: Problems } {
 function addSyntaxErrors(document: Document, problems: Problems): void {
   for (const error of document.errors) {
     const at = { offset: error.pos[0], path: '' };
-    if (error.code === 'MULTIPLE_DOCS') problems.add(at, 'holds more than one document.', 'Keep one schedule in a file.');
-    else problems.add(at, `is not YAML: ${error.message.replace(/\.$/, '')}.`, 'Check colons, indents and brackets here.');
+    if (error.code === 'MULTIPLE_DOCS')
+      problems.add(at, 'holds more than one document.', 'Keep one schedule in a file.');
+    else
+      problems.add(at, `is not YAML: ${error.message.replace(/\.$/, '')}.`, 'Check colons, indents and brackets here.');
   }
 }
 
@@ -51,7 +53,11 @@ class TreeBuilder {
 
   build(node: unknown, path: string, offset: number): Tree {
     if (isAlias(node)) {
-      this.problems.add({ offset: node.range?.[0] ?? offset, path }, 'points to another part of the file (*).', 'Write it out.');
+      this.problems.add(
+        { offset: node.range?.[0] ?? offset, path },
+        'points to another part of the file (*).',
+        'Write it out.',
+      );
       return emptyScalar(path, offset);
     }
     if (isMap(node)) {
@@ -61,7 +67,12 @@ class TreeBuilder {
     if (isSeq(node)) {
       this.refuseDecoration(node, path);
       const at = node.range?.[0] ?? offset;
-      return { kind: 'list', path, offset: at, items: node.items.map((item, i) => this.build(item, `${path}.${i + 1}`, at)) };
+      return {
+        kind: 'list',
+        path,
+        offset: at,
+        items: node.items.map((item, i) => this.build(item, `${path}.${i + 1}`, at)),
+      };
     }
     if (isScalar(node)) {
       this.refuseDecoration(node, path);
@@ -72,7 +83,8 @@ class TreeBuilder {
 
   private refuseDecoration(node: Node & { anchor?: string; tag?: string }, path: string): void {
     const at = { offset: node.range?.[0] ?? 0, path };
-    if (node.anchor !== undefined) this.problems.add(at, `carries an anchor (&${node.anchor}).`, 'Leave it out; write values where they are used.');
+    if (node.anchor !== undefined)
+      this.problems.add(at, `carries an anchor (&${node.anchor}).`, 'Leave it out; write values where they are used.');
     else if (node.tag !== undefined) this.problems.add(at, `carries a tag (${node.tag}).`, 'Leave it out.');
   }
 
@@ -85,11 +97,20 @@ class TreeBuilder {
       const entryPath = path === '' ? key.text : `${path}.${key.text}`;
       const first = seen.get(key.text);
       if (first !== undefined) {
-        this.problems.add({ offset: key.offset, path: entryPath }, `stands twice (first in line ${this.problems.lineOf(first)}).`, 'Keep one.');
+        this.problems.add(
+          { offset: key.offset, path: entryPath },
+          `stands twice (first in line ${this.problems.lineOf(first)}).`,
+          'Keep one.',
+        );
         continue;
       }
       seen.set(key.text, key.offset);
-      entries.push({ key: key.text, offset: key.offset, path: entryPath, value: this.build(pair.value, entryPath, key.offset) });
+      entries.push({
+        key: key.text,
+        offset: key.offset,
+        path: entryPath,
+        value: this.build(pair.value, entryPath, key.offset),
+      });
     }
     return { kind: 'map', path, offset, entries };
   }
@@ -98,7 +119,11 @@ class TreeBuilder {
     const { key } = pair;
     if (!isScalar(key)) {
       const at = (key as Node | null)?.range?.[0] ?? offset;
-      this.problems.add({ offset: at, path: path === '' ? '' : path }, 'has a key that is no single word.', 'Use a name or a number before the colon.');
+      this.problems.add(
+        { offset: at, path: path === '' ? '' : path },
+        'has a key that is no single word.',
+        'Use a name or a number before the colon.',
+      );
       return undefined;
     }
     this.refuseDecoration(key, path);
@@ -107,11 +132,24 @@ class TreeBuilder {
   }
 }
 
-function scalarTree(value: unknown, source: string | undefined, type: string | undefined, path: string, offset: number): ScalarTree {
+function scalarTree(
+  value: unknown,
+  source: string | undefined,
+  type: string | undefined,
+  path: string,
+  offset: number,
+): ScalarTree {
   const isPlain = type === 'PLAIN' || type === undefined;
   const text = isPlain ? (source ?? '') : String(value);
   const kept = typeof value === 'string' || typeof value === 'number' || typeof value === 'boolean' ? value : null;
-  return { kind: 'scalar', path, offset, text: kept === null && isPlain && source === undefined ? '' : text, value: kept, textOffset: isPlain ? offset : offset + 1 };
+  return {
+    kind: 'scalar',
+    path,
+    offset,
+    text: kept === null && isPlain && source === undefined ? '' : text,
+    value: kept,
+    textOffset: isPlain ? offset : offset + 1,
+  };
 }
 
 function emptyScalar(path: string, offset: number): ScalarTree {

@@ -13,7 +13,12 @@ export interface RawPast {
 }
 
 const takes = ['highest', 'lowest', 'mean', 'mean of 2 highest', 'sum', 'count', 'streak'];
-const overs = ['last 11 periods', 'this and last 11 periods', 'earlier periods of this year', 'this and earlier periods of this year'];
+const overs = [
+  'last 11 periods',
+  'this and last 11 periods',
+  'earlier periods of this year',
+  'this and earlier periods of this year',
+];
 
 /** Reads `past`, `take`, `over`, `season`. */
 export function readPast(map: MapTree, context: TextContext): RawPast | undefined {
@@ -47,7 +52,11 @@ function takeOf(map: MapTree, { problems }: TextContext): PastDefinition['take']
   for (const kind of ['highest', 'lowest', 'mean', 'sum', 'count', 'streak'] as const) {
     if (word.text === kind) return { kind, words: kind };
   }
-  problems.add(word, `"${word.text}" is nothing to take of the past.`, didYouMean(word.text, takes, `Write ${takes.join(', ')}.`));
+  problems.add(
+    word,
+    `"${word.text}" is nothing to take of the past.`,
+    didYouMean(word.text, takes, `Write ${takes.join(', ')}.`),
+  );
   return undefined;
 }
 
@@ -66,7 +75,8 @@ function overOf(map: MapTree, isStreak: boolean, { problems }: TextContext): Pas
   const word = asText(tree, problems, remedy);
   if (!word) return undefined;
   const last = /^(this and )?last (\d+) periods?$/.exec(word.text);
-  if (last && Number(last[2]) >= 1) return { kind: 'last', count: Number(last[2]), includesThis: last[1] !== undefined, words: word.text };
+  if (last && Number(last[2]) >= 1)
+    return { kind: 'last', count: Number(last[2]), includesThis: last[1] !== undefined, words: word.text };
   const year = /^(this and )?earlier periods of this year$/.exec(word.text);
   if (year) return { kind: 'year', count: 0, includesThis: year[1] !== undefined, words: word.text };
   problems.add(word, `"${word.text}" is no span of periods.`, didYouMean(word.text, overs, remedy));
@@ -80,7 +90,11 @@ function seasonOf(map: MapTree, { problems, seasons }: TextContext): PastDefinit
   if (!word) return 'problem';
   const found = /^(wholly|mostly)\s+(\S+)$/.exec(word.text);
   if (!found) {
-    problems.add(word, `"${word.text}" does not say how much of a period lies in the season.`, 'Write wholly winter, or mostly winter.');
+    problems.add(
+      word,
+      `"${word.text}" does not say how much of a period lies in the season.`,
+      'Write wholly winter, or mostly winter.',
+    );
     return 'problem';
   }
   const name = found[2]!;

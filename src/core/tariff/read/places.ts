@@ -34,7 +34,11 @@ export function readPlace(tree: Tree, reader: ExpressionReader, rules: PlaceRule
 }
 
 function misplacedMonths(tree: MapTree, reader: ExpressionReader): undefined {
-  reader.problems.add(tree, 'gives values by month, which only rates can.', 'Name it under rates and use its name here.');
+  reader.problems.add(
+    tree,
+    'gives values by month, which only rates can.',
+    'Name it under rates and use its name here.',
+  );
   return undefined;
 }
 
@@ -55,12 +59,21 @@ function readMonths(tree: MapTree, months: Tree, reader: ExpressionReader): RawP
   return { kind: 'months', byMonth, path: `${tree.path}.months` };
 }
 
-function readByWindow(tree: MapTree, reader: ExpressionReader, rules: PlaceRules, windows: string[]): RawPlace | undefined {
+function readByWindow(
+  tree: MapTree,
+  reader: ExpressionReader,
+  rules: PlaceRules,
+  windows: string[],
+): RawPlace | undefined {
   const { problems } = reader;
   const byWindow = new Map<string, RawPlace>();
   for (const entry of tree.entries) {
     if (windows.includes(entry.key)) continue;
-    problems.add(entry, `"${entry.key}" is not one of the windows charged here.`, didYouMean(entry.key, windows, `They are ${windows.join(', ')}.`));
+    problems.add(
+      entry,
+      `"${entry.key}" is not one of the windows charged here.`,
+      didYouMean(entry.key, windows, `They are ${windows.join(', ')}.`),
+    );
     return undefined;
   }
   for (const window of windows) {

@@ -43,7 +43,9 @@ export class Problems {
   throwIfAny(): void {
     if (this.isEmpty) return;
     const sorted = [...this.found.values()].sort((a, b) => a.offset - b.offset);
-    throw new ScheduleError(sorted.map(({ line, column, path, message, remedy }) => ({ line, column, path, message, remedy })));
+    throw new ScheduleError(
+      sorted.map(({ line, column, path, message, remedy }) => ({ line, column, path, message, remedy })),
+    );
   }
 }
 

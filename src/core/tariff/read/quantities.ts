@@ -51,7 +51,15 @@ export function readQuantity(entry: MapEntry, context: TextContext): void {
     const { definition, unit } = raw.define(window);
     const shown = unitText ?? unit;
     const hasUnit = unitText !== undefined || (definition.kind !== 'formula' && definition.kind !== 'pick');
-    const quantity: QuantityEntry = { name, slot: scope.slots.of(name), path: entry.path, unit: shown === 'flag' ? '' : shown, rounding, ...words, definition };
+    const quantity: QuantityEntry = {
+      name,
+      slot: scope.slots.of(name),
+      path: entry.path,
+      unit: shown === 'flag' ? '' : shown,
+      rounding,
+      ...words,
+      definition,
+    };
     context.quantities.push(quantity);
     return { kind: 'quantity', unit: quantity.unit, hasUnit };
   };
@@ -60,9 +68,14 @@ export function readQuantity(entry: MapEntry, context: TextContext): void {
     return;
   }
   const members = familyWindows.map((window) => memberName(entry.key, window));
-  for (const [i, member] of members.entries()) if (scope.made.has(member) || scope.later.has(member)) {
-    problems.add(entry, `makes "${member}" for window "${familyWindows[i]}", a name that is used already.`, 'Every name is used once.');
-  }
+  for (const [i, member] of members.entries())
+    if (scope.made.has(member) || scope.later.has(member)) {
+      problems.add(
+        entry,
+        `makes "${member}" for window "${familyWindows[i]}", a name that is used already.`,
+        'Every name is used once.',
+      );
+    }
   const infos = familyWindows.map((window, i) => add(members[i]!, window));
   scope.makeFamily(entry.key, { kind: 'quantity', windows: familyWindows, members }, infos[0]!);
 }
@@ -70,11 +83,17 @@ export function readQuantity(entry: MapEntry, context: TextContext): void {
 /** A broken family keeps its members known too. */
 function makeBroken(entry: MapEntry, map: MapTree | undefined, { scope, windows }: TextContext): void {
   const inEach = valueOf(map, 'inEach');
-  const words = inEach?.kind === 'list' ? inEach.items.flatMap((item) => (item.kind === 'scalar' ? [item.text] : [])) : [];
+  const words =
+    inEach?.kind === 'list' ? inEach.items.flatMap((item) => (item.kind === 'scalar' ? [item.text] : [])) : [];
   const known = words.filter((word) => windows.has(word));
   const info: NameInfo = { kind: 'broken', unit: '', hasUnit: true };
   if (known.length === 0) scope.make(entry.key, info);
-  else scope.makeFamily(entry.key, { kind: 'broken', windows: known, members: known.map((word) => memberName(entry.key, word)) }, info);
+  else
+    scope.makeFamily(
+      entry.key,
+      { kind: 'broken', windows: known, members: known.map((word) => memberName(entry.key, word)) },
+      info,
+    );
 }
 
 function roundingOf(map: MapTree, { problems }: TextContext): Rounding | undefined | 'problem' {
@@ -87,16 +106,28 @@ function readRaw(entry: MapEntry, map: MapTree, context: TextContext): RawQuanti
   if (checkTornValues(map, problems)) return undefined;
   const said = kinds.filter((kind) => entryOf(map, kind));
   if (said.length !== 1) {
-    const isStrange = said.length === 0 && !checkFields(map, [...kinds, ...common, ...kinds.flatMap((kind) => fieldsOf[kind])], 'a quantity', problems);
+    const isStrange =
+      said.length === 0 &&
+      !checkFields(map, [...kinds, ...common, ...kinds.flatMap((kind) => fieldsOf[kind])], 'a quantity', problems);
     if (isStrange) return undefined;
-    const message = said.length === 0 ? 'does not say what it is.' : said.length === 2 ? `says both ${said.join(' and ')}.` : `says ${said.join(', ')} at once.`;
+    const message =
+      said.length === 0
+        ? 'does not say what it is.'
+        : said.length === 2
+          ? `says both ${said.join(' and ')}.`
+          : `says ${said.join(', ')} at once.`;
     problems.add(entry, message, `Say exactly one of ${kinds.join(', ')}.`);
     return undefined;
   }
   const kind = said[0]!;
-  if (!checkFields(map, [kind, ...fieldsOf[kind], ...common], `a quantity that says ${kind}`, problems)) return undefined;
+  if (!checkFields(map, [kind, ...fieldsOf[kind], ...common], `a quantity that says ${kind}`, problems))
+    return undefined;
   if (isChannelName(entry.key) && !isPlainlyNamed(entry, map, kind)) {
-    problems.add(entry, `carries the name of a channel, but is not its plain ${channelOf(entry.key).isPower ? 'highest' : 'sum'}.`, 'Choose another name.');
+    problems.add(
+      entry,
+      `carries the name of a channel, but is not its plain ${channelOf(entry.key).isPower ? 'highest' : 'sum'}.`,
+      'Choose another name.',
+    );
     return undefined;
   }
   switch (kind) {
@@ -123,7 +154,11 @@ function isPlainlyNamed(entry: MapEntry, map: MapTree, kind: Kind): boolean {
   return isChannel && (kind === 'sum' || kind === 'highest') && !entryOf(map, 'where');
 }
 
-function readMeasure(map: MapTree, operation: 'sum' | 'highest' | 'lowest', context: TextContext): RawQuantity | undefined {
+function readMeasure(
+  map: MapTree,
+  operation: 'sum' | 'highest' | 'lowest',
+  context: TextContext,
+): RawQuantity | undefined {
   const { problems, reader } = context;
   const tree = valueOf(map, operation)!;
   const raw = reader.parse(tree, { channels: true });
@@ -135,9 +170,14 @@ function readMeasure(map: MapTree, operation: 'sum' | 'highest' | 'lowest', cont
   if (!raw || (whereTree && !where) || windows === 'problem' || each === 'problem' || !count) return undefined;
   const channel = raw.formula.kind === 'name' && isChannelName(raw.formula.name) ? raw.formula.name : undefined;
   const unit = reader.unitOf(reader.bind(raw, undefined, { channels: true }));
-  if (operation === 'sum' && !mayBeSummed(map, tree.path, unit, channel, each, whereTree !== undefined, context)) return undefined;
+  if (operation === 'sum' && !mayBeSummed(map, tree.path, unit, channel, each, whereTree !== undefined, context))
+    return undefined;
   if (reader.bind(raw, undefined, { channels: true }).channels.length === 0) {
-    problems.add(tree, 'reads no channel of the meter.', 'Measure a channel such as kwh or kva, or write formula: instead.');
+    problems.add(
+      tree,
+      'reads no channel of the meter.',
+      'Measure a channel such as kwh or kva, or write formula: instead.',
+    );
     return undefined;
   }
   return {
@@ -159,7 +199,15 @@ function readMeasure(map: MapTree, operation: 'sum' | 'highest' | 'lowest', cont
   };
 }
 
-function mayBeSummed(map: MapTree, path: string, unit: string, channel: ChannelName | undefined, each: CellKind | undefined, hasWhere: boolean, { problems }: TextContext): boolean {
+function mayBeSummed(
+  map: MapTree,
+  path: string,
+  unit: string,
+  channel: ChannelName | undefined,
+  each: CellKind | undefined,
+  hasWhere: boolean,
+  { problems }: TextContext,
+): boolean {
   const at = { offset: valueOf(map, 'sum')!.offset, path };
   if (['kW', 'kvar', 'kVA'].includes(unit)) {
     const what = channel ? `"${channel}" is a power; powers are not summed.` : 'adds powers; powers are not summed.';
@@ -169,11 +217,18 @@ function mayBeSummed(map: MapTree, path: string, unit: string, channel: ChannelN
   const isPlain = channel !== undefined && channel !== 'kvah' && !hasWhere;
   if (isPlain || each) return true;
   const what = channel && !hasWhere ? `sums ${channel}` : hasWhere ? 'sums under a condition' : 'sums a formula';
-  problems.add({ ...at, path: map.path }, `${what} but does not say over what.`, 'Add each: interval, hour or day. For the whole period write a formula.');
+  problems.add(
+    { ...at, path: map.path },
+    `${what} but does not say over what.`,
+    'Add each: interval, hour or day. For the whole period write a formula.',
+  );
   return false;
 }
 
-function windowsOf(map: MapTree, { problems, windows, usedWindows }: TextContext): { in?: string; inEach?: string[] } | 'problem' {
+function windowsOf(
+  map: MapTree,
+  { problems, windows, usedWindows }: TextContext,
+): { in?: string; inEach?: string[] } | 'problem' {
   const single = valueOf(map, 'in');
   const each = valueOf(map, 'inEach');
   if (single && each) {
@@ -181,13 +236,19 @@ function windowsOf(map: MapTree, { problems, windows, usedWindows }: TextContext
     return 'problem';
   }
   if (single && single.kind !== 'scalar') {
-    problems.add(single, 'takes one window.', 'Say inEach for one value per window; to pool them, define a window that holds them together.');
+    problems.add(
+      single,
+      'takes one window.',
+      'Say inEach for one value per window; to pool them, define a window that holds them together.',
+    );
     return 'problem';
   }
   const tree = single ?? each;
   if (!tree) return {};
   const words = asWords(tree, problems, 'Name windows: [peak, offPeak].') ?? [];
-  const names = words.map((word) => (windows.has(word.text) ? word.text : unknownWindow(word, windows.keys(), problems)));
+  const names = words.map((word) =>
+    windows.has(word.text) ? word.text : unknownWindow(word, windows.keys(), problems),
+  );
   if (names.length === 0 || names.some((name) => name === undefined)) return 'problem';
   for (const name of names) usedWindows.add(name!);
   if (new Set(names).size < names.length) {
@@ -203,7 +264,8 @@ function eachOf(map: MapTree, operation: string, { problems }: TextContext): Cel
   const remedy = `Write each: ${operation === 'sum' ? 'interval, hour or day' : 'interval, demand window, hour or day'}.`;
   const word = asText(tree, problems, remedy);
   if (word && cells.includes(word.text)) return word.text as CellKind;
-  if (word) problems.add(word, `"${word.text}" is nothing a measure is settled over.`, didYouMean(word.text, cells, remedy));
+  if (word)
+    problems.add(word, `"${word.text}" is nothing a measure is settled over.`, didYouMean(word.text, cells, remedy));
   return 'problem';
 }
 
@@ -227,7 +289,8 @@ function readValue(map: MapTree, context: TextContext): RawQuantity | undefined 
   const { problems, reader, scope } = context;
   const raw = reader.parse(valueOf(map, 'value')!, { channels: true });
   const atTree = valueOf(map, 'at');
-  if (!atTree) problems.add(map, 'does not say at which instant.', 'Add at: and the name of a highest or lowest above.');
+  if (!atTree)
+    problems.add(map, 'does not say at which instant.', 'Add at: and the name of a highest or lowest above.');
   const at = atTree && reader.parse(atTree);
   if (!raw || !at) return undefined;
   if (at.formula.kind !== 'name' || !hasInstant(at.formula.name, context)) {
@@ -242,7 +305,12 @@ function readValue(map: MapTree, context: TextContext): RawQuantity | undefined 
     expressions: [raw, at],
     define: (window) => ({
       unit,
-      definition: { kind: 'value', expression: reader.bind(raw, window, { channels: true }), channel, at: reader.bind(at, window).names[0]! },
+      definition: {
+        kind: 'value',
+        expression: reader.bind(raw, window, { channels: true }),
+        channel,
+        at: reader.bind(at, window).names[0]!,
+      },
     }),
   };
 }
@@ -282,7 +350,8 @@ function readPick(map: MapTree, { problems, reader }: TextContext): RawQuantity 
   const otherwise = reader.parse(otherwiseTree);
   const steps = from.entries.map((step) => {
     const isNumber = /^-?\d+(\.\d+)?$/.test(step.key);
-    if (!isNumber) problems.add(step, `"${step.key}" is not a number.`, 'Each step begins with the number it holds from.');
+    if (!isNumber)
+      problems.add(step, `"${step.key}" is not a number.`, 'Each step begins with the number it holds from.');
     return { from: Number(step.key), raw: step.key, value: isNumber ? reader.parse(step.value) : undefined };
   });
   if (!of || !otherwise || steps.some((step) => step.value === undefined)) return undefined;
@@ -318,5 +387,8 @@ function readGiven(map: MapTree, { problems }: TextContext): RawQuantity | undef
   const standard = numberOf('default');
   const unity = numberOf('unity');
   if (!unit || standard === 'problem' || unity === 'problem') return undefined;
-  return { expressions: [], define: () => ({ unit: unit.text, definition: { kind: 'given', default: standard, unity } }) };
+  return {
+    expressions: [],
+    define: () => ({ unit: unit.text, definition: { kind: 'given', default: standard, unity } }),
+  };
 }

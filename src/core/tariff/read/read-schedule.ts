@@ -13,8 +13,24 @@ import type { TextContext } from './text-reader';
 import { entryOf, isWord, valueOf, type MapEntry, type MapTree } from './tree';
 
 const sections = [
-  'schedule', 'title', 'currency', 'timeZone', 'source', 'inForce', 'demandWindow', 'holidays', 'straddle', 'rounding', 'zeroKwh',
-  'contract', 'rates', 'seasons', 'windows', 'quantities', 'charges', 'versions',
+  'schedule',
+  'title',
+  'currency',
+  'timeZone',
+  'source',
+  'inForce',
+  'demandWindow',
+  'holidays',
+  'straddle',
+  'rounding',
+  'zeroKwh',
+  'contract',
+  'rates',
+  'seasons',
+  'windows',
+  'quantities',
+  'charges',
+  'versions',
 ];
 const beginningOfTime = '0001-01-01';
 
@@ -52,13 +68,23 @@ function readHead(root: MapTree, problems: Problems): Head {
   };
   const id = text('schedule', 'Write schedule: and an id such as millrace-large.', true);
   if (id !== '' && !/^[a-z0-9]+(-[a-z0-9]+)*$/.test(id)) {
-    problems.add(entryOf(root, 'schedule')!, `"${id}" is not an id.`, 'Write small letters, digits and single hyphens: millrace-large.');
+    problems.add(
+      entryOf(root, 'schedule')!,
+      `"${id}" is not an id.`,
+      'Write small letters, digits and single hyphens: millrace-large.',
+    );
   }
   const currency = text('currency', 'Write currency: EUR.', true);
   const isCurrency = /^[A-Z]{3}$/.test(currency);
-  if (currency !== '' && !isCurrency) problems.add(entryOf(root, 'currency')!, `"${currency}" is not a currency.`, 'Write its three letters: EUR.');
+  if (currency !== '' && !isCurrency)
+    problems.add(entryOf(root, 'currency')!, `"${currency}" is not a currency.`, 'Write its three letters: EUR.');
   const timeZone = text('timeZone', 'Write timeZone: Europe/Lisbon.', true);
-  if (timeZone !== '' && !isTimeZone(timeZone)) problems.add(entryOf(root, 'timeZone')!, `"${timeZone}" is not a time zone.`, 'Write its name in the time zone database: Europe/Lisbon.');
+  if (timeZone !== '' && !isTimeZone(timeZone))
+    problems.add(
+      entryOf(root, 'timeZone')!,
+      `"${timeZone}" is not a time zone.`,
+      'Write its name in the time zone database: Europe/Lisbon.',
+    );
   return {
     id,
     title: text('title', 'Write title: and a few words.', false) || id,
@@ -84,7 +110,12 @@ function readStraddle(root: MapTree, problems: Problems): Straddle | undefined {
   const tree = valueOf(root, 'straddle');
   const word = tree && asText(tree, problems, `Write ${known.join(', ')}.`);
   const found = known.find((rule) => rule === word?.text);
-  if (word && !found) problems.add(word, `"${word.text}" is no way to divide a bill.`, didYouMean(word.text, known, `Write ${known.join(', ')}.`));
+  if (word && !found)
+    problems.add(
+      word,
+      `"${word.text}" is no way to divide a bill.`,
+      didYouMean(word.text, known, `Write ${known.join(', ')}.`),
+    );
   return found;
 }
 
@@ -130,7 +161,11 @@ function checkVersion(entry: MapEntry, inForce: string | null, problems: Problem
     return undefined;
   }
   if (inForce !== null && entry.key <= inForce) {
-    problems.add(entry, `does not lie after inForce, ${inForce}.`, 'Move the date, or put the change into the text above.');
+    problems.add(
+      entry,
+      `does not lie after inForce, ${inForce}.`,
+      'Move the date, or put the change into the text above.',
+    );
     return undefined;
   }
   const map = asMap(entry.value, problems, 'Write what changes from that day on.');
@@ -145,8 +180,19 @@ function checkUnused(root: MapTree, read: ReadText[], problems: Problems): void 
     for (const section of ['contract', 'rates']) {
       const map = valueOf(tree, section);
       for (const entry of map?.kind === 'map' ? map.entries : []) {
-        const others = [...read.flatMap(({ context }) => [...context.rates, ...context.contract])].map((other) => other.name);
-        if (!used.has(entry.key) && !isWord(entry.value, 'removed')) problems.add(entry, 'is used nowhere.', didYouMean(entry.key, others.filter((name) => used.has(name)), 'Use it or leave it out.'));
+        const others = [...read.flatMap(({ context }) => [...context.rates, ...context.contract])].map(
+          (other) => other.name,
+        );
+        if (!used.has(entry.key) && !isWord(entry.value, 'removed'))
+          problems.add(
+            entry,
+            'is used nowhere.',
+            didYouMean(
+              entry.key,
+              others.filter((name) => used.has(name)),
+              'Use it or leave it out.',
+            ),
+          );
       }
     }
   }
@@ -156,19 +202,30 @@ function checkUnused(root: MapTree, read: ReadText[], problems: Problems): void 
 function checkUnusedWindows(root: MapTree, read: ReadText[], problems: Problems): void {
   const base = valueOf(root, 'windows');
   const baseNames = base?.kind === 'map' ? base.entries.map((entry) => entry.key) : [];
-  const used = new Set(read.flatMap(({ context }) => [...context.usedWindows, ...[...context.windows.values()].flatMap((window) => window.restOf ?? [])]));
+  const used = new Set(
+    read.flatMap(({ context }) => [
+      ...context.usedWindows,
+      ...[...context.windows.values()].flatMap((window) => window.restOf ?? []),
+    ]),
+  );
   for (const version of versionMaps(root)) {
     const windows = valueOf(version, 'windows');
     for (const entry of windows?.kind === 'map' ? windows.entries : []) {
       if (baseNames.includes(entry.key) || used.has(entry.key)) continue;
-      problems.add(entry, 'is new in this version and used nowhere.', didYouMean(entry.key, baseNames, 'Use it or leave it out.'));
+      problems.add(
+        entry,
+        'is new in this version and used nowhere.',
+        didYouMean(entry.key, baseNames, 'Use it or leave it out.'),
+      );
     }
   }
 }
 
 function versionMaps(root: MapTree): MapTree[] {
   const versions = valueOf(root, 'versions');
-  return (versions?.kind === 'map' ? versions.entries : []).flatMap((entry) => (entry.value.kind === 'map' ? [entry.value] : []));
+  return (versions?.kind === 'map' ? versions.entries : []).flatMap((entry) =>
+    entry.value.kind === 'map' ? [entry.value] : [],
+  );
 }
 
 /** One order of all lines over all texts, each text's own order kept. */
@@ -180,7 +237,12 @@ function orderLines(texts: ScheduleText[], root: MapTree, problems: Problems): s
       const index = order.indexOf(name);
       if (index < 0) order.splice(at++, 0, name);
       else if (index >= at) at = index + 1;
-      else problems.add(entryOf(root, 'versions') ?? root, `line "${name}" changes its place from ${text.from} on.`, 'Give the line that comes back another name.');
+      else
+        problems.add(
+          entryOf(root, 'versions') ?? root,
+          `line "${name}" changes its place from ${text.from} on.`,
+          'Give the line that comes back another name.',
+        );
     }
   }
   return order;
@@ -192,15 +254,21 @@ function addNotes(root: MapTree, read: ReadText[], notes: Schedule['notes']): vo
   };
   const texts = read.map(({ text }) => text);
   const isDivided = texts.length > 1 || texts.some((text) => text.dependsOnSeason || text.dependsOnMonth);
-  if (isDivided && !valueOf(root, 'straddle')) add('straddle', 'The file does not say how a bill across two texts, seasons or rider months is divided: by days.');
-  if (!valueOf(root, 'inForce')) add('inForce', 'The file does not say from which day it holds: every period is priced.');
+  if (isDivided && !valueOf(root, 'straddle'))
+    add('straddle', 'The file does not say how a bill across two texts, seasons or rider months is divided: by days.');
+  if (!valueOf(root, 'inForce'))
+    add('inForce', 'The file does not say from which day it holds: every period is priced.');
   if (!valueOf(root, 'source')) add('source', 'The file does not say where the tariff was read.');
   if (!texts.some((text) => text.charges.length > 0)) add('charges', 'The schedule charges nothing.');
   for (const { text, context } of read) {
-    const needsWindow = text.quantities.some(({ definition }) => definition.kind === 'measure' && definition.each === 'demand window');
-    if (needsWindow && !text.demandWindow) add('demandWindow', "The file does not say the demand window: the series' own interval is taken.");
+    const needsWindow = text.quantities.some(
+      ({ definition }) => definition.kind === 'measure' && definition.each === 'demand window',
+    );
+    if (needsWindow && !text.demandWindow)
+      add('demandWindow', "The file does not say the demand window: the series' own interval is taken.");
     for (const quantity of text.quantities) {
-      if (!context.scope.used.has(quantity.name) && !isFamilyUsed(quantity.name, context)) add(quantity.path, `"${quantity.name}" is used by no line: it is shown, not charged.`);
+      if (!context.scope.used.has(quantity.name) && !isFamilyUsed(quantity.name, context))
+        add(quantity.path, `"${quantity.name}" is used by no line: it is shown, not charged.`);
     }
     addWindowNotes(text, add);
   }

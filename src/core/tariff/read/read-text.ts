@@ -23,7 +23,12 @@ export interface SharedParts {
 }
 
 /** Reads a merged text: resolves names, expands families, compiles formulas. */
-export function readText(root: MapTree, from: string, note: string | undefined, shared: SharedParts): { text: ScheduleText; context: TextContext } {
+export function readText(
+  root: MapTree,
+  from: string,
+  note: string | undefined,
+  shared: SharedParts,
+): { text: ScheduleText; context: TextContext } {
   const context = beginContext(root, shared);
   announceNames(root, context);
   for (const entry of entriesOf(root, 'contract', context)) readContractInput(entry, context);
@@ -32,7 +37,8 @@ export function readText(root: MapTree, from: string, note: string | undefined, 
   for (const entry of entriesOf(root, 'charges', context)) readCharge(entry, context);
   context.reader.checkLookedBack();
   completeUnits(context);
-  const { seasons, windows, holidays, demandWindow, rounding, zeroKwh, contract, rates, quantities, charges, scope } = context;
+  const { seasons, windows, holidays, demandWindow, rounding, zeroKwh, contract, rates, quantities, charges, scope } =
+    context;
   const text: ScheduleText = {
     from,
     note,
@@ -121,7 +127,12 @@ function readHolidays(root: MapTree, problems: Problems): HolidayRule {
   const calendar = valueOf(map, 'calendar');
   const name = calendar && asText(calendar, problems, 'Write PT, or IT-32.')?.text;
   const wrong = name === undefined ? undefined : problemWithCalendar(name);
-  if (wrong && name !== undefined) problems.add(calendar!, wrong, didYouMean(name, calendarCountries(), 'Write a country such as PT, or a part of one such as IT-32.'));
+  if (wrong && name !== undefined)
+    problems.add(
+      calendar!,
+      wrong,
+      didYouMean(name, calendarCountries(), 'Write a country such as PT, or a part of one such as IT-32.'),
+    );
   else rule.calendar = name;
   return rule;
 }
@@ -135,7 +146,12 @@ function readCalendar(root: MapTree, context: TextContext): void {
     const window = readWindow(entry, windows, context.seasons, problems);
     windows.set(entry.key, window ?? { name: entry.key, path: entry.path, words: '', rules: [] });
   }
-  if (windows.size > 30) problems.add(entryOf(root, 'windows')!, `there are ${windows.size} windows, at most 30 are read.`, 'Leave some out.');
+  if (windows.size > 30)
+    problems.add(
+      entryOf(root, 'windows')!,
+      `there are ${windows.size} windows, at most 30 are read.`,
+      'Leave some out.',
+    );
 }
 
 const nameSections: [string, NameInfo['kind']][] = [
@@ -160,7 +176,13 @@ function entriesOf(root: MapTree, section: string, { problems }: TextContext): M
 function completeUnits({ quantities, scope, reader }: TextContext): void {
   for (const quantity of quantities) {
     const { definition } = quantity;
-    if (definition.kind !== 'past' || quantity.unit !== '' || definition.take.kind === 'count' || definition.take.kind === 'streak') continue;
+    if (
+      definition.kind !== 'past' ||
+      quantity.unit !== '' ||
+      definition.take.kind === 'count' ||
+      definition.take.kind === 'streak'
+    )
+      continue;
     quantity.unit = reader.unitOf(definition.expression);
     const info = scope.made.get(quantity.name);
     if (info) info.unit = quantity.unit;

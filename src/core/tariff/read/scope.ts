@@ -67,14 +67,20 @@ export class Scope {
 
   private problemWith(name: string): { message: string; remedy: string } | undefined {
     if (!/^[a-z][A-Za-z0-9]*$/.test(name)) {
-      return { message: `"${name}" is not a name.`, remedy: 'A name is a small letter, then letters and digits: billedKva.' };
+      return {
+        message: `"${name}" is not a name.`,
+        remedy: 'A name is a small letter, then letters and digits: billedKva.',
+      };
     }
     if (['and', 'or', 'not', 'days', 'hours'].includes(name)) {
       return { message: `"${name}" is a word of the language.`, remedy: 'Choose another name.' };
     }
     const taken = this.taken.get(name);
     if (!taken) return undefined;
-    return { message: `"${name}" is already the name of ${taken.words} (line ${taken.line}).`, remedy: 'Every name is used once.' };
+    return {
+      message: `"${name}" is already the name of ${taken.words} (line ${taken.line}).`,
+      remedy: 'Every name is used once.',
+    };
   }
 
   /** Makes a name usable below. */

@@ -1,4 +1,14 @@
-import type { ContractInput, DemandWindow, HolidayRule, QuantityEntry, RateEntry, ScheduleText, SeasonTable, WindowEntry, ChargeEntry } from '../model';
+import type {
+  ContractInput,
+  DemandWindow,
+  HolidayRule,
+  QuantityEntry,
+  RateEntry,
+  ScheduleText,
+  SeasonTable,
+  WindowEntry,
+  ChargeEntry,
+} from '../model';
 import type { Rounding } from '../../units';
 import type { ExpressionReader } from './expressions';
 import type { Problems } from './problems';

@@ -7,7 +7,10 @@ export function addWindowNotes(text: ScheduleText, add: (path: string, message: 
   const seen = new Set<string>();
   for (const [family, { windows }] of text.families) {
     const key = windows.join(', ');
-    const isMeasured = text.quantities.some(({ name, definition }) => definition.kind === 'measure' && name.startsWith(family) && definition.window !== undefined);
+    const isMeasured = text.quantities.some(
+      ({ name, definition }) =>
+        definition.kind === 'measure' && name.startsWith(family) && definition.window !== undefined,
+    );
     if (!isMeasured || seen.has(key)) continue;
     seen.add(key);
     const { hasGap, hasOverlap } = coverage(text, windows);

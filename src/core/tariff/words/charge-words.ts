@@ -14,12 +14,14 @@ export function explainLine(speech: Speech, line: number): string {
   const clause = shown.charge.clause === undefined ? '' : ` (clause ${shown.charge.clause})`;
   const amount = bill.amounts[line]!;
   const { definition } = shown.charge;
-  if (definition.kind === 'topUp' || definition.kind === 'cap') return `${label}: ${limitWords(speech, line, definition.kind, amount)}${clause}.`;
+  if (definition.kind === 'topUp' || definition.kind === 'cap')
+    return `${label}: ${limitWords(speech, line, definition.kind, amount)}${clause}.`;
   const parts = bill.pieces.flatMap((state) => {
     const plan = state.piece.text.chargeOfLine[line];
     return plan ? [{ here: { ...speech, state }, plan }] : [];
   });
-  if (bill.pieces.length === 1) return `${label}: ${pieceWords({ ...speech, state: bill.pieces[0]! }, shown, amount)}${clause}.`;
+  if (bill.pieces.length === 1)
+    return `${label}: ${pieceWords({ ...speech, state: bill.pieces[0]! }, shown, amount)}${clause}.`;
   const words = parts.map(({ here, plan }) => `${wordPiece(here, plan)}: ${partWords(here, plan)}`);
   return `${label}: ${words.join('; ')}; together ${money(amount, run.schedule)}${clause}.`;
 }
@@ -31,8 +33,13 @@ function pieceWords(speech: Speech, plan: ChargePlan, amount: number): string {
   const none = noneWords(speech, plan.charge.definition);
   if (none) return `none, ${none}`;
   const words = partWords(speech, plan);
-  const isWhole = plan.charge.definition.kind === 'amount' && plan.charge.definition.amount.kind !== 'months' && words === bareMoney(amount, schedule);
-  return isWhole ? money(amount, schedule) : `${words} = ${money(amount, schedule)}${tierEnds(speech, plan.charge.definition)}`;
+  const isWhole =
+    plan.charge.definition.kind === 'amount' &&
+    plan.charge.definition.amount.kind !== 'months' &&
+    words === bareMoney(amount, schedule);
+  return isWhole
+    ? money(amount, schedule)
+    : `${words} = ${money(amount, schedule)}${tierEnds(speech, plan.charge.definition)}`;
 }
 
 function whenWords(speech: Speech, { charge }: ChargePlan): string {
@@ -55,7 +62,9 @@ function wordPiece(speech: Speech, plan: ChargePlan): string {
   const { text } = piece.text;
   const isOtherText = others.some((other) => other.text !== piece.text);
   const isOtherSeason = others.some((other) => other.season !== piece.season);
-  const title = text.note ?? (text === run.schedule.texts[0] ? (run.schedule.source.title ?? 'the first text') : `the text of ${text.from}`);
+  const title =
+    text.note ??
+    (text === run.schedule.texts[0] ? (run.schedule.source.title ?? 'the first text') : `the text of ${text.from}`);
   const where = [
     ...(isOtherText ? [`under ${title}`] : []),
     ...(isOtherSeason && text.seasons ? [`in ${text.seasons.names[piece.season]}`] : []),
@@ -63,7 +72,9 @@ function wordPiece(speech: Speech, plan: ChargePlan): string {
   const share = shareOf(run, bill, state, plan);
   const isByDays = plan.charge.definition.kind !== 'per' || Math.abs(share - piece.share) < 1e-12;
   const days = `${piece.days} of ${bill.plan.days} days`;
-  const measured = isByDays ? '' : `, with ${wordNumber(share * 100)} % of the ${plan.charge.definition.kind === 'per' ? plan.charge.definition.perName : ''}`;
+  const measured = isByDays
+    ? ''
+    : `, with ${wordNumber(share * 100)} % of the ${plan.charge.definition.kind === 'per' ? plan.charge.definition.perName : ''}`;
   return `${[days, ...where].join(' ')}${measured}`;
 }
 
@@ -85,13 +96,18 @@ function partWords(speech: Speech, plan: ChargePlan): string {
 
 function expressionIn(speech: Speech, place: NumberPlace): Expression | undefined {
   const { season, month } = speech.state.piece;
-  return place.kind === 'same' ? place.expression : place.kind === 'seasons' ? place.bySeason[season] : place.byMonth.get(month);
+  return place.kind === 'same'
+    ? place.expression
+    : place.kind === 'seasons'
+      ? place.bySeason[season]
+      : place.byMonth.get(month);
 }
 
 function placeWords(speech: Speech, place: NumberPlace): string {
   const expression = expressionIn(speech, place);
   if (!expression) return '';
-  if (expression.formula.kind === 'number') return bareMoney(placeValue(speech.run, speech.state, place), speech.run.schedule);
+  if (expression.formula.kind === 'number')
+    return bareMoney(placeValue(speech.run, speech.state, place), speech.run.schedule);
   const value = placeValue(speech.run, speech.state, place);
   const working = wordWorking(speech, expression);
   return expression.formula.kind === 'name' ? `${working} = ${wordNumber(value)}` : working;
@@ -111,7 +127,8 @@ type Priced = ChargeDefinition & { kind: 'per' };
 function priceWords(speech: Speech, { per, perName, unit, price }: Priced, currency: string): string {
   const quantity = evaluateIn(speech.run, speech.state, per);
   const words = perName === '' ? wordNumber(quantity) : wordName(speech, perName);
-  if (price.length === 1) return `${withUnit(words, unit)} x ${rateWords(speech, price[0]!.rate)} ${currency}${unit === '' ? '' : ` per ${unit}`}`;
+  if (price.length === 1)
+    return `${withUnit(words, unit)} x ${rateWords(speech, price[0]!.rate)} ${currency}${unit === '' ? '' : ` per ${unit}`}`;
   return tierParts(speech, price, quantity)
     .map(({ inTier, tier }) => `${withUnit(wordNumber(inTier), unit)} x ${rateWords(speech, tier.rate)}`)
     .join(' + ');
@@ -149,15 +166,21 @@ function percentWords(speech: Speech, plan: ChargePlan, definition: ChargeDefini
   const base = `${money(partsOfLines(bill, state, plan), run.schedule)} (${linesWords(speech, plan, definition.isAllAbove)})`;
   if (!definition.per) return `${rateWords(speech, definition.price[0]!.rate)} % of ${base}`;
   const quantity = withUnit(wordName(speech, definition.perName ?? ''), definition.unit ?? '');
-  if (definition.price.length === 1) return `${quantity} x ${rateWords(speech, definition.price[0]!.rate)} % of ${base}`;
+  if (definition.price.length === 1)
+    return `${quantity} x ${rateWords(speech, definition.price[0]!.rate)} % of ${base}`;
   const percent = tieredPrice(run, state, definition.price, evaluateIn(run, state, definition.per));
   return `${wordNumber(percent)} % for ${quantity}, of ${base}`;
 }
 
 function linesWords({ bill, run, state }: Speech, plan: ChargePlan, isAllAbove: boolean): string {
-  if (plan.ofLines.length > 4) return isAllAbove ? `all ${plan.ofLines.length} lines above` : `${plan.ofLines.length} lines`;
+  if (plan.ofLines.length > 4)
+    return isAllAbove ? `all ${plan.ofLines.length} lines above` : `${plan.ofLines.length} lines`;
   const count = bill.pieces.length;
-  return plan.ofLines.map((line) => `${run.schedule.lineOrder[line]} ${bareMoney(bill.parts[line * count + state.index]!, run.schedule)}`).join(' + ');
+  return plan.ofLines
+    .map(
+      (line) => `${run.schedule.lineOrder[line]} ${bareMoney(bill.parts[line * count + state.index]!, run.schedule)}`,
+    )
+    .join(' + ');
 }
 
 function limitWords(speech: Speech, line: number, kind: 'topUp' | 'cap', amount: number): string {
@@ -183,11 +206,14 @@ function limitWords(speech: Speech, line: number, kind: 'topUp' | 'cap', amount:
   if (off !== '' && limit === 0) return off;
   const { schedule } = run;
   const [baseWords, limitText] = [bareMoney(base, schedule), bareMoney(limit, schedule)];
-  if (amount === 0) return `not needed, ${baseWords} is ${base === limit ? 'just' : kind === 'topUp' ? 'above' : 'below'} ${limitText}${working}`;
+  if (amount === 0)
+    return `not needed, ${baseWords} is ${base === limit ? 'just' : kind === 'topUp' ? 'above' : 'below'} ${limitText}${working}`;
   return `${kind === 'topUp' ? 'raises' : 'lowers'} ${baseWords} to ${limitText}${working}: ${money(amount, schedule)}`;
 }
 
 /** Words of a rate or contract input that is one expression. */
 export function expressionWords(speech: Speech, expression: Expression): string {
-  return expression.formula.kind === 'number' ? wordExpression(speech, expression) : `${wordWorking(speech, expression)} = ${wordNumber(evaluateIn(speech.run, speech.state, expression))}`;
+  return expression.formula.kind === 'number'
+    ? wordExpression(speech, expression)
+    : `${wordWorking(speech, expression)} = ${wordNumber(evaluateIn(speech.run, speech.state, expression))}`;
 }

@@ -11,7 +11,8 @@ export function estimatedSlots(speech: Speech): Set<number> {
   for (const quantity of text.quantities) {
     const names = expressionsOfQuantity(quantity).flatMap((expression) => expression.slots);
     const at = quantity.definition.kind === 'value' ? [run.schedule.slots.get(quantity.definition.at)!] : [];
-    if (isMeasuredFromEstimates(speech, quantity) || [...names, ...at].some((slot) => estimated.has(slot))) estimated.add(quantity.slot);
+    if (isMeasuredFromEstimates(speech, quantity) || [...names, ...at].some((slot) => estimated.has(slot)))
+      estimated.add(quantity.slot);
   }
   for (const { definition, slot, when } of text.charges) {
     const lines = 'of' in definition ? definition.of.map((name) => run.schedule.slots.get(name)!) : [];
@@ -27,7 +28,9 @@ function isMeasuredFromEstimates({ source, bill, state }: Speech, { definition, 
   const { quality } = source.load;
   if (plan.kind === 'sum') {
     const { runFirst, runEnd, runClass } = reduction.classes;
-    return runFirst.some((first, run) => plan.classes[runClass[run]!] === 1 && holdsEstimate(quality, first, runEnd[run]!));
+    return runFirst.some(
+      (first, run) => plan.classes[runClass[run]!] === 1 && holdsEstimate(quality, first, runEnd[run]!),
+    );
   }
   if (definition.operation !== 'sum') return isCellEstimated(plan, quality, state.atCell[slot]!);
   return plan.kind === 'cells' && plan.cells.starts.some((_, cell) => isCellEstimated(plan, quality, cell));
@@ -42,6 +45,7 @@ function isCellEstimated(plan: MeasurePlan, quality: Uint8Array, cell: number): 
   if (cell < 0) return false;
   if (plan.kind !== 'cells') return quality[cell] === 1;
   const { starts, ends, members, base } = plan.cells;
-  for (let k = starts[cell]!; k < ends[cell]!; k++) if (quality[members === null ? base + k : members[k]!] === 1) return true;
+  for (let k = starts[cell]!; k < ends[cell]!; k++)
+    if (quality[members === null ? base + k : members[k]!] === 1) return true;
   return false;
 }

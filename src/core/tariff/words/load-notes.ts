@@ -12,16 +12,28 @@ export function addLoadNotes(bill: BillState, { ground, first, end }: PeriodGrou
     else if (load.quality[i] === 1) estimated++;
   }
   const all = wordNumber(ground.calendar.count);
-  if (missing > 0) bill.notes?.add(`${wordNumber(missing)} of ${all} intervals are missing: sums are of what is there, never scaled up.`);
+  if (missing > 0)
+    bill.notes?.add(
+      `${wordNumber(missing)} of ${all} intervals are missing: sums are of what is there, never scaled up.`,
+    );
   if (estimated > 0) bill.notes?.add(`${wordNumber(estimated)} of ${all} intervals are estimated.`);
   for (const { piece } of bill.pieces) noteDemandWindow(bill, piece.text.text, load.stepMinutes);
 }
 
-function noteDemandWindow(bill: BillState, { demandWindow, quantities }: BillState['pieces'][number]['piece']['text']['text'], stepMinutes: number): void {
-  const uses = quantities.some(({ definition }) => definition.kind === 'measure' && definition.each === 'demand window');
+function noteDemandWindow(
+  bill: BillState,
+  { demandWindow, quantities }: BillState['pieces'][number]['piece']['text']['text'],
+  stepMinutes: number,
+): void {
+  const uses = quantities.some(
+    ({ definition }) => definition.kind === 'measure' && definition.each === 'demand window',
+  );
   if (!uses) return;
-  if (!demandWindow) bill.notes?.add(`The schedule does not say its demand window: the series' ${stepMinutes} minutes are taken.`);
+  if (!demandWindow)
+    bill.notes?.add(`The schedule does not say its demand window: the series' ${stepMinutes} minutes are taken.`);
   else if (demandWindow.minutes < stepMinutes) {
-    bill.notes?.add(`The series' step of ${stepMinutes} minutes is longer than the demand window of ${demandWindow.minutes}: the step is taken as the window.`);
+    bill.notes?.add(
+      `The series' step of ${stepMinutes} minutes is longer than the demand window of ${demandWindow.minutes}: the step is taken as the window.`,
+    );
   }
 }

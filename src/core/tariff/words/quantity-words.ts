@@ -39,24 +39,35 @@ function wordRounding({ step, mode }: Rounding): string {
   return `to ${step}${mode === 'nearest' ? '' : ` ${mode}`}`;
 }
 
-function explainFormula(speech: Speech, { name, slot, unit, rounding }: QuantityEntry, expression: Parameters<typeof wordWorking>[1]): string {
+function explainFormula(
+  speech: Speech,
+  { name, slot, unit, rounding }: QuantityEntry,
+  expression: Parameters<typeof wordWorking>[1],
+): string {
   const { values } = speech.state;
   const exact = expression.evaluate(values);
   const working = expression.formula.kind === 'number' ? '' : `${wordWorking(speech, expression)} = `;
   const chosen = wordChosen(expression, values);
-  if (!rounding || isSame(exact, values[slot]!)) return `${name} = ${working}${withUnit(wordNumber(values[slot]!, rounding?.step), unit)}${chosen}.`;
+  if (!rounding || isSame(exact, values[slot]!))
+    return `${name} = ${working}${withUnit(wordNumber(values[slot]!, rounding?.step), unit)}${chosen}.`;
   return `${name} = ${working}${wordNumber(exact)}, ${wordRounding(rounding)}: ${withUnit(wordNumber(values[slot]!, rounding.step), unit)}${chosen}.`;
 }
 
 const ordinals = ['first', 'second', 'third', 'fourth', 'fifth', 'sixth', 'seventh', 'eighth'];
 
 /** Which value a greatest or least of several took. */
-function wordChosen({ formula, evaluate, slots, names }: Parameters<typeof wordWorking>[1], values: Float64Array): string {
+function wordChosen(
+  { formula, evaluate, slots, names }: Parameters<typeof wordWorking>[1],
+  values: Float64Array,
+): string {
   if (formula.kind !== 'call' || (formula.fn !== 'max' && formula.fn !== 'min') || formula.args.length < 2) return '';
   const result = evaluate(values);
   const index = formula.args.findIndex((argument) => {
     if (argument.kind === 'number') return isSame(argument.value, result);
-    const factor = argument.kind === 'binary' && argument.operator === '*' && argument.left.kind === 'number' ? argument.left.value : 1;
+    const factor =
+      argument.kind === 'binary' && argument.operator === '*' && argument.left.kind === 'number'
+        ? argument.left.value
+        : 1;
     const named = argument.kind === 'binary' && argument.operator === '*' ? argument.right : argument;
     const slot = named.kind === 'name' ? slots[names.indexOf(named.name)] : undefined;
     return slot !== undefined && isSame(factor * values[slot]!, result);
@@ -64,15 +75,24 @@ function wordChosen({ formula, evaluate, slots, names }: Parameters<typeof wordW
   return index < 0 || index >= ordinals.length ? '' : `: the ${ordinals[index]}`;
 }
 
-function explainPick(speech: Speech, { name }: QuantityEntry, { of, steps, otherwise }: PickDefinition, value: string): string {
+function explainPick(
+  speech: Speech,
+  { name }: QuantityEntry,
+  { of, steps, otherwise }: PickDefinition,
+  value: string,
+): string {
   const at = of.evaluate(speech.state.values);
-  const words = of.formula.kind === 'name' ? `${of.formula.name} ${wordName(speech, of.formula.name)}` : `${printFormula(of.formula)} = ${wordNumber(at)}`;
+  const words =
+    of.formula.kind === 'name'
+      ? `${of.formula.name} ${wordName(speech, of.formula.name)}`
+      : `${printFormula(of.formula)} = ${wordNumber(at)}`;
   const index = steps.findIndex((step) => at >= step.from || isSame(at, step.from));
   const step = steps[index];
   const above = steps[index < 0 ? steps.length - 1 : index - 1];
   const below = above ? `, below ${above.raw}` : '';
   const taken = step?.value ?? otherwise;
-  const working = taken.formula.kind === 'number' || taken.formula.kind === 'name' ? '' : ` (${wordWorking(speech, taken)})`;
+  const working =
+    taken.formula.kind === 'number' || taken.formula.kind === 'name' ? '' : ` (${wordWorking(speech, taken)})`;
   return `${name} = ${value}${working}: ${words} is ${step ? `from ${step.raw} on${below}` : below.slice(2)}.`;
 }
 
@@ -80,7 +100,8 @@ function explainPast(speech: Speech, { name }: QuantityEntry, definition: PastDe
   const { run, bill, state } = speech;
   const { take, over, season, expression } = definition;
   const records = recordsBefore(run, bill, state);
-  if (over.includesThis) records.push({ period: bill.plan.period, values: state.values, known: state.known, isTold: false });
+  if (over.includesThis)
+    records.push({ period: bill.plan.period, values: state.values, known: state.known, isTold: false });
   const { asked, known, setBy } = evaluatePast(definition, records, bill.plan.period, state.piece.text.text.seasons);
   const of = printFormula(expression.formula);
   if (take.kind === 'streak') return `${name} = ${value}, the periods in a row, up to this one, where ${of} holds.`;
@@ -102,7 +123,13 @@ function wordMeasured({ expression, channel }: MeasureDefinition | ValueDefiniti
 }
 
 function wordSense(channel: string): string {
-  return channel.endsWith('Lagging') ? ' lagging' : channel.endsWith('Leading') ? ' leading' : channel.endsWith('Net') ? ' net' : '';
+  return channel.endsWith('Lagging')
+    ? ' lagging'
+    : channel.endsWith('Leading')
+      ? ' leading'
+      : channel.endsWith('Net')
+        ? ' net'
+        : '';
 }
 
 function cellWords(speech: Speech, { each }: MeasureDefinition): { one: string; many: string } {
@@ -133,28 +160,48 @@ function explainMeasure(speech: Speech, quantity: QuantityEntry, definition: Mea
   const { operation, each, where, count, isDistinctDays, window } = definition;
   const what = wordMeasured(definition);
   const place = wordWindow(speech, window);
-  const condition = where ? ` where ${printFormula(where.formula, (name) => (speech.run.schedule.slots.has(name) && !where.channels.some((used) => used === name) ? wordName(speech, name) : name))}` : '';
+  const condition = where
+    ? ` where ${printFormula(where.formula, (name) => (speech.run.schedule.slots.has(name) && !where.channels.some((used) => used === name) ? wordName(speech, name) : name))}`
+    : '';
   if (operation === 'sum') {
     if (each === undefined) return `${quantity.name} = ${value}, the sum of ${what}${place}.`;
     return explainCellSum(speech, quantity, definition, `${what}${condition}${place}`, value);
   }
   const { one } = cellWords(speech, definition);
   const atMs = speech.state.atMs[quantity.slot]!;
-  const when = Number.isNaN(atMs) ? '; no such time is whole in the series' : `, ${wordCellTime(speech, definition, atMs)}`;
-  const which = count > 1 ? `the mean of the ${count} ${operation}${isDistinctDays ? ' on distinct days' : ''}` : `the ${operation}`;
+  const when = Number.isNaN(atMs)
+    ? '; no such time is whole in the series'
+    : `, ${wordCellTime(speech, definition, atMs)}`;
+  const which =
+    count > 1
+      ? `the mean of the ${count} ${operation}${isDistinctDays ? ' on distinct days' : ''}`
+      : `the ${operation}`;
   return `${quantity.name} = ${value}, ${which} ${what} of ${one}${condition}${place}${count > 1 && when.startsWith(',') ? `, the first${when.slice(1)}` : when}.`;
 }
 
-function explainCellSum(speech: Speech, { slot, name, unit }: QuantityEntry, definition: MeasureDefinition, what: string, value: string): string {
+function explainCellSum(
+  speech: Speech,
+  { slot, name, unit }: QuantityEntry,
+  definition: MeasureDefinition,
+  what: string,
+  value: string,
+): string {
   const { many } = cellWords(speech, definition);
   const counted = speech.source && countCells(speech, slot, definition);
   if (!counted) return `${name} = ${value}, the sum over ${many} of ${what}.`;
   const { all, charged, most, mostMs } = counted;
-  const best = charged === 0 ? '' : `; the most, ${withUnit(wordNumber(most), unit)}, on ${wordCellTime(speech, definition, mostMs)}`;
+  const best =
+    charged === 0
+      ? ''
+      : `; the most, ${withUnit(wordNumber(most), unit)}, on ${wordCellTime(speech, definition, mostMs)}`;
   return `${name} = ${value}, the sum over ${all} ${many} of ${what}: ${charged} of them ${charged === 1 ? 'has' : 'have'} a part${best}.`;
 }
 
-function countCells(speech: Speech, slot: number, { expression, where }: MeasureDefinition): { all: number; charged: number; most: number; mostMs: number } | undefined {
+function countCells(
+  speech: Speech,
+  slot: number,
+  { expression, where }: MeasureDefinition,
+): { all: number; charged: number; most: number; mostMs: number } | undefined {
   const { source, bill, state } = speech;
   const plan = source?.planOf(bill, state, slot).plan;
   if (!source || plan?.kind !== 'cells') return undefined;
@@ -181,4 +228,3 @@ function explainValue(speech: Speech, { name }: QuantityEntry, definition: Value
   const when = Number.isNaN(atMs) ? 'which has no instant' : `on ${wordInstant(atMs, speech.run.schedule.timeZone)}`;
   return `${name} = ${value}, the ${wordMeasured(definition)} where "${definition.at}" was set, ${when}.`;
 }
-

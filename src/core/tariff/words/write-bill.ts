@@ -25,7 +25,9 @@ function writeBill(run: Run, bill: BillState, unity: BillState, source: Interval
   if (run.told.length > 0 && state.piece.text.text.quantities.some(({ definition }) => definition.kind === 'past')) {
     bill.notes?.add('The history given serves the run at unity power factor too.');
   }
-  const lines = run.schedule.lineOrder.flatMap((_, line) => (lastCharge(bill, line) ? [writeLine(speech, line, bill.amounts[line]! - unity.amounts[line]!, estimated)] : []));
+  const lines = run.schedule.lineOrder.flatMap((_, line) =>
+    lastCharge(bill, line) ? [writeLine(speech, line, bill.amounts[line]! - unity.amounts[line]!, estimated)] : [],
+  );
   const notes = [...(bill.notes ?? []), ...(unity.notes ?? [])];
   return {
     period: { from, to },
@@ -46,8 +48,17 @@ function clean(difference: number): number {
 
 function noteStraddle({ plan, pieces, notes }: BillState, { schedule }: Run): void {
   const texts = [...new Set(pieces.map(({ piece }) => piece.text.text))];
-  if (texts.length > 1) notes?.add(`The period lies under ${texts.length} versions of the schedule (from ${texts.slice(1).map((text) => text.from).join(', ')} on): divided by ${schedule.straddle}.`);
-  else if (pieces.length > 1) notes?.add(`The period lies in ${pieces.length} seasons or rider months: divided by ${schedule.straddle === 'intervals' ? 'intervals' : 'days'}.`);
+  if (texts.length > 1)
+    notes?.add(
+      `The period lies under ${texts.length} versions of the schedule (from ${texts
+        .slice(1)
+        .map((text) => text.from)
+        .join(', ')} on): divided by ${schedule.straddle}.`,
+    );
+  else if (pieces.length > 1)
+    notes?.add(
+      `The period lies in ${pieces.length} seasons or rider months: divided by ${schedule.straddle === 'intervals' ? 'intervals' : 'days'}.`,
+    );
   if (plan.period.from < (schedule.inForce ?? '')) notes?.add('The period begins before the schedule is in force.');
 }
 
@@ -61,7 +72,12 @@ function writeQuantities(speech: Speech, estimated: ReadonlySet<number>): Record
   return Object.fromEntries(written);
 }
 
-function writeQuantity(speech: Speech, quantity: QuantityEntry, isPrinted: boolean, estimated: ReadonlySet<number>): PricedQuantity {
+function writeQuantity(
+  speech: Speech,
+  quantity: QuantityEntry,
+  isPrinted: boolean,
+  estimated: ReadonlySet<number>,
+): PricedQuantity {
   const { slot, unit, label, clause, definition } = quantity;
   const atMs = speech.state.atMs[slot]!;
   return {
@@ -88,15 +104,46 @@ function writeInputs(speech: Speech): Record<string, PricedInput> {
   for (const { name, slot, unit, label, clause } of contract) {
     if (state.known[slot] !== 1) continue;
     const value = state.values[slot]!;
-    const words = unit === 'date' ? String(value).replace(/(\d{4})(\d{2})(\d{2})/, '$1-$2-$3') : withUnit(wordNumber(value), unit === 'flag' ? '' : unit);
-    written.push([name, { value, unit, ...(label !== undefined && { label }), ...(clause !== undefined && { clause }), explanation: `${name} = ${words}, from the contract.`, uses: [] }]);
+    const words =
+      unit === 'date'
+        ? String(value).replace(/(\d{4})(\d{2})(\d{2})/, '$1-$2-$3')
+        : withUnit(wordNumber(value), unit === 'flag' ? '' : unit);
+    written.push([
+      name,
+      {
+        value,
+        unit,
+        ...(label !== undefined && { label }),
+        ...(clause !== undefined && { clause }),
+        explanation: `${name} = ${words}, from the contract.`,
+        uses: [],
+      },
+    ]);
   }
   for (const { name, slot, place } of rates) {
     if (state.known[slot] !== 1) continue;
-    const expression = place.kind === 'same' ? place.expression : place.kind === 'seasons' ? place.bySeason[state.piece.season]! : place.byMonth.get(state.piece.month)!;
-    const when = place.kind === 'months' ? `, the rider of ${state.piece.month}` : place.kind === 'seasons' ? `, in ${state.piece.text.text.seasons?.names[state.piece.season]}` : ', a rate of the schedule';
+    const expression =
+      place.kind === 'same'
+        ? place.expression
+        : place.kind === 'seasons'
+          ? place.bySeason[state.piece.season]!
+          : place.byMonth.get(state.piece.month)!;
+    const when =
+      place.kind === 'months'
+        ? `, the rider of ${state.piece.month}`
+        : place.kind === 'seasons'
+          ? `, in ${state.piece.text.text.seasons?.names[state.piece.season]}`
+          : ', a rate of the schedule';
     const uses = [...new Set(inPlace(place).flatMap((one) => one.names))];
-    written.push([name, { value: state.values[slot]!, unit: '', explanation: `${name} = ${expressionWords(speech, expression)}${when}.`, uses }]);
+    written.push([
+      name,
+      {
+        value: state.values[slot]!,
+        unit: '',
+        explanation: `${name} = ${expressionWords(speech, expression)}${when}.`,
+        uses,
+      },
+    ]);
   }
   return Object.fromEntries(written);
 }
@@ -110,7 +157,10 @@ function writeLine(speech: Speech, line: number, reactivePart: number, estimated
   const expressions = [...expressionsOf(definition), ...(charge.when ? [charge.when] : [])];
   const slots = expressions.flatMap((expression) => expression.slots);
   const lines = plan.ofLines.map((of) => run.schedule.lineOrder[of]!);
-  const rate = 'price' in definition && definition.price.length === 1 && bill.pieces.length === 1 ? placeValue(run, state, definition.price[0]!.rate) : undefined;
+  const rate =
+    'price' in definition && definition.price.length === 1 && bill.pieces.length === 1
+      ? placeValue(run, state, definition.price[0]!.rate)
+      : undefined;
   const per = 'per' in definition && definition.per ? evaluateIn(run, state, definition.per) : undefined;
   return {
     id: charge.name,
@@ -123,6 +173,8 @@ function writeLine(speech: Speech, line: number, reactivePart: number, estimated
     ...(charge.clause !== undefined && { clause: charge.clause }),
     reactivePart: clean(reactivePart),
     uses: [...new Set([...expressions.flatMap((expression) => expression.names), ...lines])],
-    ...([...slots, ...lines.map((name) => run.schedule.slots.get(name)!)].some((slot) => estimated.has(slot)) && { isEstimated: true }),
+    ...([...slots, ...lines.map((name) => run.schedule.slots.get(name)!)].some((slot) => estimated.has(slot)) && {
+      isEstimated: true,
+    }),
   };
 }

@@ -62,7 +62,7 @@ function detectedTimeColumns(input: TimeInput): Map<number, RoleFinding> {
   const { profiles, wide } = input;
   const taken = new Set(wide?.columns.map((use) => use.index) ?? []);
   const free = profiles.filter((profile) => !taken.has(profile.index));
-  const stamps = free.filter((profile) => shareOf(profile, 'stamp') > 0.6 && shareOf(profile, 'stamp', 'date') > 0.9);
+  const stamps = free.filter((profile) => shareOf(profile, 'stamp') > 0.6 && shareOf(profile, 'stamp', 'date') > 0.75);
   const dates = free.filter((profile) => shareOf(profile, 'date') > 0.9);
   const times = free.filter((profile) => shareOf(profile, 'time') > 0.9);
   const number = free.find((profile) => isIntervalNumber(input, profile));

@@ -10,3 +10,14 @@ export type { FieldBounds } from './field-bounds';
 export { searchFields } from './search-fields';
 export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './search-fields';
 export type { CapacitorStep, PlanAction, PlanMotor, Plant, Upstream } from './types';
+export {
+  USUAL_HARMONICS,
+  combineLoads,
+  correctiveKvar,
+  kvarPerKw,
+  resonanceCheck,
+  resonanceOrder,
+  upstreamLossSavedShare,
+  voltageRisePu,
+} from './network';
+export type { BusLoad } from './network';

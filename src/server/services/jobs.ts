@@ -99,7 +99,9 @@ async function authorize(actor: Actor, id: number): Promise<Job> {
 /** How far a job is, or how it ended. */
 export async function readJob(actor: Actor, id: number): Promise<JobProgress> {
   const job = await authorize(actor, id);
-  return running.get(id)?.progress ?? present(job);
+  const progress = running.get(id)?.progress;
+  // A job that ended while its row was being read is read once more: its end is stored before it leaves `running`.
+  return progress ?? present(job.state === 'running' ? await job.reload() : job);
 }
 
 /** The jobs of an engagement that still run, for pages that are opened in between. */

@@ -32,7 +32,7 @@ export function compileCurve(
   const currentsA = [0];
   let airGapPuPerA = 0;
   all.forEach(({ fieldCurrentA, voltagePu }, i) => {
-    const name = `openCircuitCurve[${i}]`;
+    const name = `openCircuitCurve[${i + points.length - all.length}]`;
     requireRange(
       fieldCurrentA > currentsA[i]! && Number.isFinite(fieldCurrentA),
       `${name}.fieldCurrentA`,

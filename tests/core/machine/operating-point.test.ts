@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { PullOutError, operatingPoint, pullOut, ratedCurrentA, ratedKva } from '../../../src/core/machine';
+import { scipyPoints } from '../../published/machine-scipy';
 import { leastEmfCases, lossCase, lossSegregationCase } from '../../published/machine-capability';
 import { buildLosslessMotor, buildMotor, openCircuitCurve, randomMotor } from './build-motor';
 
@@ -55,6 +56,22 @@ describe('operatingPoint against published figures', () => {
     expect(point.emfPu).toBeCloseTo(row.emfPu, 4);
     expect(point.pullOutRatio).toBeCloseTo(row.ratio, 4);
   });
+
+  it.each(scipyPoints)(
+    'agrees with an independent solution at $at, from kvar and from field',
+    ({ motor, at, expected }) => {
+      const byKvar = operatingPoint(motor, at);
+      const byField = operatingPoint(motor, {
+        shaftKw: at.shaftKw,
+        voltagePu: at.voltagePu,
+        fieldCurrentA: expected.fieldCurrentA,
+      });
+      for (const key of Object.keys(expected) as (keyof typeof expected)[]) {
+        expect(Math.abs(byKvar[key] / expected[key] - 1), key).toBeLessThan(2e-8);
+        expect(Math.abs(byField[key] / expected[key] - 1), `${key} by field`).toBeLessThan(1e-7);
+      }
+    },
+  );
 
   it('finds the pull-out ratio in developed power: [Guru and Hiziroglu] ex. 8.5, p. 491, 4740 W developed', () => {
     // 69.28 V, 87.54 V of emf, 0.5 + j3 ohm: base of 100 V and 1 ohm puts the ohms straight into per unit.

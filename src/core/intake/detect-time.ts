@@ -40,11 +40,12 @@ export function findTimeColumns(input: TimeInput): TimeFinding {
     ['stamp', 'stamp-begin', 'date', 'stamp-end'].includes(finding.role),
   );
   const guesses: Guess[] = [];
-  let order: DateOrder | undefined = input.map.stamp?.order;
+  const given = input.map.stamp?.order;
+  let order = given;
   if (dated) {
     const [index, finding] = dated;
     const found = numericStamp(input, index) ?? findDateOrder(input.grid, index, input.rows, input.timeZone);
-    const tests: Test[] = order ? [[true, 'Given by the column map']] : found.tests;
+    const tests: Test[] = given && given !== found.order ? [[true, 'Given by the column map']] : found.tests;
     order ??= found.order;
     guesses.push(guess('date-order', orderInWords(order), tests));
     finding.tests.push(...tests);
@@ -55,7 +56,13 @@ export function findTimeColumns(input: TimeInput): TimeFinding {
 function givenTimeColumns(input: TimeInput): Map<number, RoleFinding> | null {
   const given = (input.map.columns ?? []).filter((use) => timeRoles.has(use.role) && use.index < input.profiles.length);
   if (given.length === 0) return null;
-  return new Map(given.map((use) => [use.index, { role: use.role, tests: [[true, 'Given by the column map']] }]));
+  const detected = detectedTimeColumns(input);
+  return new Map(
+    given.map((use): [number, RoleFinding] => {
+      const own = detected.get(use.index);
+      return [use.index, own?.role === use.role ? own : { role: use.role, tests: [[true, 'Given by the column map']] }];
+    }),
+  );
 }
 
 function detectedTimeColumns(input: TimeInput): Map<number, RoleFinding> {

@@ -4,7 +4,7 @@ import { channelMeaning, type ChannelMeaning } from './channel-words';
 import { preambleUnit } from './preamble';
 import type { RoleFinding, Test } from './evidence';
 import type { Grid } from './grid';
-import { mentions } from './words';
+import { mentions, unitOfHeader } from './words';
 
 interface ValueInput {
   grid: Grid;
@@ -48,9 +48,11 @@ export function findChannels(input: ValueInput): void {
   }
 }
 
+/** A column of figures; one whose name has a unit may hold many words, which are then refused by their place. */
 function isFigures(profile: ColumnProfile): boolean {
+  const isNamed = unitOfHeader(profile.name) !== null;
   const filled = profile.sampled - profile.kinds.blank;
-  return filled === 0 ? channelMeaning(profile.name).unit !== null : shareOf(profile, 'number') > 0.9;
+  return filled === 0 ? isNamed : shareOf(profile, 'number') > (isNamed ? 0.2 : 0.9);
 }
 
 function figuresOf(input: ValueInput, profile: ColumnProfile): Float64Array {

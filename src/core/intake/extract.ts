@@ -16,6 +16,8 @@ export interface ColumnPlan {
   columns: ColumnUse[];
   decimalMark: '.' | ',';
   stamp: StampStyle;
+  /** What the file itself hints at, before the map. */
+  hints: StampStyle;
   layout: 'long' | 'wide';
   meter?: string | undefined;
 }

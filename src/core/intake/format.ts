@@ -53,5 +53,5 @@ function isWorkbookZip(bytes: Uint8Array): boolean {
   const decoder = new TextDecoder('latin1');
   const ends =
     decoder.decode(bytes.subarray(0, 4096)) + decoder.decode(bytes.subarray(Math.max(0, bytes.length - 65536)));
-  return /\[Content_Types\]\.xml|xl\/workbook\.(xml|bin)|opendocument\.spreadsheet|content\.xml/.test(ends);
+  return /\[Content_Types\]\.xml|_rels\/\.rels|docProps\/|xl\/|opendocument\.spreadsheet|content\.xml/.test(ends);
 }

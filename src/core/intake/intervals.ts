@@ -57,6 +57,7 @@ export function planIntervals(opened: OpenedTable, options: ReadOptions): Interv
     columns,
     decimalMark: detection.decimalMark,
     stamp,
+    hints: detection.stamp,
     layout: detection.layout,
     meter: map.meter ?? (meters.length === 1 ? meters[0] : undefined),
   };
@@ -131,7 +132,7 @@ export function readPlanned(planned: IntervalPlan, options: ReadOptions): Interv
     timeline: timelineOf(strand, {
       timeZone: options.timeZone,
       fileName: options.fileName,
-      style: plan.stamp,
+      style: plan.hints,
       given,
       isRegister,
     }),

@@ -44,47 +44,45 @@ export function findMarks(
   walls: Float64Array,
   stepMinutes: number,
   hint: StampStyle['marks'],
-  isGiven: boolean,
+  given: StampStyle['marks'],
 ): MarkFinding {
+  const detected = detectMarks(walls, stepMinutes, hint);
+  if (!given || given === detected.marks) return detected;
+  return { marks: given, guess: guess('marks', marksInWords(given), [[true, 'Given by the column map']]) };
+}
+
+function detectMarks(walls: Float64Array, stepMinutes: number, hint: StampStyle['marks']): MarkFinding {
   const first = walls[0] ?? Number.NaN;
   const last = walls[walls.length - 1] ?? Number.NaN;
   const { ownDay, nextDay } = countMidnights(walls, stepMinutes);
-  if (isGiven && hint)
-    return { marks: hint, guess: guess('marks', marksInWords(hint), [[true, 'Given by the column map']]) };
   const span = `first stamp ${clockTime(first)}, last ${clockTime(last)}`;
+  const opensAtStep = clockTime(first) === clockTime(stepMinutes);
   if (ownDay > nextDay) {
     const tests: Test[] = [
       [true, `${ownDay} midnights follow the last stamp of the same date: they close that day`],
       [nextDay === 0, nextDay === 0 ? 'no midnight opens a day' : `${nextDay} midnights open a day`],
-      [clockTime(first) === clockTime(stepMinutes), span],
+      [opensAtStep, span],
     ];
     return { marks: 'own-day-end', guess: guess('marks', marksInWords('own-day-end'), tests) };
   }
-  const opensAtStep = clockTime(first) === clockTime(stepMinutes);
-  const closesAtMidnight = clockTime(last) === '00:00';
-  const opensAtMidnight = clockTime(first) === '00:00';
-  const closesBefore = clockTime(last) === clockTime(1440 - stepMinutes);
+  const lastOfDay = clockTime(1440 - stepMinutes);
   const endTests: Test[] = [
     [opensAtStep, span],
-    [closesAtMidnight, 'the last stamp is midnight'],
+    [clockTime(last) === '00:00', 'the last stamp is midnight'],
   ];
   const beginTests: Test[] = [
-    [opensAtMidnight, span],
-    [closesBefore, `the last stamp is ${clockTime(1440 - stepMinutes)}`],
+    [clockTime(first) === '00:00', span],
+    [clockTime(last) === lastOfDay, `the last stamp is ${lastOfDay}`],
   ];
   const score = (tests: Test[]): number => tests.filter(([isMet]) => isMet).length;
-  const fromName = hint === 'end' || hint === 'begin' ? hint : null;
-  const marks = fromName ?? (score(endTests) > score(beginTests) ? 'end' : 'begin');
-  const own = marks === 'end' ? endTests : beginTests;
-  const named: Test[] = fromName
-    ? [[true, `The column is named as ${fromName === 'end' ? 'the end' : 'the beginning'} of the interval`]]
-    : [];
-  // A name settles it; a file need not open or close at midnight.
-  const tests = fromName ? named : own;
-  return {
-    marks,
-    guess: { ...guess('marks', marksInWords(marks), tests), ...(fromName || score(own) === 2 ? {} : { sure: false }) },
-  };
+  if (hint === 'end' || hint === 'begin') {
+    const named: Test[] = [
+      [true, `The column is named as ${hint === 'end' ? 'the end' : 'the beginning'} of the interval`],
+    ];
+    return { marks: hint, guess: guess('marks', marksInWords(hint), named) };
+  }
+  const marks = score(endTests) > score(beginTests) ? 'end' : 'begin';
+  return { marks, guess: guess('marks', marksInWords(marks), marks === 'end' ? endTests : beginTests) };
 }
 
 /** Marks in words. */

@@ -42,12 +42,7 @@ export function timelineOf(strand: Strand, options: TimelineOptions): Timeline {
         marks: 'begin' as const,
         guess: guess('marks', 'instant of the reading', [[true, 'Registers are read at an instant']]),
       }
-    : findMarks(
-        strand.walls,
-        stepMinutes,
-        options.given.marks ?? options.style.marks,
-        options.given.marks !== undefined,
-      );
+    : findMarks(strand.walls, stepMinutes, options.style.marks, options.given.marks);
   const guesses = [step.guess, marksGuess];
   const base = { stepMinutes, guesses };
   if (strand.offsets) {

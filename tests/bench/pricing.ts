@@ -41,7 +41,11 @@ export function benchPricing(): BenchRow[] {
   }));
 }
 
-function measure(name: string, load: LoadSeries, work: () => number): { name: string; bareMs: number; pricedMs: number } {
+function measure(
+  name: string,
+  load: LoadSeries,
+  work: () => number,
+): { name: string; bareMs: number; pricedMs: number } {
   let kept = 0;
   const bare: number[] = [];
   const priced: number[] = [];
@@ -99,7 +103,8 @@ function barePass({ kwh, kvarhLagging, kvarhLeading }: LoadSeries): number {
 
 /** The twelve calendar months from November 2025 on. */
 export function calendarMonths(): PriceOptions['periods'] {
-  const first = (month: number): string => `${2025 + Math.floor(month / 12)}-${String((month % 12) + 1).padStart(2, '0')}-01`;
+  const first = (month: number): string =>
+    `${2025 + Math.floor(month / 12)}-${String((month % 12) + 1).padStart(2, '0')}-01`;
   return Array.from({ length: 12 }, (_, i) => ({ from: first(10 + i), to: first(11 + i) }));
 }
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { billInput, periodFlaws, type BillInput } from '@/schemas/bill';
+import { billInput, lineLabel, periodFlaws, type BillInput } from '@/schemas/bill';
 import { actAs } from '@/server/db/context';
 import { inTx } from '@/server/db/tx';
 import { Bill } from '@/server/models/Bill';
@@ -166,4 +166,15 @@ describe('periodFlaws', () => {
     const year = { from: '2025-11-01', to: '2026-11-01' };
     expect(periodFlaws([], year)).toEqual([{ kind: 'gap', ...year, days: 365 }]);
   });
+});
+
+describe('lineLabel', () => {
+  it.each([
+    ['Energy charge USD', 'Energy charge'],
+    ['Energy charge (USD)', 'Energy charge'],
+    ['Demand, usd', 'Demand'],
+    ['USD', 'USD'],
+    ['Busd fee', 'Busd fee'],
+    ['Customer charge', 'Customer charge'],
+  ])('names %s as %s', (head, label) => expect(lineLabel(head, 'USD')).toBe(label));
 });

@@ -1,5 +1,5 @@
 import { beforeEach, describe, expect, it } from 'vitest';
-import { hourInput, parseMinutes, type HourChangeInput, type HourInput } from '@/schemas/hour';
+import { hourInput, mondayOf, parseMinutes, type HourChangeInput, type HourInput } from '@/schemas/hour';
 import type { RateChangeInput } from '@/schemas/rate';
 import { inTx } from '@/server/db/tx';
 import type { Engagement } from '@/server/models/Engagement';
@@ -52,7 +52,6 @@ describe('parseMinutes', () => {
   });
 });
 
-const { mondayOf } = hours;
 const { amountMinorOf, listRates, rateInForce, setRate } = rates;
 
 // The steps of the endpoints: open, then do.

@@ -1,5 +1,6 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import { addDays } from '@/core/load';
+import { mondayOf, weekNumber } from '@/schemas/hour';
 import { today as todayHere } from '@/server/clock';
 import { inTx } from '@/server/db/tx';
 import { Edition } from '@/server/models/Edition';
@@ -9,9 +10,7 @@ import { Intake } from '@/server/models/Intake';
 import { Letter } from '@/server/models/Letter';
 import type { Actor } from '@/server/policies/actor';
 import { invite } from '@/server/services/account';
-import { mondayOf } from '@/server/services/hours';
 import { todayOf } from '@/server/services/today';
-import { weekNumber } from '@/server/services/waiting';
 import { buildActor, buildEngagement, buildUser } from '../setup/build';
 
 let ilse: Actor;

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { isCalendarDate } from '../core/load';
+import { addDays, dayNumber, isCalendarDate, isoDate, weekdayOf } from '../core/load';
 
 /** Where on an engagement time is spent: its stations, and what belongs to none. */
 export const hourStations = [
@@ -106,4 +106,17 @@ export interface HourSums {
   billableMinutes: number;
   amountMinor: number;
   unratedMinutes: number;
+}
+
+/** Monday of the week a day lies in. */
+export function mondayOf(day: string): string {
+  const number = dayNumber(day);
+  return isoDate(number - ((weekdayOf(number) + 6) % 7));
+}
+
+/** Number of the week that begins on a Monday, by ISO 8601: week 1 holds the year's first Thursday. */
+export function weekNumber(monday: string): number {
+  const thursday = addDays(monday, 3);
+  const firstOfYear = dayNumber(`${thursday.slice(0, 4)}-01-01`);
+  return Math.floor((dayNumber(thursday) - firstOfYear) / 7) + 1;
 }

@@ -1,4 +1,4 @@
-import { addDays, dayNumber, isoDate, weekdayOf } from '../../core/load';
+import { addDays, isoDate } from '../../core/load';
 import type { HourChangeInput, HourInput, HourSums, HourView } from '../../schemas/hour';
 import { inTx } from '../db/tx';
 import { forbidden, invalid, notFound, staleVersion } from '../errors';
@@ -17,12 +17,6 @@ export interface HoursOfEngagement {
   sums: HourSums;
   currency: string;
   budgetHours: number | null;
-}
-
-/** Monday of the week a day lies in. */
-export function mondayOf(day: string): string {
-  const number = dayNumber(day);
-  return isoDate(number - ((weekdayOf(number) + 6) % 7));
 }
 
 function present(actor: Actor, entry: HourEntry, rates: Rate[], currency: string, people: Map<number, string>) {

@@ -1,5 +1,5 @@
 import { addDays, dayNumber } from '../../core/load';
-import type { HourSums } from '../../schemas/hour';
+import { mondayOf, type HourSums } from '../../schemas/hour';
 import type { PracticeView, ProgressView, UtilisationView } from '../../schemas/practice';
 import { notFound } from '../errors';
 import { HourEntry } from '../models/HourEntry';
@@ -9,7 +9,6 @@ import { User } from '../models/User';
 import type { Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
 import { listEngagements, type OpenEngagement } from './engagements';
-import { mondayOf } from './hours';
 import { amountMinorOf, rateInForce } from './rates';
 
 const weeksShown = 8;

@@ -1,5 +1,6 @@
 import { Op } from 'sequelize';
 import { addDays, dayNumber } from '../../core/load';
+import { mondayOf, weekNumber } from '../../schemas/hour';
 import type { RunningView, TodayView, WaitingView } from '../../schemas/today';
 import { dateOfInstant, today as todayHere } from '../clock';
 import { notFound } from '../errors';
@@ -11,9 +12,8 @@ import { User } from '../models/User';
 import { isStaff, type Actor } from '../policies/actor';
 import { canManagePeople } from '../policies/engagement';
 import { listedEngagements, type ListedEngagement } from './engagement-list';
-import { mondayOf } from './hours';
 import { readJob } from './jobs';
-import { waitingAt, weekNumber } from './waiting';
+import { waitingAt } from './waiting';
 
 /**
  * What waits for a person of the practice, worked out from the data, with what runs and what is under way.

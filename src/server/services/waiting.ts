@@ -1,4 +1,4 @@
-import { addDays, dayNumber } from '../../core/load';
+import { dayNumber } from '../../core/load';
 import type { EditionContent } from '../../schemas/edition';
 import type { StationView } from '../../schemas/engagement';
 import type { WaitingView } from '../../schemas/today';
@@ -190,11 +190,4 @@ function nextStation(opened: OpenEngagement, station: StationView, today: string
       action: words.action,
     },
   ];
-}
-
-/** Words and dates of a week: `2026-11-23` -> week 48. */
-export function weekNumber(monday: string): number {
-  const thursday = addDays(monday, 3);
-  const firstOfYear = dayNumber(`${thursday.slice(0, 4)}-01-01`);
-  return Math.floor((dayNumber(thursday) - firstOfYear) / 7) + 1;
 }

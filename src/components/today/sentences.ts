@@ -1,0 +1,55 @@
+import type { TodayView, WaitingView } from '../../schemas/today';
+import { formatAmount, formatCount, formatDate, formatSpelled } from '../ui/format';
+
+const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
+const things = (count: number) => `${formatSpelled(count)} ${count === 1 ? 'thing waits' : 'things wait'}`;
+
+/** The finding of the page: what is overdue, else what money waits, else what waits longest. */
+export function todayHeading({ waiting, engagements }: TodayView): string {
+  const own = waiting.filter((row) => row.group !== 'others');
+  const [first] = own;
+  if (engagements.length === 0 && !first) return 'No engagement is under way. Begin one, and its work shows here.';
+  if (!first) return 'Nothing waits for you.';
+  const rest = own.length - 1;
+  const others = rest === 0 ? '' : `; ${formatSpelled(rest)} more ${rest === 1 ? 'waits' : 'wait'} for you`;
+  if (first.group === 'overdue') return `${first.title}${lateWords(first)}${others}.`;
+  const money = own.find((row) => row.stake && 'amountMinor' in row.stake && row.stake.amountMinor > 0);
+  if (money?.stake && 'amountMinor' in money.stake) {
+    const { amountMinor, currency, note } = money.stake;
+    return `${formatAmount(amountMinor, currency)}\u00a0${currency} ${note} at ${money.where.split(', ')[0]}${others}.`;
+  }
+  return `${first.title}${others}.`;
+}
+
+function lateWords(row: WaitingView): string {
+  if (row.dateIs === 'since') return '';
+  return row.days === 0 ? ', due today' : `: ${formatCount(row.days, 'day')} late`;
+}
+
+/** The line below: the day, how many wait, how many are with others. */
+export function todayLead({ waiting, date }: TodayView, week: number, weekday: string): string {
+  const own = waiting.filter((row) => row.group !== 'others').length;
+  const overdue = waiting.filter((row) => row.group === 'overdue').length;
+  const others = waiting.length - own;
+  const parts = [
+    own === 0 ? 'nothing waits for you' : `${things(own)} for you`,
+    overdue > 0 && `${formatSpelled(overdue)} of them overdue`,
+  ].filter(Boolean);
+  const tail = others > 0 ? `; ${formatSpelled(others)} more ${others === 1 ? 'is' : 'are'} with others` : '';
+  return `${weekday} ${formatDate(date)}, week ${week}. ${capital(parts.join(', '))}${tail}.`;
+}
+
+export const groupWords: Record<WaitingView['group'], string> = {
+  overdue: 'Overdue',
+  yours: 'Yours',
+  others: 'With others',
+};
+
+/** Beneath the date: how late, or how long it waits. */
+export function daysWords(row: WaitingView): string {
+  if (row.dateIs === 'due') {
+    if (row.group === 'overdue') return row.days === 0 ? 'due today' : `${formatCount(row.days, 'day')} late`;
+    return 'due';
+  }
+  return row.days === 0 ? 'today' : formatCount(row.days, 'day');
+}

@@ -3,10 +3,12 @@
  *
  * Optimal string alignment distance (a letter lost, added, changed, or two swapped count one), at most a third of the length and at
  * least one; letters' case is ignored.
+ *
+ * @param most  Greatest distance, in place of a third of the length
  */
-export function nearestName(typed: string, known: Iterable<string>): string | undefined {
+export function nearestName(typed: string, known: Iterable<string>, most = Math.max(1, Math.floor(typed.length / 3))): string | undefined {
   let best: string | undefined;
-  let bestDistance = Math.max(1, Math.floor(typed.length / 3)) + 0.5;
+  let bestDistance = most + 0.5;
   for (const name of known) {
     if (name === typed) continue;
     const distance = editDistance(typed.toLowerCase(), name.toLowerCase());

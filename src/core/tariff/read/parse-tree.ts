@@ -27,7 +27,7 @@ export function parseTree(text: string): { root: MapTree; problems: Problems } {
     uniqueKeys: false,
     prettyErrors: false,
     lineCounter: lines,
-    logLevel: 'silent',
+    logLevel: 'error',
   });
   const problems = new Problems(lines);
   addSyntaxErrors(document, problems);

@@ -1,7 +1,7 @@
 import { channelOf, isChannelName, type ChannelName } from '../channels';
 import type { CellKind, QuantityDefinition, QuantityEntry } from '../model';
 import type { Rounding } from '../../units';
-import { didYouMean } from '../nearest';
+import { didYouMean, nearestName } from '../nearest';
 import type { RawExpression } from './expressions';
 import { asMap, asNumber, asText, asWords, checkFields, checkTornValues, readRounding } from './fields';
 import { readWords } from './inputs';
@@ -39,18 +39,17 @@ export function readQuantity(entry: MapEntry, context: TextContext): void {
   const map = asMap(entry.value, problems, 'Write { sum: kwh }, { formula: ... } and so on.');
   const raw = map && readRaw(entry, map, context);
   const rounding = map ? roundingOf(map, context) : undefined;
+  const unit = map ? unitText(map, context) : undefined;
   const familyWindows = raw && (raw.windows ?? reader.windowsOf(raw.expressions, entry));
-  if (!map || !raw || rounding === 'problem' || familyWindows === 'problem') {
+  if (!map || !raw || rounding === 'problem' || unit === 'problem' || familyWindows === 'problem') {
     makeBroken(entry, map, context);
     return;
   }
-  const unitTree = valueOf(map, 'unit');
-  const unitText = unitTree ? asText(unitTree, problems, 'Write unit: kVA.')?.text : undefined;
   const words = readWords(map, problems);
   const add = (name: string, window: string | undefined): NameInfo => {
-    const { definition, unit } = raw.define(window);
-    const shown = unitText ?? unit;
-    const hasUnit = unitText !== undefined || (definition.kind !== 'formula' && definition.kind !== 'pick');
+    const { definition, unit: measured } = raw.define(window);
+    const shown = unit ?? measured;
+    const hasUnit = unit !== undefined || (definition.kind !== 'formula' && definition.kind !== 'pick');
     const quantity: QuantityEntry = {
       name,
       slot: scope.slots.of(name),
@@ -94,6 +93,24 @@ function makeBroken(entry: MapEntry, map: MapTree | undefined, { scope, windows 
       { kind: 'broken', windows: known, members: known.map((word) => memberName(entry.key, word)) },
       info,
     );
+}
+
+const meterUnits = ['kWh', 'kvarh', 'kVAh', 'kW', 'kvar', 'kVA'];
+const otherUnits: ReadonlySet<string> = new Set([...meterUnits, 'kV', 'MW', 'MWh', 'Mvar', 'Mvarh', 'MVA', 'MVAh', 'Wh', 'var', 'VA']);
+
+/**
+ * The unit as said. By its unit a quantity is known to be energy, which decides how its line is shared between parts of a period:
+ * so a slip in a meter's unit is refused.
+ */
+function unitText(map: MapTree, { problems }: TextContext): string | undefined | 'problem' {
+  const tree = valueOf(map, 'unit');
+  if (!tree) return undefined;
+  const word = asText(tree, problems, 'Write unit: kVA.');
+  if (!word) return 'problem';
+  const near = nearestName(word.text, meterUnits, 1);
+  if (otherUnits.has(word.text) || near === undefined) return word.text;
+  problems.add(word, `"${word.text}" is not a unit of a meter.`, `Did you mean "${near}"?`);
+  return 'problem';
 }
 
 function roundingOf(map: MapTree, { problems }: TextContext): Rounding | undefined | 'problem' {

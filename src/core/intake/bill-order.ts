@@ -23,9 +23,10 @@ const longestPeriod = 100;
 export function findPeriodOrder(input: OrderInput): OrderFinding {
   const dated = input.from ?? input.to;
   if (!dated) return { order: 'YMD', tests: [[true, 'Months are named']] };
+  if (shareOf(dated, 'number') > 0.5)
+    return { order: 'serial', tests: [[true, 'Figures of the size of spreadsheet dates']] };
   const plain = findDateOrder(input.grid, dated.index, input.rows, input.timeZone);
-  if (plain.tests.some(([isMet, why]) => isMet && !why.includes('jump')) || shareOf(dated, 'number') > 0.5)
-    return plain;
+  if (plain.tests.some(([isMet, why]) => isMet && !why.includes('jump'))) return plain;
   const scored = (['DMY', 'MDY', 'YMD'] as DateOrder[])
     .map((order) => ({ order, score: scoreOf(input, order) }))
     .sort((a, b) => b.score - a.score);

@@ -1,4 +1,5 @@
-import { billCellKind, monthDay } from './bill-months';
+import { billCellKind } from './bill-months';
+import { findPeriods } from './bill-periods';
 import { billMeaning } from './bill-words';
 import { findBlock, type TableBlock } from './block';
 import { profileColumns, sampleRows, shareOf, withoutFooters, type ColumnProfile } from './cells';
@@ -9,10 +10,8 @@ import { transpose, type Grid } from './grid';
 import { delimiterGuesses } from './guesses';
 import { mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
-import { findPeriodOrder } from './bill-order';
-import { orderInWords } from './stamp-order';
 import type { ColumnEvidence, ColumnMap, ColumnUse, DateOrder, Guess, ReadOptions } from './types';
-import { mentions } from './words';
+import { unitOfHeader } from './words';
 
 /** A table of bills with its meaning settled. */
 export interface BillPlan {
@@ -115,83 +114,9 @@ function locateBills(
   }
 }
 
-interface PeriodInput {
-  grid: Grid;
-  profiles: readonly ColumnProfile[];
-  rows: readonly number[];
-  map: Partial<ColumnMap>;
-  timeZone: string;
-  findings: Map<number, RoleFinding>;
-}
-
-/** Columns of the period: from and to, a month, or the day of reading with the days before it. */
-function findPeriods(input: PeriodInput): Guess & { order: DateOrder } {
-  const { grid, profiles, rows, map, findings } = input;
-  const months = profiles.filter((profile) => isMonths(grid, profile, rows));
-  const dates = profiles.filter((profile) => !months.includes(profile) && shareOf(profile, 'date', 'stamp') > 0.8);
-  const relevant = dates.filter(
-    (profile) =>
-      !/\b(due|paid|payment|issued?|printed|invoice|bill) ?(date)?\b/i.test(profile.name.replaceAll('_', ' ')) ||
-      mentions(profile.name, 'begin') ||
-      mentions(profile.name, 'end'),
-  );
-  const [only = dates[0]] = relevant;
-  const from =
-    relevant.find((profile) => mentions(profile.name, 'begin')) ?? (relevant.length > 1 ? relevant[0] : undefined);
-  const to =
-    relevant.find(
-      (profile) => profile !== from && (mentions(profile.name, 'end') || /\b(through|thru|read)\b/i.test(profile.name)),
-    ) ?? relevant.find((profile) => profile !== from && from !== undefined);
-  const put = (profile: ColumnProfile, role: RoleFinding['role'], why: string, isSure: boolean): void =>
-    void findings.set(profile.index, { role, tests: [[isSure, why]] });
-  if (from && to) {
-    put(from, 'period-from', 'The earlier date of the row', mentions(from.name, 'begin') || relevant.length === 2);
-    put(to, 'period-to', 'The later date of the row', mentions(to.name, 'end') || relevant.length === 2);
-  } else if (months[0]) put(months[0], 'month', 'Each cell names a month', true);
-  else if (only) {
-    if (mentions(only.name, 'begin'))
-      put(only, 'period-from', 'The only date of the row: each period runs to the next', false);
-    else put(only, 'period-to', 'The only date of the row: each period begins where the one before ends', false);
-  }
-  const days = profiles.find(
-    (profile) =>
-      /\b(days|tage|giorni|jours|dias|días)\b/i.test(profile.name.replaceAll('_', ' ')) &&
-      shareOf(profile, 'number') > 0.8,
-  );
-  if (days) put(days, 'days', 'Named as days', true);
-  for (const profile of dates)
-    if (!findings.has(profile.index)) put(profile, 'ignore', 'A date that bounds no period', true);
-  const roleOf = (role: string): ColumnProfile | undefined =>
-    profiles.find((profile) => findings.get(profile.index)?.role === role);
-  const found = findPeriodOrder({
-    grid,
-    rows,
-    timeZone: input.timeZone,
-    from: roleOf('period-from'),
-    to: roleOf('period-to'),
-    days,
-  });
-  const given = map.stamp?.order;
-  const order = given ?? found.order;
-  const tests: [boolean, string][] = given && given !== found.order ? [[true, 'Given by the column map']] : found.tests;
-  return { ...guess('date-order', orderInWords(order), tests), order };
-}
-
-function isMonths(grid: Grid, profile: ColumnProfile, rows: readonly number[]): boolean {
-  const filled = profile.sampled - profile.kinds.blank;
-  if (
-    filled === 0 || shareOf(profile, 'number') > 0.8
-      ? !/\b(month|monat|mese|mois|mes|period)\b/i.test(profile.name)
-      : false
-  )
-    return false;
-  const named = rows.filter((row) => !Number.isNaN(monthDay(grid.text(row, profile.index)))).length;
-  return named > 0 && named >= filled * 0.8;
-}
-
-/** Money shows in currency signs, brackets, or two decimals throughout. */
+/** Meaning of a column of figures by its name and by currency signs or brackets in its cells. */
 function meaningOf(grid: Grid, profile: ColumnProfile, rows: readonly number[]): RoleFinding {
-  const isFigures = shareOf(profile, 'number') > 0.7;
+  const isFigures = shareOf(profile, 'number') > (unitOfHeader(profile.name) ? 0.2 : 0.7);
   if (!isFigures)
     return {
       role: 'ignore',

@@ -2,7 +2,7 @@ import { cellKind, type CellKind } from './cells';
 import { intakeError } from './errors';
 import { gridCaps, type Grid } from './grid';
 import { StampScanner } from './stamps';
-import { mentions, unitMeaning, unitOfHeader } from './words';
+import { namesTime, unitMeaning, unitOfHeader } from './words';
 
 /** Where the table begins in a grid. Rows count from 0. */
 export interface TableBlock {
@@ -102,10 +102,7 @@ function firstSerialRow(grid: Grid, kinds: CellKind[][]): number {
     const here = kinds[row] ?? [];
     const named = here.findIndex((kind, column) => {
       const name = grid.text(row, column);
-      return (
-        kind === 'text' &&
-        (mentions(name, 'stamp') || mentions(name, 'date') || mentions(name, 'time') || /epoch|unix/i.test(name))
-      );
+      return kind === 'text' && namesTime(name);
     });
     if (named < 0) continue;
     const below = kinds.slice(row + 1, row + 5);

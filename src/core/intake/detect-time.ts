@@ -5,7 +5,7 @@ import { findDateOrder, orderInWords } from './stamp-order';
 import { StampScanner } from './stamps';
 import type { ColumnMap, DateOrder, Guess, IntervalRole, StampStyle } from './types';
 import type { WideColumns } from './wide';
-import { mentions } from './words';
+import { mentions, namesTime } from './words';
 
 interface TimeInput {
   grid: Grid;
@@ -162,16 +162,7 @@ function isFigureTime(input: TimeInput, profile: ColumnProfile): boolean {
 /** Spreadsheet serials and epoch figures, which only their size and a name of date or time give away. */
 function numericStamp(input: TimeInput, index: number): { order: DateOrder; tests: Test[] } | null {
   const profile = input.profiles[index];
-  if (
-    !profile ||
-    !(
-      mentions(profile.name, 'stamp') ||
-      mentions(profile.name, 'date') ||
-      mentions(profile.name, 'time') ||
-      /epoch|unix|^ts$/i.test(profile.name)
-    )
-  )
-    return null;
+  if (!profile || !namesTime(profile.name)) return null;
   const figures = figuresOf(input, profile);
   if (figures.length < 2) return null;
   const within = (least: number, most: number): boolean => figures.every((figure) => figure >= least && figure <= most);

@@ -365,3 +365,9 @@ export function namesPowerFactor(name: string): boolean {
     /(leistungsfaktor|fattore di potenza|facteur de puissance|factor de potencia)/i.test(name)
   );
 }
+
+/** A name of a date, a time or an end of a period: figures beneath it may be serials or seconds. */
+export function namesTime(name: string): boolean {
+  const isNamed = (['stamp', 'date', 'time', 'begin', 'end'] as const).some((group) => mentions(name, group));
+  return isNamed || /epoch|unix|^ts$/i.test(name);
+}

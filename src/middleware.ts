@@ -3,7 +3,7 @@ import { defineMiddleware } from 'astro:middleware';
 import { ServiceError } from './server/errors';
 
 /** Pages that need no account. Everything else asks for one; services then decide what the person may see. */
-const openPaths = [/^\/sign-in$/, /^\/reset(\/|$)/, /^\/invitation\//, /^\/404$/, /^\/500$/];
+const openPaths = [/^\/sign-in$/, /^\/sign-out$/, /^\/reset(\/|$)/, /^\/invitation\//, /^\/404$/, /^\/500$/];
 
 const contentPolicy = [
   "default-src 'self'",
@@ -31,13 +31,14 @@ function harden(response: Response): Response {
   return response;
 }
 
-/** Pages let services throw: what a person may not know of is the plain page of what does not exist. */
+/** Pages let services throw: what a person may not know of or not open is the plain page of what does not exist. */
 async function answer(context: APIContext, next: MiddlewareNext): Promise<Response> {
   try {
     return await next();
   } catch (error) {
-    if (error instanceof ServiceError && (error.status === 404 || error.status === 403)) return context.rewrite('/404');
-    throw error;
+    if (!(error instanceof ServiceError) || (error.status !== 404 && error.status !== 403)) throw error;
+    const page = await context.rewrite('/404');
+    return new Response(page.body, { status: error.status, headers: page.headers });
   }
 }
 

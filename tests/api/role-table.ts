@@ -24,7 +24,8 @@ export const roleTable: Record<string, Row> = {
   'GET /500': ['broken', 'broken', 'broken', 'broken', 'broken', 'broken'],
   'GET /sign-in': everybody,
   'POST /sign-in': everybody,
-  'POST /sign-out': everybody,
+  // Everybody is led to the sign-in, which the answer cannot tell from being asked to sign in.
+  'POST /sign-out': ['sign in', 'sign in', 'sign in', 'sign in', 'sign in', 'sign in'],
   'GET /reset': everybody,
   'POST /reset': everybody,
   'GET /reset/[token]': everybody,
@@ -32,6 +33,7 @@ export const roleTable: Record<string, Row> = {
   'GET /invitation/[token]': everybody,
   'POST /invitation/[token]': everybody,
   'GET /profile': signedIn,
+  'POST /profile': signedIn,
 
   'GET /today': staff,
   'GET /engagements': staff,

@@ -151,8 +151,8 @@ describe('clients', () => {
 });
 
 describe('readTrail', () => {
-  it('is nothing to consultants and clients', async () => {
-    await expect(readTrail(tom, {})).rejects.toMatchObject({ status: 404 });
+  it('is closed to consultants and nothing to clients', async () => {
+    await expect(readTrail(tom, {})).rejects.toMatchObject({ status: 403 });
     await expect(readTrail(mira, {})).rejects.toMatchObject({ status: 404 });
   });
 

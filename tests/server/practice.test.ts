@@ -8,8 +8,8 @@ import { buildActor, buildClient, buildEngagement } from '../setup/build';
 const today = '2026-12-01';
 
 describe('practiceOn', () => {
-  it('is nothing to consultants and clients', async () => {
-    await expect(practiceOn(await buildActor(), today)).rejects.toMatchObject({ status: 404 });
+  it('is closed to consultants and nothing to clients', async () => {
+    await expect(practiceOn(await buildActor(), today)).rejects.toMatchObject({ status: 403 });
     await expect(practiceOn(await buildActor({ role: 'client' }), today)).rejects.toMatchObject({ status: 404 });
   });
 

@@ -1,24 +1,32 @@
 import type { TodayView, WaitingView } from '../../schemas/today';
-import { formatAmount, formatCount, formatDate, formatSpelled } from '../ui/format';
+import { formatCount, formatDate, formatMoney, formatSpelled } from '../ui/format';
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 const things = (count: number) => `${formatSpelled(count)} ${count === 1 ? 'thing waits' : 'things wait'}`;
 
+const lower = (text: string) => text.charAt(0).toLowerCase() + text.slice(1);
+
 /** The finding of the page: what is overdue, else what money waits, else what waits longest. */
 export function todayHeading({ waiting, engagements }: TodayView): string {
   const own = waiting.filter((row) => row.group !== 'others');
-  const [first] = own;
-  if (engagements.length === 0 && !first) return 'No engagement is under way. Begin one, and its work shows here.';
-  if (!first) return 'Nothing waits for you.';
-  const rest = own.length - 1;
-  const others = rest === 0 ? '' : `; ${formatSpelled(rest)} more ${rest === 1 ? 'waits' : 'wait'} for you`;
-  if (first.group === 'overdue') return `${first.title}${lateWords(first)}${others}.`;
-  const money = own.find((row) => row.stake && 'amountMinor' in row.stake && row.stake.amountMinor > 0);
-  if (money?.stake && 'amountMinor' in money.stake) {
-    const { amountMinor, currency, note } = money.stake;
-    return `${formatAmount(amountMinor, currency)}\u00a0${currency} ${note} at ${money.where.split(', ')[0]}${others}.`;
+  const money = own.find((row) => row.group !== 'overdue' && row.stake && 'amountMinor' in row.stake);
+  const first = own[0]?.group === 'overdue' ? own[0] : (money ?? own[0]);
+  if (!first) {
+    return engagements.length > 0
+      ? 'Nothing waits for you.'
+      : 'No engagement is under way. Begin one, and its work shows here.';
   }
-  return `${first.title}${others}.`;
+  const rest = own.length - 1;
+  const others =
+    rest === 0 ? '' : `; ${formatSpelled(rest)} more ${rest === 1 ? 'thing waits' : 'things wait'} for you`;
+  const firm = first.where.includes(', ') ? `${first.where.split(', ')[0]}: ${lower(first.title)}` : first.title;
+  return `${firm}${stakeWords(first)}${lateWords(first)}${others}.`;
+}
+
+function stakeWords({ stake }: WaitingView): string {
+  if (!stake) return '';
+  if ('amountMinor' in stake) return `, ${formatMoney(stake.amountMinor, stake.currency)} ${stake.note}`;
+  return /^\d+(,\d{3})*/.test(stake.text) && !/^\d{4}-/.test(stake.text) ? `, ${stake.text} ${stake.note}` : '';
 }
 
 function lateWords(row: WaitingView): string {

@@ -1,10 +1,8 @@
 import { inTx } from '../db/tx';
-import { forbidden, invalid } from '../errors';
+import { invalid } from '../errors';
 import { HourEntry } from '../models/HourEntry';
 import { Membership } from '../models/Membership';
 import { User } from '../models/User';
-import type { Actor } from '../policies/actor';
-import { canManagePeople } from '../policies/engagement';
 import type { OpenEngagement } from './engagements';
 
 /** Somebody who works on an engagement. */
@@ -14,18 +12,12 @@ export interface MemberView {
   role: string;
 }
 
-/** @throws {ServiceError} 403 for anybody but partners */
-export function authorizeMembers(actor: Actor): void {
-  if (!canManagePeople(actor)) throw forbidden('Who works on an engagement is decided by partners.');
-}
-
 /** Those who work on an opened engagement. */
 export const membersOf = ({ members }: OpenEngagement): MemberView[] =>
   members.map(({ id, name, role }) => ({ userId: id, name, role }));
 
-/** Lets a person of the practice work on the engagement; twice is once. @throws {ServiceError} 403, 422 */
-export async function addMember(actor: Actor, opened: OpenEngagement, userId: number): Promise<MemberView> {
-  authorizeMembers(actor);
+/** Lets a person of the practice work on the engagement; twice is once. @throws {ServiceError} 422 */
+export async function addMember(opened: OpenEngagement, userId: number): Promise<MemberView> {
   const user = await User.findByPk(userId);
   if (!user || user.role === 'client' || user.disabledAt) {
     throw invalid('Choose a person of the practice.', { userId: ['Choose a person of the practice.'] });
@@ -37,9 +29,8 @@ export async function addMember(actor: Actor, opened: OpenEngagement, userId: nu
   return { userId, name: user.name, role: user.role };
 }
 
-/** Takes a person off the engagement; their hours stay. @throws {ServiceError} 403 */
-export async function removeMember(actor: Actor, opened: OpenEngagement, userId: number): Promise<{ hours: number }> {
-  authorizeMembers(actor);
+/** Takes a person off the engagement; their hours stay. */
+export async function removeMember(opened: OpenEngagement, userId: number): Promise<{ hours: number }> {
   const where = { engagementId: opened.engagement.id, userId };
   await inTx(async () => {
     await (await Membership.findOne({ where }))?.destroy();

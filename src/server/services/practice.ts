@@ -1,12 +1,12 @@
 import { addDays, dayNumber } from '../../core/load';
 import { mondayOf, type HourSums } from '../../schemas/hour';
 import type { PracticeView, ProgressView, UtilisationView } from '../../schemas/practice';
-import { notFound } from '../errors';
+import { forbidden, notFound } from '../errors';
 import { HourEntry } from '../models/HourEntry';
 import { Practice } from '../models/Practice';
 import { Rate } from '../models/Rate';
 import { User } from '../models/User';
-import type { Actor } from '../policies/actor';
+import { isStaff, type Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
 import { listEngagements, type OpenEngagement } from './engagements';
 import { amountMinorOf, rateInForce } from './rates';
@@ -121,10 +121,11 @@ function peopleOf(priced: (Priced & { currency: string })[], users: Map<number, 
 /**
  * Work in progress and utilisation on a day. Nothing has been invoiced yet, so every hour told is work in progress.
  *
- * @throws {ServiceError} 404 for anybody but partners
+ * @throws {ServiceError} 404 to clients, 403 to consultants
  */
 export async function practiceOn(actor: Actor, today: string): Promise<PracticeView> {
-  if (!canSeePractice(actor)) throw notFound();
+  if (!isStaff(actor)) throw notFound();
+  if (!canSeePractice(actor)) throw forbidden('The practice’s money is seen by partners only.');
   const [practice, engagements, entries, rates, staff] = await Promise.all([
     Practice.findOne(),
     listEngagements(actor),

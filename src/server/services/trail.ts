@@ -1,10 +1,10 @@
 import { Op, type WhereOptions } from 'sequelize';
 import { addDays } from '../../core/load';
 import { trailFilterInput, type TrailFilter, type TrailView } from '../../schemas/trail';
-import { notFound } from '../errors';
+import { forbidden, notFound } from '../errors';
 import { Trail } from '../models/Trail';
 import { User } from '../models/User';
-import type { Actor } from '../policies/actor';
+import { isStaff, type Actor } from '../policies/actor';
 import { canReadTrail } from '../policies/engagement';
 import { presentTrail } from '../presenters/trail';
 
@@ -25,10 +25,11 @@ function whereOf(filter: TrailFilter): WhereOptions {
 /**
  * The trail, newest first, filtered by who, what and when. A filter that cannot be read filters nothing.
  *
- * @throws {ServiceError} 404 for anybody but partners
+ * @throws {ServiceError} 404 to clients, 403 to consultants
  */
 export async function readTrail(actor: Actor, query: Record<string, string>): Promise<TrailView> {
-  if (!canReadTrail(actor)) throw notFound();
+  if (!isStaff(actor)) throw notFound();
+  if (!canReadTrail(actor)) throw forbidden('The trail is read by partners only.');
   const filter = trailFilterInput.parse(query);
   const where = whereOf(filter);
   const [count, subjects, users] = await Promise.all([

@@ -184,7 +184,7 @@ function nextStation(opened: OpenEngagement, station: StationView, today: string
       title: words.title,
       where: whereOf(opened),
       why: words.why,
-      stake: { text: station.reason, note: station.label },
+      stake: null,
       next: words.next,
       href: station.href,
       action: words.action,

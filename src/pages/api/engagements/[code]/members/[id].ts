@@ -5,5 +5,5 @@ import { removeMember } from '@/server/services/members';
 
 export const DELETE = endpoint(async ({ actor, params }) => {
   const opened = await openEngagement(actor, params.code ?? '');
-  return Response.json(await removeMember(actor, opened, rowId(params.id)));
+  return Response.json(await removeMember(opened, rowId(params.id)));
 });

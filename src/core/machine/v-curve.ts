@@ -1,7 +1,7 @@
 import { capabilityOf } from './capability';
 import type { Capability } from './capability';
 import { PullOutError, requireRange } from './errors';
-import { compileMotor } from './motor';
+import { compileMotor, ratedKva } from './motor';
 import type { SynchronousMotor } from './motor';
 import { checkLoad, describeState, operatingPoint } from './operating-point';
 import type { Limit } from './operating-point';
@@ -54,23 +54,36 @@ export function unityField(motor: SynchronousMotor, at: { shaftKw: number; volta
   return operatingPoint(motor, { ...at, powerFactor: 1, leading: false }).fieldCurrentA;
 }
 
+/** The excitation of least loss. */
+export interface LeastLoss {
+  fieldCurrentA: number;
+  kvar: number;
+  inputKw: number;
+}
+
 /**
  * Field current at which the motor's own losses are least at a shaft load, and its reactive power there.
  *
- * It lies below unity field: field loss still rises where armature loss is flat. Searched between 1 pu absorbed and
+ * It lies below unity field: field loss still rises where armature loss is flat. Searched between 0.9/Xd absorbed and
  * 0.2 pu delivered.
  */
-export function leastLossField(
+export function leastLossField(motor: SynchronousMotor, at: { shaftKw: number; voltagePu?: number }): LeastLoss {
+  const kva = ratedKva(motor);
+  return leastLossWithin(motor, { ...at, fromKvar: -0.2 * kva, toKvar: (0.9 / motor.xdPu) * kva });
+}
+
+/** The same within a range of reactive power absorbed. [kvar], fromKvar <= toKvar */
+export function leastLossWithin(
   motor: SynchronousMotor,
-  at: { shaftKw: number; voltagePu?: number },
-): { fieldCurrentA: number; kvar: number; inputKw: number } {
+  at: { shaftKw: number; voltagePu?: number; fromKvar: number; toKvar: number },
+): LeastLoss {
   const model = compileMotor(motor);
   const v = checkLoad(at);
-  const shaft = at.shaftKw / model.baseKva;
-  const input = (q: number) => describeState(model, solveAtKvar(model, shaft, q, v), at.shaftKw).inputKw;
-  const q = goldenMinimum(input, -0.2, 0.9 / motor.xdPu);
-  const point = describeState(model, solveAtKvar(model, shaft, q, v), at.shaftKw);
-  return { fieldCurrentA: point.fieldCurrentA, kvar: point.kvar, inputKw: point.inputKw };
+  requireRange(at.fromKvar <= at.toKvar, 'fromKvar', `at most toKvar (${at.toKvar})`, at.fromKvar);
+  const pointAt = (q: number) => describeState(model, solveAtKvar(model, at.shaftKw / model.baseKva, q, v), at.shaftKw);
+  const q = goldenMinimum((own) => pointAt(own).inputKw, at.fromKvar / model.baseKva, at.toKvar / model.baseKva);
+  const { fieldCurrentA, kvar, inputKw } = pointAt(q);
+  return { fieldCurrentA, kvar, inputKw };
 }
 
 /**

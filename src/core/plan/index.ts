@@ -21,3 +21,5 @@ export {
   voltageRisePu,
 } from './network';
 export type { BusLoad } from './network';
+export { boundCost } from './bound-cost';
+export type { CostBound } from './bound-cost';

@@ -27,8 +27,8 @@ describe('boundCost', () => {
       operatingPoint(motor.motor, { shaftKw: 1200, fieldCurrentA: 105 }).kvar;
     const running = motor.shaftKw.filter((kw) => kw > 0).length;
     expect(bound.cost).toBeCloseTo(total(load.kvarhLagging) - (more * running) / 4, 6);
-    expect(bound.trials).toBe(60);
-    expect(bound.words).toMatch(/60 trials/);
+    expect(bound.trials).toBe(90);
+    expect(bound.words).toMatch(/90 trials/);
   });
 
   it('has the least active energy of any admissible field', () => {
@@ -66,9 +66,22 @@ describe('boundCost', () => {
 
   it('gives none where a bill falls as a register rises', () => {
     const credit = (series: LoadSeries) => Float64Array.of(1000 - 0.05 * total(series.kvarhLeading));
-    const bound = boundCost({ plant: { load, motors: [motor] }, totals: credit });
+    const light = buildLoad(3, { kvarhLagging: new Float64Array(load.kwh.length).fill(60) });
+    const bound = boundCost({ plant: { load: light, motors: [motor] }, totals: credit });
     expect(bound.cost).toBeNull();
     expect(bound.words).toMatch(/leading energy falls/);
+  });
+
+  it('takes off twice the most a bill rises as active energy falls, and says so', () => {
+    // A power factor of the whole series rounded down to 0.0005 puts steps of 20 on the bill; lagging energy costs 1.
+    const totals = (series: LoadSeries) => {
+      const pf = total(series.kwh) / Math.hypot(total(series.kwh), total(series.kvarhLagging));
+      return Float64Array.of(total(series.kvarhLagging) + 0.01 * total(series.kwh) - 20 * Math.floor(2000 * pf));
+    };
+    const plant = { load, motors: [motor] };
+    const bound = boundCost({ plant, totals });
+    expect(bound.words).toMatch(/; (3\d|40)\.\d\d, twice the most seen in 90 trials/);
+    expect(bound.cost!).toBeLessThanOrEqual(searchFields({ plant, totals }).cost);
   });
 
   it('gives none for a meter upstream of a transformer', () => {

@@ -11,7 +11,7 @@ import { delimiterGuesses } from './guesses';
 import { mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
 import type { ColumnEvidence, ColumnMap, ColumnUse, DateOrder, Guess, ReadOptions } from './types';
-import { unitOfHeader } from './words';
+import { unitOfHeader } from './units';
 
 /** A table of bills with its meaning settled. */
 export interface BillPlan {

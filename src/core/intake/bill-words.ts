@@ -1,5 +1,6 @@
 import type { Test } from './evidence';
-import { headerWords, isForeignUnit, mentions, namesPowerFactor, unitOfHeader } from './words';
+import { isForeignUnit, unitOfHeader } from './units';
+import { headerWords, mentions, namesPowerFactor } from './words';
 
 /** What the name of a column of a table of bills says. */
 export interface BillMeaning {

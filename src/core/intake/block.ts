@@ -2,7 +2,8 @@ import { cellKind, type CellKind } from './cells';
 import { intakeError } from './errors';
 import { gridCaps, type Grid } from './grid';
 import { StampScanner } from './stamps';
-import { namesTime, unitMeaning, unitOfHeader } from './words';
+import { unitMeaning, unitOfHeader } from './units';
+import { namesTime } from './words';
 
 /** Where the table begins in a grid. Rows count from 0. */
 export interface TableBlock {

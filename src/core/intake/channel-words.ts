@@ -1,5 +1,6 @@
 import type { IntervalRole, Measure } from './types';
-import { isForeignUnit, mentions, namesPowerFactor, unitOfHeader, type UnitMeaning } from './words';
+import { isForeignUnit, unitOfHeader, type UnitMeaning } from './units';
+import { mentions, namesPowerFactor } from './words';
 
 /** What the name of a column (or of a channel in a row) says its figures are. */
 export interface ChannelMeaning {

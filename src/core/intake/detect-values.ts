@@ -4,7 +4,8 @@ import { channelMeaning, type ChannelMeaning } from './channel-words';
 import { preambleUnit } from './preamble';
 import type { RoleFinding, Test } from './evidence';
 import type { Grid } from './grid';
-import { mentions, unitOfHeader } from './words';
+import { unitOfHeader } from './units';
+import { mentions } from './words';
 
 interface ValueInput {
   grid: Grid;

@@ -9,7 +9,8 @@ import { preambleUnit } from './preamble';
 import { qualityOf } from './quality';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, StampStyle } from './types';
 import { findWideColumns, type WideColumns } from './wide';
-import { mentions, unitMeaning, unitOfHeader } from './words';
+import { unitMeaning, unitOfHeader } from './units';
+import { mentions } from './words';
 
 /** Everything about the columns of a file of intervals that can be told before its rows are read one by one. */
 export interface IntervalDetection {

@@ -12,7 +12,7 @@ import { footerWords } from './cells';
 import { StampScanner } from './stamps';
 import type { Strand } from './strand';
 import type { ColumnUse } from './types';
-import { unitMeaning } from './words';
+import { unitMeaning } from './units';
 
 interface DayRow {
   row: number;

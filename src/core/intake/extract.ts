@@ -7,7 +7,7 @@ import { qualityOf } from './quality';
 import { readStamps } from './read-stamps';
 import { runsBackwards, turnStrand, type Strand, type StrandChannel } from './strand';
 import type { ColumnUse, IntakeNote, IntervalRole, StampStyle } from './types';
-import { unitMeaning, type UnitMeaning } from './words';
+import { unitMeaning, type UnitMeaning } from './units';
 
 /** The columns of a table by what they are for. */
 export interface ColumnPlan {

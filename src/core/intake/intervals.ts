@@ -1,28 +1,18 @@
-import { quality as grades, type LoadSeries } from '../load';
 import { findBlock, type TableBlock } from './block';
-import { detectColumns, type IntervalDetection } from './detect';
-import { intakeError, IntakeError } from './errors';
+import { checkColumns, checkExtraction, checkMeters } from './checks';
+import { detectColumns } from './detect';
 import { guess } from './evidence';
-import { columnOf, extractLong, valueRoles, type ColumnPlan, type Extraction } from './extract';
+import { columnOf, extractLong, type ColumnPlan } from './extract';
 import { extractWide } from './extract-wide';
 import { delimiterGuesses } from './guesses';
+import { loadOf } from './load-of';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
 import { preambleMultiplier } from './preamble';
-import { differenceRegisters, gridChannels, loadOf } from './series';
+import { reportOf } from './report';
+import { differenceRegisters, gridChannels } from './series';
 import { timelineOf } from './timeline';
-import type {
-  ColumnEvidence,
-  ColumnMap,
-  ColumnUse,
-  Guess,
-  IntakeGap,
-  IntakeNote,
-  IntakeReport,
-  IntervalReading,
-  ReadOptions,
-} from './types';
-import { mentions } from './words';
+import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
 
 /** A table of intervals with its meaning settled. */
 export interface IntervalPlan {
@@ -159,104 +149,6 @@ function uniqueNotes(notes: IntakeNote[]): IntakeNote[] {
   );
 }
 
-/** Several meters cannot be one load: the file's are listed for the person to pick. */
-function checkMeters(planned: IntervalPlan, options: ReadOptions): void {
-  const { meters, plan } = planned;
-  if (meters.length > 1 && plan.meter === undefined) {
-    throw intakeError(
-      `The file holds ${meters.length} meters: ${meters.slice(0, 20).join(', ')}${meters.length > 20 ? ' …' : ''}.`,
-      options.fileName,
-      'Pick one of them in the column map, then bring the file in again for the next.',
-    );
-  }
-  if (plan.meter !== undefined && meters.length > 0 && !meters.includes(plan.meter)) {
-    throw intakeError(
-      `The column map picks the meter “${plan.meter}”, which the file does not have.`,
-      `${options.fileName}, meters: ${meters.slice(0, 20).join(', ')}`,
-      'Pick one of the meters in the file.',
-    );
-  }
-}
-
-function checkColumns(planned: IntervalPlan, options: ReadOptions): void {
-  const { plan, columnMap } = planned;
-  const isTimed = plan.columns.some((use) => ['stamp', 'stamp-begin', 'stamp-end', 'date'].includes(use.role));
-  const where = `${options.fileName}, columns: ${plan.columns
-    .map((use) => use.name || String(use.index + 1))
-    .slice(0, 12)
-    .join(', ')}`;
-  if (!isTimed)
-    throw intakeError(
-      'No column holds the date and time of the readings.',
-      where,
-      'Say in the column map which column is the stamp, or which are date and time.',
-    );
-  if (plan.columns.some((use) => use.role === 'day-value' || use.role === 'value')) return;
-  const active = plan.columns.filter((use) => use.role === 'active');
-  if (!plan.columns.some((use) => valueRoles.has(use.role) && use.role !== 'export' && use.role !== 'power-factor')) {
-    throw intakeError(
-      'No column holds energy or power.',
-      where,
-      'Say in the column map which column is the energy drawn, and in which unit.',
-    );
-  }
-  const isConfirmed =
-    (options.columnMap?.columns ?? []).filter((use) => use.role === 'active').length === active.length;
-  const isTou = active.every((use) => mentions(use.name, 'touRegister'));
-  if (active.length > 1 && !isConfirmed && !isTou && columnMap.meter === undefined) {
-    throw intakeError(
-      `${active.length} columns may each be the energy drawn: ${active
-        .map((use) => use.name || `column ${use.index + 1}`)
-        .slice(0, 20)
-        .join(', ')}. They may be several meters, or registers of one.`,
-      options.fileName,
-      'In the column map ignore all but one; or keep several as energy drawn, and they are added.',
-    );
-  }
-}
-
-function checkExtraction(extraction: Extraction, options: ReadOptions): void {
-  const readings = extraction.strands.reduce((sum, strand) => sum + strand.rows.length, 0);
-  const problems = [];
-  const list = (found: { place: string; text: string }[]): string =>
-    found
-      .slice(0, 5)
-      .map(({ place, text }) => `${place}: “${text.slice(0, 40)}”`)
-      .join('; ');
-  const { badStamps, badValues, notes } = extraction;
-  if (badStamps.length > Math.max(2, readings * 0.01)) {
-    problems.push({
-      message: `${badStamps.length} rows have a stamp that cannot be read as a date and time.`,
-      where: `${options.fileName}, ${list(badStamps)}`,
-      remedy: 'Check which columns are date and time and the order of day, month and year in the column map.',
-    });
-  } else if (badStamps.length > 0)
-    notes.push({
-      code: 'stamp-unreadable',
-      message: `${badStamps.length} rows without a readable stamp are left out.`,
-      where: list(badStamps),
-    });
-  if (badValues.length > Math.max(2, readings * 0.01)) {
-    problems.push({
-      message: `${badValues.length} cells that should hold figures hold words.`,
-      where: `${options.fileName}, ${list(badValues)}`,
-      remedy: 'Check which columns hold figures and the decimal mark in the column map.',
-    });
-  } else if (badValues.length > 0)
-    notes.push({
-      code: 'value-unreadable',
-      message: `${badValues.length} cells hold no figure and count as missing.`,
-      where: list(badValues),
-    });
-  if (readings === 0 && problems.length === 0)
-    problems.push({
-      message: 'The table holds no reading.',
-      where: options.fileName,
-      remedy: 'Check the first row of data and the columns in the column map.',
-    });
-  if (problems.length > 0) throw new IntakeError(problems);
-}
-
 /** Units nobody named and multipliers nobody applied. */
 function assumptions(planned: IntervalPlan): IntakeNote[] {
   const notes: IntakeNote[] = [];
@@ -278,59 +170,3 @@ function assumptions(planned: IntervalPlan): IntakeNote[] {
     });
   return notes;
 }
-
-/** The report of a load. */
-export function reportOf(
-  load: LoadSeries,
-  found: Pick<IntakeReport, 'format' | 'rowsRead' | 'duplicates' | 'notes'>,
-): IntakeReport {
-  const hours = load.stepMinutes / 60;
-  const stepMs = load.stepMinutes * 60_000;
-  let missing = 0;
-  let estimated = 0;
-  let peakAt = -1;
-  const gaps: IntakeGap[] = [];
-  for (let slot = 0; slot < load.kwh.length; slot += 1) {
-    const grade = load.quality[slot];
-    if (grade === grades.estimated) estimated += 1;
-    if (grade === grades.missing) {
-      missing += 1;
-      const fromMs = load.startMs + slot * stepMs;
-      const open = gaps.at(-1);
-      if (open?.toMs === fromMs) {
-        open.toMs += stepMs;
-        open.intervals += 1;
-      } else gaps.push({ fromMs, toMs: fromMs + stepMs, intervals: 1 });
-    } else if ((load.kwh[slot] ?? Number.NaN) > (peakAt < 0 ? -1 : (load.kwh[peakAt] ?? 0))) peakAt = slot;
-  }
-  const maxKw = peakAt < 0 ? Number.NaN : (load.kwh[peakAt] ?? 0) / hours;
-  return {
-    ...found,
-    intervals: load.kwh.length,
-    missing,
-    estimated,
-    firstMs: load.startMs,
-    lastMs: load.startMs + (load.kwh.length - 1) * stepMs,
-    totalKwh: total(load.kwh),
-    totalKvarhLagging: total(load.kvarhLagging),
-    totalKvarhLeading: total(load.kvarhLeading),
-    maxKw,
-    gaps,
-    stepMinutes: load.stepMinutes,
-    ...(peakAt < 0 ? {} : { peak: { ms: load.startMs + peakAt * stepMs, kw: maxKw } }),
-  };
-}
-
-/** Sum of the figures that are there; NaN if none is. */
-function total(figures: Float64Array): number {
-  let sum = 0;
-  let count = 0;
-  for (const figure of figures) {
-    if (Number.isNaN(figure)) continue;
-    sum += figure;
-    count += 1;
-  }
-  return count === 0 ? Number.NaN : sum;
-}
-
-export type { IntervalDetection };

@@ -1,6 +1,6 @@
 import type { TableBlock } from './block';
 import type { Grid } from './grid';
-import { unitMeaning, type UnitMeaning } from './words';
+import { unitMeaning, type UnitMeaning } from './units';
 
 /** A unit standing alone in a cell above the table, or behind "unit:". */
 export function preambleUnit(grid: Grid, block: TableBlock): UnitMeaning | null {

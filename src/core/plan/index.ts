@@ -23,3 +23,8 @@ export {
 export type { BusLoad } from './network';
 export { boundCost } from './bound-cost';
 export type { CostBound } from './bound-cost';
+export { sizeCapacitors } from './size-capacitors';
+export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
+export { judgePlans } from './judge-plans';
+export type { Alternative, JudgedAlternative, Verdict } from './judge-plans';
+export { shaftLoadFromSubmeter } from './submeter';

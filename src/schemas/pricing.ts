@@ -19,7 +19,7 @@ export interface LinePair {
 
 /** One bill of the year, priced beside billed. */
 export interface ReconciledBill {
-  /** Month of the last day, the name people give a bill: "Aug 2025". */
+  /** Month most of its days lie in, the name people give a bill: "Aug 2025". */
   name: string;
   bill: BillView;
   priced: PricedBill;

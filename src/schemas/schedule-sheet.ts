@@ -11,7 +11,7 @@ export interface WindowSpan {
 /** A year of a schedule's windows: a day a column, minutes of the local clock upward. Days count from 0, 1 January. */
 export interface YearPicture {
   year: number;
-  windows: { name: string; label: string; words: string; hours: number; isRest: boolean }[];
+  windows: { name: string; label: string; words: string; hours: number; isRest: boolean; bySeason: boolean }[];
   /** Stretches of days in one season, [from, to). */
   seasons: { season: number; name: string; from: number; to: number }[];
   seasonNames: string[];

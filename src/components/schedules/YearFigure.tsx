@@ -17,7 +17,8 @@ export function fillOf(picture: YearPicture, window: number, season: number | nu
   const place = named.indexOf(window);
   if (place < 0 || (place === named.length - 1 && named.length === picture.windows.length && named.length > 2))
     return 'blank';
-  if (named.length === 1 && picture.seasonNames.length > 1) return season === 0 || season === null ? 'solid' : 'hatch';
+  if (named.length === 1 && picture.windows[window]?.bySeason)
+    return season === 0 || season === null ? 'solid' : 'hatch';
   return (['solid', 'hatch', 'dots'] as const)[place] ?? 'dots';
 }
 
@@ -146,11 +147,6 @@ function Marks({ picture, frame }: { picture: YearPicture; frame: Frame }) {
           {`${hours} h`}
         </Text>
       ))}
-      {picture.holidays.length > 0 && (
-        <Text x={frame.right} y={bottom + 45} anchor="end" quiet>
-          triangle: holiday
-        </Text>
-      )}
     </>
   );
 }
@@ -275,8 +271,7 @@ function fillWords(picture: YearPicture): string {
   const words: Record<Fill, string> = { solid: 'Solid', hatch: 'Hatched', dots: 'Dotted', blank: 'Blank' };
   const seen = new Map<Fill, Set<string>>();
   picture.windows.forEach((window, index) => {
-    const bySeason =
-      picture.seasonNames.length > 1 && !window.isRest && fillOf(picture, index, 0) !== fillOf(picture, index, 1);
+    const bySeason = window.bySeason && fillOf(picture, index, 0) !== fillOf(picture, index, 1);
     const entries: [Fill, string][] = bySeason
       ? picture.seasonNames.map((season, at) => [fillOf(picture, index, at), `${season} ${window.label.toLowerCase()}`])
       : [[fillOf(picture, index, 0), window.label.toLowerCase()]];
@@ -292,7 +287,7 @@ export function YearFigure({ picture, fileName }: { picture: YearPicture; fileNa
   return (
     <ChartFigure
       finding={`${first.label} is ${formatNumber(first.hours)} of the ${formatNumber(picture.totalHours)} hours of ${picture.year}.`}
-      reading={`A day a column, midnight at the foot. ${fillWords(picture)}`}
+      reading={`A day a column, midnight at the foot. ${fillWords(picture)}${picture.holidays.length > 0 ? ' Triangle: holiday.' : ''}`}
       fileName={fileName}
       table={yearTable(picture)}
       heightOf={yearHeight(picture)}

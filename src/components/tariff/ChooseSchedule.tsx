@@ -62,12 +62,14 @@ function HistoryInput({ field, form, monthBefore }: { field: HistoryField; form:
   const name = `history.${field.name}` as const;
   const last = monthBefore ? ` The last stands for ${monthBefore}.` : '';
   return (
-    <Field
-      label={`${field.label} of earlier months${field.unit ? `, ${field.unit}` : ''}`}
-      hint={`Oldest first, blanks between: 5,210 5,340 4,980.${last} The schedule looks back ${formatCount(field.months, 'month')}; older ones help to find a ratchet that was not released.`}
-      error={messageAt(form.formState.errors, name)}
-      {...form.register(name)}
-    />
+    <div className="whole">
+      <Field
+        label={`${field.label} of earlier months${field.unit ? `, ${field.unit}` : ''}`}
+        hint={`Oldest first, blanks between: 5,210 5,340 4,980.${last} The schedule looks back ${formatCount(field.months, 'month')}; older ones help to find a ratchet that was not released.`}
+        error={messageAt(form.formState.errors, name)}
+        {...form.register(name)}
+      />
+    </div>
   );
 }
 
@@ -139,16 +141,18 @@ export function ChooseSchedule(props: ChooseScheduleProps) {
   return (
     <form onSubmit={(event) => void submit(event)} noValidate className="choose-schedule">
       <div className="form-grid">
-        <SelectField
-          label="Schedule"
-          placeholder="Choose a schedule"
-          options={libraryOptions(library, choice)}
-          error={messageAt(form.formState.errors, 'scheduleId')}
-          {...form.register('scheduleId', {
-            onChange: (event: { target: { value: string } }) =>
-              form.reset(draftOf(schedules.get(event.target.value), choice), { keepDefaultValues: true }),
-          })}
-        />
+        <div className="whole choose-schedule-name">
+          <SelectField
+            label="Schedule"
+            placeholder="Choose a schedule"
+            options={libraryOptions(library, choice)}
+            error={messageAt(form.formState.errors, 'scheduleId')}
+            {...form.register('scheduleId', {
+              onChange: (event: { target: { value: string } }) =>
+                form.reset(draftOf(schedules.get(event.target.value), choice), { keepDefaultValues: true }),
+            })}
+          />
+        </div>
         {schedule?.contract.map((field) => (
           <ContractInput key={`${scheduleId}.${field.name}`} field={field} form={form} />
         ))}

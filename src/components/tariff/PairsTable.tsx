@@ -5,7 +5,7 @@ import { matchLine } from '../../client/tariff';
 import { noLine } from '../../schemas/tariff';
 import type { PairView, SheetRow, TariffSheetView } from '../../schemas/tariff-sheet';
 import { SelectField } from '../ui/Field';
-import { formatAmount } from '../ui/format';
+import { formatAmount, formatNumber } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
 import type { LedgerColumn, LedgerRow } from '../ui/ledger';
 import { Notice } from '../ui/Notice';
@@ -18,6 +18,13 @@ const matchWords: Record<PairView['matchedBy'], string> = {
   none: 'no match',
 };
 
+/** A rate with the decimals it is written with; one without a unit is a percentage of other lines. */
+function rateText({ rate, unit }: PairView): string | null {
+  if (rate === null) return null;
+  const text = formatNumber(rate, { upTo: 6 });
+  return unit ? text : `${text} %`;
+}
+
 function ledgerRow(pair: PairView): LedgerRow {
   const printed = pair.billed.map((line) => line.label).join(' + ');
   return {
@@ -29,7 +36,7 @@ function ledgerRow(pair: PairView): LedgerRow {
       clause: pair.clause,
       quantity: pair.quantity,
       unit: pair.unit,
-      rate: pair.rate,
+      rate: rateText(pair),
       priced: pair.pricedMinor ?? { value: 'not priced', tone: 'quiet' },
       printed: printed
         ? { value: printed, note: pair.lineId === null ? undefined : matchWords[pair.matchedBy] }
@@ -47,7 +54,7 @@ function columnsFor(currency: string): LedgerColumn[] {
     { key: 'clause', head: 'Clause' },
     { key: 'quantity', head: 'Quantity', kind: 'number', decimals: 2 },
     { key: 'unit', head: 'Unit', headUnseen: true, quiet: true },
-    { key: 'rate', head: 'Rate', unit: `${currency} a unit`, kind: 'number', decimals: 5 },
+    { key: 'rate', head: 'Rate', unit: `${currency} a unit`, align: 'right' },
     { key: 'priced', head: 'Priced', ...money, strong: true },
     { key: 'printed', head: 'Line of the bill' },
     { key: 'billed', head: 'Billed', ...money },

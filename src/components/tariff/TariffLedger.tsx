@@ -34,12 +34,21 @@ function Figure({ row, cell, figure, text, isNought = false, opened, origin, onP
   );
 }
 
-const groups = [
+const allGroups = [
   { key: 'energy', head: 'Energy' },
   { key: 'demand', head: 'Demand' },
   { key: 'reactive', head: 'Reactive' },
   { key: 'other', head: 'Other, tax' },
 ] as const;
+
+const groupOf = (group: string | null) => (allGroups.some(({ key }) => key === group) ? group : 'other');
+
+const hasGroup = (row: SheetRow, key: string) =>
+  row.pairs.some((pair) => pair.lineId !== null && groupOf(pair.group) === key);
+
+/** Groups that at least one bill has a line of. */
+const groupsOf = (sheet: TariffSheetView) =>
+  allGroups.filter(({ key }) => sheet.rows.some((row) => hasGroup(row, key)));
 
 function Head({ sheet }: { sheet: TariffSheetView }) {
   const money = <span className="unit">{sheet.currency}</span>;
@@ -58,7 +67,7 @@ function Head({ sheet }: { sheet: TariffSheetView }) {
             <span className="unit">{column.unit || '\u00a0'}</span>
           </th>
         ))}
-        {groups.map((group) => (
+        {groupsOf(sheet).map((group) => (
           <th key={group.key} scope="col">
             {group.head}
             {money}
@@ -88,6 +97,7 @@ function QuantityCells({ sheet, row, ...press }: RowProps) {
     const quantity = row.quantities[column.key];
     return (
       <td key={column.key}>
+        {!quantity && column.key === 'rate' && <span className="quiet">shared</span>}
         {quantity && (
           <>
             {column.key === 'billed' && row.ratchet && (
@@ -115,11 +125,10 @@ function MoneyCells({ sheet, row, ...press }: RowProps) {
     <Figure row={row} cell={cell} figure={asked} text={money(minor, signed)} isNought={minor === 0} {...press} />
   );
   const { differenceMinor, billedMinor, findings } = row;
-  const hasGroup = (key: string) => row.pairs.some((pair) => pair.lineId !== null && groupOf(pair.group) === key);
   return (
     <>
-      {groups.map(({ key }) => (
-        <td key={key}>{hasGroup(key) && figure(`group-${key}`, `group:${key}`, row.groups[key])}</td>
+      {groupsOf(sheet).map(({ key }) => (
+        <td key={key}>{hasGroup(row, key) && figure(`group-${key}`, `group:${key}`, row.groups[key])}</td>
       ))}
       <td className="strong">{figure('priced', 'total', row.pricedMinor)}</td>
       <td>
@@ -138,8 +147,6 @@ function MoneyCells({ sheet, row, ...press }: RowProps) {
     </>
   );
 }
-
-const groupOf = (group: string | null) => (groups.some(({ key }) => key === group) ? group : 'other');
 
 function BillRow(props: RowProps) {
   const { row, opened, onPress } = props;
@@ -178,7 +185,7 @@ function Totals({ sheet }: { sheet: TariffSheetView }) {
         {sheet.columns.map(({ key }) => (
           <td key={key}>{key === 'energy' && formatNumber(sum((row) => row.quantities.energy?.value ?? 0))}</td>
         ))}
-        {groups.map(({ key }) => (
+        {groupsOf(sheet).map(({ key }) => (
           <td key={key}>{money(sum((row) => row.groups[key]))}</td>
         ))}
         <td>{money(sum((row) => row.pricedMinor))}</td>
@@ -200,7 +207,7 @@ function Ledger({ sheet }: { sheet: TariffSheetView }) {
   const [opened, setOpened] = useState<Opened | null>(null);
   const origin = useRef<HTMLButtonElement>(null);
   const close = useCallback(() => setOpened(null), []);
-  const width = sheet.columns.length + groups.length + 6;
+  const width = sheet.columns.length + groupsOf(sheet).length + 6;
   const follow = (figure: string) =>
     setOpened((current) => {
       if (!current || current.cell === 'lines' || !('trail' in current)) return current;

@@ -1,11 +1,13 @@
-import { addDays } from '../../core/load';
+import { addDays, dayNumber, isoDate } from '../../core/load';
 
 const months = 'Jan Feb Mar Apr May Jun Jul Aug Sep Oct Nov Dec'.split(' ');
 
-/** Name of a bill by the month its last day lies in: a period to 11 Aug 2025 (exclusive) is "Aug 2025". */
-export function billName(periodTo: string): string {
-  return monthName(addDays(periodTo, -1));
-}
-
 /** Month of a local date: "Aug 2025". */
 export const monthName = (date: string) => `${months[Number(date.slice(5, 7)) - 1]} ${date.slice(0, 4)}`;
+
+/** Name of a bill: the month most of its days lie in, that of its middle day. 2 Nov to 1 Dec 2025 is "Nov 2025". */
+export function billName({ from, to }: { from: string; to: string }): string {
+  const first = dayNumber(from);
+  const last = dayNumber(addDays(to, -1));
+  return monthName(isoDate(Math.floor((first + last) / 2)));
+}

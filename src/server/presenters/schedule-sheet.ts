@@ -7,7 +7,7 @@ import { yearPicture } from './year-picture';
 
 type TextDescription = ScheduleDescription['versions'][number];
 type Sheet = NonNullable<ScheduleSheetView['sheet']>;
-/** Line of a path of two parts ("charges.demand") in the text, or of its first part. */
+/** Line of a path ("charges.demand") in the text, or of the nearest entry that holds it. */
 type LineOf = (path: string) => number | null;
 
 /** A schedule's file as its page reads, with the year drawn for one year. */
@@ -27,6 +27,9 @@ export function presentScheduleSheet(
   return { id, fileName, sha256, lines, problems, sheet: schedule && sheetOf(schedule, linesOf(text), today) };
 }
 
+/** Parts of the longest path looked for: versions, day, charges, name. */
+const deepest = 4;
+
 /** Finds lines of entries; a broken text has none. */
 function linesOf(text: string): LineOf {
   const counter = new LineCounter();
@@ -38,13 +41,16 @@ function linesOf(text: string): LineOf {
       if (!isScalar(key) || !key.range) continue;
       const path = `${prefix}${key.source ?? String(key.value)}`;
       lines.set(path, counter.linePos(key.range[0]).line);
-      if (prefix === '') keysOf(value, `${path}.`);
+      if (path.split('.').length < deepest) keysOf(value, `${path}.`);
     }
   };
   keysOf(contents, '');
   return (path) => {
-    const [first = '', second = ''] = path.split('.');
-    return lines.get(`${first}.${second}`) ?? lines.get(first) ?? null;
+    for (let parts = path.split('.'); parts.length > 0; parts = parts.slice(0, -1)) {
+      const line = lines.get(parts.join('.'));
+      if (line !== undefined) return line;
+    }
+    return null;
   };
 }
 
@@ -64,8 +70,8 @@ function sheetOf(schedule: Schedule, lineOf: LineOf, today: string): Sheet {
     timeZone: schedule.timeZone,
     inForce: schedule.inForce,
     charges: described.charges.map((charge, place) => chargeRow(charge, text.charges[place]!.path, lineOf)),
-    quantities: described.quantities.map((quantity, place) =>
-      quantityRow(quantity, text.quantities[place]!.path, lineOf),
+    quantities: tellApart(
+      described.quantities.map((quantity, place) => quantityRow(quantity, text.quantities[place]!.path, lineOf)),
     ),
     contract: contractFields(schedule),
     versions: description.versions.map(({ from, note }, place) => ({
@@ -87,6 +93,20 @@ function chargeRow(charge: TextDescription['charges'][number], path: string, lin
 function quantityRow(quantity: TextDescription['quantities'][number], path: string, lineOf: LineOf): QuantityRow {
   const { name, label, words, unit, clause } = quantity;
   return { name, label: label ?? wordsOfName(name), words, unit, clause, line: lineOf(path) };
+}
+
+/** Quantities of one label, members of a family, get their names beside it. */
+function tellApart(rows: QuantityRow[]): QuantityRow[] {
+  const count = (label: string) => rows.filter((row) => row.label === label).length;
+  return rows.map((row) => (count(row.label) > 1 ? { ...row, label: `${row.label} (${row.name})` } : row));
+}
+
+/** A rider of many months in short: how many, from when to when, between which values. */
+function rateWords(words: string): string {
+  const months = [...words.matchAll(/(\d{4}-\d{2}) (-?[\d.]+)/g)];
+  if (months.length < 5) return words;
+  const values = months.map(([, , value]) => Number(value));
+  return `${months.length} months, ${months[0]![1]} to ${months.at(-1)![1]}: ${Math.min(...values)} to ${Math.max(...values)}`;
 }
 
 const straddleWords: Record<Schedule['straddle'], string> = {
@@ -127,7 +147,7 @@ function rulesOf(description: ScheduleDescription, text: TextDescription, lineOf
     ]),
     ...text.rates.map(({ name, words }): [string, string, string] => [
       `Rate ${wordsOfName(name).toLowerCase()}`,
-      words,
+      rateWords(words),
       `rates.${name}`,
     ]),
   ];

@@ -1,4 +1,3 @@
-import { addDays } from '../../core/load';
 import { fromMinorUnits, wordMoney, wordNumber } from '../../core/units';
 import type { PricedYear } from '../../schemas/pricing';
 
@@ -65,11 +64,4 @@ export function reactiveFinding(parts: { demand: number; reactive: number; other
   const [place, amount] = named.sort((a, b) => Math.abs(b[1]) - Math.abs(a[1]))[0]!;
   const share = Math.round((100 * amount) / total);
   return `${share} % of the ${wordMoney(total, currency)} sit in ${place}.`;
-}
-
-/** First and last day of the year's bills in words. */
-export function spanInWords(year: PricedYear): string {
-  const first = year.bills[0]!.bill.from;
-  const last = addDays(year.bills.at(-1)!.bill.to, -1);
-  return `${dayInWords(first)} to ${dayInWords(last)}`;
 }

@@ -31,6 +31,7 @@ export function yearPicture(schedule: Schedule, text: ScheduleText, year: number
       words: window.words,
       hours: hours[index]!,
       isRest: window.restOf !== undefined,
+      bySeason: window.rules.some((rule) => rule.seasons.length > 0),
     })),
     seasons: seasonStretches(
       days.map((day) => day.season),

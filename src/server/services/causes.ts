@@ -115,7 +115,7 @@ export class CauseTrial {
     const { periods, history } = this.basis;
     const fromBills = this.priced.slice(0, index).flatMap((bill, at): KnownValue[] => {
       const value = bill.quantities[name]?.value;
-      return value === undefined ? [] : [{ month: billName(bill.period.to), value, back: index - at }];
+      return value === undefined ? [] : [{ month: billName(bill.period), value, back: index - at }];
     });
     const told = history?.[name] ?? [];
     const fromHistory = told.map((value, at): KnownValue => {

@@ -1,6 +1,6 @@
 import { localDateStartMs, type BillingPeriod, type LoadSeries } from '../../core/load';
 import { PriceError, priceBills, priceQuantities, readSchedule, ScheduleError } from '../../core/tariff';
-import type { PricedBill, Schedule } from '../../core/tariff';
+import type { PricedBill, PricingGrid, Schedule } from '../../core/tariff';
 import type { BillView } from '../../schemas/bill';
 import type { PricedYear, PricingRoute } from '../../schemas/pricing';
 import { conflict, ServiceError } from '../errors';
@@ -12,13 +12,6 @@ import type { OpenEngagement } from './engagements';
 import { keptSpans, loadSeries } from './readings';
 import { reconcileYear } from './reconcile';
 import { digestOf } from './schedules';
-
-/** A regular grid of intervals from the first period's beginning to the last one's end. */
-export interface PricingGrid {
-  startMs: number;
-  stepMinutes: number;
-  count: number;
-}
 
 /** What the year is priced from. `load` is null on the printed route. */
 export interface PricingBasis {
@@ -202,7 +195,7 @@ function refuseMixed(bills: BillView[], schedule: Schedule): void {
   const foreign = bills.find((bill) => bill.currency !== schedule.currency);
   if (foreign) {
     throw conflict(
-      `The bill of ${billName(foreign.to)} is in ${foreign.currency}, the schedule ${schedule.id} in ${schedule.currency}. Correct the bill, or choose another schedule.`,
+      `The bill of ${billName(foreign)} is in ${foreign.currency}, the schedule ${schedule.id} in ${schedule.currency}. Correct the bill, or choose another schedule.`,
       { station: 'tariff' },
     );
   }
@@ -210,7 +203,7 @@ function refuseMixed(bills: BillView[], schedule: Schedule): void {
     const before = bills[index - 1];
     if (!before || before.to <= bill.from) return;
     throw conflict(
-      `The bills of ${billName(before.to)} and ${billName(bill.to)} overlap: one runs to ${before.to}, the other begins on ${bill.from}. Correct a period at the station Bills.`,
+      `The bills of ${billName(before)} and ${billName(bill)} overlap: one runs to ${before.to}, the other begins on ${bill.from}. Correct a period at the station Bills.`,
       { station: 'bills' },
     );
   });

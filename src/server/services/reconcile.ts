@@ -56,7 +56,7 @@ function reconcileBill(basis: PricingBasis, priced: PricedBill, index: number): 
   const pricedMinor = toMinorUnits(priced.total, priced.currency);
   const billedMinor = bill.totalMinor ?? (bill.lines.length > 0 ? bill.linesMinor : null);
   return {
-    name: billName(bill.to),
+    name: billName(bill),
     bill,
     priced,
     pricedMinor,

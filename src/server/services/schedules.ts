@@ -90,7 +90,7 @@ function tooLargeFile(fileName: string, bytes: number): ScheduleFile {
 const idOf = (fileName: string) => fileName.replace(/\.yaml$/, '');
 
 /** Reads the text of a file; a schedule under another name than its file's is a problem of its own. */
-export function parseFile(fileName: string, text: string): ScheduleFile {
+function parseFile(fileName: string, text: string): ScheduleFile {
   const file = { id: idOf(fileName), fileName, text, bytes: Buffer.byteLength(text), sha256: digestOf(text) };
   try {
     const schedule = readSchedule(text);

@@ -77,7 +77,7 @@ function lineWords(year: PricedYear, bill: ReconciledBill, line: PricedLine | un
 }
 
 /** Lines of a group as the sheet's columns make them: what is neither energy, demand nor reactive is "other". */
-export function groupLines(lines: PricedLine[], group: string): PricedLine[] {
+function groupLines(lines: PricedLine[], group: string): PricedLine[] {
   const named = ['energy', 'demand', 'reactive'];
   return lines.filter((line) => (named.includes(group) ? line.group === group : !named.includes(line.group)));
 }

@@ -73,6 +73,12 @@ export function billQuantity(name: string): BillQuantity {
   return { name, label: name, unit, decimals: /factor|^pf/i.test(name) ? 4 : 0 };
 }
 
+/** The name of a line without the currency that a head of a column carries: `Energy charge (USD)` -> `Energy charge`. */
+export function lineLabel(head: string, currency: string): string {
+  const bare = head.replace(new RegExp(`[\\s,]*[([]?\\b${currency}\\b[)\\]]?\\s*$`, 'i'), '').trim();
+  return bare === '' ? head : bare;
+}
+
 const localDate = z.string().refine(isCalendarDate, 'Write a day of the calendar, such as 9 Jun 2026.');
 const amountMinor = z
   .number('Write an amount, such as 1,947.33.')

@@ -46,25 +46,27 @@ export function CheckBills({ intake, preview }: { intake: IntakeView; preview: B
                 { label: `Billed, ${currency}`, value: formatAmount(total, currency), kind: 'total' as const },
               ]}
             />
-            {odd.map((bill) => (
-              <FindingSlip key={bill.id} caution letter="+" title={`${billName(bill.to)} does not add up`}>
-                {`Its lines come to ${formatAmount(lessTotal(bill) ?? 0, currency, { signed: true })} ${currency} against the printed total. It is kept as printed.`}
-              </FindingSlip>
-            ))}
-            {flaws.map((flaw, index) => (
-              <FindingSlip
-                key={index}
-                letter={String(index + 1)}
-                title={
-                  flaw.kind === 'gap'
-                    ? `${formatCount(flaw.days, 'day')} without a bill`
-                    : `${formatCount(flaw.days, 'day')} billed twice`
-                }
-              >
-                {formatPeriod(flaw.from, flaw.to, { year: true })}.
-                {flaw.kind === 'overlap' && ' It must be corrected before the file can be kept.'}
-              </FindingSlip>
-            ))}
+            <div className="mt-4">
+              {odd.map((bill) => (
+                <FindingSlip key={bill.id} caution letter="+" title={`${billName(bill.to)} does not add up`}>
+                  {`Its lines come to ${formatAmount(lessTotal(bill) ?? 0, currency, { signed: true })} ${currency} against the printed total. It is kept as printed.`}
+                </FindingSlip>
+              ))}
+              {flaws.map((flaw, index) => (
+                <FindingSlip
+                  key={index}
+                  letter={String(index + 1)}
+                  title={
+                    flaw.kind === 'gap'
+                      ? `${formatCount(flaw.days, 'day')} without a bill`
+                      : `${formatCount(flaw.days, 'day')} billed twice`
+                  }
+                >
+                  {formatPeriod(flaw.from, flaw.to, { year: true })}.
+                  {flaw.kind === 'overlap' && ' It must be corrected before the file can be kept.'}
+                </FindingSlip>
+              ))}
+            </div>
           </>
         )
       }

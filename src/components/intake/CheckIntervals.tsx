@@ -110,15 +110,17 @@ function Results({ report, timeZone }: { report: IntakeReport; timeZone: string 
           </p>
         </>
       )}
-      {gaps.map((gap, index) => (
-        <FindingSlip
-          key={gap.fromMs}
-          letter={String(index + 1)}
-          title={`Gap, ${formatCount(gap.intervals, 'reading')}`}
-        >
-          {gapInWords(gap, timeZone)}. Left missing; no peak can be proven then.
-        </FindingSlip>
-      ))}
+      <div className="mt-3">
+        {gaps.map((gap, index) => (
+          <FindingSlip
+            key={gap.fromMs}
+            letter={String(index + 1)}
+            title={`Gap, ${formatCount(gap.intervals, 'reading')}`}
+          >
+            {gapInWords(gap, timeZone)}. Left missing; no peak can be proven then.
+          </FindingSlip>
+        ))}
+      </div>
       {(report.gaps?.length ?? 0) > gaps.length && (
         <p>{formatCount((report.gaps?.length ?? 0) - gaps.length, 'shorter gap')} more.</p>
       )}

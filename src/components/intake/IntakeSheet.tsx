@@ -13,7 +13,7 @@ import { Queries } from '../../client/queries';
 import type { ColumnMap } from '../../core/intake';
 import { toConfirm, type IntakeView } from '../../schemas/intake';
 import { Button, ButtonLink } from '../ui/Button';
-import { formatBytes, formatDateTime } from '../ui/format';
+import { formatBytes, formatDateTime, formatSpelled } from '../ui/format';
 import { Notice, type Problem } from '../ui/Notice';
 import { CheckBills } from './CheckBills';
 import { CheckIntervals } from './CheckIntervals';
@@ -52,6 +52,13 @@ const faultOf = (error: unknown): Fault => {
   return { title: error.message, problems, station: error.code === 'conflict' };
 };
 
+/** What is kept has changed: the page is loaded anew, so that the stations on the bus follow. */
+function follow(fault: Fault | null): void {
+  if (fault) return;
+  window.history.replaceState(null, '', window.location.pathname);
+  window.location.reload();
+}
+
 function useIntake(initial: IntakeView) {
   const [intake, setIntake] = useState(initial);
   const [busy, setBusy] = useState(false);
@@ -80,9 +87,9 @@ function useIntake(initial: IntakeView) {
     confirm: (keys) => intake.preview && match(intake.preview.columnMap, { confirm: keys }),
     useMap: (mapId) => void run(readWithMap(intake, mapId)),
     remember: async (name) => (await run(rememberMap(intake.id, name)))?.title ?? null,
-    keep: () => void run(keepIntake(intake)),
-    undo: () => void run(undoIntake(intake)),
-    giveUp: () => void run(giveUpIntake(intake)),
+    keep: () => void run(keepIntake(intake)).then(follow),
+    undo: () => void run(undoIntake(intake)).then(follow),
+    giveUp: () => void run(giveUpIntake(intake)).then(follow),
   };
   return { intake, fault, actions };
 }
@@ -178,11 +185,11 @@ function HeadActions({ intake, actions }: { intake: IntakeView; actions: IntakeA
       <Button kind="secondary" busy={actions.busy} onClick={actions.giveUp}>
         Give up this file
       </Button>
-      {ready && left > 0 && <ButtonLink href="#match">Look at what wants your word</ButtonLink>}
+      {ready && left > 0 && <ButtonLink href="#match">Look at the {formatSpelled(left)} to confirm</ButtonLink>}
       {ready && left === 0 && (
-        <Button busy={actions.busy} onClick={actions.keep}>
-          {state === 'undone' ? 'Keep it again' : 'Keep it'}
-        </Button>
+        <ButtonLink kind="secondary" href="#keep">
+          Go to Keep
+        </ButtonLink>
       )}
     </>
   );

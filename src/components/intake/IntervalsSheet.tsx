@@ -1,26 +1,23 @@
 import type { CarpetData } from '../charts/carpet';
 import { CarpetFigure } from '../charts/CarpetChart';
 import { DayFigure } from '../charts/DayChart';
-import type { IntervalsStation, KeptYear, MonthOfLoad } from '../../schemas/intake';
+import type { IntervalsStation, KeptYear } from '../../schemas/intake';
 import { FindingSlip } from '../ui/FindingSlip';
 import {
   formatCount,
-  formatDate,
   formatDateTime,
   formatLongDate,
-  formatMonth,
   formatNumber,
   formatPeriod,
   formatQuantity,
   formatTime,
 } from '../ui/format';
-import type { LedgerData, LedgerRow } from '../ui/ledger';
-import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
 import { BringIn } from './BringIn';
 import { gapInWords, longestGaps } from './carpet-marks';
 import { FileList } from './FileList';
 import { intervalName, presentInWords, readingsOf } from './interval-words';
+import { MonthsPart } from './MonthsPart';
 import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
 
 export interface IntervalsSheetProps {
@@ -129,15 +126,17 @@ function YearPart({ year, carpet, timeZone, code }: PartProps & { carpet: Carpet
               { label: 'of which estimated', value: formatNumber(year.estimated) },
             ]}
           />
-          {gaps.map((gap, index) => (
-            <FindingSlip
-              key={gap.fromMs}
-              letter={String(index + 1)}
-              title={`Gap, ${formatCount(gap.intervals, 'reading')}`}
-            >
-              {gapInWords(gap, timeZone)}. Left missing.
-            </FindingSlip>
-          ))}
+          <div className="mt-3">
+            {gaps.map((gap, index) => (
+              <FindingSlip
+                key={gap.fromMs}
+                letter={String(index + 1)}
+                title={`Gap, ${formatCount(gap.intervals, 'reading')}`}
+              >
+                {gapInWords(gap, timeZone)}. Left missing.
+              </FindingSlip>
+            ))}
+          </div>
           {year.gapCount > gaps.length && (
             <p>{formatCount(year.gapCount - gaps.length, 'shorter gap')} more, in the table of months.</p>
           )}
@@ -197,94 +196,4 @@ function PeakPart({ year, peak, timeZone, code }: PartProps & { peak: NonNullabl
       />
     </SheetPart>
   );
-}
-
-function MonthsPart({ year, timeZone }: Omit<PartProps, 'code'>) {
-  return (
-    <SheetPart
-      id="months"
-      number={year.peak ? '2.3' : '2.2'}
-      title="Month by month"
-      lead="Calendar months of the site’s time. Sums are of the readings that are there; nothing is filled in."
-      result={<Balance months={year.months} />}
-    >
-      <LedgerTable {...monthsTable(year.months, timeZone)} label="Readings month by month" />
-    </SheetPart>
-  );
-}
-
-const sum = (months: MonthOfLoad[], key: 'kwh' | 'kvarhLagging' | 'kvarhLeading') =>
-  months.some((month) => month[key] !== null) ? months.reduce((total, month) => total + (month[key] ?? 0), 0) : null;
-
-function Balance({ months }: { months: MonthOfLoad[] }) {
-  const kwh = sum(months, 'kwh');
-  const lagging = sum(months, 'kvarhLagging');
-  const leading = sum(months, 'kvarhLeading');
-  const figure = (value: number | null) => (value === null ? 'not in the files' : formatNumber(value));
-  return (
-    <>
-      <ResultSums
-        rows={[
-          { label: 'Energy, kWh', value: figure(kwh) },
-          { label: 'Lagging, kvarh', value: figure(lagging), tone: 'lagging' },
-          { label: 'Leading, kvarh', value: figure(leading), tone: 'leading' },
-        ]}
-      />
-      {kwh !== null && lagging !== null && kwh > 0 && (
-        <p>
-          Lagging kvarh are {formatNumber((lagging / kwh) * 100, { decimals: 1 })} % of the kWh: an average power factor
-          of {formatNumber(kwh / Math.hypot(kwh, lagging), { decimals: 3 })}.
-        </p>
-      )}
-    </>
-  );
-}
-
-function monthsTable(months: MonthOfLoad[], timeZone: string): LedgerData {
-  const figure = (key: string, head: string, unit?: string) => ({ key, head, unit, kind: 'number' as const });
-  const rows = months.map((month): LedgerRow => {
-    const missing = month.intervals - month.present;
-    const none = month.present === 0 ? 'none' : null;
-    return {
-      id: month.from,
-      cells: {
-        month: formatMonth(month.from),
-        intervals: month.intervals,
-        missing: { value: missing, tone: missing > 0 ? 'fault' : undefined },
-        estimated: month.estimated,
-        kwh: month.kwh ?? none,
-        lagging: month.kvarhLagging === null ? none : { value: month.kvarhLagging, tone: 'lagging' },
-        leading: month.kvarhLeading === null ? none : { value: month.kvarhLeading, tone: 'leading' },
-        peak: month.maxKw,
-        at: month.maxKwMs === null ? null : formatDateTime(month.maxKwMs, timeZone),
-      },
-    };
-  });
-  const total = (pick: (month: MonthOfLoad) => number) => months.reduce((all, month) => all + pick(month), 0);
-  const highest = months.reduce((top, month) => ((month.maxKw ?? 0) > (top.maxKw ?? 0) ? month : top), months[0]!);
-  return {
-    columns: [
-      { key: 'month', head: 'Month' },
-      figure('intervals', 'Intervals'),
-      figure('missing', 'Missing'),
-      figure('estimated', 'Estimated'),
-      figure('kwh', 'Energy', 'kWh'),
-      figure('lagging', 'Lagging', 'kvarh'),
-      figure('leading', 'Leading', 'kvarh'),
-      figure('peak', 'Highest', 'kW'),
-      { key: 'at', head: 'on', quiet: true },
-    ],
-    rows,
-    total: {
-      month: 'Year',
-      intervals: total((month) => month.intervals),
-      missing: total((month) => month.intervals - month.present),
-      estimated: total((month) => month.estimated),
-      kwh: sum(months, 'kwh'),
-      lagging: sum(months, 'kvarhLagging'),
-      leading: sum(months, 'kvarhLeading'),
-      peak: highest.maxKw,
-      at: highest.maxKwMs === null ? null : formatDate(highest.maxKwMs, timeZone),
-    },
-  };
 }

@@ -89,14 +89,11 @@ function FirstRows({ preview }: { preview: IntakePreview }) {
           {preview.rows.map((row) => (
             <tr key={row.number} className={rowClass(row.isHeader, row.number, preview.firstRow)}>
               <th scope="row">{row.number}</th>
-              {columns.map((index) => {
-                const cell = row.cells[index] ?? '';
-                return (
-                  <td key={index} className={!row.isHeader && looksNumeric.test(cell) ? 'figure' : undefined}>
-                    {cell}
-                  </td>
-                );
-              })}
+              {isAlone(row.cells) ? (
+                <td colSpan={shown}>{row.cells[0]}</td>
+              ) : (
+                columns.map((index) => <Cell key={index} text={row.cells[index] ?? ''} isName={row.isHeader} />)
+              )}
               {width > shown && <td className="quiet">…</td>}
             </tr>
           ))}
@@ -104,6 +101,13 @@ function FirstRows({ preview }: { preview: IntakePreview }) {
       </table>
     </div>
   );
+}
+
+/** A line of a preamble: words in the first cell only. */
+const isAlone = ([first, ...others]: string[]) => first !== undefined && others.every((cell) => cell === '');
+
+function Cell({ text, isName }: { text: string; isName: boolean }) {
+  return <td className={!isName && looksNumeric.test(text) ? 'figure' : undefined}>{text}</td>;
 }
 
 const rowClass = (isHeader: boolean, number: number, firstRow: number) =>

@@ -1,7 +1,15 @@
+import { intakePage } from '../../client/intake';
 import type { BillRecord } from '../../core/intake';
 import { toMinorUnits } from '../../core/units';
-import { billQuantities, billQuantity, daysBetween, type BillQuantity, type BillView } from '../../schemas/bill';
-import { formatAmount, formatMoney, formatMonth, formatNumber, formatPeriod, formatQuantity } from '../ui/format';
+import {
+  billQuantities,
+  billQuantity,
+  daysBetween,
+  lineLabel,
+  type BillQuantity,
+  type BillView,
+} from '../../schemas/bill';
+import { formatAmount, formatMoney, formatMonth, formatPeriod, formatQuantity, formatSpelled } from '../ui/format';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
 import type { WhyContent, WhyStep } from '../ui/why';
 
@@ -13,10 +21,12 @@ export interface LedgerBill {
   quantities: Record<string, number>;
   lines: { label: string; amountMinor: number }[];
   totalMinor: number | null;
-  source: LedgerValue;
+  source: string;
+  /** Where the rows of the file can be seen. */
+  sourceHref?: string;
 }
 
-const mostQuantities = 4;
+const mostQuantities = 2;
 const mostLines = 8;
 const dayMs = 86_400_000;
 
@@ -24,9 +34,11 @@ const dayMs = 86_400_000;
 export const billName = (to: string) => formatMonth(new Date(Date.parse(to) - dayMs).toISOString().slice(0, 10));
 
 /** A kept bill for the table. */
-export function keptBill(bill: BillView): LedgerBill {
+export function keptBill(bill: BillView, code?: string): LedgerBill {
   const { id, from, to, quantities, lines, totalMinor, source } = bill;
-  return { id: String(id), from, to, quantities, lines, totalMinor, source: source ? (source.row ?? 'file') : 'typed' };
+  const base = { id: String(id), from, to, quantities, lines, totalMinor };
+  if (!source) return { ...base, source: 'typed' };
+  return { ...base, source: source.row ?? 'file', sourceHref: code && intakePage(code, source.intakeId) };
 }
 
 /** A bill as the file has it, before it is kept. */
@@ -35,7 +47,10 @@ export function readBill(bill: BillRecord, index: number, currency: string, row:
     id: String(index),
     ...bill.period,
     quantities: bill.quantities,
-    lines: bill.charges.map(({ label, amount }) => ({ label, amountMinor: toMinorUnits(amount, currency) })),
+    lines: bill.charges.map(({ label, amount }) => ({
+      label: lineLabel(label, currency),
+      amountMinor: toMinorUnits(amount, currency),
+    })),
     totalMinor: bill.total === null ? null : toMinorUnits(bill.total, currency),
     source: row === undefined ? '' : `row ${row}`,
   };
@@ -55,7 +70,7 @@ function quantitiesOf(bills: LedgerBill[]): BillQuantity[] {
   const names = new Set(bills.flatMap((bill) => Object.keys(bill.quantities)));
   const order = billQuantities.map((quantity) => quantity.name);
   const rank = (name: string) => (order.includes(name) ? order.indexOf(name) : order.length);
-  const first = ['kwh', 'billedKw', 'maxKw', 'billedKva', 'maxKva', 'kvarh', 'powerFactor'].filter((name) =>
+  const first = ['kwh', 'billedKw', 'billedKva', 'maxKw', 'maxKva', 'kvarh', 'powerFactor'].filter((name) =>
     names.has(name),
   );
   const others = [...names].filter((name) => !first.includes(name)).sort((a, b) => rank(a) - rank(b));
@@ -113,7 +128,8 @@ function whyTotal(bill: LedgerBill, currency: string): WhyContent {
   return {
     title: `Bill of ${formatPeriod(bill.from, bill.to, { year: true })}, amounts in ${currency}`,
     steps: [...quantities, ...lines, ...closing],
-    source: typeof bill.source === 'string' && bill.source !== 'typed' ? bill.source : undefined,
+    source: bill.source === 'typed' ? 'typed by hand' : bill.source || undefined,
+    sourceHref: bill.sourceHref,
   };
 }
 
@@ -202,11 +218,12 @@ export function billLedger(bills: LedgerBill[], currency: string, flaws: Set<str
   };
 }
 
-/** How the sums stand, as a sentence: to the cent, or by how much not. */
-export function sumsInWords(bills: LedgerBill[], currency: string): string {
+/** Bills whose lines do not come to the printed total, in words; null where all do. */
+export function oddSumsInWords(bills: LedgerBill[], currency: string): string | null {
   const off = bills.filter((bill) => (lessTotal(bill) ?? 0) !== 0);
-  if (off.length === 0) return 'add up to the cent';
+  if (off.length === 0) return null;
   const worst = off.reduce((a, b) => (Math.abs(lessTotal(b) ?? 0) > Math.abs(lessTotal(a) ?? 0) ? b : a));
   const amount = formatMoney(Math.abs(lessTotal(worst) ?? 0), currency);
-  return `${formatNumber(off.length)} of them do not add up, ${billName(worst.to)} by ${amount}`;
+  if (off.length === 1) return `${billName(worst.to)} does not add up, by ${amount}`;
+  return `${formatSpelled(off.length)} do not add up, ${billName(worst.to)} by ${amount}`;
 }

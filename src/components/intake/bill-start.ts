@@ -1,4 +1,4 @@
-import type { BillView } from '../../schemas/bill';
+import { periodFlaws, type BillView } from '../../schemas/bill';
 import { formatAmount, formatNumber } from '../ui/format';
 import { dayBefore, type TypedBill } from './typed';
 
@@ -32,15 +32,17 @@ function monthLater(from: string): string {
   return dayBefore(next.toISOString().slice(0, 10));
 }
 
-/** A new bill: the period after the last one, its quantities and the names of its lines. */
+/** A new bill: the first gap between bills or the period after the last one, with the last one's quantities and lines. */
 export function startOfTyped(bills: BillView[], yearFrom: string): TypedBill {
   const last = bills.at(-1);
-  const from = last?.to ?? yearFrom;
+  const gap = periodFlaws(bills).find((flaw) => flaw.kind === 'gap');
+  const from = gap?.from ?? last?.to ?? yearFrom;
+  const month = monthLater(from);
   const quantities = last && Object.keys(last.quantities).length > 0 ? Object.keys(last.quantities) : usualQuantities;
   const labels = last && last.lines.length > 0 ? last.lines.map((line) => line.label) : usualLines;
   return {
     from,
-    lastDay: monthLater(from),
+    lastDay: gap && gap.to <= month ? dayBefore(gap.to) : month,
     quantities: quantities.map((name) => ({ name, figure: '' })),
     lines: labels.map((label) => ({ label, amount: '' })),
     total: '',

@@ -1,6 +1,6 @@
 import { daysBetween, periodFlaws } from '../../schemas/bill';
 import { formatCount, formatMoney, formatPeriod, formatSpelled } from '../ui/format';
-import { billedMinor, lessTotal, sumsInWords, type LedgerBill } from './bill-ledger';
+import { billedMinor, lessTotal, oddSumsInWords, type LedgerBill } from './bill-ledger';
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
@@ -31,15 +31,16 @@ export function billsHeading(
     };
   }
   const billed = bills.reduce((sum, bill) => sum + billedMinor(bill), 0);
-  const count = bills.length === 1 ? 'The one bill kept' : `The ${formatSpelled(bills.length)} bills kept`;
-  const sums = bills.some((bill) => lessTotal(bill) !== null)
-    ? sumsInWords(bills, currency)
-    : 'show no lines or no totals to add up';
-  const singular = bills.length === 1 ? sums.replace('add up', 'adds up').replace('show', 'shows') : sums;
-  return {
-    title: `${count} ${singular}: ${formatMoney(billed, currency)} for ${daysInWords(bills)}.`,
-    lead: coverage(bills, year),
-  };
+  const amount = `${formatMoney(billed, currency)} for ${daysInWords(bills)}`;
+  const odd = oddSumsInWords(bills, currency);
+  const summed = bills.some((bill) => lessTotal(bill) !== null);
+  const lead = coverage(bills, year);
+  const kept = bills.length === 1 ? 'One bill is kept' : `${capital(formatSpelled(bills.length))} bills are kept`;
+  if (odd) return { title: `${kept}, ${amount}; ${odd}.`, lead };
+  if (!summed) return { title: `${kept}, ${amount}.`, lead };
+  const all =
+    bills.length === 1 ? 'The one bill kept adds' : `All ${formatSpelled(bills.length)} bills are kept and add`;
+  return { title: `${all} up to the cent: ${amount}.`, lead };
 }
 
 /** How the bills stand to the year's own ends. */
@@ -62,5 +63,6 @@ export function coverage(bills: LedgerBill[], year: { from: string; to: string }
 export function readBillsHeading(bills: LedgerBill[], currency: string): string {
   const billed = bills.reduce((sum, bill) => sum + billedMinor(bill), 0);
   const count = capital(bills.length === 1 ? 'one bill' : `${formatSpelled(bills.length)} bills`);
-  return `${count}, ${formatMoney(billed, currency)} for ${daysInWords(bills)}.`;
+  const odd = oddSumsInWords(bills, currency);
+  return `${count}, ${formatMoney(billed, currency)} for ${daysInWords(bills)}${odd ? `; ${odd}` : ''}.`;
 }

@@ -1,7 +1,7 @@
 import type { BillRecord, ColumnMap, IntakeReport } from '../../core/intake';
 import { toMinorUnits } from '../../core/units';
 import type { LoadSeries } from '../../core/load';
-import { billInput, periodFlaws } from '../../schemas/bill';
+import { billInput, lineLabel, periodFlaws } from '../../schemas/bill';
 import { toConfirm, type IntakeView, type LoadDays } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
@@ -124,7 +124,10 @@ function billValues(bill: BillRecord, currency: string, sourceRow: string | null
   const parsed = billInput.safeParse({
     ...bill.period,
     quantities: bill.quantities,
-    lines: bill.charges.map(({ label, amount }) => ({ label, amountMinor: toMinorUnits(amount, currency) })),
+    lines: bill.charges.map(({ label, amount }) => ({
+      label: lineLabel(label, currency),
+      amountMinor: toMinorUnits(amount, currency),
+    })),
     totalMinor: bill.total === null ? null : toMinorUnits(bill.total, currency),
   });
   if (parsed.success) return { input: parsed.data, sourceRow };

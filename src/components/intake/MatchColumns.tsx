@@ -1,0 +1,78 @@
+import type { ColumnEvidence, ColumnUse } from '../../core/intake';
+import { columnKey } from '../../schemas/intake';
+import { Choice, Heads, sentence, Tests } from './match-parts';
+import type { MatchStepProps } from './MatchStep';
+import { roleOptions, roleValue, unitOptions, unitValue, withRole, withUnit } from './roles';
+
+/** A row for each column: what it is taken for, its unit, and what speaks for it. */
+export function ColumnTable({ intake, preview, actions }: MatchStepProps) {
+  return (
+    <div className="ledger-scroll" role="region" aria-label="Columns of the file" tabIndex={0}>
+      <table className="ledger ledger-roomy evidence">
+        <Heads heads={['Column', 'Values', 'Taken as', 'Unit', 'Evidence', 'Tests met']} />
+        <tbody>
+          {preview.columns.map((column) => (
+            <ColumnRow key={column.index} column={column} intake={intake} preview={preview} actions={actions} />
+          ))}
+        </tbody>
+      </table>
+    </div>
+  );
+}
+
+function ColumnRow({ column, intake, preview, actions }: MatchStepProps & { column: ColumnEvidence }) {
+  const key = columnKey(column);
+  const asks = !column.sure && !intake.confirmed.includes(key);
+  const fixed = intake.state === 'kept' || intake.state === 'given-up';
+  const name = column.name || `Column ${column.letter}`;
+  const change = (edit: (use: ColumnUse) => ColumnUse) => {
+    const last = column.index + column.span - 1;
+    const columns = (preview.columnMap.columns ?? []).map((use) =>
+      use.index >= column.index && use.index <= last ? edit(use) : use,
+    );
+    actions.match({ ...preview.columnMap, columns }, { confirm: [key] });
+  };
+  const units = unitOptions(column);
+  return (
+    <tr className={asks ? 'asks' : undefined}>
+      <th scope="row" className="left wrap strong">
+        {column.span > 1 ? `${name} and ${column.span - 1} more` : name}
+      </th>
+      <td className="left quiet wrap">{column.values}</td>
+      <td className="left">
+        <Choice
+          className="role-select"
+          label={`${name}, taken as`}
+          value={roleValue(column)}
+          options={roleOptions(preview.kind, column)}
+          disabled={fixed || actions.busy}
+          onChoose={(value) => change((use) => withRole(use, value))}
+        />
+      </td>
+      <td className="left">
+        {units.length > 0 ? (
+          <span className={column.isUnitAssumed ? 'assumed' : undefined}>
+            <Choice
+              className="unit-select"
+              label={`${name}, unit${column.isUnitAssumed ? ', assumed' : ''}`}
+              value={unitValue(column)}
+              options={units}
+              disabled={fixed || actions.busy}
+              onChoose={(value) => change((use) => withUnit(use, value))}
+            />
+          </span>
+        ) : (
+          column.unit
+        )}
+      </td>
+      <td className="left wrap">{sentence(column.why)}</td>
+      <Tests
+        met={column.testsMet}
+        total={column.testsTotal}
+        asks={asks}
+        name={name}
+        onConfirm={fixed ? null : () => actions.confirm([key])}
+      />
+    </tr>
+  );
+}

@@ -1,5 +1,6 @@
 import { billCellKind } from './bill-months';
 import { findPeriods } from './bill-periods';
+import { settleSums } from './bill-sums';
 import { billMeaning } from './bill-words';
 import { findBlock, type TableBlock } from './block';
 import { profileColumns, sampleRows, shareOf, withoutFooters, type ColumnProfile } from './cells';
@@ -49,6 +50,7 @@ export function planBills(opened: OpenedTable, options: ReadOptions): BillPlan {
   for (const profile of profiles)
     if (!findings.has(profile.index)) findings.set(profile.index, meaningOf(grid, profile, rows));
   settleTotals(grid, profiles, rows, decimalMark, findings);
+  settleSums({ grid, profiles, rows, decimalMark, findings });
   settleDoubles(profiles, findings);
   const evidence = profiles.map((profile) =>
     columnEvidence(

@@ -101,13 +101,15 @@ function quantityOf(name: string): { quantity: string; unit?: string; tests: Tes
   return null;
 }
 
+/** `Peak kW`, `Peak demand`: the highest of all hours, no time-of-use period. */
+const isBarePeak = (words: string) => /\bpeak (demand|kw|kva|kvar|load)\b/.test(words) && !/\bon ?peak\b/.test(words);
+
 /** Ending of a quantity's name for a time-of-use period; '' for all hours. */
 function periodSuffix(words: string): string {
   if (/\bsuper ?off ?(peak)?\b/.test(words)) return 'SuperOffPeak';
   if (/\boff ?peak\b|\boffpeak\b/.test(words)) return 'OffPeak';
   if (/\b(part(ial)? ?peak|partial|mid ?peak|shoulder|intermediate|semi ?peak)\b/.test(words)) return 'PartPeak';
-  if (/\b(on ?peak|onpeak|peak|punta|pointe)\b/.test(words))
-    return /\bpeak demand\b/.test(words) && !/\bon ?peak\b/.test(words) ? '' : 'Peak';
+  if (/\b(on ?peak|onpeak|peak|punta|pointe)\b/.test(words)) return isBarePeak(words) ? '' : 'Peak';
   const numbered = /\bp([1-6])\b/.exec(words);
   if (numbered) return `P${numbered[1] ?? ''}`;
   if (/\bnight\b/.test(words)) return 'Night';

@@ -6,7 +6,11 @@
  *
  * @param most  Greatest distance, in place of a third of the length
  */
-export function nearestName(typed: string, known: Iterable<string>, most = Math.max(1, Math.floor(typed.length / 3))): string | undefined {
+export function nearestName(
+  typed: string,
+  known: Iterable<string>,
+  most = Math.max(1, Math.floor(typed.length / 3)),
+): string | undefined {
   let best: string | undefined;
   let bestDistance = most + 0.5;
   for (const name of known) {

@@ -182,7 +182,7 @@ function lookBack(
   quantity: QuantityEntry,
   definition: PastDefinition,
 ): number {
-  const records = recordsBefore(run, bill, state);
+  const records = recordsBefore(run, bill, state, definition.expression.slots);
   if (definition.over.includesThis)
     records.push({ period: bill.plan.period, values: state.values, known: state.known, isTold: false });
   run.at = definition.expression;
@@ -192,13 +192,13 @@ function lookBack(
   return result.value;
 }
 
-/** Earlier periods of a bill, oldest first. */
-export function recordsBefore(run: Run, bill: BillState, state: PieceState): HistoryRecord[] {
+/** Earlier periods of a bill, oldest first; told months are completed where a look back needs more than they tell. */
+export function recordsBefore(run: Run, bill: BillState, state: PieceState, slots: readonly number[]): HistoryRecord[] {
   const { text } = state.piece.text;
-  return [
-    ...run.told.map((record) => completeTold(record, text, state)),
-    ...run.bills.slice(0, bill.plan.index).map(recordOf),
-  ];
+  const told = run.told.map((record) =>
+    slots.every((slot) => record.known[slot] === 1) ? record : completeTold(record, text, state),
+  );
+  return [...told, ...run.bills.slice(0, bill.plan.index).map(recordOf)];
 }
 
 function notePast(

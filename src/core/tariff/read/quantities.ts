@@ -96,7 +96,19 @@ function makeBroken(entry: MapEntry, map: MapTree | undefined, { scope, windows 
 }
 
 const meterUnits = ['kWh', 'kvarh', 'kVAh', 'kW', 'kvar', 'kVA'];
-const otherUnits: ReadonlySet<string> = new Set([...meterUnits, 'kV', 'MW', 'MWh', 'Mvar', 'Mvarh', 'MVA', 'MVAh', 'Wh', 'var', 'VA']);
+const otherUnits: ReadonlySet<string> = new Set([
+  ...meterUnits,
+  'kV',
+  'MW',
+  'MWh',
+  'Mvar',
+  'Mvarh',
+  'MVA',
+  'MVAh',
+  'Wh',
+  'var',
+  'VA',
+]);
 
 /**
  * The unit as said. By its unit a quantity is known to be energy, which decides how its line is shared between parts of a period:

@@ -1,45 +1,60 @@
 import { printFormula } from '../formula/print';
-import type { ChargeDefinition, Expression, NumberPlace, Tier } from '../model';
-import { wordNumber } from '../../units';
-import { isCharged, lastCharge, partsOfLines, placeValue, shareOf, tieredPrice } from '../price/evaluate-charges';
+import type { ChargeDefinition } from '../model';
+import { isCharged, lastCharge, partsOfLines, placeValue } from '../price/evaluate-charges';
 import { evaluateIn } from '../price/run';
 import type { ChargePlan } from '../price/text-plan';
-import { bareMoney, money, withUnit, wordExpression, wordName, wordWorking, type Speech } from './speak';
+import { amountWords, expressionIn, percentageWords, percentWords, priceWords, tierEnds } from './price-words';
+import { bareMoney, money, wordName, wordWorking, type Speech } from './speak';
+
+interface Part {
+  here: Speech;
+  plan: ChargePlan;
+}
 
 /** How a line's amount came about, in one sentence. */
 export function explainLine(speech: Speech, line: number): string {
+  const { charge } = lastCharge(speech.bill, line)!;
+  const clause = charge.clause === undefined ? '' : ` (clause ${charge.clause})`;
+  return `${charge.label ?? charge.name}: ${bodyWords(speech, line, charge.definition.kind)}${clause}.`;
+}
+
+function bodyWords(speech: Speech, line: number, kind: ChargeDefinition['kind']): string {
   const { bill, run } = speech;
-  const shown = lastCharge(bill, line)!;
-  const label = shown.charge.label ?? shown.charge.name;
-  const clause = shown.charge.clause === undefined ? '' : ` (clause ${shown.charge.clause})`;
   const amount = bill.amounts[line]!;
-  const { definition } = shown.charge;
-  if (definition.kind === 'topUp' || definition.kind === 'cap')
-    return `${label}: ${limitWords(speech, line, definition.kind, amount)}${clause}.`;
-  const parts = bill.pieces.flatMap((state) => {
+  if (kind === 'topUp' || kind === 'cap') return limitWords(speech, line, kind, amount);
+  const parts = bill.pieces.flatMap((state): Part[] => {
     const plan = state.piece.text.chargeOfLine[line];
     return plan ? [{ here: { ...speech, state }, plan }] : [];
   });
-  if (bill.pieces.length === 1)
-    return `${label}: ${pieceWords({ ...speech, state: bill.pieces[0]! }, shown, amount)}${clause}.`;
-  const words = parts.map(({ here, plan }) => `${wordPiece(here, plan)}: ${partWords(here, plan)}`);
-  return `${label}: ${words.join('; ')}; together ${money(amount, run.schedule)}${clause}.`;
+  const [first] = parts;
+  const isSame = parts.length === bill.pieces.length && parts.every((part) => sameKey(part) === sameKey(first!));
+  if (isSame) return wholeWords(parts, amount);
+  const words = parts.map(({ here, plan }) => `${wordPiece(here)}: ${partWords(here, plan)}`);
+  return `${words.join('; ')}; together ${money(amount, run.schedule)}`;
 }
 
-/** Sentence of a line in a bill of one piece. */
-function pieceWords(speech: Speech, plan: ChargePlan, amount: number): string {
-  const { schedule } = speech.run;
-  if (!isCharged(speech.run, speech.bill, speech.state, plan)) return whenWords(speech, plan);
-  const none = noneWords(speech, plan.charge.definition);
+/** What a part says apart from its share: where all parts say the same, the line need not be said piece by piece. */
+function sameKey({ here, plan }: Part): string {
+  const { definition } = plan.charge;
+  if (!isCharged(here.run, here.bill, here.state, plan)) return whenWords(here, plan);
+  if (definition.kind !== 'percent') return partWords({ ...here, isWhole: true }, plan);
+  return `${percentageWords(here, definition)} ${plan.ofLines.join()}`;
+}
+
+function wholeWords(parts: Part[], amount: number): string {
+  const { here, plan } = parts[parts.length - 1]!;
+  const { run, bill, state } = here;
+  if (!isCharged(run, bill, state, plan)) return whenWords(here, plan);
+  const { definition } = plan.charge;
+  const none = noneWords(here, definition);
   if (none) return `none, ${none}`;
-  const words = partWords(speech, plan);
-  const isWhole =
-    plan.charge.definition.kind === 'amount' &&
-    plan.charge.definition.amount.kind !== 'months' &&
-    words === bareMoney(amount, schedule);
-  return isWhole
-    ? money(amount, schedule)
-    : `${words} = ${money(amount, schedule)}${tierEnds(speech, plan.charge.definition)}`;
+  if (definition.kind === 'percent' && parts.length > 1) {
+    const base = parts.reduce((sum, part) => sum + partsOfLines(bill, part.here.state, part.plan), 0);
+    return `${percentageWords(here, definition)} of ${money(base, run.schedule)} = ${money(amount, run.schedule)}`;
+  }
+  const words = partWords({ ...here, isWhole: true }, plan);
+  if (words === bareMoney(amount, run.schedule)) return money(amount, run.schedule);
+  return `${words} = ${money(amount, run.schedule)}${tierEnds(here, definition)}`;
 }
 
 function whenWords(speech: Speech, { charge }: ChargePlan): string {
@@ -54,28 +69,19 @@ function noneWords({ run, state }: Speech, definition: ChargeDefinition): string
   return `${definition.perName} is 0`;
 }
 
-/** Beginning of a piece's part: its days, text, season and month as far as they differ, or its share of the measure. */
-function wordPiece(speech: Speech, plan: ChargePlan): string {
-  const { bill, state, run } = speech;
+/** Beginning of a piece's part: its days, and its text and season as far as they differ. */
+function wordPiece({ bill, state, run }: Speech): string {
   const { piece } = state;
-  const others = bill.pieces.map((other) => other.piece);
   const { text } = piece.text;
+  const others = bill.pieces.map((other) => other.piece);
   const isOtherText = others.some((other) => other.text !== piece.text);
   const isOtherSeason = others.some((other) => other.season !== piece.season);
-  const title =
-    text.note ??
-    (text === run.schedule.texts[0] ? (run.schedule.source.title ?? 'the first text') : `the text of ${text.from}`);
-  const where = [
-    ...(isOtherText ? [`under ${title}`] : []),
-    ...(isOtherSeason && text.seasons ? [`in ${text.seasons.names[piece.season]}`] : []),
-  ];
-  const share = shareOf(run, bill, state, plan);
-  const isByDays = plan.charge.definition.kind !== 'per' || Math.abs(share - piece.share) < 1e-12;
-  const days = `${piece.days} of ${bill.plan.days} days`;
-  const measured = isByDays
-    ? ''
-    : `, with ${wordNumber(share * 100)} % of the ${plan.charge.definition.kind === 'per' ? plan.charge.definition.perName : ''}`;
-  return `${[days, ...where].join(' ')}${measured}`;
+  const isFirst = text === run.schedule.texts[0];
+  const title = text.note ?? (isFirst ? (run.schedule.source.title ?? 'the first text') : `the text of ${text.from}`);
+  const words = [`${piece.days} of ${bill.plan.days} days`];
+  if (isOtherText) words.push(`under ${title}`);
+  if (isOtherSeason && text.seasons) words.push(`in ${text.seasons.names[piece.season]}`);
+  return words.join(' ');
 }
 
 function partWords(speech: Speech, plan: ChargePlan): string {
@@ -84,9 +90,9 @@ function partWords(speech: Speech, plan: ChargePlan): string {
   const { definition } = plan.charge;
   switch (definition.kind) {
     case 'amount':
-      return placeWords(speech, definition.amount);
+      return amountWords(speech, definition.amount);
     case 'per':
-      return priceWords(speech, definition, run.schedule.currency);
+      return priceWords(speech, plan, definition);
     case 'percent':
       return percentWords(speech, plan, definition);
     default:
@@ -94,107 +100,18 @@ function partWords(speech: Speech, plan: ChargePlan): string {
   }
 }
 
-function expressionIn(speech: Speech, place: NumberPlace): Expression | undefined {
-  const { season, month } = speech.state.piece;
-  return place.kind === 'same'
-    ? place.expression
-    : place.kind === 'seasons'
-      ? place.bySeason[season]
-      : place.byMonth.get(month);
-}
-
-function placeWords(speech: Speech, place: NumberPlace): string {
-  const expression = expressionIn(speech, place);
-  if (!expression) return '';
-  if (expression.formula.kind === 'number')
-    return bareMoney(placeValue(speech.run, speech.state, place), speech.run.schedule);
-  const value = placeValue(speech.run, speech.state, place);
-  const working = wordWorking(speech, expression);
-  return expression.formula.kind === 'name' ? `${working} = ${wordNumber(value)}` : working;
-}
-
-function rateWords(speech: Speech, place: NumberPlace): string {
-  const expression = expressionIn(speech, place);
-  if (!expression) return '';
-  const { formula } = expression;
-  if (formula.kind === 'number') return formula.raw;
-  const value = wordNumber(placeValue(speech.run, speech.state, place));
-  return formula.kind === 'name' ? value : `${value} (${wordWorking(speech, expression)})`;
-}
-
-type Priced = ChargeDefinition & { kind: 'per' };
-
-function priceWords(speech: Speech, { per, perName, unit, price }: Priced, currency: string): string {
-  const quantity = evaluateIn(speech.run, speech.state, per);
-  const words = perName === '' ? wordNumber(quantity) : wordName(speech, perName);
-  if (price.length === 1)
-    return `${withUnit(words, unit)} x ${rateWords(speech, price[0]!.rate)} ${currency}${unit === '' ? '' : ` per ${unit}`}`;
-  return tierParts(speech, price, quantity)
-    .map(({ inTier, tier }) => `${withUnit(wordNumber(inTier), unit)} x ${rateWords(speech, tier.rate)}`)
-    .join(' + ');
-}
-
-function tierParts(speech: Speech, price: Tier[], quantity: number): { inTier: number; tier: Tier }[] {
-  let below = 0;
-  const parts: { inTier: number; tier: Tier }[] = [];
-  for (const tier of price) {
-    const limit = tier.to ? Math.max(below, evaluateIn(speech.run, speech.state, tier.to)) : Infinity;
-    const inTier = quantity < 0 ? quantity : Math.min(quantity, limit) - below;
-    parts.push({ inTier: quantity < 0 ? inTier : Math.max(0, inTier), tier });
-    if (quantity <= limit) break;
-    below = limit;
-  }
-  return parts;
-}
-
-const ordinals = ['first', 'second', 'third', 'fourth', 'fifth', 'sixth', 'seventh', 'eighth'];
-
-/** Where the tiers that were reached end, if that is worked out. */
-function tierEnds(speech: Speech, definition: ChargeDefinition): string {
-  if (definition.kind !== 'per' || definition.price.length === 1) return '';
-  const reached = tierParts(speech, definition.price, evaluateIn(speech.run, speech.state, definition.per));
-  const ends = reached.flatMap(({ tier }, i) => {
-    if (!tier.to || tier.to.names.length === 0) return [];
-    const end = withUnit(wordNumber(evaluateIn(speech.run, speech.state, tier.to)), definition.unit);
-    return [`the ${ordinals[i] ?? 'next'} tier ends at ${printFormula(tier.to.formula)} = ${end}`];
-  });
-  return ends.length === 0 ? '' : `; ${ends.join(', ')}`;
-}
-
-function percentWords(speech: Speech, plan: ChargePlan, definition: ChargeDefinition & { kind: 'percent' }): string {
-  const { run, bill, state } = speech;
-  const base = `${money(partsOfLines(bill, state, plan), run.schedule)} (${linesWords(speech, plan, definition.isAllAbove)})`;
-  if (!definition.per) return `${rateWords(speech, definition.price[0]!.rate)} % of ${base}`;
-  const quantity = withUnit(wordName(speech, definition.perName ?? ''), definition.unit ?? '');
-  if (definition.price.length === 1)
-    return `${quantity} x ${rateWords(speech, definition.price[0]!.rate)} % of ${base}`;
-  const percent = tieredPrice(run, state, definition.price, evaluateIn(run, state, definition.per));
-  return `${wordNumber(percent)} % for ${quantity}, of ${base}`;
-}
-
-function linesWords({ bill, run, state }: Speech, plan: ChargePlan, isAllAbove: boolean): string {
-  if (plan.ofLines.length > 4)
-    return isAllAbove ? `all ${plan.ofLines.length} lines above` : `${plan.ofLines.length} lines`;
-  const count = bill.pieces.length;
-  return plan.ofLines
-    .map(
-      (line) => `${run.schedule.lineOrder[line]} ${bareMoney(bill.parts[line * count + state.index]!, run.schedule)}`,
-    )
-    .join(' + ');
-}
-
 function limitWords(speech: Speech, line: number, kind: 'topUp' | 'cap', amount: number): string {
   const { bill, run } = speech;
   let base = 0;
   let limit = 0;
   let working = '';
-  let off = '';
+  let off: string | undefined;
   for (const state of bill.pieces) {
     const plan = state.piece.text.chargeOfLine[line];
     const here = { ...speech, state };
     if (!plan) continue;
     if (!isCharged(run, bill, state, plan)) {
-      off = whenWords(here, plan);
+      off ??= whenWords(here, plan);
       continue;
     }
     const definition = plan.charge.definition as ChargeDefinition & { kind: 'topUp' | 'cap' };
@@ -203,17 +120,11 @@ function limitWords(speech: Speech, line: number, kind: 'topUp' | 'cap', amount:
     const expression = expressionIn(here, definition.to);
     if (expression && expression.names.length > 0) working = ` (${wordWorking(here, expression)})`;
   }
-  if (off !== '' && limit === 0) return off;
+  if (off !== undefined && limit === 0) return off;
   const { schedule } = run;
   const [baseWords, limitText] = [bareMoney(base, schedule), bareMoney(limit, schedule)];
-  if (amount === 0)
-    return `not needed, ${baseWords} is ${base === limit ? 'just' : kind === 'topUp' ? 'above' : 'below'} ${limitText}${working}`;
-  return `${kind === 'topUp' ? 'raises' : 'lowers'} ${baseWords} to ${limitText}${working}: ${money(amount, schedule)}`;
-}
-
-/** Words of a rate or contract input that is one expression. */
-export function expressionWords(speech: Speech, expression: Expression): string {
-  return expression.formula.kind === 'number'
-    ? wordExpression(speech, expression)
-    : `${wordWorking(speech, expression)} = ${wordNumber(evaluateIn(speech.run, speech.state, expression))}`;
+  if (amount !== 0)
+    return `${kind === 'topUp' ? 'raises' : 'lowers'} ${baseWords} to ${limitText}${working}: ${money(amount, schedule)}`;
+  const side = base === limit ? 'just' : kind === 'topUp' ? 'above' : 'below';
+  return `not needed, ${baseWords} is ${side} ${limitText}${working}`;
 }

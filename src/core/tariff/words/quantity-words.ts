@@ -99,7 +99,7 @@ function explainPick(
 function explainPast(speech: Speech, { name }: QuantityEntry, definition: PastDefinition, value: string): string {
   const { run, bill, state } = speech;
   const { take, over, season, expression } = definition;
-  const records = recordsBefore(run, bill, state);
+  const records = recordsBefore(run, bill, state, expression.slots);
   if (over.includesThis)
     records.push({ period: bill.plan.period, values: state.values, known: state.known, isTold: false });
   const { asked, known, setBy } = evaluatePast(definition, records, bill.plan.period, state.piece.text.text.seasons);

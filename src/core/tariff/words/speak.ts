@@ -15,6 +15,8 @@ export interface Speech {
   state: PieceState;
   /** Present when priced from intervals; its cells hold this run's load. */
   source: IntervalSource | undefined;
+  /** Speaks of the piece as if it were the whole period. */
+  isWhole?: boolean;
 }
 
 /** Value of a name as its rounding writes it; of a line, in minor units. */
@@ -32,7 +34,9 @@ export function wordName({ run, state, bill }: Speech, name: string): string {
 
 /** A number with its unit, if it has one. */
 export function withUnit(words: string, unit: string): string {
-  return unit === '' ? words : `${words} ${unit}`;
+  if (unit === '') return words;
+  const isPlural = /^[a-z]+s$/.test(unit);
+  return `${words} ${isPlural && words === '1' ? unit.slice(0, -1) : unit}`;
 }
 
 /** An amount in the schedule's currency. */
@@ -45,24 +49,12 @@ export function bareMoney(amount: number, { currency }: Schedule): string {
   return wordMoney(amount, currency).slice(0, -currency.length - 1);
 }
 
-/** Number of an expression as the file writes it, else its value. */
-export function wordExpression(speech: Speech, expression: Expression): string {
-  const { formula } = expression;
-  if (formula.kind === 'number') return formula.raw;
-  return wordNumber(expression.evaluate(speech.state.values));
-}
-
 /** `formula = formula with the numbers put in`; one part where both are the same. */
 export function wordWorking(speech: Speech, expression: Expression): string {
   const plain = printFormula(expression.formula);
   if (namesIn(expression.formula).length === 0) return plain;
   const filled = printFormula(expression.formula, (name) => wordName(speech, name));
   return expression.formula.kind === 'name' ? plain : `${plain} = ${filled}`;
-}
-
-/** Whether the words of a formula already end with its value. */
-export function isBareNumber(expression: Expression): boolean {
-  return expression.formula.kind === 'number';
 }
 
 const weekdays = ['Sunday', 'Monday', 'Tuesday', 'Wednesday', 'Thursday', 'Friday', 'Saturday'];

@@ -28,7 +28,7 @@ function print(node: Formula, wordOf: (name: string) => string, outer: number): 
     }
     case 'binary': {
       const own = strengthOf(node.operator);
-      const left = print(node.left, wordOf, node.operator === '^' ? own + 1 : own);
+      const left = print(node.left, wordOf, node.operator === '^' || own === strengthOf('=') ? own + 1 : own);
       const right = print(node.right, wordOf, node.operator === '^' ? signStrength : own + 1);
       const sign = node.operator === '*' ? 'x' : node.operator;
       const text = `${left} ${sign} ${right}`;

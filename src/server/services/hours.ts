@@ -113,7 +113,14 @@ export async function openHours(actor: Actor, id: number): Promise<OpenHours> {
   return { entry, opened };
 }
 
-const shown = ({ day, minutes, station, note, billable }: HourEntry) => ({ day, minutes, station, note, billable });
+const shown = ({ day, minutes, station, note, billable, version }: HourEntry) => ({
+  day,
+  minutes,
+  station,
+  note,
+  billable,
+  version,
+});
 
 /** Changes an entry of the actor's. @throws {ServiceError} 409 with both versions; 422 by field */
 export async function changeHours(

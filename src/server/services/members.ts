@@ -16,6 +16,14 @@ export interface MemberView {
 export const membersOf = ({ members }: OpenEngagement): MemberView[] =>
   members.map(({ id, name, role }) => ({ userId: id, name, role }));
 
+/** People of the practice who do not work on it yet. */
+export async function othersOf({ members }: OpenEngagement): Promise<MemberView[]> {
+  const known = new Set(members.map((member) => member.id));
+  const where = { role: ['partner', 'consultant'], disabledAt: null };
+  const staff = await User.findAll({ where, order: ['name'] });
+  return staff.filter(({ id }) => !known.has(id)).map(({ id, name, role }) => ({ userId: id, name, role }));
+}
+
 /** Lets a person of the practice work on the engagement; twice is once. @throws {ServiceError} 422 */
 export async function addMember(opened: OpenEngagement, userId: number): Promise<MemberView> {
   const user = await User.findByPk(userId);

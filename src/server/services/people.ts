@@ -165,7 +165,7 @@ export async function changePerson(actor: Actor, user: User, input: PersonChange
   const values = valuesOf(actor, user, input);
   if (user.version !== input.version) {
     const theirs = Object.fromEntries(Object.keys(values).map((name) => [name, user.get(name as keyof User)]));
-    throw staleVersion(user.name, values, theirs);
+    throw staleVersion(user.name, values, { ...theirs, version: user.version });
   }
   await inTx(async () => {
     await user.update(values);

@@ -99,7 +99,8 @@ export async function openRate(actor: Actor, id: number): Promise<Rate> {
 export async function changeRate(actor: Actor, rate: Rate, input: RateChangeInput): Promise<RateView> {
   const { version, perHour, from } = input;
   if (rate.version !== version) {
-    const theirs = { perHour: rate.perHourMinor / 10 ** minorUnitDecimals(rate.currency), from: rate.from };
+    const perHourNow = rate.perHourMinor / 10 ** minorUnitDecimals(rate.currency);
+    const theirs = { perHour: perHourNow, from: rate.from, version: rate.version };
     throw staleVersion('This rate', { perHour, from }, theirs);
   }
   await refuseTwin({ userId: rate.userId, engagementId: rate.engagementId, from }, rate.id);

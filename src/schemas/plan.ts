@@ -151,7 +151,7 @@ export interface PlanView {
   hoursLeading: { before: number; after: number };
   /** "field, M-1 at 80 %". */
   nearestLimit: string;
-  /** Power factor at the interval of greatest demand, per bill; the worst of them. */
+  /** Power factor at the interval of greatest demand, per bill; the worst of them. `bill` is the day its period ends before. */
   worstPf: { value: number; leading: boolean; bill: string } | null;
   chosen: boolean;
   assumed: AssumedValue[];
@@ -185,6 +185,8 @@ export interface YearView {
   chosen: PlanView | null;
   /** Distinct notes of the priced bills. */
   notes: string[];
+  /** Changes with motors, bills, readings and tariff: what a search was made on. */
+  fingerprint: string;
 }
 
 /** What must be done before plans can be priced. */

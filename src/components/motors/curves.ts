@@ -64,12 +64,19 @@ function pullOutEdge(machine: SynchronousMotor, margin: number): CurrentPoint[] 
   return edge;
 }
 
+/** Five loads, the usual one in place of its nearest so that the names of the curves keep apart. */
+function loadsOnPicture(usualPercent: number): number[] {
+  const gap = (percent: number) => Math.abs(percent - usualPercent);
+  const nearest = loadPercents.reduce((a, b) => (gap(b) < gap(a) ? b : a));
+  return loadPercents.map((percent) => (percent === nearest ? usualPercent : percent));
+}
+
 /** The family of V-curves of a motor with its limits and marks. */
 export function vCurveData(motor: MotorView, plan: NamedField | null): VCurveData {
   const { machine, limits, usualShaftKw } = motor;
   const fieldToA = Math.max(limits.fieldA, machine.ratedFieldCurrentA) * 1.1;
   const usualLoadPercent = Math.round(motor.usualLoadPercent);
-  const percents = [...new Set([...loadPercents, usualLoadPercent])].sort((a, b) => a - b);
+  const percents = loadsOnPicture(usualLoadPercent);
   const shaft = (percent: number) =>
     percent === usualLoadPercent ? usualShaftKw : (percent / 100) * machine.ratedOutputKw;
   return {

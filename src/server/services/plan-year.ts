@@ -74,6 +74,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
     notes: [...new Set(standing.bills.flatMap((bill) => bill.notes))],
+    fingerprint: basis.fingerprint,
   };
 }
 

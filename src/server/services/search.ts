@@ -1,5 +1,5 @@
 import type { JobProgress } from '../../schemas/job';
-import type { SearchInput } from '../../schemas/plan';
+import type { SearchInput, SearchView } from '../../schemas/plan';
 import { conflict } from '../errors';
 import { Job } from '../models/Job';
 import type { Actor } from '../policies/actor';
@@ -41,9 +41,12 @@ export async function startSearch(actor: Actor, opened: OpenEngagement, input: S
   });
 }
 
-/** The search a page opens with: the one that runs, else the newest that ended well. */
-export async function latestSearch(opened: OpenEngagement): Promise<{ id: number } | null> {
+/** The search a page opens with: the one that runs, else the newest that ended well with what it found. */
+export async function latestSearch(opened: OpenEngagement): Promise<{ id: number; found: SearchView | null } | null> {
   const where = { engagementId: opened.engagement.id, kind };
+  const done = await Job.findOne({ where: { ...where, state: 'done' }, order: [['id', 'DESC']] });
+  const found = done?.result ? (done.result as unknown as SearchView) : null;
   const [running] = await runningJobs(opened.engagement.id, kind);
-  return running ?? Job.findOne({ where: { ...where, state: 'done' }, order: [['id', 'DESC']], attributes: ['id'] });
+  const id = running?.id ?? done?.id;
+  return id === undefined ? null : { id, found };
 }

@@ -1,0 +1,60 @@
+import type { PlanInput } from '../../schemas/plan';
+import { typedNumber } from '../motors/draft';
+
+/** A plan as it is typed; paths are those of `planInput`. Fields stay in the order of the motors. */
+export interface PlanDraft {
+  name: string;
+  fields: { motorId: number; fieldA: string }[];
+  capitalCost: string;
+  yearlyUpkeep: string;
+  economics: { discountPercent: string; escalationPercent: string; horizonYears: string };
+}
+
+/** What the schema is asked to read. */
+export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknown {
+  const { economics } = draft;
+  return {
+    name: draft.name,
+    fields: draft.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typedNumber(fieldA) })),
+    capitalCost: typedNumber(draft.capitalCost),
+    yearlyUpkeep: typedNumber(draft.yearlyUpkeep),
+    economics: {
+      discountPercent: typedNumber(economics.discountPercent),
+      escalationPercent: typedNumber(economics.escalationPercent),
+      horizonYears: typedNumber(economics.horizonYears),
+    },
+    searchJobId,
+  };
+}
+
+/** Amperes as an operator reads them: a tenth at most, so that a solved value stays within its limit. */
+const typed = (value: number) => String(Math.round(value * 1e6) / 1e6);
+
+/** A stored plan, or the start of a new one, in the form. */
+export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
+  const { economics } = plan;
+  return {
+    name: plan.name,
+    fields: plan.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typed(fieldA) })),
+    capitalCost: typed(plan.capitalCost),
+    yearlyUpkeep: typed(plan.yearlyUpkeep),
+    economics: {
+      discountPercent: typed(economics.discountPercent),
+      escalationPercent: typed(economics.escalationPercent),
+      horizonYears: typed(economics.horizonYears),
+    },
+  };
+}
+
+/** Entries of a draft as text, with names, for comparing two versions. */
+export function planEntries(draft: PlanDraft, motorName: (motorId: number) => string): Record<string, string> {
+  return {
+    Name: draft.name,
+    ...Object.fromEntries(draft.fields.map(({ motorId, fieldA }) => [`${motorName(motorId)} field, A`, fieldA])),
+    'Work, once': draft.capitalCost,
+    'Upkeep a year': draft.yearlyUpkeep,
+    'Discount rate, %': draft.economics.discountPercent,
+    'Rise of prices, %': draft.economics.escalationPercent,
+    'Horizon, years': draft.economics.horizonYears,
+  };
+}

@@ -1,0 +1,238 @@
+import { addDays } from '../../core/load';
+import { toMinorUnits } from '../../core/units';
+import type { BillView, CostCurveView, PlanView, YearView } from '../../schemas/plan';
+import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
+import type { CashFlowData } from '../charts/CashFlowChart';
+import type { CostCurveData } from '../charts/CostCurveChart';
+import type { PaybackData } from '../charts/PaybackChart';
+import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
+import { formatAmount, formatDay, formatMonth, formatNumber } from '../ui/format';
+import { amperes, billName, groupNames, hoursWords } from './words';
+
+interface Entry {
+  label: string;
+  unit: string;
+  cell: (plan: PlanView) => LedgerValue;
+  kind?: LedgerRow['kind'];
+}
+
+/** Standing and plans side by side. The plan shown in full is picked out. */
+export function plansTable(year: YearView, shownId: number | null): LedgerData {
+  const { currency } = year;
+  const exact = (amount: number) => formatAmount(toMinorUnits(amount, currency), currency);
+  const whole = (amount: number) => formatNumber(amount);
+  const onlyPlans = (cell: (plan: PlanView) => LedgerValue) => (plan: PlanView) =>
+    plan.id === null ? null : cell(plan);
+  const entries: Entry[] = [
+    ...year.standing.fields.map(({ motorId, name }): Entry => ({
+      label: `${name} field`,
+      unit: 'A',
+      cell: (plan) => fieldCell(plan, motorId),
+    })),
+    { label: 'pf at peak, worst bill', unit: '', cell: pfCell },
+    ...groupNames
+      .filter(([group]) => [year.standing, ...year.plans].some((plan) => plan.groupTotals[group] !== 0))
+      .map(([group, label]): Entry => ({ label, unit: currency, cell: (plan) => exact(plan.groupTotals[group]) })),
+    { label: 'Bills of the year', unit: currency, cell: (plan) => exact(plan.yearTotal), kind: 'total' },
+    { label: 'Saved a year', unit: currency, cell: onlyPlans(savingCell) },
+    { label: 'Work, once', unit: currency, cell: onlyPlans((plan) => whole(plan.capitalCost)) },
+    { label: 'Upkeep a year', unit: currency, cell: onlyPlans((plan) => whole(plan.yearlyUpkeep)) },
+    { label: 'Simple payback', unit: 'months', cell: onlyPlans(paybackCell) },
+    { label: 'Net present value', unit: currency, cell: onlyPlans(valueCell) },
+    { label: 'Extra losses', unit: 'kWh', cell: onlyPlans((plan) => whole(plan.extraLossKwh)) },
+    { label: 'Hours leading at the meter', unit: 'h', cell: (plan) => hoursWords(plan.hoursLeading.after) },
+    { label: 'Nearest limit', unit: '', cell: (plan) => plan.nearestLimit },
+  ];
+  const plans = [year.standing, ...year.plans];
+  return {
+    columns: [
+      { key: 'entry', head: 'Entry', headUnseen: true },
+      { key: 'unit', head: 'Unit', quiet: true },
+      ...plans.map((plan): LedgerColumn => ({
+        key: keyOf(plan),
+        head: plan.name,
+        unit: plan.id === null ? 'as it runs now' : plan.chosen ? 'chosen' : 'proposed',
+        align: 'right',
+        picked: plan.id !== null && plan.id === shownId,
+      })),
+    ],
+    rows: entries.map(({ label, unit, cell, kind }) => ({
+      id: label,
+      kind,
+      cells: { entry: label, unit, ...Object.fromEntries(plans.map((plan) => [keyOf(plan), cell(plan)])) },
+    })),
+  };
+}
+
+const keyOf = (plan: PlanView) => `plan-${plan.id ?? 'standing'}`;
+
+function fieldCell(plan: PlanView, motorId: number): LedgerValue {
+  const field = plan.fields.find((one) => one.motorId === motorId);
+  if (!field) return null;
+  const note = field.panelA === undefined ? undefined : `panel ${formatNumber(field.panelA, { decimals: 2 })}`;
+  return { value: formatNumber(field.fieldA, { upTo: 1 }), note };
+}
+
+function pfCell({ worstPf }: PlanView): LedgerValue {
+  if (!worstPf) return { value: 'not known', tone: 'quiet' };
+  return `${formatNumber(worstPf.value, { decimals: 2 })}${worstPf.leading ? ' leading' : ''}`;
+}
+
+function savingCell({ saving }: PlanView): LedgerCell {
+  if (saving > 0) return { value: formatNumber(saving), tone: 'leading', strong: true };
+  return { value: saving === 0 ? 'nothing' : `${formatNumber(-saving)} more`, tone: 'fault' };
+}
+
+function paybackCell({ paybackWords, appraisal }: PlanView): LedgerCell {
+  if (paybackWords === 'never') return { value: 'never', tone: 'fault' };
+  return { value: formatNumber((appraisal.simplePaybackYears ?? 0) * 12, { decimals: 1 }), strong: true };
+}
+
+const valueCell = ({ appraisal, economics }: PlanView): LedgerCell => ({
+  value: formatNumber(appraisal.npv),
+  strong: true,
+  tone: appraisal.npv < 0 ? 'fault' : undefined,
+  note: `${economics.horizonYears} years, ${formatNumber(economics.discountPercent, { upTo: 1 })} %`,
+});
+
+const drawnGroups = new Set(['demand', 'reactive']);
+const drawnTotal = (bill: BillView) =>
+  bill.lines.filter((line) => drawnGroups.has(line.group)).reduce((sum, line) => sum + line.amount, 0);
+
+/** Demand and reactive lines of each bill before and after a plan. */
+export function billsChart(year: YearView, plan: PlanView): BillsBeforeAfterData {
+  return {
+    currency: year.currency,
+    planName: plan.name,
+    what: 'demand and reactive lines',
+    bills: year.standing.bills.map((bill, index) => {
+      const lastDay = addDays(bill.to, -1);
+      const [month = '', inYear] = formatMonth(lastDay).split(' ');
+      return {
+        label: month,
+        year: index === 0 || month === 'Jan' ? inYear : undefined,
+        before: drawnTotal(bill),
+        after: drawnTotal(plan.bills[index] ?? bill),
+      };
+    }),
+  };
+}
+
+/** One bill line by line, before and after; each figure can be asked why. */
+export function billLines(before: BillView, after: BillView, currency: string, planName: string): LedgerData {
+  const minor = (amount: number) => toMinorUnits(amount, currency);
+  const ids = [...new Set([...before.lines, ...after.lines].map((line) => line.id))];
+  const cellOf = (bill: BillView, id: string): LedgerValue => {
+    const line = bill.lines.find((one) => one.id === id);
+    if (!line) return null;
+    return {
+      value: minor(line.amount),
+      why: {
+        title: `Why ${formatAmount(minor(line.amount), currency)} ${currency}: ${line.label}, bill of ${billName(bill)}`,
+        steps: [{ label: line.explanation, result: formatAmount(minor(line.amount), currency), kind: 'equals' }],
+        clause: line.clause ? { text: line.label, cite: `clause ${line.clause}` } : undefined,
+      },
+    };
+  };
+  const amountOf = (bill: BillView, id: string) => bill.lines.find((line) => line.id === id)?.amount ?? 0;
+  const money = { kind: 'money' as const, currency };
+  return {
+    columns: [
+      { key: 'line', head: 'Line' },
+      { key: 'before', head: 'Standing', ...money },
+      { key: 'after', head: planName, ...money },
+      { key: 'change', head: 'Change', ...money, signed: true, strong: true },
+    ],
+    rows: ids.map((id) => ({
+      id,
+      cells: {
+        line: (after.lines.find((line) => line.id === id) ?? before.lines.find((line) => line.id === id))?.label ?? id,
+        before: cellOf(before, id),
+        after: cellOf(after, id),
+        change: minor(amountOf(after, id) - amountOf(before, id)),
+      },
+    })),
+    total: {
+      line: `Bill of ${formatDay(before.from)} to ${formatDay(addDays(before.to, -1))}`,
+      before: minor(before.total),
+      after: minor(after.total),
+      change: minor(after.total - before.total),
+    },
+  };
+}
+
+/** From standing to the plan by groups of charges: what it takes away, what its losses take back. */
+export function changeTable(year: YearView, plan: PlanView): LedgerData {
+  const minor = (amount: number) => toMinorUnits(amount, year.currency);
+  const money = { kind: 'money' as const, currency: year.currency };
+  const changes = groupNames
+    .map(([group, label]) => ({ label, change: plan.groupTotals[group] - year.standing.groupTotals[group] }))
+    .filter(({ change }) => Math.abs(change) >= 0.005);
+  return {
+    columns: [
+      { key: 'group', head: `From standing to ${plan.name}` },
+      { key: 'change', head: 'Change a year', ...money, signed: true },
+    ],
+    rows: [
+      {
+        id: 'standing',
+        kind: 'subtotal',
+        cells: { group: 'Standing', change: formatAmount(minor(year.standing.yearTotal), year.currency) },
+      },
+      ...changes.map(({ label, change }): LedgerRow => ({
+        id: label,
+        cells: { group: label, change: { value: minor(change), tone: change < 0 ? 'leading' : undefined } },
+      })),
+    ],
+    total: { group: plan.name, change: formatAmount(minor(plan.yearTotal), year.currency) },
+  };
+}
+
+/** The cost of the year round a setting of one motor, the others held at the plan's. */
+export function costCurve(
+  curve: CostCurveView,
+  others: { name: string; fieldA: number }[],
+  currency: string,
+): CostCurveData {
+  const points = curve.points
+    .filter((point) => point.admissible)
+    .map(({ fieldA, total }) => ({ fieldA, yearCost: total }));
+  const at = (fieldA: number) => points.find((point) => Math.abs(point.fieldA - fieldA) < 1e-6);
+  const held = others.map((other) => `${other.name} at ${amperes(other.fieldA)}`).join(', ');
+  const isMoved = Math.abs(curve.todayA - curve.chosenA) > 1e-6;
+  return {
+    currency,
+    points,
+    chosen: at(curve.chosenA) ?? points[0] ?? { fieldA: curve.chosenA, yearCost: 0 },
+    standing: isMoved ? (at(curve.todayA) ?? null) : null,
+    standingName: `${curve.name} left at ${amperes(curve.todayA)}`,
+    limitFieldA: curve.ratedLimitA,
+    reserveFieldA: curve.limitA < curve.ratedLimitA - 1e-6 ? curve.limitA : undefined,
+    axisName: `Field current of ${curve.name}, A${held ? ` (${held})` : ''}`,
+  };
+}
+
+/** Cumulative cash of a plan with the band of eight of ten samples. */
+export function paybackChart(plan: PlanView): PaybackData {
+  return {
+    currency: plan.currency,
+    capitalCost: plan.capitalCost,
+    paybackYears: plan.paybackWords === 'never' ? null : plan.appraisal.simplePaybackYears,
+    editionName: plan.name,
+    points: plan.cashFlow
+      .filter((month) => month.month % 3 === 0)
+      .map((month) => ({ year: month.month / 12, cumulative: month.cumulative, p10: month.low, p90: month.high })),
+  };
+}
+
+/** Cash of each year: the work, then saving less upkeep. */
+export function cashFlowChart(plan: PlanView): CashFlowData {
+  const atYear = (year: number) => plan.cashFlow.find((month) => month.month === 12 * year)?.cumulative ?? 0;
+  return {
+    currency: plan.currency,
+    years: Array.from({ length: plan.economics.horizonYears + 1 }, (_, year) => ({
+      year,
+      flow: year === 0 ? atYear(0) : atYear(year) - atYear(year - 1),
+    })),
+  };
+}

@@ -1,0 +1,141 @@
+import { addDays } from '../../core/load';
+import type { ChargeGroup, PlanField, PlanView, YearView } from '../../schemas/plan';
+import { formatMajor, formatMonth, formatNumber, formatQuantity, formatSpelled } from '../ui/format';
+
+/** Groups in the order of the tables, in words. */
+export const groupNames: [ChargeGroup, string][] = [
+  ['demand', 'Demand'],
+  ['reactive', 'Reactive power'],
+  ['energy', 'Energy, losses in it'],
+  ['adjustment', 'Riders and credits'],
+  ['fixed', 'Fixed'],
+  ['tax', 'Tax'],
+];
+
+/** The name people give a bill: the month of its last day. */
+export const billName = (bill: { to: string }) => formatMonth(addDays(bill.to, -1));
+
+export const amperes = (fieldA: number) => formatQuantity(fieldA, 'A', { upTo: 1 });
+
+const changed = (field: PlanField) => Math.abs(field.fieldA - field.todayA) > 1e-6;
+
+/** What a plan does to the fields: "Raise two fields", "Lower the field of M-1", "Leave the fields alone". */
+export function actionWords(plan: PlanView): string {
+  const fields = plan.fields.filter(changed);
+  const [first] = fields;
+  if (!first) return 'Leave the fields alone';
+  const raised = fields.filter((field) => field.fieldA > field.todayA).length;
+  const verb = raised === fields.length ? 'Raise' : raised === 0 ? 'Lower' : 'Reset';
+  return fields.length === 1 ? `${verb} the field of ${first.name}` : `${verb} ${formatSpelled(fields.length)} fields`;
+}
+
+/** Plans by net present value, the best first. */
+export const byValue = (plans: PlanView[]) => [...plans].sort((a, b) => b.appraisal.npv - a.appraisal.npv);
+
+/** The plan a page shows in full: the chosen one, else the best by net present value. */
+export const shownPlan = (year: YearView): PlanView | null => year.chosen ?? byValue(year.plans)[0] ?? null;
+
+const worthDoing = (plan: PlanView) => plan.saving > 0 && plan.appraisal.npv > 0;
+
+/** When a plan has paid for itself, in a sentence's words. */
+function paybackPhrase(plan: PlanView): string {
+  if (plan.paybackWords === 'never') return `does not pay back within ${plan.economics.horizonYears} years`;
+  return plan.paybackWords === 'at once' ? 'costs nothing to do' : `pays back in ${plan.paybackWords}`;
+}
+
+/** The finding of the station: what to do, what it saves, what it costs; honest where nothing pays. */
+export function plansVerdict(year: YearView, shown: PlanView | null): { title: string; lead: string } {
+  const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
+  if (!shown) {
+    return {
+      title: `As it runs now the year costs ${money(year.standing.yearTotal)}; ${money(year.standing.reactiveCost)} of it is the price of reactive power.`,
+      lead: 'No plan yet. Search for the best field currents, or enter settings of your own.',
+    };
+  }
+  const best = byValue(year.plans)[0] ?? shown;
+  if (!worthDoing(best)) {
+    const saves = best.saving > 0 ? `saves ${money(best.saving)} a year` : `costs ${money(-best.saving)} a year more`;
+    return {
+      title: 'Leave the fields alone: no plan brings in more than it costs.',
+      lead: `The nearest, ${best.name}, ${saves} and ${paybackPhrase(best)}.`,
+    };
+  }
+  const cost = shown.capitalCost > 0 ? ` for ${money(shown.capitalCost)}` : '';
+  const left = year.standing.reactiveCost - shown.saving;
+  return {
+    title: `${actionWords(shown)}: ${shown.name} saves ${money(shown.saving)} a year${cost} and ${paybackPhrase(shown)}.`,
+    lead: leadOf(year, shown, left),
+  };
+}
+
+function leadOf(year: YearView, shown: PlanView, left: number): string {
+  const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
+  const other = byValue(year.plans).find((plan) => plan.id !== shown.id);
+  if (other) {
+    const difference = other.appraisal.npv - shown.appraisal.npv;
+    return difference > 0
+      ? `${other.name} would be worth ${money(difference)} more in present value.`
+      : `${other.name} would save ${money(other.saving)} a year and be worth ${money(-difference)} less in present value.`;
+  }
+  return left > 0
+    ? `Of the ${money(year.standing.reactiveCost)} a year that reactive power costs today, ${money(left)} stay.`
+    : 'It takes away all that reactive power costs today.';
+}
+
+/** What would turn the verdict, and where the plan brings least. */
+export function turningWords(year: YearView, plan: PlanView): { turn: string; least: string | null } {
+  const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
+  const ceiling = plan.capitalCost + plan.appraisal.npv;
+  const turn =
+    ceiling > 0
+      ? `Work dearer than ${money(ceiling)}: then its present value over ${plan.economics.horizonYears} years is nought.`
+      : 'Nothing of its cost: even without any it would be worth less than standing.';
+  const savings = plan.bills.map((bill, index) => ({
+    name: billName(bill),
+    saved: (year.standing.bills[index]?.total ?? 0) - bill.total,
+  }));
+  const least = savings.reduce((a, b) => (b.saved < a.saved ? b : a), savings[0] ?? { name: '', saved: 0 });
+  if (savings.length === 0) return { turn, least: null };
+  const words =
+    least.saved <= 0
+      ? `${least.name}: the bill rises by ${money(-least.saved)}.`
+      : `${least.name}: ${money(least.saved)} saved.`;
+  return { turn, least: words };
+}
+
+/** What the search found, in a sentence. */
+export function searchSentence(saving: number, leaveAlone: boolean, currency: string): string {
+  if (leaveAlone) return 'Leave the fields alone: no setting within the limits makes the year cheaper.';
+  return `The best setting saves ${formatMajor(saving, currency, { whole: true })} a year before any cost of the work.`;
+}
+
+/** Field settings in a row: "M-1 138 A, M-2 84 A". */
+export const fieldWords = (fields: { name: string; fieldA: number }[]) =>
+  fields.map((field) => `${field.name} ${amperes(field.fieldA)}`).join(', ');
+
+/** Hours as a share that people can picture. */
+export const hoursWords = (hours: number) => formatNumber(Math.round(hours));
+
+/** What the bills say of a plan: caption and how to read the picture. */
+export function billsFinding(year: YearView, plan: PlanView): { finding: string; reading: string } {
+  const saved = plan.bills.map((bill, index) => (year.standing.bills[index]?.total ?? 0) - bill.total);
+  const fallen = saved.filter((amount) => amount > 0.005).length;
+  const most = saved.indexOf(Math.max(...saved));
+  const peak = plan.bills[most];
+  const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
+  const many = fallen === saved.length ? 'Every bill falls' : `${fallen} of ${saved.length} bills fall`;
+  const finding =
+    fallen === 0 || !peak ? 'No bill falls.' : `${many}; ${billName(peak)} most, by ${money(saved[most] ?? 0)}.`;
+  return { finding, reading: `Solid copper: what remains. Hatched verdigris: what ${plan.name} takes away.` };
+}
+
+/** What the cumulative cash says of a plan. */
+export function paybackFinding(plan: PlanView): string {
+  if (plan.paybackWords === 'never')
+    return `${plan.name} does not earn back its cost within ${plan.economics.horizonYears} years.`;
+  const end = plan.cashFlow.at(-1)?.cumulative ?? 0;
+  const after = `after ${plan.economics.horizonYears} years it has brought ${formatMajor(end, plan.currency, { whole: true })}`;
+  return plan.paybackWords === 'at once'
+    ? `It costs nothing to do; ${after}.`
+    : `Paid back in ${plan.paybackWords}; ${after}.`;
+}

@@ -1,0 +1,55 @@
+import { planDefaults, type PlanInput, type SearchView, type YearView } from '../../schemas/plan';
+import type { Actor } from '../policies/actor';
+import { readJob } from './jobs';
+
+/** What the form of a plan begins with. */
+export interface PlanStart {
+  start: Omit<PlanInput, 'searchJobId'>;
+  plan?: { id: number; version: number };
+  searchJobId?: number;
+}
+
+/** First free name of a new plan: A, B, ... */
+function freeName(taken: string[]): string {
+  const letters = [...'ABCDEFGHIJKLMNOPQRSTUVWXYZ'].map((letter) => `Plan ${letter}`);
+  return letters.find((name) => !taken.includes(name)) ?? `Plan ${taken.length + 1}`;
+}
+
+/**
+ * Where the form of a plan begins: a stored plan, the settings a search found, or the fields of today.
+ *
+ * @param asked  `new`, or the id of a plan
+ * @returns null where no form was asked for
+ */
+export async function planStart(
+  actor: Actor,
+  year: YearView,
+  asked: { plan: string | null; search: string | null },
+): Promise<PlanStart | null> {
+  const stored = [...year.plans, ...year.unpriced].find((one) => String(one.id) === asked.plan);
+  const current = year.plans.find((one) => one.id === stored?.id);
+  const fieldsOf = (fields: readonly { motorId: number; fieldA: number }[]) =>
+    year.standing.fields.map(({ motorId, todayA }) => ({
+      motorId,
+      fieldA: fields.find((field) => field.motorId === motorId)?.fieldA ?? todayA,
+    }));
+  if (stored && stored.id !== null) {
+    const { capitalCost = 0, yearlyUpkeep = 0, economics = { ...planDefaults } } = current ?? {};
+    const start = { name: stored.name, fields: fieldsOf(stored.fields), capitalCost, yearlyUpkeep, economics };
+    return { start, plan: { id: stored.id, version: stored.version } };
+  }
+  if (asked.plan !== 'new') return null;
+  const searchJobId = asked.search && /^\d+$/.test(asked.search) ? Number(asked.search) : undefined;
+  const job = searchJobId === undefined ? null : await readJob(actor, searchJobId);
+  const found = job?.kind === 'search' && job.state === 'done' ? (job.result as unknown as SearchView) : null;
+  return {
+    start: {
+      name: freeName([...year.plans, ...year.unpriced].map((one) => one.name)),
+      fields: fieldsOf(found?.fields ?? []),
+      capitalCost: 0,
+      yearlyUpkeep: 0,
+      economics: { ...planDefaults },
+    },
+    searchJobId: found ? searchJobId : undefined,
+  };
+}

@@ -1,6 +1,7 @@
 import type { EngagementRowView } from '../../schemas/engagement';
+import { notFound } from '../errors';
 import { HourEntry } from '../models/HourEntry';
-import type { Actor } from '../policies/actor';
+import { isStaff, type Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
 import { listEngagements, type OpenEngagement } from './engagements';
 import { standsAt, stationsOf } from './stations';
@@ -37,4 +38,10 @@ export interface ListedEngagement {
 export async function listedEngagements(actor: Actor): Promise<ListedEngagement[]> {
   const all = await listEngagements(actor);
   return Promise.all(all.map(async (opened) => ({ opened, row: await rowOf(actor, opened) })));
+}
+
+/** The same as rows of a list. @throws {ServiceError} 404 to clients */
+export async function engagementRows(actor: Actor): Promise<EngagementRowView[]> {
+  if (!isStaff(actor)) throw notFound();
+  return (await listedEngagements(actor)).map(({ row }) => row);
 }

@@ -37,7 +37,9 @@ export interface EditionBill {
   before: number;
   after: number;
   billed: number | null;
+  /** What poor power factor costs in it, before and after. */
   reactiveCost: number;
+  reactiveCostAfter: number;
   lines: EditionLine[];
 }
 

@@ -54,14 +54,14 @@ describe('editionLetter', () => {
 });
 
 describe('renderLeaves', () => {
-  it('freezes five pages that name client, edition and digest', () => {
+  it('freezes six pages that name client, edition and digest', () => {
     const html = renderLeaves({
       content: input.content,
       pictures: { bills: '<svg id="drawn"></svg>' },
       digest: '9f3c 41d7',
     });
-    expect(html.match(/<article class="leaf"/g)).toHaveLength(5);
-    expect(html.match(/digest 9f3c 41d7/g)).toHaveLength(5);
+    expect(html.match(/<article class="leaf"/g)).toHaveLength(6);
+    expect(html.match(/digest 9f3c 41d7/g)).toHaveLength(6);
     expect(html).toContain('<svg id="drawn"></svg>');
     expect(html).toContain('Not released');
   });

@@ -43,6 +43,7 @@ export function buildEditionContent(given: Partial<EditionContent> = {}): Editio
         after: 900_000,
         billed: 960_100,
         reactiveCost: 72_000,
+        reactiveCostAfter: 12_000,
         lines: [
           { id: 'demand', label: 'Demand', group: 'demand', before: 310_000, after: 250_000 },
           { id: 'energy', label: 'Energy', group: 'energy', before: 650_000, after: 650_000 },

@@ -2,6 +2,7 @@ import { useState } from 'react';
 import type { EditionBill, EditionContent } from '../../schemas/edition';
 import { BillsBeforeAfterFigure } from '../charts/BillsBeforeAfterChart';
 import { billsTable } from '../report/BillsLeaf';
+import { poorFactorBars } from '../report/poor-factor-bars';
 import { Button } from '../ui/Button';
 import { formatMajor, formatMonth, formatPeriod } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
@@ -40,16 +41,9 @@ export function BillsBeforeAfter({ content }: { content: EditionContent }) {
         <div className="working">
           <BillsBeforeAfterFigure
             finding={`Over the year the bills fall from ${formatMajor(standing.yearTotal, currency, { whole: true })} to ${formatMajor(plan.yearTotal, currency, { whole: true })}.`}
-            reading="Solid copper: what remains. Hatched verdigris: what the plan takes away, figure above."
+            reading="What poor power factor costs in each bill. Solid copper: what remains. Hatched verdigris: what the plan takes away."
             fileName={`bills-edition-${content.number}`}
-            currency={currency}
-            what="all lines"
-            planName={plan.name}
-            bills={bills.map((bill) => ({
-              label: formatMonth(lastDay(bill.to)).slice(0, 3),
-              before: bill.before,
-              after: bill.after,
-            }))}
+            {...poorFactorBars(content)}
           />
         </div>
         <aside className="result">

@@ -71,7 +71,7 @@ function Contents({ taps }: { taps: LeafTap[] }) {
       <tbody>
         {taps.map((tap, index) => (
           <tr key={tap.href}>
-            <th scope="row">
+            <th scope="row" className="left">
               <b>{index + 1}</b>&ensp;{tap.label}
             </th>
             <td>
@@ -145,7 +145,7 @@ export function AnswerLeaf({ content, taps, foot }: LeafContext) {
             `The saving of ${formatMajor(plan.saving, currency)} a year has all extra losses of the motors in it.`}
         </p>
       </LeafRow>
-      <LeafRow reference={<p>In full on page {taps.length}</p>}>
+      <LeafRow reference={<p>In full on page {taps.length - 1}</p>}>
         <Caution title="Before settings are changed" narrow>
           <p>
             All settings here are calculated values. Qualified persons review, set and commission them under your

@@ -1,5 +1,5 @@
 import type { EditionContent } from '../../schemas/edition';
-import { formatDate, formatMajor, formatMoney, formatMonth, formatNumber, formatPeriod } from '../ui/format';
+import { formatAmount, formatMajor, formatMoney, formatMonth, formatNumber, formatPeriod } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
@@ -66,9 +66,9 @@ export function BillsLeaf({ content, taps, foot, pictures }: LeafContext & { pic
       </LeafRow>
       <LeafRow
         number="2.2"
-        title="Where it is taken away"
+        title="What poor power factor costs, before and after"
         lead="Solid copper: what remains. Hatched verdigris: what the plan takes away."
-        reference={<p>Lines that carry reactive demand, tax with them</p>}
+        reference={<p>Each bill less the same bill at unity power factor</p>}
         result={
           <ResultSums
             rows={[
@@ -86,7 +86,9 @@ export function BillsLeaf({ content, taps, foot, pictures }: LeafContext & { pic
         title="What was billed wrongly"
         reference={<p>In no figure of the plan</p>}
         result={
-          <ResultSums rows={[{ label: `To claim, ${currency}`, value: formatMoney(claim, currency), kind: 'total' }]} />
+          <ResultSums
+            rows={[{ label: `To claim, ${currency}`, value: formatAmount(claim, currency), kind: 'total' }]}
+          />
         }
       >
         {findings.length === 0 ? (
@@ -95,8 +97,8 @@ export function BillsLeaf({ content, taps, foot, pictures }: LeafContext & { pic
           <ul>
             {findings.map((finding) => (
               <li key={finding.letter} className="mb-2">
-                <span className="finding-letter">{finding.letter}</span> <b>{finding.title}</b>, bill of{' '}
-                {formatDate(finding.billFrom)}: {formatMoney(finding.amountMinor, currency)}. {finding.sentence}
+                <span className="finding-letter">{finding.letter}</span> <b>{finding.title}</b>,{' '}
+                {formatMoney(finding.amountMinor, currency)}. {finding.sentence}
               </li>
             ))}
           </ul>

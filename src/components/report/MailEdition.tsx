@@ -12,6 +12,8 @@ export interface MailEditionProps {
   readers: { id: number; name: string; email: string }[];
   /** Where the people of the client are entered. */
   peopleHref: string;
+  /** Whether it is what this page is for now: then its button is the primary one. */
+  isNext: boolean;
 }
 
 /** Mails an edition to chosen people of the client; from then on they see it in their pages too. */
@@ -23,7 +25,7 @@ export function MailEdition(props: MailEditionProps) {
   );
 }
 
-function Mailer({ editionId, number, readers, peopleHref }: MailEditionProps) {
+function Mailer({ editionId, number, readers, peopleHref, isNext }: MailEditionProps) {
   const [chosen, setChosen] = useState(readers.length === 1 ? readers.map((reader) => reader.id) : []);
   const [greeting, setGreeting] = useState('');
   const sending = useMutation({ mutationFn: () => mailEdition(editionId, { userIds: chosen, greeting }) });
@@ -38,7 +40,7 @@ function Mailer({ editionId, number, readers, peopleHref }: MailEditionProps) {
   const failed = sending.data?.letters.filter((letter) => letter.state === 'failed') ?? [];
   return (
     <form
-      className="form-stack"
+      className="stacked max-w-[560px]"
       onSubmit={(event) => {
         event.preventDefault();
         sending.mutate();
@@ -66,7 +68,12 @@ function Mailer({ editionId, number, readers, peopleHref }: MailEditionProps) {
           onChange={(event) => setGreeting(event.target.value)}
         />
       </div>
-      <Button type="submit" busy={sending.isPending} waiting={chosen.length === 0 && 'choose who gets it'}>
+      <Button
+        type="submit"
+        kind={isNext ? 'primary' : 'secondary'}
+        busy={sending.isPending}
+        waiting={chosen.length === 0 && 'choose who gets it'}
+      >
         Mail edition {number}
       </Button>
       {sending.error instanceof ApiError && <Notice kind="fault" title={sending.error.message} />}

@@ -15,6 +15,8 @@ export interface MakeEditionProps {
   plans: { id: number; name: string; chosen: boolean }[];
   /** A making that began before the page was opened. */
   runningJobId: number | null;
+  /** Whether it is what this page is for now: then its button is the primary one. */
+  isNext: boolean;
 }
 
 /** Chooses a plan and makes the next edition of it; the making goes on when the page is left. */
@@ -26,7 +28,7 @@ export function MakeEdition(props: MakeEditionProps) {
   );
 }
 
-function Maker({ code, nextNumber, plans, runningJobId }: MakeEditionProps) {
+function Maker({ code, nextNumber, plans, runningJobId, isNext }: MakeEditionProps) {
   const [planId, setPlanId] = useState(plans[0]?.id ?? 0);
   const [jobId, setJobId] = useState(runningJobId);
   const { job, error } = useJob(jobId);
@@ -52,7 +54,7 @@ function Maker({ code, nextNumber, plans, runningJobId }: MakeEditionProps) {
   }
   return (
     <form
-      className="form-stack"
+      className="stacked max-w-[420px]"
       onSubmit={(event) => {
         event.preventDefault();
         making.mutate();
@@ -67,7 +69,7 @@ function Maker({ code, nextNumber, plans, runningJobId }: MakeEditionProps) {
           label: plan.chosen ? `${plan.name} (chosen)` : plan.name,
         }))}
       />
-      <Button type="submit" busy={making.isPending}>
+      <Button type="submit" kind={isNext ? 'primary' : 'secondary'} busy={making.isPending}>
         Make edition {nextNumber}
       </Button>
       {trouble && <Notice kind="fault" title={trouble} />}

@@ -52,21 +52,26 @@ function sums({ plan, currency }: EditionContent): SumRow[] {
   ];
 }
 
-/** Page 4: payback and cash flow. */
-export function MoneyLeaf({ content, taps, foot, pictures }: LeafContext & { pictures: Record<string, string> }) {
+export interface MoneyLeafProps extends LeafContext {
+  pictures: Record<string, string>;
+  page: number;
+}
+
+/** Payback and cash flow. */
+export function MoneyLeaf({ content, taps, foot, pictures, page }: MoneyLeafProps) {
   const { plan } = content;
   return (
-    <Leaf page={4} taps={taps} foot={foot} finding={paybackFinding(content)}>
+    <Leaf page={page} taps={taps} foot={foot} finding={paybackFinding(content)}>
       <LeafRow
         first
-        number="4.1"
+        number={`${page}.1`}
         title="Payback"
         reference={<p>Work and upkeep as quoted or entered; prices rise {plan.economics.escalationPercent} % a year</p>}
       >
         <Picture svg={pictures['payback-page']} label="Payback" />
       </LeafRow>
       <LeafRow
-        number="4.2"
+        number={`${page}.2`}
         title="Cash flow"
         reference={<p>Savings arrive evenly through each year</p>}
         result={<ResultSums rows={sums(content)} />}

@@ -1,10 +1,9 @@
-import type { EditionContent, EditionMotor } from '../../schemas/edition';
+import type { EditionMotor } from '../../schemas/edition';
 import { Caution } from '../ui/Caution';
 import { formatNumber, formatQuantity } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
-import { Stamp } from '../ui/Stamp';
 import type { LeafContext } from './AnswerLeaf';
 import { Leaf, LeafRow } from './Leaf';
 import { Picture } from './Picture';
@@ -17,7 +16,7 @@ export function kvarWords(kvarDelivered: number): string {
   return `${words} ${formatQuantity(Math.abs(kvarDelivered), 'kvar')}`;
 }
 
-function settingsTable({ motors }: EditionContent): LedgerData {
+function settingsTable(motors: readonly EditionMotor[]): LedgerData {
   const row = (id: string, label: string, unit: string, of: (motor: EditionMotor) => string) => ({
     id,
     cells: { what: label, unit, ...Object.fromEntries(motors.map((motor) => [motor.name, of(motor)])) },
@@ -58,25 +57,34 @@ function settingsTable({ motors }: EditionContent): LedgerData {
   };
 }
 
-function motorsFinding({ motors }: EditionContent): string {
+function motorsFinding(motors: readonly EditionMotor[]): string {
   const [first] = motors;
   if (!first) return 'The plan changes no motor.';
   const below = first.fieldLimitA - first.fieldPlanA;
   return `At ${amperes(first.fieldPlanA)} A ${first.name} ${kvarWords(first.kvarPlan)} and stays ${amperes(below)} A under its field limit.`;
 }
 
-/** Page 3: what the motors can do, and where their limits lie. */
-export function MotorsLeaf({ content, taps, foot, pictures }: LeafContext & { pictures: Record<string, string> }) {
-  const { motors } = content;
+export interface MotorsLeafProps extends LeafContext {
+  pictures: Record<string, string>;
+  page: number;
+  /** The motors of this page: two fit. */
+  shown: EditionMotor[];
+}
+
+const reading =
+  'Stator current over field current. Solid copper lagging, dashed verdigris leading; hatched ground is not allowed.';
+
+/** What two motors can do, and where their limits lie. */
+export function MotorsLeaf({ content, taps, foot, pictures, page, shown }: MotorsLeafProps) {
   return (
-    <Leaf page={3} taps={taps} foot={foot} finding={motorsFinding(content)}>
-      {motors.slice(0, 2).map((motor, index) => (
+    <Leaf page={page} taps={taps} foot={foot} finding={motorsFinding(shown)}>
+      {shown.map((motor, index) => (
         <LeafRow
           key={motor.motorId}
           first={index === 0}
-          number={`3.${index + 1}`}
+          number={`${page}.${index + 1}`}
           title={`${motor.name}${motor.drives ? `, ${motor.drives.toLowerCase()}` : ''}`}
-          lead="V-curves: stator current over field current. Solid copper lagging, dashed verdigris leading; hatched ground is not allowed."
+          lead={index === 0 ? reading : undefined}
           reference={<p>{motor.rated}</p>}
           result={
             <ResultSums
@@ -93,21 +101,22 @@ export function MotorsLeaf({ content, taps, foot, pictures }: LeafContext & { pi
         </LeafRow>
       ))}
       <LeafRow
-        number="3.3"
+        first={shown.length === 0}
+        number={`${page}.${shown.length + 1}`}
         title="Settings and limits"
         reference={<p>Constant field current, set by hand</p>}
-        result={<Stamp title="Not released" detail="no setting card exists yet" refused />}
       >
-        <LedgerTable label="Settings and limits" {...settingsTable(content)} />
+        <LedgerTable label="Settings and limits" {...settingsTable(shown)} />
       </LeafRow>
       <LeafRow reference={<p>Stands wherever a setting is shown</p>}>
-        <Caution title="Settings are calculated values" narrow>
+        <Caution title="Calculated values, not released: no setting card exists yet" narrow>
           <p>
-            Too much field overheats the rotor while the stator stays cool; too little pulls the motor out of step under
-            load. At light load the bus voltage rises. Work from the released card at the panel.
+            Too much field overheats the rotor while the stator stays cool; too little pulls the motor out of step. Work
+            from the released card at the panel, within the manufacturer’s limits.
           </p>
         </Caution>
       </LeafRow>
+      {content.motors.length === 0 && <p className="hint">The plan changes no motor.</p>}
     </Leaf>
   );
 }

@@ -1,7 +1,6 @@
 import type { PaybackData } from '../../components/charts/PaybackChart';
 import { vCurveData } from '../../components/motors/curves';
-import { formatMonth } from '../../components/ui/format';
-import { addDays } from '../../core/load';
+import { poorFactorBars } from '../../components/report/poor-factor-bars';
 import type { EditionContent } from '../../schemas/edition';
 import type { MotorView } from '../../schemas/motor';
 import type { Drawing } from './draw';
@@ -44,26 +43,17 @@ function paybackDrawings(content: EditionContent): Drawing[] {
   ];
 }
 
-function billsDrawing({ bills, currency, plan }: EditionContent): Drawing {
-  let year = '';
-  const named = bills.map((bill) => {
-    const [label = '', ofYear = ''] = formatMonth(addDays(bill.to, -1)).split(' ');
-    const isNew = ofYear !== year;
-    year = ofYear;
-    const reactive = bill.lines.filter((line) => line.before !== line.after || line.group === 'reactive');
-    const sum = (side: 'before' | 'after') => reactive.reduce((total, line) => total + line[side], 0);
-    return { label, ...(isNew ? { year: ofYear } : {}), before: sum('before'), after: sum('after') };
-  });
-  const props = { bills: named, currency, what: 'lines the plan moves', planName: plan.name };
-  return { name: 'bills', chart: 'bills', props: { ...props, width: 410, height: 190, palette: 'page' } };
+function billsDrawing(content: EditionContent): Drawing {
+  const size = { width: 410, height: 190, palette: 'page' as const };
+  return { name: 'bills', chart: 'bills', props: { ...poorFactorBars(content), ...size } };
 }
 
 function vCurveDrawings({ motors, plan }: EditionContent, views: MotorView[]): Drawing[] {
-  return motors.slice(0, 2).flatMap((motor) => {
+  return motors.flatMap((motor) => {
     const view = views.find((one) => one.id === motor.motorId);
     if (!view) return [];
     const data = vCurveData(view, { name: plan.name, fieldA: motor.fieldPlanA });
-    const size = { width: 410, height: 290, palette: 'page' as const };
+    const size = { width: 410, height: 206, palette: 'page' as const };
     return { name: `v-curve-${motor.motorId}`, chart: 'v-curve' as const, props: { ...data, ...size } };
   });
 }

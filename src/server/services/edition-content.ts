@@ -56,6 +56,7 @@ function editionBill(before: BillView, after: BillView, billedMinor: number | nu
     after: after.total,
     billed: billedMinor === null ? null : fromMinorUnits(billedMinor, currency),
     reactiveCost: before.reactiveCost,
+    reactiveCostAfter: after.reactiveCost,
     lines: before.lines.map(({ id, label, group, amount }) => ({
       id,
       label,

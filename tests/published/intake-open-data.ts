@@ -76,4 +76,41 @@ export const openDataCases: OpenDataCase[] = [
     },
     tolerance: { energy: 0.0005, power: 0.0005 },
   },
+  {
+    source:
+      'GreenButtonAlliance/OpenESPI-Common-java, src/test/resources/fixtures/test_usage_data.xml, Apache-2.0: ESPI, Wh, a 23-hour day',
+    given: { folder: 'intervals', file: 'gba_15min_14days_dstday.xml', timeZone: 'America/New_York' },
+    expected: {
+      format: 'espi',
+      intervals: 1340,
+      missing: 0,
+      stepMinutes: 15,
+      first: '2012-03-01T05:00:00.000Z',
+      last: '2012-03-15T03:45:00.000Z',
+      totalKwh: 1391.666,
+      totalKvarhLagging: Number.NaN,
+      totalKvarhLeading: Number.NaN,
+      maxKw: 6.64,
+      estimated: 2,
+    },
+    tolerance: { energy: 0.0005, power: 0.0005 },
+  },
+  {
+    source: 'aguinane/nem-reader, examples/nem12, MIT: NEM12 in a ZIP, E1, B1 in kWh and Q1, K1 in kvarh',
+    given: { folder: 'intervals', file: 'zip_e1b1q1k1_30min.zip', timeZone: 'Australia/Sydney' },
+    expected: {
+      format: 'nem12',
+      intervals: 192,
+      missing: 0,
+      stepMinutes: 30,
+      first: '2005-02-28T14:00:00.000Z',
+      last: '2005-03-04T13:30:00.000Z',
+      totalKwh: 135.359,
+      // Sums of the 300 records of Q1 and K1, added with a separate program (awk).
+      totalKvarhLagging: 135.359,
+      totalKvarhLeading: 128.256,
+      maxKw: 3.554,
+    },
+    tolerance: { energy: 0.0005, power: 0.0005 },
+  },
 ];

@@ -2,6 +2,7 @@ import type { TableBlock } from './block';
 import { shareOf, type ColumnProfile } from './cells';
 import { channelMeaning, type ChannelMeaning } from './channel-words';
 import { preambleUnit } from './preamble';
+import { onlyGrows } from './registers';
 import type { RoleFinding, Test } from './evidence';
 import type { Grid } from './grid';
 import { unitOfHeader } from './units';
@@ -83,29 +84,15 @@ function findExplainedValue(input: ValueInput, candidates: Candidate[]): void {
     });
 }
 
-/** Totals only ever grow: a register, whose differences are the energy. */
+/** A column that only ever grows is a register: its differences are the energy. */
 function markRegister(candidate: Candidate): void {
-  const figures = candidate.figures.filter((figure) => !Number.isNaN(figure));
-  if (figures.length < 4 || candidate.meaning.measure !== 'energy') return;
-  let falls = 0;
-  let steps = 0;
-  let largest = 0;
-  for (let at = 1; at < figures.length; at += 1) {
-    const step = (figures[at] ?? 0) - (figures[at - 1] ?? 0);
-    if (step < 0) falls += 1;
-    else largest = Math.max(largest, step);
-    if (step > 0) steps += 1;
-  }
-  const named = mentions(candidate.profile.name, 'register');
-  const large = (figures[0] ?? 0) > 20 * (largest / Math.max(1, candidate.figures.length / 100));
-  const isMonotone = falls <= figures.length * 0.01 && steps > figures.length * 0.2;
-  if (isMonotone && (named || (large && figures.length >= 10))) {
-    candidate.meaning = {
-      ...candidate.meaning,
-      measure: 'register',
-      why: `${candidate.meaning.why}; it only ever grows, so it is a register and its differences are the energy`,
-    };
-  }
+  const { meaning, profile, figures } = candidate;
+  if (meaning.measure !== 'energy' || !onlyGrows(figures, mentions(profile.name, 'register'))) return;
+  candidate.meaning = {
+    ...meaning,
+    measure: 'register',
+    why: `${meaning.why}; it only ever grows, so it is a register and its differences are the energy`,
+  };
 }
 
 /** The energy drawn: energy before power before registers; parts of a total are not counted beside it. */

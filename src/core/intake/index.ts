@@ -1,11 +1,4 @@
-import { planBills } from './bill-plan';
-import { readPlannedBills } from './bills';
-import { intakeError } from './errors';
-import { containerOf } from './format';
-import { planIntervals, readPlanned } from './intervals';
-import { openTable, type OpenedTable } from './open';
-import { previewOfBills, previewOfIntervals } from './preview';
-import { shapeOf } from './shape';
+import { openSource } from './source';
 import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions } from './types';
 
 export { IntakeError } from './errors';
@@ -22,9 +15,7 @@ export type * from './types';
  * @throws {IntakeError} what is wrong, where, and what to do
  */
 export async function readIntervals(bytes: Uint8Array, options: ReadOptions): Promise<IntervalReading> {
-  const opened = open(bytes, options);
-  const { load, report } = readPlanned(planIntervals(opened, options), options);
-  return { load, report };
+  return (await openSource(bytes, options)).readIntervals();
 }
 
 /**
@@ -35,9 +26,7 @@ export async function readIntervals(bytes: Uint8Array, options: ReadOptions): Pr
  * @throws {IntakeError} what is wrong, where, and what to do
  */
 export async function readBills(bytes: Uint8Array, options: ReadOptions): Promise<BillReading> {
-  const opened = open(bytes, options);
-  const { bills, report } = readPlannedBills(planBills(opened, options), options);
-  return { bills, report };
+  return (await openSource(bytes, options)).readBills();
 }
 
 /**
@@ -47,7 +36,7 @@ export async function readBills(bytes: Uint8Array, options: ReadOptions): Promis
  * @throws {IntakeError} only if the file cannot be opened at all
  */
 export async function previewIntervals(bytes: Uint8Array, options: ReadOptions): Promise<IntervalPreview> {
-  return previewOfIntervals(open(bytes, options), options);
+  return (await openSource(bytes, options)).previewIntervals();
 }
 
 /**
@@ -56,7 +45,7 @@ export async function previewIntervals(bytes: Uint8Array, options: ReadOptions):
  * @throws {IntakeError} only if the file cannot be opened at all
  */
 export async function previewBills(bytes: Uint8Array, options: ReadOptions): Promise<BillPreview> {
-  return previewOfBills(open(bytes, options), options);
+  return (await openSource(bytes, options)).previewBills();
 }
 
 /**
@@ -64,20 +53,6 @@ export async function previewBills(bytes: Uint8Array, options: ReadOptions): Pro
  *
  * @throws {IntakeError} if the file cannot be opened
  */
-export function shapeSignature(bytes: Uint8Array, fileName: string): string {
-  const opened = open(bytes, { fileName, timeZone: 'UTC' });
-  return shapeOf(opened.grid, opened.vote?.delimiter);
-}
-
-function open(bytes: Uint8Array, options: ReadOptions): OpenedTable {
-  const container = containerOf(bytes, options.fileName);
-  if (container === 'xml' || container === 'nem12' || container === 'zip') {
-    const names = { xml: 'ESPI XML', nem12: 'NEM12', zip: 'a ZIP archive' };
-    throw intakeError(
-      `The file is ${names[container]}, which is not read yet.`,
-      options.fileName,
-      'Bring in the readings as delimited text or a spreadsheet.',
-    );
-  }
-  return openTable(bytes, container, options.fileName, options.columnMap ?? {});
+export async function shapeSignature(bytes: Uint8Array, fileName: string): Promise<string> {
+  return (await openSource(bytes, { fileName, timeZone: 'UTC' })).shape();
 }

@@ -1,3 +1,4 @@
+import { assemble } from './assemble';
 import { findBlock, type TableBlock } from './block';
 import { checkColumns, checkExtraction, checkMeters } from './checks';
 import { detectColumns } from './detect';
@@ -5,12 +6,9 @@ import { guess } from './evidence';
 import { columnOf, extractLong, type ColumnPlan } from './extract';
 import { extractWide } from './extract-wide';
 import { delimiterGuesses } from './guesses';
-import { loadOf } from './load-of';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
 import { preambleMultiplier } from './preamble';
-import { reportOf } from './report';
-import { differenceRegisters, gridChannels } from './series';
 import { timelineOf } from './timeline';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
 
@@ -127,26 +125,17 @@ export function readPlanned(planned: IntervalPlan, options: ReadOptions): Interv
       isRegister,
     }),
   }));
-  const gridded = gridChannels(placed, opened.grid, options.fileName);
-  const { load, notes: loadNotes, negative } = loadOf(isRegister ? differenceRegisters(gridded) : gridded);
   const first = placed[0]?.timeline;
-  notes.push(...uniqueNotes(placed.flatMap(({ timeline }) => timeline.notes)), ...loadNotes);
   const columnMap: ColumnMap = { ...planned.columnMap, stamp: { ...planned.columnMap.stamp, ...first?.style } };
-  const report = {
-    ...reportOf(load, { format: opened.format, rowsRead: extraction.rowsRead, duplicates: gridded.duplicates, notes }),
-    negative,
+  const { load, report } = assemble(placed, {
+    format: opened.format,
+    fileName: options.fileName,
+    rowsRead: extraction.rowsRead,
+    rows: opened.grid,
+    notes,
     columnMap,
-  };
+  });
   return { load, report, guesses: first?.guesses ?? [] };
-}
-
-function uniqueNotes(notes: IntakeNote[]): IntakeNote[] {
-  return notes.filter(
-    (note, at) =>
-      notes.findIndex(
-        (other) => other.code === note.code && other.where === note.where && other.message === note.message,
-      ) === at,
-  );
 }
 
 /** Units nobody named and multipliers nobody applied. */

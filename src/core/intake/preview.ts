@@ -9,8 +9,10 @@ import { shapeOf } from './shape';
 import type {
   BillPreview,
   BillReading,
+  ColumnEvidence,
   ColumnMap,
   Guess,
+  IntakeFormat,
   IntakeProblem,
   IntervalPreview,
   IntervalReading,
@@ -117,4 +119,38 @@ function firstRows(grid: Grid, block: TableBlock | null): PreviewRow[] {
       isHeader: row === block?.headerRow,
     };
   });
+}
+
+/** What intake shows of a file whose format says itself what its channels are. */
+export function previewOfChannels(
+  file: { format: IntakeFormat; text: string; columns: ColumnEvidence[]; meters: string[]; shape: string },
+  options: ReadOptions,
+  read: () => IntervalReading,
+): IntervalPreview {
+  const reading = attempt(read);
+  const lines = file.text.split(/\r\n|\n|\r/, 4000);
+  const filled = lines.filter((line) => line.trim() !== '').length;
+  return {
+    kind: 'intervals',
+    fileName: options.fileName,
+    format: file.format,
+    dialect: {},
+    rowsInFile: filled,
+    headerRow: null,
+    firstRow: 1,
+    lastRow: filled,
+    rows: lines.slice(0, rowsShown).map((line, at) => ({
+      number: at + 1,
+      cells: line.split(',', 60).map((cell) => cell.trim().slice(0, charactersShown)),
+      isHeader: false,
+    })),
+    columnMap: reading.result?.report.columnMap ?? fallbackMap('intervals', options),
+    mapApplied: options.columnMap !== undefined,
+    shape: file.shape,
+    columns: file.columns,
+    guesses: [],
+    problems: reading.problems,
+    meters: file.meters,
+    report: reading.result?.report ?? null,
+  };
 }

@@ -1,11 +1,15 @@
 import { quality as grades } from '../load';
 import { intakeError } from './errors';
 import type { Grid } from './grid';
+import { joinSteps } from './steps';
 import type { Strand, StrandChannel } from './strand';
 import type { Timeline } from './timeline';
 import type { IntakeNote, IntervalRole } from './types';
 
 const mostIntervals = 1_200_000;
+
+/** What tells the number of a row in the file. */
+export type RowNumbers = Pick<Grid, 'rowNumber'>;
 
 /** A strand with its place in time. */
 export interface PlacedStrand {
@@ -28,18 +32,12 @@ export interface GriddedChannels {
 /**
  * Lays strands on one regular grid. The first reading of an interval is kept, later ones are duplicates; readings off the
  * grid are left out.
- * @throws {IntakeError} if many readings are off the grid, strands differ in step, or the span is out of proportion.
+ * @throws {IntakeError} if many readings are off the grid or the span is out of proportion.
  */
-export function gridChannels(placed: readonly PlacedStrand[], grid: Grid, fileName: string): GriddedChannels {
+export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, fileName: string): GriddedChannels {
+  const notes: IntakeNote[] = [];
+  const placed = joinSteps(given, notes);
   const stepMinutes = placed[0]?.timeline.stepMinutes ?? Number.NaN;
-  const other = placed.find(({ timeline }) => timeline.stepMinutes !== stepMinutes);
-  if (other) {
-    throw intakeError(
-      `The file holds readings of ${stepMinutes} and of ${other.timeline.stepMinutes} minutes.`,
-      `${fileName}, ${other.strand.channels[0]?.name ?? ''}`,
-      'Export each length of interval into its own file.',
-    );
-  }
   const phase = phaseOf(placed, stepMinutes);
   let least = Infinity;
   let most = -Infinity;
@@ -56,7 +54,6 @@ export function gridChannels(placed: readonly PlacedStrand[], grid: Grid, fileNa
   }
   const length = (most - least) / stepMinutes + 1;
   checkSpan({ readings, length, offGrid, least, most, grid, fileName, stepMinutes });
-  const notes: IntakeNote[] = [];
   if (offGrid.length > 0) {
     notes.push({
       code: 'off-grid',
@@ -86,7 +83,7 @@ export function gridChannels(placed: readonly PlacedStrand[], grid: Grid, fileNa
 }
 
 /** Rows in words, at most six of them. */
-export function rowsInWords(grid: Grid, rows: readonly number[]): string {
+export function rowsInWords(grid: RowNumbers, rows: readonly number[]): string {
   const shown = rows.slice(0, 6).map((row) => grid.rowNumber(row));
   return `${rows.length === 1 ? 'row' : 'rows'} ${shown.join(', ')}${rows.length > 6 ? ' …' : ''}`;
 }
@@ -109,7 +106,7 @@ function checkSpan(span: {
   offGrid: number[];
   least: number;
   most: number;
-  grid: Grid;
+  grid: RowNumbers;
   fileName: string;
   stepMinutes: number;
 }): void {
@@ -197,12 +194,26 @@ function differs(kept: number | undefined, other: number): boolean {
   );
 }
 
-/** Several registers of one direction are added. */
+/**
+ * Registers of one direction that run together are added. Such as take turns (one meter split by time-of-use period) are
+ * laid into each other; where two of those name the same interval the first is kept.
+ */
 function addChannel(gridded: GriddedChannels, channel: StrandChannel, figures: Float64Array): void {
   const own = gridded.channels.get(channel.role);
   if (!own) return void gridded.channels.set(channel.role, figures);
-  for (let slot = 0; slot < own.length; slot += 1)
-    own[slot] = (own[slot] ?? Number.NaN) + (figures[slot] ?? Number.NaN);
+  let both = 0;
+  let added = 0;
+  for (let slot = 0; slot < own.length; slot += 1) {
+    if (Number.isNaN(figures[slot] ?? Number.NaN)) continue;
+    added += 1;
+    if (!Number.isNaN(own[slot] ?? Number.NaN)) both += 1;
+  }
+  const takeTurns = both * 20 < added;
+  for (let slot = 0; slot < own.length; slot += 1) {
+    const [kept, next] = [own[slot] ?? Number.NaN, figures[slot] ?? Number.NaN];
+    own[slot] = !takeTurns ? kept + next : Number.isNaN(kept) ? next : kept;
+  }
+  if (takeTurns) gridded.duplicates += both;
 }
 
 /** Register readings become the energy between them: one interval fewer than readings. */

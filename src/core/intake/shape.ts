@@ -24,6 +24,11 @@ function namesOf(grid: Grid): string[] {
   return Array.from({ length: grid.width(0) }, (_, column) => grid.text(0, column));
 }
 
+/** Signature of a list of names, for formats that name their channels themselves. */
+export function shapeOfNames(format: string, names: readonly string[]): string {
+  return hash(`${format}\n${names.join('\n')}`);
+}
+
 /** FNV-1a from two seeds, 64 bits as hex: for telling shapes apart, not for secrets. */
 function hash(text: string): string {
   return [0x811c9dc5, 0x9747b28c]

@@ -47,5 +47,5 @@ export function excess(a: number, b: number): number {
 
 /** The part of a quantity that lies from a to b. */
 export function between(quantity: number, a: number, b: number): number {
-  return Math.max(0, excess(quantity, a) - excess(quantity, Math.max(a, b)));
+  return excess(Math.min(quantity, Math.max(a, b)), a);
 }

@@ -4,6 +4,9 @@ import type { LoadSeries } from '../../load';
 
 const { cellKwh, cellKvarhLagging, cellKvarhLeading, cellHours } = place;
 
+/** Two values this near to each other, as a fraction of the value, are a tie: the earlier one stands. */
+export const tieFraction = 1e-12;
+
 /** Adds the series' energies into cells of several intervals. With `isActiveKept` the active energy and gaps of the last call stay. */
 export function fillCells(plan: CellPlan, load: LoadSeries, isActiveKept: boolean): void {
   if (plan.isSingle) return;
@@ -111,14 +114,16 @@ export function extremeCell(
   sign: 1 | -1,
 ): { value: number; cell: number } {
   let best = -Infinity;
+  let beyond = -Infinity;
   let bestCell = -1;
   const count = plan.starts.length;
   for (let cell = 0; cell < count; cell++) {
     if (enterCell(plan, load, cell, values) !== 2) continue;
     if (where !== undefined && where(values) === 0) continue;
     const value = sign * evaluate(values);
-    if (value > best) {
+    if (value > beyond) {
       best = value;
+      beyond = value + tieFraction * Math.abs(value);
       bestCell = cell;
     }
   }

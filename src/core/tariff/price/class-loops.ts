@@ -1,4 +1,7 @@
 import type { LoadSeries } from '../../load';
+import { tieFraction } from './cell-loops';
+
+const tieFactor = 1 + tieFraction;
 
 /** Runs of successive intervals of one class (combination of windows), none crossing a piece's border, and what is gathered over them. */
 export interface ClassPlan {
@@ -29,24 +32,24 @@ export function gatherActive(plan: ClassPlan, { kwh, quality }: LoadSeries, hasM
   plan.highestKwhAt.fill(-1);
   for (let run = 0; run < runFirst.length; run++) {
     const end = runEnd[run]!;
+    const group = runClass[run]!;
     let sum = 0;
-    let highest = -Infinity;
-    let at = -1;
+    let highest = plan.highestKwh[group]!;
+    let beyond = highest * tieFactor;
+    let at = plan.highestKwhAt[group]!;
     for (let i = runFirst[run]!; i < end; i++) {
       if (hasMissing && quality[i] === 2) continue;
       const energy = kwh[i]!;
       sum += energy;
-      if (energy > highest) {
+      if (energy > beyond) {
         highest = energy;
+        beyond = energy * tieFactor;
         at = i;
       }
     }
-    const group = runClass[run]!;
     plan.kwh[runPiece[run]! * classCount + group]! += sum;
-    if (highest > plan.highestKwh[group]!) {
-      plan.highestKwh[group] = highest;
-      plan.highestKwhAt[group] = at;
-    }
+    plan.highestKwh[group] = highest;
+    plan.highestKwhAt[group] = at;
   }
 }
 
@@ -85,22 +88,22 @@ export function gatherApparent(
   plan.highestSquareAt.fill(-1);
   for (let run = 0; run < runFirst.length; run++) {
     const end = runEnd[run]!;
-    let highest = -Infinity;
-    let at = -1;
+    const group = runClass[run]!;
+    let highest = plan.highestSquare[group]!;
+    let beyond = highest * tieFactor;
+    let at = plan.highestSquareAt[group]!;
     for (let i = runFirst[run]!; i < end; i++) {
       if (hasMissing && quality[i] === 2) continue;
       const active = kwh[i]!;
       const reactive = kvarhLagging[i]! - kvarhLeading[i]!;
       const square = active * active + reactive * reactive;
-      if (square > highest) {
+      if (square > beyond) {
         highest = square;
+        beyond = square * tieFactor;
         at = i;
       }
     }
-    const group = runClass[run]!;
-    if (highest > plan.highestSquare[group]!) {
-      plan.highestSquare[group] = highest;
-      plan.highestSquareAt[group] = at;
-    }
+    plan.highestSquare[group] = highest;
+    plan.highestSquareAt[group] = at;
   }
 }

@@ -4,6 +4,7 @@ import type { CellGround } from '../calendar/cells';
 import { layPeriod } from '../calendar/period-calendar';
 import { intervalStartMs, type LoadSeries } from '../../load';
 import { channelOf, type ChannelName } from '../channels';
+import { isSame } from '../formula/functions';
 import { PriceError } from '../errors';
 import type { MeasureDefinition, QuantityEntry, Schedule, ValueDefinition } from '../model';
 import type { PricingGrid } from '../types';
@@ -87,7 +88,12 @@ export class IntervalSource implements QuantitySource {
     else if (definition.kind === 'measure') {
       const cause = firstMissing(state, needs);
       if (cause) state.missing[slot] = cause;
-      else setRounded(run, bill, state, quantity, this.valueOf(run, bill, state, slot, definition));
+      else {
+        setRounded(run, bill, state, quantity, this.valueOf(run, bill, state, slot, definition));
+        if (definition.operation !== 'sum' && state.atCell[slot]! < 0) {
+          bill.notes?.add(`"${quantity.name}" is 0: no cell of the period is whole and meets its condition.`);
+        }
+      }
     }
   }
 
@@ -131,7 +137,7 @@ export class IntervalSource implements QuantitySource {
       const place = places[group]!;
       if (plan.classes[group] !== 1 || place < 0) continue;
       const energy = highest[group]!;
-      if (energy > best || (energy === best && place < at)) {
+      if (at < 0 || (isSame(energy, best) ? place < at : energy > best)) {
         best = energy;
         at = place;
       }

@@ -81,14 +81,10 @@ export function BillsBeforeAfter({ content }: { content: EditionContent }) {
         </aside>
       </div>
       {opened && (
-        <div className="client-columns">
-          <div className="working" aria-live="polite">
-            <h2 className="section-title">
-              Lines of the bill of {formatPeriod(opened.from, opened.to, { year: true })}
-            </h2>
-            <Lines bill={opened} currency={currency} planName={plan.name} />
-          </div>
-        </div>
+        <section className="client-row" aria-live="polite">
+          <h2 className="section-title">Lines of the bill of {formatPeriod(opened.from, opened.to, { year: true })}</h2>
+          <Lines bill={opened} currency={currency} planName={plan.name} />
+        </section>
       )}
     </>
   );

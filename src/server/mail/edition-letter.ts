@@ -94,11 +94,12 @@ const nightStyle = `<style>
 :root { color-scheme: light dark; supported-color-schemes: light dark; }
 @media (prefers-color-scheme: dark) {
   .paper { background: #14191C !important; }
-  .letter { background: #1C2327 !important; border-color: #333D42 !important; }
+  .letter { background: #1C2327 !important; border-color: #E08A55 #333D42 #333D42 !important; }
   .ink { color: #E9E4D8 !important; }
   .quiet { color: #AEB4B1 !important; }
   .line { border-color: #333D42 !important; }
-  .warn { background: #383019 !important; }
+  .warn { background: #383019 !important; border-color: #E0B84C !important; }
+  .warn b { color: #E0B84C !important; }
   .act { background: #E08A55 !important; color: #14191C !important; }
   .by-day { display: none !important; }
   .by-night { display: block !important; }

@@ -6,7 +6,7 @@ import { IntakeError, intakeError } from './errors';
 import { columnLetter } from './grid';
 import { isBlankWord } from './numbers';
 import type { BillReading, BillRecord, ColumnUse, Guess, IntakeNote, IntakeProblem, ReadOptions } from './types';
-import { unitMeaning } from './units';
+import { scaled, unitMeaning } from './units';
 
 /**
  * Reads the bills of a planned table.
@@ -56,7 +56,7 @@ function billOf(plan: BillPlan, dated: DatedRow, options: ReadOptions): BillReco
 function quantityFigure(use: ColumnUse, figure: number, text: string): number {
   if (use.quantity === 'powerFactor')
     return text.includes('%') || use.unit === '%' || Math.abs(figure) > 1.5 ? figure / 100 : figure;
-  return figure * (unitMeaning(use.unit ?? '')?.factor ?? 1);
+  return scaled(figure, unitMeaning(use.unit ?? '')?.factor ?? 1);
 }
 
 function checkPeriods(

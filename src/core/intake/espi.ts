@@ -14,7 +14,7 @@ import type {
   Measure,
   ReadOptions,
 } from './types';
-import { unitMeaning } from './units';
+import { scaled, unitMeaning } from './units';
 
 /** One meter reading of a feed: its type and its blocks, brought together by links. */
 export interface EspiChannel {
@@ -262,7 +262,7 @@ function placedOf(channel: EspiChannel, options: ReadOptions): PlacedStrand {
           role: channel.role,
           measure: channel.measure,
           name: channel.name,
-          values: Float64Array.from(readings, (reading) => reading.value * channel.factor),
+          values: Float64Array.from(readings, (reading) => scaled(reading.value, channel.factor)),
         },
       ],
       quality: Uint8Array.from(readings, (reading) => gradeOf(reading.quality)),

@@ -12,7 +12,7 @@ import { footerWords } from './cells';
 import { StampScanner } from './stamps';
 import type { Strand } from './strand';
 import type { ColumnUse } from './types';
-import { unitMeaning } from './units';
+import { scaled, unitMeaning } from './units';
 
 interface DayRow {
   row: number;
@@ -101,7 +101,7 @@ function strandOf(
       const isSpare = Number.isNaN(figure) && (use.minuteOfDay ?? 0) >= 1440;
       walls[at] = isSpare ? Number.NaN : day * 1440 + (use.minuteOfDay ?? 0);
       if (dayOf) dayOf[at] = day;
-      values[at] = figure * channel.factor * (own ? factorOf({ ...use, unit: undefined }) : 1);
+      values[at] = scaled(figure, channel.factor) * (own ? factorOf({ ...use, unit: undefined }) : 1);
       rows[at] = row;
       at += 1;
     }

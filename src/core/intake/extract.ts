@@ -7,7 +7,7 @@ import { qualityOf } from './quality';
 import { readStamps } from './read-stamps';
 import { runsBackwards, turnStrand, type Strand, type StrandChannel } from './strand';
 import type { ColumnUse, IntakeNote, IntervalRole, StampStyle } from './types';
-import { unitMeaning, type UnitMeaning } from './units';
+import { scaled, unitMeaning, type UnitMeaning } from './units';
 
 /** The columns of a table by what they are for. */
 export interface ColumnPlan {
@@ -102,7 +102,7 @@ function readFigures(
   for (let at = 0; at < rows.length; at += 1) {
     const row = rows[at] ?? 0;
     const figure = grid.number(row, column, decimalMark);
-    figures[at] = factor === 1 ? figure : figure * factor;
+    figures[at] = factor === 1 ? figure : scaled(figure, factor);
     if (Number.isNaN(figure)) collectBad(grid, row, column, extraction);
   }
   return figures;

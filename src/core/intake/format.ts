@@ -1,4 +1,5 @@
 import { intakeError } from './errors';
+import { readZipDirectory } from './zip-caps';
 
 /** What the first bytes say a file is; the extension and the sender's word are never asked. */
 export type Container = 'text' | 'xml' | 'nem12' | 'zip' | 'workbook-zip' | 'workbook-ole';
@@ -38,7 +39,7 @@ export function containerOf(bytes: Uint8Array, fileName: string): Container {
     );
   }
   if (startsWith(bytes, [0x50, 0x4b, 0x03, 0x04]) || startsWith(bytes, [0x50, 0x4b, 0x05, 0x06])) {
-    return isWorkbookZip(bytes) ? 'workbook-zip' : 'zip';
+    return isWorkbookZip(bytes, fileName) ? 'workbook-zip' : 'zip';
   }
   if (startsWith(bytes, [0xd0, 0xcf, 0x11, 0xe0])) return 'workbook-ole';
   const head = new TextDecoder('latin1').decode(bytes.subarray(0, 4096)).replace(/^(ï»¿|þÿ|ÿþ)/, '');
@@ -48,10 +49,16 @@ export function containerOf(bytes: Uint8Array, fileName: string): Container {
   return 'text';
 }
 
-/** A workbook's ZIP names its parts near the front or in the directory at the end. */
-function isWorkbookZip(bytes: Uint8Array): boolean {
-  const decoder = new TextDecoder('latin1');
-  const ends =
-    decoder.decode(bytes.subarray(0, 4096)) + decoder.decode(bytes.subarray(Math.max(0, bytes.length - 65536)));
-  return /\[Content_Types\]\.xml|_rels\/\.rels|docProps\/|xl\/|opendocument\.spreadsheet|content\.xml/.test(ends);
+const workbookPart =
+  /^(\[Content_Types\]\.xml|_rels\/\.rels|docProps\/|xl\/|content\.xml|META-INF\/manifest\.xml|mimetype$)/;
+
+/** A workbook's ZIP holds its parts at the root; one that is cut off shows at least the first of them. */
+function isWorkbookZip(bytes: Uint8Array, fileName: string): boolean {
+  try {
+    const names = readZipDirectory(bytes, fileName).map((member) => member.name);
+    return names.includes('[Content_Types].xml') || names.includes('content.xml');
+  } catch {
+    const nameLength = (bytes[26] ?? 0) + (bytes[27] ?? 0) * 256;
+    return workbookPart.test(new TextDecoder().decode(bytes.subarray(30, 30 + nameLength)));
+  }
 }

@@ -14,7 +14,7 @@ import type {
   IntervalRole,
   ReadOptions,
 } from './types';
-import { unitMeaning, type UnitMeaning } from './units';
+import { scaled, unitMeaning, type UnitMeaning } from './units';
 
 // Meter data file format of the Australian market (AEMO, MDFF specification, NEM12): 200 names a stream, 300 holds a day of
 // it, 400 the quality of parts of a day. Market time is UTC+10 all year and values name the end of their interval.
@@ -230,9 +230,8 @@ function placedOf(stream: NemStream): PlacedStrand[] {
     const days = stream.days.filter((day) => day.stepMinutes === stepMinutes);
     const perDay = 1440 / stepMinutes;
     const factor = stream.unit?.factor ?? 1;
-    const values = Float64Array.from(
-      { length: days.length * perDay },
-      (_, at) => (days[Math.floor(at / perDay)]?.figures[at % perDay] ?? Number.NaN) * factor,
+    const values = Float64Array.from({ length: days.length * perDay }, (_, at) =>
+      scaled(days[Math.floor(at / perDay)]?.figures[at % perDay] ?? Number.NaN, factor),
     );
     const utc = values.map(
       (_figure, at) =>

@@ -91,3 +91,9 @@ export function unitOfHeader(name: string): UnitMeaning | null {
 export function isForeignUnit(name: string): boolean {
   return headerWords(name).some((word) => otherUnits.includes(word) && word.length > 1) || /[$€£°]/.test(name);
 }
+
+/** Figures times a factor; a factor that is the inverse of a whole number divides, so that 959 Wh are 0.959 kWh to the bit. */
+export function scaled(figure: number, factor: number): number {
+  const inverse = Math.round(1 / factor);
+  return factor < 1 && inverse * factor === 1 ? figure / inverse : figure * factor;
+}

@@ -1,0 +1,179 @@
+import { describe, expect, it } from 'vitest';
+import { previewIntervals, readBills, readIntervals, type ColumnMap } from '@/core/intake';
+import { bytesOf } from './files';
+
+// Elements and codes of ESPI (NAESB REQ.21): uom 72 Wh, 73 varh, 38 W, 169 therm; flow 1 forward, 19 reverse, 2 lagging, 3 leading.
+const start = Date.parse('2025-06-02T05:00:00Z') / 1000;
+
+interface Channel {
+  id: string;
+  title?: string;
+  uom?: string;
+  flow?: string;
+  power?: number;
+  values: number[];
+  from?: number;
+  minutes?: number;
+  quality?: (at: number) => string;
+  point?: string;
+  type?: boolean;
+}
+
+const link = (rel: string, href: string) => `<link rel="${rel}" href="${href}"/>`;
+
+function channelXml(channel: Channel, p: string): string {
+  const { id, point = 'A', minutes = 15, from = start } = channel;
+  const self = `/UsagePoint/${point}/MeterReading/${id}`;
+  const step = minutes * 60;
+  const readings = channel.values
+    .map(
+      (figure, at) =>
+        `<${p}IntervalReading>${channel.quality?.(at) ?? ''}<${p}timePeriod><${p}duration>${step}</${p}duration><${p}start>${from + at * step}</${p}start></${p}timePeriod><${p}value>${figure}</${p}value></${p}IntervalReading>`,
+    )
+    .join('');
+  const type =
+    channel.type === false
+      ? ''
+      : `<entry>${link('self', `/ReadingType/${id}`)}<content><${p}ReadingType><${p}accumulationBehaviour>1</${p}accumulationBehaviour><${p}flowDirection>${channel.flow ?? '1'}</${p}flowDirection><${p}intervalLength>${step}</${p}intervalLength><${p}powerOfTenMultiplier>${channel.power ?? 0}</${p}powerOfTenMultiplier><${p}uom>${channel.uom ?? '72'}</${p}uom></${p}ReadingType></content></entry>`;
+  // The block stands before what it belongs to: only links tell.
+  return `<entry>${link('self', `${self}/IntervalBlock/1`)}${link('up', `${self}/IntervalBlock`)}<content><${p}IntervalBlock><${p}interval><${p}duration>86400</${p}duration><${p}start>${from}</${p}start></${p}interval>${readings}</${p}IntervalBlock></content></entry>
+<entry>${link('self', self)}${link('up', `/UsagePoint/${point}/MeterReading`)}${link('related', `${self}/IntervalBlock`)}${link('related', `/ReadingType/${id}`)}<title>${channel.title ?? 'Energy'}</title><content><${p}MeterReading/></content></entry>${type}`;
+}
+
+function feed(channels: Channel[], prefix = 'espi:', head = ''): string {
+  const points = [...new Set(channels.map((channel) => channel.point ?? 'A'))];
+  const pointsXml = points.map(
+    (point) =>
+      `<entry>${link('self', `/UsagePoint/${point}`)}<title>Meter ${point}</title><content><${prefix}UsagePoint/></content></entry>`,
+  );
+  const namespace = prefix === '' ? '' : ` xmlns:${prefix.slice(0, -1)}="http://naesb.org/espi"`;
+  const body = [...channels.map((channel) => channelXml(channel, prefix)), ...pointsXml].join('\n');
+  const inner =
+    prefix === ''
+      ? body.replace(
+          /<(UsagePoint|MeterReading|ReadingType|IntervalBlock)(\/?)>/g,
+          '<$1 xmlns="http://naesb.org/espi"$2>',
+        )
+      : body;
+  return `<?xml version="1.0"?>${head}<feed xmlns="http://www.w3.org/2005/Atom"${namespace}>${inner}</feed>`;
+}
+
+const read = (text: string, columnMap?: ColumnMap) =>
+  readIntervals(bytesOf(text), {
+    fileName: 'feed.xml',
+    timeZone: 'America/Chicago',
+    ...(columnMap ? { columnMap } : {}),
+  });
+
+describe('ESPI', () => {
+  const wh: Channel = { id: '1', values: [1000, 2000, 1500, 500] };
+
+  it.each(['espi:', 'ns0:', ''])('matches names by namespace, prefix “%s”', async (prefix) => {
+    const { load, report } = await read(feed([wh], prefix));
+    expect(load.startMs).toBe(start * 1000);
+    expect([...load.kwh]).toEqual([1, 2, 1.5, 0.5]);
+    expect(report).toMatchObject({ format: 'espi', rowsRead: 4, maxKw: 8 });
+  });
+
+  it('pairs channels by their links and applies the power of ten', async () => {
+    const { load } = await read(
+      feed([
+        { id: '9', uom: '73', flow: '3', power: 3, values: [1, 0, 1, 0], title: 'Energy Delivered (kWh)' },
+        { id: '3', uom: '73', flow: '2', power: 0, values: [400, 300, 200, 100], title: 'Energy Delivered (kWh)' },
+        { ...wh, id: '5', power: 3, values: [1, 2, 1, 2], title: 'Energy Delivered (kWh)' },
+        { id: '7', uom: '169', values: [5, 5, 5, 5], title: 'Gas' },
+      ]),
+    );
+    expect([...load.kwh]).toEqual([1, 2, 1, 2]);
+    expect([...load.kvarhLagging]).toEqual([0.4, 0.3, 0.2, 0.1]);
+    expect([...load.kvarhLeading]).toEqual([1, 0, 1, 0]);
+  });
+
+  it('reads average power and leaves reverse flow out', async () => {
+    const { load, report } = await read(
+      feed([
+        { id: '1', uom: '38', values: [4000, 8000, 4000, 8000] },
+        { id: '2', flow: '19', values: [100, 100, 100, 100] },
+      ]),
+    );
+    expect([...load.kwh]).toEqual([1, 2, 1, 2]);
+    expect(report.notes.find((note) => note.code === 'export-left-out')?.message).toContain('0.4 kWh');
+  });
+
+  it('marks codes 7 to 13 and 15 as estimated, others as measured', async () => {
+    const codes = [0, 7, 8, 13, 14, 15, 17, 19];
+    const quality = (at: number) =>
+      `<espi:ReadingQuality><espi:quality>${codes[at]}</espi:quality></espi:ReadingQuality>`;
+    const { load } = await read(feed([{ ...wh, values: codes.map(() => 1000), quality }]));
+    expect([...load.quality]).toEqual([0, 1, 1, 1, 0, 1, 0, 0]);
+  });
+
+  it('lays channels that take turns into each other and counts what two of them name', async () => {
+    const values = Array.from({ length: 60 }, (_, at) => 1000 + at * (at % 2 === 0 ? 1 : -1));
+    const { load, report } = await read(
+      feed([
+        { ...wh, id: '1', values: values.slice(0, 31) },
+        { ...wh, id: '2', values: values.slice(30), from: start + 30 * 900 },
+      ]),
+    );
+    expect([...load.kwh]).toEqual(values.map((value) => value / 1000));
+    expect(report).toMatchObject({ duplicates: 1, missing: 0 });
+  });
+
+  it('adds channels that run together', async () => {
+    const { load } = await read(feed([wh, { ...wh, id: '2' }]));
+    expect([...load.kwh]).toEqual([2, 4, 3, 1]);
+  });
+
+  it('takes differences of readings that only grow', async () => {
+    const values = Array.from({ length: 12 }, (_, at) => 5_000_000 + at * 250);
+    const { load } = await read(feed([{ ...wh, values }]));
+    expect([...load.kwh]).toEqual(Array.from({ length: 11 }, () => 0.25));
+  });
+
+  it('asks for the unit where no type tells it, and takes the map at its word', async () => {
+    const nameless = feed([{ ...wh, type: false }]);
+    await expect(read(nameless)).rejects.toThrow(/No reading type tells the unit/);
+    const { load } = await read(nameless, {
+      kind: 'intervals',
+      columns: [{ index: 0, name: 'Energy', role: 'active', unit: 'Wh' }],
+    });
+    expect([...load.kwh]).toEqual([1, 2, 1.5, 0.5]);
+  });
+
+  it('lists several meters and reads the one picked', async () => {
+    const two = feed([wh, { ...wh, id: '2', point: 'B', values: [100, 100, 100, 100] }]);
+    await expect(read(two)).rejects.toThrow(/2 meters: Meter A, Meter B/);
+    expect((await read(two, { kind: 'intervals', meter: 'Meter B' })).report.totalKwh).toBeCloseTo(0.4, 9);
+    expect((await previewIntervals(bytesOf(two), { fileName: 'f.xml', timeZone: 'UTC' })).meters).toEqual([
+      'Meter A',
+      'Meter B',
+    ]);
+  });
+
+  it('reads a feed that runs backwards on one line behind a mark', async () => {
+    const turned = feed([wh])
+      .replace(/\n/g, '')
+      .replace(/(<espi:IntervalReading>.*?<\/espi:IntervalReading>)+/, (all) =>
+        (all.match(/<espi:IntervalReading>.*?<\/espi:IntervalReading>/g) ?? []).reverse().join(''),
+      );
+    const { load } = await read(`\uFEFF${turned}`);
+    expect([...load.kwh]).toEqual([1, 2, 1.5, 0.5]);
+  });
+
+  it.each([
+    ['a document type', feed([wh], 'espi:', '<!DOCTYPE feed [<!ENTITY a "aaaa">]>'), /document type/],
+    ['a feed that is cut off', feed([wh]).slice(0, -200), /broken.*line \d/s],
+    ['other XML', '<?xml version="1.0"?><note><to>you</to></note>', /no ESPI feed/],
+    ['deep nesting', `<?xml version="1.0"?>${'<a>'.repeat(60)}${'</a>'.repeat(60)}`, /nested too deep/],
+    ['a sentinel in place of a unit', feed([{ ...wh, uom: '65535', power: 4096 }]), /none of energy or power/],
+  ])('refuses %s', async (_name, text, message) => {
+    await expect(read(text)).rejects.toThrow(message);
+  });
+
+  it('holds no bills', async () => {
+    await expect(readBills(bytesOf(feed([wh])), { fileName: 'feed.xml', timeZone: 'UTC' })).rejects.toThrow(
+      /intervals, not bills/,
+    );
+  });
+});

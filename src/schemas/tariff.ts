@@ -61,7 +61,14 @@ const numbers = z.record(z.string(), z.number({ error: 'Write a number.' }));
 export const chooseInput = z.object({
   scheduleId: z.string().min(1, 'Choose a schedule.'),
   contract: numbers,
-  history: z.record(z.string(), z.array(z.number({ error: 'Write a number.' })).max(60)).nullable(),
+  history: z
+    .record(
+      z.string(),
+      z
+        .array(z.number({ error: 'Write numbers with blanks between them, such as 5,210 5,340.' }))
+        .max(60, 'Sixty months are enough.'),
+    )
+    .nullable(),
   /** Version of the choice the person saw; null where none was made yet. */
   version: z.number().int().nullable(),
   /** Take the library's file as it stands now instead of the text kept with the engagement. */

@@ -59,6 +59,15 @@ describe('faultsOf', () => {
     expect(Math.abs(whole - (3_333 + 1_111 + 222))).toBeLessThanOrEqual(1);
   });
 
+  it('takes a printed line the schedule does not know into the base of a tax on everything, where that explains it', () => {
+    const rental: LinePair = { ...pair('rental', 0, 5_000), line: null, pricedMinor: null, differenceMinor: 5_000 };
+    const onAll = (id: string) => (id === 'tax' ? ['demand', '*'] : []);
+    const taxed = faultsOf([pair('demand', 200_000, 200_000), pair('tax', 10_000, 10_250), rental], onAll);
+    expect(taxed.map(({ pair: { line }, wholeMinor }) => [line, wholeMinor])).toEqual([[null, 5_250]]);
+    const untaxed = faultsOf([pair('demand', 200_000, 200_000), pair('tax', 10_000, 10_000), rental], onAll);
+    expect(untaxed.map(({ wholeMinor }) => wholeMinor)).toEqual([5_000]);
+  });
+
   it('does not change what it is given', () => {
     const pairs = [pair('demand', 200_000, 300_000), pair('tax', 10_000, 15_000)];
     const before = structuredClone(pairs);

@@ -215,7 +215,13 @@ function Ledger({ sheet }: { sheet: TariffSheetView }) {
       return { ...current, trail: at >= 0 ? current.trail.slice(0, at + 1) : [...current.trail, figure] };
     });
   return (
-    <div className="ledger-scroll" role="region" aria-label="Bills, priced against billed" tabIndex={0}>
+    <div
+      className="ledger-scroll"
+      role="region"
+      aria-label="Bills, priced against billed"
+      tabIndex={0}
+      onKeyDown={(event) => event.key === 'Escape' && opened?.cell === 'lines' && close()}
+    >
       <table className="ledger tariff-ledger" aria-label="Bills, priced against billed">
         <Head sheet={sheet} />
         <tbody>

@@ -1,5 +1,5 @@
 import { fromMinorUnits, wordMoney, wordNumber } from '../../core/units';
-import type { PricedYear } from '../../schemas/pricing';
+import type { Finding, PricedYear } from '../../schemas/pricing';
 
 const spelled = 'no one two three four five six seven eight nine ten eleven twelve'.split(' ');
 const word = (count: number) => spelled[count] ?? wordNumber(count);
@@ -29,8 +29,10 @@ export function tariffHeadline(year: PricedYear): string {
   }
   const whole = faulty.reduce((sum, bill) => sum + (bill.differenceMinor ?? 0), 0);
   const verb = whole >= 0 ? 'over-billed' : 'under-billed';
-  const head = `The utility ${verb} ${money(Math.abs(whole))} in ${word(faulty.length)} of ${word(compared.length)} ${billsWord(compared.length)}`;
-  if (rest.length === 0) return `${head}.`;
+  const over = `The utility ${verb} ${money(Math.abs(whole))} in`;
+  if (rest.length === 0)
+    return `${over} ${compared.length === 1 ? 'its one bill' : `all ${word(compared.length)} bills`}.`;
+  const head = `${over} ${word(faulty.length)} of ${word(compared.length)} ${billsWord(compared.length)}`;
   return `${head}; the other ${rest.length === 1 ? `one ${agreement.replace('agree', 'agrees')}` : `${word(rest.length)} ${agreement}`}.`;
 }
 
@@ -64,4 +66,42 @@ export function reactiveFinding(parts: { demand: number; reactive: number; other
   const [place, amount] = named.sort((a, b) => Math.abs(b[1]) - Math.abs(a[1]))[0]!;
   const share = Math.round((100 * amount) / total);
   return `${share} % of the ${wordMoney(total, currency)} sit in ${place}.`;
+}
+
+/** One slip of the result column: a finding, or several of one kind in one line of many bills. */
+export interface FindingSlipWords {
+  /** Letter of the first. */
+  letter: string;
+  title: string;
+  amountMinor: number;
+  text: string;
+}
+
+const mostAlone = 2;
+
+/** The findings as slips; more than two of one kind in the same line become one. */
+export function findingSlips({ findings, bills, currency }: PricedYear): FindingSlipWords[] {
+  const groups = new Map<string, Finding[]>();
+  for (const finding of findings) {
+    const key = `${finding.kind} ${finding.lineLabel}`;
+    groups.set(key, [...(groups.get(key) ?? []), finding]);
+  }
+  const nameOf = (finding: Finding) => bills.find(({ bill }) => bill.id === finding.billId)?.name ?? '';
+  return [...groups.values()].flatMap((group) => {
+    if (group.length <= mostAlone) {
+      return group.map(({ letter, title, amountMinor, sentence }) => ({
+        letter,
+        title,
+        amountMinor,
+        text: sentence,
+      }));
+    }
+    const [first] = group;
+    const parts = group.map(
+      (one) => `${nameOf(one)} ${wordMoney(fromMinorUnits(one.amountMinor, currency), currency)}`,
+    );
+    const amountMinor = group.reduce((sum, one) => sum + one.amountMinor, 0);
+    const text = `${first!.lineLabel ?? 'The bill as a whole'} in ${word(group.length)} bills: ${parts.join(', ')}.`;
+    return [{ letter: first!.letter, title: `${first!.title}, ${word(group.length)} times`, amountMinor, text }];
+  });
 }

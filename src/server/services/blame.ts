@@ -9,17 +9,25 @@ export interface Fault {
   wholeMinor: number;
 }
 
+type Shares = Map<Fault, number>;
+
+/** In the base of a percentage: whatever the bill prints that the schedule does not know, too. */
+export const everythingPrinted = '*';
+
 /**
  * Sorts a bill's differences into faults and their consequences: a tax on an over-billed demand is over-billed too, but
  * is no finding of its own. Pairs stand in the order of the bill.
  *
- * @param baseOf  Lines a percentage line is taken of, by its id; none for other lines
+ * @param baseOf  Lines a percentage line is taken of, by its id; none for other lines. With {@link everythingPrinted}
+ *   among them, printed lines the schedule does not know count where that explains the line better.
  */
 export function faultsOf(pairs: LinePair[], baseOf: (lineId: string) => string[]): Fault[] {
   const faults: Fault[] = [];
-  const shares = new Map<string, Map<Fault, number>>();
-  for (const pair of pairs) {
-    const followed = followedFrom(pair, pairs, baseOf, shares);
+  const shares = new Map<string, Shares>();
+  const alone = pairs.filter((pair) => pair.line === null);
+  for (const pair of [...alone, ...pairs.filter((one) => one.line !== null)]) {
+    const base = pair.line ? baseOf(pair.line.id) : [];
+    const followed = followedFrom(pair, pairs, base, shares);
     const ownMinor = pair.differenceMinor - sumOf(followed);
     if (Math.abs(ownMinor) > lineToleranceMinor) {
       const fault = { pair, ownMinor: Math.round(ownMinor), wholeMinor: 0 };
@@ -27,30 +35,34 @@ export function faultsOf(pairs: LinePair[], baseOf: (lineId: string) => string[]
       followed.set(fault, ownMinor);
     } else spread(ownMinor, followed);
     for (const [fault, minor] of followed) fault.wholeMinor += minor;
-    if (pair.line) shares.set(pair.line.id, followed);
+    const key = pair.line?.id ?? everythingPrinted;
+    shares.set(key, new Map([...(shares.get(key) ?? []), ...followed]));
   }
   for (const fault of faults) fault.wholeMinor = Math.round(fault.wholeMinor);
-  return faults;
+  return faults.sort((a, b) => pairs.indexOf(a.pair) - pairs.indexOf(b.pair));
 }
 
-const sumOf = (shares: Map<Fault, number>) => [...shares.values()].reduce((sum, minor) => sum + minor, 0);
+const sumOf = (shares: Shares) => [...shares.values()].reduce((sum, minor) => sum + minor, 0);
 
 /** What of a percentage line's difference follows from faults in the lines it is taken of. */
-function followedFrom(
-  pair: LinePair,
-  pairs: LinePair[],
-  baseOf: (lineId: string) => string[],
-  shares: Map<string, Map<Fault, number>>,
-): Map<Fault, number> {
-  const followed = new Map<Fault, number>();
-  const base = pair.line ? baseOf(pair.line.id) : [];
-  if (base.length === 0 || pair.pricedMinor === null || pair.billedMinor === null) return followed;
-  const basePriced = pairs.reduce(
-    (sum, one) => sum + (one.line && base.includes(one.line.id) ? (one.pricedMinor ?? 0) : 0),
-    0,
-  );
-  if (basePriced === 0) return followed;
+function followedFrom(pair: LinePair, pairs: LinePair[], base: string[], shares: Map<string, Shares>): Shares {
+  if (base.length === 0 || pair.pricedMinor === null || pair.billedMinor === null) return new Map();
+  const pricedOf = (one: LinePair) => (one.line && base.includes(one.line.id) ? (one.pricedMinor ?? 0) : 0);
+  const basePriced = pairs.reduce((sum, one) => sum + pricedOf(one), 0);
+  if (basePriced === 0) return new Map();
   const percent = pair.pricedMinor / basePriced;
+  const known = sharesOf(
+    base.filter((id) => id !== everythingPrinted),
+    percent,
+    shares,
+  );
+  const all = sharesOf(base, percent, shares);
+  const left = (followed: Shares) => Math.abs(pair.differenceMinor - sumOf(followed));
+  return left(all) < left(known) ? all : known;
+}
+
+function sharesOf(base: string[], percent: number, shares: Map<string, Shares>): Shares {
+  const followed: Shares = new Map();
   for (const id of base) {
     for (const [fault, minor] of shares.get(id) ?? [])
       followed.set(fault, (followed.get(fault) ?? 0) + percent * minor);

@@ -53,7 +53,7 @@ function kindOf({ pair }: Fault, causes: TriedCause[]): FindingKind {
 
 function sentenceOf(bill: ReconciledBill, fault: Fault, kind: FindingKind, causes: TriedCause[]): string {
   const { ownMinor, wholeMinor } = fault;
-  const more = wholeMinor === ownMinor ? '' : `, ${money(wholeMinor, bill)} with what follows from it`;
+  const more = wholeMinor === ownMinor ? '' : `, ${money(Math.abs(wholeMinor), bill)} with what follows from it`;
   const head = `${bill.name}, ${labelOf(fault)}: ${money(Math.abs(ownMinor), bill)} ${ownMinor > 0 ? 'too much' : 'too little'}${more}.`;
   if (kind === 'line-not-in-schedule') {
     return `${head} The bill prints it, and no line of the schedule was found for it. Match it to one, or ask the utility.`;

@@ -9,7 +9,7 @@ import {
   type ReconciledBill,
 } from '../../schemas/pricing';
 import { billName } from '../presenters/pricing';
-import { faultsOf } from './blame';
+import { everythingPrinted, faultsOf } from './blame';
 import { CauseTrial } from './causes';
 import { findingOfArithmetic, findingOfFault, findingOfTotal } from './findings';
 import { matchLines } from './line-matching';
@@ -81,7 +81,10 @@ function findingsOfBill(
     return [findingOfTotal(bill, causes)];
   }
   const text = textOn(basis.schedule, addDays(bill.bill.to, -1));
-  const faults = faultsOf(bill.pairs, (lineId) => baseOfPercent(text, lineId));
+  const faults = faultsOf(bill.pairs, (lineId) => {
+    const { of, isAllAbove } = baseOfPercent(text, lineId);
+    return isAllAbove ? [...of, everythingPrinted] : of;
+  });
   const found = faults.map((fault) => {
     const { line, billedMinor } = fault.pair;
     // A fault on top of followed ones must be explained without them.

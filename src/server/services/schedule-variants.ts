@@ -95,8 +95,9 @@ export function quantitiesBehind(text: ScheduleText, lineId: string): QuantityEn
   return [...found];
 }
 
-/** Lines a percentage is taken of; none for any other line. */
-export function baseOfPercent(text: ScheduleText, lineId: string): string[] {
-  const charge = text.charges.find((one) => one.name === lineId);
-  return charge?.definition.kind === 'percent' ? charge.definition.of : [];
+/** Lines a percentage is taken of, and whether of all that stands above it; none for any other line. */
+export function baseOfPercent(text: ScheduleText, lineId: string): { of: string[]; isAllAbove: boolean } {
+  const definition = text.charges.find((one) => one.name === lineId)?.definition;
+  if (definition?.kind !== 'percent') return { of: [], isAllAbove: false };
+  return { of: definition.of, isAllAbove: definition.isAllAbove };
 }

@@ -7,7 +7,14 @@ import type { Actor } from '../policies/actor';
 import { monthName } from '../presenters/pricing';
 import { reactiveCostData, reactiveParts, type ReactiveParts } from '../presenters/reactive-cost';
 import { presentTariffSheet } from '../presenters/tariff-sheet';
-import { dayInWords, reactiveFinding, tariffHeadline, tariffLead } from '../presenters/tariff-words';
+import {
+  dayInWords,
+  findingSlips,
+  reactiveFinding,
+  tariffHeadline,
+  tariffLead,
+  type FindingSlipWords,
+} from '../presenters/tariff-words';
 import { pricingBasis } from './pricing';
 import { tariffStation, type TariffStation } from './tariff';
 
@@ -16,6 +23,7 @@ export interface TariffPage {
   station: TariffStation;
   sheet: TariffSheetView | null;
   reactive: { data: ReturnType<typeof reactiveCostData>; parts: ReactiveParts; finding: string } | null;
+  slips: FindingSlipWords[];
   monthBefore: string | null;
   broken: { where: string; message: string; remedy: string }[];
   words: {
@@ -38,6 +46,7 @@ export async function tariffPage(actor: Actor, code: string): Promise<TariffPage
     station,
     sheet: year && choice && presentTariffSheet(year, { code, choiceVersion: choice.version }),
     reactive: year && reactiveOf(year),
+    slips: year ? findingSlips(year) : [],
     monthBefore: monthName(addMonths(first, -1)),
     broken: library.flatMap(({ fileName, problems }) =>
       problems.map(({ line, column, path, message, remedy }) => ({
@@ -63,12 +72,13 @@ function reactiveOf(year: PricedYear): TariffPage['reactive'] {
   return { data: reactiveCostData(year), parts, finding: reactiveFinding(parts, year.currency) };
 }
 
-function headOf(
-  { year, choice, obstacle }: TariffStation,
-  schedule: Schedule | null,
-): { headline: string; lead: string } {
+function headOf({ year, choice }: TariffStation, schedule: Schedule | null): { headline: string; lead: string } {
   if (year && schedule) return { headline: tariffHeadline(year), lead: tariffLead(year, schedule) };
-  if (choice) return { headline: 'The year cannot be priced yet.', lead: obstacle?.message ?? '' };
+  if (choice)
+    return {
+      headline: 'The year cannot be priced yet.',
+      lead: 'The schedule is chosen; what is missing is named below.',
+    };
   return {
     headline: 'Choose the schedule this year was billed on.',
     lead: 'Then every bill is priced line by line beside what the utility charged, and every difference is looked into.',

@@ -12,9 +12,12 @@ const percent = (share: number) => `${(100 * Math.abs(share)).toFixed(1)} %`;
 
 /** Values out of any range: no motor can be made of them. */
 export function checkRanges(plate: Nameplate): PlateRemark[] {
-  const remarks: PlateRemark[] = [];
-  const positive: (keyof Nameplate)[] = ['output', 'voltageV', 'frequencyHz'];
-  const optional: (keyof Nameplate)[] = [
+  return [...checkPositive(plate), ...checkFractions(plate), ...checkPoles(plate)];
+}
+
+function checkPositive(plate: Nameplate): PlateRemark[] {
+  const needed = ['output', 'voltageV', 'frequencyHz'] as const;
+  const optional = [
     'currentA',
     'speedRpm',
     'fieldCurrentA',
@@ -22,42 +25,35 @@ export function checkRanges(plate: Nameplate): PlateRemark[] {
     'fieldResistanceOhm',
     'xdPu',
     'xqPu',
-  ];
-  for (const field of [...positive, ...optional.filter((name) => plate[name] !== undefined)]) {
-    const entered = plate[field] as number;
-    if (!(entered > 0 && Number.isFinite(entered))) {
-      remarks.push({
-        field,
-        message: `${field} is ${entered}: it must be above zero.`,
-        remedy: 'Read it again from the plate.',
-      });
-    }
-  }
-  for (const field of ['powerFactor', 'efficiency', 'exciterEfficiency'] as const) {
-    const entered = plate[field];
-    if (entered === undefined || (entered > 0 && entered <= 1)) continue;
-    const asPercent = entered > 1 && entered <= 100 ? ` ${entered} % is written ${entered / 100}.` : '';
-    remarks.push({
+  ] as const;
+  return [...needed, ...optional.filter((name) => plate[name] !== undefined)]
+    .filter((field) => !(plate[field]! > 0 && Number.isFinite(plate[field])))
+    .map((field) => ({
       field,
-      message: `${field} is ${entered}: it must be above 0 and not above 1.`,
-      remedy: `Enter it as a fraction.${asPercent}`,
-    });
+      message: `${field} is ${plate[field]}: it must be above zero.`,
+      remedy: 'Read it again from the plate.',
+    }));
+}
+
+function checkFractions(plate: Nameplate): PlateRemark[] {
+  return (['powerFactor', 'efficiency', 'exciterEfficiency'] as const).flatMap((field) => {
+    const entered = plate[field];
+    if (entered === undefined || (entered > 0 && entered <= 1)) return [];
+    const asPercent = entered > 1 && entered <= 100 ? ` ${entered} % is written ${entered / 100}.` : '';
+    const message = `${field} is ${entered}: it must be above 0 and not above 1.`;
+    return [{ field, message, remedy: `Enter it as a fraction.${asPercent}` }];
+  });
+}
+
+function checkPoles({ poles, speedRpm }: Nameplate): PlateRemark[] {
+  if (poles === undefined && speedRpm === undefined) {
+    const remedy = 'Enter the rated speed or the number of poles.';
+    return [{ field: 'speedRpm', message: 'Neither speed nor poles are given.', remedy }];
   }
-  if (plate.poles === undefined && plate.speedRpm === undefined) {
-    remarks.push({
-      field: 'speedRpm',
-      message: 'Neither speed nor poles are given.',
-      remedy: 'Enter the rated speed or the number of poles.',
-    });
-  }
-  if (plate.poles !== undefined && !(Number.isInteger(plate.poles / 2) && plate.poles >= 2)) {
-    remarks.push({
-      field: 'poles',
-      message: `poles is ${plate.poles}: it must be even, 2 or more.`,
-      remedy: 'Poles = 120 x Hz / rpm.',
-    });
-  }
-  return remarks;
+  if (poles === undefined || (Number.isInteger(poles / 2) && poles >= 2)) return [];
+  return [
+    { field: 'poles', message: `poles is ${poles}: it must be even, 2 or more.`, remedy: 'Poles = 120 x Hz / rpm.' },
+  ];
 }
 
 /** Data of the plate that contradict one another. */

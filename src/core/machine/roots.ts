@@ -2,6 +2,8 @@ import { NotConvergedError } from './errors';
 
 const EPS = 2.220446049250313e-16;
 const GOLDEN = (3 - Math.sqrt(5)) / 2;
+/** Absolute precision near zero: far below rounding of the per-unit values and radians sought here. */
+const LEAST = 1e-18;
 
 /**
  * Zero of a continuous function between two points of opposite sign: inverse quadratic interpolation, secant and
@@ -11,7 +13,7 @@ const GOLDEN = (3 - Math.sqrt(5)) / 2;
  * @param lo  One end of the bracket.
  * @param hi  Other end; f(lo) and f(hi) have opposite signs or one is zero.
  * @param code  Name of the quantity sought, for the error.
- * @returns A point where f changes sign, to the precision of the machine.
+ * @returns A point where f changes sign, to the precision of the machine; 1e-18 around zero.
  * @throws {NotConvergedError} when the ends do not bracket a zero or after 200 steps.
  * @source [BRE] ch. 4 (procedure zero).
  */
@@ -20,7 +22,7 @@ export function brentRoot(f: (x: number) => number, lo: number, hi: number, code
   let b = hi;
   let fa = f(a);
   let fb = f(b);
-  if (!(fa * fb <= 0)) throw new NotConvergedError(code, 0, Math.min(Math.abs(fa), Math.abs(fb)));
+  if (!(Math.sign(fa) * Math.sign(fb) <= 0)) throw new NotConvergedError(code, 0, Math.min(Math.abs(fa), Math.abs(fb)));
   let c = b;
   let fc = fb;
   let step = 0;
@@ -31,7 +33,7 @@ export function brentRoot(f: (x: number) => number, lo: number, hi: number, code
       step = last = b - a;
     }
     if (Math.abs(fc) < Math.abs(fb)) [a, b, c, fa, fb, fc] = [b, c, b, fb, fc, fb];
-    const tolerance = 2 * EPS * Math.abs(b) + 1e-300;
+    const tolerance = 2 * EPS * Math.abs(b) + LEAST;
     const half = (c - b) / 2;
     if (Math.abs(half) <= tolerance || fb === 0) return b;
     const trial = interpolate(a, b, c, fa, fb, fc, half, last, tolerance);

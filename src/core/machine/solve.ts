@@ -125,8 +125,10 @@ export function holdField(model: MotorModel, fieldCurrentA: number, v: number): 
         greatestW,
       );
     }
-    const angle = angleFor(held.shaftAt, shaft, held.topRad);
-    if (angle === null) throw new NotConvergedError('load angle at a field current', 36, held.greatest - shaft);
+    const spare = held.greatest - shaft;
+    // Without field, saliency and load every angle gives the same power to rounding.
+    const angle = angleFor(held.shaftAt, shaft, held.topRad) ?? (spare <= 1e-12 * (1 + shaft) ? held.topRad : null);
+    if (angle === null) throw new NotConvergedError('load angle at a field current', 36, spare);
     const e = held.emfAt(angle);
     const { iq, x } = axisCurrents(v, e, angle, model.z);
     const p = v * (Math.cos(angle) * iq + Math.sin(angle) * x);

@@ -112,6 +112,14 @@ describe('operatingPoint at the limits of its range', () => {
     expect(point.pullOutRatio).toBe(Infinity);
   });
 
+  it('stands without field, saliency, load and loss at the field-less kvar V^2/X', () => {
+    const motor = buildLosslessMotor({ ratedPowerFactor: 0.95, xdPu: 1.25, xqPu: 1.25 });
+    for (const voltagePu of [0.93, 0.9619295716285706, 1, 1.033792744576931]) {
+      const point = operatingPoint(motor, { shaftKw: 0, fieldCurrentA: 0, voltagePu });
+      expect(point.kvar).toBeCloseTo((1000 * voltagePu ** 2) / 1.25, 8);
+    }
+  });
+
   it('names every limit a point breaks', () => {
     const motor = buildMotor();
     expect(operatingPoint(motor, { shaftKw: 1492, kvar: -1500 }).beyond).toEqual(['armature', 'field']);

@@ -180,7 +180,7 @@ export function LineRows({ form, currency, others }: { form: Form; currency: str
 function BeforeNote(props: { bill?: BillView; amountMinor?: number; currency: string }) {
   const { bill, amountMinor, currency } = props;
   if (!bill || amountMinor === undefined) return <span />;
-  return <span>{`${billName(bill.to)}: ${formatAmount(amountMinor, currency)}`}</span>;
+  return <span className="max-phone:hidden">{`${billName(bill.to)}: ${formatAmount(amountMinor, currency)}`}</span>;
 }
 
 /** The running sum of the lines against the printed total. */

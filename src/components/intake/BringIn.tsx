@@ -31,7 +31,7 @@ interface Sending {
 export function BringIn({ code, kind, primary = false }: BringInProps) {
   const picker = useRef<HTMLInputElement>(null);
   const [sending, setSending] = useState<Sending | null>(null);
-  const [fault, setFault] = useState<string | null>(null);
+  const [fault, setFault] = useState<ApiError | null>(null);
   const [over, setOver] = useState(false);
 
   const send = async (file: File) => {
@@ -44,7 +44,9 @@ export function BringIn({ code, kind, primary = false }: BringInProps) {
       window.location.assign(intakePage(code, intake.id));
     } catch (error) {
       setSending(null);
-      setFault(error instanceof ApiError ? error.message : 'The file could not be sent. Try again.');
+      setFault(
+        error instanceof ApiError ? error : new ApiError(0, 'unknown', 'The file could not be sent. Try again.'),
+      );
     }
   };
   const take = (files: FileList | null) => {
@@ -91,9 +93,13 @@ export function BringIn({ code, kind, primary = false }: BringInProps) {
       )}
       {fault && (
         <div className="mt-3">
-          <Notice kind="fault" title="The file was not taken in.">
-            {fault}
-          </Notice>
+          {fault.code === 'stopped' ? (
+            <Notice title={fault.message} />
+          ) : (
+            <Notice kind="fault" title="The file was not taken in.">
+              {fault.message}
+            </Notice>
+          )}
         </div>
       )}
     </div>

@@ -1,11 +1,12 @@
 import { useQuery } from '@tanstack/react-query';
 import { fetchIntakeDays } from '../../client/intake';
 import type { IntakeReport, IntervalPreview } from '../../core/intake';
+import { localDateStartMs } from '../../core/load';
 import type { IntakeView } from '../../schemas/intake';
 import { packCarpet } from '../charts/carpet';
 import { CarpetFigure } from '../charts/CarpetChart';
 import { FindingSlip } from '../ui/FindingSlip';
-import { formatCount, formatDateTime, formatNumber, formatQuantity } from '../ui/format';
+import { formatCount, formatDateTime, formatNumber, formatPeriod, formatQuantity } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { ResultSums, type SumRow } from '../ui/ResultSums';
 import { gapInWords, gapMarks, longestGaps } from './carpet-marks';
@@ -21,7 +22,6 @@ export interface CheckIntervalsProps {
 /** The readings as they would be kept: picture, gaps, sums, peak, notes. */
 export function CheckIntervals({ intake, preview }: CheckIntervalsProps) {
   const { report } = preview;
-  const { siteTimeZone } = intake.engagement;
   return (
     <SheetPart
       id="check"
@@ -34,7 +34,7 @@ export function CheckIntervals({ intake, preview }: CheckIntervalsProps) {
           <p>Missing stays missing: nothing is filled in.</p>
         </>
       }
-      result={report && <Results report={report} timeZone={siteTimeZone} />}
+      result={report && <Results intake={intake} report={report} />}
     >
       {report && (
         <div className="stacked">
@@ -74,7 +74,8 @@ function Picture({ intake, report }: { intake: IntakeView; report: IntakeReport 
   );
 }
 
-function Results({ report, timeZone }: { report: IntakeReport; timeZone: string }) {
+function Results({ intake, report }: { intake: IntakeView; report: IntakeReport }) {
+  const timeZone = intake.engagement.siteTimeZone;
   const gaps = longestGaps(report.gaps ?? []);
   const energy = (label: string, value: number, tone?: SumRow['tone']): SumRow => ({
     label,
@@ -110,6 +111,7 @@ function Results({ report, timeZone }: { report: IntakeReport; timeZone: string 
           </p>
         </>
       )}
+      <YearShare intake={intake} report={report} />
       <div className="mt-3">
         {gaps.map((gap, index) => (
           <FindingSlip
@@ -124,6 +126,30 @@ function Results({ report, timeZone }: { report: IntakeReport; timeZone: string 
       {(report.gaps?.length ?? 0) > gaps.length && (
         <p>{formatCount((report.gaps?.length ?? 0) - gaps.length, 'shorter gap')} more.</p>
       )}
+    </>
+  );
+}
+
+/** How much of the engagement's year lies in the file. */
+function YearShare({ intake, report }: { intake: IntakeView; report: IntakeReport }) {
+  const { yearFrom, yearTo, siteTimeZone } = intake.engagement;
+  const [begins, ends] = [localDateStartMs(yearFrom, siteTimeZone), localDateStartMs(yearTo, siteTimeZone)];
+  const end = report.lastMs + (report.stepMinutes ?? 15) * 60_000;
+  const share = Math.max(0, Math.min(end, ends) - Math.max(report.firstMs, begins)) / (ends - begins);
+  const year = formatPeriod(yearFrom, yearTo, { year: true });
+  if (share === 0) {
+    return (
+      <div className="mt-3">
+        <Notice title="Outside the year">
+          <span>{`Nothing of this file lies in the engagement’s year, ${year}.`}</span>
+        </Notice>
+      </div>
+    );
+  }
+  return (
+    <>
+      <h3>Of the engagement’s year</h3>
+      <p>{`${formatQuantity(Math.floor(share * 1000) / 10, '%', { upTo: 1 })} of ${year}.`}</p>
     </>
   );
 }

@@ -17,7 +17,7 @@ import { formatBytes, formatDateTime, formatSpelled } from '../ui/format';
 import { Notice, type Problem } from '../ui/Notice';
 import { CheckBills } from './CheckBills';
 import { CheckIntervals } from './CheckIntervals';
-import { intakeHeading, stepsOf } from './intake-words';
+import { foldProblems, intakeHeading, stepsOf } from './intake-words';
 import { KeepStep } from './KeepStep';
 import { MatchStep } from './MatchStep';
 import { ReadStep } from './ReadStep';
@@ -203,7 +203,7 @@ function Refused({ intake }: { intake: IntakeView }) {
         <p>The file stays in the drawer exactly as it came, with its check sum.</p>
       </div>
       <div className="working">
-        <Notice kind="fault" title="What is wrong with it" problems={intake.problems} />
+        <Notice kind="fault" title="What is wrong with it" problems={foldProblems(intake.problems)} />
         <p className="mt-4 text-sm">
           <a className="text-link" href={originalPath(intake.id)} download={intake.fileName}>
             Download the original

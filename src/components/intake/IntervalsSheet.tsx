@@ -58,7 +58,9 @@ export function IntervalsSheet({ code, meter, yearDates, station, carpet }: Inte
             ? 'Each file is kept byte for byte as it came, with its check sum.'
             : `Ask the client or the utility for the interval readings of ${meter}, ${period}: active energy, and reactive energy lagging and leading if the meter has them. Nothing is stored until you have seen it and keep it; keeping can be undone.`
         }
-        reference={kept.length > 0 && <p>Times are those of {timeZone.replaceAll('_', ' ')}.</p>}
+        reference={
+          kept.length > 0 && <p className="wrap-anywhere">Times are those of {timeZone.replaceAll('_', ' ')}.</p>
+        }
       >
         <div className="stacked">
           <BringIn code={code} kind="intervals" primary={files.length === 0} />

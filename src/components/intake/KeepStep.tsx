@@ -2,7 +2,6 @@ import { toConfirm, type IntakePreview, type IntakeView } from '../../schemas/in
 import { Button } from '../ui/Button';
 import { formatCount, formatDateTime, formatNumber } from '../ui/format';
 import type { IntakeActions } from './IntakeSheet';
-import { wantsWord } from './intake-words';
 import { isKnown } from './interval-words';
 import { SheetPart } from './Sheet';
 
@@ -36,11 +35,13 @@ export function KeepStep({ intake, preview, actions }: KeepStepProps) {
         </p>
       }
     >
-      <p className="max-w-[60em]">{readable ? sentence(intake, preview) : wantsWord(preview, intake.confirmed)}</p>
+      <p className="max-w-[60em]">
+        {readable ? sentence(intake, preview) : 'Nothing can be kept until the file can be read.'}
+      </p>
       {(state === 'read' || state === 'undone') && (
         <div className="actions mt-4">
           <Button busy={actions.busy} waiting={waiting} onClick={actions.keep}>
-            {state === 'undone' ? `Keep ${what} again` : `Keep ${what}`}
+            {!readable ? 'Keep' : state === 'undone' ? `Keep ${what} again` : `Keep ${what}`}
           </Button>
         </div>
       )}

@@ -3,6 +3,7 @@ import { Button } from '../ui/Button';
 import { formatCount, formatDate, formatSpelled } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import type { IntakeActions } from './IntakeSheet';
+import { foldProblems } from './intake-words';
 import { ColumnTable } from './MatchColumns';
 import { DecisionTable } from './MatchDecisions';
 import { RememberMap } from './RememberMap';
@@ -37,9 +38,13 @@ export function MatchStep({ intake, preview, actions }: MatchStepProps) {
     >
       <div className="stacked" aria-busy={actions.busy}>
         {preview.problems.length > 0 && (
-          <Notice kind="fault" title="The file cannot be read as it is matched." problems={preview.problems} />
+          <Notice
+            kind="fault"
+            title="The file cannot be read as it is matched."
+            problems={foldProblems(preview.problems)}
+          />
         )}
-        <ColumnTable intake={intake} preview={preview} actions={actions} />
+        {preview.columns.length > 0 && <ColumnTable intake={intake} preview={preview} actions={actions} />}
         <DecisionTable intake={intake} preview={preview} actions={actions} />
       </div>
     </SheetPart>

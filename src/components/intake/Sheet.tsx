@@ -73,7 +73,7 @@ export function SheetPart({ id, number, title, lead, reference, result, foldedTo
           {!folded && children}
         </div>
       </div>
-      <div className="result">{!folded && result}</div>
+      <div className={folded || !result ? 'result result-empty' : 'result'}>{!folded && result}</div>
     </section>
   );
 }

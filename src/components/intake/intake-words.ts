@@ -1,5 +1,7 @@
+import type { IntakeProblem } from '../../core/intake';
 import { toConfirm, type IntakePreview, type IntakeView } from '../../schemas/intake';
 import { formatCount, formatDate, formatNumber, formatSpelled } from '../ui/format';
+import type { Problem } from '../ui/Notice';
 import { readBill } from './bill-ledger';
 import { readBillsHeading } from './bill-words';
 import { presentInWords, readingsOf, spanInWords } from './interval-words';
@@ -39,7 +41,7 @@ export function intakeHeading(intake: IntakeView): string {
   if (state === 'given-up') return `${fileName} was given up. Nothing of it is kept.`;
   if (!preview) return `${fileName} cannot be read.`;
   const found = holds(preview, engagement.currency);
-  if (!found) return `${fileName} cannot be read as it is matched: ${problems[0]?.message ?? 'see the step Match.'}`;
+  if (!found) return `${fileName} cannot be read yet. ${problems[0]?.message ?? 'See the step Match.'}`;
   const ends: Record<string, string> = {
     kept: `Kept on ${formatDate(intake.keptAt ?? intake.broughtAt, engagement.siteTimeZone)}.`,
     undone: 'Undone: nothing of it is kept.',
@@ -89,4 +91,21 @@ export function stepsOf(intake: IntakeView): StepTap[] {
 function thingsToSee({ report }: IntakePreview): number {
   if (!report) return 0;
   return (report.gaps?.length ?? 0) + report.notes.length;
+}
+
+const shownOfAKind = 3;
+
+/** Problems with the same remedy told once: the first places, and how many more there are. */
+export function foldProblems(problems: IntakeProblem[]): Problem[] {
+  const kinds = new Map<string, IntakeProblem[]>();
+  for (const problem of problems) kinds.set(problem.remedy, [...(kinds.get(problem.remedy) ?? []), problem]);
+  return [...kinds.values()].flatMap((alike) => {
+    const more = alike.length - shownOfAKind;
+    const shown = alike.slice(0, shownOfAKind).map((problem, index, all) => ({
+      ...problem,
+      remedy: index === all.length - 1 && more <= 0 ? problem.remedy : undefined,
+    }));
+    if (more <= 0) return shown;
+    return [...shown, { message: `${formatCount(more, 'more place')} of the kind.`, remedy: alike[0]?.remedy }];
+  });
 }

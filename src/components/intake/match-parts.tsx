@@ -37,12 +37,11 @@ export function Tests({ met, total, asks, name, onConfirm }: TestsProps) {
     <td className="left unbroken">
       <Mark kind={asks ? 'hollow' : 'filled'} word={`${met} of ${total}`} tone={asks ? 'caution' : 'ink'} />
       {asks && onConfirm && (
-        <>
-          {' '}
+        <span className="ml-2">
           <Button kind="quiet" onClick={onConfirm} aria-label={`Confirm ${name}`}>
             Confirm
           </Button>
-        </>
+        </span>
       )}
     </td>
   );

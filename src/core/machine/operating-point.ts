@@ -3,7 +3,7 @@ import { requireRange } from './errors';
 import { LIMIT_TOLERANCE, compileMotor } from './motor';
 import type { MotorModel, SynchronousMotor } from './motor';
 import { panelCurrentA } from './panel';
-import { inputPu, solveAtField, solveAtKvar, solveAtPowerFactor } from './solve';
+import { solveAtField, solveAtKvar, solveAtPowerFactor } from './solve';
 import type { MachineState } from './solve';
 
 export type Limit = 'armature' | 'field' | 'pull-out';
@@ -104,7 +104,7 @@ export function pullOutOfState(model: MotorModel, s: MachineState): { ratio: num
 }
 
 /** Limits a solved state breaks. */
-export function limitsBroken(model: MotorModel, s: MachineState): { beyond: Limit[]; pullOutRatio: number } {
+function limitsBroken(model: MotorModel, s: MachineState): { beyond: Limit[]; pullOutRatio: number } {
   const { ratio, stable } = pullOutOfState(model, s);
   const beyond: Limit[] = [];
   if (s.current > model.limits.armaturePu * LIMIT_TOLERANCE) beyond.push('armature');
@@ -142,9 +142,4 @@ export function describeState(model: MotorModel, s: MachineState, shaftKw: numbe
     lossesKw,
     ...limitsBroken(model, s),
   };
-}
-
-/** Total input power of a solved state. [kW] */
-export function stateInputKw(model: MotorModel, s: MachineState): number {
-  return inputPu(model, s) * model.baseKva;
 }

@@ -45,7 +45,7 @@ export function assumedSensitivity(
 }
 
 /** The motor with one assumed value replaced; what hangs on it by a fixed ratio moves along. */
-export function withAssumed(motor: SynchronousMotor, field: string, value: number): SynchronousMotor {
+function withAssumed(motor: SynchronousMotor, field: string, value: number): SynchronousMotor {
   if (field.startsWith('lossSplit.')) {
     return { ...motor, lossSplit: { ...lossSplitKw(motor), [field.slice('lossSplit.'.length)]: value } };
   }

@@ -1,5 +1,5 @@
 import type { LoadSeries } from '../load';
-import { fixField, ratedCurrentA } from '../machine';
+import { DEFAULT_PULL_OUT_MARGIN, fixField, ratedCurrentA } from '../machine';
 import type { Limit, OperatingPoint, SynchronousMotor } from '../machine';
 import { createSimulator, distinctLoads } from './simulator';
 import type { CapacitorStep, PlanAction, PlanMotor, Plant, Upstream } from './types';
@@ -170,7 +170,7 @@ function limitShares(motor: SynchronousMotor, point: OperatingPoint): Record<Lim
   const reserve = motor.limits?.reserve ?? 0;
   const fieldA = (motor.limits?.fieldCurrentA ?? motor.ratedFieldCurrentA) * (1 - reserve);
   const armatureA = (motor.limits?.armatureCurrentA ?? ratedCurrentA(motor)) * (1 - reserve);
-  const margin = motor.limits?.pullOutMargin ?? 1.3;
+  const margin = motor.limits?.pullOutMargin ?? DEFAULT_PULL_OUT_MARGIN;
   return {
     armature: point.lineCurrentA / armatureA,
     field: point.fieldCurrentA / fieldA,

@@ -1,4 +1,5 @@
 import { addDays, dayNumber, isoDate } from '../../core/load';
+import { fromMinorUnits, wordMoney } from '../../core/units';
 
 const months = 'Jan Feb Mar Apr May Jun Jul Aug Sep Oct Nov Dec'.split(' ');
 
@@ -11,3 +12,7 @@ export function billName({ from, to }: { from: string; to: string }): string {
   const last = dayNumber(addDays(to, -1));
   return monthName(isoDate(Math.floor((first + last) / 2)));
 }
+
+/** An amount in words of the screen, with the true minus sign: "−14,144.66 USD". */
+export const moneyInWords = (minor: number, currency: string) =>
+  wordMoney(fromMinorUnits(minor, currency), currency).replace(/^-/, '\u2212');

@@ -1,5 +1,6 @@
 import { fromMinorUnits, wordMoney, wordNumber } from '../../core/units';
 import type { Finding, PricedYear } from '../../schemas/pricing';
+import { moneyInWords } from './pricing';
 
 const spelled = 'no one two three four five six seven eight nine ten eleven twelve'.split(' ');
 const word = (count: number) => spelled[count] ?? wordNumber(count);
@@ -15,7 +16,7 @@ export const dayInWords = (date: string) =>
 /** The sheet's heading: the finding with its amount. */
 export function tariffHeadline(year: PricedYear): string {
   const { bills, currency, totals } = year;
-  const money = (minor: number) => wordMoney(fromMinorUnits(minor, currency), currency);
+  const money = (minor: number) => moneyInWords(minor, currency);
   const compared = bills.filter((bill) => bill.differenceMinor !== null);
   if (compared.length === 0) {
     return `${capital(word(bills.length))} ${billsWord(bills.length)} priced at ${money(totals.pricedMinor)}; none says what the utility charged.`;
@@ -39,7 +40,7 @@ export function tariffHeadline(year: PricedYear): string {
 function cents(minor: number, currency: string): string {
   return minor < 13 && currency === 'USD'
     ? `${word(minor)} ${minor === 1 ? 'cent' : 'cents'}`
-    : wordMoney(fromMinorUnits(minor, currency), currency);
+    : moneyInWords(minor, currency);
 }
 
 /** The line under the heading: from what, on what, and what poor power factor costs. */
@@ -97,9 +98,7 @@ export function findingSlips({ findings, bills, currency }: PricedYear): Finding
       }));
     }
     const [first] = group;
-    const parts = group.map(
-      (one) => `${nameOf(one)} ${wordMoney(fromMinorUnits(one.amountMinor, currency), currency)}`,
-    );
+    const parts = group.map((one) => `${nameOf(one)} ${moneyInWords(one.amountMinor, currency)}`);
     const amountMinor = group.reduce((sum, one) => sum + one.amountMinor, 0);
     const text = `${first!.lineLabel ?? 'The bill as a whole'} in ${word(group.length)} bills: ${parts.join(', ')}.`;
     return [{ letter: first!.letter, title: `${first!.title}, ${word(group.length)} times`, amountMinor, text }];

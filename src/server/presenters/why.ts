@@ -1,7 +1,8 @@
 import type { PricedBill, PricedInput, PricedLine, PricedQuantity } from '../../core/tariff';
-import { fromMinorUnits, wordMoney, wordNumber } from '../../core/units';
+import { toMinorUnits, wordNumber } from '../../core/units';
 import type { Finding, LinePair, ReconciledBill } from '../../schemas/pricing';
 import type { WhyStepView, WhyView } from '../../schemas/tariff-why';
+import { moneyInWords } from './pricing';
 import { wordsOfName } from './schedule';
 
 /** The words of a why panel; pictures are added by the service, which knows the readings. */
@@ -9,7 +10,6 @@ export type WhyWords = Omit<WhyView, 'day' | 'lookBack'>;
 
 const mostSteps = 9;
 
-const money = (minor: number, currency: string) => wordMoney(fromMinorUnits(minor, currency), currency);
 const rounded = (value: number, unit: string) =>
   `${wordNumber(Math.round(value * 1e4) / 1e4)}${unit ? ` ${unit}` : ''}`;
 
@@ -73,7 +73,7 @@ function lineStep(line: PricedLine, currency: string): WhyStepView {
   return {
     label: line.label,
     working: line.explanation,
-    result: wordMoney(line.amount, currency),
+    result: moneyInWords(toMinorUnits(line.amount, currency), currency),
     kind: 'equals',
     source: line.clause && `clause ${line.clause}`,
   };
@@ -82,10 +82,10 @@ function lineStep(line: PricedLine, currency: string): WhyStepView {
 function billedSteps(pair: LinePair, currency: string): WhyStepView[] {
   if (pair.billedMinor === null) return [{ label: 'The utility billed', working: 'no such line', result: 'nothing' }];
   const labels = pair.billed.map((line) => line.label).join(' + ');
-  const billed = { label: 'The utility billed', working: labels, result: money(pair.billedMinor, currency) };
+  const billed = { label: 'The utility billed', working: labels, result: moneyInWords(pair.billedMinor, currency) };
   if (pair.differenceMinor === 0) return [billed];
   const words = pair.differenceMinor > 0 ? 'Over-billed' : 'Under-billed';
-  return [billed, { label: words, result: money(Math.abs(pair.differenceMinor), currency), kind: 'fault' }];
+  return [billed, { label: words, result: moneyInWords(Math.abs(pair.differenceMinor), currency), kind: 'fault' }];
 }
 
 /** Causes as the panel lists them: fitting ones first, each with how far it misses. */
@@ -94,7 +94,7 @@ export function causesOf(finding: Finding | undefined, currency: string): WhyVie
   return finding.causes.map(({ label, missMinor, fits }) => ({
     label,
     fits,
-    off: missMinor === 0 ? 'to the cent' : `${money(Math.abs(missMinor), currency)} off`,
+    off: missMinor === 0 ? 'to the cent' : `${moneyInWords(Math.abs(missMinor), currency)} off`,
   }));
 }
 
@@ -104,7 +104,7 @@ export function whyLine(bill: ReconciledBill, line: PricedLine, findings: Findin
   const pair = bill.pairs.find((one) => one.line?.id === line.id);
   const finding = findings.find((one) => one.billId === bill.bill.id && one.lineId === line.id);
   return {
-    title: `Why ${wordMoney(line.amount, currency)}: ${line.label}, bill of ${bill.name}`,
+    title: `Why ${moneyInWords(toMinorUnits(line.amount, currency), currency)}: ${line.label}, bill of ${bill.name}`,
     steps: [
       ...stepsBehind(bill.priced, line.uses),
       lineStep(line, currency),
@@ -137,11 +137,18 @@ export function whySum(bill: ReconciledBill, lines: PricedLine[], what: string, 
   const { currency } = bill.bill;
   const sum = lines.reduce((total, line) => total + line.amount, 0);
   const steps = lines.map((line): WhyStepView => {
-    return { label: line.label, working: line.explanation, result: wordMoney(line.amount, currency) };
+    return {
+      label: line.label,
+      working: line.explanation,
+      result: moneyInWords(toMinorUnits(line.amount, currency), currency),
+    };
   });
   return {
-    title: `Why ${wordMoney(sum, currency)}: ${what}, bill of ${bill.name}`,
-    steps: [...steps, { label: 'Together', result: wordMoney(sum, currency), kind: 'equals' }],
+    title: `Why ${moneyInWords(toMinorUnits(sum, currency), currency)}: ${what}, bill of ${bill.name}`,
+    steps: [
+      ...steps,
+      { label: 'Together', result: moneyInWords(toMinorUnits(sum, currency), currency), kind: 'equals' },
+    ],
     next: lines.map((line) => ({ figure: `line:${line.id}`, label: line.label })),
     ...sourceOf(bill, code),
   };
@@ -150,13 +157,20 @@ export function whySum(bill: ReconciledBill, lines: PricedLine[], what: string, 
 /** What the utility billed, line by line as printed. */
 export function whyBilled(bill: ReconciledBill, code: string): WhyWords {
   const { currency, lines, linesMinor, totalMinor } = bill.bill;
-  const steps = lines.map((line): WhyStepView => ({ label: line.label, result: money(line.amountMinor, currency) }));
+  const steps = lines.map((line): WhyStepView => ({
+    label: line.label,
+    result: moneyInWords(line.amountMinor, currency),
+  }));
   if (lines.length > 0)
-    steps.push({ label: 'The lines together', result: money(linesMinor, currency), kind: 'equals' });
+    steps.push({ label: 'The lines together', result: moneyInWords(linesMinor, currency), kind: 'equals' });
   if (totalMinor !== null)
-    steps.push({ label: 'Total as printed', result: money(totalMinor, currency), kind: 'equals' });
+    steps.push({ label: 'Total as printed', result: moneyInWords(totalMinor, currency), kind: 'equals' });
   if (totalMinor !== null && lines.length > 0 && totalMinor !== linesMinor) {
-    steps.push({ label: 'The bill does not add up', result: money(totalMinor - linesMinor, currency), kind: 'fault' });
+    steps.push({
+      label: 'The bill does not add up',
+      result: moneyInWords(totalMinor - linesMinor, currency),
+      kind: 'fault',
+    });
   }
   return { title: `Billed for ${bill.name}, as printed`, steps, next: [], ...sourceOf(bill, code) };
 }
@@ -166,18 +180,23 @@ export function whyDifference(bill: ReconciledBill, findings: Finding[], code: s
   const { currency, id } = bill.bill;
   const steps = bill.pairs.map((pair): WhyStepView => {
     const label = pair.line?.label ?? pair.billed.map((line) => line.label).join(' + ');
-    const priced = pair.pricedMinor === null ? 'not in the schedule' : `priced ${money(pair.pricedMinor, currency)}`;
-    const billed = pair.billedMinor === null ? 'not billed' : `billed ${money(pair.billedMinor, currency)}`;
-    return { label, working: `${billed}, ${priced}`, result: money(pair.differenceMinor, currency) };
+    const priced =
+      pair.pricedMinor === null ? 'not in the schedule' : `priced ${moneyInWords(pair.pricedMinor, currency)}`;
+    const billed = pair.billedMinor === null ? 'not billed' : `billed ${moneyInWords(pair.billedMinor, currency)}`;
+    return { label, working: `${billed}, ${priced}`, result: moneyInWords(pair.differenceMinor, currency) };
   });
   const whole = bill.differenceMinor ?? 0;
   const sum: WhyStepView = {
     label: 'Billed less priced',
-    result: money(whole, currency),
+    result: moneyInWords(whole, currency),
     kind: whole === 0 ? 'equals' : 'fault',
   };
   const own = findings.filter((finding) => finding.billId === id);
-  const causes = own.flatMap((finding) => causesOf(finding, currency) ?? []);
+  const causes = own.flatMap((finding) =>
+    (causesOf(finding, currency) ?? []).map((cause) =>
+      own.length > 1 ? { ...cause, label: `${finding.letter}: ${cause.label}` } : cause,
+    ),
+  );
   return {
     title: `Difference of ${bill.name}`,
     steps: [...steps, sum],

@@ -1,5 +1,4 @@
-import { wordMoney, wordNumber } from '../../core/units';
-import { fromMinorUnits } from '../../core/units';
+import { fromMinorUnits, wordNumber } from '../../core/units';
 import {
   lineToleranceMinor,
   type Finding,
@@ -7,6 +6,7 @@ import {
   type ReconciledBill,
   type TriedCause,
 } from '../../schemas/pricing';
+import { moneyInWords } from '../presenters/pricing';
 import type { Fault } from './blame';
 
 type Found = Omit<Finding, 'letter'>;
@@ -23,8 +23,7 @@ const titles: Record<FindingKind, string> = {
 };
 
 const mostCauses = 6;
-const money = (minor: number, { bill }: ReconciledBill) =>
-  wordMoney(fromMinorUnits(minor, bill.currency), bill.currency);
+const money = (minor: number, { bill }: ReconciledBill) => moneyInWords(minor, bill.currency);
 
 /** The finding of one line, with the cause that fits it to the cent. */
 export function findingOfFault(bill: ReconciledBill, fault: Fault, causes: TriedCause[]): Found {

@@ -1,10 +1,9 @@
 import { addMonths } from '../../core/load';
 import type { Schedule } from '../../core/tariff';
-import { fromMinorUnits, wordMoney } from '../../core/units';
 import { lineToleranceMinor, type PricedYear } from '../../schemas/pricing';
 import type { TariffSheetView } from '../../schemas/tariff-sheet';
 import type { Actor } from '../policies/actor';
-import { monthName } from '../presenters/pricing';
+import { moneyInWords, monthName } from '../presenters/pricing';
 import { reactiveCostData, reactiveParts, type ReactiveParts } from '../presenters/reactive-cost';
 import { presentTariffSheet } from '../presenters/tariff-sheet';
 import {
@@ -111,7 +110,7 @@ function referencesOf(schedule: Schedule): string[] {
 
 function toleranceOf({ bills, currency }: PricedYear): string {
   const small = bills.filter(({ findings, differenceMinor }) => findings.length === 0 && differenceMinor);
-  const tolerance = wordMoney(fromMinorUnits(lineToleranceMinor, currency), currency);
+  const tolerance = moneyInWords(lineToleranceMinor, currency);
   const names = small.map(({ name }) => name);
   const head =
     names.length === 0

@@ -16,6 +16,7 @@ import { parseOrThrow } from '../http';
 import { log } from '../log';
 import { invitationLetter, resetLetter } from '../mail/account-letters';
 import { sendLetter } from '../mail/send';
+import { Client } from '../models/Client';
 import { Practice } from '../models/Practice';
 import { Token } from '../models/Token';
 import { User } from '../models/User';
@@ -45,6 +46,11 @@ export async function signedInHome(email: string): Promise<string> {
 /** Name of the practice, for letters and the pages outside the sheet. */
 export async function practiceName(): Promise<string> {
   return (await Practice.findOne())?.name ?? 'this practice';
+}
+
+/** Name of the client a person belongs to. */
+export async function clientNameOf(actor: Actor): Promise<string> {
+  return (actor.clientId === null ? null : await Client.findByPk(actor.clientId))?.name ?? '';
 }
 
 /** Sends a link for a new password where there is such an account; the caller learns nothing. */

@@ -14,6 +14,7 @@ import { canSetAccess, canSetLicence } from '../policies/people';
 import { presentRate } from '../presenters/rate';
 import { presentPerson } from '../presenters/user';
 import { sendInvitation } from './account';
+import { practiceCurrency } from './rates';
 import { endTokens } from './tokens';
 
 const noRights = { view: false, record: false, decide: false, pay: false };
@@ -59,6 +60,12 @@ export async function listPeople(actor: Actor): Promise<PeopleView> {
       .filter((user) => user.role === 'client')
       .map((user) => ({ ...presentPerson(user), client: clientNames.get(user.clientId ?? 0) ?? '' })),
   };
+}
+
+/** What the form of a rate may choose from. */
+export async function rateChoices(): Promise<{ engagements: { id: number; code: string }[]; currency: string }> {
+  const engagements = await Engagement.findAll({ where: { closedAt: null }, order: ['code'] });
+  return { engagements: engagements.map(({ id, code }) => ({ id, code })), currency: await practiceCurrency() };
 }
 
 async function create(input: PersonInput): Promise<User> {

@@ -98,7 +98,9 @@ export function FileList({ code, files, timeZone, goes }: FileListProps) {
       />
       {asked && (
         <Notice title={`Undo ${asked.fileName}?`}>
-          <span>{goes[asked.id] ?? 'Everything it brought in'} goes. The file itself stays and can be kept again.</span>
+          <span>
+            This takes away {goes[asked.id] ?? 'everything it brought in'}. The file itself stays and can be kept again.
+          </span>
           <span className="actions">
             <Button kind="secondary" size="small" busy={busy} onClick={() => void carryOut(undoIntake(asked))}>
               Undo it

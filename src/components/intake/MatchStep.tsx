@@ -24,7 +24,13 @@ export function MatchStep({ intake, preview, actions }: MatchStepProps) {
       id="match"
       number="2"
       title="Match"
-      lead="What each column is taken for, and why. Change any of them; the file is read again at once."
+      lead={
+        <span role="status">
+          {actions.busy
+            ? 'The file is being read again.'
+            : 'What each column is taken for, and why. Change any of them; the file is read again at once.'}
+        </span>
+      }
       foldedTo={kept ? `${formatCount(preview.columns.length, 'column')}, all confirmed.` : undefined}
       reference={<MapWords intake={intake} actions={actions} />}
       result={

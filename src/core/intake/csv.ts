@@ -1,5 +1,6 @@
 import { intakeError } from './errors';
-import { gridCaps, TextGrid } from './grid';
+import { gridCaps, type Grid } from './grid';
+import { PlainTextGrid, QuotedTextGrid } from './text-grid';
 
 /** A list of offsets that grows without boxing. */
 class Offsets {
@@ -28,45 +29,32 @@ function grown(values: Uint32Array): Uint32Array {
 }
 
 /**
- * Splits delimited text into a grid of offsets in one pass: quotes doubled inside quoted cells (RFC 4180), line ends LF, CRLF
- * or CR, line breaks inside quotes, rows of any length.
+ * Splits delimited text into a grid: quotes doubled inside quoted cells (RFC 4180), line ends LF, CRLF or CR, line breaks
+ * inside quotes, rows of any length.
  * @throws {IntakeError} beyond the caps, or when a quote is opened and never closed.
  */
-export function splitDelimited(text: string, delimiter: string, fileName: string): TextGrid {
-  return text.includes('"') ? splitQuoted(text, delimiter, fileName) : splitPlain(text, delimiter, fileName);
+export function splitDelimited(text: string, delimiter: string, fileName: string): Grid {
+  const isPlain = !text.includes('"') && (text.includes('\n') || !text.includes('\r'));
+  return isPlain ? splitPlain(text, delimiter, fileName) : splitQuoted(text, delimiter, fileName);
 }
 
-/** The fast path: no quote anywhere, so every delimiter and line end is one. */
-function splitPlain(text: string, delimiter: string, fileName: string): TextGrid {
-  const mark = delimiter.charCodeAt(0);
-  const length = text.length;
-  // A text that is stored in pieces is laid out flat by its first search, which the caller has made.
-  let cells: Uint32Array = new Uint32Array(Math.max(64, length >> 2));
-  let cellCount = 0;
-  const rows = new Offsets(1024);
-  const ends = new Offsets(1024);
+/** The fast path: every line feed ends a row. */
+function splitPlain(text: string, delimiter: string, fileName: string): PlainTextGrid {
+  const starts = new Offsets(Math.max(64, text.length >> 6));
+  const ends = new Offsets(Math.max(64, text.length >> 6));
   let at = 0;
-  while (at < length) {
-    rows.push(cellCount);
-    if (cellCount === cells.length) cells = grown(cells);
-    cells[cellCount++] = at;
-    let code = 0;
-    for (; at < length; at += 1) {
-      code = text.charCodeAt(at);
-      if (code === mark) {
-        if (cellCount === cells.length) cells = grown(cells);
-        cells[cellCount++] = at + 1;
-      } else if (code === 10 || code === 13) break;
-    }
-    ends.push(at);
-    at += code === 13 && text.charCodeAt(at + 1) === 10 ? 2 : 1;
-    if (rows.length > gridCaps.rows) throw tooLarge(fileName);
+  while (at < text.length) {
+    const feed = text.indexOf('\n', at);
+    const end = feed < 0 ? text.length : feed;
+    starts.push(at);
+    ends.push(end > at && text.charCodeAt(end - 1) === 13 ? end - 1 : end);
+    at = end + 1;
+    if (starts.length > gridCaps.rows) throw tooLarge(fileName);
   }
-  rows.push(cellCount);
-  return new TextGrid(text, cells.subarray(0, cellCount), rows.finish(), null, ends.finish());
+  return new PlainTextGrid(text, delimiter.charCodeAt(0), starts.finish(), ends.finish());
 }
 
-function splitQuoted(text: string, delimiter: string, fileName: string): TextGrid {
+function splitQuoted(text: string, delimiter: string, fileName: string): QuotedTextGrid {
   const mark = delimiter.charCodeAt(0);
   const cells = new Offsets(Math.max(64, text.length >> 2));
   const rows = new Offsets(1024);
@@ -97,7 +85,12 @@ function splitQuoted(text: string, delimiter: string, fileName: string): TextGri
     if (rows.length > gridCaps.rows) throw tooLarge(fileName);
   }
   rows.push(cells.length);
-  return new TextGrid(text, cells.finish(), rows.finish(), lines.finish(), ends.finish());
+  return new QuotedTextGrid(text, {
+    cellStarts: cells.finish(),
+    rowCells: rows.finish(),
+    rowEnds: ends.finish(),
+    lines: lines.finish(),
+  });
 }
 
 /** A quote opens a quoted cell only as the first sign of the cell, blanks and the guard of ="..." apart. */

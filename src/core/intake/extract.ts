@@ -62,11 +62,12 @@ export function extractLong(plan: ColumnPlan): Extraction {
   };
   const explained = columns.find((use) => use.role === 'value');
   const values = columns.filter((use) => valueRoles.has(use.role));
-  const channels = values.map((use): StrandChannel => ({
+  const figures = readColumns(plan, rows, values, extraction);
+  const channels = values.map((use, at): StrandChannel => ({
     role: use.role as IntervalRole,
     measure: use.measure ?? unitMeaning(use.unit ?? '')?.measure ?? 'energy',
     name: use.name,
-    values: readFigures(plan, rows, use.index, factorOf(use), extraction),
+    values: figures[at] ?? new Float64Array(),
   }));
   const marks = readMarks(grid, rows, columnOf(columns, 'quality'), extraction);
   const whole: Strand = {
@@ -89,23 +90,28 @@ export function factorOf(use: ColumnUse, unit: UnitMeaning | null = unitMeaning(
   return (unit?.factor ?? 1) * (use.factor ?? 1);
 }
 
-/** Figures of a column over rows; words that are no blank are collected. */
-function readFigures(
+/** Figures of columns over rows, a row at a time; words that are no blank are collected. */
+function readColumns(
   plan: ColumnPlan,
   rows: Uint32Array,
-  column: number,
-  factor: number,
+  uses: readonly ColumnUse[],
   extraction: Extraction,
-): Float64Array {
+): Float64Array[] {
   const { grid, decimalMark } = plan;
-  const figures = new Float64Array(rows.length);
+  const inOrder = uses
+    .map((use) => ({ index: use.index, factor: factorOf(use), figures: new Float64Array(rows.length) }))
+    .sort((a, b) => a.index - b.index);
   for (let at = 0; at < rows.length; at += 1) {
     const row = rows[at] ?? 0;
-    const figure = grid.number(row, column, decimalMark);
-    figures[at] = factor === 1 ? figure : scaled(figure, factor);
-    if (Number.isNaN(figure)) collectBad(grid, row, column, extraction);
+    for (const { index, factor, figures } of inOrder) {
+      const figure = grid.number(row, index, decimalMark);
+      figures[at] = factor === 1 ? figure : scaled(figure, factor);
+      if (Number.isNaN(figure)) collectBad(grid, row, index, extraction);
+    }
   }
-  return figures;
+  return uses.map(
+    (use) => inOrder.find((column) => column.index === use.index)?.figures ?? new Float64Array(rows.length),
+  );
 }
 
 /** Keeps the place of a cell that is neither figure nor blank. */
@@ -193,7 +199,8 @@ function splitChannels(plan: ColumnPlan, whole: Strand, value: ColumnUse, extrac
     const rows = Uint32Array.from(positions, (at) => whole.rows[at] ?? 0);
     const pick = (source: Float64Array | null): Float64Array | null =>
       source && Float64Array.from(positions, (at) => source[at] ?? Number.NaN);
-    const values = readFigures(plan, rows, value.index, channel.factor * (value.factor ?? 1), extraction);
+    const [figures = new Float64Array()] = readColumns(plan, rows, [{ ...value, unit: undefined }], extraction);
+    const values = figures.map((figure) => scaled(figure, channel.factor));
     return {
       walls: pick(whole.walls) ?? new Float64Array(),
       offsets: pick(whole.offsets),

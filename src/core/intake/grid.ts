@@ -1,4 +1,4 @@
-import { parseNumberAt, parseNumberText } from './numbers';
+import { parseNumberText } from './numbers';
 import type { StampScanner } from './stamps';
 
 /** Most rows, columns and characters of a cell that a file may have. */
@@ -19,73 +19,6 @@ export interface Grid {
   scan(row: number, column: number, scanner: StampScanner): boolean;
   /** Number of the row in the file as people see it, 1 is the first. */
   rowNumber(row: number): number;
-}
-
-/** A grid over delimited text: cells are offsets into the text and are cut out only when asked for. */
-export class TextGrid implements Grid {
-  readonly rows: number;
-
-  constructor(
-    readonly source: string,
-    /** Beginning of every cell; the cell ends before the next one's beginning less one (its delimiter). */
-    private readonly cellStarts: Uint32Array,
-    /** First cell of every row, and one past the last cell of the last row. */
-    private readonly rowStarts: Uint32Array,
-    /** Line of the file each row begins on, or null if rows and lines agree. */
-    private readonly lines: Uint32Array | null,
-    private readonly rowEnds: Uint32Array,
-  ) {
-    this.rows = rowStarts.length - 1;
-  }
-
-  width(row: number): number {
-    const cells = (this.rowStarts[row + 1] ?? 0) - (this.rowStarts[row] ?? 0);
-    return cells === 1 && this.text(row, 0) === '' ? 0 : cells;
-  }
-
-  /** Beginning of a cell in the source, or -1 if the row has no such cell. */
-  start(row: number, column: number): number {
-    const cell = (this.rowStarts[row] ?? 0) + column;
-    return cell < (this.rowStarts[row + 1] ?? 0) ? (this.cellStarts[cell] ?? -1) : -1;
-  }
-
-  /** One past the last character of a cell that exists. */
-  end(row: number, column: number): number {
-    const next = (this.rowStarts[row] ?? 0) + column + 1;
-    return next < (this.rowStarts[row + 1] ?? 0) ? (this.cellStarts[next] ?? 0) - 1 : (this.rowEnds[row] ?? 0);
-  }
-
-  text(row: number, column: number): string {
-    const start = this.start(row, column);
-    if (start < 0) return '';
-    const cell = this.source.slice(start, this.end(row, column)).trim();
-    if (cell.startsWith('"') && cell.endsWith('"') && cell.length > 1) {
-      return cell.slice(1, -1).replaceAll('""', '"').trim();
-    }
-    // A formula that only protects leading noughts, ="0012", is the text inside.
-    const guarded = /^="(.*)"$/.exec(cell);
-    return guarded ? (guarded[1] ?? '') : cell;
-  }
-
-  figureText(row: number, column: number): string {
-    return this.text(row, column);
-  }
-
-  number(row: number, column: number, decimalMark: '.' | ','): number {
-    const start = this.start(row, column);
-    if (start < 0) return Number.NaN;
-    const quick = parseNumberAt(this.source, start, this.end(row, column), decimalMark === ',' ? 44 : 46);
-    return Number.isNaN(quick) ? parseNumberText(this.text(row, column), decimalMark) : quick;
-  }
-
-  scan(row: number, column: number, scanner: StampScanner): boolean {
-    const start = this.start(row, column);
-    return start >= 0 && scanner.scan(this.source, start, this.end(row, column));
-  }
-
-  rowNumber(row: number): number {
-    return this.lines ? (this.lines[row] ?? row + 1) : row + 1;
-  }
 }
 
 /** A cell of a spreadsheet: text (dates already as ISO text), a number, or nothing. */

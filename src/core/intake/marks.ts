@@ -96,7 +96,7 @@ function countMidnights(walls: Float64Array, stepMinutes: number): { ownDay: num
   let nextDay = 0;
   for (let at = 1; at < walls.length; at += 1) {
     const wall = walls[at] ?? Number.NaN;
-    if (wall % 1440 !== 0) continue;
+    if (!Number.isInteger(wall / 1440)) continue;
     const step = wall - (walls[at - 1] ?? Number.NaN);
     if (step === stepMinutes) nextDay += 1;
     else if (step === stepMinutes - 1440) ownDay += 1;
@@ -111,5 +111,7 @@ export function beginnings(
   marks: NonNullable<StampStyle['marks']>,
 ): Float64Array {
   if (marks === 'begin') return walls;
-  return walls.map((wall) => (marks === 'own-day-end' && wall % 1440 === 0 ? wall + 1440 : wall) - stepMinutes);
+  return walls.map(
+    (wall) => (marks === 'own-day-end' && Number.isInteger(wall / 1440) ? wall + 1440 : wall) - stepMinutes,
+  );
 }

@@ -44,13 +44,17 @@ export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, f
   let readings = 0;
   const offGrid: number[] = [];
   for (const { strand, timeline } of placed) {
-    timeline.utc.forEach((minute, at) => {
-      if (Number.isNaN(minute)) return;
+    const { utc } = timeline;
+    for (let at = 0; at < utc.length; at += 1) {
+      const minute = utc[at] ?? Number.NaN;
+      if (Number.isNaN(minute)) continue;
       readings += 1;
-      if ((minute - phase) % stepMinutes !== 0) return void offGrid.push(strand.rows[at] ?? 0);
-      if (minute < least) least = minute;
-      if (minute > most) most = minute;
-    });
+      if (!Number.isInteger((minute - phase) / stepMinutes)) offGrid.push(strand.rows[at] ?? 0);
+      else {
+        if (minute < least) least = minute;
+        if (minute > most) most = minute;
+      }
+    }
   }
   const length = (most - least) / stepMinutes + 1;
   checkSpan({ readings, length, offGrid, least, most, grid, fileName, stepMinutes });
@@ -88,11 +92,17 @@ export function rowsInWords(grid: RowNumbers, rows: readonly number[]): string {
   return `${rows.length === 1 ? 'row' : 'rows'} ${shown.join(', ')}${rows.length > 6 ? ' …' : ''}`;
 }
 
+/** Minutes after a multiple of the step at which most readings begin. */
 function phaseOf(placed: readonly PlacedStrand[], stepMinutes: number): number {
+  const first = placed[0]?.timeline.utc.find((minute) => !Number.isNaN(minute)) ?? 0;
+  const isRegular = placed.every(({ timeline }) =>
+    timeline.utc.every((minute) => Number.isNaN(minute) || Number.isInteger((minute - first) / stepMinutes)),
+  );
+  if (isRegular) return first % stepMinutes;
   const counts = new Map<number, number>();
   for (const { timeline } of placed) {
-    for (let at = 0; at < timeline.utc.length; at += 1) {
-      const phase = (timeline.utc[at] ?? Number.NaN) % stepMinutes;
+    for (const minute of timeline.utc) {
+      const phase = minute % stepMinutes;
       if (!Number.isNaN(phase)) counts.set(phase, (counts.get(phase) ?? 0) + 1);
     }
   }
@@ -155,7 +165,7 @@ function layStrand(
     // A file that runs backwards was turned round; the first reading of the file still wins.
     const at = strand.isTurned ? count - 1 - turn : turn;
     const minute = timeline.utc[at] ?? Number.NaN;
-    if (Number.isNaN(minute) || (minute - phase) % stepMinutes !== 0) continue;
+    if (!Number.isInteger((minute - phase) / stepMinutes)) continue;
     const mark = strand.quality?.[at] ?? grades.measured;
     if (mark === grades.missing || !hasFigure(sources, at)) continue;
     const slot = (minute - leastMinute) / stepMinutes;

@@ -1,8 +1,12 @@
 import { intakeStep } from '@/schemas/intake';
 import { endpoint, parseOrThrow, readJson } from '@/server/http';
+import { rowId } from '@/server/row-id';
 import { undoIntake } from '@/server/services/intake-keep';
+import { openIntake } from '@/server/services/intake-guard';
 
 export const POST = endpoint(async ({ actor, params, request }) => {
+  const id = rowId(params.id);
+  await openIntake(actor, id);
   const { version } = parseOrThrow(intakeStep, await readJson(request));
-  return Response.json(await undoIntake(actor, Number(params.id), version));
+  return Response.json(await undoIntake(actor, id, version));
 });

@@ -6,7 +6,7 @@ import type { IntakeView } from '../../schemas/intake';
 import { packCarpet } from '../charts/carpet';
 import { CarpetFigure } from '../charts/CarpetChart';
 import { FindingSlip } from '../ui/FindingSlip';
-import { formatCount, formatDateTime, formatNumber, formatPeriod, formatQuantity } from '../ui/format';
+import { formatCount, formatDateTime, formatNumber, formatPeriod, formatQuantity, formatTime } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { ResultSums, type SumRow } from '../ui/ResultSums';
 import { gapInWords, gapMarks, longestGaps } from './carpet-marks';
@@ -64,11 +64,13 @@ function Picture({ intake, report }: { intake: IntakeView; report: IntakeReport 
     report.missing === 0
       ? 'Every interval of the span has its reading.'
       : `${formatCount(report.missing, 'reading')} ${report.missing === 1 ? 'is' : 'are'} missing, in ${formatCount(report.gaps?.length ?? 1, 'gap')}.`;
+  const edge =
+    formatTime(report.firstMs, timeZone) === '00:00' ? '' : ' Hatched on the first day: before the file begins.';
   return (
     <CarpetFigure
       {...packCarpet({ unit: 'kW', ...data, marks: gapMarks(report.gaps ?? [], timeZone) })}
       finding={finding}
-      reading="Mean kW of each interval. The stronger the ink, the higher."
+      reading={`Mean kW of each interval. The stronger the ink, the higher.${edge}`}
       fileName={`${intake.engagement.code}-${intake.fileName.replace(/\W+/g, '-')}`}
     />
   );

@@ -20,7 +20,9 @@ export function ReadStep({ intake, preview, folded }: { intake: IntakeView; prev
   const { headerRow, firstRow, lastRow } = preview;
   const head = headerRow === null ? 'No row of names' : `Names in row ${formatNumber(headerRow)}`;
   const what = preview.kind === 'bills' ? 'bills' : 'readings';
-  const lead = `${head}, ${what} from row ${formatNumber(firstRow)} to row ${formatNumber(lastRow)}.`;
+  const byFormat = preview.format === 'espi' || preview.format === 'nem12';
+  const rows = `${head}, ${what} from row ${formatNumber(firstRow)} to row ${formatNumber(lastRow)}.`;
+  const lead = byFormat ? 'The first rows as they stand; the format itself says what each means.' : rows;
   return (
     <SheetPart
       id="read"

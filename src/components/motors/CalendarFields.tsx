@@ -53,9 +53,8 @@ export function CalendarFields() {
     <fieldset>
       <legend>Shaft load over the week</legend>
       <p className="section-lead">
-        Hours are local clock hours; 22 to 6 runs over midnight. Hours that no rule names, and a
-        load of 0, are standstill. Where two
-        rules meet, the later one holds.
+        Hours are local clock hours; 22 to 6 runs over midnight. Hours that no rule names, and a load of 0, are
+        standstill. Where two rules meet, the later one holds.
       </p>
       {rules.fields.map((rule, index) => (
         <RuleRow

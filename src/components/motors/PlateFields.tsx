@@ -16,8 +16,6 @@ export function useEntry() {
 /** What stands on the plate, in the plate's own words and units. */
 export function PlateFields() {
   const entry = useEntry();
-  const { watch } = useFormContext<MotorDraft>();
-  const unit = watch('plate.outputUnit');
   return (
     <fieldset>
       <legend>As on the plate</legend>
@@ -25,7 +23,7 @@ export function PlateFields() {
         <Field {...entry('name')} hint="As on the one-line diagram: M-1" />
         <Field {...entry('drives')} hint="Raw mill, compressor, fan" />
         <Field {...entry('plate.source')} hint="Photograph of the plate, data sheet" />
-        <div className="grid grid-cols-[1fr_88px] gap-2">
+        <div className="grid grid-cols-[1fr_88px] items-end gap-2">
           <NumberField {...entry('plate.output')} />
           <SelectField
             {...entry('plate.outputUnit')}
@@ -40,11 +38,7 @@ export function PlateFields() {
         <NumberField {...entry('plate.voltageV')} unit="V" />
         <NumberField {...entry('plate.currentA')} unit="A" />
         <NumberField {...entry('plate.powerFactor')} hint="0.8, 0.9 or 1" />
-        <NumberField
-          {...entry('plate.efficiencyPercent')}
-          unit="%"
-          hint={`At ${unit || 'rated'} output on the plate`}
-        />
+        <NumberField {...entry('plate.efficiencyPercent')} unit="%" hint="At rated output" />
         <NumberField {...entry('plate.frequencyHz')} unit="Hz" />
         <NumberField {...entry('plate.speedRpm')} unit="rpm" />
         <NumberField {...entry('plate.poles')} hint="Speed or poles, either will do" />

@@ -169,7 +169,7 @@ function Form(props: PlanFormProps) {
         <PlanFields motors={motors} currency={currency} />
         {stored && (
           <StaleCompare
-            what={`Plan ${stored.name}`}
+            what={stored.name}
             differences={differences}
             onLoadTheirs={loadTheirs}
             onSaveMine={() => void submit(stored.version)}

@@ -108,9 +108,9 @@ function Panel({ code, currency, jobId: firstId, fingerprint }: SearchPanelProps
     <div className="search-panel">
       {job?.state === 'running' ? (
         <Progress
-          title="Pricing settings of the fields over the year"
+          title="Pricing settings over the year; more are planned while better ones are found"
           done={job.done}
-          total={job.planned ?? undefined}
+          total={job.planned !== null && job.planned > job.done ? job.planned : undefined}
           units="settings"
           secondsLeft={secondsLeft}
           goesOn

@@ -6,7 +6,7 @@ import type { CashFlowData } from '../charts/CashFlowChart';
 import type { CostCurveData } from '../charts/CostCurveChart';
 import type { PaybackData } from '../charts/PaybackChart';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
-import { formatAmount, formatDay, formatMonth, formatNumber } from '../ui/format';
+import { formatAmount, formatDay, formatNumber } from '../ui/format';
 import { amperes, billName, groupNames, hoursWords } from './words';
 
 interface Entry {
@@ -106,8 +106,7 @@ export function billsChart(year: YearView, plan: PlanView): BillsBeforeAfterData
     planName: plan.name,
     what: 'demand and reactive lines',
     bills: year.standing.bills.map((bill, index) => {
-      const lastDay = addDays(bill.to, -1);
-      const [month = '', inYear] = formatMonth(lastDay).split(' ');
+      const [month = '', inYear] = billName(bill).split(' ');
       return {
         label: month,
         year: index === 0 || month === 'Jan' ? inYear : undefined,
@@ -129,8 +128,14 @@ export function billLines(before: BillView, after: BillView, currency: string, p
       value: minor(line.amount),
       why: {
         title: `Why ${formatAmount(minor(line.amount), currency)} ${currency}: ${line.label}, bill of ${billName(bill)}`,
-        steps: [{ label: line.explanation, result: formatAmount(minor(line.amount), currency), kind: 'equals' }],
-        clause: line.clause ? { text: line.label, cite: `clause ${line.clause}` } : undefined,
+        steps: [
+          {
+            label: line.explanation,
+            result: formatAmount(minor(line.amount), currency),
+            kind: 'equals',
+            source: line.clause ? `Clause ${line.clause}` : undefined,
+          },
+        ],
       },
     };
   };

@@ -1,4 +1,5 @@
-import { addDays } from '../../core/load';
+import { dayNumber, isoDate } from '../../core/load';
+import type { AssumedValue } from '../../schemas/motor';
 import type { ChargeGroup, PlanField, PlanView, YearView } from '../../schemas/plan';
 import { formatMajor, formatMonth, formatNumber, formatQuantity, formatSpelled } from '../ui/format';
 
@@ -12,8 +13,9 @@ export const groupNames: [ChargeGroup, string][] = [
   ['tax', 'Tax'],
 ];
 
-/** The name people give a bill: the month of its last day. */
-export const billName = (bill: { to: string }) => formatMonth(addDays(bill.to, -1));
+/** The name people give a bill: the month of its middle day. */
+export const billName = ({ from, to }: { from: string; to: string }) =>
+  formatMonth(isoDate(Math.floor((dayNumber(from) + dayNumber(to) - 1) / 2)));
 
 export const amperes = (fieldA: number) => formatQuantity(fieldA, 'A', { upTo: 1 });
 
@@ -96,11 +98,14 @@ export function turningWords(year: YearView, plan: PlanView): { turn: string; le
   }));
   const least = savings.reduce((a, b) => (b.saved < a.saved ? b : a), savings[0] ?? { name: '', saved: 0 });
   if (savings.length === 0) return { turn, least: null };
-  const words =
-    least.saved <= 0
-      ? `${least.name}: the bill rises by ${money(-least.saved)}.`
-      : `${least.name}: ${money(least.saved)} saved.`;
-  return { turn, least: words };
+  return { turn, least: leastWords(least, money) };
+}
+
+function leastWords(least: { name: string; saved: number }, money: (amount: number) => string): string {
+  if (Math.abs(least.saved) < 0.5) return `${least.name}: nothing. What sets that bill does not move with the fields.`;
+  return least.saved < 0
+    ? `${least.name}: the bill rises by ${money(-least.saved)}.`
+    : `${least.name}: ${money(least.saved)} saved.`;
 }
 
 /** What the search found, in a sentence. */
@@ -126,7 +131,10 @@ export function billsFinding(year: YearView, plan: PlanView): { finding: string;
   const many = fallen === saved.length ? 'Every bill falls' : `${fallen} of ${saved.length} bills fall`;
   const finding =
     fallen === 0 || !peak ? 'No bill falls.' : `${many}; ${billName(peak)} most, by ${money(saved[most] ?? 0)}.`;
-  return { finding, reading: `Solid copper: what remains. Hatched verdigris: what ${plan.name} takes away.` };
+  const energy = plan.groupTotals.energy - year.standing.groupTotals.energy;
+  const moved = `the energy lines ${energy < 0 ? 'fall' : 'rise'} by ${money(Math.abs(energy))} a year`;
+  const reading = `Solid copper: what remains of demand and reactive lines. Hatched verdigris, figure above: what ${plan.name} takes away; ${moved}.`;
+  return { finding, reading };
 }
 
 /** What the cumulative cash says of a plan. */
@@ -138,4 +146,27 @@ export function paybackFinding(plan: PlanView): string {
   return plan.paybackWords === 'at once'
     ? `It costs nothing to do; ${after}.`
     : `Paid back in ${plan.paybackWords}; ${after}.`;
+}
+
+/** What the losses do to the saving: how much of the gain they take back, or that they fall too. */
+export function lossesFinding(year: YearView, plan: PlanView): string {
+  const money = (amount: number) => formatMajor(Math.abs(amount), year.currency, { whole: true });
+  const losses = plan.groupTotals.energy - year.standing.groupTotals.energy;
+  const gained = plan.saving + losses;
+  if (losses <= 0) return `The motors lose less too: ${money(losses)} of energy a year.`;
+  if (gained <= 0) return `Extra losses of ${money(losses)} a year bring nothing in return.`;
+  return `Extra losses take back ${money(losses)} of the ${money(gained)} gained.`;
+}
+
+/** The assumed values that matter to the kvar in hand, in one sentence; null where none does. */
+export function assumedSentence(plan: PlanView): string | null {
+  const swing = ({ kvarEffect }: AssumedValue) => (kvarEffect ? Math.abs(kvarEffect[1] - kvarEffect[0]) : 0);
+  const matter = plan.assumed.filter((one) => swing(one) >= 1).sort((a, b) => swing(b) - swing(a));
+  const [widest] = matter;
+  if (!widest) return null;
+  const names = matter.map(
+    (one) => `${one.label.replace(/^([A-Z])(?=[a-z]{2})/, (letter) => letter.toLowerCase())} of ${one.motorName}`,
+  );
+  const most = formatQuantity(swing(widest), 'kvar');
+  return `Assumed, not read from a plate: ${new Intl.ListFormat('en').format(names)}. Over its range the first moves the kvar in hand by ${most}.`;
 }

@@ -28,17 +28,19 @@ export function StaleCompare({ what, differences, onLoadTheirs, onSaveMine, busy
           : 'Both say the same. Save again to confirm, or load what is stored.'}
       </span>
       {differences.length > 0 && (
-        <LedgerTable
-          label={`Differences in ${what}`}
-          columns={[
-            { key: 'entry', head: 'Entry' },
-            { key: 'mine', head: 'Yours', align: 'right', strong: true },
-            { key: 'theirs', head: 'Stored', align: 'right' },
-          ]}
-          rows={differences.map(({ label, mine, theirs }) => ({ id: label, cells: { entry: label, mine, theirs } }))}
-        />
+        <div className="w-full max-w-[640px]">
+          <LedgerTable
+            label={`Differences in ${what}`}
+            columns={[
+              { key: 'entry', head: 'Entry' },
+              { key: 'mine', head: 'Yours', align: 'right', strong: true, wrap: true },
+              { key: 'theirs', head: 'Stored', align: 'right', wrap: true },
+            ]}
+            rows={differences.map(({ label, mine, theirs }) => ({ id: label, cells: { entry: label, mine, theirs } }))}
+          />
+        </div>
       )}
-      <div className="actions actions-inline">
+      <div className="actions actions-inline w-full">
         <Button kind="secondary" onClick={onLoadTheirs}>
           Load what is stored
         </Button>

@@ -86,7 +86,7 @@ export async function removePlan({ plan, opened }: OpenPlan, { version }: { vers
 }
 
 function refuseStale(plan: Plan, { engagement }: OpenEngagement, version: number, mine: unknown): void {
-  if (plan.version !== version) throw staleVersion(`Plan ${plan.name}`, mine, storedPlan(plan, engagement.currency));
+  if (plan.version !== version) throw staleVersion(plan.name, mine, storedPlan(plan, engagement.currency));
 }
 
 /** The columns of a row, after every check that can refuse it. */

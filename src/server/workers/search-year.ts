@@ -14,9 +14,10 @@ export function searchYear({ basis, stepA, fingerprint, port }: SearchTask): Sea
     plant: { load: basis.load, motors: motors.map((motor) => ({ ...motor, stepA })) },
     totals: (load) => pricing.totals(load),
     onProgress: ({ priced, planned }) => {
-      if (priced % tellEvery === 0 || priced === planned) port.postMessage({ done: priced, planned });
+      if (priced % tellEvery === 0) port.postMessage({ done: priced, planned });
     },
   });
+  port.postMessage({ done: found.priced, planned: found.priced });
   const saving = found.standingCost - found.cost;
   return {
     fields: basis.motors.map(({ id, name, fieldTodayA }, index) => ({

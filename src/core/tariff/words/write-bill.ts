@@ -1,16 +1,15 @@
 import type { QuantityEntry } from '../model';
-import { wordNumber } from '../../units';
 import type { BillState } from '../price/bill-state';
 import { lastCharge, placeValue } from '../price/evaluate-charges';
 import type { IntervalSource } from '../price/interval-source';
-import { inPlace, expressionsOf, expressionsOfQuantity } from '../price/text-plan';
+import { expressionsOf, expressionsOfQuantity } from '../price/text-plan';
 import { evaluateIn, type Run } from '../price/run';
-import type { PricedBill, PricedInput, PricedLine, PricedQuantity } from '../types';
+import type { PricedBill, PricedLine, PricedQuantity } from '../types';
 import { explainLine } from './charge-words';
-import { expressionWords } from './price-words';
+import { writeInputs } from './input-words';
 import { estimatedSlots } from './estimated';
 import { explainQuantity } from './quantity-words';
-import { withUnit, type Speech } from './speak';
+import type { Speech } from './speak';
 
 /** Writes the bills of a run, beside the run at unity power factor. */
 export function writeBills(run: Run, unity: Run, source: IntervalSource | undefined): PricedBill[] {
@@ -47,7 +46,7 @@ function clean(difference: number): number {
   return Math.round(difference * 1e6) / 1e6 + 0;
 }
 
-function noteStraddle({ plan, pieces, notes }: BillState, { schedule }: Run): void {
+function noteStraddle({ pieces, notes }: BillState, { schedule }: Run): void {
   const texts = [...new Set(pieces.map(({ piece }) => piece.text.text))];
   if (texts.length > 1)
     notes?.add(
@@ -60,7 +59,6 @@ function noteStraddle({ plan, pieces, notes }: BillState, { schedule }: Run): vo
     notes?.add(
       `The period lies in ${pieces.length} seasons or rider months: divided by ${schedule.straddle === 'intervals' ? 'intervals' : 'days'}.`,
     );
-  if (plan.period.from < (schedule.inForce ?? '')) notes?.add('The period begins before the schedule is in force.');
 }
 
 function writeQuantities(speech: Speech, estimated: ReadonlySet<number>): Record<string, PricedQuantity> {
@@ -96,57 +94,6 @@ function writeQuantity(
 function usesOf(quantity: QuantityEntry): string[] {
   const names = expressionsOfQuantity(quantity).flatMap((expression) => expression.names);
   return [...new Set(quantity.definition.kind === 'value' ? [quantity.definition.at, ...names] : names)];
-}
-
-function writeInputs(speech: Speech): Record<string, PricedInput> {
-  const { state } = speech;
-  const { contract, rates } = state.piece.text.text;
-  const written: [string, PricedInput][] = [];
-  for (const { name, slot, unit, label, clause } of contract) {
-    if (state.known[slot] !== 1) continue;
-    const value = state.values[slot]!;
-    const words =
-      unit === 'date'
-        ? String(value).replace(/(\d{4})(\d{2})(\d{2})/, '$1-$2-$3')
-        : withUnit(wordNumber(value), unit === 'flag' ? '' : unit);
-    written.push([
-      name,
-      {
-        value,
-        unit,
-        ...(label !== undefined && { label }),
-        ...(clause !== undefined && { clause }),
-        explanation: `${name} = ${words}, from the contract.`,
-        uses: [],
-      },
-    ]);
-  }
-  for (const { name, slot, place } of rates) {
-    if (state.known[slot] !== 1) continue;
-    const expression =
-      place.kind === 'same'
-        ? place.expression
-        : place.kind === 'seasons'
-          ? place.bySeason[state.piece.season]!
-          : place.byMonth.get(state.piece.month)!;
-    const when =
-      place.kind === 'months'
-        ? `, the rider of ${state.piece.month}`
-        : place.kind === 'seasons'
-          ? `, in ${state.piece.text.text.seasons?.names[state.piece.season]}`
-          : ', a rate of the schedule';
-    const uses = [...new Set(inPlace(place).flatMap((one) => one.names))];
-    written.push([
-      name,
-      {
-        value: state.values[slot]!,
-        unit: '',
-        explanation: `${name} = ${expressionWords(speech, expression)}${when}.`,
-        uses,
-      },
-    ]);
-  }
-  return Object.fromEntries(written);
 }
 
 function writeLine(speech: Speech, line: number, reactivePart: number, estimated: ReadonlySet<number>): PricedLine {

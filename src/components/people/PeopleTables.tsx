@@ -37,7 +37,11 @@ function OpenButton({ person, opened, toggle }: { person: PersonView; opened: bo
 
 function AccessCell({ person }: { person: PersonView }) {
   const tone = { open: undefined, invited: 'warn', closed: 'quiet' }[person.access];
-  return <td className={`left rights-column ${tone ?? ''}`}>{accessWords[person.access]}</td>;
+  return (
+    <td className={`left rights-column ${tone ?? ''}`} data-name="Account">
+      {accessWords[person.access]}
+    </td>
+  );
 }
 
 export interface StaffRow extends PersonView {
@@ -76,7 +80,7 @@ function Staff({ staff, engagements, currency, today, me }: StaffTableProps) {
   const { opened, toggle } = useOpened();
   return (
     <div className="ledger-scroll" role="region" aria-label="People of the practice" tabIndex={0}>
-      <table className="ledger ledger-roomy">
+      <table className="ledger ledger-roomy ledger-stack">
         <thead>
           <tr>
             {['Name', 'E-mail', 'Role', 'Licence'].map((head) => (
@@ -105,10 +109,16 @@ function Staff({ staff, engagements, currency, today, me }: StaffTableProps) {
                   <th scope="row" className="left strong">
                     {person.name}
                   </th>
-                  <td className="left">{person.email}</td>
-                  <td className="left">{person.role}</td>
-                  <td className={person.licence ? 'left' : 'left quiet'}>{licenceWords(person)}</td>
-                  <td className={rate ? undefined : 'warn'}>
+                  <td className="left" data-name="E-mail">
+                    {person.email}
+                  </td>
+                  <td className="left" data-name="Role">
+                    {person.role}
+                  </td>
+                  <td className={person.licence ? 'left' : 'left quiet'} data-name="Licence">
+                    {licenceWords(person)}
+                  </td>
+                  <td className={rate ? undefined : 'warn'} data-name={`Rate today, ${currency}/h`}>
                     {rate ? formatAmount(rate.perHourMinor, rate.currency) : 'no rate'}
                   </td>
                   <AccessCell person={person} />
@@ -150,7 +160,7 @@ function ClientRows({ people, mayManage, me }: ClientPeopleProps) {
   const heads = ['Name', 'E-mail', ...(withClient ? ['Client'] : []), 'May', 'Account'];
   return (
     <div className="ledger-scroll" role="region" aria-label="People of clients" tabIndex={0}>
-      <table className="ledger ledger-roomy">
+      <table className="ledger ledger-roomy ledger-stack">
         <thead>
           <tr>
             {heads.map((head) => (
@@ -172,15 +182,19 @@ function ClientRows({ people, mayManage, me }: ClientPeopleProps) {
                 <th scope="row" className="left strong">
                   {person.name}
                 </th>
-                <td className="left">{person.email}</td>
+                <td className="left" data-name="E-mail">
+                  {person.email}
+                </td>
                 {withClient && (
-                  <td className="left">
+                  <td className="left" data-name="Client">
                     <a className="text-link" href={`/clients/${person.clientId}`}>
                       {person.client}
                     </a>
                   </td>
                 )}
-                <td className="left wrap may">{rightsInWords(person.rights)}</td>
+                <td className="left wrap may" data-name="May">
+                  {rightsInWords(person.rights)}
+                </td>
                 <AccessCell person={person} />
                 {mayManage && (
                   <td>

@@ -31,6 +31,7 @@ function stakeWords({ stake }: WaitingView): string {
 
 function lateWords(row: WaitingView): string {
   if (row.dateIs === 'since') return '';
+  if (row.group !== 'overdue') return ` on ${formatDate(row.date)}`;
   return row.days === 0 ? ', due today' : `: ${formatCount(row.days, 'day')} late`;
 }
 

@@ -1,3 +1,4 @@
+import { codedChannel } from './channel-codes';
 import type { IntervalRole, Measure } from './types';
 import { isForeignUnit, unitOfHeader, type UnitMeaning } from './units';
 import { mentions, namesPowerFactor } from './words';
@@ -28,6 +29,8 @@ export function channelMeaning(name: string, unitGiven: UnitMeaning | null = nul
     return { role: 'power-factor', unit: null, measure: 'energy', why: 'Named a power factor', isPlain: true };
   if (!unit && isForeignUnit(name)) return ignored('Its unit is none of power or energy');
   const measure = unit?.measure ?? 'energy';
+  const coded = codedChannel(name);
+  if (coded && fitsUnit(coded.role, unit)) return { ...coded, unit, measure, isPlain: true };
   const isReactive = unit
     ? unit.quantity === 'reactive'
     : mentions(name, 'reactive') || mentions(name, 'lagging') || mentions(name, 'leading');
@@ -45,12 +48,16 @@ export function channelMeaning(name: string, unitGiven: UnitMeaning | null = nul
     : { role: 'active', unit, measure, why: named, isPlain: unit !== null };
 }
 
+/** A code counts only where the unit, if there is one, is of its quantity. */
+function fitsUnit(role: IntervalRole, unit: UnitMeaning | null): boolean {
+  if (!unit || role === 'ignore') return true;
+  return unit.quantity === (role.startsWith('reactive') ? 'reactive' : 'active');
+}
+
 /** Meter makers' words for the sense of reactive energy: lag and lead are plain, delivered and received depend on the viewer. */
 function reactiveDirection(name: string): Pick<ChannelMeaning, 'role' | 'why' | 'isPlain'> {
   if (mentions(name, 'lagging')) return { role: 'reactive-lagging', why: 'Named lagging', isPlain: true };
   if (mentions(name, 'leading')) return { role: 'reactive-leading', why: 'Named leading', isPlain: true };
-  if (/\b(q2|q3)\b/i.test(name.replaceAll('_', ' ')))
-    return { role: 'ignore', why: 'A quadrant of exported active energy', isPlain: true };
   if (mentions(name, 'export') || /\b(out|lieferung|abgabe|negative|neg)\b/i.test(name)) {
     return {
       role: 'reactive-leading',

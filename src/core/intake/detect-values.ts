@@ -95,14 +95,22 @@ function markRegister(candidate: Candidate): void {
   };
 }
 
+/** Extremes within an interval; `15 min` is a length. */
+const extremeWords = /\bmax(imum)?\b|(?<!\d\s?)\bmin(imum)?\b|\bpeak (kw|demand)\b/i;
+
 /** The energy drawn: energy before power before registers; parts of a total are not counted beside it. */
 function chooseActive(input: ValueInput, used: Candidate[]): void {
   const active = used.filter((candidate) => candidate.meaning.role === 'active');
   const rank = { energy: 0, power: 1, register: 2 };
   const best = Math.min(...active.map((candidate) => rank[candidate.meaning.measure]));
-  const chosen = active.filter((candidate) => rank[candidate.meaning.measure] === best);
+  const alike = active.filter((candidate) => rank[candidate.meaning.measure] === best);
+  const averages = alike.filter((candidate) => !extremeWords.test(candidate.profile.name));
+  const chosen = averages.length > 0 ? averages : alike;
   for (const candidate of active.filter((other) => !chosen.includes(other))) {
-    set(input, candidate, 'ignore', [[true, `The ${best === 0 ? 'energy' : 'power'} column says the same`]]);
+    const why = alike.includes(candidate)
+      ? 'An extreme within the interval, not its energy'
+      : `The ${best === 0 ? 'energy' : 'power'} column says the same`;
+    set(input, candidate, 'ignore', [[true, why]]);
   }
   const total =
     chosen.length > 2

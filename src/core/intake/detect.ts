@@ -1,4 +1,5 @@
 import { profileColumns, sampleRows, shareOf, withoutFooters, type ColumnProfile } from './cells';
+import { codedChannel } from './channel-codes';
 import type { TableBlock } from './block';
 import { findChannels } from './detect-values';
 import { findTimeColumns } from './detect-time';
@@ -147,7 +148,7 @@ function findLabels(profiles: readonly ColumnProfile[], findings: Map<number, Ro
       isText && !isUnits && words.filter((word) => unitOfHeader(word) !== null).length * 2 >= words.length;
     const known = words.filter((word) => qualityOf(word) !== null).length;
     const isQuality = mentions(profile.name, 'quality') ? known * 2 >= words.length : known === words.length && isText;
-    if (isUnits)
+    if (isUnits && !(isQuality && mentions(profile.name, 'quality')))
       findings.set(profile.index, {
         role: 'unit',
         tests: [[true, `Every cell is a unit: ${words.slice(0, 4).join(', ')}`]],
@@ -169,7 +170,7 @@ function findLabels(profiles: readonly ColumnProfile[], findings: Map<number, Ro
 }
 
 const namesChannel = (word: string): boolean =>
-  mentions(word, 'active') || mentions(word, 'reactive') || mentions(word, 'export');
+  codedChannel(word) !== null || mentions(word, 'active') || mentions(word, 'reactive') || mentions(word, 'export');
 
 function qualityTests(profile: ColumnProfile, known: number): Test[] {
   return [

@@ -123,6 +123,7 @@ export function readPlanned(planned: IntervalPlan, options: ReadOptions): Interv
       style: plan.hints,
       given,
       isRegister,
+      isWide: plan.layout === 'wide',
     }),
   }));
   const first = placed[0]?.timeline;

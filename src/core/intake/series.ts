@@ -76,6 +76,13 @@ export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, f
   };
   const differing: number[] = [];
   for (const one of placed) layStrand(one, least, phase, gridded, differing);
+  if (differing.length > Math.max(12, readings * 0.2)) {
+    throw intakeError(
+      `${differing.length} of ${readings} readings name an interval that another reading fills with another figure.`,
+      `${fileName}, ${rowsInWords(grid, differing)}`,
+      'The file may hold several meters or channels: say in the column map which column names them, and pick one.',
+    );
+  }
   if (differing.length > 0) {
     notes.push({
       code: 'duplicates-differ',

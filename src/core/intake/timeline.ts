@@ -25,6 +25,8 @@ interface TimelineOptions {
   given: StampStyle;
   /** The figures are register readings: a stamp is the instant of the reading. */
   isRegister: boolean;
+  /** The columns of a wide table name the beginnings. */
+  isWide: boolean;
 }
 
 /**
@@ -42,7 +44,12 @@ export function timelineOf(strand: Strand, options: TimelineOptions): Timeline {
         marks: 'begin' as const,
         guess: guess('marks', 'instant of the reading', [[true, 'Registers are read at an instant']]),
       }
-    : findMarks(strand.walls, stepMinutes, options.style.marks, options.given.marks);
+    : options.isWide
+      ? {
+          marks: 'begin' as const,
+          guess: guess('marks', 'beginning of interval', [[true, 'The names of the columns tell']]),
+        }
+      : findMarks(strand.walls, stepMinutes, options.style.marks, options.given.marks);
   const guesses = [step.guess, marksGuess];
   const base = { stepMinutes, guesses };
   if (strand.offsets) {

@@ -146,6 +146,7 @@ export const wordGroups = {
   export: [
     'export',
     'exported',
+    'saliente',
     'einspeisung',
     'injection',
     'injected',

@@ -398,3 +398,50 @@ describe('several meters in one file', () => {
     await expect(readText(text, zone, { kind: 'intervals', meter: 'West' })).rejects.toThrow(/“West”/);
   });
 });
+
+describe('codes of channels', () => {
+  it('reads OBIS codes in the names of columns', async () => {
+    const text = table('Zeit,1-1:1.29.0 [kWh],1-1:2.29.0 [kWh],1-1:5.29.0 [kvarh],1-1:8.29.0 [kvarh]', [
+      [9, 0, 4, 0],
+      [8, 1, 0, 3],
+      [9, 0, 2, 0],
+      [7, 0, 0, 1],
+    ]);
+    const { load, report } = await readText(text, zone);
+    expect([...load.kwh]).toEqual([9, 8, 9, 7]);
+    expect([...load.kvarhLagging]).toEqual([4, 0, 2, 0]);
+    expect([...load.kvarhLeading]).toEqual([0, 3, 0, 1]);
+    expect(codes(report.notes)).toContain('export-left-out');
+  });
+
+  it('reads quadrants and leaves those of exported energy out', async () => {
+    const text = table('Time,AE_kWh,AS_kWh,R1_kVArh,R2_kVArh,R3_kVArh,R4_kVArh', [
+      [9, 0, 4, 0, 0, 1],
+      [8, 1, 3, 0, 0, 2],
+      [9, 0, 2, 5, 0, 1],
+      [7, 0, 1, 0, 6, 1],
+    ]);
+    const { load } = await readText(text, zone);
+    expect([...load.kwh]).toEqual([9, 8, 9, 7]);
+    expect([...load.kvarhLagging]).toEqual([4, 3, 2, 1]);
+    expect([...load.kvarhLeading]).toEqual([1, 2, 1, 1]);
+  });
+
+  it('takes the average rather than the extremes within the interval', async () => {
+    const { load } = await readText(
+      table('Time,Avg kW,Max kW,Min kW', [
+        [40, 44, 36],
+        [48, 52, 40],
+        [40, 44, 36],
+        [44, 60, 2],
+      ]),
+      zone,
+    );
+    expect([...load.kwh]).toEqual([10, 12, 10, 11]);
+  });
+
+  it('refuses many readings that contradict each other rather than dropping them', async () => {
+    const rows = Array.from({ length: 40 }, (_, at) => `${stamp(at % 20)},${at}`);
+    await expect(readText(`Time,kWh\n${rows.join('\n')}`, zone)).rejects.toThrow(/20 of 40 readings.*another figure/);
+  });
+});

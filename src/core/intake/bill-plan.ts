@@ -68,28 +68,31 @@ export function planBills(opened: OpenedTable, options: ReadOptions): BillPlan {
   const layout = guess('layout', isTransposed ? 'transposed' : 'long', [
     [true, isTransposed ? 'A column holds one bill' : 'A row holds one bill'],
   ]);
+  const settled = { grid, block, columns, decimalMark, order: order.order, isTransposed };
   return {
+    ...settled,
     opened: { ...opened, dialect: { ...opened.dialect, decimalMark } },
-    grid,
-    block,
-    columns,
-    decimalMark,
-    order: order.order,
-    isTransposed,
-    columnMap: {
-      kind: 'bills',
-      ...(opened.dialect.sheet === undefined ? {} : { sheet: opened.dialect.sheet }),
-      ...(opened.dialect.delimiter === undefined ? {} : { delimiter: opened.dialect.delimiter }),
-      decimalMark,
-      headerRow: block.headerRow === null ? null : grid.rowNumber(block.headerRow),
-      firstRow: grid.rowNumber(block.firstRow),
-      layout: isTransposed ? 'transposed' : 'long',
-      columns,
-      stamp: { order: order.order },
-      ...(map.periodEnds ? { periodEnds: map.periodEnds } : {}),
-    },
+    columnMap: completeMap(opened, settled, map),
     evidence: mergeEvidence(evidence, columns, map),
     guesses: [...delimiterGuesses(opened, map), headerGuess(grid, block), layout, decimalGuess(vote, map), order],
+  };
+}
+
+type Settled = Pick<BillPlan, 'grid' | 'block' | 'columns' | 'decimalMark' | 'order' | 'isTransposed'>;
+
+function completeMap({ dialect }: OpenedTable, settled: Settled, map: Partial<ColumnMap>): ColumnMap {
+  const { grid, block, columns, decimalMark, order, isTransposed } = settled;
+  return {
+    kind: 'bills',
+    ...(dialect.sheet === undefined ? {} : { sheet: dialect.sheet }),
+    ...(dialect.delimiter === undefined ? {} : { delimiter: dialect.delimiter }),
+    decimalMark,
+    headerRow: block.headerRow === null ? null : grid.rowNumber(block.headerRow),
+    firstRow: grid.rowNumber(block.firstRow),
+    layout: isTransposed ? 'transposed' : 'long',
+    columns,
+    stamp: { order },
+    ...(map.periodEnds ? { periodEnds: map.periodEnds } : {}),
   };
 }
 

@@ -1,5 +1,6 @@
 import { addDays, isoDate } from '../load';
-import { placeOf, readDates, settleEnds, type DatedRow } from './bill-dates';
+import { placeOf, readDates, type DatedRow } from './bill-dates';
+import { settleEnds } from './bill-ends';
 import { reportOfBills } from './bill-report';
 import type { BillPlan } from './bill-plan';
 import { IntakeError, intakeError } from './errors';

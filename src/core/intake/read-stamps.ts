@@ -55,12 +55,7 @@ export function readStamps(plan: ColumnPlan): StampRows {
     const offset = scanner.offsetMinutes;
     offsets[used] = offset;
     if (!Number.isNaN(offset)) hasOffset = true;
-    if (spans) {
-      const found = grid.scan(row, endColumn, scanner) && scanner.resolve(order);
-      const end = found ? scanner.day * 1440 + (Number.isNaN(scanner.minute) ? 0 : scanner.minute) : Number.NaN;
-      // Each end carries its own offset: the span is the time that passes, not what the wall clock shows.
-      spans[used] = end - wall - (Number.isNaN(offset) ? 0 : scanner.offsetMinutes - offset);
-    }
+    if (spans) spans[used] = spanOf(grid, row, endColumn, order, { wall, offset }, scanner);
     rows[used] = row;
     used += 1;
   }
@@ -74,6 +69,20 @@ export function readStamps(plan: ColumnPlan): StampRows {
     badStamps,
     notes,
   };
+}
+
+/** Minutes from a beginning to the end in another column; each end carries its own offset, so time that passes counts. */
+function spanOf(
+  grid: Grid,
+  row: number,
+  endColumn: number,
+  order: DateOrder,
+  begin: { wall: number; offset: number },
+  scanner: StampScanner,
+): number {
+  if (!grid.scan(row, endColumn, scanner) || !scanner.resolve(order)) return Number.NaN;
+  const end = scanner.day * 1440 + (Number.isNaN(scanner.minute) ? 0 : scanner.minute);
+  return end - begin.wall - (Number.isNaN(begin.offset) ? 0 : scanner.offsetMinutes - begin.offset);
 }
 
 function mainColumn(columns: readonly ColumnUse[]): number {

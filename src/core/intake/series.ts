@@ -39,23 +39,7 @@ export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, f
   const placed = joinSteps(given, notes);
   const stepMinutes = placed[0]?.timeline.stepMinutes ?? Number.NaN;
   const phase = phaseOf(placed, stepMinutes);
-  let least = Infinity;
-  let most = -Infinity;
-  let readings = 0;
-  const offGrid: number[] = [];
-  for (const { strand, timeline } of placed) {
-    const { utc } = timeline;
-    for (let at = 0; at < utc.length; at += 1) {
-      const minute = utc[at] ?? Number.NaN;
-      if (Number.isNaN(minute)) continue;
-      readings += 1;
-      if (!Number.isInteger((minute - phase) / stepMinutes)) offGrid.push(strand.rows[at] ?? 0);
-      else {
-        if (minute < least) least = minute;
-        if (minute > most) most = minute;
-      }
-    }
-  }
+  const { least, most, readings, offGrid } = surveyOf(placed, phase, stepMinutes);
   const length = (most - least) / stepMinutes + 1;
   checkSpan({ readings, length, offGrid, least, most, grid, fileName, stepMinutes });
   if (offGrid.length > 0) {
@@ -76,6 +60,45 @@ export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, f
   };
   const differing: number[] = [];
   for (const one of placed) layStrand(one, least, phase, gridded, differing);
+  noteDiffering({ differing, readings, grid, fileName, notes });
+  return gridded;
+}
+
+interface Survey {
+  least: number;
+  most: number;
+  readings: number;
+  /** Rows of readings off the grid. */
+  offGrid: number[];
+}
+
+function surveyOf(placed: readonly PlacedStrand[], phase: number, stepMinutes: number): Survey {
+  const survey: Survey = { least: Infinity, most: -Infinity, readings: 0, offGrid: [] };
+  for (const { strand, timeline } of placed) {
+    const { utc } = timeline;
+    for (let at = 0; at < utc.length; at += 1) {
+      const minute = utc[at] ?? Number.NaN;
+      if (Number.isNaN(minute)) continue;
+      survey.readings += 1;
+      if (!Number.isInteger((minute - phase) / stepMinutes)) survey.offGrid.push(strand.rows[at] ?? 0);
+      else {
+        if (minute < survey.least) survey.least = minute;
+        if (minute > survey.most) survey.most = minute;
+      }
+    }
+  }
+  return survey;
+}
+
+/** A few readings that contradict the first of their interval are noted; many mean that the file was misread. */
+function noteDiffering(found: {
+  differing: number[];
+  readings: number;
+  grid: RowNumbers;
+  fileName: string;
+  notes: IntakeNote[];
+}): void {
+  const { differing, readings, grid, fileName, notes } = found;
   if (differing.length > Math.max(12, readings * 0.2)) {
     throw intakeError(
       `${differing.length} of ${readings} readings name an interval that another reading fills with another figure.`,
@@ -83,14 +106,12 @@ export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, f
       'The file may hold several meters or channels: say in the column map which column names them, and pick one.',
     );
   }
-  if (differing.length > 0) {
-    notes.push({
-      code: 'duplicates-differ',
-      message: `${differing.length} repeated readings differ from the first of their interval; the first is kept.`,
-      where: rowsInWords(grid, differing),
-    });
-  }
-  return gridded;
+  if (differing.length === 0) return;
+  notes.push({
+    code: 'duplicates-differ',
+    message: `${differing.length} repeated readings differ from the first of their interval; the first is kept.`,
+    where: rowsInWords(grid, differing),
+  });
 }
 
 /** Rows in words, at most six of them. */

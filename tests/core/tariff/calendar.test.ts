@@ -68,6 +68,26 @@ describe('windows', () => {
     });
   });
 
+  // IANA: Chile changes at midnight (forward at 24:00 of 5 September 2026, back at 24:00 of 4 April); Lord Howe Island by half an hour,
+  // from 02:00 to 02:30 on 4 October 2026.
+  it('follow changes at midnight and of half an hour', () => {
+    const early = '  early: { days: every day, hours: 00:00-02:00 }\n  late: { days: every day, hours: 23:00-24:00 }';
+    const santiago = { timeZone: 'America/Santiago', stepMinutes: 60 };
+    expect(hoursIn(early, ['early', 'late'], { ...santiago, from: '2026-09-06', to: '2026-09-07' })).toEqual({
+      Early: 1,
+      Late: 1,
+      all: 23,
+    });
+    expect(hoursIn(early, ['early', 'late'], { ...santiago, from: '2026-04-04', to: '2026-04-05' })).toEqual({
+      Early: 2,
+      Late: 2,
+      all: 25,
+    });
+    const half = '  mid: { days: every day, hours: 01:00-03:00 }\n  other: { rest: mid }';
+    const island = { timeZone: 'Australia/Lord_Howe', stepMinutes: 30, from: '2026-10-04', to: '2026-10-05' };
+    expect(hoursIn(half, ['mid', 'other'], island)).toEqual({ Mid: 1.5, Other: 22, all: 23.5 });
+  });
+
   it('follow the local clock in zones of half and quarter hours', () => {
     const found = hoursIn('  noon: { days: every day, hours: 12:00-13:00 }', ['noon'], {
       from: '2026-07-13',

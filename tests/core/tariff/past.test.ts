@@ -109,6 +109,34 @@ describe('looking back', () => {
     expect(valuesOf(bills[3])).toMatchObject({ wholly: 500, mostly: 600 });
   });
 
+  it('notes periods that do not follow each other and history nobody knows', () => {
+    const schedule = buildSchedule(
+      'quantities:\n  maxKw: { highest: kw }\n  top: { past: maxKw, take: highest, over: last 2 periods }\ncharges:\n  demand: { per: top, rate: 2, group: demand }',
+    );
+    const rows = ['2026-01', '2026-03'].map((month) => ({
+      from: `${month}-01`,
+      to: `${month}-28`,
+      quantities: { maxKw: 5 },
+    }));
+    const [first, second] = priceQuantities(schedule, rows, { history: { maxkW: [9] } });
+    expect(first!.notes).toContain(
+      'The history tells "maxkW", which the schedule does not have; it is not used. Did you mean "maxKw"?',
+    );
+    expect(second!.notes).toContain(
+      'The period above this one ends on 2026-01-28: what lies between is not known, and looking back passes over it.',
+    );
+  });
+
+  it('at unity keeps a printed look back whose periods are not known', () => {
+    const schedule = buildSchedule(
+      'quantities:\n  maxKw: { highest: kw }\n  top: { past: maxKw, take: highest, over: last 2 periods }\ncharges:\n  demand: { per: top, rate: 2, group: demand }',
+    );
+    const [bill] = priceQuantities(schedule, [
+      { from: '2026-03-01', to: '2026-04-01', quantities: { maxKw: 5, top: 40 } },
+    ]);
+    expect(bill).toMatchObject({ total: 80, reactiveCost: 0 });
+  });
+
   it('explains itself', () => {
     const bills = price('  top: { past: maxKw, take: highest, over: last 2 periods }', '2026-06', [300, 200, 100]);
     expect(bills[2]!.quantities['top']!.explanation).toBe(

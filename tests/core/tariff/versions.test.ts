@@ -96,6 +96,7 @@ describe('versions', () => {
       '      bonus: { percentOf: [energy], rate: -1, group: adjustment, before: nowhere }',
       'nothing in charges is called "nowhere".',
     ],
+    ['      tax: { rate: 6, before: levy }', 'is said of an entry that is there already.'],
     ['      energi: removed', 'is not there to be removed. Did you mean "energy"?'],
   ])('refuse %s', (line, words) => {
     const broken = base.replace('      bonus: { percentOf: [energy], rate: -1, group: adjustment, before: end }', line);
@@ -104,6 +105,14 @@ describe('versions', () => {
         .map(({ message, remedy }) => `${message} ${remedy}`.trim())
         .join(),
     ).toContain(words);
+  });
+
+  it('refuse a place said outside a version', () => {
+    const broken = base.replace('rate: 5, group: tax', 'rate: 5, group: tax, before: energy');
+    expect(problemsOf(() => buildSchedule(broken))[0]).toMatchObject({
+      path: 'charges.tax.before',
+      message: 'is said outside a version.',
+    });
   });
 
   it('refuse a date that is none or before the schedule', () => {

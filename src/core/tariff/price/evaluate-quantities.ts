@@ -4,7 +4,7 @@ import { isSame } from '../formula/functions';
 import type { GivenDefinition, PastDefinition, QuantityEntry, RateEntry } from '../model';
 import { decimalsOf, roundToStep, wordNumber } from '../../units';
 import type { BillState, Missing, PieceState } from './bill-state';
-import { completeTold, evaluatePast, pickValue, recordOf, type HistoryRecord } from './history';
+import { completeTold, evaluatePast, pickValue, recordOf, type HistoryRecord, type PastResult } from './history';
 import { wordPeriod } from './period-plan';
 import { evaluateIn, roundedValue, setRounded, setValue, type Run } from './run';
 
@@ -93,7 +93,7 @@ function settle(run: Run, bill: BillState, state: PieceState, quantity: Quantity
       settleGiven(run, bill, state, quantity, definition, printed);
       return;
     case 'past':
-      setRounded(run, bill, state, quantity, lookBack(run, bill, state, quantity, definition));
+      settlePast(run, bill, state, quantity, definition, printed);
       return;
     default:
       settleWorkedOut(run, bill, state, quantity, { printed, needs });
@@ -175,13 +175,27 @@ export function keepPrinted(
   );
 }
 
+function settlePast(
+  run: Run,
+  bill: BillState,
+  state: PieceState,
+  quantity: QuantityEntry,
+  definition: PastDefinition,
+  printed: number | undefined,
+): void {
+  const { value, asked, known } = lookBack(run, bill, state, quantity, definition);
+  // At unity a look back to periods nobody knows tells less than the figure printed.
+  if (printed !== undefined && known < asked) keepPrinted(run, bill, state, quantity, printed);
+  else setRounded(run, bill, state, quantity, value);
+}
+
 function lookBack(
   run: Run,
   bill: BillState,
   state: PieceState,
   quantity: QuantityEntry,
   definition: PastDefinition,
-): number {
+): PastResult {
   const records = recordsBefore(run, bill, state, definition.expression.slots);
   if (definition.over.includesThis)
     records.push({ period: bill.plan.period, values: state.values, known: state.known, isTold: false });
@@ -189,7 +203,7 @@ function lookBack(
   const { text } = state.piece.text;
   const result = evaluatePast(definition, records, bill.plan.period, text.seasons);
   if (bill.notes && !run.isUnity) notePast(bill, quantity, definition, result);
-  return result.value;
+  return result;
 }
 
 /** Earlier periods of a bill, oldest first; told months are completed where a look back needs more than they tell. */

@@ -16,16 +16,38 @@ export function prepareRun(
   options: Omit<PriceOptions, 'periods'>,
   how: { source: QuantitySource; isUnity: boolean; wantsNotes: boolean },
 ): Run {
+  const bills = plans.map((plan) => createBill(schedule, plan, how.wantsNotes));
+  notePeriods(bills);
+  noteHistory(schedule, bills[0], options.history);
   return {
     schedule,
     source: how.source,
     isUnity: how.isUnity,
     told: plans[0] ? tellHistory(schedule, plans[0].period.from, options.history) : [],
-    bills: plans.map((plan) => createBill(schedule, plan, how.wantsNotes)),
+    bills,
     contract: perPeriod(options.contract, plans.length, 'contract'),
     given: perPeriod(options.given, plans.length, 'given'),
     at: undefined,
   };
+}
+
+function notePeriods(bills: BillState[]): void {
+  for (const [i, { plan, notes }] of bills.entries()) {
+    const before = bills[i - 1]?.plan.period.to;
+    if (before !== undefined && before !== plan.period.from) {
+      notes?.add(
+        `The period above this one ends on ${before}: what lies between is not known, and looking back passes over it.`,
+      );
+    }
+  }
+}
+
+function noteHistory(schedule: Schedule, first: BillState | undefined, history: PriceOptions['history']): void {
+  for (const name of Object.keys(history ?? {})) {
+    if (schedule.slots.has(name)) continue;
+    const near = didYouMean(name, schedule.slots.keys());
+    first?.notes?.add(`The history tells "${name}", which the schedule does not have; it is not used. ${near}`.trim());
+  }
 }
 
 function perPeriod(

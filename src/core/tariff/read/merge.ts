@@ -68,6 +68,13 @@ function mergeEntries(section: string, base: MapTree, changes: MapTree, problems
           ),
         );
     } else if (existing) {
+      const before = change.value.kind === 'map' ? entryOf(change.value, 'before') : undefined;
+      if (before)
+        problems.add(
+          before,
+          'is said of an entry that is there already.',
+          'Only a new entry says where it stands; leave it out.',
+        );
       const value = mergeEntry(section, existing.value, change.value);
       merged = {
         ...merged,

@@ -44,6 +44,7 @@ const beginningOfTime = '0001-01-01';
 export function readSchedule(yamlText: string): Schedule {
   const { root, problems } = parseTree(yamlText);
   checkFields(root, sections, 'a schedule', problems);
+  checkPlaces(root, problems);
   const notes: Schedule['notes'] = [];
   const head = readHead(root, problems);
   const shared: SharedParts = { problems, slots: new Slots(place.names), currency: head.currency, notes };
@@ -56,6 +57,18 @@ export function readSchedule(yamlText: string): Schedule {
   problems.throwIfAny();
   addNotes(root, read, notes);
   return { ...head, straddle: head.straddle ?? 'days', texts, slots: shared.slots.byName, lineOrder, notes };
+}
+
+/** Outside versions the file's own order holds: `before` says nothing there. */
+function checkPlaces(root: MapTree, problems: Problems): void {
+  for (const section of ['quantities', 'charges']) {
+    const map = valueOf(root, section);
+    for (const { value } of map?.kind === 'map' ? map.entries : []) {
+      const before = value.kind === 'map' ? entryOf(value, 'before') : undefined;
+      if (before)
+        problems.add(before, 'is said outside a version.', 'Put the entry where it belongs and leave this out.');
+    }
+  }
 }
 
 type Head = Omit<Schedule, 'texts' | 'slots' | 'lineOrder' | 'notes' | 'straddle'> & { straddle?: Straddle };

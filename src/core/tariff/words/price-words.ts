@@ -1,3 +1,4 @@
+import { namesIn } from '../formula/ast';
 import { printFormula } from '../formula/print';
 import type { ChargeDefinition, Expression, NumberPlace, Tier } from '../model';
 import { wordNumber } from '../../units';
@@ -21,7 +22,7 @@ export function amountWords(speech: Speech, place: NumberPlace): string {
   const expression = expressionIn(speech, place);
   if (!expression) return '';
   const value = placeValue(speech.run, speech.state, place);
-  if (expression.formula.kind === 'number') return bareMoney(value, speech.run.schedule);
+  if (namesIn(expression.formula).length === 0) return bareMoney(value, speech.run.schedule);
   const working = wordWorking(speech, expression);
   return expression.formula.kind === 'name' ? `${working} = ${wordNumber(value)}` : working;
 }
@@ -31,7 +32,7 @@ export function rateWords(speech: Speech, place: NumberPlace): string {
   const expression = expressionIn(speech, place);
   if (!expression) return '';
   const { formula } = expression;
-  if (formula.kind === 'number') return formula.raw;
+  if (namesIn(formula).length === 0) return printFormula(formula);
   const value = wordNumber(placeValue(speech.run, speech.state, place));
   return formula.kind === 'name' ? value : `${value} (${wordWorking(speech, expression)})`;
 }
@@ -108,6 +109,6 @@ function linesWords({ bill, run, state }: Speech, plan: ChargePlan, isAllAbove: 
 
 /** Words of a formula with its value. */
 export function expressionWords(speech: Speech, expression: Expression): string {
-  if (expression.formula.kind === 'number') return expression.formula.raw;
+  if (namesIn(expression.formula).length === 0) return printFormula(expression.formula);
   return `${wordWorking(speech, expression)} = ${wordNumber(evaluateIn(speech.run, speech.state, expression))}`;
 }

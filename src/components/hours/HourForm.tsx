@@ -1,3 +1,4 @@
+import { zodResolver } from '@hookform/resolvers/zod';
 import { useMutation } from '@tanstack/react-query';
 import { useId, useState } from 'react';
 import { useForm } from 'react-hook-form';
@@ -5,7 +6,6 @@ import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { changeHours, logHours } from '../../client/hours';
 import { hourInput, parseMinutes, type HourForm as Values, type HourView } from '../../schemas/hour';
-import { draftResolver } from '../motors/form-errors';
 import { Button } from '../ui/Button';
 import { CheckField, Field, SelectField } from '../ui/Field';
 import { formatClock, formatHours } from '../ui/format';
@@ -36,7 +36,8 @@ function differences(mine: Values, theirs: Stored): StaleDifference[] {
 }
 
 function useHourForm({ code, entry, start, onSaved }: HourFormProps) {
-  const form = useForm<Values>({ defaultValues: start, resolver: draftResolver<Values>(hourInput, (draft) => draft) });
+  // Raw: what is typed goes to the server, which reads it by the same schema.
+  const form = useForm({ defaultValues: start, resolver: zodResolver(hourInput, undefined, { raw: true }) });
   const draft = useDraft<Values>(`hours:${code}:${entry?.id ?? 'new'}`, form);
   const [stored, setStored] = useState<Stored | null>(null);
   const save = useMutation({

@@ -27,8 +27,6 @@ function linesOf(entries: HourView[], days: string[]): Line[] {
   return [...lines.values()].sort((a, b) => a.key.localeCompare(b.key));
 }
 
-const sum = (minutes: number[]) => minutes.reduce((total, one) => total + one, 0);
-
 export interface WeekTableProps {
   entries: HourView[];
   monday: string;
@@ -37,73 +35,108 @@ export interface WeekTableProps {
   onMonday: (monday: string) => void;
 }
 
-/** The week: a line per station, a column per day; today washed, days off in well. */
+const sum = (minutes: number[]) => minutes.reduce((total, one) => total + one, 0);
+
+type Days = { day: string; className: string }[];
+
+/** Days of the week with the look of their column: today washed, days off in well. */
+const daysOf = (monday: string, today: string): Days =>
+  dayNames.map((_, index) => {
+    const day = addDays(monday, index);
+    return { day, className: day === today ? 'day today' : index > 4 ? 'day off' : 'day' };
+  });
+
+const cellOf = (minutes: number) => (minutes > 0 ? formatHours(minutes) : '');
+
+function WeekWalk({ monday, today, onMonday }: Pick<WeekTableProps, 'monday' | 'today' | 'onMonday'>) {
+  const step = (weeks: number) => {
+    const to = addDays(monday, weeks * 7);
+    return (
+      <Button kind="quiet" onClick={() => onMonday(to)}>
+        Week {weekNumber(to)}
+      </Button>
+    );
+  };
+  return (
+    <div className="week-walk">
+      {step(-1)}
+      <b aria-live="polite">
+        Week {weekNumber(monday)}, {formatDay(monday)} to {formatDay(addDays(monday, 6))}
+      </b>
+      {addDays(monday, 7) <= today && step(1)}
+    </div>
+  );
+}
+
+function WeekHead({ days, today, withPerson }: { days: Days; today: string; withPerson: boolean }) {
+  return (
+    <thead>
+      <tr>
+        {withPerson && (
+          <th scope="col" className="left">
+            Person
+          </th>
+        )}
+        <th scope="col" className="left">
+          Station
+        </th>
+        {days.map(({ day, className }, index) => (
+          <th key={day} scope="col" className={className} aria-current={day === today ? 'date' : undefined}>
+            {dayNames[index]}
+            <span className="unit">{formatDay(day)}</span>
+          </th>
+        ))}
+        <th scope="col">
+          Week<span className="unit">h</span>
+        </th>
+      </tr>
+    </thead>
+  );
+}
+
+function WeekLine({ line, days, withPerson }: { line: Line; days: Days; withPerson: boolean }) {
+  return (
+    <tr>
+      {withPerson && (
+        <th scope="row" className="left">
+          {line.person}
+        </th>
+      )}
+      <th scope="row" className="left">
+        {stationLabel(line.station)}
+      </th>
+      {days.map(({ day, className }, index) => (
+        <td key={day} className={className}>
+          {cellOf(line.minutes[index] ?? 0)}
+        </td>
+      ))}
+      <td className="strong">{formatHours(sum(line.minutes))}</td>
+    </tr>
+  );
+}
+
+/** The week: a line per station, a column per day. */
 export function WeekTable({ entries, monday, today, withPerson, onMonday }: WeekTableProps) {
-  const days = dayNames.map((_, index) => addDays(monday, index));
-  const lines = linesOf(entries, days);
+  const days = daysOf(monday, today);
+  const lines = linesOf(
+    entries,
+    days.map(({ day }) => day),
+  );
   const totals = days.map((_, index) => sum(lines.map((line) => line.minutes[index] ?? 0)));
-  const dayClass = (index: number) => (days[index] === today ? 'day today' : index > 4 ? 'day off' : 'day');
-  const cell = (minutes: number) => (minutes > 0 ? formatHours(minutes) : '');
+  const names = withPerson ? 2 : 1;
   return (
     <>
-      <div className="week-walk">
-        <Button kind="quiet" onClick={() => onMonday(addDays(monday, -7))}>
-          Week {weekNumber(addDays(monday, -7))}
-        </Button>
-        <b aria-live="polite">
-          Week {weekNumber(monday)}, {formatDay(monday)} to {formatDay(addDays(monday, 6))}
-        </b>
-        {addDays(monday, 7) <= today && (
-          <Button kind="quiet" onClick={() => onMonday(addDays(monday, 7))}>
-            Week {weekNumber(addDays(monday, 7))}
-          </Button>
-        )}
-      </div>
+      <WeekWalk {...{ monday, today, onMonday }} />
       <div className="ledger-scroll" role="region" aria-label="Hours of the week" tabIndex={0}>
         <table className="ledger week-table">
-          <thead>
-            <tr>
-              {withPerson && (
-                <th scope="col" className="left">
-                  Person
-                </th>
-              )}
-              <th scope="col" className="left">
-                Station
-              </th>
-              {days.map((day, index) => (
-                <th key={day} scope="col" className={dayClass(index)} aria-current={day === today ? 'date' : undefined}>
-                  {dayNames[index]}
-                  <span className="unit">{formatDay(day)}</span>
-                </th>
-              ))}
-              <th scope="col">
-                Week<span className="unit">h</span>
-              </th>
-            </tr>
-          </thead>
+          <WeekHead {...{ days, today, withPerson }} />
           <tbody>
             {lines.map((line) => (
-              <tr key={line.key}>
-                {withPerson && (
-                  <th scope="row" className="left">
-                    {line.person}
-                  </th>
-                )}
-                <th scope="row" className="left">
-                  {stationLabel(line.station)}
-                </th>
-                {line.minutes.map((minutes, index) => (
-                  <td key={days[index]} className={dayClass(index)}>
-                    {cell(minutes)}
-                  </td>
-                ))}
-                <td className="strong">{formatHours(sum(line.minutes))}</td>
-              </tr>
+              <WeekLine key={line.key} {...{ line, days, withPerson }} />
             ))}
             {lines.length === 0 && (
               <tr>
-                <td className="left quiet" colSpan={withPerson ? 10 : 9}>
+                <td className="left quiet" colSpan={names + 8}>
                   No hours are told in this week.
                 </td>
               </tr>
@@ -111,11 +144,11 @@ export function WeekTable({ entries, monday, today, withPerson, onMonday }: Week
           </tbody>
           <tfoot>
             <tr>
-              <th scope="row" className="left" colSpan={withPerson ? 2 : 1}>
+              <th scope="row" className="left" colSpan={names}>
                 Hours of the day
               </th>
               {totals.map((minutes, index) => (
-                <td key={days[index]}>{cell(minutes)}</td>
+                <td key={days[index]?.day}>{cellOf(minutes)}</td>
               ))}
               <td>{formatHours(sum(totals))}</td>
             </tr>

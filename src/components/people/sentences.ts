@@ -1,6 +1,6 @@
 import type { PersonView } from '../../schemas/account';
 import { formatDate, formatSpelled } from '../ui/format';
-import type { StaffRow } from './PeopleTables';
+import type { StaffRow } from './StaffTable';
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 

@@ -3,7 +3,7 @@ import { isForeignUnit, unitOfHeader } from './units';
 import { headerWords, mentions, namesPowerFactor } from './words';
 
 /** What the name of a column of a table of bills says. */
-export interface BillMeaning {
+interface BillMeaning {
   role: 'quantity' | 'charge' | 'total' | 'ignore';
   quantity?: string;
   unit?: string;

@@ -24,7 +24,7 @@ export function cellKind(text: string, scanner: StampScanner): CellKind {
 }
 
 /** Whether a cell is a figure with either decimal mark. */
-export function isNumberText(text: string): boolean {
+function isNumberText(text: string): boolean {
   return /\d/.test(text) && (!Number.isNaN(parseNumberText(text, '.')) || !Number.isNaN(parseNumberText(text, ',')));
 }
 

@@ -1,7 +1,7 @@
 import type { IntervalRole } from './types';
 
 /** A code that names a channel. */
-export interface CodedChannel {
+interface CodedChannel {
   role: IntervalRole;
   why: string;
 }

@@ -18,7 +18,7 @@ interface TimeInput {
 }
 
 /** Columns that say when, the order of their dates, and hints at marks and clock that their names give. */
-export interface TimeFinding {
+interface TimeFinding {
   findings: Map<number, RoleFinding>;
   guesses: Guess[];
   stamp: StampStyle;

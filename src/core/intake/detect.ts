@@ -14,7 +14,7 @@ import { unitMeaning, unitOfHeader } from './units';
 import { mentions } from './words';
 
 /** Everything about the columns of a file of intervals that can be told before its rows are read one by one. */
-export interface IntervalDetection {
+interface IntervalDetection {
   layout: 'long' | 'wide';
   decimalMark: '.' | ',';
   columns: ColumnUse[];

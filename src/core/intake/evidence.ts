@@ -6,7 +6,7 @@ import type { BillRole, ColumnEvidence, ColumnUse, Guess, IntervalRole, Measure 
 export type Test = [isMet: boolean, finding: string];
 
 /** Sums up tests: findings joined, unmet ones after the met. Sure if all are met and there is at least one. */
-export function weigh(tests: readonly Test[]): { why: string; testsMet: number; testsTotal: number; sure: boolean } {
+function weigh(tests: readonly Test[]): { why: string; testsMet: number; testsTotal: number; sure: boolean } {
   const met = tests.filter(([isMet]) => isMet);
   const unmet = tests.filter(([isMet]) => !isMet);
   return {

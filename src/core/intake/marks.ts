@@ -2,7 +2,7 @@ import { guess, type Test } from './evidence';
 import type { Guess, StampStyle } from './types';
 
 /** Length of an interval and which end of it the stamps name. */
-export interface MarkFinding {
+interface MarkFinding {
   marks: NonNullable<StampStyle['marks']>;
   guess: Guess;
 }
@@ -86,7 +86,7 @@ function detectMarks(walls: Float64Array, stepMinutes: number, hint: StampStyle[
 }
 
 /** Marks in words. */
-export function marksInWords(marks: NonNullable<StampStyle['marks']>): string {
+function marksInWords(marks: NonNullable<StampStyle['marks']>): string {
   if (marks === 'begin') return 'beginning of interval';
   return marks === 'end' ? 'end of interval' : 'end of interval, midnight dated by the day it closes';
 }

@@ -30,7 +30,7 @@ interface StreamDay {
 }
 
 /** A stream: one channel of one meter. */
-export interface NemStream {
+interface NemStream {
   nmi: string;
   suffix: string;
   unitText: string;

@@ -6,7 +6,7 @@ import { StampScanner } from './stamps';
 import type { ColumnUse, DateOrder, IntakeNote } from './types';
 
 /** Stamps of every usable row. */
-export interface StampRows {
+interface StampRows {
   walls: Float64Array;
   offsets: Float64Array | null;
   spans: Float64Array | null;
@@ -159,7 +159,7 @@ function stampReader(plan: ColumnPlan, scanner: StampScanner): StampReader {
 }
 
 /** Numbers within the day count from nought or one; a day of up to 25 is hours, 50 half-hours, 100 quarter-hours. */
-export function intervalNumbering(
+function intervalNumbering(
   plan: Pick<ColumnPlan, 'grid' | 'block' | 'decimalMark'>,
   column: number,
 ): { first: number; minutes: number } {

@@ -115,7 +115,7 @@ function noteDiffering(found: {
 }
 
 /** Rows in words, at most six of them. */
-export function rowsInWords(grid: RowNumbers, rows: readonly number[]): string {
+function rowsInWords(grid: RowNumbers, rows: readonly number[]): string {
   const shown = rows.slice(0, 6).map((row) => grid.rowNumber(row));
   return `${rows.length === 1 ? 'row' : 'rows'} ${shown.join(', ')}${rows.length > 6 ? ' …' : ''}`;
 }

@@ -11,14 +11,14 @@ interface SheetCell {
 }
 
 /** A sheet opened as a grid, its name and the names of all sheets. */
-export interface OpenedSheet {
+interface OpenedSheet {
   grid: CellGrid;
   sheet: string;
   sheets: string[];
 }
 
 /** Rows of a sheet that are read; a year of five-minute readings has 105,120. */
-export const sheetRowCap = 250_000;
+const sheetRowCap = 250_000;
 
 /**
  * Opens a workbook (.xlsx, .xls, .ods). Dates are taken from raw serials by whole seconds, never from Date objects, so
@@ -122,7 +122,7 @@ function plainCell(cell: SheetCell | undefined, is1904: boolean): Cell {
 const two = (figure: number): string => String(figure).padStart(2, '0');
 
 /** ISO text of a date serial of the 1900 system, by whole seconds; a time alone below one day. */
-export function serialText(serial: number, format: string): Cell {
+function serialText(serial: number, format: string): Cell {
   if (/\[h+\]/i.test(format) && serial >= 1 && serial <= 1.0000001) return '24:00';
   const seconds = Math.round(serial * 86_400);
   const day = Math.floor(seconds / 86_400);

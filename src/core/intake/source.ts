@@ -14,7 +14,7 @@ import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOp
 import { unzipOnly } from './unzip';
 
 /** A file opened in its format, ready to be shown or read. */
-export interface IntakeSource {
+interface IntakeSource {
   shape: () => string;
   previewIntervals: () => IntervalPreview;
   readIntervals: () => IntervalReading;

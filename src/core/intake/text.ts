@@ -1,7 +1,7 @@
 import { intakeError } from './errors';
 
 /** Text of a file and the encoding it was written in. */
-export interface DecodedText {
+interface DecodedText {
   text: string;
   encoding: 'UTF-8' | 'UTF-8 with mark' | 'UTF-16 LE' | 'UTF-16 BE' | 'Windows-1252';
 }

@@ -136,7 +136,7 @@ export interface IntakeReport {
   gaps?: IntakeGap[];
   /** Intervals: the highest average power and the beginning of its interval. */
   peak?: { ms: number; kw: number };
-  /** Intervals: rows of the file whose drawn energy is below nought. */
+  /** Intervals whose net energy in the file is below nought: export. */
   negative?: number;
   stepMinutes?: number;
   /** The complete map the file was read with. */

@@ -4,7 +4,7 @@ import { checkZip, zipCaps, type ZipMember } from './zip-caps';
 const readable = /\.(csv|txt|tsv|dat|xml|xlsx|xlsm|xls|ods|nem|nem12|asc|prn)$/i;
 
 /** The one file of readings or bills in an archive. */
-export interface UnzippedFile {
+interface UnzippedFile {
   name: string;
   bytes: Uint8Array;
 }

@@ -10,7 +10,7 @@ export function headerWords(name: string): string[] {
 }
 
 /** Patterns of header words, in the languages files come in. `mentions` looks for whole words or their beginnings. */
-export const wordGroups = {
+const wordGroups = {
   end: ['end', 'ending', 'ends', 'fin', 'fine', 'bis', 'ende', 'to', 'until', 'eind', 'einde', 'hasta', 'he', 'stop'],
   begin: [
     'start',

@@ -74,6 +74,12 @@ describe('charges', () => {
     expect(amountsOf(bill(lines, {}, { more, options: { given: [{ paidLate: 1 }] } }))).toEqual({ late: 12 });
   });
 
+  it('need nothing more where their condition fails', () => {
+    const lines = '  late: { per: maxKw, rate: 1, when: kwh > 5, group: demand }';
+    expect(amountsOf(bill(lines, { kwh: 5 }))).toEqual({ late: 0 });
+    expect(() => bill(lines, { kwh: 6 })).toThrow('the bill does not give "maxKw" (kW), which line "Late" needs.');
+  });
+
   it('let a printed figure win over a given one, that over the default', () => {
     const lines = '  fee: { per: trips, rate: 1, group: fixed }';
     const more = '  trips: { given: trips, default: 3 }';

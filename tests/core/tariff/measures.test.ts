@@ -256,6 +256,14 @@ describe('steps of the series', () => {
     ).toThrow("5 minutes are no multiple of the series' step of 10 minutes");
   });
 
+  it('refuse a rolling step shorter than the step, even where the window is as long as it', () => {
+    const load = twoDays(() => [100, 0, 0], 15);
+    const head = { demandWindow: '15 min rolling every 5 min' };
+    expect(() => measured('  maxKw: { highest: kw }', load, monday, head)).toThrow(
+      "5 minutes are no multiple of the series' step of 15 minutes",
+    );
+  });
+
   it('refuse a border inside an interval', () => {
     const schedule = buildSchedule(
       'windows:\n  odd: { days: every day, hours: 08:15-10:00 }\nquantities:\n  kwh: { sum: kwh, in: odd }'.replace(

@@ -59,7 +59,11 @@ export function layCells(
   demandWindow: DemandWindow | undefined,
 ): CellPlan {
   const { stepMinutes } = ground;
-  const isDemand = kind === 'demand window' && demandWindow !== undefined && stepMinutes < demandWindow.minutes;
+  const isLong =
+    demandWindow !== undefined &&
+    (stepMinutes < demandWindow.minutes || demandWindow.everyMinutes !== undefined) &&
+    stepMinutes <= demandWindow.minutes;
+  const isDemand = kind === 'demand window' && isLong;
   if (isDemand)
     return finishCells(demandCells(ground, demandWindow), ground, inside, (draft) => isWhole(draft, inside));
   if (kind === 'interval' || kind === 'demand window')

@@ -46,11 +46,18 @@ function scaleParts(bill: BillState, line: number, count: number, raw: number, a
     bill.parts[line * count + p] = count === 1 ? amount : bill.parts[line * count + p]! * scale;
 }
 
-/** Whether a line is charged in a piece: its condition holds. */
-export function isCharged(run: Run, bill: BillState, state: PieceState, { charge, needs }: ChargePlan): boolean {
-  const cause = firstMissing(state, needs);
+/** Whether a line is charged in a piece: its condition holds. Where it does not, nothing else of the line is needed. */
+export function isCharged(run: Run, bill: BillState, state: PieceState, plan: ChargePlan): boolean {
+  const { charge, whenNeeds, needs } = plan;
+  requireKnown(bill, state, plan, whenNeeds);
+  if (charge.when && evaluateIn(run, state, charge.when) === 0) return false;
+  requireKnown(bill, state, plan, needs);
+  return true;
+}
+
+function requireKnown(bill: BillState, state: PieceState, { charge }: ChargePlan, slots: readonly number[]): void {
+  const cause = firstMissing(state, slots);
   if (cause) throw missingError(bill, cause, charge.label ?? charge.name, (name) => unitOf(bill, name));
-  return !charge.when || evaluateIn(run, state, charge.when) !== 0;
 }
 
 function unitOf(bill: BillState, name: string): string {

@@ -91,9 +91,9 @@ class Layout {
   isPeak({ operation, channel, each, where, count }: MeasureDefinition): boolean {
     const isChannel = channel === 'kw' || channel === 'kva';
     const window = this.text.text.demandWindow;
-    const isInterval =
-      each === 'interval' ||
-      (each === 'demand window' && (window === undefined || window.minutes <= this.grid.stepMinutes));
+    const { stepMinutes } = this.grid;
+    const isShort = !window || window.minutes < stepMinutes || (window.minutes === stepMinutes && !window.everyMinutes);
+    const isInterval = each === 'interval' || (each === 'demand window' && isShort);
     return operation === 'highest' && isChannel && isInterval && where === undefined && count === 1;
   }
 

@@ -16,7 +16,8 @@ export interface ChargePlan {
   line: number;
   /** Places of the lines a percentage, top-up or cap takes. */
   ofLines: number[];
-  /** Places of the values it needs besides lines. */
+  /** Places of the values its condition needs, and those it needs where it is charged; lines left out. */
+  whenNeeds: number[];
   needs: number[];
   /** Places of the summed measures by which a `per` line is shared between pieces. */
   shareBy: number[];
@@ -43,12 +44,14 @@ export function planText(schedule: Schedule, text: ScheduleText): TextPlan {
   for (const charge of text.charges) {
     const line = lines.get(charge.name)!;
     const { definition } = charge;
-    const expressions = [...(charge.when ? [charge.when] : []), ...expressionsOf(definition)];
+    const placesOf = (expressions: Expression[]): number[] =>
+      [...new Set(expressions.flatMap(({ slots }) => slots))].filter((slot) => !lineSlots.has(slot));
     chargeOfLine[line] = {
       charge,
       line,
       ofLines: 'of' in definition ? definition.of.map((name) => lines.get(name)!) : [],
-      needs: [...new Set(expressions.flatMap(({ slots }) => slots))].filter((slot) => !lineSlots.has(slot)),
+      whenNeeds: charge.when ? placesOf([charge.when]) : [],
+      needs: placesOf(expressionsOf(definition)),
       shareBy: definition.kind === 'per' ? sharedMeasures(definition.per, definition.unit, quantityOfSlot) : [],
       finest: Number(`1e-${decimalsOf(charge.rounding.step)}`),
     };

@@ -105,6 +105,21 @@ export interface CostCurveView {
   tolerance: { lowA: number; highA: number; amount: number } | null;
 }
 
+/** A fixed capacitor bank of a plan, and how it sits with the supply. */
+export interface CapacitorBank {
+  kvar: number;
+  lossWPerKvar: number;
+  /** Reactors, per cent of the capacitive reactance; absent: none. */
+  detuningPercent?: number;
+  /** At the bank's bus; absent: not known, no resonance check. */
+  shortCircuitKva?: number;
+}
+
+export interface CapacitorView extends CapacitorBank {
+  /** Harmonic order of resonance and the usual harmonics within half an order of it. */
+  resonance: { order: number; near: number[] } | null;
+}
+
 /** What a search found, as stored with the plan made of it. */
 export interface SearchView {
   fields: { motorId: number; name: string; fieldA: number; todayA: number }[];
@@ -132,6 +147,7 @@ export interface PlanView {
   name: string;
   currency: string;
   fields: PlanField[];
+  capacitors: CapacitorView | null;
   bills: BillView[];
   yearTotal: number;
   /** Standing total minus this total; 0 for standing. */
@@ -144,6 +160,8 @@ export interface PlanView {
   appraisal: AppraisalView;
   /** Simple payback in words: "20 months", "at once", "never". */
   paybackWords: string;
+  /** Eight of ten samples pay back between these, in months; null: not within the horizon. */
+  paybackSpread: { lowMonths: number | null; highMonths: number | null } | null;
   cashFlow: CashFlowMonth[];
   motors: PlanMotorView[];
   /** Extra energy drawn by the motors over the year, and its cost at the mean energy price. */
@@ -201,6 +219,27 @@ const money = z
   .min(0, 'Write an amount of 0 or more.')
   .max(1e10, 'This amount is too large.');
 
+const capacitorInput = z.object({
+  kvar: z
+    .number({ error: 'Write the size of the bank in kvar.' })
+    .positive('The bank is larger than 0 kvar; leave it empty for none.')
+    .max(100_000, 'The bank is at most 100,000 kvar.'),
+  lossWPerKvar: z
+    .number({ error: 'Write the losses in watts per kvar.' })
+    .min(0, 'Losses lie between 0 and 20 W per kvar.')
+    .max(20, 'Losses lie between 0 and 20 W per kvar.'),
+  detuningPercent: z
+    .number({ error: 'Write the reactors in per cent, as 7.' })
+    .min(1, 'Detuning reactors lie between 1 and 25 %.')
+    .max(25, 'Detuning reactors lie between 1 and 25 %.')
+    .optional(),
+  shortCircuitKva: z
+    .number({ error: 'Write the short-circuit power in kVA.' })
+    .min(100, 'The short-circuit power lies between 100 and 10,000,000 kVA.')
+    .max(1e7, 'The short-circuit power lies between 100 and 10,000,000 kVA.')
+    .optional(),
+});
+
 /** A plan as its form sends it. Amounts in major units. */
 export const planInput = z.object({
   name: z.string().trim().min(1, 'Give the plan a name.').max(80, 'A name has at most 80 characters.'),
@@ -214,6 +253,7 @@ export const planInput = z.object({
       }),
     )
     .max(40, 'A plan has at most 40 motors.'),
+  capacitors: capacitorInput.optional(),
   capitalCost: money,
   yearlyUpkeep: money,
   economics: z.object({

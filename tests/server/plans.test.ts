@@ -1,5 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { planInput, type PlanInput, type PlanView } from '@/schemas/plan';
+import { planDefaults, planInput, type PlanInput, type PlanView } from '@/schemas/plan';
 import type { ServiceError } from '@/server/errors';
 import { Plan } from '@/server/models/Plan';
 import { openEngagement } from '@/server/services/engagements';
@@ -178,6 +178,33 @@ describe('a priced plan', () => {
     const view = await named('Same');
     expect(view.saving).toBe(0);
     expect(view.paybackWords).toBe('never');
+  });
+});
+
+describe('capacitors in a plan', () => {
+  it('are refused by the form without a size or with losses nobody builds', () => {
+    const base = { name: 'C', fields: [], capitalCost: 0, yearlyUpkeep: 0, economics: { ...planDefaults } };
+    const paths = (capacitors: unknown) =>
+      planInput.safeParse({ ...base, capacitors }).error?.issues.map((issue) => issue.path.join('.'));
+    expect(paths({ kvar: 0, lossWPerKvar: 5 })).toEqual(['capacitors.kvar']);
+    expect(paths({ kvar: 600, lossWPerKvar: 50 })).toEqual(['capacitors.lossWPerKvar']);
+    expect(paths({ kvar: 600, lossWPerKvar: 5 })).toBeUndefined();
+  });
+
+  it('draw their losses and resonate at the root of short-circuit power over kvar', async () => {
+    const capacitors = { kvar: 600, lossWPerKvar: 5, shortCircuitKva: 15_000 };
+    await createPlan(station.opened, plan('C', [], { capacitors }));
+    const view = await named('C');
+    // h = sqrt(15,000 / 600) = 5, at the fifth harmonic
+    expect(view.capacitors?.resonance).toEqual({ order: 5, near: [5] });
+    expect(view.fields.every((field) => field.fieldA === field.todayA)).toBe(true);
+    const { standing } = await plansOf(station.opened);
+    const energyOf = (one: PlanView) => one.groupTotals.energy;
+    // 600 kvar x 5 W/kvar = 3 kW over 8,760 h at 0.05 (winter) and 0.064 (summer, 1 Jun to 30 Sep: 122 days) USD/kWh
+    const expected = 3 * 24 * (243 * 0.05 + 122 * 0.064);
+    expect(energyOf(view) - energyOf(standing)).toBeCloseTo(expected, 0);
+    expect(view.groupTotals.reactive).toBeLessThan(standing.groupTotals.reactive);
+    await removePlan(await openPlan(station.actor, view.id!), { version: view.version });
   });
 });
 

@@ -118,6 +118,53 @@ function PlanFields({ motors, currency }: Pick<PlanFormProps, 'motors' | 'curren
   );
 }
 
+/** The alternative everybody knows: a fixed bank on the plant's bus. */
+function CapacitorFields() {
+  const { register, formState, watch } = useFormContext<PlanDraft>();
+  const fault = (path: string) => messageAt(formState.errors, path);
+  const size = watch('capacitors.kvar').trim();
+  const none = size === '' || size === '0';
+  return (
+    <fieldset className="mt-5">
+      <legend>Capacitors instead, or besides</legend>
+      <div className="form-grid">
+        <NumberField
+          label="Bank, all steps together"
+          unit="kvar"
+          hint="Empty for none"
+          {...register('capacitors.kvar')}
+          error={fault('capacitors.kvar')}
+        />
+        {!none && (
+          <>
+            <NumberField
+              label="Losses"
+              unit="W/kvar"
+              hint="About 0.5 plain, 4 to 8 with reactors"
+              {...register('capacitors.lossWPerKvar')}
+              error={fault('capacitors.lossWPerKvar')}
+            />
+            <NumberField
+              label="Detuning reactors"
+              unit="%"
+              hint="5.67, 7 or 14; empty for none"
+              {...register('capacitors.detuningPercent')}
+              error={fault('capacitors.detuningPercent')}
+            />
+            <NumberField
+              label="Short-circuit power at the bank"
+              unit="kVA"
+              hint="For the check of resonance; empty if not known"
+              {...register('capacitors.shortCircuitKva')}
+              error={fault('capacitors.shortCircuitKva')}
+            />
+          </>
+        )}
+      </div>
+    </fieldset>
+  );
+}
+
 function RemovePlan({ code, name, plan }: { code: string; name: string; plan: { id: number; version: number } }) {
   const [asked, setAsked] = useState(false);
   const remove = useMutation({
@@ -167,6 +214,7 @@ function Form(props: PlanFormProps) {
         }}
       >
         <PlanFields motors={motors} currency={currency} />
+        <CapacitorFields />
         {stored && (
           <StaleCompare
             what={stored.name}

@@ -5,6 +5,8 @@ import { typedNumber } from '../motors/draft';
 export interface PlanDraft {
   name: string;
   fields: { motorId: number; fieldA: string }[];
+  /** An empty size is no bank. */
+  capacitors: { kvar: string; lossWPerKvar: string; detuningPercent: string; shortCircuitKva: string };
   capitalCost: string;
   yearlyUpkeep: string;
   economics: { discountPercent: string; escalationPercent: string; horizonYears: string };
@@ -16,6 +18,7 @@ export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknow
   return {
     name: draft.name,
     fields: draft.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typedNumber(fieldA) })),
+    capacitors: bankToInput(draft.capacitors),
     capitalCost: typedNumber(draft.capitalCost),
     yearlyUpkeep: typedNumber(draft.yearlyUpkeep),
     economics: {
@@ -27,8 +30,23 @@ export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknow
   };
 }
 
+/** A bank of 0 or no kvar is none. */
+function bankToInput(bank: PlanDraft['capacitors']): unknown {
+  const kvar = typedNumber(bank.kvar);
+  if (kvar === undefined || kvar === 0) return undefined;
+  return {
+    kvar,
+    lossWPerKvar: typedNumber(bank.lossWPerKvar),
+    detuningPercent: typedNumber(bank.detuningPercent),
+    shortCircuitKva: typedNumber(bank.shortCircuitKva),
+  };
+}
+
 /** Amperes as an operator reads them: a tenth at most, so that a solved value stays within its limit. */
-const typed = (value: number) => String(Math.round(value * 1e6) / 1e6);
+const typed = (value: number | undefined) => (value === undefined ? '' : String(Math.round(value * 1e6) / 1e6));
+
+/** Losses of a detuned bank with its reactors and contactors. Common practice, [W/kvar]. */
+const usualLossWPerKvar = 5;
 
 /** A stored plan, or the start of a new one, in the form. */
 export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
@@ -36,6 +54,12 @@ export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
   return {
     name: plan.name,
     fields: plan.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typed(fieldA) })),
+    capacitors: {
+      kvar: typed(plan.capacitors?.kvar),
+      lossWPerKvar: typed(plan.capacitors?.lossWPerKvar ?? usualLossWPerKvar),
+      detuningPercent: typed(plan.capacitors?.detuningPercent),
+      shortCircuitKva: typed(plan.capacitors?.shortCircuitKva),
+    },
     capitalCost: typed(plan.capitalCost),
     yearlyUpkeep: typed(plan.yearlyUpkeep),
     economics: {
@@ -51,6 +75,10 @@ export function planEntries(draft: PlanDraft, motorName: (motorId: number) => st
   return {
     Name: draft.name,
     ...Object.fromEntries(draft.fields.map(({ motorId, fieldA }) => [`${motorName(motorId)} field, A`, fieldA])),
+    'Capacitors, kvar': draft.capacitors.kvar,
+    'Capacitor losses, W/kvar': draft.capacitors.lossWPerKvar,
+    'Detuning, %': draft.capacitors.detuningPercent,
+    'Short-circuit power, kVA': draft.capacitors.shortCircuitKva,
     'Work, once': draft.capitalCost,
     'Upkeep a year': draft.yearlyUpkeep,
     'Discount rate, %': draft.economics.discountPercent,

@@ -1,13 +1,9 @@
 import { addDays } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
-import type { BillView, CostCurveView, PlanView, YearView } from '../../schemas/plan';
-import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
-import type { CashFlowData } from '../charts/CashFlowChart';
-import type { CostCurveData } from '../charts/CostCurveChart';
-import type { PaybackData } from '../charts/PaybackChart';
+import type { BillView, PlanView, YearView } from '../../schemas/plan';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
 import { formatAmount, formatDay, formatNumber } from '../ui/format';
-import { amperes, billName, groupNames, hoursWords } from './words';
+import { billName, groupNames, hoursWords, ordinal } from './words';
 
 interface Entry {
   label: string;
@@ -29,6 +25,7 @@ export function plansTable(year: YearView, shownId: number | null): LedgerData {
       unit: 'A',
       cell: (plan) => fieldCell(plan, motorId),
     })),
+    ...(year.plans.some((plan) => plan.capacitors) ? bankEntries : []),
     { label: 'pf at peak, worst bill', unit: '', cell: pfCell },
     ...groupNames
       .filter(([group]) => [year.standing, ...year.plans].some((plan) => plan.groupTotals[group] !== 0))
@@ -73,6 +70,30 @@ function fieldCell(plan: PlanView, motorId: number): LedgerValue {
   return { value: formatNumber(field.fieldA, { upTo: 1 }), note };
 }
 
+const bankEntries: Entry[] = [
+  {
+    label: 'Capacitors',
+    unit: 'kvar',
+    cell: ({ capacitors }) => {
+      if (!capacitors) return { value: 'none', tone: 'quiet' };
+      const { kvar, detuningPercent } = capacitors;
+      const note = detuningPercent === undefined ? 'plain' : `detuned, ${formatNumber(detuningPercent, { upTo: 2 })} %`;
+      return { value: formatNumber(kvar), note };
+    },
+  },
+  {
+    label: 'Resonance with the supply',
+    unit: 'order',
+    cell: ({ capacitors }) => {
+      if (!capacitors) return null;
+      if (!capacitors.resonance) return { value: 'not checked', tone: 'warn' };
+      const { order, near } = capacitors.resonance;
+      const words = near.length > 0 ? `near the ${near.map(ordinal).join(', ')}` : undefined;
+      return { value: formatNumber(order, { decimals: 1 }), note: words, tone: near.length > 0 ? 'fault' : undefined };
+    },
+  },
+];
+
 function pfCell({ worstPf }: PlanView): LedgerValue {
   if (!worstPf) return { value: 'not known', tone: 'quiet' };
   return `${formatNumber(worstPf.value, { decimals: 2 })}${worstPf.leading ? ' leading' : ''}`;
@@ -94,28 +115,6 @@ const valueCell = ({ appraisal, economics }: PlanView): LedgerCell => ({
   tone: appraisal.npv < 0 ? 'fault' : undefined,
   note: `${economics.horizonYears} years, ${formatNumber(economics.discountPercent, { upTo: 1 })} %`,
 });
-
-const drawnGroups = new Set(['demand', 'reactive']);
-const drawnTotal = (bill: BillView) =>
-  bill.lines.filter((line) => drawnGroups.has(line.group)).reduce((sum, line) => sum + line.amount, 0);
-
-/** Demand and reactive lines of each bill before and after a plan. */
-export function billsChart(year: YearView, plan: PlanView): BillsBeforeAfterData {
-  return {
-    currency: year.currency,
-    planName: plan.name,
-    what: 'demand and reactive lines',
-    bills: year.standing.bills.map((bill, index) => {
-      const [month = '', inYear] = billName(bill).split(' ');
-      return {
-        label: month,
-        year: index === 0 || month === 'Jan' ? inYear : undefined,
-        before: drawnTotal(bill),
-        after: drawnTotal(plan.bills[index] ?? bill),
-      };
-    }),
-  };
-}
 
 /** One bill line by line, before and after; each figure can be asked why. */
 export function billLines(before: BillView, after: BillView, currency: string, planName: string): LedgerData {
@@ -190,54 +189,5 @@ export function changeTable(year: YearView, plan: PlanView): LedgerData {
       })),
     ],
     total: { group: plan.name, change: formatAmount(minor(plan.yearTotal), year.currency) },
-  };
-}
-
-/** The cost of the year round a setting of one motor, the others held at the plan's. */
-export function costCurve(
-  curve: CostCurveView,
-  others: { name: string; fieldA: number }[],
-  currency: string,
-): CostCurveData {
-  const points = curve.points
-    .filter((point) => point.admissible)
-    .map(({ fieldA, total }) => ({ fieldA, yearCost: total }));
-  const at = (fieldA: number) => points.find((point) => Math.abs(point.fieldA - fieldA) < 1e-6);
-  const held = others.map((other) => `${other.name} at ${amperes(other.fieldA)}`).join(', ');
-  const isMoved = Math.abs(curve.todayA - curve.chosenA) > 1e-6;
-  return {
-    currency,
-    points,
-    chosen: at(curve.chosenA) ?? points[0] ?? { fieldA: curve.chosenA, yearCost: 0 },
-    standing: isMoved ? (at(curve.todayA) ?? null) : null,
-    standingName: `${curve.name} left at ${amperes(curve.todayA)}`,
-    limitFieldA: curve.ratedLimitA,
-    reserveFieldA: curve.limitA < curve.ratedLimitA - 1e-6 ? curve.limitA : undefined,
-    axisName: `Field current of ${curve.name}, A${held ? ` (${held})` : ''}`,
-  };
-}
-
-/** Cumulative cash of a plan with the band of eight of ten samples. */
-export function paybackChart(plan: PlanView): PaybackData {
-  return {
-    currency: plan.currency,
-    capitalCost: plan.capitalCost,
-    paybackYears: plan.paybackWords === 'never' ? null : plan.appraisal.simplePaybackYears,
-    editionName: plan.name,
-    points: plan.cashFlow
-      .filter((month) => month.month % 3 === 0)
-      .map((month) => ({ year: month.month / 12, cumulative: month.cumulative, p10: month.low, p90: month.high })),
-  };
-}
-
-/** Cash of each year: the work, then saving less upkeep. */
-export function cashFlowChart(plan: PlanView): CashFlowData {
-  const atYear = (year: number) => plan.cashFlow.find((month) => month.month === 12 * year)?.cumulative ?? 0;
-  return {
-    currency: plan.currency,
-    years: Array.from({ length: plan.economics.horizonYears + 1 }, (_, year) => ({
-      year,
-      flow: year === 0 ? atYear(0) : atYear(year) - atYear(year - 1),
-    })),
   };
 }

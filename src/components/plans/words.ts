@@ -1,6 +1,7 @@
 import { dayNumber, isoDate } from '../../core/load';
 import type { AssumedValue } from '../../schemas/motor';
 import type { ChargeGroup, PlanField, PlanView, YearView } from '../../schemas/plan';
+import { capacitorCaution } from '../ui/Caution';
 import { formatMajor, formatMonth, formatNumber, formatQuantity, formatSpelled } from '../ui/format';
 
 /** Groups in the order of the tables, in words. */
@@ -21,9 +22,16 @@ export const amperes = (fieldA: number) => formatQuantity(fieldA, 'A', { upTo: 1
 
 const changed = (field: PlanField) => Math.abs(field.fieldA - field.todayA) > 1e-6;
 
-/** What a plan does to the fields: "Raise two fields", "Lower the field of M-1", "Leave the fields alone". */
+/** "5th", "7th", "3rd". */
+export const ordinal = (count: number) => `${count}${count % 10 === 3 && count % 100 !== 13 ? 'rd' : 'th'}`;
+
+/** What a plan does: "Raise two fields", "Leave the fields alone and add 900 kvar of capacitors". */
 export function actionWords(plan: PlanView): string {
-  const fields = plan.fields.filter(changed);
+  const bank = plan.capacitors ? ` and add ${formatQuantity(plan.capacitors.kvar, 'kvar')} of capacitors` : '';
+  return `${fieldAction(plan.fields.filter(changed))}${bank}`;
+}
+
+function fieldAction(fields: PlanField[]): string {
   const [first] = fields;
   if (!first) return 'Leave the fields alone';
   const raised = fields.filter((field) => field.fieldA > field.todayA).length;
@@ -156,6 +164,23 @@ export function lossesFinding(year: YearView, plan: PlanView): string {
   if (losses <= 0) return `The motors lose less too: ${money(losses)} of energy a year.`;
   if (gained <= 0) return `Extra losses of ${money(losses)} a year bring nothing in return.`;
   return `Extra losses take back ${money(losses)} of the ${money(gained)} gained.`;
+}
+
+/** What stands beside plans with capacitors: the usual caution, and each bank's resonance. */
+export function capacitorSentences(year: YearView): string[] {
+  const banks = year.plans.filter((plan) => plan.capacitors);
+  if (banks.length === 0) return [];
+  return [
+    capacitorCaution,
+    ...banks.map(({ name, capacitors }) => {
+      const resonance = capacitors?.resonance;
+      if (!resonance) return `${name}: resonance is not checked, the short-circuit power is not known.`;
+      const order = `order ${formatNumber(resonance.order, { decimals: 1 })}`;
+      return resonance.near.length > 0
+        ? `${name} resonates at ${order}, near the ${resonance.near.map(ordinal).join(' and ')} harmonic: detune it or choose another size.`
+        : `${name} resonates at ${order}, half an order and more from the usual harmonics.`;
+    }),
+  ];
 }
 
 /** The assumed values that matter to the kvar in hand, in one sentence; null where none does. */

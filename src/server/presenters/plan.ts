@@ -1,11 +1,13 @@
 import { operatingPoint, panelCurrentA, type SynchronousMotor } from '../../core/machine';
 import { fromMinorUnits, wordNumber } from '../../core/units';
-import type { MotorPlanResult } from '../../core/plan';
+import { resonanceCheck, type MotorPlanResult } from '../../core/plan';
 import type { PricedBill } from '../../core/tariff';
 import type { AssumedValue } from '../../schemas/motor';
 import type {
   AppraisalView,
   BillView,
+  CapacitorBank,
+  CapacitorView,
   CashFlowMonth,
   ChargeGroup,
   PlanEconomics,
@@ -22,7 +24,12 @@ export function storedPlan(plan: Plan, currency: string) {
   return {
     version: plan.version,
     name: plan.name,
-    fields: plan.actions.map(({ motorId, fieldA }) => ({ motorId: Number(motorId), fieldA: Number(fieldA) })),
+    fields: plan.actions
+      .filter(({ kind }) => kind === 'field')
+      .map(({ motorId, fieldA }) => ({ motorId: Number(motorId), fieldA: Number(fieldA) })),
+    capacitors: plan.actions
+      .filter(({ kind }) => kind === 'capacitor')
+      .map(({ kind: _kind, ...bank }) => bank as unknown as CapacitorBank)[0],
     capitalCost: fromMinorUnits(plan.capitalCostMinor, currency),
     yearlyUpkeep: fromMinorUnits(plan.yearlyUpkeepMinor, currency),
     economics: plan.economics as unknown as PlanEconomics,
@@ -97,6 +104,14 @@ export function presentPlanMotor(
   };
 }
 
+/** A capacitor bank with its resonance against the usual harmonics. */
+export function presentCapacitors(bank: CapacitorBank | null): CapacitorView | null {
+  if (!bank) return null;
+  const { kvar, shortCircuitKva, detuningPercent } = bank;
+  const resonance = shortCircuitKva ? resonanceCheck({ kvar, shortCircuitKva, detuningPercent }) : null;
+  return { ...bank, resonance };
+}
+
 /** A motor's field under a plan, with what a brushless machine's panel shows. */
 export function presentPlanField(
   motor: { id: number; name: string; machine: SynchronousMotor; fieldTodayA: number },
@@ -125,11 +140,13 @@ export interface PlanParts {
   plan: Plan | null;
   currency: string;
   fields: PlanField[];
+  capacitors: CapacitorView | null;
   bills: BillView[];
   standingTotal: number;
   money: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconomics };
   appraisal: AppraisalView;
   paybackWords: string;
+  paybackSpread: PlanView['paybackSpread'];
   cashFlow: CashFlowMonth[];
   motors: PlanMotorView[];
   hoursLeading: PlanView['hoursLeading'];
@@ -152,6 +169,7 @@ export function presentPlan(parts: PlanParts): PlanView {
     name: plan?.name ?? 'Standing',
     currency: parts.currency,
     fields: parts.fields,
+    capacitors: parts.capacitors,
     bills,
     yearTotal,
     saving: plan ? sumOf([parts.standingTotal, -yearTotal]) : 0,
@@ -160,6 +178,7 @@ export function presentPlan(parts: PlanParts): PlanView {
     ...money,
     appraisal: parts.appraisal,
     paybackWords: parts.paybackWords,
+    paybackSpread: parts.paybackSpread,
     cashFlow: parts.cashFlow,
     motors: parts.motors,
     extraLossKwh: parts.motors.reduce((sum, motor) => sum + motor.extraLossKwh, 0),

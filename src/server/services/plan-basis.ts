@@ -4,7 +4,7 @@ import type { CalendarInput, PlateInput } from '../../schemas/motor';
 import { conflict } from '../errors';
 import type { Motor } from '../models/Motor';
 import { calculateYear } from '../workers/pool';
-import type { TaskBasis, TaskFields, TaskSetting } from '../workers/tasks';
+import type { TaskAct, TaskBasis, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import { listMotors } from './motors';
 import { completePlate } from './nameplates';
@@ -74,19 +74,19 @@ const cacheSize = 60;
 const shared = globalThis as typeof globalThis & { counterlagSettings?: Map<string, Promise<TaskSetting>> };
 const cache = (shared.counterlagSettings ??= new Map());
 
-const keyOf = (basis: PlanBasis, fields: TaskFields) =>
-  `${basis.fingerprint} ${JSON.stringify([...fields].sort((a, b) => a.motorId - b.motorId))}`;
+const keyOf = (basis: PlanBasis, { fields, capacitors }: TaskAct) =>
+  `${basis.fingerprint} ${JSON.stringify([[...fields].sort((a, b) => a.motorId - b.motorId), capacitors])}`;
 
 /** Prices settings over the year; each is worked out once as long as nothing it hangs on changes. */
-export async function priceSettings(basis: PlanBasis, settings: TaskFields[]): Promise<TaskSetting[]> {
-  const fresh = settings.filter((fields) => !cache.has(keyOf(basis, fields)));
+export async function priceSettings(basis: PlanBasis, settings: TaskAct[]): Promise<TaskSetting[]> {
+  const fresh = settings.filter((act) => !cache.has(keyOf(basis, act)));
   const work = fresh.length > 0 ? calculateYear({ kind: 'year', basis: basis.task, settings: fresh }) : null;
-  const results = settings.map((fields) => {
-    const index = fresh.indexOf(fields);
-    const known = cache.get(keyOf(basis, fields));
+  const results = settings.map((act) => {
+    const index = fresh.indexOf(act);
+    const known = cache.get(keyOf(basis, act));
     return work && index >= 0 ? work.then((done) => done[index] as TaskSetting) : (known as Promise<TaskSetting>);
   });
-  settings.forEach((fields, index) => keep(keyOf(basis, fields), results[index] as Promise<TaskSetting>));
+  settings.forEach((act, index) => keep(keyOf(basis, act), results[index] as Promise<TaskSetting>));
   return Promise.all(results);
 }
 

@@ -1,5 +1,11 @@
 import { appraise, cashFlow, escalatedSavings, sampleAppraisal, type Project } from '../../core/economics';
-import { cashFlowSpread, type AppraisalView, type CashFlowMonth, type PlanEconomics } from '../../schemas/plan';
+import {
+  cashFlowSpread,
+  type AppraisalView,
+  type CashFlowMonth,
+  type PlanEconomics,
+  type PlanView,
+} from '../../schemas/plan';
 
 /** What a plan's money hangs on. Amounts in major units. */
 export interface PlanMoney {
@@ -30,11 +36,11 @@ function projectOf({ savingByGroup, capitalCost, yearlyUpkeep, economics }: Plan
 /** Paybacks, present value and rate of return of a plan. */
 export const appraisePlan = (money: PlanMoney): AppraisalView => appraise(projectOf(money));
 
-/** Cumulative cash flow by month with the band of eight of ten samples. The same plan gives the same band. */
-export function planCashFlow(money: PlanMoney): CashFlowMonth[] {
+/** Cumulative cash flow by month and payback, with the band of eight of ten samples. The same plan gives the same band. */
+export function planCashFlow(money: PlanMoney): Pick<PlanView, 'cashFlow' | 'paybackSpread'> {
   const { months } = cashFlow(projectOf(money));
   const firstYearSaving = Object.values(money.savingByGroup).reduce((sum, amount) => sum + amount, 0);
-  const { band } = sampleAppraisal({
+  const { band, paybackMonths } = sampleAppraisal({
     capitalCost: money.capitalCost,
     firstYearSaving,
     yearlyUpkeep: money.yearlyUpkeep,
@@ -49,12 +55,13 @@ export function planCashFlow(money: PlanMoney): CashFlowMonth[] {
     samples,
     seed,
   });
-  return months.map(({ month, cumulative }, index) => ({
+  const monthly = months.map(({ month, cumulative }, index): CashFlowMonth => ({
     month,
     cumulative,
     low: band[index]?.p10,
     high: band[index]?.p90,
   }));
+  return { cashFlow: monthly, paybackSpread: { lowMonths: paybackMonths.p10, highMonths: paybackMonths.p90 } };
 }
 
 /** Simple payback in words. */

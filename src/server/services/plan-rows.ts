@@ -1,3 +1,4 @@
+import type { CapacitorBank } from '../../schemas/plan';
 import type { Plan as PlanRow } from '../models/Plan';
 import { Plan } from '../models/Plan';
 
@@ -12,6 +13,20 @@ export function fieldActions(plan: PlanRow): FieldAction[] {
   return plan.actions.flatMap(({ kind, motorId, fieldA }) =>
     kind === 'field' && typeof motorId === 'number' && typeof fieldA === 'number' ? { motorId, fieldA } : [],
   );
+}
+
+const optional = (value: unknown) => (typeof value === 'number' ? value : undefined);
+
+/** The capacitor bank of a stored plan; null where it has none. */
+export function capacitorAction(plan: PlanRow): CapacitorBank | null {
+  const action = plan.actions.find(({ kind }) => kind === 'capacitor');
+  if (!action) return null;
+  return {
+    kvar: Number(action.kvar),
+    lossWPerKvar: Number(action.lossWPerKvar),
+    detuningPercent: optional(action.detuningPercent),
+    shortCircuitKva: optional(action.shortCircuitKva),
+  };
 }
 
 /** The plans of an engagement in the order they were made. */

@@ -35,7 +35,15 @@ export async function planStart(
     }));
   if (stored && stored.id !== null) {
     const { capitalCost = 0, yearlyUpkeep = 0, economics = { ...planDefaults } } = current ?? {};
-    const start = { name: stored.name, fields: fieldsOf(stored.fields), capitalCost, yearlyUpkeep, economics };
+    const capacitors = current?.capacitors ?? undefined;
+    const start = {
+      name: stored.name,
+      fields: fieldsOf(stored.fields),
+      capacitors,
+      capitalCost,
+      yearlyUpkeep,
+      economics,
+    };
     return { start, plan: { id: stored.id, version: stored.version } };
   }
   if (asked.plan !== 'new') return null;

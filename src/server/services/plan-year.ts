@@ -7,19 +7,20 @@ import {
   chargeGroups,
   groupTotals,
   nearestLimitWords,
+  presentCapacitors,
   presentPlan,
   presentPlanField,
   presentPlanMotor,
   presentPricedBill,
   storedPlan,
 } from '../presenters/plan';
-import type { TaskSetting } from '../workers/tasks';
+import type { TaskAct, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
 import { appraisePlan, paybackWords, planCashFlow, type PlanMoney } from './plan-economics';
 import { fieldFault } from './plan-limits';
-import { fieldActions, listPlans, type FieldAction } from './plan-rows';
+import { capacitorAction, fieldActions, listPlans, type FieldAction } from './plan-rows';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -53,10 +54,10 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
   const faults = rows.map((row) => faultOf(fieldActions(row), motors));
   const priceable = rows.filter((_, index) => faults[index] === null);
-  const [standing, ...settings] = (await priceSettings(basis, [[], ...priceable.map(fieldActions)])) as [
-    TaskSetting,
-    ...TaskSetting[],
-  ];
+  const [standing, ...settings] = (await priceSettings(basis, [
+    { fields: [], capacitors: null },
+    ...priceable.map(actOf),
+  ])) as [TaskSetting, ...TaskSetting[]];
   const year: Year = { opened, basis, motors, standing };
   const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
   return {
@@ -76,6 +77,13 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     notes: [...new Set(standing.bills.flatMap((bill) => bill.notes))],
     fingerprint: basis.fingerprint,
   };
+}
+
+/** What a stored plan does. */
+function actOf(row: Plan): TaskAct {
+  const bank = capacitorAction(row);
+  const capacitors = bank && { kvar: bank.kvar, lossWPerKvar: bank.lossWPerKvar };
+  return { fields: fieldActions(row), capacitors };
 }
 
 /** Why a stored plan cannot be offered any more; null where it can. */
@@ -142,12 +150,13 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     plan: row,
     currency,
     fields: motors.map((motor) => presentPlanField(motorFacts(motor), fieldOf(motor))),
+    capacitors: presentCapacitors(row && capacitorAction(row)),
     bills,
     standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
     money: { capitalCost, yearlyUpkeep, economics },
     appraisal,
     paybackWords: wordsOfPayback(money, appraisal.simplePaybackYears),
-    cashFlow: row ? planCashFlow(money) : [],
+    ...(row ? planCashFlow(money) : { cashFlow: [], paybackSpread: null }),
     motors: views,
     hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
     nearestLimit: nearestLimitWords(views),

@@ -95,7 +95,10 @@ async function checkedValues(opened: OpenEngagement, input: PlanInput) {
   const { currency } = opened.engagement;
   return {
     name: input.name,
-    actions: input.fields.map(({ motorId, fieldA }) => ({ kind: 'field', motorId, fieldA })),
+    actions: [
+      ...input.fields.map(({ motorId, fieldA }) => ({ kind: 'field', motorId, fieldA })),
+      ...(input.capacitors ? [{ kind: 'capacitor', ...input.capacitors }] : []),
+    ],
     capitalCostMinor: toMinorUnits(input.capitalCost, currency),
     yearlyUpkeepMinor: toMinorUnits(input.yearlyUpkeep, currency),
     economics: input.economics as unknown as Record<string, number>,

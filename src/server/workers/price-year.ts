@@ -2,7 +2,7 @@ import { localDateStartMs, type LoadSeries } from '../../core/load';
 import { shaftLoadSeries, simulatePlan, type PlanMotor } from '../../core/plan';
 import { compilePricing, readSchedule, type CompiledPricing } from '../../core/tariff';
 import { toShiftCalendar } from '../services/shaft-load';
-import type { TaskBasis, TaskFields, TaskSetting, YearTask } from './tasks';
+import type { TaskAct, TaskBasis, TaskSetting, YearTask } from './tasks';
 
 /** A task made ready: the motors' shaft loads on the readings' own intervals, the schedule laid out over them. */
 export interface ReadyYear {
@@ -27,14 +27,15 @@ export function readyYear(basis: TaskBasis): ReadyYear {
 /** Prices every setting of a task over the year. */
 export function priceYear({ basis, settings }: YearTask): TaskSetting[] {
   const ready = readyYear(basis);
-  return settings.map((fields) => priceSetting(ready, fields));
+  return settings.map((act) => priceSetting(ready, act));
 }
 
-function priceSetting({ basis, motors, pricing }: ReadyYear, fields: TaskFields): TaskSetting {
+function priceSetting({ basis, motors, pricing }: ReadyYear, { fields, capacitors }: TaskAct): TaskSetting {
   const fieldOf = (index: number) => fields.find((one) => one.motorId === basis.motors[index]?.id)?.fieldA;
   const result = simulatePlan({
     load: basis.load,
     motors: motors.map((motor, index) => ({ ...motor, planFieldA: fieldOf(index) ?? motor.standingFieldA })),
+    capacitors: capacitors ? [capacitors] : [],
   });
   const bills = pricing.bills(result.load);
   return {

@@ -30,11 +30,17 @@ export interface TaskBasis {
 /** Field currents by motor; a motor not named stays at today's. */
 export type TaskFields = { motorId: number; fieldA: number }[];
 
+/** One way to act. */
+export interface TaskAct {
+  fields: TaskFields;
+  capacitors: { kvar: number; lossWPerKvar: number } | null;
+}
+
 export interface YearTask {
   kind: 'year';
   basis: TaskBasis;
   /** Settings to price; none at all is standing. */
-  settings: TaskFields[];
+  settings: TaskAct[];
 }
 
 /** One motor over the year at one setting. */

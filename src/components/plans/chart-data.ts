@@ -1,0 +1,89 @@
+import type { BillView, CostCurveView, PlanView, SearchView, YearView } from '../../schemas/plan';
+import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
+import type { CashFlowData } from '../charts/CashFlowChart';
+import type { CostCurveData } from '../charts/CostCurveChart';
+import type { PaybackData } from '../charts/PaybackChart';
+import { amperes, billName } from './words';
+
+const drawnGroups = new Set(['demand', 'reactive']);
+const drawnTotal = (bill: BillView) =>
+  bill.lines.filter((line) => drawnGroups.has(line.group)).reduce((sum, line) => sum + line.amount, 0);
+
+/** Demand and reactive lines of each bill before and after a plan. */
+export function billsChart(year: YearView, plan: PlanView): BillsBeforeAfterData {
+  return {
+    currency: year.currency,
+    planName: plan.name,
+    what: 'demand and reactive lines',
+    bills: year.standing.bills.map((bill, index) => {
+      const [month = '', inYear] = billName(bill).split(' ');
+      return {
+        label: month,
+        year: index === 0 || month === 'Jan' ? inYear : undefined,
+        before: drawnTotal(bill),
+        after: drawnTotal(plan.bills[index] ?? bill),
+      };
+    }),
+  };
+}
+
+/** The cost of the year round a setting of one motor, the others held at the plan's. */
+export function costCurve(
+  curve: CostCurveView,
+  search: Pick<SearchView, 'fields' | 'bound'>,
+  currency: string,
+): CostCurveData {
+  const points = curve.points
+    .filter((point) => point.admissible)
+    .map(({ fieldA, total }) => ({ fieldA, yearCost: total }));
+  const at = (fieldA: number) => points.find((point) => Math.abs(point.fieldA - fieldA) < 1e-6);
+  const { bound } = search;
+  const others = search.fields.filter((field) => field.motorId !== curve.motorId);
+  const held = others.map((other) => `${other.name} at ${amperes(other.fieldA)}`).join(', ');
+  const isMoved = Math.abs(curve.todayA - curve.chosenA) > 1e-6;
+  return {
+    currency,
+    points,
+    chosen: at(curve.chosenA) ?? points[0] ?? { fieldA: curve.chosenA, yearCost: 0 },
+    standing: isMoved ? (at(curve.todayA) ?? null) : null,
+    standingName: `${curve.name} left at ${amperes(curve.todayA)}`,
+    limitFieldA: curve.ratedLimitA,
+    reserveFieldA: curve.limitA < curve.ratedLimitA - 1e-6 ? curve.limitA : undefined,
+    bound: bound?.total ?? null,
+    axisName: `Field current of ${curve.name}, A${held ? ` (${held})` : ''}`,
+  };
+}
+
+/** Between which years eight of ten samples pay back; null where some do not within the horizon. */
+function paybackRange({ paybackSpread }: PlanView): PaybackData['paybackRange'] {
+  const { lowMonths, highMonths } = paybackSpread ?? { lowMonths: null, highMonths: null };
+  return lowMonths === null || highMonths === null || highMonths === 0
+    ? null
+    : { fromYears: lowMonths / 12, toYears: highMonths / 12 };
+}
+
+/** Cumulative cash of a plan with the band of eight of ten samples. */
+export function paybackChart(plan: PlanView): PaybackData {
+  return {
+    currency: plan.currency,
+    capitalCost: plan.capitalCost,
+    paybackYears: plan.paybackWords === 'never' ? null : plan.appraisal.simplePaybackYears,
+    paybackRange: paybackRange(plan),
+    editionName: plan.name,
+    points: plan.cashFlow
+      .filter((month) => month.month % 3 === 0)
+      .map((month) => ({ year: month.month / 12, cumulative: month.cumulative, p10: month.low, p90: month.high })),
+  };
+}
+
+/** Cash of each year: the work, then saving less upkeep. */
+export function cashFlowChart(plan: PlanView): CashFlowData {
+  const atYear = (year: number) => plan.cashFlow.find((month) => month.month === 12 * year)?.cumulative ?? 0;
+  return {
+    currency: plan.currency,
+    years: Array.from({ length: plan.economics.horizonYears + 1 }, (_, year) => ({
+      year,
+      flow: year === 0 ? atYear(0) : atYear(year) - atYear(year - 1),
+    })),
+  };
+}

@@ -36,7 +36,7 @@ export function plansTable(year: YearView, shownId: number | null): LedgerData {
     { label: 'Upkeep a year', unit: currency, cell: onlyPlans((plan) => whole(plan.yearlyUpkeep)) },
     { label: 'Simple payback', unit: 'months', cell: onlyPlans(paybackCell) },
     { label: 'Net present value', unit: currency, cell: onlyPlans(valueCell) },
-    { label: 'Extra losses', unit: 'kWh', cell: onlyPlans((plan) => whole(plan.extraLossKwh)) },
+    { label: 'Extra losses of the motors', unit: 'kWh', cell: onlyPlans((plan) => whole(plan.extraLossKwh)) },
     { label: 'Hours leading at the meter', unit: 'h', cell: (plan) => hoursWords(plan.hoursLeading.after) },
     { label: 'Nearest limit', unit: '', cell: (plan) => plan.nearestLimit },
   ];

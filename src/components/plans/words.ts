@@ -177,7 +177,7 @@ export function capacitorSentences(year: YearView): string[] {
       if (!resonance) return `${name}: resonance is not checked, the short-circuit power is not known.`;
       const order = `order ${formatNumber(resonance.order, { decimals: 1 })}`;
       return resonance.near.length > 0
-        ? `${name} resonates at ${order}, near the ${resonance.near.map(ordinal).join(' and ')} harmonic: detune it or choose another size.`
+        ? `${name} resonates at ${order}, near the ${resonance.near.map(ordinal).join(' and ')} harmonic: ${capacitors.detuningPercent ? 'choose another size or tuning' : 'detune it or choose another size'}.`
         : `${name} resonates at ${order}, half an order and more from the usual harmonics.`;
     }),
   ];

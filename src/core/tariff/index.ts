@@ -1,3 +1,23 @@
+/**
+ * The schedule language: reading a tariff, pricing bills on it, explaining them.
+ *
+ * Where the language leaves a choice, this is what is done:
+ * - A file that does not say `straddle` goes by days, one without `demandWindow` takes the series' own interval, one without `inForce` holds
+ *   for every day; each is noted in `Schedule.notes`.
+ * - In a version a map by season or window is changed key by key where all its keys are known, else replaced; months are always added. Saying
+ *   another kind (`formula` where there was `highest`) drops what belonged to the old one. `field: removed` takes a field away.
+ * - A line shared by intervals takes, in each piece, the share that the measures under that piece's text have there.
+ * - A top-up or cap that stands in some pieces only compares the parts the lines have in these; its own parts go by days.
+ * - A condition that fails makes the rest of its line unneeded.
+ * - "This year" of a look back is the calendar year of a period's first day. A look back counts bills; gaps between them are noted.
+ * - A told month of history is completed with the rates and contract inputs of the bill that looks back.
+ * - At unity from printed figures, a measure whose formula is a multiple of the cell's active energy or power becomes that multiple of the
+ *   printed measure of the same kind; what comes out the same for any active amount is taken as certain.
+ * - A printed look back keeps its value at unity unless every period it asks for is known.
+ * - A negative quantity is priced at the first tier's rate.
+ * - Highest values within 1e-12 of each other are a tie: the earlier instant stands.
+ * - Misspelt contract inputs and given quantities are refused; names of history nobody knows are noted.
+ */
 export { PriceError, ScheduleError, wordProblem, type ScheduleProblem } from './errors';
 export { describeSchedule, type ScheduleDescription } from './describe';
 export type {

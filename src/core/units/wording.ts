@@ -5,15 +5,15 @@ import { minorUnitDecimals, roundToMinorUnit } from './currency';
  * A number as explanations write it: thousands commas, a decimal point, no exponent.
  *
  * @param value  Any finite number
- * @param step  Rounding step of the value; its decimals are all written. Without it up to six decimals are written (six significant
- *   ones below 1) and closing zeros left away
+ * @param step  Rounding step of the value; its decimals are all written. Without it up to six decimals are written (three from
+ *   1,000 on, six significant ones below 1) and closing zeros left away
  */
 export function wordNumber(value: number, step?: number): string {
   if (!Number.isFinite(value)) return 'unknown';
   if (step !== undefined) return withCommas(value.toFixed(Math.min(20, decimalsOf(step))));
   const size = Math.abs(value);
   if (size === 0) return '0';
-  const decimals = size >= 1 ? 6 : Math.min(18, 5 - Math.floor(Math.log10(size)));
+  const decimals = size >= 1000 ? 3 : size >= 1 ? 6 : Math.min(18, 5 - Math.floor(Math.log10(size)));
   const rounded = roundToStep(value, { step: Number(`1e-${decimals}`), mode: 'nearest' });
   return withCommas(rounded.toFixed(decimals).replace(/\.?0+$/, ''));
 }

@@ -72,7 +72,7 @@ describe('explanations', () => {
       'Energy: 346,375 kWh x 0.081 + 163,625 kWh x 0.064 = 38,528.38 USD; the first tier ends at 250 x billedKw = 346,375 kWh, the second tier ends at 400 x billedKw = 554,200 kWh.',
     );
     expect(quantityWords(march)['billedKw']).toBe(
-      'billedKw = maxKw x max(1; 0.92 / pf) = 1,250 x max(1; 0.92 / 0.83) = 1,385.542169, to 0.1: 1,385.5 kW.',
+      'billedKw = maxKw x max(1; 0.92 / pf) = 1,250 x max(1; 0.92 / 0.83) = 1,385.542, to 0.1: 1,385.5 kW.',
     );
     expect(lineWords(april)['minimum']).toBe(
       'Minimum: raises 1,603.82 to 16,200.00 (18 x contractKw = 18 x 900): 14,596.18 USD.',

@@ -17,15 +17,17 @@ const contentPolicy = [
   "style-src-attr 'unsafe-inline'",
 ].join('; ');
 
-/** Adds what Astro's own policy (hashes of scripts and styles) cannot say, and keeps pages of people out of caches. */
+/**
+ * Adds what Astro's own policy (hashes of scripts and styles) cannot say, and keeps pages of people out of caches. A
+ * page that took the place of another comes by here twice and is left as it is the second time.
+ */
 function harden(response: Response): Response {
-  const own = response.headers.get('content-security-policy');
+  const own = response.headers.get('content-security-policy') ?? '';
+  const isPage = response.headers.get('content-type')?.startsWith('text/html') ?? false;
   // The development server puts styles and scripts into the page that no policy can know; the built one is held to it.
-  if (!import.meta.env.DEV && response.headers.get('content-type')?.startsWith('text/html')) {
-    response.headers.set(
-      'content-security-policy',
-      own ? `${own.replace(/;\s*$/, '')}; ${contentPolicy}` : contentPolicy,
-    );
+  if (!import.meta.env.DEV && isPage && !own.includes(contentPolicy)) {
+    const policies = [own.replace(/;\s*$/, ''), contentPolicy].filter((policy) => policy !== '');
+    response.headers.set('content-security-policy', policies.join('; '));
   }
   if (!response.headers.has('cache-control')) response.headers.set('cache-control', 'private, no-store');
   return response;

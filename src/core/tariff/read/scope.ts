@@ -1,3 +1,4 @@
+import { reservedWords } from '../formula/functions';
 import type { Problems, Placed } from './problems';
 
 /** What a name stands for. `broken` entries stay known, so that they cause no further problems. */
@@ -72,7 +73,7 @@ export class Scope {
         remedy: 'A name is a small letter, then letters and digits: billedKva.',
       };
     }
-    if (['and', 'or', 'not', 'days', 'hours'].includes(name)) {
+    if (reservedWords.has(name)) {
       return { message: `"${name}" is a word of the language.`, remedy: 'Choose another name.' };
     }
     const taken = this.taken.get(name);

@@ -26,7 +26,7 @@ export function reactiveOf(
     return splitSigned(signed);
   }
   if (lagging && !leading) {
-    if (!lagging.some((figure) => figure < 0)) return { lagging, leading: null };
+    if (!isSigned(lagging)) return { lagging, leading: null };
     notes.push({
       code: 'reactive-signed',
       message: 'The lagging column holds negative figures and there is no leading one: negative is read as leading.',
@@ -60,12 +60,11 @@ function splitSigned(signed: Float64Array): Reactive {
 function keepSigns(lagging: Float64Array | null, leading: Float64Array | null, notes: IntakeNote[]): Reactive {
   const lag = lagging?.slice() ?? null;
   let lead = leading?.slice() ?? null;
-  if (lead && lead.some((figure) => figure < 0) && !lead.some((figure) => figure > 0)) {
+  if (isSigned(lead) && lead && !lead.some((figure) => figure > 0)) {
     lead = lead.map((figure) => Math.abs(figure));
     notes.push({ code: 'leading-sign', message: 'The leading column is printed negative: its size is kept.' });
   }
   let moved = 0;
-  const isSigned = (figures: Float64Array | null): boolean => figures?.some((figure) => figure < 0) ?? false;
   const length = isSigned(lag) || isSigned(lead) ? ((lag ?? lead)?.length ?? 0) : 0;
   for (let slot = 0; slot < length; slot += 1) {
     for (const [own, other] of [
@@ -85,6 +84,11 @@ function keepSigns(lagging: Float64Array | null, leading: Float64Array | null, n
       message: `${moved} negative reactive readings are counted in the opposite sense.`,
     });
   return { lagging: lag, leading: lead };
+}
+
+function isSigned(figures: Float64Array | null): boolean {
+  for (let slot = 0; slot < (figures?.length ?? 0); slot += 1) if ((figures?.[slot] ?? 0) < 0) return true;
+  return false;
 }
 
 /** kvarh of an interval from its kVAh: the other side of the right triangle. */

@@ -76,11 +76,13 @@ const round = (figure: number): number => Math.round(figure * 1000) / 1000;
 function withoutExport(net: Float64Array): { kwh: Float64Array; negative: number; exported: number } {
   let negative = 0;
   let exported = 0;
-  const kwh = net.map((figure) => {
-    if (!(figure < 0)) return figure;
+  const kwh = net.slice();
+  for (let slot = 0; slot < kwh.length; slot += 1) {
+    const figure = kwh[slot] ?? Number.NaN;
+    if (!(figure < 0)) continue;
     negative += 1;
     exported -= figure;
-    return 0;
-  });
+    kwh[slot] = 0;
+  }
   return { kwh, negative, exported };
 }

@@ -111,7 +111,11 @@ export function beginnings(
   marks: NonNullable<StampStyle['marks']>,
 ): Float64Array {
   if (marks === 'begin') return walls;
-  return walls.map(
-    (wall) => (marks === 'own-day-end' && Number.isInteger(wall / 1440) ? wall + 1440 : wall) - stepMinutes,
-  );
+  const starts = new Float64Array(walls.length);
+  for (let at = 0; at < walls.length; at += 1) {
+    const wall = walls[at] ?? Number.NaN;
+    const isOwnDay = marks === 'own-day-end' && Number.isInteger(wall / 1440);
+    starts[at] = wall - stepMinutes + (isOwnDay ? 1440 : 0);
+  }
+  return starts;
 }

@@ -120,12 +120,18 @@ function rowsInWords(grid: RowNumbers, rows: readonly number[]): string {
   return `${rows.length === 1 ? 'row' : 'rows'} ${shown.join(', ')}${rows.length > 6 ? ' …' : ''}`;
 }
 
+function isOnGrid(utc: Float64Array, first: number, stepMinutes: number): boolean {
+  for (let at = 0; at < utc.length; at += 1) {
+    const minute = utc[at] ?? Number.NaN;
+    if (!Number.isNaN(minute) && !Number.isInteger((minute - first) / stepMinutes)) return false;
+  }
+  return true;
+}
+
 /** Minutes after a multiple of the step at which most readings begin. */
 function phaseOf(placed: readonly PlacedStrand[], stepMinutes: number): number {
   const first = placed[0]?.timeline.utc.find((minute) => !Number.isNaN(minute)) ?? 0;
-  const isRegular = placed.every(({ timeline }) =>
-    timeline.utc.every((minute) => Number.isNaN(minute) || Number.isInteger((minute - first) / stepMinutes)),
-  );
+  const isRegular = placed.every(({ timeline }) => isOnGrid(timeline.utc, first, stepMinutes));
   if (isRegular) return first % stepMinutes;
   const counts = new Map<number, number>();
   for (const { timeline } of placed) {

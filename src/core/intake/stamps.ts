@@ -49,6 +49,16 @@ export class StampScanner {
   private lastDay = 0;
   private lastNumber = Number.NaN;
 
+  /** Order that every cell from now on is read in; set, stamps that differ from the one before in their clock time alone are read at once. */
+  steadyOrder: DateOrder | null = null;
+  private memoText = '';
+  private memoStart = 0;
+  private memoLength = -1;
+  /** Where the two digits of the hour stand in the remembered stamp. */
+  private memoHourAt = 0;
+  private hourAt = -1;
+  private isRepeat = false;
+
   /** Minutes east of UTC as written, or NaN. */
   offsetMinutes = Number.NaN;
   /** The cell names a span, such as 00:00-00:15; the fields are its beginning. */
@@ -60,6 +70,10 @@ export class StampScanner {
 
   /** Collects the fields of text[start, end); false if it cannot be a date or time. */
   scan(text: string, start: number, end: number): boolean {
+    this.isRepeat = this.memoLength === end - start && this.repeats(text, start);
+    if (this.isRepeat) return true;
+    this.memoLength = -1;
+    this.hourAt = -1;
     this.count = 0;
     this.monthField = -1;
     this.timeField = -1;
@@ -84,7 +98,10 @@ export class StampScanner {
         else this.add(field, at - from);
       } else if (code === 58) {
         if (this.count === 0) return false;
-        if (this.timeField < 0) this.timeField = this.count - 1;
+        if (this.timeField < 0) {
+          this.timeField = this.count - 1;
+          this.hourAt = this.lengths[this.timeField] === 2 ? at - 2 - start : -1;
+        }
         this.colons += 1;
         at += 1;
       } else if (code === 43 || code === 45) {
@@ -184,6 +201,7 @@ export class StampScanner {
 
   /** Gives the fields meaning; false if they are no date or time in this order. */
   resolve(order: DateOrder): boolean {
+    if (this.isRepeat) return true;
     this.day = Number.NaN;
     this.minute = Number.NaN;
     let at = 0;
@@ -192,6 +210,33 @@ export class StampScanner {
       if (at < 0) return false;
     }
     return this.resolveTime(this.timeField >= 0 ? this.timeField : at, at);
+  }
+
+  /** Remembers the stamp just resolved, as the pattern of those that follow: a whole date, HH:MM and a tail without am or pm. */
+  remember(text: string, start: number, end: number): void {
+    if (this.isRepeat || this.hourAt < 6 || this.timeField < 1 || this.meridiem !== '' || this.isSpan) return;
+    this.memoText = text;
+    this.memoStart = start;
+    this.memoLength = end - start;
+    this.memoHourAt = this.hourAt;
+  }
+
+  /** Whether a cell is the remembered stamp but for its HH:MM; sets the minute if so. */
+  private repeats(text: string, start: number): boolean {
+    if (this.steadyOrder === null) return false;
+    const hourAt = this.memoHourAt;
+    for (let at = 0; at < this.memoLength; at += 1) {
+      if (at >= hourAt && at < hourAt + 5 && at !== hourAt + 2) continue;
+      if (text.charCodeAt(start + at) !== this.memoText.charCodeAt(this.memoStart + at)) return false;
+    }
+    const digit = (at: number): number => text.charCodeAt(start + hourAt + at) - 48;
+    const [h, hh, m, mm] = [digit(0), digit(1), digit(3), digit(4)];
+    if (h < 0 || h > 2 || hh < 0 || hh > 9 || m < 0 || m > 5 || mm < 0 || mm > 9) return false;
+    const hour = h * 10 + hh;
+    if (hour > 23) return false;
+    // Seconds are part of the tail that is alike.
+    this.minute = hour * 60 + m * 10 + mm + (this.minute - Math.floor(this.minute));
+    return true;
   }
 
   /** Reads the fields as a time of day, bare figures as HMM or HHMM. */

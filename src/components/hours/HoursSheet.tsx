@@ -38,59 +38,82 @@ function Budget({ answer }: { answer: HoursAnswer }) {
   );
 }
 
+interface PartProps {
+  code: string;
+  answer: HoursAnswer;
+  isPartner: boolean;
+  today: string;
+  onChanged: (day?: string) => void;
+}
+
+function WritePart({ code, answer, isPartner, today, onChanged }: PartProps) {
+  const last = answer.entries.find((entry) => entry.mine);
+  const start = { day: today, time: '', station: last?.station ?? 'bills', note: '', billable: true };
+  return (
+    <SheetPart
+      id="write"
+      number="1"
+      title="Write hours"
+      reference={
+        <>
+          <p>Time as 1:45, 1.75, 105m or 0845-1030</p>
+          <p>Minutes are kept as they are typed; nothing is rounded here</p>
+        </>
+      }
+      result={<ResultSums title={isPartner ? 'All hours' : 'Your hours'} rows={sumRows(answer)} />}
+    >
+      <HourForm code={code} start={start} onSaved={(saved) => onChanged(saved.day)} />
+    </SheetPart>
+  );
+}
+
+function EntriesPart({ code, answer, isPartner, onChanged }: PartProps) {
+  return (
+    <SheetPart
+      id="entries"
+      number="3"
+      title="Entries"
+      reference={
+        <>
+          <p>Rate: the one in force on the day of the work; that of the engagement before the general one</p>
+          <p>An entry is changed only by who wrote it; the trail keeps what it was</p>
+        </>
+      }
+    >
+      {answer.entries.length > 0 ? (
+        <EntryList code={code} answer={answer} withPerson={isPartner} onChanged={() => onChanged()} />
+      ) : (
+        <p className="quiet">Nothing yet. The first entry stands here as soon as it is written.</p>
+      )}
+    </SheetPart>
+  );
+}
+
 function Sheet({ code, answer: first, isPartner, today, members, others, me }: HoursSheetProps) {
   const queries = useQueryClient();
-  const key = ['hours', code];
-  const { data } = useQuery({ queryKey: key, queryFn: () => listHours(code), initialData: first });
+  const queryKey = ['hours', code];
+  const { data: answer } = useQuery({ queryKey, queryFn: () => listHours(code), initialData: first });
   const [monday, setMonday] = useState(mondayOf(today));
-  const refresh = () => void queries.invalidateQueries({ queryKey: key });
-  const last = data.entries.find((entry) => entry.mine);
-  const start = { day: today, time: '', station: last?.station ?? 'bills', note: '', billable: true };
-  const rows = sumRows(data);
+  const onChanged = (day?: string) => {
+    if (day) setMonday(mondayOf(day));
+    void queries.invalidateQueries({ queryKey });
+  };
+  const part = { code, answer, isPartner, today, onChanged };
   return (
     <>
-      <SheetHeading title={hoursHeading(code, data, isPartner)} lead={`Today is ${formatDate(today)}.`} />
+      <SheetHeading title={hoursHeading(code, answer, isPartner)} lead={`Today is ${formatDate(today)}.`} />
       <ColumnNames />
-      <SheetPart
-        id="write"
-        number="1"
-        title="Write hours"
-        reference={
-          <>
-            <p>Time as 1:45, 1.75, 105m or 0845-1030</p>
-            <p>Minutes are kept as they are typed; nothing is rounded here</p>
-          </>
-        }
-        result={<ResultSums title={isPartner ? 'All hours' : 'Your hours'} rows={rows} />}
-      >
-        <HourForm code={code} start={start} onSaved={(saved) => (setMonday(mondayOf(saved.day)), refresh())} />
-      </SheetPart>
+      <WritePart {...part} />
       <SheetPart
         id="week"
         number="2"
         title="The week"
         reference={<p>Days off in well, today in copper</p>}
-        result={isPartner ? <Budget answer={data} /> : null}
+        result={isPartner ? <Budget answer={answer} /> : null}
       >
-        <WeekTable entries={data.entries} withPerson={isPartner} {...{ monday, today }} onMonday={setMonday} />
+        <WeekTable entries={answer.entries} withPerson={isPartner} {...{ monday, today }} onMonday={setMonday} />
       </SheetPart>
-      <SheetPart
-        id="entries"
-        number="3"
-        title="Entries"
-        reference={
-          <>
-            <p>Rate: the one in force on the day of the work; that of the engagement before the general one</p>
-            <p>An entry is changed only by who wrote it; the trail keeps what it was</p>
-          </>
-        }
-      >
-        {data.entries.length > 0 ? (
-          <EntryList code={code} answer={data} withPerson={isPartner} onChanged={refresh} />
-        ) : (
-          <p className="quiet">Nothing yet. The first entry stands here as soon as it is written.</p>
-        )}
-      </SheetPart>
+      <EntriesPart {...part} />
       <SheetPart
         id="members"
         number="4"

@@ -82,7 +82,9 @@ async function findingsToDecide(opened: OpenEngagement, stations: StationView[],
     date,
     dateIs: 'since',
     days: daysBetween(date, today),
-    title: one ? `Finding ${letters[0]}: ${year.findings[0]?.title}` : `${letters.length} findings in the bills`,
+    title: one
+      ? `Finding ${letters[0]}: ${year.findings[0]?.title}`
+      : `Findings ${letters[0]} to ${letters.at(-1)} in the bills`,
     where: whereOf(opened),
     why: one
       ? (year.findings[0]?.sentence ?? '')

@@ -164,6 +164,23 @@ describe('the search for the best field currents', () => {
     expect((await latestSearch(opened))?.id).toBe(job.id);
   });
 
+  it('goes round a gap in the readings', async () => {
+    const gapped = await buildPlansStation((load) => {
+      for (const channel of [load.kwh, load.kvarhLagging, load.kvarhLeading]) channel.fill(NaN, 5000, 5040);
+      load.quality.fill(2, 5000, 5040);
+    });
+    const job = await startSearch(gapped.actor, gapped.opened, { stepA: 25 });
+    const { state, result } = await new Promise<JobProgress>((resolve, reject) => {
+      const listener = (progress: JobProgress) => void (progress.state !== 'running' && resolve({ ...progress }));
+      watchJob(gapped.actor, job.id, listener).catch(reject);
+    });
+    expect(state).toBe('done');
+    expect((result as unknown as SearchView).saving).toBeGreaterThan(0);
+    const { readings, notes } = await plansOf(gapped.opened);
+    expect(readings.missing).toBe(40);
+    expect(notes.join(' ')).toContain('missing');
+  });
+
   it('can be stopped, and another may begin then; two at once are refused', async () => {
     const { actor, opened } = station;
     const job = await startSearch(actor, opened, { stepA: 0.5 });

@@ -1,3 +1,4 @@
+import type { LoadSeries } from '@/core/load';
 import { inTx } from '@/server/db/tx';
 import { TariffChoice } from '@/server/models/TariffChoice';
 import type { Actor } from '@/server/policies/actor';
@@ -31,14 +32,15 @@ export interface PlansStation {
 /**
  * An engagement with all a plan needs: a year of steady readings at power factor 0.74, twelve bills, a schedule that charges
  * for poor power factor, two motors that run under-excited.
+ *
+ * @param spoil  changes the readings before they are kept: a gap, for instance
  */
-export async function buildPlansStation(): Promise<PlansStation> {
+export async function buildPlansStation(spoil: (load: LoadSeries) => void = () => undefined): Promise<PlansStation> {
   const actor = await buildActor();
   const engagement = await buildEngagement({ memberIds: [actor.id] });
-  await keepLoad(
-    engagement,
-    steadyLoad('2025-11-01', '2026-11-01', () => 3000, 0.9),
-  );
+  const load = steadyLoad('2025-11-01', '2026-11-01', () => 3000, 0.9);
+  spoil(load);
+  await keepLoad(engagement, load);
   const months = twelveMonths(2025, 11);
   await keepBills(
     engagement,

@@ -1,8 +1,9 @@
 import { MessageChannel } from 'node:worker_threads';
 import { Piscina } from 'piscina';
+import { conflict } from '../errors';
 import { log } from '../log';
 import { locateWorker } from './locate';
-import type { SearchProgress, SearchResult, SearchTask, TaskSetting, YearTask } from './tasks';
+import type { Refused, SearchProgress, SearchResult, SearchTask, TaskSetting, YearTask } from './tasks';
 
 const shared = globalThis as typeof globalThis & { counterlagPool?: Piscina };
 
@@ -23,8 +24,20 @@ function createPool(): Piscina {
 
 const pool = () => (shared.counterlagPool ??= createPool());
 
-/** Prices settings over a year in a thread of its own, in the order asked. */
-export const calculateYear = (task: YearTask) => pool().run(task) as Promise<TaskSetting[]>;
+/** A task's result, or the error of what a person can act on. */
+function resultOf<Result extends object>(answer: Result | Refused): Result {
+  if (!('refused' in answer)) return answer;
+  throw conflict(`The year cannot be priced: ${answer.refused}`, { station: 'tariff' });
+}
+
+/**
+ * Prices settings over a year in a thread of its own, in the order asked.
+ *
+ * @throws {ServiceError} 409 where schedule, readings or motors do not allow it
+ */
+export async function calculateYear(task: YearTask): Promise<TaskSetting[]> {
+  return resultOf((await pool().run(task)) as TaskSetting[] | Refused);
+}
 
 /** Searches in a thread of its own and tells how far it is. An abort ends the thread. */
 export async function calculateSearch(
@@ -36,7 +49,7 @@ export async function calculateSearch(
   port1.on('message', onProgress);
   try {
     const withPort: SearchTask = { ...task, kind: 'search', port: port2 };
-    return (await pool().run(withPort, { signal, transferList: [port2] })) as SearchResult;
+    return resultOf((await pool().run(withPort, { signal, transferList: [port2] })) as SearchResult | Refused);
   } finally {
     port1.close();
   }

@@ -71,3 +71,8 @@ export interface SearchProgress {
 }
 
 export type SearchResult = SearchView;
+
+/** Why a task cannot be done, in words for a person. */
+export interface Refused {
+  refused: string;
+}

@@ -71,6 +71,32 @@ function Limits({ data, plot, palette, hatchId }: Omit<Parts, 'divisor'> & { hat
   );
 }
 
+/** Today's setting; its words go to the side away from the chosen one where the two lie close together. */
+function StandingMark({ data, plot, palette, divisor }: Parts) {
+  const { standing, chosen, standingName } = data;
+  if (!standing) return null;
+  const words = standingName ?? `today ${formatQuantity(standing.fieldA, 'A', { upTo: 1 })}`;
+  const x = plot.x(standing.fieldA);
+  const y = plot.y(standing.yearCost / divisor);
+  const room = words.length * 6.4 + 70;
+  const toChosen = plot.x(chosen.fieldA) - x;
+  const crowded = toChosen > 0 && toChosen < room;
+  const fitsLeft = x - room + 60 > plot.left;
+  const place = !crowded
+    ? { x: x + 10, y: y - 3, anchor: 'start' as const }
+    : fitsLeft
+      ? { x: x - 10, y: y + 14, anchor: 'end' as const }
+      : { x: plot.left + 6, y: y + 20, anchor: 'start' as const };
+  return (
+    <>
+      <PointMark x={x} y={y} shape="circle" palette={palette} />
+      <Words {...place} palette={palette} halo>
+        {words}
+      </Words>
+    </>
+  );
+}
+
 function Marks({ data, plot, palette, divisor }: Parts) {
   const { chosen, standing, bound } = data;
   const x = plot.x(chosen.fieldA);
@@ -90,19 +116,7 @@ function Marks({ data, plot, palette, divisor }: Parts) {
           </Words>
         </>
       )}
-      {standing && (
-        <>
-          <PointMark
-            x={plot.x(standing.fieldA)}
-            y={plot.y(standing.yearCost / divisor)}
-            shape="circle"
-            palette={palette}
-          />
-          <Words x={plot.x(standing.fieldA) + 10} y={plot.y(standing.yearCost / divisor) - 3} palette={palette} halo>
-            {data.standingName ?? `today ${formatQuantity(standing.fieldA, 'A', { upTo: 1 })}`}
-          </Words>
-        </>
-      )}
+      {standing && <StandingMark data={data} plot={plot} palette={palette} divisor={divisor} />}
       <path d={`M${x} ${y}v${above ? -34 : 34}`} stroke={palette.ink} />
       <PointMark x={x} y={y} shape="diamond" palette={palette} />
       <Words x={x} y={above ? y - 54 : y + 48} palette={palette} bold anchor="middle" halo>

@@ -113,17 +113,23 @@ function PaybackMark({
   const x = plot.x(data.paybackYears);
   const y = plot.y(0);
   const below = plot.bottom - y > 62;
-  const textY = below ? y + 44 : y - 48;
+  const textY = below ? y + 44 : y + 19;
   const flip = x > (plot.left + plot.right) / 2 + 40;
   const range = data.paybackRange;
   const months = (years: number) => formatNumber(Math.round(years * 12));
   const whiskers = range
     ? [range.fromYears, range.toYears].map((years) => `M${plot.x(years)} ${y - 4}v8`).join('')
     : '';
-  const place = { x: flip ? x - 4 : x + 4, palette, anchor: flip ? ('end' as const) : ('start' as const), halo: true };
+  const aside = below ? 4 : 12;
+  const place = {
+    x: flip ? x - aside : x + aside,
+    palette,
+    anchor: flip ? ('end' as const) : ('start' as const),
+    halo: true,
+  };
   return (
     <>
-      <path d={`${whiskers}M${x} ${y}V${below ? y + 34 : y - 40}`} stroke={palette.ink} fill="none" />
+      <path d={`${whiskers}M${x} ${y}V${below ? y + 34 : y}`} stroke={palette.ink} fill="none" />
       <PointMark x={x} y={y} shape="circle" palette={palette} />
       <Words {...place} y={textY} bold size={narrow ? 12 : 13.5}>
         {narrow ? formatPayback(data.paybackYears) : `paid back after ${formatPayback(data.paybackYears)}`}

@@ -91,31 +91,103 @@ export function VCurveLimits({ data, plot, palette, ends }: VCurveParts) {
   );
 }
 
-export function VCurveNames({ data, plot, palette, ends, narrow }: VCurveParts) {
-  const { armatureA, fieldA, pullOut, pullOutName } = data.limits;
+interface Mark {
+  x: number;
+  y: number;
+  shape: MarkShape;
+  words: string;
+  /** Words over the mark, where another stands close beside it. */
+  above: boolean;
+  anchor: 'middle' | 'end';
+}
+
+/** Ground that words cover, in pixels. */
+interface Box {
+  left: number;
+  right: number;
+  top: number;
+  bottom: number;
+}
+
+const letterWidth = 6.6;
+const overlaps = (a: Box, b: Box) => a.left < b.right && b.left < a.right && a.top < b.bottom && b.top < a.bottom;
+
+/** Box of a line of words whose baseline begins, ends or is centred at a place. */
+function wordsBox(words: string, x: number, y: number, anchor: 'start' | 'middle' | 'end'): Box {
+  const width = words.length * letterWidth;
+  const left = anchor === 'start' ? x : anchor === 'end' ? x - width : x - width / 2;
+  return { left, right: left + width, top: y - 12, bottom: y + 4 };
+}
+
+/** The settings marked on the curves, with where their words go. */
+function marksOf({ data, plot, narrow }: VCurveParts): Mark[] {
+  const { today, plan, nameplate } = data;
+  const at = toPixels(plot);
+  const mark = (point: CurrentPoint, shape: MarkShape, words: string, above: boolean): Mark => {
+    const { x, y } = at(point);
+    return { x, y, shape, words, above, anchor: x > plot.right - 60 ? 'end' : 'middle' };
+  };
+  const amperes = ({ fieldA }: CurrentPoint) => formatQuantity(fieldA, 'A', { upTo: 1 });
+  const near = today && plan && Math.abs(at(plan).x - at(today).x) < 104 && Math.abs(at(plan).y - at(today).y) < 30;
+  return [
+    ...(nameplate ? [mark(nameplate, 'square', narrow ? '' : 'nameplate', true)] : []),
+    ...(today ? [mark(today, 'circle', `today ${amperes(today)}`, false)] : []),
+    ...(plan ? [mark(plan, 'diamond', `${data.planName ?? 'plan'} ${amperes(plan)}`, Boolean(near))] : []),
+  ];
+}
+
+const markPlace = ({ x, y, above, anchor }: Mark) => ({ x: anchor === 'end' ? x - 10 : x, y: above ? y - 12 : y + 20 });
+
+/** Everything a mark covers: the point itself and its words. */
+function markBoxes(mark: Mark): Box[] {
+  const { x, y } = markPlace(mark);
+  const point = { left: mark.x - 8, right: mark.x + 8, top: mark.y - 8, bottom: mark.y + 8 };
+  return mark.words ? [point, wordsBox(mark.words, x, y, mark.anchor)] : [point];
+}
+
+/** Names of the loads at the foot of their curves, moved or left out where a mark's words stand. */
+function LoadNames(parts: VCurveParts) {
+  const { data, plot, palette, narrow } = parts;
+  const taken = marksOf(parts).flatMap(markBoxes);
   const loads = narrow ? data.curves.filter((_, index) => index % 2 === 0) : data.curves;
-  const unityAt = (index: number) => data.unity[index];
+  return loads.map((curve) => {
+    const foot = data.unity[data.curves.indexOf(curve)];
+    if (!foot) return null;
+    const { x, y } = toPixels(plot)(foot);
+    const words = `${formatNumber(curve.loadPercent)} %${curve === data.curves.at(-1) ? ' load' : ''}`;
+    const places = [
+      { x: x + 6, y: y - 5, anchor: 'start' as const },
+      { x: x - 8, y: y - 5, anchor: 'end' as const },
+      { x: x + 6, y: y + 14, anchor: 'start' as const },
+    ];
+    const place = places.find(({ x: left, y: base, anchor }) => {
+      const box = wordsBox(words, left, base, anchor);
+      return !taken.some((other) => overlaps(box, other));
+    });
+    if (!place) return null;
+    taken.push(wordsBox(words, place.x, place.y, place.anchor));
+    return (
+      <Words
+        key={curve.loadPercent}
+        {...place}
+        palette={palette}
+        bold={curve.loadPercent === data.usualLoadPercent}
+        halo
+      >
+        {words}
+      </Words>
+    );
+  });
+}
+
+export function VCurveNames(parts: VCurveParts) {
+  const { data, plot, palette, ends, narrow } = parts;
+  const { armatureA, fieldA, pullOut, pullOutName } = data.limits;
   const edge = pullOut?.[0];
   const low = plot.bottom - 24;
   return (
     <>
-      {loads.map((curve) => {
-        const bottom = unityAt(data.curves.indexOf(curve));
-        if (!bottom) return null;
-        const usual = curve.loadPercent === data.usualLoadPercent;
-        return (
-          <Words
-            key={curve.loadPercent}
-            x={plot.x(bottom.fieldA) + 6}
-            y={plot.y(bottom.armatureA) - 5}
-            palette={palette}
-            bold={usual}
-            halo
-          >
-            {`${formatNumber(curve.loadPercent)} %${curve === data.curves.at(-1) ? ' load' : ''}`}
-          </Words>
-        );
-      })}
+      <LoadNames {...parts} />
       <Words
         x={narrow ? plot.left + 8 : (plot.left + plot.right) / 2}
         y={plot.y(armatureA) - 5}
@@ -155,35 +227,13 @@ export function VCurveNames({ data, plot, palette, ends, narrow }: VCurveParts) 
   );
 }
 
-export function VCurveMarks({ data, plot, palette, narrow }: VCurveParts) {
-  const { today, plan, nameplate } = data;
-  const at = toPixels(plot);
-  const marks: { at: CurrentPoint; shape: MarkShape; words: string; above?: boolean }[] = [];
-  if (nameplate) marks.push({ at: nameplate, shape: 'square', words: narrow ? '' : 'nameplate', above: true });
-  if (today)
-    marks.push({ at: today, shape: 'circle', words: `today ${formatQuantity(today.fieldA, 'A', { upTo: 1 })}` });
-  if (plan) {
-    const near = today && Math.abs(at(plan).x - at(today).x) < 104 && Math.abs(at(plan).y - at(today).y) < 30;
-    const words = `${data.planName ?? 'plan'} ${formatQuantity(plan.fieldA, 'A', { upTo: 1 })}`;
-    marks.push({ at: plan, shape: 'diamond', words, above: Boolean(near) });
-  }
-  return marks.map((mark) => {
-    const { x, y } = at(mark.at);
-    const right = x > plot.right - 60;
-    return (
-      <g key={mark.shape}>
-        <PointMark x={x} y={y} shape={mark.shape} palette={palette} />
-        <Words
-          x={right ? x - 10 : x}
-          y={mark.above ? y - 12 : y + 20}
-          palette={palette}
-          bold
-          halo
-          anchor={right ? 'end' : 'middle'}
-        >
-          {mark.words}
-        </Words>
-      </g>
-    );
-  });
+export function VCurveMarks(parts: VCurveParts) {
+  return marksOf(parts).map((mark) => (
+    <g key={mark.shape}>
+      <PointMark x={mark.x} y={mark.y} shape={mark.shape} palette={parts.palette} />
+      <Words {...markPlace(mark)} palette={parts.palette} bold halo anchor={mark.anchor}>
+        {mark.words}
+      </Words>
+    </g>
+  ));
 }

@@ -129,6 +129,7 @@ function stampReader(plan: ColumnPlan, scanner: StampScanner): StampReader {
     return (row) => roundSeconds((grid.number(row, stamp, decimalMark) - 25_569) * 1440);
   if (stamp >= 0 && order === 'epoch') return (row) => epochMinute(grid.number(row, stamp, decimalMark));
   if (stamp >= 0) {
+    scanner.steadyOrder = order;
     return (row) =>
       grid.scan(row, stamp, scanner) && scanner.resolve(order)
         ? roundSeconds(scanner.day * 1440 + (Number.isNaN(scanner.minute) ? 0 : scanner.minute))

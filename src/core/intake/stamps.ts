@@ -54,8 +54,8 @@ export class StampScanner {
   private memoText = '';
   private memoStart = 0;
   private memoLength = -1;
-  /** Where the two digits of the hour stand in the remembered stamp. */
-  private memoHourAt = 0;
+  private scannedLength = 0;
+  /** Where the two digits of the hour stand in the stamp. */
   private hourAt = -1;
   private isRepeat = false;
 
@@ -73,6 +73,9 @@ export class StampScanner {
     this.isRepeat = this.memoLength === end - start && this.repeats(text, start);
     if (this.isRepeat) return true;
     this.memoLength = -1;
+    this.memoText = text;
+    this.memoStart = start;
+    this.scannedLength = end - start;
     this.hourAt = -1;
     this.count = 0;
     this.monthField = -1;
@@ -209,33 +212,36 @@ export class StampScanner {
       at = this.resolveDate(order);
       if (at < 0) return false;
     }
-    return this.resolveTime(this.timeField >= 0 ? this.timeField : at, at);
+    if (!this.resolveTime(this.timeField >= 0 ? this.timeField : at, at)) return false;
+    this.remember();
+    return true;
   }
 
-  /** Remembers the stamp just resolved, as the pattern of those that follow: a whole date, HH:MM and a tail without am or pm. */
-  remember(text: string, start: number, end: number): void {
-    if (this.isRepeat || this.hourAt < 6 || this.timeField < 1 || this.meridiem !== '' || this.isSpan) return;
-    this.memoText = text;
-    this.memoStart = start;
-    this.memoLength = end - start;
-    this.memoHourAt = this.hourAt;
+  /** Keeps the stamp just resolved as the pattern of those that follow: a whole date, HH:MM and a tail without am or pm. */
+  private remember(): void {
+    const isPattern = this.hourAt >= 6 && this.timeField > 0 && this.meridiem === '' && !this.isSpan;
+    if (isPattern && this.steadyOrder !== null) this.memoLength = this.scannedLength;
   }
 
   /** Whether a cell is the remembered stamp but for its HH:MM; sets the minute if so. */
   private repeats(text: string, start: number): boolean {
     if (this.steadyOrder === null) return false;
-    const hourAt = this.memoHourAt;
+    const { hourAt } = this;
     for (let at = 0; at < this.memoLength; at += 1) {
       if (at >= hourAt && at < hourAt + 5 && at !== hourAt + 2) continue;
       if (text.charCodeAt(start + at) !== this.memoText.charCodeAt(this.memoStart + at)) return false;
     }
-    const digit = (at: number): number => text.charCodeAt(start + hourAt + at) - 48;
-    const [h, hh, m, mm] = [digit(0), digit(1), digit(3), digit(4)];
-    if (h < 0 || h > 2 || hh < 0 || hh > 9 || m < 0 || m > 5 || mm < 0 || mm > 9) return false;
-    const hour = h * 10 + hh;
-    if (hour > 23) return false;
+    const at = start + hourAt;
+    const tens = text.charCodeAt(at) - 48;
+    const ones = text.charCodeAt(at + 1) - 48;
+    const tensOfMinute = text.charCodeAt(at + 3) - 48;
+    const onesOfMinute = text.charCodeAt(at + 4) - 48;
+    if (tens < 0 || ones < 0 || tensOfMinute < 0 || onesOfMinute < 0) return false;
+    const hour = tens * 10 + ones;
+    const minute = tensOfMinute * 10 + onesOfMinute;
+    if (ones > 9 || onesOfMinute > 9 || hour > 23 || minute > 59) return false;
     // Seconds are part of the tail that is alike.
-    this.minute = hour * 60 + m * 10 + mm + (this.minute - Math.floor(this.minute));
+    this.minute = hour * 60 + minute + (this.minute - Math.floor(this.minute));
     return true;
   }
 

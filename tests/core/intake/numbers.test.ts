@@ -117,6 +117,32 @@ describe('StampScanner', () => {
     );
   });
 
+  it('reads stamps that differ in their clock time alone as it reads them one by one', () => {
+    const steady = new StampScanner();
+    steady.steadyOrder = 'YMD';
+    const cell = fc.record({
+      day: fc.integer({ min: 1, max: 3 }),
+      hour: fc.integer({ min: 0, max: 25 }),
+      minute: fc.integer({ min: 0, max: 61 }),
+      tail: fc.constantFrom('', '', ':00', ':59', '+02:00', '+01:00', ':00Z', ' PM'),
+    });
+    const two = (figure: number): string => String(figure).padStart(2, '0');
+    fc.assert(
+      fc.property(fc.array(cell, { minLength: 2, maxLength: 30 }), (cells) => {
+        for (const { day, hour, minute, tail } of cells) {
+          const text = `2025-03-0${day} ${two(hour)}:${two(minute)}${tail}`;
+          const alone = new StampScanner();
+          const expected = alone.scan(text, 0, text.length) && alone.resolve('YMD');
+          expect(steady.scan(text, 0, text.length) && steady.resolve('YMD')).toBe(expected);
+          if (!expected) continue;
+          expect([steady.day, steady.offsetMinutes]).toEqual([alone.day, alone.offsetMinutes]);
+          expect(steady.minute).toBeCloseTo(alone.minute, 9);
+        }
+      }),
+      { numRuns: 500 },
+    );
+  });
+
   it.each([
     '25:00',
     '2025-03-13 24:15',

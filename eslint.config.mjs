@@ -50,7 +50,18 @@ export default tseslint.config(
             may('models', 'models', 'db', 'schemas', 'core', 'policies'),
             may('presenters', 'presenters', 'models', 'schemas', 'core', 'policies'),
             may('services', 'services', 'policies', 'presenters', 'models', 'db', 'server', 'schemas', 'core'),
-            may('server', 'server', 'services', 'policies', 'presenters', 'models', 'db', 'schemas', 'core', 'components'),
+            may(
+              'server',
+              'server',
+              'services',
+              'policies',
+              'presenters',
+              'models',
+              'db',
+              'schemas',
+              'core',
+              'components',
+            ),
             may('client', 'client', 'schemas', 'core'),
             may('components', 'components', 'client', 'schemas', 'core'),
             may('layouts', 'layouts', 'components', 'schemas', 'core', 'client'),
@@ -64,7 +75,10 @@ export default tseslint.config(
   {
     files: ['src/core/**/*.ts'],
     rules: {
-      'no-restricted-imports': ['error', { patterns: ['node:*', 'fs', 'path', 'sequelize', 'express', 'astro*', 'react*'] }],
+      'no-restricted-imports': [
+        'error',
+        { patterns: ['node:*', 'fs', 'path', 'sequelize', 'express', 'astro*', 'react*'] },
+      ],
       'no-restricted-globals': ['error', 'process', 'fetch', 'setTimeout', 'setInterval', 'window', 'document'],
       'no-restricted-properties': [
         'error',
@@ -88,7 +102,7 @@ export default tseslint.config(
           message: 'Use inTx(fn) from src/server/db/tx.ts: one gate for all transactions.',
         },
         {
-          selector: "CallExpression[callee.property.name=/^(bulkCreate|upsert)$/]",
+          selector: 'CallExpression[callee.property.name=/^(bulkCreate|upsert)$/]',
           message: 'Bulk writes leave no trail row; create records one by one inside inTx.',
         },
       ],

@@ -6,7 +6,7 @@
   try {
     var chosen = localStorage.getItem(key);
     if (chosen === 'light' || chosen === 'dark') root.dataset.theme = chosen;
-  } catch (_) {
+  } catch {
     // Storage is refused: the system's own preference holds.
   }
   document.addEventListener('click', function (event) {
@@ -20,7 +20,7 @@
     root.dataset.theme = dark ? 'light' : 'dark';
     try {
       localStorage.setItem(key, root.dataset.theme);
-    } catch (_) {
+    } catch {
       // The choice holds for this page only.
     }
   });

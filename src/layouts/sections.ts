@@ -1,13 +1,6 @@
 /** Where a staff page belongs among the global links. */
 export type StaffSection =
-  | 'today'
-  | 'engagements'
-  | 'clients'
-  | 'schedules'
-  | 'practice'
-  | 'people'
-  | 'trail'
-  | 'profile';
+  'today' | 'engagements' | 'clients' | 'schedules' | 'practice' | 'people' | 'trail' | 'profile';
 
 export interface SectionLink {
   id: StaffSection;

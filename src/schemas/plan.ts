@@ -133,8 +133,6 @@ export interface SearchView {
   leaveAlone: boolean;
   stepA: number;
   curves: CostCurveView[];
-  /** A total no admissible kvar in any interval can beat; null where none was proven. */
-  bound: { total: number; note: string } | null;
   notes: string[];
   /** What the search was made on; another fingerprint means it is stale. */
   fingerprint: string;

@@ -45,6 +45,3 @@ export const invalid = (message: string, fields?: FieldErrors, details?: Record<
 
 /** 413: the body or file is larger than allowed. */
 export const tooLarge = (message: string) => new ServiceError(413, 'too-large', message);
-
-/** 429: too many tries. */
-export const tooMany = (message: string) => new ServiceError(429, 'too-many', message);

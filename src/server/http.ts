@@ -19,11 +19,6 @@ export function endpoint(handler: (context: SignedIn) => Promise<Response>): API
     });
 }
 
-/** Wraps a handler that anybody may call. */
-export function publicEndpoint(handler: (context: APIContext) => Promise<Response>): APIRoute {
-  return (context) => respond(() => handler(context));
-}
-
 async function respond(work: () => Promise<Response>): Promise<Response> {
   try {
     return await work();

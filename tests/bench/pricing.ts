@@ -2,23 +2,16 @@ import { readFileSync } from 'node:fs';
 import path from 'node:path';
 import { localDateStartMs, zoneOffsetMs, type LoadSeries } from '../../src/core/load';
 import { compilePricing, readSchedule, type PriceOptions, type Schedule } from '../../src/core/tariff';
+import type { Measured } from './run';
 
-/** What a bench says: times of the work as a multiple of a bare pass, and the limit it must keep. */
-export interface BenchRow {
-  name: string;
-  ratio: number;
-  limit: number;
-  figures: string;
-}
-
-const limit = 15;
+const atMost = 15;
 const schedules = ['ostrander-lp4', 'millrace-kva', 'tidewater-kvarh'];
 
 /**
  * Prices a generated year (35,040 intervals of 15 minutes, 12 bills) and compares with a bare pass: one loop over four arrays of
  * 35,040 numbers, sum and maximum of each. Median of 50 calls after warm-ups.
  */
-export function benchPricing(): BenchRow[] {
+export function benchPricing(): Measured[] {
   const rows = schedules.flatMap((id) => {
     const schedule = readSchedule(readFileSync(path.join('tariffs', `${id}.yaml`), 'utf8'));
     const load = generatedYear(schedule.timeZone);
@@ -36,7 +29,7 @@ export function benchPricing(): BenchRow[] {
   return rows.map(({ name, pricedMs, layOutMs: ms }) => ({
     name,
     ratio: pricedMs / bareMs,
-    limit,
+    atMost,
     figures: `${pricedMs.toFixed(3)} ms, bare pass ${bareMs.toFixed(3)} ms; laid out in ${ms.toFixed(1)} ms`,
   }));
 }

@@ -5,16 +5,7 @@ import { createSimulator, searchFields, shaftLoadSeries, simulatePlan } from '..
 import type { PlanMotor } from '../../src/core/plan';
 import { compilePricing, priceBills, readSchedule } from '../../src/core/tariff';
 import { calendarMonths, generatedYear } from './pricing';
-
-/** A measured rate, the least it must reach, and what else was seen. */
-export interface SearchBenchRow {
-  name: string;
-  perSecond: number;
-  limit: number;
-  /** The same limit under the name the bench's runner prints. */
-  atLeast: number;
-  figures: string;
-}
+import type { Measured } from './run';
 
 const LEAST_PER_SECOND = 150;
 
@@ -39,7 +30,7 @@ const small: SynchronousMotor = { ...large, ratedOutputKw: 450, ratedFieldCurren
  * Prices distinct random field currents of two motors over a generated year (35,040 intervals, twelve bills): machines solved,
  * registers changed, bills priced. Ten of them are priced again through `priceBills` and must agree to the cent.
  */
-export function benchSearch(): SearchBenchRow[] {
+export function benchSearch(): Measured[] {
   const schedule = readSchedule(readFileSync(path.join('tariffs', 'ostrander-lp4.yaml'), 'utf8'));
   const load = generatedYear(schedule.timeZone);
   const options = { periods: calendarMonths() };
@@ -83,7 +74,7 @@ function measure(
   name: string,
   price: (fields: number[]) => Float64Array,
   priceAgain: (fields: number[]) => number[],
-): SearchBenchRow {
+): Measured {
   const candidates = distinctFields(320);
   for (const fields of candidates.slice(0, 20)) price(fields);
   const measured = candidates.slice(20);
@@ -97,7 +88,6 @@ function measure(
   return {
     name,
     perSecond,
-    limit: LEAST_PER_SECOND,
     atLeast: LEAST_PER_SECOND,
     figures: `per second of processor time (${wallPerSecond.toFixed(0)} by the clock): ${measured.length} distinct settings of two motors, 35,040 intervals, 12 bills; ten equal to priceBills to the cent`,
   };
@@ -107,7 +97,7 @@ function measureSearch(
   motors: PlanMotor[],
   load: ReturnType<typeof generatedYear>,
   totals: Parameters<typeof searchFields>[0]['totals'],
-): SearchBenchRow {
+): Measured {
   const used = process.cpuUsage();
   const found = searchFields({ plant: { load, motors }, totals });
   const { user, system } = process.cpuUsage(used);
@@ -115,7 +105,6 @@ function measureSearch(
   return {
     name: 'whole search of two motors, 1 A steps',
     perSecond: found.priced / seconds,
-    limit: LEAST_PER_SECOND,
     atLeast: LEAST_PER_SECOND,
     figures:
       `${found.priced} settings in ${seconds.toFixed(1)} s of processor time, ${found.exhaustive ? 'every combination' : 'descent'}; ` +

@@ -28,16 +28,11 @@ export function billsChart(year: YearView, plan: PlanView): BillsBeforeAfterData
 }
 
 /** The cost of the year round a setting of one motor, the others held at the plan's. */
-export function costCurve(
-  curve: CostCurveView,
-  search: Pick<SearchView, 'fields' | 'bound'>,
-  currency: string,
-): CostCurveData {
+export function costCurve(curve: CostCurveView, search: Pick<SearchView, 'fields'>, currency: string): CostCurveData {
   const points = curve.points
     .filter((point) => point.admissible)
     .map(({ fieldA, total }) => ({ fieldA, yearCost: total }));
   const at = (fieldA: number) => points.find((point) => Math.abs(point.fieldA - fieldA) < 1e-6);
-  const { bound } = search;
   const others = search.fields.filter((field) => field.motorId !== curve.motorId);
   const held = others.map((other) => `${other.name} at ${amperes(other.fieldA)}`).join(', ');
   const isMoved = Math.abs(curve.todayA - curve.chosenA) > 1e-6;
@@ -49,7 +44,6 @@ export function costCurve(
     standingName: `${curve.name} left at ${amperes(curve.todayA)}`,
     limitFieldA: curve.ratedLimitA,
     reserveFieldA: curve.limitA < curve.ratedLimitA - 1e-6 ? curve.limitA : undefined,
-    bound: bound?.total ?? null,
     axisName: `Field current of ${curve.name}, A${held ? ` (${held})` : ''}`,
   };
 }

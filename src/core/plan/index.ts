@@ -21,8 +21,6 @@ export {
   voltageRisePu,
 } from './network';
 export type { BusLoad } from './network';
-export { boundCost } from './bound-cost';
-export type { CostBound } from './bound-cost';
 export { sizeCapacitors } from './size-capacitors';
 export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
 export { judgePlans } from './judge-plans';

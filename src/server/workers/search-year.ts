@@ -1,18 +1,15 @@
-import { boundCost, searchFields, type SearchResult } from '../../core/plan';
+import { searchFields, type SearchResult } from '../../core/plan';
 import type { CostCurveView, SearchView } from '../../schemas/plan';
-import { readyYear, type ReadyYear } from './price-year';
+import { readyYear } from './price-year';
 import type { SearchTask, TaskMotor } from './tasks';
 
 /** Share of the saving within which settings round the best count as equally good. */
 const toleranceShare = 0.02;
 const tellEvery = 5;
-/** Rounding of the lines of a year of bills. [currency] */
-const rounding = 0.05;
 
 /** Searches the field currents that make the year's bills least, and tells the port how far it is. */
 export function searchYear({ basis, stepA, fingerprint, port }: SearchTask): SearchView {
-  const ready = readyYear(basis);
-  const { motors, pricing } = ready;
+  const { motors, pricing } = readyYear(basis);
   const found = searchFields({
     plant: { load: basis.load, motors: motors.map((motor) => ({ ...motor, stepA })) },
     totals: (load) => pricing.totals(load),
@@ -21,7 +18,6 @@ export function searchYear({ basis, stepA, fingerprint, port }: SearchTask): Sea
     },
   });
   port.postMessage({ done: found.priced, planned: found.priced });
-  const bound = boundOf(ready, found.cost);
   const saving = found.standingCost - found.cost;
   return {
     fields: basis.motors.map(({ id, name, fieldTodayA }, index) => ({
@@ -38,22 +34,8 @@ export function searchYear({ basis, stepA, fingerprint, port }: SearchTask): Sea
     leaveAlone: found.leaveAlone,
     stepA,
     curves: basis.motors.flatMap((motor, index) => curveOf(motor, index, found, Math.max(1, toleranceShare * saving))),
-    bound: 'total' in bound ? bound : null,
-    notes: [...found.notes.map((note) => namedNote(note, basis.motors)), ...('total' in bound ? [] : [bound.note])],
+    notes: found.notes.map((note) => namedNote(note, basis.motors)),
     fingerprint,
-  };
-}
-
-/** The bound of the core, as long as a priced setting does not contradict it: then its argument fails on this schedule. */
-function boundOf(
-  { basis, motors, pricing }: ReadyYear,
-  best: number,
-): { total: number; note: string } | { note: string } {
-  const { cost, words } = boundCost({ plant: { load: basis.load, motors }, totals: (load) => pricing.totals(load) });
-  if (cost === null) return { note: words };
-  if (cost <= best + rounding) return { total: cost, note: words };
-  return {
-    note: 'No bound: a priced setting is cheaper than what the argument allows, so it does not hold on this schedule.',
   };
 }
 

@@ -1,0 +1,99 @@
+import { readFileSync } from 'node:fs';
+import { createRequire } from 'node:module';
+import type { AxeResults } from 'axe-core';
+import type { Browser, Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
+import { openWindow, signIn, startBrowser } from './browser';
+
+const origin = inject('origin');
+const axeSource = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
+
+const visits = [
+  {
+    who: 'partner',
+    email: 'ilse@calder-vane.example',
+    addresses: [
+      '/today',
+      '/engagements',
+      '/engagements/new',
+      '/engagements/KG-02/bills',
+      '/engagements/KG-02/intervals',
+      '/engagements/KG-02/tariff',
+      '/engagements/KG-02/motors',
+      '/engagements/KG-02/plans',
+      '/engagements/KG-02/report',
+      '/engagements/KG-02/proof',
+      '/engagements/KG-02/hours',
+      '/clients',
+      '/clients/1',
+      '/schedules',
+      '/schedules/ostrander-lp4',
+      '/practice',
+      '/people',
+      '/trail',
+      '/profile',
+    ],
+  },
+  {
+    who: 'client',
+    email: 'mira@kestrel-gap.example',
+    addresses: ['/client/KG-02/overview', '/client/KG-02/bills', '/client/KG-02/reports', '/client/KG-02/reports/1'],
+  },
+] as const;
+
+const looks = [
+  { name: 'wide and light', colorScheme: 'light', viewport: { width: 1440, height: 900 } },
+  { name: 'narrow and dark', colorScheme: 'dark', viewport: { width: 390, height: 844 } },
+] as const;
+
+let browser: Browser;
+
+beforeAll(async () => {
+  browser = await startBrowser();
+});
+
+afterAll(async () => {
+  await browser?.close();
+});
+
+/** Faults against the published accessibility rules (WCAG 2.2 A and AA), each with the first element it concerns. */
+async function faults(page: Page): Promise<string[]> {
+  await page.evaluate(axeSource);
+  const results = await page.evaluate(async () => {
+    const { axe } = window as unknown as { axe: { run(context: unknown, options: unknown): Promise<AxeResults> } };
+    return axe.run(document, { runOnly: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'] });
+  });
+  return results.violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.target.join(' ')}`);
+}
+
+const overflow = (page: Page) =>
+  page.evaluate(() => Math.max(0, document.documentElement.scrollWidth - document.documentElement.clientWidth));
+
+describe.each(visits)('the pages of a $who', ({ email, addresses }) => {
+  it.each(looks)('keep to the accessibility rules and to the width, $name', async ({ colorScheme, viewport }) => {
+    const { page, complaints } = await openWindow(browser, origin, { colorScheme, viewport, bypassCSP: true });
+    await signIn(page, email);
+    const found: Record<string, unknown> = {};
+    for (const address of addresses) {
+      await page.goto(address);
+      await page.waitForLoadState('networkidle');
+      const wrong = await faults(page);
+      const wide = await overflow(page);
+      if (wrong.length > 0 || wide > 0) found[address] = { wrong, wide };
+    }
+    expect(found).toEqual({});
+    expect(complaints).toEqual([]);
+    await page.context().close();
+  });
+});
+
+describe('the way in', () => {
+  it.each(looks)('keeps to the accessibility rules, $name', async ({ colorScheme, viewport }) => {
+    const { page } = await openWindow(browser, origin, { colorScheme, viewport, bypassCSP: true });
+    for (const address of ['/sign-in', '/reset', '/invitation/none']) {
+      await page.goto(address);
+      expect([address, await faults(page), await overflow(page)]).toEqual([address, [], 0]);
+    }
+    await page.context().close();
+  });
+});

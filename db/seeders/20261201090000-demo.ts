@@ -6,6 +6,7 @@ import { engagementInput } from '../../src/schemas/engagement';
 import { hourInput, type HourStation } from '../../src/schemas/hour';
 import { planDefaults, type SearchView } from '../../src/schemas/plan';
 import { demoAccounts } from '../../src/server/demo-accounts';
+import { actAs } from '../../src/server/db/context';
 import { getEnv } from '../../src/server/env';
 import type { Actor } from '../../src/server/policies/actor';
 import { createEngagement } from '../../src/server/services/create-engagement';
@@ -188,11 +189,13 @@ async function log(actor: Actor, opened: OpenEngagement, entries: Entry[]): Prom
 /** The demo scenario: an invented practice, one invented client in full, a second one beside it. */
 export async function up(): Promise<void> {
   const staff = await foundCalderVane();
-  const works = await openKestrel(staff);
-  await auditKestrel(staff.tom, works);
-  await proposeToKestrel(staff.tom, works);
-  const pier = await openHarrow(staff);
-  await log(staff.tom, works, tomsHours);
-  await log(staff.ilse, works, ilsesHours);
-  await log(staff.sana, pier, sanasHours);
+  const inTheNameOf = <Result>(person: Actor, work: () => Promise<Result>) =>
+    actAs({ actorId: person.id, ip: null }, work);
+  const works = await inTheNameOf(staff.tom, () => openKestrel(staff));
+  await inTheNameOf(staff.tom, () => auditKestrel(staff.tom, works));
+  await inTheNameOf(staff.tom, () => proposeToKestrel(staff.tom, works));
+  const pier = await inTheNameOf(staff.sana, () => openHarrow(staff));
+  await inTheNameOf(staff.tom, () => log(staff.tom, works, tomsHours));
+  await inTheNameOf(staff.ilse, () => log(staff.ilse, works, ilsesHours));
+  await inTheNameOf(staff.sana, () => log(staff.sana, pier, sanasHours));
 }

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import type { AssumedValue } from './motor';
-import type { AppraisalView, CashFlowMonth, ChargeGroup, PlanEconomics, PlanField } from './plan';
+import type { AppraisalView, CashFlowMonth, ChargeGroup, PlanEconomics, PlanField, PlanView } from './plan';
 
 /** What an edition says of a plan, or of the plant as it runs. Major units of the edition's currency. */
 export interface EditionPlan {
@@ -15,6 +15,7 @@ export interface EditionPlan {
   economics: PlanEconomics;
   appraisal: AppraisalView;
   paybackWords: string;
+  paybackSpread: PlanView['paybackSpread'];
   hoursLeading: number;
   nearestLimit: string;
   worstPf: number | null;

@@ -55,15 +55,35 @@ async function start(): Promise<void> {
   await serve();
 }
 
+/** Founds the practice on an empty server and prints the link by which its first partner comes in. */
+async function found(): Promise<void> {
+  configureEnv({ NODE_ENV: 'production' });
+  const [, , , name, partnerName, address] = process.argv;
+  const { emailInput } = await import('../schemas/account');
+  const email = emailInput.safeParse(address);
+  if (!name || !partnerName || !email.success) {
+    throw new Error('Say the practice, its first partner and their e-mail: found "Practice" "Name" name@firm.example');
+  }
+  const { migrate } = await import('./db/migrations');
+  const { foundPractice } = await import('./services/first-run');
+  const { invite } = await import('./services/account');
+  const { User } = await import('./models/User');
+  await migrate();
+  const practice = { name, legalName: name, phone: '', currency: 'USD' };
+  const partner = await foundPractice({ practice, partner: { name: partnerName, email: email.data } });
+  const { url } = await invite(partner, await User.findByPk(partner.id, { rejectOnEmpty: true }));
+  print(`${name} is founded. ${partnerName} chooses a password here, within 14 days:\n${url}`);
+}
+
 function print(line: string): void {
   process.stdout.write(`${line}\n`);
 }
 
-const commands: Record<string, () => Promise<void>> = { demo, start };
+const commands: Record<string, () => Promise<void>> = { demo, found, start };
 const command = commands[process.argv[2] ?? ''];
 
 if (!command) {
-  print('Say what to run: demo or start.');
+  print('Say what to run: demo, found or start.');
   process.exitCode = 2;
 } else {
   command().catch((error: unknown) => {

@@ -27,6 +27,8 @@ export function uploadRoutes(): Router {
     takeUpload(req).then(
       (intake) => res.status(201).json(intake),
       (error: unknown) => {
+        // The sender stopped or went away: nothing was kept, and nobody is there to be told.
+        if (req.readableAborted) return;
         const { status, body } = toErrorBody(error);
         res.status(status).json(body);
         req.resume();

@@ -12,6 +12,7 @@ const plan: EditionPlan = {
   economics: { discountPercent: 8, escalationPercent: 0, horizonYears: 10 },
   appraisal: { simplePaybackYears: 1.5, discountedPaybackYears: 1.65, npv: 312_604.88, irr: 0.6605, notes: [] },
   paybackWords: '18 months',
+  paybackSpread: { lowMonths: 15, highMonths: 22 },
   hoursLeading: 0,
   nearestLimit: 'field, M-1 at 80 %',
   worstPf: 0.95,

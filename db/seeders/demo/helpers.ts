@@ -2,6 +2,7 @@ import { Readable } from 'node:stream';
 import type { PersonInput } from '../../../src/schemas/client';
 import { columnKey, guessKey, toConfirm } from '../../../src/schemas/intake';
 import type { JobProgress } from '../../../src/schemas/job';
+import { actAs } from '../../../src/server/db/context';
 import { storeOriginal } from '../../../src/server/drawer';
 import type { Actor } from '../../../src/server/policies/actor';
 import type { OpenEngagement } from '../../../src/server/services/engagements';
@@ -21,7 +22,11 @@ export function daysAgo(days: number): string {
 }
 
 /** A person who can sign in at once with the demo's password. */
-export async function addPersonWithPassword(actor: Actor, input: PersonInput): Promise<Actor> {
+export function addPersonWithPassword(actor: Actor, input: PersonInput): Promise<Actor> {
+  return actAs({ actorId: actor.id, ip: null }, () => invited(actor, input));
+}
+
+async function invited(actor: Actor, input: PersonInput): Promise<Actor> {
   const { person: added } = await addPerson(actor, input);
   const passwordHash = await hashPassword(demoAccounts.password);
   await inTx(() => endTokens(added.id));

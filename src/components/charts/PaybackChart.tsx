@@ -134,8 +134,8 @@ function PaybackMark({
       <Words {...place} y={textY} bold size={narrow ? 12 : 13.5}>
         {narrow ? formatPayback(data.paybackYears) : `paid back after ${formatPayback(data.paybackYears)}`}
       </Words>
-      {range && (
-        <Words {...place} y={textY + 15}>
+      {range && (below || !flip) && (
+        <Words {...place} x={below ? place.x : place.x + (narrow ? 74 : 172)} y={below ? textY + 15 : textY}>
           {`8 in 10${narrow ? '' : ' samples'}: ${months(range.fromYears)} to ${months(range.toYears)}${narrow ? '' : ' months'}`}
         </Words>
       )}

@@ -1,7 +1,7 @@
 import { useMemo, useState } from 'react';
 import { appraise, cashFlow } from '../../core/economics';
 import type { CashFlowMonth, PlanEconomics } from '../../schemas/plan';
-import { PaybackFigure } from '../charts/PaybackChart';
+import { PaybackFigure, type PaybackData } from '../charts/PaybackChart';
 import { AssumptionField } from '../ui/AssumptionField';
 import { Button } from '../ui/Button';
 import { formatCount, formatMajor, formatNumber, formatPayback } from '../ui/format';
@@ -16,6 +16,7 @@ export interface ClientPaybackProps {
   economics: PlanEconomics;
   cashFlow: CashFlowMonth[];
   paybackYears: number | null;
+  paybackRange: PaybackData['paybackRange'];
 }
 
 interface Figures {
@@ -85,6 +86,7 @@ export function ClientPayback(props: ClientPaybackProps) {
           capitalCost={props.capitalCost}
           points={points}
           paybackYears={props.paybackYears}
+          paybackRange={props.paybackRange}
           editionName={field.editionName}
         />
       </div>

@@ -158,7 +158,6 @@ function columnsOf(bills: LedgerBill[], currency: string): LedgerColumn[] {
     ...(others ? [money('others', 'Other lines')] : []),
     { ...money('total', 'Printed total'), strong: true },
     { key: 'less', head: 'Lines less total', kind: 'money', currency, unit: currency, signed: true },
-    { key: 'source', head: 'Source', quiet: true },
   ];
 }
 
@@ -173,7 +172,6 @@ function rowOf(bill: LedgerBill, columns: LedgerColumn[], currency: string, flaw
     others: unshown.length > 0 ? sumOf(unshown) : null,
     total: totalCell(bill, currency),
     less: difference === null ? null : { value: difference, tone: difference === 0 ? undefined : 'fault' },
-    source: bill.source,
   };
   for (const [name, value] of Object.entries(bill.quantities)) cells[quantityKey(name)] = value;
   for (const label of labels) cells[lineKey(label)] = lineOf(bill, label);

@@ -49,7 +49,7 @@ export function costCurve(curve: CostCurveView, search: Pick<SearchView, 'fields
 }
 
 /** Between which years eight of ten samples pay back; null where some do not within the horizon. */
-function paybackRange({ paybackSpread }: PlanView): PaybackData['paybackRange'] {
+export function paybackRange({ paybackSpread }: Pick<PlanView, 'paybackSpread'>): PaybackData['paybackRange'] {
   const { lowMonths, highMonths } = paybackSpread ?? { lowMonths: null, highMonths: null };
   return lowMonths === null || highMonths === null || highMonths === 0
     ? null

@@ -24,6 +24,13 @@ const rule = '#D8D0C0';
 const escape = (text: string) =>
   text.replaceAll('&', '&amp;').replaceAll('<', '&lt;').replaceAll('>', '&gt;').replaceAll('"', '&quot;');
 
+/** Between which months eight of ten samples pay back. */
+function spread({ paybackSpread }: EditionContent['plan']): [label: string, value: string][] {
+  const { lowMonths, highMonths } = paybackSpread ?? {};
+  if (lowMonths == null || highMonths == null) return [];
+  return [['Eight of ten samples lie between', `${formatNumber(lowMonths)} and ${formatNumber(highMonths)} months`]];
+}
+
 /** The small table that says everything the picture says. */
 function figures({ plan, currency }: EditionContent): [label: string, value: string][] {
   const whole = (amount: number) => formatMajor(amount, currency, { whole: true });
@@ -32,6 +39,7 @@ function figures({ plan, currency }: EditionContent): [label: string, value: str
     ['Saved on the bills, a year', whole(plan.saving)],
     ['The work, once', whole(plan.capitalCost)],
     ['Pays for itself in', plan.paybackWords],
+    ...spread(plan),
     [
       `Worth today, ${horizonYears} years at ${formatNumber(discountPercent, { upTo: 1 })} %`,
       whole(plan.appraisal.npv),

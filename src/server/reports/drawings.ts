@@ -1,5 +1,6 @@
 import type { PaybackData } from '../../components/charts/PaybackChart';
 import { vCurveData } from '../../components/motors/curves';
+import { paybackRange } from '../../components/plans/chart-data';
 import { poorFactorBars } from '../../components/report/poor-factor-bars';
 import type { EditionContent } from '../../schemas/edition';
 import type { MotorView } from '../../schemas/motor';
@@ -16,6 +17,7 @@ export function paybackData({ cashFlow, plan, currency, number }: EditionContent
     capitalCost: plan.capitalCost,
     points: cashFlow.map(({ month, cumulative, low, high }) => ({ year: month / 12, cumulative, p10: low, p90: high })),
     paybackYears: plan.appraisal.simplePaybackYears,
+    paybackRange: paybackRange(plan),
     editionName: `edition ${number}`,
   };
 }

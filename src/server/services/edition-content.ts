@@ -27,7 +27,7 @@ export interface EditionBasis {
 
 function editionPlan(plan: PlanView): EditionPlan {
   const { name, fields, yearTotal, saving, reactiveCost, groupTotals, capitalCost, yearlyUpkeep } = plan;
-  const { economics, appraisal, paybackWords, nearestLimit, extraLossKwh, hoursLeading, worstPf } = plan;
+  const { economics, appraisal, paybackWords, paybackSpread, nearestLimit, extraLossKwh, hoursLeading, worstPf } = plan;
   return {
     name,
     fields,
@@ -40,6 +40,7 @@ function editionPlan(plan: PlanView): EditionPlan {
     economics,
     appraisal,
     paybackWords,
+    paybackSpread,
     nearestLimit,
     extraLossKwh,
     hoursLeading: hoursLeading.after,

@@ -8,7 +8,8 @@ import { toActor } from './sign-in';
 
 export interface FirstRunInput {
   practice: { name: string; legalName: string; phone: string; currency: string };
-  partner: { name: string; email: string; password: string };
+  /** Without a password the partner comes in by an invitation. */
+  partner: { name: string; email: string; password?: string };
 }
 
 /**
@@ -20,7 +21,7 @@ export async function foundPractice({ practice, partner }: FirstRunInput): Promi
   if ((await Practice.count()) > 0 || (await User.count()) > 0) {
     throw conflict('There is a practice on this server already. Its partners invite further people.');
   }
-  const passwordHash = await hashPassword(partner.password);
+  const passwordHash = partner.password === undefined ? null : await hashPassword(partner.password);
   return inTx(async () => {
     await Practice.create(practice);
     const user = await User.create({

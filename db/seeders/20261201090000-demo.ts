@@ -4,7 +4,8 @@ import path from 'node:path';
 import { rightsInput } from '../../src/schemas/client';
 import { engagementInput } from '../../src/schemas/engagement';
 import { hourInput, type HourStation } from '../../src/schemas/hour';
-import { planDefaults, type SearchView } from '../../src/schemas/plan';
+import { searchFound } from '../../src/schemas/job';
+import { planDefaults } from '../../src/schemas/plan';
 import { demoAccounts } from '../../src/server/demo-accounts';
 import { actAs } from '../../src/server/db/context';
 import { getEnv } from '../../src/server/env';
@@ -117,7 +118,7 @@ async function auditKestrel(consultant: Actor, opened: OpenEngagement): Promise<
 /** Searches the best fields, makes the plan of them, and reports it to the client. */
 async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Promise<void> {
   const search = await ended(consultant, await startSearch(consultant, opened, { stepA: 2 }));
-  const { fields } = search.result as unknown as SearchView;
+  const fields = searchFound(search)?.fields ?? [];
   const plan = await createPlan(opened, {
     name: 'Plan A',
     fields: fields.map(({ motorId, fieldA }) => ({ motorId, fieldA })),

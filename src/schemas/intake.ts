@@ -4,6 +4,15 @@ import { isTimeZone } from '../core/load';
 
 export type IntakePreview = IntervalPreview | BillPreview;
 
+/** What the row of a file holds besides its state: what reading found, and the word of the person. */
+export interface StoredReading {
+  timeZone: string;
+  /** Keys of the columns and guesses a person gave their word for. */
+  confirmed: string[];
+  readWithId: number | null;
+  preview: IntakePreview;
+}
+
 /** A remembered way to read files of one shape. */
 export interface RememberedMap {
   id: number;

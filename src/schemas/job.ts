@@ -1,3 +1,8 @@
+import type { SearchView } from './plan';
+
+/** What long work leaves behind: what a search found, or the number of the edition that was made. */
+export type JobResult = SearchView | { number: number };
+
 /** How far long work is, or how it ended. */
 export interface JobProgress {
   id: number;
@@ -8,6 +13,12 @@ export interface JobProgress {
   planned: number | null;
   unit: string | null;
   startedAt: string;
-  result: Record<string, unknown> | null;
+  result: JobResult | null;
   error: string | null;
+}
+
+/** What a search found; null for other work, and for a search that did not end well. */
+export function searchFound(job: Pick<JobProgress, 'kind' | 'state' | 'result'> | null | undefined): SearchView | null {
+  if (!job?.result || job.kind !== 'search' || job.state !== 'done') return null;
+  return 'curves' in job.result ? job.result : null;
 }

@@ -76,10 +76,14 @@ export interface PlanMotorView {
   hoursBeyond: number;
 }
 
-export interface PlanField {
+/** A field current one motor is set to. */
+export interface FieldSetting {
   motorId: number;
-  name: string;
   fieldA: number;
+}
+
+export interface PlanField extends FieldSetting {
+  name: string;
   todayA: number;
   /** What a brushless machine's panel shows at fieldA. */
   panelA?: number;
@@ -114,6 +118,9 @@ export interface CapacitorBank {
   /** At the bank's bus; absent: not known, no resonance check. */
   shortCircuitKva?: number;
 }
+
+/** One action of a stored plan: a field current that is set, or a bank that is added. */
+export type PlanAction = ({ kind: 'field' } & FieldSetting) | ({ kind: 'capacitor' } & CapacitorBank);
 
 export interface CapacitorView extends CapacitorBank {
   /** Harmonic order of resonance and the usual harmonics within half an order of it. */

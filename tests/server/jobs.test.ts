@@ -1,7 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { operatingPoint } from '@/core/machine';
-import type { JobProgress } from '@/schemas/job';
-import { planInput, type SearchView } from '@/schemas/plan';
+import { searchFound, type JobProgress, type JobResult } from '@/schemas/job';
+import { planInput } from '@/schemas/plan';
 import type { ServiceError } from '@/server/errors';
 import { jobEvents } from '@/server/job-events';
 import { Job } from '@/server/models/Job';
@@ -46,7 +46,7 @@ async function heard(stream: ReadableStream<Uint8Array>): Promise<JobProgress[]>
 
 /** A job that runs until it is told to end. */
 async function heldJob() {
-  let release: (result: Record<string, unknown>) => void = () => undefined;
+  let release: (result: JobResult) => void = () => undefined;
   let tell: (done: number, planned?: number) => void = () => undefined;
   const engagementId = station.opened.engagement.id;
   const job = await startJob(station.actor, { engagementId, kind: 'held', unit: 'steps' }, ({ report, signal }) => {
@@ -59,7 +59,7 @@ async function heldJob() {
   return {
     id: job.id,
     tell: (done: number, planned?: number) => tell(done, planned),
-    release: () => release({ ok: 1 }),
+    release: () => release({ number: 1 }),
   };
 }
 
@@ -94,7 +94,7 @@ describe('the events of a job', () => {
       ['running', 10, 10],
       ['done', 10, 10],
     ]);
-    expect(steps.at(-1)?.result).toEqual({ ok: 1 });
+    expect(steps.at(-1)?.result).toEqual({ number: 1 });
   });
 
   it('tell at once how an ended job ended', async () => {
@@ -135,7 +135,7 @@ describe('the search for the best field currents', () => {
     const { state, result, done, planned } = await ended(job.id);
     expect(state).toBe('done');
     expect(done).toBe(planned);
-    const found = result as unknown as SearchView;
+    const found = searchFound({ kind: job.kind, state, result })!;
     expect(found.saving).toBeGreaterThan(0);
     expect(found.saving).toBeCloseTo(found.standingTotal - found.yearTotal, 6);
     for (const motor of await motorsOf(opened)) {
@@ -174,7 +174,7 @@ describe('the search for the best field currents', () => {
       watchJob(gapped.actor, job.id, listener).catch(reject);
     });
     expect(state).toBe('done');
-    expect((result as unknown as SearchView).saving).toBeGreaterThan(0);
+    expect(searchFound({ kind: job.kind, state, result })!.saving).toBeGreaterThan(0);
     const { readings, notes } = await plansOf(gapped.opened);
     expect(readings.missing).toBe(40);
     expect(notes.join(' ')).toContain('missing');

@@ -12,6 +12,7 @@ import type { Actor } from '@/server/policies/actor';
 import { invite } from '@/server/services/account';
 import { todayOf } from '@/server/services/today';
 import { buildActor, buildEngagement, buildUser } from '../setup/build';
+import { buildEditionContent } from '../setup/edition';
 
 let ilse: Actor;
 let tom: Actor;
@@ -55,7 +56,7 @@ const edition = (shownAt: Date | null) =>
       engagementId: engagement.id,
       planId: null,
       number: 1,
-      content: { currency: 'USD', plan: { saving: 71884.36 } },
+      content: buildEditionContent({ plan: { ...buildEditionContent().plan, saving: 71884.36 } }),
       digest: 'c'.repeat(64),
       madeById: tom.id,
       shownAt,

@@ -1,5 +1,6 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import { addDays, addMonths, localDateStartMs } from '@/core/load';
+import { planDefaults } from '@/schemas/plan';
 import { inTx } from '@/server/db/tx';
 import { Bill } from '@/server/models/Bill';
 import { Edition } from '@/server/models/Edition';
@@ -13,6 +14,8 @@ import type { Actor } from '@/server/policies/actor';
 import { engagementFrame, standsAt } from '@/server/services/stations';
 import { keepSeries } from '@/server/services/readings';
 import { buildActor, buildEngagement } from '../setup/build';
+import { buildEditionContent } from '../setup/edition';
+import { millMotor, motorOf } from '../setup/motors';
 
 let partner: Actor;
 let engagement: Engagement;
@@ -141,9 +144,10 @@ describe('engagementFrame', () => {
     expect(await stateOf('tariff')).toBe('open: schedule chosen');
     const { strip } = await engagementFrame(partner, engagement.code);
     expect(strip).toContainEqual({ label: 'Schedule', value: 'Large power, LP-4' });
+    const { plate, calendar } = motorOf(millMotor);
     await inTx(async () => {
       for (const name of ['M-1', 'M-2'])
-        await Motor.create({ engagementId, position: 1, name, drives: null, plate: {}, calendar: {}, fieldTodayA: 90 });
+        await Motor.create({ engagementId, position: 1, name, drives: null, plate, calendar, fieldTodayA: 90 });
     });
     expect(await stateOf('motors')).toBe('closed: 2 motors');
     const plan = await inTx(() =>
@@ -153,7 +157,7 @@ describe('engagementFrame', () => {
         actions: [],
         capitalCostMinor: 0,
         yearlyUpkeepMinor: 0,
-        economics: {},
+        economics: { ...planDefaults },
         search: null,
       }),
     );
@@ -165,7 +169,7 @@ describe('engagementFrame', () => {
         engagementId,
         planId: plan.id,
         number: 1,
-        content: {},
+        content: buildEditionContent(),
         digest: 'c'.repeat(64),
         madeById: partner.id,
         shownAt: null,

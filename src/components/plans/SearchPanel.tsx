@@ -4,6 +4,7 @@ import { ApiError } from '../../client/api';
 import { cancelJob, useJob } from '../../client/jobs';
 import { startSearch } from '../../client/plans';
 import { Queries } from '../../client/queries';
+import { searchFound } from '../../schemas/job';
 import { searchInput, type SearchView } from '../../schemas/plan';
 import { Button, ButtonLink } from '../ui/Button';
 import { NumberField } from '../ui/Field';
@@ -103,7 +104,7 @@ function Panel({ code, currency, jobId: firstId, fingerprint }: SearchPanelProps
   const [jobId, setJobId] = useState(firstId);
   const { job, secondsLeft, error } = useJob(jobId);
   const stop = useMutation({ mutationFn: () => cancelJob(jobId ?? 0) });
-  const found = job?.state === 'done' ? (job.result as unknown as SearchView) : null;
+  const found = searchFound(job);
   return (
     <div className="search-panel">
       {job?.state === 'running' ? (

@@ -37,7 +37,8 @@ function Maker({ code, nextNumber, plans, runningJobId, isNext }: MakeEditionPro
     onSuccess: (started) => setJobId(started.id),
   });
   useEffect(() => {
-    if (job?.state === 'done') location.assign(`/engagements/${code}/report/${String(job.result?.number)}`);
+    if (job?.state !== 'done' || !job.result || !('number' in job.result)) return;
+    location.assign(`/engagements/${code}/report/${job.result.number}`);
   }, [job, code]);
   const trouble = making.error instanceof ApiError ? making.error.message : (job?.error ?? error);
   if (jobId !== null && job?.state === 'running') {

@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { ColumnMap } from '../../core/intake';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -8,7 +9,7 @@ export class ColumnMapRow extends Model<InferAttributes<ColumnMapRow>, InferCrea
   declare name: string;
   declare kind: 'intervals' | 'bills';
   declare signature: string;
-  declare map: Record<string, unknown>;
+  declare map: ColumnMap;
   declare createdById: number | null;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;

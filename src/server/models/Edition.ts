@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { EditionContent } from '../../schemas/edition';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -8,7 +9,7 @@ export class Edition extends Model<InferAttributes<Edition>, InferCreationAttrib
   declare engagementId: number;
   declare planId: number | null;
   declare number: number;
-  declare content: Record<string, unknown>;
+  declare content: EditionContent;
   declare digest: string;
   declare madeById: number | null;
   declare shownAt: Date | null;

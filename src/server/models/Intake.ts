@@ -1,4 +1,6 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { ColumnMap, IntakeProblem } from '../../core/intake';
+import type { IntakePreview, StoredReading } from '../../schemas/intake';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -14,10 +16,10 @@ export class Intake extends Model<InferAttributes<Intake>, InferCreationAttribut
   declare bytes: number;
   declare sha256: string;
   declare state: IntakeState;
-  declare columnMap: Record<string, unknown> | null;
-  declare preview: Record<string, unknown> | null;
-  declare report: Record<string, unknown> | null;
-  declare problems: { message: string; where: string; remedy: string }[] | null;
+  declare columnMap: ColumnMap | null;
+  declare preview: StoredReading | null;
+  declare report: IntakePreview['report'] | null;
+  declare problems: IntakeProblem[] | null;
   declare broughtById: number | null;
   declare keptAt: Date | null;
   declare undoneAt: Date | null;

@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { JobResult } from '../../schemas/job';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -12,7 +13,7 @@ export class Job extends Model<InferAttributes<Job>, InferCreationAttributes<Job
   declare done: number;
   declare planned: number | null;
   declare unit: string | null;
-  declare result: Record<string, unknown> | null;
+  declare result: JobResult | null;
   declare error: string | null;
   declare startedById: number | null;
   declare endedAt: Date | null;

@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { CalendarInput, PlateInput } from '../../schemas/motor';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -9,8 +10,8 @@ export class Motor extends Model<InferAttributes<Motor>, InferCreationAttributes
   declare position: number;
   declare name: string;
   declare drives: string | null;
-  declare plate: Record<string, unknown>;
-  declare calendar: Record<string, unknown>;
+  declare plate: PlateInput;
+  declare calendar: CalendarInput;
   declare fieldTodayA: number;
   declare version: CreationOptional<number>;
   declare createdAt: CreationOptional<Date>;

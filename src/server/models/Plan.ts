@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { PlanAction, PlanEconomics, SearchView } from '../../schemas/plan';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -7,12 +8,12 @@ export class Plan extends Model<InferAttributes<Plan>, InferCreationAttributes<P
   declare id: CreationOptional<number>;
   declare engagementId: number;
   declare name: string;
-  declare actions: Record<string, unknown>[];
+  declare actions: PlanAction[];
   declare capitalCostMinor: number;
   declare yearlyUpkeepMinor: number;
-  declare economics: Record<string, number>;
+  declare economics: PlanEconomics;
   declare chosen: CreationOptional<boolean>;
-  declare search: Record<string, unknown> | null;
+  declare search: SearchView | null;
   declare version: CreationOptional<number>;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;

@@ -1,17 +1,6 @@
 import type { ColumnMapRow } from '../models/ColumnMapRow';
 import type { Intake } from '../models/Intake';
-import type { IntakePreview, IntakeRow, IntakeView, RememberedMap } from '../../schemas/intake';
-
-/** What the row of a file holds besides its state: what reading found, and the word of the person. */
-export interface StoredReading {
-  timeZone: string;
-  confirmed: string[];
-  readWithId: number | null;
-  preview: IntakePreview;
-}
-
-/** The stored reading of a row; null where the file could not be read at all. */
-export const storedReading = (intake: Intake) => intake.preview as unknown as StoredReading | null;
+import type { IntakeRow, IntakeView, RememberedMap } from '../../schemas/intake';
 
 const iso = (date: Date | null) => date?.toISOString() ?? null;
 
@@ -47,7 +36,7 @@ export function presentIntake(
     maps: ColumnMapRow[];
   },
 ): IntakeView {
-  const stored = storedReading(intake);
+  const stored = intake.preview;
   const readWith = around.maps.find((map) => map.id === stored?.readWithId);
   return {
     ...presentIntakeRow(intake, around.broughtBy),

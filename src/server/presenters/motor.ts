@@ -10,7 +10,7 @@ import {
   type CompletedMotor,
   type SynchronousMotor,
 } from '../../core/machine';
-import type { AssumedValue, CalendarInput, MotorInput, MotorView, PlateInput, PlateNote } from '../../schemas/motor';
+import type { AssumedValue, MotorInput, MotorView, PlateNote } from '../../schemas/motor';
 import type { Motor } from '../models/Motor';
 
 /** What a motor's row holds, as the form that wrote it. */
@@ -18,8 +18,8 @@ export function storedMotor(motor: Motor): Omit<MotorInput, 'fieldReadAt'> & { v
   return {
     name: motor.name,
     drives: motor.drives ?? undefined,
-    plate: motor.plate as unknown as PlateInput,
-    calendar: motor.calendar as unknown as CalendarInput,
+    plate: motor.plate,
+    calendar: motor.calendar,
     fieldTodayA: motor.fieldTodayA,
     version: motor.version,
   };

@@ -10,6 +10,7 @@ import type {
   CapacitorView,
   CashFlowMonth,
   ChargeGroup,
+  FieldSetting,
   PlanEconomics,
   PlanField,
   PlanMotorView,
@@ -19,20 +20,28 @@ import type {
 import type { Plan } from '../models/Plan';
 import { limitsOf } from './motor';
 
+/** The field settings of a stored plan. */
+export const fieldSettings = (plan: Plan): FieldSetting[] =>
+  plan.actions.flatMap((action) => (action.kind === 'field' ? { motorId: action.motorId, fieldA: action.fieldA } : []));
+
+/** The capacitor bank of a stored plan; null where it has none. */
+export function capacitorBank(plan: Plan): CapacitorBank | null {
+  const [bank] = plan.actions.flatMap((action) => (action.kind === 'capacitor' ? action : []));
+  if (!bank) return null;
+  const { kvar, lossWPerKvar, detuningPercent, shortCircuitKva } = bank;
+  return { kvar, lossWPerKvar, detuningPercent, shortCircuitKva };
+}
+
 /** A plan's row as the form that wrote it. Amounts in major units. */
 export function storedPlan(plan: Plan, currency: string) {
   return {
     version: plan.version,
     name: plan.name,
-    fields: plan.actions
-      .filter(({ kind }) => kind === 'field')
-      .map(({ motorId, fieldA }) => ({ motorId: Number(motorId), fieldA: Number(fieldA) })),
-    capacitors: plan.actions
-      .filter(({ kind }) => kind === 'capacitor')
-      .map(({ kind: _kind, ...bank }) => bank as unknown as CapacitorBank)[0],
+    fields: fieldSettings(plan),
+    capacitors: capacitorBank(plan) ?? undefined,
     capitalCost: fromMinorUnits(plan.capitalCostMinor, currency),
     yearlyUpkeep: fromMinorUnits(plan.yearlyUpkeepMinor, currency),
-    economics: plan.economics as unknown as PlanEconomics,
+    economics: plan.economics,
   };
 }
 

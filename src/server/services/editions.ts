@@ -76,7 +76,7 @@ async function freeze(actor: Actor, basis: EditionBasis, { report, signal }: Job
       engagementId,
       planId: basis.plan.id,
       number: content.number,
-      content: content as unknown as Record<string, unknown>,
+      content,
       digest,
       madeById: actor.id,
       shownAt: null,
@@ -94,10 +94,8 @@ async function freeze(actor: Actor, basis: EditionBasis, { report, signal }: Job
 const keepImage = (editionId: number, name: string, mediaType: string, body: Buffer) =>
   EditionImage.create({ editionId, name, mediaType, body });
 
-const contentOf = (edition: Edition) => edition.content as unknown as EditionContent;
-
 async function summary(edition: Edition): Promise<EditionSummary> {
-  const content = contentOf(edition);
+  const content = edition.content;
   const letters = await Letter.findAll({ where: { editionId: edition.id }, order: ['id'] });
   return {
     id: edition.id,
@@ -143,7 +141,7 @@ async function frozen(edition: Edition | null): Promise<FrozenEdition> {
   const pages = edition && (await EditionImage.findOne({ where: { editionId: edition.id, name: 'pages' } }));
   if (!edition || !pages) throw notFound();
   const { digest, shownAt } = edition;
-  return { content: contentOf(edition), digest, html: pages.body.toString(), shownAt: shownAt?.toISOString() ?? null };
+  return { content: edition.content, digest, html: pages.body.toString(), shownAt: shownAt?.toISOString() ?? null };
 }
 
 /** An edition for those who work on the engagement. */
@@ -198,7 +196,7 @@ async function mailTo(
   const { url, expiresAt } = await invite(actor, user, `/client/${opened.engagement.code}/overview`);
   const linkEnds = expiresAt?.toISOString() ?? null;
   const letter = editionLetter({
-    content: contentOf(edition),
+    content: edition.content,
     recipientName: reader.name,
     greeting,
     link: url,

@@ -9,7 +9,6 @@ import { Bill } from '../models/Bill';
 import { Intake } from '../models/Intake';
 import { ReadingBlock } from '../models/ReadingBlock';
 import type { Actor } from '../policies/actor';
-import { storedReading } from '../presenters/intake';
 import { createBill, destroyBill } from './bills';
 import { present } from './intake';
 import { openIntake, openIntakeForChange, type OpenIntake } from './intake-guard';
@@ -42,7 +41,7 @@ function assertReady(intake: Intake): HowToRead {
   const { state, fileName } = intake;
   if (state === 'kept') throw conflict(`${fileName} is kept already.`);
   if (state === 'given-up') throw conflict(`${fileName} was given up. Bring it in again to keep it.`);
-  const stored = storedReading(intake);
+  const stored = intake.preview;
   if (!stored || stored.preview.problems.length > 0) {
     const problems = intake.problems ?? [];
     throw invalid(`${fileName} cannot be read as it is matched. ${problems[0]?.message ?? ''}`.trim(), undefined, {
@@ -156,7 +155,7 @@ export async function undoIntake(actor: Actor, id: number, version: number): Pro
 /** Mean kW of what the file holds, before it is kept. */
 export async function intakePicture(actor: Actor, id: number): Promise<LoadDays> {
   const { intake } = await openIntake(actor, id);
-  const stored = storedReading(intake);
+  const stored = intake.preview;
   if (intake.kind !== 'intervals' || !stored || stored.preview.problems.length > 0) throw notFound();
   const { timeZone } = stored;
   const { load } = await readIntervalFile(intake, { timeZone, columnMap: stored.preview.columnMap });

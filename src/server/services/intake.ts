@@ -1,6 +1,13 @@
 import { isDeepStrictEqual } from 'node:util';
 import type { ColumnMap } from '../../core/intake';
-import { columnKey, guessKey, type IntakePreview, type IntakeView, type MatchInput } from '../../schemas/intake';
+import {
+  columnKey,
+  guessKey,
+  type IntakePreview,
+  type IntakeView,
+  type MatchInput,
+  type StoredReading,
+} from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
 import { readOriginal, type StoredFile } from '../drawer';
@@ -8,7 +15,7 @@ import { ColumnMapRow } from '../models/ColumnMapRow';
 import { Intake } from '../models/Intake';
 import { User } from '../models/User';
 import type { Actor } from '../policies/actor';
-import { presentIntake, storedReading, type StoredReading } from '../presenters/intake';
+import { presentIntake } from '../presenters/intake';
 import type { OpenEngagement } from './engagements';
 import { openForChange, openIntake, openIntakeForChange, type OpenIntake } from './intake-guard';
 import { previewFile, type FileReading } from './intake-read';
@@ -74,7 +81,7 @@ export async function matchIntake(actor: Actor, id: number, input: MatchInput): 
     throw invalid('The column map is for another kind of file.', { 'columnMap.kind': ['Send a map of this kind.'] });
   }
   const { timeZone, columnMap, confirmed } = input;
-  const stored = storedReading(open.intake);
+  const stored = open.intake.preview;
   const readWithId = stored?.readWithId ?? null;
   if (stored && stored.timeZone === timeZone && isDeepStrictEqual(stored.preview.columnMap, columnMap)) {
     await inTx(() => open.intake.update({ preview: { ...stored, confirmed } }));
@@ -95,8 +102,8 @@ export async function readWithMap(
   assertNotKept(open.intake);
   const map = (await mapsFor(open.intake)).find((row) => row.id === input.mapId);
   if (!map) throw notFound();
-  const timeZone = storedReading(open.intake)?.timeZone ?? open.opened.site.timeZone;
-  const reading = await rereadFile(open.intake, { timeZone, columnMap: map.map as unknown as ColumnMap });
+  const timeZone = open.intake.preview?.timeZone ?? open.opened.site.timeZone;
+  const reading = await rereadFile(open.intake, { timeZone, columnMap: map.map });
   const confirmed = everyKey(reading.preview);
   await inTx(() => open.intake.update(readingValues(reading, { timeZone, confirmed, readWithId: map.id })));
   return present(open);
@@ -105,13 +112,13 @@ export async function readWithMap(
 /** Remembers the map the file was read with under a name; the same name for the same shape is replaced. */
 export async function rememberMap(actor: Actor, id: number, input: { name: string }): Promise<IntakeView> {
   const open = await openIntake(actor, id);
-  const stored = storedReading(open.intake);
+  const stored = open.intake.preview;
   if (!stored || stored.preview.problems.length > 0) {
     throw conflict('This file cannot be read yet, so there is no map to remember. Correct its columns first.');
   }
   const { kind } = open.intake;
   const key = { name: input.name, kind, signature: stored.preview.shape };
-  const map = stored.preview.columnMap as unknown as Record<string, unknown>;
+  const map = stored.preview.columnMap;
   await inTx(async () => {
     const known = await ColumnMapRow.findOne({ where: key });
     const row = known ? await known.update({ map }) : await ColumnMapRow.create({ ...key, map, createdById: actor.id });
@@ -147,12 +154,11 @@ function readingValues(reading: FileReading, said: Omit<StoredReading, 'preview'
     return { state: 'refused' as const, columnMap: null, preview: null, report: null, problems: reading.problems };
   }
   const { preview } = reading;
-  const asRecord = (value: unknown) => value as Record<string, unknown>;
   return {
     state: 'read' as const,
-    columnMap: asRecord(preview.columnMap),
-    preview: asRecord({ ...said, preview }),
-    report: preview.report && asRecord(preview.report),
+    columnMap: preview.columnMap,
+    preview: { ...said, preview },
+    report: preview.report,
     problems: preview.problems,
   };
 }
@@ -160,7 +166,7 @@ function readingValues(reading: FileReading, said: Omit<StoredReading, 'preview'
 const everyKey = (preview: IntakePreview) => [...preview.columns.map(columnKey), ...preview.guesses.map(guessKey)];
 
 function mapsFor(intake: Intake): Promise<ColumnMapRow[]> {
-  const stored = storedReading(intake);
+  const stored = intake.preview;
   if (!stored) return Promise.resolve([]);
   const where = { kind: intake.kind, signature: stored.preview.shape };
   return ColumnMapRow.findAll({ where, order: [['updatedAt', 'DESC']] });

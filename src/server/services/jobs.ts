@@ -1,5 +1,5 @@
 import { EventEmitter } from 'node:events';
-import type { JobProgress } from '../../schemas/job';
+import type { JobProgress, JobResult } from '../../schemas/job';
 import { inTx } from '../db/tx';
 import { actAs } from '../db/context';
 import { notFound, ServiceError } from '../errors';
@@ -20,7 +20,7 @@ export interface JobControls {
   signal: AbortSignal;
 }
 
-type Work = (controls: JobControls) => Promise<Record<string, unknown>>;
+type Work = (controls: JobControls) => Promise<JobResult>;
 
 const shared = globalThis as typeof globalThis & { counterlagJobs?: Map<number, Running> };
 const running = (shared.counterlagJobs ??= new Map());

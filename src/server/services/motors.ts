@@ -6,13 +6,14 @@ import {
   type SynchronousMotor,
 } from '../../core/machine';
 import { wordNumber } from '../../core/units';
-import type { CalendarInput, MotorChangeInput, MotorInput, MotorView, PlateInput } from '../../schemas/motor';
+import type { MotorChangeInput, MotorInput, MotorView } from '../../schemas/motor';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
 import { Motor } from '../models/Motor';
 import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
 import { limitsOf, presentMotor, storedMotor } from '../presenters/motor';
+import { fieldSettings } from '../presenters/plan';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { completePlate, machineOrThrow } from './nameplates';
 import { loadHoursOf, ruleLoadKw } from './shaft-load';
@@ -81,7 +82,7 @@ export async function changeMotor({ motor, opened }: OpenMotor, input: MotorChan
 export async function removeMotor({ motor }: OpenMotor, { version }: { version: number }): Promise<void> {
   if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, { version }, storedMotor(motor));
   const plans = await Plan.findAll({ where: { engagementId: motor.engagementId } });
-  const setting = plans.filter((plan) => plan.actions.some((action) => action.motorId === motor.id));
+  const setting = plans.filter((plan) => fieldSettings(plan).some((field) => field.motorId === motor.id));
   if (setting.length > 0) {
     const named = setting.map((plan) => plan.name).join(', ');
     throw conflict(`${motor.name} is set by ${named}. Take it out of the plan first, or remove the plan.`);
@@ -97,8 +98,8 @@ function checkedValues(input: MotorInput) {
   return {
     name: input.name,
     drives: input.drives || null,
-    plate: input.plate as unknown as Record<string, unknown>,
-    calendar: input.calendar as unknown as Record<string, unknown>,
+    plate: input.plate,
+    calendar: input.calendar,
     fieldTodayA,
   };
 }
@@ -170,14 +171,14 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
 /** What a stored motor is to the calculations: its machine, its loads over the year. */
 export function loadOf(motor: Motor, machine: SynchronousMotor, opened: OpenEngagement) {
   const { yearFrom, yearTo } = opened.engagement;
-  const calendar = motor.calendar as unknown as CalendarInput;
+  const { calendar } = motor;
   const hours = loadHoursOf(calendar, machine.ratedOutputKw, { from: yearFrom, to: yearTo });
   const usualShaftKw = hours[0]?.shaftKw ?? ruleLoadKw(calendar.rules[0]!, machine.ratedOutputKw);
   return { usualShaftKw, hoursRunning: hours.reduce((sum, one) => sum + one.hours, 0), hours };
 }
 
 function viewOf(motor: Motor, opened: OpenEngagement): MotorView {
-  const completed = completePlate(motor.plate as unknown as PlateInput);
+  const completed = completePlate(motor.plate);
   const { motor: machine } = completed;
   if (!machine) throw conflict(`The plate of ${motor.name} can no longer be read. Open it at the station Motors.`);
   return presentMotor(motor, { ...completed, motor: machine }, loadOf(motor, machine, opened));

@@ -1,6 +1,5 @@
 import { createHash } from 'node:crypto';
 import type { CompletedMotor, SynchronousMotor } from '../../core/machine';
-import type { CalendarInput, PlateInput } from '../../schemas/motor';
 import { conflict } from '../errors';
 import type { Motor } from '../models/Motor';
 import { calculateYear } from '../workers/pool';
@@ -29,7 +28,7 @@ export interface PlanBasis {
 /** Motors of an engagement with their machines. */
 export async function planMotors(engagementId: number): Promise<PlanMotor[]> {
   return (await listMotors(engagementId)).map((row) => {
-    const completed = completePlate(row.plate as unknown as PlateInput);
+    const completed = completePlate(row.plate);
     if (!completed.motor) throw conflict(`The plate of ${row.name} cannot be read. Open it at the station Motors.`);
     return { row, machine: completed.motor, completed };
   });
@@ -59,7 +58,7 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
       id: row.id,
       name: row.name,
       machine,
-      calendar: row.calendar as unknown as CalendarInput,
+      calendar: row.calendar,
       fieldTodayA: row.fieldTodayA,
     })),
   };

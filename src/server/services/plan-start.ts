@@ -1,4 +1,5 @@
-import { planDefaults, type PlanInput, type SearchView, type YearView } from '../../schemas/plan';
+import { searchFound } from '../../schemas/job';
+import { planDefaults, type FieldSetting, type PlanInput, type YearView } from '../../schemas/plan';
 import type { Actor } from '../policies/actor';
 import { readJob } from './jobs';
 
@@ -28,7 +29,7 @@ export async function planStart(
 ): Promise<PlanStart | null> {
   const stored = [...year.plans, ...year.unpriced].find((one) => String(one.id) === asked.plan);
   const current = year.plans.find((one) => one.id === stored?.id);
-  const fieldsOf = (fields: readonly { motorId: number; fieldA: number }[]) =>
+  const fieldsOf = (fields: readonly FieldSetting[]) =>
     year.standing.fields.map(({ motorId, todayA }) => ({
       motorId,
       fieldA: fields.find((field) => field.motorId === motorId)?.fieldA ?? todayA,
@@ -49,7 +50,7 @@ export async function planStart(
   if (asked.plan !== 'new') return null;
   const searchJobId = asked.search && /^\d+$/.test(asked.search) ? Number(asked.search) : undefined;
   const job = searchJobId === undefined ? null : await readJob(actor, searchJobId);
-  const found = job?.kind === 'search' && job.state === 'done' ? (job.result as unknown as SearchView) : null;
+  const found = searchFound(job);
   return {
     start: {
       name: freeName([...year.plans, ...year.unpriced].map((one) => one.name)),

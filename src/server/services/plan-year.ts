@@ -1,10 +1,19 @@
-import type { PlanEconomics, Missing, PlanView, SearchView, UnpricedPlan, YearView } from '../../schemas/plan';
-import { planDefaults } from '../../schemas/plan';
+import {
+  planDefaults,
+  type FieldSetting,
+  type Missing,
+  type PlanEconomics,
+  type PlanView,
+  type UnpricedPlan,
+  type YearView,
+} from '../../schemas/plan';
 import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
 import { limitsOf, presentAssumed } from '../presenters/motor';
 import {
+  capacitorBank,
   chargeGroups,
+  fieldSettings,
   groupTotals,
   nearestLimitWords,
   presentCapacitors,
@@ -20,7 +29,7 @@ import { loadOf } from './motors';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
 import { appraisePlan, paybackWords, planCashFlow, type PlanMoney } from './plan-economics';
 import { fieldFault } from './plan-limits';
-import { capacitorAction, fieldActions, listPlans, type FieldAction } from './plan-rows';
+import { listPlans } from './plan-rows';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -52,7 +61,7 @@ interface Year {
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
   const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
-  const faults = rows.map((row) => faultOf(fieldActions(row), motors));
+  const faults = rows.map((row) => faultOf(fieldSettings(row), motors));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
     { fields: [], capacitors: null },
@@ -81,13 +90,13 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
 
 /** What a stored plan does. */
 function actOf(row: Plan): TaskAct {
-  const bank = capacitorAction(row);
+  const bank = capacitorBank(row);
   const capacitors = bank && { kvar: bank.kvar, lossWPerKvar: bank.lossWPerKvar };
-  return { fields: fieldActions(row), capacitors };
+  return { fields: fieldSettings(row), capacitors };
 }
 
 /** Why a stored plan cannot be offered any more; null where it can. */
-function faultOf(fields: FieldAction[], motors: LoadedMotor[]): string | null {
+function faultOf(fields: FieldSetting[], motors: LoadedMotor[]): string | null {
   for (const { motorId, fieldA } of fields) {
     const motor = motors.find(({ row }) => row.id === motorId);
     if (!motor) return 'It sets a motor that is no longer there.';
@@ -107,7 +116,7 @@ const motorFacts = ({ row, machine, load }: LoadedMotor) => ({
 });
 
 function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedPlan {
-  const fields = fieldActions(row).flatMap(({ motorId, fieldA }) => {
+  const fields = fieldSettings(row).flatMap(({ motorId, fieldA }) => {
     const motor = motors.find((one) => one.row.id === motorId);
     return motor ? presentPlanField(motorFacts(motor), fieldA) : [];
   });
@@ -128,7 +137,7 @@ const atRest: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconom
 function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
   const { basis, motors, standing } = year;
   const { currency } = basis.pricing.schedule;
-  const actions = row ? fieldActions(row) : [];
+  const actions = row ? fieldSettings(row) : [];
   const fieldOf = (motor: LoadedMotor) =>
     actions.find((action) => action.motorId === motor.row.id)?.fieldA ?? motor.row.fieldTodayA;
   const bills = setting.bills.map(presentPricedBill);
@@ -145,12 +154,12 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
     return presentPlanMotor(motorFacts(motor), fieldOf(motor), figures);
   });
-  const search = (row?.search ?? null) as unknown as SearchView | null;
+  const search = row?.search ?? null;
   return presentPlan({
     plan: row,
     currency,
     fields: motors.map((motor) => presentPlanField(motorFacts(motor), fieldOf(motor))),
-    capacitors: presentCapacitors(row && capacitorAction(row)),
+    capacitors: presentCapacitors(row && capacitorBank(row)),
     bills,
     standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
     money: { capitalCost, yearlyUpkeep, economics },

@@ -1,6 +1,7 @@
 import { toMinorUnits } from '../../core/units';
+import { searchFound } from '../../schemas/job';
 import type { MotorView } from '../../schemas/motor';
-import type { PlanChangeInput, PlanInput, SearchView } from '../../schemas/plan';
+import type { FieldSetting, PlanAction, PlanChangeInput, PlanInput, SearchView } from '../../schemas/plan';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
 import { Job } from '../models/Job';
@@ -55,7 +56,7 @@ export async function changePlan({ plan, opened }: OpenPlan, input: PlanChangeIn
   await refuseSameName(plan.engagementId, input.name, plan.id);
   const { version, ...mine } = input;
   refuseStale(plan, opened, version, mine);
-  const found = plan.search as unknown as SearchView | null;
+  const found = plan.search;
   const search =
     found && sameFields(found.fields, input.fields) ? plan.search : await searchOf(plan.engagementId, input);
   await inTx(() => plan.update({ ...values, search }));
@@ -95,15 +96,17 @@ async function checkedValues(opened: OpenEngagement, input: PlanInput) {
   const { currency } = opened.engagement;
   return {
     name: input.name,
-    actions: [
-      ...input.fields.map(({ motorId, fieldA }) => ({ kind: 'field', motorId, fieldA })),
-      ...(input.capacitors ? [{ kind: 'capacitor', ...input.capacitors }] : []),
-    ],
+    actions: actionsOf(input),
     capitalCostMinor: toMinorUnits(input.capitalCost, currency),
     yearlyUpkeepMinor: toMinorUnits(input.yearlyUpkeep, currency),
-    economics: input.economics as unknown as Record<string, number>,
+    economics: input.economics,
   };
 }
+
+const actionsOf = ({ fields, capacitors }: PlanInput): PlanAction[] => [
+  ...fields.map(({ motorId, fieldA }) => ({ kind: 'field' as const, motorId, fieldA })),
+  ...(capacitors ? [{ kind: 'capacitor' as const, ...capacitors }] : []),
+];
 
 /** Refuses fields of unknown motors, twice the same motor, and every field beyond a limit at a load of its calendar. */
 async function refuseBeyondLimits(opened: OpenEngagement, input: PlanInput): Promise<void> {
@@ -143,16 +146,16 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
   }
 }
 
-type Fields = readonly { motorId: number; fieldA: number }[];
+type Fields = readonly FieldSetting[];
 
 const sameFields = (found: Fields, set: Fields) =>
   found.every((one) => set.some((other) => other.motorId === one.motorId && other.fieldA === one.fieldA));
 
 /** The search a plan was made of, as long as the plan sets what it found. */
-async function searchOf(engagementId: number, input: PlanInput): Promise<Record<string, unknown> | null> {
+async function searchOf(engagementId: number, input: PlanInput): Promise<SearchView | null> {
   if (input.searchJobId === undefined) return null;
-  const job = await Job.findOne({ where: { id: input.searchJobId, engagementId, kind: 'search', state: 'done' } });
-  if (!job?.result) throw conflict('The search this plan was to be made of is no longer there. Search again.');
-  const found = job.result as unknown as SearchView;
-  return sameFields(found.fields, input.fields) ? job.result : null;
+  const job = await Job.findOne({ where: { id: input.searchJobId, engagementId } });
+  const found = searchFound(job);
+  if (!found) throw conflict('The search this plan was to be made of is no longer there. Search again.');
+  return sameFields(found.fields, input.fields) ? found : null;
 }

@@ -1,5 +1,4 @@
 import { addDays } from '../../core/load';
-import type { EditionContent } from '../../schemas/edition';
 import { Edition } from '../models/Edition';
 import type { OpenEngagement } from './engagements';
 
@@ -19,7 +18,7 @@ export async function promiseOf({ engagement }: OpenEngagement): Promise<Promise
   const editions = await Edition.findAll({ where: { engagementId: engagement.id }, order: [['number', 'DESC']] });
   const shown = editions.find((edition) => edition.shownAt !== null);
   if (!shown) return null;
-  const { number, madeOn, currency, plan, standing, bills } = shown.content as unknown as EditionContent;
+  const { number, madeOn, currency, plan, standing, bills } = shown.content;
   return {
     number,
     madeOn,

@@ -1,4 +1,4 @@
-import type { JobProgress } from '../../schemas/job';
+import { searchFound, type JobProgress } from '../../schemas/job';
 import type { SearchInput, SearchView } from '../../schemas/plan';
 import { conflict } from '../errors';
 import { Job } from '../models/Job';
@@ -27,7 +27,7 @@ export async function startSearch(actor: Actor, opened: OpenEngagement, input: S
   const { task: basis, fingerprint } = await planBasis(opened);
   return startJob(actor, { engagementId, kind, unit: 'settings' }, async ({ report, signal }) => {
     let toldAtMs = 0;
-    const result = await calculateSearch(
+    return calculateSearch(
       { basis, stepA: input.stepA, fingerprint },
       ({ done, planned }) => {
         const nowMs = Date.now();
@@ -37,7 +37,6 @@ export async function startSearch(actor: Actor, opened: OpenEngagement, input: S
       },
       signal,
     );
-    return result as unknown as Record<string, unknown>;
   });
 }
 
@@ -45,7 +44,7 @@ export async function startSearch(actor: Actor, opened: OpenEngagement, input: S
 export async function latestSearch(opened: OpenEngagement): Promise<{ id: number; found: SearchView | null } | null> {
   const where = { engagementId: opened.engagement.id, kind };
   const done = await Job.findOne({ where: { ...where, state: 'done' }, order: [['id', 'DESC']] });
-  const found = done?.result ? (done.result as unknown as SearchView) : null;
+  const found = searchFound(done);
   const [running] = await runningJobs(opened.engagement.id, kind);
   const id = running?.id ?? done?.id;
   return id === undefined ? null : { id, found };

@@ -1,7 +1,7 @@
 import { dayNumber } from '../../core/load';
-import type { EditionContent } from '../../schemas/edition';
 import type { StationView } from '../../schemas/engagement';
 import type { WaitingView } from '../../schemas/today';
+import { formatMajor } from '../../components/ui/format';
 import { dateOfInstant } from '../clock';
 import { ServiceError } from '../errors';
 import { Edition } from '../models/Edition';
@@ -98,10 +98,8 @@ async function findingsToDecide(opened: OpenEngagement, stations: StationView[],
 }
 
 function savingOf(edition: Edition): WaitingView['stake'] {
-  const { plan, currency } = edition.content as unknown as Partial<EditionContent>;
-  if (!plan || !currency || !Number.isFinite(plan.saving)) return null;
-  const whole = plan.saving.toLocaleString('en-US', { maximumFractionDigits: 0 });
-  return { text: `${whole}\u00a0${currency}`, note: 'saving a year in it' };
+  const { plan, currency } = edition.content;
+  return { text: formatMajor(plan.saving, currency, { whole: true }), note: 'saving a year in it' };
 }
 
 async function editionsMade(opened: OpenEngagement, today: string): Promise<Told> {

@@ -1,5 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { existsSync, mkdtempSync, rmSync } from 'node:fs';
+import { existsSync, mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { createServer } from 'node:net';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
@@ -36,6 +36,12 @@ async function answers(origin: string, child: ChildProcess, words: () => string)
   throw new Error(`The built server did not answer in time:\n${words()}`);
 }
 
+/** The flags the demo is started with, so that tests and bench measure what people run. */
+function nodeFlags(): string[] {
+  const { scripts } = JSON.parse(readFileSync('package.json', 'utf8')) as { scripts: { demo: string } };
+  return scripts.demo.split(' ').filter((word) => word.startsWith('--'));
+}
+
 /** Starts `cli.mjs demo` from the build on free ports and waits until it answers. */
 export async function startServerProcess(): Promise<ServerProcess> {
   const cli = path.resolve('dist/server/cli.mjs');
@@ -50,7 +56,7 @@ export async function startServerProcess(): Promise<ServerProcess> {
     APP_ORIGIN: origin,
     NODE_ENV: 'production',
   };
-  const child = spawn(process.execPath, [cli, 'demo', dataDir], { env, stdio: ['ignore', 'pipe', 'pipe'] });
+  const child = spawn(process.execPath, [...nodeFlags(), cli, 'demo', dataDir], { env, stdio: ['ignore', 'pipe', 'pipe'] });
   let output = '';
   for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk: Buffer) => (output += chunk.toString()));
   try {

@@ -4,6 +4,7 @@
  */
 import { TZDate } from '@date-fns/tz';
 import { addDays, format, parseISO } from 'date-fns';
+import { minorUnitDecimals } from '../../core/units';
 
 const noBreak = '\u00a0';
 const minus = '\u2212';
@@ -48,10 +49,7 @@ export function formatPercent(fraction: number, decimals = 0): string {
 }
 
 /** Decimals of a currency: 2 for USD, 0 for JPY, 3 for KWD. */
-export function currencyDecimals(currency: string): number {
-  const style = new Intl.NumberFormat('en-US', { style: 'currency', currency });
-  return style.resolvedOptions().maximumFractionDigits ?? 2;
-}
+export const currencyDecimals = (currency: string): number => minorUnitDecimals(currency);
 
 export interface MoneyStyle {
   /** Whole units only, for sentences and charts: `71,884 USD`. */

@@ -56,7 +56,10 @@ export async function startServerProcess(): Promise<ServerProcess> {
     APP_ORIGIN: origin,
     NODE_ENV: 'production',
   };
-  const child = spawn(process.execPath, [...nodeFlags(), cli, 'demo', dataDir], { env, stdio: ['ignore', 'pipe', 'pipe'] });
+  const child = spawn(process.execPath, [...nodeFlags(), cli, 'demo', dataDir], {
+    env,
+    stdio: ['ignore', 'pipe', 'pipe'],
+  });
   let output = '';
   for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk: Buffer) => (output += chunk.toString()));
   try {

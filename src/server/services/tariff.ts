@@ -63,7 +63,8 @@ const choiceOf = ({ engagement }: OpenEngagement) => TariffChoice.findOne({ wher
 
 function viewOf(choice: TariffChoice, files: ScheduleFile[]): ChoiceView {
   const file = files.find((one) => one.id === choice.scheduleId);
-  return presentChoice(choice, readOrNull(choice.scheduleText), file?.sha256 ?? null);
+  const schedule = file?.sha256 === choice.sha256 ? file.schedule : readOrNull(choice.scheduleText);
+  return presentChoice(choice, schedule, file?.sha256 ?? null);
 }
 
 function readOrNull(text: string): Schedule | null {

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { readTyped, typedAmount, typedNumber, type TypedBill } from '@/components/intake/typed';
+import { readTyped, typedAmount, type TypedBill } from '@/components/intake/typed';
 
 const typed: TypedBill = {
   from: '2026-05-11',
@@ -16,20 +16,6 @@ const typed: TypedBill = {
   ],
   total: '410.00',
 };
-
-describe('typedNumber', () => {
-  it.each([
-    ['2,479,826', 2_479_826],
-    ['1 234.5', 1234.5],
-    ['\u22123', -3],
-    ['.5', 0.5],
-    ['12,5', null],
-    ['1.234,56', null],
-    ['1,23,456', null],
-    ['abc', null],
-    ['', null],
-  ])('reads %s as %s', (text, expected) => expect(typedNumber(text)).toBe(expected));
-});
 
 describe('typedAmount', () => {
   it('gives minor units of the currency', () => {

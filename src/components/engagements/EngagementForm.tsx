@@ -8,7 +8,7 @@ import { Queries } from '../../client/queries';
 import { addDays, addMonths, isCalendarDate } from '../../core/load';
 import { engagementInput, type EngagementChoices } from '../../schemas/engagement';
 import { SheetPart } from '../intake/Sheet';
-import { draftResolver, messageAt } from '../motors/form-errors';
+import { draftResolver, messageAt } from '../ui/form-errors';
 import { Button } from '../ui/Button';
 import { CheckField, Field, NumberField, SelectField } from '../ui/Field';
 import { formatDate } from '../ui/format';

@@ -1,4 +1,5 @@
 import type { EngagementChoices, EngagementForm } from '../../schemas/engagement';
+import { typedNumber } from '../ui/typed-number';
 
 /** The form of a new engagement as text; `pick` is an id or "new". */
 export interface EngagementDraft {
@@ -13,7 +14,7 @@ export interface EngagementDraft {
   memberIds: string[];
 }
 
-const decimal = (text: string) => (text.trim() === '' ? null : Number(text.replace(/,/g, '.')));
+const decimal = (text: string) => typedNumber(text) ?? null;
 
 /** What the schema reads from the draft. */
 export function toInput(draft: EngagementDraft): EngagementForm {

@@ -1,9 +1,10 @@
 import { useRef, useState } from 'react';
-import { useForm, type FieldErrors, type Resolver } from 'react-hook-form';
+import { useForm, type Resolver } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { addBill, changeBill } from '../../client/intake';
 import type { BillView } from '../../schemas/bill';
 import { Button } from '../ui/Button';
+import { nestErrors } from '../ui/form-errors';
 import { keptAsTyped, startOfTyped } from './bill-start';
 import { LineRows, PeriodRows, QuantityRows, TotalRows } from './BillFormRows';
 import { BillSaveFault } from './BillSaveFault';
@@ -26,15 +27,9 @@ function resolverFor(currency: string): Resolver<TypedBill> {
   return (values) => {
     const read = readTyped(values, currency);
     if ('bill' in read) return { values, errors: {} };
-    const errors: Record<string, unknown> = {};
-    for (const [path, message] of Object.entries(read.faults)) place(errors, path.split('.'), message);
-    return { values: {}, errors: errors as FieldErrors<TypedBill> };
+    const messages = Object.entries(read.faults).map(([path, message]) => [path, [message]]);
+    return { values: {}, errors: nestErrors<TypedBill>(Object.fromEntries(messages)) };
   };
-}
-
-function place(into: Record<string, unknown>, [head = '', ...rest]: string[], message: string): void {
-  if (rest.length === 0) into[head] = { type: 'typed', message };
-  else place((into[head] ??= {}) as Record<string, unknown>, rest, message);
 }
 
 /** A bill typed from paper: period, quantities, lines, total, with running checks. */

@@ -1,5 +1,6 @@
 import { minorUnitDecimals, toMinorUnits } from '../../core/units';
 import { billInput, type BillInput } from '../../schemas/bill';
+import { typedNumber } from '../ui/typed-number';
 
 /** What stands in the form: text as typed, the last day as people say it. */
 export interface TypedBill {
@@ -13,20 +14,10 @@ export interface TypedBill {
 /** Fields of the form by their path, with what is wrong. */
 export type TypedFaults = Record<string, string>;
 
-const grouped = /^-?\d{1,3}(,\d{3})+(\.\d+)?$/;
-const plain = /^-?\d+(\.\d+)?$|^-?\.\d+$/;
-
-/** A figure as typed: grouping commas or spaces, a point for decimals, a true minus; null where it is none. */
-export function typedNumber(text: string): number | null {
-  const bare = text.replace(/[\s\u00a0\u202f']/g, '').replace('\u2212', '-');
-  if (grouped.test(bare)) return Number(bare.replaceAll(',', ''));
-  return plain.test(bare) ? Number(bare) : null;
-}
-
 /** An amount as typed, in minor units; null where it is none or finer than the smallest coin. */
 export function typedAmount(text: string, currency: string): number | null {
-  const amount = typedNumber(text);
-  if (amount === null) return null;
+  const amount = typedNumber(text) ?? NaN;
+  if (Number.isNaN(amount)) return null;
   const fraction = text.split('.')[1]?.replace(/\D/g, '') ?? '';
   return fraction.length > minorUnitDecimals(currency) ? null : toMinorUnits(amount, currency);
 }
@@ -52,9 +43,9 @@ export function readTyped(typed: TypedBill, currency: string): { bill: BillInput
   const faults: TypedFaults = {};
   const quantities: Record<string, number> = {};
   typed.quantities.forEach(({ name, figure }, index) => {
-    if (figure.trim() === '') return;
     const read = typedNumber(figure);
-    if (read === null) faults[`quantities.${index}.figure`] = numberFault;
+    if (read === undefined) return;
+    if (Number.isNaN(read)) faults[`quantities.${index}.figure`] = numberFault;
     else quantities[name] = read;
   });
   const lines: { label: string; amountMinor: number; at: number }[] = [];

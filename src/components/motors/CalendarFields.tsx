@@ -4,7 +4,7 @@ import { Button } from '../ui/Button';
 import { Field, NumberField, SelectField } from '../ui/Field';
 import { FieldError } from '../ui/FieldError';
 import { emptyRule, type MotorDraft } from './draft';
-import { messageAt } from './form-errors';
+import { messageAt } from '../ui/form-errors';
 
 function RuleRow({ index, onRemove }: { index: number; onRemove?: () => void }) {
   const { register, formState } = useFormContext<MotorDraft>();

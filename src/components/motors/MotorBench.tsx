@@ -7,7 +7,7 @@ import { formatNumber, formatQuantity } from '../ui/format';
 import { NumberField } from '../ui/Field';
 import { Notice } from '../ui/Notice';
 import { capabilityData, settingReading, vCurveData, type NamedField, type SettingReading } from './curves';
-import { typedNumber } from './draft';
+import { typedNumber } from '../ui/typed-number';
 import { kvarWords } from './words';
 
 export interface MotorBenchProps {

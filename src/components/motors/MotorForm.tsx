@@ -11,7 +11,7 @@ import { Notice } from '../ui/Notice';
 import { StaleCompare, type StaleDifference } from '../ui/StaleCompare';
 import { CalendarFields } from './CalendarFields';
 import { draftEntries, draftOf, draftToInput, emptyDraft, entryLabels, type MotorDraft } from './draft';
-import { draftResolver } from './form-errors';
+import { draftResolver } from '../ui/form-errors';
 import { DataSheetFields, LimitFields, PlateFields, useEntry } from './PlateFields';
 
 /** What the server keeps, as it comes with a 409. */

@@ -1,7 +1,7 @@
 import { useFormContext } from 'react-hook-form';
 import { NumberField, SelectField, TextAreaField, Field } from '../ui/Field';
 import { entryLabels, type MotorDraft } from './draft';
-import { messageAt } from './form-errors';
+import { messageAt } from '../ui/form-errors';
 
 /** Props of one entry of the form: registration, label and fault by its path. */
 export function useEntry() {

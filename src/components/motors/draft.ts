@@ -1,4 +1,5 @@
 import { dayNames, type DayName, type MotorInput } from '../../schemas/motor';
+import { typedNumber } from '../ui/typed-number';
 
 /** A motor as it is typed: every number still text, so that nothing typed is lost. Paths are those of `motorInput`. */
 export interface MotorDraft {
@@ -38,12 +39,6 @@ const limitNumbers = ['fieldCurrentA', 'armatureCurrentA', 'pullOutMargin', 'res
 export type PlateNumber = (typeof plateNumbers)[number];
 type PlateChoice = (typeof plateChoices)[number];
 type LimitNumber = (typeof limitNumbers)[number];
-
-/** Reads a number as people type it: `1,334.5`, a true minus sign; empty is absent, anything else NaN. */
-export function typedNumber(text: string): number | undefined {
-  const plain = text.replaceAll(/[\s,\u00a0]/g, '').replace('\u2212', '-');
-  return plain === '' ? undefined : Number(plain);
-}
 
 const shown = (value: unknown) => (value === undefined || value === null ? '' : String(value));
 

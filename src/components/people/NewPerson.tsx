@@ -6,7 +6,7 @@ import { addPerson } from '../../client/people';
 import { Queries } from '../../client/queries';
 import type { LetterOutcome } from '../../schemas/account';
 import { personInput, rightWords, type PersonInput } from '../../schemas/client';
-import { draftResolver } from '../motors/form-errors';
+import { draftResolver } from '../ui/form-errors';
 import { Button } from '../ui/Button';
 import { CheckField, Field, SelectField } from '../ui/Field';
 import { Notice } from '../ui/Notice';

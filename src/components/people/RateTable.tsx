@@ -4,6 +4,7 @@ import type { RateView } from '../../schemas/rate';
 import { Button } from '../ui/Button';
 import { Field, NumberField, SelectField } from '../ui/Field';
 import { currencyDecimals, formatAmount, formatDate } from '../ui/format';
+import { typedNumber } from '../ui/typed-number';
 import { ActFault, useAct } from './act';
 
 export interface RateTableProps {
@@ -13,8 +14,6 @@ export interface RateTableProps {
   currency: string;
   today: string;
 }
-
-const toNumber = (text: string) => (text.trim() === '' ? NaN : Number(text.replace(/,/g, '.')));
 
 function RateRow({ rate }: { rate: RateView }) {
   const [perHour, setPerHour] = useState(String(rate.perHourMinor / 10 ** currencyDecimals(rate.currency)));
@@ -59,7 +58,7 @@ function RateRow({ rate }: { rate: RateView }) {
               <Button
                 kind="secondary"
                 busy={change.busy}
-                onClick={() => change.send({ perHour: toNumber(perHour), from })}
+                onClick={() => change.send({ perHour: typedNumber(perHour) ?? NaN, from })}
               >
                 Save the rate
               </Button>
@@ -83,7 +82,7 @@ export function RateTable({ userId, rates, engagements, currency, today }: RateT
     setRate({
       userId,
       engagementId: input.engagementId === '' ? null : Number(input.engagementId),
-      perHour: toNumber(input.perHour),
+      perHour: typedNumber(input.perHour) ?? NaN,
       from: input.from,
     }),
   );

@@ -5,7 +5,7 @@ import { ApiError } from '../../client/api';
 import { changePlan, createPlan, removePlan } from '../../client/plans';
 import { Queries } from '../../client/queries';
 import { planInput, type PlanInput } from '../../schemas/plan';
-import { draftResolver, messageAt } from '../motors/form-errors';
+import { draftResolver, messageAt } from '../ui/form-errors';
 import { Button, ButtonLink } from '../ui/Button';
 import { Field, NumberField } from '../ui/Field';
 import { Notice } from '../ui/Notice';

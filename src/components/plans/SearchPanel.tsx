@@ -11,7 +11,7 @@ import { NumberField } from '../ui/Field';
 import { formatCount } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { Progress } from '../ui/Progress';
-import { typedNumber } from '../motors/draft';
+import { typedNumber } from '../ui/typed-number';
 import { amperes, fieldWords, searchSentence } from './words';
 
 export interface SearchPanelProps {

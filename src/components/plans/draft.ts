@@ -1,5 +1,5 @@
 import type { PlanInput } from '../../schemas/plan';
-import { typedNumber } from '../motors/draft';
+import { typedNumber } from '../ui/typed-number';
 
 /** A plan as it is typed; paths are those of `planInput`. Fields stay in the order of the motors. */
 export interface PlanDraft {

@@ -3,7 +3,7 @@ import { useForm, type Resolver, type UseFormReturn } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { chooseSchedule } from '../../client/tariff';
 import type { ChoiceView, ChooseInput, ContractField, HistoryField, LibraryEntry } from '../../schemas/tariff';
-import { messageAt, nestErrors } from '../motors/form-errors';
+import { messageAt, nestErrors } from '../ui/form-errors';
 import { Button } from '../ui/Button';
 import { CheckField, Field, NumberField, SelectField } from '../ui/Field';
 import { formatCount, formatNumber } from '../ui/format';
@@ -127,7 +127,7 @@ export function ChooseSchedule(props: ChooseScheduleProps) {
     const faults = faultsOf(toChooseInput(draft, schedule ?? blank, null), schedule);
     return Object.keys(faults).length === 0
       ? { values: draft, errors: {} }
-      : { values: {}, errors: nestErrors(faults) };
+      : { values: {}, errors: nestErrors<ChoiceDraft>(faults) };
   };
   const form = useForm<ChoiceDraft>({
     defaultValues: draftOf(schedules.get(choice?.scheduleId ?? ''), choice),

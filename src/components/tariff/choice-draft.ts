@@ -10,6 +10,7 @@ import {
 } from '../../schemas/tariff';
 import { formatNumber } from '../ui/format';
 import type { StaleDifference } from '../ui/StaleCompare';
+import { typedNumber } from '../ui/typed-number';
 
 /** The form as typed: everything is text until it is sent. */
 export interface ChoiceDraft {
@@ -26,18 +27,10 @@ export interface Choosable {
   history: HistoryField[];
 }
 
-const numberForm = /^-?(\d{1,3}(,\d{3})+|\d+)(\.\d+)?$/;
-
-/** A number as people type it, 1,250.5; NaN for anything else, a decimal comma among it. */
-export function typedNumber(text: string): number {
-  const trimmed = text.trim().replace(/^−/, '-');
-  return numberForm.test(trimmed) ? Number(trimmed.replaceAll(',', '')) : NaN;
-}
-
 /** Values of earlier months, oldest first, separated by blanks or semicolons. */
 export function typedSeries(text: string): number[] {
   const parts = text.split(/[\s;]+/).filter(Boolean);
-  return parts.map(typedNumber);
+  return parts.map((part) => typedNumber(part) ?? NaN);
 }
 
 function contractOf(draft: ChoiceDraft, fields: ContractField[]): Record<string, number> {
@@ -45,7 +38,7 @@ function contractOf(draft: ChoiceDraft, fields: ContractField[]): Record<string,
     const typed = draft.contract[field.name];
     if (field.kind === 'flag') return [[field.name, typed ? 1 : 0]];
     if (typeof typed !== 'string' || typed.trim() === '') return [];
-    return [[field.name, field.kind === 'date' ? toDateNumber(typed) : typedNumber(typed)]];
+    return [[field.name, field.kind === 'date' ? toDateNumber(typed) : (typedNumber(typed) ?? NaN)]];
   });
   return Object.fromEntries(entries);
 }

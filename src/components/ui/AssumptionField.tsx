@@ -1,5 +1,6 @@
 import { useId, useState, type CSSProperties } from 'react';
 import { formatNumber } from './format';
+import { typedNumber } from './typed-number';
 
 export interface AssumptionFieldProps {
   label: string;
@@ -24,8 +25,8 @@ export function AssumptionField(props: AssumptionFieldProps) {
   const share = (at: number) => (100 * (Math.min(max, Math.max(min, at)) - min)) / (max - min);
   const figure = (at: number) => formatNumber(at, { decimals });
   const accept = () => {
-    const typed = Number((draft ?? '').replaceAll(',', '').replace('\u2212', '-'));
-    if (draft?.trim() && Number.isFinite(typed)) onChange(Math.min(max, Math.max(min, typed)));
+    const typed = typedNumber(draft ?? '') ?? NaN;
+    if (Number.isFinite(typed)) onChange(Math.min(max, Math.max(min, typed)));
     setDraft(null);
   };
   return (

@@ -2,7 +2,7 @@ import type { FieldErrors, FieldValues, Resolver } from 'react-hook-form';
 import type { z } from 'zod';
 
 /** Lays messages by dotted path into the nested shape react-hook-form reads. */
-export function nestErrors(messages: Record<string, string[]>): FieldErrors {
+export function nestErrors<Draft extends FieldValues>(messages: Record<string, string[]>): FieldErrors<Draft> {
   const errors: Record<string, unknown> = {};
   for (const [path, [message]] of Object.entries(messages)) {
     const names = path.split('.');
@@ -11,7 +11,7 @@ export function nestErrors(messages: Record<string, string[]>): FieldErrors {
     const last = names.at(-1) ?? path;
     place[last] ??= { type: 'check', message };
   }
-  return errors as FieldErrors;
+  return errors as FieldErrors<Draft>;
 }
 
 /** Resolver of a form whose fields are text: converts, then asks the schema the server uses too. */
@@ -24,7 +24,7 @@ export function draftResolver<Draft extends FieldValues>(
     if (parsed.success) return { values: draft, errors: {} };
     const messages: Record<string, string[]> = {};
     for (const issue of parsed.error.issues) (messages[issue.path.join('.')] ??= []).push(issue.message);
-    return { values: {}, errors: nestErrors(messages) as FieldErrors<Draft> };
+    return { values: {}, errors: nestErrors<Draft>(messages) };
   };
 }
 

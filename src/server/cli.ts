@@ -39,7 +39,14 @@ async function demo(): Promise<void> {
   await migrate();
   const pending = await seeder().pending();
   if (pending.length > 0) print('Setting up the demo scenario (about half a minute) ...');
-  await seeder().up();
+  await seeder()
+    .up()
+    .catch((error: Error) => {
+      const again = `Remove ${path.relative(process.cwd(), folder)} and start again.`;
+      throw new Error(`The demo scenario could not be set up; it may have been interrupted before. ${again}`, {
+        cause: error,
+      });
+    });
   await serve(() => catcher.close());
   const { demoAccounts } = await import('./demo-accounts');
   print(
@@ -79,6 +86,17 @@ function print(line: string): void {
   process.stdout.write(`${line}\n`);
 }
 
+/** Why a command ended, with what to do about a port that is taken. */
+function reasonOf(error: unknown): string {
+  if (!(error instanceof Error)) return String(error);
+  const { code, port } = error as NodeJS.ErrnoException & { port?: number };
+  if (code === 'EADDRINUSE') {
+    return `Port ${port} is taken by another program. Stop it, or set PORT, APP_ORIGIN and SMTP_PORT to free ones.`;
+  }
+  const cause = error.cause instanceof Error ? `\n${error.cause.message}` : '';
+  return `${error.message}${cause}`;
+}
+
 const commands: Record<string, () => Promise<void>> = { demo, found, start };
 const command = commands[process.argv[2] ?? ''];
 
@@ -87,7 +105,7 @@ if (!command) {
   process.exitCode = 2;
 } else {
   command().catch((error: unknown) => {
-    process.stderr.write(`${error instanceof Error ? error.message : String(error)}\n`);
+    process.stderr.write(`${reasonOf(error)}\n`);
     process.exit(1);
   });
 }

@@ -1,4 +1,5 @@
 import type { BillInput, BillView } from '../../schemas/bill';
+import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { conflict, notFound, staleVersion } from '../errors';
 import { Bill } from '../models/Bill';
@@ -99,8 +100,9 @@ export async function changeBill(
   id: number,
   change: { version: number; bill: BillInput },
 ): Promise<BillView> {
-  const bill = await openBill(actor, code, id, change);
+  const bill = await openBill(actor, code, id);
   await inTx(async () => {
+    await refuseStale(bill, change);
     await assertNoOverlap(bill.engagementId, change.bill, bill.id);
     bill.set(valuesOf(change.bill));
     // A change of lines alone is a change of the bill too: its version must move.
@@ -120,18 +122,25 @@ export async function changeBill(
 
 /** Removes a bill. */
 export async function removeBill(actor: Actor, code: string, id: number, seen: { version: number }): Promise<void> {
-  const bill = await openBill(actor, code, id, seen);
-  await inTx(() => destroyBill(bill));
+  const bill = await openBill(actor, code, id);
+  await inTx(async () => {
+    await refuseStale(bill, seen);
+    await destroyBill(bill);
+  });
 }
 
-async function openBill(actor: Actor, code: string, id: number, seen: { version: number; bill?: BillInput }) {
+async function openBill(actor: Actor, code: string, id: number): Promise<Bill> {
   const { engagement } = await openForChange(actor, code);
   const bill = Number.isSafeInteger(id) ? await Bill.findOne({ where: { id, engagementId: engagement.id } }) : null;
   if (!bill) throw notFound();
-  if (bill.version !== seen.version) {
-    throw staleVersion('This bill', seen.bill ?? null, first(await present([bill])));
-  }
   return bill;
+}
+
+/** Refuses a change of a bill that somebody changed in between. Call it inside inTx. */
+async function refuseStale(bill: Bill, seen: { version: number; bill?: BillInput }): Promise<void> {
+  await freshen(bill);
+  if (bill.version === seen.version) return;
+  throw staleVersion('This bill', seen.bill ?? null, first(await present([bill])));
 }
 
 function first(views: BillView[]): BillView {

@@ -52,11 +52,12 @@ async function nextNumber(engagementId: number): Promise<number> {
 /**
  * Begins making the next edition of an engagement: prices, draws and freezes it in the background.
  *
- * @throws {ServiceError} 409 where plans cannot be priced yet or the plan is gone
+ * @throws {ServiceError} 409 where plans cannot be priced yet, the plan is gone, or an edition is being made already
  */
 export async function makeEdition(actor: Actor, opened: OpenEngagement, planId: number): Promise<JobProgress> {
   const basis = await basisOf(opened, planId);
-  const what = { engagementId: opened.engagement.id, kind: 'edition', subjectId: planId, unit: 'steps' };
+  const alone = 'An edition of this engagement is being made already. Wait for it, then make the next.';
+  const what = { engagementId: opened.engagement.id, kind: 'edition', subjectId: planId, unit: 'steps', alone };
   return startJob(actor, what, (controls) => freeze(actor, basis, controls));
 }
 

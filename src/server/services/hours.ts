@@ -1,5 +1,6 @@
 import { addDays, isoDate } from '../../core/load';
 import type { HourChangeInput, HourInput, HourSums, HourView } from '../../schemas/hour';
+import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { forbidden, invalid, notFound, staleVersion } from '../errors';
 import { HourEntry } from '../models/HourEntry';
@@ -129,8 +130,8 @@ export async function changeHours(
   input: HourChangeInput,
   now = Date.now(),
 ): Promise<HourView> {
-  if (entry.version !== input.version) throw staleVersion('This entry', valuesOf(input), shown(entry));
   await inTx(async () => {
+    await refuseStale(entry, input.version, valuesOf(input));
     await checkDay(actor, input, now, entry.id);
     await entry.update(valuesOf(input));
   });
@@ -139,6 +140,14 @@ export async function changeHours(
 
 /** Removes an entry of the actor's; the trail keeps it. @throws {ServiceError} 409 where it was changed */
 export async function removeHours({ entry }: OpenHours, version: number): Promise<void> {
-  if (entry.version !== version) throw staleVersion('This entry', null, shown(entry));
-  await inTx(() => entry.destroy());
+  await inTx(async () => {
+    await refuseStale(entry, version, null);
+    await entry.destroy();
+  });
+}
+
+/** Refuses a change of an entry that was changed in between. Call it inside inTx. */
+async function refuseStale(entry: HourEntry, version: number, mine: unknown): Promise<void> {
+  await freshen(entry);
+  if (entry.version !== version) throw staleVersion('This entry', mine, shown(entry));
 }

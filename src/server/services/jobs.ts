@@ -2,7 +2,7 @@ import { EventEmitter } from 'node:events';
 import type { JobProgress, JobResult } from '../../schemas/job';
 import { inTx } from '../db/tx';
 import { actAs } from '../db/context';
-import { notFound, ServiceError } from '../errors';
+import { conflict, notFound, ServiceError } from '../errors';
 import { log } from '../log';
 import { Job } from '../models/Job';
 import type { Actor } from '../policies/actor';
@@ -30,19 +30,27 @@ function present(job: Job): JobProgress {
   return { id, kind, subjectId, state, done, planned, unit, result, error, startedAt: createdAt.toISOString() };
 }
 
+/** What a job is. `alone`: one of its kind runs for an engagement at a time; the sentence tells who starts a second. */
+interface JobKind {
+  engagementId: number;
+  kind: string;
+  subjectId?: number;
+  unit: string;
+  alone?: string;
+}
+
 /**
  * Begins long work in the background in the person's name. It goes on when the page is left; its row tells how it ended.
+ *
+ * @throws {ServiceError} 409 where it is to run alone and another runs already
  */
-export async function startJob(
-  actor: Actor,
-  what: { engagementId: number; kind: string; subjectId?: number; unit: string },
-  work: Work,
-): Promise<JobProgress> {
-  const subjectId = what.subjectId ?? null;
-  const job = await inTx(() =>
-    Job.create({
+export async function startJob(actor: Actor, { alone, ...what }: JobKind, work: Work): Promise<JobProgress> {
+  const { job, entry } = await inTx(async () => {
+    const [other] = alone === undefined ? [] : await runningJobs(what.engagementId, what.kind);
+    if (other) throw conflict(alone ?? '', { job: other.id });
+    const created = await Job.create({
       ...what,
-      subjectId,
+      subjectId: what.subjectId ?? null,
       state: 'running',
       done: 0,
       planned: null,
@@ -50,13 +58,21 @@ export async function startJob(
       result: null,
       error: null,
       endedAt: null,
-    }),
+    });
+    return { job: created, entry: enter(created) };
+  });
+  void actAs({ actorId: actor.id, ip: null }, () => carryOut(job, entry, work)).catch((error: unknown) =>
+    log().error({ job: job.id, err: error }, 'the end of a job was not stored'),
   );
+  return entry.progress;
+}
+
+/** Lists a job as running, in the same turn as its row is made: the next to look finds it. */
+function enter(job: Job): Running {
   const entry: Running = { controller: new AbortController(), progress: present(job), events: new EventEmitter() };
   entry.events.setMaxListeners(100);
   running.set(job.id, entry);
-  void actAs({ actorId: actor.id, ip: null }, () => carryOut(job, entry, work));
-  return entry.progress;
+  return entry;
 }
 
 async function carryOut(job: Job, entry: Running, work: Work): Promise<void> {
@@ -73,10 +89,13 @@ async function carryOut(job: Job, entry: Running, work: Work): Promise<void> {
     ending = signal.aborted ? { state: 'cancelled', result: null, error: null } : failure(job.id, error);
   }
   const { done, planned } = entry.progress;
-  await inTx(() => job.update({ ...ending, done, planned, endedAt: new Date() }));
-  Object.assign(entry.progress, ending);
-  running.delete(job.id);
-  entry.events.emit('progress', entry.progress);
+  try {
+    await inTx(() => job.update({ ...ending, done, planned, endedAt: new Date() }));
+  } finally {
+    Object.assign(entry.progress, ending);
+    running.delete(job.id);
+    entry.events.emit('progress', entry.progress);
+  }
 }
 
 function failure(id: number, error: unknown): Pick<JobProgress, 'state' | 'result' | 'error'> {

@@ -7,6 +7,7 @@ import {
 } from '../../core/machine';
 import { wordNumber } from '../../core/units';
 import type { MotorChangeInput, MotorInput, MotorView } from '../../schemas/motor';
+import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
 import { Motor } from '../models/Motor';
@@ -51,9 +52,9 @@ export async function openMotor(actor: Actor, id: number): Promise<OpenMotor> {
  */
 export async function createMotor(opened: OpenEngagement, input: MotorInput): Promise<MotorView> {
   const values = checkedValues(input);
-  await refuseSameName(opened.engagement.id, input.name);
   const engagementId = opened.engagement.id;
   const motor = await inTx(async () => {
+    await refuseSameName(engagementId, input.name);
     const position = await Motor.count({ where: { engagementId } });
     return Motor.create({ ...values, engagementId, position });
   });
@@ -67,10 +68,12 @@ export async function createMotor(opened: OpenEngagement, input: MotorInput): Pr
  */
 export async function changeMotor({ motor, opened }: OpenMotor, input: MotorChangeInput): Promise<MotorView> {
   const values = checkedValues(input);
-  await refuseSameName(motor.engagementId, input.name, motor.id);
   const { version, ...mine } = input;
-  if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, mine, storedMotor(motor));
-  await inTx(() => motor.update(values));
+  await inTx(async () => {
+    await refuseSameName(motor.engagementId, input.name, motor.id);
+    await refuseStale(motor, version, mine);
+    await motor.update(values);
+  });
   return viewOf(motor, opened);
 }
 
@@ -80,14 +83,22 @@ export async function changeMotor({ motor, opened }: OpenMotor, input: MotorChan
  * @throws {ServiceError} 409 where a plan sets its field, naming it, or where it was changed in between
  */
 export async function removeMotor({ motor }: OpenMotor, { version }: { version: number }): Promise<void> {
-  if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, { version }, storedMotor(motor));
-  const plans = await Plan.findAll({ where: { engagementId: motor.engagementId } });
-  const setting = plans.filter((plan) => fieldSettings(plan).some((field) => field.motorId === motor.id));
-  if (setting.length > 0) {
-    const named = setting.map((plan) => plan.name).join(', ');
-    throw conflict(`${motor.name} is set by ${named}. Take it out of the plan first, or remove the plan.`);
-  }
-  await inTx(() => motor.destroy());
+  await inTx(async () => {
+    await refuseStale(motor, version, { version });
+    const plans = await Plan.findAll({ where: { engagementId: motor.engagementId } });
+    const setting = plans.filter((plan) => fieldSettings(plan).some((field) => field.motorId === motor.id));
+    if (setting.length > 0) {
+      const named = setting.map((plan) => plan.name).join(', ');
+      throw conflict(`${motor.name} is set by ${named}. Take it out of the plan first, or remove the plan.`);
+    }
+    await motor.destroy();
+  });
+}
+
+/** Refuses a change of a motor that somebody changed in between. Call it inside inTx. */
+async function refuseStale(motor: Motor, version: number, mine: unknown): Promise<void> {
+  await freshen(motor);
+  if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, mine, storedMotor(motor));
 }
 
 /** The columns of a row, after every check that can refuse it. */

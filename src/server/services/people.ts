@@ -2,6 +2,7 @@ import { UniqueConstraintError } from 'sequelize';
 import type { LetterOutcome, PersonView } from '../../schemas/account';
 import type { PersonChangeInput, PersonInput } from '../../schemas/client';
 import type { RateView } from '../../schemas/rate';
+import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { forbidden, invalid, notFound, staleVersion } from '../errors';
 import { Client } from '../models/Client';
@@ -169,12 +170,13 @@ function valuesOf(actor: Actor, user: User, input: PersonChangeInput): Values {
  * @throws {ServiceError} 403 for the actor's own role, access and licence; 409 with both versions; 422
  */
 export async function changePerson(actor: Actor, user: User, input: PersonChangeInput): Promise<PersonView> {
-  const values = valuesOf(actor, user, input);
-  if (user.version !== input.version) {
-    const theirs = Object.fromEntries(Object.keys(values).map((name) => [name, user.get(name as keyof User)]));
-    throw staleVersion(user.name, values, { ...theirs, version: user.version });
-  }
   await inTx(async () => {
+    await freshen(user);
+    const values = valuesOf(actor, user, input);
+    if (user.version !== input.version) {
+      const theirs = Object.fromEntries(Object.keys(values).map((name) => [name, user.get(name as keyof User)]));
+      throw staleVersion(user.name, values, { ...theirs, version: user.version });
+    }
     await user.update(values);
     if (values.disabledAt) await endTokens(user.id);
   });

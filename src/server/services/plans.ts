@@ -2,6 +2,7 @@ import { toMinorUnits } from '../../core/units';
 import { searchFound } from '../../schemas/job';
 import type { MotorView } from '../../schemas/motor';
 import type { FieldSetting, PlanAction, PlanChangeInput, PlanInput, SearchView } from '../../schemas/plan';
+import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
 import { Job } from '../models/Job';
@@ -40,9 +41,11 @@ export async function openPlan(actor: Actor, id: number): Promise<OpenPlan> {
 export async function createPlan(opened: OpenEngagement, input: PlanInput) {
   const engagementId = opened.engagement.id;
   const values = await checkedValues(opened, input);
-  await refuseSameName(engagementId, input.name);
   const search = await searchOf(engagementId, input);
-  const plan = await inTx(() => Plan.create({ ...values, engagementId, search }));
+  const plan = await inTx(async () => {
+    await refuseSameName(engagementId, input.name);
+    return Plan.create({ ...values, engagementId, search });
+  });
   return presentPlanRow(plan);
 }
 
@@ -53,20 +56,21 @@ export async function createPlan(opened: OpenEngagement, input: PlanInput) {
  */
 export async function changePlan({ plan, opened }: OpenPlan, input: PlanChangeInput) {
   const values = await checkedValues(opened, input);
-  await refuseSameName(plan.engagementId, input.name, plan.id);
   const { version, ...mine } = input;
-  refuseStale(plan, opened, version, mine);
-  const found = plan.search;
-  const search =
-    found && sameFields(found.fields, input.fields) ? plan.search : await searchOf(plan.engagementId, input);
-  await inTx(() => plan.update({ ...values, search }));
+  await inTx(async () => {
+    await refuseSameName(plan.engagementId, input.name, plan.id);
+    await refuseStale(plan, opened, version, mine);
+    const found = plan.search;
+    const search = found && sameFields(found.fields, input.fields) ? found : await searchOf(plan.engagementId, input);
+    await plan.update({ ...values, search });
+  });
   return presentPlanRow(plan);
 }
 
 /** Chooses a plan for the report, or takes the choice back; one plan of an engagement is chosen at most. */
 export async function choosePlan({ plan, opened }: OpenPlan, input: { version: number; chosen: boolean }) {
-  refuseStale(plan, opened, input.version, input);
   await inTx(async () => {
+    await refuseStale(plan, opened, input.version, input);
     if (input.chosen) {
       const others = await Plan.findAll({ where: { engagementId: plan.engagementId, chosen: true } });
       for (const other of others) if (other.id !== plan.id) await other.update({ chosen: false });
@@ -82,11 +86,15 @@ export async function choosePlan({ plan, opened }: OpenPlan, input: { version: n
  * @throws {ServiceError} 409 where it was changed in between
  */
 export async function removePlan({ plan, opened }: OpenPlan, { version }: { version: number }): Promise<void> {
-  refuseStale(plan, opened, version, { version });
-  await inTx(() => plan.destroy());
+  await inTx(async () => {
+    await refuseStale(plan, opened, version, { version });
+    await plan.destroy();
+  });
 }
 
-function refuseStale(plan: Plan, { engagement }: OpenEngagement, version: number, mine: unknown): void {
+/** Refuses a change of a plan that somebody changed in between. Call it inside inTx. */
+async function refuseStale(plan: Plan, { engagement }: OpenEngagement, version: number, mine: unknown): Promise<void> {
+  await freshen(plan);
   if (plan.version !== version) throw staleVersion(plan.name, mine, storedPlan(plan, engagement.currency));
 }
 

@@ -1,5 +1,6 @@
 import { minorUnitDecimals } from '../../core/units';
 import type { RateChangeInput, RateInput, RateView } from '../../schemas/rate';
+import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { forbidden, invalid, notFound, staleVersion } from '../errors';
 import { Engagement } from '../models/Engagement';
@@ -81,10 +82,13 @@ export async function setRate(actor: Actor, input: RateInput): Promise<RateView>
     throw invalid('Choose an engagement.', { engagementId: ['There is no such engagement.'] });
   }
   const currency = engagement?.currency ?? (await practiceCurrency());
-  await refuseTwin(input);
   const { userId, engagementId, from } = input;
   const perHourMinor = toMinor(input.perHour, currency);
-  return viewOf(actor, await inTx(() => Rate.create({ userId, engagementId, from, currency, perHourMinor })));
+  const rate = await inTx(async () => {
+    await refuseTwin(input);
+    return Rate.create({ userId, engagementId, from, currency, perHourMinor });
+  });
+  return viewOf(actor, rate);
 }
 
 /** Opens a rate for change. @throws {ServiceError} 403, 404 */
@@ -98,18 +102,26 @@ export async function openRate(actor: Actor, id: number): Promise<Rate> {
 /** Corrects a rate. @throws {ServiceError} 409 where it was changed meanwhile; 422 by field */
 export async function changeRate(actor: Actor, rate: Rate, input: RateChangeInput): Promise<RateView> {
   const { version, perHour, from } = input;
-  if (rate.version !== version) {
-    const perHourNow = rate.perHourMinor / 10 ** minorUnitDecimals(rate.currency);
-    const theirs = { perHour: perHourNow, from: rate.from, version: rate.version };
-    throw staleVersion('This rate', { perHour, from }, theirs);
-  }
-  await refuseTwin({ userId: rate.userId, engagementId: rate.engagementId, from }, rate.id);
-  await inTx(() => rate.update({ perHourMinor: toMinor(perHour, rate.currency), from }));
+  await inTx(async () => {
+    await refuseStale(rate, version, { perHour, from });
+    await refuseTwin({ userId: rate.userId, engagementId: rate.engagementId, from }, rate.id);
+    await rate.update({ perHourMinor: toMinor(perHour, rate.currency), from });
+  });
   return viewOf(actor, rate);
 }
 
 /** Removes a rate; the trail keeps it. @throws {ServiceError} 409 where it was changed meanwhile */
 export async function removeRate(rate: Rate, version: number): Promise<void> {
-  if (rate.version !== version) throw staleVersion('This rate', null, { from: rate.from });
-  await inTx(() => rate.destroy());
+  await inTx(async () => {
+    await refuseStale(rate, version, null);
+    await rate.destroy();
+  });
+}
+
+/** Refuses a change of a rate that somebody changed in between. Call it inside inTx. */
+async function refuseStale(rate: Rate, version: number, mine: unknown): Promise<void> {
+  await freshen(rate);
+  if (rate.version === version) return;
+  const perHour = rate.perHourMinor / 10 ** minorUnitDecimals(rate.currency);
+  throw staleVersion('This rate', mine, { perHour, from: rate.from, version: rate.version });
 }

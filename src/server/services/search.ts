@@ -1,6 +1,5 @@
 import { searchFound, type JobProgress } from '../../schemas/job';
 import type { SearchInput, SearchView } from '../../schemas/plan';
-import { conflict } from '../errors';
 import { Job } from '../models/Job';
 import type { Actor } from '../policies/actor';
 import { calculateSearch } from '../workers/pool';
@@ -18,14 +17,9 @@ const reportEveryMs = 150;
  */
 export async function startSearch(actor: Actor, opened: OpenEngagement, input: SearchInput): Promise<JobProgress> {
   const engagementId = opened.engagement.id;
-  const [running] = await runningJobs(engagementId, kind);
-  if (running) {
-    throw conflict('A search of this engagement is running already. Wait for it, or stop it first.', {
-      job: running.id,
-    });
-  }
   const { task: basis, fingerprint } = await planBasis(opened);
-  return startJob(actor, { engagementId, kind, unit: 'settings' }, async ({ report, signal }) => {
+  const alone = 'A search of this engagement is running already. Wait for it, or stop it first.';
+  return startJob(actor, { engagementId, kind, unit: 'settings', alone }, async ({ report, signal }) => {
     let toldAtMs = 0;
     return calculateSearch(
       { basis, stepA: input.stepA, fingerprint },

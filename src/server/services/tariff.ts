@@ -9,6 +9,7 @@ import {
   type LibraryEntry,
   type MatchInput,
 } from '../../schemas/tariff';
+import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { conflict, invalid, ServiceError, staleVersion, type FieldErrors } from '../errors';
 import { TariffChoice } from '../models/TariffChoice';
@@ -189,9 +190,10 @@ export async function matchLine(actor: Actor, code: string, input: MatchInput): 
   if (input.lineId !== null && input.lineId !== noLine && !schedule?.lineOrder.includes(input.lineId)) {
     throw invalid('This line cannot be matched.', { lineId: [`The schedule has no line "${input.lineId}".`] });
   }
-  refuseStale(choice, input.version, { [input.label]: input.lineId });
-  const { [input.label]: _former, ...others } = choice.lineMatches;
-  const lineMatches = input.lineId === null ? others : { ...others, [input.label]: input.lineId };
-  await inTx(() => choice.update({ lineMatches }));
+  await inTx(async () => {
+    refuseStale(await freshen(choice), input.version, { [input.label]: input.lineId });
+    const { [input.label]: _former, ...others } = choice.lineMatches;
+    await choice.update({ lineMatches: input.lineId === null ? others : { ...others, [input.label]: input.lineId } });
+  });
   return viewOf(choice, files);
 }

@@ -71,16 +71,54 @@ export function powerOverAngle(v: number, e: number, z: Impedance, heat: number)
   };
 }
 
-/** Angle of the greatest power for motoring, between -90 and 180 degrees. */
+/** Grid steps of a full turn that begins at -90 degrees, where motoring and generating part. */
+export const FIRST_STEP = -18;
+export const LAST_STEP = 53;
+
+/** Of two equal humps (no field: half a turn apart) the nearer to no load counts; powers closer than this share are equal. */
+export const SAME_POWER = 1e-12;
+
+/** Angle of the greatest power over the full turn from -90 to 270 degrees; the smaller where two are equal. */
 export function greatestAngle(f: AnglePower): number {
-  let best = -18;
-  for (let k = -18; k <= 36; k++) {
-    if (valueAt(f, k * GRID_STEP_RAD) > valueAt(f, best * GRID_STEP_RAD)) best = k;
+  const same = SAME_POWER * (Math.abs(f.c1) + Math.abs(f.s1) + Math.abs(f.c2) + Math.abs(f.s2));
+  let best = FIRST_STEP;
+  let most = valueAt(f, best * GRID_STEP_RAD);
+  for (let k = FIRST_STEP + 1; k <= LAST_STEP; k++) {
+    const power = valueAt(f, k * GRID_STEP_RAD);
+    if (power > most + same) [best, most] = [k, power];
   }
   const lo = (best - 1) * GRID_STEP_RAD;
   const hi = (best + 1) * GRID_STEP_RAD;
   if (!(slopeAt(f, lo) > 0 && slopeAt(f, hi) < 0)) return best * GRID_STEP_RAD;
   return brentRoot((angle) => slopeAt(f, angle), lo, hi, 'pull-out angle');
+}
+
+/** The same power seen as a generator sees it: turned about, and mirrored in the angle. */
+function reversed(f: AnglePower): AnglePower {
+  return { c0: -f.c0, c1: -f.c1, s1: f.s1, c2: -f.c2, s2: f.s2 };
+}
+
+/** Angle of the least power: the pull-out of a generator. */
+export function leastAngle(f: AnglePower): number {
+  return -greatestAngle(reversed(f));
+}
+
+/**
+ * Smallest angle above the least power at which the power takes the value sought.
+ *
+ * @param topRad  Angle of the greatest power, for a target too near it for the grid.
+ * @returns Angle, or null when even the least power exceeds the target.
+ */
+export function smallestAngleFor(f: AnglePower, target: number, topRad: number): number | null {
+  const bottom = leastAngle(f);
+  if (valueAt(f, bottom) > target) return null;
+  let lo = bottom;
+  for (let k = 1; k <= 72; k++) {
+    const hi = bottom + k * GRID_STEP_RAD;
+    if (valueAt(f, hi) >= target) return brentRoot((angle) => valueAt(f, angle) - target, lo, hi, 'load angle');
+    lo = hi;
+  }
+  return angleFor((angle) => valueAt(f, angle), target, topRad);
 }
 
 /**

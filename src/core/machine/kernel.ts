@@ -1,4 +1,4 @@
-import { angleFor, axisCurrents, greatestAngle, powerOverAngle, valueAt } from './angle-power';
+import { axisCurrents, greatestAngle, leastAngle, powerOverAngle, smallestAngleFor, valueAt } from './angle-power';
 import type { Impedance } from './angle-power';
 import { PullOutError, requireRange } from './errors';
 
@@ -53,7 +53,7 @@ export function excitation(
  * @param z  Impedance per phase. [ohm]
  * @returns reactivePowerVar absorbed (negative when delivered), the smaller load angle, the current. [var], [rad], [A]
  * @throws {PullOutError} when the load exceeds what this emf can hold
- * @throws {RangeError} naming the argument out of range
+ * @throws {RangeError} naming the argument out of range; activePowerW below the most it can generate is
  * @source [FIT] sec. 5.6 with Ra kept; Ra = 0 gives the printed power-angle equation.
  */
 export function reactivePower(
@@ -69,9 +69,10 @@ export function reactivePower(
       greatest,
     );
   }
-  const angle = angleFor((d) => valueAt(curve, d), at.activePowerW, top);
+  const angle = smallestAngleFor(curve, at.activePowerW, top);
   if (angle === null) {
-    throw new RangeError(`activePowerW must be above what the machine can generate, got ${at.activePowerW}`);
+    const least = valueAt(curve, leastAngle(curve));
+    throw new RangeError(`activePowerW must be >= ${least}, all it can generate, got ${at.activePowerW}`);
   }
   const { iq, x } = axisCurrents(at.phaseVoltageV, at.emfV, angle, zed);
   return {

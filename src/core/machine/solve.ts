@@ -1,4 +1,5 @@
-import { GRID_STEP_RAD, angleFor, axisCurrents, greatestAngle, powerOverAngle, valueAt } from './angle-power';
+import { FIRST_STEP, GRID_STEP_RAD, LAST_STEP, SAME_POWER } from './angle-power';
+import { angleFor, axisCurrents, greatestAngle, powerOverAngle, valueAt } from './angle-power';
 import { NotConvergedError, PullOutError } from './errors';
 import { emfFor } from './kernel';
 import type { MotorModel } from './motor';
@@ -74,7 +75,11 @@ export function inputPu(model: MotorModel, s: MachineState): number {
   return model.shaftFed ? s.p : s.p + excitationLossPu(model, s.fieldCurrentA);
 }
 
-/** State at a shaft load and a power factor of the whole input. */
+/**
+ * State at a shaft load and a power factor of the whole input.
+ *
+ * @throws {NotConvergedError} when no reactive power gives that power factor
+ */
 export function solveAtPowerFactor(
   model: MotorModel,
   shaft: number,
@@ -90,7 +95,11 @@ export function solveAtPowerFactor(
   for (let i = 0; i < 60; i++) {
     const s = solveAtKvar(model, shaft, q, v);
     const gap = q - ratio * inputPu(model, s);
-    if (Math.abs(gap) <= 1e-14 * (1 + Math.abs(q)) || gap === gapBefore) return s;
+    if (Math.abs(gap) <= 1e-14 * (1 + Math.abs(q))) return s;
+    if (gap === gapBefore) {
+      if (Math.abs(gap) <= 1e-12 * (1 + Math.abs(q))) return s;
+      break;
+    }
     const step = (gap * (q - before)) / (gap - gapBefore);
     before = q;
     gapBefore = gap;
@@ -161,11 +170,11 @@ function shaftOverAngle(model: MotorModel, fieldCurrentA: number, v: number): He
     const { iq, x } = axisCurrents(v, emfAt(angle), angle, model.z);
     return v * (Math.cos(angle) * iq + Math.sin(angle) * x) - heat * (iq * iq + x * x) - constant;
   };
-  let best = -18;
+  let best = FIRST_STEP;
   let bestShaft = shaftAt(best * GRID_STEP_RAD);
-  for (let k = -17; k <= 36; k++) {
+  for (let k = FIRST_STEP + 1; k <= LAST_STEP; k++) {
     const held = shaftAt(k * GRID_STEP_RAD);
-    if (held > bestShaft) [best, bestShaft] = [k, held];
+    if (held > bestShaft + SAME_POWER) [best, bestShaft] = [k, held];
   }
   const topRad = goldenMinimum((angle) => -shaftAt(angle), (best - 1) * GRID_STEP_RAD, (best + 1) * GRID_STEP_RAD);
   return { shaftAt, emfAt, topRad, greatest: shaftAt(topRad) };

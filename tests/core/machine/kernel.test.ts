@@ -123,6 +123,21 @@ describe('reactivePower', () => {
   });
 });
 
+describe('reactivePower of a generator', () => {
+  it('answers down to the most it can generate, and names it beyond', () => {
+    // Round rotor without resistance: P = -V E/X at -90 degrees, Q = V^2/X.
+    const z = { raOhm: 0, xdOhm: 2, xqOhm: 2 };
+    const found = reactivePower({ phaseVoltageV: 100, emfV: 150, activePowerW: -7500 }, z);
+    expect(found.loadAngleRad).toBeCloseTo(-Math.PI / 2, 6);
+    expect(found.reactivePowerVar).toBeCloseTo(5000, 2);
+    const half = reactivePower({ phaseVoltageV: 100, emfV: 150, activePowerW: -3750 }, z);
+    expect(half.loadAngleRad).toBeCloseTo(-Math.PI / 6, 12);
+    expect(() => reactivePower({ phaseVoltageV: 100, emfV: 150, activePowerW: -7501 }, z)).toThrow(
+      /activePowerW must be >= -7500.*got -7501/,
+    );
+  });
+});
+
 describe('pullOut', () => {
   it.each(pullOutCases)('agrees with $source', (row) => {
     const found = pullOut(row, row.z);
@@ -161,6 +176,28 @@ describe('pullOut', () => {
       Math.PI / 4,
       10,
     );
+  });
+
+  it('is the greatest of both humps where much resistance and little field raise the second', () => {
+    // P = V^2 Ra/D + V E (Xq sin d - Ra cos d)/D + V^2 (Xd - Xq) sin 2d/(2 D), D = Ra^2 + Xd Xq = 0.86, at every 0.001 degree:
+    // the copper loss carried through the terminals is greatest with the emf reversed.
+    const z = { raOhm: 0.6, xdOhm: 1, xqOhm: 0.5 };
+    const power = (d: number) => (0.6 + 0.4 * (0.5 * Math.sin(d) - 0.6 * Math.cos(d)) + 0.25 * Math.sin(2 * d)) / 0.86;
+    const most = (from: number, to: number) => {
+      let best = -Infinity;
+      for (let k = from * 1000; k <= to * 1000; k++) best = Math.max(best, power((k * Math.PI) / 180000));
+      return best;
+    };
+    const first = most(0, 120);
+    const second = most(180, 270);
+    expect(second).toBeGreaterThan(first + 0.05);
+    expect(pullOut({ phaseVoltageV: 1, emfV: 0.4 }, z).activePowerW).toBeCloseTo(second, 8);
+    const held = (activePowerW: number) => reactivePower({ phaseVoltageV: 1, emfV: 0.4, activePowerW }, z).loadAngleRad;
+    expect(power(held(first - 0.01))).toBeCloseTo(first - 0.01, 10);
+    expect(held(first - 0.01)).toBeLessThan(Math.PI / 2);
+    expect(power(held(first + 0.02))).toBeCloseTo(first + 0.02, 10);
+    expect(held(first + 0.02)).toBeGreaterThan(Math.PI);
+    expect(() => held(second + 0.001)).toThrow(PullOutError);
   });
 
   it('refuses a negative emf', () => {

@@ -1,6 +1,7 @@
 import { requireRange } from './errors';
 import type { Impedance } from './angle-power';
 import { emfFor } from './kernel';
+import { noLoadFieldCurrentA } from './panel';
 import { compileCurve } from './saturation';
 import type { SaturationCurve } from './saturation';
 
@@ -165,14 +166,19 @@ function checkMotor(motor: SynchronousMotor): void {
   requireRange(margin >= 1 && Number.isFinite(margin), 'limits.pullOutMargin', '>= 1', margin);
   const reserve = limits.reserve ?? 0;
   requireRange(reserve >= 0 && reserve < 1, 'limits.reserve', 'in [0, 1)', reserve);
-  checkExciterField(motor.exciterField);
+  checkExciterField(motor);
 }
 
-function checkExciterField(exciter: SynchronousMotor['exciterField']): void {
+function checkExciterField(motor: SynchronousMotor): void {
+  const exciter = motor.exciterField;
   if (!exciter) return;
   requireRange(exciter.ratedA > 0 && Number.isFinite(exciter.ratedA), 'exciterField.ratedA', '> 0', exciter.ratedA);
   const noLoadA = exciter.noLoadA ?? 0;
   requireRange(noLoadA >= 0 && noLoadA < exciter.ratedA, 'exciterField.noLoadA', 'in [0, ratedA)', noLoadA);
+  if (exciter.noLoadA === undefined) return;
+  const fieldA = noLoadFieldCurrentA(motor);
+  const range = `above the ${fieldA} A that hold rated voltage at no load, as exciterField.noLoadA is given`;
+  requireRange(motor.ratedFieldCurrentA > fieldA, 'ratedFieldCurrentA', range, motor.ratedFieldCurrentA);
 }
 
 function requireNotNegative(fields: Record<string, number>): void {

@@ -245,6 +245,14 @@ describe('operatingPoint on nonsense', () => {
     [{ limits: { pullOutMargin: 0.9 } }, /limits.pullOutMargin/],
     [{ limits: { fieldCurrentA: 0 } }, /limits.fieldCurrentA/],
     [{ exciterField: { ratedA: 5, noLoadA: 6 } }, /exciterField.noLoadA/],
+    [
+      {
+        exciterField: { ratedA: 5, noLoadA: 2 },
+        openCircuitCurve: [{ fieldCurrentA: 160, voltagePu: 1 }],
+        xlPu: 0.15,
+      },
+      /ratedFieldCurrentA must be above the 160 A that hold rated voltage at no load.*got 150/,
+    ],
     [{ openCircuitCurve }, /xlPu must be given/],
     [{ xlPu: 0.1, openCircuitCurve: [...openCircuitCurve].reverse() }, /openCircuitCurve\[1\].fieldCurrentA/],
     [{ xlPu: 0.1, openCircuitCurve: [] }, /openCircuitCurve/],

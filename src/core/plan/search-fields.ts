@@ -91,13 +91,13 @@ export function searchFields(input: {
   const exhaustive = explore(costs, axes, exhaustiveUpTo);
   const winner = pickWinner(costs, axes, standing);
   const fieldsA = winner.at.map((k, m) => settings[m]![k]!);
-  const standingCost = sum(standingTotals);
+  const winnerTotals = Float64Array.from(totals(simulator.apply(fieldsA)));
   return {
     fieldsA,
     panelsA: fieldsA.map((fieldA, m) => panelCurrentA(plant.motors[m]!.motor, fieldA)),
-    cost: winner.cost,
-    standingCost,
-    totals: Float64Array.from(totals(simulator.apply(fieldsA))),
+    cost: sum(winnerTotals),
+    standingCost: sum(standingTotals),
+    totals: winnerTotals,
     standingTotals,
     leaveAlone: fieldsA.every((fieldA, m) => fieldA === standing[m]),
     curves: costs.cancelled() ? [] : curvesAt(costs, winner.at, settings, plant.motors),
@@ -139,10 +139,12 @@ function axisOf(motor: SearchMotor, m: number, notes: string[]): Axis {
   }
   const standingAdmissible =
     motor.standingFieldA >= found.lowA * (1 - 1e-9) && motor.standingFieldA <= found.highA * (1 + 1e-9);
-  if (!standingAdmissible && fields.size > 1) {
+  if (!standingAdmissible) {
     notes.push(
       `Motor ${m + 1} stands at ${motor.standingFieldA} A, outside its limits of ${found.lowA.toFixed(1)} to ${found.highA.toFixed(1)} A: ` +
-        'leaving it alone is not offered.',
+        (fields.size > 1
+          ? 'leaving it alone is not offered.'
+          : 'no step lies within them and the range given, so its field is left alone.'),
     );
   }
   const settings = [...fields].sort((a, b) => a - b);
@@ -151,22 +153,24 @@ function axisOf(motor: SearchMotor, m: number, notes: string[]): Axis {
 
 function explore(costs: CostTable, axes: Axis[], exhaustiveUpTo: number): boolean {
   const settings = axes.map((axis) => axis.settings);
+  const alone = axes.map((axis) => axis.standing);
+  // Priced first: a search cancelled at once never answers with something dearer than leaving the fields alone.
+  costs.cost(alone);
   const combinations = settings.reduce((product, axis) => product * axis.length, 1);
   if (combinations <= exhaustiveUpTo) {
     return costs.priceAll();
   }
-  const alone = axes.map((axis) => axis.standing);
   for (const start of [...startsFrom(costs, settings), alone]) descend(costs, settings, start);
   return false;
 }
 
 /** The cheapest admissible setting; leaving every field alone wins within half a cent, then the least change of fields. */
-function pickWinner(costs: CostTable, axes: Axis[], standing: number[]): { at: number[]; cost: number } {
+function pickWinner(costs: CostTable, axes: Axis[], standing: number[]): { at: number[] } {
   const admissible = costs
     .all()
     .filter(({ at }) => at.every((k, m) => k !== axes[m]!.standing || axes[m]!.standingAdmissible));
   const alone = axes.map((axis) => axis.standing);
-  if (admissible.length === 0) return { at: alone, cost: costs.cost(alone) };
+  if (admissible.length === 0) return { at: alone };
   const least = Math.min(...admissible.map(({ cost }) => cost));
   const moved = (at: number[]) =>
     at.reduce((total, k, m) => total + Math.abs(axes[m]!.settings[k]! / standing[m]! - 1), 0);

@@ -176,10 +176,12 @@ function capacitorChange(capacitors: CapacitorStep[], load: LoadSeries) {
     const voltagePu = step.voltagePu ?? 1;
     if (!(step.kvar > 0 && Number.isFinite(step.kvar)))
       throw new RangeError(`capacitors[${c}].kvar must be > 0, got ${step.kvar}`);
-    if (!(step.lossWPerKvar >= 0))
+    if (!(step.lossWPerKvar >= 0 && Number.isFinite(step.lossWPerKvar)))
       throw new RangeError(`capacitors[${c}].lossWPerKvar must be >= 0, got ${step.lossWPerKvar}`);
     if (!(voltagePu > 0 && voltagePu <= 2))
       throw new RangeError(`capacitors[${c}].voltagePu must be in (0, 2], got ${voltagePu}`);
+    if (step.fromMs !== undefined && !Number.isFinite(step.fromMs))
+      throw new RangeError(`capacitors[${c}].fromMs must be an instant in ms, got ${step.fromMs}`);
     const delivered = step.kvar * voltagePu ** 2;
     const first = Math.ceil(((step.fromMs ?? load.startMs) - load.startMs) / (load.stepMinutes * 60_000));
     for (let i = Math.max(0, first); i < kvar.length; i++) {

@@ -102,6 +102,28 @@ describe('searchFields on bills with a known best', () => {
     expect(oneMore).toBeGreaterThan(240);
   });
 
+  it('weighs a leading charge at night against lagging energy by day, at the field where they balance', () => {
+    // The motor runs day and night at 1200 kW. By night 80 kvarh a quarter-hour are metered: each kvar delivered beyond 320 more
+    // than standing is billed at 3 per kvarh for 8 h; by day each saves 1 per kvarh for 16 h. 24 > 16: the optimum stops at 320 kvar.
+    const steady = buildLoad(2, {
+      kvarhLagging: Float64Array.from({ length: 192 }, (_, i) => (i % 96 >= 24 && i % 96 < 88 ? 800 : 80)),
+    });
+    const motor = buildPlanMotor(steady, { shaftKw: new Float64Array(192).fill(1200) });
+    const night = (i: number) => !(i % 96 >= 24 && i % 96 < 88);
+    const charge = (price: number) => (series: LoadSeries) =>
+      bill(
+        series.kvarhLagging.reduce((sum, kvarh, i) => sum + (night(i) ? 0 : kvarh), 0),
+        price * series.kvarhLeading.reduce((sum, kvarh, i) => sum + (night(i) ? kvarh : 0), 0),
+      );
+    const more = (field: number) => kvarDelivered(motor, field) - kvarDelivered(motor, 105);
+    const dear = searchFields({ plant: { load: steady, motors: [motor] }, totals: charge(3) });
+    expect(more(dear.fieldsA[0]!)).toBeLessThanOrEqual(321);
+    expect(more(dear.fieldsA[0]! + 1)).toBeGreaterThan(320);
+    // At 1 per kvarh (8 < 16) the night charge never outweighs the day: the field goes to its limit of 150 A.
+    const cheap = searchFields({ plant: { load: steady, motors: [motor] }, totals: charge(1) });
+    expect(cheap.fieldsA).toEqual([150]);
+  });
+
   it('finds the best of two motors on a jagged bill, as brute force does', () => {
     const coarse = [one, two].map((motor) => ({ ...motor, stepA: motor === one ? 3 : 2 }));
     const totals = (series: LoadSeries) => {
@@ -240,6 +262,36 @@ describe('searchFields', () => {
     expect(cut.priced).toBe(10);
     expect(Number.isFinite(cut.cost)).toBe(true);
     expect(cut.exhaustive).toBe(false);
+  });
+
+  it('is never dearer than leaving the fields alone, even when cancelled at once', () => {
+    // Every field but the standing ones costs 1000 more: the very first candidate must be to leave them alone.
+    const standing = total(load.kwh);
+    const totals = (series: LoadSeries) => bill(Math.abs(total(series.kwh) - standing) < 1e-9 ? 500 : 1500);
+    for (const exhaustiveUpTo of [0, 1e6]) {
+      const result = searchFields({
+        plant: { load, motors: [one, two] },
+        totals,
+        exhaustiveUpTo,
+        onProgress: () => false,
+      });
+      expect(result).toMatchObject({ cancelled: true, leaveAlone: true, cost: 500, standingCost: 500, priced: 1 });
+    }
+  });
+
+  it('answers with numbers when cancelled before any setting keeps the limits', () => {
+    const wrong = { ...one, standingFieldA: 148, motor: buildMotor({ limits: { reserve: 0.05 } }) };
+    const totals = (series: LoadSeries) => bill(total(series.kvarhLagging));
+    const result = searchFields({ plant: { load, motors: [wrong, two] }, totals, onProgress: () => false });
+    expect(result.fieldsA).toEqual([148, 60]);
+    expect(result.cost).toBe(result.standingCost);
+  });
+
+  it('says so where a motor stands beyond a limit and no step lies within', () => {
+    const wrong = { ...one, standingFieldA: 148, stepA: 400, motor: buildMotor({ limits: { reserve: 0.05 } }) };
+    const result = searchFields({ plant: { load, motors: [wrong] }, totals: () => bill(1) });
+    expect(result.fieldsA).toEqual([148]);
+    expect(result.notes.join(' ')).toMatch(/stands at 148 A, outside its limits.*no step lies within them/);
   });
 
   it('gives the same result twice', () => {

@@ -139,6 +139,7 @@ describe('simulatePlan', () => {
     [{ kvar: 0, lossWPerKvar: 1 }, /kvar must be > 0/],
     [{ kvar: 1, lossWPerKvar: -1 }, /lossWPerKvar/],
     [{ kvar: 1, lossWPerKvar: 1, voltagePu: 3 }, /voltagePu/],
+    [{ kvar: 1, lossWPerKvar: 1, fromMs: NaN }, /fromMs must be an instant in ms, got NaN/],
   ])('refuses the capacitor %j', (step, message) => {
     expect(() => simulatePlan({ load, motors: [], capacitors: [step] })).toThrow(message);
   });

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import {
   formatAmount,
+  formatBillName,
   formatClock,
   formatDate,
   formatDateTime,
@@ -57,6 +58,16 @@ describe('dates and times', () => {
     expect(formatPeriod('2025-07-10', '2025-08-11')).toBe('10 Jul – 10 Aug');
     expect(formatPeriod('2025-07-10', '2026-07-10', { year: true })).toBe('10 Jul 2025 to 9 Jul 2026');
   });
+  it('name a bill by the month of its middle day, whatever day the meter is read on', () => {
+    // Middle days by hand: 2 Nov + 14 = 16 Nov; 18 Oct + 15 = 2 Nov; 10 Jun + 15 = 25 Jun; one day is its own middle.
+    const named = [
+      { from: '2025-11-02', to: '2025-12-02' },
+      { from: '2025-10-18', to: '2025-11-18' },
+      { from: '2025-06-10', to: '2025-07-11' },
+      { from: '2025-03-01', to: '2025-03-02' },
+    ].map(formatBillName);
+    expect(named).toEqual(['Nov 2025', 'Nov 2025', 'Jun 2025', 'Mar 2025']);
+  });
   it('print an instant in the zone of the site', () => {
     // 22:15 UTC is 17:15 in Chicago under summer time (UTC-5).
     expect(formatDateTime(Date.UTC(2025, 7, 4, 22, 15), 'America/Chicago')).toBe('4 Aug 2025, 17:15');
@@ -65,9 +76,11 @@ describe('dates and times', () => {
     expect([formatHours(105), formatClock(102)]).toEqual(['1.75', '1:42']);
   });
   it('print a payback in months', () => {
-    expect([formatPayback(1.65), formatPayback(1 / 12), formatPayback(null)]).toEqual([
+    expect([1.65, 1 / 12, 0.01, 0, null].map(formatPayback)).toEqual([
       '20 months',
       '1 month',
+      '1 month',
+      'at once',
       'never',
     ]);
   });

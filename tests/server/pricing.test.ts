@@ -181,7 +181,7 @@ describe('pricedYear', () => {
       const page = await tariffPage(opened.actor, opened.engagement.code);
       // 10,098.00 + 8,540.51 - 330.48 + 100.00 + 50.00 + 125.92 = 18,583.95
       expect(page.words.headline).toBe(
-        'The utility over-billed 18,583.95 USD in six of twelve bills; the other six agree within four cents.',
+        'The utility over-billed 18,583.95\u00a0USD in six of twelve bills; the other six agree within four cents.',
       );
       expect(page.sheet?.rows[3]?.findings).toEqual(['A']);
       expect(page.sheet?.rows[3]?.ratchet).toBe(true);
@@ -192,7 +192,7 @@ describe('pricedYear', () => {
     it('explains a figure: formula, peak day, look-back, causes, source', async () => {
       const billId = year.bills[3]!.bill.id;
       const why = await explainFigure(opened.actor, opened.engagement.code, { bill: billId, figure: 'line:demand' });
-      expect(why.title).toContain('19,800.00 USD');
+      expect(why.title).toContain('19,800.00\u00a0USD');
       expect(why.steps.map((step) => step.label)).toContain('Billed demand');
       expect(why.causes?.[0]).toMatchObject({ off: 'to the cent', fits: true });
       expect(why.day).toMatchObject({ date: '2026-02-01', stepMinutes: 15 });

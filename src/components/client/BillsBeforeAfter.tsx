@@ -4,17 +4,15 @@ import { BillsBeforeAfterFigure } from '../charts/BillsBeforeAfterChart';
 import { billsTable } from '../report/BillsLeaf';
 import { poorFactorBars } from '../report/poor-factor-bars';
 import { Button } from '../ui/Button';
-import { formatMajor, formatMonth, formatPeriod } from '../ui/format';
+import { formatBillName, formatMajor, formatPeriod } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
-
-const lastDay = (to: string) => new Date(Date.parse(to) - 86_400_000).toISOString().slice(0, 10);
 
 function Lines({ bill, currency, planName }: { bill: EditionBill; currency: string; planName: string }) {
   const money = { kind: 'number' as const, decimals: 2, unit: currency };
   return (
     <LedgerTable
-      label={`Lines of the bill of ${formatMonth(lastDay(bill.to))}`}
+      label={`Lines of the bill of ${formatBillName(bill)}`}
       columns={[
         { key: 'line', head: 'Line' },
         { key: 'before', head: 'As it runs', ...money },

@@ -2,6 +2,7 @@ import { useMemo, useState } from 'react';
 import { appraise, cashFlow } from '../../core/economics';
 import type { CashFlowMonth, PlanEconomics } from '../../schemas/plan';
 import { PaybackFigure, type PaybackData } from '../charts/PaybackChart';
+import { paidBackSentence } from '../report/words';
 import { AssumptionField } from '../ui/AssumptionField';
 import { Button } from '../ui/Button';
 import { formatCount, formatMajor, formatNumber, formatPayback } from '../ui/format';
@@ -70,7 +71,7 @@ export function ClientPayback(props: ClientPaybackProps) {
   const finding =
     props.paybackYears === null
       ? `After ${formatCount(shownYears, 'year')} the saving has not paid for the work.`
-      : `After ${formatPayback(props.paybackYears)} the saving has paid for the work; after ${formatCount(shownYears, 'year')} you are ${formatMajor(last, currency, whole)} ahead.`;
+      : paidBackSentence({ payback: formatPayback(props.paybackYears), years: shownYears, ahead: last, currency });
   const banded = shown.some((point) => point.low !== undefined);
   const set = (key: keyof Figures) => (value: number) => setFigures({ ...figures, [key]: value });
   const field = { editionName: `edition ${editionNumber}` };

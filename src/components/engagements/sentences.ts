@@ -1,7 +1,5 @@
 import type { EngagementRowView } from '../../schemas/engagement';
-import { formatSpelled } from '../ui/format';
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
+import { capital, formatSpelled } from '../ui/format';
 
 /** How many are under way and where they stand: "Two engagements are under way: one at Bills, one at Intervals." */
 export function engagementsHeading(rows: EngagementRowView[]): string {

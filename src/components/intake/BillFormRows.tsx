@@ -3,9 +3,8 @@ import { useFieldArray, useFormState, useWatch, type UseFormReturn } from 'react
 import { billQuantities, billQuantity, daysBetween, type BillView } from '../../schemas/bill';
 import { Button } from '../ui/Button';
 import { FieldError } from '../ui/FieldError';
-import { formatAmount, formatCount, formatDay } from '../ui/format';
+import { formatAmount, formatBillName, formatCount, formatDay } from '../ui/format';
 import { Mark } from '../ui/Mark';
-import { billName } from './bill-ledger';
 import { dayAfter, dayBefore, typedAmount, typedSum, type TypedBill } from './typed';
 
 type InputElement = ReactElement<{ id?: string; 'aria-invalid'?: true; 'aria-describedby'?: string }>;
@@ -180,7 +179,7 @@ export function LineRows({ form, currency, others }: { form: Form; currency: str
 function BeforeNote(props: { bill?: BillView; amountMinor?: number; currency: string }) {
   const { bill, amountMinor, currency } = props;
   if (!bill || amountMinor === undefined) return <span />;
-  return <span className="max-phone:hidden">{`${billName(bill.to)}: ${formatAmount(amountMinor, currency)}`}</span>;
+  return <span className="max-phone:hidden">{`${formatBillName(bill)}: ${formatAmount(amountMinor, currency)}`}</span>;
 }
 
 /** The running sum of the lines against the printed total. */

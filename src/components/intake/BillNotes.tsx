@@ -3,9 +3,9 @@ import { ApiError } from '../../client/api';
 import { removeBill } from '../../client/intake';
 import { daysBetween, type BillView } from '../../schemas/bill';
 import { Button } from '../ui/Button';
-import { formatCount, formatMoney, formatPeriod } from '../ui/format';
+import { formatBillName, formatCount, formatMoney, formatPeriod } from '../ui/format';
 import { Notice } from '../ui/Notice';
-import { billedMinor, billName, keptBill } from './bill-ledger';
+import { billedMinor, keptBill } from './bill-ledger';
 import { reload } from './reload';
 
 /** Where the bill came from, and the way to remove it. */
@@ -51,7 +51,7 @@ function Removal({ code, bill }: { code: string; bill: BillView }) {
   const amount = formatMoney(billedMinor(keptBill(bill)), bill.currency);
   const what = `${formatPeriod(bill.from, bill.to, { year: true })}, ${days}, ${formatCount(bill.lines.length, 'line')}, ${amount}`;
   return (
-    <Notice kind={fault ? 'fault' : 'plain'} title={fault ?? `Remove the bill of ${billName(bill.to)}?`}>
+    <Notice kind={fault ? 'fault' : 'plain'} title={fault ?? `Remove the bill of ${formatBillName(bill)}?`}>
       <span>{what}.</span>
       <span className="actions">
         <Button kind="secondary" size="small" busy={busy} onClick={() => void remove()}>

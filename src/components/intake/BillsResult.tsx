@@ -1,8 +1,16 @@
 import { daysBetween, periodFlaws, type BillsStation, type MeterCheck } from '../../schemas/bill';
 import { FindingSlip } from '../ui/FindingSlip';
-import { formatAmount, formatCount, formatNumber, formatPercent, formatPeriod, formatSpelled } from '../ui/format';
+import {
+  formatAmount,
+  formatBillName,
+  formatCount,
+  formatNumber,
+  formatPercent,
+  formatPeriod,
+  formatSpelled,
+} from '../ui/format';
 import { ResultSums } from '../ui/ResultSums';
-import { billName, billedMinor, keptBill, lineSums } from './bill-ledger';
+import { billedMinor, keptBill, lineSums } from './bill-ledger';
 
 const mostSums = 12;
 
@@ -65,5 +73,5 @@ function meterWords(checks: MeterCheck[], bills: BillsStation['bills']): string 
   const others = left === 0 ? '' : ` In the other ${formatSpelled(left)} a reading or the printed energy is missing.`;
   const kwh = Math.abs(worst.meterKwh - worst.billedKwh);
   if (kwh < 1) return `${compared} agree with the readings to the kWh.${others}`;
-  return `${compared} agree with the readings within ${formatPercent(Math.ceil(off(worst) * 10_000) / 10_000, 2)}; the farthest, ${bill ? billName(bill.to) : ''}, by ${formatNumber(kwh)} kWh.${others}`;
+  return `${compared} agree with the readings within ${formatPercent(Math.ceil(off(worst) * 10_000) / 10_000, 2)}; the farthest, ${bill ? formatBillName(bill) : ''}, by ${formatNumber(kwh)} kWh.${others}`;
 }

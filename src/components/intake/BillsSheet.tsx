@@ -1,11 +1,11 @@
 import { useState } from 'react';
 import { periodFlaws, type BillsStation, type BillView } from '../../schemas/bill';
 import { Button } from '../ui/Button';
-import { formatCount, formatPeriod } from '../ui/format';
+import { formatBillName, formatCount, formatPeriod } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
 import type { LedgerRow } from '../ui/ledger';
 import { BillForm } from './BillForm';
-import { billLedger, billName, keptBill } from './bill-ledger';
+import { billLedger, keptBill } from './bill-ledger';
 import { billsHeading } from './bill-words';
 import { BillNotes } from './BillNotes';
 import { BillsResult } from './BillsResult';
@@ -69,7 +69,7 @@ function BillTable({ code, currency, bills, label, onEdit }: TableProps & { labe
     const bill = bills.find((one) => String(one.id) === row.id);
     return (
       bill && (
-        <Button kind="quiet" onClick={() => onEdit(bill)} aria-label={`Edit the bill of ${billName(bill.to)}`}>
+        <Button kind="quiet" onClick={() => onEdit(bill)} aria-label={`Edit the bill of ${formatBillName(bill)}`}>
           Edit
         </Button>
       )

@@ -2,10 +2,10 @@ import type { BillPreview } from '../../core/intake';
 import { periodFlaws } from '../../schemas/bill';
 import type { IntakeView } from '../../schemas/intake';
 import { FindingSlip } from '../ui/FindingSlip';
-import { formatAmount, formatCount, formatPeriod } from '../ui/format';
+import { formatAmount, formatBillName, formatCount, formatPeriod } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
-import { billedMinor, billLedger, billName, lessTotal, lineSums, readBill } from './bill-ledger';
+import { billedMinor, billLedger, lessTotal, lineSums, readBill } from './bill-ledger';
 import { coverage } from './bill-words';
 import { Notes } from './Notes';
 import { SheetPart } from './Sheet';
@@ -48,7 +48,7 @@ export function CheckBills({ intake, preview }: { intake: IntakeView; preview: B
             />
             <div className="mt-4">
               {odd.map((bill) => (
-                <FindingSlip key={bill.id} caution letter="+" title={`${billName(bill.to)} does not add up`}>
+                <FindingSlip key={bill.id} caution letter="+" title={`${formatBillName(bill)} does not add up`}>
                   {`Its lines come to ${formatAmount(lessTotal(bill) ?? 0, currency, { signed: true })} ${currency} against the printed total. It is kept as printed.`}
                 </FindingSlip>
               ))}

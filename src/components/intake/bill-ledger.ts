@@ -9,7 +9,7 @@ import {
   type BillQuantity,
   type BillView,
 } from '../../schemas/bill';
-import { formatAmount, formatMoney, formatMonth, formatPeriod, formatQuantity, formatSpelled } from '../ui/format';
+import { formatAmount, formatBillName, formatMoney, formatPeriod, formatQuantity, formatSpelled } from '../ui/format';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
 import type { WhyContent, WhyStep } from '../ui/why';
 
@@ -28,10 +28,6 @@ export interface LedgerBill {
 
 const mostQuantities = 2;
 const mostLines = 8;
-const dayMs = 86_400_000;
-
-/** The month people call a bill by: the one its last day lies in. */
-export const billName = (to: string) => formatMonth(new Date(Date.parse(to) - dayMs).toISOString().slice(0, 10));
 
 /** A kept bill for the table. */
 export function keptBill(bill: BillView, code?: string): LedgerBill {
@@ -166,7 +162,7 @@ function rowOf(bill: LedgerBill, columns: LedgerColumn[], currency: string, flaw
   const difference = lessTotal(bill);
   const unshown = bill.lines.filter((line) => !labels.has(line.label));
   const cells: Record<string, LedgerValue> = {
-    name: billName(bill.to),
+    name: formatBillName(bill),
     period: formatPeriod(bill.from, bill.to),
     days: daysBetween(bill.from, bill.to),
     others: unshown.length > 0 ? sumOf(unshown) : null,
@@ -222,6 +218,6 @@ export function oddSumsInWords(bills: LedgerBill[], currency: string): string | 
   if (off.length === 0) return null;
   const worst = off.reduce((a, b) => (Math.abs(lessTotal(b) ?? 0) > Math.abs(lessTotal(a) ?? 0) ? b : a));
   const amount = formatMoney(Math.abs(lessTotal(worst) ?? 0), currency);
-  if (off.length === 1) return `${billName(worst.to)} does not add up, by ${amount}`;
-  return `${formatSpelled(off.length)} do not add up, ${billName(worst.to)} by ${amount}`;
+  if (off.length === 1) return `${formatBillName(worst)} does not add up, by ${amount}`;
+  return `${formatSpelled(off.length)} do not add up, ${formatBillName(worst)} by ${amount}`;
 }

@@ -1,8 +1,6 @@
 import { daysBetween, periodFlaws } from '../../schemas/bill';
-import { formatCount, formatMoney, formatPeriod, formatSpelled } from '../ui/format';
+import { capital, formatCount, formatMoney, formatPeriod, formatSpelled } from '../ui/format';
 import { billedMinor, lessTotal, oddSumsInWords, type LedgerBill } from './bill-ledger';
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
 /** Gaps between bills and overlaps, as words for a heading. */
 function daysInWords(bills: LedgerBill[]): string {

@@ -1,13 +1,11 @@
 import type { IntakeProblem } from '../../core/intake';
 import { toConfirm, type IntakePreview, type IntakeView } from '../../schemas/intake';
-import { formatCount, formatDate, formatNumber, formatSpelled } from '../ui/format';
+import { capital, formatCount, formatDate, formatNumber, formatSpelled } from '../ui/format';
 import type { Problem } from '../ui/Notice';
 import { readBill } from './bill-ledger';
 import { readBillsHeading } from './bill-words';
 import { presentInWords, readingsOf, spanInWords } from './interval-words';
 import type { StepTap } from './Sheet';
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
 /** What the file holds, in one sentence; null where it cannot be read yet. */
 function holds(preview: IntakePreview, currency: string): string | null {

@@ -1,5 +1,5 @@
 import type { AssumedValue, MotorView } from '../../schemas/motor';
-import { formatNumber, formatQuantity } from '../ui/format';
+import { formatList, formatNumber, formatQuantity } from '../ui/format';
 
 /** Reactive power without a bare sign: "637 delivered", "382 absorbed". */
 export function kvarWords(kvarDelivered: number): string {
@@ -10,10 +10,8 @@ export function kvarWords(kvarDelivered: number): string {
 export const fit = (value: number) =>
   Math.abs(value) >= 100 ? 0 : Math.abs(value) >= 10 ? 1 : Math.abs(value) >= 1 ? 2 : 3;
 
-const list = new Intl.ListFormat('en', { type: 'conjunction' });
-
 /** Motors together: "M-1 and M-2". */
-export const namesOf = (motors: readonly { name: string }[]) => list.format(motors.map((motor) => motor.name));
+export const namesOf = (motors: readonly { name: string }[]) => formatList(motors.map((motor) => motor.name));
 
 const most = (motor: MotorView) => motor.capability.kvarDelivered ?? 0;
 

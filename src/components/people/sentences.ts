@@ -1,8 +1,6 @@
 import type { PersonView } from '../../schemas/account';
-import { formatDate, formatSpelled } from '../ui/format';
+import { capital, formatDate, formatList, formatSpelled } from '../ui/format';
 import type { StaffRow } from './StaffTable';
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
 /** The finding: who is missing a rate, whose licence ends next, who has not come in. */
 export function peopleHeading(staff: StaffRow[], clients: PersonView[], today: string): string {
@@ -17,7 +15,7 @@ export function peopleHeading(staff: StaffRow[], clients: PersonView[], today: s
   const out = [...working, ...clients].filter((person) => person.access === 'invited');
   const parts = [
     unrated.length > 0 &&
-      `${unrated.map((person) => person.name).join(' and ')} ${unrated.length === 1 ? 'has' : 'have'} no rate`,
+      `${formatList(unrated.map((person) => person.name))} ${unrated.length === 1 ? 'has' : 'have'} no rate`,
     out.length > 0 && `${formatSpelled(out.length)} ${out.length === 1 ? 'has' : 'have'} not come in yet`,
     ends && `the next licence to end is that of ${ends.name}, on ${formatDate(ends.on)}`,
   ].filter(Boolean);

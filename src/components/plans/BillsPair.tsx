@@ -4,7 +4,7 @@ import { BillsBeforeAfterFigure, type BillsBeforeAfterData } from '../charts/Bil
 import { SelectField } from '../ui/Field';
 import { LedgerTable } from '../ui/LedgerTable';
 import { billLines } from './tables';
-import { billName } from './words';
+import { formatBillName } from '../ui/format';
 
 export interface BillsPairProps {
   chart: BillsBeforeAfterData;
@@ -30,13 +30,13 @@ export function BillsPair({ chart, finding, reading, fileName, before, after }: 
           placeholder="Choose a bill"
           value={opened}
           onChange={(event) => setOpened(event.target.value)}
-          options={before.map((bill) => ({ value: bill.from, label: billName(bill) }))}
+          options={before.map((bill) => ({ value: bill.from, label: formatBillName(bill) }))}
         />
       </div>
       {pair && (
         <LedgerTable
           {...billLines(pair.before, pair.after, chart.currency, chart.planName)}
-          label={`Bill of ${billName(pair.before)}, standing and ${chart.planName}`}
+          label={`Bill of ${formatBillName(pair.before)}, standing and ${chart.planName}`}
         />
       )}
     </>

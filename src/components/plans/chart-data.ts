@@ -3,7 +3,8 @@ import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
 import type { CashFlowData } from '../charts/CashFlowChart';
 import type { CostCurveData } from '../charts/CostCurveChart';
 import type { PaybackData } from '../charts/PaybackChart';
-import { amperes, billName } from './words';
+import { formatBillName } from '../ui/format';
+import { amperes } from './words';
 
 const drawnGroups = new Set(['demand', 'reactive']);
 const drawnTotal = (bill: BillView) =>
@@ -16,7 +17,7 @@ export function billsChart(year: YearView, plan: PlanView): BillsBeforeAfterData
     planName: plan.name,
     what: 'demand and reactive lines',
     bills: year.standing.bills.map((bill, index) => {
-      const [month = '', inYear] = billName(bill).split(' ');
+      const [month = '', inYear] = formatBillName(bill).split(' ');
       return {
         label: month,
         year: index === 0 || month === 'Jan' ? inYear : undefined,

@@ -2,8 +2,8 @@ import { addDays } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
 import type { BillView, PlanView, YearView } from '../../schemas/plan';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
-import { formatAmount, formatDay, formatNumber } from '../ui/format';
-import { billName, groupNames, hoursWords, ordinal } from './words';
+import { formatAmount, formatBillName, formatDay, formatNumber } from '../ui/format';
+import { groupNames, hoursWords, ordinal } from './words';
 
 interface Entry {
   label: string;
@@ -126,7 +126,7 @@ export function billLines(before: BillView, after: BillView, currency: string, p
     return {
       value: minor(line.amount),
       why: {
-        title: `Why ${formatAmount(minor(line.amount), currency)} ${currency}: ${line.label}, bill of ${billName(bill)}`,
+        title: `Why ${formatAmount(minor(line.amount), currency)} ${currency}: ${line.label}, bill of ${formatBillName(bill)}`,
         steps: [
           {
             label: line.explanation,

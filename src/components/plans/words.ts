@@ -1,8 +1,7 @@
-import { dayNumber, isoDate } from '../../core/load';
 import type { AssumedValue } from '../../schemas/motor';
 import type { ChargeGroup, PlanField, PlanView, YearView } from '../../schemas/plan';
 import { capacitorCaution } from '../ui/Caution';
-import { formatMajor, formatMonth, formatNumber, formatQuantity, formatSpelled } from '../ui/format';
+import { formatBillName, formatList, formatMajor, formatNumber, formatQuantity, formatSpelled } from '../ui/format';
 
 /** Groups in the order of the tables, in words. */
 export const groupNames: [ChargeGroup, string][] = [
@@ -13,10 +12,6 @@ export const groupNames: [ChargeGroup, string][] = [
   ['fixed', 'Fixed'],
   ['tax', 'Tax'],
 ];
-
-/** The name people give a bill: the month of its middle day. */
-export const billName = ({ from, to }: { from: string; to: string }) =>
-  formatMonth(isoDate(Math.floor((dayNumber(from) + dayNumber(to) - 1) / 2)));
 
 export const amperes = (fieldA: number) => formatQuantity(fieldA, 'A', { upTo: 1 });
 
@@ -101,7 +96,7 @@ export function turningWords(year: YearView, plan: PlanView): { turn: string; le
       ? `Work dearer than ${money(ceiling)}: then its present value over ${plan.economics.horizonYears} years is nought.`
       : 'Nothing of its cost: even without any it would be worth less than standing.';
   const savings = plan.bills.map((bill, index) => ({
-    name: billName(bill),
+    name: formatBillName(bill),
     saved: (year.standing.bills[index]?.total ?? 0) - bill.total,
   }));
   const least = savings.reduce((a, b) => (b.saved < a.saved ? b : a), savings[0] ?? { name: '', saved: 0 });
@@ -138,7 +133,7 @@ export function billsFinding(year: YearView, plan: PlanView): { finding: string;
   const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
   const many = fallen === saved.length ? 'Every bill falls' : `${fallen} of ${saved.length} bills fall`;
   const finding =
-    fallen === 0 || !peak ? 'No bill falls.' : `${many}; ${billName(peak)} most, by ${money(saved[most] ?? 0)}.`;
+    fallen === 0 || !peak ? 'No bill falls.' : `${many}; ${formatBillName(peak)} most, by ${money(saved[most] ?? 0)}.`;
   const energy = plan.groupTotals.energy - year.standing.groupTotals.energy;
   const moved = `the energy lines ${energy < 0 ? 'fall' : 'rise'} by ${money(Math.abs(energy))} a year`;
   const reading = `Solid copper: what remains of demand and reactive lines. Hatched verdigris, figure above: what ${plan.name} takes away; ${moved}.`;
@@ -193,5 +188,5 @@ export function assumedSentence(plan: PlanView): string | null {
     (one) => `${one.label.replace(/^([A-Z])(?=[a-z]{2})/, (letter) => letter.toLowerCase())} of ${one.motorName}`,
   );
   const most = formatQuantity(swing(widest), 'kvar');
-  return `Assumed, not read from a plate: ${new Intl.ListFormat('en').format(names)}. Over its range the first moves the kvar in hand by ${most}.`;
+  return `Assumed, not read from a plate: ${formatList(names)}. Over its range the first moves the kvar in hand by ${most}.`;
 }

@@ -1,7 +1,5 @@
 import type { EditionContent, EditionPlan } from '../../schemas/edition';
-import { formatCount, formatMajor, formatMoney, formatNumber, formatSpelled } from '../ui/format';
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
+import { capital, formatCount, formatMajor, formatMoney, formatNumber, formatSpelled } from '../ui/format';
 
 /** Whether the proposed plan brings more than it costs to leave everything alone. */
 export const pays = (plan: EditionPlan) => plan.saving > 0 && plan.appraisal.npv > 0;
@@ -52,13 +50,22 @@ export function comesBack({ findings, bills, currency }: EditionContent): string
   return `${capital(formatSpelled(wrong))} of ${formatSpelled(bills.length)} bills ${verb} wrong; ${formatMoney(sum, currency)} is to be claimed from the utility and counted in no figure of this report.`;
 }
 
+/** When the saving has paid for the work, and how far ahead one is at the end of what is shown. Major units. */
+export function paidBackSentence(shown: { payback: string; years: number; ahead: number; currency: string }): string {
+  const paid =
+    shown.payback === 'at once'
+      ? 'Nothing has to be bought'
+      : `After ${shown.payback} the saving has paid for the work`;
+  const ahead = formatMajor(shown.ahead, shown.currency, { whole: true });
+  return `${paid}; after ${formatCount(shown.years, 'year')} you are ${ahead} ahead.`;
+}
+
 /** The payback picture's finding. */
 export function paybackFinding({ plan, cashFlow, currency }: EditionContent): string {
   const last = cashFlow.at(-1);
   if (!pays(plan) || !last) return 'The saving does not pay for the work within the horizon.';
-  const years = formatCount(Math.round(last.month / 12), 'year');
-  const ahead = formatMajor(last.cumulative, currency, { whole: true });
-  return `After ${plan.paybackWords} the saving has paid for the work; after ${years} you are ${ahead} ahead.`;
+  const years = Math.round(last.month / 12);
+  return paidBackSentence({ payback: plan.paybackWords, years, ahead: last.cumulative, currency });
 }
 
 /** How an edition is named in feet and letters: "Edition 1 of 1 Dec 2026". */

@@ -1,7 +1,6 @@
 import type { TodayView, WaitingView } from '../../schemas/today';
-import { formatCount, formatDate, formatMoney, formatSpelled } from '../ui/format';
+import { capital, formatCount, formatDate, formatMoney, formatSpelled } from '../ui/format';
 
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 const things = (count: number) => `${formatSpelled(count)} ${count === 1 ? 'thing waits' : 'things wait'}`;
 
 const lower = (text: string) => text.charAt(0).toLowerCase() + text.slice(1);

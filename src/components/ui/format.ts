@@ -3,7 +3,7 @@
  * no-break spaces before units, days as 10 Jul 2025. Nothing here converts between units.
  */
 import { TZDate } from '@date-fns/tz';
-import { addDays, format, parseISO } from 'date-fns';
+import { addDays, differenceInCalendarDays, format, parseISO } from 'date-fns';
 import { minorUnitDecimals } from '../../core/units';
 
 const noBreak = '\u00a0';
@@ -114,6 +114,12 @@ export function formatPeriod(from: string, to: string, style: { year?: boolean }
   return `${formatDate(from)} to ${format(last, 'd MMM yyyy')}`;
 }
 
+/** What people call a bill: the month of its middle day. 2 Nov to 1 Dec 2025 is `Nov 2025`. */
+export function formatBillName({ from, to }: { from: string; to: string }): string {
+  const first = parseISO(from);
+  return format(addDays(first, Math.floor((differenceInCalendarDays(parseISO(to), first) - 1) / 2)), 'MMM yyyy');
+}
+
 /** An instant as local time: `17:15`. */
 export function formatTime(moment: Moment, timeZone?: string): string {
   return format(dateOf(moment, timeZone), 'HH:mm');
@@ -134,10 +140,11 @@ export function formatClock(minutes: number): string {
   return `${Math.floor(minutes / 60)}:${String(Math.round(minutes % 60)).padStart(2, '0')}`;
 }
 
-/** A payback: `1.65` years -> `20 months`; `null` -> `never`. */
+/** A payback: `1.65` years -> `20 months`, a month at least; `0` -> `at once`; `null` -> `never`. */
 export function formatPayback(years: number | null): string {
   if (years === null) return 'never';
-  const months = Math.round(years * 12);
+  if (years === 0) return 'at once';
+  const months = Math.max(1, Math.round(years * 12));
   return `${formatNumber(months)} ${months === 1 ? 'month' : 'months'}`;
 }
 
@@ -158,6 +165,14 @@ export function formatBytes(bytes: number): string {
 export function formatCount(count: number, singular: string, plural = `${singular}s`): string {
   return `${formatNumber(count)} ${count === 1 ? singular : plural}`;
 }
+
+/** The first letter made a capital, for the beginning of a sentence. */
+export const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
+
+const conjunction = new Intl.ListFormat('en', { type: 'conjunction' });
+
+/** Several in a sentence: `M-1 and M-2`, `A, B, and C`. */
+export const formatList = (words: readonly string[]) => conjunction.format(words);
 
 /** Numbers below thirteen in words, for sentences: `12` -> `twelve`. */
 export function formatSpelled(count: number): string {

@@ -1,8 +1,8 @@
+import { formatDate } from '../../components/ui/format';
 import { isMap, isScalar, LineCounter, parseDocument } from 'yaml';
 import { describeSchedule, type Schedule, type ScheduleDescription, type ScheduleProblem } from '../../core/tariff';
 import type { ChargeRow, QuantityRow, ScheduleSheetView } from '../../schemas/schedule-sheet';
 import { contractFields, wordsOfName } from './schedule';
-import { dayInWords } from './tariff-words';
 import { yearPicture } from './year-picture';
 
 type TextDescription = ScheduleDescription['versions'][number];
@@ -64,7 +64,7 @@ function sheetOf(schedule: Schedule, lineOf: LineOf, today: string): Sheet {
   return {
     title: schedule.title,
     publisher: publisher ?? null,
-    sourceWords: [publisher, title, date && dayInWords(date)].filter(Boolean).join(', '),
+    sourceWords: [publisher, title, date && formatDate(date)].filter(Boolean).join(', '),
     status: status ?? null,
     currency: schedule.currency,
     timeZone: schedule.timeZone,
@@ -122,8 +122,8 @@ function rulesOf(description: ScheduleDescription, text: TextDescription, lineOf
   const rolling = demandWindow?.everyMinutes ? `, rolling every ${demandWindow.everyMinutes} min` : '';
   const holidayWords = [
     holidays.calendar && `public holidays of ${holidays.calendar}`,
-    holidays.add.length > 0 && `and ${holidays.add.map(dayInWords).join(', ')}`,
-    holidays.drop.length > 0 && `without ${holidays.drop.map(dayInWords).join(', ')}`,
+    holidays.add.length > 0 && `and ${holidays.add.map((day) => formatDate(day)).join(', ')}`,
+    holidays.drop.length > 0 && `without ${holidays.drop.map((day) => formatDate(day)).join(', ')}`,
   ].filter(Boolean);
   const zeroWords = [
     zeroKwh.pf !== null && `power factor counts as ${zeroKwh.pf}`,

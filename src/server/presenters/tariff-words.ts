@@ -1,46 +1,36 @@
-import { fromMinorUnits, wordMoney, wordNumber } from '../../core/units';
+import { capital, formatDate, formatMajor, formatMoney, formatNumber, formatSpelled } from '../../components/ui/format';
 import type { Finding, PricedYear } from '../../schemas/pricing';
-import { moneyInWords } from './pricing';
 
-const spelled = 'no one two three four five six seven eight nine ten eleven twelve'.split(' ');
-const word = (count: number) => spelled[count] ?? wordNumber(count);
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 const billsWord = (count: number) => (count === 1 ? 'bill' : 'bills');
-
-const monthNames = 'Jan Feb Mar Apr May Jun Jul Aug Sep Oct Nov Dec'.split(' ');
-
-/** 2025-07-10 -> "10 Jul 2025". */
-export const dayInWords = (date: string) =>
-  `${Number(date.slice(8))} ${monthNames[Number(date.slice(5, 7)) - 1]} ${date.slice(0, 4)}`;
 
 /** The sheet's heading: the finding with its amount. */
 export function tariffHeadline(year: PricedYear): string {
   const { bills, currency, totals } = year;
-  const money = (minor: number) => moneyInWords(minor, currency);
+  const money = (minor: number) => formatMoney(minor, currency);
   const compared = bills.filter((bill) => bill.differenceMinor !== null);
   if (compared.length === 0) {
-    return `${capital(word(bills.length))} ${billsWord(bills.length)} priced at ${money(totals.pricedMinor)}; none says what the utility charged.`;
+    return `${capital(formatSpelled(bills.length))} ${billsWord(bills.length)} priced at ${money(totals.pricedMinor)}; none says what the utility charged.`;
   }
   const faulty = compared.filter((bill) => bill.findings.length > 0);
   const rest = compared.filter((bill) => bill.findings.length === 0);
   const largest = Math.max(0, ...rest.map((bill) => Math.abs(bill.differenceMinor ?? 0)));
   const agreement = largest === 0 ? 'agree to the cent' : `agree within ${cents(largest, currency)}`;
   if (faulty.length === 0) {
-    return `The utility billed rightly: ${rest.length === 1 ? 'the bill' : `all ${word(rest.length)} bills`} ${agreement.replace('agree', rest.length === 1 ? 'agrees' : 'agree')}.`;
+    return `The utility billed rightly: ${rest.length === 1 ? 'the bill' : `all ${formatSpelled(rest.length)} bills`} ${agreement.replace('agree', rest.length === 1 ? 'agrees' : 'agree')}.`;
   }
   const whole = faulty.reduce((sum, bill) => sum + (bill.differenceMinor ?? 0), 0);
   const verb = whole >= 0 ? 'over-billed' : 'under-billed';
   const over = `The utility ${verb} ${money(Math.abs(whole))} in`;
   if (rest.length === 0)
-    return `${over} ${compared.length === 1 ? 'its one bill' : `all ${word(compared.length)} bills`}.`;
-  const head = `${over} ${word(faulty.length)} of ${word(compared.length)} ${billsWord(compared.length)}`;
-  return `${head}; the other ${rest.length === 1 ? `one ${agreement.replace('agree', 'agrees')}` : `${word(rest.length)} ${agreement}`}.`;
+    return `${over} ${compared.length === 1 ? 'its one bill' : `all ${formatSpelled(compared.length)} bills`}.`;
+  const head = `${over} ${formatSpelled(faulty.length)} of ${formatSpelled(compared.length)} ${billsWord(compared.length)}`;
+  return `${head}; the other ${rest.length === 1 ? `one ${agreement.replace('agree', 'agrees')}` : `${formatSpelled(rest.length)} ${agreement}`}.`;
 }
 
 function cents(minor: number, currency: string): string {
   return minor < 13 && currency === 'USD'
-    ? `${word(minor)} ${minor === 1 ? 'cent' : 'cents'}`
-    : moneyInWords(minor, currency);
+    ? `${formatSpelled(minor)} ${minor === 1 ? 'cent' : 'cents'}`
+    : formatMoney(minor, currency);
 }
 
 /** The line under the heading: from what, on what, and what poor power factor costs. */
@@ -48,10 +38,10 @@ export function tariffLead(year: PricedYear, schedule: { title: string; inForce:
   const { readings, route, totals, currency } = year;
   const source =
     route === 'intervals'
-      ? `Priced from ${wordNumber(readings.present)} readings`
+      ? `Priced from ${formatNumber(readings.present)} readings`
       : 'Priced from the quantities printed on the bills, since no meter intervals are kept,';
-  const force = schedule.inForce ? ` as in force from ${dayInWords(schedule.inForce)}` : '';
-  const cost = `Poor power factor costs ${wordNumber(Math.round(fromMinorUnits(totals.reactiveMinor, currency)))} ${currency} of this year.`;
+  const force = schedule.inForce ? ` as in force from ${formatDate(schedule.inForce)}` : '';
+  const cost = `Poor power factor costs ${formatMoney(totals.reactiveMinor, currency, { whole: true })} of this year.`;
   return `${source} on ${schedule.title}${force}. ${cost}`;
 }
 
@@ -66,7 +56,7 @@ export function reactiveFinding(parts: { demand: number; reactive: number; other
   ];
   const [place, amount] = named.sort((a, b) => Math.abs(b[1]) - Math.abs(a[1]))[0]!;
   const share = Math.round((100 * amount) / total);
-  return `${share} % of the ${wordMoney(total, currency)} sit in ${place}.`;
+  return `${share} % of the ${formatMajor(total, currency)} sit in ${place}.`;
 }
 
 /** One slip of the result column: a finding, or several of one kind in one line of many bills. */
@@ -98,9 +88,11 @@ export function findingSlips({ findings, bills, currency }: PricedYear): Finding
       }));
     }
     const [first] = group;
-    const parts = group.map((one) => `${nameOf(one)} ${moneyInWords(one.amountMinor, currency)}`);
+    const parts = group.map((one) => `${nameOf(one)} ${formatMoney(one.amountMinor, currency)}`);
     const amountMinor = group.reduce((sum, one) => sum + one.amountMinor, 0);
-    const text = `${first!.lineLabel ?? 'The bill as a whole'} in ${word(group.length)} bills: ${parts.join(', ')}.`;
-    return [{ letter: first!.letter, title: `${first!.title}, ${word(group.length)} times`, amountMinor, text }];
+    const text = `${first!.lineLabel ?? 'The bill as a whole'} in ${formatSpelled(group.length)} bills: ${parts.join(', ')}.`;
+    return [
+      { letter: first!.letter, title: `${first!.title}, ${formatSpelled(group.length)} times`, amountMinor, text },
+    ];
   });
 }

@@ -1,8 +1,8 @@
+import { formatMoney } from '../../components/ui/format';
 import type { PricedBill, PricedInput, PricedLine, PricedQuantity } from '../../core/tariff';
 import { toMinorUnits, wordNumber } from '../../core/units';
 import type { Finding, LinePair, ReconciledBill } from '../../schemas/pricing';
 import type { WhyStepView, WhyView } from '../../schemas/tariff-why';
-import { moneyInWords } from './pricing';
 import { wordsOfName } from './schedule';
 
 /** The words of a why panel; pictures are added by the service, which knows the readings. */
@@ -73,7 +73,7 @@ function lineStep(line: PricedLine, currency: string): WhyStepView {
   return {
     label: line.label,
     working: line.explanation,
-    result: moneyInWords(toMinorUnits(line.amount, currency), currency),
+    result: formatMoney(toMinorUnits(line.amount, currency), currency),
     kind: 'equals',
     source: line.clause && `clause ${line.clause}`,
   };
@@ -82,10 +82,10 @@ function lineStep(line: PricedLine, currency: string): WhyStepView {
 function billedSteps(pair: LinePair, currency: string): WhyStepView[] {
   if (pair.billedMinor === null) return [{ label: 'The utility billed', working: 'no such line', result: 'nothing' }];
   const labels = pair.billed.map((line) => line.label).join(' + ');
-  const billed = { label: 'The utility billed', working: labels, result: moneyInWords(pair.billedMinor, currency) };
+  const billed = { label: 'The utility billed', working: labels, result: formatMoney(pair.billedMinor, currency) };
   if (pair.differenceMinor === 0) return [billed];
   const words = pair.differenceMinor > 0 ? 'Over-billed' : 'Under-billed';
-  return [billed, { label: words, result: moneyInWords(Math.abs(pair.differenceMinor), currency), kind: 'fault' }];
+  return [billed, { label: words, result: formatMoney(Math.abs(pair.differenceMinor), currency), kind: 'fault' }];
 }
 
 /** Causes as the panel lists them: fitting ones first, each with how far it misses. */
@@ -94,7 +94,7 @@ export function causesOf(finding: Finding | undefined, currency: string): WhyVie
   return finding.causes.map(({ label, missMinor, fits }) => ({
     label,
     fits,
-    off: missMinor === 0 ? 'to the cent' : `${moneyInWords(Math.abs(missMinor), currency)} off`,
+    off: missMinor === 0 ? 'to the cent' : `${formatMoney(Math.abs(missMinor), currency)} off`,
   }));
 }
 
@@ -104,7 +104,7 @@ export function whyLine(bill: ReconciledBill, line: PricedLine, findings: Findin
   const pair = bill.pairs.find((one) => one.line?.id === line.id);
   const finding = findings.find((one) => one.billId === bill.bill.id && one.lineId === line.id);
   return {
-    title: `Why ${moneyInWords(toMinorUnits(line.amount, currency), currency)}: ${line.label}, bill of ${bill.name}`,
+    title: `Why ${formatMoney(toMinorUnits(line.amount, currency), currency)}: ${line.label}, bill of ${bill.name}`,
     steps: [
       ...stepsBehind(bill.priced, line.uses),
       lineStep(line, currency),
@@ -140,14 +140,14 @@ export function whySum(bill: ReconciledBill, lines: PricedLine[], what: string, 
     return {
       label: line.label,
       working: line.explanation,
-      result: moneyInWords(toMinorUnits(line.amount, currency), currency),
+      result: formatMoney(toMinorUnits(line.amount, currency), currency),
     };
   });
   return {
-    title: `Why ${moneyInWords(toMinorUnits(sum, currency), currency)}: ${what}, bill of ${bill.name}`,
+    title: `Why ${formatMoney(toMinorUnits(sum, currency), currency)}: ${what}, bill of ${bill.name}`,
     steps: [
       ...steps,
-      { label: 'Together', result: moneyInWords(toMinorUnits(sum, currency), currency), kind: 'equals' },
+      { label: 'Together', result: formatMoney(toMinorUnits(sum, currency), currency), kind: 'equals' },
     ],
     next: lines.map((line) => ({ figure: `line:${line.id}`, label: line.label })),
     ...sourceOf(bill, code),
@@ -159,16 +159,16 @@ export function whyBilled(bill: ReconciledBill, code: string): WhyWords {
   const { currency, lines, linesMinor, totalMinor } = bill.bill;
   const steps = lines.map((line): WhyStepView => ({
     label: line.label,
-    result: moneyInWords(line.amountMinor, currency),
+    result: formatMoney(line.amountMinor, currency),
   }));
   if (lines.length > 0)
-    steps.push({ label: 'The lines together', result: moneyInWords(linesMinor, currency), kind: 'equals' });
+    steps.push({ label: 'The lines together', result: formatMoney(linesMinor, currency), kind: 'equals' });
   if (totalMinor !== null)
-    steps.push({ label: 'Total as printed', result: moneyInWords(totalMinor, currency), kind: 'equals' });
+    steps.push({ label: 'Total as printed', result: formatMoney(totalMinor, currency), kind: 'equals' });
   if (totalMinor !== null && lines.length > 0 && totalMinor !== linesMinor) {
     steps.push({
       label: 'The bill does not add up',
-      result: moneyInWords(totalMinor - linesMinor, currency),
+      result: formatMoney(totalMinor - linesMinor, currency),
       kind: 'fault',
     });
   }
@@ -181,14 +181,14 @@ export function whyDifference(bill: ReconciledBill, findings: Finding[], code: s
   const steps = bill.pairs.map((pair): WhyStepView => {
     const label = pair.line?.label ?? pair.billed.map((line) => line.label).join(' + ');
     const priced =
-      pair.pricedMinor === null ? 'not in the schedule' : `priced ${moneyInWords(pair.pricedMinor, currency)}`;
-    const billed = pair.billedMinor === null ? 'not billed' : `billed ${moneyInWords(pair.billedMinor, currency)}`;
-    return { label, working: `${billed}, ${priced}`, result: moneyInWords(pair.differenceMinor, currency) };
+      pair.pricedMinor === null ? 'not in the schedule' : `priced ${formatMoney(pair.pricedMinor, currency)}`;
+    const billed = pair.billedMinor === null ? 'not billed' : `billed ${formatMoney(pair.billedMinor, currency)}`;
+    return { label, working: `${billed}, ${priced}`, result: formatMoney(pair.differenceMinor, currency) };
   });
   const whole = bill.differenceMinor ?? 0;
   const sum: WhyStepView = {
     label: 'Billed less priced',
-    result: moneyInWords(whole, currency),
+    result: formatMoney(whole, currency),
     kind: whole === 0 ? 'equals' : 'fault',
   };
   const own = findings.filter((finding) => finding.billId === id);

@@ -1,3 +1,4 @@
+import { capital } from '../../components/ui/format';
 import { addDays, dayNumber, localDateStartMs, weekdayOf, zoneOffsetMs } from '../../core/load';
 import { dayKindsOf } from '../../core/tariff/calendar/day-kinds';
 import { holidaysOfYear } from '../../core/tariff/calendar/holidays';
@@ -171,5 +172,3 @@ function kindWords(kinds: Set<Day['kind']>): string {
     ', ',
   );
 }
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);

@@ -1,8 +1,8 @@
+import { formatBillName, formatMonth } from '../../components/ui/format';
 import { addMonths } from '../../core/load';
 import { PriceError, priceQuantities, type PricedBill, type QuantityEntry, type Schedule } from '../../core/tariff';
 import { toMinorUnits, wordNumber } from '../../core/units';
 import { lineToleranceMinor, type FindingKind, type TriedCause } from '../../schemas/pricing';
-import { billName, monthName } from '../presenters/pricing';
 import { wordsOfName } from '../presenters/schedule';
 import type { PricingBasis } from './pricing';
 import { asIfSeason, asIfText, quantitiesBehind, textOn } from './schedule-variants';
@@ -115,12 +115,12 @@ export class CauseTrial {
     const { periods, history } = this.basis;
     const fromBills = this.priced.slice(0, index).flatMap((bill, at): KnownValue[] => {
       const value = bill.quantities[name]?.value;
-      return value === undefined ? [] : [{ month: billName(bill.period), value, back: index - at }];
+      return value === undefined ? [] : [{ month: formatBillName(bill.period), value, back: index - at }];
     });
     const told = history?.[name] ?? [];
     const fromHistory = told.map((value, at): KnownValue => {
       const monthsBack = told.length - at;
-      return { month: monthName(addMonths(periods[0]!.from, -monthsBack)), value, back: index + monthsBack };
+      return { month: formatMonth(addMonths(periods[0]!.from, -monthsBack)), value, back: index + monthsBack };
     });
     return [...fromHistory, ...fromBills];
   }

@@ -1,3 +1,4 @@
+import { formatMoney } from '../../components/ui/format';
 import { fromMinorUnits, wordNumber } from '../../core/units';
 import {
   lineToleranceMinor,
@@ -6,7 +7,6 @@ import {
   type ReconciledBill,
   type TriedCause,
 } from '../../schemas/pricing';
-import { moneyInWords } from '../presenters/pricing';
 import type { Fault } from './blame';
 
 type Found = Omit<Finding, 'letter'>;
@@ -23,7 +23,7 @@ const titles: Record<FindingKind, string> = {
 };
 
 const mostCauses = 6;
-const money = (minor: number, { bill }: ReconciledBill) => moneyInWords(minor, bill.currency);
+const money = (minor: number, { bill }: ReconciledBill) => formatMoney(minor, bill.currency);
 
 /** The finding of one line, with the cause that fits it to the cent. */
 export function findingOfFault(bill: ReconciledBill, fault: Fault, causes: TriedCause[]): Found {

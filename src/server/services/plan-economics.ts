@@ -63,11 +63,3 @@ export function planCashFlow(money: PlanMoney): Pick<PlanView, 'cashFlow' | 'pay
   }));
   return { cashFlow: monthly, paybackSpread: { lowMonths: paybackMonths.p10, highMonths: paybackMonths.p90 } };
 }
-
-/** Simple payback in words. */
-export function paybackWords(years: number | null): string {
-  if (years === null) return 'never';
-  if (years === 0) return 'at once';
-  const months = Math.max(1, Math.round(years * 12));
-  return `${months} ${months === 1 ? 'month' : 'months'}`;
-}

@@ -1,3 +1,4 @@
+import { formatPayback } from '../../components/ui/format';
 import {
   planDefaults,
   type FieldSetting,
@@ -27,7 +28,7 @@ import type { TaskAct, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
-import { appraisePlan, paybackWords, planCashFlow, type PlanMoney } from './plan-economics';
+import { appraisePlan, planCashFlow, type PlanMoney } from './plan-economics';
 import { fieldFault } from './plan-limits';
 import { listPlans } from './plan-rows';
 
@@ -182,5 +183,5 @@ const staleWords =
 /** A plan that saves nothing pays nothing back, however little it costs. */
 function wordsOfPayback({ savingByGroup, yearlyUpkeep }: PlanMoney, years: number | null): string {
   const saving = Object.values(savingByGroup).reduce((sum, amount) => sum + amount, -yearlyUpkeep);
-  return saving > 0 ? paybackWords(years) : 'never';
+  return saving > 0 ? formatPayback(years) : 'never';
 }

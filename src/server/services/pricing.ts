@@ -1,3 +1,4 @@
+import { formatBillName } from '../../components/ui/format';
 import { localDateStartMs, type BillingPeriod, type LoadSeries } from '../../core/load';
 import { PriceError, priceBills, priceQuantities, readSchedule, ScheduleError } from '../../core/tariff';
 import type { PricedBill, PricingGrid, Schedule } from '../../core/tariff';
@@ -6,7 +7,6 @@ import type { PricedYear, PricingRoute } from '../../schemas/pricing';
 import { conflict, ServiceError } from '../errors';
 import { ReadingBlock } from '../models/ReadingBlock';
 import { TariffChoice } from '../models/TariffChoice';
-import { billName } from '../presenters/pricing';
 import { listBills } from './bills';
 import type { OpenEngagement } from './engagements';
 import { keptSpans, loadSeries } from './readings';
@@ -195,7 +195,7 @@ function refuseMixed(bills: BillView[], schedule: Schedule): void {
   const foreign = bills.find((bill) => bill.currency !== schedule.currency);
   if (foreign) {
     throw conflict(
-      `The bill of ${billName(foreign)} is in ${foreign.currency}, the schedule ${schedule.id} in ${schedule.currency}. Correct the bill, or choose another schedule.`,
+      `The bill of ${formatBillName(foreign)} is in ${foreign.currency}, the schedule ${schedule.id} in ${schedule.currency}. Correct the bill, or choose another schedule.`,
       { station: 'tariff' },
     );
   }
@@ -203,7 +203,7 @@ function refuseMixed(bills: BillView[], schedule: Schedule): void {
     const before = bills[index - 1];
     if (!before || before.to <= bill.from) return;
     throw conflict(
-      `The bills of ${billName(before)} and ${billName(bill)} overlap: one runs to ${before.to}, the other begins on ${bill.from}. Correct a period at the station Bills.`,
+      `The bills of ${formatBillName(before)} and ${formatBillName(bill)} overlap: one runs to ${before.to}, the other begins on ${bill.from}. Correct a period at the station Bills.`,
       { station: 'bills' },
     );
   });

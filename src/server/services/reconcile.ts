@@ -1,3 +1,4 @@
+import { formatBillName } from '../../components/ui/format';
 import { addDays } from '../../core/load';
 import type { PricedBill, PricedLine, Schedule } from '../../core/tariff';
 import { toMinorUnits } from '../../core/units';
@@ -8,7 +9,6 @@ import {
   type PricedYear,
   type ReconciledBill,
 } from '../../schemas/pricing';
-import { billName } from '../presenters/pricing';
 import { everythingPrinted, faultsOf } from './blame';
 import { CauseTrial } from './causes';
 import { findingOfArithmetic, findingOfFault, findingOfTotal } from './findings';
@@ -56,7 +56,7 @@ function reconcileBill(basis: PricingBasis, priced: PricedBill, index: number): 
   const pricedMinor = toMinorUnits(priced.total, priced.currency);
   const billedMinor = bill.totalMinor ?? (bill.lines.length > 0 ? bill.linesMinor : null);
   return {
-    name: billName(bill),
+    name: formatBillName(bill),
     bill,
     priced,
     pricedMinor,

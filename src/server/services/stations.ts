@@ -1,4 +1,5 @@
-import { addDays, addMonths, dayNumber, localDateStartMs } from '../../core/load';
+import { formatPeriod } from '../../components/ui/format';
+import { addMonths, dayNumber, localDateStartMs } from '../../core/load';
 import type { StationView, StripView } from '../../schemas/engagement';
 import { ServiceError } from '../errors';
 import { Bill } from '../models/Bill';
@@ -45,10 +46,6 @@ function scheduleTitle(choice: TariffChoice | null): string {
   return title?.replace(/^(['"])(.*)\1$/, '$2') || choice.scheduleId;
 }
 
-const monthNames = 'Jan Feb Mar Apr May Jun Jul Aug Sep Oct Nov Dec'.split(' ');
-const dateInWords = (date: string) =>
-  `${Number(date.slice(8))} ${monthNames[Number(date.slice(5, 7)) - 1]} ${date.slice(0, 4)}`;
-
 function stripOf(
   { engagement, client, site, meter, members }: OpenEngagement,
   choice: TariffChoice | null,
@@ -61,7 +58,7 @@ function stripOf(
     { label: 'Site', value: [site.name, site.place].filter(Boolean).join(', ') },
     { label: 'Meter', value: meter.serviceVoltageKv ? `${meter.label}, ${meter.serviceVoltageKv} kV` : meter.label },
     { label: 'Schedule', value: scheduleTitle(choice) },
-    { label: 'Year', value: `${dateInWords(engagement.yearFrom)} to ${dateInWords(addDays(engagement.yearTo, -1))}` },
+    { label: 'Year', value: formatPeriod(engagement.yearFrom, engagement.yearTo, { year: true }) },
     { label: 'Engagement', value: engagement.code },
     { label: 'By', value: members.map((member) => member.name).join(', ') || 'nobody yet' },
   ];

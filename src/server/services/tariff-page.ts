@@ -1,13 +1,12 @@
+import { formatDate, formatMonth, formatMoney } from '../../components/ui/format';
 import { addMonths } from '../../core/load';
 import type { Schedule } from '../../core/tariff';
 import { lineToleranceMinor, type PricedYear } from '../../schemas/pricing';
 import type { TariffSheetView } from '../../schemas/tariff-sheet';
 import type { Actor } from '../policies/actor';
-import { moneyInWords, monthName } from '../presenters/pricing';
 import { reactiveCostData, reactiveParts, type ReactiveParts } from '../presenters/reactive-cost';
 import { presentTariffSheet } from '../presenters/tariff-sheet';
 import {
-  dayInWords,
   findingSlips,
   reactiveFinding,
   tariffHeadline,
@@ -46,7 +45,7 @@ export async function tariffPage(actor: Actor, code: string): Promise<TariffPage
     sheet: year && choice && presentTariffSheet(year, { code, choiceVersion: choice.version }),
     reactive: year && reactiveOf(year),
     slips: year ? findingSlips(year) : [],
-    monthBefore: monthName(addMonths(first, -1)),
+    monthBefore: formatMonth(addMonths(first, -1)),
     broken: library.flatMap(({ fileName, problems }) =>
       problems.map(({ line, column, path, message, remedy }) => ({
         where: `${fileName}:${line}:${column}${path ? ` ${path}` : ''}`,
@@ -95,7 +94,7 @@ const straddleWords: Record<Schedule['straddle'], string> = {
 
 function referencesOf(schedule: Schedule): string[] {
   const { publisher, title, date, status } = schedule.source;
-  const source = [publisher, title, date && dayInWords(date)].filter(Boolean).join(', ');
+  const source = [publisher, title, date && formatDate(date)].filter(Boolean).join(', ');
   const text = schedule.texts.at(-1)!;
   const clauses = text.charges.flatMap(({ label, name, clause }) =>
     clause ? [`${label ?? name}: clause ${clause}`] : [],
@@ -110,7 +109,7 @@ function referencesOf(schedule: Schedule): string[] {
 
 function toleranceOf({ bills, currency }: PricedYear): string {
   const small = bills.filter(({ findings, differenceMinor }) => findings.length === 0 && differenceMinor);
-  const tolerance = moneyInWords(lineToleranceMinor, currency);
+  const tolerance = formatMoney(lineToleranceMinor, currency);
   const names = small.map(({ name }) => name);
   const head =
     names.length === 0

@@ -1,10 +1,10 @@
+import { formatMonth } from '../../components/ui/format';
 import { addMonths, localDateOf, localDateStartMs, addDays, type LoadSeries } from '../../core/load';
 import type { PricedLine, PricedQuantity } from '../../core/tariff';
 import type { PricedYear, ReconciledBill } from '../../schemas/pricing';
 import type { DayPicture, LookBackBar, LookBackPicture, WhyQuery, WhyView } from '../../schemas/tariff-why';
 import { notFound } from '../errors';
 import type { Actor } from '../policies/actor';
-import { monthName } from '../presenters/pricing';
 import { wordsOfName } from '../presenters/schedule';
 import {
   namedOf,
@@ -166,7 +166,7 @@ function knownBars(basis: PricingBasis, year: PricedYear, index: number, name: s
   const first = basis.periods[0]!.from;
   const before = told.map((value, at) => {
     const monthsBack = told.length - at;
-    return { name: monthName(addMonths(first, -monthsBack)), value, unit, back: index + monthsBack };
+    return { name: formatMonth(addMonths(first, -monthsBack)), value, unit, back: index + monthsBack };
   });
   const bills = year.bills.slice(0, index + 1).flatMap((bill, at) => {
     const quantity: PricedQuantity | undefined = bill.priced.quantities[name];

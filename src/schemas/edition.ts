@@ -130,7 +130,8 @@ export const mailEditionInput = z.object({
   userIds: z
     .array(z.number().int())
     .min(1, 'Choose at least one person of the client.')
-    .max(20, 'At most 20 people at once.'),
+    .max(20, 'At most 20 people at once.')
+    .transform((ids) => [...new Set(ids)]),
   greeting: z.string().trim().max(600, 'At most 600 characters.').default(''),
 });
 export type MailEditionInput = z.output<typeof mailEditionInput>;

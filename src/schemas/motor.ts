@@ -25,6 +25,20 @@ const curvePoint = z.object({
   voltagePu: z.number({ error: 'Write per unit of rated voltage.' }).min(0, 'Per unit of 0 or more.').max(2),
 });
 
+type CurvePoint = z.output<typeof curvePoint>;
+
+/** Number, from 1, of the first point that does not rise from the one before; the first may be the origin itself. */
+function firstNotRising(curve: CurvePoint[]): number | null {
+  let before: CurvePoint = { fieldCurrentA: 0, voltagePu: 0 };
+  for (const [index, point] of curve.entries()) {
+    const isOrigin = index === 0 && point.fieldCurrentA === 0 && point.voltagePu === 0;
+    const rises = point.fieldCurrentA > before.fieldCurrentA && point.voltagePu > before.voltagePu;
+    if (!isOrigin && !rises) return index + 1;
+    before = point;
+  }
+  return null;
+}
+
 /** A nameplate as it is worded, plus data sheets and limits where there are any. */
 export const plateInput = z
   .object({
@@ -91,6 +105,14 @@ export const plateInput = z
     if (plate.poles !== undefined && plate.poles % 2 !== 0) fault('poles', 'The number of poles is even.');
     if (plate.exciterNoLoadA !== undefined && plate.exciterFieldA === undefined) {
       fault('exciterFieldA', 'Write the exciter field current at rated field too.');
+    }
+    if (plate.exciterFieldA !== undefined && (plate.exciterNoLoadA ?? 0) >= plate.exciterFieldA) {
+      fault('exciterNoLoadA', 'At no load the exciter field is below the one at rated field. Check both figures.');
+    }
+    const flat = plate.openCircuitCurve ? firstNotRising(plate.openCircuitCurve) : null;
+    if (flat !== null) {
+      const message = `Point ${flat} of the curve does not rise from the one before it. Write the points upwards, amperes and voltage.`;
+      fault('openCircuitCurve', message);
     }
     if (plate.xdPu !== undefined && plate.xqPu !== undefined && plate.xqPu > plate.xdPu) {
       fault('xqPu', 'Xq is at most Xd. Check whether the two were exchanged.');

@@ -9,7 +9,7 @@ import { getEnv } from './env';
 import { migrate } from './db/migrations';
 import { actAs } from './db/context';
 import { toErrorBody } from './http';
-import { ServiceError } from './errors';
+import { notFound, ServiceError } from './errors';
 import type { Actor } from './policies/actor';
 import { checkSignIn, loadActor, sessionEpochOf } from './services/sign-in';
 import { uploadRoutes } from './uploads';
@@ -46,6 +46,14 @@ function checkOrigin(origins: Set<string>) {
     const message = 'This request came from another site and was refused. Open the page itself and try again.';
     sendError(new ServiceError(403, 'origin', message), res);
   };
+}
+
+/** An address with a NUL sign has nothing behind it, and no statement of the database may carry one. */
+function refuseNul(req: Request, res: Response, next: NextFunction): void {
+  if (!/%00/.test(req.url)) return next();
+  if (req.path.startsWith('/api/')) return sendError(notFound(), res);
+  req.url = '/404';
+  next();
 }
 
 /** Astro reads bodies whole: nothing large or of unknown length may reach it. */
@@ -183,6 +191,7 @@ async function build(): Promise<Express> {
     '/reset',
     rateLimit({ windowMs: 15 * 60 * 1000, limit: 20, standardHeaders: 'draft-8', legacyHeaders: false }),
   );
+  app.use(refuseNul);
   app.use(uploadRoutes());
   app.use(limitBody);
   app.use((error: unknown, _req: Request, res: Response, _next: NextFunction) => sendError(error, res));

@@ -62,11 +62,20 @@ export function parseOrThrow<Schema extends z.ZodType>(schema: Schema, input: un
   throw invalid('Some entries cannot be used. Each is marked with what to change.', fields);
 }
 
+/** Refuses the NUL sign: no keyboard writes it, and a statement of the database ends at it. */
+function refuseNul(_name: string, value: unknown): unknown {
+  if (typeof value === 'string' && value.includes('\0')) {
+    throw invalid('An entry holds a sign that is no text (NUL). Take it out and send the form again.');
+  }
+  return value;
+}
+
 /** Reads a JSON body; an unreadable one is the sender's error. */
 export async function readJson(request: Request): Promise<unknown> {
   try {
-    return await request.json();
-  } catch {
+    return JSON.parse(await request.text(), refuseNul) as unknown;
+  } catch (error) {
+    if (error instanceof ServiceError) throw error;
     throw invalid('The request could not be read as JSON. Send the form again.');
   }
 }

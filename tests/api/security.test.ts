@@ -165,3 +165,24 @@ describe('pages', () => {
     expect(response.headers.get('content-type')).toMatch(/text\/html/);
   });
 });
+
+describe('an address with a NUL sign', () => {
+  it.each([
+    ['/engagements/%00/bills', 404],
+    ['/trail?subject=%00', 404],
+    ['/api/engagements/KG-02%00/motors', 404],
+  ])('%s is one with nothing behind it', async (address, status) => {
+    const response = await fetch(`${origin}${address}`, { headers: { cookie: tom }, redirect: 'manual' });
+    expect(response.status).toBe(status);
+    expect(await response.text()).toContain('nothing at this address');
+  });
+
+  it('keeps nothing of an upload sent there', async () => {
+    const drawer = path.join(inject('dataDir'), 'originals');
+    const before = readdirSync(drawer).length;
+    const address = `${origin}/api/engagements/KG-02/uploads?kind=bills&fileName=%00.csv`;
+    const response = await fetch(address, { method: 'PUT', headers: { origin, cookie: tom }, body: 'a,b\n1,2\n' });
+    expect(response.status).toBe(404);
+    expect(readdirSync(drawer).length).toBe(before);
+  });
+});

@@ -1,6 +1,9 @@
 import { searchFound } from '../../schemas/job';
 import { planDefaults, type FieldSetting, type PlanInput, type YearView } from '../../schemas/plan';
+import { notFound } from '../errors';
+import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
+import { storedPlan } from '../presenters/plan';
 import { readJob } from './jobs';
 
 /** What the form of a plan begins with. */
@@ -28,24 +31,17 @@ export async function planStart(
   asked: { plan: string | null; search: string | null },
 ): Promise<PlanStart | null> {
   const stored = [...year.plans, ...year.unpriced].find((one) => String(one.id) === asked.plan);
-  const current = year.plans.find((one) => one.id === stored?.id);
   const fieldsOf = (fields: readonly FieldSetting[]) =>
     year.standing.fields.map(({ motorId, todayA }) => ({
       motorId,
       fieldA: fields.find((field) => field.motorId === motorId)?.fieldA ?? todayA,
     }));
   if (stored && stored.id !== null) {
-    const { capitalCost = 0, yearlyUpkeep = 0, economics = { ...planDefaults } } = current ?? {};
-    const capacitors = current?.capacitors ?? undefined;
-    const start = {
-      name: stored.name,
-      fields: fieldsOf(stored.fields),
-      capacitors,
-      capitalCost,
-      yearlyUpkeep,
-      economics,
-    };
-    return { start, plan: { id: stored.id, version: stored.version } };
+    const row = await Plan.findByPk(stored.id);
+    if (!row) throw notFound();
+    // Also a plan that cannot be priced any more keeps its costs and its capacitors: saving the form must lose nothing.
+    const { version, ...entries } = storedPlan(row, year.currency);
+    return { start: { ...entries, fields: fieldsOf(entries.fields) }, plan: { id: row.id, version } };
   }
   if (asked.plan !== 'new') return null;
   const searchJobId = asked.search && /^\d+$/.test(asked.search) ? Number(asked.search) : undefined;

@@ -72,6 +72,17 @@ async function readLibrary(): Promise<ScheduleFile[]> {
 /** Reads a file unless it was read before and is still the same. */
 async function readFileOf(folder: string, fileName: string): Promise<ScheduleFile> {
   const full = path.join(folder, fileName);
+  try {
+    return await readKnown(full, fileName);
+  } catch (error) {
+    const { code } = error as NodeJS.ErrnoException;
+    if (code === undefined) throw error;
+    const message = `cannot be read from the disk (${code}).`;
+    return unreadFile(fileName, 0, message, 'Look whether it is a file the server may read, or take it away.');
+  }
+}
+
+async function readKnown(full: string, fileName: string): Promise<ScheduleFile> {
   const { mtimeMs, size } = await stat(full);
   const stamp = `${mtimeMs}/${size}`;
   const known = readFiles.get(full);
@@ -83,7 +94,11 @@ async function readFileOf(folder: string, fileName: string): Promise<ScheduleFil
 
 function tooLargeFile(fileName: string, bytes: number): ScheduleFile {
   const message = `the file has ${bytes} bytes, more than ${largestBytes}.`;
-  const problems = [{ line: 1, column: 1, path: '', message, remedy: 'Split it, or take out what no bill needs.' }];
+  return unreadFile(fileName, bytes, message, 'Split it, or take out what no bill needs.');
+}
+
+function unreadFile(fileName: string, bytes: number, message: string, remedy: string): ScheduleFile {
+  const problems = [{ line: 1, column: 1, path: '', message, remedy }];
   return { id: idOf(fileName), fileName, text: '', bytes, sha256: '', schedule: null, problems };
 }
 

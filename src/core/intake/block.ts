@@ -38,8 +38,9 @@ export function findBlock(
   const lastRow = lastFilledRow(grid);
   const givenHeader = typeof given.headerRow === 'number' ? rowOfNumber(grid, given.headerRow) : given.headerRow;
   let firstRow = given.firstRow === undefined ? -1 : rowOfNumber(grid, given.firstRow);
-  if (firstRow < 0 && typeof givenHeader === 'number') firstRow = firstDataRow(kinds, givenHeader + 1);
-  if (firstRow < 0) firstRow = firstDataRow(kinds, 0);
+  if (firstRow < 0 && typeof givenHeader === 'number')
+    firstRow = withBlanksAbove(kinds, firstDataRow(kinds, givenHeader + 1));
+  if (firstRow < 0) firstRow = withBlanksAbove(kinds, firstDataRow(kinds, 0));
   if (firstRow < 0) firstRow = firstSerialRow(grid, kinds);
   if (firstRow < 0 || firstRow >= grid.rows) {
     throw intakeError(
@@ -95,6 +96,19 @@ function firstDataRow(kinds: CellKind[][], from: number): number {
     if (next.length === 0 || alike * 2 >= next.length) return row;
   }
   return -1;
+}
+
+/** The first rows may hold a date and no figure yet: blanks are readings that are missing. */
+function withBlanksAbove(kinds: CellKind[][], firstRow: number): number {
+  const here = kinds[firstRow] ?? [];
+  const dateColumn = here.findIndex(isDateKind);
+  const isBlankReading = (row: CellKind[] | undefined): boolean =>
+    row !== undefined &&
+    row[dateColumn] === here[dateColumn] &&
+    row.every((kind, column) => kind === here[column] || kind === 'blank');
+  let row = firstRow;
+  while (dateColumn >= 0 && row > 0 && isBlankReading(kinds[row - 1])) row -= 1;
+  return row;
 }
 
 /** Dates as serials or epoch seconds look like figures: only a header that names a date or time tells. */

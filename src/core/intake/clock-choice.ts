@@ -120,10 +120,12 @@ function triesOf(
     );
     tries.push(counted);
   }
-  if (options.given === undefined) {
+  // Only readings in the hour that summer time skips tell standard time from a wall clock: an autumn hour met once may as well
+  // have lost its second pass. Blanks or noughts there are fillers, which speak for a wall clock.
+  const real = countReal(values, local.inGap);
+  if (options.given === undefined && real > 0) {
     const utc = inStandardTime(starts, zone);
-    // Blanks or noughts in the hour that summer time skips are fillers: they speak for a wall clock.
-    const fillers = local.inGap.length - countReal(values, local.inGap);
+    const fillers = local.inGap.length - real;
     tries.push({ utc, clock: 'standard', found: null, faults: faultsOf(utc, values, stepMinutes) + 2 * fillers });
   }
   return tries;

@@ -2,11 +2,11 @@ import type { TableBlock } from './block';
 import { shareOf, type ColumnProfile } from './cells';
 import { channelMeaning, type ChannelMeaning } from './channel-words';
 import { preambleUnit } from './preamble';
-import { onlyGrows } from './registers';
+import { isConstant, onlyGrows } from './registers';
 import type { RoleFinding, Test } from './evidence';
 import type { Grid } from './grid';
 import { unitOfHeader } from './units';
-import { mentions } from './words';
+import { mentions, namesRegister } from './words';
 
 interface ValueInput {
   grid: Grid;
@@ -40,6 +40,7 @@ export function findChannels(input: ValueInput): void {
   const used = candidates.filter((candidate) => candidate.meaning.role !== 'ignore');
   if (used.some((candidate) => candidate.meaning.role === 'active')) {
     for (const candidate of used) markRegister(candidate);
+    markStanding(used);
     chooseActive(input, used);
   } else nameActive(input, candidates);
   chooseReactive(input, used);
@@ -87,12 +88,24 @@ function findExplainedValue(input: ValueInput, candidates: Candidate[]): void {
 /** A column that only ever grows is a register: its differences are the energy. */
 function markRegister(candidate: Candidate): void {
   const { meaning, profile, figures } = candidate;
-  if (meaning.measure !== 'energy' || !onlyGrows(figures, mentions(profile.name, 'register'))) return;
+  if (meaning.measure !== 'energy' || !onlyGrows(figures, namesRegister(profile.name))) return;
   candidate.meaning = {
     ...meaning,
     measure: 'register',
     why: `${meaning.why}; it only ever grows, so it is a register and its differences are the energy`,
   };
+}
+
+/** Beside a register that runs, a column that stands still is a register too: an export never used, a tariff not in force. */
+function markStanding(candidates: readonly Candidate[]): void {
+  if (!candidates.some((candidate) => candidate.meaning.measure === 'register')) return;
+  for (const candidate of candidates) {
+    const { meaning, figures } = candidate;
+    const isEnergy = meaning.measure === 'energy' && meaning.role !== 'power-factor';
+    if (!isEnergy || !isConstant(figures)) continue;
+    const why = `${meaning.why}; it stands still beside a register that runs`;
+    candidate.meaning = { ...meaning, measure: 'register', why };
+  }
 }
 
 /** Extremes within an interval; `15 min` is a length. */
@@ -185,12 +198,16 @@ function nameActive(input: ValueInput, candidates: Candidate[]): void {
   }
 }
 
+/** Ratings of equipment and contracts that stand in every row. */
+const platesWords =
+  /\b(name ?plate|rated|rating|transformer|trafo|contract(ed)?|subscribed|souscrite|installed|capacity|nenn\w*)\b/i;
+
 /** Lagging and leading apart, or one signed column; apparent energy or a power factor serve only where both lack. */
 function chooseReactive(input: ValueInput, used: Candidate[]): void {
   const reactive = used.filter((candidate) => candidate.meaning.role.startsWith('reactive'));
-  const best = reactive.some((candidate) => candidate.meaning.measure === 'energy')
-    ? 'energy'
-    : reactive[0]?.meaning.measure;
+  const best = (['energy', 'register', 'power'] as const).find((measure) =>
+    reactive.some((candidate) => candidate.meaning.measure === measure),
+  );
   for (const candidate of reactive) {
     const tests: Test[] = [[candidate.meaning.isPlain, candidate.meaning.why]];
     const filled = candidate.figures.filter((figure) => !Number.isNaN(figure));
@@ -206,11 +223,13 @@ function chooseReactive(input: ValueInput, used: Candidate[]): void {
   for (const candidate of used) {
     const { role } = candidate.meaning;
     if (role !== 'apparent' && role !== 'power-factor') continue;
-    const serves =
-      reactive.length === 0 && (role === 'apparent' || !used.some((other) => other.meaning.role === 'apparent'));
-    const why = serves
-      ? 'No reactive column: kvarh are worked out from it, taken as lagging'
-      : 'Not needed beside the reactive columns';
+    const isPlate = platesWords.test(candidate.profile.name);
+    const hasApparent = used.some(
+      (other) => other.meaning.role === 'apparent' && !platesWords.test(other.profile.name),
+    );
+    const serves = reactive.length === 0 && !isPlate && (role === 'apparent' || !hasApparent);
+    const unused = isPlate ? 'Named as a rating, not a reading' : 'Not needed beside the reactive columns';
+    const why = serves ? 'No reactive column: kvarh are worked out from it, taken as lagging' : unused;
     set(input, candidate, serves ? role : 'ignore', [[!serves, why]]);
   }
 }

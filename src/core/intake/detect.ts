@@ -10,7 +10,7 @@ import { preambleUnit } from './preamble';
 import { qualityOf } from './quality';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, StampStyle } from './types';
 import { findWideColumns, type WideColumns } from './wide';
-import { unitMeaning, unitOfHeader } from './units';
+import { isForeignUnit, unitMeaning, unitOfHeader } from './units';
 import { mentions } from './words';
 
 /** Everything about the columns of a file of intervals that can be told before its rows are read one by one. */
@@ -140,10 +140,16 @@ export function decimalGuess(vote: DecimalVote, map: Partial<ColumnMap>): Guess 
 function findLabels(profiles: readonly ColumnProfile[], findings: Map<number, RoleFinding>): void {
   for (const profile of profiles) {
     const filled = profile.sampled - profile.kinds.blank;
-    if (filled === 0 || profile.isManyValued || unitOfHeader(profile.name)) continue;
-    const words = [...profile.distinct.keys()];
     const isText = shareOf(profile, 'text') > 0.5;
-    const isUnits = isText && words.every((word) => unitMeaning(word) !== null);
+    const isMark = isText && mentions(profile.name, 'quality');
+    if (filled === 0 || profile.isManyValued || (unitOfHeader(profile.name) && !isMark)) continue;
+    const words = [...profile.distinct.keys()];
+    const isUnit = (word: string): boolean => unitMeaning(word) !== null;
+    // A unit of another trade (therms) beside those of energy names rows to leave out.
+    const isUnits =
+      isText &&
+      words.some(isUnit) &&
+      words.every((word) => isUnit(word) || (/^\S+$/.test(word) && isForeignUnit(word)));
     const unitsInside =
       isText && !isUnits && words.filter((word) => unitOfHeader(word) !== null).length * 2 >= words.length;
     const known = words.filter((word) => qualityOf(word) !== null).length;

@@ -10,8 +10,8 @@ export interface EspiReading {
   startS: number;
   durationS: number;
   value: number;
-  /** Highest code of quality that the reading carries; NaN without one. */
-  quality: number;
+  /** Codes of quality that the reading carries; a reading may have several. */
+  qualities: readonly number[];
 }
 
 /** An entry of the feed that intervals need; related to others by its links only. */
@@ -27,8 +27,12 @@ export interface EspiEntry {
 }
 
 const kinds = new Set(['UsagePoint', 'MeterReading', 'ReadingType', 'IntervalBlock']);
-const numberOf = (text: string | undefined): number =>
-  text === undefined || text.trim() === '' ? Number.NaN : Number(text);
+const noCodes: readonly number[] = [];
+
+function numberOf(text: string): number {
+  const figure = text.trim() === '' ? Number.NaN : Number(text);
+  return Number.isFinite(figure) ? figure : Number.NaN;
+}
 
 /** Collects entries while the parser walks the feed; names are matched by namespace and local name, never by prefix. */
 class FeedCollector {
@@ -55,7 +59,7 @@ class FeedCollector {
     if (tag.uri !== espiNamespace) return;
     if (kinds.has(tag.local) && entry.kind === 'other') entry.kind = tag.local as EspiEntry['kind'];
     if (tag.local === 'IntervalReading') {
-      this.reading = { startS: Number.NaN, durationS: Number.NaN, value: Number.NaN, quality: Number.NaN };
+      this.reading = { startS: Number.NaN, durationS: Number.NaN, value: Number.NaN, qualities: noCodes };
       this.count += 1;
       if (this.count > mostReadings)
         throw intakeError(
@@ -100,8 +104,7 @@ class FeedCollector {
     if (name === 'value') reading.value = figure;
     else if (name === 'start') reading.startS = figure;
     else if (name === 'duration') reading.durationS = figure;
-    else if (name === 'quality')
-      reading.quality = Number.isNaN(reading.quality) ? figure : Math.max(reading.quality, figure);
+    else if (name === 'quality') reading.qualities = [...reading.qualities, figure];
     else if (name === 'IntervalReading') {
       entry.readings.push(reading);
       this.reading = null;

@@ -1,159 +1,12 @@
 import { quality as grades } from '../load';
 import { assemble } from './assemble';
 import { IntakeError, intakeError } from './errors';
-import type { EspiEntry, EspiReading } from './espi-feed';
+import type { EspiChannel } from './espi-channels';
+import type { EspiReading } from './espi-feed';
 import { findStep } from './marks';
-import { onlyGrows } from './registers';
 import type { PlacedStrand } from './series';
-import type {
-  ColumnEvidence,
-  ColumnMap,
-  IntakeNote,
-  IntervalReading,
-  IntervalRole,
-  Measure,
-  ReadOptions,
-} from './types';
-import { scaled, unitMeaning } from './units';
-
-/** One meter reading of a feed: its type and its blocks, brought together by links. */
-export interface EspiChannel {
-  name: string;
-  meter: string;
-  role: IntervalRole;
-  unit: string;
-  /** To kWh, kvarh or kVAh. */
-  factor: number;
-  measure: Measure;
-  why: string;
-  sure: boolean;
-  readings: EspiReading[];
-}
-
-// Codes of units and flows: NAESB REQ.21, as listed in the schema of ESPI (usage.xsd).
-const unitsByCode: Record<string, string> = {
-  '72': 'Wh',
-  '73': 'varh',
-  '71': 'VAh',
-  '38': 'W',
-  '63': 'var',
-  '61': 'VA',
-};
-
-/** Brings the entries of a feed together by their links: blocks to meter readings, those to their types and usage points. */
-export function channelsOfFeed(entries: readonly EspiEntry[], map: Partial<ColumnMap>): EspiChannel[] {
-  const of = (kind: EspiEntry['kind']): EspiEntry[] => entries.filter((entry) => entry.kind === kind);
-  const types = of('ReadingType');
-  const readings = of('MeterReading');
-  const blocks = of('IntervalBlock');
-  const groups = new Map<EspiEntry | null, EspiEntry[]>();
-  for (const block of blocks) {
-    const owner =
-      readings.find((reading) => belongsTo(block, reading)) ??
-      (readings.length === 1 ? readings[0] : undefined) ??
-      null;
-    groups.set(owner, [...(groups.get(owner) ?? []), block]);
-  }
-  const points = of('UsagePoint');
-  return [...groups].map(([reading, own], index) => {
-    const type =
-      types.find((one) => one.self !== '' && reading?.related.includes(one.self)) ??
-      (types.length === 1 ? types[0] : undefined);
-    const point =
-      points.find((one) => one.self !== '' && reading?.up.startsWith(`${one.self}/`)) ??
-      (points.length === 1 ? points[0] : undefined);
-    const name = reading?.title || `Readings ${index + 1}`;
-    const given = map.columns?.find((use) => use.index === index);
-    const meaning = meaningOf(type, given?.role as IntervalRole | undefined, given?.unit);
-    const all = own.flatMap((block) => timedReadings(block, type));
-    const measure =
-      onlyGrows(all.map((one) => one.value)) && meaning.measure === 'energy' ? 'register' : meaning.measure;
-    return {
-      name,
-      meter: point?.title || point?.self.split('/').at(-1) || 'one meter',
-      ...meaning,
-      measure,
-      readings: all,
-    };
-  });
-}
-
-function belongsTo(block: EspiEntry, reading: EspiEntry): boolean {
-  if (reading.self === '') return false;
-  return (
-    block.up === reading.self ||
-    block.up.startsWith(`${reading.self}/`) ||
-    reading.related.includes(block.up) ||
-    reading.related.includes(block.self)
-  );
-}
-
-/** A reading without a start of its own follows the one before in its block; a duration may stand in three places. */
-function timedReadings(block: EspiEntry, type: EspiEntry | undefined): EspiReading[] {
-  const usual = Number(type?.fields.get('intervalLength')) || Number.NaN;
-  const initial = Number(type?.fields.get('defaultQuality') ?? Number.NaN);
-  let next = Number(block.fields.get('interval.start') ?? Number.NaN);
-  return block.readings.map((reading) => {
-    const startS = Number.isNaN(reading.startS) ? next : reading.startS;
-    const durationS = reading.durationS > 0 ? reading.durationS : usual;
-    next = startS + durationS;
-    return {
-      startS,
-      durationS,
-      value: reading.value,
-      quality: Number.isNaN(reading.quality) ? initial : reading.quality,
-    };
-  });
-}
-
-type Meaning = Pick<EspiChannel, 'role' | 'unit' | 'factor' | 'measure' | 'why' | 'sure'>;
-
-function meaningOf(
-  type: EspiEntry | undefined,
-  givenRole: IntervalRole | undefined,
-  givenUnit: string | undefined,
-): Meaning {
-  const code = type?.fields.get('uom') ?? '';
-  const unitText = givenUnit ?? unitsByCode[code] ?? '';
-  const unit = unitMeaning(unitText);
-  const power = Number(type?.fields.get('powerOfTenMultiplier') ?? 0);
-  const isSane = Number.isInteger(power) && Math.abs(power) <= 12;
-  const scale = givenUnit ? 1 : isSane ? 10 ** power : Number.NaN;
-  if (!unit || Number.isNaN(scale)) {
-    const why = type ? `Unit code ${code || 'absent'} is none of energy or power` : 'No reading type tells the unit';
-    return { role: 'ignore', unit: '', factor: 1, measure: 'energy', why, sure: type !== undefined };
-  }
-  const flow = type?.fields.get('flowDirection') ?? '';
-  const role = givenRole ?? roleOf(unit.quantity, flow);
-  const why =
-    givenRole || givenUnit ? 'Given by the column map' : `Unit code ${code}, flow direction ${flow || 'absent'}`;
-  return {
-    role,
-    unit: unit.unit,
-    factor: unit.factor * scale,
-    measure: unit.measure,
-    why,
-    sure: flow !== '' || givenRole !== undefined,
-  };
-}
-
-function roleOf(quantity: string, flow: string): IntervalRole {
-  if (quantity === 'apparent') return flow === '19' ? 'ignore' : 'apparent';
-  if (quantity === 'active') return flow === '19' ? 'export' : 'active';
-  const senses: Record<string, IntervalRole> = {
-    '2': 'reactive-lagging',
-    '3': 'reactive-leading',
-    '15': 'reactive-lagging',
-    '18': 'reactive-leading',
-    '16': 'ignore',
-    '17': 'ignore',
-    '5': 'reactive-lagging',
-    '13': 'reactive-leading',
-    '1': 'reactive-lagging',
-    '19': 'reactive-leading',
-  };
-  return senses[flow] ?? 'reactive-signed';
-}
+import type { ColumnEvidence, IntakeNote, IntervalReading, ReadOptions } from './types';
+import { scaled } from './units';
 
 /** Evidence: a line a meter reading. */
 export function evidenceOfEspi(channels: readonly EspiChannel[]): ColumnEvidence[] {
@@ -175,7 +28,19 @@ export function evidenceOfEspi(channels: readonly EspiChannel[]): ColumnEvidence
 
 /** Meters with channels of energy. */
 export function metersOfEspi(channels: readonly EspiChannel[]): string[] {
-  return [...new Set(channels.filter((channel) => channel.role !== 'ignore').map((channel) => channel.meter))];
+  const telling = channels.filter((channel) => channel.role !== 'ignore' && channel.role !== 'power-factor');
+  return [...new Set(telling.map((channel) => channel.meter))];
+}
+
+/** Channels of a meter that make its load: energy or registers rather than power of the same role, which would count twice. */
+function usedChannels(channels: readonly EspiChannel[], meter: string): EspiChannel[] {
+  const own = channels.filter(
+    (channel) => channel.meter === meter && channel.role !== 'ignore' && channel.readings.length > 0,
+  );
+  return own.filter(
+    (channel) =>
+      channel.measure !== 'power' || !own.some((other) => other.role === channel.role && other.measure !== 'power'),
+  );
 }
 
 /**
@@ -196,9 +61,7 @@ export function readEspi(channels: readonly EspiChannel[], options: ReadOptions)
       'Pick one of them in the column map.',
     );
   }
-  const used = channels.filter(
-    (channel) => channel.meter === meter && channel.role !== 'ignore' && channel.readings.length > 0,
-  );
+  const used = usedChannels(channels, meter);
   const left = channels
     .filter((channel) => !used.includes(channel))
     .map((channel) => `${channel.name} (${channel.why})`);
@@ -235,8 +98,10 @@ const unknownUnit = (channel: EspiChannel, options: ReadOptions) => ({
 });
 
 /** Quality codes 7 to 13 and 15 are edited, estimated, derived or projected figures; others stand as measured. */
-const gradeOf = (code: number): number =>
-  (code >= 7 && code <= 13) || code === 15 ? grades.estimated : grades.measured;
+const isEstimate = (code: number): boolean => (code >= 7 && code <= 13) || code === 15;
+
+const gradeOf = ({ qualities }: EspiReading): number =>
+  qualities.some(isEstimate) ? grades.estimated : grades.measured;
 
 function placedOf(channel: EspiChannel, options: ReadOptions): PlacedStrand {
   const { readings } = channel;
@@ -265,7 +130,7 @@ function placedOf(channel: EspiChannel, options: ReadOptions): PlacedStrand {
           values: Float64Array.from(readings, (reading) => scaled(reading.value, channel.factor)),
         },
       ],
-      quality: Uint8Array.from(readings, (reading) => gradeOf(reading.quality)),
+      quality: Uint8Array.from(readings, gradeOf),
       isTurned: false,
     },
     timeline: { stepMinutes, style: { clock: 'utc' }, utc, notes: [], guesses: [] },

@@ -106,7 +106,7 @@ function strandOf(
       at += 1;
     }
   }
-  const marks = readMarks(grid, rows, columnOf(plan.columns, 'quality'), extraction);
+  const marks = readMarks(grid, rows, plan.columns, extraction);
   return {
     walls,
     offsets: null,

@@ -4,10 +4,12 @@ import { channelMeaning } from './channel-words';
 import { cellPlace, type Grid } from './grid';
 import { isBlankWord } from './numbers';
 import { qualityOf } from './quality';
+import { isConstant, onlyGrows } from './registers';
 import { readStamps } from './read-stamps';
 import { runsBackwards, turnStrand, type Strand, type StrandChannel } from './strand';
 import type { ColumnUse, IntakeNote, IntervalRole, StampStyle } from './types';
 import { scaled, unitMeaning, type UnitMeaning } from './units';
+import { namesRegister } from './words';
 
 /** The columns of a table by what they are for. */
 export interface ColumnPlan {
@@ -69,7 +71,7 @@ export function extractLong(plan: ColumnPlan): Extraction {
     name: use.name,
     values: figures[at] ?? new Float64Array(),
   }));
-  const marks = readMarks(grid, rows, columnOf(columns, 'quality'), extraction);
+  const marks = readMarks(grid, rows, columns, extraction);
   const whole: Strand = {
     walls: stamps.walls,
     offsets: stamps.offsets,
@@ -81,6 +83,8 @@ export function extractLong(plan: ColumnPlan): Extraction {
     isTurned: false,
   };
   const strands = explained ? splitChannels(plan, whole, explained, extraction) : [whole];
+  // Rows of other quantities are no data.
+  extraction.rowsRead = strands.reduce((sum, strand) => sum + strand.rows.length, 0);
   extraction.strands = strands.map((strand) => (runsBackwards(strand.walls) ? turnStrand(strand) : strand));
   return extraction;
 }
@@ -120,9 +124,21 @@ export function collectBad(grid: Grid, row: number, column: number, extraction: 
   if (!isBlankWord(text)) extraction.badValues.push({ place: cellPlace(grid, row, column), text });
 }
 
-/** Quality of every row; marks nobody knows count as measured, with a note. */
-export function readMarks(grid: Grid, rows: Uint32Array, column: number, extraction: Extraction): Uint8Array | null {
-  if (column < 0) return null;
+/** Quality of every row, the worst where several columns mark it; marks nobody knows count as measured, with a note. */
+export function readMarks(
+  grid: Grid,
+  rows: Uint32Array,
+  columns: readonly ColumnUse[],
+  extraction: Extraction,
+): Uint8Array | null {
+  const uses = columns.filter((use) => use.role === 'quality');
+  const read = uses.map((use) => readMarkColumn(grid, rows, use.index, extraction));
+  const [first, ...others] = read;
+  for (const other of others) first?.forEach((mark, at) => (first[at] = Math.max(mark, other[at] ?? 0)));
+  return first ?? null;
+}
+
+function readMarkColumn(grid: Grid, rows: Uint32Array, column: number, extraction: Extraction): Uint8Array {
   const known = new Map<string, number>();
   const strange = new Set<string>();
   const marks = new Uint8Array(rows.length);
@@ -195,7 +211,7 @@ function splitChannels(plan: ColumnPlan, whole: Strand, value: ColumnUse, extrac
     if (group) group.push(at);
     else groups.set(channel, [at]);
   });
-  return [...groups].map(([channel, positions]) => {
+  const strands = [...groups].map(([channel, positions]): Strand => {
     const rows = Uint32Array.from(positions, (at) => whole.rows[at] ?? 0);
     const pick = (source: Float64Array | null): Float64Array | null =>
       source && Float64Array.from(positions, (at) => source[at] ?? Number.NaN);
@@ -212,4 +228,19 @@ function splitChannels(plan: ColumnPlan, whole: Strand, value: ColumnUse, extrac
       isTurned: false,
     };
   });
+  markRegisters(strands);
+  return strands;
+}
+
+/** Channels of a stacked table whose figures only ever grow are registers, and so are such as stand still beside them. */
+function markRegisters(strands: readonly Strand[]): void {
+  const channels = strands.flatMap((strand) =>
+    strand.channels.filter((channel) => channel.measure === 'energy' && channel.role !== 'power-factor'),
+  );
+  const isGrowing = (channel: StrandChannel): boolean =>
+    onlyGrows(channel.values, namesRegister(channel.name)) ||
+    onlyGrows(channel.values.slice().reverse(), namesRegister(channel.name));
+  for (const channel of channels) if (isGrowing(channel)) channel.measure = 'register';
+  if (!channels.some((channel) => channel.measure === 'register')) return;
+  for (const channel of channels) if (isConstant(channel.values)) channel.measure = 'register';
 }

@@ -20,6 +20,13 @@ import { scaled, unitMeaning, type UnitMeaning } from './units';
 // it, 400 the quality of parts of a day. Market time is UTC+10 all year and values name the end of their interval.
 const marketOffsetMinutes = 600;
 
+const suffixRoles = new Map<string, IntervalRole>([
+  ['E', 'active'],
+  ['B', 'export'],
+  ['Q', 'reactive-lagging'],
+  ['K', 'reactive-leading'],
+]);
+
 /** A day of a stream as its 300 record gives it. */
 interface StreamDay {
   row: number;
@@ -70,8 +77,10 @@ export function parseNem12(text: string, fileName: string): NemFile {
     if (record === '900') isEnded = true;
     if (record === '200') {
       stream = streamOf(grid, row, streams);
-      stepMinutes = Number(grid.text(row, 8));
+      stepMinutes = announcedStep(grid.text(row, 8), stream);
     } else if (record === '300') {
+      // What a stream that is left out holds need not fit.
+      if (stream?.role === 'ignore') continue;
       const day = stream ? dayOf(grid, row, stepMinutes) : 'A day stands before any stream is named.';
       if (typeof day === 'string')
         problems.push({ message: day, where, remedy: 'Ask the sender for an unbroken file.' });
@@ -98,15 +107,16 @@ function streamOf(grid: Grid, row: number, streams: NemStream[]): NemStream {
   return stream;
 }
 
+/** Length of the intervals a 200 record announces, else that of the days of the stream before it; NaN if neither tells. */
+function announcedStep(text: string, stream: NemStream): number {
+  const announced = Number(text);
+  const isKnown = stepLengthsMinutes.some((length) => length === announced);
+  return isKnown ? announced : (stream.days.at(-1)?.stepMinutes ?? Number.NaN);
+}
+
 /** E is drawn, B delivered, Q goes with E (lagging), K with B (leading); voltage and the like are left out. */
 function roleOf(suffix: string, unit: UnitMeaning | null): IntervalRole {
-  const roles: Record<string, IntervalRole> = {
-    E: 'active',
-    B: 'export',
-    Q: 'reactive-lagging',
-    K: 'reactive-leading',
-  };
-  const role = roles[suffix.charAt(0)] ?? 'ignore';
+  const role = suffixRoles.get(suffix.charAt(0)) ?? 'ignore';
   const fits = unit?.measure === 'energy' && unit.quantity === (role.startsWith('reactive') ? 'reactive' : 'active');
   return fits ? role : 'ignore';
 }
@@ -117,26 +127,34 @@ function dayOf(grid: Grid, row: number, stepMinutes: number): StreamDay | string
   if (!grid.scan(row, 1, scanner) || !scanner.resolve('YMD')) return `“${grid.text(row, 1)}” is no date.`;
   const day = scanner.day;
   let qualityAt = 2;
-  while (qualityAt < grid.width(row) && !/^[AEFNSV]\d{0,2}$/.test(grid.text(row, qualityAt))) qualityAt += 1;
+  while (qualityAt < grid.width(row) && !/^[AEFNSV]\d{0,2}$/i.test(grid.text(row, qualityAt))) qualityAt += 1;
   const count = qualityAt - 2;
-  const method = grid.text(row, qualityAt);
-  const expected = 1440 / stepMinutes;
-  if (count === 0)
-    return {
-      row,
-      day,
-      stepMinutes,
-      figures: new Array<number>(expected).fill(Number.NaN),
-      marks: new Uint8Array(expected).fill(grades.missing),
-    };
+  const method = grid.text(row, qualityAt).toUpperCase();
+  if (count === 0) return emptyDay(row, day, stepMinutes);
   const actualStep = 1440 / count;
   if (method === '' || !stepLengthsMinutes.some((length) => length === actualStep)) {
-    return `The day has ${count} values; ${expected} of ${stepMinutes} minutes were announced.`;
+    const announced = Number.isNaN(stepMinutes)
+      ? ''
+      : `; ${1440 / stepMinutes} of ${stepMinutes} minutes were announced`;
+    return `The day has ${count} values${announced}.`;
   }
   const figures = Array.from({ length: count }, (_, at) => grid.number(row, at + 2, '.'));
   const bad = figures.findIndex((figure, at) => Number.isNaN(figure) && grid.text(row, at + 2) !== '');
   if (bad >= 0) return `“${grid.text(row, bad + 2)}” in column ${columnLetter(bad + 2)} is no figure.`;
   return { row, day, stepMinutes: actualStep, figures, marks: new Uint8Array(count).fill(gradeOf(method)) };
+}
+
+/** A day without values is missing, whatever its 400 records say. */
+function emptyDay(row: number, day: number, stepMinutes: number): StreamDay | string {
+  if (Number.isNaN(stepMinutes)) return 'The day has no values, and no length of interval is announced for it.';
+  const count = 1440 / stepMinutes;
+  return {
+    row,
+    day,
+    stepMinutes,
+    figures: new Array<number>(count).fill(Number.NaN),
+    marks: new Uint8Array(count).fill(grades.missing),
+  };
 }
 
 /** A measured; E, F and S with their methods estimated; N missing; V is settled by the 400 records that follow. */
@@ -147,7 +165,8 @@ function gradeOf(method: string): number {
 
 function markRange(grid: Grid, row: number, day: StreamDay): void {
   const [from, to] = [Number(grid.text(row, 1)), Number(grid.text(row, 2))];
-  if (Number.isInteger(from) && Number.isInteger(to)) day.marks.fill(gradeOf(grid.text(row, 3)), from - 1, to);
+  if (!Number.isInteger(from) || !Number.isInteger(to)) return;
+  day.marks.fill(gradeOf(grid.text(row, 3).toUpperCase()), Math.max(0, from - 1), Math.max(0, to));
 }
 
 /** Meters of the file. */

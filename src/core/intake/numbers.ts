@@ -92,7 +92,8 @@ export function parseNumberText(text: string, decimalMark: '.' | ','): number {
   }
   if (decimalMark === ',') body = body.replace(',', '.');
   if (!/^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/i.test(body)) return Number.NaN;
-  return negative ? -Number(body) : Number(body);
+  const size = Number(body);
+  return Number.isFinite(size) ? (negative ? -size : size) : Number.NaN;
 }
 
 /** What the cells of a file say about the decimal mark. */

@@ -1,6 +1,7 @@
 /**
- * Whether figures are the readings of a register: they only ever grow (a hundredth may fall, at roll-overs), often, and
- * start far above their largest step. `isNamed` says that their name calls them a register, which needs no such start.
+ * Whether figures are the readings of a register: they only ever grow (one or a hundredth may fall to near nought, at
+ * roll-overs and resets), often, and start far above their largest step. `isNamed` says that their name calls them a
+ * register, which needs no such start.
  */
 export function onlyGrows(readings: readonly number[] | Float64Array, isNamed = false): boolean {
   let count = 0;
@@ -14,14 +15,52 @@ export function onlyGrows(readings: readonly number[] | Float64Array, isNamed = 
     count += 1;
     if (count === 1) first = figure;
     const step = figure - before;
-    if (step < 0) falls += 1;
+    // A roll-over or a reset falls to near nought; any other fall is no register's.
+    if (step < 0) falls += figure < before * 0.1 ? 1 : Infinity;
     else if (step > 0) {
       steps += 1;
       largest = Math.max(largest, step);
     }
     before = figure;
   }
-  if (count < 4 || falls > count * 0.01 || steps <= count * 0.2) return false;
+  if (count < (isNamed ? 2 : 4) || falls > Math.max(isNamed ? 2 : 1, count * 0.01)) return false;
+  if (steps <= count * 0.2) return false;
   const isLarge = first > 20 * (largest / Math.max(1, readings.length / 100));
   return isNamed || (isLarge && count >= 10);
+}
+
+/** Whether all figures are one and the same: beside a register that runs, one that stands still. */
+export function isConstant(readings: readonly number[] | Float64Array): boolean {
+  let first = Number.NaN;
+  for (const figure of readings) {
+    if (Number.isNaN(first)) first = figure;
+    else if (figure !== first && !Number.isNaN(figure)) return false;
+  }
+  return !Number.isNaN(first);
+}
+
+/**
+ * Turns readings of a register into the energy between them, in place: the energy of an interval stands where its first
+ * reading stood, or its last if readings name the end of the interval beside them. A roll-over is carried on, a reset
+ * leaves its interval missing.
+ *
+ * @returns how often the register falls
+ */
+export function registerEnergy(readings: Float64Array, isEnd: boolean): number {
+  const most = readings.reduce((greatest, figure) => (figure > greatest ? figure : greatest), 1);
+  const size = 10 ** Math.ceil(Math.log10(most + 1));
+  const energyOf = (before: number, after: number): number => {
+    const isRollover = before > size * 0.95 && after < size * 0.05;
+    return after >= before ? after - before : isRollover ? after - before + size : Number.NaN;
+  };
+  let falls = 0;
+  const count = readings.length;
+  for (let turn = 0; turn < count; turn += 1) {
+    const slot = isEnd ? count - 1 - turn : turn;
+    const before = readings[isEnd ? slot - 1 : slot] ?? Number.NaN;
+    const after = readings[isEnd ? slot : slot + 1] ?? Number.NaN;
+    if (after < before) falls += 1;
+    readings[slot] = energyOf(before, after);
+  }
+  return falls;
 }

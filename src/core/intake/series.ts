@@ -1,6 +1,7 @@
 import { quality as grades } from '../load';
 import { intakeError } from './errors';
 import type { Grid } from './grid';
+import { registerEnergy } from './registers';
 import { joinSteps } from './steps';
 import type { Strand, StrandChannel } from './strand';
 import type { Timeline } from './timeline';
@@ -26,15 +27,23 @@ export interface GriddedChannels {
   channels: Map<IntervalRole, Float64Array>;
   quality: Uint8Array;
   duplicates: number;
+  /** How often a register falls. */
+  falls: number;
   notes: IntakeNote[];
 }
+
+/** Instants that a reading may name: 1970, by any clock, to the end of 2216. [min] */
+const isPlaceable = (minute: number): boolean => minute >= -1440 && minute < 1.3e8;
 
 /**
  * Lays strands on one regular grid. The first reading of an interval is kept, later ones are duplicates; readings off the
  * grid are left out.
  * @throws {IntakeError} if many readings are off the grid or the span is out of proportion.
  */
-export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, fileName: string): GriddedChannels {
+export function gridChannels(
+  given: readonly PlacedStrand[],
+  { rows: grid, fileName, isTable }: { rows: RowNumbers; fileName: string; isTable: boolean },
+): GriddedChannels {
   const notes: IntakeNote[] = [];
   const placed = joinSteps(given, notes);
   const stepMinutes = placed[0]?.timeline.stepMinutes ?? Number.NaN;
@@ -56,12 +65,25 @@ export function gridChannels(given: readonly PlacedStrand[], grid: RowNumbers, f
     channels: new Map(),
     quality: new Uint8Array(length),
     duplicates: 0,
+    falls: 0,
     notes,
   };
   const differing: number[] = [];
   for (const one of placed) layStrand(one, least, phase, gridded, differing);
-  noteDiffering({ differing, readings, grid, fileName, notes });
-  return gridded;
+  noteDiffering({ differing, readings, grid, fileName, notes, isTable });
+  return placed.every(isInstants) ? withoutLast(gridded) : gridded;
+}
+
+/** Registers alone, read at instants: the last reading only ends an interval. */
+const isInstants = ({ strand, timeline }: PlacedStrand): boolean =>
+  timeline.style.marks !== 'end' &&
+  timeline.style.marks !== 'own-day-end' &&
+  strand.channels.every((channel) => channel.measure === 'register');
+
+function withoutLast(gridded: GriddedChannels): GriddedChannels {
+  const length = Math.max(0, gridded.length - 1);
+  const channels = new Map([...gridded.channels].map(([role, figures]) => [role, figures.subarray(0, length)]));
+  return { ...gridded, length, channels, quality: gridded.quality.subarray(0, length) };
 }
 
 interface Survey {
@@ -78,7 +100,7 @@ function surveyOf(placed: readonly PlacedStrand[], phase: number, stepMinutes: n
     const { utc } = timeline;
     for (let at = 0; at < utc.length; at += 1) {
       const minute = utc[at] ?? Number.NaN;
-      if (Number.isNaN(minute)) continue;
+      if (!isPlaceable(minute)) continue;
       survey.readings += 1;
       if (!Number.isInteger((minute - phase) / stepMinutes)) survey.offGrid.push(strand.rows[at] ?? 0);
       else {
@@ -90,16 +112,20 @@ function surveyOf(placed: readonly PlacedStrand[], phase: number, stepMinutes: n
   return survey;
 }
 
-/** A few readings that contradict the first of their interval are noted; many mean that the file was misread. */
+/**
+ * Readings that contradict the first of their interval are noted. In a table many of them mean several meters or channels;
+ * formats that name their channels have none to mistake.
+ */
 function noteDiffering(found: {
   differing: number[];
   readings: number;
   grid: RowNumbers;
   fileName: string;
   notes: IntakeNote[];
+  isTable: boolean;
 }): void {
-  const { differing, readings, grid, fileName, notes } = found;
-  if (differing.length > Math.max(12, readings * 0.2)) {
+  const { differing, readings, grid, fileName, notes, isTable } = found;
+  if (isTable && differing.length > Math.max(12, readings * 0.35)) {
     throw intakeError(
       `${differing.length} of ${readings} readings name an interval that another reading fills with another figure.`,
       `${fileName}, ${rowsInWords(grid, differing)}`,
@@ -189,6 +215,7 @@ function layStrand(
   const { strand, timeline } = placed;
   const { stepMinutes, length } = gridded;
   const isFilled = new Uint8Array(length);
+  const marks = new Uint8Array(length);
   const count = strand.rows.length;
   const sources = strand.channels.map((channel) => channel.values);
   const targets = strand.channels.map(() => new Float64Array(length).fill(Number.NaN));
@@ -199,7 +226,7 @@ function layStrand(
     // A file that runs backwards was turned round; the first reading of the file still wins.
     const at = strand.isTurned ? count - 1 - turn : turn;
     const minute = timeline.utc[at] ?? Number.NaN;
-    if (!Number.isInteger((minute - phase) / stepMinutes)) continue;
+    if (!isPlaceable(minute) || !Number.isInteger((minute - phase) / stepMinutes)) continue;
     const mark = strand.quality?.[at] ?? grades.measured;
     if (mark === grades.missing || !hasFigure(sources, at)) continue;
     const slot = (minute - leastMinute) / stepMinutes;
@@ -214,13 +241,31 @@ function layStrand(
       continue;
     }
     isFilled[slot] = 1;
-    if (mark === grades.estimated) gridded.quality[slot] = grades.estimated;
+    marks[slot] = mark;
     for (let index = 0; index < sources.length; index += 1) {
       const target = targets[index];
       if (target) target[slot] = (sources[index]?.[at] ?? Number.NaN) * (factors[index] ?? 1);
     }
   }
-  strand.channels.forEach((channel, index) => addChannel(gridded, channel, targets[index] ?? new Float64Array(length)));
+  const isEnd = timeline.style.marks === 'end' || timeline.style.marks === 'own-day-end';
+  strand.channels.forEach((channel, index) => {
+    const figures = targets[index] ?? new Float64Array(length);
+    if (channel.measure === 'register') gridded.falls += registerEnergy(figures, isEnd);
+    addChannel(gridded, channel, figures);
+  });
+  keepMarks(strand, marks, gridded.quality, isEnd);
+}
+
+/** Estimates count on channels that are kept; an estimated reading of a register stands behind both its intervals. */
+function keepMarks({ channels }: Strand, marks: Uint8Array, quality: Uint8Array, isEnd: boolean): void {
+  if (channels.every((channel) => channel.role === 'export')) return;
+  const hasRegister = channels.some((channel) => channel.measure === 'register');
+  for (let slot = 0; slot < marks.length; slot += 1) {
+    if (marks[slot] !== grades.estimated) continue;
+    quality[slot] = grades.estimated;
+    const other = slot + (isEnd ? 1 : -1);
+    if (hasRegister && other >= 0 && other < quality.length) quality[other] = grades.estimated;
+  }
 }
 
 function hasFigure(sources: readonly Float64Array[], at: number): boolean {
@@ -252,42 +297,10 @@ function addChannel(gridded: GriddedChannels, channel: StrandChannel, figures: F
     added += 1;
     if (!Number.isNaN(own[slot] ?? Number.NaN)) both += 1;
   }
-  const takeTurns = both * 20 < added;
+  const takeTurns = both * 2 < added;
   for (let slot = 0; slot < own.length; slot += 1) {
     const [kept, next] = [own[slot] ?? Number.NaN, figures[slot] ?? Number.NaN];
     own[slot] = !takeTurns ? kept + next : Number.isNaN(kept) ? next : kept;
   }
   if (takeTurns) gridded.duplicates += both;
-}
-
-/** Register readings become the energy between them: one interval fewer than readings. */
-export function differenceRegisters(gridded: GriddedChannels): GriddedChannels {
-  const length = Math.max(0, gridded.length - 1);
-  const notes = [
-    ...gridded.notes,
-    {
-      code: 'register-differences',
-      message: 'The figures are register readings: each interval is the difference of two of them.',
-    },
-  ];
-  const channels = new Map<IntervalRole, Float64Array>();
-  let falls = 0;
-  for (const [role, readings] of gridded.channels) {
-    const size = 10 ** Math.ceil(Math.log10(readings.reduce((most, figure) => (figure > most ? figure : most), 1) + 1));
-    const energy = new Float64Array(length);
-    for (let slot = 0; slot < length; slot += 1) {
-      const before = readings[slot] ?? Number.NaN;
-      const step = (readings[slot + 1] ?? Number.NaN) - before;
-      const isRollover = step < 0 && before > size * 0.95 && before + step < size * 0.05;
-      if (step < 0) falls += 1;
-      energy[slot] = step >= 0 ? step : isRollover ? step + size : Number.NaN;
-    }
-    channels.set(role, energy);
-  }
-  if (falls > 0)
-    notes.push({
-      code: 'register-falls',
-      message: `A register falls ${falls} ${falls === 1 ? 'time' : 'times'}: a roll-over is carried on, a reset leaves its interval missing.`,
-    });
-  return { ...gridded, length, channels, quality: gridded.quality.slice(1), notes };
 }

@@ -1,7 +1,8 @@
 import { planBills } from './bill-plan';
 import { readPlannedBills } from './bills';
 import { intakeError } from './errors';
-import { channelsOfFeed, evidenceOfEspi, metersOfEspi, readEspi } from './espi';
+import { evidenceOfEspi, metersOfEspi, readEspi } from './espi';
+import { channelsOfFeed } from './espi-channels';
 import { parseEspi } from './espi-feed';
 import { containerOf } from './format';
 import { planIntervals, readPlanned } from './intervals';

@@ -6,9 +6,18 @@ const monthWords: Record<string, number> = Object.assign(Object.create(null) as 
   sep: 9, set: 9, oct: 10, okt: 10, ott: 10, out: 10, nov: 11, dec: 12, dez: 12, dic: 12, déc: 12,
 }); // prettier-ignore
 
+// Months in full in English, German, French, Spanish, Italian, Portuguese and Dutch; longer words than these begin no date.
+const wholeMonths =
+  `january february march april may june july august september october november december januar februar märz maerz mai
+  juni juli oktober dezember janvier février fevrier mars avril juin juillet août aout septembre octobre novembre décembre
+  decembre enero febrero marzo abril mayo junio julio agosto septiembre setiembre octubre noviembre diciembre gennaio
+  febbraio aprile maggio giugno luglio settembre ottobre dicembre janeiro fevereiro março maio junho julho setembro outubro
+  novembro dezembro januari februari maart mei augustus sept`.split(/\s+/);
+
 /** Number of a month by the beginning of its name in the languages files come in; 0 if it is none. */
 export function monthOfWord(word: string): number {
   const lower = word.toLowerCase();
+  if (lower.length > 4 && !wholeMonths.some((month) => month.startsWith(lower))) return 0;
   return monthWords[lower.slice(0, 4)] ?? monthWords[lower.slice(0, 3)] ?? 0;
 }
 

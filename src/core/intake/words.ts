@@ -274,6 +274,11 @@ export function namesPowerFactor(name: string): boolean {
   );
 }
 
+/** A column of register readings by its name. */
+export function namesRegister(name: string): boolean {
+  return mentions(name, 'register') || /\bmeter ?readings?\b|(?:^|[^\d])[1-8]\.8\.\d/i.test(name);
+}
+
 /** A name of a date, a time or an end of a period: figures beneath it may be serials or seconds. */
 export function namesTime(name: string): boolean {
   const isNamed = (['stamp', 'date', 'time', 'begin', 'end'] as const).some((group) => mentions(name, group));

@@ -32,7 +32,7 @@ describe('explanations', () => {
         'billedKva = max(maxKva; 0.80 x yearKva; 0.50 x contractKva) = max(2,100; 0.80 x 3,000; 0.50 x 2,000) = 2,400 kVA: the second.',
       pf: 'pf = pf(allKwh; kvarh) = pf(800,000; 400,000) = 0.894427, to 0.01: 0.89.',
       yearKva:
-        'yearKva = 3,000 kVA, the highest maxKva of the last 11 periods (1 of 11 earlier ones known), June 2026.',
+        'yearKva = 3,000 kVA, the highest maxKva of the last 11 periods (1 known), June 2026.',
       kvarh: 'kvarh = 400,000 kvarh, as the bill prints it.',
     });
     expect(july!.quantities['billedKva']!.uses).toEqual(['maxKva', 'yearKva', 'contractKva']);

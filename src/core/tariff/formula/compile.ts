@@ -30,6 +30,16 @@ export class FormulaFault extends Error {
   }
 }
 
+/** The result of some work; nothing where a formula in it has none. */
+export function unlessFault<T>(work: () => T): T | undefined {
+  try {
+    return work();
+  } catch (error) {
+    if (error instanceof FormulaFault) return undefined;
+    throw error;
+  }
+}
+
 /**
  * Turns a formula into a closure; no code is generated and nothing is looked up by name afterwards.
  *

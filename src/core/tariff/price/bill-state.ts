@@ -5,7 +5,7 @@ import type { PeriodPlan, Piece } from './period-plan';
 /** Why a value is not known. */
 export interface Missing {
   name: string;
-  kind: 'printed' | 'given' | 'month' | 'contract';
+  kind: 'printed' | 'given' | 'month' | 'contract' | 'unclear';
   detail: string;
 }
 

@@ -1,5 +1,5 @@
 import { PriceError } from '../errors';
-import { place } from '../formula/compile';
+import { place, unlessFault } from '../formula/compile';
 import { isSame } from '../formula/functions';
 import type { GivenDefinition, PastDefinition, QuantityEntry, RateEntry } from '../model';
 import { decimalsOf, roundToStep, wordNumber } from '../../units';
@@ -74,6 +74,12 @@ export function firstMissing(state: PieceState, slots: readonly number[]): Missi
   return undefined;
 }
 
+/** Why one of some values is not known for another reason than that the bill does not print it, if so. */
+function firstUntold(state: PieceState, slots: readonly number[]): Missing | undefined {
+  const slot = slots.find((one) => state.known[one] !== 1 && (state.missing[one]?.kind ?? 'printed') !== 'printed');
+  return slot === undefined ? undefined : state.missing[slot];
+}
+
 function settle(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, needs: readonly number[]): void {
   const { definition, slot } = quantity;
   run.at = undefined;
@@ -141,23 +147,31 @@ function settleWorkedOut(
   { printed, needs }: Known,
 ): void {
   const { slot } = quantity;
-  const cause = firstMissing(state, needs);
+  const cause = firstUntold(state, needs) ?? firstMissing(state, needs);
   if (!cause) {
-    setRounded(run, bill, state, quantity, workOut(run, state, quantity));
+    const work = (): number => workOut(run, state, quantity);
+    const value = printed === undefined ? work() : unlessFault(work);
+    if (value !== undefined) setRounded(run, bill, state, quantity, value);
+    else if (printed !== undefined) keepPrinted(run, bill, state, quantity, printed);
     return;
   }
-  if (!state.samples) {
-    state.missing[slot] = cause;
+  // Only an active quantity nobody prints stands for "some value"; what else is not known leaves the result open.
+  if (!state.samples || cause.kind !== 'printed') {
+    if (printed !== undefined) keepPrinted(run, bill, state, quantity, printed);
+    else state.missing[slot] = cause;
     return;
   }
-  const results = state.samples.map((values) =>
-    roundedValue(run, bill, quantity.name, workOut(run, state, quantity, values), quantity.rounding),
+  const { samples } = state;
+  const results = unlessFault(() =>
+    samples.map((values) =>
+      roundedValue(run, bill, quantity.name, workOut(run, state, quantity, values), quantity.rounding),
+    ),
   );
-  if (results.every((result) => isSame(result, results[0]!))) setValue(state, slot, results[0]!);
+  if (results?.every((result) => isSame(result, results[0]!))) setValue(state, slot, results[0]!);
   else if (printed !== undefined) keepPrinted(run, bill, state, quantity, printed);
   else {
-    state.missing[slot] = cause;
-    for (const [i, values] of state.samples.entries()) values[slot] = results[i]!;
+    state.missing[slot] = results ? cause : { ...cause, kind: 'unclear' };
+    for (const [i, values] of samples.entries()) values[slot] = results?.[i] ?? 0;
   }
 }
 
@@ -241,7 +255,7 @@ function comparePrinted(
   const { definition, rounding, unit, name, slot } = quantity;
   if (definition.kind !== 'formula' && definition.kind !== 'pick') return;
   if (firstMissing(state, needs)) return;
-  const exact = workOut(run, state, quantity);
+  const exact = unlessFault(() => workOut(run, state, quantity)) ?? NaN;
   const asPrinted = rounding ?? { step: Number(`1e-${decimalsOf(printed)}`), mode: 'nearest' as const };
   if (!Number.isFinite(exact) || isSame(roundToStep(exact, asPrinted), state.values[slot]!)) return;
   const words = wordNumber(roundToStep(exact, asPrinted), asPrinted.step);
@@ -275,6 +289,11 @@ export function missingError(
     case 'given':
       return new PriceError(
         `${when}: nothing gives "${cause.name}"${withUnit}, which line "${line}" needs; it is said by the bill, not by the meter. Give it for this period.`,
+        about,
+      );
+    case 'unclear':
+      return new PriceError(
+        `${when}: at unity power factor nothing tells "${cause.name}"${withUnit}, which line "${line}" needs. Give it for this period.`,
         about,
       );
     case 'printed':

@@ -1,5 +1,5 @@
 import { addMonths, dayNumber, isoDate, type BillingPeriod } from '../../load';
-import { FormulaFault, place } from '../formula/compile';
+import { place, unlessFault } from '../formula/compile';
 import type { PastDefinition, Schedule, ScheduleText, SeasonTable } from '../model';
 import { roundToStep } from '../../units';
 import { isSame } from '../formula/functions';
@@ -69,7 +69,7 @@ export function completeTold(record: HistoryRecord, text: ScheduleText, present:
     const { definition, slot, rounding } = quantity;
     if (known[slot] === 1 || (definition.kind !== 'formula' && definition.kind !== 'pick')) continue;
     if (!expressionsOfQuantity(quantity).every(({ slots }) => slots.every((part) => known[part] === 1))) continue;
-    const value = attempt(() =>
+    const value = unlessFault(() =>
       definition.kind === 'formula' ? definition.expression.evaluate(values) : pickValue(definition, values),
     );
     if (value === undefined || !Number.isFinite(value)) continue;
@@ -77,15 +77,6 @@ export function completeTold(record: HistoryRecord, text: ScheduleText, present:
     known[slot] = 1;
   }
   return { ...record, values, known };
-}
-
-function attempt(work: () => number): number | undefined {
-  try {
-    return work();
-  } catch (error) {
-    if (error instanceof FormulaFault) return undefined;
-    throw error;
-  }
 }
 
 /** Value of a pick: the step with the greatest beginning that is reached (to 1e-12). */

@@ -79,7 +79,7 @@ export function withPlace<T>(run: Run, bill: BillState, work: () => T): T {
     if (!(error instanceof FormulaFault)) throw error;
     const path = run.at?.path ?? '';
     throw new PriceError(
-      `${wordPeriod(bill.plan.period)}: ${path}: the formula ${error.message} (characters ${error.start + 1} to ${error.end}).`,
+      `${wordPeriod(bill.plan.period)}${run.isUnity ? ', at unity power factor' : ''}: ${path}: the formula ${error.message} (characters ${error.start + 1} to ${error.end}).`,
       {
         period: bill.plan.period,
         name: path.split('.')[1] ?? path,

@@ -180,7 +180,6 @@ function readPerName(map: MapTree, context: TextContext): RawExpression | undefi
   }
   const { name } = raw.formula;
   const info = scope.made.get(scope.families.get(name)?.members[0] ?? name);
-  if (info?.kind === 'broken') return undefined;
   if (info?.kind === 'quantity' && !info.hasUnit) {
     problems.add(tree, `"${name}" is a formula without a unit.`, `Give it one: ${name}: { formula: ..., unit: kWh }.`);
     return undefined;

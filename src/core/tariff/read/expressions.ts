@@ -5,7 +5,7 @@ import { functionArity } from '../formula/functions';
 import { parseFormula } from '../formula/parse';
 import { FormulaMistake } from '../formula/tokens';
 import type { Expression } from '../model';
-import { didYouMean, nearestName } from '../nearest';
+import { nearestName } from '../nearest';
 import type { Problems } from './problems';
 import type { Scope } from './scope';
 import type { ScalarTree, Tree } from './tree';
@@ -30,7 +30,7 @@ const facts: ReadonlySet<string> = new Set(['days', 'hours']);
 
 /** Reads formulas of one text: parses, checks names, binds families, compiles. */
 export class ExpressionReader {
-  /** Names looked back at, to be checked once everything is read. */
+  /** Names looked back at before they were made, to be checked once everything is read. */
   readonly lookedBack: { name: string; tree: ScalarTree; offset: number }[] = [];
 
   constructor(
@@ -77,7 +77,7 @@ export class ExpressionReader {
           tree,
           node,
           'total( ) takes the name of a quantity that has one value per window.',
-          'Make it with inEach.',
+          'Make it with inEach; of lines, name the members: energyPeak + energyOffPeak.',
         );
       } else if (node.fn === 'daysSince' && !(first?.kind === 'name' && this.dates.has(first.name))) {
         isFine = this.complain(
@@ -98,9 +98,10 @@ export class ExpressionReader {
       const { name } = node;
       const isMade = this.scope.made.has(name) || this.scope.families.has(name);
       if (facts.has(name) || (rules.channels && isChannelName(name))) return;
-      if (isMade || (rules.anyTime && this.scope.later.has(name))) {
+      // A look back may name what is made below, a member of a family too: checked once everything is read.
+      if (isMade || rules.anyTime) {
         this.scope.used.add(name);
-        if (rules.anyTime) this.lookedBack.push({ name, tree, offset: tree.textOffset + node.start });
+        if (!isMade) this.lookedBack.push({ name, tree, offset: tree.textOffset + node.start });
         return;
       }
       isFine = this.complain(tree, node, ...this.unknownName(name));
@@ -221,12 +222,12 @@ export class ExpressionReader {
   /** Notes names a look back uses that nothing in the text bears, or that stand for several values. */
   checkLookedBack(): void {
     for (const { name, tree, offset } of this.lookedBack) {
+      const family = this.scope.families.get(name);
       if (this.scope.made.has(name)) continue;
-      const message = this.scope.families.has(name)
-        ? `"${name}" stands for one value per window.`
-        : `nothing is called "${name}".`;
-      if (this.scope.families.has(name)) continue;
-      this.problems.add({ offset, path: tree.path }, message, didYouMean(name, this.scope.knownNames()));
+      const [message, remedy] = family
+        ? [`"${name}" is made below, one value per window.`, `Name the members: ${family.members.join(' + ')}.`]
+        : this.unknownName(name);
+      this.problems.add({ offset, path: tree.path }, message, remedy);
     }
   }
 }

@@ -54,7 +54,7 @@ function mergeSection(section: MapEntry, base: Tree | undefined, problems: Probl
 
 function mergeEntries(section: string, base: MapTree, changes: MapTree, problems: Problems): MapTree {
   let merged = base;
-  for (const change of changes.entries) {
+  for (const [i, change] of changes.entries.entries()) {
     const existing = entryOf(merged, change.key);
     if (isWord(change.value, 'removed')) {
       if (existing) merged = { ...merged, entries: merged.entries.filter((entry) => entry !== existing) };
@@ -81,28 +81,48 @@ function mergeEntries(section: string, base: MapTree, changes: MapTree, problems
         entries: merged.entries.map((entry) => (entry === existing ? { ...change, value } : entry)),
       };
     } else {
-      merged = { ...merged, entries: insert(section, merged.entries, change, problems) };
+      const following = changes.entries.slice(i + 1).map((entry) => entry.key);
+      merged = { ...merged, entries: insert(section, merged.entries, { added: change, following }, problems) };
     }
   }
   return merged;
 }
 
-function insert(section: string, entries: MapEntry[], added: MapEntry, problems: Problems): MapEntry[] {
-  if (!orderedSections.has(section) || added.value.kind !== 'map') return [...entries, added];
-  const before = valueOf(added.value, 'before');
+/**
+ * Puts a new entry in its place: where `before` says; in sections whose order decides no bill, which need not say it, above the next
+ * entry of the version that is there already, so that this one may use it.
+ */
+function insert(
+  section: string,
+  entries: MapEntry[],
+  { added, following }: { added: MapEntry; following: string[] },
+  problems: Problems,
+): MapEntry[] {
+  const before = added.value.kind === 'map' ? valueOf(added.value, 'before') : undefined;
   const names = entries.map((entry) => entry.key);
+  if (before === undefined && !orderedSections.has(section)) {
+    const next = entries.findIndex((entry) => following.includes(entry.key));
+    return next < 0 ? [...entries, added] : [...entries.slice(0, next), added, ...entries.slice(next)];
+  }
   if (before?.kind !== 'scalar') {
     const remedy = didYouMean(added.key, names, 'Add before: and the name it stands before, or before: end.');
     problems.add(added, 'is new in this version but does not say where it stands.', remedy);
     return [...entries, added];
   }
-  if (before.text === 'end') return [...entries, added];
+  const entry = orderedSections.has(section) ? added : withoutPlace(added);
+  if (before.text === 'end') return [...entries, entry];
   const index = names.indexOf(before.text);
   if (index < 0) {
     problems.add(before, `nothing in ${section} is called "${before.text}".`, didYouMean(before.text, names));
     return [...entries, added];
   }
-  return [...entries.slice(0, index), added, ...entries.slice(index)];
+  return [...entries.slice(0, index), entry, ...entries.slice(index)];
+}
+
+/** Contract inputs and windows have no field `before` of their own. */
+function withoutPlace(entry: MapEntry): MapEntry {
+  if (entry.value.kind !== 'map') return entry;
+  return { ...entry, value: { ...entry.value, entries: entry.value.entries.filter(({ key }) => key !== 'before') } };
 }
 
 function mergeEntry(section: string, base: Tree, change: Tree): Tree {

@@ -1,3 +1,4 @@
+import { extremeCells } from '../price/cell-loops';
 import type { MeasurePlan } from '../price/reduction';
 import type { QuantityEntry } from '../model';
 import { expressionsOf, expressionsOfQuantity } from '../price/text-plan';
@@ -31,6 +32,13 @@ function isMeasuredFromEstimates({ source, bill, state }: Speech, { definition, 
     return runFirst.some(
       (first, run) => plan.classes[runClass[run]!] === 1 && holdsEstimate(quality, first, runEnd[run]!),
     );
+  }
+  if (plan.kind === 'cells' && definition.operation !== 'sum' && definition.count > 1) {
+    const { operation, count, isDistinctDays, expression, where } = definition;
+    const formula = { evaluate: expression.evaluate, where: where?.evaluate };
+    const how = { sign: operation === 'highest' ? 1 : -1, count, isDistinctDays } as const;
+    const best = extremeCells(plan.cells, source.load, formula, state.values, how);
+    return best.some(({ cell }) => isCellEstimated(plan, quality, cell));
   }
   if (definition.operation !== 'sum') return isCellEstimated(plan, quality, state.atCell[slot]!);
   return plan.kind === 'cells' && plan.cells.starts.some((_, cell) => isCellEstimated(plan, quality, cell));

@@ -1,4 +1,5 @@
 import { namesIn } from '../formula/ast';
+import { unlessFault } from '../formula/compile';
 import { printFormula } from '../formula/print';
 import type { ChargeDefinition, Expression, NumberPlace, Tier } from '../model';
 import { wordNumber } from '../../units';
@@ -33,7 +34,9 @@ export function rateWords(speech: Speech, place: NumberPlace): string {
   if (!expression) return '';
   const { formula } = expression;
   if (namesIn(formula).length === 0) return printFormula(formula);
-  const value = wordNumber(placeValue(speech.run, speech.state, place));
+  const rate = unlessFault(() => placeValue(speech.run, speech.state, place));
+  if (rate === undefined) return printFormula(formula);
+  const value = wordNumber(rate);
   return formula.kind === 'name' ? value : `${value} (${wordWorking(speech, expression)})`;
 }
 

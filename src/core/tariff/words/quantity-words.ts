@@ -106,7 +106,7 @@ function explainPast(speech: Speech, { name }: QuantityEntry, definition: PastDe
   const of = printFormula(expression.formula);
   if (take.kind === 'streak') return `${name} = ${value}, the periods in a row, up to this one, where ${of} holds.`;
   const inSeason = season ? `, those ${season.isWholly ? 'wholly' : 'mostly'} in ${season.name}` : '';
-  const knownWords = known < asked ? ` (${known} of ${asked} earlier ones known)` : '';
+  const knownWords = known < asked ? ` (${known} ${over.includesThis ? 'earlier ' : ''}known)` : '';
   const span = over.kind === 'last' && !over.includesThis ? `the ${over.words}` : over.words;
   const when = setBy ? `, ${wordPeriod(setBy)}` : '';
   const taken = take.kind === 'count' ? `the number of periods where ${of} is not 0 in` : `the ${take.words} ${of} of`;

@@ -1,9 +1,10 @@
+import { unlessFault } from '../formula/compile';
 import type { QuantityEntry } from '../model';
 import type { BillState } from '../price/bill-state';
-import { lastCharge, placeValue } from '../price/evaluate-charges';
+import { isCharged, lastCharge, placeValue } from '../price/evaluate-charges';
 import type { IntervalSource } from '../price/interval-source';
 import { expressionsOf, expressionsOfQuantity } from '../price/text-plan';
-import { evaluateIn, type Run } from '../price/run';
+import { evaluateIn, withPlace, type Run } from '../price/run';
 import type { PricedBill, PricedLine, PricedQuantity } from '../types';
 import { explainLine } from './charge-words';
 import { writeInputs } from './input-words';
@@ -13,7 +14,7 @@ import type { Speech } from './speak';
 
 /** Writes the bills of a run, beside the run at unity power factor. */
 export function writeBills(run: Run, unity: Run, source: IntervalSource | undefined): PricedBill[] {
-  return run.bills.map((bill, index) => writeBill(run, bill, unity.bills[index]!, source));
+  return run.bills.map((bill, index) => withPlace(run, bill, () => writeBill(run, bill, unity.bills[index]!, source)));
 }
 
 function writeBill(run: Run, bill: BillState, unity: BillState, source: IntervalSource | undefined): PricedBill {
@@ -105,11 +106,13 @@ function writeLine(speech: Speech, line: number, reactivePart: number, estimated
   const expressions = [...expressionsOf(definition), ...(charge.when ? [charge.when] : [])];
   const slots = expressions.flatMap((expression) => expression.slots);
   const lines = plan.ofLines.map((of) => run.schedule.lineOrder[of]!);
+  const isOn = isCharged(run, bill, state, plan);
   const rate =
-    'price' in definition && definition.price.length === 1 && bill.pieces.length === 1
-      ? placeValue(run, state, definition.price[0]!.rate)
+    isOn && 'price' in definition && definition.price.length === 1 && bill.pieces.length === 1
+      ? unlessFault(() => placeValue(run, state, definition.price[0]!.rate))
       : undefined;
-  const per = 'per' in definition && definition.per ? evaluateIn(run, state, definition.per) : undefined;
+  const isKnown = 'per' in definition && definition.per?.slots.every((slot) => state.known[slot] === 1);
+  const per = isKnown && definition.per ? evaluateIn(run, state, definition.per) : undefined;
   return {
     id: charge.name,
     label: charge.label ?? charge.name,

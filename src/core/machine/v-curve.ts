@@ -1,7 +1,7 @@
 import { capabilityOf } from './capability';
 import type { Capability } from './capability';
 import { PullOutError, requireRange } from './errors';
-import { compileMotor, ratedKva } from './motor';
+import { compileMotor } from './motor';
 import type { SynchronousMotor } from './motor';
 import { checkLoad, describeState, operatingPoint } from './operating-point';
 import type { Limit } from './operating-point';
@@ -66,23 +66,16 @@ export interface LeastLoss {
  *
  * It lies below unity field: field loss still rises where armature loss is flat. Searched between 0.9/Xd absorbed and
  * 0.2 pu delivered.
+ *
+ * @param at.shaftKw  Shaft load. [kW], >= 0
+ * @param at.voltagePu  Terminal voltage, 1 when absent. [pu], (0, 2]
+ * @throws {RangeError} naming the argument out of range
  */
 export function leastLossField(motor: SynchronousMotor, at: { shaftKw: number; voltagePu?: number }): LeastLoss {
-  const kva = ratedKva(motor);
-  return leastLossWithin(motor, { ...at, fromKvar: -0.2 * kva, toKvar: (0.9 / motor.xdPu) * kva });
-}
-
-/** The same within a range of reactive power absorbed. [kvar], fromKvar <= toKvar */
-export function leastLossWithin(
-  motor: SynchronousMotor,
-  at: { shaftKw: number; voltagePu?: number; fromKvar: number; toKvar: number },
-): LeastLoss {
   const model = compileMotor(motor);
   const v = checkLoad(at);
-  requireRange(at.fromKvar <= at.toKvar, 'fromKvar', `at most toKvar (${at.toKvar})`, at.fromKvar);
   const pointAt = (q: number) => describeState(model, solveAtKvar(model, at.shaftKw / model.baseKva, q, v), at.shaftKw);
-  const q = goldenMinimum((own) => pointAt(own).inputKw, at.fromKvar / model.baseKva, at.toKvar / model.baseKva);
-  const { fieldCurrentA, kvar, inputKw } = pointAt(q);
+  const { fieldCurrentA, kvar, inputKw } = pointAt(goldenMinimum((q) => pointAt(q).inputKw, -0.2, 0.9 / motor.xdPu));
   return { fieldCurrentA, kvar, inputKw };
 }
 

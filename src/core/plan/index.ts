@@ -11,7 +11,6 @@ export { searchFields } from './search-fields';
 export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './search-fields';
 export type { CapacitorStep, PlanAction, PlanMotor, Plant, Upstream } from './types';
 export {
-  USUAL_HARMONICS,
   combineLoads,
   correctiveKvar,
   kvarPerKw,

@@ -1,5 +1,5 @@
 import { existsSync } from 'node:fs';
-import { chromium, type Browser, type BrowserContextOptions, type Page } from 'playwright-core';
+import { chromium, type Browser, type BrowserContextOptions, type Locator, type Page } from 'playwright-core';
 import { demoAccounts } from '@/server/demo-accounts';
 
 const places = ['/usr/bin/chromium', '/usr/bin/chromium-browser', '/usr/bin/google-chrome'];
@@ -50,4 +50,9 @@ export async function signIn(page: Page, email: string, password: string = demoA
   await page.getByLabel('Password', { exact: true }).fill(password);
   await page.getByRole('button', { name: 'Sign in' }).click();
   await page.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
+}
+
+/** What a person reads in a part of the page, with ordinary blanks. */
+export async function readText(part: Locator): Promise<string> {
+  return (await part.innerText()).replaceAll('\u00a0', ' ');
 }

@@ -6,7 +6,7 @@ import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
 import { kestrelBillsFile, kestrelMeterFile } from '../../db/seeders/demo/kestrel-year';
 import { earlierAdjustedKw, kestrel, kestrelMotors } from '../../db/seeders/demo/scenario';
 import type { MotorInput } from '../../src/schemas/motor';
-import { openWindow, signIn, startBrowser, type PersonPage } from './browser';
+import { openWindow, readText, signIn, startBrowser, type PersonPage } from './browser';
 
 const origin = inject('origin');
 const code = 'FP-01';
@@ -18,10 +18,8 @@ let tom: PersonPage;
 let ilse: PersonPage;
 let rhea: PersonPage;
 
-/** The finding at the head of the page, with ordinary blanks. */
-async function heading(page: Page): Promise<string> {
-  return (await page.getByRole('heading', { level: 1 }).innerText()).replaceAll('\u00a0', ' ');
-}
+/** The finding at the head of the page. */
+const heading = (page: Page) => readText(page.getByRole('heading', { level: 1 }));
 
 async function pick(page: Page, label: string, words: RegExp): Promise<void> {
   const select = page.getByLabel(label, { exact: true });

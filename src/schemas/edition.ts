@@ -1,11 +1,21 @@
 import { z } from 'zod';
 import type { AssumedValue } from './motor';
-import type { AppraisalView, CashFlowMonth, ChargeGroup, PlanEconomics, PlanField, PlanView } from './plan';
+import type {
+  AppraisalView,
+  CapacitorBank,
+  CashFlowMonth,
+  ChargeGroup,
+  PlanEconomics,
+  PlanField,
+  PlanView,
+} from './plan';
 
 /** What an edition says of a plan, or of the plant as it runs. Major units of the edition's currency. */
 export interface EditionPlan {
   name: string;
   fields: PlanField[];
+  /** A bank the plan adds; absent in editions frozen without this field. */
+  capacitors?: CapacitorBank | null;
   yearTotal: number;
   saving: number;
   reactiveCost: number;

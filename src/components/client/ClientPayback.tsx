@@ -39,6 +39,10 @@ function projectOf({ saving, yearlyUpkeep, economics }: ClientPaybackProps, figu
   };
 }
 
+/** Years until the work is paid for; never where upkeep eats what is saved, however little the work costs. */
+const comesBack = ({ saving, yearlyUpkeep }: ClientPaybackProps, years: number | null, runs: number) =>
+  saving * runs - yearlyUpkeep > 0 ? years : null;
+
 /** Round end of a slider for the cost of work. */
 const roundUp = (amount: number) => Math.ceil(amount / 1000) * 1000;
 
@@ -57,7 +61,9 @@ export function ClientPayback(props: ClientPaybackProps) {
     const project = projectOf(props, figures);
     return { appraisal: appraise(project), months: cashFlow(project).months };
   }, [props, figures]);
-  const shownYears = Math.min(economics.horizonYears, Math.max(3, Math.ceil((props.paybackYears ?? 10) * 3)));
+  const paybackYears = comesBack(props, props.paybackYears, 1);
+  const yourYears = comesBack(props, yours.appraisal.simplePaybackYears, figures.runsPercent / 100);
+  const shownYears = Math.min(economics.horizonYears, Math.max(3, Math.ceil((paybackYears ?? 10) * 3)));
   const shown = props.cashFlow.filter((point) => point.month <= shownYears * 12);
   const points = shown.map(({ month, cumulative, low, high }) => ({
     year: month / 12,
@@ -69,9 +75,9 @@ export function ClientPayback(props: ClientPaybackProps) {
   const last = shown.at(-1)?.cumulative ?? 0;
   const whole = { whole: true } as const;
   const finding =
-    props.paybackYears === null
+    paybackYears === null
       ? `After ${formatCount(shownYears, 'year')} the saving has not paid for the work.`
-      : paidBackSentence({ payback: formatPayback(props.paybackYears), years: shownYears, ahead: last, currency });
+      : paidBackSentence({ payback: formatPayback(paybackYears), years: shownYears, ahead: last, currency });
   const banded = shown.some((point) => point.low !== undefined);
   const set = (key: keyof Figures) => (value: number) => setFigures({ ...figures, [key]: value });
   const field = { editionName: `edition ${editionNumber}` };
@@ -86,7 +92,7 @@ export function ClientPayback(props: ClientPaybackProps) {
           currency={currency}
           capitalCost={props.capitalCost}
           points={points}
-          paybackYears={props.paybackYears}
+          paybackYears={paybackYears}
           paybackRange={props.paybackRange}
           editionName={field.editionName}
         />
@@ -143,8 +149,8 @@ export function ClientPayback(props: ClientPaybackProps) {
         <div aria-live="polite">
           <ResultSums
             rows={[
-              { label: `Pays back, edition ${editionNumber}`, value: formatPayback(props.paybackYears) },
-              { label: 'With your figures', value: formatPayback(yours.appraisal.simplePaybackYears), kind: 'strong' },
+              { label: `Pays back, edition ${editionNumber}`, value: formatPayback(paybackYears) },
+              { label: 'With your figures', value: formatPayback(yourYears), kind: 'strong' },
               {
                 label: `Worth today, ${formatNumber(economics.horizonYears)} years`,
                 value: formatMajor(yours.appraisal.npv, currency, whole),

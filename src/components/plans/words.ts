@@ -48,6 +48,13 @@ function paybackPhrase(plan: PlanView): string {
   return plan.paybackWords === 'at once' ? 'costs nothing to do' : `pays back in ${plan.paybackWords}`;
 }
 
+/** What a plan does to the year's bills, in a sentence's words. */
+function savingPhrase({ saving, currency }: PlanView): string {
+  const money = (amount: number) => formatMajor(amount, currency, { whole: true });
+  if (Math.round(saving) === 0) return 'saves nothing';
+  return saving > 0 ? `saves ${money(saving)} a year` : `makes the year ${money(-saving)} dearer`;
+}
+
 /** The finding of the station: what to do, what it saves, what it costs; honest where nothing pays. */
 export function plansVerdict(year: YearView, shown: PlanView | null): { title: string; lead: string } {
   const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
@@ -59,16 +66,15 @@ export function plansVerdict(year: YearView, shown: PlanView | null): { title: s
   }
   const best = byValue(year.plans)[0] ?? shown;
   if (!worthDoing(best)) {
-    const saves = best.saving > 0 ? `saves ${money(best.saving)} a year` : `costs ${money(-best.saving)} a year more`;
     return {
       title: 'Leave the fields alone: no plan brings in more than it costs.',
-      lead: `The nearest, ${best.name}, ${saves} and ${paybackPhrase(best)}.`,
+      lead: `The nearest, ${best.name}, ${savingPhrase(best)} and ${paybackPhrase(best)}.`,
     };
   }
   const cost = shown.capitalCost > 0 ? ` for ${money(shown.capitalCost)}` : '';
   const left = year.standing.reactiveCost - shown.saving;
   return {
-    title: `${actionWords(shown)}: ${shown.name} saves ${money(shown.saving)} a year${cost} and ${paybackPhrase(shown)}.`,
+    title: `${actionWords(shown)}: ${shown.name} ${savingPhrase(shown)}${cost} and ${paybackPhrase(shown)}.`,
     lead: leadOf(year, shown, left),
   };
 }

@@ -1,5 +1,15 @@
 import type { EditionContent, EditionPlan } from '../../schemas/edition';
-import { capital, formatCount, formatMajor, formatMoney, formatNumber, formatSpelled } from '../ui/format';
+import { capacitorCaution } from '../ui/Caution';
+import {
+  capital,
+  formatCount,
+  formatList,
+  formatMajor,
+  formatMoney,
+  formatNumber,
+  formatQuantity,
+  formatSpelled,
+} from '../ui/format';
 
 /** Whether the proposed plan brings more than it costs to leave everything alone. */
 export const pays = (plan: EditionPlan) => plan.saving > 0 && plan.appraisal.npv > 0;
@@ -7,37 +17,75 @@ export const pays = (plan: EditionPlan) => plan.saving > 0 && plan.appraisal.npv
 /** Motors whose field the plan changes. */
 export const changedFields = (plan: EditionPlan) => plan.fields.filter((field) => field.fieldA !== field.todayA);
 
+const whole = (amount: number, currency: string) => formatMajor(amount, currency, { whole: true });
+
+const bankWords = ({ capacitors }: EditionPlan) =>
+  capacitors ? `${formatQuantity(capacitors.kvar, 'kvar')} of capacitors` : null;
+
+/** The caution a bank brings with it; empty without one. */
+export const bankCaution = ({ capacitors }: EditionPlan) => (capacitors ? capacitorCaution : '');
+
+/** Why a plan is not proposed, in the figures that say so. */
+function whyNot(plan: EditionPlan, currency: string): string {
+  if (Math.round(plan.saving) === 0) return `${plan.name} saves nothing on the bills.`;
+  if (plan.saving < 0) return `${plan.name} would make the bills ${whole(-plan.saving, currency)} a year dearer.`;
+  const { horizonYears, discountPercent } = plan.economics;
+  return `the ${whole(plan.saving, currency)} a year that ${plan.name} saves do not pay for its work and upkeep in ${formatCount(horizonYears, 'year')} at ${formatNumber(discountPercent, { upTo: 1 })} % interest.`;
+}
+
 /** The report's answer in one sentence. */
 export function answer({ plan, currency }: EditionContent): string {
+  if (!pays(plan)) return `Leave the fields as they are: ${whyNot(plan, currency)}`;
   const changed = changedFields(plan).length;
-  if (!pays(plan)) {
-    return 'Leave the fields as they are: no setting within the limits pays for its own losses and work.';
-  }
-  const motors =
-    changed === 1 ? 'One motor you already own' : `${capital(formatSpelled(changed))} motors you already own`;
+  const motors = `${changed === 1 ? 'one motor' : `${formatSpelled(changed)} motors`} you already own`;
+  const means = formatList([changed > 0 ? motors : null, bankWords(plan)].filter((one) => one !== null));
   const paid =
-    plan.appraisal.simplePaybackYears === 0
-      ? 'nothing has to be bought'
-      : `the work pays for itself in ${plan.paybackWords}`;
-  return `${motors} can cut your power bills by ${formatMajor(plan.saving, currency, { whole: true })} a year, and ${paid}.`;
+    plan.paybackWords === 'at once' ? 'nothing has to be bought' : `the work pays for itself in ${plan.paybackWords}`;
+  return `${capital(means)} can cut your power bills by ${whole(plan.saving, currency)} a year, and ${paid}.`;
 }
 
 /** What poor power factor costs today, for people who do not work with it. */
 export function costNow({ standing, currency }: EditionContent): string {
-  return `Your bills carry ${formatMajor(standing.reactiveCost, currency, { whole: true })} a year for poor power factor: current the utility must carry that does no work.`;
+  if (Math.round(standing.reactiveCost) <= 0) return 'Your bills carry nothing for poor power factor.';
+  return `Your bills carry ${whole(standing.reactiveCost, currency)} a year for poor power factor: current the utility must carry that does no work.`;
 }
 
-/** What is to be done, motor by motor. */
-export function toDo({ plan, motors, currency }: EditionContent): string {
-  const named = changedFields(plan).map((field) => {
+/** Motor by motor, from today's field to the plan's. */
+function settingWords({ plan, motors }: EditionContent): string[] {
+  return changedFields(plan).map((field) => {
     const drives = motors.find((motor) => motor.motorId === field.motorId)?.drives;
     const who = drives ? `${field.name} (${drives.toLowerCase()})` : field.name;
     return `${who} from ${formatNumber(field.todayA, { upTo: 1 })} to ${formatNumber(field.fieldA, { upTo: 1 })} A`;
   });
-  if (named.length === 0) return 'Nothing is to be changed at the motors.';
-  const work =
-    plan.capitalCost > 0 ? ` The work costs ${formatMajor(plan.capitalCost, currency, { whole: true })} once.` : '';
-  return `Raise the field of ${named.join(' and of ')}. Motors already in place do it; no capacitors are bought.${work}`;
+}
+
+/** "Raise", "Lower", or "Set" where some rise and some fall. */
+function verbOf(plan: EditionPlan): string {
+  const changed = changedFields(plan);
+  if (changed.every((field) => field.fieldA > field.todayA)) return 'Raise';
+  return changed.every((field) => field.fieldA < field.todayA) ? 'Lower' : 'Set';
+}
+
+/** What is to be done, motor by motor; nothing where the plan does not pay. */
+export function toDo(content: EditionContent): string {
+  const { plan, currency } = content;
+  if (!pays(plan)) return `Change nothing at the motors, and buy nothing. ${plan.name} was priced and is not proposed.`;
+  const settings = settingWords(content);
+  const bank = bankWords(plan);
+  const sentences = [
+    settings.length > 0
+      ? `${verbOf(plan)} the field of ${settings.join(' and of ')}.`
+      : 'Nothing is to be changed at the motors.',
+    bank ? `Add ${bank}. ${bankCaution(plan)}` : 'Motors already in place do it; no capacitors are bought.',
+    ...(plan.capitalCost > 0 ? [`The work costs ${whole(plan.capitalCost, currency)} once.`] : []),
+  ];
+  return sentences.join(' ');
+}
+
+/** How a payback reads in a sentence: "paid back in 19 months", "never paid back". */
+export function paidBack(paybackWords: string): string {
+  if (paybackWords === 'never') return 'never paid back';
+  return paybackWords === 'at once' ? 'with nothing to buy' : `paid back in ${paybackWords}`;
 }
 
 /** Errors found in the bills themselves, apart from all savings. */
@@ -63,7 +111,13 @@ export function paidBackSentence(shown: { payback: string; years: number; ahead:
 /** The payback picture's finding. */
 export function paybackFinding({ plan, cashFlow, currency }: EditionContent): string {
   const last = cashFlow.at(-1);
-  if (!pays(plan) || !last) return 'The saving does not pay for the work within the horizon.';
+  if (Math.round(plan.saving) <= 0 || !last) return 'There is no saving that could pay for any work.';
+  if (!pays(plan)) {
+    const late = plan.paybackWords !== 'never' && last.cumulative > 0;
+    if (!late) return 'The saving does not pay for the work within the horizon.';
+    const interest = `${formatNumber(plan.economics.discountPercent, { upTo: 1 })} % interest`;
+    return `After ${plan.paybackWords} the saving has paid for the work, but not for ${interest} on it.`;
+  }
   const years = Math.round(last.month / 12);
   return paidBackSentence({ payback: plan.paybackWords, years, ahead: last.cumulative, currency });
 }

@@ -1,6 +1,6 @@
 import type { EditionContent } from '../../schemas/edition';
-import { formatDate, formatLongDate, formatMajor, formatNumber } from '../../components/ui/format';
-import { answer, comesBack, costNow, paybackFinding } from '../../components/report/words';
+import { formatCount, formatDate, formatLongDate, formatMajor, formatNumber } from '../../components/ui/format';
+import { answer, bankCaution, comesBack, costNow, paybackFinding, pays } from '../../components/report/words';
 
 export interface EditionLetterInput {
   content: EditionContent;
@@ -25,10 +25,16 @@ const escape = (text: string) =>
   text.replaceAll('&', '&amp;').replaceAll('<', '&lt;').replaceAll('>', '&gt;').replaceAll('"', '&quot;');
 
 /** Between which months eight of ten samples pay back. */
-function spread({ paybackSpread }: EditionContent['plan']): [label: string, value: string][] {
-  const { lowMonths, highMonths } = paybackSpread ?? {};
-  if (lowMonths == null || highMonths == null) return [];
+function spread(plan: EditionContent['plan']): [label: string, value: string][] {
+  const { lowMonths, highMonths } = plan.paybackSpread ?? {};
+  if (lowMonths == null || highMonths == null || highMonths === 0 || !pays(plan)) return [];
   return [['Eight of ten samples lie between', `${formatNumber(lowMonths)} and ${formatNumber(highMonths)} months`]];
+}
+
+/** What stands behind "Pays for itself". */
+function paybackFigure({ paybackWords, economics }: EditionContent['plan']): string {
+  if (paybackWords === 'never') return `not within ${formatCount(economics.horizonYears, 'year')}`;
+  return paybackWords === 'at once' ? 'at once' : `in ${paybackWords}`;
 }
 
 /** The small table that says everything the picture says. */
@@ -38,7 +44,7 @@ function figures({ plan, currency }: EditionContent): [label: string, value: str
   return [
     ['Saved on the bills, a year', whole(plan.saving)],
     ['The work, once', whole(plan.capitalCost)],
-    ['Pays for itself in', plan.paybackWords],
+    ['Pays for itself', paybackFigure(plan)],
     ...spread(plan),
     [
       `Worth today, ${horizonYears} years at ${formatNumber(discountPercent, { upTo: 1 })} %`,
@@ -47,8 +53,10 @@ function figures({ plan, currency }: EditionContent): [label: string, value: str
   ];
 }
 
-const caution =
+const settingCaution =
   'All settings are calculated values. Qualified persons review, set and commission them under your electrical safety rules and local codes; the manufacturer’s limits prevail. Use only released setting cards.';
+
+const cautionOf = ({ plan }: EditionContent) => [settingCaution, bankCaution(plan)].filter(Boolean).join(' ');
 
 function paragraphs(input: EditionLetterInput): string[] {
   const { content, greeting } = input;
@@ -74,7 +82,7 @@ function textOf(input: EditionLetterInput): string {
     table.join('\n'),
     comesBack(content),
     `Read edition ${content.number}: ${link}\n${linkWords(input)}`,
-    `Before settings are changed: ${caution}`,
+    `Before settings are changed: ${cautionOf(content)}`,
     `With kind regards,\n${content.by}\n${content.practice.name}${content.practice.phone ? `, ${content.practice.phone}` : ''}`,
   ].join('\n\n');
 }
@@ -129,7 +137,7 @@ function htmlOf(input: EditionLetterInput): string {
     paragraph(escape(comesBack(content))),
     `<p style="margin:0 0 10px"><a href="${href}" class="act" style="display:inline-block;background:${copper};color:#FFFDF8;font-size:16px;font-weight:700;text-decoration:none;padding:12px 24px">Read edition ${content.number}</a></p>`,
     `<p style="margin:0 0 20px;font-size:13px;line-height:20px;color:${quiet}" class="quiet">Or open <a href="${href}" style="color:${ink};word-break:break-all" class="ink">${href}</a>. ${escape(linkWords(input))}</p>`,
-    `<div style="border:1px solid #8A6100;border-left:6px solid #8A6100;background:#F8EED2;padding:12px 14px;margin:0 0 20px" class="warn"><b style="color:#8A6100;font-size:14px">Before settings are changed</b><p style="margin:4px 0 0;font-size:14px;line-height:20px;color:${ink}" class="ink">${escape(caution)}</p></div>`,
+    `<div style="border:1px solid #8A6100;border-left:6px solid #8A6100;background:#F8EED2;padding:12px 14px;margin:0 0 20px" class="warn"><b style="color:#8A6100;font-size:14px">Before settings are changed</b><p style="margin:4px 0 0;font-size:14px;line-height:20px;color:${ink}" class="ink">${escape(cautionOf(content))}</p></div>`,
     paragraph(
       `With kind regards,<br><b>${escape(by)}</b><br>${escape([practice.name, practice.phone].filter(Boolean).join(', '))}`,
     ),

@@ -7,7 +7,7 @@ import type {
   EditionSource,
 } from '../../schemas/edition';
 import type { MotorView } from '../../schemas/motor';
-import type { BillView, PlanView, YearView } from '../../schemas/plan';
+import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
 import type { PricedYear } from '../../schemas/pricing';
 import { fromMinorUnits } from '../../core/units';
 import { Intake } from '../models/Intake';
@@ -26,11 +26,12 @@ export interface EditionBasis {
 }
 
 function editionPlan(plan: PlanView): EditionPlan {
-  const { name, fields, yearTotal, saving, reactiveCost, groupTotals, capitalCost, yearlyUpkeep } = plan;
+  const { name, fields, capacitors, yearTotal, saving, reactiveCost, groupTotals, capitalCost, yearlyUpkeep } = plan;
   const { economics, appraisal, paybackWords, paybackSpread, nearestLimit, extraLossKwh, hoursLeading, worstPf } = plan;
   return {
     name,
     fields,
+    capacitors,
     yearTotal,
     saving,
     reactiveCost,
@@ -48,7 +49,12 @@ function editionPlan(plan: PlanView): EditionPlan {
   };
 }
 
-function editionBill(before: BillView, after: BillView, billedMinor: number | null, currency: string): EditionBill {
+function editionBill(
+  before: PricedBillView,
+  after: PricedBillView,
+  billedMinor: number | null,
+  currency: string,
+): EditionBill {
   const afterLines = new Map(after.lines.map((line) => [line.id, line]));
   return {
     from: before.from,
@@ -139,7 +145,7 @@ export async function editionContent(actor: Actor, basis: EditionBasis, number: 
     plan: editionPlan(plan),
     others: year.plans.filter((other) => other.id !== plan.id).map(editionPlan),
     bills: year.standing.bills.map((before, index) =>
-      editionBill(before, plan.bills[index] as BillView, priced.bills[index]?.billedMinor ?? null, year.currency),
+      editionBill(before, plan.bills[index] as PricedBillView, priced.bills[index]?.billedMinor ?? null, year.currency),
     ),
     findings: editionFindings(priced),
     motors: editionMotors(plan, motors),

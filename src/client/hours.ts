@@ -9,12 +9,16 @@ export interface HoursAnswer {
   budgetHours: number | null;
 }
 
+/** Hours of an engagement, as far as the reader may see them. */
 export const listHours = (code: string) => call<HoursAnswer>('GET', `/api/engagements/${code}/hours`);
 
+/** Logs an entry. */
 export const logHours = (code: string, input: HourForm) =>
   call<HourView>('POST', `/api/engagements/${code}/hours`, input);
 
+/** Changes an entry against the version seen. */
 export const changeHours = (id: number, version: number, input: HourForm) =>
   call<HourView>('PUT', `/api/hours/${id}`, { ...input, version });
 
+/** Removes an entry against the version seen. */
 export const removeHours = (id: number, version: number) => call<void>('DELETE', `/api/hours/${id}`, { version });

@@ -17,7 +17,10 @@ export function bringIn(
   return sendFile(`/api/engagements/${encodeURIComponent(code)}/uploads?${query}`, file, onProgress, signal);
 }
 
+/** Address of the page of a file on its way in. */
 export const intakePage = (code: string, id: number) => `/engagements/${encodeURIComponent(code)}/intake/${id}`;
+
+/** Address of a file as it came. */
 export const originalPath = (id: number) => `/api/intakes/${id}/original`;
 
 const step =
@@ -25,8 +28,13 @@ const step =
   ({ id, version }: Seen) =>
     call<IntakeView>('POST', `/api/intakes/${id}/${name}`, { version });
 
+/** Keeps what a file holds. */
 export const keepIntake = step('keep');
+
+/** Takes back what a kept file brought in. */
 export const undoIntake = step('undo');
+
+/** Puts a file aside. */
 export const giveUpIntake = step('give-up');
 
 /** Reads the file again as corrected. */
@@ -45,8 +53,13 @@ export const fetchIntakeDays = (id: number) => call<LoadDays>('GET', `/api/intak
 
 const billsPath = (code: string) => `/api/engagements/${encodeURIComponent(code)}/bills`;
 
+/** Keeps a bill typed by hand. */
 export const addBill = (code: string, bill: BillInput) => call<BillView>('POST', billsPath(code), bill);
+
+/** Changes a kept bill against the version seen. */
 export const changeBill = (code: string, { id, version }: Seen, bill: BillInput) =>
   call<BillView>('PUT', `${billsPath(code)}/${id}`, { version, bill });
+
+/** Removes a kept bill against the version seen. */
 export const removeBill = (code: string, { id, version }: Seen) =>
   call<void>('DELETE', `${billsPath(code)}/${id}`, { version });

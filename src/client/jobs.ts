@@ -2,7 +2,10 @@ import { useEffect, useState } from 'react';
 import type { JobProgress } from '../schemas/job';
 import { ApiError, call } from './api';
 
+/** How far long work is. */
 export const readJob = (id: number) => call<JobProgress>('GET', `/api/jobs/${id}`);
+
+/** Asks long work to stop. */
 export const cancelJob = (id: number) => call<JobProgress>('POST', `/api/jobs/${id}/cancel`);
 
 export interface WatchedJob {

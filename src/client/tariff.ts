@@ -1,4 +1,4 @@
-import type { ChoiceView, ChooseInput, MatchInput } from '../schemas/tariff';
+import type { ChoiceView, ChooseInput, LineMatchInput } from '../schemas/tariff';
 import type { WhyView } from '../schemas/tariff-why';
 import { call } from './api';
 
@@ -8,7 +8,8 @@ const root = (code: string) => `/api/engagements/${encodeURIComponent(code)}/tar
 export const chooseSchedule = (code: string, input: ChooseInput) => call<ChoiceView>('PUT', root(code), input);
 
 /** Remembers which line of the schedule a printed label means. */
-export const matchLine = (code: string, input: MatchInput) => call<ChoiceView>('PUT', `${root(code)}/matches`, input);
+export const matchLine = (code: string, input: LineMatchInput) =>
+  call<ChoiceView>('PUT', `${root(code)}/matches`, input);
 
 /** What stands behind a figure of the sheet. */
 export const askWhy = (code: string, billId: number, figure: string) =>

@@ -39,7 +39,7 @@ export function parseMinutes(typed: string): number | null {
 function minutesOf(text: string): number | null {
   const span = /^(\d{1,2}):?(\d{2})\s*(?:-|\u2013|to)\s*(\d{1,2}):?(\d{2})$/.exec(text);
   if (span) {
-    const [, fromHour, fromMinute, toHour, toMinute] = span as unknown as [string, string, string, string, string];
+    const [, fromHour = '', fromMinute = '', toHour = '', toMinute = ''] = span;
     const from = clockMinutes(fromHour, fromMinute);
     const to = clockMinutes(toHour, toMinute);
     if (from === null || to === null) return null;

@@ -4,7 +4,7 @@ import type { AssumedValue } from './motor';
 export type ChargeGroup = 'energy' | 'demand' | 'reactive' | 'fixed' | 'adjustment' | 'tax';
 
 /** One priced line of a bill. Amounts in major units, as priced. */
-export interface BillLineView {
+export interface PricedLineView {
   id: string;
   label: string;
   group: ChargeGroup;
@@ -17,12 +17,12 @@ export interface BillLineView {
 }
 
 /** One priced bill, [from, to). Major units. */
-export interface BillView {
+export interface PricedBillView {
   from: string;
   to: string;
   total: number;
   reactiveCost: number;
-  lines: BillLineView[];
+  lines: PricedLineView[];
   notes: string[];
 }
 
@@ -153,7 +153,7 @@ export interface PlanView {
   currency: string;
   fields: PlanField[];
   capacitors: CapacitorView | null;
-  bills: BillView[];
+  bills: PricedBillView[];
   yearTotal: number;
   /** Standing total minus this total; 0 for standing. */
   saving: number;

@@ -77,18 +77,20 @@ export const chooseInput = z.object({
 export type ChooseInput = z.infer<typeof chooseInput>;
 
 /** What correcting a match sends: which line of the schedule a printed label means; null gives it back to the machine. */
-export const matchInput = z.object({
+export const lineMatchInput = z.object({
   label: z.string().min(1),
   lineId: z.string().nullable(),
   version: z.number().int(),
 });
-export type MatchInput = z.infer<typeof matchInput>;
+export type LineMatchInput = z.infer<typeof lineMatchInput>;
 
 /** Line id that says: this printed label belongs to no line of the schedule. */
 export const noLine = '-';
 
-/** A date input of a contract, 20260115, as a form shows it; the reverse is {@link toDateNumber}. */
+/** A date input of a contract, 20260115, as a form shows it: `20260115` -> `2026-01-15`. */
 export const fromDateNumber = (value: number) => String(value).replace(/^(\d{4})(\d{2})(\d{2})$/, '$1-$2-$3');
+
+/** A day as a form gives it, as a date input of a contract: `2026-01-15` -> `20260115`. */
 export const toDateNumber = (date: string) => Number(date.replaceAll('-', ''));
 
 function fieldSchema(field: ContractField) {

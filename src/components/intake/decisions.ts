@@ -52,10 +52,10 @@ const labels: Record<Guess['key'], string> = {
 };
 
 /** The map without its columns: they are detected anew. */
-function without(map: ColumnMap, ...names: (keyof ColumnMap)[]): ColumnMap {
-  return Object.fromEntries(
-    Object.entries(map).filter(([name]) => !names.includes(name as keyof ColumnMap)),
-  ) as unknown as ColumnMap;
+function without(map: ColumnMap, ...names: Exclude<keyof ColumnMap, 'kind'>[]): ColumnMap {
+  const rest = { ...map };
+  for (const name of names) delete rest[name];
+  return rest;
 }
 
 const stamped = (map: ColumnMap, stamp: NonNullable<ColumnMap['stamp']>): ColumnMap => ({

@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import type { BillView } from '../../schemas/plan';
+import type { PricedBillView } from '../../schemas/plan';
 import { BillsBeforeAfterFigure, type BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
 import { SelectField } from '../ui/Field';
 import { LedgerTable } from '../ui/LedgerTable';
@@ -11,8 +11,8 @@ export interface BillsPairProps {
   finding: string;
   reading: string;
   fileName: string;
-  before: BillView[];
-  after: BillView[];
+  before: PricedBillView[];
+  after: PricedBillView[];
 }
 
 /** Every bill before and after a plan; one opened line by line. */

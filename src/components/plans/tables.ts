@@ -1,6 +1,6 @@
 import { addDays } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
-import type { BillView, PlanView, YearView } from '../../schemas/plan';
+import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
 import { formatAmount, formatBillName, formatDay, formatNumber } from '../ui/format';
 import { groupNames, hoursWords, ordinal } from './words';
@@ -117,10 +117,15 @@ const valueCell = ({ appraisal, economics }: PlanView): LedgerCell => ({
 });
 
 /** One bill line by line, before and after; each figure can be asked why. */
-export function billLines(before: BillView, after: BillView, currency: string, planName: string): LedgerData {
+export function billLines(
+  before: PricedBillView,
+  after: PricedBillView,
+  currency: string,
+  planName: string,
+): LedgerData {
   const minor = (amount: number) => toMinorUnits(amount, currency);
   const ids = [...new Set([...before.lines, ...after.lines].map((line) => line.id))];
-  const cellOf = (bill: BillView, id: string): LedgerValue => {
+  const cellOf = (bill: PricedBillView, id: string): LedgerValue => {
     const line = bill.lines.find((one) => one.id === id);
     if (!line) return null;
     return {
@@ -138,7 +143,7 @@ export function billLines(before: BillView, after: BillView, currency: string, p
       },
     };
   };
-  const amountOf = (bill: BillView, id: string) => bill.lines.find((line) => line.id === id)?.amount ?? 0;
+  const amountOf = (bill: PricedBillView, id: string) => bill.lines.find((line) => line.id === id)?.amount ?? 0;
   const money = { kind: 'money' as const, currency };
   return {
     columns: [

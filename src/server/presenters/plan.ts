@@ -5,7 +5,7 @@ import type { PricedBill } from '../../core/tariff';
 import type { AssumedValue } from '../../schemas/motor';
 import type {
   AppraisalView,
-  BillView,
+  PricedBillView,
   CapacitorBank,
   CapacitorView,
   CashFlowMonth,
@@ -49,7 +49,7 @@ export function storedPlan(plan: Plan, currency: string) {
 export const presentPlanRow = ({ id, version, name, chosen }: Plan) => ({ id, version, name, chosen });
 
 /** A priced bill as screens read it. */
-export function presentPricedBill(bill: PricedBill): BillView {
+export function presentPricedBill(bill: PricedBill): PricedBillView {
   const { period, total, reactiveCost, notes } = bill;
   const lines = bill.lines.map(({ id, label, group, quantity, unit, rate, amount, explanation, clause }) => ({
     id,
@@ -68,7 +68,7 @@ export function presentPricedBill(bill: PricedBill): BillView {
 export const chargeGroups = ['demand', 'reactive', 'energy', 'fixed', 'adjustment', 'tax'] as const;
 
 /** Sum of the year's lines by group. */
-export function groupTotals(bills: BillView[]): Record<ChargeGroup, number> {
+export function groupTotals(bills: PricedBillView[]): Record<ChargeGroup, number> {
   const totals = Object.fromEntries(chargeGroups.map((group) => [group, 0])) as Record<ChargeGroup, number>;
   for (const bill of bills) for (const line of bill.lines) totals[line.group] += line.amount;
   return totals;
@@ -150,7 +150,7 @@ export interface PlanParts {
   currency: string;
   fields: PlanField[];
   capacitors: CapacitorView | null;
-  bills: BillView[];
+  bills: PricedBillView[];
   standingTotal: number;
   money: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconomics };
   appraisal: AppraisalView;

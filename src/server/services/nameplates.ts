@@ -48,6 +48,7 @@ const formPaths: Record<string, string> = {
   lossSplit: 'plate.efficiencyPercent',
 };
 
+/** Where an entry of the core's nameplate stands in the form, `plate.xdPu` for instance. */
 export const formPath = (field: string) => formPaths[field] ?? `plate.${field}`;
 
 /** The completed motor of a stored plate. */

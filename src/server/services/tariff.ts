@@ -7,7 +7,7 @@ import {
   type ChoiceView,
   type ChooseInput,
   type LibraryEntry,
-  type MatchInput,
+  type LineMatchInput,
 } from '../../schemas/tariff';
 import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
@@ -180,7 +180,7 @@ function checkHistory(schedule: Schedule, told: ChooseInput['history']): Record<
  *
  * @throws {ServiceError} 409 where no schedule is chosen or the choice changed meanwhile, 422 for an unknown line
  */
-export async function matchLine(actor: Actor, code: string, input: MatchInput): Promise<ChoiceView> {
+export async function matchLine(actor: Actor, code: string, input: LineMatchInput): Promise<ChoiceView> {
   const opened = await openEngagement(actor, code);
   const files = await listScheduleFiles(actor);
   const choice = await choiceOf(opened);

@@ -1,10 +1,10 @@
-import { matchInput } from '@/schemas/tariff';
+import { lineMatchInput } from '@/schemas/tariff';
 import { endpoint, parseOrThrow, readJson } from '@/server/http';
 import { openEngagement } from '@/server/services/engagements';
 import { matchLine } from '@/server/services/tariff';
 
 export const PUT = endpoint(async ({ actor, params, request }) => {
   await openEngagement(actor, params.code ?? '');
-  const input = parseOrThrow(matchInput, await readJson(request));
+  const input = parseOrThrow(lineMatchInput, await readJson(request));
   return Response.json(await matchLine(actor, params.code ?? '', input));
 });

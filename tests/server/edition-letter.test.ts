@@ -44,6 +44,13 @@ describe('editionLetter', () => {
     expect(html).toContain('&lt;b&gt;&quot;M&quot;&lt;/b&gt;');
   });
 
+  it('says of work that costs nothing that nothing has to be bought', () => {
+    const content = buildEditionContent();
+    const free = { ...content.plan, capitalCost: 0, paybackWords: 'at once' };
+    const { text } = editionLetter({ ...input, content: { ...content, plan: free } });
+    expect(text).toMatch(/Nothing has to be bought; after \d+ years? you are [\d,]+\u00a0USD ahead\./);
+  });
+
   it('recommends nothing where a plan does not pay', () => {
     const content = buildEditionContent();
     const losing = { ...content.plan, saving: -100, appraisal: { ...content.plan.appraisal, npv: -90_671 } };

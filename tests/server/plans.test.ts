@@ -178,6 +178,8 @@ describe('a priced plan', () => {
     const view = await named('Same');
     expect(view.saving).toBe(0);
     expect(view.paybackWords).toBe('never');
+    // What costs nothing is no payback of nought years where it saves nothing.
+    expect(view.appraisal).toMatchObject({ simplePaybackYears: null, discountedPaybackYears: null });
   });
 });
 

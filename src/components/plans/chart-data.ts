@@ -1,4 +1,4 @@
-import type { BillView, CostCurveView, PlanView, SearchView, YearView } from '../../schemas/plan';
+import type { PricedBillView, CostCurveView, PlanView, SearchView, YearView } from '../../schemas/plan';
 import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
 import type { CashFlowData } from '../charts/CashFlowChart';
 import type { CostCurveData } from '../charts/CostCurveChart';
@@ -7,7 +7,7 @@ import { formatBillName } from '../ui/format';
 import { amperes } from './words';
 
 const drawnGroups = new Set(['demand', 'reactive']);
-const drawnTotal = (bill: BillView) =>
+const drawnTotal = (bill: PricedBillView) =>
   bill.lines.filter((line) => drawnGroups.has(line.group)).reduce((sum, line) => sum + line.amount, 0);
 
 /** Demand and reactive lines of each bill before and after a plan. */
@@ -62,7 +62,7 @@ export function paybackChart(plan: PlanView): PaybackData {
   return {
     currency: plan.currency,
     capitalCost: plan.capitalCost,
-    paybackYears: plan.paybackWords === 'never' ? null : plan.appraisal.simplePaybackYears,
+    paybackYears: plan.appraisal.simplePaybackYears,
     paybackRange: paybackRange(plan),
     editionName: plan.name,
     points: plan.cashFlow

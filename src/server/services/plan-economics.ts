@@ -33,16 +33,22 @@ function projectOf({ savingByGroup, capitalCost, yearlyUpkeep, economics }: Plan
   };
 }
 
-/** Paybacks, present value and rate of return of a plan. */
-export const appraisePlan = (money: PlanMoney): AppraisalView => appraise(projectOf(money));
+const firstYearSavingOf = ({ savingByGroup }: PlanMoney) =>
+  Object.values(savingByGroup).reduce((sum, amount) => sum + amount, 0);
+
+/** Paybacks, present value and rate of return. A plan that saves nothing never pays back, however little it costs. */
+export function appraisePlan(money: PlanMoney): AppraisalView {
+  const appraisal = appraise(projectOf(money));
+  if (firstYearSavingOf(money) > money.yearlyUpkeep) return appraisal;
+  return { ...appraisal, simplePaybackYears: null, discountedPaybackYears: null };
+}
 
 /** Cumulative cash flow by month and payback, with the band of eight of ten samples. The same plan gives the same band. */
 export function planCashFlow(money: PlanMoney): Pick<PlanView, 'cashFlow' | 'paybackSpread'> {
   const { months } = cashFlow(projectOf(money));
-  const firstYearSaving = Object.values(money.savingByGroup).reduce((sum, amount) => sum + amount, 0);
   const { band, paybackMonths } = sampleAppraisal({
     capitalCost: money.capitalCost,
-    firstYearSaving,
+    firstYearSaving: firstYearSavingOf(money),
     yearlyUpkeep: money.yearlyUpkeep,
     escalationRate: money.economics.escalationPercent / 100,
     discountRate: money.economics.discountPercent / 100,

@@ -165,7 +165,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
     money: { capitalCost, yearlyUpkeep, economics },
     appraisal,
-    paybackWords: wordsOfPayback(money, appraisal.simplePaybackYears),
+    paybackWords: formatPayback(appraisal.simplePaybackYears),
     ...(row ? planCashFlow(money) : { cashFlow: [], paybackSpread: null }),
     motors: views,
     hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
@@ -179,9 +179,3 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
 
 const staleWords =
   'Motors, bills, readings or tariff were changed after the search. The plan is priced afresh, but its settings may no longer be the best: search again.';
-
-/** A plan that saves nothing pays nothing back, however little it costs. */
-function wordsOfPayback({ savingByGroup, yearlyUpkeep }: PlanMoney, years: number | null): string {
-  const saving = Object.values(savingByGroup).reduce((sum, amount) => sum + amount, -yearlyUpkeep);
-  return saving > 0 ? formatPayback(years) : 'never';
-}

@@ -8,7 +8,7 @@ import { Intake } from '../models/Intake';
 import type { Actor } from '../policies/actor';
 import { presentBill } from '../presenters/bill';
 import { billsWithin, openForChange } from './intake-guard';
-import { wordDays } from './intake-words';
+import { daysInWords } from './intake-words';
 
 async function present(bills: Bill[]): Promise<BillView[]> {
   const billIds = bills.map((bill) => bill.id);
@@ -50,7 +50,7 @@ export async function assertNoOverlap(
     ? `Undo the file ${intake.fileName} first, or change that bill.`
     : 'Change or remove that bill first.';
   throw conflict(
-    `The bill of ${wordDays(period)} overlaps the bill of ${wordDays(theirs)} that is already kept. ${remedy}`,
+    `The bill of ${daysInWords(period)} overlaps the bill of ${daysInWords(theirs)} that is already kept. ${remedy}`,
     { period, kept: theirs, intakeId: other.intakeId },
   );
 }

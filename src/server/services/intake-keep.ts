@@ -1,4 +1,4 @@
-import type { BillRecord, ColumnMap, IntakeReport } from '../../core/intake';
+import type { BillRecord, IntakeReport } from '../../core/intake';
 import { toMinorUnits } from '../../core/units';
 import type { LoadSeries } from '../../core/load';
 import { billInput, lineLabel, periodFlaws } from '../../schemas/bill';
@@ -12,8 +12,8 @@ import type { Actor } from '../policies/actor';
 import { createBill, destroyBill } from './bills';
 import { present } from './intake';
 import { openIntake, openIntakeForChange, type OpenIntake } from './intake-guard';
-import { readBillFile, readIntervalFile } from './intake-read';
-import { wordDays, wordSpan } from './intake-words';
+import { readBillFile, readIntervalFile, type HowToRead } from './intake-read';
+import { daysInWords, spanInWords } from './intake-words';
 import { daysOf } from './intervals';
 import { keepSeries, keptSpans } from './readings';
 
@@ -30,11 +30,6 @@ export async function keepIntake(actor: Actor, id: number, version: number): Pro
   if (open.intake.kind === 'intervals') await keepIntervals(open, how);
   else await keepBills(open, how);
   return present(open);
-}
-
-interface HowToRead {
-  timeZone: string;
-  columnMap: ColumnMap;
 }
 
 function assertReady(intake: Intake): HowToRead {
@@ -78,7 +73,7 @@ async function assertFits(load: LoadSeries, { meter, site, engagement }: OpenInt
     const file = await Intake.findByPk(first.intakeId);
     const named = file?.engagementId === engagement.id ? `the file ${file.fileName}` : 'a file of another engagement';
     throw conflict(
-      `Readings of ${meter.label} from ${wordSpan(fromMs, toMs, site.timeZone)} are kept already, from ${named}. Undo that file first, then keep this one.`,
+      `Readings of ${meter.label} from ${spanInWords(fromMs, toMs, site.timeZone)} are kept already, from ${named}. Undo that file first, then keep this one.`,
       { fromMs, toMs, intakeId: file?.engagementId === engagement.id ? file.id : null },
     );
   }
@@ -103,7 +98,7 @@ async function keepBills({ intake, opened }: OpenIntake, how: HowToRead): Promis
   const twice = periodFlaws(rows.map((row) => row.input)).find((flaw) => flaw.kind === 'overlap');
   if (twice) {
     throw invalid(
-      `Two bills of ${intake.fileName} both cover ${wordDays(twice)}. Look whether the last day belongs to the period, in the step Match.`,
+      `Two bills of ${intake.fileName} both cover ${daysInWords(twice)}. Look whether the last day belongs to the period, in the step Match.`,
     );
   }
   await inTx(async () => {
@@ -131,7 +126,7 @@ function billValues(bill: BillRecord, currency: string, sourceRow: string | null
   });
   if (parsed.success) return { input: parsed.data, sourceRow };
   const issue = parsed.error.issues[0];
-  throw invalid(`The bill of ${wordDays(bill.period)}, ${sourceRow ?? 'row unknown'}: ${issue?.message ?? ''}`, {
+  throw invalid(`The bill of ${daysInWords(bill.period)}, ${sourceRow ?? 'row unknown'}: ${issue?.message ?? ''}`, {
     [issue?.path.join('.') ?? 'form']: [issue?.message ?? 'This bill cannot be kept.'],
   });
 }

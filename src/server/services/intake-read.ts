@@ -17,7 +17,8 @@ interface StoredOriginal {
   sha256: string;
 }
 
-interface HowToRead {
+/** How a file is read: the zone of stamps without offset, and the map of its columns where one is settled. */
+export interface HowToRead {
   timeZone: string;
   columnMap?: ColumnMap;
 }

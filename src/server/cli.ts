@@ -2,7 +2,7 @@ import { randomBytes } from 'node:crypto';
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import closeWithGrace from 'close-with-grace';
-import { configureEnv } from './env';
+import { configureEnv, readEnvFile } from './env';
 
 /** A secret of this machine for the demo, made once, so that sessions outlive a restart. */
 function demoSecret(folder: string): string {
@@ -58,12 +58,14 @@ async function demo(): Promise<void> {
 }
 
 async function start(): Promise<void> {
+  readEnvFile();
   configureEnv({ NODE_ENV: 'production' });
   await serve();
 }
 
 /** Founds the practice on an empty server and prints the link by which its first partner comes in. */
 async function found(): Promise<void> {
+  readEnvFile();
   configureEnv({ NODE_ENV: 'production' });
   const [, , , name, partnerName, address] = process.argv;
   const { emailInput } = await import('../schemas/account');

@@ -1,3 +1,4 @@
+import { existsSync } from 'node:fs';
 import { z } from 'zod';
 
 /** Values that stand in .env.example; a production server refuses to start with them. */
@@ -33,6 +34,11 @@ let current: Env | undefined;
 export function getEnv(): Env {
   current ??= readEnv({ ...developmentDefaults(), ...process.env });
   return current;
+}
+
+/** Takes the values of a file `.env` in this folder, where there is one; what the environment says already wins. */
+export function readEnvFile(): void {
+  if (existsSync('.env')) process.loadEnvFile('.env');
 }
 
 /** Lays values under the environment before it is first read: the demo and the tests have no .env file. */

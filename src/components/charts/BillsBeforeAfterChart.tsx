@@ -89,7 +89,7 @@ export function BillsBeforeAfterChart({
       <YAxis
         domain={domainOf(yTicks)}
         ticks={yTicks}
-        width={38}
+        width={46}
         tickFormatter={(v: number) => formatNumber(v, { upTo: 1 })}
         {...axisLook(palette)}
       />

@@ -1,7 +1,7 @@
 import { ComposedChart, Scatter, XAxis, YAxis } from 'recharts';
 import { formatDate, formatNumber } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
-import { carpetRuns, type CarpetData, type CarpetMark, type CarpetRun } from './carpet';
+import { carpetRuns, thresholdDecimals, type CarpetData, type CarpetMark, type CarpetRun } from './carpet';
 import { ChartFigure, type FigureText } from './ChartFigure';
 import { HatchDefs, useHatch } from './HatchDefs';
 import { axisLook, narrowBelow, OnPlot, PlotFrame, Words, type ChartSize, type Plot } from './kit';
@@ -95,11 +95,13 @@ function Key({ data, plot, palette, hatchId, narrow }: Parts & { hatchId: string
   const y = plot.bottom + 36;
   const pitch = Math.min(96, (plot.right - plot.left - 60) / (narrow ? 4 : 8));
   const shown = narrow ? [1, 3, 5] : [1, 2, 3, 4, 5, 6];
+  const decimals = thresholdDecimals(data.thresholds);
+  const threshold = (index: number) => formatNumber(data.thresholds[index] ?? 0, { decimals });
   const box = { y: y - 9, width: 14, height: 10, stroke: palette.rule2, strokeWidth: 0.75 };
   return (
     <>
       <Words x={plot.left} y={y} palette={palette} tone="ink2">
-        {narrow ? data.unit : `below ${formatNumber(data.thresholds[0] ?? 0)}`}
+        {narrow ? data.unit : `below ${threshold(0)}`}
       </Words>
       {shown.map((step, index) => {
         const x = plot.left + (narrow ? 30 : 84) + index * pitch;
@@ -108,7 +110,7 @@ function Key({ data, plot, palette, hatchId, narrow }: Parts & { hatchId: string
           <g key={step}>
             <rect x={x} {...box} fill={palette.ink} fillOpacity={inkSteps[step]} />
             <Words x={x + 19} y={y} palette={palette} tone="ink2">
-              {`${formatNumber(data.thresholds[step - 1] ?? 0)}${last && !narrow ? ` and above, ${data.unit}` : ''}`}
+              {`${threshold(step - 1)}${last && !narrow ? ` and above, ${data.unit}` : ''}`}
             </Words>
           </g>
         );

@@ -27,6 +27,19 @@ export interface DayData {
 const clock = (minute: number) =>
   `${String(Math.floor(minute / 60)).padStart(2, '0')}:${String(minute % 60).padStart(2, '0')}`;
 
+/** Height beneath everything drawn between two places, or above it, where a label of a line lies free. */
+function freeHeight(
+  values: { minute: number; value: number | null | undefined }[],
+  plot: Plot,
+  [from, to]: [number, number],
+  side: 'above' | 'below',
+) {
+  const heights = values
+    .filter(({ minute, value }) => value != null && plot.x(minute) >= from && plot.x(minute) <= to)
+    .map(({ value }) => plot.y(value ?? 0));
+  return side === 'above' ? Math.min(...heights) - 8 : Math.max(...heights) + 18;
+}
+
 function PeakMark({ data, plot, palette }: { data: DayData; plot: Plot; palette: Palette }) {
   const { peak } = data;
   if (!peak) return null;
@@ -46,6 +59,15 @@ function PeakMark({ data, plot, palette }: { data: DayData; plot: Plot; palette:
   const kvar = peak.kvarLagging;
   const factor = peak.powerFactor === undefined ? '' : `, pf ${formatNumber(peak.powerFactor, { decimals: 2 })}`;
   const width = Math.max(2, plot.x(data.stepMinutes) - plot.x(0));
+  const peakWords = `${formatQuantity(peak.kw, 'kW')}, ${clock(peak.minute)} to ${clock(peak.minute + data.stepMinutes)}`;
+  const kvarWords = `${formatQuantity(kvar ?? 0, 'kvar')} lagging${factor}`;
+  const spanOf = (words: string): [number, number] => {
+    const length = words.length * 6.6 + 10;
+    return left ? [x - length, x + 2] : [x - 2, x + length];
+  };
+  const middleOf = (minute: number) => minute + data.stepMinutes / 2;
+  const active = data.points.map((p) => ({ minute: middleOf(p.minute), value: p.kw }));
+  const lagging = data.points.map((p) => ({ minute: middleOf(p.minute), value: p.kvarLagging }));
   return (
     <>
       <rect
@@ -57,14 +79,18 @@ function PeakMark({ data, plot, palette }: { data: DayData; plot: Plot; palette:
         fillOpacity={0.4}
       />
       {ring(plot.y(peak.kw), palette.ink)}
-      <Words {...place} y={plot.y(peak.kw) - 8}>
-        {`${formatQuantity(peak.kw, 'kW')}, ${clock(peak.minute)} to ${clock(peak.minute + data.stepMinutes)}`}
+      <Words {...place} y={Math.max(plot.top + 12, freeHeight(active, plot, spanOf(peakWords), 'above'))}>
+        {peakWords}
       </Words>
       {kvar !== undefined && (
         <>
           {ring(plot.y(kvar), palette.copper)}
-          <Words {...place} y={plot.y(kvar) + 22} tone="copper">
-            {`${formatQuantity(kvar, 'kvar')} lagging${factor}`}
+          <Words
+            {...place}
+            y={Math.min(plot.bottom - 6, freeHeight(lagging, plot, spanOf(kvarWords), 'below'))}
+            tone="copper"
+          >
+            {kvarWords}
           </Words>
         </>
       )}

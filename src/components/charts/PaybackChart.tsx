@@ -98,6 +98,15 @@ function EndWords({
   ));
 }
 
+/** The spread of the payback in the longest words the room holds; null where none fits. */
+function spreadWords({ fromYears, toYears }: { fromYears: number; toYears: number }, narrow: boolean, room: number) {
+  const months = (years: number) => formatNumber(Math.round(years * 12));
+  const span = `${months(fromYears)} to ${months(toYears)}`;
+  const wordings = [`8 in 10: ${span}`];
+  if (!narrow) wordings.unshift(`8 in 10 samples: ${span} months`, `8 in 10: ${span} months`);
+  return wordings.find((words) => words.length * 5.9 <= room) ?? null;
+}
+
 function PaybackMark({
   data,
   plot,
@@ -116,7 +125,6 @@ function PaybackMark({
   const textY = below ? y + 44 : y + 19;
   const flip = x > (plot.left + plot.right) / 2 + 40;
   const range = data.paybackRange;
-  const months = (years: number) => formatNumber(Math.round(years * 12));
   const whiskers = range
     ? [range.fromYears, range.toYears].map((years) => `M${plot.x(years)} ${y - 4}v8`).join('')
     : '';
@@ -127,16 +135,21 @@ function PaybackMark({
     anchor: flip ? ('end' as const) : ('start' as const),
     halo: true,
   };
+  const spreadX = below ? place.x : place.x + (narrow ? 74 : 172);
+  const spread =
+    range && (below || !flip) ? spreadWords(range, narrow, flip ? Infinity : plot.right - spreadX - 4) : null;
   return (
     <>
       <path d={`${whiskers}M${x} ${y}V${below ? y + 34 : y}`} stroke={palette.ink} fill="none" />
       <PointMark x={x} y={y} shape="circle" palette={palette} />
       <Words {...place} y={textY} bold size={narrow ? 12 : 13.5}>
-        {narrow ? formatPayback(data.paybackYears) : `paid back after ${formatPayback(data.paybackYears)}`}
+        {narrow || data.paybackYears === 0
+          ? formatPayback(data.paybackYears)
+          : `paid back after ${formatPayback(data.paybackYears)}`}
       </Words>
-      {range && (below || !flip) && (
-        <Words {...place} x={below ? place.x : place.x + (narrow ? 74 : 172)} y={below ? textY + 15 : textY}>
-          {`8 in 10${narrow ? '' : ' samples'}: ${months(range.fromYears)} to ${months(range.toYears)}${narrow ? '' : ' months'}`}
+      {spread && (
+        <Words {...place} x={spreadX} y={below ? textY + 15 : textY}>
+          {spread}
         </Words>
       )}
     </>

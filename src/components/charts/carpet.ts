@@ -30,14 +30,21 @@ export interface CarpetMark {
   kind: 'missing' | 'oddity';
 }
 
+/** Decimals at which six thresholds differ: none from ten apart, more below. */
+export function thresholdDecimals([first = 0, second = 0]: readonly number[]): number {
+  const apart = Math.abs(second - first);
+  return apart > 0 ? Math.max(0, 1 - Math.floor(Math.log10(apart))) : 0;
+}
+
 /** Six round thresholds between the second and ninety-eighth hundredth of the readings. */
 function carpetThresholds(readings: number[]): number[] {
   const sorted = [...readings].sort((a, b) => a - b);
   const at = (share: number) => sorted[Math.round(share * (sorted.length - 1))] ?? 0;
   const [low, high] = [at(0.02), at(0.98)];
   const step = (high - low) / 6 || 1;
-  const grain = 10 ** Math.max(0, Math.floor(Math.log10(Math.abs(step))) - 1);
-  return Array.from({ length: 6 }, (_, index) => Math.round((low + step * (index + 0.5)) / grain) * grain);
+  const grain = 10 ** (Math.floor(Math.log10(Math.abs(step))) - 1);
+  const rounded = (value: number) => Number((Math.round(value / grain) * grain).toPrecision(12));
+  return Array.from({ length: 6 }, (_, index) => rounded(low + step * (index + 0.5)));
 }
 
 /**

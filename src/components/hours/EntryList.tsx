@@ -50,12 +50,24 @@ function Entry(props: EntryProps) {
         <th scope="row" className="left">
           {formatWeekday(entry.day)}
         </th>
-        {withPerson && <td className="left">{entry.person}</td>}
-        <td className="left">{stationLabel(entry.station)}</td>
+        {withPerson && (
+          <td className="left" data-name="Person">
+            {entry.person}
+          </td>
+        )}
+        <td className="left" data-name="Station">
+          {stationLabel(entry.station)}
+        </td>
         <td className="left wrap note">{entry.note}</td>
-        <td className="strong">{formatHours(entry.minutes)}</td>
-        <td>{entry.perHourMinor === null ? '' : formatAmount(entry.perHourMinor, currency)}</td>
-        <td className={worth.tone}>{worth.text}</td>
+        <td className="strong" data-name="Hours, h">
+          {formatHours(entry.minutes)}
+        </td>
+        <td data-name={`Rate, ${currency}/h`}>
+          {entry.perHourMinor === null ? '' : formatAmount(entry.perHourMinor, currency)}
+        </td>
+        <td className={worth.tone} data-name={`Amount, ${currency}`}>
+          {worth.text}
+        </td>
         <td className="acts">
           {entry.mine && (
             <>
@@ -107,7 +119,7 @@ export function EntryList({ code, answer, withPerson, onChanged }: EntryListProp
   ];
   return (
     <div className="ledger-scroll" role="region" aria-label="Entries" tabIndex={0}>
-      <table className="ledger ledger-roomy entry-list">
+      <table className="ledger ledger-roomy ledger-stack entry-list">
         <thead>
           <tr>
             {columns.map(([head, unit, align]) => (
@@ -131,9 +143,9 @@ export function EntryList({ code, answer, withPerson, onChanged }: EntryListProp
             <th scope="row" className="left" colSpan={withPerson ? 4 : 3}>
               {formatCount(entries.length, 'entry', 'entries')}
             </th>
-            <td>{formatHours(sums.minutes)}</td>
+            <td data-name="Hours, h">{formatHours(sums.minutes)}</td>
             <td />
-            <td>{formatAmount(sums.amountMinor, currency)}</td>
+            <td data-name={`Amount, ${currency}`}>{formatAmount(sums.amountMinor, currency)}</td>
             <td />
           </tr>
         </tfoot>

@@ -52,7 +52,7 @@ function WritePart({ code, answer, isPartner, today, onChanged }: PartProps) {
   return (
     <SheetPart
       id="write"
-      number="1"
+      number="8.1"
       title="Write hours"
       reference={
         <>
@@ -71,7 +71,7 @@ function EntriesPart({ code, answer, isPartner, onChanged }: PartProps) {
   return (
     <SheetPart
       id="entries"
-      number="3"
+      number="8.3"
       title="Entries"
       reference={
         <>
@@ -106,7 +106,7 @@ function Sheet({ code, answer: first, isPartner, today, members, others, me }: H
       <WritePart {...part} />
       <SheetPart
         id="week"
-        number="2"
+        number="8.2"
         title="The week"
         reference={<p>Days off in well, today in copper</p>}
         result={isPartner ? <Budget answer={answer} /> : null}
@@ -116,7 +116,7 @@ function Sheet({ code, answer: first, isPartner, today, members, others, me }: H
       <EntriesPart {...part} />
       <SheetPart
         id="members"
-        number="4"
+        number="8.4"
         title="Who works on it"
         reference={<p>A consultant opens the engagement only while they stand here</p>}
       >

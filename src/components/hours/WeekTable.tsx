@@ -137,7 +137,7 @@ export function WeekTable({ entries, monday, today, withPerson, onMonday }: Week
             {lines.length === 0 && (
               <tr>
                 <td className="left quiet" colSpan={names + 8}>
-                  No hours are told in this week.
+                  No hours are logged in this week.
                 </td>
               </tr>
             )}

@@ -1,19 +1,17 @@
 import type { HoursAnswer } from '../../client/hours';
 import { hourStations, type HourForm, type HourStation, type HourView } from '../../schemas/hour';
-import { formatAmount, formatClock, formatHours, formatMoney, formatNumber } from '../ui/format';
+import { capital, formatAmount, formatClock, formatHours, formatMoney, formatNumber } from '../ui/format';
 import type { SumRow } from '../ui/ResultSums';
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
 export const stationLabel = (station: HourStation) => capital(station);
 export const stationOptions = hourStations.map((value) => ({ value, label: stationLabel(value) }));
 
-/** The sheet's finding: how much was told, what it is worth, how it stands to the budget. */
+/** The sheet's finding: how much was logged, what it is worth, how it stands to the budget. */
 export function hoursHeading(code: string, { sums, currency, budgetHours }: HoursAnswer, isPartner: boolean): string {
   if (sums.minutes === 0)
-    return isPartner ? `No hours are told on ${code} yet.` : `You have told no hours on ${code} yet.`;
+    return isPartner ? `No hours are logged on ${code} yet.` : `You have logged no hours on ${code} yet.`;
   const hours = formatHours(sums.minutes);
-  const whole = isPartner ? `${hours} hours are told on ${code}` : `You have told ${hours} hours on ${code}`;
+  const whole = isPartner ? `${hours} hours are logged on ${code}` : `You have logged ${hours} hours on ${code}`;
   const rated = sums.billableMinutes > sums.unratedMinutes;
   const worth = rated
     ? `, worth ${formatMoney(sums.amountMinor, currency)} at ${isPartner ? 'rates' : 'your rate'}`

@@ -59,7 +59,9 @@ export function IntervalsSheet({ code, meter, yearDates, station, carpet }: Inte
             : `Ask the client or the utility for the interval readings of ${meter}, ${period}: active energy, and reactive energy lagging and leading if the meter has them. Nothing is stored until you have seen it and keep it; keeping can be undone.`
         }
         reference={
-          kept.length > 0 && <p className="wrap-anywhere">Times are those of {timeZone.replaceAll('_', ' ')}.</p>
+          kept.length > 0 && (
+            <p className="wrap-anywhere">Times are those of {timeZone.replaceAll('_', ' ').replace('/', '/\u200b')}.</p>
+          )
         }
       >
         <div className="stacked">

@@ -8,7 +8,7 @@ import { roleOptions, roleValue, unitOptions, unitValue, withRole, withUnit } fr
 export function ColumnTable({ intake, preview, actions }: MatchStepProps) {
   return (
     <div className="ledger-scroll" role="region" aria-label="Columns of the file" tabIndex={0}>
-      <table className="ledger ledger-roomy evidence">
+      <table className="ledger ledger-roomy ledger-stack evidence">
         <Heads heads={['Column', 'Values', 'Taken as', 'Unit', 'Evidence', 'Tests met']} />
         <tbody>
           {preview.columns.map((column) => (
@@ -38,8 +38,10 @@ function ColumnRow({ column, intake, preview, actions }: MatchStepProps & { colu
       <th scope="row" className="left wrap strong">
         {column.span > 1 ? `${name} and ${column.span - 1} more` : name}
       </th>
-      <td className="left quiet wrap">{column.values}</td>
-      <td className="left">
+      <td className="left quiet wrap" data-name="Values">
+        {column.values}
+      </td>
+      <td className="left" data-name="Taken as">
         <Choice
           className="role-select"
           label={`${name}, taken as`}
@@ -49,7 +51,7 @@ function ColumnRow({ column, intake, preview, actions }: MatchStepProps & { colu
           onChoose={(value) => change((use) => withRole(use, value))}
         />
       </td>
-      <td className="left">
+      <td className="left" data-name="Unit">
         {units.length > 0 ? (
           <span className={column.isUnitAssumed ? 'assumed' : undefined}>
             <Choice
@@ -65,7 +67,9 @@ function ColumnRow({ column, intake, preview, actions }: MatchStepProps & { colu
           column.unit
         )}
       </td>
-      <td className="left wrap">{sentence(column.why)}</td>
+      <td className="left wrap" data-name="Evidence">
+        {sentence(column.why)}
+      </td>
       <Tests
         met={column.testsMet}
         total={column.testsTotal}

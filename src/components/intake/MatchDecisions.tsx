@@ -12,7 +12,7 @@ export function DecisionTable({ intake, preview, actions }: MatchStepProps) {
   const sheet = sheetDecision(preview);
   return (
     <div className="ledger-scroll" role="region" aria-label="Decisions about the whole file" tabIndex={0}>
-      <table className="ledger ledger-roomy evidence">
+      <table className="ledger ledger-roomy ledger-stack evidence">
         <Heads heads={['Whole file', 'Taken as', 'Evidence', 'Tests met']} />
         <tbody>
           {preview.guesses.map((guess) => (
@@ -21,7 +21,9 @@ export function DecisionTable({ intake, preview, actions }: MatchStepProps) {
           {sheet && (
             <tr>
               <DecisionCells decision={sheet} intake={intake} preview={preview} actions={actions} />
-              <td className="left wrap">{formatCount(sheet.options.length, 'sheet')} in the workbook</td>
+              <td className="left wrap" data-name="Evidence">
+                {formatCount(sheet.options.length, 'sheet')} in the workbook
+              </td>
               <td />
             </tr>
           )}
@@ -46,7 +48,9 @@ function GuessRow({ guess, intake, preview, actions }: MatchStepProps & { guess:
   return (
     <tr className={asks ? 'asks' : undefined}>
       <DecisionCells decision={decision} confirm={key} intake={intake} preview={preview} actions={actions} />
-      <td className="left wrap">{sentence(guess.why)}</td>
+      <td className="left wrap" data-name="Evidence">
+        {sentence(guess.why)}
+      </td>
       <Tests
         met={guess.testsMet}
         total={guess.testsTotal}
@@ -67,7 +71,7 @@ function DecisionCells(props: MatchStepProps & { decision: Decision; confirm?: s
       <th scope="row" className="left strong">
         <label htmlFor={id}>{decision.label}</label>
       </th>
-      <td className="left">
+      <td className="left" data-name="Taken as">
         {decision.options.length > 1 ? (
           <Choice
             id={id}

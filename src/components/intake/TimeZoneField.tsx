@@ -27,7 +27,7 @@ export function TimeZoneField({ intake, busy, onChange }: TimeZoneFieldProps) {
       <th scope="row" className="left strong">
         <label htmlFor={id}>Time zone</label>
       </th>
-      <td className="left">
+      <td className="left" data-name="Taken as">
         <input
           id={id}
           type="text"
@@ -48,7 +48,7 @@ export function TimeZoneField({ intake, busy, onChange }: TimeZoneFieldProps) {
         </datalist>
         <FieldError fault={fault} id={`${id}-error`} />
       </td>
-      <td className="left wrap">
+      <td className="left wrap" data-name="Evidence">
         {intake.timeZone === siteTimeZone
           ? 'The site’s own; an offset written in the file overrules it'
           : `Not the site’s own, which is ${siteTimeZone}`}

@@ -34,15 +34,17 @@ interface TestsProps {
 /** How many tests a reading of the file meets; one that is not sure asks for a word. */
 export function Tests({ met, total, asks, name, onConfirm }: TestsProps) {
   return (
-    <td className="left unbroken">
-      <Mark kind={asks ? 'hollow' : 'filled'} word={`${met} of ${total}`} tone={asks ? 'caution' : 'ink'} />
-      {asks && onConfirm && (
-        <span className="ml-2">
-          <Button kind="quiet" onClick={onConfirm} aria-label={`Confirm ${name}`}>
-            Confirm
-          </Button>
-        </span>
-      )}
+    <td className="left unbroken" data-name="Tests met">
+      <span>
+        <Mark kind={asks ? 'hollow' : 'filled'} word={`${met} of ${total}`} tone={asks ? 'caution' : 'ink'} />
+        {asks && onConfirm && (
+          <span className="ml-2">
+            <Button kind="quiet" onClick={onConfirm} aria-label={`Confirm ${name}`}>
+              Confirm
+            </Button>
+          </span>
+        )}
+      </span>
     </td>
   );
 }

@@ -23,12 +23,11 @@ export function PlateFields() {
         <Field {...entry('name')} hint="As on the one-line diagram: M-1" />
         <Field {...entry('drives')} hint="Raw mill, compressor, fan" />
         <Field {...entry('plate.source')} hint="Photograph of the plate, data sheet" />
-        <div className="grid grid-cols-[1fr_88px] items-end gap-2">
+        <div className="grid grid-cols-[1fr_88px] items-start gap-2">
           <NumberField {...entry('plate.output')} />
           <SelectField
             {...entry('plate.outputUnit')}
-            labelUnseen
-            label="Unit of output"
+            label="Unit"
             options={[
               { value: 'hp', label: 'hp' },
               { value: 'kW', label: 'kW' },

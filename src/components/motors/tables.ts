@@ -18,7 +18,7 @@ type Entry = [label: string, unit: string, cell: (motor: MotorView) => LedgerVal
 
 const plateEntries: Entry[] = [
   ['Drives', '', (motor) => motor.drives ?? { value: 'not said', tone: 'quiet' }],
-  ['Rated output', 'hp or kW', ({ plate }) => `${formatNumber(plate.output)} ${plate.outputUnit}`],
+  ['Rated output', '', ({ plate }) => `${formatNumber(plate.output)} ${plate.outputUnit}`],
   ['Rated voltage', 'kV', ({ plate }) => formatNumber(plate.voltageV / 1000, { upTo: 2 })],
   [
     'Rated power factor',

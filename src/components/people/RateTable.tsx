@@ -115,7 +115,7 @@ export function RateTable({ userId, rates, engagements, currency, today }: RateT
           {rates.length === 0 && (
             <tr>
               <td colSpan={4} className="left warn">
-                None yet: hours are told but worth nothing.
+                None yet: hours are logged but worth nothing.
               </td>
             </tr>
           )}

@@ -1,12 +1,10 @@
 import type { PracticeView } from '../../schemas/practice';
 import { formatHours, formatMoney, formatSpelled } from '../ui/format';
 
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
-
 /** The finding: what the hours are worth that nobody has billed, and where the oldest lie. */
 export function practiceHeading({ totals, progress }: PracticeView): string {
   const worked = totals.filter((total) => total.minutes > 0);
-  if (worked.length === 0) return 'No hours are told yet, so there is no work in progress.';
+  if (worked.length === 0) return 'No hours are logged yet, so there is no work in progress.';
   const sums = worked.filter((total) => total.amountMinor > 0).map((t) => formatMoney(t.amountMinor, t.currency));
   const hours = formatHours(worked.reduce((sum, total) => sum + total.minutes, 0));
   const amount = sums.length > 0 ? `${sums.join(' and ')} of work is in progress` : `${hours} hours are in progress`;
@@ -23,9 +21,8 @@ export function practiceLead({ name, totals, progress, utilisation }: PracticeVi
   const parts = [
     `${date}. ${name}: ${formatSpelled(people)} ${people === 1 ? 'person' : 'people'}`,
     `${formatSpelled(progress.length)} ${progress.length === 1 ? 'engagement' : 'engagements'}`,
-    `${formatHours(minutes)} hours told`,
+    `${formatHours(minutes)} hours logged`,
   ];
-  const gap =
-    unrated > 0 ? ` ${capital(formatHours(unrated))} billable hours have no rate and are worth nothing here.` : '';
+  const gap = unrated > 0 ? ` ${formatHours(unrated)} billable hours have no rate and are worth nothing here.` : '';
   return `${parts.join(', ')}.${gap}`;
 }

@@ -1,10 +1,17 @@
 import type { EditionContent } from '../../schemas/edition';
 import { Caution } from '../ui/Caution';
-import { formatCount, formatNumber, formatQuantity } from '../ui/format';
+import { capital, formatNumber, formatQuantity, formatSpelled } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import type { LeafContext } from './AnswerLeaf';
 import { Leaf, LeafRow } from './Leaf';
+
+/** How far the kvar in hand move at the two ends of the range: "34 less, 29 more". */
+function effectWords(ends: readonly number[]): string {
+  const moved = ends.map((end) => Math.round(end)).filter((end) => end !== 0);
+  const words = moved.map((end) => `${formatNumber(Math.abs(end))} ${end < 0 ? 'less' : 'more'}`);
+  return [...new Set(words)].join(', ') || 'nothing';
+}
 
 function assumedTable({ assumed }: EditionContent): LedgerData {
   return {
@@ -13,7 +20,7 @@ function assumedTable({ assumed }: EditionContent): LedgerData {
       { key: 'motor', head: 'Motor' },
       { key: 'figure', head: 'Taken as', align: 'right' },
       { key: 'range', head: 'Typical range', align: 'right', quiet: true },
-      { key: 'effect', head: 'Moves kvar by', align: 'right' },
+      { key: 'effect', head: 'Moves the most by', unit: 'kvar', align: 'right' },
     ],
     rows: assumed.map((one) => ({
       id: `${one.motorId}-${one.field}`,
@@ -22,9 +29,7 @@ function assumedTable({ assumed }: EditionContent): LedgerData {
         motor: one.motorName,
         figure: { value: formatQuantity(one.value, one.unit, { upTo: 3 }).trim(), assumed: true },
         range: one.range ? one.range.map((end) => formatNumber(end, { upTo: 3 })).join(' to ') : 'not given',
-        effect: one.kvarEffect
-          ? one.kvarEffect.map((end) => formatNumber(end, { signed: true })).join(', ')
-          : 'not known',
+        effect: one.kvarEffect ? effectWords(one.kvarEffect) : 'not known',
       },
     })),
   };
@@ -36,7 +41,7 @@ export function AssumptionsLeaf({ content, taps, foot, page }: LeafContext & { p
   const finding =
     assumed.length === 0
       ? 'Nothing was assumed: every machine value comes from a nameplate or a data sheet.'
-      : `${formatCount(assumed.length, 'machine value')} ${assumed.length === 1 ? 'is' : 'are'} assumed, not read from a plate; each is named here with what it moves.`;
+      : `${capital(formatSpelled(assumed.length))} machine ${assumed.length === 1 ? 'value is' : 'values are'} assumed, not read from a plate; each is named here with what it moves.`;
   return (
     <Leaf page={page} taps={taps} foot={foot} finding={finding}>
       <LeafRow

@@ -1,13 +1,20 @@
 import type { EditionContent } from '../../schemas/edition';
-import { formatAmount, formatMajor, formatMoney, formatMonth, formatNumber, formatPeriod } from '../ui/format';
+import {
+  capital,
+  formatAmount,
+  formatBillName,
+  formatMajor,
+  formatMoney,
+  formatNumber,
+  formatPeriod,
+  formatSpelled,
+} from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
 import type { LeafContext } from './AnswerLeaf';
 import { Picture } from './Picture';
 import { Leaf, LeafRow } from './Leaf';
-
-const lastDay = (to: string) => formatMonth(new Date(Date.parse(to) - 86_400_000).toISOString().slice(0, 10));
 
 /** Twelve bills before and after, in major units. */
 export function billsTable({ bills, standing, plan, currency }: EditionContent): LedgerData {
@@ -24,7 +31,7 @@ export function billsTable({ bills, standing, plan, currency }: EditionContent):
     rows: bills.map((bill) => ({
       id: bill.from,
       cells: {
-        bill: lastDay(bill.to),
+        bill: formatBillName(bill),
         period: formatPeriod(bill.from, bill.to),
         billed: bill.billed ?? 'not printed',
         before: bill.before,
@@ -34,6 +41,9 @@ export function billsTable({ bills, standing, plan, currency }: EditionContent):
     })),
     total: {
       bill: 'Year',
+      billed: bills.every((bill) => bill.billed !== null)
+        ? bills.reduce((sum, bill) => sum + (bill.billed ?? 0), 0)
+        : null,
       before: standing.yearTotal,
       after: plan.yearTotal,
       saved: plan.saving,
@@ -47,7 +57,7 @@ export function billsFinding({ bills, plan, currency }: EditionContent): string 
   const saved = formatMajor(plan.saving, currency, { whole: true });
   if (falling === bills.length) return `Every bill falls; together they save ${saved} a year.`;
   if (falling === 0) return 'No bill falls under this plan.';
-  return `${formatNumber(falling)} of ${formatNumber(bills.length)} bills fall; over the year the plan saves ${saved}.`;
+  return `${capital(formatSpelled(falling))} of ${formatSpelled(bills.length)} bills fall; over the year the plan saves ${saved}.`;
 }
 
 /** Page 2: every bill before and after, where it is taken away, and what was billed wrongly. */
@@ -74,7 +84,9 @@ export function BillsLeaf({ content, taps, foot, pictures }: LeafContext & { pic
             rows={[
               { label: `Poor pf now, ${currency}`, value: formatNumber(standing.reactiveCost) },
               { label: 'With the plan', value: formatNumber(plan.reactiveCost) },
-              { label: 'Less', value: formatNumber(standing.reactiveCost - plan.reactiveCost), kind: 'total' },
+              { label: 'Less', value: formatNumber(standing.reactiveCost - plan.reactiveCost), kind: 'subtotal' },
+              { label: 'Extra losses', value: formatNumber(plan.saving - standing.reactiveCost + plan.reactiveCost) },
+              { label: 'Saved a year', value: formatNumber(plan.saving), kind: 'total' },
             ]}
           />
         }

@@ -1,5 +1,5 @@
 import type { EditionContent } from '../../schemas/edition';
-import { formatDate, formatNumber, formatPercent } from '../ui/format';
+import { capital, formatDate, formatNumber, formatPercent, formatSpelled } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
@@ -42,7 +42,7 @@ export function MethodLeaf({ content, taps, foot, page }: LeafContext & { page: 
       page={page}
       taps={taps}
       foot={foot}
-      finding={`${formatNumber(bills.length)} bills and ${formatNumber(present)} readings stand behind every figure; the files are named below.`}
+      finding={`${capital(formatSpelled(bills.length))} bills and ${formatNumber(present)} readings stand behind every figure; the files are named below.`}
     >
       <LeafRow
         first

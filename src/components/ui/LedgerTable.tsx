@@ -180,7 +180,7 @@ export function LedgerTable(props: LedgerTableProps) {
                 <tr className={opened ? 'chosen' : row.kind}>
                   <Cells columns={columns} cells={row.cells} figure={figureOf(row)} stack={stack}>
                     {tail && (
-                      <td className={renderActions ? undefined : 'left'}>
+                      <td className={renderActions ? 'row-actions' : 'left'}>
                         {row.finding && <span className="finding-letter">{row.finding}</span>}
                         {renderActions?.(row)}
                       </td>

@@ -1,8 +1,12 @@
+import { existsSync } from 'node:fs';
 import node from '@astrojs/node';
 import react from '@astrojs/react';
 import tailwindcss from '@tailwindcss/vite';
 import { defineConfig, passthroughImageService } from 'astro/config';
 import { expressLayer } from './src/integrations/express-layer.mjs';
+
+// The public host is fixed when the server is built: it stands in the same file as the rest of its settings.
+if (existsSync('.env')) process.loadEnvFile('.env');
 
 /** Host names whose form posts are accepted; the public one is fixed at build time (see .env.example). */
 const publicHost = process.env.APP_PUBLIC_HOST;

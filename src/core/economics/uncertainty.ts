@@ -141,6 +141,6 @@ function checkUncertain(project: UncertainProject): void {
   for (const [name, spread] of Object.entries(uncertainty)) {
     if (!(spread >= 0 && spread <= 10)) throw new RangeError(`uncertainty.${name} must be in [0, 10], got ${spread}`);
   }
-  const { capitalCost, discountRate, firstYearSaving } = project;
-  appraise({ capitalCost, discountRate, yearlySaving: [firstYearSaving] });
+  const { capitalCost, discountRate, firstYearSaving, yearlyUpkeep = 0 } = project;
+  appraise({ capitalCost, discountRate, yearlySaving: [firstYearSaving], yearlyUpkeep: [yearlyUpkeep] });
 }

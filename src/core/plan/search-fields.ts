@@ -173,7 +173,10 @@ function pickWinner(costs: CostTable, axes: Axis[], standing: number[]): { at: n
   if (admissible.length === 0) return { at: alone };
   const least = Math.min(...admissible.map(({ cost }) => cost));
   const moved = (at: number[]) =>
-    at.reduce((total, k, m) => total + Math.abs(axes[m]!.settings[k]! / standing[m]! - 1), 0);
+    at.reduce((total, k, m) => {
+      const { settings } = axes[m]!;
+      return total + Math.abs(settings[k]! - standing[m]!) / (settings[settings.length - 1]! || 1);
+    }, 0);
   return admissible
     .filter(({ cost }) => cost <= least + SAME_COST)
     .reduce((a, b) => (moved(b.at) < moved(a.at) - 1e-12 ? b : a));

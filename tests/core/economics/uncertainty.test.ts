@@ -109,6 +109,7 @@ describe('sampleAppraisal', () => {
     [{ seed: 0.5 }, /seed/],
     [{ uncertainty: { saving: -1, cost: 0, escalation: 0 } }, /uncertainty.saving/],
     [{ capitalCost: -1 }, /capitalCost/],
+    [{ yearlyUpkeep: NaN }, /yearlyUpkeep must be finite, got NaN/],
   ])('refuses %o', (wrong, message) => {
     expect(() => sampleAppraisal({ ...project, ...wrong })).toThrow(message);
   });

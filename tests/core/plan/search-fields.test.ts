@@ -89,6 +89,14 @@ describe('searchFields on bills with a known best', () => {
     expect(result.fieldsA).toEqual([105, 60]);
   });
 
+  it('moves no other motor where one must leave a field of nothing', () => {
+    // Nothing is charged: the motor that stands at 0 A must take the least step within its limits, the other stays.
+    const motor = buildMotor({ limits: { pullOutMargin: 1, armatureCurrentA: 1000 } });
+    const idle = { ...one, motor, shaftKw: new Float64Array(load.kwh.length).fill(1), standingFieldA: 0 };
+    const result = searchFields({ plant: { load, motors: [idle, { ...two, stepA: 5 }] }, totals: () => bill(1000) });
+    expect(result.fieldsA).toEqual([1, 60]);
+  });
+
   it('goes no further than a leading charge allows', () => {
     // Lagging 1, leading 10 per kvarh; 150 kvarh lagging per quarter-hour by day, motor running by day only.
     const light = buildLoad(4, { kvarhLagging: new Float64Array(load.kwh.length).fill(60) });

@@ -21,6 +21,7 @@ describe('explanations', () => {
       service: 'Service: 420.00 EUR.',
       demand: 'Demand: 2,400 kVA x 11.50 EUR per kVA = 27,600.00 EUR (clause 4.2).',
       fuelRider: 'Fuel rider: 800,000 kWh x 0.0031 EUR per kWh = 2,480.00 EUR.',
+      surcharge: 'Surcharge: 1 point x 1 % of 114,200.00 EUR (demand 27,600.00 + energy 86,600.00) = 1,142.00 EUR.',
       minimum: 'Minimum: not needed, 119,692.80 is above 30,000.00 (15 x contractKva = 15 x 2,000).',
       tax: 'Tax: 6 % of 119,692.80 EUR (all 9 lines above) = 7,181.57 EUR.',
     });
@@ -31,8 +32,7 @@ describe('explanations', () => {
       billedKva:
         'billedKva = max(maxKva; 0.80 x yearKva; 0.50 x contractKva) = max(2,100; 0.80 x 3,000; 0.50 x 2,000) = 2,400 kVA: the second.',
       pf: 'pf = pf(allKwh; kvarh) = pf(800,000; 400,000) = 0.894427, to 0.01: 0.89.',
-      yearKva:
-        'yearKva = 3,000 kVA, the highest maxKva of the last 11 periods (1 known), June 2026.',
+      yearKva: 'yearKva = 3,000 kVA, the highest maxKva of the last 11 periods (1 known), June 2026.',
       kvarh: 'kvarh = 400,000 kvarh, as the bill prints it.',
     });
     expect(july!.quantities['billedKva']!.uses).toEqual(['maxKva', 'yearKva', 'contractKva']);

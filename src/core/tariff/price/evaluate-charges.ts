@@ -1,5 +1,4 @@
 import type { ChargeDefinition, NumberPlace, Tier } from '../model';
-import { roundToStep } from '../../units';
 import type { BillState, PieceState } from './bill-state';
 import { firstMissing, missingError } from './evaluate-quantities';
 import { evaluateIn, roundedValue, setValue, type Run } from './run';
@@ -28,7 +27,7 @@ export function evaluateCharges(run: Run, bill: BillState): void {
     finest = Math.min(finest, charge.finest);
   }
   // Sums of rounded lines gather crumbs of binary arithmetic below their last digit: they are taken off.
-  bill.total = roundToStep(bill.total, { step: finest, mode: 'nearest' });
+  bill.total = roundedValue(run, bill, 'total', bill.total, { step: finest, mode: 'nearest' });
 }
 
 /** The charge of a line under the last piece that has it. */
@@ -41,7 +40,8 @@ export function lastCharge(bill: BillState, line: number): ChargePlan | undefine
 }
 
 function scaleParts(bill: BillState, line: number, count: number, raw: number, amount: number): void {
-  const scale = raw === 0 ? 0 : amount / raw;
+  // Parts that cancel out add up already.
+  const scale = raw === amount ? 1 : raw === 0 ? 0 : amount / raw;
   for (let p = 0; p < count; p++)
     bill.parts[line * count + p] = count === 1 ? amount : bill.parts[line * count + p]! * scale;
 }

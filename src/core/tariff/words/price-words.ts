@@ -1,9 +1,9 @@
 import { namesIn } from '../formula/ast';
 import { unlessFault } from '../formula/compile';
 import { printFormula } from '../formula/print';
-import type { ChargeDefinition, Expression, NumberPlace, Tier } from '../model';
+import type { ChargeDefinition, Expression, NumberPlace, ScheduleText, Tier } from '../model';
 import { wordNumber } from '../../units';
-import { partsOfLines, placeValue, shareOf, tieredPrice } from '../price/evaluate-charges';
+import { partsOfLines, placeValue, shareOf } from '../price/evaluate-charges';
 import { evaluateIn } from '../price/run';
 import type { ChargePlan } from '../price/text-plan';
 import { bareMoney, money, withUnit, wordName, wordWorking, type Speech } from './speak';
@@ -95,19 +95,32 @@ export function percentageWords(speech: Speech, { per, perName, unit, price }: P
   const { run, state } = speech;
   if (!per) return `${rateWords(speech, price[0]!.rate)} %`;
   const quantity = withUnit(wordName(speech, perName ?? ''), unit ?? '');
-  if (price.length === 1) return `${quantity} x ${rateWords(speech, price[0]!.rate)} %`;
-  return `${wordNumber(tieredPrice(run, state, price, evaluateIn(run, state, per)))} % for ${quantity},`;
+  const reached = tierParts(speech, price, evaluateIn(run, state, per));
+  if (reached.length === 1) return `${quantity} x ${rateWords(speech, reached[0]!.tier.rate)} %`;
+  const words = reached.map(
+    ({ inTier, tier }) => `${withUnit(wordNumber(inTier), unit ?? '')} x ${rateWords(speech, tier.rate)} %`,
+  );
+  return `(${words.join(' + ')})`;
 }
 
 function linesWords({ bill, run, state }: Speech, plan: ChargePlan, isAllAbove: boolean): string {
   const count = plan.ofLines.length;
   if (count > 4) return isAllAbove ? `all ${count} lines above` : `${count} lines`;
   const pieces = bill.pieces.length;
-  return plan.ofLines
-    .map(
-      (line) => `${run.schedule.lineOrder[line]} ${bareMoney(bill.parts[line * pieces + state.index]!, run.schedule)}`,
-    )
-    .join(' + ');
+  const sums = new Map<string, number>();
+  const names = plan.ofLines.map((line) => run.schedule.lineOrder[line]!);
+  for (const [i, line] of plan.ofLines.entries()) {
+    const name = familyOf(names[i]!, names, state.piece.text.text.families);
+    sums.set(name, (sums.get(name) ?? 0) + bill.parts[line * pieces + state.index]!);
+  }
+  return [...sums].map(([name, sum]) => `${name} ${bareMoney(sum, run.schedule)}`).join(' + ');
+}
+
+/** The family a line belongs to if all its lines are among those named; else the line. */
+function familyOf(line: string, among: readonly string[], families: ScheduleText['families']): string {
+  for (const [name, { members }] of families)
+    if (members.includes(line) && members.every((member) => among.includes(member))) return name;
+  return line;
 }
 
 /** Words of a formula with its value. */

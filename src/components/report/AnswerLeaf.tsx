@@ -130,7 +130,7 @@ export function AnswerLeaf({ content, taps, foot }: LeafContext) {
         reference={<p>Frozen under the digest below</p>}
         result={
           <>
-            <h4>Before a setting is changed</h4>
+            <h3>Before a setting is changed</h3>
             <p className="mb-2">
               The figures here are calculated. A licensed engineer releases a setting card; only then does anybody turn
               a rheostat.

@@ -46,6 +46,9 @@ function curveOf(motor: TaskMotor, index: number, found: SearchResult, amount: n
   const { machine } = motor;
   const ratedLimitA = machine.limits?.fieldCurrentA ?? machine.ratedFieldCurrentA;
   const bounds = found.bounds[index];
+  const keepsLimits = (fieldA: number) =>
+    !bounds || (fieldA >= bounds.lowA * (1 - 1e-9) && fieldA <= bounds.highA * (1 + 1e-9));
+  const within = points.filter(({ fieldCurrentA }) => keepsLimits(fieldCurrentA));
   return [
     {
       motorId: motor.id,
@@ -57,14 +60,14 @@ function curveOf(motor: TaskMotor, index: number, found: SearchResult, amount: n
       points: points.map(({ fieldCurrentA, cost }) => ({
         fieldA: fieldCurrentA,
         total: cost,
-        admissible: !bounds || (fieldCurrentA >= bounds.lowA - 1e-6 && fieldCurrentA <= bounds.highA + 1e-6),
+        admissible: keepsLimits(fieldCurrentA),
       })),
-      tolerance: toleranceOf(points, chosenA, found.cost + amount, amount),
+      tolerance: toleranceOf(within, chosenA, found.cost + amount, amount),
     },
   ];
 }
 
-/** The stretch of settings round the chosen one that costs less than a ceiling. */
+/** The stretch of settings round the chosen one, all within the limits, that costs less than a ceiling. */
 function toleranceOf(
   points: { fieldCurrentA: number; cost: number }[],
   chosenA: number,

@@ -1,4 +1,4 @@
-import { changeBetween, dayNumber, isTimeZone, weekdayOf, zoneOffsetMs } from '../load';
+import { changeBetween, dayNumber, isCalendarDate, isTimeZone, weekdayOf, zoneOffsetMs } from '../load';
 import type { BillingPeriod } from '../load';
 
 /** A regular series of intervals. */
@@ -59,8 +59,8 @@ export function shaftLoadSeries(
 ): Float64Array {
   if (!isTimeZone(timeZone)) throw new RangeError(`timeZone must be an IANA zone, got ${timeZone}`);
   const rules = calendar.rules.map((rule, i) => compileRule(rule, `rules[${i}]`, ratedOutputKw));
-  const shutdowns = (calendar.shutdowns ?? []).map(compileDates);
-  const holidays = new Set((calendar.holidays ?? []).map(dayNumber));
+  const shutdowns = (calendar.shutdowns ?? []).map((span, i) => compileDates(span, `shutdowns[${i}]`));
+  const holidays = new Set((calendar.holidays ?? []).map((date, i) => dayOf(date, `holidays[${i}]`)));
   const localMs = localMiddles(grid, timeZone);
   const shaftKw = new Float64Array(grid.count);
   for (let i = 0; i < grid.count; i++) {
@@ -111,7 +111,7 @@ function compileRule(rule: ShiftRule, name: string, ratedOutputKw: number | unde
   if (unknown) throw new RangeError(`${name}.days must be kinds of day such as weekday or sat, got ${unknown}`);
   return {
     days: new Set(rule.days),
-    dates: rule.dates ? compileDates(rule.dates) : null,
+    dates: rule.dates ? compileDates(rule.dates, `${name}.dates`) : null,
     fromMinute: clockMinute(rule.from, `${name}.from`),
     toMinute: clockMinute(rule.to, `${name}.to`),
     shaftKw: loadOf(rule, name, ratedOutputKw),
@@ -141,11 +141,16 @@ function clockMinute(clock: string, name: string): number {
   return minute;
 }
 
-function compileDates(span: BillingPeriod): { from: number; to: number } {
-  const from = dayNumber(span.from);
-  const to = dayNumber(span.to);
-  if (to <= from) throw new RangeError(`dates must end after they begin, got ${span.from} to ${span.to}`);
+function compileDates(span: BillingPeriod, name: string): { from: number; to: number } {
+  const from = dayOf(span.from, `${name}.from`);
+  const to = dayOf(span.to, `${name}.to`);
+  if (to <= from) throw new RangeError(`${name} must end after they begin, got ${span.from} to ${span.to}`);
   return { from, to };
+}
+
+function dayOf(date: string, name: string): number {
+  if (!isCalendarDate(date)) throw new RangeError(`${name} must be a day written YYYY-MM-DD, got ${date}`);
+  return dayNumber(date);
 }
 
 /** Local time of the middle of each interval, as if UTC. The zone's offset is looked up once a day and at its changes. */

@@ -101,8 +101,16 @@ describe('shaftLoadSeries', () => {
     [{ rules: [{ days: ['mon'], from: '06:00', to: '07:00' }] }, /either shaftKw or loadFraction, got neither/],
     [{ rules: [{ days: ['mon'], from: '06:00', to: '07:00', loadFraction: 0.5 }] }, /ratedOutputKw/],
     [{ rules: [{ days: ['mon'], from: '06:00', to: '07:00', shaftKw: -1 }] }, /load >= 0, got -1/],
-    [{ rules: [], shutdowns: [{ from: '2026-02-01', to: '2026-02-01' }] }, /end after they begin/],
-    [{ rules: [], holidays: ['2026-02-30'] }, /2026-02-30/],
+    [{ rules: [], shutdowns: [{ from: '2026-02-01', to: '2026-02-01' }] }, /shutdowns\[0\] must end after they begin/],
+    [
+      {
+        rules: [
+          { days: ['mon'], dates: { from: '2026-2-1', to: '2026-03-01' }, from: '06:00', to: '07:00', shaftKw: 1 },
+        ],
+      },
+      /rules\[0\].dates.from must be a day written YYYY-MM-DD, got 2026-2-1/,
+    ],
+    [{ rules: [], holidays: ['2026-02-30'] }, /holidays\[0\] must be a day .* got 2026-02-30/],
   ])('refuses %j', (calendar, message) => {
     expect(() => shaftLoadSeries(calendar as ShiftCalendar, hourly(0, 1), 'UTC')).toThrow(message);
   });

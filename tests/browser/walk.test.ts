@@ -212,9 +212,8 @@ describe('the whole job, as the three people', () => {
       .first()
       .click();
     await page.getByRole('button', { name: /Choose Plan A/ }).click();
-    await page.waitForFunction(() =>
-      /Plan A saves [\d,]+\sUSD a year/.test(document.querySelector('h1')?.textContent ?? ''),
-    );
+    await page.getByRole('heading', { level: 1, name: /Plan A saves/ }).waitFor();
+    expect(await page.locator('h1').textContent()).toMatch(/Plan A saves [\d,]+\sUSD a year/);
   });
 
   it('6: the report is frozen as edition 1 and mailed to the client', async () => {

@@ -1,5 +1,5 @@
 import { readFileSync } from 'node:fs';
-import { beforeEach, describe, expect, it } from 'vitest';
+import { describe, expect, it } from 'vitest';
 import { letterPath } from '@/server/mail/send';
 import { Letter } from '@/server/models/Letter';
 import { Token } from '@/server/models/Token';
@@ -12,25 +12,12 @@ import {
   resetPassword,
   sendInvitation,
 } from '@/server/services/account';
-import { hashPassword } from '@/server/services/passwords';
-import { checkSignIn, loadActor, toActor } from '@/server/services/sign-in';
+import { loadActor, toActor } from '@/server/services/sign-in';
 import { readToken } from '@/server/services/tokens';
 import { buildActor, buildEngagement, buildUser } from '../setup/build';
+import { buildHolder, fresh, messageOf } from '../setup/passwords';
 
-const old = 'the old password of this person';
-const fresh = { password: 'copper oxide and rain', again: 'copper oxide and rain' };
 const minute = 60_000;
-let oldHash: string;
-
-beforeEach(async () => {
-  oldHash ??= await hashPassword(old);
-});
-
-const buildHolder = (given: Partial<User> = {}) => buildUser({ passwordHash: oldHash, ...given } as never);
-const messageOf = async (email: string, password: string, now?: number) => {
-  const result = await checkSignIn(email, password, now);
-  return 'message' in result ? result.message : 'signed in';
-};
 
 /** The secret in the newest letter to a person: mails are the only place where it stands. */
 async function secretMailedTo(user: User, page: string): Promise<string> {

@@ -1,27 +1,13 @@
-import { beforeEach, describe, expect, it } from 'vitest';
+import { describe, expect, it } from 'vitest';
 import { localPath } from '@/schemas/account';
-import type { User } from '@/server/models/User';
 import type { Actor, Role } from '@/server/policies/actor';
 import { canInvite, canSeeRate, canSetAccess, canSetLicence } from '@/server/policies/people';
 import { changeName, changePassword } from '@/server/services/account';
-import { hashPassword } from '@/server/services/passwords';
-import { checkSignIn, loadActor, toActor } from '@/server/services/sign-in';
+import { loadActor, toActor } from '@/server/services/sign-in';
 import { buildUser } from '../setup/build';
+import { buildHolder, fresh, messageOf, old } from '../setup/passwords';
 
-const old = 'the old password of this person';
-const fresh = { password: 'copper oxide and rain', again: 'copper oxide and rain' };
 const minute = 60_000;
-let oldHash: string;
-
-beforeEach(async () => {
-  oldHash ??= await hashPassword(old);
-});
-
-const buildHolder = (given: Partial<User> = {}) => buildUser({ passwordHash: oldHash, ...given } as never);
-const messageOf = async (email: string, password: string, now?: number) => {
-  const result = await checkSignIn(email, password, now);
-  return 'message' in result ? result.message : 'signed in';
-};
 
 describe('checkSignIn', () => {
   it('answers a wrong password and an unknown e-mail alike, try by try', async () => {

@@ -1,11 +1,11 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import type { RateChangeInput } from '@/schemas/rate';
-import { inTx } from '@/server/db/tx';
 import type { Engagement } from '@/server/models/Engagement';
 import { Rate } from '@/server/models/Rate';
 import type { Actor } from '@/server/policies/actor';
 import * as rates from '@/server/services/rates';
-import { buildActor, buildEngagement } from '../setup/build';
+import { buildActor } from '../setup/build';
+import { buildCrew, buildRate } from '../setup/crew';
 
 const { amountMinorOf, listRates, rateInForce, setRate } = rates;
 
@@ -21,22 +21,16 @@ let sana: Actor;
 let engagement: Engagement;
 
 beforeEach(async () => {
-  ilse = await buildActor({ role: 'partner', name: 'Ilse Aldaran' });
-  tom = await buildActor({ name: 'Tom Renwick' });
-  sana = await buildActor({ name: 'Sana Iwu' });
-  engagement = await buildEngagement({ memberIds: [tom.id, sana.id] });
+  ({ ilse, tom, sana, engagement } = await buildCrew());
 });
-
-const rate = (userId: number, perHourMinor: number, from: string, engagementId: number | null = null) =>
-  inTx(() => Rate.create({ userId, engagementId, perHourMinor, currency: 'USD', from }));
 
 describe('rateInForce', () => {
   it('takes the latest that has begun, and the own rate of the engagement before the general one', async () => {
-    await rate(tom.id, 14000, '2026-01-01');
-    await rate(tom.id, 15000, '2026-07-01');
-    await rate(tom.id, 12000, '2026-03-01', engagement.id);
-    await rate(tom.id, 12500, '2026-09-01', engagement.id);
-    await rate(sana.id, 99900, '2026-01-01');
+    await buildRate(tom.id, 14000, '2026-01-01');
+    await buildRate(tom.id, 15000, '2026-07-01');
+    await buildRate(tom.id, 12000, '2026-03-01', engagement.id);
+    await buildRate(tom.id, 12500, '2026-09-01', engagement.id);
+    await buildRate(sana.id, 99900, '2026-01-01');
     const known = await Rate.findAll();
     const on = (day: string, engagementId = engagement.id, currency = 'USD') =>
       rateInForce(known, { userId: tom.id, engagementId, day, currency })?.perHourMinor ?? null;

@@ -1,15 +1,14 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import { hourInput, mondayOf, parseMinutes, type HourChangeInput, type HourInput } from '@/schemas/hour';
-import { inTx } from '@/server/db/tx';
 import type { Engagement } from '@/server/models/Engagement';
 import { HourEntry } from '@/server/models/HourEntry';
-import { Rate } from '@/server/models/Rate';
 import { Trail } from '@/server/models/Trail';
 import type { Actor, Role } from '@/server/policies/actor';
 import { canEditHours, canLogHours, canReadHours } from '@/server/policies/hours';
 import { openEngagement } from '@/server/services/engagements';
 import * as hours from '@/server/services/hours';
-import { buildActor, buildEngagement } from '../setup/build';
+import { buildActor } from '../setup/build';
+import { buildCrew, buildRate } from '../setup/crew';
 
 describe('parseMinutes', () => {
   it.each([
@@ -68,14 +67,8 @@ let sana: Actor;
 let engagement: Engagement;
 
 beforeEach(async () => {
-  ilse = await buildActor({ role: 'partner', name: 'Ilse Aldaran' });
-  tom = await buildActor({ name: 'Tom Renwick' });
-  sana = await buildActor({ name: 'Sana Iwu' });
-  engagement = await buildEngagement({ memberIds: [tom.id, sana.id] });
+  ({ ilse, tom, sana, engagement } = await buildCrew());
 });
-
-const rate = (userId: number, perHourMinor: number, from: string, engagementId: number | null = null) =>
-  inTx(() => Rate.create({ userId, engagementId, perHourMinor, currency: 'USD', from }));
 
 describe('hours', () => {
   it('are nothing to strangers and clients', async () => {
@@ -138,8 +131,8 @@ describe('hours', () => {
   });
 
   it('are priced at each rate of the day for a partner, and at the own rate for a consultant', async () => {
-    await rate(tom.id, 14500, '2026-01-01');
-    await rate(sana.id, 13800, '2026-01-01');
+    await buildRate(tom.id, 14500, '2026-01-01');
+    await buildRate(sana.id, 13800, '2026-01-01');
     await logHours(tom, engagement.code, entry, now);
     await logHours(sana, engagement.code, { ...entry, time: 50 }, now);
     await logHours(tom, engagement.code, { ...entry, billable: false, time: 30 }, now);

@@ -1,14 +1,13 @@
 import { describe, expect, it } from 'vitest';
 import { localDateStartMs, type LoadSeries } from '@/core/load';
 import { inTx } from '@/server/db/tx';
-import { Intake } from '@/server/models/Intake';
 import type { Actor } from '@/server/policies/actor';
 import { addBill } from '@/server/services/bills';
 import { billsStation } from '@/server/services/bills-station';
 import { openEngagement } from '@/server/services/engagements';
 import { intervalsStation } from '@/server/services/intervals';
 import { keepSeries } from '@/server/services/readings';
-import { buildActor, buildEngagement } from '../setup/build';
+import { buildActor, buildEngagement, buildIntake } from '../setup/build';
 
 const zone = 'America/Chicago';
 const stepMs = 15 * 60_000;
@@ -36,24 +35,8 @@ function evenLoad(from: string, to: string, blank: number[] = []): LoadSeries {
 async function keptEngagement(load: LoadSeries, year: { yearFrom: string; yearTo: string }) {
   const actor: Actor = await buildActor();
   const engagement = await buildEngagement({ memberIds: [actor.id], timeZone: zone, ...year });
-  await inTx(async () => {
-    const intake = await Intake.create({
-      engagementId: engagement.id,
-      kind: 'intervals',
-      fileName: 'even.csv',
-      bytes: 1,
-      sha256: '0'.repeat(64),
-      state: 'kept',
-      columnMap: null,
-      preview: null,
-      report: null,
-      problems: null,
-      broughtById: actor.id,
-      keptAt: new Date(),
-      undoneAt: null,
-    });
-    await keepSeries(engagement.meterId, intake.id, load);
-  });
+  const intake = await buildIntake({ engagementId: engagement.id, fileName: 'even.csv', keptAt: new Date() });
+  await inTx(() => keepSeries(engagement.meterId, intake.id, load));
   return { actor, opened: await openEngagement(actor, engagement.code) };
 }
 

@@ -6,12 +6,11 @@ import { inTx } from '@/server/db/tx';
 import { Edition } from '@/server/models/Edition';
 import type { Engagement } from '@/server/models/Engagement';
 import { HourEntry } from '@/server/models/HourEntry';
-import { Intake } from '@/server/models/Intake';
 import { Letter } from '@/server/models/Letter';
 import type { Actor } from '@/server/policies/actor';
 import { invite } from '@/server/services/account';
 import { todayOf } from '@/server/services/today';
-import { buildActor, buildEngagement, buildUser } from '../setup/build';
+import { buildActor, buildEngagement, buildIntake, buildUser } from '../setup/build';
 import { buildEditionContent } from '../setup/edition';
 
 let ilse: Actor;
@@ -32,23 +31,7 @@ async function waitingFor(actor: Actor, on?: string) {
 }
 
 const file = (kind: 'bills' | 'intervals') =>
-  inTx(() =>
-    Intake.create({
-      engagementId: engagement.id,
-      kind,
-      fileName: 'kestrel-2026.csv',
-      bytes: 10,
-      sha256: 'a'.repeat(64),
-      state: 'read',
-      columnMap: null,
-      preview: null,
-      report: null,
-      problems: null,
-      broughtById: tom.id,
-      keptAt: null,
-      undoneAt: null,
-    }),
-  );
+  buildIntake({ engagementId: engagement.id, kind, fileName: 'kestrel-2026.csv', state: 'read', broughtById: tom.id });
 
 const edition = (shownAt: Date | null) =>
   inTx(() =>

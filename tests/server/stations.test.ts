@@ -2,20 +2,19 @@ import { beforeEach, describe, expect, it } from 'vitest';
 import { addDays, addMonths, localDateStartMs } from '@/core/load';
 import { planDefaults } from '@/schemas/plan';
 import { inTx } from '@/server/db/tx';
-import { Bill } from '@/server/models/Bill';
 import { Edition } from '@/server/models/Edition';
 import type { Engagement } from '@/server/models/Engagement';
 import { HourEntry } from '@/server/models/HourEntry';
-import { Intake } from '@/server/models/Intake';
 import { Motor } from '@/server/models/Motor';
 import { Plan } from '@/server/models/Plan';
 import { TariffChoice } from '@/server/models/TariffChoice';
 import type { Actor } from '@/server/policies/actor';
 import { engagementFrame, standsAt } from '@/server/services/stations';
 import { keepSeries } from '@/server/services/readings';
-import { buildActor, buildEngagement } from '../setup/build';
+import { buildActor, buildEngagement, buildIntake } from '../setup/build';
 import { buildEditionContent } from '../setup/edition';
 import { millMotor, motorOf } from '../setup/motors';
+import { keepBills } from '../setup/tariff';
 
 let partner: Actor;
 let engagement: Engagement;
@@ -31,41 +30,18 @@ async function stateOf(id: string, actor = partner) {
   return `${station?.state}: ${station?.reason}`;
 }
 
-const keepBills = (months: number[]) =>
-  inTx(async () => {
-    for (const month of months) {
-      const periodFrom = addMonths('2025-11-01', month);
-      await Bill.create({
-        engagementId: engagement.id,
-        intakeId: null,
-        periodFrom,
-        periodTo: addMonths(periodFrom, 1),
-        quantities: {},
-        currency: 'USD',
-        totalMinor: null,
-        sourceRow: null,
-      });
-    }
-  });
-
-const fileOnItsWay = (state: 'read' | 'kept', kind: 'bills' | 'intervals') =>
-  inTx(() =>
-    Intake.create({
-      engagementId: engagement.id,
-      kind,
-      fileName: 'meter.csv',
-      bytes: 10,
-      sha256: 'a'.repeat(64),
-      state,
-      columnMap: null,
-      preview: null,
-      report: null,
-      problems: null,
-      broughtById: partner.id,
-      keptAt: null,
-      undoneAt: null,
+/** Bills of months counted from the first of the engagement's year. */
+const keepMonths = (months: number[]) =>
+  keepBills(
+    engagement,
+    months.map((month) => {
+      const from = addMonths('2025-11-01', month);
+      return { from, to: addMonths(from, 1), lines: [], totalMinor: null };
     }),
   );
+
+const fileOnItsWay = (state: 'read' | 'kept', kind: 'bills' | 'intervals') =>
+  buildIntake({ engagementId: engagement.id, kind, state });
 
 describe('engagementFrame', () => {
   it('is nothing to a consultant who is no member, to a client and where there is no such code', async () => {
@@ -97,15 +73,15 @@ describe('engagementFrame', () => {
   it('closes Bills when the year is covered, and says what is missing before', async () => {
     await fileOnItsWay('read', 'bills');
     expect(await stateOf('bills')).toBe('open: 1 file to check');
-    await keepBills([0, 1, 2]);
+    await keepMonths([0, 1, 2]);
     expect(await stateOf('bills')).toBe('open: 3 of 12 kept');
-    await keepBills([4, 5, 6, 7, 8, 9, 10, 11]);
+    await keepMonths([4, 5, 6, 7, 8, 9, 10, 11]);
     // February 2026 has no bill.
     expect(await stateOf('bills')).toBe('open: 28 days without a bill');
-    await keepBills([3]);
+    await keepMonths([3]);
     expect(await stateOf('bills')).toBe('closed: 12 of 12 kept');
     expect(await stateOf('proof')).toBe('open: after the first bill');
-    await keepBills([12]);
+    await keepMonths([12]);
     expect(await stateOf('bills')).toBe('closed: 12 of 12 kept');
     expect(await stateOf('proof')).toBe('open: 1 later bill');
   });

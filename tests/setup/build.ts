@@ -2,6 +2,7 @@ import type { CreationAttributes } from 'sequelize';
 import { inTx } from '@/server/db/tx';
 import { Client } from '@/server/models/Client';
 import { Engagement } from '@/server/models/Engagement';
+import { Intake } from '@/server/models/Intake';
 import { Membership } from '@/server/models/Membership';
 import { Meter } from '@/server/models/Meter';
 import { Site } from '@/server/models/Site';
@@ -68,3 +69,23 @@ export async function buildEngagement(
     return engagement;
   });
 }
+
+/** A file of an engagement, kept unless told otherwise. */
+export const buildIntake = (given: Partial<CreationAttributes<Intake>> & { engagementId: number }) =>
+  inTx(() =>
+    Intake.create({
+      kind: 'intervals',
+      fileName: `${given.kind ?? 'intervals'}.csv`,
+      bytes: 10,
+      sha256: 'a'.repeat(64),
+      state: 'kept',
+      columnMap: null,
+      preview: null,
+      report: null,
+      problems: null,
+      broughtById: null,
+      keptAt: null,
+      undoneAt: null,
+      ...given,
+    }),
+  );

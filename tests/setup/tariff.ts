@@ -5,8 +5,8 @@ import { inTx } from '@/server/db/tx';
 import { Bill } from '@/server/models/Bill';
 import { BillLine } from '@/server/models/BillLine';
 import type { Engagement } from '@/server/models/Engagement';
-import { Intake } from '@/server/models/Intake';
 import { keepSeries } from '@/server/services/readings';
+import { buildIntake } from './build';
 
 /** A large-power schedule of our own: demand adjusted by pf with a summer ratchet, two seasons, two texts, tax. */
 export const quarrySchedule = `schedule: quarry-lp
@@ -65,29 +65,9 @@ export function steadyLoad(from: string, to: string, kwOf: (month: string) => nu
   return load;
 }
 
-/** An intake that brought a file in. */
-export const buildIntake = (engagementId: number, kind: 'intervals' | 'bills' = 'intervals') =>
-  inTx(() =>
-    Intake.create({
-      engagementId,
-      kind,
-      fileName: `${kind}.csv`,
-      bytes: 1,
-      sha256: '0',
-      state: 'kept',
-      columnMap: null,
-      preview: null,
-      report: null,
-      problems: null,
-      broughtById: null,
-      keptAt: new Date(),
-      undoneAt: null,
-    }),
-  );
-
 /** Keeps a load under an engagement's meter. */
 export async function keepLoad(engagement: Engagement, load: LoadSeries): Promise<void> {
-  const intake = await buildIntake(engagement.id);
+  const intake = await buildIntake({ engagementId: engagement.id });
   await inTx(() => keepSeries(engagement.meterId, intake.id, load));
 }
 

@@ -50,6 +50,7 @@ describe.skipIf(!hasShared)('readIntervals on open data (the folder beside the c
     const bytes = new Uint8Array(readFileSync(sharedFile('data', 'steel-plant', 'steel-plant-2018.csv')));
     const { load } = await readIntervals(bytes, { fileName: 'year.csv', timeZone: 'Asia/Seoul' });
     const lines = new TextDecoder().decode(bytes).trim().split(/\r?\n/).slice(1);
+    expect(lines).toHaveLength(load.kwh.length);
     // The rows stand in the order of time without a gap, so row k is interval k.
     lines.forEach((line, at) => {
       const [, kwh, lagging, leading] = line.split(',').map(Number);

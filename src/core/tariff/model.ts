@@ -146,6 +146,8 @@ export type ChargeDefinition =
 
 /** A line of the bill. */
 export type ChargeEntry = Entry & {
+  /** Words for all lines of the charge; `label` adds the window. */
+  heading: string;
   group: ChargeGroup;
   rounding: Rounding;
   when?: Expression;

@@ -178,6 +178,36 @@ describe('estimated intervals', () => {
 });
 
 describe('mistakes', () => {
+  it('in the name of a part are told alone: what it holds stays known', () => {
+    const problems = problemsOf(() =>
+      buildSchedule(
+        'quantites:\n  over: { sum: kwh }\ncharges:\n  fee: { per: over, rate: 1, group: energy }\n  late: { percentOf: [fee], rate: x, group: tax }',
+      ),
+    );
+    expect(problems.map(({ path, message }) => `${path}: ${message}`)).toEqual([
+      'quantites: is not a part of a schedule.',
+      'charges.late.rate: nothing is called "x".',
+    ]);
+  });
+
+  it('in the name of a part of a version are told alone', () => {
+    const problems = problemsOf(() =>
+      buildSchedule(
+        'quantities:\n  kwh: { sum: kwh }\ncharges:\n  fee: { per: kwh, rate: 1, group: energy }\nversions:\n  2026-01-01: { chargs: { more: { amount: 1, group: fixed, before: end } }, currency: USD }\n  2026-02-01: { charges: { more: { amount: 2 } } }',
+      ),
+    );
+    expect(problems.map(({ path }) => path)).toEqual(['versions.2026-01-01.chargs', 'versions.2026-01-01.currency']);
+  });
+
+  it('in the number of a mean are refused', () => {
+    const problems = problemsOf(() =>
+      buildSchedule(
+        'quantities:\n  kw: { highest: kw }\n  top: { past: kw, take: mean of 0 highest, over: last 3 periods }\ncharges:\n  fee: { per: top, rate: 1, group: energy }',
+      ),
+    );
+    expect(problems.map(({ message }) => message)).toEqual(['"mean of 0 highest" is nothing to take of the past.']);
+  });
+
   it('in the price of a broken quantity are told with it', () => {
     const problems = problemsOf(() =>
       buildSchedule(

@@ -259,7 +259,7 @@ describe('mistakes while pricing', () => {
     const { kwhPeak: _, ...rest } = all;
     const july = { from: '2026-07-01', to: '2026-08-01' };
     expect(() => priceQuantities(schedule, [{ ...july, quantities: rest }], {})).toThrow(
-      'July 2026: the bill does not give "kwhPeak" (kWh), which line "Energy, peak" needs.',
+      'July 2026: the bill does not give "kwhPeak" (kWh), which line "Energy" needs.',
     );
     expect(() => priceQuantities(schedule, [{ ...july, quantities: rest }], {})).toThrow(
       expect.objectContaining({ name: 'kwhPeak', period: july }),

@@ -57,7 +57,7 @@ export function isCharged(run: Run, bill: BillState, state: PieceState, plan: Ch
 
 function requireKnown(bill: BillState, state: PieceState, { charge }: ChargePlan, slots: readonly number[]): void {
   const cause = firstMissing(state, slots);
-  if (cause) throw missingError(bill, cause, charge.label ?? charge.name, (name) => unitOf(bill, name));
+  if (cause) throw missingError(bill, cause, charge.heading, (name) => unitOf(bill, name));
 }
 
 function unitOf(bill: BillState, name: string): string {

@@ -39,7 +39,8 @@ export function readCharge(entry: MapEntry, context: TextContext): void {
   }
   const add = (name: string, window: string | undefined): void => {
     const when = head.when && reader.bind(head.when, window);
-    const label = labelOf(head.words.label, entry.key, window);
+    const heading = head.words.label ?? wordsOf(entry.key);
+    const label = window === undefined ? heading : `${heading}, ${wordsOf(window).toLowerCase()}`;
     const charge: ChargeEntry = {
       name,
       slot: scope.slots.of(name),
@@ -47,6 +48,7 @@ export function readCharge(entry: MapEntry, context: TextContext): void {
       group: head.group,
       rounding: head.rounding,
       ...head.words,
+      heading,
       label,
       when,
       definition: raw.define(window),
@@ -66,11 +68,6 @@ export function readCharge(entry: MapEntry, context: TextContext): void {
     }
   for (const [i, window] of windows.entries()) add(members[i]!, window);
   scope.makeFamily(entry.key, { kind: 'line', windows, members }, info);
-}
-
-function labelOf(label: string | undefined, name: string, window: string | undefined): string {
-  const base = label ?? wordsOf(name);
-  return window === undefined ? base : `${base}, ${wordsOf(window).toLowerCase()}`;
 }
 
 /** `fuelRider` in words: `Fuel rider`. */

@@ -48,7 +48,7 @@ function takeOf(map: MapTree, { problems }: TextContext): PastDefinition['take']
   const word = asText(tree, problems, `Write ${takes.join(', ')}.`);
   if (!word) return undefined;
   const several = /^mean of (\d+) highest$/.exec(word.text);
-  if (several) return { kind: 'mean', highest: Math.max(1, Number(several[1])), words: word.text };
+  if (several && Number(several[1]) > 0) return { kind: 'mean', highest: Number(several[1]), words: word.text };
   for (const kind of ['highest', 'lowest', 'mean', 'sum', 'count', 'streak'] as const) {
     if (word.text === kind) return { kind, words: kind };
   }

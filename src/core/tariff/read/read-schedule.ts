@@ -2,7 +2,7 @@ import { addWindowNotes } from './window-notes';
 import { isCalendarDate, isTimeZone } from '../../load';
 import { place } from '../formula/compile';
 import type { Schedule, ScheduleSource, ScheduleText, Straddle } from '../model';
-import { didYouMean } from '../nearest';
+import { didYouMean, nearestName } from '../nearest';
 import { asMap, asText, checkFields } from './fields';
 import { mergeVersion, versionSections } from './merge';
 import { parseTree } from './parse-tree';
@@ -42,8 +42,9 @@ const beginningOfTime = '0001-01-01';
  * @throws {ScheduleError} with the place and remedy of every problem, at most one for each entry
  */
 export function readSchedule(yamlText: string): Schedule {
-  const { root, problems } = parseTree(yamlText);
-  checkFields(root, sections, 'a schedule', problems);
+  const { root: tree, problems } = parseTree(yamlText);
+  checkFields(tree, sections, 'a schedule', problems);
+  const root = withMeantParts(tree, sections);
   checkPlaces(root, problems);
   const notes: Schedule['notes'] = [];
   const head = readHead(root, problems);
@@ -57,6 +58,16 @@ export function readSchedule(yamlText: string): Schedule {
   problems.throwIfAny();
   addNotes(root, read, notes);
   return { ...head, straddle: head.straddle ?? 'days', texts, slots: shared.slots.byName, lineOrder, notes };
+}
+
+/** A misspelt part is read as the one that is meant, so that what it holds stays known and causes no further problems. */
+function withMeantParts(map: MapTree, known: readonly string[]): MapTree {
+  const lacking = known.filter((part) => !entryOf(map, part));
+  const entries = map.entries.map((entry) => {
+    const meant = known.includes(entry.key) ? undefined : nearestName(entry.key, lacking);
+    return meant === undefined ? entry : { ...entry, key: meant };
+  });
+  return { ...map, entries };
 }
 
 /** Outside versions the file's own order holds: `before` says nothing there. */
@@ -182,7 +193,9 @@ function checkVersion(entry: MapEntry, inForce: string | null, problems: Problem
     return undefined;
   }
   const map = asMap(entry.value, problems, 'Write what changes from that day on.');
-  return map && checkFields(map, versionSections, 'a version', problems) ? map : undefined;
+  if (!map || checkFields(map, versionSections, 'a version', problems)) return map;
+  const { entries } = withMeantParts(map, versionSections);
+  return { ...map, entries: entries.filter(({ key }) => versionSections.includes(key)) };
 }
 
 /** Rates and contract inputs that no text uses, and windows that a version makes and nothing uses, are slips. */

@@ -110,6 +110,8 @@ export interface EditionContent {
   others: EditionPlan[];
   bills: EditionBill[];
   findings: EditionFinding[];
+  /** Bills compared with nothing, since readings of their period are missing; absent in editions frozen without it. */
+  billsIncomplete?: number;
   motors: EditionMotor[];
   assumed: AssumedValue[];
   cashFlow: CashFlowMonth[];

@@ -26,7 +26,10 @@ export interface ReconciledBill {
   pricedMinor: number;
   /** Printed total, or the sum of the printed lines where no total is printed; null where neither is. */
   billedMinor: number | null;
+  /** Billed minus priced; null where the bill says nothing, or readings of its period are missing. */
   differenceMinor: number | null;
+  /** Readings missing in its period: priced without them, it cannot be held against what was billed. */
+  missingReadings: number;
   reactiveMinor: number;
   pairs: LinePair[];
   /** Letters of the findings in this bill. */

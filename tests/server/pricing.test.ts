@@ -114,7 +114,7 @@ describe('pricedYear', () => {
     const year = await pricedYear(opened);
     expect(year.bills.map((bill) => bill.priced)).toEqual(priced());
     expect(year.findings).toEqual([]);
-    expect(await findingsCount(opened)).toBe(0);
+    expect(await findingsCount(opened)).toEqual({ findings: 0, incomplete: 0 });
     expect(year.totals.differenceMinor).toBe(0);
     expect(year.readings).toEqual({ present: 35_040, expected: 35_040 });
     expect(year.route).toBe('intervals');
@@ -252,5 +252,51 @@ describe('pricedYear', () => {
     await expect(pricedYear(opened)).rejects.toMatchObject({ status: 409 });
     const station = await tariffStation(actor, engagement.code);
     expect(station.obstacle?.message).toContain('November 2025');
+  });
+});
+
+describe('bills whose readings are missing in part', () => {
+  const spoilt = async (fromDay: number, days: number, timeZone = 'America/Chicago') => {
+    const actor = await buildActor();
+    const engagement = await buildEngagement({ memberIds: [actor.id], timeZone });
+    await keepBills(engagement, priced().map(printAsPriced));
+    const holed = { ...load, kwh: load.kwh.slice(), quality: load.quality.slice() };
+    holed.kwh.fill(NaN, fromDay * 96, (fromDay + days) * 96);
+    holed.quality.fill(2, fromDay * 96, (fromDay + days) * 96);
+    await keepLoad(engagement, holed);
+    await chooseSchedule(actor, engagement.code, choice);
+    return { actor, engagement };
+  };
+
+  it('accuse nobody: the bill right to the cent is compared with nothing, and the page says why', async () => {
+    const made = await spoilt(10, 5);
+    const opened = await openOf(made);
+    const year = await pricedYear(opened);
+    expect(year.findings).toEqual([]);
+    expect(year.bills.map(({ missingReadings }) => missingReadings)).toEqual([5 * 96, ...Array(11).fill(0)]);
+    expect(year.bills[0]?.differenceMinor).toBeNull();
+    expect(year.bills[1]?.differenceMinor).toBe(0);
+    expect(year.totals.differenceMinor).toBe(0);
+    expect(await findingsCount(opened)).toEqual({ findings: 0, incomplete: 1 });
+    const { words } = await tariffPage(made.actor, made.engagement.code);
+    expect(words.headline).toBe('The utility billed rightly: all eleven bills agree to the cent.');
+    expect(words.lead).toContain('480 readings are missing: Nov 2025 is priced too low and compared with no bill.');
+  });
+
+  it('are none to compare where every bill lacks some', async () => {
+    const { actor, engagement } = await spoilt(10, 350);
+    const { words } = await tariffPage(actor, engagement.code);
+    expect(words.headline).toBe(
+      'Readings are missing, so none of the twelve bills can be held against the schedule yet.',
+    );
+    expect(words.tolerance).toBe('No bill could be compared.');
+  });
+
+  it('and a site under another clock than its schedule are told', async () => {
+    const abroad = await spoilt(0, 0, 'Europe/Oslo');
+    const notes = (await pricedYear(await openOf(abroad))).notes.join(' ');
+    expect(notes).toContain('by the clock of America/Chicago, the site lies under that of Europe/Oslo');
+    const here = await spoilt(0, 0);
+    expect((await pricedYear(await openOf(here))).notes.join(' ')).not.toContain('clock');
   });
 });

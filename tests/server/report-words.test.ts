@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { answer, costNow, paidBack, paybackFinding, toDo } from '@/components/report/words';
+import { answer, comesBack, costNow, paidBack, paybackFinding, toDo } from '@/components/report/words';
 import type { EditionContent, EditionPlan } from '@/schemas/edition';
 import { editionLetter } from '@/server/mail/edition-letter';
 import { buildEditionContent } from '../setup/edition';
@@ -99,4 +99,26 @@ describe('what a plan does', () => {
 it('says that bills carry nothing for poor power factor where they do not', () => {
   const content = { ...base, standing: { ...base.standing, reactiveCost: 0 } };
   expect(costNow(content)).toBe('Your bills carry nothing for poor power factor.');
+});
+
+describe('what the audit could not see', () => {
+  const bill = base.bills[0]!;
+  const month = { ...base, bills: [{ ...bill, from: '2025-11-01', to: '2025-12-01' }] };
+  const year = { ...base, bills: [{ ...bill, from: '2025-11-01', to: '2026-11-01' }] };
+
+  it('a month of bills is no year', () => {
+    expect(plain(answer(month))).toMatch(/by 60,000 USD in the 30 days audited, and/);
+    expect(plain(costNow(month))).toMatch(/72,000 USD in the 30 days audited for poor power factor/);
+    expect(plain(answer(year))).toMatch(/by 60,000 USD a year, and/);
+  });
+
+  it('bills without all readings neither agree nor disagree', () => {
+    expect(comesBack({ ...year, billsIncomplete: 1 })).toBe(
+      'Readings are missing in every bill, so none could be compared with the schedule.',
+    );
+    expect(comesBack({ ...year, bills: [bill, bill, bill], billsIncomplete: 1 })).toBe(
+      'Two of three bills agree with the schedule. One could not be compared, since readings are missing.',
+    );
+    expect(comesBack(year)).toMatch(/agree/);
+  });
 });

@@ -39,7 +39,7 @@ export function buildEditionContent(given: Partial<EditionContent> = {}): Editio
     bills: [
       {
         from: '2025-11-01',
-        to: '2025-12-02',
+        to: '2026-11-01',
         before: 960_000,
         after: 900_000,
         billed: 960_100,

@@ -14,6 +14,7 @@ import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
 import type { LeafContext } from './AnswerLeaf';
 import { Picture } from './Picture';
+import { comesBack } from './words';
 import { Leaf, LeafRow } from './Leaf';
 
 /** Twelve bills before and after, in major units. */
@@ -104,7 +105,7 @@ export function BillsLeaf({ content, taps, foot, pictures }: LeafContext & { pic
         }
       >
         {findings.length === 0 ? (
-          <p>Every bill agrees with the schedule within the tolerance of a line.</p>
+          <p>{comesBack(content)}</p>
         ) : (
           <ul>
             {findings.map((finding) => (

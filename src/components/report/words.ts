@@ -1,3 +1,4 @@
+import { dayNumber } from '../../core/load';
 import type { EditionContent, EditionPlan } from '../../schemas/edition';
 import { capacitorCaution } from '../ui/Caution';
 import {
@@ -17,6 +18,14 @@ export const pays = (plan: EditionPlan) => plan.saving > 0 && plan.appraisal.npv
 /** Motors whose field the plan changes. */
 export const changedFields = (plan: EditionPlan) => plan.fields.filter((field) => field.fieldA !== field.todayA);
 
+const wholeYearDays = 350;
+
+/** "a year", or the days the bills cover where they cover less. */
+function span({ bills }: EditionContent): string {
+  const days = bills.reduce((sum, { from, to }) => sum + dayNumber(to) - dayNumber(from), 0);
+  return days >= wholeYearDays ? 'a year' : `in the ${formatCount(days, 'day')} audited`;
+}
+
 const whole = (amount: number, currency: string) => formatMajor(amount, currency, { whole: true });
 
 const bankWords = ({ capacitors }: EditionPlan) =>
@@ -26,28 +35,32 @@ const bankWords = ({ capacitors }: EditionPlan) =>
 export const bankCaution = ({ capacitors }: EditionPlan) => (capacitors ? capacitorCaution : '');
 
 /** Why a plan is not proposed, in the figures that say so. */
-function whyNot(plan: EditionPlan, currency: string): string {
+function whyNot(content: EditionContent): string {
+  const { plan, currency } = content;
   if (Math.round(plan.saving) === 0) return `${plan.name} saves nothing on the bills.`;
-  if (plan.saving < 0) return `${plan.name} would make the bills ${whole(-plan.saving, currency)} a year dearer.`;
+  if (plan.saving < 0)
+    return `${plan.name} would make the bills ${whole(-plan.saving, currency)} ${span(content)} dearer.`;
   const { horizonYears, discountPercent } = plan.economics;
-  return `the ${whole(plan.saving, currency)} a year that ${plan.name} saves do not pay for its work and upkeep in ${formatCount(horizonYears, 'year')} at ${formatNumber(discountPercent, { upTo: 1 })} % interest.`;
+  return `the ${whole(plan.saving, currency)} ${span(content)} that ${plan.name} saves do not pay for its work and upkeep in ${formatCount(horizonYears, 'year')} at ${formatNumber(discountPercent, { upTo: 1 })} % interest.`;
 }
 
 /** The report's answer in one sentence. */
-export function answer({ plan, currency }: EditionContent): string {
-  if (!pays(plan)) return `Leave the fields as they are: ${whyNot(plan, currency)}`;
+export function answer(content: EditionContent): string {
+  const { plan, currency } = content;
+  if (!pays(plan)) return `Leave the fields as they are: ${whyNot(content)}`;
   const changed = changedFields(plan).length;
   const motors = `${changed === 1 ? 'one motor' : `${formatSpelled(changed)} motors`} you already own`;
   const means = formatList([changed > 0 ? motors : null, bankWords(plan)].filter((one) => one !== null));
   const paid =
     plan.paybackWords === 'at once' ? 'nothing has to be bought' : `the work pays for itself in ${plan.paybackWords}`;
-  return `${capital(means)} can cut your power bills by ${whole(plan.saving, currency)} a year, and ${paid}.`;
+  return `${capital(means)} can cut your power bills by ${whole(plan.saving, currency)} ${span(content)}, and ${paid}.`;
 }
 
 /** What poor power factor costs today, for people who do not work with it. */
-export function costNow({ standing, currency }: EditionContent): string {
+export function costNow(content: EditionContent): string {
+  const { standing, currency } = content;
   if (Math.round(standing.reactiveCost) <= 0) return 'Your bills carry nothing for poor power factor.';
-  return `Your bills carry ${whole(standing.reactiveCost, currency)} a year for poor power factor: current the utility must carry that does no work.`;
+  return `Your bills carry ${whole(standing.reactiveCost, currency)} ${span(content)} for poor power factor: current the utility must carry that does no work.`;
 }
 
 /** Motor by motor, from today's field to the plan's. */
@@ -89,13 +102,22 @@ export function paidBack(paybackWords: string): string {
 }
 
 /** Errors found in the bills themselves, apart from all savings. */
-export function comesBack({ findings, bills, currency }: EditionContent): string {
+export function comesBack(content: EditionContent): string {
+  const { findings, bills, currency, billsIncomplete = 0 } = content;
+  const left =
+    billsIncomplete > 0
+      ? ` ${capital(formatSpelled(billsIncomplete))} could not be compared, since readings are missing.`
+      : '';
   const sum = findings.reduce((total, finding) => total + finding.amountMinor, 0);
+  if (findings.length === 0 && billsIncomplete === bills.length)
+    return 'Readings are missing in every bill, so none could be compared with the schedule.';
+  if (findings.length === 0 && left)
+    return `${capital(formatSpelled(bills.length - billsIncomplete))} of ${formatSpelled(bills.length)} bills agree with the schedule.${left}`;
   if (findings.length === 0)
     return `All ${formatSpelled(bills.length)} bills agree with the schedule. Nothing is to be claimed back.`;
   const wrong = new Set(findings.map((finding) => finding.billFrom)).size;
   const verb = wrong === 1 ? 'was' : 'were';
-  return `${capital(formatSpelled(wrong))} of ${formatSpelled(bills.length)} bills ${verb} wrong; ${formatMoney(sum, currency)} is to be claimed from the utility and counted in no figure of this report.`;
+  return `${capital(formatSpelled(wrong))} of ${formatSpelled(bills.length)} bills ${verb} wrong; ${formatMoney(sum, currency)} is to be claimed from the utility and counted in no figure of this report.${left}`;
 }
 
 /** When the saving has paid for the work, and how far ahead one is at the end of what is shown. Major units. */

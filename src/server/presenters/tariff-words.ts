@@ -1,13 +1,30 @@
-import { capital, formatDate, formatMajor, formatMoney, formatNumber, formatSpelled } from '../../components/ui/format';
+import {
+  capital,
+  formatDate,
+  formatList,
+  formatMajor,
+  formatMoney,
+  formatNumber,
+  formatSpelled,
+} from '../../components/ui/format';
 import type { Finding, PricedYear } from '../../schemas/pricing';
 
 const billsWord = (count: number) => (count === 1 ? 'bill' : 'bills');
+
+/** Names of the bills that cannot be compared, since readings of their period are missing. */
+const incompleteBills = ({ bills }: PricedYear) =>
+  bills.filter((bill) => bill.missingReadings > 0).map(({ name }) => name);
 
 /** The sheet's heading: the finding with its amount. */
 export function tariffHeadline(year: PricedYear): string {
   const { bills, currency, totals } = year;
   const money = (minor: number) => formatMoney(minor, currency);
   const compared = bills.filter((bill) => bill.differenceMinor !== null);
+  const incomplete = incompleteBills(year);
+  if (compared.length === 0 && incomplete.length > 0) {
+    const which = bills.length === 1 ? 'the bill cannot' : `none of the ${formatSpelled(bills.length)} bills can`;
+    return `Readings are missing, so ${which} be held against the schedule yet.`;
+  }
   if (compared.length === 0) {
     return `${capital(formatSpelled(bills.length))} ${billsWord(bills.length)} priced at ${money(totals.pricedMinor)}; none says what the utility charged.`;
   }
@@ -42,7 +59,13 @@ export function tariffLead(year: PricedYear, schedule: { title: string; inForce:
       : 'Priced from the quantities printed on the bills, since no meter intervals are kept,';
   const force = schedule.inForce ? ` as in force from ${formatDate(schedule.inForce)}` : '';
   const cost = `Poor power factor costs ${formatMoney(totals.reactiveMinor, currency, { whole: true })} of this year.`;
-  return `${source} on ${schedule.title}${force}. ${cost}`;
+  const incomplete = incompleteBills(year);
+  const missing = formatNumber(readings.expected - readings.present);
+  const left =
+    incomplete.length > 0
+      ? ` ${missing} readings are missing: ${formatList(incomplete)} ${incomplete.length === 1 ? 'is' : 'are'} priced too low and compared with no bill.`
+      : '';
+  return `${source} on ${schedule.title}${force}. ${cost}${left}`;
 }
 
 /** What share of the cost of poor power factor sits in which lines, as a sentence with its amount. */

@@ -9,6 +9,7 @@ import type {
 import type { MotorView } from '../../schemas/motor';
 import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
 import type { PricedYear } from '../../schemas/pricing';
+import { formatNumber } from '../../components/ui/format';
 import { fromMinorUnits } from '../../core/units';
 import { Intake } from '../models/Intake';
 import { Practice } from '../models/Practice';
@@ -95,7 +96,7 @@ function editionMotors(plan: PlanView, motors: MotorView[]): EditionMotor[] {
       motorId: motor.id,
       name: motor.name,
       drives: motor.drives,
-      rated: `${motor.plate.output} ${motor.plate.outputUnit}, ${motor.plate.voltageV} V, ${motor.plate.powerFactor} leading`,
+      rated: `${formatNumber(motor.plate.output, { upTo: 1 })} ${motor.plate.outputUnit}, ${formatNumber(motor.plate.voltageV)} V, ${formatNumber(motor.plate.powerFactor, { decimals: 2 })} leading`,
       fieldTodayA: motor.fieldTodayA,
       fieldPlanA: field?.fieldA ?? motor.fieldTodayA,
       fieldLimitA: planned.fieldLimitA,
@@ -148,6 +149,7 @@ export async function editionContent(actor: Actor, basis: EditionBasis, number: 
       editionBill(before, plan.bills[index] as PricedBillView, priced.bills[index]?.billedMinor ?? null, year.currency),
     ),
     findings: editionFindings(priced),
+    billsIncomplete: priced.bills.filter((bill) => bill.missingReadings > 0).length,
     motors: editionMotors(plan, motors),
     assumed: plan.assumed,
     cashFlow: plan.cashFlow,

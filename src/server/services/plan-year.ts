@@ -1,3 +1,4 @@
+import { dayNumber } from '../../core/load';
 import { formatPayback } from '../../components/ui/format';
 import {
   planDefaults,
@@ -84,9 +85,27 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
       return reason ? [unpricedOf(row, reason, motors)] : [];
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
-    notes: [...new Set(standing.bills.flatMap((bill) => bill.notes))],
+    notes: [...gapNotes(basis, standing), ...new Set(standing.bills.flatMap((bill) => bill.notes))],
     fingerprint: basis.fingerprint,
   };
+}
+
+const wholeYearDays = 350;
+
+/** What makes the figures stand for less than a year. */
+function gapNotes({ task }: PlanBasis, { readings }: TaskSetting): string[] {
+  const days = task.periods.reduce((sum, { from, to }) => sum + dayNumber(to) - dayNumber(from), 0);
+  const { missing, intervals } = readings;
+  return [
+    ...(days < wholeYearDays
+      ? [`The bills cover ${days} days, not a year: every yearly figure stands for these days alone.`]
+      : []),
+    ...(missing > 0
+      ? [
+          `${missing} of ${intervals} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
+        ]
+      : []),
+  ];
 }
 
 /** What a stored plan does. */

@@ -18,6 +18,8 @@ export interface PricingBasis {
   route: PricingRoute;
   schedule: Schedule;
   scheduleText: string;
+  /** IANA zone of the site; the schedule has one of its own. */
+  siteTimeZone: string;
   choice: TariffChoice;
   periods: BillingPeriod[];
   contract: Record<string, number>;
@@ -83,9 +85,10 @@ export async function pricedYear(opened: OpenEngagement): Promise<PricedYear> {
   return entry.year;
 }
 
-/** How many findings the year has. @throws {ServiceError} 409 like {@link pricedYear} */
-export async function findingsCount(opened: OpenEngagement): Promise<number> {
-  return (await pricedYear(opened)).findings.length;
+/** How many findings the year has, and how many bills cannot be compared. @throws {ServiceError} 409 like {@link pricedYear} */
+export async function findingsCount(opened: OpenEngagement): Promise<{ findings: number; incomplete: number }> {
+  const { findings, bills } = await pricedYear(opened);
+  return { findings: findings.length, incomplete: bills.filter((bill) => bill.missingReadings > 0).length };
 }
 
 /**
@@ -164,6 +167,7 @@ async function readBasis(
     route: load ? 'intervals' : 'printed',
     schedule,
     scheduleText: choice.scheduleText,
+    siteTimeZone: opened.site.timeZone,
     choice,
     periods: bills.map(({ from, to }) => ({ from, to })),
     contract: choice.contract,

@@ -1,5 +1,5 @@
 import { formatBillName } from '../../components/ui/format';
-import { addDays } from '../../core/load';
+import { addDays, localDateStartMs } from '../../core/load';
 import type { PricedBill, PricedLine, Schedule } from '../../core/tariff';
 import { toMinorUnits } from '../../core/units';
 import {
@@ -41,7 +41,7 @@ export function reconcileYear(
     totals: totalsOf(bills),
     lookBacks: lookBacksOf(basis.schedule),
     readings: readingsOf(basis),
-    notes: notesOf(bills),
+    notes: [...clockNote(basis), ...notesOf(bills)],
   };
 }
 
@@ -55,17 +55,27 @@ function reconcileBill(basis: PricingBasis, priced: PricedBill, index: number): 
   });
   const pricedMinor = toMinorUnits(priced.total, priced.currency);
   const billedMinor = bill.totalMinor ?? (bill.lines.length > 0 ? bill.linesMinor : null);
+  const missingReadings = missingWithin(basis, bill);
   return {
     name: formatBillName(bill),
     bill,
     priced,
     pricedMinor,
     billedMinor,
-    differenceMinor: billedMinor === null ? null : billedMinor - pricedMinor,
+    differenceMinor: billedMinor === null || missingReadings > 0 ? null : billedMinor - pricedMinor,
+    missingReadings,
     reactiveMinor: toMinorUnits(priced.reactiveCost, priced.currency),
     pairs,
     findings: [],
   };
+}
+
+/** Readings missing in a bill's period; none on the printed route. */
+function missingWithin({ load, schedule }: PricingBasis, { from, to }: { from: string; to: string }): number {
+  if (!load) return 0;
+  const indexOf = (date: string) =>
+    Math.round((localDateStartMs(date, schedule.timeZone) - load.startMs) / (load.stepMinutes * 60_000));
+  return load.quality.subarray(Math.max(0, indexOf(from)), indexOf(to)).filter((mark) => mark === 2).length;
 }
 
 function findingsOfBill(
@@ -74,6 +84,9 @@ function findingsOfBill(
   index: number,
   trial: CauseTrial,
 ): Omit<Finding, 'letter'>[] {
+  const arithmetic = findingOfArithmetic(bill);
+  // Without all readings the price is too low: to call the difference over-billed would accuse the utility falsely.
+  if (bill.missingReadings > 0) return arithmetic ? [arithmetic] : [];
   if (bill.bill.lines.length === 0) {
     const tolerance = lineToleranceMinor * bill.pairs.length;
     if (bill.billedMinor === null || Math.abs(bill.differenceMinor ?? 0) <= tolerance) return [];
@@ -92,7 +105,6 @@ function findingsOfBill(
     const canTry = line !== null && billedMinor !== null;
     return findingOfFault(bill, fault, canTry ? trial.causesOf({ index, lineId: line.id, billedMinor: target }) : []);
   });
-  const arithmetic = findingOfArithmetic(bill);
   return arithmetic ? [...found, arithmetic] : found;
 }
 
@@ -124,6 +136,14 @@ function lookBacksOf({ texts }: Schedule): string[] {
 function readingsOf({ load }: PricingBasis): PricedYear['readings'] {
   if (!load) return { present: 0, expected: 0 };
   return { present: load.quality.filter((mark) => mark !== 2).length, expected: load.quality.length };
+}
+
+/** Hours of use are told by the schedule's clock: a site under another one wants a look. */
+function clockNote({ schedule, siteTimeZone }: PricingBasis): string[] {
+  if (schedule.timeZone === siteTimeZone) return [];
+  return [
+    `The schedule tells hours and days by the clock of ${schedule.timeZone}, the site lies under that of ${siteTimeZone}. Check that it is the schedule of this site; bills are priced by the schedule's clock.`,
+  ];
 }
 
 /** Notes of the bills, each with the bills it stands on; one that stands on every bill without. */

@@ -169,8 +169,8 @@ async function intervalsState(opened: OpenEngagement): Promise<State> {
   return coveredMs >= toMs - fromMs ? closed(reason) : open(reason);
 }
 
-/** How many findings the year shows; null where it cannot be priced yet (no bills or intervals, or a gap in them). */
-async function findingsOf(opened: OpenEngagement): Promise<number | null> {
+/** What the year shows; null where it cannot be priced yet (no bills or intervals, or a gap in them). */
+async function findingsOf(opened: OpenEngagement): Promise<Awaited<ReturnType<typeof findingsCount>> | null> {
   try {
     return await findingsCount(opened);
   } catch (error) {
@@ -182,9 +182,10 @@ async function findingsOf(opened: OpenEngagement): Promise<number | null> {
 async function tariffState(opened: OpenEngagement): Promise<State> {
   const choice = await TariffChoice.findOne({ where: { engagementId: opened.engagement.id }, attributes: ['id'] });
   if (!choice) return open('no schedule yet');
-  const findings = await findingsOf(opened);
-  if (findings === null) return open('schedule chosen');
-  return findings === 0 ? closed('bills agree') : open(`${counted(findings, 'finding')} open`);
+  const year = await findingsOf(opened);
+  if (year === null) return open('schedule chosen');
+  if (year.findings > 0) return open(`${counted(year.findings, 'finding')} open`);
+  return year.incomplete > 0 ? open(`${counted(year.incomplete, 'bill')} without all readings`) : closed('bills agree');
 }
 
 async function motorsState(opened: OpenEngagement): Promise<State> {

@@ -108,6 +108,8 @@ function referencesOf(schedule: Schedule): string[] {
 }
 
 function toleranceOf({ bills, currency }: PricedYear): string {
+  const compared = bills.some(({ differenceMinor }) => differenceMinor !== null);
+  if (!compared) return 'No bill could be compared.';
   const small = bills.filter(({ findings, differenceMinor }) => findings.length === 0 && differenceMinor);
   const tolerance = formatMoney(lineToleranceMinor, currency);
   const names = small.map(({ name }) => name);

@@ -147,7 +147,6 @@ describe('charts drawn without a browser', () => {
       chosen: { fieldA: 150, yearCost: 2_085_000 },
       limitFieldA: 204,
       reserveFieldA: 194,
-      bound: 2_078_000,
       axisName: 'Field current of M-1, A',
     };
     const svg = await draw(<CostCurveChart {...data} {...size} />);
@@ -193,6 +192,17 @@ describe('charts drawn without a browser', () => {
     expect(svg.querySelectorAll('*').length).toBeLessThan(200);
     expect(words(svg)).toEqual(expect.arrayContaining(['Aug', 'missing']));
     expect(carpetTable(data).rows).toHaveLength(365);
+  });
+
+  it('CarpetChart tells the steps of a small plant apart', async () => {
+    const { CarpetChart } = await import('@/components/charts/CarpetChart');
+    // Even from 0 to 6 kW: six thresholds about 1 kW apart, which whole kilowatts could not name.
+    const readings = Array.from({ length: 96 }, (_, at) => (6 * at) / 95);
+    const data = packCarpet({ unit: 'kW', stepMinutes: 15, days: [{ date: '2025-07-10', readings }] });
+    expect(new Set(data.thresholds).size).toBe(6);
+    const svg = await draw(<CarpetChart {...data} {...size} />);
+    const named = words(svg).filter((word) => /^\d+\.\d+( and above, kW)?$/.test(word));
+    expect(new Set(named).size).toBe(6);
   });
 });
 

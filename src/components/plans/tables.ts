@@ -113,7 +113,7 @@ const valueCell = ({ appraisal, economics }: PlanView): LedgerCell => ({
   value: formatNumber(appraisal.npv),
   strong: true,
   tone: appraisal.npv < 0 ? 'fault' : undefined,
-  note: `${economics.horizonYears} years, ${formatNumber(economics.discountPercent, { upTo: 1 })} %`,
+  note: `${economics.horizonYears} years, ${formatNumber(economics.discountPercent, { upTo: 1 })}\u00a0%`,
 });
 
 /** One bill line by line, before and after; each figure can be asked why. */

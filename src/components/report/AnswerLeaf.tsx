@@ -1,6 +1,6 @@
 import type { EditionContent, EditionPlan } from '../../schemas/edition';
 import { Caution } from '../ui/Caution';
-import { formatMajor, formatNumber, formatPeriod } from '../ui/format';
+import { formatMajor, formatNumber, formatPeriod, formatQuantity } from '../ui/format';
 import type { LedgerColumn, LedgerRow } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import { Stamp } from '../ui/Stamp';
@@ -50,7 +50,7 @@ function comparison(content: EditionContent): { columns: LedgerColumn[]; rows: L
       row('payback', 'Pays back', (plan) => plan.paybackWords, 'none'),
       row(
         'npv',
-        `Worth today, ${horizonYears} years at ${discountPercent} %, ${currency}`,
+        `Worth today, ${horizonYears} years at ${formatQuantity(discountPercent, '%', { upTo: 1 })}, ${currency}`,
         (plan) => whole(plan.appraisal.npv),
         'none',
       ),

@@ -1,5 +1,5 @@
 import type { EditionContent } from '../../schemas/edition';
-import { formatNumber, formatPayback, formatPercent } from '../ui/format';
+import { formatNumber, formatPayback, formatPercent, formatQuantity } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums, type SumRow } from '../ui/ResultSums';
@@ -46,7 +46,10 @@ function sums({ plan, currency }: EditionContent): SumRow[] {
     { label: 'Upkeep a year', value: formatNumber(plan.yearlyUpkeep) },
     { label: 'Net a year', value: formatNumber(plan.saving - plan.yearlyUpkeep), kind: 'total' },
     { label: 'Pays back', value: plan.paybackWords, kind: 'strong' },
-    { label: `At ${economics.discountPercent} % interest`, value: formatPayback(appraisal.discountedPaybackYears) },
+    {
+      label: `At ${formatQuantity(economics.discountPercent, '%', { upTo: 1 })} interest`,
+      value: formatPayback(appraisal.discountedPaybackYears),
+    },
     { label: `Worth today, ${economics.horizonYears} years`, value: formatNumber(appraisal.npv) },
     { label: 'Internal rate', value: appraisal.irr === null ? 'none' : formatPercent(appraisal.irr) },
   ];
@@ -66,7 +69,12 @@ export function MoneyLeaf({ content, taps, foot, pictures, page }: MoneyLeafProp
         first
         number={`${page}.1`}
         title="Payback"
-        reference={<p>Work and upkeep as quoted or entered; prices rise {plan.economics.escalationPercent} % a year</p>}
+        reference={
+          <p>
+            Work and upkeep as quoted or entered; prices rise{' '}
+            {formatQuantity(plan.economics.escalationPercent, '%', { upTo: 1 })} a year
+          </p>
+        }
       >
         <Picture svg={pictures['payback-page']} label="Payback" />
       </LeafRow>

@@ -47,7 +47,7 @@ function figures({ plan, currency }: EditionContent): [label: string, value: str
     ['Pays for itself', paybackFigure(plan)],
     ...spread(plan),
     [
-      `Worth today, ${horizonYears} years at ${formatNumber(discountPercent, { upTo: 1 })} %`,
+      `Worth today, ${horizonYears} years at ${formatNumber(discountPercent, { upTo: 1 })}\u00a0%`,
       whole(plan.appraisal.npv),
     ],
   ];

@@ -63,7 +63,10 @@ function sentenceOf(bill: ReconciledBill, fault: Fault, kind: FindingKind, cause
   if (fitting.length > 0) {
     const exact =
       fitting[0]!.missMinor === 0 ? 'to the cent' : `within ${money(Math.abs(fitting[0]!.missMinor), bill)}`;
-    const others = fitting.length > 1 ? ` ${fitting.length - 1} more fit as well; see the causes tried.` : '';
+    const others =
+      fitting.length > 1
+        ? ` ${fitting.length === 2 ? 'One more cause fits' : `${fitting.length - 1} more causes fit`} as well; see the causes tried.`
+        : '';
     return `${head} Explained ${exact} by: ${fitting[0]!.label}.${others}`;
   }
   const tried = best

@@ -84,7 +84,7 @@ async function findingsToDecide(opened: OpenEngagement, stations: StationView[],
     days: daysBetween(date, today),
     title: one
       ? `Finding ${letters[0]}: ${year.findings[0]?.title}`
-      : `Findings ${letters[0]} to ${letters.at(-1)} in the bills`,
+      : `Findings ${letters[0]} ${letters.length === 2 ? 'and' : 'to'} ${letters.at(-1)} in the bills`,
     where: whereOf(opened),
     why: one
       ? (year.findings[0]?.sentence ?? '')

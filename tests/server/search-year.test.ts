@@ -41,7 +41,7 @@ describe('the stretch of settings that are equally good', () => {
             // 5 % of 150 A is held back: 142.5 A is the limit, the motor stands at 148 A.
             machine: buildMotor({ limits: { reserve: 0.05 } }),
             calendar: {
-              rules: [{ days: ['mon', 'tue', 'wed', 'thu', 'fri'], fromHour: 6, toHour: 22, load: 1200, unit: 'kW' }],
+              rules: [{ days: ['Mon', 'Tue', 'Wed', 'Thu', 'Fri'], fromHour: 6, toHour: 22, load: 1200, unit: 'kW' }],
               shutdowns: [],
             },
             fieldTodayA: 148,

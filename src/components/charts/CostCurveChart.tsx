@@ -24,8 +24,6 @@ export interface CostCurveData {
   /** Field limit, and the lower one after the reserve. */
   limitFieldA: number;
   reserveFieldA?: number;
-  /** No setting can cost less than this: every interval at its own best kvar. */
-  bound?: number | null;
   /** "Field current of M-1, A (M-2 at 104 A)". */
   axisName: string;
 }
@@ -98,24 +96,12 @@ function StandingMark({ data, plot, palette, divisor }: Parts) {
 }
 
 function Marks({ data, plot, palette, divisor }: Parts) {
-  const { chosen, standing, bound } = data;
+  const { chosen, standing } = data;
   const x = plot.x(chosen.fieldA);
   const y = plot.y(chosen.yearCost / divisor);
   const above = y - 56 > plot.top;
   return (
     <>
-      {bound != null && (
-        <>
-          <path
-            d={`M${plot.left} ${plot.y(bound / divisor)}H${plot.right}`}
-            stroke={palette.ink}
-            strokeDasharray="8 4"
-          />
-          <Words x={plot.left + 6} y={plot.y(bound / divisor) + 14} palette={palette} bold halo>
-            {`${plot.right - plot.left < 380 ? 'bound' : 'bound, every interval its own best kvar'}: ${formatNumber(bound)}`}
-          </Words>
-        </>
-      )}
       {standing && <StandingMark data={data} plot={plot} palette={palette} divisor={divisor} />}
       <path d={`M${x} ${y}v${above ? -34 : 34}`} stroke={palette.ink} />
       <PointMark x={x} y={y} shape="diamond" palette={palette} />
@@ -134,7 +120,7 @@ export function CostCurveChart({ width, height, palette = pagePalette, ...data }
   const hatch = useHatch();
   const narrow = width < narrowBelow;
   const costs = [...data.points, data.chosen, ...(data.standing ? [data.standing] : [])].map((p) => p.yearCost);
-  const lowest = Math.min(...costs, data.bound ?? Infinity);
+  const lowest = Math.min(...costs);
   const scale = moneyScale(Math.max(...costs));
   const divisor = Math.min(scale.divisor, 1000);
   const yTicks = niceTicks(

@@ -72,6 +72,18 @@ describe('at unity from printed figures', () => {
   });
 });
 
+describe('at unity from intervals', () => {
+  it('what only that run lacks is not noted on the bill', () => {
+    const schedule = buildSchedule(
+      'quantities:\n  lagKw: { highest: kw, where: kvarLagging > 10 }\ncharges:\n  demand: { per: lagKw, rate: 1, group: demand }',
+      { demandWindow: '60 min' },
+    );
+    const load = buildSeries({ ...march, timeZone: 'Europe/Lisbon', stepMinutes: 60, powers: () => [50, 20, 0] });
+    const [bill] = priceBills(schedule, load, { periods: [march] });
+    expect(bill).toMatchObject({ total: 50, reactiveCost: 50, notes: [] });
+  });
+});
+
 describe('versions that add', () => {
   const text = `contract:
   firm: { unit: kW, default: 10 }

@@ -90,7 +90,7 @@ export class IntervalSource implements QuantitySource {
       if (cause) state.missing[slot] = cause;
       else {
         setRounded(run, bill, state, quantity, this.valueOf(run, bill, state, slot, definition));
-        if (definition.operation !== 'sum' && state.atCell[slot]! < 0) {
+        if (!run.isUnity && definition.operation !== 'sum' && state.atCell[slot]! < 0) {
           bill.notes?.add(`"${quantity.name}" is 0: no cell of the period is whole and meets its condition.`);
         }
       }

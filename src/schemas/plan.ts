@@ -206,6 +206,8 @@ export interface YearView {
   plans: PlanView[];
   unpriced: UnpricedPlan[];
   chosen: PlanView | null;
+  /** What makes the figures stand for less than a year: bills or readings that are not there. */
+  gaps: string[];
   /** Distinct notes of the priced bills. */
   notes: string[];
   /** Changes with motors, bills, readings and tariff: what a search was made on. */

@@ -3,6 +3,7 @@ import { Writable } from 'node:stream';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import pino from 'pino';
+import { Op } from 'sequelize';
 import { afterAll, describe, expect, it } from 'vitest';
 import { mailEditionInput } from '@/schemas/edition';
 import { motorInput } from '@/schemas/motor';
@@ -11,6 +12,7 @@ import { inTx } from '@/server/db/tx';
 import { configureEnv } from '@/server/env';
 import { readJson } from '@/server/http';
 import { logOptions } from '@/server/log';
+import { Bill } from '@/server/models/Bill';
 import { User } from '@/server/models/User';
 import { changeMotor, openMotor } from '@/server/services/motors';
 import { planStart } from '@/server/services/plan-start';
@@ -150,5 +152,23 @@ describe('a plan that cannot be priced any more', () => {
     const { capacitors, capitalCost, yearlyUpkeep, economics } = stored;
     expect(form?.start).toMatchObject({ capacitors, capitalCost, yearlyUpkeep, economics });
     expect(form?.start.fields).toContainEqual({ motorId: millId, fieldA: 190 });
+  });
+});
+
+describe('a year that is not all there', () => {
+  it('says what its figures stand for; a whole one says nothing', async () => {
+    const { opened } = await buildPlansStation((load) => load.quality.fill(2, 960, 1056));
+    const whole = await plansOf(opened);
+    expect(whole.gaps).toEqual([
+      '96 of 35,040 readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.',
+    ]);
+    const later = await Bill.findAll({
+      where: { engagementId: opened.engagement.id, periodFrom: { [Op.gte]: '2026-01-01' } },
+    });
+    await inTx(() => Promise.all(later.map((bill) => bill.destroy())));
+    expect((await plansOf(opened)).gaps[0]).toBe(
+      'The bills cover 61 days, not a year: every yearly figure stands for these days alone.',
+    );
+    expect((await plansOf((await buildPlansStation()).opened)).gaps).toEqual([]);
   });
 });

@@ -154,6 +154,6 @@ export async function editionContent(actor: Actor, basis: EditionBasis, number: 
     assumed: plan.assumed,
     cashFlow: plan.cashFlow,
     sources,
-    notes: year.notes,
+    notes: [...year.gaps, ...year.notes],
   };
 }

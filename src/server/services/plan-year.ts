@@ -1,4 +1,5 @@
 import { dayNumber } from '../../core/load';
+import { wordNumber } from '../../core/units';
 import { formatPayback } from '../../components/ui/format';
 import {
   planDefaults,
@@ -85,7 +86,8 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
       return reason ? [unpricedOf(row, reason, motors)] : [];
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
-    notes: [...gapNotes(basis, standing), ...new Set(standing.bills.flatMap((bill) => bill.notes))],
+    gaps: gapsOf(basis, standing),
+    notes: [...new Set(standing.bills.flatMap((bill) => bill.notes))],
     fingerprint: basis.fingerprint,
   };
 }
@@ -93,7 +95,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
 const wholeYearDays = 350;
 
 /** What makes the figures stand for less than a year. */
-function gapNotes({ task }: PlanBasis, { readings }: TaskSetting): string[] {
+function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
   const days = task.periods.reduce((sum, { from, to }) => sum + dayNumber(to) - dayNumber(from), 0);
   const { missing, intervals } = readings;
   return [
@@ -102,7 +104,7 @@ function gapNotes({ task }: PlanBasis, { readings }: TaskSetting): string[] {
       : []),
     ...(missing > 0
       ? [
-          `${missing} of ${intervals} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
+          `${wordNumber(missing, 1)} of ${wordNumber(intervals, 1)} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
         ]
       : []),
   ];

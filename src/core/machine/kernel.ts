@@ -53,7 +53,7 @@ export function excitation(
  * @param z  Impedance per phase. [ohm]
  * @returns reactivePowerVar absorbed (negative when delivered), the smaller load angle, the current. [var], [rad], [A]
  * @throws {PullOutError} when the load exceeds what this emf can hold
- * @throws {RangeError} naming the argument out of range; activePowerW below the most it can generate is
+ * @throws {RangeError} naming the argument out of range; activePowerW below the least over the angle is
  * @source [FIT] sec. 5.6 with Ra kept; Ra = 0 gives the printed power-angle equation.
  */
 export function reactivePower(
@@ -72,7 +72,7 @@ export function reactivePower(
   const angle = smallestAngleFor(curve, at.activePowerW, top);
   if (angle === null) {
     const least = valueAt(curve, leastAngle(curve));
-    throw new RangeError(`activePowerW must be >= ${least}, all it can generate, got ${at.activePowerW}`);
+    throw new RangeError(`activePowerW must be >= ${least}, the least over the load angle, got ${at.activePowerW}`);
   }
   const { iq, x } = axisCurrents(at.phaseVoltageV, at.emfV, angle, zed);
   return {

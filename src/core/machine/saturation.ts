@@ -61,7 +61,11 @@ export function curveCurrentA(curve: SaturationCurve, voltagePu: number): number
   return i[k - 1]! + share * (i[k]! - i[k - 1]!);
 }
 
-/** Field amperes beyond the air-gap line that saturation costs at a voltage behind leakage reactance. [A], >= 0 */
+/**
+ * Field amperes beyond the air-gap line that saturation costs at a voltage behind leakage reactance. [A]
+ *
+ * Not negative between the points; beyond the last one only where the segment prolonged is steeper than the air-gap line.
+ */
 export function saturationIncrementA(curve: SaturationCurve, voltagePu: number): number {
-  return Math.max(0, curveCurrentA(curve, voltagePu) - voltagePu / curve.airGapPuPerA);
+  return curveCurrentA(curve, voltagePu) - voltagePu / curve.airGapPuPerA;
 }

@@ -189,10 +189,11 @@ function saturatedEmf(model: MotorModel, fieldCurrentA: number, v: number, angle
     const q = v * (Math.sin(angle) * iq - Math.cos(angle) * x);
     return fieldCurrentFor(model, e, v, p, q) - fieldCurrentA;
   };
-  const highest = fieldCurrentA * curve.airGapPuPerA;
+  let highest = fieldCurrentA * curve.airGapPuPerA;
   const above = excess(highest);
-  if (above <= 0) return highest;
-  let lowest = highest - above * curve.airGapPuPerA;
+  if (above === 0) return highest;
+  let lowest = above > 0 ? highest - above * curve.airGapPuPerA : highest;
   for (let i = 0; i < 60 && excess(lowest) > 0; i++) lowest -= Math.max(0.1, Math.abs(lowest));
+  for (let i = 0; i < 60 && excess(highest) < 0; i++) highest += Math.max(0.1, Math.abs(highest));
   return brentRoot(excess, lowest, highest, 'emf of a saturated machine');
 }

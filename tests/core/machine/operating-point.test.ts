@@ -177,6 +177,20 @@ describe('operatingPoint at the limits of its range', () => {
     expect(rated.panelCurrentA).toBeCloseTo(5, 9);
     expect(rated.fieldCurrentA).toBeCloseTo(150, 9);
   });
+
+  it('prolongs the last segment of a curve as it is, even where it is steeper than the air-gap line', () => {
+    // Steepest chord 1.0 pu at 100 A; last segment 0.6 pu in 50 A. Open circuit at 1.1 pu: 100 + 0.1 x 50/0.6 = 108.333 A.
+    const curve = [
+      { fieldCurrentA: 50, voltagePu: 0.4 },
+      { fieldCurrentA: 100, voltagePu: 1 },
+    ];
+    const motor = buildLosslessMotor({ ratedPowerFactor: 1, xlPu: 0, openCircuitCurve: curve });
+    const idle = operatingPoint(motor, { shaftKw: 0, voltagePu: 1.1, kvar: 0 });
+    expect(idle.fieldCurrentA).toBeCloseTo(100 + 5 / 0.6, 9);
+    const back = operatingPoint(motor, { shaftKw: 0, voltagePu: 1.1, fieldCurrentA: 100 + 5 / 0.6 });
+    expect(back.emfPu).toBeCloseTo(1.1, 9);
+    expect(back.kvar).toBeCloseTo(0, 6);
+  });
 });
 
 describe('operatingPoint for random motors', () => {

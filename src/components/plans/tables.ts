@@ -50,6 +50,7 @@ export function plansTable(year: YearView, shownId: number | null): LedgerData {
         head: plan.name,
         unit: plan.id === null ? 'as it runs now' : plan.chosen ? 'chosen' : 'proposed',
         align: 'right',
+        wrap: true,
         picked: plan.id !== null && plan.id === shownId,
       })),
     ],

@@ -1,7 +1,15 @@
 import type { AssumedValue } from '../../schemas/motor';
 import type { ChargeGroup, PlanField, PlanView, YearView } from '../../schemas/plan';
 import { capacitorCaution } from '../ui/Caution';
-import { formatBillName, formatList, formatMajor, formatNumber, formatQuantity, formatSpelled } from '../ui/format';
+import {
+  capital,
+  formatBillName,
+  formatList,
+  formatMajor,
+  formatNumber,
+  formatQuantity,
+  formatSpelled,
+} from '../ui/format';
 
 /** Groups in the order of the tables, in words. */
 export const groupNames: [ChargeGroup, string][] = [
@@ -137,7 +145,10 @@ export function billsFinding(year: YearView, plan: PlanView): { finding: string;
   const most = saved.indexOf(Math.max(...saved));
   const peak = plan.bills[most];
   const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
-  const many = fallen === saved.length ? 'Every bill falls' : `${fallen} of ${saved.length} bills fall`;
+  const many =
+    fallen === saved.length
+      ? 'Every bill falls'
+      : `${capital(formatSpelled(fallen))} of ${formatSpelled(saved.length)} bills fall`;
   const finding =
     fallen === 0 || !peak ? 'No bill falls.' : `${many}; ${formatBillName(peak)} most, by ${money(saved[most] ?? 0)}.`;
   const energy = plan.groupTotals.energy - year.standing.groupTotals.energy;

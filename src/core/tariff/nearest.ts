@@ -15,7 +15,8 @@ export function nearestName(
   let bestDistance = most + 0.5;
   for (const name of known) {
     if (name === typed) continue;
-    const distance = editDistance(typed.toLowerCase(), name.toLowerCase());
+    if (Math.abs(name.length - typed.length) >= bestDistance) continue;
+    const distance = editDistance(typed.toLowerCase(), name.toLowerCase(), bestDistance);
     if (distance < bestDistance) {
       best = name;
       bestDistance = distance;
@@ -24,7 +25,8 @@ export function nearestName(
   return best;
 }
 
-function editDistance(a: string, b: string): number {
+/** Distance of two words; once it cannot be less than `most`, some number from `most` on. */
+function editDistance(a: string, b: string, most: number): number {
   let older: number[] = [];
   let previous = Array.from({ length: b.length + 1 }, (_, j) => j);
   for (let i = 1; i <= a.length; i++) {
@@ -35,6 +37,8 @@ function editDistance(a: string, b: string): number {
       if (i > 1 && j > 1 && a[i - 1] === b[j - 2] && a[i - 2] === b[j - 1]) cost = Math.min(cost, older[j - 2]! + 1);
       current.push(cost);
     }
+    // A later row holds nothing less than the least of the two before it.
+    if (Math.min(...current) >= most && Math.min(...previous) >= most) return most;
     older = previous;
     previous = current;
   }

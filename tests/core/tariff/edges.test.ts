@@ -59,6 +59,14 @@ versions:
 });
 
 describe('at unity from printed figures', () => {
+  it('the kVA of the instant of the highest kW is that kW', () => {
+    const schedule = buildSchedule(
+      'quantities:\n  maxKw: { highest: kw }\n  kvaThen: { value: kva, at: maxKw }\ncharges:\n  demand: { per: kvaThen, rate: 2, group: demand }',
+    );
+    const [bill] = priceQuantities(schedule, [{ ...march, quantities: { maxKw: 300, kvaThen: 500 } }]);
+    expect(bill).toMatchObject({ total: 1000, reactiveCost: 400 });
+  });
+
   it('what rests on a figure nobody gives keeps what the bill prints', () => {
     const schedule = buildSchedule(
       'quantities:\n  maxKw: { highest: kw }\n  agreed: { given: kW }\n  billed: { formula: max(maxKw; agreed), unit: kW }\ncharges:\n  demand: { per: billed, rate: 1, group: demand }',

@@ -2,7 +2,7 @@ import { place } from '../formula/compile';
 import { isSame } from '../formula/functions';
 import { channelOf } from '../channels';
 import { printFormula } from '../formula/print';
-import type { MeasureDefinition, QuantityEntry, ValueDefinition } from '../model';
+import type { MeasureDefinition, QuantityDefinition, QuantityEntry, ValueDefinition } from '../model';
 import type { BillState, PieceState } from './bill-state';
 import { firstMissing, keepPrinted } from './evaluate-quantities';
 import { evaluateIn, setRounded, type QuantitySource, type Run } from './run';
@@ -69,9 +69,14 @@ export class PrintedSource implements QuantitySource {
     quantity: QuantityEntry,
     basis: 'kwh' | 'kw',
   ): number | undefined {
-    const key = kindKey(quantity.definition as Measured);
+    const measured = quantity.definition as Measured;
+    const key = kindKey(measured);
     for (const other of state.piece.text.text.quantities) {
       const { definition } = other;
+      // The power of the very cell that set the highest or lowest power is that power itself.
+      const isItself = measured.kind === 'value' && measured.at === other.name && isOneExtreme(definition, basis);
+      const own = isItself ? this.printed(bill, other) : undefined;
+      if (own !== undefined) return own;
       if (definition.kind !== 'measure' && definition.kind !== 'value') continue;
       if (definition.channel !== basis || kindKey(definition) !== key) continue;
       const value = this.printed(bill, other);
@@ -79,6 +84,15 @@ export class PrintedSource implements QuantitySource {
     }
     return undefined;
   }
+}
+
+function isOneExtreme(definition: QuantityDefinition, basis: 'kwh' | 'kw'): boolean {
+  return (
+    definition.kind === 'measure' &&
+    definition.operation !== 'sum' &&
+    definition.count === 1 &&
+    definition.channel === basis
+  );
 }
 
 function kindKey(definition: Measured): string {

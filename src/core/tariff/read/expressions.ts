@@ -117,9 +117,8 @@ export class ExpressionReader {
         `"${name}" is a channel of the meter, not a quantity.`,
         `Measure it above, for instance total: { ${name.startsWith('kwh') || name.endsWith('h') || name.startsWith('kvarh') ? 'sum' : 'highest'}: ${name} }.`,
       ];
-    const later = nearestName(name, this.scope.later.keys());
     const near = nearestName(name, [...this.scope.knownNames(), 'days', 'hours']);
-    const remedy = near ?? later;
+    const remedy = near ?? nearestName(name, this.scope.later.keys());
     return [
       `nothing is called "${name}".`,
       remedy ? `Did you mean "${remedy}"?` : 'Names used here are made above: contract inputs, rates, quantities.',

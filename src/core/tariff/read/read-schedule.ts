@@ -201,24 +201,16 @@ function checkVersion(entry: MapEntry, inForce: string | null, problems: Problem
 /** Rates and contract inputs that no text uses, and windows that a version makes and nothing uses, are slips. */
 function checkUnused(root: MapTree, read: ReadText[], problems: Problems): void {
   const used = new Set(read.flatMap(({ context }) => [...context.scope.used]));
-  const trees = [root, ...versionMaps(root)];
-  for (const tree of trees) {
+  const others = new Set(
+    read.flatMap(({ context }) => [...context.rates, ...context.contract].map(({ name }) => name)),
+  );
+  const usedOthers = [...others].filter((name) => used.has(name));
+  for (const tree of [root, ...versionMaps(root)]) {
     for (const section of ['contract', 'rates']) {
       const map = valueOf(tree, section);
       for (const entry of map?.kind === 'map' ? map.entries : []) {
-        const others = [...read.flatMap(({ context }) => [...context.rates, ...context.contract])].map(
-          (other) => other.name,
-        );
         if (!used.has(entry.key) && !isWord(entry.value, 'removed'))
-          problems.add(
-            entry,
-            'is used nowhere.',
-            didYouMean(
-              entry.key,
-              others.filter((name) => used.has(name)),
-              'Use it or leave it out.',
-            ),
-          );
+          problems.add(entry, 'is used nowhere.', didYouMean(entry.key, usedOthers, 'Use it or leave it out.'));
       }
     }
   }

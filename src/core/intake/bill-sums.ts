@@ -33,6 +33,21 @@ function shareAddingUp(sums: Sums, total: ColumnProfile, lines: readonly ColumnP
   return told.length < 2 ? 0 : fitting.length / told.length;
 }
 
+/** Without a column named so, one that is the sum of all other lines in every bill is the total, not a line. */
+function totalBySum(sums: Sums): ColumnProfile | undefined {
+  const charges = sums.profiles.filter(({ index }) => sums.findings.get(index)?.role === 'charge');
+  if (charges.length < 3) return undefined;
+  return charges.find(
+    (total) =>
+      sums.rows.some((row) => sumOf(sums, row, [total]) !== 0) &&
+      shareAddingUp(
+        sums,
+        total,
+        charges.filter((other) => other !== total),
+      ) >= shareThatAddsUp,
+  );
+}
+
 function* combinations<Item>(items: readonly Item[]): Generator<Item[]> {
   for (let mask = 1; mask < 1 << items.length; mask++) yield items.filter((_, index) => mask & (1 << index));
 }
@@ -43,7 +58,10 @@ function* combinations<Item>(items: readonly Item[]): Generator<Item[]> {
  */
 export function settleSums(sums: Sums): void {
   const { profiles, findings } = sums;
-  const total = profiles.find(({ index }) => findings.get(index)?.role === 'total');
+  const named = profiles.find(({ index }) => findings.get(index)?.role === 'total');
+  const found = named ? undefined : totalBySum(sums);
+  if (found) findings.set(found.index, { role: 'total', tests: [[true, 'The sum of the other lines in every bill']] });
+  const total = named ?? found;
   const charges = profiles.filter(({ index }) => findings.get(index)?.role === 'charge');
   const undecided = profiles.filter(({ index }) => isUndecided(findings.get(index)));
   if (!total || undecided.length === 0 || undecided.length > mostUndecided) return;

@@ -5,6 +5,7 @@ import { reportOfBills } from './bill-report';
 import type { BillPlan } from './bill-plan';
 import { IntakeError, intakeError } from './errors';
 import { columnLetter } from './grid';
+import { openNotes } from './guesses';
 import { isBlankWord } from './numbers';
 import type { BillReading, BillRecord, ColumnUse, Guess, IntakeNote, IntakeProblem, ReadOptions } from './types';
 import { scaled, unitMeaning } from './units';
@@ -14,7 +15,7 @@ import { scaled, unitMeaning } from './units';
  * @throws {IntakeError} for periods that cannot be told, run backwards or overlap, and for cells that hold no figure.
  */
 export function readPlannedBills(plan: BillPlan, options: ReadOptions): BillReading & { guesses: Guess[] } {
-  const notes: IntakeNote[] = [];
+  const notes: IntakeNote[] = openNotes(plan.guesses, plan.opened);
   const dated = readDates(plan, options, notes);
   const ends = settleEnds(plan, dated, options, notes);
   const bills = dated.map((row) => billOf(plan, row, options));

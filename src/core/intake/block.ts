@@ -67,7 +67,9 @@ export function findBlock(
 
 function kindsOf(grid: Grid, row: number, scanner: StampScanner, kindOf: typeof cellKind): CellKind[] {
   const width = Math.min(grid.width(row), gridCaps.columns + 1);
-  return Array.from({ length: width }, (_, column) => kindOf(grid.text(row, column), scanner));
+  return Array.from({ length: width }, (_, column) =>
+    kindOf(grid.text(row, column).slice(0, gridCaps.wordCharacters), scanner),
+  );
 }
 
 function rowOfNumber(grid: Grid, number: number): number {
@@ -116,7 +118,7 @@ function firstSerialRow(grid: Grid, kinds: CellKind[][]): number {
   for (let row = 0; row + 1 < kinds.length; row += 1) {
     const here = kinds[row] ?? [];
     const named = here.findIndex((kind, column) => {
-      const name = grid.text(row, column);
+      const name = grid.text(row, column).slice(0, gridCaps.wordCharacters);
       return kind === 'text' && namesTime(name);
     });
     if (named < 0) continue;
@@ -150,8 +152,9 @@ function blockWidth(grid: Grid, firstRow: number, headerRow: number | null): num
 
 /** Names of the columns; a row of units beneath the names and merged group names above them are joined in. */
 function headerNames(grid: Grid, kinds: CellKind[][], headerRow: number, firstRow: number, width: number): string[] {
-  const own = Array.from({ length: width }, (_, column) => grid.text(headerRow, column));
-  const above = headerRow > 0 ? Array.from({ length: width }, (_, column) => grid.text(headerRow - 1, column)) : [];
+  const nameIn = (row: number, column: number): string => grid.text(row, column).slice(0, gridCaps.wordCharacters);
+  const own = Array.from({ length: width }, (_, column) => nameIn(headerRow, column));
+  const above = headerRow > 0 ? Array.from({ length: width }, (_, column) => nameIn(headerRow - 1, column)) : [];
   const aboveKinds = kinds[headerRow - 1] ?? [];
   const filledAbove = above.filter((name) => name !== '').length;
   const filledOwn = own.filter((name) => name !== '').length;

@@ -1,4 +1,4 @@
-import type { Grid } from './grid';
+import { gridCaps, type Grid } from './grid';
 import { isBlankWord, parseNumberAt, parseNumberText } from './numbers';
 import { StampScanner } from './stamps';
 import type { DateOrder } from './types';
@@ -84,7 +84,7 @@ export function profileColumns(
       last: '',
     };
     for (const row of rows) {
-      const text = grid.text(row, index);
+      const text = grid.text(row, index).slice(0, gridCaps.wordCharacters);
       const kind = kindOf(text, scanner);
       profile.kinds[kind] += 1;
       if (kind === 'blank') continue;

@@ -1,8 +1,8 @@
 import { parseNumberText } from './numbers';
 import type { StampScanner } from './stamps';
 
-/** Most rows, columns and characters of a cell that a file may have. */
-export const gridCaps = { rows: 1_200_000, columns: 512, cellCharacters: 20_000 };
+/** Most rows, columns and characters of a cell that a file may have, and how many of them are looked at for meaning. */
+export const gridCaps = { rows: 1_200_000, columns: 512, cellCharacters: 20_000, wordCharacters: 200 };
 
 /** A table of raw cells, whatever file it came from. Rows and columns count from 0; absent cells read as ''. */
 export interface Grid {
@@ -68,11 +68,12 @@ export class CellGrid implements Grid {
   }
 }
 
-/** Rows become columns: a table with a column a month read as one with a row a month. */
+/** Rows become columns, at most as many of either as are read: a table with a column a month read as one with a row a month. */
 export function transpose(grid: Grid): CellGrid {
   let columns = 0;
   const rows = Math.min(grid.rows, gridCaps.columns);
   for (let row = 0; row < rows; row += 1) columns = Math.max(columns, grid.width(row));
+  columns = Math.min(columns, gridCaps.columns);
   const cellAt = (row: number, column: number): Cell => {
     const stored = grid.figureText(row, column) === '' ? grid.number(row, column, '.') : Number.NaN;
     return Number.isNaN(stored) ? grid.text(row, column) : stored;

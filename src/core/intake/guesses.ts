@@ -1,6 +1,6 @@
 import { guess } from './evidence';
 import type { OpenedTable } from './open';
-import type { ColumnMap, Guess } from './types';
+import type { ColumnMap, Guess, IntakeNote } from './types';
 
 const delimiterNames: Record<string, string> = { ',': 'comma', ';': 'semicolon', '\t': 'tab', '|': 'bar' };
 
@@ -18,4 +18,21 @@ export function delimiterGuesses(opened: OpenedTable, map: Partial<ColumnMap>): 
     ],
   ];
   return [guess('delimiter', name, tests)];
+}
+
+/** Notes on decisions about the whole file that nothing in it settles, and on sheets that are not read. */
+export function openNotes(guesses: readonly Guess[], opened: OpenedTable): IntakeNote[] {
+  const notes = guesses
+    .filter((one) => !one.sure && (one.key === 'decimal-mark' || one.key === 'date-order'))
+    .map((one): IntakeNote => ({
+      code: `${one.key}-assumed`,
+      message: `The ${one.key === 'decimal-mark' ? 'decimal mark' : 'order of dates'} is taken as ${one.takenAs}: ${one.why}.`,
+    }));
+  if (opened.otherSheets.length > 0) {
+    notes.push({
+      code: 'sheets-left-out',
+      message: `The sheet “${opened.dialect.sheet ?? ''}” is read; others may hold tables too: ${opened.otherSheets.slice(0, 12).join(', ')}.`,
+    });
+  }
+  return notes;
 }

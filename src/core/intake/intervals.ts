@@ -5,7 +5,8 @@ import { detectColumns } from './detect';
 import { guess } from './evidence';
 import { columnOf, extractLong, type ColumnPlan } from './extract';
 import { extractWide } from './extract-wide';
-import { delimiterGuesses } from './guesses';
+import { channelMeaning } from './channel-words';
+import { delimiterGuesses, openNotes } from './guesses';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
 import { preambleMultiplier } from './preamble';
@@ -141,7 +142,15 @@ export function readPlanned(planned: IntervalPlan, options: ReadOptions): Interv
 
 /** Units nobody named and multipliers nobody applied. */
 function assumptions(planned: IntervalPlan): IntakeNote[] {
-  const notes: IntakeNote[] = [];
+  const notes: IntakeNote[] = openNotes(planned.guesses, planned.opened);
+  const senseless = planned.plan.columns.filter(
+    (use) => use.role === 'reactive-lagging' && channelMeaning(use.name).role === 'reactive-signed',
+  );
+  if (senseless.length > 0)
+    notes.push({
+      code: 'reactive-sense',
+      message: `${senseless.map((use) => use.name).join(', ')} names no sense and has no negative figure: it is taken as lagging.`,
+    });
   const isExplained = planned.plan.columns.some((use) => use.role === 'unit' || use.role === 'channel');
   const assumed = planned.evidence.filter((line) => line.isUnitAssumed && line.takenAs !== 'ignore');
   if (assumed.length > 0 && !isExplained) {

@@ -13,6 +13,8 @@ export interface OpenedTable {
   format: IntakeFormat;
   dialect: Dialect;
   vote: DelimiterVote | null;
+  /** Sheets of a workbook that seem to hold a table too and are not read. */
+  otherSheets: readonly string[];
 }
 
 /**
@@ -26,8 +28,8 @@ export function openTable(
   map: Partial<ColumnMap>,
 ): OpenedTable {
   if (container === 'workbook-zip' || container === 'workbook-ole') {
-    const { grid, sheet, sheets } = openWorkbook(bytes, fileName, map.sheet);
-    return { grid, format: 'spreadsheet', dialect: { sheet, sheets }, vote: null };
+    const { grid, sheet, sheets, others } = openWorkbook(bytes, fileName, map.sheet);
+    return { grid, format: 'spreadsheet', dialect: { sheet, sheets }, vote: null, otherSheets: others };
   }
   const { text, encoding } = decodeText(bytes, fileName);
   if (text.trim() === '')
@@ -43,5 +45,6 @@ export function openTable(
     format: 'delimited',
     dialect: { encoding, delimiter },
     vote,
+    otherSheets: [],
   };
 }

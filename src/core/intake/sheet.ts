@@ -15,6 +15,8 @@ interface OpenedSheet {
   grid: CellGrid;
   sheet: string;
   sheets: string[];
+  /** Other visible sheets that seem to hold as much. */
+  others: string[];
 }
 
 /** Rows of a sheet that are read; a year of five-minute readings has 105,120. */
@@ -37,18 +39,22 @@ export function openWorkbook(bytes: Uint8Array, fileName: string, wanted?: strin
       'Choose one of its sheets in the column map.',
     );
   }
-  const opened = (wanted === undefined ? sheets : [wanted]).map((sheet) => ({
-    sheet,
-    cells: cellsOf(workbook.Sheets[sheet], is1904, fileName),
-  }));
-  const [best] = opened.sort((a, b) => weightOf(b.cells) - weightOf(a.cells));
-  if (!best || weightOf(best.cells) === 0)
+  const opened = (wanted === undefined ? sheets : [wanted]).map((sheet) => {
+    const cells = cellsOf(workbook.Sheets[sheet], is1904, fileName);
+    const isHidden = (workbook.Workbook?.Sheets?.[sheets.indexOf(sheet)]?.Hidden ?? 0) !== 0;
+    return { sheet, cells, isHidden, weight: weightOf(cells) };
+  });
+  // A hidden sheet is read only where no visible one holds a table.
+  const rank = (one: (typeof opened)[number]): number => (one.isHidden && one.weight > 0 ? 1 : one.weight * 2);
+  const [best] = opened.sort((a, b) => rank(b) - rank(a) || b.weight - a.weight);
+  if (!best || best.weight === 0)
     throw intakeError(
       'The workbook holds no cell.',
       fileName,
       'Check that the right file was saved, then bring it in again.',
     );
-  return { grid: new CellGrid(best.cells), sheet: best.sheet, sheets };
+  const others = opened.filter((one) => one !== best && !one.isHidden && one.weight * 2 >= best.weight);
+  return { grid: new CellGrid(best.cells), sheet: best.sheet, sheets, others: others.map((one) => one.sheet) };
 }
 
 function parse(bytes: Uint8Array, fileName: string): XLSX.WorkBook {
@@ -91,7 +97,7 @@ function cellsOf(sheet: XLSX.WorkSheet | undefined, is1904: boolean, fileName: s
   const cells: Cell[][] = [];
   for (let row = 0; row < rows.length; row += 1) {
     const source = rows[row] ?? [];
-    if (source.length > gridCaps.columns && source.slice(gridCaps.columns).some((cell) => cell?.v !== undefined)) {
+    if (source.length > gridCaps.columns && reachesBeyond(source)) {
       throw intakeError(
         `Row ${row + 1} has more than ${gridCaps.columns} cells.`,
         fileName,
@@ -104,7 +110,25 @@ function cellsOf(sheet: XLSX.WorkSheet | undefined, is1904: boolean, fileName: s
       ),
     );
   }
+  fillMergedDates(cells, Array.isArray(sheet) ? ((sheet as XLSX.WorkSheet)['!merges'] ?? []) : []);
   return cells;
+}
+
+/** Whether a row holds anything beyond the cap. A row may claim any width: only the cells it has are walked. */
+function reachesBeyond(row: readonly (SheetCell | undefined)[]): boolean {
+  return Object.entries(row).some(([column, cell]) => Number(column) >= gridCaps.columns && cell?.v !== undefined);
+}
+
+/** A date merged over several rows stands in the first only: it holds for all of them. Figures and words are not repeated. */
+function fillMergedDates(cells: Cell[][], merges: readonly XLSX.Range[]): void {
+  for (const { s: first, e: last } of merges.slice(0, gridCaps.columns * 100)) {
+    const cell = cells[first.r]?.[first.c] ?? null;
+    if (first.c !== last.c || typeof cell !== 'string' || !/^\d{4}-\d{2}-\d{2}/.test(cell)) continue;
+    for (let row = first.r + 1; row <= Math.min(last.r, cells.length - 1); row += 1) {
+      const below = cells[row];
+      if (below) below[first.c] = cell;
+    }
+  }
 }
 
 function plainCell(cell: SheetCell | undefined, is1904: boolean): Cell {

@@ -171,6 +171,58 @@ describe('ESPI', () => {
     await expect(read(text)).rejects.toThrow(message);
   });
 
+  it('takes a reading with several codes as estimated if any of them is', async () => {
+    const code = (quality: number) =>
+      `<espi:ReadingQuality><espi:quality>${quality}</espi:quality></espi:ReadingQuality>`;
+    const qualities = [code(8) + code(17), code(14), code(17) + code(15), code(18)];
+    const { load } = await read(feed([{ ...wh, quality: (at) => qualities[at] ?? '' }]));
+    expect([...load.quality]).toEqual([1, 0, 1, 0]);
+  });
+
+  it('does not count average power beside the energy it repeats', async () => {
+    const watts = { id: '2', uom: '38', values: [4000, 8000, 6000, 2000] };
+    const { report } = await read(feed([wh, watts]));
+    expect(report.totalKwh).toBe(5);
+    expect(report.notes.map((note) => note.code)).toContain('channel-left-out');
+  });
+
+  it('tells meters apart by their links where their titles are alike', async () => {
+    const xml = feed([wh, { ...wh, point: 'B' }])
+      .replace('Meter A', 'Main')
+      .replace('Meter B', 'Main');
+    await expect(read(xml)).rejects.toThrow('2 meters: Main (A), Main (B)');
+    const { report } = await read(xml, { kind: 'intervals', meter: 'Main (B)' });
+    expect(report.totalKwh).toBe(5);
+  });
+
+  it('lays short channels that take turns into each other', async () => {
+    const parts = [0, 4, 7].map((from, at) => ({ ...wh, id: String(at), from: start + from * 900 }));
+    const { report } = await read(feed(parts));
+    // 5 kWh three times, less the first reading (1 kWh) of the third, which the second has filled.
+    expect(report).toMatchObject({ intervals: 11, missing: 0, duplicates: 1, totalKwh: 14 });
+  });
+
+  it('takes cumulative readings as a register, and an export beside them that stands still', async () => {
+    const xml = feed([
+      { id: '1', power: 3, values: [500, 504, 508, 513] },
+      { id: '2', flow: '19', power: 3, values: [7, 7, 7, 7] },
+    ]).replaceAll('accumulationBehaviour>1<', 'accumulationBehaviour>3<');
+    const { load, report } = await read(xml);
+    expect([...load.kwh]).toEqual([4, 4, 5]);
+    expect(report.missing).toBe(0);
+  });
+
+  it('works kvarh out from a power factor channel: 4 kWh at 0.8 are 3 kvarh', async () => {
+    const factor = { id: '2', uom: '65', flow: '0', power: -2, values: [80, 80, 80, 80] };
+    const { load, report } = await read(feed([{ id: '1', values: [4000, 4000, 4000, 4000] }, factor]));
+    expect(load.kvarhLagging[0]).toBeCloseTo(3, 9);
+    expect(report.notes.map((note) => note.code)).toContain('reactive-derived');
+  });
+
+  it.each(['constructor', '__proto__', 'toString'])('leaves a channel with the unit code “%s” out', async (uom) => {
+    await expect(read(feed([{ ...wh, uom }]))).rejects.toThrow('holds no energy that is known');
+  });
+
   it('holds no bills', async () => {
     await expect(readBills(bytesOf(feed([wh])), { fileName: 'feed.xml', timeZone: 'UTC' })).rejects.toThrow(
       /intervals, not bills/,

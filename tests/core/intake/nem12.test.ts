@@ -143,4 +143,43 @@ describe('NEM12', () => {
   ])('refuses %s', async (_name, lines, message) => {
     await expect(read(lines)).rejects.toThrow(message);
   });
+
+  it('takes a day of V without values as missing, though its stream announces no length', async () => {
+    const { report } = await read([
+      head,
+      ...[stream('E1', 'kWh', 30), day('20250601', flat(48, 2))],
+      ...['200,NINV000001,E1Q1K1,1,E1,N1,M1,kWh,,', '300,20250602,V,,,20250603,', '400,1,48,N,,'],
+      '900',
+    ]);
+    expect(report).toMatchObject({ rowsRead: 2, intervals: 96, missing: 48, totalKwh: 96 });
+  });
+
+  it.each(['', '0', '-5', '0.0000001', '7'])('refuses an empty day under a length of “%s”', async (length) => {
+    const lines = [head, `200,NINV000001,E1,1,E1,N1,M1,kWh,${length},`, '300,20250602,N,,,', '900'];
+    await expect(read(lines)).rejects.toThrow(/no length of interval is announced/);
+  });
+
+  it('reads ranges of quality that begin at nought or run over the end', async () => {
+    const lines = [head, stream('E1', 'kWh', 30), day('20250601', flat(48, 2), 'V'), '400,0,10,S14,,', '400,47,99,N,,'];
+    const { report } = await read([...lines, '900']);
+    expect(report).toMatchObject({ estimated: 10, missing: 2 });
+  });
+
+  it('lets neither estimates of export nor streams of voltage touch the load', async () => {
+    const { report } = await read([
+      head,
+      ...[stream('E1', 'kWh', 30), day('20250601', flat(48, 2))],
+      ...[stream('B1', 'kWh', 30), day('20250601', flat(48, 1), 'S14')],
+      ...[stream('V1', 'V', 7), day('20250601', flat(200, 230))],
+      '900',
+    ]);
+    expect(report).toMatchObject({ estimated: 0, missing: 0, totalKwh: 96 });
+  });
+
+  it('keeps the first of a day sent twice, however many differ', async () => {
+    const twice = [day('20250601', flat(48, 2)), day('20250601', flat(48, 3)), day('20250602', flat(48, 2))];
+    const { report } = await read([head, stream('E1', 'kWh', 30), ...twice, '900']);
+    expect(report).toMatchObject({ intervals: 96, duplicates: 48, totalKwh: 192 });
+    expect(report.notes.map((note) => note.code)).toContain('duplicates-differ');
+  });
 });

@@ -51,7 +51,8 @@ afterAll(() => dom.window.close());
 
 describe('charts drawn without a browser', () => {
   it('PaybackChart marks the payback and carries literal colours', async () => {
-    const { PaybackChart, paybackTable } = await import('@/components/charts/PaybackChart');
+    const { PaybackChart } = await import('@/components/charts/PaybackChart');
+    const { paybackTable } = await import('@/components/charts/payback');
     const data = {
       currency: 'USD',
       capitalCost: 100_000,

@@ -5,6 +5,8 @@ import {
   formatClock,
   formatDate,
   formatDateTime,
+  formatDelivered,
+  formatDelivers,
   formatHours,
   formatMajor,
   formatMoney,
@@ -37,6 +39,10 @@ describe('quantities and money', () => {
   it('keep figure and unit together', () => {
     expect(formatQuantity(1334, 'kvar')).toBe(`1,334${noBreak}kvar`);
     expect(formatPercent(0.9991, 2)).toBe(`99.91${noBreak}%`);
+  });
+  it('say of reactive power which way it goes, and show no minus', () => {
+    expect([637, -382].map(formatDelivered)).toEqual(['637 delivered', '382 absorbed']);
+    expect([637, -382].map(formatDelivers)).toEqual([`delivers 637${noBreak}kvar`, `absorbs 382${noBreak}kvar`]);
   });
   // Decimals of USD, JPY and KWD: ISO 4217, list of minor units (2, 0 and 3).
   it('use the minor units of the currency', () => {

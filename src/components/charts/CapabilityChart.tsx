@@ -1,5 +1,5 @@
 import { ComposedChart, Line, XAxis, YAxis } from 'recharts';
-import { formatNumber, formatQuantity } from '../ui/format';
+import { formatDelivered, formatNumber, formatQuantity } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { ChartFigure, type FigureText } from './ChartFigure';
 import { HatchDefs, useHatch } from './HatchDefs';
@@ -223,8 +223,7 @@ export function CapabilityChart({ width, height, palette = pagePalette, ...data 
   );
 }
 
-const inWords = (value: number | null | undefined) =>
-  value == null ? 'not admissible' : `${formatNumber(Math.abs(value))} ${value < 0 ? 'absorbed' : 'delivered'}`;
+const inWords = (value: number | null | undefined) => (value == null ? 'not admissible' : formatDelivered(value));
 
 /** The same as a table: a line per load, in words instead of signs. */
 export function capabilityTable(data: CapabilityData): LedgerData {

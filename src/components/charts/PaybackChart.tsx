@@ -1,210 +1,11 @@
 import { Area, ComposedChart, Line, XAxis, YAxis } from 'recharts';
-import { formatMajor, formatNumber, formatPayback } from '../ui/format';
-import type { LedgerData } from '../ui/ledger';
+import { formatNumber, formatPayback } from '../ui/format';
 import { ChartFigure, type FigureText } from './ChartFigure';
-import { axisLook, linePath, narrowBelow, OnPlot, PlotFrame, PointMark, Words, type ChartSize, type Plot } from './kit';
-import { pagePalette, type Palette } from './palette';
-import { domainOf, moneyScale, niceTicks, spreadLabels, ticksWithin, valueAt } from './scale';
-
-/** One point of the cumulative cash: years after the work is done, money in major units. */
-export interface PaybackPoint {
-  year: number;
-  cumulative: number;
-  /** One in ten samples lies below, one in ten above. Both or neither. */
-  p10?: number;
-  p90?: number;
-  /** The same with the reader's own figures. */
-  yours?: number;
-}
-
-export interface PaybackData {
-  currency: string;
-  /** Paid once at year 0, major units. */
-  capitalCost: number;
-  points: PaybackPoint[];
-  paybackYears: number | null;
-  /** Eight in ten samples pay back between these. */
-  paybackRange?: { fromYears: number; toYears: number } | null;
-  /** "edition 2". */
-  editionName: string;
-  /** Words at the end of the reader's own line. */
-  yoursName?: string;
-}
-
-type Point = PaybackPoint;
-const byYear = (p: Point) => p.year;
-const cumulative = (p: Point) => p.cumulative;
-
-/** Rows with the band as a pair and the line split where it crosses nought: ink below, verdigris above. */
-function chartRows(data: PaybackData, divisor: number) {
-  const crossing = data.paybackYears;
-  const points = [...data.points];
-  if (crossing !== null && !points.some((p) => p.year === crossing)) {
-    const at = (get: (p: Point) => number | undefined) => valueAt(data.points, crossing, byYear, (p) => get(p) ?? NaN);
-    const optional = (get: (p: Point) => number | undefined) => {
-      const found = at(get);
-      return found === null || Number.isNaN(found) ? undefined : found;
-    };
-    points.push({
-      year: crossing,
-      cumulative: at(cumulative) ?? 0,
-      p10: optional((p) => p.p10),
-      p90: optional((p) => p.p90),
-      yours: optional((p) => p.yours),
-    });
-    points.sort((a, b) => a.year - b.year);
-  }
-  const scaled = (value: number | undefined) => (value === undefined ? undefined : value / divisor);
-  return points.map((p) => ({
-    year: p.year,
-    before: crossing === null || p.year <= crossing ? p.cumulative / divisor : undefined,
-    after: crossing !== null && p.year >= crossing ? p.cumulative / divisor : undefined,
-    band: p.p10 !== undefined && p.p90 !== undefined ? [p.p10 / divisor, p.p90 / divisor] : undefined,
-    p10: scaled(p.p10),
-    p90: scaled(p.p90),
-    yours: scaled(p.yours),
-  }));
-}
-
-function EndWords({
-  data,
-  divisor,
-  plot,
-  palette,
-}: {
-  data: PaybackData;
-  divisor: number;
-  plot: Plot;
-  palette: Palette;
-}) {
-  const end = data.points.at(-1);
-  if (!end) return null;
-  const labels = [
-    end.p90 !== undefined && { at: end.p90, words: '1 in 10 above' },
-    { at: end.cumulative, words: data.editionName, tone: 'verdigris' as const, bold: true },
-    end.yours !== undefined && { at: end.yours, words: data.yoursName ?? 'your figures', bold: true },
-    end.p10 !== undefined && { at: end.p10, words: '1 in 10 below' },
-  ].filter((label) => label !== false);
-  const places = spreadLabels(
-    labels.map((label) => plot.y(label.at / divisor) + 4),
-    15,
-    plot.top + 6,
-    plot.bottom,
-  );
-  return labels.map((label, index) => (
-    <Words key={label.words} x={plot.right + 7} y={places[index]!} palette={palette} {...label}>
-      {label.words}
-    </Words>
-  ));
-}
-
-/** The spread of the payback in the longest words the room holds; null where none fits. */
-function spreadWords({ fromYears, toYears }: { fromYears: number; toYears: number }, narrow: boolean, room: number) {
-  const months = (years: number) => formatNumber(Math.round(years * 12));
-  const span = `${months(fromYears)} to ${months(toYears)}`;
-  const wordings = [`8 in 10: ${span}`];
-  if (!narrow) wordings.unshift(`8 in 10 samples: ${span} months`, `8 in 10: ${span} months`);
-  return wordings.find((words) => words.length * 5.9 <= room) ?? null;
-}
-
-function PaybackMark({
-  data,
-  plot,
-  palette,
-  narrow,
-}: {
-  data: PaybackData;
-  plot: Plot;
-  palette: Palette;
-  narrow: boolean;
-}) {
-  if (data.paybackYears === null) return null;
-  const x = plot.x(data.paybackYears);
-  const y = plot.y(0);
-  const below = plot.bottom - y > 62;
-  const textY = below ? y + 44 : y + 19;
-  const flip = x > (plot.left + plot.right) / 2 + 40;
-  const range = data.paybackRange;
-  const whiskers = range
-    ? [range.fromYears, range.toYears].map((years) => `M${plot.x(years)} ${y - 4}v8`).join('')
-    : '';
-  const aside = below ? 4 : 12;
-  const place = {
-    x: flip ? x - aside : x + aside,
-    palette,
-    anchor: flip ? ('end' as const) : ('start' as const),
-    halo: true,
-  };
-  const spreadX = below ? place.x : place.x + (narrow ? 74 : 172);
-  const spread =
-    range && (below || !flip) ? spreadWords(range, narrow, flip ? Infinity : plot.right - spreadX - 4) : null;
-  return (
-    <>
-      <path d={`${whiskers}M${x} ${y}V${below ? y + 34 : y}`} stroke={palette.ink} fill="none" />
-      <PointMark x={x} y={y} shape="circle" palette={palette} />
-      <Words {...place} y={textY} bold size={narrow ? 12 : 13.5}>
-        {narrow || data.paybackYears === 0
-          ? formatPayback(data.paybackYears)
-          : `paid back after ${formatPayback(data.paybackYears)}`}
-      </Words>
-      {spread && (
-        <Words {...place} x={spreadX} y={below ? textY + 15 : textY}>
-          {spread}
-        </Words>
-      )}
-    </>
-  );
-}
-
-function Notes({
-  data,
-  divisor,
-  plot,
-  palette,
-  narrow,
-}: {
-  data: PaybackData;
-  divisor: number;
-  plot: Plot;
-  palette: Palette;
-  narrow: boolean;
-}) {
-  const low = plot.y(-data.capitalCost / divisor);
-  const last = data.points.at(-1);
-  const aheadYear = last && data.paybackYears !== null ? (data.paybackYears + last.year) / 2 : null;
-  const aheadAt = aheadYear === null ? null : valueAt(data.points, aheadYear, byYear, (p) => p.p90 ?? p.cumulative);
-  return (
-    <>
-      <Words
-        x={plot.left + 8}
-        y={narrow ? plot.bottom - 7 : Math.min(low + 18, plot.bottom - 7)}
-        palette={palette}
-        bold
-        halo
-      >
-        {`${formatMajor(data.capitalCost, data.currency, { whole: true })} paid once`}
-      </Words>
-      {aheadYear !== null && aheadAt !== null && (
-        <Words
-          x={plot.x(aheadYear) - 14}
-          y={plot.y(aheadAt / divisor) - 12}
-          palette={palette}
-          tone="verdigris"
-          bold
-          anchor="end"
-          halo
-        >
-          ahead
-        </Words>
-      )}
-      {!narrow && data.paybackYears !== null && plot.x(data.paybackYears * 0.66) - plot.left > 110 && (
-        <Words x={plot.x(data.paybackYears * 0.66)} y={plot.y(0) - 10} palette={palette} tone="ink2" anchor="end" halo>
-          still paying back
-        </Words>
-      )}
-    </>
-  );
-}
+import { axisLook, linePath, narrowBelow, OnPlot, PlotFrame, type ChartSize } from './kit';
+import { pagePalette } from './palette';
+import { chartRows, paybackTable, type PaybackData } from './payback';
+import { EndWords, PaybackMark, PaybackNotes } from './PaybackParts';
+import { domainOf, moneyScale, niceTicks, ticksWithin } from './scale';
 
 /** Cumulative cash after the work, with the point where it is paid back. Give 592 or 900 wide, 358 on a phone. */
 export function PaybackChart({ width, height, palette = pagePalette, ...data }: PaybackData & ChartSize) {
@@ -277,34 +78,19 @@ export function PaybackChart({ width, height, palette = pagePalette, ...data }: 
         )}
       </OnPlot>
       <OnPlot at="words">
-        {(plot) => (
-          <>
-            <Notes data={data} divisor={scale.divisor} plot={plot} palette={palette} narrow={narrow} />
-            <PaybackMark data={data} plot={plot} palette={palette} narrow={narrow} />
-            {!narrow && <EndWords data={data} divisor={scale.divisor} plot={plot} palette={palette} />}
-          </>
-        )}
+        {(plot) => {
+          const parts = { data, divisor: scale.divisor, plot, palette, narrow };
+          return (
+            <>
+              <PaybackNotes {...parts} />
+              <PaybackMark {...parts} />
+              {!narrow && <EndWords {...parts} />}
+            </>
+          );
+        }}
       </OnPlot>
     </ComposedChart>
   );
-}
-
-/** The same as a table: whole years only, last point included. */
-export function paybackTable(data: PaybackData): LedgerData {
-  const places = { kind: 'number', decimals: 0, unit: data.currency } as const;
-  const has = (key: 'p10' | 'p90' | 'yours') => data.points.some((p) => p[key] !== undefined);
-  return {
-    columns: [
-      { key: 'year', head: 'After year', kind: 'number', align: 'left' },
-      ...(has('p10') ? [{ key: 'p10', head: '1 in 10 below', ...places }] : []),
-      { key: 'cumulative', head: `So far, ${data.editionName}`, ...places, strong: true },
-      ...(has('p90') ? [{ key: 'p90', head: '1 in 10 above', ...places }] : []),
-      ...(has('yours') ? [{ key: 'yours', head: data.yoursName ?? 'Your figures', ...places }] : []),
-    ],
-    rows: data.points
-      .filter((p, index) => Number.isInteger(p.year) || index === data.points.length - 1)
-      .map((p) => ({ id: String(p.year), cells: { ...p, year: p.year } })),
-  };
 }
 
 /** Island: the chart in its frame, with table twin and exports. */

@@ -1,7 +1,8 @@
 import type { ReactElement } from 'react';
 import { BillsBeforeAfterChart, type BillsBeforeAfterData } from './BillsBeforeAfterChart';
 import { palettes, type PaletteName } from './palette';
-import { PaybackChart, type PaybackData } from './PaybackChart';
+import { PaybackChart } from './PaybackChart';
+import type { PaybackData } from './payback';
 import type { VCurveData } from './v-curve';
 import { VCurveChart } from './VCurveChart';
 

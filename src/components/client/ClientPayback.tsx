@@ -1,7 +1,8 @@
 import { useMemo, useState } from 'react';
 import { appraise, cashFlow } from '../../core/economics';
 import type { CashFlowMonth, PlanEconomics } from '../../schemas/plan';
-import { PaybackFigure, type PaybackData } from '../charts/PaybackChart';
+import type { PaybackData } from '../charts/payback';
+import { PaybackFigure } from '../charts/PaybackChart';
 import { paidBackSentence } from '../report/words';
 import { AssumptionField } from '../ui/AssumptionField';
 import { Button } from '../ui/Button';

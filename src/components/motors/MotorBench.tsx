@@ -3,12 +3,11 @@ import { panelCurrentA } from '../../core/machine';
 import type { MotorView } from '../../schemas/motor';
 import { CapabilityFigure } from '../charts/CapabilityChart';
 import { VCurveFigure } from '../charts/VCurveChart';
-import { formatNumber, formatQuantity } from '../ui/format';
+import { formatDelivered, formatNumber, formatQuantity } from '../ui/format';
 import { NumberField } from '../ui/Field';
 import { Notice } from '../ui/Notice';
 import { capabilityData, settingReading, vCurveData, type NamedField, type SettingReading } from './curves';
 import { typedNumber } from '../ui/typed-number';
-import { kvarWords } from './words';
 
 export interface MotorBenchProps {
   motor: MotorView;
@@ -35,7 +34,11 @@ function capabilityFinding(motor: MotorView): string {
 function Readings({ motor, reading }: { motor: MotorView; reading: SettingReading }) {
   const share = (value: number, limit: number) => `${formatNumber((100 * value) / limit)} % of its limit`;
   const entries: [string, string, string][] = [
-    ['Reactive power', `${kvarWords(reading.kvarDelivered)} kvar`, reading.kvarDelivered < 0 ? 'lagging' : 'leading'],
+    [
+      'Reactive power',
+      `${formatDelivered(reading.kvarDelivered)} kvar`,
+      reading.kvarDelivered < 0 ? 'lagging' : 'leading',
+    ],
     ['Stator', formatQuantity(reading.armatureA, 'A'), share(reading.armatureA, motor.limits.armatureA)],
     [
       'Pull-out over load',

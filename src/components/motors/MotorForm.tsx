@@ -2,6 +2,7 @@ import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
 import { FormProvider, useForm } from 'react-hook-form';
 import { ApiError } from '../../client/api';
+import { useDraft } from '../../client/drafts';
 import { changeMotor, createMotor, removeMotor } from '../../client/motors';
 import { Queries } from '../../client/queries';
 import { motorInput, type MotorInput, type MotorView } from '../../schemas/motor';
@@ -54,6 +55,7 @@ function useMotorForm({ code, motor }: MotorFormProps) {
     defaultValues: motor ? draftOf(motor) : emptyDraft(),
     resolver: draftResolver<MotorDraft>(motorInput, draftToInput),
   });
+  const kept = useDraft<MotorDraft>(`motor:${code}:${motor?.id ?? 'new'}`, form);
   const [version, setVersion] = useState(motor?.version ?? 0);
   const [stored, setStored] = useState<StoredMotor | null>(null);
   const save = useMutation({
@@ -63,7 +65,7 @@ function useMotorForm({ code, motor }: MotorFormProps) {
     },
     onSuccess: (saved) => location.assign(`/engagements/${code}/motors#motor-${saved.id}`),
     onError: (error) => {
-      if (!(error instanceof ApiError)) return;
+      if (kept.rescue(error) || !(error instanceof ApiError)) return;
       setStored(error.code === 'stale' ? ((error.details.theirs as StoredMotor | undefined) ?? null) : null);
       for (const [path, fault] of Object.entries(error.fields))
         form.setError(path as keyof MotorDraft, { type: 'server', message: fault[0] });
@@ -77,7 +79,7 @@ function useMotorForm({ code, motor }: MotorFormProps) {
     setStored(null);
     save.reset();
   };
-  return { form, version, stored, save, submit, loadTheirs };
+  return { form, kept, version, stored, save, submit, loadTheirs };
 }
 
 function RemoveMotor({ code, motor }: { code: string; motor: MotorView }) {
@@ -111,7 +113,7 @@ function RemoveMotor({ code, motor }: { code: string; motor: MotorView }) {
 
 function Form(props: MotorFormProps) {
   const { code, motor } = props;
-  const { form, version, stored, save, submit, loadTheirs } = useMotorForm(props);
+  const { form, kept, version, stored, save, submit, loadTheirs } = useMotorForm(props);
   const failure = save.error && !stored ? save.error.message : null;
   return (
     <FormProvider {...form}>
@@ -123,6 +125,9 @@ function Form(props: MotorFormProps) {
           void submit(version);
         }}
       >
+        {kept.restored && (
+          <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />
+        )}
         <PlateFields />
         <DataSheetFields />
         <LimitFields />

@@ -1,7 +1,7 @@
 import type { MotorView } from '../../schemas/motor';
 import type { LedgerCell, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
-import { formatNumber } from '../ui/format';
-import { fit, kvarWords } from './words';
+import { formatDelivered, formatNumber } from '../ui/format';
+import { fit } from './words';
 
 const exciterWords = { static: 'static', brushless: 'brushless', 'shaft-dc': 'with commutator' } as const;
 const bindingWords: Record<string, string> = { field: 'field', armature: 'stator', 'pull-out': 'pull-out' };
@@ -53,7 +53,7 @@ const machineEntries: Entry[] = [
   [
     'kvar today at usual load',
     'kvar',
-    ({ kvarToday }) => ({ value: kvarWords(kvarToday), tone: kvarToday < 0 ? 'lagging' : 'leading' }),
+    ({ kvarToday }) => ({ value: formatDelivered(kvarToday), tone: kvarToday < 0 ? 'lagging' : 'leading' }),
   ],
   [
     'Most it may deliver',
@@ -62,7 +62,7 @@ const machineEntries: Entry[] = [
       kvarDelivered === null
         ? { value: 'nothing', tone: 'fault' }
         : kvarDelivered < 0
-          ? { value: kvarWords(kvarDelivered), tone: 'lagging' }
+          ? { value: formatDelivered(kvarDelivered), tone: 'lagging' }
           : { value: formatNumber(kvarDelivered), tone: 'leading', strong: true },
   ],
   ['Limit met first', '', ({ capability }) => bindingWords[capability.binding] ?? capability.binding],

@@ -1,11 +1,6 @@
 import type { AssumedValue, MotorView } from '../../schemas/motor';
 import { formatList, formatNumber, formatQuantity } from '../ui/format';
 
-/** Reactive power without a bare sign: "637 delivered", "382 absorbed". */
-export function kvarWords(kvarDelivered: number): string {
-  return `${formatNumber(Math.abs(kvarDelivered))} ${kvarDelivered < 0 ? 'absorbed' : 'delivered'}`;
-}
-
 /** Decimals that fit a value's size: three figures at least. */
 export const fit = (value: number) =>
   Math.abs(value) >= 100 ? 0 : Math.abs(value) >= 10 ? 1 : Math.abs(value) >= 1 ? 2 : 3;

@@ -2,7 +2,7 @@ import type { PricedBillView, CostCurveView, PlanView, SearchView, YearView } fr
 import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
 import type { CashFlowData } from '../charts/CashFlowChart';
 import type { CostCurveData } from '../charts/CostCurveChart';
-import type { PaybackData } from '../charts/PaybackChart';
+import type { PaybackData } from '../charts/payback';
 import { formatBillName } from '../ui/format';
 import { amperes } from './words';
 

@@ -1,6 +1,6 @@
 import type { EditionMotor } from '../../schemas/edition';
 import { Caution } from '../ui/Caution';
-import { formatNumber, formatQuantity } from '../ui/format';
+import { formatDelivers, formatNumber, formatQuantity } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
@@ -9,12 +9,6 @@ import { Leaf, LeafRow } from './Leaf';
 import { Picture } from './Picture';
 
 const amperes = (value: number) => formatNumber(value, { upTo: 1 });
-
-/** "delivers 637 kvar" or "absorbs 382 kvar": never a bare minus. */
-export function kvarWords(kvarDelivered: number): string {
-  const words = kvarDelivered >= 0 ? 'delivers' : 'absorbs';
-  return `${words} ${formatQuantity(Math.abs(kvarDelivered), 'kvar')}`;
-}
 
 function settingsTable(motors: readonly EditionMotor[]): LedgerData {
   const row = (id: string, label: string, unit: string, of: (motor: EditionMotor) => string) => ({
@@ -37,8 +31,8 @@ function settingsTable(motors: readonly EditionMotor[]): LedgerData {
       row('plan', 'Proposed', 'A', (motor) => amperes(motor.fieldPlanA)),
       row('limit', 'Limit after the reserve', 'A', (motor) => amperes(motor.fieldLimitA)),
       row('rated', 'On the nameplate', 'A', (motor) => amperes(motor.fieldRatedA)),
-      row('kvarToday', 'At its usual load, today', '', (motor) => kvarWords(motor.kvarToday)),
-      row('kvarPlan', 'At its usual load, proposed', '', (motor) => kvarWords(motor.kvarPlan)),
+      row('kvarToday', 'At its usual load, today', '', (motor) => formatDelivers(motor.kvarToday)),
+      row('kvarPlan', 'At its usual load, proposed', '', (motor) => formatDelivers(motor.kvarPlan)),
       row(
         'stator',
         'Stator current, proposed, of rated',
@@ -61,7 +55,7 @@ function motorsFinding(motors: readonly EditionMotor[]): string {
   const [first] = motors;
   if (!first) return 'The plan changes no motor.';
   const below = first.fieldLimitA - first.fieldPlanA;
-  return `At ${amperes(first.fieldPlanA)} A ${first.name} ${kvarWords(first.kvarPlan)} and stays ${amperes(below)} A under its field limit.`;
+  return `At ${amperes(first.fieldPlanA)} A ${first.name} ${formatDelivers(first.kvarPlan)} and stays ${amperes(below)} A under its field limit.`;
 }
 
 export interface MotorsLeafProps extends LeafContext {

@@ -43,6 +43,16 @@ export function formatQuantity(value: number, unit: string, style: NumberStyle =
   return `${formatNumber(value, style)}${noBreak}${unit}`;
 }
 
+/** Reactive power without a bare sign: `637` -> `637 delivered`, `-382` -> `382 absorbed`. */
+export function formatDelivered(kvarDelivered: number): string {
+  return `${formatNumber(Math.abs(kvarDelivered))} ${kvarDelivered < 0 ? 'absorbed' : 'delivered'}`;
+}
+
+/** The same as what a motor does: `637` -> `delivers 637 kvar`, `-382` -> `absorbs 382 kvar`. */
+export function formatDelivers(kvarDelivered: number): string {
+  return `${kvarDelivered < 0 ? 'absorbs' : 'delivers'} ${formatQuantity(Math.abs(kvarDelivered), 'kvar')}`;
+}
+
 /** A fraction as per cent: `0.9991, 2` -> `99.91 %`. */
 export function formatPercent(fraction: number, decimals = 0): string {
   return formatQuantity(fraction * 100, '%', { decimals });

@@ -1,4 +1,4 @@
-import type { PaybackData } from '../../components/charts/PaybackChart';
+import type { PaybackData } from '../../components/charts/payback';
 import { vCurveData } from '../../components/motors/curves';
 import { paybackRange } from '../../components/plans/chart-data';
 import { poorFactorBars } from '../../components/report/poor-factor-bars';

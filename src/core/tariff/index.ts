@@ -6,6 +6,10 @@
  *   for every day; each is noted in `Schedule.notes`.
  * - In a version a map by season or window is changed key by key where all its keys are known, else replaced; months are always added. Saying
  *   another kind (`formula` where there was `highest`) drops what belonged to the old one. `field: removed` takes a field away.
+ * - Only quantities and charges added by a version must say `before`. Other additions stand above the next entry of the version that is
+ *   there already, so that it may use them, else last.
+ * - A rate is not worked out where the quantity it prices is 0.
+ * - A look back names lines of several windows by member: `energyPeak + energyOffPeak`.
  * - A line shared by intervals takes, in each piece, the share that the measures under that piece's text have there.
  * - A top-up or cap that stands in some pieces only compares the parts the lines have in these; its own parts go by days.
  * - A condition that fails makes the rest of its line unneeded.

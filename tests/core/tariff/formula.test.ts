@@ -104,8 +104,9 @@ describe('formulas', () => {
   it('keeps to 500 characters and 40 levels', () => {
     expect(() => parseFormula(`1${' + 1'.repeat(124)}`)).not.toThrow();
     expect(() => parseFormula(`1${' + 1'.repeat(125)}`)).toThrow('at most 500 are read');
-    expect(() => parseFormula(`${'('.repeat(39)}1${')'.repeat(39)}`)).not.toThrow();
-    expect(() => parseFormula(`${'('.repeat(40)}1${')'.repeat(40)}`)).toThrow('nested deeper than 40 levels');
+    expect(() => parseFormula(`${'('.repeat(40)}1${')'.repeat(40)}`)).not.toThrow();
+    expect(() => parseFormula(`${'('.repeat(41)}1${')'.repeat(41)}`)).toThrow('nested deeper than 40 levels');
+    expect(() => parseFormula(`${'abs('.repeat(41)}1${')'.repeat(41)}`)).toThrow('nested deeper than 40 levels');
     expect(() => parseFormula(`${'2 ^ '.repeat(60)}1`)).toThrow('nested deeper than 40 levels');
   });
 

@@ -5,7 +5,7 @@ import { didYouMean } from '../nearest';
 
 /** Longest formula. [characters] */
 export const longestFormula = 500;
-/** Deepest nesting of a formula. [levels] */
+/** Deepest nesting of a formula: brackets, calls, signs and powers within one another. [levels] */
 export const deepestFormula = 40;
 
 /**
@@ -30,7 +30,8 @@ const comparisons: ReadonlySet<string> = new Set(['=', '!=', '<', '<=', '>', '>=
 
 class Parser {
   private position = 0;
-  private depth = 0;
+  /** The whole formula is level 0. */
+  private depth = -1;
 
   constructor(private readonly tokens: Token[]) {}
 

@@ -163,7 +163,7 @@ function checkMotor(motor: SynchronousMotor): void {
     requireRange(limit === undefined || (limit > 0 && Number.isFinite(limit)), `limits.${name}`, '> 0', limit);
   }
   const margin = limits.pullOutMargin ?? DEFAULT_PULL_OUT_MARGIN;
-  requireRange(margin >= 1 && Number.isFinite(margin), 'limits.pullOutMargin', '>= 1', margin);
+  requireRange(margin > 0 && Number.isFinite(margin), 'limits.pullOutMargin', '> 0', margin);
   const reserve = limits.reserve ?? 0;
   requireRange(reserve >= 0 && reserve < 1, 'limits.reserve', 'in [0, 1)', reserve);
   checkExciterField(motor);

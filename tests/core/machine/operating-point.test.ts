@@ -256,7 +256,7 @@ describe('operatingPoint on nonsense', () => {
     [{ ratedEfficiency: 0.99 }, /ratedEfficiency must leave room/],
     [{ lossSplit: { coreKw: -1, frictionWindageKw: 0, strayKw: 0 } }, /coreKw/],
     [{ limits: { reserve: 1 } }, /limits.reserve/],
-    [{ limits: { pullOutMargin: 0.9 } }, /limits.pullOutMargin/],
+    [{ limits: { pullOutMargin: 0 } }, /limits.pullOutMargin/],
     [{ limits: { fieldCurrentA: 0 } }, /limits.fieldCurrentA/],
     [{ exciterField: { ratedA: 5, noLoadA: 6 } }, /exciterField.noLoadA/],
     [

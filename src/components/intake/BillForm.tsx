@@ -1,9 +1,11 @@
 import { useRef, useState } from 'react';
 import { useForm, type Resolver } from 'react-hook-form';
 import { ApiError } from '../../client/api';
+import { useDraft } from '../../client/drafts';
 import { addBill, changeBill } from '../../client/intake';
 import type { BillView } from '../../schemas/bill';
 import { Button } from '../ui/Button';
+import { Notice } from '../ui/Notice';
 import { nestErrors } from '../ui/form-errors';
 import { keptAsTyped, startOfTyped } from './bill-start';
 import { LineRows, PeriodRows, QuantityRows, TotalRows } from './BillFormRows';
@@ -39,6 +41,7 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
   const others = bills.filter((other) => other.id !== bill?.id);
   const [fault, setFault] = useState<ApiError | null>(null);
   const version = useRef(bill?.version ?? 0);
+  const kept = useDraft<TypedBill>(`bill:${code}:${bill?.id ?? 'new'}`, form);
   const { handleSubmit, formState } = form;
 
   const save = handleSubmit(async (values) => {
@@ -52,12 +55,14 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
           : await addBill(code, read.bill),
       );
     } catch (error) {
+      if (kept.rescue(error)) return;
       if (error instanceof ApiError) setFault(error);
       else throw error;
     }
   });
   return (
     <form onSubmit={(event) => void save(event)} noValidate className="bill-form">
+      {kept.restored && <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />}
       <PeriodRows form={form} others={others} />
       <QuantityRows form={form} />
       <LineRows form={form} currency={currency} others={others} />

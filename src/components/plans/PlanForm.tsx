@@ -2,6 +2,7 @@ import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
 import { FormProvider, useForm, useFormContext } from 'react-hook-form';
 import { ApiError } from '../../client/api';
+import { useDraft } from '../../client/drafts';
 import { changePlan, createPlan, removePlan } from '../../client/plans';
 import { Queries } from '../../client/queries';
 import { planInput, type PlanInput } from '../../schemas/plan';
@@ -39,6 +40,7 @@ function usePlanForm({ code, start, plan, searchJobId }: PlanFormProps) {
     defaultValues: planDraftOf(start),
     resolver: draftResolver<PlanDraft>(planInput, toInput),
   });
+  const kept = useDraft<PlanDraft>(`plan:${code}:${plan?.id ?? 'new'}`, form);
   const [version, setVersion] = useState(plan?.version ?? 0);
   const [stored, setStored] = useState<StoredPlan | null>(null);
   const save = useMutation({
@@ -48,7 +50,7 @@ function usePlanForm({ code, start, plan, searchJobId }: PlanFormProps) {
     },
     onSuccess: () => location.assign(`/engagements/${code}/plans`),
     onError: (error) => {
-      if (!(error instanceof ApiError)) return;
+      if (kept.rescue(error) || !(error instanceof ApiError)) return;
       setStored(error.code === 'stale' ? ((error.details.theirs as StoredPlan | undefined) ?? null) : null);
       for (const [path, fault] of Object.entries(error.fields))
         form.setError(path as keyof PlanDraft, { type: 'server', message: fault[0] });
@@ -62,7 +64,7 @@ function usePlanForm({ code, start, plan, searchJobId }: PlanFormProps) {
     setStored(null);
     save.reset();
   };
-  return { form, version, stored, save, submit, loadTheirs };
+  return { form, kept, version, stored, save, submit, loadTheirs };
 }
 
 function PlanFields({ motors, currency }: Pick<PlanFormProps, 'motors' | 'currency'>) {
@@ -197,7 +199,7 @@ function RemovePlan({ code, name, plan }: { code: string; name: string; plan: { 
 
 function Form(props: PlanFormProps) {
   const { code, currency, motors, plan, start } = props;
-  const { form, version, stored, save, submit, loadTheirs } = usePlanForm(props);
+  const { form, kept, version, stored, save, submit, loadTheirs } = usePlanForm(props);
   const nameOf = (motorId: number) => motors.find((motor) => motor.motorId === motorId)?.name ?? `motor ${motorId}`;
   const theirs = stored && planEntries(planDraftOf(stored), nameOf);
   const differences = Object.entries(planEntries(form.getValues(), nameOf))
@@ -213,6 +215,9 @@ function Form(props: PlanFormProps) {
           void submit(version);
         }}
       >
+        {kept.restored && (
+          <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />
+        )}
         <PlanFields motors={motors} currency={currency} />
         <CapacitorFields />
         {stored && (

@@ -1,6 +1,7 @@
 import { useRef, useState } from 'react';
 import { useForm, type Resolver, type UseFormReturn } from 'react-hook-form';
 import { ApiError } from '../../client/api';
+import { useDraft } from '../../client/drafts';
 import { chooseSchedule } from '../../client/tariff';
 import type { ChoiceView, ChooseInput, ContractField, HistoryField, LibraryEntry } from '../../schemas/tariff';
 import { messageAt, nestErrors } from '../ui/form-errors';
@@ -95,6 +96,7 @@ function useSaving(props: ChooseScheduleProps, form: Form, schedules: Map<string
     message: string;
     stale: { mine: ChooseInput; theirs: ChoiceView } | null;
   } | null>(null);
+  const kept = useDraft<ChoiceDraft>(`tariff:${props.code}`, form);
   const send = async (draft: ChoiceDraft) => {
     const schedule = schedules.get(draft.scheduleId);
     if (!schedule) return;
@@ -104,6 +106,7 @@ function useSaving(props: ChooseScheduleProps, form: Form, schedules: Map<string
       await chooseSchedule(props.code, input);
       location.reload();
     } catch (error) {
+      if (kept.rescue(error)) return;
       if (!(error instanceof ApiError)) throw error;
       const theirs = error.code === 'stale' ? (error.details.theirs as ChoiceView) : null;
       for (const [path, [message]] of Object.entries(error.fields)) form.setError(path as 'scheduleId', { message });
@@ -114,7 +117,7 @@ function useSaving(props: ChooseScheduleProps, form: Form, schedules: Map<string
     version.current = theirs.version;
     void form.handleSubmit(send)();
   };
-  return { fault, submit: form.handleSubmit(send), saveOver };
+  return { fault, kept, submit: form.handleSubmit(send), saveOver };
 }
 
 /** Island: chooses the schedule an engagement is priced on, with what its contract supplies. */
@@ -134,12 +137,13 @@ export function ChooseSchedule(props: ChooseScheduleProps) {
     resolver,
     mode: 'onTouched',
   });
-  const { fault, submit, saveOver } = useSaving(props, form, schedules);
+  const { fault, kept, submit, saveOver } = useSaving(props, form, schedules);
   const scheduleId = form.watch('scheduleId');
   const schedule = schedules.get(scheduleId);
   const isChosen = choice?.scheduleId === scheduleId;
   return (
     <form onSubmit={(event) => void submit(event)} noValidate className="choose-schedule">
+      {kept.restored && <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />}
       <div className="form-grid">
         <div className="whole choose-schedule-name">
           <SelectField

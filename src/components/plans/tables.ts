@@ -43,7 +43,7 @@ export function plansTable(year: YearView, shownId: number | null): LedgerData {
   const plans = [year.standing, ...year.plans];
   return {
     columns: [
-      { key: 'entry', head: 'Entry', headUnseen: true },
+      { key: 'entry', head: 'Entry', headUnseen: true, wrap: true },
       { key: 'unit', head: 'Unit', quiet: true },
       ...plans.map((plan): LedgerColumn => ({
         key: keyOf(plan),

@@ -27,7 +27,11 @@ export function extractWide(plan: ColumnPlan): Extraction {
   const cells = columns.filter((use) => use.role === 'day-value');
   const days = readDays(plan, cells, extraction);
   const groups = new Map<RowChannel, DayRow[]>();
-  for (const day of days) groups.set(day.channel, [...(groups.get(day.channel) ?? []), day]);
+  for (const day of days) {
+    const group = groups.get(day.channel);
+    if (group) group.push(day);
+    else groups.set(day.channel, [day]);
+  }
   extraction.strands = [...groups].map(([channel, rows]) => strandOf(plan, cells, channel, rows, extraction));
   return extraction;
 }

@@ -90,7 +90,7 @@ export function localise(walls: Float64Array, zone: ZoneSpan): Localised {
       if (segment.special) {
         utc[at] = Number.NaN;
         if (segment.special.after > segment.special.before) inGap.push(at);
-        else overlaps.set(segment.special, [...(overlaps.get(segment.special) ?? []), at]);
+        else listOf(overlaps, segment.special).push(at);
         continue;
       }
       ({ offset, from, to } = segment);
@@ -107,6 +107,12 @@ export function localise(walls: Float64Array, zone: ZoneSpan): Localised {
     (isDouble ? doublePasses : singlePasses).push(change);
   }
   return { utc, inGap, singlePasses, doublePasses };
+}
+
+function listOf(lists: Map<ClockChange, number[]>, change: ClockChange): number[] {
+  const list = lists.get(change) ?? [];
+  lists.set(change, list);
+  return list;
 }
 
 function segmentOf(

@@ -40,131 +40,147 @@ function projectOf({ saving, yearlyUpkeep, economics }: ClientPaybackProps, figu
   };
 }
 
-/** Years until the work is paid for; never where upkeep eats what is saved, however little the work costs. */
-const comesBack = ({ saving, yearlyUpkeep }: ClientPaybackProps, years: number | null, runs: number) =>
-  saving * runs - yearlyUpkeep > 0 ? years : null;
+/** The reader's figures, and what the project comes to with them. */
+function useOwnFigures(props: ClientPaybackProps) {
+  const { economics, capitalCost, saving, yearlyUpkeep } = props;
+  const edition: Figures = {
+    escalationPercent: economics.escalationPercent,
+    runsPercent: 100,
+    capitalCost,
+    discountPercent: economics.discountPercent,
+  };
+  const [figures, setFigures] = useState(edition);
+  const { appraisal, months } = useMemo(() => {
+    const project = projectOf(props, figures);
+    return { appraisal: appraise(project), months: cashFlow(project).months };
+  }, [props, figures]);
+  // Where upkeep eats what is saved nothing comes back, however little the work costs.
+  const comesBack = (saving * figures.runsPercent) / 100 > yearlyUpkeep;
+  return {
+    edition,
+    figures,
+    setFigures,
+    moved: (Object.keys(edition) as (keyof Figures)[]).some((key) => figures[key] !== edition[key]),
+    months,
+    npv: appraisal.npv,
+    paybackYears: comesBack ? appraisal.simplePaybackYears : null,
+  };
+}
+
+type OwnFigures = ReturnType<typeof useOwnFigures>;
+
+/** The years worth showing, three times the payback, with the finding in them. */
+function pictureOf({ economics, cashFlow: flow, currency, paybackYears }: ClientPaybackProps, own: OwnFigures) {
+  const years = Math.min(economics.horizonYears, Math.max(3, Math.ceil((paybackYears ?? 10) * 3)));
+  const shown = flow.filter((point) => point.month <= years * 12);
+  const ahead = shown.at(-1)?.cumulative ?? 0;
+  const banded = shown.some((point) => point.low !== undefined);
+  return {
+    finding:
+      paybackYears === null
+        ? `After ${formatCount(years, 'year')} the saving has not paid for the work.`
+        : paidBackSentence({ payback: formatPayback(paybackYears), years, ahead, currency }),
+    reading: `${banded ? 'Band: eight of ten samples lie inside it. ' : ''}${own.moved ? 'Dashed: with your figures.' : ''}`,
+    points: shown.map(({ month, cumulative, low, high }) => ({
+      year: month / 12,
+      cumulative,
+      p10: low,
+      p90: high,
+      ...(own.moved ? { yours: own.months[month]?.cumulative } : {}),
+    })),
+  };
+}
 
 /** Round end of a slider for the cost of work. */
 const roundUp = (amount: number) => Math.ceil(amount / 1000) * 1000;
 
+const slidersOf = ({ capitalCost, currency }: ClientPaybackProps) =>
+  [
+    {
+      key: 'escalationPercent',
+      label: 'Power prices change by',
+      unit: '% a year',
+      min: -2,
+      max: 6,
+      step: 0.5,
+      decimals: 1,
+    },
+    { key: 'runsPercent', label: 'The plant runs', unit: '% of last year', min: 60, max: 120, step: 1, decimals: 0 },
+    {
+      key: 'capitalCost',
+      label: 'The work costs',
+      unit: currency,
+      min: 0,
+      max: roundUp(Math.max(capitalCost * 2, 10_000)),
+      step: 500,
+      decimals: 0,
+    },
+    {
+      key: 'discountPercent',
+      label: 'Interest you reckon with',
+      unit: '% a year',
+      min: 0,
+      max: 15,
+      step: 0.5,
+      decimals: 1,
+    },
+  ] as const;
+
+function OwnFiguresPanel({ props, own }: { props: ClientPaybackProps; own: OwnFigures }) {
+  const { currency, editionNumber, economics } = props;
+  const { edition, figures, setFigures } = own;
+  return (
+    <aside className="result" aria-label="Try your own figures">
+      <h2 className="section-title">Try your own figures</h2>
+      <p className="section-lead">Edition {editionNumber} stays as it is; this only shows you the effect.</p>
+      {slidersOf(props).map(({ key, ...slider }) => (
+        <AssumptionField
+          key={key}
+          {...slider}
+          editionName={`edition ${editionNumber}`}
+          value={figures[key]}
+          editionValue={edition[key]}
+          onChange={(value) => setFigures({ ...figures, [key]: value })}
+        />
+      ))}
+      <div aria-live="polite">
+        <ResultSums
+          rows={[
+            { label: `Pays back, edition ${editionNumber}`, value: formatPayback(props.paybackYears) },
+            { label: 'With your figures', value: formatPayback(own.paybackYears), kind: 'strong' },
+            {
+              label: `Worth today, ${formatNumber(economics.horizonYears)} years`,
+              value: formatMajor(own.npv, currency, { whole: true }),
+            },
+          ]}
+        />
+      </div>
+      {own.moved && (
+        <Button kind="quiet" onClick={() => setFigures(edition)}>
+          Back to edition {editionNumber}
+        </Button>
+      )}
+    </aside>
+  );
+}
+
 /** The payback picture with the client's own figures beside it; worked out here in the browser. */
 export function ClientPayback(props: ClientPaybackProps) {
-  const { currency, editionNumber, economics } = props;
-  const edition: Figures = {
-    escalationPercent: economics.escalationPercent,
-    runsPercent: 100,
-    capitalCost: props.capitalCost,
-    discountPercent: economics.discountPercent,
-  };
-  const [figures, setFigures] = useState(edition);
-  const moved = (Object.keys(edition) as (keyof Figures)[]).some((key) => figures[key] !== edition[key]);
-  const yours = useMemo(() => {
-    const project = projectOf(props, figures);
-    return { appraisal: appraise(project), months: cashFlow(project).months };
-  }, [props, figures]);
-  const paybackYears = comesBack(props, props.paybackYears, 1);
-  const yourYears = comesBack(props, yours.appraisal.simplePaybackYears, figures.runsPercent / 100);
-  const shownYears = Math.min(economics.horizonYears, Math.max(3, Math.ceil((paybackYears ?? 10) * 3)));
-  const shown = props.cashFlow.filter((point) => point.month <= shownYears * 12);
-  const points = shown.map(({ month, cumulative, low, high }) => ({
-    year: month / 12,
-    cumulative,
-    p10: low,
-    p90: high,
-    ...(moved ? { yours: yours.months[month]?.cumulative } : {}),
-  }));
-  const last = shown.at(-1)?.cumulative ?? 0;
-  const whole = { whole: true } as const;
-  const finding =
-    paybackYears === null
-      ? `After ${formatCount(shownYears, 'year')} the saving has not paid for the work.`
-      : paidBackSentence({ payback: formatPayback(paybackYears), years: shownYears, ahead: last, currency });
-  const banded = shown.some((point) => point.low !== undefined);
-  const set = (key: keyof Figures) => (value: number) => setFigures({ ...figures, [key]: value });
-  const field = { editionName: `edition ${editionNumber}` };
-  const costEnd = roundUp(Math.max(props.capitalCost * 2, 10_000));
+  const own = useOwnFigures(props);
   return (
     <div className="client-columns">
       <div className="working">
         <PaybackFigure
-          finding={finding}
-          reading={`${banded ? 'Band: eight of ten samples lie inside it. ' : ''}${moved ? 'Dashed: with your figures.' : ''}`}
-          fileName={`payback-edition-${editionNumber}`}
-          currency={currency}
+          {...pictureOf(props, own)}
+          fileName={`payback-edition-${props.editionNumber}`}
+          currency={props.currency}
           capitalCost={props.capitalCost}
-          points={points}
-          paybackYears={paybackYears}
+          paybackYears={props.paybackYears}
           paybackRange={props.paybackRange}
-          editionName={field.editionName}
+          editionName={`edition ${props.editionNumber}`}
         />
       </div>
-      <aside className="result" aria-label="Try your own figures">
-        <h2 className="section-title">Try your own figures</h2>
-        <p className="section-lead">Edition {editionNumber} stays as it is; this only shows you the effect.</p>
-        <AssumptionField
-          {...field}
-          label="Power prices change by"
-          unit="% a year"
-          min={-2}
-          max={6}
-          step={0.5}
-          decimals={1}
-          value={figures.escalationPercent}
-          editionValue={edition.escalationPercent}
-          onChange={set('escalationPercent')}
-        />
-        <AssumptionField
-          {...field}
-          label="The plant runs"
-          unit="% of last year"
-          min={60}
-          max={120}
-          step={1}
-          value={figures.runsPercent}
-          editionValue={100}
-          onChange={set('runsPercent')}
-        />
-        <AssumptionField
-          {...field}
-          label="The work costs"
-          unit={currency}
-          min={0}
-          max={costEnd}
-          step={500}
-          value={figures.capitalCost}
-          editionValue={edition.capitalCost}
-          onChange={set('capitalCost')}
-        />
-        <AssumptionField
-          {...field}
-          label="Interest you reckon with"
-          unit="% a year"
-          min={0}
-          max={15}
-          step={0.5}
-          decimals={1}
-          value={figures.discountPercent}
-          editionValue={edition.discountPercent}
-          onChange={set('discountPercent')}
-        />
-        <div aria-live="polite">
-          <ResultSums
-            rows={[
-              { label: `Pays back, edition ${editionNumber}`, value: formatPayback(paybackYears) },
-              { label: 'With your figures', value: formatPayback(yourYears), kind: 'strong' },
-              {
-                label: `Worth today, ${formatNumber(economics.horizonYears)} years`,
-                value: formatMajor(yours.appraisal.npv, currency, whole),
-              },
-            ]}
-          />
-        </div>
-        {moved && (
-          <Button kind="quiet" onClick={() => setFigures(edition)}>
-            Back to edition {editionNumber}
-          </Button>
-        )}
-      </aside>
+      <OwnFiguresPanel props={props} own={own} />
     </div>
   );
 }

@@ -28,7 +28,10 @@ export interface ReconciledBill {
   billedMinor: number | null;
   /** Billed minus priced; null where the bill says nothing, or readings of its period are missing. */
   differenceMinor: number | null;
-  /** Readings missing in its period: priced without them, it cannot be held against what was billed. */
+  /**
+   * Readings missing in its period, or in earlier ones that a ratchet takes its demand from: priced without them, it
+   * cannot be held against what was billed.
+   */
   missingReadings: number;
   reactiveMinor: number;
   pairs: LinePair[];

@@ -283,6 +283,16 @@ describe('bills whose readings are missing in part', () => {
     expect(words.lead).toContain('480 readings are missing: Nov 2025 is priced too low and compared with no bill.');
   });
 
+  it('nor does one accuse whose ratchet would stand on them', async () => {
+    // July's 4,800 kW (the load's July ends an hour into August) set three quarters of themselves, 3,600 kW and more, for
+    // September and October, whose own 3,000 kW are less: without July both are priced too low.
+    const julyDay = Math.floor(load.kwh.indexOf(4800 / 4) / 96);
+    const year = await pricedYear(await openOf(await spoilt(julyDay, 32)));
+    expect(year.findings).toEqual([]);
+    const differences = [...Array(8).fill(0), null, null, null, null];
+    expect(year.bills.map(({ differenceMinor }) => differenceMinor)).toEqual(differences);
+  });
+
   it('are none to compare where every bill lacks some', async () => {
     const { actor, engagement } = await spoilt(10, 350);
     const { words } = await tariffPage(actor, engagement.code);

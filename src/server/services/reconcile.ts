@@ -25,8 +25,11 @@ export function reconcileYear(
   const bills = priced.map((one, index) => reconcileBill(basis, one, index));
   const trial = new CauseTrial(basis, priced, priceYear);
   const findings: Finding[] = [];
+  const missing = bills.map(({ missingReadings }) => missingReadings);
+  const looksBack = lookBacksOf(basis.schedule).length > 0;
   bills.forEach((bill, index) => {
-    for (const found of findingsOfBill(basis, bill, index, trial)) {
+    const before = looksBack ? missing.slice(0, index).reduce((sum, count) => sum + count, 0) : 0;
+    for (const found of withoutGuesses(bill, findingsOfBill(basis, bill, index, trial), before)) {
       const letter = letterOf(findings.length);
       findings.push({ ...found, letter });
       bill.findings.push(letter);
@@ -68,6 +71,19 @@ function reconcileBill(basis: PricingBasis, priced: PricedBill, index: number): 
     pairs,
     findings: [],
   };
+}
+
+/** A difference nobody explains is none where a ratchet may stand on readings that are missing: the bill is not compared. */
+function withoutGuesses<Found extends Pick<Finding, 'kind'>>(
+  bill: ReconciledBill,
+  found: Found[],
+  missingBefore: number,
+): Found[] {
+  if (bill.missingReadings > 0 || missingBefore === 0 || !found.some(({ kind }) => kind === 'unexplained'))
+    return found;
+  bill.missingReadings = missingBefore;
+  bill.differenceMinor = null;
+  return found.filter(({ kind }) => kind === 'bill-arithmetic');
 }
 
 /** Readings missing in a bill's period; none on the printed route. */

@@ -165,6 +165,25 @@ describe('charts drawn without a browser', () => {
     expect(dayTable(data).rows.at(-1)?.kind).toBe('chosen');
   });
 
+  it('DayChart keeps the words of the peak clear of the line that dips beside it', async () => {
+    const { DayChart } = await import('@/components/charts/DayChart');
+    const points = Array.from({ length: 96 }, (_, index) => ({
+      minute: index * 15,
+      kw: 4500,
+      kvarLagging: index >= 44 && index < 50 ? 1500 : 2800,
+    }));
+    const peak = { minute: 885, kw: 4500, kvarLagging: 2800, powerFactor: 0.85 };
+    const svg = await draw(
+      <DayChart dayName="Mon 1 Jun 2026" stepMinutes={15} points={points} peak={peak} {...size} />,
+    );
+    const label = [...svg.querySelectorAll('text')].find((one) => /kvar lagging, pf/.test(one.textContent ?? ''));
+    const paths = [...svg.querySelectorAll('path.recharts-curve')].map((path) => path.getAttribute('d') ?? '');
+    const heights = paths.flatMap((d) => [...d.matchAll(/,([\d.]+)/g)].map((match) => Number(match[1])));
+    // Letters of 12 rise about 9 above their line: the lowest point drawn stays above them.
+    expect(heights.length).toBeGreaterThan(96);
+    expect(Number(label?.getAttribute('y')) - 9).toBeGreaterThan(Math.max(...heights));
+  });
+
   it('CashFlowChart draws spending below the line and saving above it', async () => {
     const { CashFlowChart, cashFlowTable } = await import('@/components/charts/CashFlowChart');
     const data = {

@@ -81,6 +81,8 @@ export interface PricedYear {
   route: PricingRoute;
   currency: string;
   timeZone: string;
+  /** That the schedule's clock is not the site's; null where it is. */
+  clock: string | null;
   bills: ReconciledBill[];
   findings: Finding[];
   totals: {

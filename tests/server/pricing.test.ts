@@ -304,9 +304,9 @@ describe('bills whose readings are missing in part', () => {
 
   it('and a site under another clock than its schedule are told', async () => {
     const abroad = await spoilt(0, 0, 'Europe/Oslo');
-    const notes = (await pricedYear(await openOf(abroad))).notes.join(' ');
-    expect(notes).toContain('by the clock of America/Chicago, the site lies under that of Europe/Oslo');
+    const { words } = await tariffPage(abroad.actor, abroad.engagement.code);
+    expect(words.lead).toContain('by the clock of America/Chicago, the site lies under that of Europe/Oslo');
     const here = await spoilt(0, 0);
-    expect((await pricedYear(await openOf(here))).notes.join(' ')).not.toContain('clock');
+    expect((await tariffPage(here.actor, here.engagement.code)).words.lead).not.toContain('clock');
   });
 });

@@ -65,7 +65,7 @@ export function tariffLead(year: PricedYear, schedule: { title: string; inForce:
     incomplete.length > 0
       ? ` ${missing} readings are missing: ${formatList(incomplete)} ${incomplete.length === 1 ? 'is' : 'are'} priced too low and compared with no bill.`
       : '';
-  return `${source} on ${schedule.title}${force}. ${cost}${left}`;
+  return `${source} on ${schedule.title}${force}. ${cost}${left}${year.clock ? ` ${year.clock}` : ''}`;
 }
 
 /** What share of the cost of poor power factor sits in which lines, as a sentence with its amount. */

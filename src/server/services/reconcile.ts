@@ -39,12 +39,13 @@ export function reconcileYear(
     route: basis.route,
     currency: basis.schedule.currency,
     timeZone: basis.schedule.timeZone,
+    clock: clockNote(basis),
     bills,
     findings,
     totals: totalsOf(bills),
     lookBacks: lookBacksOf(basis.schedule),
     readings: readingsOf(basis),
-    notes: [...clockNote(basis), ...notesOf(bills)],
+    notes: notesOf(bills),
   };
 }
 
@@ -155,11 +156,9 @@ function readingsOf({ load }: PricingBasis): PricedYear['readings'] {
 }
 
 /** Hours of use are told by the schedule's clock: a site under another one wants a look. */
-function clockNote({ schedule, siteTimeZone }: PricingBasis): string[] {
-  if (schedule.timeZone === siteTimeZone) return [];
-  return [
-    `The schedule tells hours and days by the clock of ${schedule.timeZone}, the site lies under that of ${siteTimeZone}. Check that it is the schedule of this site; bills are priced by the schedule's clock.`,
-  ];
+function clockNote({ schedule, siteTimeZone }: PricingBasis): string | null {
+  if (schedule.timeZone === siteTimeZone) return null;
+  return `The schedule tells hours and days by the clock of ${schedule.timeZone}, the site lies under that of ${siteTimeZone}. Check that it is the schedule of this site; bills are priced by the schedule's clock.`;
 }
 
 /** Notes of the bills, each with the bills it stands on; one that stands on every bill without. */

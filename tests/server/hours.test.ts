@@ -104,7 +104,7 @@ describe('hours', () => {
     await log({ time: 1380 });
     await expect(log({ time: 61 })).rejects.toMatchObject({
       status: 422,
-      fields: { time: [/23\.00 h are told/] },
+      fields: { time: [/23\.00 h are logged/] },
     } as never);
     await log({ time: 60 });
     expect(await HourEntry.sum('minutes', { where: { userId: tom.id } })).toBe(1440);

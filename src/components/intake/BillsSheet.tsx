@@ -88,7 +88,7 @@ function YearPart(props: TableProps) {
       lead={`Amounts in ${props.currency}. A total opens the whole bill. Whether a bill is right is the question of the station Tariff.`}
       reference={
         <>
-          <p>A bill is named by the month its last day lies in.</p>
+          <p>A bill is named by the month of its middle day.</p>
           <p>Lines less total: the sum of the lines less the printed total.</p>
         </>
       }

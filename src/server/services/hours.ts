@@ -64,7 +64,7 @@ async function checkDay(actor: Actor, input: HourInput, now: number, except?: nu
   if (told + input.time > dayMinutes) {
     const hours = (told / 60).toFixed(2);
     throw invalid('A day has 24 hours.', {
-      time: [`${hours} h are told on this day already; with these it has over 24.`],
+      time: [`${hours} h are logged on this day already; with these it has over 24.`],
     });
   }
 }

@@ -1,3 +1,4 @@
+import { formatBillName } from '../../components/ui/format';
 import { dayNumber } from '../../core/load';
 import { wordNumber } from '../../core/units';
 import { formatPayback } from '../../components/ui/format';
@@ -27,6 +28,7 @@ import {
   storedPlan,
 } from '../presenters/plan';
 import type { TaskAct, TaskSetting } from '../workers/tasks';
+import { notesOfBills } from './bill-notes';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
@@ -87,7 +89,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
     gaps: gapsOf(basis, standing),
-    notes: [...new Set(standing.bills.flatMap((bill) => bill.notes))],
+    notes: notesOfBills(standing.bills.map(({ period, notes }) => ({ name: formatBillName(period), notes }))),
     fingerprint: basis.fingerprint,
   };
 }

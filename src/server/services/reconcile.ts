@@ -9,6 +9,7 @@ import {
   type PricedYear,
   type ReconciledBill,
 } from '../../schemas/pricing';
+import { notesOfBills } from './bill-notes';
 import { everythingPrinted, faultsOf } from './blame';
 import { CauseTrial } from './causes';
 import { findingOfArithmetic, findingOfFault, findingOfTotal } from './findings';
@@ -45,7 +46,7 @@ export function reconcileYear(
     totals: totalsOf(bills),
     lookBacks: lookBacksOf(basis.schedule),
     readings: readingsOf(basis),
-    notes: notesOf(bills),
+    notes: notesOfBills(bills.map(({ name, priced }) => ({ name, notes: priced.notes }))),
   };
 }
 
@@ -159,13 +160,4 @@ function readingsOf({ load }: PricingBasis): PricedYear['readings'] {
 function clockNote({ schedule, siteTimeZone }: PricingBasis): string | null {
   if (schedule.timeZone === siteTimeZone) return null;
   return `The schedule tells hours and days by the clock of ${schedule.timeZone}, the site lies under that of ${siteTimeZone}. Check that it is the schedule of this site; bills are priced by the schedule's clock.`;
-}
-
-/** Notes of the bills, each with the bills it stands on; one that stands on every bill without. */
-function notesOf(bills: ReconciledBill[]): string[] {
-  const names = new Map<string, string[]>();
-  for (const { name, priced } of bills) {
-    for (const note of priced.notes) names.set(note, [...(names.get(note) ?? []), name]);
-  }
-  return [...names].map(([note, on]) => (on.length === bills.length ? note : `${on.join(', ')}: ${note}`));
 }

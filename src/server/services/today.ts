@@ -67,7 +67,7 @@ async function weeksWithoutHours(actor: Actor, listed: ListedEngagement[], today
       days: late,
       title: `Write the hours of week ${week}`,
       where: own.map(({ row }) => row.code).join(', '),
-      why: 'What is not told is not billed.',
+      why: 'What is not logged is not billed.',
       stake: { text: 'no hours', note: `in week ${week}` },
       next: 'They join the work in progress of their engagement.',
       href: `/engagements/${own[0]?.row.code}/hours`,

@@ -182,6 +182,13 @@ describe('readTrail', () => {
     expect(odd.page).toBe(odd.pages);
   });
 
+  it('names fields in words', async () => {
+    const { rows } = await readTrail(ilse, { subject: 'User', row: String(tom.id), action: 'create' });
+    const names = rows[0]?.fields.map(({ name }) => name) ?? [];
+    expect(names).toContain('session epoch');
+    expect(names).not.toContain('sessionEpoch');
+  });
+
   it('shows no password hash', async () => {
     const user = await User.findByPk(tom.id, { rejectOnEmpty: true });
     await inTx(() => user.update({ passwordHash: 'the-secret-hash' }));

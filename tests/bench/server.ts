@@ -1,5 +1,5 @@
 import { readFileSync } from 'node:fs';
-import autocannon from 'autocannon';
+import autocannon, { type Result } from 'autocannon';
 import { demoAccounts } from '../../src/server/demo-accounts';
 import { startServerProcess, type ServerProcess } from '../setup/server-process';
 import type { Measured } from './run';
@@ -18,10 +18,22 @@ async function signedInCookie({ origin }: ServerProcess): Promise<string> {
   return cookie.split(';')[0] as string;
 }
 
-async function load(url: string, cookie?: string) {
-  const result = await autocannon({ url, connections: 10, duration: 8, headers: cookie ? { cookie } : {} });
+interface LoadResult {
+  perSecond: number;
+  p95Ms: number;
+}
+
+/** Ten connections for eight seconds; the 95th percentile is taken over every answer. */
+async function load(url: string, cookie?: string): Promise<LoadResult> {
+  const timesMs: number[] = [];
+  const result = await new Promise<Result>((resolve, reject) => {
+    const options = { url, connections: 10, duration: 8, headers: cookie ? { cookie } : {} };
+    const run = autocannon(options, (error, done) => (error ? reject(error as Error) : resolve(done)));
+    run.on('response', (_client, _status, _bytes, responseTimeMs) => timesMs.push(responseTimeMs));
+  });
   if (result.non2xx > 0) throw new Error(`${url}: ${result.non2xx} answers were no success`);
-  return { perSecond: result.requests.average, p95: result.latency.p97_5 };
+  timesMs.sort((one, other) => one - other);
+  return { perSecond: result.requests.average, p95Ms: timesMs[Math.ceil(0.95 * timesMs.length) - 1] ?? NaN };
 }
 
 /** A signed-in engagement page of the built server beside a bare static file, and the server's memory. */
@@ -37,7 +49,7 @@ export async function benchServer(): Promise<Measured[]> {
       {
         name: 'signed-in engagement page, requests a second',
         perSecond: page.perSecond,
-        figures: `p97.5 ${page.p95} ms with 10 connections; bare static file ${bare.perSecond.toFixed(0)} a second, p97.5 ${bare.p95} ms`,
+        figures: `p95 ${page.p95Ms.toFixed(0)} ms with 10 connections; bare static file ${bare.perSecond.toFixed(0)} a second, p95 ${bare.p95Ms.toFixed(0)} ms`,
       },
       {
         name: 'server memory after the load, MB',

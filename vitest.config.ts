@@ -16,6 +16,7 @@ export default defineConfig({
         test: {
           name: 'core',
           include: ['tests/core/**/*.test.ts', 'tests/published/**/*.test.ts'],
+          setupFiles: ['tests/setup/seed.ts'],
           testTimeout: 60_000,
         },
       },

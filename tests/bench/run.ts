@@ -1,5 +1,8 @@
 import { benchIntake } from './intake';
+import { benchMinuteYears } from './minute-years';
 import { benchPricing } from './pricing';
+import { benchRepricing } from './repricing';
+import { benchRivals } from './rivals';
 import { benchSearch } from './search';
 import { benchServer } from './server';
 
@@ -21,7 +24,7 @@ function verdict({ ratio, atMost, perSecond, atLeast }: Measured): string {
 }
 
 async function main(): Promise<void> {
-  const parts = [benchPricing, benchSearch, benchIntake, benchServer];
+  const parts = [benchPricing, benchRepricing, benchRivals, benchMinuteYears, benchSearch, benchIntake, benchServer];
   for (const part of parts) {
     for (const measured of await part()) {
       const value = measured.ratio ?? measured.perSecond;

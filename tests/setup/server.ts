@@ -19,6 +19,8 @@ beforeAll(async () => {
 
 afterAll(async () => {
   const { sequelize } = await import('@/server/db/connection');
+  const { closePool } = await import('@/server/workers/pool');
+  await closePool();
   await sequelize.close();
   rmSync(folder, { recursive: true, force: true });
 });

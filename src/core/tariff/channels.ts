@@ -1,17 +1,7 @@
 import { place, type Evaluate } from './formula/compile';
+import { channelTable, type ChannelName } from './grammar/formulas';
 
-/** Channels of a cell. Net is lagging less leading; kva is hypot(kw, kvarNet); a power is the cell's energy over its hours. */
-export type ChannelName =
-  | 'kwh'
-  | 'kvarhLagging'
-  | 'kvarhLeading'
-  | 'kvarhNet'
-  | 'kvah'
-  | 'kw'
-  | 'kvarLagging'
-  | 'kvarLeading'
-  | 'kvarNet'
-  | 'kva';
+export type { ChannelName } from './grammar/formulas';
 
 interface Channel {
   unit: string;
@@ -31,30 +21,37 @@ const kvah: Evaluate = (v) => {
   return Math.sqrt(active * active + reactive * reactive);
 };
 
-function channel(unit: string, registers: string, evaluate: Evaluate): Channel {
-  return {
-    unit,
-    isPower: !unit.endsWith('h'),
-    isActive: registers.includes('P'),
-    usesLagging: registers.includes('+'),
-    usesLeading: registers.includes('-'),
-    evaluate,
-  };
-}
+/** Registers each channel is made of, P active, + lagging, - leading, and its value in a cell. */
+const made: Record<ChannelName, readonly [registers: string, evaluate: Evaluate]> = {
+  kwh: ['P', (v) => v[cellKwh]!],
+  kvarhLagging: ['+', (v) => v[cellKvarhLagging]!],
+  kvarhLeading: ['-', (v) => v[cellKvarhLeading]!],
+  kvarhNet: ['+-', net],
+  kvah: ['P+-', kvah],
+  kw: ['P', (v) => v[cellKwh]! / v[cellHours]!],
+  kvarLagging: ['+', (v) => v[cellKvarhLagging]! / v[cellHours]!],
+  kvarLeading: ['-', (v) => v[cellKvarhLeading]! / v[cellHours]!],
+  kvarNet: ['+-', (v) => net(v) / v[cellHours]!],
+  kva: ['P+-', (v) => kvah(v) / v[cellHours]!],
+};
 
 /** The channels by name. */
-export const channels: ReadonlyMap<string, Channel> = new Map<ChannelName, Channel>([
-  ['kwh', channel('kWh', 'P', (v) => v[cellKwh]!)],
-  ['kvarhLagging', channel('kvarh', '+', (v) => v[cellKvarhLagging]!)],
-  ['kvarhLeading', channel('kvarh', '-', (v) => v[cellKvarhLeading]!)],
-  ['kvarhNet', channel('kvarh', '+-', net)],
-  ['kvah', channel('kVAh', 'P+-', kvah)],
-  ['kw', channel('kW', 'P', (v) => v[cellKwh]! / v[cellHours]!)],
-  ['kvarLagging', channel('kvar', '+', (v) => v[cellKvarhLagging]! / v[cellHours]!)],
-  ['kvarLeading', channel('kvar', '-', (v) => v[cellKvarhLeading]! / v[cellHours]!)],
-  ['kvarNet', channel('kvar', '+-', (v) => net(v) / v[cellHours]!)],
-  ['kva', channel('kVA', 'P+-', (v) => kvah(v) / v[cellHours]!)],
-]);
+export const channels: ReadonlyMap<string, Channel> = new Map(
+  channelTable.map(({ name, unit }) => {
+    const [registers, evaluate] = made[name];
+    return [
+      name,
+      {
+        unit,
+        isPower: !unit.endsWith('h'),
+        isActive: registers.includes('P'),
+        usesLagging: registers.includes('+'),
+        usesLeading: registers.includes('-'),
+        evaluate,
+      },
+    ];
+  }),
+);
 
 /** A channel that is known to exist. */
 export function channelOf(name: ChannelName): Channel {

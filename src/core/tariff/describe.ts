@@ -19,6 +19,10 @@ export interface ScheduleDescription {
   source: ScheduleSource;
   inForce: string | null;
   straddle: Straddle;
+  /** How what is shared is shared. */
+  division: Schedule['division'];
+  /** Whose first or last day decides for the whole bill; null: it is shared. */
+  ruledBy: Schedule['ruledBy'];
   /** Texts by their first day; the first is the schedule itself. */
   versions: TextDescription[];
   notes: { path: string; message: string }[];
@@ -73,6 +77,8 @@ export function describeSchedule(schedule: Schedule): ScheduleDescription {
     source: { ...source },
     inForce,
     straddle,
+    division: schedule.division,
+    ruledBy: { ...schedule.ruledBy },
     versions: schedule.texts.map(describeText),
     notes: notes.map((note) => ({ ...note })),
   };

@@ -4,6 +4,8 @@
  * Where the language leaves a choice, this is what is done:
  * - A file that does not say `straddle` goes by days, one without `demandWindow` takes the series' own interval, one without `inForce` holds
  *   for every day; each is noted in `Schedule.notes`.
+ * - `straddle` is one word, or one each for `text` (versions), `season` (of rates; windows keep their days) and `month` (of riders):
+ *   `straddle: { text: days, season: end }`. `start` and `end` as one word leave seasons shared by days.
  * - In a version a map by season or window is changed key by key where all its keys are known, else replaced; months are always added. Saying
  *   another kind (`formula` where there was `highest`) drops what belonged to the old one. `field: removed` takes a field away.
  * - Only quantities and charges added by a version must say `before`. Other additions stand above the next entry of the version that is
@@ -20,31 +22,49 @@
  * - A printed look back keeps its value at unity unless every period it asks for is known.
  * - A negative quantity is priced at the first tier's rate.
  * - Highest values within 1e-12 of each other are a tie: the earlier instant stands.
+ * - `examples` are bills the schedule must reproduce, figures of quantities, lines, `total`, `reactiveCost`. Reading prices none of them:
+ *   `checkExamples` does. A figure fits within `within`; left out, within half the currency's minor unit, or half a unit of the last digit
+ *   written where that is less, and 1e-9 for crumbs of binary arithmetic.
+ * - Units are followed through formulas: kWh, kvarh, kVAh are energies, kW, kvar, kVA powers, a power times hours an energy. Adding or
+ *   comparing unlike ones is refused, in amounts and rates noted (a bare name there may stand for itself times 1). A number as written up
+ *   to 2 is a share and keeps the kind; above 2 it may be hours of use or a price, and what it makes is not judged.
+ * - `per` said by a version of a percentage belongs to the percentage; only `percentOf: removed` makes another charge of it.
  * - Misspelt contract inputs and given quantities are refused; names of history nobody knows are noted.
  */
+export { breakEvens, type BreakEven, type BreakEvens, type CheaperStretch } from './compare/break-evens';
+export { carryQuantities, type CarriedQuantities } from './compare/carry-quantities';
+export { averagePowerFactor, energiesOf, scaledLoad, shareToReach, withoutLagging } from './compare/vary-load';
 export { PriceError, ScheduleError, wordProblem, type ScheduleProblem } from './errors';
+export { checkExamples, type ExampleResult } from './check-examples';
 export { describeSchedule, type ScheduleDescription } from './describe';
+export { scheduleJsonSchema } from './schema';
 export type {
   ChargeDefinition,
   ChargeEntry,
   ChargeGroup,
   ContractInput,
+  ExampleReadings,
   Expression,
   NumberPlace,
   QuantityDefinition,
   QuantityEntry,
   RateEntry,
   Schedule,
+  ScheduleExample,
   ScheduleSource,
   ScheduleText,
   SeasonTable,
   Straddle,
+  StraddleRule,
   WindowEntry,
   WindowRule,
 } from './model';
 export { compilePricing, priceBills } from './price/compile-pricing';
 export { wordPeriod } from './price/period-plan';
 export { priceQuantities } from './price/price-quantities';
+export { assumeMonth } from './try/assume';
+export { ToldError, type AskedQuantity, type AssumedMonth, type ToldMonth } from './try/told';
+export { monthAtPowerFactor, priceMonth, type AskedLookBack, type TriedBill } from './try/try-month';
 export { readSchedule } from './read/read-schedule';
 export type {
   CompiledPricing,

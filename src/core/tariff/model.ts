@@ -2,12 +2,23 @@ import type { Rounding } from '../units';
 import type { Evaluate } from './formula/compile';
 import type { Formula } from './formula/ast';
 import type { ChannelName } from './channels';
+import type { cells, groups, statuses, straddles } from './grammar/words';
 
 /** Group of a bill's line. */
-export type ChargeGroup = 'energy' | 'demand' | 'reactive' | 'fixed' | 'adjustment' | 'tax';
+export type ChargeGroup = (typeof groups)[number];
 
 /** How a bill across two texts, seasons or rider months is divided. */
-export type Straddle = 'intervals' | 'days' | 'start' | 'end';
+export type Straddle = (typeof straddles)[number];
+
+/** How a bill across borders is divided. */
+export interface StraddleRule {
+  /** As said, of versions. */
+  straddle: Straddle;
+  /** How what is shared is shared. */
+  division: 'intervals' | 'days';
+  /** Whose first or last day decides for the whole bill; null: it is shared. */
+  ruledBy: Record<'text' | 'season' | 'month', 'start' | 'end' | null>;
+}
 
 /** A formula bound to its names and compiled. */
 export interface Expression {
@@ -50,7 +61,7 @@ export interface RateEntry extends Entry {
 }
 
 /** Over what a measure is settled. */
-export type CellKind = 'interval' | 'demand window' | 'hour' | 'day';
+export type CellKind = (typeof cells)[number];
 
 /** A measure over cells. */
 export interface MeasureDefinition {
@@ -217,12 +228,43 @@ export interface ScheduleSource {
   publisher?: string;
   title?: string;
   date?: string;
-  status?: 'found' | 'memory' | 'invented';
+  status?: (typeof statuses)[number];
   url?: string;
 }
 
+/** A stretch of meter readings of an example; the rest of its period counts as missing. */
+export interface ExampleReadings {
+  /** UTC instant at which the first reading begins. [ms since epoch] */
+  startMs: number;
+  /** [min] */
+  stepMinutes: number;
+  /** Energies per interval, all of one length. [kWh, kvarh] */
+  kwh: number[];
+  kvarhLagging: number[];
+  kvarhLeading: number[];
+}
+
+/** A worked bill the schedule must reproduce. */
+export interface ScheduleExample {
+  title: string;
+  /** Where its figures come from. */
+  source?: string;
+  path: string;
+  /** Billing period of local dates, half-open. */
+  from: string;
+  to: string;
+  /** As in the options of pricing. */
+  contract?: Record<string, number>;
+  history?: Record<string, number[]>;
+  /** As printed on the bill; with readings, what the bill gives beside the meter. */
+  quantities: Record<string, number>;
+  readings?: ExampleReadings;
+  /** What must come out: quantities, lines, `total`, `reactiveCost`, each within its tolerance. */
+  expect: { name: string; value: number; tolerance: number }[];
+}
+
 /** A schedule, read and checked. Treat as immutable. */
-export interface Schedule {
+export interface Schedule extends StraddleRule {
   id: string;
   title: string;
   currency: string;
@@ -230,12 +272,13 @@ export interface Schedule {
   source: ScheduleSource;
   /** First day the schedule holds, YYYY-MM-DD; null if the file does not say. */
   inForce: string | null;
-  straddle: Straddle;
   /** Texts by their first day, the earliest first; at least one. */
   texts: readonly ScheduleText[];
   /** Places of all names in the array of values. */
   slots: ReadonlyMap<string, number>;
   /** Names of lines over all texts, in the order of the bill. */
   lineOrder: readonly string[];
+  /** Worked bills of the file, in its order; `checkExamples` prices them. */
+  examples: readonly ScheduleExample[];
   notes: { path: string; message: string }[];
 }

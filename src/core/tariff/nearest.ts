@@ -2,7 +2,7 @@
  * The known name that a person most likely meant, or none if nothing is near.
  *
  * Optimal string alignment distance (a letter lost, added, changed, or two swapped count one), at most a third of the length and at
- * least one; letters' case is ignored.
+ * least one; letters' case is ignored. Words of more than 64 letters are near to none: comparing them takes the square of their length.
  *
  * @param most  Greatest distance, in place of a third of the length
  */
@@ -11,6 +11,7 @@ export function nearestName(
   known: Iterable<string>,
   most = Math.max(1, Math.floor(typed.length / 3)),
 ): string | undefined {
+  if (typed.length > 64) return undefined;
   let best: string | undefined;
   let bestDistance = most + 0.5;
   for (const name of known) {

@@ -21,8 +21,9 @@ export function decimalsOf(value: number): number {
 /**
  * Rounds to a multiple of a step; the only rounding of money and billed quantities in the core.
  *
- * A value within max(1e-9, 1e-12 |value / step|) of a tie, in steps, is a tie; in `down` and `up` a value that near to a multiple is
- * that multiple. The result is the nearest double to the decimal.
+ * A value within 1e-12 |value / step| of a tie, in steps, is a tie (at least within 1e-9; from 1e7 steps on no further off than 1e-5 and
+ * from 1e10 on than what a few operations on doubles lose, or large amounts would be rounded from well below the half); in `down` and
+ * `up` a value that near to a multiple is that multiple. The result is the nearest double to the decimal.
  *
  * @param value  What is rounded. [any unit], scalar
  * @param rounding.step  [unit of the value], > 0
@@ -34,7 +35,7 @@ export function roundToStep(value: number, { step, mode }: Rounding): number {
   if (!Number.isFinite(value)) throw new RangeError(`value must be finite, got ${value}`);
   if (!(step > 0) || !Number.isFinite(step)) throw new RangeError(`step must be a positive number, got ${step}`);
   const steps = Math.abs(value) / step;
-  const tolerance = Math.min(0.25, Math.max(1e-9, 1e-12 * steps));
+  const tolerance = Math.min(0.25, Math.max(1e-9, Math.min(1e-12 * steps, 1e-5), 1e-15 * steps));
   const whole = wholeSteps(steps, tolerance, mode);
   if (whole === 0) return 0;
   const scale = scaleOf(step);

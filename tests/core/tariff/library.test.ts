@@ -1,7 +1,14 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { describe, expect, it } from 'vitest';
-import { describeSchedule, priceBills, priceQuantities, readSchedule, type Schedule } from '@/core/tariff';
+import {
+  checkExamples,
+  describeSchedule,
+  priceBills,
+  priceQuantities,
+  readSchedule,
+  type Schedule,
+} from '@/core/tariff';
 import { amountsOf, buildSeries, valuesOf } from './build';
 
 const folder = path.resolve('tariffs');
@@ -16,6 +23,19 @@ describe('the files of the library', () => {
     expect(schedule.notes).toEqual([]);
     expect(schedule.source.status).toBeDefined();
     expect(() => JSON.stringify(describeSchedule(schedule))).not.toThrow();
+  });
+
+  it.each(files)('%s carries worked bills and gives them', (name) => {
+    const results = checkExamples(read(name.replace(/\.yaml$/, '')));
+    expect(results.length).toBeGreaterThan(0);
+    for (const { title, problem, figures, fits } of results) {
+      expect(problem, title).toBeUndefined();
+      expect(
+        figures.filter((figure) => !figure.fits),
+        title,
+      ).toEqual([]);
+      expect(fits, title).toBe(true);
+    }
   });
 });
 
@@ -79,6 +99,27 @@ describe('ostrander-lp4, by hand', () => {
       uses: ['billedKw'],
     });
     expect(demand!.explanation).toBe('Demand: 2,375.0 kW x 12.40 USD per kW = 29,450.00 USD (clause 6b).');
+  });
+});
+
+describe('ostrander-hv3, by hand', () => {
+  // February 2026, 2,000 kW and 1,500 kvar steady: 2,500 kVA, above 0.50 x 3,000; 152 hours on peak, 520 off. 2,500 x 11.10; 304,000 x
+  // 0.0617; 1,040,000 x 0.0399; 1,344,000 x 0.00731; 4.5 % of 98,467.44. At unity 2,000 kVA: 22,200.00, tax 4,181.28, 97,098.72.
+  it('prices February from intervals', () => {
+    const period = { from: '2026-02-01', to: '2026-03-01' };
+    const powers = () => [2000, 1500, 0] as const;
+    const load = buildSeries({ ...period, timeZone: 'America/Chicago', stepMinutes: 15, powers });
+    const [bill] = priceBills(read('ostrander-hv3'), load, { periods: [period] });
+    expect(amountsOf(bill)).toEqual({
+      customer: 640,
+      power: 27_750,
+      energyOnPeak: 18_756.8,
+      energyOffPeak: 41_496,
+      fuelRider: 9824.64,
+      tax: 4431.03,
+    });
+    expect(bill!.total).toBe(102_898.47);
+    expect(bill!.reactiveCost).toBe(5799.75);
   });
 });
 

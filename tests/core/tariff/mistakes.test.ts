@@ -237,7 +237,7 @@ describe('mistakes in a schedule', () => {
   it('refuses what is no schedule', () => {
     expect(words(problemsOf(() => readSchedule('- 1')))[0]).toContain('is no schedule.');
     expect(words(problemsOf(() => readSchedule('')))[0]).toContain('is no schedule.');
-    expect(words(problemsOf(() => readSchedule('a: [')))[0]).toContain('is not YAML');
+    expect(words(problemsOf(() => readSchedule('a: [')))[0]).toContain('a { or [ above is not closed.');
     expect(words(problemsOf(() => readSchedule(`schedule: ${'x'.repeat(200_001)}`)))[0]).toContain(
       'at most 200000 are read',
     );

@@ -82,6 +82,23 @@ describe('versions', () => {
     expect(amountsOf(after)['reactive']).toBe(2);
   });
 
+  it('add to a percentage what it is taken per, and turn it into another charge only where they say so', () => {
+    const text = (change: string): string => `quantities:
+  kwh: { sum: kwh }
+  points: { formula: kwh / 500, unit: points }
+charges:
+  energy: { per: kwh, rate: 0.10, group: energy }
+  extra: { percentOf: energy, rate: 2, group: reactive }
+versions:
+  2026-07-01: { charges: { extra: { ${change} } } }
+`;
+    const extras = (change: string): (number | undefined)[] =>
+      priceQuantities(buildSchedule(text(change)), [june, july]).map((bill) => amountsOf(bill)['extra']);
+    // 2 % of 100.00; 2 points of 3 % each; 2 points of 7.00 each.
+    expect(extras('per: points, rate: 3')).toEqual([2, 6]);
+    expect(extras('percentOf: removed, per: points, rate: 7')).toEqual([2, 14]);
+  });
+
   it('replace lists and windows whole, and are checked like a file', () => {
     const broken = base.replace('{ to: 500, rate: 0.10 }, { rate: 0.20 }', '{ to: 500, rate: 0.10 }');
     const [problem] = problemsOf(() => buildSchedule(broken));
@@ -263,8 +280,8 @@ ${charges}`;
   it('note windows that overlap or leave gaps', () => {
     const other = '  nights: { sum: kwh, inEach: [night, low] }';
     const messages = buildSchedule(text('  a: { amount: 1, group: fixed }', other)).notes.map(({ message }) => message);
-    expect(messages).toContain('The windows night, low overlap: some time counts twice.');
-    expect(messages).toContain('The windows night, low leave gaps: some time counts in none of them.');
+    expect(messages).toContain('The windows night, low overlap, that time counts twice: every day 00:00-06:00.');
+    expect(messages).toContain('The windows night, low leave gaps, that time counts in none: weekdays 08:00-20:00.');
   });
 });
 

@@ -141,6 +141,18 @@ charges:
     expect(lineWords(bill)['reactive']).toBe('Reactive: 10 kvarh x 0.041554 EUR per kvarh = 0.42 EUR.');
   });
 
+  it('say what a look back sums', () => {
+    const schedule = buildSchedule(`
+quantities:
+  fault: { given: flag, default: 0 }
+  waivers: { past: fault, take: sum, over: earlier periods of this year }
+charges:
+  fine: { per: waivers, rate: 10, group: adjustment }`);
+    const row = { from: '2026-03-01', to: '2026-04-01', quantities: { fault: 0 } };
+    const [bill] = priceQuantities(schedule, [row], { history: { fault: [1, 1] } });
+    expect(quantityWords(bill)['waivers']).toBe('waivers = 2, the sum of fault over earlier periods of this year.');
+  });
+
   it('say why nothing is charged', () => {
     const schedule = buildSchedule(
       'quantities:\n  over: { given: kvarh }\ncharges:\n  service: { amount: 5, group: fixed }\n  surcharge: { percentOf: [service], per: over, rate: 1, group: reactive }',

@@ -2,18 +2,24 @@ import { PriceError } from '../errors';
 import type { CellKind, DemandWindow } from '../model';
 import type { PeriodCalendar } from './period-calendar';
 
-/** Cells of one kind, in one window, in one period, with room for their energies. Nothing is made anew while pricing. */
+/**
+ * Cells of one kind, in one window, in one period, with room for their energies. Nothing is made anew while pricing.
+ *
+ * A cell is one run of successive intervals, or several where a window cuts it.
+ */
 export interface CellPlan {
-  /** Borders in `members`: cell c holds members starts[c] to ends[c] - 1. int32[cells] */
-  starts: Int32Array;
-  ends: Int32Array;
-  /** Numbers of the intervals held, cell by cell; null: `base` + position. */
-  members: Int32Array | null;
-  base: number;
+  /** Number of cells. */
+  count: number;
+  /** First interval of each run, and the one behind its last. int32[runs] */
+  runFirst: Int32Array;
+  runEnd: Int32Array;
+  /** First run of each cell, and the number of runs; null: cell c is run c. int32[cells + 1] */
+  runStarts: Int32Array | null;
   /** Every cell is one interval: the series itself holds their energies. */
   isSingle: boolean;
   /** Whether some measure reads the cells' reactive energy. */
-  needsReactive: boolean;
+  needsLagging: boolean;
+  needsLeading: boolean;
   /** 1: an interval of the cell lies outside the series. uint8[cells] */
   broken: Uint8Array;
   /** Day of the period each cell begins on. int32[cells] */
@@ -25,8 +31,12 @@ export interface CellPlan {
   kvarhLagging: Float64Array;
   kvarhLeading: Float64Array;
   hours: Float64Array;
-  /** 1: an interval of the cell is missing. uint8[cells] */
-  isBad: Uint8Array;
+  /** 0: nothing of the cell was metered; 1: something is missing of it; 2: it is whole. uint8[cells] */
+  standing: Uint8Array;
+  /** Hours and standing are those of a series without gaps in the period. */
+  isWhole: boolean;
+  /** Hours of every cell; NaN where they differ. */
+  evenHours: number;
 }
 
 /** What cells are laid over. */
@@ -39,13 +49,11 @@ export interface CellGround {
   pieceEnds: number[];
 }
 
-interface Draft {
-  from: number;
-  to: number;
-}
+/** Takes positions from and to (behind the last) of what may become a cell. */
+type Visit = (from: number, to: number) => void;
 
 /**
- * Lays out cells.
+ * Lays out cells; one with no interval inside the series is none.
  *
  * An hour or a day holds the intervals inside the window; a demand window counts only if it lies wholly inside window and period.
  *
@@ -58,28 +66,31 @@ export function layCells(
   inside: Uint8Array | null,
   demandWindow: DemandWindow | undefined,
 ): CellPlan {
+  const builder = new CellBuilder(ground, inside);
   const { stepMinutes } = ground;
   const isLong =
     demandWindow !== undefined &&
     (stepMinutes < demandWindow.minutes || demandWindow.everyMinutes !== undefined) &&
     stepMinutes <= demandWindow.minutes;
-  const isDemand = kind === 'demand window' && isLong;
-  if (isDemand)
-    return finishCells(demandCells(ground, demandWindow), ground, inside, (draft) => isWhole(draft, inside));
-  if (kind === 'interval' || kind === 'demand window')
-    return finishCells(blocks(ground, 0), ground, inside, () => true);
-  return finishCells(blocks(ground, kind === 'hour' ? 60 : 1440), ground, inside, () => true);
+  if (kind === 'demand window' && isLong) {
+    visitDemandWindows(ground, demandWindow, (from, to) => {
+      if (isWhole(from, to, inside)) builder.add(from, to);
+    });
+  } else {
+    const minutes = kind === 'hour' ? 60 : kind === 'day' ? 1440 : 0;
+    visitBlocks(ground, minutes, (from, to) => builder.add(from, to));
+  }
+  return builder.finish();
 }
 
-function isWhole({ from, to }: Draft, inside: Uint8Array | null): boolean {
+function isWhole(from: number, to: number, inside: Uint8Array | null): boolean {
   if (inside) for (let position = from; position < to; position++) if (inside[position] !== 1) return false;
   return true;
 }
 
 /** Runs of positions with the same block of the local clock; length 0 makes every position its own. */
-function blocks({ calendar }: CellGround, minutes: number): Draft[] {
+function visitBlocks({ calendar }: CellGround, minutes: number, visit: Visit): void {
   const { count, day, clock, turn } = calendar;
-  const drafts: Draft[] = [];
   let from = 0;
   const blockOf = (position: number): number => (minutes === 0 ? position : Math.floor(clock[position]! / minutes));
   for (let position = 1; position <= count; position++) {
@@ -89,13 +100,12 @@ function blocks({ calendar }: CellGround, minutes: number): Draft[] {
       day[position] === day[from] &&
       (minutes === 1440 || turn[position] === turn[from]);
     if (isSame) continue;
-    drafts.push({ from, to: position });
+    visit(from, position);
     from = position;
   }
-  return drafts;
 }
 
-function demandCells(ground: CellGround, { minutes, everyMinutes }: DemandWindow): Draft[] {
+function visitDemandWindows(ground: CellGround, { minutes, everyMinutes }: DemandWindow, visit: Visit): void {
   const { calendar, stepMinutes } = ground;
   for (const length of [minutes, everyMinutes ?? minutes]) {
     if (length % stepMinutes === 0) continue;
@@ -107,77 +117,92 @@ function demandCells(ground: CellGround, { minutes, everyMinutes }: DemandWindow
     );
   }
   const size = minutes / stepMinutes;
-  if (everyMinutes === undefined) return blocks(ground, minutes).filter(({ from, to }) => to - from === size);
-  const drafts: Draft[] = [];
+  if (everyMinutes === undefined) {
+    visitBlocks(ground, minutes, (from, to) => {
+      if (to - from === size) visit(from, to);
+    });
+    return;
+  }
   for (let from = 0; from + size <= calendar.count; from++) {
-    if (calendar.clock[from]! % everyMinutes < stepMinutes) drafts.push({ from, to: from + size });
+    if (calendar.clock[from]! % everyMinutes < stepMinutes) visit(from, from + size);
   }
-  return drafts;
 }
 
-function finishCells(
-  drafts: Draft[],
-  ground: CellGround,
-  inside: Uint8Array | null,
-  isKept: (draft: Draft) => boolean,
-): CellPlan {
-  const { calendar, seriesCount, pieceEnds } = ground;
-  const members: number[] = [];
-  const starts: number[] = [];
-  const ends: number[] = [];
-  const broken: number[] = [];
-  const days: number[] = [];
-  const pieceStarts = [0];
-  for (const draft of drafts) {
-    if (!isKept(draft)) continue;
-    const start = members.length;
+class CellBuilder {
+  private readonly runFirst: number[] = [];
+  private readonly runEnd: number[] = [];
+  private readonly runStarts: number[] = [];
+  private readonly broken: number[] = [];
+  private readonly days: number[] = [];
+  private readonly pieceStarts = [0];
+
+  constructor(
+    private readonly ground: CellGround,
+    private readonly inside: Uint8Array | null,
+  ) {}
+
+  add(from: number, to: number): void {
+    const { calendar, seriesCount, pieceEnds } = this.ground;
+    const firstRun = this.runFirst.length;
     let isBroken = false;
-    let isHeld = false;
-    for (let position = draft.from; position < draft.to; position++) {
-      if (inside && inside[position] !== 1) continue;
-      isHeld = true;
+    for (let position = from; position < to; position++) {
+      if (this.inside && this.inside[position] !== 1) continue;
       const interval = calendar.first + position;
-      if (interval >= 0 && interval < seriesCount) members.push(interval);
-      else isBroken = true;
+      if (interval < 0 || interval >= seriesCount) isBroken = true;
+      else if (this.runFirst.length > firstRun && this.runEnd[this.runEnd.length - 1] === interval)
+        this.runEnd[this.runEnd.length - 1] = interval + 1;
+      else {
+        this.runFirst.push(interval);
+        this.runEnd.push(interval + 1);
+      }
     }
-    if (!isHeld) continue;
-    while (draft.from >= pieceEnds[pieceStarts.length - 1]!) pieceStarts.push(starts.length);
-    starts.push(start);
-    ends.push(members.length);
-    broken.push(isBroken ? 1 : 0);
-    days.push(calendar.day[draft.from]!);
+    if (this.runFirst.length === firstRun) return;
+    while (from >= pieceEnds[this.pieceStarts.length - 1]!) this.pieceStarts.push(this.runStarts.length);
+    this.runStarts.push(firstRun);
+    this.broken.push(isBroken ? 1 : 0);
+    this.days.push(calendar.day[from]!);
   }
-  while (pieceStarts.length <= pieceEnds.length) pieceStarts.push(starts.length);
-  return withRoom({ starts, ends, members, broken, days, pieceStarts });
+
+  finish(): CellPlan {
+    const { runFirst, runEnd, runStarts, pieceStarts } = this;
+    const count = runStarts.length;
+    while (pieceStarts.length <= this.ground.pieceEnds.length) pieceStarts.push(count);
+    const isSimple = runFirst.length === count;
+    const isSingle = isSimple && runFirst.every((first, run) => runEnd[run] === first + 1);
+    const room = isSingle ? 0 : count;
+    return {
+      count,
+      runFirst: Int32Array.from(runFirst),
+      runEnd: Int32Array.from(runEnd),
+      runStarts: isSimple ? null : Int32Array.from([...runStarts, runFirst.length]),
+      isSingle,
+      needsLagging: false,
+      needsLeading: false,
+      broken: Uint8Array.from(this.broken),
+      day: Int32Array.from(this.days),
+      pieceStarts: Int32Array.from(pieceStarts),
+      kwh: new Float64Array(room),
+      kvarhLagging: new Float64Array(room),
+      kvarhLeading: new Float64Array(room),
+      hours: new Float64Array(room),
+      standing: new Uint8Array(room),
+      isWhole: false,
+      evenHours: NaN,
+    };
+  }
 }
 
-function withRoom(cells: {
-  starts: number[];
-  ends: number[];
-  members: number[];
-  broken: number[];
-  days: number[];
-  pieceStarts: number[];
-}): CellPlan {
-  const { starts, ends, members } = cells;
-  const base = members[0] ?? 0;
-  const isContiguous = members.every((member, i) => member === base + i);
-  const isSingle = starts.every((start, c) => start === c && ends[c] === c + 1);
-  const room = isSingle ? 0 : starts.length;
-  return {
-    starts: Int32Array.from(starts),
-    ends: Int32Array.from(ends),
-    members: isContiguous ? null : Int32Array.from(members),
-    base,
-    isSingle,
-    needsReactive: false,
-    broken: Uint8Array.from(cells.broken),
-    day: Int32Array.from(cells.days),
-    pieceStarts: Int32Array.from(cells.pieceStarts),
-    kwh: new Float64Array(room),
-    kvarhLagging: new Float64Array(room),
-    kvarhLeading: new Float64Array(room),
-    hours: new Float64Array(room),
-    isBad: new Uint8Array(room),
-  };
+/** Number of the first interval of a cell. */
+export function firstIntervalOf({ runStarts, runFirst }: CellPlan, cell: number): number {
+  return runFirst[runStarts === null ? cell : runStarts[cell]!]!;
+}
+
+/** Whether some interval of a cell passes a test. */
+export function someInterval(plan: CellPlan, cell: number, test: (interval: number) => boolean): boolean {
+  const { runStarts, runFirst, runEnd } = plan;
+  const lastRun = runStarts === null ? cell : runStarts[cell + 1]! - 1;
+  for (let run = runStarts === null ? cell : runStarts[cell]!; run <= lastRun; run++) {
+    for (let i = runFirst[run]!; i < runEnd[run]!; i++) if (test(i)) return true;
+  }
+  return false;
 }

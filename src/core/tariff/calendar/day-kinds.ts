@@ -1,17 +1,7 @@
-/** Words for kinds of days and their bits. `mon` ... `sun` and `weekdays` hold on no holiday; `weekends` on holidays too. */
-export const dayTokens: ReadonlyMap<string, number> = new Map([
-  ['every day', 1],
-  ['weekdays', 2],
-  ['weekends', 4],
-  ['holidays', 8],
-  ['sun', 16],
-  ['mon', 32],
-  ['tue', 64],
-  ['wed', 128],
-  ['thu', 256],
-  ['fri', 512],
-  ['sat', 1024],
-]);
+import { dayWords } from '../grammar/words';
+
+/** Words for kinds of days and their bits. */
+export const dayTokens: ReadonlyMap<string, number> = new Map(dayWords.map((word, i) => [word, 1 << i]));
 
 /**
  * Bits of {@link dayTokens} that hold on a day.

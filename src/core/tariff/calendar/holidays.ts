@@ -2,6 +2,7 @@ import Holidays from 'date-holidays';
 import type { HolidayRule } from '../model';
 
 const knownYears = new Map<string, ReadonlySet<string>>();
+const knownRules = new WeakMap<HolidayRule, Map<number, ReadonlySet<string>>>();
 
 /**
  * What is wrong with a calendar's name, or nothing.
@@ -27,6 +28,14 @@ export function calendarCountries(): string[] {
 
 /** Holidays of a year as local dates: days of type `public`, substitute days included, with days added and dropped. */
 export function holidaysOfYear(rule: HolidayRule, year: number): ReadonlySet<string> {
+  let years = knownRules.get(rule);
+  if (!years) knownRules.set(rule, (years = new Map()));
+  let dates = years.get(year);
+  if (!dates) years.set(year, (dates = workOutYear(rule, year)));
+  return dates;
+}
+
+function workOutYear(rule: HolidayRule, year: number): ReadonlySet<string> {
   const dates = new Set(rule.calendar === undefined ? [] : publicDays(rule.calendar, year));
   for (const date of rule.drop) dates.delete(date);
   for (const date of rule.add) if (date.startsWith(`${year}-`)) dates.add(date);

@@ -5,7 +5,7 @@ import { seasonOfDate, type PeriodPlan } from '../price/period-plan';
 import type { PricingGrid } from '../types';
 import { dayKindsOf } from './day-kinds';
 import { holidaysOfYear } from './holidays';
-import { windowMembership } from './membership';
+import { windowsOfDay, type DayWindows } from './membership';
 
 const dayMs = 86_400_000;
 
@@ -59,61 +59,63 @@ export function layPeriod(grid: PricingGrid, plan: PeriodPlan, timeZone: string)
   return calendar;
 }
 
-/**
- * Which positions of a period lie in a window.
- *
- * @returns uint8[count], 1 inside
- * @throws {PriceError} where a border of the window falls inside an interval
- */
-export function positionsInside(
-  text: ScheduleText,
-  window: string,
-  plan: PeriodPlan,
-  calendar: PeriodCalendar,
-  stepMinutes: number,
-): Uint8Array {
-  checkBorders(text, window, plan, calendar, stepMinutes);
-  const inside = new Uint8Array(calendar.count);
-  const templates = new Map<number, Uint8Array>();
-  const byDay = Array.from({ length: plan.days }, (_, day) => {
-    const { season, kinds } = dayOf(text, plan.firstDay + day);
-    const key = season * 4096 + kinds;
-    let template = templates.get(key);
-    if (!template) templates.set(key, (template = windowMembership(text, window, season, kinds)));
-    return template;
-  });
-  for (let position = 0; position < calendar.count; position++) {
-    inside[position] = byDay[calendar.day[position]!]![calendar.clock[position]!]!;
+/** The windows of a text over the positions of a period. */
+export class PeriodWindows {
+  private readonly byKind = new Map<number, DayWindows>();
+  private readonly byDay: DayWindows[];
+
+  constructor(
+    private readonly text: ScheduleText,
+    private readonly plan: PeriodPlan,
+    private readonly calendar: PeriodCalendar,
+    private readonly stepMinutes: number,
+  ) {
+    this.byDay = Array.from({ length: plan.days }, (_, day) => this.windowsOf(plan.firstDay + day));
   }
-  return inside;
-}
 
-/** Season and kinds of a day, given as days since 1970-01-01. */
-export function dayOf(text: ScheduleText, day: number): { season: number; kinds: number } {
-  const date = isoDate(day);
-  const isHoliday = holidaysOfYear(text.holidays, Number(date.slice(0, 4))).has(date);
-  return { season: seasonOfDate(text.seasons, date), kinds: dayKindsOf(weekdayOf(day), isHoliday) };
-}
+  /**
+   * Which positions lie in a window.
+   *
+   * @returns uint8[positions], 1 inside
+   * @throws {PriceError} where a border of the window falls inside an interval
+   */
+  positionsInside(window: string): Uint8Array {
+    this.checkBorders(window);
+    const { count, day, clock } = this.calendar;
+    const inside = new Uint8Array(count);
+    const templates = this.byDay.map((windows) => windows.get(window)!);
+    for (let position = 0; position < count; position++)
+      inside[position] = templates[day[position]!]![clock[position]!]!;
+    return inside;
+  }
 
-function checkBorders(
-  text: ScheduleText,
-  name: string,
-  plan: PeriodPlan,
-  { clock, count }: PeriodCalendar,
-  stepMinutes: number,
-): void {
-  const window = text.windows.get(name);
-  const phase = count > 0 ? clock[0]! % stepMinutes : 0;
-  for (const { spans } of window?.rules ?? []) {
-    for (const border of spans.flat()) {
-      if (border % 1440 === 0 ? phase === 0 : (border - phase) % stepMinutes === 0) continue;
-      const time = `${String(Math.floor(border / 60)).padStart(2, '0')}:${String(border % 60).padStart(2, '0')}`;
-      throw new PriceError(
-        `${window?.path}.hours: ${time} falls inside an interval of ${stepMinutes} minutes. Use a series of a shorter step.`,
-        { period: plan.period, name },
-      );
+  private windowsOf(day: number): DayWindows {
+    const date = isoDate(day);
+    const season = seasonOfDate(this.text.seasons, date);
+    const isHoliday = holidaysOfYear(this.text.holidays, Number(date.slice(0, 4))).has(date);
+    const kinds = dayKindsOf(weekdayOf(day), isHoliday);
+    const key = season * 4096 + kinds;
+    let windows = this.byKind.get(key);
+    if (!windows) this.byKind.set(key, (windows = windowsOfDay(this.text, season, kinds)));
+    return windows;
+  }
+
+  private checkBorders(name: string): void {
+    const { clock, count } = this.calendar;
+    const { stepMinutes } = this;
+    const phase = count > 0 ? clock[0]! % stepMinutes : 0;
+    const names = new Set([name]);
+    for (const one of names) {
+      const window = this.text.windows.get(one);
+      for (const other of window?.restOf ?? []) names.add(other);
+      for (const border of window?.rules.flatMap(({ spans }) => spans.flat()) ?? []) {
+        if (border % 1440 === 0 ? phase === 0 : (border - phase) % stepMinutes === 0) continue;
+        const time = `${String(Math.floor(border / 60)).padStart(2, '0')}:${String(border % 60).padStart(2, '0')}`;
+        throw new PriceError(
+          `${window?.path}.hours: ${time} falls inside an interval of ${stepMinutes} minutes. Use a series of a shorter step.`,
+          { period: this.plan.period, name: one },
+        );
+      }
     }
   }
-  for (const other of window?.restOf ?? [])
-    checkBorders(text, other, plan, { clock, count } as PeriodCalendar, stepMinutes);
 }

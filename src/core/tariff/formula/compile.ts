@@ -1,5 +1,5 @@
 import type { Formula } from './ast';
-import { between, excess, isSame } from './functions';
+import { between, comparisons, excess, hypot2, powerFactorOf, ratioOf, tangentOf } from './functions';
 
 /** The array of values formulas read: places of the cell's channels, the period's facts and the rules for zero kWh. Names follow. */
 export const place = {
@@ -87,25 +87,9 @@ function compileBinary(node: Formula & { kind: 'binary' }, left: Evaluate, right
   }
 }
 
-function compileComparison(operator: '=' | '!=' | '<' | '<=' | '>' | '>=', left: Evaluate, right: Evaluate): Evaluate {
-  const compare =
-    (test: (a: number, b: number) => boolean): Evaluate =>
-    (v) =>
-      test(left(v), right(v)) ? 1 : 0;
-  switch (operator) {
-    case '=':
-      return compare(isSame);
-    case '!=':
-      return compare((a, b) => !isSame(a, b));
-    case '<':
-      return compare((a, b) => a < b && !isSame(a, b));
-    case '<=':
-      return compare((a, b) => a <= b || isSame(a, b));
-    case '>':
-      return compare((a, b) => a > b && !isSame(a, b));
-    case '>=':
-      return compare((a, b) => a >= b || isSame(a, b));
-  }
+function compileComparison(operator: keyof typeof comparisons, left: Evaluate, right: Evaluate): Evaluate {
+  const compare = comparisons[operator];
+  return (v) => (compare(left(v), right(v)) ? 1 : 0);
 }
 
 function compileDivision({ start, end }: Formula, left: Evaluate, right: Evaluate): Evaluate {
@@ -147,7 +131,7 @@ function compileCall(node: Formula & { kind: 'call' }, args: Evaluate[]): Evalua
     case 'between':
       return (v) => between(a(v), b(v), c(v));
     case 'tanOf':
-      return (v) => tangentOf(a(v), start, end);
+      return (v) => checkedTangent(a(v), start, end);
     case 'pf':
       return (v) => powerFactorOf(a(v), b(v), v[place.zeroPf]!);
     case 'ratio':
@@ -165,10 +149,6 @@ function add(a: number, b: number): number {
   return a + b;
 }
 
-function hypot2(a: number, b: number): number {
-  return Math.sqrt(a * a + b * b);
-}
-
 function foldArgs(args: Evaluate[], values: Float64Array, fold: (a: number, b: number) => number): number {
   let result = args[0]!(values);
   if (args.length === 1 && fold === hypot2) return Math.abs(result);
@@ -181,20 +161,11 @@ function rootOf(value: number, start: number, end: number): number {
   return Math.sqrt(value);
 }
 
-function tangentOf(powerFactor: number, start: number, end: number): number {
+function checkedTangent(powerFactor: number, start: number, end: number): number {
   if (!(powerFactor > 0 && powerFactor <= 1)) {
     throw new FormulaFault(`takes a power factor above 0, at most 1, and is given ${powerFactor}`, start, end);
   }
-  return Math.sqrt(1 - powerFactor * powerFactor) / powerFactor;
-}
-
-function powerFactorOf(active: number, reactive: number, zeroRule: number): number {
-  if (active === 0) return zeroRule;
-  return reactive === 0 ? 1 : Math.abs(active) / hypot2(active, reactive);
-}
-
-function ratioOf(reactive: number, active: number, zeroRule: number): number {
-  return active === 0 ? zeroRule : reactive / active;
+  return tangentOf(powerFactor);
 }
 
 /** Days since 1970-01-01 of a date written as a number: 20260115. */

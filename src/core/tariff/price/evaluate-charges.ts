@@ -141,7 +141,7 @@ export function tieredPrice(run: Run, state: PieceState, price: Tier[], quantity
 export function shareOf(run: Run, bill: BillState, state: PieceState, plan: ChargePlan): number {
   const count = bill.pieces.length;
   if (count === 1) return 1;
-  if (run.schedule.straddle !== 'intervals') return state.piece.share;
+  if (run.schedule.division !== 'intervals') return state.piece.share;
   if (!run.source.hasIntervals) {
     if (plan.shareBy.length > 0)
       bill.notes?.add(

@@ -1,6 +1,7 @@
-import { enterCell, enterInterval, extremeCell, extremeCells, fillCells, sumCells } from './cell-loops';
+import { enterCell, enterInterval } from './cell-block';
+import { extremeCell, extremeCells, sumCells } from './cell-loops';
 import { gatherActive, gatherApparent, gatherReactive, type ClassPlan } from './class-loops';
-import type { CellGround } from '../calendar/cells';
+import { firstIntervalOf, type CellGround } from '../calendar/cells';
 import { layPeriod } from '../calendar/period-calendar';
 import { intervalStartMs, type LoadSeries } from '../../load';
 import { channelOf, type ChannelName } from '../channels';
@@ -10,14 +11,16 @@ import type { MeasureDefinition, QuantityEntry, Schedule, ValueDefinition } from
 import type { PricingGrid } from '../types';
 import type { BillState, PieceState } from './bill-state';
 import { firstMissing } from './evaluate-quantities';
+import { fillCells } from './fill-cells';
 import { wordPeriod, type PeriodPlan } from './period-plan';
-import { planReduction, type MeasurePlan, type Reduction } from './reduction';
+import { CellFormulas, planReduction, type MeasurePlan, type Reduction } from './reduction';
 import { evaluateIn, setRounded, type QuantitySource, type Run } from './run';
 import type { TextPlan } from './text-plan';
 
 /** One period over the grid: its intervals and the gathering of each text that holds in it. */
 export interface PeriodGround {
-  ground: CellGround;
+  /** Intervals of the period, inside the series or not. */
+  count: number;
   reductions: ReadonlyMap<TextPlan, Reduction>;
   /** Intervals of the period inside the series: first and behind the last. */
   first: number;
@@ -26,6 +29,7 @@ export interface PeriodGround {
 
 /** Lays the grid over every period. */
 export function layGround(schedule: Schedule, plans: PeriodPlan[], grid: PricingGrid): PeriodGround[] {
+  const formulas = new CellFormulas();
   return plans.map((plan) => {
     const calendar = layPeriod(grid, plan, schedule.timeZone);
     const pieceEnds: number[] = [];
@@ -46,8 +50,8 @@ export function layGround(schedule: Schedule, plans: PeriodPlan[], grid: Pricing
         { period: plan.period },
       );
     return {
-      ground,
-      reductions: new Map(texts.map((text) => [text, planReduction(text, plan, ground, grid)])),
+      count: calendar.count,
+      reductions: new Map(texts.map((text) => [text, planReduction({ text, plan, ground, grid, formulas })])),
       first,
       end,
     };
@@ -71,7 +75,7 @@ export class IntervalSource implements QuantitySource {
         if (!isActiveKept && (classes.needs.kwh || classes.needs.kwPeak)) gatherActive(classes, this.load, hasMissing);
         if (classes.needs.reactive) gatherReactive(classes, this.load, hasMissing);
         if (classes.needs.kvaPeak) gatherApparent(classes, this.load, hasMissing);
-        for (const plan of cells) fillCells(plan, this.load, isActiveKept);
+        for (const plan of cells) fillCells(plan, this.load, { hasMissing, isActiveKept });
       }
     }
   }
@@ -108,21 +112,18 @@ export class IntervalSource implements QuantitySource {
     run.at = definition.expression;
     if (plan.kind === 'sum') return sumClasses(plan, reduction.classes, state, slot);
     if (plan.kind === 'peak') return this.peak(plan, reduction.classes, state, slot);
-    const formula = { evaluate: definition.expression.evaluate, where: definition.where?.evaluate };
-    const { cells } = plan;
-    if (definition.operation === 'sum')
-      return sumCells(cells, this.load, formula, state.values, state.sums, slot * bill.pieces.length);
-    const sign = definition.operation === 'highest' ? 1 : -1;
+    const { cells, formula } = plan;
+    if (definition.operation === 'sum') {
+      const { sums } = state;
+      return sumCells(cells, this.load, formula, state.values, { sums, at: slot * bill.pieces.length });
+    }
     if (definition.count === 1) {
+      const sign = definition.operation === 'highest' ? 1 : -1;
       const { value, cell } = extremeCell(cells, this.load, formula, state.values, sign);
       this.setInstant(state, slot, plan, cell);
       return value;
     }
-    const best = extremeCells(cells, this.load, formula, state.values, {
-      sign,
-      count: definition.count,
-      isDistinctDays: definition.isDistinctDays,
-    });
+    const best = extremeCells(cells, this.load, formula, state.values);
     this.setInstant(state, slot, plan, best[0]?.cell ?? -1);
     return best.length === 0 ? 0 : best.reduce((sum, { value }) => sum + value, 0) / best.length;
   }
@@ -150,7 +151,7 @@ export class IntervalSource implements QuantitySource {
   private setInstant(state: PieceState, slot: number, plan: MeasurePlan, cell: number): void {
     state.atCell[slot] = cell;
     if (cell < 0) return;
-    const interval = plan.kind === 'cells' ? firstInterval(plan, cell) : cell;
+    const interval = plan.kind === 'cells' ? firstIntervalOf(plan.cells, cell) : cell;
     state.atMs[slot] = intervalStartMs(this.load, interval);
   }
 
@@ -169,11 +170,6 @@ export class IntervalSource implements QuantitySource {
     else enterInterval(this.load, cell, state.values);
     return true;
   }
-}
-
-function firstInterval({ cells }: MeasurePlan & { kind: 'cells' }, cell: number): number {
-  const member = cells.starts[cell]!;
-  return cells.members === null ? cells.base + member : cells.members[member]!;
 }
 
 function sumClasses(plan: MeasurePlan & { kind: 'sum' }, classes: ClassPlan, state: PieceState, slot: number): number {

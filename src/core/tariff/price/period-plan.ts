@@ -118,15 +118,16 @@ function textAt(plans: TextPlan[], date: string): TextPlan {
   return found;
 }
 
-function cutPieces({ straddle }: Schedule, plans: TextPlan[], period: BillingPeriod, days: number): Piece[] {
+function cutPieces({ ruledBy }: Schedule, plans: TextPlan[], period: BillingPeriod, days: number): Piece[] {
   const first = dayNumber(period.from);
-  const ruling = straddle === 'start' ? period.from : straddle === 'end' ? addDays(period.to, -1) : undefined;
+  const dateFor = (what: keyof Schedule['ruledBy'], date: string): string =>
+    ruledBy[what] === 'start' ? period.from : ruledBy[what] === 'end' ? addDays(period.to, -1) : date;
   const pieces: Piece[] = [];
   for (let day = 0; day < days; day++) {
     const date = isoDate(first + day);
-    const plan = textAt(plans, ruling ?? date);
-    const season = seasonOfDate(plan.text.seasons, date);
-    const month = (ruling ?? date).slice(0, 7);
+    const plan = textAt(plans, dateFor('text', date));
+    const season = seasonOfDate(plan.text.seasons, dateFor('season', date));
+    const month = dateFor('month', date).slice(0, 7);
     const last = pieces[pieces.length - 1];
     if (last && last.text === plan && !isCut(plan.text, last, season, month)) {
       last.days++;

@@ -1,5 +1,9 @@
+import { chargeFields, chargeKinds } from '../grammar/charges';
+import { fieldNames } from '../grammar/types';
+import { groups } from '../grammar/words';
 import type { ChargeDefinition, ChargeEntry, ChargeGroup, Expression } from '../model';
 import { didYouMean } from '../nearest';
+import { money } from './dimensions';
 import type { RawExpression } from './expressions';
 import { asMap, asText, asWords, checkFields, checkTornValues, readRounding } from './fields';
 import { readWords } from './inputs';
@@ -9,16 +13,9 @@ import { memberName } from './scope';
 import type { TextContext } from './text-reader';
 import { entryOf, valueOf, type MapEntry, type MapTree, type Tree } from './tree';
 
-const groups: readonly string[] = ['energy', 'demand', 'reactive', 'fixed', 'adjustment', 'tax'];
-const common = ['group', 'when', 'round', 'label', 'clause', 'before'];
-const fieldsOf = {
-  amount: ['amount'],
-  per: ['per', 'rate', 'tiers'],
-  percentOf: ['percentOf', 'per', 'rate', 'tiers'],
-  topUp: ['topUp', 'to'],
-  cap: ['cap', 'to'],
-} as const;
-type Kind = keyof typeof fieldsOf;
+type Kind = 'amount' | 'per' | 'percentOf' | 'topUp' | 'cap';
+const common = fieldNames(chargeFields);
+const fieldsOf = new Map(chargeKinds.map(({ name, fields }) => [name, fieldNames(fields)]));
 
 /** A charge parsed: its formulas, for the families they use, and its definition for a window. */
 interface RawCharge {
@@ -55,7 +52,7 @@ export function readCharge(entry: MapEntry, context: TextContext): void {
     };
     context.charges.push(charge);
   };
-  const info = { kind: 'line', unit: context.currency, hasUnit: true } as const;
+  const info = { kind: 'line', unit: context.currency, hasUnit: true, found: money } as const;
   if (!windows) {
     add(entry.key, undefined);
     scope.make(entry.key, info);
@@ -94,7 +91,8 @@ function readHead(entry: MapEntry, map: MapTree, context: TextContext): Head | u
     return undefined;
   }
   const group = asText(groupTree, problems, `Write ${groups.join(', ')}.`);
-  if (group && !groups.includes(group.text)) {
+  const known = groups.find((name) => name === group?.text);
+  if (group && !known) {
     problems.add(
       groupTree,
       `"${group.text}" is not a group.`,
@@ -106,15 +104,15 @@ function readHead(entry: MapEntry, map: MapTree, context: TextContext): Head | u
   const rounding = roundTree ? readRounding(roundTree, problems) : context.rounding;
   const whenTree = valueOf(map, 'when');
   const when = whenTree && reader.parse(whenTree);
-  if (!group || !rounding || (whenTree && !when)) return undefined;
-  return { group: group.text as ChargeGroup, rounding, when, words: readWords(map, problems) };
+  if (!known || !rounding || (whenTree && !when)) return undefined;
+  return { group: known, rounding, when, words: readWords(map, problems) };
 }
 
 function kindOf(entry: MapEntry, map: MapTree, context: TextContext): Kind | undefined {
   const said = (['amount', 'percentOf', 'topUp', 'cap'] as const).filter((kind) => entryOf(map, kind));
   const all: Kind[] = said.length === 0 && entryOf(map, 'per') ? ['per'] : said;
   if (all.length === 1) return all[0]!;
-  const known = ['amount', 'per', 'percentOf', 'topUp', 'cap', 'rate', 'tiers', 'to', ...common];
+  const known = [...new Set([...fieldsOf.values()].flat()), ...common];
   if (all.length === 0 && !checkFields(map, known, 'a charge', context.problems)) return undefined;
   const message = all.length === 0 ? 'does not say what it charges.' : `says both ${all.join(' and ')}.`;
   context.problems.add(entry, message, 'Say exactly one of amount, per, percentOf, topUp, cap.');
@@ -125,7 +123,7 @@ function readRaw(entry: MapEntry, map: MapTree, context: TextContext): RawCharge
   const { problems, reader, seasons } = context;
   if (checkTornValues(map, problems)) return undefined;
   const kind = kindOf(entry, map, context);
-  if (!kind || !checkFields(map, [...fieldsOf[kind], ...common], `a charge that says ${kind}`, problems))
+  if (!kind || !checkFields(map, [...fieldsOf.get(kind)!, ...common], `a charge that says ${kind}`, problems))
     return undefined;
   switch (kind) {
     case 'amount': {

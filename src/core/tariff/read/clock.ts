@@ -1,11 +1,14 @@
 import { didYouMean } from '../nearest';
 import type { DemandWindow, SeasonTable, WindowEntry, WindowRule } from '../model';
+import { windowKinds } from '../grammar/entries';
+import { fieldNames } from '../grammar/types';
 import { dayTokens } from '../calendar/day-kinds';
 import { asMap, asText, asWords, checkFields } from './fields';
 import type { Problems } from './problems';
 import { valueOf, type ListTree, type MapEntry, type MapTree, type ScalarTree, type Tree } from './tree';
 
 const noSeason = 255;
+const fieldsOf = new Map(windowKinds.map(({ name, fields }) => [name, fieldNames(fields)]));
 const spanOfYear = /^(\d{2})-(\d{2})\s+to\s+(\d{2})-(\d{2})$/;
 
 /** Reads `seasons`: spans of the year, both ends included, that fill the year together. */
@@ -104,7 +107,7 @@ export function readWindow(
   const { value } = entry;
   const restTree = value.kind === 'map' ? valueOf(value, 'rest') : undefined;
   if (restTree && value.kind === 'map') {
-    if (!checkFields(value, ['rest'], 'a window that is the rest', problems)) return undefined;
+    if (!checkFields(value, fieldsOf.get('rest')!, 'a window that is the rest', problems)) return undefined;
     const words = asWords(restTree, problems, 'Name one window or a list.');
     const names = words?.map((word) =>
       known.has(word.text) ? word.text : unknownWindow(word, known.keys(), problems),
@@ -146,7 +149,7 @@ function wordRule(tree: Tree): string {
 
 function readRule(tree: Tree, seasons: SeasonTable | undefined, problems: Problems): WindowRule | undefined {
   const map = asMap(tree, problems, windowRemedy);
-  if (!map || !checkFields(map, ['season', 'days', 'hours'], 'a window', problems)) return undefined;
+  if (!map || !checkFields(map, fieldsOf.get('days')!, 'a window', problems)) return undefined;
   const days = valueOf(map, 'days');
   const hours = valueOf(map, 'hours');
   if (!days || !hours) {

@@ -6,9 +6,12 @@ import { parseFormula } from '../formula/parse';
 import { FormulaMistake } from '../formula/tokens';
 import type { Expression } from '../model';
 import { nearestName } from '../nearest';
+import { dimensionOfUnit, time, type Dimension, type Found } from './dimensions';
 import type { Problems } from './problems';
-import type { Scope } from './scope';
+import type { NameInfo, Scope } from './scope';
 import type { ScalarTree, Tree } from './tree';
+import { checkUnits } from './unit-check';
+import { unitOf } from './unit-of';
 
 /** A formula parsed and checked, families not yet bound to a window. */
 export interface RawExpression {
@@ -16,6 +19,8 @@ export interface RawExpression {
   tree: ScalarTree;
   /** Names of families it uses as such, `total(...)` left out. */
   families: string[];
+  /** Of what kind its value is, as far as that can be told. */
+  found: Found;
 }
 
 /** What the place of a formula allows. */
@@ -24,6 +29,8 @@ export interface ExpressionRules {
   channels?: boolean;
   /** Any quantity or line, also from below: looks back. */
   anyTime?: boolean;
+  /** It makes an amount or a rate, where a bare name may stand for itself times 1: what clashes is noted, not refused. */
+  makesMoney?: boolean;
 }
 
 const facts: ReadonlySet<string> = new Set(['days', 'hours']);
@@ -38,6 +45,8 @@ export class ExpressionReader {
     readonly problems: Problems,
     private readonly zeroKwh: { pf?: number; ratio?: number },
     private readonly dates: ReadonlySet<string>,
+    private readonly currency: string,
+    private readonly notes: { path: string; message: string }[],
   ) {}
 
   /** Parses and checks a formula; a problem gives nothing. */
@@ -49,8 +58,9 @@ export class ExpressionReader {
     }
     try {
       const formula = parseFormula(tree.text);
-      const isFine = this.checkCalls(formula, tree) && this.checkNames(formula, tree, rules);
-      return isFine ? { formula, tree, families: this.familiesIn(formula, rules) } : undefined;
+      if (!this.checkCalls(formula, tree) || !this.checkNames(formula, tree, rules)) return undefined;
+      const found = this.checkUnits(formula, tree, rules);
+      return found === 'problem' ? undefined : { formula, tree, families: this.familiesIn(formula, rules), found };
     } catch (error) {
       if (!(error instanceof FormulaMistake)) throw error;
       this.problems.addMistake(tree, tree.textOffset, error);
@@ -107,6 +117,37 @@ export class ExpressionReader {
       isFine = this.complain(tree, node, ...this.unknownName(name));
     });
     return isFine;
+  }
+
+  private checkUnits(formula: Formula, tree: ScalarTree, rules: ExpressionRules): Found | 'problem' {
+    let isFine = true;
+    const doubt = (message: string): void => this.note(tree.path, message);
+    const isChannel = (name: string): boolean => rules.channels === true && isChannelName(name);
+    const info = (name: string): NameInfo | undefined =>
+      this.scope.made.get(this.scope.families.get(name)?.members[0] ?? name);
+    const found = checkUnits(formula, {
+      look: (name) => {
+        if (name === 'hours') return time;
+        return isChannel(name) ? this.dimensionOf(channels.get(name)?.unit ?? '') : info(name)?.found;
+      },
+      unitOf: (node) => unitOf(node, (name) => (isChannel(name) ? channels.get(name)?.unit : info(name)?.unit) ?? ''),
+      refuse: (node, message, remedy) => {
+        if (rules.makesMoney) doubt(`${message} ${remedy}`);
+        else isFine = this.complain(tree, node, message, remedy);
+      },
+      doubt,
+    });
+    return isFine ? found : 'problem';
+  }
+
+  /** Notes what is allowed but odd, once for all texts. */
+  note(path: string, message: string): void {
+    if (!this.notes.some((note) => note.path === path && note.message === message)) this.notes.push({ path, message });
+  }
+
+  /** Kind of a unit as written, if it says one. */
+  dimensionOf(unit: string): Dimension | undefined {
+    return dimensionOfUnit(unit, this.currency);
   }
 
   private unknownName(name: string): [string, string] {
@@ -229,37 +270,4 @@ export class ExpressionReader {
       this.problems.add({ offset, path: tree.path }, message, remedy);
     }
   }
-}
-
-function unitOf(node: Formula, unitOfName: (name: string) => string): string {
-  const of = (inner: Formula | undefined): string => (inner ? unitOf(inner, unitOfName) : '');
-  switch (node.kind) {
-    case 'number':
-      return '';
-    case 'name':
-      return unitOfName(node.name);
-    case 'sign':
-      return node.operator === '-' ? of(node.operand) : '';
-    case 'binary':
-      return unitOfBinary(node.operator, of(node.left), of(node.right));
-    case 'call':
-      return unitOfCall(node.fn, node.args.map(of));
-  }
-}
-
-function unitOfBinary(operator: string, left: string, right: string): string {
-  if (operator === '+' || operator === '-') return left || right;
-  if (operator === '*') return left === '' ? right : right === '' ? left : '';
-  if (operator === '/') return right === '' ? left : '';
-  return '';
-}
-
-function unitOfCall(fn: string, units: string[]): string {
-  if (fn === 'hypot' && units.some((unit) => unit === 'kvarh' || unit === 'kvar')) {
-    return units.some((unit) => unit.endsWith('h')) ? 'kVAh' : 'kVA';
-  }
-  if (fn === 'if') return units.slice(1).find((unit) => unit !== '') ?? '';
-  if (['min', 'max', 'hypot', 'excess', 'between', 'abs', 'total'].includes(fn))
-    return units.find((unit) => unit !== '') ?? '';
-  return '';
 }

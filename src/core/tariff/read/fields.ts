@@ -8,9 +8,15 @@ export function checkFields(map: MapTree, known: readonly string[], ofWhat: stri
   let isFine = true;
   for (const entry of map.entries) {
     if (known.includes(entry.key)) continue;
+    isFine = false;
+    // { per: kwh, rate:0.10 }: without the blank the whole is a key.
+    const [, key, value] = /^([A-Za-z]+):(\S.*)$/.exec(entry.key) ?? [];
+    if (key !== undefined) {
+      problems.add(entry, 'no blank stands behind the colon.', `Write ${key}: ${value}.`);
+      continue;
+    }
     const fallback = `Known are ${known.join(', ')}.`;
     problems.add(entry, `is not a part of ${ofWhat}.`, didYouMean(entry.key, known, fallback));
-    isFine = false;
   }
   return isFine;
 }
@@ -18,7 +24,7 @@ export function checkFields(map: MapTree, known: readonly string[], ofWhat: stri
 /** The map, or a problem. */
 export function asMap(tree: Tree, problems: Problems, remedy: string): MapTree | undefined {
   if (tree.kind === 'map') return tree;
-  problems.add(tree, 'is not a set of entries.', remedy);
+  problems.add(tree, tree.kind === 'list' ? 'is a list, not a set of entries.' : 'is not a set of entries.', remedy);
   return undefined;
 }
 
@@ -46,8 +52,27 @@ export function asNumber(tree: Tree, problems: Problems, remedy: string): number
     return tree.value;
   const text = tree.kind === 'scalar' ? `"${tree.text}" is not a number.` : 'is not a number.';
   const comma = tree.kind === 'scalar' ? /^(-?\d+),(\d+)$/.exec(tree.text) : null;
-  problems.add(tree, text, comma ? `Write ${comma[1]}.${comma[2]}.` : remedy);
+  problems.add(tree, text, comma ? withoutComma(comma[1]!, comma[2]!) : remedy);
   return undefined;
+}
+
+/** A number without its comma: three digits behind it may be thousands or decimals. */
+function withoutComma(whole: string, behind: string): string {
+  return behind.length === 3 ? `Write ${whole}${behind}, or ${whole}.${behind}.` : `Write ${whole}.${behind}.`;
+}
+
+/** A list of plain numbers, at least one and at most `most`, or a problem. */
+export function asNumbers(tree: Tree, most: number, problems: Problems, remedy: string): number[] | undefined {
+  if (tree.kind !== 'list' || tree.items.length === 0) {
+    problems.add(tree, tree.kind === 'list' ? 'is an empty list.' : 'is not a list of numbers.', remedy);
+    return undefined;
+  }
+  if (tree.items.length > most) {
+    problems.add(tree, `holds ${tree.items.length} numbers, at most ${most} are read.`, 'Leave some out.');
+    return undefined;
+  }
+  const numbers = tree.items.map((item) => asNumber(item, problems, remedy));
+  return numbers.every((number) => number !== undefined) ? numbers : undefined;
 }
 
 const modes: ReadonlyMap<string, RoundingMode> = new Map([
@@ -81,7 +106,8 @@ export function checkTornValues(map: MapTree, problems: Problems): boolean {
     if (entry.value.kind !== 'scalar' || entry.value.value !== null || before?.value.kind !== 'scalar') continue;
     const whole = /^-?\d+$/.exec(before.value.text);
     if (whole && /^\d+$/.test(entry.key)) {
-      problems.add(before, 'a decimal comma was read as two entries.', `Write ${before.value.text}.${entry.key}.`);
+      const what = entry.key.length === 3 ? 'a comma inside a number' : 'a decimal comma';
+      problems.add(before, `${what} was read as two entries.`, withoutComma(before.value.text, entry.key));
       return true;
     }
     const isOpen = (before.value.text.match(/\(/g) ?? []).length > (before.value.text.match(/\)/g) ?? []).length;

@@ -1,12 +1,12 @@
 import { dayOfDateNumber } from '../formula/compile';
+import { contractFields } from '../grammar/entries';
+import { fieldNames } from '../grammar/types';
 import type { ContractInput } from '../model';
 import { asMap, asNumber, asText, checkFields } from './fields';
 import { bindPlace, readPlace } from './places';
 import type { Problems } from './problems';
 import type { TextContext } from './text-reader';
 import { valueOf, type ListTree, type MapEntry, type MapTree } from './tree';
-
-const contractFields = ['unit', 'default', 'range', 'label', 'clause'];
 
 /** Reads one entry of `contract`. */
 export function readContractInput(entry: MapEntry, context: TextContext): void {
@@ -16,7 +16,12 @@ export function readContractInput(entry: MapEntry, context: TextContext): void {
     scope.makeBroken(entry.key);
     return;
   }
-  scope.make(entry.key, { kind: 'contract', unit: input.unit === 'flag' ? '' : input.unit, hasUnit: true });
+  scope.make(entry.key, {
+    kind: 'contract',
+    unit: input.unit === 'flag' ? '' : input.unit,
+    hasUnit: true,
+    found: context.reader.dimensionOf(input.unit),
+  });
   context.contract.push({ ...input, name: entry.key, slot: scope.slots.of(entry.key), path: entry.path });
 }
 
@@ -26,7 +31,7 @@ function contractInput(entry: MapEntry, problems: Problems): Omit<ContractInput,
     problems,
     'Write { unit: kVA, default: 2000, range: [100, 50000], label: Contract power }.',
   );
-  if (!map || !checkFields(map, contractFields, 'a contract input', problems)) return undefined;
+  if (!map || !checkFields(map, fieldNames(contractFields), 'a contract input', problems)) return undefined;
   const unitTree = valueOf(map, 'unit');
   const unit = unitTree ? asText(unitTree, problems, 'Write unit: kVA, or flag, or date.') : { text: '' };
   const defaultTree = valueOf(map, 'default');
@@ -88,7 +93,8 @@ export function readRate(entry: MapEntry, context: TextContext): void {
     return;
   }
   const bound = bindPlace(place, undefined, reader);
-  scope.make(entry.key, { kind: 'rate', unit: '', hasUnit: false });
+  const found = place.kind === 'same' ? place.expression.found : undefined;
+  scope.make(entry.key, { kind: 'rate', unit: '', hasUnit: false, found });
   context.rates.push({ name: entry.key, slot: scope.slots.of(entry.key), path: entry.path, place: bound });
   if (bound.kind === 'months' && bound.byMonth.size === 0)
     problems.add(entry, 'has no month.', 'Write { months: { 2026-07: 0.0031 } }.');

@@ -1,4 +1,5 @@
 import { isChannelName, type ChannelName } from '../channels';
+import { cells } from '../grammar/words';
 import type { CellKind } from '../model';
 import { didYouMean } from '../nearest';
 import { unknownWindow } from './clock';
@@ -6,8 +7,6 @@ import { asNumber, asText, asWords } from './fields';
 import type { RawQuantity } from './raw-quantity';
 import type { TextContext } from './text-reader';
 import { valueOf, type MapTree } from './tree';
-
-const cells: readonly string[] = ['interval', 'demand window', 'hour', 'day'];
 
 /** Reads a `sum`, `highest` or `lowest`. */
 export function readMeasure(
@@ -38,6 +37,7 @@ export function readMeasure(
   }
   return {
     expressions: [raw, ...(where ? [where] : [])],
+    found: raw.found,
     windows: windows.inEach,
     define: (window) => ({
       unit,
@@ -119,7 +119,8 @@ function eachOf(map: MapTree, operation: string, { problems }: TextContext): Cel
   if (!tree) return undefined;
   const remedy = `Write each: ${operation === 'sum' ? 'interval, hour or day' : 'interval, demand window, hour or day'}.`;
   const word = asText(tree, problems, remedy);
-  if (word && cells.includes(word.text)) return word.text as CellKind;
+  const found = cells.find((cell) => cell === word?.text);
+  if (found) return found;
   if (word)
     problems.add(word, `"${word.text}" is nothing a measure is settled over.`, didYouMean(word.text, cells, remedy));
   return 'problem';
@@ -160,6 +161,7 @@ export function readValue(map: MapTree, context: TextContext): RawQuantity | und
   const channel = raw.formula.kind === 'name' && isChannelName(raw.formula.name) ? raw.formula.name : undefined;
   return {
     expressions: [raw, at],
+    found: raw.found,
     define: (window) => ({
       unit,
       definition: {

@@ -1,3 +1,8 @@
+import { chargeFields, chargeKinds } from '../grammar/charges';
+import { windowKinds } from '../grammar/entries';
+import { versionParts } from '../grammar/parts';
+import { quantityFields, quantityKinds } from '../grammar/quantities';
+import { fieldNames } from '../grammar/types';
 import { didYouMean } from '../nearest';
 import type { Problems } from './problems';
 import { entryOf, isWord, valueOf, type MapEntry, type MapTree, type Tree } from './tree';
@@ -6,25 +11,23 @@ import { entryOf, isWord, valueOf, type MapEntry, type MapTree, type Tree } from
 const orderedSections: ReadonlySet<string> = new Set(['quantities', 'charges']);
 
 /** Sections of named entries that a version may change one by one. */
-const entrySections: ReadonlySet<string> = new Set([
-  'contract',
-  'rates',
-  'seasons',
-  'windows',
-  'quantities',
-  'charges',
-]);
+const entrySections: ReadonlySet<string> = new Set(
+  fieldNames(versionParts.filter(({ takes }) => takes.kind === 'entries')),
+);
 
 /** Sections a version may change. */
-export const versionSections = [...entrySections, 'rounding', 'zeroKwh', 'demandWindow', 'holidays', 'note'];
+export const versionSections = fieldNames(versionParts);
+
+/** Sections whose entries, added by a version, may say where they stand. */
+export const placedSections = ['contract', 'windows', 'quantities', 'charges'] as const;
 
 /** Fields that say what kind of thing an entry is; a version that says another kind drops what belonged to the old one. */
 const kindFields = {
-  quantities: ['sum', 'highest', 'lowest', 'value', 'formula', 'pick', 'past', 'given'],
-  charges: ['amount', 'per', 'percentOf', 'topUp', 'cap'],
-  windows: ['rest', 'days'],
+  quantities: quantityKinds.map(({ name }) => name),
+  charges: chargeKinds.map(({ name }) => name),
+  windows: windowKinds.map(({ name }) => name),
 } as const;
-const lastingFields: ReadonlySet<string> = new Set(['label', 'clause', 'unit', 'round', 'group', 'when', 'before']);
+const lastingFields: ReadonlySet<string> = new Set(fieldNames([...quantityFields, ...chargeFields]));
 
 /**
  * The text of a schedule from a version's day on: the earlier text with what the version changes.
@@ -109,7 +112,7 @@ function insert(
     problems.add(added, 'is new in this version but does not say where it stands.', remedy);
     return [...entries, added];
   }
-  const entry = orderedSections.has(section) ? added : withoutPlace(added);
+  const entry = withoutPlace(added);
   if (before.text === 'end') return [...entries, entry];
   const index = names.indexOf(before.text);
   if (index < 0) {
@@ -119,7 +122,7 @@ function insert(
   return [...entries.slice(0, index), entry, ...entries.slice(index)];
 }
 
-/** Contract inputs and windows have no field `before` of their own. */
+/** Once an entry stands in its place, `before` has said all it says. */
 function withoutPlace(entry: MapEntry): MapEntry {
   if (entry.value.kind !== 'map') return entry;
   return { ...entry, value: { ...entry.value, entries: entry.value.entries.filter(({ key }) => key !== 'before') } };
@@ -132,10 +135,13 @@ function mergeEntry(section: string, base: Tree, change: Tree): Tree {
 
 function dropOldKind(section: string, base: MapTree, change: MapTree): MapTree {
   if (section !== 'quantities' && section !== 'charges' && section !== 'windows') return base;
-  const kinds: readonly string[] = kindFields[section];
+  const kinds = kindFields[section];
   const kindOf = (map: MapTree): string | undefined => kinds.find((field) => entryOf(map, field));
   const newKind = kindOf(change);
-  if (newKind === undefined || entryOf(base, newKind)) return dropPriceForm(base, change);
+  // What a percentage is taken per belongs to it: only `percentOf: removed` makes the charge another one.
+  const isPartOfPercent =
+    newKind === 'per' && entryOf(base, 'percentOf') && !isWord(valueOf(change, 'percentOf'), 'removed');
+  if (newKind === undefined || entryOf(base, newKind) || isPartOfPercent) return dropPriceForm(base, change);
   return { ...base, entries: base.entries.filter((entry) => lastingFields.has(entry.key)) };
 }
 

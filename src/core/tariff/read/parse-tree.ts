@@ -1,7 +1,9 @@
 import { isAlias, isMap, isScalar, isSeq, LineCounter, parseDocument, type Document, type Node, type Pair } from 'yaml';
 import { ScheduleError } from '../errors';
+import { nestedTooDeep } from './nesting';
 import { Problems } from './problems';
 import type { MapEntry, MapTree, ScalarTree, Tree } from './tree';
+import { wordYamlError } from './yaml-words';
 
 /** Longest schedule file. [bytes of UTF-8] */
 export const longestScheduleBytes = 200_000;
@@ -19,6 +21,7 @@ export function parseTree(text: string): { root: MapTree; problems: Problems } {
     const message = `the file has ${bytes} bytes, at most ${longestScheduleBytes} are read.`;
     throw new ScheduleError([{ line: 1, column: 1, path: '', message, remedy: 'Split it into several schedules.' }]);
   }
+  refuseDeep(text);
   const lines = new LineCounter();
   const document = parseDocument(text, {
     version: '1.2',
@@ -30,7 +33,7 @@ export function parseTree(text: string): { root: MapTree; problems: Problems } {
     logLevel: 'error',
   });
   const problems = new Problems(lines);
-  addSyntaxErrors(document, problems);
+  addSyntaxErrors(document, text, problems);
   problems.throwIfAny();
   const root = new TreeBuilder(problems).build(document.contents, '', 0);
   if (root.kind !== 'map') problems.add({ offset: 0, path: '' }, 'is no schedule.', 'Begin with schedule: and an id.');
@@ -38,13 +41,22 @@ export function parseTree(text: string): { root: MapTree; problems: Problems } {
   return { root: root as MapTree, problems };
 }
 
-function addSyntaxErrors(document: Document, problems: Problems): void {
+/** The package composes by calling itself: what nests too deep would exhaust the stack, in the worst case the process. */
+function refuseDeep(text: string): void {
+  const found = nestedTooDeep(text);
+  if (!found) return;
+  const lines = new LineCounter();
+  lines.addNewLine(0);
+  for (let at = text.indexOf('\n'); at >= 0; at = text.indexOf('\n', at + 1)) lines.addNewLine(at + 1);
+  const problems = new Problems(lines);
+  problems.add({ offset: found.offset, path: '' }, found.message, found.remedy);
+  problems.throwIfAny();
+}
+
+function addSyntaxErrors(document: Document, text: string, problems: Problems): void {
   for (const error of document.errors) {
-    const at = { offset: error.pos[0], path: '' };
-    if (error.code === 'MULTIPLE_DOCS')
-      problems.add(at, 'holds more than one document.', 'Keep one schedule in a file.');
-    else
-      problems.add(at, `is not YAML: ${error.message.replace(/\.$/, '')}.`, 'Check colons, indents and brackets here.');
+    const { message, remedy } = wordYamlError(error, text);
+    problems.add({ offset: error.pos[0], path: '' }, message, remedy);
   }
 }
 

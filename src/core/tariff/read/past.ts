@@ -1,5 +1,7 @@
+import { overs, takes } from '../grammar/words';
 import type { PastDefinition, PastSpan } from '../model';
 import { didYouMean } from '../nearest';
+import { bare, type Found } from './dimensions';
 import type { RawExpression } from './expressions';
 import { asText } from './fields';
 import { readSeasonNames } from './clock';
@@ -9,16 +11,9 @@ import { valueOf, type MapTree } from './tree';
 /** A look back parsed. */
 export interface RawPast {
   expression: RawExpression;
+  found: Found;
   define(window: string | undefined): { definition: PastDefinition; unit: string };
 }
-
-const takes = ['highest', 'lowest', 'mean', 'mean of 2 highest', 'sum', 'count', 'streak'];
-const overs = [
-  'last 11 periods',
-  'this and last 11 periods',
-  'earlier periods of this year',
-  'this and earlier periods of this year',
-];
 
 /** Reads `past`, `take`, `over`, `season`. */
 export function readPast(map: MapTree, context: TextContext): RawPast | undefined {
@@ -29,11 +24,13 @@ export function readPast(map: MapTree, context: TextContext): RawPast | undefine
   const rules = { anyTime: over !== undefined && !over.includesThis };
   const expression = reader.parse(valueOf(map, 'past')!, rules);
   if (!take || !over || season === 'problem' || !expression) return undefined;
+  const isCounted = take.kind === 'count' || take.kind === 'streak';
   return {
     expression,
+    found: isCounted ? bare : expression.found,
     define: (window) => {
       const bound = reader.bind(expression, window, rules);
-      const unit = take.kind === 'count' || take.kind === 'streak' ? '' : reader.unitOf(bound);
+      const unit = isCounted ? '' : reader.unitOf(bound);
       return { unit, definition: { kind: 'past', expression: bound, take, over, season } };
     },
   };

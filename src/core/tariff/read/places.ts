@@ -23,7 +23,7 @@ export interface PlaceRules {
 /** Reads a number, a formula, or a map by window, season or month. A problem gives nothing. */
 export function readPlace(tree: Tree, reader: ExpressionReader, rules: PlaceRules): RawPlace | undefined {
   if (tree.kind !== 'map') {
-    const expression = reader.parse(tree);
+    const expression = reader.parse(tree, { makesMoney: true });
     return expression && { kind: 'same', expression };
   }
   if (checkTornValues(tree, reader.problems)) return undefined;
@@ -52,7 +52,7 @@ function readMonths(tree: MapTree, months: Tree, reader: ExpressionReader): RawP
       problems.add(entry, `"${entry.key}" is not a month.`, 'Write 2026-07.');
       return undefined;
     }
-    const expression = reader.parse(entry.value);
+    const expression = reader.parse(entry.value, { makesMoney: true });
     if (!expression) return undefined;
     byMonth.set(entry.key, expression);
   }
@@ -106,7 +106,7 @@ function readBySeason(tree: MapTree, reader: ExpressionReader, { seasons, window
       problems.add(tree, `no value for season "${season}".`, 'Give one for every season.');
       return undefined;
     }
-    const expression = reader.parse(value);
+    const expression = reader.parse(value, { makesMoney: true });
     if (!expression) return undefined;
     bySeason.push(expression);
   }

@@ -1,6 +1,9 @@
+import { tierFields } from '../grammar/charges';
+import { fieldNames } from '../grammar/types';
 import type { Tier } from '../model';
 import type { RawExpression } from './expressions';
 import { asMap, checkFields, checkTornValues } from './fields';
+import { checkRateUnit, checkTierEnd } from './rate-units';
 import { bindPlace, expressionsIn, readPlace, type RawPlace } from './places';
 import type { TextContext } from './text-reader';
 import { valueOf, type ListTree, type MapTree, type Tree } from './tree';
@@ -24,13 +27,25 @@ export function readPrice(map: MapTree, per: RawExpression | undefined, context:
   }
   if (rateTree) {
     const rate = readPlace(rateTree, reader, { seasons, windows });
-    return rate && priceOf([{ rate }], context);
+    const fits = rate && (isPercent(map) || !per || checkRateUnit(rate, per, context));
+    return fits ? priceOf([{ rate }], context) : undefined;
   }
   if (!per) {
     problems.add(tiersTree!, 'tiers need a quantity.', 'Add per: and its name.');
     return undefined;
   }
-  return readTiers(tiersTree!, windows, context);
+  return readTiers(tiersTree!, { per, windows, isPercent: isPercent(map) }, context);
+}
+
+/** A percentage's rate is percent, whatever it is taken per. */
+function isPercent(map: MapTree): boolean {
+  return valueOf(map, 'percentOf') !== undefined;
+}
+
+interface Slices {
+  per: RawExpression;
+  windows: string[] | undefined;
+  isPercent: boolean;
 }
 
 interface RawTier {
@@ -49,7 +64,7 @@ function priceOf(tiers: RawTier[], { reader }: TextContext): RawPrice {
   };
 }
 
-function readTiers(tree: Tree, windows: string[] | undefined, context: TextContext): RawPrice | undefined {
+function readTiers(tree: Tree, slices: Slices, context: TextContext): RawPrice | undefined {
   const { problems } = context;
   const items = tree.kind === 'list' ? (tree as ListTree).items : [];
   if (items.length === 0) {
@@ -58,7 +73,7 @@ function readTiers(tree: Tree, windows: string[] | undefined, context: TextConte
   }
   const tiers: RawTier[] = [];
   for (const [i, item] of items.entries()) {
-    const tier = readTier(item, i === items.length - 1, windows, context);
+    const tier = readTier(item, i === items.length - 1, slices, context);
     if (!tier) return undefined;
     tiers.push(tier);
   }
@@ -73,12 +88,13 @@ function readTiers(tree: Tree, windows: string[] | undefined, context: TextConte
 function readTier(
   item: Tree,
   isLast: boolean,
-  windows: string[] | undefined,
+  { per, windows, isPercent: isOfPercent }: Slices,
   context: TextContext,
 ): RawTier | undefined {
   const { problems, reader, seasons } = context;
   const map = asMap(item, problems, 'Write { to: 1000, rate: 0.08 }.');
-  if (!map || checkTornValues(map, problems) || !checkFields(map, ['to', 'rate'], 'a tier', problems)) return undefined;
+  if (!map || checkTornValues(map, problems) || !checkFields(map, fieldNames(tierFields), 'a tier', problems))
+    return undefined;
   const toTree = valueOf(map, 'to');
   const rateTree = valueOf(map, 'rate');
   if (isLast && toTree) {
@@ -95,5 +111,7 @@ function readTier(
   }
   const rate = readPlace(rateTree, reader, { seasons, windows });
   const to = toTree && reader.parse(toTree);
-  return rate && (!toTree || to) ? { rate, to } : undefined;
+  if (!rate || (toTree && !to)) return undefined;
+  const fits = (isOfPercent || checkRateUnit(rate, per, context)) && (!to || checkTierEnd(to, per, context));
+  return fits ? { rate, to } : undefined;
 }

@@ -1,5 +1,8 @@
 import { channelOf, isChannelName } from '../channels';
+import { quantityFields, quantityKinds } from '../grammar/quantities';
+import { fieldNames } from '../grammar/types';
 import type { Rounding } from '../../units';
+import { clashOf, isEnergyOrPower, wordDimension } from './dimensions';
 import { asMap, checkFields, checkTornValues, readRounding } from './fields';
 import { readWords } from './inputs';
 import { readMeasure, readValue } from './measures';
@@ -11,19 +14,10 @@ import { entryOf, valueOf, type MapEntry, type MapTree } from './tree';
 import { unitText } from './units';
 import { readFormula, readGiven, readPick } from './worked-out';
 
-const kinds = ['sum', 'highest', 'lowest', 'value', 'formula', 'pick', 'past', 'given'] as const;
-type Kind = (typeof kinds)[number];
-const common = ['unit', 'round', 'label', 'clause', 'before'];
-const fieldsOf: Record<Kind, string[]> = {
-  sum: ['each', 'in', 'inEach', 'where'],
-  highest: ['each', 'in', 'inEach', 'where', 'count', 'days'],
-  lowest: ['each', 'in', 'inEach', 'where', 'count', 'days'],
-  value: ['at'],
-  formula: [],
-  pick: ['from', 'otherwise'],
-  past: ['take', 'over', 'season'],
-  given: ['default', 'unity'],
-};
+type Kind = 'sum' | 'highest' | 'lowest' | 'value' | 'formula' | 'pick' | 'past' | 'given';
+const kinds = quantityKinds.map(({ name }) => name as Kind);
+const common = fieldNames(quantityFields);
+const fieldsOf = new Map(quantityKinds.map(({ name, fields }) => [name, fieldNames(fields)]));
 
 /** Reads one entry of `quantities`, expanding it over the windows of its family. */
 export function readQuantity(entry: MapEntry, context: TextContext): void {
@@ -33,8 +27,9 @@ export function readQuantity(entry: MapEntry, context: TextContext): void {
   const rounding = map ? roundingOf(map, context) : undefined;
   const unit = map ? unitText(map, context) : undefined;
   const windows = raw && (raw.windows ?? reader.windowsOf(raw.expressions, entry));
-  const isFine = windows === undefined || (windows !== 'problem' && hasMembers(entry, raw, windows, context));
-  if (!map || !raw || rounding === 'problem' || unit === 'problem' || windows === 'problem' || !isFine) {
+  const isFine = raw !== undefined && unit !== 'problem' && fitsUnit(map, raw, unit, context);
+  const isWhole = windows === undefined || (windows !== 'problem' && hasMembers(entry, raw, windows, context));
+  if (!map || !raw || rounding === 'problem' || unit === 'problem' || windows === 'problem' || !isFine || !isWhole) {
     makeBroken(entry, map, context);
     return;
   }
@@ -53,7 +48,8 @@ export function readQuantity(entry: MapEntry, context: TextContext): void {
       ...words,
       definition,
     });
-    return { kind: 'quantity', unit: plainUnit, hasUnit };
+    const found = shown === '' ? raw.found : reader.dimensionOf(shown);
+    return { kind: 'quantity', unit: plainUnit, hasUnit, found };
   };
   if (!windows) {
     scope.make(entry.key, add(entry.key, undefined));
@@ -62,6 +58,28 @@ export function readQuantity(entry: MapEntry, context: TextContext): void {
   const members = windows.map((window) => memberName(entry.key, window));
   const infos = windows.map((window, i) => add(members[i]!, window));
   scope.makeFamily(entry.key, { kind: 'quantity', windows, members }, infos[0]!);
+}
+
+/** Whether a unit as said fits what the formula gives. */
+function fitsUnit(
+  map: MapTree | undefined,
+  { found }: RawQuantity,
+  unit: string | undefined,
+  { problems, reader }: TextContext,
+): boolean {
+  const said = unit === undefined ? undefined : reader.dimensionOf(unit);
+  if (!said || !found || 'literal' in found) return true;
+  const clash = clashOf(said, found);
+  if (!clash) return true;
+  const what = clash === 'thousand' ? 'is a thousand off' : `does not fit: it comes out as ${wordDimension(found, '')}`;
+  const at = valueOf(map, 'unit')!;
+  // Only energy taken for power, or kilo for mega, is surely wrong; of anything else the author may know more than the formula shows.
+  if ([said, found].every(isEnergyOrPower)) {
+    problems.add(at, `"${unit}" ${what}.`, 'Check the unit and the names it is worked out from.');
+    return false;
+  }
+  reader.note(at.path, `"${unit}" ${what}.`);
+  return true;
 }
 
 /** Whether a family's members can have their names, and every family it uses has the windows. */
@@ -121,7 +139,7 @@ function readRaw(entry: MapEntry, map: MapTree, context: TextContext): RawQuanti
   const { problems } = context;
   if (checkTornValues(map, problems)) return undefined;
   const kind = kindOf(entry, map, context);
-  if (!kind || !checkFields(map, [kind, ...fieldsOf[kind], ...common], `a quantity that says ${kind}`, problems))
+  if (!kind || !checkFields(map, [...fieldsOf.get(kind)!, ...common], `a quantity that says ${kind}`, problems))
     return undefined;
   if (isChannelName(entry.key) && !isPlainlyNamed(entry, map, kind)) {
     const plain = channelOf(entry.key).isPower ? 'highest' : 'sum';
@@ -141,7 +159,7 @@ function readRaw(entry: MapEntry, map: MapTree, context: TextContext): RawQuanti
       return readPick(map, context);
     case 'past': {
       const past = readPast(map, context);
-      return past && { expressions: [past.expression], define: past.define };
+      return past && { expressions: [past.expression], found: past.found, define: past.define };
     }
     case 'given':
       return readGiven(map, context);
@@ -151,7 +169,7 @@ function readRaw(entry: MapEntry, map: MapTree, context: TextContext): RawQuanti
 function kindOf(entry: MapEntry, map: MapTree, { problems }: TextContext): Kind | undefined {
   const said = kinds.filter((kind) => entryOf(map, kind));
   if (said.length === 1) return said[0];
-  const known = [...kinds, ...common, ...kinds.flatMap((kind) => fieldsOf[kind])];
+  const known = [...kinds, ...common, ...[...fieldsOf.values()].flat()];
   if (said.length === 0 && !checkFields(map, known, 'a quantity', problems)) return undefined;
   const several = said.length === 2 ? `says both ${said.join(' and ')}.` : `says ${said.join(', ')} at once.`;
   problems.add(

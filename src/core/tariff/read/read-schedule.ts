@@ -1,37 +1,25 @@
-import { addWindowNotes } from './window-notes';
-import { isCalendarDate, isTimeZone } from '../../load';
+import { allParts } from '../grammar/parts';
+import { fieldNames } from '../grammar/types';
+import { isCalendarDate } from '../../load';
 import { place } from '../formula/compile';
-import type { Schedule, ScheduleSource, ScheduleText, Straddle } from '../model';
+import type { Schedule, ScheduleText } from '../model';
 import { didYouMean, nearestName } from '../nearest';
-import { asMap, asText, checkFields } from './fields';
-import { mergeVersion, versionSections } from './merge';
+import { readExamples } from './examples';
+import { asMap, checkFields } from './fields';
+import { readHead } from './head';
+import { checkSizes, SizeCount } from './limits';
+import { mergeVersion, placedSections, versionSections } from './merge';
 import { parseTree } from './parse-tree';
 import type { Problems } from './problems';
 import { readText, type SharedParts } from './read-text';
 import { Slots } from './scope';
+import { readStraddle, usualStraddle } from './straddle';
 import type { TextContext } from './text-reader';
 import { entryOf, isWord, valueOf, type MapEntry, type MapTree } from './tree';
+import { addVersionNotes } from './version-notes';
+import { addWindowNotes } from './window-notes';
 
-const sections = [
-  'schedule',
-  'title',
-  'currency',
-  'timeZone',
-  'source',
-  'inForce',
-  'demandWindow',
-  'holidays',
-  'straddle',
-  'rounding',
-  'zeroKwh',
-  'contract',
-  'rates',
-  'seasons',
-  'windows',
-  'quantities',
-  'charges',
-  'versions',
-];
+const sections = fieldNames(allParts);
 const beginningOfTime = '0001-01-01';
 
 /**
@@ -45,11 +33,14 @@ export function readSchedule(yamlText: string): Schedule {
   const { root: tree, problems } = parseTree(yamlText);
   checkFields(tree, sections, 'a schedule', problems);
   const root = withMeantParts(tree, sections);
+  checkSizes(root, problems);
   checkPlaces(root, problems);
   const notes: Schedule['notes'] = [];
   const head = readHead(root, problems);
+  const straddle = readStraddle(root, problems) ?? usualStraddle;
   const shared: SharedParts = { problems, slots: new Slots(place.names), currency: head.currency, notes };
   const read = readTexts(root, head.inForce, shared);
+  const examples = readExamples(root, head, read, problems);
   problems.throwIfAny();
   checkUnused(root, read, problems);
   problems.throwIfAny();
@@ -57,7 +48,7 @@ export function readSchedule(yamlText: string): Schedule {
   const lineOrder = orderLines(texts, root, problems);
   problems.throwIfAny();
   addNotes(root, read, notes);
-  return { ...head, straddle: head.straddle ?? 'days', texts, slots: shared.slots.byName, lineOrder, notes };
+  return { ...head, ...straddle, texts, slots: shared.slots.byName, lineOrder, examples, notes };
 }
 
 /** A misspelt part is read as the one that is meant, so that what it holds stays known and causes no further problems. */
@@ -72,7 +63,7 @@ function withMeantParts(map: MapTree, known: readonly string[]): MapTree {
 
 /** Outside versions the file's own order holds: `before` says nothing there. */
 function checkPlaces(root: MapTree, problems: Problems): void {
-  for (const section of ['quantities', 'charges']) {
+  for (const section of placedSections) {
     const map = valueOf(root, section);
     for (const { value } of map?.kind === 'map' ? map.entries : []) {
       const before = value.kind === 'map' ? entryOf(value, 'before') : undefined;
@@ -82,91 +73,18 @@ function checkPlaces(root: MapTree, problems: Problems): void {
   }
 }
 
-type Head = Omit<Schedule, 'texts' | 'slots' | 'lineOrder' | 'notes' | 'straddle'> & { straddle?: Straddle };
-
-function readHead(root: MapTree, problems: Problems): Head {
-  const text = (key: string, remedy: string, isRequired: boolean): string => {
-    const tree = valueOf(root, key);
-    if (!tree && isRequired) problems.add({ offset: root.offset, path: key }, 'is missing.', remedy);
-    return (tree && asText(tree, problems, remedy)?.text) ?? '';
-  };
-  const id = text('schedule', 'Write schedule: and an id such as millrace-large.', true);
-  if (id !== '' && !/^[a-z0-9]+(-[a-z0-9]+)*$/.test(id)) {
-    problems.add(
-      entryOf(root, 'schedule')!,
-      `"${id}" is not an id.`,
-      'Write small letters, digits and single hyphens: millrace-large.',
-    );
-  }
-  const currency = text('currency', 'Write currency: EUR.', true);
-  const isCurrency = /^[A-Z]{3}$/.test(currency);
-  if (currency !== '' && !isCurrency)
-    problems.add(entryOf(root, 'currency')!, `"${currency}" is not a currency.`, 'Write its three letters: EUR.');
-  const timeZone = text('timeZone', 'Write timeZone: Europe/Lisbon.', true);
-  if (timeZone !== '' && !isTimeZone(timeZone))
-    problems.add(
-      entryOf(root, 'timeZone')!,
-      `"${timeZone}" is not a time zone.`,
-      'Write its name in the time zone database: Europe/Lisbon.',
-    );
-  return {
-    id,
-    title: text('title', 'Write title: and a few words.', false) || id,
-    currency: isCurrency ? currency : 'EUR',
-    timeZone,
-    source: readSource(root, problems),
-    inForce: readInForce(root, problems),
-    straddle: readStraddle(root, problems),
-  };
-}
-
-function readInForce(root: MapTree, problems: Problems): string | null {
-  const tree = valueOf(root, 'inForce');
-  const word = tree && asText(tree, problems, 'Write inForce: 2026-01-01.');
-  if (!word) return null;
-  if (isCalendarDate(word.text)) return word.text;
-  problems.add(word, `"${word.text}" is not a date.`, 'Write 2026-01-01.');
-  return null;
-}
-
-function readStraddle(root: MapTree, problems: Problems): Straddle | undefined {
-  const known = ['intervals', 'days', 'start', 'end'] as const;
-  const tree = valueOf(root, 'straddle');
-  const word = tree && asText(tree, problems, `Write ${known.join(', ')}.`);
-  const found = known.find((rule) => rule === word?.text);
-  if (word && !found)
-    problems.add(
-      word,
-      `"${word.text}" is no way to divide a bill.`,
-      didYouMean(word.text, known, `Write ${known.join(', ')}.`),
-    );
-  return found;
-}
-
-function readSource(root: MapTree, problems: Problems): ScheduleSource {
-  const tree = valueOf(root, 'source');
-  const map = tree && asMap(tree, problems, 'Write { publisher: ..., title: ..., date: 2026-01-01, status: found }.');
-  const source: ScheduleSource = {};
-  if (!map || !checkFields(map, ['publisher', 'title', 'date', 'status', 'url'], 'a source', problems)) return source;
-  for (const entry of map.entries) {
-    const word = asText(entry.value, problems, 'Write a few words.');
-    if (!word) continue;
-    if (entry.key === 'status') {
-      const statuses = ['found', 'memory', 'invented'] as const;
-      source.status = statuses.find((status) => status === word.text);
-      if (!source.status) problems.add(word, `"${word.text}" is not a status.`, `Write ${statuses.join(', ')}.`);
-    } else source[entry.key as 'publisher' | 'title' | 'date' | 'url'] = word.text;
-  }
-  return source;
-}
-
-type ReadText = { text: ScheduleText; context: TextContext };
+type ReadText = { text: ScheduleText; context: TextContext; merged: MapTree };
 
 function readTexts(root: MapTree, inForce: string | null, shared: SharedParts): ReadText[] {
   const { problems } = shared;
   const versions = valueOf(root, 'versions');
-  let merged: MapTree = { ...root, entries: root.entries.filter((entry) => entry.key !== 'versions') };
-  const texts = [readText(merged, inForce ?? beginningOfTime, undefined, shared)];
+  let merged: MapTree = {
+    ...root,
+    entries: root.entries.filter(({ key }) => key !== 'versions' && key !== 'examples'),
+  };
+  const texts = [{ ...readText(merged, inForce ?? beginningOfTime, undefined, shared), merged }];
+  const size = new SizeCount(root, problems);
+  if (!size.add(texts[0]!.text)) return texts;
   const map = versions && asMap(versions, problems, 'Write a date with what changes from that day on.');
   const entries = [...(map?.entries ?? [])].sort((a, b) => (a.key < b.key ? -1 : 1));
   for (const entry of entries) {
@@ -174,7 +92,9 @@ function readTexts(root: MapTree, inForce: string | null, shared: SharedParts): 
     if (!version) continue;
     merged = mergeVersion(merged, version, problems);
     const note = valueOf(version, 'note');
-    texts.push(readText(merged, entry.key, note?.kind === 'scalar' ? note.text : undefined, shared));
+    const read = readText(merged, entry.key, note?.kind === 'scalar' ? note.text : undefined, shared);
+    texts.push({ ...read, merged });
+    if (!size.add(read.text)) break;
   }
   return texts;
 }
@@ -278,6 +198,12 @@ function addNotes(root: MapTree, read: ReadText[], notes: Schedule['notes']): vo
     add('inForce', 'The file does not say from which day it holds: every period is priced.');
   if (!valueOf(root, 'source')) add('source', 'The file does not say where the tariff was read.');
   if (!texts.some((text) => text.charges.length > 0)) add('charges', 'The schedule charges nothing.');
+  addVersionNotes(
+    root,
+    read.map(({ merged }) => merged),
+    texts,
+    add,
+  );
   for (const { text, context } of read) {
     const needsWindow = text.quantities.some(
       ({ definition }) => definition.kind === 'measure' && definition.each === 'demand window',

@@ -1,4 +1,6 @@
 import { calendarCountries, problemWithCalendar } from '../calendar/holidays';
+import { holidayFields, zeroKwhFields } from '../grammar/entries';
+import { fieldNames } from '../grammar/types';
 import { isCalendarDate } from '../../load';
 import type { HolidayRule, NumberPlace, ScheduleText } from '../model';
 import { minorUnitDecimals, type Rounding } from '../../units';
@@ -68,7 +70,7 @@ function beginContext(root: MapTree, { problems, slots, currency, notes }: Share
   const context: TextContext = {
     scope,
     problems,
-    reader: new ExpressionReader(scope, problems, zeroKwh, dates),
+    reader: new ExpressionReader(scope, problems, zeroKwh, dates, currency, notes),
     currency,
     windows: new Map(),
     holidays: readHolidays(root, problems),
@@ -103,7 +105,8 @@ function readZeroKwh(root: MapTree, problems: Problems): ScheduleText['zeroKwh']
   const tree = valueOf(root, 'zeroKwh');
   const map = tree && asMap(tree, problems, 'Write { pf: 1, ratio: 0 }.');
   const rules: ScheduleText['zeroKwh'] = {};
-  if (!map || !checkFields(map, ['pf', 'ratio'], 'zeroKwh', problems)) return { pf: tree && 1, ratio: tree && 0 };
+  if (!map || !checkFields(map, fieldNames(zeroKwhFields), 'zeroKwh', problems))
+    return { pf: tree && 1, ratio: tree && 0 };
   for (const key of ['pf', 'ratio'] as const) {
     const value = valueOf(map, key);
     if (value) rules[key] = asNumber(value, problems, 'Write a number.') ?? 0;
@@ -115,7 +118,7 @@ function readHolidays(root: MapTree, problems: Problems): HolidayRule {
   const rule: HolidayRule = { add: [], drop: [] };
   const tree = valueOf(root, 'holidays');
   const map = tree && asMap(tree, problems, 'Write { calendar: PT, add: [2026-12-24] }.');
-  if (!map || !checkFields(map, ['calendar', 'add', 'drop'], 'holidays', problems)) return rule;
+  if (!map || !checkFields(map, fieldNames(holidayFields), 'holidays', problems)) return rule;
   for (const key of ['add', 'drop'] as const) {
     const dates = valueOf(map, key);
     if (dates?.kind === 'list' && dates.items.length === 0) continue;

@@ -1,4 +1,5 @@
 import { reservedWords } from '../formula/functions';
+import type { Found } from './dimensions';
 import type { Problems, Placed } from './problems';
 
 /** What a name stands for. `broken` entries stay known, so that they cause no further problems. */
@@ -7,6 +8,8 @@ export interface NameInfo {
   unit: string;
   /** Whether a formula's unit was left out (a bare number). */
   hasUnit: boolean;
+  /** Of what kind its value is, as far as that can be told. */
+  found?: Found;
 }
 
 /** A name that stands for one value per window. */

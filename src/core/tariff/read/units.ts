@@ -1,9 +1,9 @@
+import { meterUnits } from '../grammar/words';
 import { nearestName } from '../nearest';
 import { asText } from './fields';
 import type { TextContext } from './text-reader';
 import { valueOf, type MapTree } from './tree';
 
-const meterUnits = ['kWh', 'kvarh', 'kVAh', 'kW', 'kvar', 'kVA'];
 const otherUnits: ReadonlySet<string> = new Set([
   ...meterUnits,
   'kV',
@@ -17,6 +17,11 @@ const otherUnits: ReadonlySet<string> = new Set([
   'var',
   'VA',
 ]);
+
+/** Whether a unit is one that meters show. */
+export function isMeterUnit(unit: string): boolean {
+  return otherUnits.has(unit);
+}
 
 /**
  * The unit as said. By its unit a quantity is known to be energy, which decides how its line is shared between parts of a period:

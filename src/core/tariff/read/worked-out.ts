@@ -9,6 +9,7 @@ export function readFormula(map: MapTree, { reader }: TextContext): RawQuantity 
   if (!raw) return undefined;
   return {
     expressions: [raw],
+    found: raw.found,
     define: (window) => {
       const expression = reader.bind(raw, window);
       return { unit: '', definition: { kind: 'formula', expression } };

@@ -1,3 +1,4 @@
+import { someInterval } from '../calendar/cells';
 import { extremeCells } from '../price/cell-loops';
 import type { MeasurePlan } from '../price/reduction';
 import type { QuantityEntry } from '../model';
@@ -34,14 +35,13 @@ function isMeasuredFromEstimates({ source, bill, state }: Speech, { definition, 
     );
   }
   if (plan.kind === 'cells' && definition.operation !== 'sum' && definition.count > 1) {
-    const { operation, count, isDistinctDays, expression, where } = definition;
-    const formula = { evaluate: expression.evaluate, where: where?.evaluate };
-    const how = { sign: operation === 'highest' ? 1 : -1, count, isDistinctDays } as const;
-    const best = extremeCells(plan.cells, source.load, formula, state.values, how);
+    const best = extremeCells(plan.cells, source.load, plan.formula, state.values);
     return best.some(({ cell }) => isCellEstimated(plan, quality, cell));
   }
   if (definition.operation !== 'sum') return isCellEstimated(plan, quality, state.atCell[slot]!);
-  return plan.kind === 'cells' && plan.cells.starts.some((_, cell) => isCellEstimated(plan, quality, cell));
+  if (plan.kind !== 'cells') return false;
+  for (let cell = 0; cell < plan.cells.count; cell++) if (isCellEstimated(plan, quality, cell)) return true;
+  return false;
 }
 
 function holdsEstimate(quality: Uint8Array, first: number, end: number): boolean {
@@ -52,8 +52,5 @@ function holdsEstimate(quality: Uint8Array, first: number, end: number): boolean
 function isCellEstimated(plan: MeasurePlan, quality: Uint8Array, cell: number): boolean {
   if (cell < 0) return false;
   if (plan.kind !== 'cells') return quality[cell] === 1;
-  const { starts, ends, members, base } = plan.cells;
-  for (let k = starts[cell]!; k < ends[cell]!; k++)
-    if (quality[members === null ? base + k : members[k]!] === 1) return true;
-  return false;
+  return someInterval(plan.cells, cell, (interval) => quality[interval] === 1);
 }

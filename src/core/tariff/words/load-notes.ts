@@ -4,14 +4,14 @@ import type { BillState } from '../price/bill-state';
 import type { PeriodGround } from '../price/interval-source';
 
 /** Notes missing and estimated intervals of a bill's period, and a series coarser than the demand window. */
-export function addLoadNotes(bill: BillState, { ground, first, end }: PeriodGround, load: LoadSeries): void {
-  let missing = ground.calendar.count - (end - first);
+export function addLoadNotes(bill: BillState, { count, first, end }: PeriodGround, load: LoadSeries): void {
+  let missing = count - (end - first);
   let estimated = 0;
   for (let i = first; i < end; i++) {
     if (load.quality[i] === 2) missing++;
     else if (load.quality[i] === 1) estimated++;
   }
-  const all = wordNumber(ground.calendar.count);
+  const all = wordNumber(count);
   if (missing > 0)
     bill.notes?.add(
       `${wordNumber(missing)} of ${all} intervals are missing: sums are of what is there, never scaled up.`,

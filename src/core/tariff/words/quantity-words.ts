@@ -2,8 +2,10 @@ import { isSame } from '../formula/functions';
 import { printFormula } from '../formula/print';
 import { channelOf } from '../channels';
 import type { MeasureDefinition, PastDefinition, PickDefinition, QuantityEntry, ValueDefinition } from '../model';
+import { intervalStartMs } from '../../load';
 import { wordNumber, type Rounding } from '../../units';
-import { enterCell } from '../price/cell-loops';
+import { firstIntervalOf } from '../calendar/cells';
+import { enterCell } from '../price/cell-block';
 import { recordsBefore } from '../price/evaluate-quantities';
 import { evaluatePast } from '../price/history';
 import { wordPeriod } from '../price/period-plan';
@@ -109,7 +111,11 @@ function explainPast(speech: Speech, { name }: QuantityEntry, definition: PastDe
   const knownWords = known < asked ? ` (${known} ${over.includesThis ? 'earlier ' : ''}known)` : '';
   const span = over.kind === 'last' && !over.includesThis ? `the ${over.words}` : over.words;
   const when = setBy ? `, ${wordPeriod(setBy)}` : '';
-  const taken = take.kind === 'count' ? `the number of periods where ${of} is not 0 in` : `the ${take.words} ${of} of`;
+  const takes: Partial<Record<PastDefinition['take']['kind'], string>> = {
+    count: `the number of periods where ${of} is not 0 in`,
+    sum: `the sum of ${of} over`,
+  };
+  const taken = takes[take.kind] ?? `the ${take.words} ${of} of`;
   return `${name} = ${value}, ${taken} ${span}${inSeason}${knownWords}${when}.`;
 }
 
@@ -132,13 +138,14 @@ function wordSense(channel: string): string {
         : '';
 }
 
-function cellWords(speech: Speech, { each }: MeasureDefinition): { one: string; many: string } {
+/** What a cell is called: with an article, alone, and many of it. */
+function cellWords(speech: Speech, { each }: MeasureDefinition): { one: string; single: string; many: string } {
   const { demandWindow } = speech.state.piece.text.text;
   const step = speech.source?.load.stepMinutes ?? 0;
-  if (each === 'hour') return { one: 'an hour', many: 'hours' };
-  if (each === 'day') return { one: 'a day', many: 'days' };
+  if (each === 'hour') return { one: 'an hour', single: 'hour', many: 'hours' };
+  if (each === 'day') return { one: 'a day', single: 'day', many: 'days' };
   const minutes = each === 'demand window' ? Math.max(step, demandWindow?.minutes ?? 0) : step;
-  return { one: `${minutes} minutes`, many: `spans of ${minutes} minutes` };
+  return { one: `${minutes} minutes`, single: `span of ${minutes} minutes`, many: `spans of ${minutes} minutes` };
 }
 
 /** Minutes a cell that set a highest or lowest lasts; 0 for a day. */
@@ -186,7 +193,7 @@ function explainCellSum(
   what: string,
   value: string,
 ): string {
-  const { many } = cellWords(speech, definition);
+  const { single, many } = cellWords(speech, definition);
   const counted = speech.source && countCells(speech, slot, definition);
   if (!counted) return `${name} = ${value}, the sum over ${many} of ${what}.`;
   const { all, charged, most, mostMs } = counted;
@@ -194,7 +201,7 @@ function explainCellSum(
     charged === 0
       ? ''
       : `; the most, ${withUnit(wordNumber(most), unit)}, on ${wordCellTime(speech, definition, mostMs)}`;
-  return `${name} = ${value}, the sum over ${all} ${many} of ${what}: ${charged} of them ${charged === 1 ? 'has' : 'have'} a part${best}.`;
+  return `${name} = ${value}, the sum over ${all} ${all === 1 ? single : many} of ${what}: ${charged} of them ${charged === 1 ? 'has' : 'have'} a part${best}.`;
 }
 
 function countCells(
@@ -207,17 +214,15 @@ function countCells(
   if (!source || plan?.kind !== 'cells') return undefined;
   const { cells } = plan;
   const values = state.values.slice();
-  const found = { all: cells.starts.length, charged: 0, most: -Infinity, mostMs: NaN };
-  for (let cell = 0; cell < cells.starts.length; cell++) {
+  const found = { all: cells.count, charged: 0, most: -Infinity, mostMs: NaN };
+  for (let cell = 0; cell < cells.count; cell++) {
     if (enterCell(cells, source.load, cell, values) === 0 || (where && where.evaluate(values) === 0)) continue;
     const part = expression.evaluate(values);
     if (part === 0) continue;
     found.charged++;
     if (part <= found.most) continue;
     found.most = part;
-    const member = cells.starts[cell]!;
-    const interval = cells.members === null ? cells.base + member : cells.members[member]!;
-    found.mostMs = source.load.startMs + interval * source.load.stepMinutes * 60_000;
+    found.mostMs = intervalStartMs(source.load, firstIntervalOf(cells, cell));
   }
   return found;
 }

@@ -1,7 +1,9 @@
+import { addDays } from '../../load';
 import { unlessFault } from '../formula/compile';
 import type { QuantityEntry } from '../model';
 import type { BillState } from '../price/bill-state';
 import { isCharged, lastCharge, placeValue } from '../price/evaluate-charges';
+import { seasonOfDate } from '../price/period-plan';
 import type { IntervalSource } from '../price/interval-source';
 import { expressionsOf, expressionsOfQuantity } from '../price/text-plan';
 import { evaluateIn, withPlace, type Run } from '../price/run';
@@ -47,19 +49,34 @@ function clean(difference: number): number {
   return Math.round(difference * 1e6) / 1e6 + 0;
 }
 
-function noteStraddle({ pieces, notes }: BillState, { schedule }: Run): void {
+function noteStraddle({ pieces, notes, plan }: BillState, { schedule }: Run): void {
+  noteRulingSeason(plan, pieces, schedule, (note) => notes?.add(note));
   const texts = [...new Set(pieces.map(({ piece }) => piece.text.text))];
   if (texts.length > 1)
     notes?.add(
       `The period lies under ${texts.length} versions of the schedule (from ${texts
         .slice(1)
         .map((text) => text.from)
-        .join(', ')} on): divided by ${schedule.straddle}.`,
+        .join(', ')} on): divided by ${schedule.division}.`,
     );
   else if (pieces.length > 1)
-    notes?.add(
-      `The period lies in ${pieces.length} seasons or rider months: divided by ${schedule.straddle === 'intervals' ? 'intervals' : 'days'}.`,
-    );
+    notes?.add(`The period lies in ${pieces.length} seasons or rider months: divided by ${schedule.division}.`);
+}
+
+/** Where one day's season holds for the whole bill, and another day of it lies in another season. */
+function noteRulingSeason(
+  { period }: BillState['plan'],
+  pieces: BillState['pieces'],
+  { ruledBy }: Run['schedule'],
+  note: (text: string) => void,
+): void {
+  const { text, season } = pieces[pieces.length - 1]!.piece;
+  const { seasons, dependsOnSeason } = text.text;
+  if (ruledBy.season === null || !dependsOnSeason || !seasons) return;
+  const ends = [period.from, addDays(period.to, -1)].map((date) => seasonOfDate(seasons, date));
+  if (ends[0] === ends[1]) return;
+  const day = ruledBy.season === 'start' ? 'first' : 'last';
+  note(`The period lies in two seasons: that of its ${day} day, ${seasons.names[season]}, holds for the whole bill.`);
 }
 
 function writeQuantities(speech: Speech, estimated: ReadonlySet<number>): Record<string, PricedQuantity> {

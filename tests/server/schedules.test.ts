@@ -5,6 +5,7 @@ import { describe, expect, it } from 'vitest';
 import { readSchedule } from '@/core/tariff';
 import { scheduleLines } from '@/components/schedules/schedule-lines';
 import { configureEnv } from '@/server/env';
+import { straddleWords } from '@/server/presenters/schedule';
 import { yearPicture } from '@/server/presenters/year-picture';
 import { libraryPage, schedulePage } from '@/server/services/schedule-page';
 import { buildActor } from '../setup/build';
@@ -144,6 +145,20 @@ describe('scheduleLines', () => {
     const problems = [{ line: lines.length, column: 1, path: '', message: '', remedy: '' }];
     expect(scheduleLines(lines, problems).map(({ pieces }) => pieces.map((piece) => piece.text).join(''))).toEqual(
       lines,
+    );
+  });
+});
+
+describe('straddleWords', () => {
+  const ruledBy = { text: null, season: null, month: null };
+
+  it('says how a bill across borders is shared', () => {
+    expect(straddleWords({ division: 'days', ruledBy })).toBe('texts, seasons, and rider months are shared by days');
+  });
+
+  it('says whose day decides', () => {
+    expect(straddleWords({ division: 'intervals', ruledBy: { ...ruledBy, season: 'end' } })).toBe(
+      'season of the last day holds for the whole bill; texts and rider months are shared by the intervals each covers',
     );
   });
 });

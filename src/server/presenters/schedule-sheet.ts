@@ -1,15 +1,12 @@
 import { formatDate } from '../../components/ui/format';
-import { isMap, isScalar, LineCounter, parseDocument } from 'yaml';
 import { describeSchedule, type Schedule, type ScheduleDescription, type ScheduleProblem } from '../../core/tariff';
 import type { ChargeRow, QuantityRow, ScheduleSheetView } from '../../schemas/schedule-sheet';
-import { contractFields, wordsOfName } from './schedule';
+import { contractFields, straddleWords, wordsOfName } from './schedule';
+import { linesOf, type LineOf } from './text-lines';
 import { yearPicture } from './year-picture';
 
 type TextDescription = ScheduleDescription['versions'][number];
 type Sheet = NonNullable<ScheduleSheetView['sheet']>;
-/** Line of a path ("charges.demand") in the text, or of the nearest entry that holds it. */
-type LineOf = (path: string) => number | null;
-
 /** A schedule's file as its page reads, with the year drawn for one year. */
 export function presentScheduleSheet(
   file: {
@@ -25,33 +22,6 @@ export function presentScheduleSheet(
   const { id, fileName, sha256, text, schedule, problems } = file;
   const lines = text.replace(/\n$/, '').split('\n');
   return { id, fileName, sha256, lines, problems, sheet: schedule && sheetOf(schedule, linesOf(text), today) };
-}
-
-/** Parts of the longest path looked for: versions, day, charges, name. */
-const deepest = 4;
-
-/** Finds lines of entries; a broken text has none. */
-function linesOf(text: string): LineOf {
-  const counter = new LineCounter();
-  const { contents } = parseDocument(text, { lineCounter: counter });
-  const lines = new Map<string, number>();
-  const keysOf = (node: unknown, prefix: string) => {
-    if (!isMap(node)) return;
-    for (const { key, value } of node.items) {
-      if (!isScalar(key) || !key.range) continue;
-      const path = `${prefix}${key.source ?? String(key.value)}`;
-      lines.set(path, counter.linePos(key.range[0]).line);
-      if (path.split('.').length < deepest) keysOf(value, `${path}.`);
-    }
-  };
-  keysOf(contents, '');
-  return (path) => {
-    for (let parts = path.split('.'); parts.length > 0; parts = parts.slice(0, -1)) {
-      const line = lines.get(parts.join('.'));
-      if (line !== undefined) return line;
-    }
-    return null;
-  };
 }
 
 function sheetOf(schedule: Schedule, lineOf: LineOf, today: string): Sheet {
@@ -109,13 +79,6 @@ function rateWords(words: string): string {
   return `${months.length} months, ${months[0]![1]} to ${months.at(-1)![1]}: ${Math.min(...values)} to ${Math.max(...values)}`;
 }
 
-const straddleWords: Record<Schedule['straddle'], string> = {
-  intervals: 'shared by the intervals each text, season or rider month covers',
-  days: 'shared by days',
-  start: 'the text of the first day holds for the whole bill; seasons by days',
-  end: 'the text of the last day holds for the whole bill; seasons by days',
-};
-
 /** What else the text says, each with its line. */
 function rulesOf(description: ScheduleDescription, text: TextDescription, lineOf: LineOf): Sheet['rules'] {
   const { demandWindow, rounding, zeroKwh, holidays } = text;
@@ -132,7 +95,7 @@ function rulesOf(description: ScheduleDescription, text: TextDescription, lineOf
   const all: [string, string, string][] = [
     ['Demand window', demandWindow ? `${demandWindow.minutes} min${rolling}` : '', 'demandWindow'],
     ['Holidays', holidayWords.join(' '), 'holidays'],
-    ['Two texts in a bill', straddleWords[description.straddle], 'straddle'],
+    ['Two texts in a bill', straddleWords(description), 'straddle'],
     [
       'Cents',
       `each line to ${rounding.step}, ${rounding.mode === 'nearest' ? 'half away from nought' : rounding.mode}`,

@@ -1,4 +1,5 @@
 import type { Schedule } from '../../core/tariff';
+import { formatList } from '../../components/ui/format';
 import type { ContractField, HistoryField } from '../../schemas/tariff';
 
 /** Words made of a name where the file gives no label: contractKva -> "Contract kva". */
@@ -45,4 +46,24 @@ export function historyFields(schedule: Schedule): HistoryField[] {
     }
   }
   return [...fields.values()];
+}
+
+/** How a bill across two texts, seasons or rider months is divided, in one sentence without its point. */
+export function straddleWords({ division, ruledBy }: Pick<Schedule, 'division' | 'ruledBy'>): string {
+  const names = { text: 'text', season: 'season', month: 'rider month' };
+  const parts = Object.entries(names) as [keyof typeof names, string][];
+  const shared = parts.flatMap(([what, name]) => (ruledBy[what] === null ? [name] : []));
+  const ruled = (['start', 'end'] as const).flatMap((day) => {
+    const by = parts.flatMap(([what, name]) => (ruledBy[what] === day ? [name] : []));
+    const verb = by.length === 1 ? 'holds' : 'hold';
+    return by.length > 0
+      ? [`${formatList(by)} of the ${day === 'start' ? 'first' : 'last'} day ${verb} for the whole bill`]
+      : [];
+  });
+  const how = division === 'intervals' ? 'by the intervals each covers' : 'by days';
+  const words = [
+    ...ruled,
+    ...(shared.length > 0 ? [`${formatList(shared.map((name) => `${name}s`))} are shared ${how}`] : []),
+  ];
+  return words.join('; ');
 }

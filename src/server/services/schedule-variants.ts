@@ -43,6 +43,43 @@ function fixCharge(charge: ChargeEntry, fix: (place: NumberPlace) => NumberPlace
   }
 }
 
+/** The schedule with one quantity of every text changed. */
+function withQuantity(schedule: Schedule, name: string, change: (quantity: QuantityEntry) => QuantityEntry): Schedule {
+  const changed = (text: ScheduleText) =>
+    text.quantities.map((quantity) => (quantity.name === name ? change(quantity) : quantity));
+  return { ...schedule, texts: schedule.texts.map((text) => ({ ...text, quantities: changed(text) })) };
+}
+
+/** The schedule as if demand were the mean of so many minutes. */
+export function asIfDemandWindow(schedule: Schedule, minutes: number): Schedule {
+  return { ...schedule, texts: schedule.texts.map((text) => ({ ...text, demandWindow: { minutes } })) };
+}
+
+/** The schedule as if a measure were taken in another window of the clock; without one, at all hours. */
+export function asIfMeasuredIn(schedule: Schedule, name: string, window: string | undefined): Schedule {
+  return withQuantity(schedule, name, (quantity) => {
+    if (quantity.definition.kind !== 'measure') return quantity;
+    const { window: _own, ...definition } = quantity.definition;
+    return { ...quantity, definition: window === undefined ? definition : { ...definition, window } };
+  });
+}
+
+/** The schedule as if a quantity were rounded otherwise; without a rounding, not at all. */
+export function asIfRounded(schedule: Schedule, name: string, rounding: QuantityEntry['rounding']): Schedule {
+  return withQuantity(schedule, name, ({ rounding: _own, ...quantity }) =>
+    rounding ? { ...quantity, rounding } : quantity,
+  );
+}
+
+/** The schedule as if a percentage were taken of other lines. */
+export function asIfBase(schedule: Schedule, lineId: string, of: string[]): Schedule {
+  const change = (charge: ChargeEntry): ChargeEntry =>
+    charge.name === lineId && charge.definition.kind === 'percent'
+      ? { ...charge, definition: { ...charge.definition, of, isAllAbove: false } }
+      : charge;
+  return { ...schedule, texts: schedule.texts.map((text) => ({ ...text, charges: text.charges.map(change) })) };
+}
+
 const placeExpressions = (place: NumberPlace): Expression[] => {
   if (place.kind === 'same') return [place.expression];
   return place.kind === 'seasons' ? place.bySeason : [...place.byMonth.values()];

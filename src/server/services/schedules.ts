@@ -1,24 +1,12 @@
-import { createHash } from 'node:crypto';
-import { readdir, readFile, stat } from 'node:fs/promises';
 import path from 'node:path';
-import { readSchedule, ScheduleError } from '../../core/tariff';
-import type { Schedule, ScheduleProblem } from '../../core/tariff';
 import { getEnv } from '../env';
 import { notFound } from '../errors';
+import { KeptSchedule } from '../models/KeptSchedule';
+import { ScheduleRevision } from '../models/ScheduleRevision';
 import { TariffChoice } from '../models/TariffChoice';
 import { isStaff, type Actor } from '../policies/actor';
 import { listEngagements } from './engagements';
-
-/** A file of the library: its text, and the schedule in it or the reasons why there is none. */
-export interface ScheduleFile {
-  id: string;
-  fileName: string;
-  text: string;
-  bytes: number;
-  sha256: string;
-  schedule: Schedule | null;
-  problems: ScheduleProblem[];
-}
+import { readScheduleFolder, readScheduleText, type ScheduleFile } from './schedule-files';
 
 /** Engagements priced on a schedule, as far as the person may know of them. */
 export interface ScheduleUse {
@@ -27,26 +15,86 @@ export interface ScheduleUse {
   sha256: string;
 }
 
-const largestBytes = 200_000;
-const readFiles = new Map<string, { stamp: string; file: ScheduleFile }>();
+const mostRemembered = 200;
+const readTexts = new Map<string, ScheduleFile>();
 
-/** SHA-256 of a schedule's text, in hex. */
-export const digestOf = (text: string) => createHash('sha256').update(text, 'utf8').digest('hex');
-
-/** The library's files in order of their names; a broken one is in the list with its problems. Staff only. */
+/**
+ * The library in order of ids: files of the folder of tariffs, and schedules kept in the application in their newest
+ * revision, which take the place of a file of the same id. What is put away is left out. Staff only.
+ */
 export async function listScheduleFiles(actor: Actor): Promise<ScheduleFile[]> {
   if (!isStaff(actor)) throw notFound();
-  return readLibrary();
+  const [files, kept] = await Promise.all([listFolder(), listKept()]);
+  const ids = new Set(kept.map(({ schedule }) => schedule.slug));
+  const shown = kept.flatMap(({ schedule, file }) => (schedule.putAwayAt ? [] : [file]));
+  return [...files.filter((file) => !ids.has(file.id)), ...shown].sort((a, b) => (a.id < b.id ? -1 : 1));
+}
+
+/** Kept schedules that are put away. Staff only. */
+export async function listPutAway(actor: Actor): Promise<ScheduleFile[]> {
+  if (!isStaff(actor)) throw notFound();
+  return (await listKept()).flatMap(({ schedule, file }) => (schedule.putAwayAt ? [file] : []));
 }
 
 /**
- * One file of the library.
+ * One schedule of the library in its newest text, put away or not.
  *
- * @throws {ServiceError} 404 where there is none of that name
+ * @throws {ServiceError} 404 where there is none of that id
  */
 export async function openScheduleFile(actor: Actor, id: string): Promise<ScheduleFile> {
-  const file = (await listScheduleFiles(actor)).find((one) => one.id === id);
+  if (!isStaff(actor)) throw notFound();
+  const kept = await KeptSchedule.findOne({ where: { slug: id } });
+  const file = kept ? await newestText(kept) : (await listFolder()).find((one) => one.id === id);
   if (!file) throw notFound();
+  return file;
+}
+
+/** The file of an id in the folder of tariffs, whether or not a kept schedule has taken its place. */
+export async function fileInFolder(id: string): Promise<ScheduleFile | null> {
+  return (await listFolder()).find((one) => one.id === id) ?? null;
+}
+
+const listFolder = () => readScheduleFolder(getEnv().TARIFF_DIR);
+
+/** Published forms of rules, each a schedule to begin one's own from. Staff only. */
+export async function listForms(actor: Actor): Promise<ScheduleFile[]> {
+  if (!isStaff(actor)) throw notFound();
+  return readScheduleFolder(path.join(getEnv().TARIFF_DIR, 'forms'));
+}
+
+/** One form. @throws {ServiceError} 404 where there is none of that id */
+export async function openForm(actor: Actor, id: string): Promise<ScheduleFile> {
+  const form = (await listForms(actor)).find((one) => one.id === id);
+  if (!form) throw notFound();
+  return form;
+}
+
+/** Schedules kept in the application, each in its newest text. */
+async function listKept(): Promise<{ schedule: KeptSchedule; file: ScheduleFile }[]> {
+  const schedules = await KeptSchedule.findAll();
+  const numbers = await ScheduleRevision.findAll({ attributes: ['id', 'scheduleId', 'number'], order: ['number'] });
+  const newest = new Map(numbers.map(({ scheduleId, id }) => [scheduleId, id]));
+  const revisions = await ScheduleRevision.findAll({ where: { id: [...newest.values()] } });
+  return schedules.flatMap((schedule) => {
+    const revision = revisions.find((one) => one.scheduleId === schedule.id);
+    return revision ? [{ schedule, file: revisionFile(schedule, revision) }] : [];
+  });
+}
+
+async function newestText(schedule: KeptSchedule): Promise<ScheduleFile | undefined> {
+  const where = { scheduleId: schedule.id };
+  const revision = await ScheduleRevision.findOne({ where, order: [['number', 'DESC']] });
+  return revision ? revisionFile(schedule, revision) : undefined;
+}
+
+/** A kept text, read; remembered, since it never changes. */
+export function revisionFile({ slug }: KeptSchedule, { text, sha256, number }: ScheduleRevision): ScheduleFile {
+  const key = `${slug}/${number}/${sha256}`;
+  const file = readTexts.get(key) ?? readScheduleText(slug, text, number);
+  readTexts.delete(key);
+  readTexts.set(key, file);
+  const [oldest] = readTexts.keys();
+  if (readTexts.size > mostRemembered && oldest !== undefined) readTexts.delete(oldest);
   return file;
 }
 
@@ -61,60 +109,4 @@ export async function scheduleUses(actor: Actor): Promise<Map<string, ScheduleUs
     uses.set(choice.scheduleId, [...(uses.get(choice.scheduleId) ?? []), use]);
   }
   return uses;
-}
-
-async function readLibrary(): Promise<ScheduleFile[]> {
-  const folder = path.resolve(getEnv().TARIFF_DIR);
-  const names = (await readdir(folder).catch(() => [])).filter((name) => name.endsWith('.yaml')).sort();
-  return Promise.all(names.map((name) => readFileOf(folder, name)));
-}
-
-/** Reads a file unless it was read before and is still the same. */
-async function readFileOf(folder: string, fileName: string): Promise<ScheduleFile> {
-  const full = path.join(folder, fileName);
-  try {
-    return await readKnown(full, fileName);
-  } catch (error) {
-    const { code } = error as NodeJS.ErrnoException;
-    if (code === undefined) throw error;
-    const message = `cannot be read from the disk (${code}).`;
-    return unreadFile(fileName, 0, message, 'Look whether it is a file the server may read, or take it away.');
-  }
-}
-
-async function readKnown(full: string, fileName: string): Promise<ScheduleFile> {
-  const { mtimeMs, size } = await stat(full);
-  const stamp = `${mtimeMs}/${size}`;
-  const known = readFiles.get(full);
-  if (known?.stamp === stamp) return known.file;
-  const file = size > largestBytes ? tooLargeFile(fileName, size) : parseFile(fileName, await readFile(full, 'utf8'));
-  readFiles.set(full, { stamp, file });
-  return file;
-}
-
-function tooLargeFile(fileName: string, bytes: number): ScheduleFile {
-  const message = `the file has ${bytes} bytes, more than ${largestBytes}.`;
-  return unreadFile(fileName, bytes, message, 'Split it, or take out what no bill needs.');
-}
-
-function unreadFile(fileName: string, bytes: number, message: string, remedy: string): ScheduleFile {
-  const problems = [{ line: 1, column: 1, path: '', message, remedy }];
-  return { id: idOf(fileName), fileName, text: '', bytes, sha256: '', schedule: null, problems };
-}
-
-const idOf = (fileName: string) => fileName.replace(/\.yaml$/, '');
-
-/** Reads the text of a file; a schedule under another name than its file's is a problem of its own. */
-function parseFile(fileName: string, text: string): ScheduleFile {
-  const file = { id: idOf(fileName), fileName, text, bytes: Buffer.byteLength(text), sha256: digestOf(text) };
-  try {
-    const schedule = readSchedule(text);
-    if (schedule.id === file.id) return { ...file, schedule, problems: [] };
-    const message = `calls the schedule "${schedule.id}" in a file named ${fileName}.`;
-    const remedy = `Name the file ${schedule.id}.yaml, or write schedule: ${file.id}.`;
-    return { ...file, schedule: null, problems: [{ line: 1, column: 1, path: 'schedule', message, remedy }] };
-  } catch (error) {
-    if (!(error instanceof ScheduleError)) throw error;
-    return { ...file, schedule: null, problems: error.problems };
-  }
 }

@@ -1,0 +1,269 @@
+import { useEffect, useMemo, useRef, useState } from 'react';
+import { ApiError } from '../../../client/api';
+import { dropDraft, keepRevision, useKeptDraft, useScheduleCheck } from '../../../client/schedules';
+import type { EditorView, MonthChoice } from '../../../schemas/schedule-editor';
+import { Button, ButtonLink } from '../../ui/Button';
+import { Field } from '../../ui/Field';
+import { FindingSlip } from '../../ui/FindingSlip';
+import { formatAmount, formatTime } from '../../ui/format';
+import { Notice } from '../../ui/Notice';
+import { ResultSums, type SumRow } from '../../ui/ResultSums';
+import { YearFigure } from '../YearFigure';
+import { completeSchedule } from './complete';
+import { editorHead, keepLabel } from './editor-words';
+import { ExamplesPanel } from './ExamplesPanel';
+import { MonthPanel } from './MonthPanel';
+import { SheetWords } from './SheetWords';
+import { TextEditor, type TextHandle } from './TextEditor';
+
+function firstMonth({ months }: EditorView): MonthChoice | null {
+  const [source] = months;
+  const bill = source?.bills.at(-1);
+  return source && bill ? { code: source.code, billId: bill.id } : null;
+}
+
+/** Keeps the text as a revision; tells what stood in the way. */
+function useKeeping(editor: EditorView, text: string) {
+  const [note, setNote] = useState('');
+  const [busy, setBusy] = useState(false);
+  const [fault, setFault] = useState<ApiError | null>(null);
+  const keep = async (baseNumber = editor.draft?.baseNumber ?? editor.revision) => {
+    if (busy) return;
+    setBusy(true);
+    setFault(null);
+    try {
+      await keepRevision(editor.id, { text, note, baseNumber });
+      location.assign(`/schedules/${editor.id}`);
+    } catch (error) {
+      if (!(error instanceof ApiError)) throw error;
+      setFault(error);
+      setBusy(false);
+    }
+  };
+  return { note, setNote, busy, fault, keep };
+}
+
+/** Warns before a page with words in it that are nowhere kept is left. */
+function useLeaveWarning(isUnkept: boolean) {
+  useEffect(() => {
+    if (!isUnkept) return undefined;
+    const warn = (event: BeforeUnloadEvent) => event.preventDefault();
+    window.addEventListener('beforeunload', warn);
+    return () => window.removeEventListener('beforeunload', warn);
+  }, [isUnkept]);
+}
+
+function KeepFault({ fault, onOver }: { fault: ApiError; onOver: (revision: number) => void }) {
+  if (fault.status === 401) {
+    return (
+      <Notice kind="fault" title="You are signed out.">
+        {' '}
+        Your text is still here.{' '}
+        <a href="/sign-in" target="_blank" rel="noreferrer">
+          Sign in in another window
+        </a>
+        , then press again.
+      </Notice>
+    );
+  }
+  const theirs = fault.details.theirs as { revision?: number } | undefined;
+  if (fault.code === 'stale' && theirs?.revision !== undefined) {
+    const { revision } = theirs;
+    return (
+      <Notice kind="fault" title={`Somebody kept revision ${revision} while you were writing.`}>
+        {
+          ' Your text is still here and rests on an earlier one. Look what changed in the history, put it into yours, then '
+        }
+        <button type="button" className="text-button" onClick={() => onOver(revision)}>
+          keep yours after it
+        </button>
+        .
+      </Notice>
+    );
+  }
+  return (
+    <Notice
+      kind="fault"
+      title={fault.message}
+      problems={Object.values(fault.fields)
+        .flat()
+        .map((message) => ({ message }))}
+    />
+  );
+}
+
+/** Island: a schedule's text to write in, beside what it says and what a month costs under it. */
+export function ScheduleEditor({ editor }: { editor: EditorView }) {
+  const initialText = editor.draft?.text ?? editor.keptText;
+  const [text, setText] = useState(initialText);
+  const [month, setMonth] = useState(() => firstMonth(editor));
+  const handle = useRef<TextHandle>(null);
+  const isChanged = text !== editor.keptText;
+  const check = useScheduleCheck(editor.id, text, month);
+  const baseNumber = editor.draft?.baseNumber ?? editor.revision;
+  const draft = useKeptDraft(editor.id, { text, baseNumber }, isChanged, editor.draft?.at ?? null);
+  const keeping = useKeeping(editor, text);
+  useLeaveWarning(draft.error !== null);
+  const { view } = check;
+  const isCurrent = check.checkedText === text && !check.busy;
+  const head = editorHead({ editor, view, isChanged, isCurrent });
+  const problems = useMemo(
+    () => (check.checkedText === text ? (view?.problems ?? []) : []),
+    [view, check.checkedText, text],
+  );
+  const goTo = (line: number) => handle.current?.goTo(line);
+  const keptName = editor.revision === 0 ? "Library's file" : `Revision ${editor.revision}`;
+  const sums = view?.month ? sumsOf(view.month, keptName) : [];
+  const giveUp = async () => {
+    await dropDraft(editor.id);
+    location.assign(`/schedules/${editor.id}`);
+  };
+  return (
+    <>
+      <header className="sheet-head">
+        <p className="context">
+          Schedule {editor.id}, {editor.revision === 0 ? 'a file of the library' : `revision ${editor.revision}`}
+        </p>
+        <h1>{head.title}</h1>
+        <p className="lead" role="status">
+          {head.lead}
+        </p>
+        <div className="actions">
+          <ButtonLink kind="secondary" href={`/schedules/${editor.id}`}>
+            Back to the sheet
+          </ButtonLink>
+          <Button busy={keeping.busy} waiting={head.obstacle} onClick={() => void keeping.keep()}>
+            {keepLabel(editor)}
+          </Button>
+        </div>
+      </header>
+      <div className="columns column-names" aria-hidden="true">
+        <div className="reference">Reference</div>
+        <div className="working">Working</div>
+        <div className="result">Result</div>
+      </div>
+      <section className="columns">
+        <div className="reference">
+          <p>Ctrl and blank complete a word, F8 goes to the next error, F4 puts it right, Ctrl F seeks.</p>
+          <p>
+            <a className="text-link" href="/schedules/guide" target="_blank">
+              How to write a schedule
+            </a>
+          </p>
+          <p>{draftWords(draft.at, draft.error !== null, isChanged)}</p>
+        </div>
+        <div className="working">
+          {keeping.fault && <KeepFault fault={keeping.fault} onOver={(revision) => void keeping.keep(revision)} />}
+          {check.error && (
+            <Notice kind="fault" title="The text could not be looked over.">{` ${check.error.message}`}</Notice>
+          )}
+          {editor.draft && editor.draft.baseNumber < editor.revision && (
+            <Notice title={`Your draft was begun on revision ${editor.draft.baseNumber}.`}>
+              {` Revision ${editor.revision} was kept since; the history shows what changed.`}
+            </Notice>
+          )}
+          <div className="editor-columns">
+            <div className="editor-text">
+              <h2 className="section-title">{editor.id}.yaml</h2>
+              <TextEditor
+                label={`Text of ${editor.id}`}
+                initialText={initialText}
+                onChange={setText}
+                problems={problems}
+                complete={completeSchedule}
+                onSave={() => head.obstacle === null && void keeping.keep()}
+                handle={handle}
+              />
+              <div className="editor-foot">
+                <Field
+                  label="What changed, for the history"
+                  value={keeping.note}
+                  maxLength={300}
+                  onChange={(event) => keeping.setNote(event.target.value)}
+                />
+                {isChanged && (
+                  <Button kind="quiet" onClick={() => confirmGiveUp(editor) && void giveUp()}>
+                    Throw this draft away
+                  </Button>
+                )}
+              </div>
+            </div>
+            <div className="editor-said" aria-busy={check.busy}>
+              <h2 className="section-title">A month, priced as you type</h2>
+              <MonthPanel
+                sources={editor.months}
+                choice={month}
+                onChoose={setMonth}
+                month={view?.month ?? null}
+                keptName={keptName}
+              />
+              <h2 className="section-title">Worked bills it must reproduce</h2>
+              <ExamplesPanel examples={view?.examples ?? []} onGo={goTo} />
+              {view?.sheet && <SheetWords sheet={view.sheet} onGo={goTo} />}
+              {view?.sheet?.year && (
+                <>
+                  <h3 className="section-title">The year by day and hour</h3>
+                  <YearFigure picture={view.sheet.year} fileName={`${editor.id}-${view.sheet.year.year}`} />
+                </>
+              )}
+            </div>
+          </div>
+        </div>
+        <div className="result">
+          {sums.length > 0 && <ResultSums title={view?.month?.name} rows={sums} />}
+          {problems.map((problem, index) => (
+            <FindingSlip
+              key={index}
+              letter={String(index + 1)}
+              title={`Line ${problem.line}, column ${problem.column}`}
+            >{`${problem.message} ${problem.remedy}`}</FindingSlip>
+          ))}
+          {view?.sheet?.notes.map((note, index) => (
+            <FindingSlip key={index} title="Note of the reader" caution>
+              {note.where && <b>{note.where}: </b>}
+              {note.message}
+            </FindingSlip>
+          ))}
+          {editor.othersWriting.length > 0 && (
+            <FindingSlip title="Others are writing on it too">
+              {editor.othersWriting.join(', ')}. Whoever keeps second is shown what the first one kept.
+            </FindingSlip>
+          )}
+        </div>
+      </section>
+    </>
+  );
+}
+
+const confirmGiveUp = ({ id }: EditorView) =>
+  window.confirm(`Throw away your draft of ${id}? What is kept stays; what you wrote since is gone.`);
+
+function draftWords(at: string | null, isLost: boolean, isChanged: boolean): string {
+  if (isLost) return 'The draft cannot be kept at this moment. It is still here; do not close the page.';
+  if (!isChanged) return 'No draft: the text is the one that is kept.';
+  return at
+    ? `Draft kept ${formatTime(at)}. It waits for you on any machine.`
+    : 'The draft is kept when the typing rests.';
+}
+
+function sumsOf(
+  {
+    keptMinor,
+    yoursMinor,
+    billedMinor,
+    currency,
+  }: NonNullable<NonNullable<ReturnType<typeof useScheduleCheck>['view']>['month']>,
+  keptName: string,
+): SumRow[] {
+  const amount = (minor: number) => formatAmount(minor, currency);
+  return [
+    ...(keptMinor === null ? [] : [{ label: keptName, value: amount(keptMinor) }]),
+    ...(billedMinor === null ? [] : [{ label: 'As billed', value: amount(billedMinor) }]),
+    {
+      label: `Your text, ${currency}`,
+      value: yoursMinor === null ? 'waits' : amount(yoursMinor),
+      kind: 'total' as const,
+      tone: yoursMinor === null ? ('fault' as const) : undefined,
+    },
+  ];
+}

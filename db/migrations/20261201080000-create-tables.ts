@@ -1,28 +1,20 @@
-import { DataTypes, literal, type ModelAttributeColumnOptions, type QueryInterface } from 'sequelize';
-
-type Columns = Record<string, ModelAttributeColumnOptions>;
-
-const id: Columns = { id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true } };
-const stamps: Columns = {
-  created_at: { type: DataTypes.DATE, allowNull: false, defaultValue: literal('CURRENT_TIMESTAMP') },
-  updated_at: { type: DataTypes.DATE, allowNull: false, defaultValue: literal('CURRENT_TIMESTAMP') },
-};
-const version: Columns = { version: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 } };
-
-const text = (allowNull = false) => ({ type: DataTypes.TEXT, allowNull });
-const whole = (allowNull = false) => ({ type: DataTypes.INTEGER, allowNull });
-const real = (allowNull = false) => ({ type: DataTypes.DOUBLE, allowNull });
-const date = (allowNull = false) => ({ type: DataTypes.DATEONLY, allowNull });
-const instant = (allowNull = false) => ({ type: DataTypes.DATE, allowNull });
-const json = (allowNull = false) => ({ type: DataTypes.JSON, allowNull });
-const bytes = (allowNull = false) => ({ type: DataTypes.BLOB, allowNull });
-const flag = (defaultValue: boolean) => ({ type: DataTypes.BOOLEAN, allowNull: false, defaultValue });
-const link = (model: string, allowNull = false, onDelete = 'RESTRICT') => ({
-  type: DataTypes.INTEGER,
-  allowNull,
-  references: { model, key: 'id' },
-  onDelete,
-});
+import { DataTypes, type QueryInterface } from 'sequelize';
+import {
+  bytes,
+  date,
+  flag,
+  id,
+  instant,
+  json,
+  link,
+  real,
+  stamps,
+  text,
+  version,
+  whole,
+  type Columns,
+} from './tables/columns';
+import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 
 /** Columns of the tables, in the order in which the tables can be made. */
 const tables: Record<string, Columns> = {
@@ -164,9 +156,39 @@ const tables: Record<string, Columns> = {
     contract: json(),
     history: json(true),
     line_matches: json(),
+    remembered: json(),
+    tolerance_minor: whole(),
     ...version,
     ...stamps,
   },
+  schedules: {
+    ...id,
+    slug: { ...text(), unique: true },
+    made_from: text(true),
+    made_by_id: link('users', true),
+    put_away_at: instant(true),
+    ...version,
+    ...stamps,
+  },
+  schedule_revisions: {
+    ...id,
+    schedule_id: link('schedules', false, 'CASCADE'),
+    number: whole(),
+    text: text(),
+    sha256: text(),
+    note: text(true),
+    made_by_id: link('users', true),
+    ...stamps,
+  },
+  schedule_drafts: {
+    ...id,
+    schedule_slug: text(),
+    user_id: link('users', false, 'CASCADE'),
+    text: text(),
+    base_number: whole(),
+    ...stamps,
+  },
+  ...findingTables,
   motors: {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),
@@ -280,6 +302,7 @@ const indexes: Record<string, string[][]> = {
   sessions: [['expires']],
   column_maps: [['signature']],
   intakes: [['sha256']],
+  ...findingIndexes,
   reading_blocks: [['meter_id', 'channel', 'start_ms']],
   hour_entries: [['user_id', 'day']],
   trail_rows: [['subject', 'subject_id'], ['actor_id'], ['at']],
@@ -293,6 +316,7 @@ const checks: Record<string, string[]> = {
   jobs: ["state IN ('running','done','failed','cancelled')"],
   letters: ["state IN ('sent','failed')"],
   bills: ['period_from < period_to'],
+  ...findingChecks,
   hour_entries: ['minutes > 0', 'minutes <= 1440'],
   engagements: ['year_from < year_to'],
 };
@@ -302,7 +326,7 @@ async function addChecks(database: QueryInterface, table: string): Promise<void>
     for (const event of ['INSERT', 'UPDATE']) {
       const name = `${table}_${event.toLowerCase()}_${checks[table]?.indexOf(condition)}`;
       const onNew = condition.replace(
-        /\b(role|client_id|kind|state|period_from|period_to|minutes|year_from|year_to)\b/g,
+        /\b(role|client_id|kind|state|family|way|period_from|period_to|minutes|year_from|year_to)\b/g,
         'NEW.$1',
       );
       await database.sequelize.query(
@@ -331,7 +355,14 @@ export async function up(database: QueryInterface): Promise<void> {
     await addChecks(database, name);
   }
   await database.addIndex('memberships', ['engagement_id', 'user_id'], { unique: true, name: 'memberships_once' });
+  await database.addIndex('line_memories', ['utility', 'label'], { unique: true, name: 'line_memories_once' });
+  await database.addIndex('findings', ['engagement_id', 'period_from', 'period_to', 'line_key', 'family'], {
+    unique: true,
+    name: 'findings_once',
+  });
   await database.addIndex('editions', ['engagement_id', 'number'], { unique: true, name: 'editions_number' });
+  await database.addIndex('schedule_revisions', ['schedule_id', 'number'], { unique: true, name: 'revisions_number' });
+  await database.addIndex('schedule_drafts', ['schedule_slug', 'user_id'], { unique: true, name: 'drafts_once' });
 }
 
 /** Takes it away again. */

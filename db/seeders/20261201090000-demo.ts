@@ -25,10 +25,12 @@ import { createMotor } from '../../src/server/services/motors';
 import { changePerson, openPerson } from '../../src/server/services/people';
 import { choosePlan, createPlan, openPlan } from '../../src/server/services/plans';
 import { setRate } from '../../src/server/services/rates';
+import { createSchedule, keepRevision } from '../../src/server/services/schedule-revisions';
 import { startSearch } from '../../src/server/services/search';
 import { chooseSchedule } from '../../src/server/services/tariff';
+import { sendUtilityLetter, utilityLetterDraft } from '../../src/server/services/utility-letters';
 import { addPersonWithPassword, bringIn, daysAgo, ended } from './demo/helpers';
-import { harrowBills } from './demo/harrow';
+import { harrowBills, harrowSchedule } from './demo/harrow';
 import { kestrelBillsFile, kestrelMeterFile } from './demo/kestrel-year';
 import { earlierAdjustedKw, kestrel, kestrelMotors } from './demo/scenario';
 
@@ -115,6 +117,25 @@ async function auditKestrel(consultant: Actor, opened: OpenEngagement): Promise<
   for (const motor of kestrelMotors) await createMotor(opened, motor);
 }
 
+/** Puts the greatest finding to the utility; the other waits for somebody. */
+async function writeToUtility(consultant: Actor, opened: OpenEngagement): Promise<void> {
+  const { content } = await utilityLetterDraft(consultant, opened.engagement.code);
+  const [greatest] = [...content.claims].sort((a, b) => b.amountMinor - a.amountMinor);
+  if (!greatest) throw new Error('The demo scenario has no finding to put to the utility');
+  await sendUtilityLetter(consultant, opened, {
+    requestId: randomUUID(),
+    findings: [{ id: greatest.findingId, version: greatest.version }],
+    way: 'mail',
+    name: 'Ostrander Valley Light & Power, Key accounts',
+    address: 'key-accounts@ostrander-valley.example',
+    postal: '200 Dam Road\nOstrander Valley, IL',
+    account: '88-1042',
+    opening: content.opening,
+    closing: content.closing,
+    replyBy: content.replyBy,
+  });
+}
+
 /** Searches the best fields, makes the plan of them, and reports it to the client. */
 async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Promise<void> {
   const search = await ended(consultant, await startSearch(consultant, opened, { stepA: 2 }));
@@ -167,6 +188,16 @@ async function openHarrow({ ilse: partner, sana: consultant }: Staff): Promise<O
   return opened;
 }
 
+/** The second client's sheet, written down in the application: begun blank, then the sheet put in. */
+async function writeHarrowSchedule(consultant: Actor): Promise<void> {
+  const id = await createSchedule(consultant, {
+    slug: 'ostrander-gs2',
+    title: 'GS-2, general service with demand',
+    from: { kind: 'blank' },
+  });
+  await keepRevision(consultant, id, { text: harrowSchedule, note: 'Sheet 9 of September 2025', baseNumber: 1 });
+}
+
 type Entry = [days: number, time: string, station: HourStation, note: string];
 
 const tomsHours: Entry[] = [
@@ -194,8 +225,10 @@ export async function up(): Promise<void> {
     actAs({ actorId: person.id, ip: null }, work);
   const works = await inTheNameOf(staff.tom, () => openKestrel(staff));
   await inTheNameOf(staff.tom, () => auditKestrel(staff.tom, works));
+  await inTheNameOf(staff.tom, () => writeToUtility(staff.tom, works));
   await inTheNameOf(staff.tom, () => proposeToKestrel(staff.tom, works));
   const pier = await inTheNameOf(staff.sana, () => openHarrow(staff));
+  await inTheNameOf(staff.sana, () => writeHarrowSchedule(staff.sana));
   await inTheNameOf(staff.tom, () => log(staff.tom, works, tomsHours));
   await inTheNameOf(staff.ilse, () => log(staff.ilse, works, ilsesHours));
   await inTheNameOf(staff.sana, () => log(staff.sana, pier, sanasHours));

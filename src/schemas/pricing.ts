@@ -44,7 +44,13 @@ export type FindingKind =
   | 'wrong-season'
   | 'wrong-version'
   | 'wrong-quantity'
+  | 'wrong-window'
+  | 'wrong-rounding'
+  | 'wrong-base'
+  | 'wrong-period'
+  | 'wrong-multiplier'
   | 'bill-arithmetic'
+  | 'energy-differs'
   | 'line-not-in-schedule'
   | 'line-not-billed'
   | 'unexplained';
@@ -55,6 +61,14 @@ export interface TriedCause {
   label: string;
   missMinor: number;
   fits: boolean;
+}
+
+/** Energy a bill prints beside what the meter's intervals add up to. */
+export interface EnergyDifference {
+  printedKwh: number;
+  meteredKwh: number;
+  /** Printed less metered at the mean rate of the bill's energy lines; null where there are none. */
+  worthMinor: number | null;
 }
 
 /** A difference between a bill and what the schedule says it should be. */
@@ -72,6 +86,8 @@ export interface Finding {
   amountMinor: number;
   /** The line's own part of it. */
   lineAmountMinor: number;
+  /** Energy printed and metered, where these differ though the money agrees; its worth at the schedule's rate. */
+  energy: EnergyDifference | null;
   sentence: string;
   causes: TriedCause[];
 }
@@ -80,6 +96,8 @@ export interface Finding {
 export interface PricedYear {
   route: PricingRoute;
   currency: string;
+  /** Differences of a line up to this many minor units are rounding, not findings. */
+  toleranceMinor: number;
   timeZone: string;
   /** That the schedule's clock is not the site's; null where it is. */
   clock: string | null;
@@ -100,5 +118,6 @@ export interface PricedYear {
   notes: string[];
 }
 
-/** Differences of a line up to this many minor units are rounding, not findings. */
+/** The tolerance of a line, in minor units, where nobody chose another; and the greatest one may choose. */
 export const lineToleranceMinor = 5;
+export const mostToleranceMinor = 500;

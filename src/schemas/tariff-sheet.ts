@@ -29,6 +29,8 @@ export interface PairView {
   billedMinor: number | null;
   differenceMinor: number;
   matchedBy: MatchedBy;
+  /** That the match was taken over from an earlier engagement, in words. */
+  remembered: string | null;
   finding: string | null;
 }
 

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { ScheduleProblem } from '../core/tariff';
 import { isCalendarDate } from '../core/load';
+import { mostToleranceMinor } from './pricing';
 
 /** One contract input as a form asks for it. */
 export interface ContractField {
@@ -48,6 +49,7 @@ export interface ChoiceView {
   contract: Record<string, number>;
   history: Record<string, number[]> | null;
   lineMatches: Record<string, string>;
+  toleranceMinor: number;
   contractFields: ContractField[];
   historyFields: HistoryField[];
   version: number;
@@ -56,6 +58,8 @@ export interface ChoiceView {
 }
 
 const numbers = z.record(z.string(), z.number({ error: 'Write a number.' }));
+
+const toleranceRange = `The tolerance lies between 0 and ${mostToleranceMinor} of the currency's smallest unit.`;
 
 /** What choosing a schedule sends. */
 export const chooseInput = z.object({
@@ -73,6 +77,13 @@ export const chooseInput = z.object({
   version: z.number().int().nullable(),
   /** Take the library's file as it stands now instead of the text kept with the engagement. */
   takeNewText: z.boolean(),
+  /** Tolerance of a line in minor units; left out, it stays as it is. */
+  toleranceMinor: z
+    .number({ error: toleranceRange })
+    .int(toleranceRange)
+    .min(0, toleranceRange)
+    .max(mostToleranceMinor, toleranceRange)
+    .optional(),
 });
 export type ChooseInput = z.infer<typeof chooseInput>;
 

@@ -32,11 +32,13 @@ const rowSql: Record<string, string> = {
   bills: "SELECT b.id value FROM bills b JOIN engagements e ON e.id = b.engagement_id WHERE e.code = 'KG-02'",
   clients: "SELECT client_id value FROM engagements WHERE code = 'KG-02'",
   editions: 'SELECT id value FROM editions',
+  findings: 'SELECT id value FROM findings',
   hours: "SELECT h.id value FROM hour_entries h JOIN users u ON u.id = h.user_id WHERE u.email LIKE 'tom@%'",
   intake:
     "SELECT i.id value FROM intakes i JOIN engagements e ON e.id = i.engagement_id WHERE e.code = 'KG-02' AND i.kind = 'intervals'",
   jobs: 'SELECT id value FROM jobs',
   members: "SELECT id value FROM users WHERE email LIKE 'sana@%'",
+  letters: 'SELECT number value FROM utility_letters',
   motors: 'SELECT id value FROM motors',
   people: "SELECT id value FROM users WHERE email LIKE 'sana@%'",
   plans: 'SELECT id value FROM plans',
@@ -49,6 +51,7 @@ beforeAll(async () => {
   for (const [kind, sql] of Object.entries(rowSql)) ids.set(kind, await firstValue(database, sql));
   ids.set('intakes', ids.get('intake') ?? '');
   ids.set('schedules', 'ostrander-lp4');
+  ids.set('forms', 'kvarh-share-of-kwh');
   ids.set('reports', '1');
   ids.set('report', '1');
 });

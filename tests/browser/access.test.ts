@@ -19,6 +19,9 @@ const visits = [
       '/engagements/KG-02/bills',
       '/engagements/KG-02/intervals',
       '/engagements/KG-02/tariff',
+      '/engagements/KG-02/tariff/compare?with=ostrander-hv3&ostrander-hv3.contractKva=3000',
+      '/engagements/KG-02/tariff/letter',
+      '/engagements/KG-02/tariff/letters/1',
       '/engagements/KG-02/motors',
       '/engagements/KG-02/plans',
       '/engagements/KG-02/report',
@@ -28,6 +31,13 @@ const visits = [
       '/clients/1',
       '/schedules',
       '/schedules/ostrander-lp4',
+      '/schedules/ostrander-lp4/edit',
+      '/schedules/ostrander-gs2/history',
+      '/schedules/new',
+      '/schedules/guide',
+      '/schedules/forms',
+      '/schedules/forms/kvarh-share-of-kwh',
+      '/schedules/ostrander-lp4/try?from=2026-07-01&to=2026-08-01&kwh=1030000&kw=2400&pf=0.89',
       '/practice',
       '/people',
       '/trail',
@@ -70,21 +80,24 @@ const overflow = (page: Page) =>
   page.evaluate(() => Math.max(0, document.documentElement.scrollWidth - document.documentElement.clientWidth));
 
 describe.each(visits)('the pages of a $who', ({ email, addresses }) => {
-  it.each(looks)('keep to the accessibility rules and to the width, $name', async ({ colorScheme, viewport }) => {
-    const { page, complaints } = await openWindow(browser, origin, { colorScheme, viewport, bypassCSP: true });
-    await signIn(page, email);
-    const found: Record<string, unknown> = {};
-    for (const address of addresses) {
-      await page.goto(address);
-      await page.waitForLoadState('networkidle');
-      const wrong = await faults(page);
-      const wide = await overflow(page);
-      if (wrong.length > 0 || wide > 0) found[address] = { wrong, wide };
-    }
-    expect(found).toEqual({});
-    expect(complaints).toEqual([]);
-    await page.context().close();
-  });
+  it.concurrent.each(looks)(
+    'keep to the accessibility rules and to the width, $name',
+    async ({ colorScheme, viewport }) => {
+      const { page, complaints } = await openWindow(browser, origin, { colorScheme, viewport, bypassCSP: true });
+      await signIn(page, email);
+      const found: Record<string, unknown> = {};
+      for (const address of addresses) {
+        await page.goto(address);
+        await page.waitForLoadState('networkidle');
+        const wrong = await faults(page);
+        const wide = await overflow(page);
+        if (wrong.length > 0 || wide > 0) found[address] = { wrong, wide };
+      }
+      expect(found).toEqual({});
+      expect(complaints).toEqual([]);
+      await page.context().close();
+    },
+  );
 });
 
 describe('the way in', () => {

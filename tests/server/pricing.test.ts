@@ -9,7 +9,7 @@ import type { Engagement } from '@/server/models/Engagement';
 import { Bill } from '@/server/models/Bill';
 import { inTx } from '@/server/db/tx';
 import { openEngagement } from '@/server/services/engagements';
-import { findingsCount, pricedYear, pricingInputs } from '@/server/services/pricing';
+import { pricedYear, pricingInputs } from '@/server/services/pricing';
 import { chooseSchedule, tariffStation } from '@/server/services/tariff';
 import { explainFigure } from '@/server/services/tariff-why';
 import { tariffPage } from '@/server/services/tariff-page';
@@ -114,7 +114,6 @@ describe('pricedYear', () => {
     const year = await pricedYear(opened);
     expect(year.bills.map((bill) => bill.priced)).toEqual(priced());
     expect(year.findings).toEqual([]);
-    expect(await findingsCount(opened)).toEqual({ findings: 0, incomplete: 0 });
     expect(year.totals.differenceMinor).toBe(0);
     expect(year.readings).toEqual({ present: 35_040, expected: 35_040 });
     expect(year.route).toBe('intervals');
@@ -277,7 +276,6 @@ describe('bills whose readings are missing in part', () => {
     expect(year.bills[0]?.differenceMinor).toBeNull();
     expect(year.bills[1]?.differenceMinor).toBe(0);
     expect(year.totals.differenceMinor).toBe(0);
-    expect(await findingsCount(opened)).toEqual({ findings: 0, incomplete: 1 });
     const { words } = await tariffPage(made.actor, made.engagement.code);
     expect(words.headline).toBe('The utility billed rightly: all eleven bills agree to the cent.');
     expect(words.lead).toContain('480 readings are missing: Nov 2025 is priced too low and compared with no bill.');

@@ -2,10 +2,15 @@ import { mkdtempSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { beforeEach, describe, expect, it } from 'vitest';
+import { chooseInput, noLine } from '@/schemas/tariff';
 import { configureEnv } from '@/server/env';
+import { inTx } from '@/server/db/tx';
+import { Engagement } from '@/server/models/Engagement';
+import { LineMemory } from '@/server/models/LineMemory';
 import { TariffChoice } from '@/server/models/TariffChoice';
 import { Trail } from '@/server/models/Trail';
 import type { Actor } from '@/server/policies/actor';
+import { originsOf } from '@/server/services/line-memory';
 import { listScheduleFiles, openScheduleFile, scheduleUses } from '@/server/services/schedules';
 import { chooseSchedule, matchLine, tariffStation } from '@/server/services/tariff';
 import { buildActor, buildEngagement } from '../setup/build';
@@ -180,6 +185,74 @@ describe('matchLine', () => {
     expect(again.lineMatches).toEqual({ kW: 'demand' });
     const forgotten = await matchLine(actor, code, { label: 'kW', lineId: null, version: again.version });
     expect(forgotten.lineMatches).toEqual({});
+  });
+});
+
+describe('matches of the next engagement with the utility', () => {
+  const next = async (memberId = actor.id) => (await buildEngagement({ memberIds: [memberId] })).code;
+  const choiceAt = async (at: string) => {
+    const engagement = await Engagement.findOne({ where: { code: at }, rejectOnEmpty: true });
+    return TariffChoice.findOne({ where: { engagementId: engagement.id }, rejectOnEmpty: true });
+  };
+  const tell = async (label: string, lineId: string | null) => {
+    const { version } = await choiceAt(code);
+    return matchLine(actor, code, { label, lineId, version });
+  };
+
+  it('begin with what was told, named after its engagement to those who may know of it', async () => {
+    await chooseSchedule(actor, code, input());
+    await tell('Billed capacity', 'demand');
+    const second = await next();
+    const chosen = await chooseSchedule(actor, second, input());
+    expect(chosen.lineMatches).toMatchObject({ 'Billed capacity': 'demand' });
+    expect((await originsOf(actor, await choiceAt(second)))['Billed capacity']).toBe(`remembered from ${code}`);
+    const stranger = await buildActor();
+    const third = await next(stranger.id);
+    await chooseSchedule(stranger, third, input());
+    expect((await originsOf(stranger, await choiceAt(third)))['Billed capacity']).toBe('remembered');
+  });
+
+  it('are their own from then on: a later correction elsewhere changes nothing there', async () => {
+    await chooseSchedule(actor, code, input());
+    await tell('Capacity fee', 'demand');
+    const second = await next();
+    await chooseSchedule(actor, second, input());
+    await tell('Capacity fee', 'service');
+    const choice = await choiceAt(second);
+    expect(choice.lineMatches['Capacity fee']).toBe('demand');
+    const own = await matchLine(actor, second, { label: 'Capacity fee', lineId: 'energy', version: choice.version });
+    expect(own.lineMatches['Capacity fee']).toBe('energy');
+    expect((await originsOf(actor, await choiceAt(second)))['Capacity fee']).toBeUndefined();
+  });
+
+  it('forget what is taken back, and what the schedule has no line for', async () => {
+    await chooseSchedule(actor, code, input());
+    await tell('Grid fee', 'demand');
+    await tell('Grid fee', null);
+    await tell('Lamp fee', noLine);
+    const memory = await LineMemory.findOne({ where: { label: 'Lamp fee' }, rejectOnEmpty: true });
+    await inTx(() =>
+      LineMemory.create({ ...memory.get(), id: undefined, label: 'Old fee', lineId: 'lineOfAnOlderText' }),
+    );
+    const { lineMatches } = await chooseSchedule(actor, await next(), input());
+    expect(lineMatches).not.toHaveProperty('Grid fee');
+    expect(lineMatches).not.toHaveProperty('Old fee');
+    expect(lineMatches['Lamp fee']).toBe(noLine);
+  });
+});
+
+describe('the tolerance of a line', () => {
+  it('is five cents until one chooses another, and stays so when it is not told', async () => {
+    const first = await chooseSchedule(actor, code, input());
+    expect(first.toleranceMinor).toBe(5);
+    const second = await chooseSchedule(actor, code, input({ version: first.version, toleranceMinor: 12 }));
+    expect(second.toleranceMinor).toBe(12);
+    expect((await chooseSchedule(actor, code, input({ version: second.version }))).toleranceMinor).toBe(12);
+  });
+
+  it('lies in a range that makes sense', () => {
+    const fault = (toleranceMinor: number) => chooseInput.safeParse(input({ toleranceMinor })).success;
+    expect([-1, 0.5, NaN, 501, 0, 500].map(fault)).toEqual([false, false, false, false, true, true]);
   });
 });
 

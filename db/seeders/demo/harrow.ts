@@ -32,3 +32,39 @@ export function harrowBills(): { fileName: string; bytes: Uint8Array } {
     bytes: billsWorkbook(bills, ['Harrow Sound Cold Store', 'Pier 4, meter OV 2207-031']),
   };
 }
+
+/** The sheet those bills were made on, as a consultant wrote it down. */
+export const harrowSchedule = `# Invented for demonstration: no utility of this name sells power.
+schedule: ostrander-gs2
+title: GS-2, general service with demand
+currency: USD
+timeZone: America/Chicago
+source: { publisher: Ostrander Valley Light & Power, title: "Schedule GS-2, sheet 9", date: 2025-09-30, status: invented }
+inForce: 2025-10-01
+demandWindow: 15 min
+straddle: days
+zeroKwh: { pf: 1 }
+
+rates:
+  reference: 0.85 # power factor below which the metered demand is adjusted
+
+quantities:
+  kwh: { sum: kwh, label: Energy }
+  maxKw: { highest: kw, label: Metered demand }
+  kvarh: { sum: kvarhLagging, label: Reactive energy }
+  powerFactor: { formula: pf(kwh; kvarh), round: 0.01, label: Power factor, clause: "4" }
+  billedKw: { formula: maxKw * max(1; reference / powerFactor), unit: kW, round: 0.1, label: Billed demand, clause: "4" }
+
+charges:
+  customer: { amount: 96.00, group: fixed, label: Customer charge, clause: "2" }
+  energy: { per: kwh, rate: 0.0588, group: energy, label: Energy charge, clause: "3" }
+  demand: { per: billedKw, rate: 15.20, group: demand, label: Demand charge, clause: "4" }
+
+examples:
+  # 200,000 x 0.0588; 500 x 0.85 / 0.80 = 531.25, to 0.1: 531.3 x 15.20; at unity 500 x 15.20 = 7,600.00.
+  - title: June 2026 at a power factor of 0.80, worked by hand
+    from: 2026-06-01
+    to: 2026-07-01
+    quantities: { kwh: 200000, maxKw: 500, powerFactor: 0.80 }
+    expect: { customer: 96.00, energy: 11760.00, billedKw: 531.3, demand: 8075.76, total: 19931.76, reactiveCost: 475.76 }
+`;

@@ -3,17 +3,20 @@ import { useForm, type Resolver, type UseFormReturn } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { chooseSchedule } from '../../client/tariff';
-import type { ChoiceView, ChooseInput, ContractField, HistoryField, LibraryEntry } from '../../schemas/tariff';
+import { mostToleranceMinor } from '../../schemas/pricing';
+import type { ChoiceView, ChooseInput, LibraryEntry } from '../../schemas/tariff';
 import { messageAt, nestErrors } from '../ui/form-errors';
 import { Button } from '../ui/Button';
-import { CheckField, Field, NumberField, SelectField } from '../ui/Field';
-import { formatCount, formatNumber } from '../ui/format';
+import { CheckField, NumberField, SelectField } from '../ui/Field';
+import { formatCount, formatMoney } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { StaleCompare } from '../ui/StaleCompare';
+import { ContractInput, HistoryInput } from './ContractFields';
 import { differencesOf, draftOf, faultsOf, toChooseInput, type Choosable, type ChoiceDraft } from './choice-draft';
 
 export interface ChooseScheduleProps {
   code: string;
+  currency: string;
   library: LibraryEntry[];
   choice: ChoiceView | null;
   /** Month before the first bill, which the last value of a series of earlier months stands for: "Oct 2025". */
@@ -32,46 +35,6 @@ function schedulesOf(library: LibraryEntry[], choice: ChoiceView | null): Map<st
     });
   }
   return all;
-}
-
-function rangeWords({ range, unit, default: usual }: ContractField): string {
-  const number = (value: number) => formatNumber(value, { upTo: 6 });
-  const words = [
-    range && `${number(range[0])} to ${number(range[1])}${unit ? ` ${unit}` : ''}`,
-    usual !== null && `${number(usual)} if left empty`,
-  ];
-  return words.filter(Boolean).join('; ');
-}
-
-function ContractInput({ field, form }: { field: ContractField; form: Form }) {
-  const name = `contract.${field.name}` as const;
-  const error = messageAt(form.formState.errors, name);
-  if (field.kind === 'flag') return <CheckField label={field.label} error={error} {...form.register(name)} />;
-  if (field.kind === 'date') return <Field type="date" label={field.label} error={error} {...form.register(name)} />;
-  return (
-    <NumberField
-      label={field.label}
-      unit={field.unit || undefined}
-      hint={rangeWords(field)}
-      error={error}
-      {...form.register(name)}
-    />
-  );
-}
-
-function HistoryInput({ field, form, monthBefore }: { field: HistoryField; form: Form; monthBefore: string | null }) {
-  const name = `history.${field.name}` as const;
-  const last = monthBefore ? ` The last stands for ${monthBefore}.` : '';
-  return (
-    <div className="whole">
-      <Field
-        label={`${field.label} of earlier months${field.unit ? `, ${field.unit}` : ''}`}
-        hint={`Oldest first, blanks between: 5,210 5,340 4,980.${last} The schedule looks back ${formatCount(field.months, 'month')}; older ones help to find a ratchet that was not released.`}
-        error={messageAt(form.formState.errors, name)}
-        {...form.register(name)}
-      />
-    </div>
-  );
 }
 
 function libraryOptions(library: LibraryEntry[], choice: ChoiceView | null) {
@@ -100,7 +63,7 @@ function useSaving(props: ChooseScheduleProps, form: Form, schedules: Map<string
   const send = async (draft: ChoiceDraft) => {
     const schedule = schedules.get(draft.scheduleId);
     if (!schedule) return;
-    const input = toChooseInput(draft, schedule, version.current);
+    const input = toChooseInput(draft, schedule, { version: version.current, currency: props.currency });
     setFault(null);
     try {
       await chooseSchedule(props.code, input);
@@ -122,18 +85,18 @@ function useSaving(props: ChooseScheduleProps, form: Form, schedules: Map<string
 
 /** Island: chooses the schedule an engagement is priced on, with what its contract supplies. */
 export function ChooseSchedule(props: ChooseScheduleProps) {
-  const { library, choice, monthBefore } = props;
+  const { library, choice, monthBefore, currency } = props;
   const schedules = schedulesOf(library, choice);
   const resolver: Resolver<ChoiceDraft> = (draft) => {
     const schedule = schedules.get(draft.scheduleId);
     const blank = { id: '', contract: [], history: [] };
-    const faults = faultsOf(toChooseInput(draft, schedule ?? blank, null), schedule);
+    const faults = faultsOf(toChooseInput(draft, schedule ?? blank, { version: null, currency }), schedule);
     return Object.keys(faults).length === 0
       ? { values: draft, errors: {} }
       : { values: {}, errors: nestErrors<ChoiceDraft>(faults) };
   };
   const form = useForm<ChoiceDraft>({
-    defaultValues: draftOf(schedules.get(choice?.scheduleId ?? ''), choice),
+    defaultValues: draftOf(schedules.get(choice?.scheduleId ?? ''), choice, currency),
     resolver,
     mode: 'onTouched',
   });
@@ -153,13 +116,20 @@ export function ChooseSchedule(props: ChooseScheduleProps) {
             error={messageAt(form.formState.errors, 'scheduleId')}
             {...form.register('scheduleId', {
               onChange: (event: { target: { value: string } }) =>
-                form.reset(draftOf(schedules.get(event.target.value), choice), { keepDefaultValues: true }),
+                form.reset(draftOf(schedules.get(event.target.value), choice, currency), { keepDefaultValues: true }),
             })}
           />
         </div>
         {schedule?.contract.map((field) => (
           <ContractInput key={`${scheduleId}.${field.name}`} field={field} form={form} />
         ))}
+        <NumberField
+          label="Tolerance a line"
+          unit={currency}
+          hint={`Up to this a difference is rounding, no finding. At most ${formatMoney(mostToleranceMinor, currency)}.`}
+          error={messageAt(form.formState.errors, 'toleranceMinor')}
+          {...form.register('tolerance')}
+        />
       </div>
       {schedule && schedule.history.length > 0 && (
         <div className="form-grid mt-4">
@@ -179,7 +149,7 @@ export function ChooseSchedule(props: ChooseScheduleProps) {
       {fault?.stale && (
         <StaleCompare
           what="The choice of the schedule"
-          differences={differencesOf(fault.stale.mine, fault.stale.theirs)}
+          differences={differencesOf(fault.stale.mine, fault.stale.theirs, currency)}
           onLoadTheirs={() => location.reload()}
           onSaveMine={() => fault.stale && saveOver(fault.stale.theirs)}
           busy={form.formState.isSubmitting}

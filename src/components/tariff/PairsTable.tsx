@@ -18,6 +18,9 @@ const matchWords: Record<PairView['matchedBy'], string> = {
   none: 'no match',
 };
 
+const matchNote = ({ lineId, matchedBy, remembered }: PairView) =>
+  remembered ?? (lineId === null ? undefined : matchWords[matchedBy]);
+
 /** A rate with the decimals it is written with; one without a unit is a percentage of other lines. */
 function rateText({ rate, unit }: PairView): string | null {
   if (rate === null) return null;
@@ -38,9 +41,7 @@ function ledgerRow(pair: PairView): LedgerRow {
       unit: pair.unit,
       rate: rateText(pair),
       priced: pair.pricedMinor ?? { value: 'not priced', tone: 'quiet' },
-      printed: printed
-        ? { value: printed, note: pair.lineId === null ? undefined : matchWords[pair.matchedBy] }
-        : { value: 'not on the bill', tone: 'quiet' },
+      printed: printed ? { value: printed, note: matchNote(pair) } : { value: 'not on the bill', tone: 'quiet' },
       billed: pair.billedMinor,
       difference: { value: pair.differenceMinor, strong: pair.finding !== null },
     },
@@ -93,7 +94,7 @@ function MatchCorrection({ sheet, row }: { sheet: TariffSheetView; row: SheetRow
           value={current}
           onChange={(event) => save.mutate(event.target.value)}
           options={options}
-          hint="Remembered for every bill of this engagement."
+          hint="Remembered for every bill here, and for the next engagement with this utility."
         />
       </div>
       {save.error instanceof ApiError && (

@@ -8,7 +8,8 @@ import {
   type ContractField,
   type HistoryField,
 } from '../../schemas/tariff';
-import { formatNumber } from '../ui/format';
+import { lineToleranceMinor } from '../../schemas/pricing';
+import { currencyDecimals, formatAmount, formatNumber } from '../ui/format';
 import type { StaleDifference } from '../ui/StaleCompare';
 import { typedNumber } from '../ui/typed-number';
 
@@ -18,6 +19,8 @@ export interface ChoiceDraft {
   contract: Record<string, string | boolean>;
   history: Record<string, string>;
   takeNewText: boolean;
+  /** In major units of the currency. */
+  tolerance: string;
 }
 
 /** Schedule as the form needs it: from the library, or as kept with the engagement. */
@@ -44,7 +47,11 @@ function contractOf(draft: ChoiceDraft, fields: ContractField[]): Record<string,
 }
 
 /** What the form sends. */
-export function toChooseInput(draft: ChoiceDraft, schedule: Choosable, version: number | null): ChooseInput {
+export function toChooseInput(
+  draft: ChoiceDraft,
+  schedule: Choosable,
+  { version, currency }: { version: number | null; currency: string },
+): ChooseInput {
   const history = schedule.history.flatMap(({ name }): [string, number[]][] => {
     const values = typedSeries(draft.history[name] ?? '');
     return values.length > 0 ? [[name, values]] : [];
@@ -55,7 +62,14 @@ export function toChooseInput(draft: ChoiceDraft, schedule: Choosable, version: 
     history: history.length > 0 ? Object.fromEntries(history) : null,
     version,
     takeNewText: draft.takeNewText,
+    toleranceMinor: toleranceOf(draft, currency),
   };
+}
+
+function toleranceOf({ tolerance }: ChoiceDraft, currency: string): number | undefined {
+  if (tolerance.trim() === '') return undefined;
+  const typed = typedNumber(tolerance);
+  return typed === undefined ? NaN : Math.round(typed * 10 ** currencyDecimals(currency));
 }
 
 /** Messages by dotted path, from the schemas the server uses too. */
@@ -73,7 +87,12 @@ export function faultsOf(input: ChooseInput, schedule: Choosable | undefined): R
 }
 
 /** The form as a choice, or the schedule's own values, fill it. */
-export function draftOf(schedule: Choosable | undefined, choice: ChoiceView | null): ChoiceDraft {
+export function draftOf(
+  schedule: Choosable | undefined,
+  choice:
+    (Pick<ChoiceView, 'scheduleId' | 'contract' | 'history'> & Partial<Pick<ChoiceView, 'toleranceMinor'>>) | null,
+  currency: string,
+): ChoiceDraft {
   const isChosen = choice !== null && schedule?.id === choice.scheduleId;
   const typed = (field: ContractField): string | boolean => {
     const value = (isChosen ? choice.contract[field.name] : undefined) ?? field.default;
@@ -88,11 +107,13 @@ export function draftOf(schedule: Choosable | undefined, choice: ChoiceView | nu
     contract: Object.fromEntries((schedule?.contract ?? []).map((field) => [field.name, typed(field)])),
     history: Object.fromEntries((schedule?.history ?? []).map(({ name }) => [name, series(name)])),
     takeNewText: false,
+    tolerance: formatAmount(choice?.toleranceMinor ?? lineToleranceMinor, currency),
   };
 }
 
 /** Where two choices differ, in words. */
-export function differencesOf(mine: ChooseInput, theirs: ChoiceView): StaleDifference[] {
+export function differencesOf(mine: ChooseInput, theirs: ChoiceView, currency: string): StaleDifference[] {
+  const money = (minor: number | undefined) => (minor === undefined ? 'as it is' : formatAmount(minor, currency));
   const names = [...new Set([...Object.keys(mine.contract), ...Object.keys(theirs.contract)])];
   const contract = names.map((name) => ({
     label: theirs.contractFields?.find((field) => field.name === name)?.label ?? name,
@@ -102,6 +123,7 @@ export function differencesOf(mine: ChooseInput, theirs: ChoiceView): StaleDiffe
   const all = [
     { label: 'Schedule', mine: mine.scheduleId, theirs: theirs.scheduleId },
     ...contract,
+    { label: 'Tolerance a line', mine: money(mine.toleranceMinor), theirs: money(theirs.toleranceMinor) },
     { label: 'Earlier months', mine: JSON.stringify(mine.history ?? {}), theirs: JSON.stringify(theirs.history ?? {}) },
   ];
   return all.filter((one) => one.mine !== one.theirs);

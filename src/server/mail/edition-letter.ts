@@ -1,5 +1,6 @@
 import type { EditionContent } from '../../schemas/edition';
 import { formatCount, formatDate, formatLongDate, formatMajor, formatNumber } from '../../components/ui/format';
+import { copper, escape, ink, letterFrame, paragraph, quiet, rule } from './letter-parts';
 import { answer, bankCaution, comesBack, costNow, paybackFinding, pays } from '../../components/report/words';
 
 export interface EditionLetterInput {
@@ -15,14 +16,6 @@ export interface EditionLetter {
   text: string;
   html: string;
 }
-
-const ink = '#1C2A30';
-const quiet = '#4F5B60';
-const copper = '#A34E1F';
-const rule = '#D8D0C0';
-
-const escape = (text: string) =>
-  text.replaceAll('&', '&amp;').replaceAll('<', '&lt;').replaceAll('>', '&gt;').replaceAll('"', '&quot;');
 
 /** Between which months eight of ten samples pay back. */
 function spread(plan: EditionContent['plan']): [label: string, value: string][] {
@@ -87,9 +80,6 @@ function textOf(input: EditionLetterInput): string {
   ].join('\n\n');
 }
 
-const paragraph = (html: string, style = '') =>
-  `<p style="margin:0 0 16px;font-size:16px;line-height:24px;color:${ink};${style}" class="ink">${html}</p>`;
-
 function tableOf(content: EditionContent): string {
   const rows = figures(content).map(
     ([label, value]) =>
@@ -105,23 +95,6 @@ function picture(content: EditionContent): string {
     `<img src="cid:${cid}" class="${kind}" width="552" alt="${words}" style="width:100%;max-width:552px;height:auto;border:0;${hidden}">`;
   return `<div style="margin:0 0 16px">${image('payback', 'by-day', 'display:block;')}${image('payback-dark', 'by-night', 'display:none;')}</div>`;
 }
-
-const nightStyle = `<style>
-:root { color-scheme: light dark; supported-color-schemes: light dark; }
-@media (prefers-color-scheme: dark) {
-  .paper { background: #14191C !important; }
-  .letter { background: #1C2327 !important; border-color: #E08A55 #333D42 #333D42 !important; }
-  .ink { color: #E9E4D8 !important; }
-  .quiet { color: #AEB4B1 !important; }
-  .line { border-color: #333D42 !important; }
-  .warn { background: #383019 !important; border-color: #E0B84C !important; }
-  .warn b { color: #E0B84C !important; }
-  .act { background: #E08A55 !important; color: #14191C !important; }
-  .by-day { display: none !important; }
-  .by-night { display: block !important; }
-}
-@media (max-width: 480px) { .letter-pad { padding: 20px 16px !important; } }
-</style>`;
 
 function htmlOf(input: EditionLetterInput): string {
   const { content, recipientName, link } = input;
@@ -143,12 +116,7 @@ function htmlOf(input: EditionLetterInput): string {
     ),
     `<p style="margin:0;padding-top:12px;border-top:1px solid ${rule};font-size:12px;line-height:18px;color:${quiet}" class="quiet line">You get this letter because you receive reports for ${escape(client)}, ${escape(site.name)}. Ask us to name somebody else.</p>`,
   ].join('\n');
-  return `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width"><meta name="color-scheme" content="light dark"><title>${escape(subjectOf(content))}</title>${nightStyle}</head>
-<body class="paper" style="margin:0;padding:24px 0;background:#F6F3EC;font-family:Lato,'Segoe UI',Helvetica,Arial,sans-serif">
-<table role="presentation" align="center" width="600" cellpadding="0" cellspacing="0" class="letter" style="width:100%;max-width:600px;background:#FFFDF8;border:1px solid ${rule};border-top:7px solid ${copper}"><tr><td class="letter-pad" style="padding:20px 24px">
-<table role="presentation" width="100%" cellpadding="0" cellspacing="0"><tr><td style="font-size:14px;font-weight:700;color:${ink}" class="ink">${escape(practice.name)}</td><td align="right" style="font-size:13px;color:${quiet}" class="quiet">${formatDate(content.madeOn)}</td></tr></table>
-${body}
-</td></tr></table></body></html>`;
+  return letterFrame({ title: subjectOf(content), practice: practice.name, date: formatDate(content.madeOn), body });
 }
 
 const subjectOf = ({ number, site, client }: EditionContent) =>

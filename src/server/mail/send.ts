@@ -22,11 +22,13 @@ export interface InlineImage {
 /** A letter to one person. `text` says everything; `html` may show it better. */
 export interface LetterInput {
   to: { name: string; address: string };
+  /** Who gets the answer, where it is not the practice's own address. */
+  replyTo?: { name: string; address: string };
   subject: string;
   text: string;
   html?: string;
   attachments?: InlineImage[];
-  /** What kind of letter it is: "invitation", "reset", "edition". */
+  /** What kind of letter it is: "invitation", "reset", "edition", "utility". */
   kind: string;
   engagementId?: number;
   editionId?: number;
@@ -69,6 +71,7 @@ async function compose(input: LetterInput): Promise<SentMessageInfo> {
   const message: SendMailOptions = {
     from: { name: practice?.name ?? 'Counterlag', address: getEnv().MAIL_FROM },
     to: [checkRecipient(input.to)],
+    replyTo: input.replyTo && checkRecipient(input.replyTo),
     subject: input.subject.replace(/\s+/g, ' ').trim(),
     text: input.text,
     html: input.html,

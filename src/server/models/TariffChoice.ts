@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import { lineToleranceMinor } from '../../schemas/pricing';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -12,6 +13,9 @@ export class TariffChoice extends Model<InferAttributes<TariffChoice>, InferCrea
   declare contract: Record<string, number>;
   declare history: Record<string, number[]> | null;
   declare lineMatches: Record<string, string>;
+  /** Of the matches those taken over from an earlier engagement with the utility: label to the engagement's id. */
+  declare remembered: CreationOptional<Record<string, number>>;
+  declare toleranceMinor: CreationOptional<number>;
   declare version: CreationOptional<number>;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;
@@ -27,6 +31,8 @@ TariffChoice.init(
     contract: { type: DataTypes.JSON, allowNull: false },
     history: { type: DataTypes.JSON, allowNull: true },
     lineMatches: { type: DataTypes.JSON, allowNull: false },
+    remembered: { type: DataTypes.JSON, allowNull: false, defaultValue: {} },
+    toleranceMinor: { type: DataTypes.INTEGER, allowNull: false, defaultValue: lineToleranceMinor },
     version: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     createdAt: DataTypes.DATE,
     updatedAt: DataTypes.DATE,

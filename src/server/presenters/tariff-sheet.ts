@@ -5,8 +5,11 @@ import { toMinorUnits } from '../../core/units';
 import { namesBehind } from './why';
 
 /** The year as the tariff sheet shows it. */
-export function presentTariffSheet(year: PricedYear, about: { code: string; choiceVersion: number }): TariffSheetView {
-  const rows = year.bills.map((bill) => rowOf(bill, year));
+export function presentTariffSheet(
+  year: PricedYear,
+  { origins, ...about }: { code: string; choiceVersion: number; origins: Record<string, string> },
+): TariffSheetView {
+  const rows = year.bills.map((bill) => rowOf(bill, year, origins));
   const lines = new Map(year.bills.flatMap((bill) => bill.priced.lines.map((line) => [line.id, line.label] as const)));
   return {
     ...about,
@@ -41,7 +44,7 @@ function powerFactorNameOf(bill: ReconciledBill): string | undefined {
   });
 }
 
-function rowOf(reconciled: ReconciledBill, year: PricedYear): SheetRow {
+function rowOf(reconciled: ReconciledBill, year: PricedYear, origins: Record<string, string>): SheetRow {
   const { bill, priced, name, pricedMinor, billedMinor, differenceMinor, findings } = reconciled;
   const own = year.findings.filter((finding) => finding.billId === bill.id);
   return {
@@ -56,7 +59,7 @@ function rowOf(reconciled: ReconciledBill, year: PricedYear): SheetRow {
     billedMinor,
     differenceMinor,
     findings,
-    pairs: reconciled.pairs.map((pair, index) => pairOf(pair, index, own)),
+    pairs: reconciled.pairs.map((pair, index) => pairOf(pair, index, own, origins)),
     notes: priced.notes,
   };
 }
@@ -101,7 +104,7 @@ function groupsOf(lines: PricedLine[], currency: string): SheetRow['groups'] {
   return groups;
 }
 
-function pairOf(pair: LinePair, index: number, findings: Finding[]): PairView {
+function pairOf(pair: LinePair, index: number, findings: Finding[], origins: Record<string, string>): PairView {
   const { line, billed } = pair;
   const label = line?.label ?? billed.map((one) => one.label).join(' + ');
   const finding = findings.find((one) =>
@@ -121,6 +124,7 @@ function pairOf(pair: LinePair, index: number, findings: Finding[]): PairView {
     billedMinor: pair.billedMinor,
     differenceMinor: pair.differenceMinor,
     matchedBy: pair.matchedBy,
+    remembered: billed.map((one) => origins[one.label]).find((words) => words !== undefined) ?? null,
     finding: finding?.letter ?? null,
   };
 }

@@ -7,7 +7,7 @@ import {
   formatNumber,
   formatSpelled,
 } from '../../components/ui/format';
-import type { Finding, PricedYear } from '../../schemas/pricing';
+import type { PricedYear } from '../../schemas/pricing';
 
 const billsWord = (count: number) => (count === 1 ? 'bill' : 'bills');
 
@@ -80,42 +80,4 @@ export function reactiveFinding(parts: { demand: number; reactive: number; other
   const [place, amount] = named.sort((a, b) => Math.abs(b[1]) - Math.abs(a[1]))[0]!;
   const share = Math.round((100 * amount) / total);
   return `${share} % of the ${formatMajor(total, currency)} sit in ${place}.`;
-}
-
-/** One slip of the result column: a finding, or several of one kind in one line of many bills. */
-export interface FindingSlipWords {
-  /** Letter of the first. */
-  letter: string;
-  title: string;
-  amountMinor: number;
-  text: string;
-}
-
-const mostAlone = 2;
-
-/** The findings as slips; more than two of one kind in the same line become one. */
-export function findingSlips({ findings, bills, currency }: PricedYear): FindingSlipWords[] {
-  const groups = new Map<string, Finding[]>();
-  for (const finding of findings) {
-    const key = `${finding.kind} ${finding.lineLabel}`;
-    groups.set(key, [...(groups.get(key) ?? []), finding]);
-  }
-  const nameOf = (finding: Finding) => bills.find(({ bill }) => bill.id === finding.billId)?.name ?? '';
-  return [...groups.values()].flatMap((group) => {
-    if (group.length <= mostAlone) {
-      return group.map(({ letter, title, amountMinor, sentence }) => ({
-        letter,
-        title,
-        amountMinor,
-        text: sentence,
-      }));
-    }
-    const [first] = group;
-    const parts = group.map((one) => `${nameOf(one)} ${formatMoney(one.amountMinor, currency)}`);
-    const amountMinor = group.reduce((sum, one) => sum + one.amountMinor, 0);
-    const text = `${first!.lineLabel ?? 'The bill as a whole'} in ${formatSpelled(group.length)} bills: ${parts.join(', ')}.`;
-    return [
-      { letter: first!.letter, title: `${first!.title}, ${formatSpelled(group.length)} times`, amountMinor, text },
-    ];
-  });
 }

@@ -32,7 +32,7 @@ export function presentLibraryEntry(file: {
 
 /** The choice of an engagement, beside what the library says today. */
 export function presentChoice(choice: TariffChoice, schedule: Schedule | null, librarySha: string | null): ChoiceView {
-  const { scheduleId, sha256, contract, history, lineMatches, version } = choice;
+  const { scheduleId, sha256, contract, history, lineMatches, toleranceMinor, version } = choice;
   return {
     scheduleId,
     title: schedule?.title ?? scheduleId,
@@ -40,6 +40,7 @@ export function presentChoice(choice: TariffChoice, schedule: Schedule | null, l
     contract,
     history,
     lineMatches,
+    toleranceMinor,
     contractFields: schedule ? contractFields(schedule) : [],
     historyFields: schedule ? historyFields(schedule) : [],
     version,

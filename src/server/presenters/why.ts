@@ -48,7 +48,7 @@ function stepOfName(bill: PricedBill, name: string): WhyStepView[] {
 }
 
 /** What stands behind, the furthest first, so that it reads downward to the figure. */
-function stepsBehind(bill: PricedBill, uses: string[]): WhyStepView[] {
+export function stepsBehind(bill: PricedBill, uses: string[]): WhyStepView[] {
   const names = namesBehind(bill, uses).slice(0, mostSteps);
   return names.reverse().flatMap((name) => stepOfName(bill, name));
 }
@@ -69,7 +69,8 @@ function sourceOf({ bill }: ReconciledBill, code: string): Pick<WhyView, 'source
   return { source: `${bill.source.fileName}${row}`, sourceHref: href };
 }
 
-function lineStep(line: PricedLine, currency: string): WhyStepView {
+/** A line's own working, as the last step. */
+export function lineStep(line: PricedLine, currency: string): WhyStepView {
   return {
     label: line.label,
     working: line.explanation,

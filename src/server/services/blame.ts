@@ -21,7 +21,11 @@ export const everythingPrinted = '*';
  * @param baseOf  Lines a percentage line is taken of, by its id; none for other lines. With {@link everythingPrinted}
  *   among them, printed lines the schedule does not know count where that explains the line better.
  */
-export function faultsOf(pairs: LinePair[], baseOf: (lineId: string) => string[]): Fault[] {
+export function faultsOf(
+  pairs: LinePair[],
+  baseOf: (lineId: string) => string[],
+  toleranceMinor = lineToleranceMinor,
+): Fault[] {
   const faults: Fault[] = [];
   const shares = new Map<string, Shares>();
   const alone = pairs.filter((pair) => pair.line === null);
@@ -29,7 +33,7 @@ export function faultsOf(pairs: LinePair[], baseOf: (lineId: string) => string[]
     const base = pair.line ? baseOf(pair.line.id) : [];
     const followed = followedFrom(pair, pairs, base, shares);
     const ownMinor = pair.differenceMinor - sumOf(followed);
-    if (Math.abs(ownMinor) > lineToleranceMinor) {
+    if (Math.abs(ownMinor) > toleranceMinor) {
       const fault = { pair, ownMinor: Math.round(ownMinor), wholeMinor: 0 };
       faults.push(fault);
       followed.set(fault, ownMinor);

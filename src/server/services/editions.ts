@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
 import type { EditionContent, EditionSummary, MailEditionInput } from '../../schemas/edition';
 import type { JobProgress } from '../../schemas/job';
+import type { PricedYear } from '../../schemas/pricing';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
 import { editionLetter } from '../mail/edition-letter';
@@ -17,6 +18,7 @@ import { renderLeaves } from '../reports/render';
 import { editionContent, type EditionBasis } from './edition-content';
 import { openEngagement, openEngagementById, openReleased, type OpenEngagement } from './engagements';
 import { invite } from './account';
+import { findingsOf } from './finding-records';
 import { startJob, type JobControls } from './jobs';
 import { motorsOf } from './motors';
 import { plansOf } from './plans';
@@ -40,7 +42,14 @@ async function basisOf(opened: OpenEngagement, planId: number): Promise<EditionB
   }
   const [priced, inputs, motors] = await Promise.all([pricedYear(opened), pricingInputs(opened), motorsOf(opened)]);
   const schedule = { title: inputs.schedule.title, sha256: inputs.choice.sha256 };
-  return { opened, year, plan, priced, motors, schedule };
+  return { opened, year, plan, priced: await withoutDropped(opened, priced), motors, schedule };
+}
+
+/** The client is not told of what the practice has dropped. */
+async function withoutDropped(opened: OpenEngagement, priced: PricedYear): Promise<PricedYear> {
+  const views = await findingsOf(opened, priced);
+  const dropped = new Set(views.filter(({ state }) => state === 'dropped').map(({ letter }) => letter));
+  return { ...priced, findings: priced.findings.filter(({ letter }) => !dropped.has(letter)) };
 }
 
 /** The number of the next edition of an engagement. */

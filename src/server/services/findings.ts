@@ -1,22 +1,23 @@
 import { formatMoney } from '../../components/ui/format';
 import { fromMinorUnits, wordNumber } from '../../core/units';
-import {
-  lineToleranceMinor,
-  type Finding,
-  type FindingKind,
-  type ReconciledBill,
-  type TriedCause,
-} from '../../schemas/pricing';
+import type { EnergyDifference, Finding, FindingKind, ReconciledBill, TriedCause } from '../../schemas/pricing';
 import type { Fault } from './blame';
 
-type Found = Omit<Finding, 'letter'>;
+/** A finding before it has its letter. */
+export type Found = Omit<Finding, 'letter'>;
 
 const titles: Record<FindingKind, string> = {
   'ratchet-not-released': 'Ratchet not released',
   'wrong-season': 'Wrong season',
   'wrong-version': 'Rates of another version',
   'wrong-quantity': 'Wrong quantity',
+  'wrong-window': 'Demand read in the wrong window',
+  'wrong-rounding': 'Rounded otherwise',
+  'wrong-base': 'Taken of other lines',
+  'wrong-period': 'Another length of the period',
+  'wrong-multiplier': 'Wrong multiplier of the meter',
   'bill-arithmetic': 'The bill does not add up',
+  'energy-differs': 'Energy differs from the meter',
   'line-not-in-schedule': 'Line not in the schedule',
   'line-not-billed': 'Line not billed',
   unexplained: 'Unexplained',
@@ -37,6 +38,7 @@ export function findingOfFault(bill: ReconciledBill, fault: Fault, causes: Tried
     title: titles[kind],
     amountMinor: wholeMinor,
     lineAmountMinor: ownMinor,
+    energy: null,
     sentence: sentenceOf(bill, fault, kind, causes),
     causes: causes.slice(0, mostCauses),
   };
@@ -84,11 +86,11 @@ function impliedQuantity(bill: ReconciledBill, { pair }: Fault): string {
 }
 
 /** A bill whose printed lines do not add up to its printed total. */
-export function findingOfArithmetic(bill: ReconciledBill): Found | null {
+export function findingOfArithmetic(bill: ReconciledBill, toleranceMinor: number): Found | null {
   const { totalMinor, linesMinor, lines, id } = bill.bill;
   if (totalMinor === null || lines.length === 0) return null;
   const amountMinor = totalMinor - linesMinor;
-  if (Math.abs(amountMinor) <= lineToleranceMinor) return null;
+  if (Math.abs(amountMinor) <= toleranceMinor) return null;
   const side = amountMinor > 0 ? 'more' : 'less';
   return {
     billId: id,
@@ -98,6 +100,7 @@ export function findingOfArithmetic(bill: ReconciledBill): Found | null {
     title: titles['bill-arithmetic'],
     amountMinor,
     lineAmountMinor: amountMinor,
+    energy: null,
     sentence: `${bill.name}: the printed total is ${money(Math.abs(amountMinor), bill)} ${side} than its ${lines.length} lines, which add up to ${money(linesMinor, bill)}.`,
     causes: [],
   };
@@ -119,7 +122,31 @@ export function findingOfTotal(bill: ReconciledBill, causes: TriedCause[]): Foun
     title: titles[kind],
     amountMinor,
     lineAmountMinor: amountMinor,
+    energy: null,
     sentence: `${bill.name}: the total is ${money(Math.abs(amountMinor), bill)} ${amountMinor > 0 ? 'too much' : 'too little'}. ${why}`,
     causes: causes.slice(0, mostCauses),
+  };
+}
+
+/** A bill that prints another energy than the meter's intervals add up to, though its amounts agree. */
+export function findingOfEnergy(bill: ReconciledBill, energy: EnergyDifference): Found {
+  const { printedKwh, meteredKwh, worthMinor } = energy;
+  const kwh = (value: number) => `${wordNumber(Math.round(value))} kWh`;
+  const off = printedKwh - meteredKwh;
+  const worth =
+    worthMinor === null
+      ? ''
+      : ` At the schedule's rates that is worth ${money(Math.abs(worthMinor), bill)}, which the bill did not charge: the claim is a bill that says what it stands on.`;
+  return {
+    billId: bill.bill.id,
+    lineId: null,
+    lineLabel: 'Energy as printed',
+    kind: 'energy-differs',
+    title: titles['energy-differs'],
+    amountMinor: 0,
+    lineAmountMinor: 0,
+    energy,
+    sentence: `${bill.name} prints ${kwh(printedKwh)}; the meter's intervals add up to ${kwh(meteredKwh)}, ${kwh(Math.abs(off))} ${off > 0 ? 'less' : 'more'}.${worth}`,
+    causes: [],
   };
 }

@@ -1,33 +1,24 @@
+import { col, fn } from 'sequelize';
 import { formatBillName } from '../../components/ui/format';
-import { localDateStartMs, type BillingPeriod, type LoadSeries } from '../../core/load';
-import { PriceError, priceBills, priceQuantities, readSchedule, ScheduleError } from '../../core/tariff';
-import type { PricedBill, PricingGrid, Schedule } from '../../core/tariff';
+import { localDateStartMs, type LoadSeries } from '../../core/load';
+import { readSchedule, ScheduleError } from '../../core/tariff';
+import type { PricingGrid, Schedule } from '../../core/tariff';
 import type { BillView } from '../../schemas/bill';
-import type { PricedYear, PricingRoute } from '../../schemas/pricing';
+import type { PricedYear } from '../../schemas/pricing';
 import { conflict, ServiceError } from '../errors';
 import { ReadingBlock } from '../models/ReadingBlock';
 import { TariffChoice } from '../models/TariffChoice';
+import { reconcileInPool } from '../workers/pool';
 import { listBills } from './bills';
 import type { OpenEngagement } from './engagements';
+import type { ReconcileBasis } from './price-basis';
 import { keptSpans, loadSeries } from './readings';
-import { reconcileYear } from './reconcile';
-import { digestOf } from './schedules';
+import { digestOf } from './schedule-files';
 
 /** What the year is priced from. `load` is null on the printed route. */
-export interface PricingBasis {
-  route: PricingRoute;
-  schedule: Schedule;
+export interface PricingBasis extends ReconcileBasis {
   scheduleText: string;
-  /** IANA zone of the site; the schedule has one of its own. */
-  siteTimeZone: string;
   choice: TariffChoice;
-  periods: BillingPeriod[];
-  contract: Record<string, number>;
-  history: Record<string, number[]> | undefined;
-  /** Per period: what the bill itself must say, since no meter measures it. */
-  given: Record<string, number>[];
-  bills: BillView[];
-  load: LoadSeries | null;
   grid: PricingGrid | null;
   /** Changes whenever bills, readings or the choice change; key of anything worked out from them. */
   dataKey: string;
@@ -39,7 +30,7 @@ export type PricingInputs = PricingBasis & { load: LoadSeries; grid: PricingGrid
 interface CacheEntry {
   dataKey: string;
   basis: PricingBasis;
-  year?: PricedYear;
+  year?: Promise<PricedYear>;
 }
 
 const cacheSize = 8;
@@ -74,44 +65,25 @@ export async function pricingBasis(opened: OpenEngagement): Promise<PricingBasis
 }
 
 /**
- * The year priced beside what was billed, with findings.
+ * The year priced beside what was billed, with findings: worked out in a thread of its own, once as long as nothing changes.
  *
  * @throws {ServiceError} 409 where something is missing, or a bill cannot be priced
  */
 export async function pricedYear(opened: OpenEngagement): Promise<PricedYear> {
   const entry = await cachedEntry(opened);
-  const { basis } = entry;
-  entry.year ??= reconcileYear(basis, priceBasis(basis), (schedule) => priceOn(basis, schedule));
-  return entry.year;
-}
-
-/** How many findings the year has, and how many bills cannot be compared. @throws {ServiceError} 409 like {@link pricedYear} */
-export async function findingsCount(opened: OpenEngagement): Promise<{ findings: number; incomplete: number }> {
-  const { findings, bills } = await pricedYear(opened);
-  return { findings: findings.length, incomplete: bills.filter((bill) => bill.missingReadings > 0).length };
-}
-
-/**
- * Prices a basis by its route.
- *
- * @throws {ServiceError} 409 with the core's words where a bill cannot be priced
- */
-export function priceBasis(basis: PricingBasis): PricedBill[] {
+  entry.year ??= reconcile(entry.basis);
   try {
-    return priceOn(basis, basis.schedule);
+    return await entry.year;
   } catch (error) {
-    if (!(error instanceof PriceError)) throw error;
-    throw conflict(`The bills cannot be priced: ${error.message}`, { station: 'tariff' });
+    // A thread that was ended is no verdict on the year: the next look tries again.
+    entry.year = undefined;
+    throw error;
   }
 }
 
-/** Prices a basis on any schedule. @throws {PriceError} */
-function priceOn(basis: PricingBasis, schedule: Schedule): PricedBill[] {
-  const { periods, contract, history, given, load } = basis;
-  const told = { contract, given, ...(history ? { history } : {}) };
-  if (load) return priceBills(schedule, load, { periods, ...told });
-  const rows = basis.bills.map((bill) => ({ from: bill.from, to: bill.to, quantities: knownTo(schedule, bill) }));
-  return priceQuantities(schedule, rows, told);
+function reconcile(basis: PricingBasis): Promise<PricedYear> {
+  const { schedule: _schedule, choice: _choice, grid: _grid, dataKey: _dataKey, ...plain } = basis;
+  return reconcileInPool(plain);
 }
 
 async function cachedEntry(opened: OpenEngagement): Promise<CacheEntry> {
@@ -135,6 +107,17 @@ async function cachedEntry(opened: OpenEngagement): Promise<CacheEntry> {
   return entry;
 }
 
+/** What a year stands on whatever the schedule: the bills, the readings under them, what the contract says. */
+export async function pricingGround(
+  opened: OpenEngagement,
+): Promise<Pick<PricingBasis, 'bills' | 'load' | 'contract' | 'history'>> {
+  const choice = await TariffChoice.findOne({ where: { engagementId: opened.engagement.id } });
+  if (choice) return pricingBasis(opened);
+  const bills = await billsOfYear(opened);
+  const load = bills.length > 0 ? await readLoad(opened, bills, opened.site.timeZone) : null;
+  return { bills, load, contract: {}, history: undefined };
+}
+
 /** The bills whose middle day lies in the engagement's year, in order. */
 async function billsOfYear({ engagement }: OpenEngagement): Promise<BillView[]> {
   const middle = (bill: BillView) => (Date.parse(bill.from) + Date.parse(bill.to)) / 2;
@@ -144,14 +127,18 @@ async function billsOfYear({ engagement }: OpenEngagement): Promise<BillView[]> 
 }
 
 async function dataKeyOf(opened: OpenEngagement, bills: BillView[], choice: TariffChoice): Promise<string> {
-  const where = { meterId: opened.meter.id };
-  const [count, newest, changed] = await Promise.all([
-    ReadingBlock.count({ where }),
-    ReadingBlock.max('id', { where }),
-    ReadingBlock.max('updatedAt', { where }),
-  ]);
+  // Blocks are made and taken away, never changed, and no id is given twice: number and newest tell of any change. A column
+  // behind the values would have SQLite walk through all of them.
+  const readings = await ReadingBlock.findOne({
+    where: { meterId: opened.meter.id },
+    attributes: [
+      [fn('COUNT', col('id')), 'count'],
+      [fn('MAX', col('id')), 'newest'],
+    ],
+    raw: true,
+  });
   const ofChoice = [choice.id, choice.version, choice.updatedAt.getTime()];
-  return digestOf(JSON.stringify([count, newest, changed, bills, ofChoice]));
+  return digestOf(JSON.stringify([readings, bills, ofChoice]));
 }
 
 async function readBasis(
@@ -169,6 +156,8 @@ async function readBasis(
     scheduleText: choice.scheduleText,
     siteTimeZone: opened.site.timeZone,
     choice,
+    lineMatches: choice.lineMatches,
+    toleranceMinor: choice.toleranceMinor,
     periods: bills.map(({ from, to }) => ({ from, to })),
     contract: choice.contract,
     history: choice.history ?? undefined,
@@ -219,12 +208,6 @@ async function readLoad(opened: OpenEngagement, bills: BillView[], timeZone: str
   const toMs = localDateStartMs(bills.at(-1)!.to, timeZone);
   const spans = await keptSpans(opened.meter.id, fromMs, toMs);
   return spans.length === 0 ? null : loadSeries(opened.meter.id, fromMs, toMs);
-}
-
-/** Of a bill's printed quantities those the schedule has a name for. */
-function knownTo(schedule: Schedule, bill: BillView): Record<string, number> {
-  const names = new Set(schedule.texts.flatMap((text) => text.quantities.map((quantity) => quantity.name)));
-  return Object.fromEntries(Object.entries(bill.quantities).filter(([name]) => names.has(name)));
 }
 
 /** Of a bill's printed quantities those the schedule expects from the bill, not from the meter. */

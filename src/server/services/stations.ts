@@ -1,6 +1,7 @@
 import { formatPeriod } from '../../components/ui/format';
 import { addMonths, dayNumber, localDateStartMs } from '../../core/load';
 import type { StationView, StripView } from '../../schemas/engagement';
+import type { FindingState } from '../../schemas/finding';
 import { ServiceError } from '../errors';
 import { Bill } from '../models/Bill';
 import { Edition } from '../models/Edition';
@@ -12,7 +13,7 @@ import { TariffChoice } from '../models/TariffChoice';
 import type { Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
 import { openEngagement, type OpenEngagement } from './engagements';
-import { findingsCount } from './pricing';
+import { findingsSummary } from './finding-records';
 import { keptSpans } from './readings';
 
 /** An engagement's page around its sheet: title strip and stations. */
@@ -170,9 +171,9 @@ async function intervalsState(opened: OpenEngagement): Promise<State> {
 }
 
 /** What the year shows; null where it cannot be priced yet (no bills or intervals, or a gap in them). */
-async function findingsOf(opened: OpenEngagement): Promise<Awaited<ReturnType<typeof findingsCount>> | null> {
+async function findingsOf(opened: OpenEngagement): Promise<Awaited<ReturnType<typeof findingsSummary>> | null> {
   try {
-    return await findingsCount(opened);
+    return await findingsSummary(opened);
   } catch (error) {
     if (error instanceof ServiceError) return null;
     throw error;
@@ -184,8 +185,11 @@ async function tariffState(opened: OpenEngagement): Promise<State> {
   if (!choice) return open('no schedule yet');
   const year = await findingsOf(opened);
   if (year === null) return open('schedule chosen');
-  if (year.findings > 0) return open(`${counted(year.findings, 'finding')} open`);
-  return year.incomplete > 0 ? open(`${counted(year.incomplete, 'bill')} without all readings`) : closed('bills agree');
+  const counts = (state: FindingState) => year.findings.filter((finding) => finding.state === state).length;
+  if (counts('open') > 0) return open(`${counted(counts('open'), 'finding')} open`);
+  if (year.incomplete > 0) return open(`${counted(year.incomplete, 'bill')} without all readings`);
+  if (counts('raised') > 0) return closed(`${counts('raised')} with the utility`);
+  return closed(year.findings.length > 0 ? 'findings settled' : 'bills agree');
 }
 
 async function motorsState(opened: OpenEngagement): Promise<State> {

@@ -1,20 +1,21 @@
-import { formatDate, formatMonth, formatMoney } from '../../components/ui/format';
+import { capital, formatDate, formatMonth, formatMoney } from '../../components/ui/format';
 import { addMonths } from '../../core/load';
 import type { Schedule } from '../../core/tariff';
-import { lineToleranceMinor, type PricedYear } from '../../schemas/pricing';
+import type { FindingView, RecoveredView } from '../../schemas/finding';
+import type { PricedYear } from '../../schemas/pricing';
 import type { TariffSheetView } from '../../schemas/tariff-sheet';
+import type { UtilityLetterSummary } from '../../schemas/utility-letter';
 import type { Actor } from '../policies/actor';
 import { reactiveCostData, reactiveParts, type ReactiveParts } from '../presenters/reactive-cost';
+import { straddleWords } from '../presenters/schedule';
 import { presentTariffSheet } from '../presenters/tariff-sheet';
-import {
-  findingSlips,
-  reactiveFinding,
-  tariffHeadline,
-  tariffLead,
-  type FindingSlipWords,
-} from '../presenters/tariff-words';
+import { findingSlips, type FindingSlipWords } from '../presenters/finding-slips';
+import { reactiveFinding, tariffHeadline, tariffLead } from '../presenters/tariff-words';
+import { findingsOf, recoveredOf } from './finding-records';
+import { originsOf } from './line-memory';
 import { pricingBasis } from './pricing';
 import { tariffStation, type TariffStation } from './tariff';
+import { listUtilityLetters } from './utility-letters';
 
 /** The station Tariff with every word of its page. */
 export interface TariffPage {
@@ -22,6 +23,10 @@ export interface TariffPage {
   sheet: TariffSheetView | null;
   reactive: { data: ReturnType<typeof reactiveCostData>; parts: ReactiveParts; finding: string } | null;
   slips: FindingSlipWords[];
+  /** What was found, with its states; those raised that are found no more stand last. */
+  findings: FindingView[];
+  recovered: RecoveredView;
+  letters: UtilityLetterSummary[];
   monthBefore: string | null;
   broken: { where: string; message: string; remedy: string }[];
   words: {
@@ -39,12 +44,23 @@ export async function tariffPage(actor: Actor, code: string): Promise<TariffPage
   const station = await tariffStation(actor, code);
   const { year, choice, library } = station;
   const basis = year ? await pricingBasis(station.opened) : null;
+  const findings = year ? await findingsOf(station.opened, year) : [];
   const first = basis?.periods[0]?.from ?? station.opened.engagement.yearFrom;
   return {
     station,
-    sheet: year && choice && presentTariffSheet(year, { code, choiceVersion: choice.version }),
+    sheet:
+      year && choice && basis
+        ? presentTariffSheet(year, {
+            code,
+            choiceVersion: choice.version,
+            origins: await originsOf(actor, basis.choice),
+          })
+        : null,
     reactive: year && reactiveOf(year),
-    slips: year ? findingSlips(year) : [],
+    slips: year ? findingSlips(year, findings) : [],
+    findings,
+    recovered: recoveredOf(findings),
+    letters: await listUtilityLetters(station.opened.engagement.id),
     monthBefore: formatMonth(addMonths(first, -1)),
     broken: library.flatMap(({ fileName, problems }) =>
       problems.map(({ line, column, path, message, remedy }) => ({
@@ -85,13 +101,6 @@ function headOf({ year, choice }: TariffStation, schedule: Schedule | null): { h
 
 const titleCount = (count: number) => (count === 12 ? 'Twelve bills' : count === 1 ? 'One bill' : `${count} bills`);
 
-const straddleWords: Record<Schedule['straddle'], string> = {
-  intervals: 'A bill across two texts, seasons or rider months is shared by its intervals',
-  days: 'A bill across two texts, seasons or rider months is shared by days',
-  start: 'The text of the first day holds for the whole bill; seasons are shared by days',
-  end: 'The text of the last day holds for the whole bill; seasons are shared by days',
-};
-
 function referencesOf(schedule: Schedule): string[] {
   const { publisher, title, date, status } = schedule.source;
   const source = [publisher, title, date && formatDate(date)].filter(Boolean).join(', ');
@@ -102,16 +111,16 @@ function referencesOf(schedule: Schedule): string[] {
   return [
     status === 'found' ? source : `${source}${status ? ` (${status})` : ''}`,
     ...clauses,
-    straddleWords[schedule.straddle],
+    capital(straddleWords(schedule)),
     'r: set by the ratchet',
   ].filter(Boolean);
 }
 
-function toleranceOf({ bills, currency }: PricedYear): string {
+function toleranceOf({ bills, currency, toleranceMinor }: PricedYear): string {
   const compared = bills.some(({ differenceMinor }) => differenceMinor !== null);
   if (!compared) return 'No bill could be compared.';
   const small = bills.filter(({ findings, differenceMinor }) => findings.length === 0 && differenceMinor);
-  const tolerance = formatMoney(lineToleranceMinor, currency);
+  const tolerance = formatMoney(toleranceMinor, currency);
   const names = small.map(({ name }) => name);
   const head =
     names.length === 0

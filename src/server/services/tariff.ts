@@ -17,8 +17,10 @@ import type { Actor } from '../policies/actor';
 import { contractFields, historyFields } from '../presenters/schedule';
 import { presentChoice, presentLibraryEntry, withDefaults } from '../presenters/tariff';
 import { openEngagement, type OpenEngagement } from './engagements';
+import { remember, rememberedMatches } from './line-memory';
 import { pricedYear } from './pricing';
-import { digestOf, listScheduleFiles, type ScheduleFile } from './schedules';
+import { digestOf, type ScheduleFile } from './schedule-files';
+import { listScheduleFiles } from './schedules';
 
 /** Why the year is not priced, and the station that mends it. */
 export interface Obstacle {
@@ -98,19 +100,22 @@ export async function chooseSchedule(actor: Actor, code: string, input: ChooseIn
     sha256: digestOf(text),
     contract: checkContract(schedule, input.contract),
     history: checkHistory(schedule, input.history),
+    ...(input.toleranceMinor === undefined ? {} : { toleranceMinor: input.toleranceMinor }),
   };
-  const saved = await inTx(() => save(opened, values, input.version));
+  const saved = await inTx(() => save(opened, schedule, values, input));
   return viewOf(saved, files);
 }
 
 type Frozen = Pick<TariffChoice, 'scheduleId' | 'scheduleText' | 'sha256' | 'contract' | 'history'>;
 
-async function save(opened: OpenEngagement, values: Frozen, seen: number | null): Promise<TariffChoice> {
+async function save(opened: OpenEngagement, schedule: Schedule, values: Frozen, input: ChooseInput) {
   const current = await choiceOf(opened);
-  if (!current) return TariffChoice.create({ ...values, engagementId: opened.engagement.id, lineMatches: {} });
-  refuseStale(current, seen, values);
-  const kept = current.scheduleId === values.scheduleId ? current.lineMatches : {};
-  return current.update({ ...values, lineMatches: kept });
+  const engagementId = opened.engagement.id;
+  if (!current)
+    return TariffChoice.create({ ...values, engagementId, ...(await rememberedMatches(schedule, engagementId)) });
+  refuseStale(current, input.version, values);
+  const matches = current.scheduleId === values.scheduleId ? {} : await rememberedMatches(schedule, engagementId);
+  return current.update({ ...values, ...matches });
 }
 
 function refuseStale(current: TariffChoice, seen: number | null, mine: unknown): void {
@@ -176,7 +181,7 @@ function checkHistory(schedule: Schedule, told: ChooseInput['history']): Record<
 }
 
 /**
- * Remembers which line of the schedule a printed label means; null forgets it.
+ * Remembers which line of the schedule a printed label means, here and for the utility's next engagement; null forgets it.
  *
  * @throws {ServiceError} 409 where no schedule is chosen or the choice changed meanwhile, 422 for an unknown line
  */
@@ -193,7 +198,10 @@ export async function matchLine(actor: Actor, code: string, input: LineMatchInpu
   await inTx(async () => {
     refuseStale(await freshen(choice), input.version, { [input.label]: input.lineId });
     const { [input.label]: _former, ...others } = choice.lineMatches;
-    await choice.update({ lineMatches: input.lineId === null ? others : { ...others, [input.label]: input.lineId } });
+    const { [input.label]: _origin, ...remembered } = choice.remembered;
+    const lineMatches = input.lineId === null ? others : { ...others, [input.label]: input.lineId };
+    await choice.update({ lineMatches, remembered });
+    if (schedule) await remember(schedule, opened.engagement.id, input);
   });
   return viewOf(choice, files);
 }

@@ -122,6 +122,7 @@ async function lettersNotSent(listed: ListedEngagement[], today: string): Promis
   return failed.map((letter) => {
     const { row } = byId.get(letter.engagementId as number) as ListedEngagement;
     const date = dateOfInstant(letter.createdAt);
+    const station = letter.kind === 'utility' ? 'tariff' : 'report';
     return {
       id: `letter-${letter.id}`,
       group: 'overdue',
@@ -133,8 +134,8 @@ async function lettersNotSent(listed: ListedEngagement[], today: string): Promis
       where: `${letter.subject}, ${row.code}`,
       why: letter.error ?? 'The mail server did not take it.',
       stake: null,
-      next: 'Send it again from the station Report.',
-      href: `/engagements/${row.code}/report`,
+      next: `Send it again from the station ${station === 'tariff' ? 'Tariff' : 'Report'}.`,
+      href: `/engagements/${row.code}/${station}${station === 'tariff' ? '#findings' : ''}`,
       action: 'Send again',
     };
   });

@@ -1,35 +1,25 @@
-import { dayNumber } from '../../core/load';
 import type { StationView } from '../../schemas/engagement';
 import type { WaitingView } from '../../schemas/today';
 import { formatMajor } from '../../components/ui/format';
 import { dateOfInstant } from '../clock';
-import { ServiceError } from '../errors';
 import { Edition } from '../models/Edition';
 import { Intake } from '../models/Intake';
-import { TariffChoice } from '../models/TariffChoice';
 import type { ListedEngagement } from './engagement-list';
 import type { OpenEngagement } from './engagements';
-import { pricedYear } from './pricing';
+import { waitingFindings } from './waiting-findings';
+import { daysBetween, whereOf, type Told } from './waiting-parts';
 
 /** What an engagement's stations wait for. A station that something more particular waits at is not told twice. */
 export async function waitingAt({ opened, row }: ListedEngagement, today: string): Promise<WaitingView[]> {
   if (opened.engagement.closedAt) return [];
   const files = await halfBroughtIn(opened, today);
-  const findings = await findingsToDecide(opened, row.stations, today);
+  const findings = await waitingFindings(opened, today);
   const editions = await editionsMade(opened, today);
   const told = new Set([...files.stations, ...findings.stations, ...editions.stations]);
   const { standsAt } = row;
   const next = told.has(standsAt.id) ? [] : nextStation(opened, standsAt, today);
   return [...files.rows, ...findings.rows, ...editions.rows, ...next];
 }
-
-interface Told {
-  rows: WaitingView[];
-  stations: string[];
-}
-
-const whereOf = ({ client, site, engagement }: OpenEngagement) => `${client.name}, ${site.name}, ${engagement.code}`;
-const daysBetween = (from: string, to: string) => Math.max(0, dayNumber(to) - dayNumber(from));
 
 async function halfBroughtIn(opened: OpenEngagement, today: string): Promise<Told> {
   const { code, id } = opened.engagement;
@@ -60,41 +50,6 @@ async function halfBroughtIn(opened: OpenEngagement, today: string): Promise<Tol
     };
   });
   return { rows, stations: intakes.map((intake) => intake.kind) };
-}
-
-async function findingsToDecide(opened: OpenEngagement, stations: StationView[], today: string): Promise<Told> {
-  const tariff = stations.find((station) => station.id === 'tariff');
-  if (!tariff || !/finding/.test(tariff.reason)) return { rows: [], stations: [] };
-  const year = await pricedYear(opened).catch((error: unknown) => {
-    if (error instanceof ServiceError) return null;
-    throw error;
-  });
-  if (!year || year.findings.length === 0) return { rows: [], stations: [] };
-  const overBilledMinor = year.findings.reduce((sum, finding) => sum + Math.max(0, finding.amountMinor), 0);
-  const letters = year.findings.map((finding) => finding.letter);
-  const choice = await TariffChoice.findOne({ where: { engagementId: opened.engagement.id } });
-  const date = dateOfInstant(choice?.updatedAt ?? opened.engagement.updatedAt);
-  const one = year.findings.length === 1;
-  const row: WaitingView = {
-    id: `findings-${opened.engagement.id}`,
-    group: 'yours',
-    mark: 'hollow',
-    date,
-    dateIs: 'since',
-    days: daysBetween(date, today),
-    title: one
-      ? `Finding ${letters[0]}: ${year.findings[0]?.title}`
-      : `Findings ${letters[0]} ${letters.length === 2 ? 'and' : 'to'} ${letters.at(-1)} in the bills`,
-    where: whereOf(opened),
-    why: one
-      ? (year.findings[0]?.sentence ?? '')
-      : 'Billed and scheduled amounts differ; each finding says by which cause.',
-    stake: { amountMinor: overBilledMinor, currency: year.currency, note: 'billed above the schedule' },
-    next: 'What the schedule bears out goes into the edition as a claim of the client.',
-    href: tariff.href,
-    action: 'Look into them',
-  };
-  return { rows: [row], stations: ['tariff'] };
 }
 
 function savingOf(edition: Edition): WaitingView['stake'] {

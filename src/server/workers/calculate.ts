@@ -1,8 +1,15 @@
 import { NotConvergedError, PullOutError } from '../../core/machine';
-import { PriceError, ScheduleError } from '../../core/tariff';
+import { PriceError, readSchedule, ScheduleError } from '../../core/tariff';
+import type { CompareResult } from '../../schemas/compare';
+import type { PricedYear } from '../../schemas/pricing';
+import { reconcileYear } from '../services/reconcile';
+import { compareYear } from './compare-year';
+import { priceText } from './price-text';
 import { priceYear } from './price-year';
 import { searchYear } from './search-year';
-import type { Refused, SearchResult, SearchTask, TaskSetting, YearTask } from './tasks';
+import type { Refused, SearchResult, Task, TaskSetting, TextResult } from './tasks';
+
+type Done = TaskSetting[] | SearchResult | TextResult | CompareResult | PricedYear;
 
 /** Errors whose words a person can act on; any other is a fault of the program. */
 const tellable = [PriceError, ScheduleError, PullOutError, NotConvergedError];
@@ -11,11 +18,26 @@ const tellable = [PriceError, ScheduleError, PullOutError, NotConvergedError];
  * The work of a calculation thread. Its program carries no database and no environment. Between threads an error keeps
  * its words but not its class, so one that a person can act on comes back as a result.
  */
-export default function calculate(task: YearTask | SearchTask): TaskSetting[] | SearchResult | Refused {
+export default function calculate(task: Task): Done | Refused {
   try {
-    return task.kind === 'year' ? priceYear(task) : searchYear(task);
+    return doneOf(task);
   } catch (error) {
     if (error instanceof Error && tellable.some((kind) => error instanceof kind)) return { refused: error.message };
     throw error;
+  }
+}
+
+function doneOf(task: Task): Done {
+  switch (task.kind) {
+    case 'year':
+      return priceYear(task);
+    case 'search':
+      return searchYear(task);
+    case 'text':
+      return priceText(task);
+    case 'compare':
+      return compareYear(task);
+    case 'reconcile':
+      return reconcileYear({ ...task.basis, schedule: readSchedule(task.basis.scheduleText) });
   }
 }

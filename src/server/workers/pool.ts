@@ -3,7 +3,20 @@ import { Piscina } from 'piscina';
 import { conflict } from '../errors';
 import { log } from '../log';
 import { locateWorker } from './locate';
-import type { Refused, SearchProgress, SearchResult, SearchTask, TaskSetting, YearTask } from './tasks';
+import type { CompareResult } from '../../schemas/compare';
+import type { PricedYear } from '../../schemas/pricing';
+import type {
+  CompareTask,
+  ReconcileTask,
+  Refused,
+  SearchProgress,
+  SearchResult,
+  SearchTask,
+  TaskSetting,
+  TextResult,
+  TextTask,
+  YearTask,
+} from './tasks';
 
 const shared = globalThis as typeof globalThis & { counterlagPool?: Piscina };
 
@@ -39,6 +52,25 @@ export async function calculateYear(task: YearTask): Promise<TaskSetting[]> {
   return resultOf((await pool().run(task)) as TaskSetting[] | Refused);
 }
 
+/**
+ * Prices a year under several schedules in a thread of its own; a schedule that cannot price it says why in the result.
+ *
+ * @throws {ServiceError} 409 where the standing schedule itself cannot price the year
+ */
+export async function calculateComparison(task: CompareTask): Promise<CompareResult> {
+  return resultOf((await pool().run(task)) as CompareResult | Refused);
+}
+
+/**
+ * Prices a year and lays it beside what was billed in a thread of its own.
+ *
+ * @throws {ServiceError} 409 where the schedule cannot be read or a bill not be priced
+ */
+export async function reconcileInPool(basis: ReconcileTask['basis']): Promise<PricedYear> {
+  const task: ReconcileTask = { kind: 'reconcile', basis };
+  return resultOf((await pool().run(task)) as PricedYear | Refused);
+}
+
 /** Searches in a thread of its own and tells how far it is. An abort ends the thread. */
 export async function calculateSearch(
   task: Omit<SearchTask, 'port' | 'kind'>,
@@ -52,6 +84,23 @@ export async function calculateSearch(
     return resultOf((await pool().run(withPort, { signal, transferList: [port2] })) as SearchResult | Refused);
   } finally {
     port1.close();
+  }
+}
+
+const longestTextMs = 10_000;
+
+/**
+ * Tries a schedule's text in a thread of its own, which is ended where that takes too long.
+ *
+ * @throws {ServiceError} 409 where it does
+ */
+export async function calculateText(task: Omit<TextTask, 'kind'>): Promise<TextResult> {
+  const signal = AbortSignal.timeout(longestTextMs);
+  try {
+    return resultOf((await pool().run({ ...task, kind: 'text' }, { signal })) as TextResult | Refused);
+  } catch (error) {
+    if (!signal.aborted) throw error;
+    throw conflict('Pricing this text takes longer than ten seconds. Say fewer quantities by the hour or interval.');
   }
 }
 

@@ -2,9 +2,10 @@ import type { MessagePort } from 'node:worker_threads';
 import type { BillingPeriod, LoadSeries } from '../../core/load';
 import type { SynchronousMotor } from '../../core/machine';
 import type { MotorPlanResult } from '../../core/plan';
-import type { PricedBill } from '../../core/tariff';
+import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
 import type { SearchView } from '../../schemas/plan';
+import type { ReconcileBasis } from '../services/price-basis';
 
 /** A motor as the calculations see it. */
 export interface TaskMotor {
@@ -71,6 +72,61 @@ export interface SearchProgress {
 }
 
 export type SearchResult = SearchView;
+
+/** What a month is priced from: its readings where there are any, and what the bills up to it print. */
+export interface TextMonth {
+  /** Bills in order, the month's own the last. */
+  rows: PrintedRow[];
+  contract: Record<string, number>;
+  history: Record<string, number[]> | null;
+  load: LoadSeries | null;
+}
+
+/** A schedule's text to try: on its own worked bills, and on a month beside the text that is kept. */
+export interface TextTask {
+  kind: 'text';
+  text: string;
+  keptText: string | null;
+  month: TextMonth | null;
+}
+
+/** A month under one text, or why it has no price. */
+export type TextPrice = { bill: PricedBill } | { refused: string };
+
+export interface TextResult {
+  examples: ExampleResult[];
+  yours: TextPrice | null;
+  kept: TextPrice | null;
+}
+
+/** A schedule of a comparison with what it is priced from. Where `rows` are null it is priced from the load. */
+export interface CompareSchedule {
+  id: string;
+  scheduleText: string;
+  contract: Record<string, number>;
+  history?: Record<string, number[]>;
+  given: Record<string, number>[];
+  rows: PrintedRow[] | null;
+}
+
+export interface CompareTask {
+  kind: 'compare';
+  periods: BillingPeriod[];
+  /** Of the standing schedule, whose local days the periods are. */
+  timeZone: string;
+  load: LoadSeries | null;
+  /** The standing schedule first. */
+  schedules: CompareSchedule[];
+}
+
+/** A year to price and lay beside what was billed; the thread reads the schedule's text itself. */
+export interface ReconcileTask {
+  kind: 'reconcile';
+  basis: Omit<ReconcileBasis, 'schedule'> & { scheduleText: string };
+}
+
+/** Anything a calculation thread does. */
+export type Task = YearTask | SearchTask | TextTask | CompareTask | ReconcileTask;
 
 /** Why a task cannot be done, in words for a person. */
 export interface Refused {

@@ -70,6 +70,8 @@ export function useScheduleCheck(slug: string | null, text: string, month: Month
 export interface KeptDraft {
   /** ISO instant of the last keeping; null where nothing is kept. */
   at: string | null;
+  /** Words of it are nowhere but in the browser. */
+  isUnkept: boolean;
   error: ApiError | null;
 }
 
@@ -77,11 +79,13 @@ const draftRestMs = 1500;
 
 /** Keeps a draft on the server while it is typed. `isChanged`: the text differs from the kept one. */
 export function useKeptDraft(id: string, draft: DraftInput, isChanged: boolean, keptAt: string | null): KeptDraft {
-  const [state, setState] = useState<KeptDraft>({ at: keptAt, error: null });
+  const [state, setState] = useState<KeptDraft>({ at: keptAt, isUnkept: false, error: null });
   const { text, baseNumber } = draft;
   const lastKept = useRef(text);
   useEffect(() => {
-    if (text === lastKept.current) return undefined;
+    const isUnkept = text !== lastKept.current;
+    setState((before) => (before.isUnkept === isUnkept ? before : { ...before, isUnkept }));
+    if (!isUnkept) return undefined;
     const timer = setTimeout(() => {
       const work = isChanged
         ? keepDraft(id, { text, baseNumber }).then(({ at }) => at)
@@ -89,7 +93,7 @@ export function useKeptDraft(id: string, draft: DraftInput, isChanged: boolean, 
       work.then(
         (at) => {
           lastKept.current = text;
-          setState({ at, error: null });
+          setState({ at, isUnkept: false, error: null });
         },
         (error: unknown) => setState((before) => ({ ...before, error: error instanceof ApiError ? error : null })),
       );

@@ -183,6 +183,8 @@ describe('drafts', () => {
     const { text } = await openScheduleFile(actor, id);
     await keepRevision(actor, id, { text: dearer(text), note: '', baseNumber: 1 });
     expect(await draftOf(actor, id)).toBeNull();
+    await keepDraft(actor, id, { text: dearer(text), baseNumber: 1 });
+    expect(await draftOf(actor, id)).toBeNull();
   });
 
   it('can be thrown away, and are refused where there is no schedule', async () => {

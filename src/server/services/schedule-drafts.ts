@@ -6,10 +6,19 @@ import { User } from '../models/User';
 import type { Actor } from '../policies/actor';
 import { openScheduleFile } from './schedules';
 
-/** Keeps what a person is writing, errors and all. @throws {ServiceError} 404 where there is no such schedule */
+/**
+ * Keeps what a person is writing, errors and all. What says no more than the kept text is no draft: one that comes late, after
+ * its text was kept, leaves none behind.
+ *
+ * @throws {ServiceError} 404 where there is no such schedule
+ */
 export async function keepDraft(actor: Actor, id: string, { text, baseNumber }: DraftInput): Promise<{ at: string }> {
-  await openScheduleFile(actor, id);
+  const kept = await openScheduleFile(actor, id);
   const where = { scheduleSlug: id, userId: actor.id };
+  if (text === kept.text) {
+    await inTx(() => ScheduleDraft.destroy({ where }));
+    return { at: new Date().toISOString() };
+  }
   const draft = await inTx(async () => {
     const known = await ScheduleDraft.findOne({ where });
     return known ? known.update({ text, baseNumber }) : ScheduleDraft.create({ ...where, text, baseNumber });

@@ -1,95 +1,24 @@
-import { useEffect, useMemo, useRef, useState } from 'react';
-import { ApiError } from '../../../client/api';
-import { dropDraft, keepRevision, useKeptDraft, useScheduleCheck } from '../../../client/schedules';
+import { useMemo, useRef, useState } from 'react';
+import { dropDraft, useKeptDraft, useScheduleCheck } from '../../../client/schedules';
 import type { EditorView, MonthChoice } from '../../../schemas/schedule-editor';
 import { Button, ButtonLink } from '../../ui/Button';
 import { Field } from '../../ui/Field';
-import { FindingSlip } from '../../ui/FindingSlip';
-import { formatAmount, formatTime } from '../../ui/format';
+import { formatTime } from '../../ui/format';
 import { Notice } from '../../ui/Notice';
-import { ResultSums, type SumRow } from '../../ui/ResultSums';
 import { YearFigure } from '../YearFigure';
 import { completeSchedule } from './complete';
 import { editorHead, keepLabel } from './editor-words';
+import { EditorResult } from './EditorResult';
 import { ExamplesPanel } from './ExamplesPanel';
+import { KeepFault, useKeeping, useLeaveWarning } from './keeping';
 import { MonthPanel } from './MonthPanel';
-import { SheetWords } from './SheetWords';
+import { ScheduleWords } from '../ScheduleWords';
 import { TextEditor, type TextHandle } from './TextEditor';
 
 function firstMonth({ months }: EditorView): MonthChoice | null {
   const [source] = months;
   const bill = source?.bills.at(-1);
   return source && bill ? { code: source.code, billId: bill.id } : null;
-}
-
-/** Keeps the text as a revision; tells what stood in the way. */
-function useKeeping(editor: EditorView, text: string) {
-  const [note, setNote] = useState('');
-  const [busy, setBusy] = useState(false);
-  const [fault, setFault] = useState<ApiError | null>(null);
-  const keep = async (baseNumber = editor.draft?.baseNumber ?? editor.revision) => {
-    if (busy) return;
-    setBusy(true);
-    setFault(null);
-    try {
-      await keepRevision(editor.id, { text, note, baseNumber });
-      location.assign(`/schedules/${editor.id}`);
-    } catch (error) {
-      if (!(error instanceof ApiError)) throw error;
-      setFault(error);
-      setBusy(false);
-    }
-  };
-  return { note, setNote, busy, fault, keep };
-}
-
-/** Warns before a page with words in it that are nowhere kept is left. */
-function useLeaveWarning(isUnkept: boolean) {
-  useEffect(() => {
-    if (!isUnkept) return undefined;
-    const warn = (event: BeforeUnloadEvent) => event.preventDefault();
-    window.addEventListener('beforeunload', warn);
-    return () => window.removeEventListener('beforeunload', warn);
-  }, [isUnkept]);
-}
-
-function KeepFault({ fault, onOver }: { fault: ApiError; onOver: (revision: number) => void }) {
-  if (fault.status === 401) {
-    return (
-      <Notice kind="fault" title="You are signed out.">
-        {' '}
-        Your text is still here.{' '}
-        <a href="/sign-in" target="_blank" rel="noreferrer">
-          Sign in in another window
-        </a>
-        , then press again.
-      </Notice>
-    );
-  }
-  const theirs = fault.details.theirs as { revision?: number } | undefined;
-  if (fault.code === 'stale' && theirs?.revision !== undefined) {
-    const { revision } = theirs;
-    return (
-      <Notice kind="fault" title={`Somebody kept revision ${revision} while you were writing.`}>
-        {
-          ' Your text is still here and rests on an earlier one. Look what changed in the history, put it into yours, then '
-        }
-        <button type="button" className="text-button" onClick={() => onOver(revision)}>
-          keep yours after it
-        </button>
-        .
-      </Notice>
-    );
-  }
-  return (
-    <Notice
-      kind="fault"
-      title={fault.message}
-      problems={Object.values(fault.fields)
-        .flat()
-        .map((message) => ({ message }))}
-    />
-  );
 }
 
 /** Island: a schedule's text to write in, beside what it says and what a month costs under it. */
@@ -103,7 +32,7 @@ export function ScheduleEditor({ editor }: { editor: EditorView }) {
   const baseNumber = editor.draft?.baseNumber ?? editor.revision;
   const draft = useKeptDraft(editor.id, { text, baseNumber }, isChanged, editor.draft?.at ?? null);
   const keeping = useKeeping(editor, text);
-  useLeaveWarning(draft.error !== null);
+  useLeaveWarning(draft.isUnkept && !keeping.busy);
   const { view } = check;
   const isCurrent = check.checkedText === text && !check.busy;
   const head = editorHead({ editor, view, isChanged, isCurrent });
@@ -113,7 +42,6 @@ export function ScheduleEditor({ editor }: { editor: EditorView }) {
   );
   const goTo = (line: number) => handle.current?.goTo(line);
   const keptName = editor.revision === 0 ? "Library's file" : `Revision ${editor.revision}`;
-  const sums = view?.month ? sumsOf(view.month, keptName) : [];
   const giveUp = async () => {
     await dropDraft(editor.id);
     location.assign(`/schedules/${editor.id}`);
@@ -199,7 +127,7 @@ export function ScheduleEditor({ editor }: { editor: EditorView }) {
               />
               <h2 className="section-title">Worked bills it must reproduce</h2>
               <ExamplesPanel examples={view?.examples ?? []} onGo={goTo} />
-              {view?.sheet && <SheetWords sheet={view.sheet} onGo={goTo} />}
+              {view?.sheet && <ScheduleWords sheet={view.sheet} onGo={goTo} />}
               {view?.sheet?.year && (
                 <>
                   <h3 className="section-title">The year by day and hour</h3>
@@ -209,27 +137,7 @@ export function ScheduleEditor({ editor }: { editor: EditorView }) {
             </div>
           </div>
         </div>
-        <div className="result">
-          {sums.length > 0 && <ResultSums title={view?.month?.name} rows={sums} />}
-          {problems.map((problem, index) => (
-            <FindingSlip
-              key={index}
-              letter={String(index + 1)}
-              title={`Line ${problem.line}, column ${problem.column}`}
-            >{`${problem.message} ${problem.remedy}`}</FindingSlip>
-          ))}
-          {view?.sheet?.notes.map((note, index) => (
-            <FindingSlip key={index} title="Note of the reader" caution>
-              {note.where && <b>{note.where}: </b>}
-              {note.message}
-            </FindingSlip>
-          ))}
-          {editor.othersWriting.length > 0 && (
-            <FindingSlip title="Others are writing on it too">
-              {editor.othersWriting.join(', ')}. Whoever keeps second is shown what the first one kept.
-            </FindingSlip>
-          )}
-        </div>
+        <EditorResult editor={editor} view={view} problems={problems} keptName={keptName} />
       </section>
     </>
   );
@@ -244,26 +152,4 @@ function draftWords(at: string | null, isLost: boolean, isChanged: boolean): str
   return at
     ? `Draft kept ${formatTime(at)}. It waits for you on any machine.`
     : 'The draft is kept when the typing rests.';
-}
-
-function sumsOf(
-  {
-    keptMinor,
-    yoursMinor,
-    billedMinor,
-    currency,
-  }: NonNullable<NonNullable<ReturnType<typeof useScheduleCheck>['view']>['month']>,
-  keptName: string,
-): SumRow[] {
-  const amount = (minor: number) => formatAmount(minor, currency);
-  return [
-    ...(keptMinor === null ? [] : [{ label: keptName, value: amount(keptMinor) }]),
-    ...(billedMinor === null ? [] : [{ label: 'As billed', value: amount(billedMinor) }]),
-    {
-      label: `Your text, ${currency}`,
-      value: yoursMinor === null ? 'waits' : amount(yoursMinor),
-      kind: 'total' as const,
-      tone: yoursMinor === null ? ('fault' as const) : undefined,
-    },
-  ];
 }

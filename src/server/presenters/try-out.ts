@@ -35,7 +35,7 @@ export function presentTryOut(about: TryAbout): TryView {
     currency: schedule.currency,
     days,
     measured: measuredFields(month?.asked ?? []),
-    lookBacks: lookBackFields(tried?.now, schedule.currency),
+    lookBacks: lookBackFields(tried?.now),
     contract: fields,
     whole: { kvarh: ratio === null || month!.energyKwh === null ? null : month!.energyKwh * ratio, pf },
     target: input.target,
@@ -75,11 +75,11 @@ function measuredFields(asked: AskedQuantity[]): TryField[] {
   });
 }
 
-function lookBackFields(now: TriedBill | undefined, currency: string): TryField[] {
+function lookBackFields(now: TriedBill | undefined): TryField[] {
   return (now?.lookBacks ?? []).map(({ name, label, unit, months, value, basis }) => ({
     key: `p.${name}`,
     label: `${label ?? wordsOfName(name)} of earlier months`,
-    unit: unit || currency,
+    unit,
     value,
     state: value === null ? 'missing' : basis,
     words: basis === 'typed' ? `all ${months} months before` : `the same as this month, ${months} months back`,

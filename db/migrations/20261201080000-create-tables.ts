@@ -14,7 +14,9 @@ import {
   whole,
   type Columns,
 } from './tables/columns';
+import { billChecks, billTables } from './tables/bills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
+import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
 
 /** Columns of the tables, in the order in which the tables can be made. */
 const tables: Record<string, Columns> = {
@@ -85,68 +87,8 @@ const tables: Record<string, Columns> = {
     user_id: link('users', false, 'CASCADE'),
     ...stamps,
   },
-  column_maps: {
-    ...id,
-    name: text(),
-    kind: text(),
-    signature: text(),
-    map: json(),
-    created_by_id: link('users', true),
-    ...stamps,
-  },
-  intakes: {
-    ...id,
-    engagement_id: link('engagements', false, 'CASCADE'),
-    kind: text(),
-    file_name: text(),
-    bytes: whole(),
-    sha256: text(),
-    state: text(),
-    column_map: json(true),
-    preview: json(true),
-    report: json(true),
-    problems: json(true),
-    brought_by_id: link('users', true),
-    kept_at: instant(true),
-    undone_at: instant(true),
-    ...version,
-    ...stamps,
-  },
-  reading_blocks: {
-    ...id,
-    meter_id: link('meters'),
-    intake_id: link('intakes', false, 'CASCADE'),
-    channel: text(),
-    month: text(),
-    start_ms: { type: DataTypes.BIGINT, allowNull: false },
-    step_minutes: whole(),
-    count: whole(),
-    missing: whole(),
-    total: real(true),
-    values: bytes(),
-    ...stamps,
-  },
-  bills: {
-    ...id,
-    engagement_id: link('engagements', false, 'CASCADE'),
-    intake_id: link('intakes', true, 'CASCADE'),
-    period_from: date(),
-    period_to: date(),
-    quantities: json(),
-    currency: text(),
-    total_minor: whole(true),
-    source_row: text(true),
-    ...version,
-    ...stamps,
-  },
-  bill_lines: {
-    ...id,
-    bill_id: link('bills', false, 'CASCADE'),
-    position: whole(),
-    label: text(),
-    amount_minor: whole(),
-    ...stamps,
-  },
+  ...intakeTables,
+  ...billTables,
   tariff_choices: {
     ...id,
     engagement_id: { ...link('engagements', false, 'CASCADE'), unique: true },
@@ -300,10 +242,8 @@ const tables: Record<string, Columns> = {
 /** Indexes beside those of the foreign keys: each of these leads an index, its own or one of these. */
 const indexes: Record<string, string[][]> = {
   sessions: [['expires']],
-  column_maps: [['signature']],
-  intakes: [['sha256']],
+  ...intakeIndexes,
   ...findingIndexes,
-  reading_blocks: [['meter_id', 'channel', 'start_ms']],
   hour_entries: [['user_id', 'day']],
   trail_rows: [['subject', 'subject_id'], ['actor_id'], ['at']],
 };
@@ -312,10 +252,10 @@ const indexes: Record<string, string[][]> = {
 const checks: Record<string, string[]> = {
   users: ["role IN ('partner','consultant','client')", "(role = 'client') = (client_id IS NOT NULL)"],
   tokens: ["kind IN ('invitation','reset')"],
-  intakes: ["kind IN ('intervals','bills')", "state IN ('read','refused','kept','undone','given-up')"],
+  ...intakeChecks,
   jobs: ["state IN ('running','done','failed','cancelled')"],
   letters: ["state IN ('sent','failed')"],
-  bills: ['period_from < period_to'],
+  ...billChecks,
   ...findingChecks,
   hour_entries: ['minutes > 0', 'minutes <= 1440'],
   engagements: ['year_from < year_to'],

@@ -147,12 +147,23 @@ export interface IntakeReport {
   currency?: string;
 }
 
+/** A line charge as printed; quantity, unit and rate where the bill shows them. */
+export interface BillCharge {
+  label: string;
+  amount: number;
+  quantity?: number;
+  unit?: string;
+  rate?: number;
+}
+
 /** A bill as printed. */
 export interface BillRecord {
   period: { from: string; to: string };
   quantities: Record<string, number>;
-  charges: { label: string; amount: number }[];
+  charges: BillCharge[];
   total: number | null;
+  /** Number of the invoice as printed. */
+  invoice?: string;
 }
 
 /** How the bytes of a file were turned into cells. */

@@ -48,3 +48,6 @@ export function billsWithin(engagementId: number, from: string, to: string): Pro
   const where = { engagementId, periodFrom: { [Op.lt]: to }, periodTo: { [Op.gt]: from } };
   return Bill.findAll({ where, order: ['periodFrom'] });
 }
+
+/** Marks a file as kept. Call inside inTx. */
+export const markKept = (intake: Intake) => intake.update({ state: 'kept', keptAt: new Date(), undoneAt: null });

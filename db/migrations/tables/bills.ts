@@ -1,0 +1,30 @@
+import { date, id, json, link, stamps, text, version, whole, type Columns } from './columns';
+
+/** Bills as the utility issued them. */
+export const billTables: Record<string, Columns> = {
+  bills: {
+    ...id,
+    engagement_id: link('engagements', false, 'CASCADE'),
+    intake_id: link('intakes', true, 'CASCADE'),
+    period_from: date(),
+    period_to: date(),
+    quantities: json(),
+    currency: text(),
+    total_minor: whole(true),
+    source_row: text(true),
+    ...version,
+    ...stamps,
+  },
+  bill_lines: {
+    ...id,
+    bill_id: link('bills', false, 'CASCADE'),
+    position: whole(),
+    label: text(),
+    amount_minor: whole(),
+    ...stamps,
+  },
+};
+
+export const billChecks: Record<string, string[]> = {
+  bills: ['period_from < period_to'],
+};

@@ -220,6 +220,18 @@ export interface PeakOfYear {
   day: DayReading[];
 }
 
+/** What is kept of the engagement's year of one meter, in figures. */
+export interface MeterOfYear {
+  id: number;
+  label: string;
+  intervals: number;
+  present: number;
+  kwh: number | null;
+  kvarhLagging: number | null;
+  /** Highest mean of an interval. */
+  maxKw: number | null;
+}
+
 /** What is kept of the engagement's year. */
 export interface KeptYear {
   stepMinutes: number;

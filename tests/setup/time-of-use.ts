@@ -118,6 +118,8 @@ function billView(
     totalMinor: linesMinor,
     differenceMinor: 0,
     source: null,
+    pages: [],
+    places: {},
   };
 }
 

@@ -12,6 +12,7 @@ export const billTables: Record<string, Columns> = {
     currency: text(),
     total_minor: whole(true),
     source_row: text(true),
+    places: json(true),
     ...version,
     ...stamps,
   },

@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { Places } from '../../schemas/attachment';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -13,6 +14,8 @@ export class Bill extends Model<InferAttributes<Bill>, InferCreationAttributes<B
   declare currency: string;
   declare totalMinor: number | null;
   declare sourceRow: string | null;
+  /** Where on its pages a value was taken from, by field. */
+  declare places: CreationOptional<Places | null>;
   declare version: CreationOptional<number>;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;
@@ -29,6 +32,7 @@ Bill.init(
     currency: { type: DataTypes.TEXT, allowNull: false },
     totalMinor: { type: DataTypes.INTEGER, allowNull: true },
     sourceRow: { type: DataTypes.TEXT, allowNull: true },
+    places: { type: DataTypes.JSON, allowNull: true },
     version: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     createdAt: DataTypes.DATE,
     updatedAt: DataTypes.DATE,

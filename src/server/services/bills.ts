@@ -7,21 +7,24 @@ import { BillLine } from '../models/BillLine';
 import { Intake } from '../models/Intake';
 import type { Actor } from '../policies/actor';
 import { presentBill } from '../presenters/bill';
+import { assertPlaces, attachmentsOf, releasePages, takeWaitingPages } from './attachments';
 import { billsWithin, openForChange } from './intake-guard';
 import { daysInWords } from './intake-words';
 
 async function present(bills: Bill[]): Promise<BillView[]> {
   const billIds = bills.map((bill) => bill.id);
   const intakeIds = bills.flatMap((bill) => bill.intakeId ?? []);
-  const [lines, intakes] = await Promise.all([
+  const [lines, intakes, pages] = await Promise.all([
     BillLine.findAll({ where: { billId: billIds }, order: ['position', 'id'] }),
     Intake.findAll({ where: { id: intakeIds }, attributes: ['id', 'fileName'] }),
+    attachmentsOf(billIds),
   ]);
   return bills.map((bill) =>
     presentBill(
       bill,
       lines.filter((line) => line.billId === bill.id),
       intakes.find((intake) => intake.id === bill.intakeId),
+      pages.filter((one) => one.billId === bill.id),
     ),
   );
 }
@@ -60,8 +63,8 @@ async function writeLines(billId: number, lines: BillInput['lines']): Promise<vo
 }
 
 function valuesOf(input: BillInput) {
-  const { from, to, quantities, totalMinor } = input;
-  return { periodFrom: from, periodTo: to, quantities, totalMinor };
+  const { from, to, quantities, totalMinor, places = null } = input;
+  return { periodFrom: from, periodTo: to, quantities, totalMinor, places };
 }
 
 /** Keeps a bill with its lines. Call inside inTx. */
@@ -70,14 +73,17 @@ export async function createBill(
   belongs: { engagementId: number; currency: string; intakeId: number | null; sourceRow: string | null },
 ): Promise<Bill> {
   await assertNoOverlap(belongs.engagementId, input);
+  await assertPlaces(belongs.engagementId, input.places);
   const bill = await Bill.create({ ...belongs, ...valuesOf(input) });
   await writeLines(bill.id, input.lines);
+  await takeWaitingPages(bill, input.attachmentIds ?? []);
   return bill;
 }
 
 /** Removes a bill with its lines. Call inside inTx. */
 export async function destroyBill(bill: Bill): Promise<void> {
   for (const line of await BillLine.findAll({ where: { billId: bill.id } })) await line.destroy();
+  await releasePages(bill.id);
   await bill.destroy();
 }
 
@@ -104,6 +110,7 @@ export async function changeBill(
   await inTx(async () => {
     await refuseStale(bill, change);
     await assertNoOverlap(bill.engagementId, change.bill, bill.id);
+    await assertPlaces(bill.engagementId, change.bill.places);
     bill.set(valuesOf(change.bill));
     // A change of lines alone is a change of the bill too: its version must move.
     bill.changed('quantities', true);
@@ -116,6 +123,7 @@ export async function changeBill(
       else await BillLine.create({ billId: id, position, ...line });
     }
     for (const row of kept.slice(lines.length)) await row.destroy();
+    await takeWaitingPages(bill, change.bill.attachmentIds ?? []);
   });
   return first(await present([bill]));
 }

@@ -68,22 +68,18 @@ export function joinedBill(parts: BillView[], joinNote: string | null): BillView
   const [first] = parts;
   const last = parts.at(-1);
   if (!first || !last) throw new RangeError('parts must hold at least one bill, got none');
-  const { from, currency, id, version } = first;
   const lines = linesOf(parts);
   const linesMinor = lines.reduce((sum, line) => sum + line.amountMinor, 0);
   const totals = parts.flatMap((part) => part.totalMinor ?? []);
   const totalMinor = totals.length === parts.length ? totals.reduce((sum, total) => sum + total, 0) : null;
   return {
-    id,
-    version,
-    from,
+    ...first,
     to: last.to,
-    days: daysBetween(from, last.to),
+    days: daysBetween(first.from, last.to),
     invoice: null,
     readOn: last.readOn,
     estimated: parts.some((part) => part.estimated),
     quantities: quantitiesOf(parts),
-    currency,
     lines,
     linesMinor,
     totalMinor,

@@ -8,6 +8,11 @@ export interface BillLineView {
   id: number;
   label: string;
   amountMinor: number;
+  /** What the amount was worked out from, where the bill prints it. */
+  quantity?: number | null;
+  unit?: string | null;
+  /** Per unit, in major units of the currency; with the unit `%` a percentage of the quantity. */
+  rate?: number | null;
 }
 
 /** A kept bill with its lines, period [from, to). */
@@ -30,9 +35,19 @@ export interface BillView {
   /** The file the bill came in; null where it was typed. */
   source: { intakeId: number; fileName: string; row: string | null } | null;
   /** The bill itself, as PDF or photo. */
-  pages: BillPages[];
+  pages?: BillPages[];
   /** Where on the pages a value was taken from, by field. */
-  places: Places;
+  places?: Places;
+  /** Number of the invoice as printed; null where none is known, or where several are joined. */
+  invoice?: string | null;
+  /** Day the meter was read. */
+  readOn?: string | null;
+  /** Whether the utility estimated the reading. */
+  estimated?: boolean;
+  /** The invoices that make this bill together, in order; absent where one invoice is the bill. */
+  parts?: BillView[];
+  /** Why they are one bill, as a person wrote it. */
+  joinNote?: string | null;
 }
 
 /** Days of a half-open period. */
@@ -63,8 +78,8 @@ export const billQuantities: readonly BillQuantity[] = [
 ];
 
 const unitEndings: [RegExp, string][] = [
-  [/^kwh/i, 'kWh'],
-  [/^kvarh/i, 'kvarh'],
+  [/kwh/i, 'kWh'],
+  [/kvarh/i, 'kvarh'],
   [/kvar$/i, 'kvar'],
   [/kva$/i, 'kVA'],
   [/kw$/i, 'kW'],
@@ -95,6 +110,11 @@ const quantity = z
   .min(0, 'A printed quantity is not negative.')
   .max(1e12, 'The quantity is too large.');
 
+const signedNumber = z
+  .number('Write a number, such as 0.00376.')
+  .min(-1e12, 'The number is too large.')
+  .max(1e12, 'The number is too large.');
+
 /** A bill typed or changed by hand, period half-open. */
 export const billInput = z
   .object({
@@ -115,6 +135,9 @@ export const billInput = z
             .min(1, 'Name the line as the bill does.')
             .max(120, 'The name is longer than 120 characters.'),
           amountMinor,
+          quantity: signedNumber.nullish(),
+          unit: z.string().trim().max(20, 'The unit is longer than 20 characters.').nullish(),
+          rate: signedNumber.nullish(),
         }),
       )
       .max(60, 'A bill has at most 60 lines here; add small ones together.'),
@@ -122,11 +145,18 @@ export const billInput = z
     places: placesShape.optional(),
     /** Waiting pages that go with the bill. */
     attachmentIds: z.array(z.number().int().positive()).max(50, 'A bill takes at most 50 files of pages.').optional(),
+    invoice: z.string().trim().max(60, 'The number is longer than 60 characters.').nullish(),
+    readOn: localDate.nullish(),
+    estimated: z.boolean().optional(),
   })
   .refine((bill) => bill.from < bill.to, { path: ['to'], message: 'The last day lies before the first.' })
   .refine((bill) => !(bill.from < bill.to) || daysBetween(bill.from, bill.to) <= 400, {
     path: ['to'],
     message: 'A bill covers at most 400 days. Look at the years of the two dates.',
+  })
+  .refine((bill) => !bill.readOn || Math.abs(daysBetween(bill.to, bill.readOn)) <= 120, {
+    path: ['readOn'],
+    message: 'The meter is read about the end of the period. Look at the month and the year.',
   })
   .refine((bill) => bill.lines.length > 0 || bill.totalMinor !== null, {
     path: ['totalMinor'],
@@ -138,6 +168,29 @@ export type BillInput = z.infer<typeof billInput>;
 /** A changed bill carries the version its editor saw. */
 export const billChange = z.object({ version: z.number().int().min(0), bill: billInput });
 export const billRemoval = z.object({ version: z.number().int().min(0) });
+
+/** The most days that invoices joined to one bill may cover: two months. */
+export const mostJoinedDays = 70;
+
+/** Invoices that make one bill together, each with the version seen. */
+export const billJoin = z.object({
+  bills: z
+    .array(z.object({ id: z.number().int().positive(), version: z.number().int().min(0) }))
+    .min(2, 'Name the invoices that make one bill: two or more.')
+    .max(6, 'At most six invoices make one bill.')
+    .refine((bills) => new Set(bills.map(({ id }) => id)).size === bills.length, 'Name each invoice once.'),
+  note: z.string().trim().max(500, 'The reason is longer than 500 characters.').default(''),
+});
+export type BillJoin = z.infer<typeof billJoin>;
+
+/** Bills that look like the invoices of one bill. */
+export interface JoinSuggestion {
+  ids: number[];
+  from: string;
+  to: string;
+  /** On how many of them demand is billed: on one, where they are one bill. */
+  demandBilledOn: number;
+}
 
 /** A stretch of the engagement's year that no bill covers, or that two cover, [from, to). */
 export interface PeriodFlaw {

@@ -118,8 +118,6 @@ function billView(
     totalMinor: linesMinor,
     differenceMinor: 0,
     source: null,
-    pages: [],
-    places: {},
   };
 }
 

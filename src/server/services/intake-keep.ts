@@ -1,16 +1,14 @@
 import { toConfirm, type IntakeView, type LoadDays } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
-import { Bill } from '../models/Bill';
 import type { Intake } from '../models/Intake';
 import { ReadingBlock } from '../models/ReadingBlock';
 import type { Actor } from '../policies/actor';
-import { destroyBill } from './bills';
 import { present } from './intake';
 import { openIntake, openIntakeForChange } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
 import { daysOf } from './intervals';
-import { keepBills } from './keep-bills';
+import { keepBills, takeBillsBack } from './keep-bills';
 import { keepIntervals } from './keep-intervals';
 
 /**
@@ -54,7 +52,7 @@ export async function undoIntake(actor: Actor, id: number, version: number): Pro
   await inTx(async () => {
     const blocks = await ReadingBlock.findAll({ where: { intakeId: id }, attributes: { exclude: ['values'] } });
     for (const block of blocks) await block.destroy();
-    for (const bill of await Bill.findAll({ where: { intakeId: id } })) await destroyBill(bill);
+    await takeBillsBack(intake);
     await intake.update({ state: 'undone', undoneAt: new Date() });
   });
   return present(open);

@@ -3,7 +3,6 @@ import { addMonths, dayNumber, localDateStartMs } from '../../core/load';
 import type { StationView, StripView } from '../../schemas/engagement';
 import type { FindingState } from '../../schemas/finding';
 import { ServiceError } from '../errors';
-import { Bill } from '../models/Bill';
 import { Edition } from '../models/Edition';
 import { HourEntry } from '../models/HourEntry';
 import { Intake } from '../models/Intake';
@@ -12,6 +11,7 @@ import { Plan } from '../models/Plan';
 import { TariffChoice } from '../models/TariffChoice';
 import type { Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
+import { listPeriods } from './bills';
 import { openEngagement, type OpenEngagement } from './engagements';
 import { findingsSummary } from './finding-records';
 import { keptSpans } from './readings';
@@ -103,14 +103,13 @@ export function standsAt(stations: StationView[]): StationView {
 const waitingFiles = (opened: OpenEngagement, kind: 'bills' | 'intervals') =>
   Intake.count({ where: { engagementId: opened.engagement.id, kind, state: 'read' } });
 
-type Period = Pick<Bill, 'periodFrom' | 'periodTo'>;
+type Period = Awaited<ReturnType<typeof listPeriods>>[number];
 
-const middleOf = (bill: Period) => (dayNumber(bill.periodFrom) + dayNumber(bill.periodTo)) / 2;
+const middleOf = (bill: Period) => (dayNumber(bill.from) + dayNumber(bill.to)) / 2;
 
 /** Bills whose middle day lies in [from, to), in order: the rule by which the year is priced. */
 async function billsBetween(opened: OpenEngagement, from: string, to: string): Promise<Period[]> {
-  const where = { engagementId: opened.engagement.id };
-  const bills = await Bill.findAll({ where, attributes: ['periodFrom', 'periodTo'], order: ['periodFrom'] });
+  const bills = await listPeriods(opened.engagement.id);
   return bills.filter((bill) => middleOf(bill) >= dayNumber(from) && middleOf(bill) < dayNumber(to));
 }
 
@@ -118,10 +117,10 @@ async function billsBetween(opened: OpenEngagement, from: string, to: string): P
 function coverage(bills: Period[]): { covered: number; gaps: number } {
   let covered = 0;
   let gaps = 0;
-  let reached = dayNumber(bills[0]?.periodFrom ?? '1970-01-01');
+  let reached = dayNumber(bills[0]?.from ?? '1970-01-01');
   for (const bill of bills) {
-    const from = dayNumber(bill.periodFrom);
-    const to = dayNumber(bill.periodTo);
+    const from = dayNumber(bill.from);
+    const to = dayNumber(bill.to);
     gaps += Math.max(0, from - reached);
     covered += Math.max(0, to - Math.max(from, reached));
     reached = Math.max(reached, to);

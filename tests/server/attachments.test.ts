@@ -174,7 +174,7 @@ describe('pages', () => {
       message: expect.stringMatching(/has the same file already/) as string,
     });
     const bills = await listBills(engagement.id);
-    expect(bills.map(({ pages }) => pages.map(({ fileName, kind }) => `${kind} ${fileName}`))).toEqual([
+    expect(bills.map(({ pages }) => pages?.map(({ fileName, kind }) => `${kind} ${fileName}`))).toEqual([
       ['PDF year.pdf'],
       ['PDF year.pdf'],
     ]);

@@ -1,4 +1,4 @@
-import type { BillInput, BillView } from '../schemas/bill';
+import type { BillInput, BillView, MeteredPeriod } from '../schemas/bill';
 import type { IntakeView, LoadDays, MatchInput } from '../schemas/intake';
 import { call, sendFile } from './api';
 
@@ -55,6 +55,18 @@ const billsPath = (code: string) => `/api/engagements/${encodeURIComponent(code)
 
 /** Keeps a bill typed by hand. */
 export const addBill = (code: string, bill: BillInput) => call<BillView>('POST', billsPath(code), bill);
+
+/** Joins invoices to one bill. */
+export const joinBills = (code: string, bills: Seen[], note: string) =>
+  call<BillView>('POST', `${billsPath(code)}/join`, { bills: bills.map(({ id, version }) => ({ id, version })), note });
+
+/** Takes a joined bill apart again. */
+export const takeBillApart = (code: string, { id, version }: Seen) =>
+  call<BillView[]>('POST', `${billsPath(code)}/${id}/apart`, { version });
+
+/** What the kept readings say of a period; null where there are none. */
+export const fetchMetered = (code: string, { from, to }: { from: string; to: string }) =>
+  call<MeteredPeriod | null>('GET', `${billsPath(code)}/metered?${new URLSearchParams({ from, to })}`);
 
 /** Changes a kept bill against the version seen. */
 export const changeBill = (code: string, { id, version }: Seen, bill: BillInput) =>

@@ -1,4 +1,5 @@
 export { addDays, addMonths, dayNumber, isCalendarDate, isoDate, weekdayOf } from './dates';
+export { meteredDays, meteredOver, type Metered, type MeteredPeak } from './metered';
 export { changeBetween, isTimeZone, localDateOf, localDateStartMs, zoneOffsetMs } from './zone';
 
 /** Qualities of an interval: measured, estimated, missing. */

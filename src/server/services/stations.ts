@@ -14,7 +14,7 @@ import type { Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
 import { openEngagement, type OpenEngagement } from './engagements';
 import { findingsSummary } from './finding-records';
-import { keptSpans } from './readings';
+import { keptSpans, presentFraction } from './readings';
 
 /** An engagement's page around its sheet: title strip and stations. */
 export interface EngagementFrame {
@@ -154,17 +154,15 @@ async function intervalsState(opened: OpenEngagement): Promise<State> {
     return open(waiting > 0 ? `${counted(waiting, 'file')} to check` : 'bring in intervals');
   }
   let coveredMs = 0;
-  let missingMs = 0;
   let reached = fromMs;
   for (const span of spans) {
     const begins = Math.max(span.startMs, reached);
     const ends = Math.min(span.endMs, toMs);
     if (ends <= begins) continue;
     coveredMs += ends - begins;
-    missingMs += (span.missing * span.stepMinutes * 60_000 * (ends - begins)) / (span.endMs - span.startMs);
     reached = ends;
   }
-  const present = Math.max(0, coveredMs - missingMs) / (toMs - fromMs);
+  const present = await presentFraction(meter.id, fromMs, toMs);
   // Rounded down, so that 100 % is only said where nothing at all is missing.
   const reason = `${(Math.floor(present * 10_000) / 100).toFixed(2).replace(/\.00$/, '')} % present`;
   return coveredMs >= toMs - fromMs ? closed(reason) : open(reason);

@@ -84,6 +84,8 @@ export const roleTable: Record<string, Row> = {
   'POST /api/engagements/[code]/editions': members,
   'GET /api/engagements/[code]/hours': members,
   'POST /api/engagements/[code]/hours': members,
+  'POST /api/engagements/[code]/meters': members,
+  'DELETE /api/engagements/[code]/meters/[id]': members,
   'POST /api/engagements/[code]/members': members,
   'DELETE /api/engagements/[code]/members/[id]': members,
   'GET /api/engagements/[code]/motors': members,

@@ -123,7 +123,16 @@ describe('engagementFrame', () => {
     const { plate, calendar } = motorOf(millMotor);
     await inTx(async () => {
       for (const name of ['M-1', 'M-2'])
-        await Motor.create({ engagementId, position: 1, name, drives: null, plate, calendar, fieldTodayA: 90 });
+        await Motor.create({
+          engagementId,
+          meterId: engagement.meterId,
+          position: 1,
+          name,
+          drives: null,
+          plate,
+          calendar,
+          fieldTodayA: 90,
+        });
     });
     expect(await stateOf('motors')).toBe('closed: 2 motors');
     const plan = await inTx(() =>

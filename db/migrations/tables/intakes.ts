@@ -15,6 +15,7 @@ export const intakeTables: Record<string, Columns> = {
   intakes: {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),
+    meter_id: link('meters'),
     kind: text(),
     file_name: text(),
     bytes: whole(),

@@ -10,6 +10,7 @@ export {
   type LoadGrid,
   type LoadLayer,
 } from './overlay';
+export { sumLoads } from './sum-loads';
 export { changeBetween, isTimeZone, localDateOf, localDateStartMs, zoneOffsetMs } from './zone';
 export {
   assertLoadSeries,

@@ -47,8 +47,16 @@ function scheduleTitle(choice: TariffChoice | null): string {
   return title?.replace(/^(['"])(.*)\1$/, '$2') || choice.scheduleId;
 }
 
+function meterField(meter: OpenEngagement['meter'], meters: OpenEngagement['meters']): StripView {
+  if (meters.length > 1) return { label: 'Meters, summed', value: meters.map(({ label }) => label).join(' + ') };
+  return {
+    label: 'Meter',
+    value: meter.serviceVoltageKv ? `${meter.label}, ${meter.serviceVoltageKv} kV` : meter.label,
+  };
+}
+
 function stripOf(
-  { engagement, client, site, meter, members }: OpenEngagement,
+  { engagement, client, site, meter, meters, members }: OpenEngagement,
   choice: TariffChoice | null,
   stations: StationView[],
   current?: string,
@@ -57,7 +65,7 @@ function stripOf(
   const strip = [
     { label: 'Client', value: client.name },
     { label: 'Site', value: [site.name, site.place].filter(Boolean).join(', ') },
-    { label: 'Meter', value: meter.serviceVoltageKv ? `${meter.label}, ${meter.serviceVoltageKv} kV` : meter.label },
+    meterField(meter, meters),
     { label: 'Schedule', value: scheduleTitle(choice) },
     { label: 'Year', value: formatPeriod(engagement.yearFrom, engagement.yearTo, { year: true }) },
     { label: 'Engagement', value: engagement.code },

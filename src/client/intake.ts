@@ -1,5 +1,5 @@
 import type { BillInput, BillView, MeteredPeriod } from '../schemas/bill';
-import type { IntakeView, LoadDays, MatchInput } from '../schemas/intake';
+import type { IntakeOverlap, IntakeView, LoadDays, MatchInput, OverlapChoice } from '../schemas/intake';
 import { call, sendFile } from './api';
 
 type Kind = 'intervals' | 'bills';
@@ -24,12 +24,16 @@ export const intakePage = (code: string, id: number) => `/engagements/${encodeUR
 export const originalPath = (id: number) => `/api/intakes/${id}/original`;
 
 const step =
-  (name: 'keep' | 'undo' | 'give-up') =>
+  (name: 'undo' | 'give-up') =>
   ({ id, version }: Seen) =>
     call<IntakeView>('POST', `/api/intakes/${id}/${name}`, { version });
 
-/** Keeps what a file holds. */
-export const keepIntake = step('keep');
+/** Keeps what a file holds; `overlap` says which stands where something is kept already. */
+export const keepIntake = ({ id, version }: Seen, overlap?: OverlapChoice) =>
+  call<IntakeView>('POST', `/api/intakes/${id}/keep`, { version, overlap });
+
+/** What is kept and what comes, side by side. */
+export const fetchOverlap = (id: number) => call<IntakeOverlap>('GET', `/api/intakes/${id}/overlap`);
 
 /** Takes back what a kept file brought in. */
 export const undoIntake = step('undo');

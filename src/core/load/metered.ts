@@ -1,5 +1,5 @@
 import { addDays } from './dates';
-import { quality, type LoadSeries } from './index';
+import { quality, type LoadSeries } from './series';
 import { localDateStartMs } from './zone';
 
 /** The highest mean over windows of one length, laid from local midnight on. */

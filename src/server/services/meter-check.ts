@@ -3,21 +3,19 @@ import type { BillView, MeterCheck, MeteredPeriod } from '../../schemas/bill';
 import { ServiceError } from '../errors';
 import type { Actor } from '../policies/actor';
 import { openEngagement, type OpenEngagement } from './engagements';
+import { meteredLoad } from './metered-load';
 import { figuresOf, meteredFigures } from './meter-figures';
 import { remarksOf } from './meter-remarks';
-import { loadSeries } from './readings';
 
-/** The kept readings by local day; null where none of the period is kept, or files of different length lie in it. */
-async function daysOf(
-  { meter, site }: OpenEngagement,
-  period: { from: string; to: string },
-): Promise<Metered[] | null> {
-  const startOf = (date: string) => localDateStartMs(date, site.timeZone);
-  const load = await loadSeries(meter.id, startOf(period.from), startOf(period.to)).catch((error: unknown) => {
+/** The kept readings of all meters by local day; null where none of the period is kept or they cannot be added up. */
+async function daysOf(opened: OpenEngagement, period: { from: string; to: string }): Promise<Metered[] | null> {
+  const { timeZone } = opened.site;
+  const [fromMs, toMs] = [localDateStartMs(period.from, timeZone), localDateStartMs(period.to, timeZone)];
+  const metered = await meteredLoad(opened, fromMs, toMs).catch((error: unknown) => {
     if (error instanceof ServiceError) return null;
     throw error;
   });
-  return load && meteredDays(load, period, site.timeZone);
+  return metered && meteredDays(metered.load, period, timeZone);
 }
 
 /** Bills beside the readings of their periods: the readings are gone through once, a day's sums serve every question. */

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { isCalendarDate } from '../core/load';
+import { placesShape, type BillPages, type Places } from './attachment';
 import type { IntakeRow } from './intake';
 
 /** A line charge as printed. */
@@ -33,6 +34,10 @@ export interface BillView {
   differenceMinor: number | null;
   /** The file the bill came in; null where it was typed. */
   source: { intakeId: number; fileName: string; row: string | null } | null;
+  /** The bill itself, as PDF or photo. */
+  pages?: BillPages[];
+  /** Where on the pages a value was taken from, by field. */
+  places?: Places;
   /** Number of the invoice as printed; null where none is known, or where several are joined. */
   invoice?: string | null;
   /** Day the meter was read. */
@@ -145,6 +150,9 @@ export const billInput = z
       )
       .max(60, 'A bill has at most 60 lines here; add small ones together.'),
     totalMinor: amountMinor.nullable(),
+    places: placesShape.optional(),
+    /** Waiting pages that go with the bill. */
+    attachmentIds: z.array(z.number().int().positive()).max(50, 'A bill takes at most 50 files of pages.').optional(),
     invoice: z.string().trim().max(60, 'The number is longer than 60 characters.').nullish(),
     readOn: localDate.nullish(),
     estimated: z.boolean().optional(),

@@ -12,6 +12,7 @@ export const billTables: Record<string, Columns> = {
     currency: text(),
     total_minor: whole(true),
     source_row: text(true),
+    places: json(true),
     invoice: text(true),
     read_on: date(true),
     estimated: flag(false),

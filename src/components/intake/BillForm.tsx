@@ -1,5 +1,5 @@
 import { useRef, useState, type ReactNode } from 'react';
-import { useForm, type Resolver } from 'react-hook-form';
+import { FormProvider, useForm, type Resolver } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { addBill, changeBill } from '../../client/intake';
@@ -101,7 +101,7 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
     <BillFieldTargetContext.Provider value={target}>
       {beside ? (
         <div className="bill-pair">
-          <div className="min-w-0">{beside}</div>
+          <FormProvider {...form}>{beside}</FormProvider>
           {typed}
         </div>
       ) : (

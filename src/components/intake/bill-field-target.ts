@@ -1,4 +1,5 @@
 import { createContext, useContext } from 'react';
+import type { Offer } from './pages/offer';
 
 /** A field of the form for a bill. */
 export interface BillField {
@@ -12,13 +13,17 @@ export interface BillField {
 export interface BillFieldTarget {
   /** The field that has the focus, or had it last; null before the form was entered. */
   focused: BillField | null;
+  /** What became of the last number that was offered, in words. */
+  said: string;
   /**
-   * Writes a text into a field as if it had been typed, and puts the focus there.
+   * Writes a number or date of a page into a field as if it had been typed, remembers where it stands, and puts the focus
+   * there. A field that cannot take it stays as it is.
    *
    * @param path  The field; none: the focused one
-   * @returns Whether there was a field to take it
    */
-  fill(text: string, path?: string): boolean;
+  fill(offer: Offer, path?: string): void;
+  /** Puts the focus back into the field that had it. */
+  back(): void;
 }
 
 export const BillFieldTargetContext = createContext<BillFieldTarget | null>(null);

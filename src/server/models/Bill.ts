@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
+import type { Places } from '../../schemas/attachment';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
@@ -17,6 +18,8 @@ export class Bill extends Model<InferAttributes<Bill>, InferCreationAttributes<B
   declare currency: string;
   declare totalMinor: number | null;
   declare sourceRow: string | null;
+  /** Where on its pages a value was taken from, by field. */
+  declare places: CreationOptional<Places | null>;
   /** Number of the invoice as printed. */
   declare invoice: CreationOptional<string | null>;
   /** Day the meter was read. */
@@ -45,6 +48,7 @@ Bill.init(
     currency: { type: DataTypes.TEXT, allowNull: false },
     totalMinor: { type: DataTypes.INTEGER, allowNull: true },
     sourceRow: { type: DataTypes.TEXT, allowNull: true },
+    places: { type: DataTypes.JSON, allowNull: true },
     invoice: { type: DataTypes.TEXT, allowNull: true },
     readOn: { type: DataTypes.DATEONLY, allowNull: true },
     estimated: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },

@@ -85,6 +85,8 @@ export function joinedBill(parts: BillView[], joinNote: string | null): BillView
     totalMinor,
     differenceMinor: totalMinor === null || lines.length === 0 ? null : linesMinor - totalMinor,
     source: sourceOf(parts),
+    pages: parts.flatMap((part) => part.pages ?? []),
+    places: {},
     parts,
     joinNote,
   };

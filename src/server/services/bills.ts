@@ -7,6 +7,7 @@ import { BillLine } from '../models/BillLine';
 import { Intake } from '../models/Intake';
 import type { Actor } from '../policies/actor';
 import { presentBill } from '../presenters/bill';
+import { assertPlaces, attachmentsOf, releasePages, takeWaitingPages } from './attachments';
 import { joinedBill } from '../presenters/joined-bill';
 import { assertStillMeets, releaseInvoices } from './joined-invoices';
 import { billsWithin, openForChange } from './intake-guard';
@@ -16,15 +17,17 @@ import { daysInWords } from './intake-words';
 export async function presentBills(bills: Bill[]): Promise<BillView[]> {
   const billIds = bills.map((bill) => bill.id);
   const intakeIds = bills.flatMap((bill) => bill.intakeId ?? []);
-  const [lines, intakes] = await Promise.all([
+  const [lines, intakes, pages] = await Promise.all([
     BillLine.findAll({ where: { billId: billIds }, order: ['position', 'id'] }),
     Intake.findAll({ where: { id: intakeIds }, attributes: ['id', 'fileName'] }),
+    attachmentsOf(billIds),
   ]);
   return bills.map((bill) =>
     presentBill(
       bill,
       lines.filter((line) => line.billId === bill.id),
       intakes.find((intake) => intake.id === bill.intakeId),
+      pages.filter((one) => one.billId === bill.id),
     ),
   );
 }
@@ -93,9 +96,9 @@ function lineValues({ label, amountMinor, quantity, unit, rate }: BillInput['lin
 }
 
 function valuesOf(input: BillInput) {
-  const { from, to, quantities, totalMinor, invoice, readOn, estimated } = input;
+  const { from, to, quantities, totalMinor, places = null, invoice, readOn, estimated } = input;
   const head = { invoice: invoice || null, readOn: readOn ?? null, estimated: estimated ?? false };
-  return { periodFrom: from, periodTo: to, quantities, totalMinor, ...head };
+  return { periodFrom: from, periodTo: to, quantities, totalMinor, places, ...head };
 }
 
 /** Keeps a bill with its lines. Call inside inTx. */
@@ -104,8 +107,10 @@ export async function createBill(
   belongs: { engagementId: number; currency: string; intakeId: number | null; sourceRow: string | null },
 ): Promise<Bill> {
   await assertNoOverlap(belongs.engagementId, input);
+  await assertPlaces(belongs.engagementId, input.places);
   const bill = await Bill.create({ ...belongs, ...valuesOf(input) });
   await writeLines(bill.id, input.lines);
+  await takeWaitingPages(bill, input.attachmentIds ?? []);
   return bill;
 }
 
@@ -114,6 +119,7 @@ export async function destroyBill(bill: Bill): Promise<void> {
   await freshen(bill);
   await releaseInvoices(bill);
   for (const line of await BillLine.findAll({ where: { billId: bill.id } })) await line.destroy();
+  await releasePages(bill.id);
   await bill.destroy();
 }
 
@@ -140,6 +146,7 @@ export async function changeBill(
   await inTx(async () => {
     await refuseStale(bill, change);
     await assertNoOverlap(bill.engagementId, change.bill, bill.id);
+    await assertPlaces(bill.engagementId, change.bill.places);
     await assertStillMeets(bill, change.bill);
     bill.set(valuesOf(change.bill));
     // A change of lines alone is a change of the bill too: its version must move.
@@ -153,6 +160,7 @@ export async function changeBill(
       else await BillLine.create({ billId: id, position, ...lineValues(line) });
     }
     for (const row of kept.slice(lines.length)) await row.destroy();
+    await takeWaitingPages(bill, change.bill.attachmentIds ?? []);
   });
   return first(await presentBills([bill]));
 }

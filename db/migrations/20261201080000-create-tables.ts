@@ -82,6 +82,12 @@ const tables: Record<string, Columns> = {
     ...version,
     ...stamps,
   },
+  engagement_meters: {
+    ...id,
+    engagement_id: link('engagements', false, 'CASCADE'),
+    meter_id: link('meters'),
+    ...stamps,
+  },
   memberships: {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),
@@ -136,6 +142,7 @@ const tables: Record<string, Columns> = {
   motors: {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),
+    meter_id: link('meters'),
     position: whole(),
     name: text(),
     drives: text(true),
@@ -298,6 +305,7 @@ export async function up(database: QueryInterface): Promise<void> {
     for (const fields of [...keys, ...(indexes[name] ?? [])]) await database.addIndex(name, fields);
     await addChecks(database, name);
   }
+  await database.addIndex('engagement_meters', ['engagement_id', 'meter_id'], { unique: true, name: 'meters_once' });
   await database.addIndex('memberships', ['engagement_id', 'user_id'], { unique: true, name: 'memberships_once' });
   await database.addIndex('line_memories', ['utility', 'label'], { unique: true, name: 'line_memories_once' });
   await database.addIndex('findings', ['engagement_id', 'period_from', 'period_to', 'line_key', 'family'], {

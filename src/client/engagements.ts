@@ -1,4 +1,4 @@
-import type { EngagementForm } from '../schemas/engagement';
+import type { EngagementForm, MeterInput, MetersView } from '../schemas/engagement';
 import { call } from './api';
 
 /** Begins an engagement; the same request twice makes one. */
@@ -15,3 +15,11 @@ export const addMember = (code: string, userId: number) =>
 /** Takes a person off; the answer tells how many entries of hours stay. */
 export const removeMember = (code: string, userId: number) =>
   call<{ hours: number }>('DELETE', `/api/engagements/${code}/members/${userId}`);
+
+/** Adds a meter to those billed together. */
+export const addMeter = (code: string, meter: MeterInput) =>
+  call<MetersView>('POST', `/api/engagements/${encodeURIComponent(code)}/meters`, meter);
+
+/** Takes a meter off. */
+export const removeMeter = (code: string, meterId: number) =>
+  call<MetersView>('DELETE', `/api/engagements/${encodeURIComponent(code)}/meters/${meterId}`);

@@ -115,6 +115,14 @@ const signedNumber = z
   .min(-1e12, 'The number is too large.')
   .max(1e12, 'The number is too large.');
 
+/** A period asked about, half-open. */
+export const billPeriod = z
+  .object({ from: localDate, to: localDate })
+  .refine(({ from, to }) => from < to && daysBetween(from, to) <= 400, {
+    path: ['to'],
+    message: 'The period ends after it begins and covers at most 400 days.',
+  });
+
 /** A bill typed or changed by hand, period half-open. */
 export const billInput = z
   .object({
@@ -220,11 +228,40 @@ export function periodFlaws(
   return flaws;
 }
 
-/** Energy of one bill as printed and as the kept readings sum it. */
+/** One printed quantity beside what the kept readings say. */
+export interface MeterFigure {
+  name: string;
+  printed: number;
+  /** From the readings that are present; null where the meter does not record it. */
+  metered: number | null;
+  /** Null where readings are missing or it is not metered, and nothing contradicts. */
+  agrees: boolean | null;
+}
+
+/** One bill beside the kept readings of its period. */
 export interface MeterCheck {
   billId: number;
-  billedKwh: number;
-  meterKwh: number;
+  /** Readings of the period: all, missing, estimated. */
+  expected: number;
+  missing: number;
+  estimated: number;
+  figures: MeterFigure[];
+  /** What differs and what would make it agree, a sentence each. */
+  remarks: string[];
+}
+
+/** What the kept readings say of a period, for the form; `null` where none of it is kept or metered. */
+export interface MeteredPeriod {
+  expected: number;
+  missing: number;
+  estimated: number;
+  kwh: number;
+  kvarh: number | null;
+  kvarhLeading: number | null;
+  maxKw: number | null;
+  maxKva: number | null;
+  powerFactorAtPeak: number | null;
+  powerFactorOfPeriod: number | null;
 }
 
 /** The station Bills. */
@@ -238,6 +275,8 @@ export interface BillsStation {
   /** The others: earlier ones, and later ones for the proof. */
   laterBills: BillView[];
   files: IntakeRow[];
-  /** Bills with a printed energy whose period has every reading. */
+  /** Bills of the year beside the readings, where any of their period is kept. */
   meterChecks: MeterCheck[];
+  /** Bills that look like the invoices of one bill. */
+  joinable: JoinSuggestion[];
 }

@@ -59,6 +59,30 @@ const serviceVoltageKv = z
   .gt(0, 'A voltage is above nought.')
   .max(800, 'Above 800 kV: write the voltage in kV, not in V.');
 
+/** A meter: one of the site, or a new one. */
+export const meterInput = z.discriminatedUnion('kind', [
+  z.object({ kind: z.literal('known'), id: rowId('the meter') }),
+  z.object({
+    kind: z.literal('new'),
+    label: text("the meter's number", 60),
+    serviceVoltageKv: serviceVoltageKv.nullable(),
+  }),
+]);
+export type MeterInput = z.output<typeof meterInput>;
+
+/** A meter as lists show it. */
+export interface MeterView {
+  id: number;
+  label: string;
+  serviceVoltageKv: number | null;
+}
+
+/** The meters of an engagement, the first naming it, and those of its site that are not among them. */
+export interface MetersView {
+  meters: MeterView[];
+  others: MeterView[];
+}
+
 /** A new engagement with what has to be made for it. */
 export const engagementInput = z.object({
   /** Made once per form by the browser: the same request sent twice makes one engagement. */
@@ -97,14 +121,7 @@ export const engagementInput = z.object({
         .transform((value) => value || null),
     }),
   ]),
-  meter: z.discriminatedUnion('kind', [
-    z.object({ kind: z.literal('known'), id: rowId('the meter') }),
-    z.object({
-      kind: z.literal('new'),
-      label: text("the meter's number", 60),
-      serviceVoltageKv: serviceVoltageKv.nullable(),
-    }),
-  ]),
+  meter: meterInput,
   yearFrom: dayInput,
   budgetHours: z
     .number({ error: 'Write the budget in hours, or leave it empty.' })

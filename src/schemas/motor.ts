@@ -169,6 +169,8 @@ export const motorInput = z.object({
     .min(1, 'Give the motor its name, as on the one-line diagram.')
     .max(40, 'At most 40 characters.'),
   drives: z.string().trim().max(80, 'At most 80 characters.').optional(),
+  /** The meter it stands behind; left out: the engagement's own, or the one it stood behind before. */
+  meterId: z.number({ error: 'Choose the meter.' }).int().positive().optional(),
   plate: plateInput,
   calendar: calendarInput,
   fieldTodayA: z
@@ -213,6 +215,7 @@ export interface MotorView {
   version: number;
   name: string;
   drives: string | null;
+  meterId: number;
   plate: PlateInput;
   calendar: CalendarInput;
   fieldTodayA: number;

@@ -11,6 +11,7 @@ import { authorizeIntake, receiveFile } from './services/intake';
 
 const query = z.object({
   kind: z.enum(['intervals', 'bills'], { error: 'Say whether the file holds intervals or bills.' }),
+  meterId: z.coerce.number('Choose the meter.').int().positive().optional(),
   fileName: z.string().trim().min(1, 'The file needs a name.').max(255, 'The name of the file is too long.'),
 });
 

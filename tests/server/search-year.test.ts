@@ -34,6 +34,7 @@ describe('the stretch of settings that are equally good', () => {
         contract: {},
         given: [{}],
         load,
+        meters: [],
         motors: [
           {
             id: 7,
@@ -45,6 +46,7 @@ describe('the stretch of settings that are equally good', () => {
               shutdowns: [],
             },
             fieldTodayA: 148,
+            behind: 0,
           },
         ],
       },

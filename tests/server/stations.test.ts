@@ -10,7 +10,7 @@ import { Plan } from '@/server/models/Plan';
 import { TariffChoice } from '@/server/models/TariffChoice';
 import type { Actor } from '@/server/policies/actor';
 import { engagementFrame, standsAt } from '@/server/services/stations';
-import { keepSeries } from '@/server/services/readings';
+import { keepSeries } from '@/server/services/reading-blocks';
 import { buildActor, buildEngagement, buildIntake } from '../setup/build';
 import { buildEditionContent } from '../setup/edition';
 import { millMotor, motorOf } from '../setup/motors';
@@ -123,7 +123,16 @@ describe('engagementFrame', () => {
     const { plate, calendar } = motorOf(millMotor);
     await inTx(async () => {
       for (const name of ['M-1', 'M-2'])
-        await Motor.create({ engagementId, position: 1, name, drives: null, plate, calendar, fieldTodayA: 90 });
+        await Motor.create({
+          engagementId,
+          meterId: engagement.meterId,
+          position: 1,
+          name,
+          drives: null,
+          plate,
+          calendar,
+          fieldTodayA: 90,
+        });
     });
     expect(await stateOf('motors')).toBe('closed: 2 motors');
     const plan = await inTx(() =>

@@ -70,10 +70,12 @@ export async function buildEngagement(
   });
 }
 
-/** A file of an engagement, kept unless told otherwise. */
+/** A file of an engagement and its own meter, kept unless told otherwise. */
 export const buildIntake = (given: Partial<CreationAttributes<Intake>> & { engagementId: number }) =>
-  inTx(() =>
-    Intake.create({
+  inTx(async () => {
+    const { meterId } = await Engagement.findByPk(given.engagementId, { rejectOnEmpty: true });
+    return Intake.create({
+      meterId,
       kind: 'intervals',
       fileName: `${given.kind ?? 'intervals'}.csv`,
       bytes: 10,
@@ -87,5 +89,5 @@ export const buildIntake = (given: Partial<CreationAttributes<Intake>> & { engag
       keptAt: null,
       undoneAt: null,
       ...given,
-    }),
-  );
+    });
+  });

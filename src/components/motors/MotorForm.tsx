@@ -21,6 +21,8 @@ type StoredMotor = Omit<MotorInput, 'fieldReadAt'> & { version: number };
 export interface MotorFormProps {
   code: string;
   motor?: MotorView;
+  /** The engagement's meters; a motor stands behind one of them. */
+  meters: { id: number; label: string }[];
 }
 
 function differences(mine: MotorDraft, theirs: StoredMotor): StaleDifference[] {
@@ -30,12 +32,19 @@ function differences(mine: MotorDraft, theirs: StoredMotor): StaleDifference[] {
     .map(([path, text]) => ({ label: entryLabels[path] ?? path, mine: text, theirs: stored[path] ?? '' }));
 }
 
-function SettingFields() {
+function SettingFields({ meters }: Pick<MotorFormProps, 'meters'>) {
   const entry = useEntry();
   return (
     <fieldset>
       <legend>Setting today</legend>
       <div className="form-grid">
+        {meters.length > 1 && (
+          <SelectField
+            {...entry('meterId')}
+            hint="Its kvar changes that meter’s registers"
+            options={meters.map(({ id, label }) => ({ value: String(id), label }))}
+          />
+        )}
         <NumberField {...entry('fieldTodayA')} unit="A" hint="At its usual load, read at the panel" />
         <SelectField
           {...entry('fieldReadAt')}
@@ -132,7 +141,7 @@ function Form(props: MotorFormProps) {
         <DataSheetFields />
         <LimitFields />
         <CalendarFields />
-        <SettingFields />
+        <SettingFields meters={props.meters} />
         {stored && (
           <StaleCompare
             what={`Motor ${stored.name}`}

@@ -5,6 +5,8 @@ import { typedNumber } from '../ui/typed-number';
 export interface MotorDraft {
   name: string;
   drives: string;
+  /** Id of the meter it stands behind; '' where there is but one. */
+  meterId: string;
   plate: Record<PlateNumber | PlateChoice, string> & { openCircuitCurve: string; limits: Record<LimitNumber, string> };
   calendar: {
     rules: { days: DayName[]; fromHour: string; toHour: string; load: string; unit: string }[];
@@ -61,6 +63,7 @@ export function draftToInput(draft: MotorDraft): unknown {
   return {
     name: draft.name,
     drives: draft.drives.trim() === '' ? undefined : draft.drives,
+    meterId: draft.meterId === '' ? undefined : Number(draft.meterId),
     plate: { ...numbers, ...choices, limits, openCircuitCurve: typedCurve(plate.openCircuitCurve) },
     calendar: {
       rules: calendar.rules.map((rule) => ({
@@ -87,6 +90,7 @@ export function draftOf(motor: Omit<MotorInput, 'drives' | 'fieldReadAt'> & { dr
   return {
     name: motor.name,
     drives: motor.drives ?? '',
+    meterId: shown(motor.meterId),
     plate: { ...numbers, ...choices, openCircuitCurve: curve, limits } as MotorDraft['plate'],
     calendar: {
       rules: calendar.rules.map((rule) => ({
@@ -117,6 +121,7 @@ export function emptyDraft(): MotorDraft {
   return {
     name: '',
     drives: '',
+    meterId: '',
     plate: {
       ...blank(plateNumbers),
       source: '',
@@ -137,6 +142,7 @@ export function emptyDraft(): MotorDraft {
 export const entryLabels: Record<string, string> = {
   name: 'Name',
   drives: 'Drives',
+  meterId: 'Behind meter',
   'plate.output': 'Rated output',
   'plate.outputUnit': 'Unit of output',
   'plate.voltageV': 'Rated voltage',

@@ -92,7 +92,11 @@ function tableOf(head: string, entries: Entry[], motors: MotorView[]): LedgerDat
 }
 
 /** Nameplates side by side, as worded. */
-export const plateTable = (motors: MotorView[]) => tableOf('Nameplate', plateEntries, motors);
+export function plateTable(motors: MotorView[], meters: { id: number; label: string }[]) {
+  const labelOf = (motor: MotorView) => meters.find(({ id }) => id === motor.meterId)?.label ?? '';
+  const behind: Entry[] = meters.length > 1 ? [['Behind meter', '', labelOf]] : [];
+  return tableOf('Nameplate', [...plateEntries.slice(0, 1), ...behind, ...plateEntries.slice(1)], motors);
+}
 
 /** Machine data and settings side by side. */
 export const settingTable = (motors: MotorView[]) => tableOf('Machine and setting', machineEntries, motors);

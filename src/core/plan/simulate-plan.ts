@@ -1,4 +1,4 @@
-import type { LoadSeries } from '../load';
+import { sumLoads, type LoadSeries } from '../load';
 import { DEFAULT_PULL_OUT_MARGIN, fixField, ratedCurrentA } from '../machine';
 import type { Limit, OperatingPoint, SynchronousMotor } from '../machine';
 import { createSimulator, distinctLoads } from './simulator';
@@ -50,6 +50,7 @@ const LEVELS = 256;
  * Simulates a plan of constant field currents and capacitor steps on metered load.
  *
  * @param input.load  Metered load, standing.
+ * @param input.beside  Loads of further meters that are added to it before pricing; the result is the sum.
  * @param input.motors  Motors with their shaft load per interval, standing field and planned field.
  * @param input.capacitors  Fixed steps the plan connects.
  * @param input.upstream  Transformer or feeder between meter and bus.
@@ -59,12 +60,14 @@ const LEVELS = 256;
  */
 export function simulatePlan(input: {
   load: LoadSeries;
+  beside?: LoadSeries[];
   motors: MotorInPlan[];
   capacitors?: CapacitorStep[];
   upstream?: Upstream;
 }): PlanResult {
-  const { load, motors, capacitors = [], upstream } = input;
-  const simulator = createSimulator({ load, motors, upstream }, capacitors);
+  const { motors, capacitors = [], beside = [], upstream } = input;
+  const simulator = createSimulator({ load: input.load, beside, motors, upstream }, capacitors);
+  const load = sumLoads([input.load, ...beside]);
   const planned = simulator.apply(motors.map((m) => m.planFieldA));
   const hours = load.stepMinutes / 60;
   let extraKwh = 0;
@@ -89,7 +92,7 @@ export function simulatePlan(input: {
 export function applyActions(
   plant: Plant,
   actions: PlanAction[],
-): { load: LoadSeries; motors: MotorInPlan[]; capacitors: CapacitorStep[]; upstream?: Upstream } {
+): Pick<Plant, 'load' | 'beside' | 'upstream'> & { motors: MotorInPlan[]; capacitors: CapacitorStep[] } {
   const motors = plant.motors.map((motor) => ({ ...motor, planFieldA: motor.standingFieldA }));
   const capacitors: CapacitorStep[] = [];
   const set = new Set<number>();
@@ -106,7 +109,8 @@ export function applyActions(
     set.add(action.motorIndex);
     motor.planFieldA = action.fieldCurrentA;
   }
-  return { load: plant.load, motors, capacitors, ...(plant.upstream && { upstream: plant.upstream }) };
+  const { load, beside, upstream } = plant;
+  return { load, motors, capacitors, ...(beside && { beside }), ...(upstream && { upstream }) };
 }
 
 /** Hours with more leading than lagging energy; intervals without figures left out. */

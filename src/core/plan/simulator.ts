@@ -1,4 +1,4 @@
-import { assertLoadSeries } from '../load';
+import { assertLoadSeries, sumLoads } from '../load';
 import type { LoadSeries } from '../load';
 import { PullOutError, fixField } from '../machine';
 import { laggingShare } from './registers';
@@ -39,7 +39,7 @@ const CACHE_FLOATS = 4_000_000;
  *
  * Reactive energy changes by what motors and capacitors take beyond standing (registers by `shiftRegisters`), active energy by
  * the change in losses. A missing interval stays missing. Where a meter has no leading register (NaN throughout) it counts as
- * zero, and a note says so.
+ * zero, and a note says so. Of several meters each has its own registers changed by the motors behind it; the sum is priced.
  *
  * @param plant  Load, motors as they stand, and what lies between meter and bus.
  * @param capacitors  Fixed steps connected besides.
@@ -47,12 +47,52 @@ const CACHE_FLOATS = 4_000_000;
  * @throws {PullOutError} when a motor's standing field does not hold its load
  */
 export function createSimulator(plant: Plant, capacitors: CapacitorStep[] = []): Simulator {
-  assertLoadSeries(plant.load);
-  const { load, notes } = withBothRegisters(plant.load);
+  const loads = [plant.load, ...(plant.beside ?? [])];
+  const places = placesOf(plant.motors, loads.length);
+  const meters = loads.map((load, meter) => {
+    const own = places.filter(({ behind }) => behind === meter);
+    const rest = meter === 0 ? { capacitors, upstream: plant.upstream } : { capacitors: [] };
+    return { own, ...simulateMeter({ load, motors: own, ...rest }) };
+  });
+  const apply = (fieldsA: number[]): LoadSeries => {
+    if (fieldsA.length !== places.length)
+      throw new RangeError(`fieldsA must have ${places.length} values, got ${fieldsA.length}`);
+    return sumLoads(meters.map((meter) => meter.apply(meter.own.map(({ index }) => fieldsA[index]!))));
+  };
+  return { apply, notes: [...new Set(meters.flatMap((meter) => meter.notes))] };
+}
+
+/** A motor with its place in the plant's order and the meter it stands behind. */
+interface PlacedMotor {
+  index: number;
+  behind: number;
+  motor: PlanMotor;
+}
+
+function placesOf(motors: readonly PlanMotor[], meters: number): PlacedMotor[] {
+  return motors.map((motor, index) => {
+    const behind = motor.behind ?? 0;
+    if (!Number.isInteger(behind) || behind < 0 || behind >= meters)
+      throw new RangeError(`motors[${index}].behind must name one of ${meters} meters from 0, got ${behind}`);
+    return { index, behind, motor };
+  });
+}
+
+/** One meter with what stands behind it. */
+interface MeteredPart {
+  load: LoadSeries;
+  motors: PlacedMotor[];
+  capacitors: CapacitorStep[];
+  upstream?: Upstream;
+}
+
+function simulateMeter(part: MeteredPart): Simulator {
+  assertLoadSeries(part.load);
+  const { load, notes } = withBothRegisters(part.load);
   const hours = load.stepMinutes / 60;
-  const motors = plant.motors.map((motor, i) => motorChanges(motor, load.kwh.length, `motors[${i}]`));
-  const steps = capacitorChange(capacitors, load);
-  const upstream = plant.upstream ? upstreamChange(plant.upstream, load, hours) : null;
+  const motors = part.motors.map(({ motor, index }) => motorChanges(motor, load.kwh.length, `motors[${index}]`));
+  const steps = capacitorChange(part.capacitors, load);
+  const upstream = part.upstream ? upstreamChange(part.upstream, load, hours) : null;
   const shares = load.kvarhLagging.map((lagging, i) => laggingShare(lagging, load.kvarhLeading[i]!));
   const out: LoadSeries = {
     ...load,
@@ -64,8 +104,6 @@ export function createSimulator(plant: Plant, capacitors: CapacitorStep[] = []):
   const changeKw = new Float64Array(load.kwh.length);
   const changeKvar = new Float64Array(load.kwh.length);
   const apply = (fieldsA: number[]): LoadSeries => {
-    if (fieldsA.length !== motors.length)
-      throw new RangeError(`fieldsA must have ${motors.length} values, got ${fieldsA.length}`);
     changeKw.set(steps.kw);
     changeKvar.set(steps.kvar);
     motors.forEach(({ index, changeFor }, m) => addChange(changeKw, changeKvar, index, changeFor(fieldsA[m]!)));
@@ -77,7 +115,7 @@ export function createSimulator(plant: Plant, capacitors: CapacitorStep[] = []):
 }
 
 /** The load with an absent leading register taken as zero, and a note if so. */
-export function withBothRegisters(load: LoadSeries): { load: LoadSeries; notes: string[] } {
+function withBothRegisters(load: LoadSeries): { load: LoadSeries; notes: string[] } {
   const absent = (channel: Float64Array) => channel.length > 0 && channel.every((value) => Number.isNaN(value));
   if (absent(load.kvarhLagging) || !absent(load.kvarhLeading)) return { load, notes: [] };
   const kvarhLeading = load.kvarhLagging.map((lagging) => (Number.isNaN(lagging) ? NaN : 0));

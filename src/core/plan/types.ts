@@ -10,9 +10,11 @@ export interface PlanMotor {
   standingFieldA: number;
   /** Terminal voltage, 1 when absent. [pu] */
   voltagePu?: number;
+  /** The meter it stands behind: 0, as when absent, is the plant's `load`, k its `beside[k - 1]`. */
+  behind?: number;
 }
 
-/** A fixed capacitor step at the plant's bus. */
+/** A fixed capacitor step at the plant's bus, behind the first meter. */
 export interface CapacitorStep {
   /** Delivered at rated voltage. [kvar], > 0 */
   kvar: number;
@@ -42,6 +44,8 @@ export type PlanAction =
 /** The plant a plan is made for. */
 export interface Plant {
   load: LoadSeries;
+  /** Loads of further meters of the site, added to `load` before anything is measured; over the same intervals. */
+  beside?: LoadSeries[];
   motors: PlanMotor[];
   upstream?: Upstream;
 }

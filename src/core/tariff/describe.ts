@@ -18,6 +18,7 @@ export interface ScheduleDescription {
   timeZone: string;
   source: ScheduleSource;
   inForce: string | null;
+  meters: Schedule['meters'];
   straddle: Straddle;
   /** How what is shared is shared. */
   division: Schedule['division'];
@@ -68,7 +69,7 @@ export interface TextDescription {
 
 /** Describes a schedule in plain JSON: nothing in it is a function, and changing it changes no schedule. */
 export function describeSchedule(schedule: Schedule): ScheduleDescription {
-  const { id, title, currency, timeZone, source, inForce, straddle, notes } = schedule;
+  const { id, title, currency, timeZone, source, inForce, meters, straddle, notes } = schedule;
   return {
     id,
     title,
@@ -76,6 +77,7 @@ export function describeSchedule(schedule: Schedule): ScheduleDescription {
     timeZone,
     source: { ...source },
     inForce,
+    meters,
     straddle,
     division: schedule.division,
     ruledBy: { ...schedule.ruledBy },

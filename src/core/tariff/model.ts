@@ -2,7 +2,7 @@ import type { Rounding } from '../units';
 import type { Evaluate } from './formula/compile';
 import type { Formula } from './formula/ast';
 import type { ChannelName } from './channels';
-import type { cells, groups, statuses, straddles } from './grammar/words';
+import type { cells, groups, metering, statuses, straddles } from './grammar/words';
 
 /** Group of a bill's line. */
 export type ChargeGroup = (typeof groups)[number];
@@ -272,6 +272,8 @@ export interface Schedule extends StraddleRule {
   source: ScheduleSource;
   /** First day the schedule holds, YYYY-MM-DD; null if the file does not say. */
   inForce: string | null;
+  /** Whether a bill is of one meter, or of several whose readings are summed before anything is measured. */
+  meters: (typeof metering)[number];
   /** Texts by their first day, the earliest first; at least one. */
   texts: readonly ScheduleText[];
   /** Places of all names in the array of values. */

@@ -11,6 +11,8 @@ export type IntakeState = 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
 export class Intake extends Model<InferAttributes<Intake>, InferCreationAttributes<Intake>> {
   declare id: CreationOptional<number>;
   declare engagementId: number;
+  /** The meter whose readings it holds; of bills the engagement's own. */
+  declare meterId: number;
   declare kind: IntakeKind;
   declare fileName: string;
   declare bytes: number;
@@ -32,6 +34,7 @@ Intake.init(
   {
     id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
     engagementId: { type: DataTypes.INTEGER, allowNull: false },
+    meterId: { type: DataTypes.INTEGER, allowNull: false },
     kind: { type: DataTypes.TEXT, allowNull: false },
     fileName: { type: DataTypes.TEXT, allowNull: false },
     bytes: { type: DataTypes.INTEGER, allowNull: false },

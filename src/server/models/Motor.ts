@@ -7,6 +7,8 @@ import { withTrail } from './Trail';
 export class Motor extends Model<InferAttributes<Motor>, InferCreationAttributes<Motor>> {
   declare id: CreationOptional<number>;
   declare engagementId: number;
+  /** The meter it stands behind. */
+  declare meterId: number;
   declare position: number;
   declare name: string;
   declare drives: string | null;
@@ -22,6 +24,7 @@ Motor.init(
   {
     id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
     engagementId: { type: DataTypes.INTEGER, allowNull: false },
+    meterId: { type: DataTypes.INTEGER, allowNull: false },
     position: { type: DataTypes.INTEGER, allowNull: false },
     name: { type: DataTypes.TEXT, allowNull: false },
     drives: { type: DataTypes.TEXT, allowNull: true },

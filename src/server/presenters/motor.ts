@@ -14,10 +14,13 @@ import type { AssumedValue, MotorInput, MotorView, PlateNote } from '../../schem
 import type { Motor } from '../models/Motor';
 
 /** What a motor's row holds, as the form that wrote it. */
-export function storedMotor(motor: Motor): Omit<MotorInput, 'fieldReadAt'> & { version: number } {
+export function storedMotor(
+  motor: Motor,
+): Omit<MotorInput, 'fieldReadAt' | 'meterId'> & { meterId: number; version: number } {
   return {
     name: motor.name,
     drives: motor.drives ?? undefined,
+    meterId: motor.meterId,
     plate: motor.plate,
     calendar: motor.calendar,
     fieldTodayA: motor.fieldTodayA,

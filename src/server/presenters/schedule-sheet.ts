@@ -93,6 +93,7 @@ function rulesOf(description: ScheduleDescription, text: TextDescription, lineOf
     zeroKwh.ratio !== null && `kvarh per kWh counts as ${zeroKwh.ratio}`,
   ].filter(Boolean);
   const all: [string, string, string][] = [
+    ['Several meters', description.meters === 'summed' ? 'summed before anything is measured' : '', 'meters'],
     ['Demand window', demandWindow ? `${demandWindow.minutes} min${rolling}` : '', 'demandWindow'],
     ['Holidays', holidayWords.join(' '), 'holidays'],
     ['Two texts in a bill', straddleWords(description), 'straddle'],

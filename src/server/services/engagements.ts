@@ -1,6 +1,7 @@
 import { notFound } from '../errors';
 import { Client } from '../models/Client';
 import { Engagement } from '../models/Engagement';
+import { EngagementMeter } from '../models/EngagementMeter';
 import { Membership } from '../models/Membership';
 import { Meter } from '../models/Meter';
 import { Site } from '../models/Site';
@@ -13,21 +14,33 @@ export interface OpenEngagement {
   engagement: Engagement;
   client: Client;
   site: Site;
+  /** The meter the engagement is named by. */
   meter: Meter;
+  /** All meters billed together, that one first. */
+  meters: Meter[];
   members: User[];
   scope: EngagementScope;
 }
 
 async function open(engagement: Engagement): Promise<OpenEngagement> {
-  const [client, site, meter, memberships] = await Promise.all([
+  const [client, site, meter, further, memberships] = await Promise.all([
     Client.findByPk(engagement.clientId, { rejectOnEmpty: true }),
     Site.findByPk(engagement.siteId, { rejectOnEmpty: true }),
     Meter.findByPk(engagement.meterId, { rejectOnEmpty: true }),
+    furtherMeters(engagement.id),
     Membership.findAll({ where: { engagementId: engagement.id } }),
   ]);
   const memberIds = memberships.map((membership) => membership.userId);
   const members = await User.findAll({ where: { id: memberIds }, order: ['name'] });
-  return { engagement, client, site, meter, members, scope: { clientId: engagement.clientId, memberIds } };
+  const scope = { clientId: engagement.clientId, memberIds };
+  return { engagement, client, site, meter, meters: [meter, ...further], members, scope };
+}
+
+async function furtherMeters(engagementId: number): Promise<Meter[]> {
+  const rows = await EngagementMeter.findAll({ where: { engagementId }, attributes: ['meterId'], order: ['id'] });
+  if (rows.length === 0) return [];
+  const meters = await Meter.findAll({ where: { id: rows.map((row) => row.meterId) } });
+  return rows.flatMap((row) => meters.find((meter) => meter.id === row.meterId) ?? []);
 }
 
 /**

@@ -13,6 +13,7 @@ import { conflict, invalid, notFound } from '../errors';
 import { readOriginal, type StoredFile } from '../drawer';
 import { ColumnMapRow } from '../models/ColumnMapRow';
 import { Intake } from '../models/Intake';
+import type { Meter } from '../models/Meter';
 import { User } from '../models/User';
 import type { Actor } from '../policies/actor';
 import { presentIntake } from '../presenters/intake';
@@ -31,6 +32,8 @@ export const authorizeIntake = (actor: Actor, code: string): Promise<OpenEngagem
 export interface ReceivedFile extends StoredFile {
   kind: 'intervals' | 'bills';
   fileName: string;
+  /** The meter of its readings; left out: the engagement's own. */
+  meterId?: number;
 }
 
 /**
@@ -42,6 +45,7 @@ export async function receiveFile(actor: Actor, opened: OpenEngagement, file: Re
   const intake = await inTx(() =>
     Intake.create({
       engagementId: opened.engagement.id,
+      meterId: meterFor(opened, file.meterId).id,
       kind: file.kind,
       fileName: file.fileName,
       bytes: file.bytes,
@@ -53,6 +57,13 @@ export async function receiveFile(actor: Actor, opened: OpenEngagement, file: Re
     }),
   );
   return present({ intake, opened });
+}
+
+/** @throws {ServiceError} 422 where the meter is none of the engagement's */
+function meterFor({ meter, meters }: OpenEngagement, meterId = meter.id): Meter {
+  const found = meters.find(({ id }) => id === meterId);
+  if (!found) throw invalid('Choose the meter.', { meterId: ['Choose one of the meters of this engagement.'] });
+  return found;
 }
 
 /** The file with its four steps. */
@@ -174,14 +185,21 @@ function mapsFor(intake: Intake): Promise<ColumnMapRow[]> {
 
 /** The row with its surroundings, for the page. */
 export async function present({ intake, opened }: OpenIntake): Promise<IntakeView> {
-  const { engagement, meter, site } = opened;
+  const { engagement, meter, meters, site } = opened;
   const [maps, broughtBy] = await Promise.all([
     mapsFor(intake),
     intake.broughtById === null ? null : User.findByPk(intake.broughtById, { attributes: ['name'] }),
   ]);
   const { code, currency, yearFrom, yearTo } = engagement;
   return presentIntake(intake, {
-    engagement: { code, currency, meter: meter.label, yearFrom, yearTo, siteTimeZone: site.timeZone },
+    engagement: {
+      code,
+      currency,
+      meter: (meters.find(({ id }) => id === intake.meterId) ?? meter).label,
+      yearFrom,
+      yearTo,
+      siteTimeZone: site.timeZone,
+    },
     broughtBy: broughtBy?.name ?? null,
     maps,
   });

@@ -9,7 +9,7 @@ export const periodOf = (bill: Bill) => ({ from: bill.periodFrom, to: bill.perio
 
 /** All invoices of the joined bill that a row belongs to, in order; none where it is a bill of its own. */
 async function invoicesWith({ joinedToId }: Bill): Promise<Bill[]> {
-  return joinedToId === null ? [] : Bill.findAll({ where: { joinedToId }, order: ['periodFrom', 'id'] });
+  return typeof joinedToId !== 'number' ? [] : Bill.findAll({ where: { joinedToId }, order: ['periodFrom', 'id'] });
 }
 
 /** Sets the invoices of a joined bill free, each a bill of its own again. Call inside inTx. */

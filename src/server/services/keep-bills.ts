@@ -1,6 +1,7 @@
 import type { BillRecord, IntakeReport } from '../../core/intake';
 import { toMinorUnits } from '../../core/units';
 import { billInput, lineLabel, periodFlaws, type BillInput } from '../../schemas/bill';
+import type { OverlapChoice } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid } from '../errors';
 import { Bill } from '../models/Bill';
@@ -10,9 +11,6 @@ import { billsWithin, markKept, type OpenIntake } from './intake-guard';
 import { readBillFile, type HowToRead } from './intake-read';
 import { daysInWords } from './intake-words';
 import { periodOf, releaseInvoices } from './joined-invoices';
-
-/** Which bill stays where one of the file and a kept one share a day. */
-export type BillOverlapChoice = 'keep-old' | 'keep-new';
 
 /** A bill of a file as it would be kept, and where in the file it stands. */
 export interface ComingBill {
@@ -49,7 +47,7 @@ export async function comingBills({ intake, opened }: OpenIntake, how: HowToRead
  * @param overlap  What is to happen where bills share a day with kept ones; without it that is refused
  * @throws {ServiceError} 409 where bills overlap kept ones and nothing was chosen, or nothing of the file would be kept
  */
-export async function keepBills(open: OpenIntake, how: HowToRead, overlap?: BillOverlapChoice): Promise<void> {
+export async function keepBills(open: OpenIntake, how: HowToRead, overlap?: OverlapChoice): Promise<void> {
   const { intake, opened } = open;
   const rows = await comingBills(open, how);
   const { currency, id: engagementId } = opened.engagement;

@@ -51,7 +51,7 @@ export async function openMotor(actor: Actor, id: number): Promise<OpenMotor> {
  * @throws {ServiceError} 422 where the plate contradicts itself, or today's field lies beyond a limit or below pull-out
  */
 export async function createMotor(opened: OpenEngagement, input: MotorInput): Promise<MotorView> {
-  const values = checkedValues(input);
+  const values = { ...checkedValues(input), meterId: meterFor(opened, input.meterId ?? opened.meter.id) };
   const engagementId = opened.engagement.id;
   const motor = await inTx(async () => {
     await refuseSameName(engagementId, input.name);
@@ -67,7 +67,7 @@ export async function createMotor(opened: OpenEngagement, input: MotorInput): Pr
  * @throws {ServiceError} 409 with both versions where somebody saved in between; 422 as when it is added
  */
 export async function changeMotor({ motor, opened }: OpenMotor, input: MotorChangeInput): Promise<MotorView> {
-  const values = checkedValues(input);
+  const values = { ...checkedValues(input), meterId: meterFor(opened, input.meterId ?? motor.meterId) };
   const { version, ...mine } = input;
   await inTx(async () => {
     await refuseSameName(motor.engagementId, input.name, motor.id);
@@ -99,6 +99,14 @@ export async function removeMotor({ motor }: OpenMotor, { version }: { version: 
 async function refuseStale(motor: Motor, version: number, mine: unknown): Promise<void> {
   await freshen(motor);
   if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, mine, storedMotor(motor));
+}
+
+/** @throws {ServiceError} 422 where the meter is none of those the engagement's bills are of */
+function meterFor({ meters }: OpenEngagement, meterId: number): number {
+  if (meters.some(({ id }) => id === meterId)) return meterId;
+  throw invalid('The motor stands behind a meter that is not billed here.', {
+    meterId: ['Choose one of the meters of this engagement.'],
+  });
 }
 
 /** The columns of a row, after every check that can refuse it. */

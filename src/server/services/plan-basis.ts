@@ -45,7 +45,7 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
     throw conflict('No motor is entered yet. Enter one at the station Motors.', { station: 'motors' });
   }
   const pricing = await pricingInputs(opened);
-  const { scheduleText, periods, contract, history, given, load, schedule } = pricing;
+  const { scheduleText, periods, contract, history, given, load, meters, schedule } = pricing;
   const task: TaskBasis = {
     scheduleText,
     timeZone: schedule.timeZone,
@@ -54,12 +54,17 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
     history,
     given,
     load,
+    meters,
     motors: motors.map(({ row, machine }) => ({
       id: row.id,
       name: row.name,
       machine,
       calendar: row.calendar,
       fieldTodayA: row.fieldTodayA,
+      behind: Math.max(
+        0,
+        opened.meters.findIndex(({ id }) => id === row.meterId),
+      ),
     })),
   };
   const ofMotors = motors.map(({ row }) => [row.id, row.version, row.updatedAt.getTime()]);

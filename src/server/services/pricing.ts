@@ -11,12 +11,14 @@ import { TariffChoice } from '../models/TariffChoice';
 import { reconcileInPool } from '../workers/pool';
 import { listBills } from './bills';
 import type { OpenEngagement } from './engagements';
+import { meteredLoad, type MeteredLoad } from './metered-load';
 import type { ReconcileBasis } from './price-basis';
-import { keptSpans, loadSeries } from './readings';
 import { digestOf } from './schedule-files';
 
 /** What the year is priced from. `load` is null on the printed route. */
 export interface PricingBasis extends ReconcileBasis {
+  /** Of each meter, where several are summed; `load` is their sum. */
+  meters: LoadSeries[];
   scheduleText: string;
   choice: TariffChoice;
   grid: PricingGrid | null;
@@ -82,7 +84,7 @@ export async function pricedYear(opened: OpenEngagement): Promise<PricedYear> {
 }
 
 function reconcile(basis: PricingBasis): Promise<PricedYear> {
-  const { schedule: _schedule, choice: _choice, grid: _grid, dataKey: _dataKey, ...plain } = basis;
+  const { schedule: _schedule, choice: _choice, grid: _grid, dataKey: _dataKey, meters: _meters, ...plain } = basis;
   return reconcileInPool(plain);
 }
 
@@ -114,8 +116,8 @@ export async function pricingGround(
   const choice = await TariffChoice.findOne({ where: { engagementId: opened.engagement.id } });
   if (choice) return pricingBasis(opened);
   const bills = await billsOfYear(opened);
-  const load = bills.length > 0 ? await readLoad(opened, bills, opened.site.timeZone) : null;
-  return { bills, load, contract: {}, history: undefined };
+  const metered = bills.length > 0 ? await readLoad(opened, bills, opened.site.timeZone) : null;
+  return { bills, load: metered?.load ?? null, contract: {}, history: undefined };
 }
 
 /** The bills whose middle day lies in the engagement's year, in order. */
@@ -130,7 +132,7 @@ async function dataKeyOf(opened: OpenEngagement, bills: BillView[], choice: Tari
   // Blocks are made and taken away, never changed, and no id is given twice: number and newest tell of any change. A column
   // behind the values would have SQLite walk through all of them.
   const readings = await ReadingBlock.findOne({
-    where: { meterId: opened.meter.id },
+    where: { meterId: opened.meters.map(({ id }) => id) },
     attributes: [
       [fn('COUNT', col('id')), 'count'],
       [fn('MAX', col('id')), 'newest'],
@@ -138,7 +140,7 @@ async function dataKeyOf(opened: OpenEngagement, bills: BillView[], choice: Tari
     raw: true,
   });
   const ofChoice = [choice.id, choice.version, choice.updatedAt.getTime()];
-  return digestOf(JSON.stringify([readings, bills, ofChoice]));
+  return digestOf(JSON.stringify([readings, opened.meters.map(({ id }) => id), bills, ofChoice]));
 }
 
 async function readBasis(
@@ -149,7 +151,9 @@ async function readBasis(
 ): Promise<PricingBasis> {
   const schedule = readFrozen(choice);
   refuseMixed(bills, schedule);
-  const load = await readLoad(opened, bills, schedule.timeZone);
+  refuseSeveral(opened, schedule);
+  const metered = await readLoad(opened, bills, schedule.timeZone);
+  const load = metered?.load ?? null;
   return {
     route: load ? 'intervals' : 'printed',
     schedule,
@@ -164,6 +168,7 @@ async function readBasis(
     given: bills.map((bill) => pickGiven(bill, schedule)),
     bills,
     load,
+    meters: metered && metered.meters.length > 1 ? metered.meters : [],
     grid: load && { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length },
     dataKey,
   };
@@ -202,12 +207,18 @@ function refuseMixed(bills: BillView[], schedule: Schedule): void {
   });
 }
 
-/** The kept readings under the bills; null where the meter has none in that time. */
-async function readLoad(opened: OpenEngagement, bills: BillView[], timeZone: string): Promise<LoadSeries | null> {
-  const fromMs = localDateStartMs(bills[0]!.from, timeZone);
-  const toMs = localDateStartMs(bills.at(-1)!.to, timeZone);
-  const spans = await keptSpans(opened.meter.id, fromMs, toMs);
-  return spans.length === 0 ? null : loadSeries(opened.meter.id, fromMs, toMs);
+/** Several meters are added up only where the schedule says that they are billed so. */
+function refuseSeveral({ meters }: OpenEngagement, schedule: Schedule): void {
+  if (meters.length < 2 || schedule.meters === 'summed') return;
+  throw conflict(
+    `${schedule.id} bills one meter; this engagement has ${meters.length}: ${meters.map(({ label }) => label).join(', ')}. Where the contract has them billed together, write "meters: summed" into a text of the schedule and choose that; otherwise take the other meters off at the station Intervals.`,
+    { station: 'tariff' },
+  );
+}
+
+/** The kept readings under the bills; null where the meters have none in that time. */
+function readLoad(opened: OpenEngagement, bills: BillView[], timeZone: string): Promise<MeteredLoad | null> {
+  return meteredLoad(opened, localDateStartMs(bills[0]!.from, timeZone), localDateStartMs(bills.at(-1)!.to, timeZone));
 }
 
 /** Of a bill's printed quantities those the schedule expects from the bill, not from the meter. */

@@ -14,7 +14,7 @@ import { canSeePractice } from '../policies/engagement';
 import { listPeriods } from './bills';
 import { openEngagement, type OpenEngagement } from './engagements';
 import { findingsSummary } from './finding-records';
-import { keptSpans } from './readings';
+import { keptSpans, presentFraction } from './readings';
 
 /** An engagement's page around its sheet: title strip and stations. */
 export interface EngagementFrame {
@@ -47,8 +47,16 @@ function scheduleTitle(choice: TariffChoice | null): string {
   return title?.replace(/^(['"])(.*)\1$/, '$2') || choice.scheduleId;
 }
 
+function meterField(meter: OpenEngagement['meter'], meters: OpenEngagement['meters']): StripView {
+  if (meters.length > 1) return { label: 'Meters, summed', value: meters.map(({ label }) => label).join(' + ') };
+  return {
+    label: 'Meter',
+    value: meter.serviceVoltageKv ? `${meter.label}, ${meter.serviceVoltageKv} kV` : meter.label,
+  };
+}
+
 function stripOf(
-  { engagement, client, site, meter, members }: OpenEngagement,
+  { engagement, client, site, meter, meters, members }: OpenEngagement,
   choice: TariffChoice | null,
   stations: StationView[],
   current?: string,
@@ -57,7 +65,7 @@ function stripOf(
   const strip = [
     { label: 'Client', value: client.name },
     { label: 'Site', value: [site.name, site.place].filter(Boolean).join(', ') },
-    { label: 'Meter', value: meter.serviceVoltageKv ? `${meter.label}, ${meter.serviceVoltageKv} kV` : meter.label },
+    meterField(meter, meters),
     { label: 'Schedule', value: scheduleTitle(choice) },
     { label: 'Year', value: formatPeriod(engagement.yearFrom, engagement.yearTo, { year: true }) },
     { label: 'Engagement', value: engagement.code },
@@ -153,17 +161,15 @@ async function intervalsState(opened: OpenEngagement): Promise<State> {
     return open(waiting > 0 ? `${counted(waiting, 'file')} to check` : 'bring in intervals');
   }
   let coveredMs = 0;
-  let missingMs = 0;
   let reached = fromMs;
   for (const span of spans) {
     const begins = Math.max(span.startMs, reached);
     const ends = Math.min(span.endMs, toMs);
     if (ends <= begins) continue;
     coveredMs += ends - begins;
-    missingMs += (span.missing * span.stepMinutes * 60_000 * (ends - begins)) / (span.endMs - span.startMs);
     reached = ends;
   }
-  const present = Math.max(0, coveredMs - missingMs) / (toMs - fromMs);
+  const present = await presentFraction(meter.id, fromMs, toMs);
   // Rounded down, so that 100 % is only said where nothing at all is missing.
   const reason = `${(Math.floor(present * 10_000) / 100).toFixed(2).replace(/\.00$/, '')} % present`;
   return coveredMs >= toMs - fromMs ? closed(reason) : open(reason);

@@ -15,14 +15,21 @@ export interface ReadyYear {
 export function readyYear(basis: TaskBasis): ReadyYear {
   const { load, timeZone, periods, contract, history, given } = basis;
   const grid = { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length };
-  const motors = basis.motors.map(({ calendar, machine, fieldTodayA }) => ({
+  const motors = basis.motors.map(({ calendar, machine, fieldTodayA, behind }) => ({
     motor: machine,
     shaftKw: shaftLoadSeries(toShiftCalendar(calendar, machine.ratedOutputKw), grid, timeZone),
     standingFieldA: fieldTodayA,
+    behind,
   }));
   const options = { periods, contract, given, ...(history ? { history } : {}) };
   return { basis, motors, pricing: compilePricing(readSchedule(basis.scheduleText), grid, options) };
 }
+
+/** The first meter's load and those beside it. */
+export const metersOf = ({ load, meters }: TaskBasis): { load: LoadSeries; beside: LoadSeries[] } => ({
+  load: meters[0] ?? load,
+  beside: meters.slice(1),
+});
 
 /** Prices every setting of a task over the year. */
 export function priceYear({ basis, settings }: YearTask): TaskSetting[] {
@@ -33,7 +40,7 @@ export function priceYear({ basis, settings }: YearTask): TaskSetting[] {
 function priceSetting({ basis, motors, pricing }: ReadyYear, { fields, capacitors }: TaskAct): TaskSetting {
   const fieldOf = (index: number) => fields.find((one) => one.motorId === basis.motors[index]?.id)?.fieldA;
   const result = simulatePlan({
-    load: basis.load,
+    ...metersOf(basis),
     motors: motors.map((motor, index) => ({ ...motor, planFieldA: fieldOf(index) ?? motor.standingFieldA })),
     capacitors: capacitors ? [capacitors] : [],
   });

@@ -1,6 +1,6 @@
 import { searchFields, type SearchResult } from '../../core/plan';
 import type { CostCurveView, SearchView } from '../../schemas/plan';
-import { readyYear } from './price-year';
+import { metersOf, readyYear } from './price-year';
 import type { SearchTask, TaskMotor } from './tasks';
 
 /** Share of the saving within which settings round the best count as equally good. */
@@ -11,7 +11,7 @@ const tellEvery = 5;
 export function searchYear({ basis, stepA, fingerprint, port }: SearchTask): SearchView {
   const { motors, pricing } = readyYear(basis);
   const found = searchFields({
-    plant: { load: basis.load, motors: motors.map((motor) => ({ ...motor, stepA })) },
+    plant: { ...metersOf(basis), motors: motors.map((motor) => ({ ...motor, stepA })) },
     totals: (load) => pricing.totals(load),
     onProgress: ({ priced, planned }) => {
       if (priced % tellEvery === 0) port.postMessage({ done: priced, planned });

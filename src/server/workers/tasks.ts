@@ -14,6 +14,8 @@ export interface TaskMotor {
   machine: SynchronousMotor;
   calendar: CalendarInput;
   fieldTodayA: number;
+  /** Position of the meter it stands behind. */
+  behind: number;
 }
 
 /** What a year is priced from, with its motors. */
@@ -25,6 +27,8 @@ export interface TaskBasis {
   history?: Record<string, number[]>;
   given: Record<string, number>[];
   load: LoadSeries;
+  /** Of each meter, where several are summed; `load` is their sum. */
+  meters: LoadSeries[];
   motors: TaskMotor[];
 }
 

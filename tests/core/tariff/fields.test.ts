@@ -38,6 +38,7 @@ describe('the fields of a schedule', () => {
     [{ head: { schedule: 'Not An Id' } }, 'schedule: "Not An Id" is not an id. Write small letters'],
     [{ head: { currency: 'euro' } }, 'currency: "euro" is not a currency. Write its three letters: EUR.'],
     [{ head: { inForce: '2026-13-01' } }, 'inForce: "2026-13-01" is not a date.'],
+    [{ head: { meters: 'added' } }, 'meters: "added" is not a way of metering. Write one or summed.'],
     [{ head: { straddle: 'interval' } }, 'straddle: "interval" is no way to divide a bill. Did you mean "intervals"?'],
     [{ head: { rounding: '0.01 upwards' } }, 'rounding: "0.01 upwards" is not a step of rounding. Write 0.01'],
     [{ head: { rounding: '[1]' } }, 'rounding: is not a step of rounding.'],

@@ -296,6 +296,7 @@ describe('what a schedule tells', () => {
       inForce: null,
       currency: 'EUR',
       timeZone: 'Europe/Lisbon',
+      meters: 'one',
     });
     expect(schedule.notes.map(({ path }) => path)).toEqual(['inForce', 'source', 'demandWindow', 'quantities.maxKw']);
   });

@@ -12,6 +12,7 @@ import { exampleFields, mostExamples } from './examples';
 import { quantityFields, quantityKinds } from './quantities';
 import { before, date, rounding, text } from './shared';
 import type { Field, Takes } from './types';
+import { metering } from './words';
 
 const span: Takes = {
   kind: 'written',
@@ -62,6 +63,14 @@ const parts: readonly Field[] = [
     takes: date,
     example: '2026-01-01',
     leftOut: 'every period is priced',
+  },
+  {
+    name: 'meters',
+    about:
+      'Whether a bill is of one meter, or of several of a site whose readings are summed before anything is measured.',
+    takes: { kind: 'word', words: metering },
+    example: 'summed',
+    leftOut: 'one',
   },
   {
     name: 'demandWindow',

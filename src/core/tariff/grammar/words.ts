@@ -4,6 +4,9 @@ export const groups = ['energy', 'demand', 'reactive', 'fixed', 'adjustment', 't
 /** Ways to divide a bill across two texts, seasons or rider months. */
 export const straddles = ['intervals', 'days', 'start', 'end'] as const;
 
+/** Whether a bill is of one meter, or of several whose readings are added before anything is measured. */
+export const metering = ['one', 'summed'] as const;
+
 /** How well a tariff is known. */
 export const statuses = ['found', 'memory', 'invented'] as const;
 

@@ -1,6 +1,6 @@
 import { sourceFields } from '../grammar/entries';
 import { fieldNames } from '../grammar/types';
-import { statuses } from '../grammar/words';
+import { metering, statuses } from '../grammar/words';
 import { isCalendarDate, isTimeZone } from '../../load';
 import type { Schedule, ScheduleSource } from '../model';
 import { asMap, asText, checkFields } from './fields';
@@ -8,7 +8,7 @@ import type { Problems } from './problems';
 import { entryOf, valueOf, type MapTree } from './tree';
 
 /** What stands above the sections and is the same in all versions. */
-export type Head = Pick<Schedule, 'id' | 'title' | 'currency' | 'timeZone' | 'source' | 'inForce'>;
+export type Head = Pick<Schedule, 'id' | 'title' | 'currency' | 'timeZone' | 'source' | 'inForce' | 'meters'>;
 
 /** Reads it. */
 export function readHead(root: MapTree, problems: Problems): Head {
@@ -43,6 +43,7 @@ export function readHead(root: MapTree, problems: Problems): Head {
     timeZone,
     source: readSource(root, problems),
     inForce: readInForce(root, problems),
+    meters: readMeters(root, problems),
   };
 }
 
@@ -53,6 +54,15 @@ function readInForce(root: MapTree, problems: Problems): string | null {
   if (isCalendarDate(word.text)) return word.text;
   problems.add(word, `"${word.text}" is not a date.`, 'Write 2026-01-01.');
   return null;
+}
+
+function readMeters(root: MapTree, problems: Problems): Schedule['meters'] {
+  const tree = valueOf(root, 'meters');
+  const word = tree && asText(tree, problems, 'Write meters: summed.');
+  if (!word) return 'one';
+  const meters = metering.find((one) => one === word.text);
+  if (!meters) problems.add(word, `"${word.text}" is not a way of metering.`, `Write ${metering.join(' or ')}.`);
+  return meters ?? 'one';
 }
 
 function readSource(root: MapTree, problems: Problems): ScheduleSource {

@@ -14,6 +14,7 @@ import {
   whole,
   type Columns,
 } from './tables/columns';
+import { attachmentChecks, attachmentIndexes, attachmentTables } from './tables/attachments';
 import { billChecks, billTables } from './tables/bills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
@@ -95,6 +96,7 @@ const tables: Record<string, Columns> = {
   },
   ...intakeTables,
   ...billTables,
+  ...attachmentTables,
   tariff_choices: {
     ...id,
     engagement_id: { ...link('engagements', false, 'CASCADE'), unique: true },
@@ -250,6 +252,7 @@ const tables: Record<string, Columns> = {
 const indexes: Record<string, string[][]> = {
   sessions: [['expires']],
   ...intakeIndexes,
+  ...attachmentIndexes,
   ...findingIndexes,
   hour_entries: [['user_id', 'day']],
   trail_rows: [['subject', 'subject_id'], ['actor_id'], ['at']],
@@ -263,6 +266,7 @@ const checks: Record<string, string[]> = {
   jobs: ["state IN ('running','done','failed','cancelled')"],
   letters: ["state IN ('sent','failed')"],
   ...billChecks,
+  ...attachmentChecks,
   ...findingChecks,
   hour_entries: ['minutes > 0', 'minutes <= 1440'],
   engagements: ['year_from < year_to'],
@@ -273,7 +277,7 @@ async function addChecks(database: QueryInterface, table: string): Promise<void>
     for (const event of ['INSERT', 'UPDATE']) {
       const name = `${table}_${event.toLowerCase()}_${checks[table]?.indexOf(condition)}`;
       const onNew = condition.replace(
-        /\b(role|client_id|kind|state|family|way|period_from|period_to|minutes|year_from|year_to)\b/g,
+        /\b(role|client_id|kind|state|family|way|media_type|period_from|period_to|minutes|year_from|year_to)\b/g,
         'NEW.$1',
       );
       await database.sequelize.query(

@@ -1,5 +1,5 @@
-import type { BillInput, BillView } from '../schemas/bill';
-import type { IntakeView, LoadDays, MatchInput } from '../schemas/intake';
+import type { BillInput, BillView, MeteredPeriod } from '../schemas/bill';
+import type { IntakeOverlap, IntakeView, LoadDays, MatchInput, OverlapChoice } from '../schemas/intake';
 import { call, sendFile } from './api';
 
 type Kind = 'intervals' | 'bills';
@@ -24,12 +24,16 @@ export const intakePage = (code: string, id: number) => `/engagements/${encodeUR
 export const originalPath = (id: number) => `/api/intakes/${id}/original`;
 
 const step =
-  (name: 'keep' | 'undo' | 'give-up') =>
+  (name: 'undo' | 'give-up') =>
   ({ id, version }: Seen) =>
     call<IntakeView>('POST', `/api/intakes/${id}/${name}`, { version });
 
-/** Keeps what a file holds. */
-export const keepIntake = step('keep');
+/** Keeps what a file holds; `overlap` says which stands where something is kept already. */
+export const keepIntake = ({ id, version }: Seen, overlap?: OverlapChoice) =>
+  call<IntakeView>('POST', `/api/intakes/${id}/keep`, { version, overlap });
+
+/** What is kept and what comes, side by side. */
+export const fetchOverlap = (id: number) => call<IntakeOverlap>('GET', `/api/intakes/${id}/overlap`);
 
 /** Takes back what a kept file brought in. */
 export const undoIntake = step('undo');
@@ -55,6 +59,18 @@ const billsPath = (code: string) => `/api/engagements/${encodeURIComponent(code)
 
 /** Keeps a bill typed by hand. */
 export const addBill = (code: string, bill: BillInput) => call<BillView>('POST', billsPath(code), bill);
+
+/** Joins invoices to one bill. */
+export const joinBills = (code: string, bills: Seen[], note: string) =>
+  call<BillView>('POST', `${billsPath(code)}/join`, { bills: bills.map(({ id, version }) => ({ id, version })), note });
+
+/** Takes a joined bill apart again. */
+export const takeBillApart = (code: string, { id, version }: Seen) =>
+  call<BillView[]>('POST', `${billsPath(code)}/${id}/apart`, { version });
+
+/** What the kept readings say of a period; null where there are none. */
+export const fetchMetered = (code: string, { from, to }: { from: string; to: string }) =>
+  call<MeteredPeriod | null>('GET', `${billsPath(code)}/metered?${new URLSearchParams({ from, to })}`);
 
 /** Changes a kept bill against the version seen. */
 export const changeBill = (code: string, { id, version }: Seen, bill: BillInput) =>

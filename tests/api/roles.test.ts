@@ -29,6 +29,8 @@ function firstValue(database: sqlite3.Database, sql: string): Promise<string> {
 
 /** A row of the first client's engagement for each kind of address. */
 const rowSql: Record<string, string> = {
+  attachments:
+    "SELECT a.id value FROM attachments a JOIN engagements e ON e.id = a.engagement_id WHERE e.code = 'KG-02'",
   bills: "SELECT b.id value FROM bills b JOIN engagements e ON e.id = b.engagement_id WHERE e.code = 'KG-02'",
   clients: "SELECT client_id value FROM engagements WHERE code = 'KG-02'",
   editions: 'SELECT id value FROM editions',
@@ -65,7 +67,7 @@ function addressOf(pattern: string): string {
 
 async function ask(route: string, cookie: string | null): Promise<Response> {
   const [method, pattern] = route.split(' ') as [string, string];
-  const upload = pattern.endsWith('/uploads');
+  const upload = pattern.endsWith('/uploads') || (route.startsWith('PUT') && pattern.endsWith('/attachments'));
   const address = `${origin}${addressOf(pattern)}${upload ? '?kind=bills&fileName=probe.txt' : ''}`;
   const isForm = method === 'POST' && !pattern.startsWith('/api/');
   const body =

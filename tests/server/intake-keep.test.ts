@@ -71,7 +71,7 @@ describe('keeping intervals', () => {
     );
     await expect(keepIntake(consultant, late.id, late.version)).rejects.toMatchObject({
       status: 409,
-      message: expect.stringMatching(/31 Jan 2026, 00:00 to 1 Feb 2026, 00:00.*january\.csv.*Undo/) as string,
+      message: expect.stringMatching(/31 Jan 2026, 00:00 to 1 Feb 2026, 00:00.*january\.csv.*choose/) as string,
     });
     expect((await Intake.findByPk(late.id))?.state).toBe('read');
     expect(await keptSpans(engagement.meterId, ...always)).toHaveLength(1);

@@ -6,7 +6,7 @@ import { addBill } from '@/server/services/bills';
 import { billsStation } from '@/server/services/bills-station';
 import { openEngagement } from '@/server/services/engagements';
 import { intervalsStation } from '@/server/services/intervals';
-import { keepSeries } from '@/server/services/readings';
+import { keepSeries } from '@/server/services/reading-blocks';
 import { buildActor, buildEngagement, buildIntake } from '../setup/build';
 
 const zone = 'America/Chicago';

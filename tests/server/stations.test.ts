@@ -10,7 +10,7 @@ import { Plan } from '@/server/models/Plan';
 import { TariffChoice } from '@/server/models/TariffChoice';
 import type { Actor } from '@/server/policies/actor';
 import { engagementFrame, standsAt } from '@/server/services/stations';
-import { keepSeries } from '@/server/services/readings';
+import { keepSeries } from '@/server/services/reading-blocks';
 import { buildActor, buildEngagement, buildIntake } from '../setup/build';
 import { buildEditionContent } from '../setup/edition';
 import { millMotor, motorOf } from '../setup/motors';

@@ -5,7 +5,7 @@ import { inTx } from '@/server/db/tx';
 import { Bill } from '@/server/models/Bill';
 import { BillLine } from '@/server/models/BillLine';
 import type { Engagement } from '@/server/models/Engagement';
-import { keepSeries } from '@/server/services/readings';
+import { keepSeries } from '@/server/services/reading-blocks';
 import { buildIntake } from './build';
 
 /** A large-power schedule of our own: demand adjusted by pf with a summer ratchet, two seasons, two texts, tax. */

@@ -35,6 +35,7 @@ export const intakeTables: Record<string, Columns> = {
     ...id,
     meter_id: link('meters'),
     intake_id: link('intakes', false, 'CASCADE'),
+    rank: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     channel: text(),
     month: text(),
     start_ms: { type: DataTypes.BIGINT, allowNull: false },

@@ -12,6 +12,7 @@ import { BillsResult } from './BillsResult';
 import { BringIn } from './BringIn';
 import { FileList } from './FileList';
 import { reload } from './reload';
+import { PagesBeside } from './pages/PagesBeside';
 import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
 
 export interface BillsSheetProps extends BillsStation {
@@ -117,7 +118,7 @@ function OtherBillsPart(props: TableProps) {
 }
 
 function FormPart(props: PartProps & { bill: BillView | null; onLeave: () => void }) {
-  const { code, currency, bill, year } = props;
+  const { code, currency, bill, year, timeZone } = props;
   const all = [...props.bills, ...props.laterBills].sort((a, b) => a.from.localeCompare(b.from));
   // One types bill after bill until the year has no gap left.
   const handleDone = (saved: BillView) =>
@@ -140,6 +141,7 @@ function FormPart(props: PartProps & { bill: BillView | null; onLeave: () => voi
         yearFrom={year.from}
         onDone={handleDone}
         onCancel={props.onLeave}
+        beside={<PagesBeside key={bill?.id ?? 'new'} code={code} timeZone={timeZone} bill={bill} bills={all} />}
       />
     </SheetPart>
   );

@@ -11,7 +11,7 @@ import {
 } from '../../client/intake';
 import { Queries } from '../../client/queries';
 import type { ColumnMap } from '../../core/intake';
-import { toConfirm, type IntakeView } from '../../schemas/intake';
+import { toConfirm, type IntakeView, type OverlapChoice } from '../../schemas/intake';
 import { Button, ButtonLink } from '../ui/Button';
 import { formatBytes, formatDateTime, formatSpelled } from '../ui/format';
 import { Notice, type Problem } from '../ui/Notice';
@@ -30,7 +30,7 @@ export interface IntakeActions {
   confirm: (keys: string[]) => void;
   useMap: (mapId: number) => void;
   remember: (name: string) => Promise<string | null>;
-  keep: () => void;
+  keep: (overlap?: OverlapChoice) => void;
   undo: () => void;
   giveUp: () => void;
 }
@@ -87,7 +87,7 @@ function useIntake(initial: IntakeView) {
     confirm: (keys) => intake.preview && match(intake.preview.columnMap, { confirm: keys }),
     useMap: (mapId) => void run(readWithMap(intake, mapId)),
     remember: async (name) => (await run(rememberMap(intake.id, name)))?.title ?? null,
-    keep: () => void run(keepIntake(intake)).then(follow),
+    keep: (overlap) => void run(keepIntake(intake, overlap)).then(follow),
     undo: () => void run(undoIntake(intake)).then(follow),
     giveUp: () => void run(giveUpIntake(intake)).then(follow),
   };

@@ -1,8 +1,12 @@
-import { toConfirm, type IntakePreview, type IntakeView } from '../../schemas/intake';
+import { useQuery } from '@tanstack/react-query';
+import { fetchOverlap } from '../../client/intake';
+import { toConfirm, type IntakePreview, type IntakeView, type IntervalsOverlap } from '../../schemas/intake';
 import { Button } from '../ui/Button';
 import { formatCount, formatDateTime, formatNumber } from '../ui/format';
+import { Notice } from '../ui/Notice';
 import type { IntakeActions } from './IntakeSheet';
-import { isKnown } from './interval-words';
+import { isKnown, readingsOf } from './interval-words';
+import { KeepChoice } from './KeepChoice';
 import { SheetPart } from './Sheet';
 
 export interface KeepStepProps {
@@ -11,16 +15,10 @@ export interface KeepStepProps {
   actions: IntakeActions;
 }
 
-/** What goes where, in a sentence, and the button. */
+/** What goes where, in a sentence, and the button; where something is kept already, both side by side. */
 export function KeepStep({ intake, preview, actions }: KeepStepProps) {
   const { state } = intake;
-  const left = toConfirm(preview, intake.confirmed).count;
   const readable = preview.problems.length === 0 && preview.report !== null;
-  const waiting = !readable ? 'after the file can be read' : left > 0 ? 'after your word for what is not sure' : null;
-  const what =
-    preview.kind === 'bills'
-      ? formatCount(preview.bills.length, 'bill')
-      : formatCount((preview.report?.intervals ?? 0) - (preview.report?.missing ?? 0), 'reading');
   return (
     <SheetPart
       id="keep"
@@ -39,13 +37,55 @@ export function KeepStep({ intake, preview, actions }: KeepStepProps) {
         {readable ? sentence(intake, preview) : 'Nothing can be kept until the file can be read.'}
       </p>
       {(state === 'read' || state === 'undone') && (
-        <div className="actions mt-4">
-          <Button busy={actions.busy} waiting={waiting} onClick={actions.keep}>
-            {!readable ? 'Keep' : state === 'undone' ? `Keep ${what} again` : `Keep ${what}`}
-          </Button>
-        </div>
+        <Choice intake={intake} preview={preview} actions={actions} readable={readable} />
       )}
     </SheetPart>
+  );
+}
+
+function Choice({ intake, preview, actions, readable }: KeepStepProps & { readable: boolean }) {
+  const left = toConfirm(preview, intake.confirmed).count;
+  const settled = readable && left === 0;
+  const overlap = useQuery({
+    queryKey: ['intake-overlap', intake.id, intake.version],
+    queryFn: () => fetchOverlap(intake.id),
+    enabled: settled && preview.kind === 'intervals',
+  });
+  const what =
+    preview.kind === 'bills'
+      ? formatCount(preview.bills.length, 'bill')
+      : formatCount((preview.report?.intervals ?? 0) - (preview.report?.missing ?? 0), 'reading');
+  if (overlap.error) return <Notice kind="fault" title={overlap.error.message} />;
+  const beside = overlap.data;
+  if (beside?.kind === 'intervals' && beside.asks) {
+    return <KeepChoice intake={intake} overlap={beside} what={what} actions={actions} />;
+  }
+  const waiting = !readable
+    ? 'after the file can be read'
+    : left > 0
+      ? 'after your word for what is not sure'
+      : overlap.isLoading && 'after a look at what is kept already';
+  return (
+    <>
+      {beside?.kind === 'intervals' && <Lengths overlap={beside} />}
+      <div className="actions mt-4">
+        <Button busy={actions.busy} waiting={waiting} onClick={() => actions.keep()}>
+          {!readable ? 'Keep' : intake.state === 'undone' ? `Keep ${what} again` : `Keep ${what}`}
+        </Button>
+      </div>
+    </>
+  );
+}
+
+/** Files of different length of interval are read in the longest. */
+function Lengths({ overlap }: { overlap: IntervalsOverlap }) {
+  const { kept, comes, compared } = overlap.stepMinutes;
+  const shortest = Math.min(comes, ...kept);
+  if (shortest === compared) return null;
+  return (
+    <Notice title={`What is kept will be read as ${readingsOf(compared)}`}>
+      {`Files of ${shortest} and of ${compared} minutes are read together in the longer. A demand over fewer than ${compared} minutes cannot be told from them; undoing this file brings the shorter ones back.`}
+    </Notice>
   );
 }
 

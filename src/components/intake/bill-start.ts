@@ -1,5 +1,6 @@
 import { periodFlaws, type BillView } from '../../schemas/bill';
 import { formatAmount, formatNumber } from '../ui/format';
+import { withPlaces } from './pages/typed-places';
 import { dayBefore, type TypedBill } from './typed';
 
 const usualQuantities = ['kwh', 'maxKw', 'kvarh', 'powerFactor'];
@@ -10,7 +11,7 @@ const noMinusSign = (text: string) => text.replace('\u2212', '-');
 /** A kept bill as it would be typed. */
 export function keptAsTyped(bill: BillView, currency: string): TypedBill {
   const amount = (minor: number) => noMinusSign(formatAmount(minor, currency));
-  return {
+  const typed: TypedBill = {
     from: bill.from,
     lastDay: dayBefore(bill.to),
     quantities: Object.entries(bill.quantities).map(([name, value]) => ({
@@ -20,6 +21,7 @@ export function keptAsTyped(bill: BillView, currency: string): TypedBill {
     lines: bill.lines.map(({ label, amountMinor }) => ({ label, amount: amount(amountMinor) })),
     total: bill.totalMinor === null ? '' : amount(bill.totalMinor),
   };
+  return withPlaces(typed, bill.places ?? {});
 }
 
 /** The last day of a period of about a month that begins on a day. */

@@ -1,13 +1,14 @@
 import { minorUnitDecimals, toMinorUnits } from '../../core/units';
 import { billInput, type BillInput } from '../../schemas/bill';
 import { typedNumber } from '../ui/typed-number';
+import { placesToKeep, type TypedPages, type TypedPlaces } from './pages/typed-places';
 
 /** What stands in the form: text as typed, the last day as people say it. */
-export interface TypedBill {
+export interface TypedBill extends TypedPages {
   from: string;
   lastDay: string;
-  quantities: { name: string; figure: string }[];
-  lines: { label: string; amount: string }[];
+  quantities: ({ name: string; figure: string } & TypedPlaces)[];
+  lines: ({ label: string; amount: string } & TypedPlaces)[];
   total: string;
 }
 
@@ -63,6 +64,11 @@ export function readTyped(typed: TypedBill, currency: string): { bill: BillInput
     quantities,
     lines: lines.map(({ label, amountMinor }) => ({ label, amountMinor })),
     totalMinor,
+    places: placesToKeep(
+      typed,
+      lines.map(({ at }) => at),
+    ),
+    attachmentIds: typed.attachmentIds,
   });
   for (const issue of parsed.error?.issues ?? []) faults[fieldOf(issue.path, typed, lines)] ??= issue.message;
   return parsed.success && Object.keys(faults).length === 0 ? { bill: parsed.data } : { faults };

@@ -1,5 +1,23 @@
 export { addDays, addMonths, dayNumber, isCalendarDate, isoDate, weekdayOf } from './dates';
-export { assertLoadSeries, intervalStartMs, quality, stepLengthsMinutes } from './series';
-export type { BillingPeriod, LoadSeries } from './series';
+export { compareLoads, type LoadsBeside } from './compare-loads';
+export { meteredDays, meteredOver, type Metered, type MeteredPeak } from './metered';
+export {
+  aggregateLoad,
+  emptyLoad,
+  endOfLoad,
+  layersThatShow,
+  overlayLoads,
+  type LaidLoad,
+  type LoadGrid,
+  type LoadLayer,
+} from './overlay';
 export { sumLoads } from './sum-loads';
 export { changeBetween, isTimeZone, localDateOf, localDateStartMs, zoneOffsetMs } from './zone';
+export {
+  assertLoadSeries,
+  intervalStartMs,
+  quality,
+  stepLengthsMinutes,
+  type BillingPeriod,
+  type LoadSeries,
+} from './series';

@@ -4,11 +4,15 @@ import { withTrail } from './Trail';
 
 export type ReadingChannel = 'kwh' | 'kvarhLagging' | 'kvarhLeading' | 'quality';
 
-/** One channel of one calendar month (UTC) of readings: little-endian doubles (quality: bytes), NaN where missing. */
+/**
+ * One channel of one calendar month (UTC) of the readings of a file: little-endian doubles (quality: bytes), NaN where missing.
+ * Files of one meter may overlap; of two readings that of the higher rank shows.
+ */
 export class ReadingBlock extends Model<InferAttributes<ReadingBlock>, InferCreationAttributes<ReadingBlock>> {
   declare id: CreationOptional<number>;
   declare meterId: number;
   declare intakeId: number;
+  declare rank: CreationOptional<number>;
   declare channel: ReadingChannel;
   declare month: string;
   declare startMs: number;
@@ -26,6 +30,7 @@ ReadingBlock.init(
     id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
     meterId: { type: DataTypes.INTEGER, allowNull: false },
     intakeId: { type: DataTypes.INTEGER, allowNull: false },
+    rank: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     channel: { type: DataTypes.TEXT, allowNull: false },
     month: { type: DataTypes.TEXT, allowNull: false },
     startMs: { type: DataTypes.BIGINT, allowNull: false },

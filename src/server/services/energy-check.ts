@@ -6,6 +6,12 @@ import type { ScheduleText } from '../../core/tariff';
 const leastKwh = 1;
 const leastShare = 0.002;
 
+/** Whether a printed energy is another one than the metered: by more than its last digit and than a reading an hour late makes. */
+export function energiesDiffer(printed: number, metered: number): boolean {
+  const off = Math.abs(printed - metered);
+  return off > leastKwh && off > leastShare * Math.abs(metered);
+}
+
 const isEnergy = (name: string, unit: string | undefined) => (unit ? unit === 'kWh' : /^kwh/i.test(name));
 
 /**
@@ -19,10 +25,7 @@ export function energyDifference(bill: ReconciledBill, text: ScheduleText): Ener
     if (!metered || !isEnergy(name, units.get(name))) return [];
     return [{ printedKwh, meteredKwh: metered.value }];
   });
-  const differing = compared.filter(({ printedKwh, meteredKwh }) => {
-    const off = Math.abs(printedKwh - meteredKwh);
-    return off > leastKwh && off > leastShare * Math.abs(meteredKwh);
-  });
+  const differing = compared.filter(({ printedKwh, meteredKwh }) => energiesDiffer(printedKwh, meteredKwh));
   const [widest] = differing.sort((a, b) => b.meteredKwh - a.meteredKwh);
   if (!widest) return null;
   const rate = meanEnergyRate(bill);

@@ -1,32 +1,38 @@
-import { toConfirm, type IntakeView, type LoadDays } from '../../schemas/intake';
+import { toConfirm, type IntakeView, type LoadDays, type OverlapChoice } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
-import { Bill } from '../models/Bill';
 import type { Intake } from '../models/Intake';
 import { ReadingBlock } from '../models/ReadingBlock';
 import type { Actor } from '../policies/actor';
-import { destroyBill } from './bills';
 import { present } from './intake';
 import { openIntake, openIntakeForChange } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
 import { daysOf } from './intervals';
-import { keepBills } from './keep-bills';
+import { keepBills, takeBillsBack } from './keep-bills';
 import { keepIntervals } from './keep-intervals';
 
 /**
  * Keeps what a file holds: readings at the engagement's meter, or bills. All of it or nothing.
  *
- * @throws {ServiceError} 422 where the map still has problems or waits for a word, 409 where it overlaps what is kept
+ * @param overlap  Which of the two stands where the file overlaps what is kept
+ * @throws {ServiceError} 422 where the map still has problems or waits for a word, 409 with the two side by side where it
+ *   overlaps what is kept and nothing was chosen
  */
-export async function keepIntake(actor: Actor, id: number, version: number): Promise<IntakeView> {
+export async function keepIntake(
+  actor: Actor,
+  id: number,
+  version: number,
+  overlap?: OverlapChoice,
+): Promise<IntakeView> {
   const open = await openIntakeForChange(actor, id, version);
-  const how = assertReady(open.intake);
-  if (open.intake.kind === 'intervals') await keepIntervals(open, how);
-  else await keepBills(open, how);
+  const how = readyToKeep(open.intake);
+  if (open.intake.kind === 'intervals') await keepIntervals(open, how, overlap);
+  else await keepBills(open, how, overlap);
   return present(open);
 }
 
-function assertReady(intake: Intake): HowToRead {
+/** How the file is to be read. @throws {ServiceError} where it cannot be kept as it stands */
+export function readyToKeep(intake: Intake): HowToRead {
   const { state, fileName } = intake;
   if (state === 'kept') throw conflict(`${fileName} is kept already.`);
   if (state === 'given-up') throw conflict(`${fileName} was given up. Bring it in again to keep it.`);
@@ -54,7 +60,7 @@ export async function undoIntake(actor: Actor, id: number, version: number): Pro
   await inTx(async () => {
     const blocks = await ReadingBlock.findAll({ where: { intakeId: id }, attributes: { exclude: ['values'] } });
     for (const block of blocks) await block.destroy();
-    for (const bill of await Bill.findAll({ where: { intakeId: id } })) await destroyBill(bill);
+    await takeBillsBack(intake);
     await intake.update({ state: 'undone', undoneAt: new Date() });
   });
   return present(open);

@@ -1,45 +1,36 @@
-import type { LoadSeries } from '../../core/load';
+import { formatCount } from '../../components/ui/format';
+import type { IntervalsOverlap, OverlapChoice } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict } from '../errors';
-import { Intake } from '../models/Intake';
 import { markKept, type OpenIntake } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
 import { spanInWords } from './intake-words';
-import { keepSeries, keptSpans } from './readings';
+import { assertSteps, intervalsBeside } from './overlap-intervals';
+import { keepSeries } from './reading-blocks';
 
-const minuteMs = 60_000;
-
-/** Keeps the readings of a file at the meter of its engagement, all or nothing. */
-export async function keepIntervals({ intake, opened }: OpenIntake, how: HowToRead): Promise<void> {
+/**
+ * Keeps the readings of a file at the meter of its engagement, all or nothing. Readings kept before are not touched:
+ * the new ones lie above or beneath them.
+ *
+ * @throws {ServiceError} 409 with both side by side where an interval has a reading already and nothing was chosen
+ */
+export async function keepIntervals(open: OpenIntake, how: HowToRead, overlap?: OverlapChoice): Promise<void> {
+  const { intake, opened } = open;
   const { load } = await readIntervalFile(intake, how);
   await inTx(async () => {
-    await assertFits(load, opened);
+    await assertSteps(opened.meter, load);
+    const beside = await intervalsBeside(open, load);
+    if (beside.asks && !overlap) {
+      throw conflict(inBoth(beside, opened), { overlap: beside });
+    }
+    if (overlap === 'keep-new' && beside.keepNewRefused) throw conflict(beside.keepNewRefused, { overlap: beside });
     await markKept(intake);
-    await keepSeries(opened.meter.id, intake.id, load);
+    await keepSeries(opened.meter.id, intake.id, load, overlap);
   });
 }
 
-/** Whether the readings fit beside those the meter has. */
-async function assertFits(load: LoadSeries, { meter, site, engagement }: OpenIntake['opened']): Promise<void> {
-  const endMs = load.startMs + load.kwh.length * load.stepMinutes * minuteMs;
-  const spans = await keptSpans(meter.id, -8.64e15, 8.64e15);
-  const shared = spans.filter((span) => span.startMs < endMs && span.endMs > load.startMs);
-  const [first] = shared;
-  if (first) {
-    const fromMs = Math.max(load.startMs, first.startMs);
-    const toMs = Math.min(endMs, Math.max(...shared.map((span) => span.endMs)));
-    const file = await Intake.findByPk(first.intakeId);
-    const named = file?.engagementId === engagement.id ? `the file ${file.fileName}` : 'a file of another engagement';
-    throw conflict(
-      `Readings of ${meter.label} from ${spanInWords(fromMs, toMs, site.timeZone)} are kept already, from ${named}. Undo that file first, then keep this one.`,
-      { fromMs, toMs, intakeId: file?.engagementId === engagement.id ? file.id : null },
-    );
-  }
-  const other = spans.find((span) => span.stepMinutes !== load.stepMinutes);
-  if (other) {
-    throw conflict(
-      `The kept readings of ${meter.label} are ${other.stepMinutes}-minute intervals, this file has ${load.stepMinutes}-minute intervals. Ask for both in one length, or undo the other file first.`,
-      { intakeId: other.intakeId },
-    );
-  }
+function inBoth({ span, files, total }: IntervalsOverlap, { meter, site }: OpenIntake['opened']): string {
+  const names = files.map(({ fileName }) => (fileName ? `the file ${fileName}` : 'a file of another engagement'));
+  const where = span ? ` from ${spanInWords(span.fromMs, span.toMs, site.timeZone)}` : '';
+  return `Readings of ${meter.label}${where} are kept already, from ${names.join(' and ')}; ${formatCount(total?.inCommon ?? 0, 'reading')} of this file meet them. Look at both side by side in the step Keep and choose which stand.`;
 }

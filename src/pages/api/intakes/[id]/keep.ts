@@ -1,4 +1,4 @@
-import { intakeStep } from '@/schemas/intake';
+import { keepStep } from '@/schemas/intake';
 import { endpoint, parseOrThrow, readJson } from '@/server/http';
 import { rowId } from '@/server/row-id';
 import { keepIntake } from '@/server/services/intake-keep';
@@ -7,6 +7,6 @@ import { openIntake } from '@/server/services/intake-guard';
 export const POST = endpoint(async ({ actor, params, request }) => {
   const id = rowId(params.id);
   await openIntake(actor, id);
-  const { version } = parseOrThrow(intakeStep, await readJson(request));
-  return Response.json(await keepIntake(actor, id, version));
+  const { version, overlap } = parseOrThrow(keepStep, await readJson(request));
+  return Response.json(await keepIntake(actor, id, version, overlap));
 });

@@ -35,7 +35,11 @@ export const requestCaps = { files: 200, bytes: 1024 ** 3 };
 
 const version = z.number().int().min(0);
 const day = z.string().refine(isCalendarDate, 'Choose a day of the calendar.');
-const words = (most: number) => z.string().trim().max(most, `Shorten it to ${most.toLocaleString('en-US')} characters.`);
+const words = (most: number) =>
+  z
+    .string()
+    .trim()
+    .max(most, `Shorten it to ${most.toLocaleString('en-US')} characters.`);
 const waitDays = z.number().int().min(1).max(60);
 
 const itemInput = z

@@ -28,7 +28,9 @@ const are = (count: number) => (count === 1 ? 'is' : 'are');
 
 /** Kind, motor and days of an item, after its words. */
 export const aboutItem = ({ kind, motor, period }: ItemWords) =>
-  [itemKindWords[kind], motor, period && formatPeriod(period.from, period.to, { year: true })].filter(Boolean).join(', ');
+  [itemKindWords[kind], motor, period && formatPeriod(period.from, period.to, { year: true })]
+    .filter(Boolean)
+    .join(', ');
 
 /** `Works 2: two things are needed by Tue 15 Dec 2026` */
 export const requestSubject = ({ site, items, dueOn }: RequestLetterContent) =>
@@ -52,8 +54,10 @@ export function reminderSubject({ site, items, dueOn }: RequestLetterContent, to
 /** What a reminder says first. */
 export function reminderOpening({ site, items, dueOn }: RequestLetterContent, today: string): string {
   const count = things(items.length);
-  if (dueOn > today) return `for the power bills of ${site} ${count} ${are(items.length)} still open, until ${formatLongDate(dueOn)}.`;
-  if (dueOn === today) return `for the power bills of ${site} ${count} ${are(items.length)} still open; today is the day.`;
+  if (dueOn > today)
+    return `for the power bills of ${site} ${count} ${are(items.length)} still open, until ${formatLongDate(dueOn)}.`;
+  if (dueOn === today)
+    return `for the power bills of ${site} ${count} ${are(items.length)} still open; today is the day.`;
   return `for the power bills of ${site} we still miss ${count}, asked for until ${formatLongDate(dueOn)}. Without ${items.length === 1 ? 'it' : 'them'} we cannot go on. If you need more time, tell us.`;
 }
 

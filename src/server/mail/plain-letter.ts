@@ -90,7 +90,10 @@ export function plainLetter(input: PlainLetterInput): PlainLetter {
   ];
   const regards =
     sender.length > 0
-      ? `With kind regards,<br><b>${escape(sender[0] ?? '')}</b>${sender.slice(1).map((line) => `<br>${escape(line)}`).join('')}`
+      ? `With kind regards,<br><b>${escape(sender[0] ?? '')}</b>${sender
+          .slice(1)
+          .map((line) => `<br>${escape(line)}`)
+          .join('')}`
       : escape(practice);
   const body = [
     `<h1 style="margin:12px 0 16px;font-size:22px;line-height:27px;font-weight:900;color:${ink}" class="ink">${escape(subject)}</h1>`,

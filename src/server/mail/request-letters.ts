@@ -74,7 +74,11 @@ export function sentBackLetter(request: AddressedRequest, madeOn: string): Plain
     ...around(request, madeOn),
     subject: `${content.site}: one thing needs another look`,
     parts: [
-      { paragraphs: [sentBackOpening(content)], rows: content.items.map(rowOf), link: linkOf(request, 'Open the list') },
+      {
+        paragraphs: [sentBackOpening(content)],
+        rows: content.items.map(rowOf),
+        link: linkOf(request, 'Open the list'),
+      },
     ],
   });
 }
@@ -98,7 +102,8 @@ export function receivedLetter(content: ReceivedContent, madeOn: string): PlainL
   const { client, site, code, number, items, left, recipientName, practice, link } = content;
   const files = items.reduce((sum, item) => sum + item.files.length, 0);
   const what = files > 0 ? `sent ${filesCame(files)}` : 'answered';
-  const rest = left === 0 ? 'Everything in it is answered.' : `${formatCount(left, 'thing is', 'things are')} still open.`;
+  const rest =
+    left === 0 ? 'Everything in it is answered.' : `${formatCount(left, 'thing is', 'things are')} still open.`;
   return plainLetter({
     subject: `${code}: ${client} ${what} for request ${number}`,
     recipientName,

@@ -79,7 +79,12 @@ export function presentClientRequest(
   const maker = rows.users.get(rows.request.madeById ?? 0);
   return {
     ...frameOf(rows),
-    by: { name: maker?.name ?? practice.name, email: maker?.email ?? '', practice: practice.name, phone: practice.phone },
+    by: {
+      name: maker?.name ?? practice.name,
+      email: maker?.email ?? '',
+      practice: practice.name,
+      phone: practice.phone,
+    },
     items: rows.items.map((item) => ({
       ...itemFrame(rows, item),
       files: filesOf(rows, item).map((file) => clientFile(rows, file, reader)),

@@ -116,4 +116,3 @@ export async function answerInWords(actor: Actor, { open, item }: OpenAnswer, in
     else await settleAfterRemoval(item);
   });
 }
-

@@ -30,10 +30,9 @@ async function newsOf(open: OpenRequest, sinceMs: number) {
     return isNew;
   };
   const items = rows.items.flatMap((item): News[] => {
-    const files = rows.files.filter(
-      (file) => file.itemId === item.id && file.state === 'new' && hear(file.createdAt),
-    );
-    const isAnswer = item.state === 'answered' && item.answer !== null && item.answeredAt !== null && hear(item.answeredAt);
+    const files = rows.files.filter((file) => file.itemId === item.id && file.state === 'new' && hear(file.createdAt));
+    const isAnswer =
+      item.state === 'answered' && item.answer !== null && item.answeredAt !== null && hear(item.answeredAt);
     if (files.length === 0 && !isAnswer) return [];
     return [{ words: item.words, files: files.map(({ fileName }) => fileName), answer: isAnswer ? item.answer : null }];
   });

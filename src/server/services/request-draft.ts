@@ -55,7 +55,12 @@ export async function requestDraft(actor: Actor, opened: OpenEngagement): Promis
     site: opened.site.name,
     practice: { name: practice?.name ?? '', phone: practice?.phone ?? '' },
     by: { name: actor.name, email: actor.email },
-    people: people.map(({ id, name, email, passwordHash }) => ({ id, name, email, hasPassword: passwordHash !== null })),
+    people: people.map(({ id, name, email, passwordHash }) => ({
+      id,
+      name,
+      email,
+      hasPassword: passwordHash !== null,
+    })),
     motors: motors.map(({ id, name }) => ({ id, name })),
     items,
   };

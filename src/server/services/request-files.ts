@@ -34,7 +34,9 @@ export async function openRequestFile(actor: Actor, open: OpenRequest, key: stri
 }
 
 const isFree = ({ state, updatedAt }: RequestFile) =>
-  state === 'new' || state === 'set-aside' || (state === 'taking' && Date.now() - updatedAt.getTime() > longestTakingMs);
+  state === 'new' ||
+  state === 'set-aside' ||
+  (state === 'taking' && Date.now() - updatedAt.getTime() > longestTakingMs);
 
 /** Reads a file's row again and holds it to what the person saw. Call inside inTx. */
 async function reserve(file: RequestFile, version: number): Promise<void> {
@@ -50,7 +52,12 @@ async function reserve(file: RequestFile, version: number): Promise<void> {
  *
  * @throws {ServiceError} 409 where it was taken already or the engagement is closed
  */
-async function takeIn(actor: Actor, { file, item }: Came, code: string, input: Extract<FileActInput, { act: 'intake' }>) {
+async function takeIn(
+  actor: Actor,
+  { file, item }: Came,
+  code: string,
+  input: Extract<FileActInput, { act: 'intake' }>,
+) {
   const engagement = await authorizeIntake(actor, code);
   const before = file.state;
   await inTx(async () => {

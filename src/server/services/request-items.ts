@@ -50,7 +50,13 @@ export async function decideItem(open: OpenRequest, item: RequestItem, input: It
     if (item.state === 'asked' || item.state === 'sent-back') throw conflict('Nothing came for this item yet.');
     if (input.to === 'accepted') return item.update({ state: 'accepted', reason: null });
     for (const file of await liveFiles(item)) if (file.state === 'new') await file.update({ state: 'set-aside' });
-    return item.update({ state: 'sent-back', reason: input.reason, answer: null, answeredById: null, answeredAt: null });
+    return item.update({
+      state: 'sent-back',
+      reason: input.reason,
+      answer: null,
+      answeredById: null,
+      answeredAt: null,
+    });
   });
   if (input.to === 'sent-back') await tellSentBack(open, item);
 }

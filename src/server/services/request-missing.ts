@@ -1,5 +1,12 @@
 import { addDays, dayNumber, localDateOf } from '../../core/load';
-import { formatCount, formatDateTime, formatList, formatMonth, formatNumber, formatPeriod } from '../../components/ui/format';
+import {
+  formatCount,
+  formatDateTime,
+  formatList,
+  formatMonth,
+  formatNumber,
+  formatPeriod,
+} from '../../components/ui/format';
 import type { BillView } from '../../schemas/bill';
 import type { IntervalsStation, MonthOfLoad, ReadingGap } from '../../schemas/intake';
 import type { MotorView } from '../../schemas/motor';
@@ -88,7 +95,9 @@ function missingGaps(gaps: ReadingGap[], gapCount: number, timeZone: string): Dr
 
 /** Months with active energy but no reactive energy; all of the year where the meter's file has no such column. */
 function missingReactive(months: MonthOfLoad[], year: Year): DraftItem[] {
-  const without = months.filter(({ kwh, kvarhLagging, kvarhLeading }) => kwh !== null && kvarhLagging === null && kvarhLeading === null);
+  const without = months.filter(
+    ({ kwh, kvarhLagging, kvarhLeading }) => kwh !== null && kvarhLagging === null && kvarhLeading === null,
+  );
   if (without.length === 0) return [];
   const whole = without.length === months.length;
   return [
@@ -104,7 +113,11 @@ function missingReactive(months: MonthOfLoad[], year: Year): DraftItem[] {
 }
 
 /** What of the year's readings is missing. */
-export function missingIntervals(station: Pick<IntervalsStation, 'year' | 'timeZone'>, meter: string, year: Year): DraftItem[] {
+export function missingIntervals(
+  station: Pick<IntervalsStation, 'year' | 'timeZone'>,
+  meter: string,
+  year: Year,
+): DraftItem[] {
   if (!station.year) {
     return [
       item({

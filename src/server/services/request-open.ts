@@ -53,7 +53,9 @@ export async function openRequestAsStaff(actor: Actor, code: string, number: num
 export async function openRequestToAnswer(actor: Actor, code: string, number: number): Promise<OpenRequest> {
   const open = await openRequest(actor, code, number);
   if (!canAnswerRequest(actor, open.scope)) {
-    throw forbidden('Files are sent by the people this request went to, and by those of the client who record readings.');
+    throw forbidden(
+      'Files are sent by the people this request went to, and by those of the client who record readings.',
+    );
   }
   return open;
 }

@@ -30,7 +30,8 @@ async function checkFits(opened: OpenEngagement, input: RequestInput): Promise<v
     if (motorId !== null && !motors.has(motorId))
       fields[`items.${index}.motorId`] = ['This motor is none of the engagement. Choose another, or none.'];
   });
-  if (Object.keys(fields).length > 0) throw invalid('The request was not sent. Each entry to change is marked.', fields);
+  if (Object.keys(fields).length > 0)
+    throw invalid('The request was not sent. Each entry to change is marked.', fields);
 }
 
 function assertNotClosed({ engagement }: OpenEngagement): void {

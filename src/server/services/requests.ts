@@ -16,7 +16,12 @@ import { RequestReminder } from '../models/RequestReminder';
 import { User } from '../models/User';
 import type { Actor } from '../policies/actor';
 import { canAnswerRequest, canReadRequest, mayKnowOfRequests } from '../policies/request';
-import { presentClientRequest, presentRequestSummary, presentStaffRequest, type RequestRows } from '../presenters/request';
+import {
+  presentClientRequest,
+  presentRequestSummary,
+  presentStaffRequest,
+  type RequestRows,
+} from '../presenters/request';
 import { openWhere, type OpenEngagement } from './engagements';
 import { listMotors } from './motors';
 import { nextReminderDay } from './reminder-days';
@@ -67,7 +72,10 @@ export async function clientRequest(actor: Actor, open: OpenRequest): Promise<Cl
 }
 
 async function requestsOf(opened: OpenEngagement): Promise<OpenRequest[]> {
-  const rows = await DataRequest.findAll({ where: { engagementId: opened.engagement.id }, order: [['number', 'DESC']] });
+  const rows = await DataRequest.findAll({
+    where: { engagementId: opened.engagement.id },
+    order: [['number', 'DESC']],
+  });
   return Promise.all(rows.map((request) => withScope(opened, request)));
 }
 

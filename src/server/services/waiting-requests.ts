@@ -36,8 +36,8 @@ function arrived(opened: OpenEngagement, request: RequestSummary, today: string)
 }
 
 function awaited(opened: OpenEngagement, request: RequestSummary, today: string): WaitingView {
-  const { number, dueOn, daysLeft, people, items, answered } = request;
-  const isLate = daysLeft < 0;
+  const { number, dueOn, people, items, answered } = request;
+  const isLate = dueOn < today;
   return {
     id: `request-${opened.engagement.id}-${number}`,
     group: isLate ? 'overdue' : 'others',

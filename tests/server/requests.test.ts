@@ -50,7 +50,11 @@ describe('policies of requests', () => {
     ['addressed, without rights', person({}), [false, true, true, true]],
     ['not addressed, without rights', person({ id: 2 }), [false, false, false, false]],
     ['viewer', person({ id: 2, rights: { ...rights, view: true } }), [false, true, false, false]],
-    ['viewer who records', person({ id: 2, rights: { ...rights, view: true, record: true } }), [false, true, true, false]],
+    [
+      'viewer who records',
+      person({ id: 2, rights: { ...rights, view: true, record: true } }),
+      [false, true, true, false],
+    ],
     ['recorder who may not view', person({ id: 2, rights: { ...rights, record: true } }), [false, false, false, false]],
     ['addressed id of another client', person({ clientId: 8 }), [false, false, false, false]],
   ];
@@ -87,7 +91,13 @@ describe('opening a request', () => {
   it('tells people of another client, and consultants elsewhere, nothing of it', async () => {
     const { request } = await ask(scene);
     const other = await buildRequestScene();
-    for (const actor of [other.asked, other.recorder, other.consultant, await buildActor({ role: 'client' }), scene.outsideClient]) {
+    for (const actor of [
+      other.asked,
+      other.recorder,
+      other.consultant,
+      await buildActor({ role: 'client' }),
+      scene.outsideClient,
+    ]) {
       await expect(openRequest(actor, scene.code, request.number)).rejects.toMatchObject({ status: 404 });
       await expect(openRequestToAnswer(actor, scene.code, request.number)).rejects.toMatchObject({ status: 404 });
       await expect(openRequestAsStaff(actor, scene.code, request.number)).rejects.toMatchObject({ status: 404 });
@@ -199,9 +209,9 @@ describe('sendRequest', () => {
     const mail = { change: 'mail' as const, userId: scene.asked.id, version: open.request.version };
     await changeRequest(await openRequestAsStaff(scene.consultant, scene.code, 1), mail);
     expect(await RequestPerson.findOne({ where: { requestId: open.request.id } })).toMatchObject({ state: 'sent' });
-    await expect(
-      changeRequest(await openRequestAsStaff(scene.consultant, scene.code, 1), mail),
-    ).rejects.toMatchObject({ status: 409 });
+    await expect(changeRequest(await openRequestAsStaff(scene.consultant, scene.code, 1), mail)).rejects.toMatchObject({
+      status: 409,
+    });
     expect(catcher.received).toHaveLength(1);
   });
 });
@@ -254,6 +264,9 @@ describe('Today', () => {
     const id = `request-${scene.engagement.id}-1`;
     expect((await rows()).find((row) => row.id === id)).toMatchObject({ group: 'others', dateIs: 'due' });
     expect((await rows()).some((row) => row.id.startsWith('station-'))).toBe(false);
-    expect((await rows(addDays(today(), 14))).find((row) => row.id === id)).toMatchObject({ group: 'overdue', days: 4 });
+    expect((await rows(addDays(today(), 14))).find((row) => row.id === id)).toMatchObject({
+      group: 'overdue',
+      days: 4,
+    });
   });
 });

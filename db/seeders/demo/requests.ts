@@ -32,7 +32,10 @@ function loggerFile(): string {
 /** An open request to the first client, with one of its three things answered. */
 export async function askKestrel(consultant: Actor, opened: OpenEngagement, reader: string): Promise<void> {
   const user = await User.findOne({ where: { email: reader }, rejectOnEmpty: true });
-  const motor = await Motor.findOne({ where: { engagementId: opened.engagement.id, name: 'M-2' }, rejectOnEmpty: true });
+  const motor = await Motor.findOne({
+    where: { engagementId: opened.engagement.id, name: 'M-2' },
+    rejectOnEmpty: true,
+  });
   const { request } = await sendRequest(consultant, opened, {
     requestId: randomUUID(),
     dueOn: daysAgo(-9),

@@ -48,7 +48,10 @@ export function staffHeading({ number, state, items, dueOn, daysLeft }: StaffReq
 } {
   const answered = items.filter((item) => !isWanted(item)).length;
   const files = items.flatMap(({ files: all }) => all).filter((file) => file.state === 'new').length;
-  const came = `${capital(formatSpelled(answered))} of ${things(items.length)} ${answered === 1 ? 'is' : 'are'} answered`;
+  const came =
+    answered === 0
+      ? `None of ${things(items.length)} is answered yet`
+      : `${capital(formatSpelled(answered))} of ${things(items.length)} ${answered === 1 ? 'is' : 'are'} answered`;
   const due = `due ${formatLongDate(dueOn)}, ${dueWords(daysLeft)}`;
   if (state === 'withdrawn') return { title: `Request ${number} was withdrawn.`, lead: `${came}.` };
   if (state === 'closed') return { title: `Request ${number} is closed.`, lead: `${came}.` };

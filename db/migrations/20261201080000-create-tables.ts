@@ -18,6 +18,7 @@ import { attachmentChecks, attachmentIndexes, attachmentTables } from './tables/
 import { billChecks, billTables } from './tables/bills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
+import { requestChecks, requestIndexes, requestTables, requestUniques } from './tables/requests';
 
 /** Columns of the tables, in the order in which the tables can be made. */
 const tables: Record<string, Columns> = {
@@ -152,6 +153,7 @@ const tables: Record<string, Columns> = {
     ...version,
     ...stamps,
   },
+  ...requestTables,
   plans: {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),
@@ -254,6 +256,7 @@ const indexes: Record<string, string[][]> = {
   ...intakeIndexes,
   ...attachmentIndexes,
   ...findingIndexes,
+  ...requestIndexes,
   hour_entries: [['user_id', 'day']],
   trail_rows: [['subject', 'subject_id'], ['actor_id'], ['at']],
 };
@@ -268,6 +271,7 @@ const checks: Record<string, string[]> = {
   ...billChecks,
   ...attachmentChecks,
   ...findingChecks,
+  ...requestChecks,
   hour_entries: ['minutes > 0', 'minutes <= 1440'],
   engagements: ['year_from < year_to'],
 };
@@ -315,6 +319,7 @@ export async function up(database: QueryInterface): Promise<void> {
   await database.addIndex('editions', ['engagement_id', 'number'], { unique: true, name: 'editions_number' });
   await database.addIndex('schedule_revisions', ['schedule_id', 'number'], { unique: true, name: 'revisions_number' });
   await database.addIndex('schedule_drafts', ['schedule_slug', 'user_id'], { unique: true, name: 'drafts_once' });
+  for (const [table, columns, name] of requestUniques) await database.addIndex(table, columns, { unique: true, name });
 }
 
 /** Takes it away again. */

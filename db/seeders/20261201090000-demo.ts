@@ -33,6 +33,7 @@ import { attachJuneBill } from './demo/bill-pages';
 import { addPersonWithPassword, bringIn, daysAgo, ended } from './demo/helpers';
 import { harrowBills, harrowSchedule } from './demo/harrow';
 import { kestrelBillsFile, kestrelMeterFile } from './demo/kestrel-year';
+import { askKestrel } from './demo/requests';
 import { earlierAdjustedKw, kestrel, kestrelMotors } from './demo/scenario';
 
 const [ilse, tom, sana, mira, jon] = demoAccounts.people;
@@ -229,6 +230,7 @@ export async function up(): Promise<void> {
   await inTheNameOf(staff.tom, () => auditKestrel(staff.tom, works));
   await inTheNameOf(staff.tom, () => writeToUtility(staff.tom, works));
   await inTheNameOf(staff.tom, () => proposeToKestrel(staff.tom, works));
+  await inTheNameOf(staff.tom, () => askKestrel(staff.tom, works, mira.email));
   const pier = await inTheNameOf(staff.sana, () => openHarrow(staff));
   await inTheNameOf(staff.sana, () => writeHarrowSchedule(staff.sana));
   await inTheNameOf(staff.tom, () => log(staff.tom, works, tomsHours));

@@ -15,11 +15,13 @@ function demoSecret(folder: string): string {
 async function serve(stopMore: () => void = () => undefined): Promise<void> {
   const { startServer, stopServer } = await import('./main');
   const { closeOrphanedJobs } = await import('./services/jobs');
+  const { startMailClock } = await import('./mail-clock');
   const server = await startServer();
   await closeOrphanedJobs();
+  const stopMailClock = startMailClock();
   closeWithGrace({ delay: 10_000 }, async () => {
+    await Promise.all([stopMailClock(), stopServer(server)]);
     stopMore();
-    await stopServer(server);
   });
 }
 

@@ -1,97 +1,78 @@
-import { photoCapPixels, type MediaType } from '../schemas/attachment';
+import { Readable } from 'node:stream';
+import { afterHead } from './body-head';
 import { invalid } from './errors';
 
-/** How many bytes of a file are enough to know what it is and, of a photo, how large. A camera's own preview comes first. */
-export const headBytes = 1024 * 1024;
+const headBytes = 4096;
 
-interface Pixels {
-  width: number;
-  height: number;
-}
-
+const begins = (head: Buffer, bytes: number[], at = 0) => bytes.every((byte, index) => head[at + index] === byte);
 const ascii = (head: Buffer, from: number, to: number) => head.toString('latin1', from, to);
 
-/** The start-of-frame segment of a JPEG says its size; segments before it are stepped over. */
-function jpegPixels(head: Buffer): Pixels | null {
-  for (let at = 2; at + 9 <= head.length && head[at] === 0xff;) {
-    const marker = head[at + 1] ?? 0;
-    const isFrame = marker >= 0xc0 && marker <= 0xcf && ![0xc4, 0xc8, 0xcc].includes(marker);
-    if (isFrame) return { height: head.readUInt16BE(at + 5), width: head.readUInt16BE(at + 7) };
-    at += marker === 0xff ? 1 : 2 + head.readUInt16BE(at + 2);
-  }
+/** Brands of HEIF containers that hold HEVC pictures (ISO/IEC 23008-12). */
+const heicBrands = new Set(['heic', 'heix', 'heim', 'heis', 'hevc', 'hevx', 'mif1', 'msf1']);
+
+function pictureOf(head: Buffer): string | null {
+  if (begins(head, [0xff, 0xd8, 0xff])) return 'image/jpeg';
+  if (begins(head, [0x89, 0x50, 0x4e, 0x47, 0x0d, 0x0a, 0x1a, 0x0a])) return 'image/png';
+  if (ascii(head, 0, 4) === 'RIFF' && ascii(head, 8, 12) === 'WEBP') return 'image/webp';
+  if (ascii(head, 4, 8) === 'ftyp' && heicBrands.has(ascii(head, 8, 12))) return 'image/heic';
   return null;
 }
 
-function pngPixels(head: Buffer): Pixels | null {
-  if (head.length < 24 || ascii(head, 12, 16) !== 'IHDR') return null;
-  return { width: head.readUInt32BE(16), height: head.readUInt32BE(20) };
+/** Workbooks are archives; which kind is told by the first entry of an .ods and by the name of the others. */
+function archiveOf(head: Buffer, fileName: string): string | null {
+  if (!begins(head, [0x50, 0x4b, 0x03, 0x04])) return null;
+  if (ascii(head, 30, 100).startsWith('mimetypeapplication/vnd.oasis.opendocument.spreadsheet')) {
+    return 'application/vnd.oasis.opendocument.spreadsheet';
+  }
+  const isWorkbook = /\.xls[xm]$/i.test(fileName);
+  return isWorkbook ? 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet' : 'application/zip';
 }
 
-/** The three kinds of WebP each say their size in their own way. */
-function webpPixels(head: Buffer): Pixels | null {
-  if (head.length < 30) return null;
-  const kind = ascii(head, 12, 16);
-  if (kind === 'VP8X') return { width: 1 + head.readUIntLE(24, 3), height: 1 + head.readUIntLE(27, 3) };
-  if (kind === 'VP8 ') return { width: head.readUInt16LE(26) & 0x3fff, height: head.readUInt16LE(28) & 0x3fff };
-  if (kind !== 'VP8L') return null;
-  const bits = head.readUInt32LE(21);
-  return { width: 1 + (bits & 0x3fff), height: 1 + ((bits >>> 14) & 0x3fff) };
+/** The bytes as signs: UTF-16 where its mark stands first, else one sign a byte, which is enough to know text from other things. */
+function signsOf(head: Buffer): string {
+  const whole = head.subarray(0, head.length - (head.length % 2));
+  if (begins(head, [0xff, 0xfe])) return whole.toString('utf16le', 2);
+  if (begins(head, [0xfe, 0xff])) return Buffer.from(whole).swap16().toString('utf16le', 2);
+  return head.toString('latin1', begins(head, [0xef, 0xbb, 0xbf]) ? 3 : 0);
 }
 
-interface Kind {
-  mediaType: MediaType;
-  fits: (head: Buffer) => boolean;
-  pixels?: (head: Buffer) => Pixels | null;
-}
-
-const kinds: Kind[] = [
-  // ISO 32000-1, annex H note 13: readers accept the header anywhere within the first 1024 bytes.
-  { mediaType: 'application/pdf', fits: (head) => head.subarray(0, 1024).includes('%PDF-') },
-  { mediaType: 'image/jpeg', fits: (head) => ascii(head, 0, 3) === '\xff\xd8\xff', pixels: jpegPixels },
-  { mediaType: 'image/png', fits: (head) => ascii(head, 0, 8) === '\x89PNG\r\n\x1a\n', pixels: pngPixels },
-  {
-    mediaType: 'image/webp',
-    fits: (head) => ascii(head, 0, 4) === 'RIFF' && ascii(head, 8, 12) === 'WEBP',
-    pixels: webpPixels,
-  },
-];
-
-const heicBrands = ['heic', 'heix', 'heim', 'heis', 'hevc', 'hevx', 'mif1', 'msf1', 'avif'];
-
-/** Files people attach by mistake, each with what to do instead. */
-function misfit(head: Buffer): string {
-  if (ascii(head, 4, 8) === 'ftyp' && heicBrands.includes(ascii(head, 8, 12))) {
-    return 'is a photo in the format HEIC or AVIF, which not every browser can show. Save or share it as JPEG, then attach that.';
-  }
-  if (ascii(head, 0, 4) === 'II*\0' || ascii(head, 0, 4) === 'MM\0*') {
-    return 'is a scan in the format TIFF. Save it as PDF or JPEG, then attach that.';
-  }
-  if (ascii(head, 0, 4) === 'PK\x03\x04') {
-    return 'is a workbook, a text document or a ZIP archive. Tables of bills go through Bring in a file; save anything else as PDF.';
-  }
-  if (/^\s*(<!doctype|<html|<\?xml|<svg)/i.test(ascii(head, 0, 300))) {
-    return 'is a web page and not what its name says. Print the page as PDF, then attach that.';
-  }
-  return 'is neither a PDF nor a photo (JPEG, PNG or WebP): its first bytes say so, whatever its name. Save it as one of these.';
+/** Text has no control signs but tabs, ends of lines and pages, and the end of file of old systems; a web page is none. */
+function textOf(head: Buffer): string | null {
+  const signs = signsOf(head);
+  if ([...signs].some((sign) => sign < ' ' && !'\t\n\f\r\u001a'.includes(sign))) return null;
+  const start = signs.slice(0, 300).trimStart().toLowerCase();
+  if (/^(<!doctype html|<html|<svg|<script)/.test(start)) return null;
+  return start.startsWith('<') ? 'application/xml' : 'text/plain';
 }
 
 /**
- * What a file is by its first bytes; its name and what the browser calls it count for nothing.
- *
- * @throws {ServiceError} 422 for anything but PDF, JPEG, PNG and WebP, and for a photo too large to show
+ * What a file is by its first bytes; its name decides only what kind of archive a workbook is. Null for what is not
+ * taken: programs, web pages, films, documents of word processors in their old form.
  */
-export function mediaTypeOf(head: Buffer, fileName: string): MediaType {
-  const kind = kinds.find(({ fits }) => fits(head));
-  if (!kind) throw invalid(`${fileName} ${misfit(head)}`);
-  if (!kind.pixels) return kind.mediaType;
-  const size = kind.pixels(head);
-  if (!size || size.width === 0 || size.height === 0) {
-    throw invalid(`${fileName} begins like a photo but does not say how large it is. Save the photo once more.`);
+export function mediaTypeOf(head: Buffer, fileName: string): string | null {
+  if (begins(head, [0xd0, 0xcf, 0x11, 0xe0, 0xa1, 0xb1, 0x1a, 0xe1])) {
+    return /\.xls$/i.test(fileName) ? 'application/vnd.ms-excel' : null;
   }
-  if (size.width * size.height > photoCapPixels) {
-    throw invalid(
-      `${fileName} is ${size.width} by ${size.height} pixels, more than the 64 million that can be shown. Save it smaller.`,
-    );
-  }
-  return kind.mediaType;
+  if (ascii(head, 0, 1024).includes('%PDF-')) return 'application/pdf';
+  return pictureOf(head) ?? archiveOf(head, fileName) ?? textOf(head);
 }
+
+/**
+ * Lets a file through once its first bytes say that it is of a kind that is taken; `told` hears which.
+ *
+ * @throws {ServiceError} 422 through the stream, before anything of it went on
+ */
+export function checkedBody(body: Readable, fileName: string, told: (mediaType: string) => void): Readable {
+  const onHead = (head: Buffer) => {
+    const mediaType = mediaTypeOf(head, fileName);
+    if (mediaType === null) throw notTaken(fileName);
+    told(mediaType);
+  };
+  return Readable.from(afterHead(body, { headBytes, onHead }), { objectMode: false });
+}
+
+const notTaken = (fileName: string) =>
+  invalid(
+    `${fileName} is of a kind that cannot be taken. Send tables (CSV, text, xlsx, xls, ods, XML, also zipped), PDFs, or photos (JPEG, PNG, WebP, HEIC).`,
+    { fileName: ['Save it as one of these kinds, or take a photo of it.'] },
+  );

@@ -1,30 +1,12 @@
 import { Readable } from 'node:stream';
 import { pagesCapBytes, type MediaType } from '../schemas/attachment';
+import { afterHead } from './body-head';
 import { storeOriginal, type StoredFile } from './drawer';
 import { tooLarge } from './errors';
-import { headBytes, mediaTypeOf } from './media-type';
+import { headBytes, pageTypeOf } from './page-type';
 
-/** Passes the bytes on once the first of them say what the file is, and counts them. */
-async function* looked(body: Readable, onHead: (head: Buffer) => void): AsyncGenerator<Buffer> {
-  let head: Buffer | null = Buffer.alloc(0);
-  let bytes = 0;
-  // A refusal leaves the request open, so that the sender can be told.
-  for await (const chunk of body.iterator({ destroyOnReturn: false }) as AsyncIterable<Buffer>) {
-    bytes += chunk.length;
-    if (bytes > pagesCapBytes) throw tooLarge('The file is larger than 32 MiB. Split it by bill, or save it smaller.');
-    if (!head) {
-      yield chunk;
-      continue;
-    }
-    head = Buffer.concat([head, chunk]);
-    if (head.length < headBytes) continue;
-    onHead(head);
-    yield head;
-    head = null;
-  }
-  if (!head || head.length === 0) return;
-  onHead(head);
-  yield head;
+function refuseLarge(bytes: number): void {
+  if (bytes > pagesCapBytes) throw tooLarge('The file is larger than 32 MiB. Split it by bill, or save it smaller.');
 }
 
 /**
@@ -34,10 +16,8 @@ async function* looked(body: Readable, onHead: (head: Buffer) => void): AsyncGen
  */
 export async function storePages(body: Readable, fileName: string): Promise<StoredFile & { mediaType: MediaType }> {
   let mediaType: MediaType = 'application/pdf';
-  const stream = Readable.from(
-    looked(body, (head) => (mediaType = mediaTypeOf(head, fileName))),
-    { objectMode: false },
-  );
-  const stored = await storeOriginal(stream);
+  const onHead = (head: Buffer) => (mediaType = pageTypeOf(head, fileName));
+  const looked = afterHead(body, { headBytes, onHead, onCount: refuseLarge });
+  const stored = await storeOriginal(Readable.from(looked, { objectMode: false }));
   return { ...stored, mediaType };
 }

@@ -15,6 +15,10 @@ const signedIn: Row = ['sign in', 'reached', 'reached', 'reached', 'reached', 'r
 const staff: Row = ['sign in', 'not found', 'not found', 'reached', 'reached', 'reached'];
 const members: Row = ['sign in', 'not found', 'not found', 'not found', 'reached', 'reached'];
 const released: Row = ['sign in', 'not found', 'reached', 'not found', 'reached', 'reached'];
+/** For the client's people alone; who works on it may know of it. */
+const clientOnly: Row = ['sign in', 'not found', 'reached', 'not found', 'forbidden', 'forbidden'];
+/** For the practice alone; the client's people may know of it. */
+const practiceOnly: Row = ['sign in', 'not found', 'forbidden', 'not found', 'reached', 'reached'];
 const partners: Row = ['sign in', 'not found', 'not found', 'forbidden', 'forbidden', 'reached'];
 
 /** Every method and address x {nobody, client of another firm, client, consultant not a member, consultant, partner}. */
@@ -53,6 +57,9 @@ export const roleTable: Record<string, Row> = {
   'GET /engagements/[code]/proof': members,
   'GET /engagements/[code]/hours': members,
   'GET /engagements/[code]/intake/[id]': members,
+  'GET /engagements/[code]/requests': members,
+  'GET /engagements/[code]/requests/new': members,
+  'GET /engagements/[code]/requests/[number]': members,
   'GET /schedules': staff,
   'GET /schedules/[id]': staff,
   'GET /schedules/[id]/edit': staff,
@@ -76,6 +83,8 @@ export const roleTable: Record<string, Row> = {
   'GET /client/[code]/bills': released,
   'GET /client/[code]/reports': released,
   'GET /client/[code]/reports/[number]': released,
+  'GET /client/[code]/requests': released,
+  'GET /client/[code]/requests/[number]': released,
 
   'GET /api/engagements': staff,
   'POST /api/engagements': staff,
@@ -99,6 +108,14 @@ export const roleTable: Record<string, Row> = {
   'GET /api/engagements/[code]/plans': members,
   'POST /api/engagements/[code]/plans': members,
   'POST /api/engagements/[code]/plans/search': members,
+  'POST /api/engagements/[code]/requests': members,
+  'PATCH /api/engagements/[code]/requests/[number]': practiceOnly,
+  'PATCH /api/engagements/[code]/requests/[number]/items/[position]': practiceOnly,
+  'PUT /api/engagements/[code]/requests/[number]/items/[position]/answer': clientOnly,
+  'PUT /api/engagements/[code]/requests/[number]/items/[position]/uploads': clientOnly,
+  'GET /api/engagements/[code]/requests/[number]/files/[key]': released,
+  'PATCH /api/engagements/[code]/requests/[number]/files/[key]': practiceOnly,
+  'DELETE /api/engagements/[code]/requests/[number]/files/[key]': clientOnly,
   'PUT /api/engagements/[code]/tariff': members,
   'POST /api/engagements/[code]/tariff/letters': members,
   'POST /api/engagements/[code]/tariff/letters/[number]': members,

@@ -44,6 +44,8 @@ const rowSql: Record<string, string> = {
   motors: 'SELECT id value FROM motors',
   people: "SELECT id value FROM users WHERE email LIKE 'sana@%'",
   plans: 'SELECT id value FROM plans',
+  requests: 'SELECT number value FROM data_requests',
+  files: 'SELECT key value FROM request_files',
   rates: "SELECT r.id value FROM rates r JOIN users u ON u.id = r.user_id WHERE u.email LIKE 'sana@%'",
 };
 
@@ -62,6 +64,8 @@ function addressOf(pattern: string): string {
   return pattern
     .replace('[code]', 'KG-02')
     .replace(/(\w+)\/\[(id|number)\]/, (_, kind: string) => `${kind}/${ids.get(kind) ?? `no-id-for-${kind}`}`)
+    .replace('[position]', '1')
+    .replace('[key]', ids.get('files') ?? 'no-key')
     .replace('[token]', 'a-token-nobody-was-given');
 }
 

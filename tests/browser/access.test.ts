@@ -22,6 +22,9 @@ const visits = [
       '/engagements/KG-02/tariff/compare?with=ostrander-hv3&ostrander-hv3.contractKva=3000',
       '/engagements/KG-02/tariff/letter',
       '/engagements/KG-02/tariff/letters/1',
+      '/engagements/KG-02/requests',
+      '/engagements/KG-02/requests/new?about=motors',
+      '/engagements/KG-02/requests/1',
       '/engagements/KG-02/motors',
       '/engagements/KG-02/plans',
       '/engagements/KG-02/report',
@@ -47,7 +50,14 @@ const visits = [
   {
     who: 'client',
     email: 'mira@kestrel-gap.example',
-    addresses: ['/client/KG-02/overview', '/client/KG-02/bills', '/client/KG-02/reports', '/client/KG-02/reports/1'],
+    addresses: [
+      '/client/KG-02/overview',
+      '/client/KG-02/bills',
+      '/client/KG-02/reports',
+      '/client/KG-02/reports/1',
+      '/client/KG-02/requests',
+      '/client/KG-02/requests/1',
+    ],
   },
 ] as const;
 

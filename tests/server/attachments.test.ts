@@ -7,9 +7,9 @@ import { attachmentChange, pagesCapBytes, placesShape } from '@/schemas/attachme
 import { actAs } from '@/server/db/context';
 import { inTx } from '@/server/db/tx';
 import { getEnv } from '@/server/env';
-import { mediaTypeOf } from '@/server/media-type';
+import { pageTypeOf } from '@/server/page-type';
 import { Trail } from '@/server/models/Trail';
-import { originalResponse } from '@/server/original-response';
+import { attachment as handedOut } from '@/server/download';
 import { storePages } from '@/server/page-stream';
 import {
   changeAttachment,
@@ -139,7 +139,7 @@ describe('mediaTypeOf', () => {
     ['a PNG', pngHead(1200, 1600), 'image/png'],
     ['a JPEG whose size stands behind a segment of the camera', jpegHead(3000, 4000), 'image/jpeg'],
     ['a WebP with extended header', webp('VP8X', [0, 0, 0, 0, 0xcf, 0x07, 0, 0x63, 0, 0]), 'image/webp'],
-  ])('knows %s by its bytes', (_what, bytes, mediaType) => expect(mediaTypeOf(bytes, 'x')).toBe(mediaType));
+  ])('knows %s by its bytes', (_what, bytes, mediaType) => expect(pageTypeOf(bytes, 'x')).toBe(mediaType));
 });
 
 describe('pages', () => {
@@ -149,7 +149,7 @@ describe('pages', () => {
     const { attachment } = await attach(consultant, code, { fileName: 'Bill "May".pdf', bytes, pageCount: 2 });
     expect(attachment).toMatchObject({ billId: null, mediaType: 'application/pdf', pageCount: 2, removed: false });
     expect(attachment.attachedBy).toBe(consultant.name);
-    const response = originalResponse(await openPages(consultant, attachment.id));
+    const response = handedOut(await openPages(consultant, attachment.id));
     expect(Buffer.from(await response.arrayBuffer())).toEqual(bytes);
     expect(response.headers.get('content-type')).toBe('application/octet-stream');
     expect(response.headers.get('content-disposition')).toMatch(/^attachment; filename="Bill _May_.pdf"/);

@@ -7,7 +7,7 @@ import { conflict, invalid, notFound, staleVersion } from '../errors';
 import { Attachment } from '../models/Attachment';
 import { Bill } from '../models/Bill';
 import { User } from '../models/User';
-import type { Original } from '../original-response';
+import type { Handed } from '../download';
 import type { Actor } from '../policies/actor';
 import { presentAttachment } from '../presenters/attachment';
 import { openEngagement, openEngagementById, type OpenEngagement } from './engagements';
@@ -86,7 +86,7 @@ export async function readAttachmentOf(actor: Actor, code: string, id: number): 
 }
 
 /** The pages exactly as they came. */
-export async function openPages(actor: Actor, id: number): Promise<Original> {
+export async function openPages(actor: Actor, id: number): Promise<Handed> {
   const { attachment } = await openAttachment(actor, id);
   const { fileName, bytes, sha256 } = attachment;
   return { fileName, bytes, sha256, stream: readOriginal(sha256) };

@@ -1,7 +1,5 @@
+import { attachment } from '@/server/download';
 import { endpoint } from '@/server/http';
-import { originalResponse } from '@/server/original-response';
 import { openOriginal } from '@/server/services/intake';
 
-export const GET = endpoint(async ({ actor, params }) =>
-  originalResponse(await openOriginal(actor, Number(params.id))),
-);
+export const GET = endpoint(async ({ actor, params }) => attachment(await openOriginal(actor, Number(params.id))));

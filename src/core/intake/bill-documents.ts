@@ -117,9 +117,12 @@ function leaveOutCredits(all: readonly Settled[]): void {
 function leaveOutCorrected(all: readonly Settled[]): void {
   for (const one of standing(all))
     if (one.draft.marks.has('cancelled')) leaveOut(one, 'cancelled', 'The file says that it was cancelled');
+  const hasCorrections = all.some((one) => one.draft.marks.has('corrected'));
   for (const former of standing(all)) {
     const isEstimate = former.draft.marks.has('estimated') && !former.draft.marks.has('corrected');
-    const later = standing(all).find((one) => one !== former && replaces(one, former, isEstimate));
+    const later =
+      (isEstimate || hasCorrections) &&
+      standing(all).find((one) => one !== former && replaces(one, former, isEstimate));
     if (!later) continue;
     leaveOut(
       former,

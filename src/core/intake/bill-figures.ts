@@ -50,11 +50,12 @@ class Affix {
  * a power factor, prices such as `$0.08/kWh`. CR is a credit to the customer: below nought.
  */
 export function readFigure(text: string, decimalMark: '.' | ','): BillFigure {
-  const cell = text.trim();
+  // A line feed parts what stands before the figure from what stands after it.
+  const cell = text.trim().replaceAll('\n', ' ');
   if (cell.length > 60 || isBlankWord(cell)) return { value: Number.NaN };
   const parts = core.exec(cell.replace(/^'/, ''));
   if (!parts) return { value: parseNumberText(cell, decimalMark) };
-  const affix = new Affix(`${parts[1] ?? ''}\u0001${parts[3] ?? ''}`);
+  const affix = new Affix(`${parts[1] ?? ''}\n${parts[3] ?? ''}`);
   const per = affix.take(/(\/|\bper\b)\s*[a-z]+/i).replace(/^(\/|per)\s*/i, '');
   const figure: BillFigure = { value: Number.NaN, ...(per ? { per } : {}) };
   const currency = affix.take(currencySign);
@@ -65,17 +66,17 @@ export function readFigure(text: string, decimalMark: '.' | ','): BillFigure {
   if (affix.take(/%|(?<![a-z])percent(?![a-z])/i)) figure.isPercent = true;
   affix.take(/(?<![a-z])(cos\s*(phi|fi|φ|ϕ)?|pf|power factor)(?![a-z])\s*[:=]?/i);
   takeUnit(affix, figure);
-  const brackets = affix.take(/^[^\u0001]*\(/) !== '' && affix.take(/\)/) !== '';
+  const brackets = affix.take(/^[^\n]*\(/) !== '' && affix.take(/\)/) !== '';
   const sign = affix.take(/[-−–]/);
   affix.take(/\+/);
-  if (!/^[\s\u0001.:]*$/.test(affix.text)) return { value: parseNumberText(cell, decimalMark) };
+  if (!/^[\s\n.:]*$/.test(affix.text)) return { value: parseNumberText(cell, decimalMark) };
   const size = parseNumberText((parts[2] ?? '').replace(/[.,]$/, ''), decimalMark);
   const isBelow = (brackets !== (sign !== '')) !== /^c/i.test(credit);
   return { ...figure, value: isBelow ? 0 - size : size };
 }
 
 function takeUnit(affix: Affix, figure: BillFigure): void {
-  const suffix = affix.text.split('\u0001')[1] ?? '';
+  const suffix = affix.text.split('\n')[1] ?? '';
   const word = (suffix.match(/[a-z]+/gi) ?? []).find((one) => one.length > 1 && unitMeaning(one) !== null);
   if (word) {
     affix.take(new RegExp(`(?<![a-z])${word}(?![a-z])\\.?`, 'i'));

@@ -25,6 +25,7 @@ export function locateBills(grid: Grid, fileName: string, map: Partial<ColumnMap
     return { grid: table, block: { ...block, names: heads.names }, isTransposed, ...heads };
   };
   if (map.layout === 'transposed') return find(transpose(grid), map, true);
+  if (isTooWide(grid)) return find(grid, map);
   const attempts = [
     () => find(grid, { ...yearAndMonth(grid), ...map }),
     () => find(filledDown(grid), map),
@@ -32,6 +33,12 @@ export function locateBills(grid: Grid, fileName: string, map: Partial<ColumnMap
   ];
   const [first = () => find(grid, map), ...others] = map.layout === 'items' ? attempts.slice(1) : attempts;
   return firstFound(first, others);
+}
+
+/** Turned or filled, a table beyond the cap would lose its last columns: it is refused as it is. */
+function isTooWide(grid: Grid): boolean {
+  for (let row = 0; row < Math.min(grid.rows, 1000); row += 1) if (grid.width(row) > gridCaps.columns) return true;
+  return false;
 }
 
 /** The first attempt that finds a table; where none does, what is wrong with the plain one. */

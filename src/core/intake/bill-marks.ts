@@ -40,7 +40,8 @@ export function markFinding(profile: ColumnProfile): RoleFinding | null {
   if (words.length === 0 || words.length > 12 || profile.isManyValued || shareOf(profile, 'date', 'stamp') > 0.2)
     return null;
   const known = words.filter((word) => markUnder(profile.name, word) !== null);
-  const isNamed = markNames.test(profile.name.replaceAll('_', ' ')) || markOf(profile.name) !== null;
+  const isTelling = known.length === words.length && words.some((word) => markOf(word) === 'estimated');
+  const isNamed = isTelling || markNames.test(profile.name.replaceAll('_', ' ')) || markOf(profile.name) !== null;
   if (!isNamed || known.length < words.length * (words.length > 3 ? 0.5 : 0.99)) return null;
   if (shareOf(profile, 'number') > 0.5 && !/estimat/i.test(profile.name)) return null;
   return {

@@ -32,16 +32,24 @@ export function nextMonth(day: number): number {
   return civilDay(date.getUTCFullYear() + (date.getUTCMonth() === 11 ? 1 : 0), ((date.getUTCMonth() + 1) % 12) + 1, 1);
 }
 
-const spanMark =
-  /\s+(?:-|–|—|to|thru|through|until|bis|au|al|a|tot|hasta)\s+|\s*[–—]\s*|(?<=\d{4})\s*-\s*(?=\d)|\s*\.\.\.?\s*/i;
+// Words and dashes with spaces first: within dates dashes stand without.
+const spanMarks = [
+  /\s+(?:-|–|—|to|thru|through|until|bis|au|al|a|tot|hasta)\s+/i,
+  /\s*[–—]\s*/,
+  /\s*\.{2,3}\s*/,
+  /(?<=\d{4})\s*-\s*(?=\d)/,
+];
 
 /** The two dates of a cell such as `6/10/2025 - 7/9/2025`; null if it does not name two. */
 export function spanParts(text: string): [string, string] | null {
   const cell = text.replace(/^\s*(from|von|du|del|dal|desde|de)\s+/i, '').trim();
   if (cell.length > 60) return null;
-  const parts = cell.split(spanMark);
-  const [from = '', to = ''] = parts;
-  return parts.length === 2 && isDateLike(from) && isDateLike(to) ? [from, to] : null;
+  for (const mark of spanMarks) {
+    const parts = cell.split(mark);
+    const [from = '', to = ''] = parts;
+    if (parts.length === 2 && isDateLike(from) && isDateLike(to)) return [from, to];
+  }
+  return null;
 }
 
 const isDateLike = (text: string): boolean =>

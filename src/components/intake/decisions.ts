@@ -49,6 +49,7 @@ const labels: Record<Guess['key'], string> = {
   step: 'Length of interval',
   'period-ends': 'End of period',
   meter: 'Meter',
+  member: 'File in the archive',
 };
 
 /** The map without its columns: they are detected anew. */
@@ -74,6 +75,7 @@ const current: Record<Guess['key'], (map: ColumnMap) => string | undefined> = {
   step: (map) => map.stamp?.stepMinutes?.toString(),
   'period-ends': (map) => map.periodEnds,
   meter: (map) => map.meter,
+  member: (map) => map.member,
 };
 
 type Stamp = NonNullable<ColumnMap['stamp']>;
@@ -92,6 +94,7 @@ const apply: Record<Guess['key'], (map: ColumnMap, value: string) => ColumnMap> 
   step: (map, value) => stamped(map, { stepMinutes: Number(value) }),
   'period-ends': (map, value) => ({ ...map, periodEnds: value as ColumnMap['periodEnds'] }),
   meter: (map, value) => ({ ...map, meter: value }),
+  member: (map, value) => ({ kind: map.kind, member: value }),
 };
 
 function optionsOf(key: Guess['key'], preview: IntakePreview): SelectOption[] {
@@ -100,7 +103,10 @@ function optionsOf(key: Guess['key'], preview: IntakePreview): SelectOption[] {
     return [...rows, { value: 'none', label: 'The file has none' }];
   }
   if (key === 'meter') {
-    return (preview.kind === 'intervals' ? preview.meters : []).map((meter) => ({ value: meter, label: meter }));
+    return (preview.meters ?? []).map((meter) => ({ value: meter, label: meter }));
+  }
+  if (key === 'member') {
+    return (preview.dialect.members ?? []).map((member) => ({ value: member, label: member }));
   }
   return Object.entries(words[key] ?? {}).map(([value, label]) => ({ value, label }));
 }
@@ -123,7 +129,7 @@ export function sheetDecision(preview: IntakePreview): Decision | null {
     label: 'Sheet',
     value: sheet,
     options: sheets.map((name) => ({ value: name, label: name })),
-    apply: (map, value) => ({ kind: map.kind, sheet: value }),
+    apply: (map, value) => ({ kind: map.kind, member: map.member, sheet: value }),
   };
 }
 

@@ -8,8 +8,10 @@ const deepest = 40;
 const mostReadings = 1_200_000;
 const mostEntries = 250_000;
 const longestField = 20_000;
+/** What a reading takes in a terse feed; room for as many is made at once. */
+const usualReadingBytes = 160;
 
-const kinds = new Set([
+const kindNames = [
   'UsagePoint',
   'MeterReading',
   'ReadingType',
@@ -17,8 +19,8 @@ const kinds = new Set([
   'LocalTimeParameters',
   'UsageSummary',
   'ElectricPowerUsageSummary',
-] as const);
-type EspiKind = typeof kinds extends Set<infer Kind> ? Kind : never;
+] as const;
+type EspiKind = (typeof kindNames)[number];
 
 /** An element below an object of the feed, for objects whose parts repeat. */
 export interface EspiNode {
@@ -53,7 +55,8 @@ export interface EspiFeed {
 
 type OpenEntry = Omit<EspiEntry, 'kind'> & { kind: EspiKind | null };
 
-const isKind = (name: string): name is EspiKind => (kinds as ReadonlySet<string>).has(name);
+/** The kind by its name. The parser's own string is not kept: it would keep the piece of the feed it was cut from. */
+const kindOf = (name: string): EspiKind | null => kindNames.find((kind) => kind === name) ?? null;
 const isSummary = (kind: EspiKind | null): boolean => kind === 'UsageSummary' || kind === 'ElectricPowerUsageSummary';
 
 // The least number of 48 bits stands for "no value" (seen in a conformance file).
@@ -64,11 +67,14 @@ function numberOf(text: string): number {
   return Number.isFinite(figure) && figure !== noValue ? figure : Number.NaN;
 }
 
+/** A string of its own: one cut from a piece of the feed would keep the whole piece in memory. */
+const detached = (text: string): string => ` ${text}`.slice(1);
+
 const blankReading = () => ({ start: Number.NaN, duration: Number.NaN, value: Number.NaN, qualities: 0, line: 0 });
 
 /** Collects a feed while the parser walks it; names are matched by namespace and local name, never by prefix. */
 class FeedCollector {
-  readonly feed: EspiFeed = { entries: [], readings: new EspiReadings() };
+  readonly feed: EspiFeed;
   private readonly path: string[] = [];
   private readonly nodes: EspiNode[] = [];
   private entry: OpenEntry | null = null;
@@ -77,8 +83,11 @@ class FeedCollector {
 
   constructor(
     private readonly fileName: string,
+    bytes: number,
     private readonly lineOf: () => number,
-  ) {}
+  ) {
+    this.feed = { entries: [], readings: new EspiReadings(Math.min(mostReadings, bytes / usualReadingBytes)) };
+  }
 
   open(tag: SaxesTagNS): void {
     this.path.push(tag.local);
@@ -90,7 +99,7 @@ class FeedCollector {
     if (!entry) return;
     if (tag.local === 'link') link(entry, tag.attributes.rel?.value ?? '', tag.attributes.href?.value ?? '');
     if (tag.uri !== espiNamespace) return;
-    if (entry.kind === null && isKind(tag.local)) entry.kind = tag.local;
+    entry.kind ??= kindOf(tag.local);
     if (tag.local === 'IntervalReading') this.reading = blankReading();
     if (isSummary(entry.kind)) this.openNode(entry, tag.local);
   }
@@ -102,7 +111,7 @@ class FeedCollector {
   }
 
   private openNode(entry: OpenEntry, name: string): void {
-    const node: EspiNode = { name, text: '', children: [] };
+    const node: EspiNode = { name: detached(name), text: '', children: [] };
     this.nodes.at(-1)?.children.push(node);
     entry.tree ??= node;
     this.nodes.push(node);
@@ -115,7 +124,7 @@ class FeedCollector {
   close(tag: SaxesTagNS): void {
     this.path.pop();
     const { entry } = this;
-    if (entry && tag.local === 'title' && entry.kind === null) entry.title = this.text.trim();
+    if (entry && tag.local === 'title' && entry.kind === null) entry.title = detached(this.text.trim());
     if (entry && tag.uri === espiNamespace) this.closeField(entry, tag.local);
     if (tag.local === 'entry' && entry) this.closeEntry(entry);
     this.text = '';
@@ -126,8 +135,8 @@ class FeedCollector {
     if (this.reading) this.closeInReading(this.reading, name);
     else if (this.text.trim() !== '') {
       const parent = this.path.at(-1) ?? '';
-      if (node) node.text = this.text.trim();
-      else entry.fields.set(isKind(parent) ? name : `${parent}.${name}`, this.text.trim());
+      if (node) node.text = detached(this.text.trim());
+      else entry.fields.set(kindOf(parent) ? detached(name) : `${parent}.${name}`, detached(this.text.trim()));
     }
   }
 
@@ -154,7 +163,7 @@ class FeedCollector {
 }
 
 function link(entry: OpenEntry, rel: string, href: string): void {
-  const path = href.replace(/\/+$/, '');
+  const path = detached(href.replace(/\/+$/, ''));
   if (rel === 'self') entry.self = path;
   else if (rel === 'up') entry.up = path;
   else if (rel === 'related') entry.related.push(path);
@@ -172,7 +181,7 @@ const tooMany = (what: string, fileName: string) =>
  */
 export function parseEspi(bytes: Uint8Array, fileName: string, onBytes?: (read: number) => void): EspiFeed {
   const parser = new SaxesParser({ xmlns: true, position: true });
-  const collector = new FeedCollector(fileName, () => parser.line);
+  const collector = new FeedCollector(fileName, bytes.length, () => parser.line);
   parser.on('doctype', () => {
     throw intakeError(
       'The XML holds a document type, which readings never need.',

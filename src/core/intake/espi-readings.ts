@@ -1,4 +1,4 @@
-const first = 4096;
+const least = 4096;
 
 /**
  * The readings of a feed in the order of the file, in columns that grow without boxing: a feed of 100 MB holds hundreds of
@@ -7,14 +7,24 @@ const first = 4096;
 export class EspiReadings {
   length = 0;
   /** Seconds since 1970 at which each begins; NaN where the reading does not say. */
-  starts = new Float64Array(first);
+  starts: Float64Array;
   /** Seconds each lasts; NaN where the reading does not say. */
-  durations = new Float64Array(first);
-  values = new Float64Array(first);
+  durations: Float64Array;
+  values: Float64Array;
   /** Codes of quality, a bit each: a reading may carry several. */
-  qualities = new Uint32Array(first);
+  qualities: Uint32Array;
   /** Line of the file each ends on, 1 is the first. */
-  lines = new Uint32Array(first);
+  lines: Uint32Array;
+
+  /** @param expected  Readings room is made for; more may come */
+  constructor(expected = 0) {
+    const size = Math.max(least, Math.ceil(expected));
+    this.starts = new Float64Array(size);
+    this.durations = new Float64Array(size);
+    this.values = new Float64Array(size);
+    this.qualities = new Uint32Array(size);
+    this.lines = new Uint32Array(size);
+  }
 
   push(reading: { start: number; duration: number; value: number; qualities: number; line: number }): void {
     const at = this.length;
@@ -37,13 +47,13 @@ export class EspiReadings {
   }
 }
 
-function grownFloats(values: Float64Array, size: number): Float64Array<ArrayBuffer> {
+function grownFloats(values: Float64Array, size: number): Float64Array {
   const larger = new Float64Array(size);
   larger.set(values);
   return larger;
 }
 
-function grownWords(values: Uint32Array, size: number): Uint32Array<ArrayBuffer> {
+function grownWords(values: Uint32Array, size: number): Uint32Array {
   const larger = new Uint32Array(size);
   larger.set(values);
   return larger;

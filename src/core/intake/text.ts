@@ -9,7 +9,7 @@ interface DecodedText {
 }
 
 /** Bytes decoded at a time; even, so that no UTF-16 pair is cut. */
-const pieceBytes = 256 * 1024;
+const pieceBytes = 64 * 1024;
 
 /**
  * Tells the encoding of a text file: a byte order mark decides; then UTF-16 by its pattern of zero bytes; then UTF-8 if

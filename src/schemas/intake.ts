@@ -28,7 +28,7 @@ export interface IntakeRow {
   fileName: string;
   bytes: number;
   sha256: string;
-  state: 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
+  state: 'reading' | 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
   /** Who brought it in. */
   broughtBy: string | null;
   broughtAt: string;
@@ -146,6 +146,7 @@ export const columnMapInput = z.object({
     })
     .optional(),
   meter: shortText.optional(),
+  member: z.string().max(1000).optional(),
   periodEnds: z.enum(['inclusive', 'exclusive']).optional(),
   year: z.number().int().min(1970).max(2200).optional(),
   documents: z

@@ -49,6 +49,7 @@ const labels: Record<Guess['key'], string> = {
   'period-ends': 'End of period',
   year: 'Year of the first bill',
   meter: 'Meter',
+  member: 'File in the archive',
 };
 
 /** The map without its columns: they are detected anew. */
@@ -75,6 +76,7 @@ const current: Record<Guess['key'], (map: ColumnMap) => string | undefined> = {
   'period-ends': (map) => map.periodEnds,
   year: (map) => map.year?.toString(),
   meter: (map) => map.meter,
+  member: (map) => map.member,
 };
 
 /** Layouts, by what the file holds. */
@@ -100,6 +102,7 @@ const apply: Record<Guess['key'], (map: ColumnMap, value: string) => ColumnMap> 
   'period-ends': (map, value) => ({ ...map, periodEnds: value as ColumnMap['periodEnds'] }),
   year: (map, value) => ({ ...map, year: Number(value) }),
   meter: (map, value) => ({ ...map, meter: value }),
+  member: (map, value) => ({ kind: map.kind, member: value }),
 };
 
 function optionsOf(key: Guess['key'], preview: IntakePreview): SelectOption[] {
@@ -108,6 +111,7 @@ function optionsOf(key: Guess['key'], preview: IntakePreview): SelectOption[] {
     return [...rows, { value: 'none', label: 'The file has none' }];
   }
   if (key === 'meter') return preview.meters.map((meter) => ({ value: meter, label: meter }));
+  if (key === 'member') return (preview.dialect.members ?? []).map((member) => ({ value: member, label: member }));
   if (key === 'year') return yearsAround(preview.columnMap.year);
   const wordsOfKey = key === 'layout' ? layouts[preview.kind] : words[key];
   return Object.entries(wordsOfKey ?? {}).map(([value, label]) => ({ value, label }));
@@ -134,7 +138,7 @@ export function sheetDecision(preview: IntakePreview): Decision | null {
     label: 'Sheet',
     value: sheet,
     options: sheets.map((name) => ({ value: name, label: name })),
-    apply: (map, value) => ({ kind: map.kind, sheet: value }),
+    apply: (map, value) => ({ kind: map.kind, member: map.member, sheet: value }),
   };
 }
 

@@ -3,13 +3,14 @@ import { findBlock, type TableBlock } from './block';
 import { checkColumns, checkExtraction, checkMeters } from './checks';
 import { detectColumns } from './detect';
 import { guess } from './evidence';
-import { columnOf, extractLong, type ColumnPlan } from './extract';
+import { columnOf, extractLong, type ColumnPlan, type Extraction } from './extract';
 import { extractWide } from './extract-wide';
 import { channelMeaning } from './channel-words';
 import { delimiterGuesses, openNotes } from './guesses';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
 import type { OpenedTable } from './open';
 import { preambleMultiplier } from './preamble';
+import type { PlacedStrand } from './series';
 import { timelineOf } from './timeline';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
 
@@ -103,16 +104,18 @@ function metersOf(opened: OpenedTable, block: TableBlock, columns: readonly Colu
 }
 
 /**
- * Reads a planned table into a load.
- * @throws {IntakeError} naming every reason why it cannot be read.
+ * The readings of a planned table with their places in time.
+ * @throws {IntakeError} naming every reason why they cannot be read.
  */
-export function readPlanned(planned: IntervalPlan, options: ReadOptions): IntervalReading & { guesses: Guess[] } {
+export function placePlanned(
+  planned: IntervalPlan,
+  options: ReadOptions,
+): { placed: PlacedStrand[]; extraction: Extraction } {
   checkMeters(planned, options);
   checkColumns(planned, options);
-  const { plan, opened } = planned;
+  const { plan } = planned;
   const extraction = plan.layout === 'wide' ? extractWide(plan) : extractLong(plan);
   checkExtraction(extraction, options);
-  const notes = [...extraction.notes, ...assumptions(planned)];
   const strands = extraction.strands.filter((strand) => strand.rows.length > 0);
   const isRegister = strands.every((strand) => strand.channels.every((channel) => channel.measure === 'register'));
   const given = options.columnMap?.stamp ?? {};
@@ -127,6 +130,17 @@ export function readPlanned(planned: IntervalPlan, options: ReadOptions): Interv
       isWide: plan.layout === 'wide',
     }),
   }));
+  return { placed, extraction };
+}
+
+/**
+ * Reads a planned table into a load.
+ * @throws {IntakeError} naming every reason why it cannot be read.
+ */
+export function readPlanned(planned: IntervalPlan, options: ReadOptions): IntervalReading & { guesses: Guess[] } {
+  const { placed, extraction } = placePlanned(planned, options);
+  const notes = [...extraction.notes, ...assumptions(planned)];
+  const { opened } = planned;
   const first = placed[0]?.timeline;
   const columnMap: ColumnMap = { ...planned.columnMap, stamp: { ...planned.columnMap.stamp, ...first?.style } };
   const { load, report } = assemble(placed, {

@@ -55,12 +55,12 @@ export function previewOfBills(opened: OpenedTable, options: ReadOptions): BillP
     meters,
     documents: found?.documents ?? [],
     bills: read?.bills ?? [],
-    guesses: withReadGuesses(plan.result?.guesses ?? [], found?.guesses ?? meterGuess(meters)),
+    guesses: withReadGuesses(plan.result?.guesses ?? [], found?.guesses ?? accountGuess(meters)),
   };
 }
 
 /** Several meters stand in the way of reading: the choice is shown beside the other decisions. */
-const meterGuess = (meters: readonly string[]): Guess[] =>
+const accountGuess = (meters: readonly string[]): Guess[] =>
   meters.length < 2
     ? []
     : [
@@ -75,7 +75,7 @@ interface Attempt<T> {
 }
 
 /** A refusal becomes problems to show; anything else is a fault of ours and passes on. */
-function attempt<T>(work: () => T): Attempt<T> {
+export function attempt<T>(work: () => T): Attempt<T> {
   try {
     return { result: work(), problems: [] };
   } catch (cause) {
@@ -141,34 +141,55 @@ function firstRows(grid: Grid, block: TableBlock | null): PreviewRow[] {
 
 /** What intake shows of a file whose format says itself what its channels are. */
 export function previewOfChannels(
-  file: { format: IntakeFormat; text: string; columns: ColumnEvidence[]; meters: string[]; shape: string },
+  file: {
+    format: IntakeFormat;
+    /** Text of the beginning of the file. */
+    head: string;
+    rowsInFile: number;
+    columns: ColumnEvidence[];
+    meters: string[];
+    shape: string;
+    /** The map where the file cannot be read with it yet. */
+    columnMap: ColumnMap;
+  },
   options: ReadOptions,
   read: () => IntervalReading,
 ): IntervalPreview {
   const reading = attempt(read);
-  const lines = file.text.split(/\r\n|\n|\r/, 4000);
-  const filled = lines.filter((line) => line.trim() !== '').length;
   return {
     kind: 'intervals',
     fileName: options.fileName,
     format: file.format,
     dialect: {},
-    rowsInFile: filled,
+    rowsInFile: file.rowsInFile,
     headerRow: null,
     firstRow: 1,
-    lastRow: filled,
-    rows: lines.slice(0, rowsShown).map((line, at) => ({
-      number: at + 1,
-      cells: line.split(',', 60).map((cell) => cell.trim().slice(0, charactersShown)),
-      isHeader: false,
-    })),
-    columnMap: reading.result?.report.columnMap ?? fallbackMap('intervals', options),
+    lastRow: file.rowsInFile,
+    rows: headRows(file.head),
+    columnMap: reading.result?.report.columnMap ?? file.columnMap,
     mapApplied: options.columnMap !== undefined,
     shape: file.shape,
     columns: file.columns,
-    guesses: [],
+    guesses: meterGuess(file.meters, options.columnMap),
     problems: reading.problems,
     meters: file.meters,
     report: reading.result?.report ?? null,
   };
+}
+
+/** Which of several meters a format names is read; nothing to decide where there is one. */
+export function meterGuess(meters: readonly string[], map: ColumnMap | undefined): Guess[] {
+  if (meters.length < 2) return [];
+  const picked = map?.meter !== undefined && meters.includes(map.meter);
+  const taken = picked ? (map.meter ?? '') : 'none yet';
+  return [guess('meter', taken, [[picked, `${meters.length} meters in one file`]])];
+}
+
+/** The first lines of a text as rows to show. */
+export function headRows(head: string): PreviewRow[] {
+  return head.split(/\r\n|\n|\r/, rowsShown).map((line, at) => ({
+    number: at + 1,
+    cells: line.split(',', 60).map((cell) => cell.trim().slice(0, charactersShown)),
+    isHeader: false,
+  }));
 }

@@ -8,6 +8,15 @@ export interface ReadOptions {
   timeZone: string;
   /** A column map to follow; what it leaves out is detected. Omitted: detect everything. */
   columnMap?: ColumnMap;
+  /** Hears how far reading is. */
+  onProgress?: (progress: ReadProgress) => void;
+}
+
+/** How far reading is: bytes taken in, or one stage after another where a format cannot be counted. */
+export interface ReadProgress {
+  unit: 'bytes' | 'stages';
+  done: number;
+  planned: number;
 }
 
 /** Container and dialect family a file was recognised as. */
@@ -130,6 +139,8 @@ export interface ColumnMap {
   stamp?: StampStyle;
   /** The meter to keep where the file holds several. */
   meter?: string;
+  /** The file to read where an archive holds several: its name in there. */
+  member?: string;
   /** Bills: whether the last day printed belongs to the period. */
   periodEnds?: 'inclusive' | 'exclusive';
   /** Bills: year of the first bill where the file names months alone. */
@@ -244,6 +255,8 @@ export interface Dialect {
   decimalMark?: '.' | ',';
   sheet?: string;
   sheets?: string[];
+  /** Files of readings or bills in an archive, where it holds several. */
+  members?: string[];
 }
 
 /** One decision about the whole file and what speaks for it. */
@@ -259,7 +272,8 @@ export interface Guess {
     | 'step'
     | 'period-ends'
     | 'year'
-    | 'meter';
+    | 'meter'
+    | 'member';
   takenAs: string;
   why: string;
   testsMet: number;
@@ -354,4 +368,26 @@ export interface IntervalReading {
 export interface BillReading {
   bills: BillRecord[];
   report: IntakeReport;
+}
+
+/** What is traced back to the file: the interval that begins at an instant, or the bill whose period begins on a day. */
+export type TracePoint = { ms: number } | { from: string };
+
+/** A row of the file behind a kept value, with the cells that were read. */
+export interface TraceRow {
+  /** Number of the row (column, line) in the file, 1 is the first. */
+  number: number;
+  cells: { name: string; text: string }[];
+}
+
+/** Where in a file a kept value stands. */
+export interface Trace {
+  /** Name of the file; of one in an archive with the archive's before it. */
+  fileName: string;
+  /** What is counted: lines of XML, rows of a table, columns of a table with a bill a column. */
+  unit: 'row' | 'column' | 'line';
+  sheet?: string | undefined;
+  rows: TraceRow[];
+  /** Rows beyond those listed. */
+  more: number;
 }

@@ -1,6 +1,6 @@
 import { deflateRawSync } from 'node:zlib';
 import { describe, expect, it } from 'vitest';
-import { readIntervals } from '@/core/intake';
+import { previewIntervals, readIntervals } from '@/core/intake';
 import { bytesOf, workbook } from './files';
 
 interface Member {
@@ -101,6 +101,39 @@ describe('archives', () => {
     ['one that is cut off', zip([{ name: 'a.csv', bytes: table }]).subarray(0, 150), /cannot be read/],
   ])('refuses %s', async (_name, bytes, message) => {
     await expect(read(bytes)).rejects.toThrow(message);
+  });
+
+  describe('with several files', () => {
+    const small = bytesOf('Time,kWh\n2025-03-13 00:00,7\n2025-03-13 01:00,8\n2025-03-13 02:00,9\n');
+    const both = zip([
+      { name: 'april/b.csv', bytes: small },
+      { name: 'a.csv', bytes: table },
+      { name: 'readme.md', bytes: bytesOf('x') },
+    ]);
+    const options = { fileName: 'readings.zip', timeZone: 'Etc/UTC' };
+
+    it('shows the largest, unsure, and names them all', async () => {
+      const preview = await previewIntervals(both, options);
+      expect(preview.dialect.members).toEqual(['a.csv', 'april/b.csv']);
+      expect(preview.guesses[0]).toMatchObject({ key: 'member', takenAs: 'a.csv', sure: false });
+      expect(preview).toMatchObject({ problems: [], report: { totalKwh: 300 } });
+      const { report } = await readIntervals(both, { ...options, columnMap: preview.columnMap });
+      expect(report.totalKwh).toBe(300);
+    });
+
+    it('reads the one that is chosen and says so in its map', async () => {
+      const columnMap = { kind: 'intervals' as const, member: 'april/b.csv' };
+      const { report } = await readIntervals(both, { ...options, columnMap });
+      // 7 + 8 + 9
+      expect(report).toMatchObject({ totalKwh: 24, columnMap: { member: 'april/b.csv' } });
+      const preview = await previewIntervals(both, { ...options, columnMap });
+      expect(preview.guesses[0]).toMatchObject({ key: 'member', sure: true });
+    });
+
+    it('refuses one it does not hold', async () => {
+      const columnMap = { kind: 'intervals' as const, member: 'c.csv' };
+      await expect(readIntervals(both, { ...options, columnMap })).rejects.toThrow(/no file “c\.csv”.*a\.csv/s);
+    });
   });
 
   it('names the archive and the file in it where something is wrong', async () => {

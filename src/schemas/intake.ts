@@ -94,6 +94,7 @@ const columnUse = z.object({
     'reactive-signed',
     'apparent',
     'power-factor',
+    'sense',
     'quality',
     'period-from',
     'period-to',
@@ -112,7 +113,7 @@ const columnUse = z.object({
     .max(1e9, 'The multiplier is too large.')
     .optional(),
   quantity: z.string().max(60).optional(),
-  minuteOfDay: z.number().int().min(0).max(1440).optional(),
+  minuteOfDay: z.number().int().min(0).max(1499).optional(),
 });
 
 /** The whole map as a person corrected it. */

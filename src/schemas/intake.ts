@@ -94,6 +94,7 @@ const columnUse = z.object({
     'reactive-signed',
     'apparent',
     'power-factor',
+    'sense',
     'quality',
     'period-from',
     'period-to',
@@ -124,7 +125,7 @@ const columnUse = z.object({
   quantity: z.string().max(60).optional(),
   charge: z.string().max(1000).optional(),
   times: z.string().max(1000).optional(),
-  minuteOfDay: z.number().int().min(0).max(1440).optional(),
+  minuteOfDay: z.number().int().min(0).max(1499).optional(),
 });
 
 /** The whole map as a person corrected it. */

@@ -18,6 +18,7 @@ const intervalRoles: [Role, string][] = [
   ['reactive-signed', 'Reactive, signed'],
   ['apparent', 'Apparent'],
   ['power-factor', 'Power factor'],
+  ['sense', 'Lagging or leading'],
   ['quality', 'Quality mark'],
   ['meter', 'Meter'],
   ['channel', 'Name of the quantity'],

@@ -8,9 +8,11 @@ import { extractWide } from './extract-wide';
 import { channelMeaning } from './channel-words';
 import { delimiterGuesses, openNotes } from './guesses';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
+import type { Grid } from './grid';
 import type { OpenedTable } from './open';
 import { preambleMultiplier } from './preamble';
 import type { PlacedStrand } from './series';
+import { unstack } from './stacked';
 import { timelineOf } from './timeline';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
 
@@ -23,6 +25,7 @@ export interface IntervalPlan {
   evidence: ColumnEvidence[];
   guesses: Guess[];
   meters: string[];
+  notes: IntakeNote[];
 }
 
 /**
@@ -31,8 +34,9 @@ export interface IntervalPlan {
  */
 export function planIntervals(opened: OpenedTable, options: ReadOptions): IntervalPlan {
   const map: Partial<ColumnMap> = options.columnMap ?? {};
-  const { grid, dialect } = opened;
-  const block = findBlock(grid, options.fileName, map, 'readings');
+  const { dialect } = opened;
+  const found = findBlock(opened.grid, options.fileName, map, 'readings');
+  const { grid, block, notes } = unstack(opened.grid, found);
   const detection = detectColumns(grid, block, {
     timeZone: options.timeZone,
     map,
@@ -40,7 +44,7 @@ export function planIntervals(opened: OpenedTable, options: ReadOptions): Interv
   });
   const columns = mergeColumns(detection.columns, map, block, options.fileName);
   const stamp = { ...detection.stamp, ...map.stamp };
-  const meters = metersOf(opened, block, columns);
+  const meters = metersOf(grid, block, columns);
   const plan: ColumnPlan = {
     grid,
     block,
@@ -53,6 +57,7 @@ export function planIntervals(opened: OpenedTable, options: ReadOptions): Interv
   };
   return {
     opened: { ...opened, dialect: { ...dialect, decimalMark: detection.decimalMark } },
+    notes,
     block,
     plan,
     meters,
@@ -90,15 +95,15 @@ function meterGuesses(meters: string[], map: Partial<ColumnMap>): Guess[] {
 }
 
 /** Names of the meters the rows speak of, at most 200. */
-function metersOf(opened: OpenedTable, block: TableBlock, columns: readonly ColumnUse[]): string[] {
+function metersOf(grid: Grid, block: TableBlock, columns: readonly ColumnUse[]): string[] {
   const column = columnOf(columns, 'meter');
   const timeColumn =
     columns.find((use) => use.role === 'stamp' || use.role === 'stamp-begin' || use.role === 'date')?.index ?? -1;
   if (column < 0) return [];
   const meters = new Set<string>();
   for (let row = block.firstRow; row <= block.lastRow && meters.size < 200; row += 1) {
-    const meter = opened.grid.text(row, column);
-    if (meter !== '' && (timeColumn < 0 || opened.grid.text(row, timeColumn) !== '')) meters.add(meter);
+    const meter = grid.text(row, column);
+    if (meter !== '' && (timeColumn < 0 || grid.text(row, timeColumn) !== '')) meters.add(meter);
   }
   return [...meters];
 }
@@ -139,7 +144,7 @@ export function placePlanned(
  */
 export function readPlanned(planned: IntervalPlan, options: ReadOptions): IntervalReading & { guesses: Guess[] } {
   const { placed, extraction } = placePlanned(planned, options);
-  const notes = [...extraction.notes, ...assumptions(planned)];
+  const notes = [...planned.notes, ...extraction.notes, ...assumptions(planned)];
   const { opened } = planned;
   const first = placed[0]?.timeline;
   const columnMap: ColumnMap = { ...planned.columnMap, stamp: { ...planned.columnMap.stamp, ...first?.style } };
@@ -176,10 +181,18 @@ function assumptions(planned: IntervalPlan): IntakeNote[] {
     });
   }
   const multiplier = preambleMultiplier(planned.opened.grid, planned.block);
-  if (multiplier !== '')
-    notes.push({
-      code: 'multiplier-mentioned',
-      message: `The file mentions a multiplier (${multiplier}); the figures are taken as printed, not multiplied.`,
-    });
+  const factor = planned.plan.columns.find((use) => use.factor !== undefined)?.factor;
+  if (multiplier)
+    notes.push(
+      factor === undefined
+        ? {
+            code: 'multiplier-mentioned',
+            message: `The file mentions a multiplier (${multiplier.words}); the figures are taken as printed, not multiplied.`,
+          }
+        : {
+            code: 'multiplier-applied',
+            message: `The figures are multiplied by ${factor}: the file mentions a multiplier (${multiplier.words}).`,
+          },
+    );
   return notes;
 }

@@ -1,13 +1,18 @@
 import XLSX from 'xlsx';
 import { intakeError } from './errors';
 import { CellGrid, gridCaps, type Cell } from './grid';
+import { sheetNotes } from './sheet-notes';
+import type { IntakeNote } from './types';
 import { checkZip } from './zip-caps';
 
-interface SheetCell {
+/** A cell as the parser of workbooks gives it. */
+export interface SheetCell {
   t: string;
   v?: unknown;
   w?: string;
   z?: unknown;
+  /** Formula behind the value. */
+  f?: string;
 }
 
 /** A sheet opened as a grid, its name and the names of all sheets. */
@@ -17,6 +22,8 @@ interface OpenedSheet {
   sheets: string[];
   /** Other visible sheets that seem to hold as much. */
   others: string[];
+  /** Formulas, hidden rows, columns and sheets. */
+  notes: IntakeNote[];
 }
 
 /** Rows of a sheet that are read; a year of five-minute readings has 105,120. */
@@ -54,7 +61,14 @@ export function openWorkbook(bytes: Uint8Array, fileName: string, wanted?: strin
       'Check that the right file was saved, then bring it in again.',
     );
   const others = opened.filter((one) => one !== best && !one.isHidden && one.weight * 2 >= best.weight);
-  return { grid: new CellGrid(best.cells), sheet: best.sheet, sheets, others: others.map((one) => one.sheet) };
+  const hidden = opened.filter((one) => one !== best && one.isHidden && one.weight > 0).map((one) => one.sheet);
+  return {
+    grid: new CellGrid(best.cells),
+    sheet: best.sheet,
+    sheets,
+    others: others.map((one) => one.sheet),
+    notes: sheetNotes(best, workbook.Sheets[best.sheet], hidden),
+  };
 }
 
 function parse(bytes: Uint8Array, fileName: string): XLSX.WorkBook {
@@ -62,7 +76,8 @@ function parse(bytes: Uint8Array, fileName: string): XLSX.WorkBook {
     const workbook = XLSX.read(bytes, {
       type: 'array',
       dense: true,
-      cellFormula: false,
+      cellFormula: true,
+      cellStyles: true,
       cellHTML: false,
       cellText: false,
       cellNF: true,

@@ -56,6 +56,7 @@ export type IntervalRole =
   | 'reactive-signed' // positive is lagging
   | 'apparent'
   | 'power-factor'
+  | 'sense' // says whether the reactive share of the row lags or leads
   | 'quality'
   | 'ignore';
 

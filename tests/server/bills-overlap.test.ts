@@ -67,7 +67,7 @@ describe('a file of bills that overlaps kept ones', () => {
     const undone = (await Intake.findByPk(ready.id))!;
     await keepIntake(consultant, undone.id, undone.version, 'keep-old');
     expect(await totals(engagement.id)).toEqual([...old, fresh[2]]);
-  }, 120_000);
+  }, 240_000);
 
   it('that holds the same bills again leaves nothing to keep beside the old ones', async () => {
     const { consultant, engagement, code } = await scene();
@@ -81,7 +81,7 @@ describe('a file of bills that overlaps kept ones', () => {
     });
     expect((await Intake.findByPk(again.id))?.state).toBe('read');
     expect(await totals(engagement.id)).toEqual(old);
-  }, 120_000);
+  }, 240_000);
 
   it('takes joined invoices apart when one of them is put away', async () => {
     const { consultant, engagement, code } = await scene();
@@ -96,7 +96,7 @@ describe('a file of bills that overlaps kept ones', () => {
     expect(overlap.bills[0]?.kept).toMatchObject([{ from: '2025-12-01', to: '2025-12-20', isJoined: true }]);
     await keepIntake(consultant, ready.id, ready.version, 'keep-new');
     expect(await totals(engagement.id)).toEqual([['2025-11-20', 100], ...fresh.slice(1)]);
-  }, 120_000);
+  }, 240_000);
 
   it('is not undone over a bill that was kept for those days since', async () => {
     const { consultant, engagement, code } = await scene();
@@ -120,5 +120,5 @@ describe('a file of bills that overlaps kept ones', () => {
     });
     expect((await Intake.findByPk(kept.id))?.state).toBe('kept');
     expect(await Bill.unscoped().count({ where: { engagementId: engagement.id } })).toBe(4);
-  }, 120_000);
+  }, 240_000);
 });

@@ -1,5 +1,5 @@
 import { useRef, useState, type ReactNode } from 'react';
-import { FormProvider, useForm, type Resolver } from 'react-hook-form';
+import { FormProvider, useForm, useWatch, type Resolver } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { addBill, changeBill } from '../../client/intake';
@@ -9,10 +9,12 @@ import { Notice } from '../ui/Notice';
 import { nestErrors } from '../ui/form-errors';
 import { BillFieldTargetContext } from './bill-field-target';
 import { keptAsTyped, startOfTyped } from './bill-start';
-import { LineRows, PeriodRows, QuantityRows, TotalRows } from './BillFormRows';
+import { LineRows, TotalRows } from './BillFormLines';
+import { HeadRows, QuantityRows } from './BillFormRows';
 import { BillSaveFault } from './BillSaveFault';
 import { readTyped, type TypedBill } from './typed';
 import { useFieldTarget } from './use-bill-field-target';
+import { useMetered } from './use-metered';
 
 export interface BillFormProps {
   code: string;
@@ -47,6 +49,8 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
   const version = useRef(bill?.version ?? 0);
   const kept = useDraft<TypedBill>(`bill:${code}:${bill?.id ?? 'new'}`, form);
   const { handleSubmit, formState } = form;
+  const [from, lastDay] = useWatch({ control: form.control, name: ['from', 'lastDay'] });
+  const metered = useMetered(code, from, lastDay);
   const { target, handlers } = useFieldTarget(form);
 
   const save = handleSubmit(async (values) => {
@@ -68,10 +72,10 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
   const typed = (
     <form onSubmit={(event) => void save(event)} noValidate className="bill-form" {...handlers}>
       {kept.restored && <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />}
-      <PeriodRows form={form} others={others} />
-      <QuantityRows form={form} />
+      <HeadRows form={form} others={others} />
+      <QuantityRows form={form} metered={metered} />
       <LineRows form={form} currency={currency} others={others} />
-      <TotalRows form={form} currency={currency} />
+      <TotalRows form={form} currency={currency} others={others} />
       {fault && (
         <BillSaveFault
           fault={fault}

@@ -41,6 +41,8 @@ export interface LedgerCell {
   mark?: MarkProps;
   /** Opens under the row when the figure is pressed. */
   why?: WhyContent;
+  /** The same, with what the table's `renderPanel` gives. */
+  opens?: boolean;
 }
 
 export type LedgerValue = string | number | null | undefined | LedgerCell;

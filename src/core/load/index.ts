@@ -1,6 +1,6 @@
 export { addDays, addMonths, dayNumber, isCalendarDate, isoDate, weekdayOf } from './dates';
 export { compareLoads, type LoadsBeside } from './compare-loads';
-export { meteredDays, meteredOver, type Metered, type MeteredPeak } from './metered';
+export { energiesDiffer, meteredDays, meteredOver, type Metered, type MeteredPeak } from './metered';
 export {
   aggregateLoad,
   emptyLoad,

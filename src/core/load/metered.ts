@@ -46,6 +46,16 @@ function higher(one: MeteredPeak, other: MeteredPeak | undefined): MeteredPeak {
   return { ...(other.kw > one.kw ? other : one), kva: highestOf(one.kva, other.kva) };
 }
 
+/** Bills print whole units; and a meter read an hour from midnight is off by an hour of about 730. Both are choices of ours. */
+const leastKwh = 1;
+const leastShare = 0.002;
+
+/** Whether a printed energy is another one than the metered: by more than its last digit and than a reading an hour late makes. */
+export function energiesDiffer(printed: number, metered: number): boolean {
+  const off = Math.abs(printed - metered);
+  return off > leastKwh && off > leastShare * Math.abs(metered);
+}
+
 /** Several stretches as one. */
 export function meteredOver(parts: readonly Metered[]): Metered {
   return parts.reduce(

@@ -1,16 +1,7 @@
 import type { EnergyDifference, ReconciledBill } from '../../schemas/pricing';
+import { energiesDiffer } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
 import type { ScheduleText } from '../../core/tariff';
-
-/** Bills print whole units; and a meter read an hour from midnight is off by an hour of about 730. Both are choices of ours. */
-const leastKwh = 1;
-const leastShare = 0.002;
-
-/** Whether a printed energy is another one than the metered: by more than its last digit and than a reading an hour late makes. */
-export function energiesDiffer(printed: number, metered: number): boolean {
-  const off = Math.abs(printed - metered);
-  return off > leastKwh && off > leastShare * Math.abs(metered);
-}
 
 const isEnergy = (name: string, unit: string | undefined) => (unit ? unit === 'kWh' : /^kwh/i.test(name));
 

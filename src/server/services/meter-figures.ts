@@ -1,6 +1,5 @@
-import type { Metered, MeteredPeak } from '../../core/load';
+import { energiesDiffer, type Metered, type MeteredPeak } from '../../core/load';
 import type { MeteredPeriod, MeterFigure } from '../../schemas/bill';
-import { energiesDiffer } from './energy-check';
 
 /** The window of which a peak is spoken first: the quarter-hour, or the shortest the readings allow. */
 export const firstPeak = ({ peaks }: Metered): MeteredPeak | undefined => peaks[0];

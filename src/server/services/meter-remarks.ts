@@ -1,7 +1,6 @@
 import { formatCount, formatDay, formatNumber, formatPercent, formatQuantity } from '../../components/ui/format';
-import { addDays, meteredOver, type Metered } from '../../core/load';
+import { addDays, energiesDiffer, meteredOver, type Metered } from '../../core/load';
 import { billQuantity, type MeterFigure } from '../../schemas/bill';
-import { energiesDiffer } from './energy-check';
 import { firstPeak, isDemand, isFactor, meteredFigures } from './meter-figures';
 
 /** The days of a bill's period with the day before and the day after it. */

@@ -1,0 +1,77 @@
+import { billQuantity, daysBetween, type BillView, type MeterCheck, type MeterFigure } from '../../schemas/bill';
+import { formatBillName, formatPercent } from '../ui/format';
+import type { LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
+
+const order = ['kwh', 'maxKw', 'maxKva', 'kvarh', 'kvarhLeading', 'powerFactor'];
+const sums = new Set(['kwh', 'kvarh', 'kvarhLeading']);
+
+/** Quantities that any bill prints and any meter could show, in their order. */
+const namesOf = (checks: MeterCheck[]) =>
+  order.filter((name) => checks.some(({ figures }) => figures.some((figure) => figure.name === name)));
+
+const tones = { true: undefined, false: 'fault', null: 'quiet' } as const;
+
+/** `+0.02 %`, `−1.4 %`. */
+export function offInPercent(printed: number, metered: number): string {
+  const off = metered === 0 ? 0 : (printed - metered) / metered;
+  const text = formatPercent(Math.abs(off), 2);
+  return /[1-9]/.test(text) ? `${off < 0 ? '\u2212' : '+'}${text}` : text;
+}
+
+function columnsOf(names: string[]): LedgerColumn[] {
+  return [
+    { key: 'name', head: 'Bill of' },
+    { key: 'days', head: 'Days', kind: 'number' },
+    ...names.flatMap((name): LedgerColumn[] => {
+      const { label, unit } = billQuantity(name);
+      const decimals = name === 'powerFactor' ? 2 : 0;
+      return [
+        { key: `${name}:printed`, head: label, unit: unit ? `${unit} billed` : 'billed', kind: 'number', decimals },
+        { key: `${name}:metered`, head: 'Metered', unit: unit || undefined, kind: 'number', decimals, quiet: true },
+        ...(sums.has(name) ? [{ key: `${name}:off`, head: 'Off', align: 'right' as const }] : []),
+      ];
+    }),
+    { key: 'said', head: 'Readings', wrap: true, quiet: true },
+  ];
+}
+
+function figureCells({ name, printed, metered, agrees }: MeterFigure, isLeast: boolean): Record<string, LedgerValue> {
+  const tone = tones[`${agrees}`];
+  if (metered === null) return { [`${name}:printed`]: printed };
+  return {
+    [`${name}:printed`]: { value: printed, tone: agrees === false ? 'fault' : undefined },
+    [`${name}:metered`]: { value: metered, prefix: isLeast && name !== 'powerFactor' ? '≥' : undefined },
+    [`${name}:off`]: isLeast ? null : { value: offInPercent(printed, metered), tone },
+  };
+}
+
+/** How many readings there are, in a word. */
+function readingsWords({ missing, estimated }: MeterCheck): string {
+  if (missing > 0) return `${missing} missing`;
+  return estimated > 0 ? `${estimated} estimated` : 'all';
+}
+
+/** Bills beside the readings: billed, metered, by how much they are off; a letter where something is to be said. */
+export function meterLedger(bills: BillView[], checks: MeterCheck[]): LedgerData {
+  const columns = columnsOf(namesOf(checks));
+  const letters = meterLetters(checks);
+  const rows = checks.flatMap((check): LedgerRow[] => {
+    const bill = bills.find(({ id }) => id === check.billId);
+    if (!bill) return [];
+    const cells: Record<string, LedgerValue> = {
+      name: formatBillName(bill),
+      days: daysBetween(bill.from, bill.to),
+      said: readingsWords(check),
+    };
+    for (const figure of check.figures) Object.assign(cells, figureCells(figure, check.missing > 0));
+    const differs = check.figures.some(({ agrees }) => agrees === false);
+    return [{ id: String(bill.id), cells, finding: letters.get(check.billId), kind: differs ? 'asks' : 'plain' }];
+  });
+  return { columns, rows };
+}
+
+/** Numbers of the bills with something to say, the same in the table and on the slips. */
+export function meterLetters(checks: MeterCheck[]): Map<number, string> {
+  const said = checks.filter(({ remarks }) => remarks.length > 0);
+  return new Map(said.map(({ billId }, index) => [billId, String(index + 1)]));
+}

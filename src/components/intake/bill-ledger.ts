@@ -1,4 +1,3 @@
-import { pageWindow } from '../../client/attachments';
 import { intakePage } from '../../client/intake';
 import type { BillRecord } from '../../core/intake';
 import { toMinorUnits } from '../../core/units';
@@ -25,36 +24,15 @@ export interface LedgerBill {
   source: string;
   /** Where the rows of the file can be seen. */
   sourceHref?: string;
-  /** The bill itself as PDF or photo, and where it can be seen. */
-  pages?: { words: string; href: string };
 }
 
 const mostQuantities = 2;
 const mostLines = 8;
 
-/** Attached pages in a word or two: `PDF`, `2 PDF, photo`. */
-function pagesOf({ pages = [] }: BillView, code: string): LedgerBill['pages'] {
-  const [first] = pages;
-  if (!first) return undefined;
-  const words = (['PDF', 'photo'] as const).flatMap((kind) => {
-    const count = pages.filter((one) => one.kind === kind).length;
-    return count === 0 ? [] : [count === 1 ? kind : `${count} ${kind === 'PDF' ? kind : 'photos'}`];
-  });
-  return { words: words.join(', '), href: pageWindow(code, first.id) };
-}
-
 /** A kept bill for the table. */
 export function keptBill(bill: BillView, code?: string): LedgerBill {
   const { id, from, to, quantities, lines, totalMinor, source } = bill;
-  const base = {
-    id: String(id),
-    from,
-    to,
-    quantities,
-    lines,
-    totalMinor,
-    pages: code ? pagesOf(bill, code) : undefined,
-  };
+  const base = { id: String(id), from, to, quantities, lines, totalMinor };
   if (!source) return { ...base, source: 'typed' };
   return { ...base, source: source.row ?? 'file', sourceHref: code && intakePage(code, source.intakeId) };
 }
@@ -176,7 +154,6 @@ function columnsOf(bills: LedgerBill[], currency: string): LedgerColumn[] {
     ...(others ? [money('others', 'Other lines')] : []),
     { ...money('total', 'Printed total'), strong: true },
     { key: 'less', head: 'Lines less total', kind: 'money', currency, unit: currency, signed: true },
-    ...(bills.some((bill) => bill.pages) ? [{ key: 'source', head: 'Source', quiet: true }] : []),
   ];
 }
 
@@ -190,17 +167,12 @@ function rowOf(bill: LedgerBill, columns: LedgerColumn[], currency: string, flaw
     days: daysBetween(bill.from, bill.to),
     others: unshown.length > 0 ? sumOf(unshown) : null,
     total: totalCell(bill, currency),
-    source: sourceCell(bill),
     less: difference === null ? null : { value: difference, tone: difference === 0 ? undefined : 'fault' },
   };
   for (const [name, value] of Object.entries(bill.quantities)) cells[quantityKey(name)] = value;
   for (const label of labels) cells[lineKey(label)] = lineOf(bill, label);
   return { id: bill.id, cells, kind: flaws.has(bill.id) ? 'asks' : 'plain' };
 }
-
-/** The bill itself where it is attached, else the rows of the file it came in. */
-const sourceCell = ({ pages, source, sourceHref }: LedgerBill): LedgerCell =>
-  pages ? { value: pages.words, href: pages.href } : { value: source, href: sourceHref };
 
 function totalCell(bill: LedgerBill, currency: string): LedgerCell {
   const why = whyTotal(bill, currency);

@@ -36,7 +36,7 @@ function head(bill: BillView, account: string): Content {
     columns: [
       { text: 'Kestrel Gap Lime & Stone\nWorks 2, Quarry Road\nKestrel Gap', lineHeight: 1.3 },
       {
-        width: 210,
+        width: 240,
         table: {
           widths: ['*', 'auto'],
           body: facts.map(([name = '', value = '']) => [{ text: name, color: '#555555' }, right(value)]),
@@ -55,7 +55,7 @@ function quantities(bill: BillView): Content {
   });
   return {
     table: {
-      widths: ['*', 150],
+      widths: ['*', 170],
       headerRows: 1,
       body: [[{ text: 'Meter OV 5510-274', bold: true }, right('as read', true)], ...rows],
     },
@@ -70,7 +70,7 @@ function charges(bill: BillView): Content {
   const total = ['Amount due', right(amount(bill.totalMinor ?? bill.linesMinor), true)];
   return {
     table: {
-      widths: ['*', 150],
+      widths: ['*', 170],
       headerRows: 1,
       body: [[{ text: 'Charges', bold: true }, right(bill.currency, true)], ...rows, total],
     },
@@ -82,31 +82,31 @@ function definition(bill: BillView): TDocumentDefinitions {
   const account = '88-1042';
   return {
     pageSize: 'LETTER',
-    pageMargins: [56, 96, 56, 64],
-    defaultStyle: { font: 'Lato', fontSize: 10 },
+    pageMargins: [36, 78, 36, 48],
+    defaultStyle: { font: 'Lato', fontSize: 12 },
     header: {
-      margin: [56, 40, 56, 0],
+      margin: [36, 30, 36, 0],
       stack: [
         {
           columns: [
-            { text: 'Ostrander Valley Light & Power', bold: true, fontSize: 15 },
+            { text: 'Ostrander Valley Light & Power', bold: true, fontSize: 18 },
             right('Statement of account'),
           ],
         },
-        { canvas: [{ type: 'line', x1: 0, y1: 6, x2: 500, y2: 6, lineWidth: 1.5 }] },
+        { canvas: [{ type: 'line', x1: 0, y1: 6, x2: 540, y2: 6, lineWidth: 1.5 }] },
       ],
     },
     footer: (page, pages) => ({
       text: `page ${page} of ${pages}`,
       alignment: 'right',
-      margin: [56, 12, 56, 0],
+      margin: [36, 6, 36, 0],
       color: '#555555',
     }),
     content: [
       head(bill, account),
       quantities(bill),
       charges(bill),
-      { text: 'How this bill was made', bold: true, fontSize: 12, pageBreak: 'before', margin: [0, 0, 0, 8] },
+      { text: 'How this bill was made', bold: true, fontSize: 14, pageBreak: 'before', margin: [0, 0, 0, 8] },
       {
         text: `Energy is counted over ${bill.days} days, from midnight to midnight of the days named on page 1. Billed demand is the highest quarter-hour of the on-peak window, adjusted to the power factor of the sheet, and not less than the share of earlier months the sheet names.`,
         lineHeight: 1.35,

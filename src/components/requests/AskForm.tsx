@@ -107,7 +107,7 @@ function When({ form, today }: { form: Form; today: string }) {
 function Words({ form }: { form: Form }) {
   const error = (name: keyof AskDraft) => messageAt(form.formState.errors, name);
   return (
-    <div className="form-grid">
+    <div className="word-pair">
       <TextAreaField label="A word of your own in the mail" rows={3} {...form.register('note')} error={error('note')} />
       <TextAreaField
         label="Note for the practice alone"
@@ -148,6 +148,7 @@ function AskSheet(props: AskFormProps) {
         id="people"
         number="2"
         title="To whom, and by when"
+        lead="Each person gets a mail of their own with a link to the list."
         reference={<p>Reminders go in the morning, one mail a person a day, and end when everything is answered</p>}
       >
         <div className="stacked">

@@ -135,7 +135,9 @@ export function ClientItem({ request, item, isNext, sending, acts }: ItemProps) 
           )}
         </Notice>
       )}
-      {mayAnswer && <SendFiles position={position} isNext={isNext} sending={sending} />}
+      {mayAnswer && (
+        <SendFiles position={position} isNext={isNext} photoFirst={item.kind === 'nameplate'} sending={sending} />
+      )}
       {mayAnswer && isWanted(item) && <NotThere item={item} acts={acts} />}
       {acts.faultAt(item) && <Notice kind="fault" title={acts.faultAt(item) ?? ''} />}
     </article>

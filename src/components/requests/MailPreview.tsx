@@ -4,7 +4,7 @@ import { aboutItem, requestHow, requestOpening, requestSubject, type RequestLett
 export function MailPreview({ content }: { content: RequestLetterContent }) {
   const { recipientName, note, items, by, practice } = content;
   return (
-    <div className="mail-preview" aria-label="The mail as it goes" role="region" tabIndex={0}>
+    <div className="mail-preview">
       <h3>{requestSubject(content)}</h3>
       <p>{recipientName},</p>
       <p>{requestOpening(content)}</p>

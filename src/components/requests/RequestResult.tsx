@@ -96,7 +96,7 @@ function DueDay({ opened }: Pick<Props, 'opened'>) {
         error={fault?.fields.dueOn?.[0]}
         onChange={(event) => setDay(event.target.value)}
       />
-      <p>
+      <p className="actions actions-inline">
         <Button
           type="submit"
           kind="secondary"
@@ -166,7 +166,7 @@ export function RequestResult({ opened, timeZone }: Props) {
   const { dueOn, daysLeft, sentOn, by, people, internalNote, items, state } = request;
   const accepted = items.filter((item) => item.state === 'accepted').length;
   return (
-    <div className="stacked">
+    <div className="request-result">
       <ResultSums
         rows={[
           { label: 'Asked', value: `${formatLongDate(sentOn)}` },
@@ -179,7 +179,7 @@ export function RequestResult({ opened, timeZone }: Props) {
       <End opened={opened} />
       {state === 'open' && <DueDay key={dueOn} opened={opened} />}
       <h3>People</h3>
-      <ul className="stacked">
+      <ul>
         {people.map((person) => (
           <Person key={person.userId} person={person} opened={opened} timeZone={timeZone} />
         ))}

@@ -7,15 +7,17 @@ import type { SendingFiles } from './use-sending';
 
 export interface SendFilesProps {
   position: number;
-  /** Whether it is what the page is for now: then its button is the primary one. */
+  /** Whether it is what the page is for now: then its first button is the primary one. */
   isNext: boolean;
+  /** A photo is the likeliest: its button stands first. */
+  photoFirst: boolean;
   sending: SendingFiles;
 }
 
 const accepted = '.csv,.txt,.tsv,.xlsx,.xls,.ods,.xml,.zip,.pdf,.heic,image/*';
 
 /** Chooses files, takes photos or dropped files for one thing, with an honest measure of what has gone. */
-export function SendFiles({ position, isNext, sending: files }: SendFilesProps) {
+export function SendFiles({ position, isNext, photoFirst, sending: files }: SendFilesProps) {
   const picker = useRef<HTMLInputElement>(null);
   const camera = useRef<HTMLInputElement>(null);
   const [over, setOver] = useState(false);
@@ -41,6 +43,17 @@ export function SendFiles({ position, isNext, sending: files }: SendFilesProps) 
     setOver(false);
     send(position, event.dataTransfer.files);
   };
+  const kindOf = (isFirst: boolean) => (isNext && isFirst ? 'primary' : 'secondary');
+  const choose = (
+    <Button key="choose" kind={kindOf(!photoFirst)} onClick={() => picker.current?.click()}>
+      Choose files<span className="unseen"> for thing {position}</span>
+    </Button>
+  );
+  const photo = (
+    <Button key="photo" kind={kindOf(photoFirst)} onClick={() => camera.current?.click()}>
+      Take a photo<span className="unseen"> for thing {position}</span>
+    </Button>
+  );
   return (
     <div
       className={`drop-place ${over ? 'drop-place-over' : ''}`}
@@ -54,12 +67,7 @@ export function SendFiles({ position, isNext, sending: files }: SendFilesProps) 
       {input(picker, { accept: accepted, multiple: true })}
       {input(camera, { accept: 'image/*', capture: 'environment' })}
       <div className="actions">
-        <Button kind={isNext ? 'primary' : 'secondary'} onClick={() => picker.current?.click()}>
-          Choose files<span className="unseen"> for thing {position}</span>
-        </Button>
-        <Button kind="secondary" onClick={() => camera.current?.click()}>
-          Take a photo<span className="unseen"> for thing {position}</span>
-        </Button>
+        {photoFirst ? [photo, choose] : [choose, photo]}
         <span className="hint drop-word">or drop them here</span>
       </div>
       {isHere && sending && (

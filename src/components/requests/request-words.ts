@@ -144,7 +144,8 @@ export function clientListHeading(requests: RequestSummary[]): string {
   const [due] = waiting.map(({ dueOn }) => dueOn).sort();
   if (requests.length === 0) return 'Nothing has been asked of you.';
   if (!due) return 'Nothing waits for you.';
-  return `${capital(things(left))} ${left === 1 ? 'is' : 'are'} needed, the first by ${formatLongDate(due)}.`;
+  const by = waiting.length > 1 ? ', the first by' : ' by';
+  return `${capital(things(left))} ${left === 1 ? 'is' : 'are'} needed${by} ${formatLongDate(due)}.`;
 }
 
 /** The finding of the practice's list. */

@@ -127,7 +127,6 @@ function rowOf(document: BillDocument, preview: BillPreview, currency: string): 
     : `${bill === null ? 'Left out. ' : ''}${why}.`;
   return {
     id: String(row),
-    kind: bill === null ? 'refused' : 'plain',
     cells: {
       document: invoice ?? kinds[kind],
       where,

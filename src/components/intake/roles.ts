@@ -162,7 +162,7 @@ function measureOf(unit: string, before: Measure | undefined): Measure {
 
 /** Lines a rate can be of, as its select. */
 export const rateOptions = (columns: readonly ColumnUse[]): SelectOption[] =>
-  columns.filter((use) => use.role === 'charge').map(({ name }) => ({ value: name, label: `of ${name}` }));
+  columns.filter((use) => use.role === 'charge').map(({ name }) => ({ value: name, label: name }));
 
 /** A rate's use as that of another line; the quantity it is multiplied with is found anew. */
 export const withCharge = ({ index, name, role }: ColumnUse, charge: string): ColumnUse => ({

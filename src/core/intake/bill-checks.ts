@@ -109,10 +109,12 @@ export function rateFaults(
 ): RateFault[] {
   const coin = wholeCurrencies.has(currency ?? '') ? 1 : 0.01;
   const faults = placed.flatMap(({ draft, bill }, at) =>
-    bill.charges.flatMap(({ label, amount, quantity, unit = '', rate }): RateFault[] => {
+    bill.charges.flatMap(({ label, amount, quantity, unit = '', rate }, line): RateFault[] => {
       if (quantity === undefined || rate === undefined) return [];
       const isOff = Math.abs(quantity * rate - amount) > coin * (1 + 1e-6) + Math.abs(amount) * 1e-12;
-      return isOff ? [{ bill: at, where: draft.where, label, quantity, unit, rate, amount }] : [];
+      return isOff
+        ? [{ bill: at, where: draft.places?.[line] ?? draft.where, label, quantity, unit, rate, amount }]
+        : [];
     }),
   );
   for (const { label, quantity, unit, rate, amount, where } of faults.slice(0, 200)) {

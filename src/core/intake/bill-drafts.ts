@@ -21,6 +21,8 @@ export interface BillDraft {
   marks: ReadonlySet<DocumentMark>;
   quantities: Record<string, number>;
   charges: BillCharge[];
+  /** Where each charge stands, where charges have rows of their own. */
+  places?: string[];
   total: number | null;
 }
 

@@ -76,6 +76,7 @@ function draftOfRows(plan: BillPlan, rows: readonly DatedRow[], options: ReadOpt
     ...head,
     quantities: { ...quantitiesOfLines(charges), ...Object.fromEntries(quantities) },
     charges: charges.map(({ row: _, ...charge }) => charge),
+    places: charges.map(({ row }) => placeOf(plan, row)),
     total,
   };
 }

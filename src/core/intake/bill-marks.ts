@@ -6,7 +6,7 @@ export type DocumentMark = 'estimated' | 'actual' | 'corrected' | 'credit' | 'ca
 
 const vocabulary: [DocumentMark, RegExp][] = [
   ['cancelled', /^(cancelled|canceled|void(ed)?|withdrawn|superseded|storniert|anulad[oa]|annul[ée]e?|annullat[oa])\b/i],
-  ['credit', /\b(credit(ed)?( ?(note|memo))?|cn|cancel(s|lation)?|reversal|reversed|storno|gutschrift|abono|avoir|nota di credito|nota de cr[eé]dito)\b/i],
+  ['credit', /^(credit(ed)?( ?(note|memo|invoice)\b.*)?$|cn\b|cancels?\b|cancellation\b|reversal\b|storno|gutschrift\b|abono\b|avoir\b|nota di credito\b|nota de cr[eé]dito)/i],
   ['corrected', /\b(correct(ed|ion)|revis(ed|ion)|re-?bill(ed)?|re-?issued?|amended|restated|true-?up|berichtigt|korrigiert|korrektur|rectificad[oa]|rettifica|corrig[ée]e?|rectificative)\b/i],
   ['estimated', /^(e|est\.?)$|\b(estimat(e|ed|ion)|provisional|assessed|gesch[aä]tzt|estimad[oa]|estim[ée]e?|stimat[oa]|geschat)\b/i],
   ['actual', /^(a|act\.?|r|ok)$|\b(actual|read|metered|measured|final|verified|customer|smart|remote|abgelesen|gemessen|real|r[ée]el(le)?|effettiv[oa]|leitura|lectura)\b/i],

@@ -72,6 +72,7 @@ function withPart(whole: BillDraft, part: BillDraft): BillDraft {
     where: `${whole.where} and ${part.where}`,
     quantities: Object.fromEntries(joined),
     charges: repeats ? whole.charges : [...whole.charges, ...part.charges],
+    ...(whole.places && part.places && !repeats ? { places: [...whole.places, ...part.places] } : {}),
   };
 }
 

@@ -31,7 +31,7 @@ export function pairRates(input: RateInput, evidence: ColumnEvidence[]): ColumnU
   return input.columns.map((use) => {
     if (use.role !== 'rate') return use;
     const line = evidence.find((one) => one.index === use.index);
-    const pair = use.charge === undefined ? bestPair(input, use, taken) : givenPair(input, use);
+    const pair = use.times === undefined ? bestPair(input, use, taken) : givenPair(input, use);
     if (!pair) {
       if (line)
         Object.assign(line, {
@@ -66,7 +66,9 @@ const multiplicands = ({ columns }: RateInput): ColumnUse[] =>
 
 function bestPair(input: RateInput, rate: ColumnUse, taken: ReadonlySet<string>): Pair | null {
   const pairs = input.columns
-    .filter((use) => use.role === 'charge' && !taken.has(use.name))
+    .filter(
+      (use) => use.role === 'charge' && (rate.charge === undefined ? !taken.has(use.name) : use.name === rate.charge),
+    )
     .flatMap((charge) =>
       multiplicands(input).flatMap((times) =>
         factors.map((factor) => ({ charge, times, factor, ...tried(input, rate, { charge, times, factor }) })),
@@ -75,9 +77,9 @@ function bestPair(input: RateInput, rate: ColumnUse, taken: ReadonlySet<string>)
   const proven = pairs
     .filter((pair) => pair.told > 0 && pair.met >= pair.told * 0.6)
     .sort((a, b) => b.met / b.told - a.met / a.told || likeness(rate, b) - likeness(rate, a));
-  if (proven[0] && (proven[0].told > 1 || likeness(rate, proven[0]) > 0)) return proven[0];
+  if (proven[0] && (proven[0].told > 1 || likeness(rate, proven[0]) > 0 || rate.charge)) return proven[0];
   const [named] = pairs
-    .filter((pair) => pair.factor === 1 && likeness(rate, pair) > 1)
+    .filter((pair) => pair.factor === 1 && (likeness(rate, pair) > 1 || rate.charge))
     .sort((a, b) => likeness(rate, b) - likeness(rate, a));
   return named ?? null;
 }

@@ -28,7 +28,7 @@ export function reportOfBills(
   const { currency, ...others } = findings;
   return {
     format: plan.opened.format,
-    rowsRead: placed.length,
+    rowsRead: placed.flatMap(({ draft }) => draft.rows).length,
     intervals: 0,
     missing: 0,
     duplicates: 0,

@@ -94,7 +94,8 @@ function common(
   plan: IntervalPlan | BillPlan | null,
   read: ((IntervalReading | BillReading) & { guesses: Guess[] }) | null,
 ): Common {
-  const grid = plan && 'grid' in plan ? plan.grid : opened.grid;
+  // A table that is turned is shown turned; cells filled down are shown as the file has them.
+  const grid = plan && 'isTransposed' in plan && plan.isTransposed ? plan.grid : opened.grid;
   const block = plan?.block ?? null;
   return {
     fileName: options.fileName,

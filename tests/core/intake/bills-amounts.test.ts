@@ -194,8 +194,8 @@ describe('quantity, rate and charge in three columns', () => {
       ['2025-02-01', '2025-03-01', 'Energy charge', 1000, 'kWh', 0.1, 100],
       ['2025-02-01', '2025-03-01', 'Demand charge', 20, 'kW', 5, 100],
     ]);
-    expect(reading.report.rateFaults?.map(({ bill, label, amount }) => [bill, label, amount])).toEqual([
-      [0, 'Demand charge', 110],
+    expect(reading.report.rateFaults?.map(({ bill, where, label, amount }) => [bill, where, label, amount])).toEqual([
+      [0, 'row 3', 'Demand charge', 110],
     ]);
   });
 });

@@ -163,6 +163,26 @@ describe('credit notes', () => {
     expect(taken.report.documents?.[2]).toMatchObject({ bill: 1 });
   });
 
+  it('are none because a remark speaks of a credit', async () => {
+    const { bills } = await readTable([
+      ['From', 'To', 'Remarks', 'kWh', 'Total charges'],
+      ['2025-01-01', '2025-01-31', 'credit for outage', 900, '90.00'],
+      ['2025-02-01', '2025-02-28', 'estimated', 900, '91.00'],
+    ]);
+    expect(bills.map(({ total }) => total)).toEqual([90, 91]);
+  });
+
+  it('may be printed without a sign where the file names them', async () => {
+    const { bills } = await readTable([
+      ['From', 'To', 'Document type', 'kWh', 'Total charges'],
+      ['2025-01-01', '2025-01-31', 'Invoice', 900, '90.00'],
+      ['2025-01-01', '2025-01-31', 'Credit note', 900, '90.00'],
+      ['2025-01-01', '2025-01-31', 'Invoice', 800, '80.00'],
+      ['2025-02-01', '2025-02-28', 'Invoice', 900, '91.00'],
+    ]);
+    expect(bills.map(({ total }) => total)).toEqual([80, 91]);
+  });
+
   it('a bill below nought that is alone in its days is a bill', async () => {
     const { bills } = await readTable([
       ['From', 'To', 'kWh', 'Total charges'],

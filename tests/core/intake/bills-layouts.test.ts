@@ -51,6 +51,7 @@ describe('a row a line of the bill', () => {
       },
     ]);
     expect(notesOf({ report }, 'sum-differs')).toEqual([]);
+    expect(report.rowsRead).toBe(11);
     expect(report.documents?.map(({ where, invoice, bill }) => [where, invoice, bill])).toEqual([
       ['rows 3 to 7', 'BW-101', 0],
       ['rows 8 to 13', 'BW-102', 1],

@@ -15,8 +15,12 @@ function demoSecret(folder: string): string {
 async function serve(stopMore: () => void = () => undefined): Promise<void> {
   const { startServer, stopServer } = await import('./main');
   const { closeOrphanedJobs } = await import('./services/jobs');
+  const { closeOrphanedReadings } = await import('./services/intake-reading');
+  const { clearHandOver } = await import('./workers/fork-reader');
   const server = await startServer();
   await closeOrphanedJobs();
+  await closeOrphanedReadings();
+  await clearHandOver();
   closeWithGrace({ delay: 10_000 }, async () => {
     stopMore();
     await stopServer(server);

@@ -4,7 +4,7 @@ import { unauthenticated } from './errors';
 import { parseOrThrow, toErrorBody } from './http';
 import { storeOriginal } from './drawer';
 import type { Actor } from './policies/actor';
-import { authorizeIntake, receiveFile } from './services/intake';
+import { authorizeIntake, patienceMs, receiveFile } from './services/intake';
 
 const query = z.object({
   kind: z.enum(['intervals', 'bills'], { error: 'Say whether the file holds intervals or bills.' }),
@@ -17,7 +17,7 @@ async function takeUpload(req: Request): Promise<unknown> {
   const input = parseOrThrow(query, req.query);
   const engagement = await authorizeIntake(actor, String(req.params.code));
   const file = await storeOriginal(req);
-  return receiveFile(actor, engagement, { ...input, ...file });
+  return receiveFile(actor, engagement, { ...input, ...file }, patienceMs);
 }
 
 /** The one way in for files: a raw PUT streamed to the drawer, before Astro, which would read it whole into memory. */

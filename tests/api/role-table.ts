@@ -110,6 +110,8 @@ export const roleTable: Record<string, Row> = {
   'PUT /api/intakes/[id]/map': members,
   'POST /api/intakes/[id]/match': members,
   'GET /api/intakes/[id]/original': members,
+  'POST /api/intakes/[id]/read': members,
+  'GET /api/intakes/[id]/trace': members,
   'POST /api/intakes/[id]/undo': members,
   'GET /api/jobs/[id]': members,
   'GET /api/jobs/[id]/events': members,

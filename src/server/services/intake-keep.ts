@@ -9,6 +9,7 @@ import { destroyBill } from './bills';
 import { present } from './intake';
 import { openIntake, openIntakeForChange } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
+import { assertNotReading } from './intake-reading';
 import { daysOf } from './intervals';
 import { keepBills } from './keep-bills';
 import { keepIntervals } from './keep-intervals';
@@ -28,6 +29,7 @@ export async function keepIntake(actor: Actor, id: number, version: number): Pro
 
 function assertReady(intake: Intake): HowToRead {
   const { state, fileName } = intake;
+  assertNotReading(intake);
   if (state === 'kept') throw conflict(`${fileName} is kept already.`);
   if (state === 'given-up') throw conflict(`${fileName} was given up. Bring it in again to keep it.`);
   const stored = intake.preview;

@@ -1,3 +1,4 @@
+import type { Trace, TracePoint } from '../core/intake';
 import type { BillInput, BillView, MeteredPeriod } from '../schemas/bill';
 import type { IntakeOverlap, IntakeView, LoadDays, MatchInput, OverlapChoice } from '../schemas/intake';
 import { call, sendFile } from './api';
@@ -40,6 +41,16 @@ export const undoIntake = step('undo');
 
 /** Puts a file aside. */
 export const giveUpIntake = step('give-up');
+
+/** The file as it is now. */
+export const fetchIntake = (id: number) => call<IntakeView>('GET', `/api/intakes/${id}`);
+
+/** Reads a file again that could not be read, or whose reading was stopped. */
+export const readAgain = ({ id, version }: Seen) => call<IntakeView>('POST', `/api/intakes/${id}/read`, { version });
+
+/** Where in its file a kept value stands. */
+export const fetchTrace = (id: number, at: TracePoint) =>
+  call<Trace>('GET', `/api/intakes/${id}/trace?${'ms' in at ? `ms=${at.ms}` : `from=${at.from}`}`);
 
 /** Reads the file again as corrected. */
 export const matchIntake = (id: number, input: MatchInput) =>

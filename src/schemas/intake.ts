@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { BillPreview, ColumnEvidence, ColumnMap, Guess, IntakeProblem, IntervalPreview } from '../core/intake';
-import { isTimeZone } from '../core/load';
+import { isCalendarDate, isTimeZone } from '../core/load';
+import type { JobProgress } from './job';
 
 export type IntakePreview = IntervalPreview | BillPreview;
 
@@ -46,6 +47,8 @@ export interface IntakeView extends IntakeRow {
   confirmed: string[];
   preview: IntakePreview | null;
   problems: IntakeProblem[];
+  /** The job that reads it; null where none does. */
+  reading: JobProgress | null;
   /** The remembered map it was read with. */
   readWith: RememberedMap | null;
   /** Remembered maps of files of this shape, newest first. */
@@ -256,6 +259,17 @@ export interface BillsOverlap {
 
 /** What is kept and what comes, side by side. */
 export type IntakeOverlap = IntervalsOverlap | BillsOverlap;
+
+const latestMs = 8.64e15;
+
+/** What is traced to its file: the interval that begins at an instant, or the bill whose period begins on a day. */
+export const tracePoint = z.union(
+  [
+    z.object({ ms: z.coerce.number().int().min(-latestMs).max(latestMs) }),
+    z.object({ from: z.string().refine(isCalendarDate) }),
+  ],
+  'Say ms, the beginning of an interval, or from, the first day of a bill as YYYY-MM-DD.',
+);
 
 /** Mean kW of every interval by local day, for the carpet picture; null where missing. */
 export interface LoadDays {

@@ -7,7 +7,7 @@ import { storeOriginal } from './drawer';
 import { storePages } from './page-stream';
 import type { Actor } from './policies/actor';
 import { assertBillOf, attachPages } from './services/attachments';
-import { authorizeIntake, receiveFile } from './services/intake';
+import { authorizeIntake, patienceMs, receiveFile } from './services/intake';
 
 const query = z.object({
   kind: z.enum(['intervals', 'bills'], { error: 'Say whether the file holds intervals or bills.' }),
@@ -19,7 +19,7 @@ async function takeUpload(actor: Actor, req: Request): Promise<unknown> {
   const input = parseOrThrow(query, req.query);
   const engagement = await authorizeIntake(actor, String(req.params.code));
   const file = await storeOriginal(req);
-  return receiveFile(actor, engagement, { ...input, ...file });
+  return receiveFile(actor, engagement, { ...input, ...file }, patienceMs);
 }
 
 async function takePages(actor: Actor, req: Request): Promise<unknown> {

@@ -138,6 +138,8 @@ export const roleTable: Record<string, Row> = {
   'POST /api/intakes/[id]/match': members,
   'GET /api/intakes/[id]/original': members,
   'GET /api/intakes/[id]/overlap': members,
+  'POST /api/intakes/[id]/read': members,
+  'GET /api/intakes/[id]/trace': members,
   'POST /api/intakes/[id]/undo': members,
   'GET /api/jobs/[id]': members,
   'GET /api/jobs/[id]/events': members,

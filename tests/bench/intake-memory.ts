@@ -24,8 +24,16 @@ function readers(): number[] {
 }
 
 /** Reads a file in a child and watches both processes. */
-async function watched(file: string): Promise<{ childMb: number; growthMb: number; seconds: number; kwh: number; intervals: number }> {
-  const request = { kind: 'intervals' as const, mode: 'read' as const, path: file, fileName: path.basename(file), timeZone: 'UTC' };
+async function watched(
+  file: string,
+): Promise<{ childMb: number; growthMb: number; seconds: number; kwh: number; intervals: number }> {
+  const request = {
+    kind: 'intervals' as const,
+    mode: 'read' as const,
+    path: file,
+    fileName: path.basename(file),
+    timeZone: 'UTC',
+  };
   globalThis.gc?.();
   const before = residentMegabytes('self');
   let [childMb, most] = [0, before];
@@ -94,7 +102,10 @@ export async function benchIntakeMemory(): Promise<Measured[]> {
     writePieces(feed, feedPieces(100 * 1000 * 1000));
     const minutes = path.join(folder, 'minutes.csv');
     writePieces(minutes, minutePieces(1_000_000));
-    return [...(await measured('ESPI feed', feed, (mb) => mb + 150)), ...(await measured('a million minutes', minutes, () => 900))];
+    return [
+      ...(await measured('ESPI feed', feed, (mb) => mb + 150)),
+      ...(await measured('a million minutes', minutes, () => 900)),
+    ];
   } finally {
     rmSync(folder, { recursive: true, force: true });
   }

@@ -37,6 +37,7 @@ export function wantsWord(preview: IntakePreview, confirmed: readonly string[]):
 export function intakeHeading(intake: IntakeView): string {
   const { state, preview, fileName, engagement, problems } = intake;
   if (state === 'given-up') return `${fileName} was given up. Nothing of it is kept.`;
+  if (state === 'reading') return `${fileName} is being read.`;
   if (!preview) return `${fileName} cannot be read.`;
   const found = holds(preview, engagement.currency);
   if (!found) return `${fileName} cannot be read yet. ${problems[0]?.message ?? 'See the step Match.'}`;
@@ -62,14 +63,20 @@ export function stepsOf(intake: IntakeView): StepTap[] {
       id: 'read',
       label: 'Read',
       done: preview !== null,
-      reason: preview ? `${formatNumber(preview.rowsInFile)} rows` : 'cannot be read',
+      reason: preview
+        ? `${formatNumber(preview.rowsInFile)} rows`
+        : state === 'reading'
+          ? 'being read'
+          : 'cannot be read',
     },
     {
       id: 'match',
       label: 'Match',
       done: matched,
       reason: !readable
-        ? 'to correct'
+        ? state === 'reading'
+          ? 'after reading'
+          : 'to correct'
         : left === 0
           ? 'all sure'
           : `${parts - left} of ${parts} sure, ${left} to confirm`,

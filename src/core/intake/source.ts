@@ -16,6 +16,13 @@ import { zipSource } from './zip-source';
 /** Characters of which the first rows are shown. */
 const headCharacters = 64 * 1024;
 
+// A table is opened as cells, then read: within a stage nothing can be counted from outside.
+const tableStages = 2;
+
+function tellStage({ onProgress }: ReadOptions, done: number): void {
+  onProgress?.({ unit: 'stages', done, planned: tableStages });
+}
+
 /** A file opened in its format, ready to be shown or read. */
 export interface IntakeSource {
   shape: () => string;
@@ -46,7 +53,9 @@ export async function openSource(bytes: Uint8Array, options: ReadOptions, isInAr
   }
   if (container === 'xml') return espiSource(bytes, options);
   if (container === 'nem12') return nemSource(decodeText(bytes, options.fileName).text, options);
+  tellStage(options, 0);
   const opened = openTable(bytes, container, options.fileName, options.columnMap ?? {});
+  tellStage(options, 1);
   return {
     shape: () => shapeOf(opened.grid, opened.vote?.delimiter),
     previewIntervals: () => previewOfIntervals(opened, options),

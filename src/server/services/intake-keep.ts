@@ -7,6 +7,7 @@ import type { Actor } from '../policies/actor';
 import { present } from './intake';
 import { openIntake, openIntakeForChange } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
+import { assertNotReading } from './intake-reading';
 import { daysOf } from './intervals';
 import { keepBills, takeBillsBack } from './keep-bills';
 import { keepIntervals } from './keep-intervals';
@@ -34,6 +35,7 @@ export async function keepIntake(
 /** How the file is to be read. @throws {ServiceError} where it cannot be kept as it stands */
 export function readyToKeep(intake: Intake): HowToRead {
   const { state, fileName } = intake;
+  assertNotReading(intake);
   if (state === 'kept') throw conflict(`${fileName} is kept already.`);
   if (state === 'given-up') throw conflict(`${fileName} was given up. Bring it in again to keep it.`);
   const stored = intake.preview;

@@ -29,7 +29,7 @@ function yearOf({ engagement, site }: OpenEngagement): { fromMs: number; toMs: n
 /** The files of an engagement on their way in or kept, newest first; those given up are left out. */
 export async function listIntakes(opened: OpenEngagement, kind: 'intervals' | 'bills') {
   const rows = await Intake.findAll({
-    where: { engagementId: opened.engagement.id, kind, state: ['read', 'refused', 'kept', 'undone'] },
+    where: { engagementId: opened.engagement.id, kind, state: ['reading', 'read', 'refused', 'kept', 'undone'] },
     attributes: { exclude: ['preview', 'report', 'columnMap'] },
     order: [['id', 'DESC']],
   });

@@ -57,8 +57,11 @@ export const fileByteCap = 128 * 1024 * 1024;
 /** At most two files are read at once; others wait their turn. */
 const places = new Semaphore(2);
 
-/** Where children hand loads over; what a killed server left there is of no use to anybody. */
-export const handOverFolder = () => path.resolve(getEnv().DATA_DIR, 'handed-over');
+/** Where children hand loads over. */
+const handOverFolder = () => path.resolve(getEnv().DATA_DIR, 'handed-over');
+
+/** Removes what a killed server left of loads that were handed over. Called at boot. */
+export const clearHandOver = () => rm(handOverFolder(), { recursive: true, force: true });
 
 /**
  * Reads a stranger's file in a child process of its own; whatever the file does to the child, the server stands. A load

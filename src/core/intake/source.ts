@@ -13,6 +13,7 @@ import { shapeOf, shapeOfNames } from './shape';
 import { decodeText } from './text';
 import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions } from './types';
 import { unzipOnly } from './unzip';
+import { unpackedWorkbook } from './workbook-zip';
 
 /** A file opened in its format, ready to be shown or read. */
 interface IntakeSource {
@@ -41,7 +42,8 @@ export async function openSource(bytes: Uint8Array, options: ReadOptions, isInAr
   }
   if (container === 'xml') return espiSource(decodeText(bytes, options.fileName).text, options);
   if (container === 'nem12') return nemSource(decodeText(bytes, options.fileName).text, options);
-  const opened = openTable(bytes, container, options.fileName, options.columnMap ?? {});
+  const unpacked = container === 'workbook-zip' ? await unpackedWorkbook(bytes, options.fileName) : bytes;
+  const opened = openTable(unpacked, container, options.fileName, options.columnMap ?? {});
   return {
     shape: () => shapeOf(opened.grid, opened.vote?.delimiter),
     previewIntervals: () => previewOfIntervals(opened, options),

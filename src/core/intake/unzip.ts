@@ -29,7 +29,11 @@ export async function unzipOnly(bytes: Uint8Array, fileName: string): Promise<Un
   return { name: only.name.split('/').at(-1) ?? only.name, bytes: await inflate(bytes, only, fileName) };
 }
 
-async function inflate(bytes: Uint8Array, member: ZipMember, fileName: string): Promise<Uint8Array> {
+/**
+ * The bytes of one member of a ZIP.
+ * @throws {IntakeError} if it is locked, damaged, or larger than its directory says.
+ */
+export async function inflate(bytes: Uint8Array, member: ZipMember, fileName: string): Promise<Uint8Array> {
   const where = `${fileName}, ${member.name}`;
   if (member.isEncrypted)
     throw intakeError('The file in the archive is locked by a password.', where, 'Pack it without a password.');

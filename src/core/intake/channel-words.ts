@@ -45,8 +45,20 @@ export function channelMeaning(name: string, unitGiven: UnitMeaning | null = nul
   const named = unit ? `Named in ${unit.unit}` : `Named as ${measure}, without a unit`;
   return isExport
     ? { role: 'export', unit, measure, why: `${named}, delivered to the grid`, isPlain: true }
-    : { role: 'active', unit, measure, why: named, isPlain: unit !== null };
+    : isContradictory(name, unit)
+      ? {
+          role: 'active',
+          unit,
+          measure,
+          why: `${named}, a unit of power, though its name speaks of energy`,
+          isPlain: false,
+        }
+      : { role: 'active', unit, measure, why: named, isPlain: unit !== null };
 }
+
+/** A name of energy over a unit of power. */
+export const isContradictory = (name: string, unit: UnitMeaning | null): boolean =>
+  unit?.measure === 'power' && mentions(name, 'energy');
 
 /** Names of power that say nothing of energy or consumption are average power; all else without a unit is energy. */
 const usualMeasure = (name: string): Measure =>

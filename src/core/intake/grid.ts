@@ -52,7 +52,8 @@ export class CellGrid implements Grid {
 
   text(row: number, column: number): string {
     const cell = this.cells[row]?.[column];
-    return cell === null || cell === undefined ? '' : String(cell).trim();
+    if (typeof cell === 'string') return cell;
+    return cell === null || cell === undefined ? '' : String(cell);
   }
 
   figureText(row: number, column: number): string {

@@ -3,9 +3,9 @@ import { findBlock, type TableBlock } from './block';
 import { checkColumns, checkExtraction, checkMeters } from './checks';
 import { detectColumns } from './detect';
 import { guess } from './evidence';
-import { columnOf, extractLong, type ColumnPlan, type Extraction } from './extract';
+import { columnOf, extractLong, valueRoles, type ColumnPlan, type Extraction } from './extract';
 import { extractWide } from './extract-wide';
-import { channelMeaning } from './channel-words';
+import { channelMeaning, isContradictory } from './channel-words';
 import { delimiterGuesses, openNotes } from './guesses';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
 import type { Grid } from './grid';
@@ -15,6 +15,7 @@ import type { PlacedStrand } from './series';
 import { unstack } from './stacked';
 import { timelineOf } from './timeline';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
+import { unitMeaning } from './units';
 
 /** A table of intervals with its meaning settled. */
 export interface IntervalPlan {
@@ -169,6 +170,15 @@ function assumptions(planned: IntervalPlan): IntakeNote[] {
     notes.push({
       code: 'reactive-sense',
       message: `${senseless.map((use) => use.name).join(', ')} names no sense and has no negative figure: it is taken as lagging.`,
+    });
+  const doubtful = planned.plan.columns.filter(
+    (use) =>
+      valueRoles.has(use.role) && use.measure === 'power' && isContradictory(use.name, unitMeaning(use.unit ?? '')),
+  );
+  if (doubtful.length > 0)
+    notes.push({
+      code: 'unit-doubtful',
+      message: `${doubtful.map((use) => use.name).join(', ')}: the name speaks of energy and the unit is one of power; the figures are read as average power.`,
     });
   const isExplained = planned.plan.columns.some((use) => use.role === 'unit' || use.role === 'channel');
   const assumed = planned.evidence.filter((line) => line.isUnitAssumed && line.takenAs !== 'ignore');

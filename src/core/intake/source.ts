@@ -11,6 +11,7 @@ import { shapeOf, shapeOfNames } from './shape';
 import { decodeText } from './text';
 import { traceNem, traceTable, traceTableBill } from './trace';
 import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions, Trace } from './types';
+import { unpackedWorkbook } from './workbook-zip';
 import { zipSource } from './zip-source';
 
 /** Characters of which the first rows are shown. */
@@ -54,7 +55,8 @@ export async function openSource(bytes: Uint8Array, options: ReadOptions, isInAr
   if (container === 'xml') return espiSource(bytes, options);
   if (container === 'nem12') return nemSource(decodeText(bytes, options.fileName).text, options);
   tellStage(options, 0);
-  const opened = openTable(bytes, container, options.fileName, options.columnMap ?? {});
+  const unpacked = container === 'workbook-zip' ? await unpackedWorkbook(bytes, options.fileName) : bytes;
+  const opened = openTable(unpacked, container, options.fileName, options.columnMap ?? {});
   tellStage(options, 1);
   return {
     shape: () => shapeOf(opened.grid, opened.vote?.delimiter),

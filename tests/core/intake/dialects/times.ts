@@ -135,8 +135,10 @@ export const timeDialects: Dialect[] = [
     fits: changes,
     notes: ['repeated-hour-once'],
     carried: onePass,
-    write: (series) =>
-      plainTable({ ...series, readings: series.readings.filter((one) => !secondPass(series).has(one)) }),
+    write: (series) => {
+      const lost = secondPass(series);
+      return plainTable({ ...series, readings: series.readings.filter((one) => !lost.has(one)) });
+    },
   },
   { ...step, name: 'blank fillers in the skipped hour', fits: changes, write: (series) => withFillers(series, ',,') },
   {

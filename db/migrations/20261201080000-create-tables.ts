@@ -15,6 +15,7 @@ import {
   type Columns,
 } from './tables/columns';
 import { billChecks, billTables } from './tables/bills';
+import { gapFillChecks, gapFillTables } from './tables/gap-fills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
 
@@ -94,6 +95,7 @@ const tables: Record<string, Columns> = {
     ...stamps,
   },
   ...intakeTables,
+  ...gapFillTables,
   ...billTables,
   tariff_choices: {
     ...id,
@@ -260,6 +262,7 @@ const checks: Record<string, string[]> = {
   users: ["role IN ('partner','consultant','client')", "(role = 'client') = (client_id IS NOT NULL)"],
   tokens: ["kind IN ('invitation','reset')"],
   ...intakeChecks,
+  ...gapFillChecks,
   jobs: ["state IN ('running','done','failed','cancelled')"],
   letters: ["state IN ('sent','failed')"],
   ...billChecks,
@@ -273,7 +276,7 @@ async function addChecks(database: QueryInterface, table: string): Promise<void>
     for (const event of ['INSERT', 'UPDATE']) {
       const name = `${table}_${event.toLowerCase()}_${checks[table]?.indexOf(condition)}`;
       const onNew = condition.replace(
-        /\b(role|client_id|kind|state|family|way|period_from|period_to|minutes|year_from|year_to)\b/g,
+        /\b(role|client_id|kind|state|method|family|way|period_from|period_to|minutes|year_from|year_to)\b/g,
         'NEW.$1',
       );
       await database.sequelize.query(

@@ -1,5 +1,5 @@
 import type { BillInput, BillView } from '../schemas/bill';
-import type { IntakeOverlap, IntakeView, LoadDays, MatchInput, OverlapChoice } from '../schemas/intake';
+import type { IntakeOverlap, IntakePicture, IntakeView, MatchInput, OverlapChoice } from '../schemas/intake';
 import { call, sendFile } from './api';
 
 type Kind = 'intervals' | 'bills';
@@ -52,8 +52,8 @@ export const rememberMap = (id: number, name: string) => call<IntakeView>('POST'
 export const readWithMap = ({ id, version }: Seen, mapId: number) =>
   call<IntakeView>('PUT', `/api/intakes/${id}/map`, { version, mapId });
 
-/** Mean kW by day of a file that is not kept yet. */
-export const fetchIntakeDays = (id: number) => call<LoadDays>('GET', `/api/intakes/${id}/load`);
+/** What a file that is not kept yet holds by day, and what of it may not be true. */
+export const fetchIntakePicture = (id: number) => call<IntakePicture>('GET', `/api/intakes/${id}/load`);
 
 const billsPath = (code: string) => `/api/engagements/${encodeURIComponent(code)}/bills`;
 

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { BillPreview, ColumnEvidence, ColumnMap, Guess, IntakeProblem, IntervalPreview } from '../core/intake';
-import { isTimeZone } from '../core/load';
+import { isTimeZone, type LoadFinding } from '../core/load';
+import type { GapFillView } from './gap-fill';
 
 export type IntakePreview = IntervalPreview | BillPreview;
 
@@ -221,7 +222,23 @@ export type IntakeOverlap = IntervalsOverlap | BillsOverlap;
 /** Mean kW of every interval by local day, for the carpet picture; null where missing. */
 export interface LoadDays {
   stepMinutes: number;
-  days: { date: string; readings: (number | null)[] }[];
+  days: DayOfLoad[];
+}
+
+/** One local day of readings; null where missing. */
+export interface DayOfLoad {
+  date: string;
+  /** Mean kW. */
+  readings: (number | null)[];
+  /** Mean kvar, lagging less leading: below nought where the plant delivers; absent where the readings carry none. */
+  kvar?: (number | null)[];
+  /** Positions that are estimated; absent where none is. */
+  estimated?: number[];
+}
+
+/** The picture of a file before it is kept, and what its readings show that may not be true. */
+export interface IntakePicture extends LoadDays {
+  findings: LoadFinding[];
 }
 
 /** A stretch of missing readings, half-open. */
@@ -283,6 +300,9 @@ export interface KeptYear {
   peak: PeakOfYear | null;
   gaps: ReadingGap[];
   gapCount: number;
+  /** Gaps that were estimated. */
+  fills: GapFillView[];
+  findings: LoadFinding[];
   months: MonthOfLoad[];
 }
 

@@ -1,17 +1,12 @@
 import { addDays, addMonths, localDateOf, localDateStartMs, type LoadSeries } from '../../core/load';
-import type {
-  DayReading,
-  IntervalsStation,
-  KeptFile,
-  LoadDays,
-  MonthOfLoad,
-  PeakOfYear,
-  ReadingGap,
-} from '../../schemas/intake';
+import type { DayReading, IntervalsStation, KeptFile, MonthOfLoad, PeakOfYear, ReadingGap } from '../../schemas/intake';
 import { Intake } from '../models/Intake';
 import { User } from '../models/User';
 import { presentIntakeRow } from '../presenters/intake';
 import type { OpenEngagement } from './engagements';
+import { listFills } from './gap-fills';
+import { daysOf } from './load-days';
+import { loadFindings } from './load-findings';
 import { keptSpans, loadSeries } from './readings';
 
 const minuteMs = 60_000;
@@ -61,6 +56,8 @@ export async function intervalsStation(opened: OpenEngagement): Promise<Interval
       peak: peakOf(load, timeZone),
       gaps: gaps.slice(0, longestGapList),
       gapCount: gaps.length,
+      fills: await listFills(opened.meter.id, fromMs, toMs),
+      findings: await loadFindings(opened, load),
       months: monthsOf(load, timeZone),
     },
   };
@@ -185,22 +182,4 @@ function monthOf(load: LoadSeries, from: string, first: number, end: number): Mo
     maxKw: peak === null ? null : meanOf(part.kwh, peak, load.stepMinutes),
     maxKwMs: peak === null ? null : startOf(part, peak),
   };
-}
-
-/** Mean kW by local day, rounded to a tenth: it is drawn, not reckoned with. A day that begins late is padded. */
-export function daysOf(load: LoadSeries, timeZone: string): LoadDays {
-  const stepMs = load.stepMinutes * minuteMs;
-  const perHour = 60 / load.stepMinutes;
-  const indexOf = (date: string) => Math.round((localDateStartMs(date, timeZone) - load.startMs) / stepMs);
-  const meanKw = (index: number) => {
-    const kwh = load.kwh[index] ?? NaN;
-    return Number.isNaN(kwh) ? null : Math.round(kwh * perHour * 10) / 10;
-  };
-  const days: LoadDays['days'] = [];
-  for (let date = localDateOf(load.startMs, timeZone); indexOf(date) < load.kwh.length; date = addDays(date, 1)) {
-    const first = indexOf(date);
-    const end = Math.min(load.kwh.length, indexOf(addDays(date, 1)));
-    days.push({ date, readings: Array.from({ length: end - first }, (_, offset) => meanKw(first + offset)) });
-  }
-  return { stepMinutes: load.stepMinutes, days };
 }

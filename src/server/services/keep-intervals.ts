@@ -1,4 +1,5 @@
 import { formatCount } from '../../components/ui/format';
+import type { LoadSeries } from '../../core/load';
 import type { IntervalsOverlap, OverlapChoice } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict } from '../errors';
@@ -9,16 +10,20 @@ import { spanInWords } from './intake-words';
 import { assertSteps, intervalsBeside } from './overlap-intervals';
 import { keepSeries } from './reading-blocks';
 
+/** Reads a file and keeps its readings at the meter they belong to. @throws {ServiceError} 422, 409 as {@link keepLoad} */
+export async function keepIntervals(open: OpenIntake, how: HowToRead, overlap?: OverlapChoice): Promise<void> {
+  const { load } = await readIntervalFile(open.intake, how);
+  await keepLoad(open, load, overlap);
+}
+
 /**
- * Keeps the readings of a file at the meter of its engagement, all or nothing. Readings kept before are not touched:
- * the new ones lie above or beneath them.
+ * Keeps the readings of a file, all or nothing. Those kept before are not touched: the new ones lie above or beneath them.
  *
  * @throws {ServiceError} 409 with both side by side where an interval has a reading already and nothing was chosen
  */
-export async function keepIntervals(open: OpenIntake, how: HowToRead, overlap?: OverlapChoice): Promise<void> {
+export async function keepLoad(open: OpenIntake, load: LoadSeries, overlap?: OverlapChoice): Promise<void> {
   const { intake } = open;
   const meter = meterOf(open);
-  const { load } = await readIntervalFile(intake, how);
   await inTx(async () => {
     await assertSteps(meter, load);
     const beside = await intervalsBeside(open, load);

@@ -4,7 +4,7 @@ import { energyDiffers, type SaidEnergy } from './bill-energy';
 import { clockShifts } from './clock-shifts';
 import { impossibleReadings, spikes } from './extremes';
 import type { LoadFinding } from './finding';
-import { poorFactors, reactiveAlone } from './reactive';
+import { poorFactors, reactiveAlone } from './kvar';
 import { flatLines, zerosAtWork } from './standing-still';
 
 const order = { fault: 0, caution: 1, note: 2 };

@@ -16,6 +16,7 @@ import {
 } from './tables/columns';
 import { attachmentChecks, attachmentIndexes, attachmentTables } from './tables/attachments';
 import { billChecks, billTables } from './tables/bills';
+import { gapFillChecks, gapFillTables } from './tables/gap-fills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
 import { requestChecks, requestIndexes, requestTables, requestUniques } from './tables/requests';
@@ -96,6 +97,7 @@ const tables: Record<string, Columns> = {
     ...stamps,
   },
   ...intakeTables,
+  ...gapFillTables,
   ...billTables,
   ...attachmentTables,
   tariff_choices: {
@@ -266,6 +268,7 @@ const checks: Record<string, string[]> = {
   users: ["role IN ('partner','consultant','client')", "(role = 'client') = (client_id IS NOT NULL)"],
   tokens: ["kind IN ('invitation','reset')"],
   ...intakeChecks,
+  ...gapFillChecks,
   jobs: ["state IN ('running','done','failed','cancelled')"],
   letters: ["state IN ('sent','failed')"],
   ...billChecks,
@@ -281,7 +284,7 @@ async function addChecks(database: QueryInterface, table: string): Promise<void>
     for (const event of ['INSERT', 'UPDATE']) {
       const name = `${table}_${event.toLowerCase()}_${checks[table]?.indexOf(condition)}`;
       const onNew = condition.replace(
-        /\b(role|client_id|kind|state|family|way|media_type|period_from|period_to|minutes|year_from|year_to)\b/g,
+        /\b(role|client_id|kind|state|method|family|way|media_type|period_from|period_to|minutes|year_from|year_to)\b/g,
         'NEW.$1',
       );
       await database.sequelize.query(

@@ -1,6 +1,6 @@
 import type { Trace, TracePoint } from '../core/intake';
 import type { BillInput, BillView, MeteredPeriod } from '../schemas/bill';
-import type { IntakeOverlap, IntakeView, LoadDays, MatchInput, OverlapChoice } from '../schemas/intake';
+import type { IntakeOverlap, IntakePicture, IntakeView, MatchInput, OverlapChoice } from '../schemas/intake';
 import { call, sendFile } from './api';
 
 type Kind = 'intervals' | 'bills';
@@ -9,12 +9,13 @@ type Seen = { id: number; version: number };
 /** Brings a file in; `onProgress` hears the share that has gone up. */
 export function bringIn(
   code: string,
-  kind: Kind,
+  { kind, meterId }: { kind: Kind; meterId?: number },
   file: File,
   onProgress: (share: number) => void,
   signal: AbortSignal,
 ): Promise<IntakeView> {
   const query = new URLSearchParams({ kind, fileName: file.name });
+  if (meterId !== undefined) query.set('meterId', String(meterId));
   return sendFile(`/api/engagements/${encodeURIComponent(code)}/uploads?${query}`, file, onProgress, signal);
 }
 
@@ -63,8 +64,8 @@ export const rememberMap = (id: number, name: string) => call<IntakeView>('POST'
 export const readWithMap = ({ id, version }: Seen, mapId: number) =>
   call<IntakeView>('PUT', `/api/intakes/${id}/map`, { version, mapId });
 
-/** Mean kW by day of a file that is not kept yet. */
-export const fetchIntakeDays = (id: number) => call<LoadDays>('GET', `/api/intakes/${id}/load`);
+/** What a file that is not kept yet holds by day, and what of it may not be true. */
+export const fetchIntakePicture = (id: number) => call<IntakePicture>('GET', `/api/intakes/${id}/load`);
 
 const billsPath = (code: string) => `/api/engagements/${encodeURIComponent(code)}/bills`;
 

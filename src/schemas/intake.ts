@@ -1,6 +1,8 @@
 import { z } from 'zod';
 import type { BillPreview, ColumnEvidence, ColumnMap, Guess, IntakeProblem, IntervalPreview } from '../core/intake';
-import { isCalendarDate, isTimeZone } from '../core/load';
+import { isCalendarDate, isTimeZone, type LoadFinding } from '../core/load';
+import type { MeterView } from './engagement';
+import type { GapFillView } from './gap-fill';
 import type { JobProgress } from './job';
 
 export type IntakePreview = IntervalPreview | BillPreview;
@@ -274,7 +276,23 @@ export const tracePoint = z.union(
 /** Mean kW of every interval by local day, for the carpet picture; null where missing. */
 export interface LoadDays {
   stepMinutes: number;
-  days: { date: string; readings: (number | null)[] }[];
+  days: DayOfLoad[];
+}
+
+/** One local day of readings; null where missing. */
+export interface DayOfLoad {
+  date: string;
+  /** Mean kW. */
+  readings: (number | null)[];
+  /** Mean kvar, lagging less leading: below nought where the plant delivers; absent where the readings carry none. */
+  kvar?: (number | null)[];
+  /** Positions that are estimated; absent where none is. */
+  estimated?: number[];
+}
+
+/** The picture of a file before it is kept, and what its readings show that may not be true. */
+export interface IntakePicture extends LoadDays {
+  findings: LoadFinding[];
 }
 
 /** A stretch of missing readings, half-open. */
@@ -348,11 +366,25 @@ export interface KeptYear {
   peak: PeakOfYear | null;
   gaps: ReadingGap[];
   gapCount: number;
+  /** Gaps that were estimated. */
+  fills: GapFillView[];
+  findings: LoadFinding[];
   months: MonthOfLoad[];
 }
 
-/** The station Intervals. */
+/** The meters billed together, and what could be among them. */
+export interface MetersOfYear {
+  meters: MeterOfYear[];
+  /** All of them added up; null with one meter, or where one has no readings. */
+  together: Omit<MeterOfYear, 'id' | 'label'> | null;
+  /** Meters of the site that are not among them. */
+  others: MeterView[];
+}
+
+/** The station Intervals, of one of the engagement's meters. */
 export interface IntervalsStation {
+  /** The meter shown. */
+  meter: MeterView;
   files: IntakeRow[];
   kept: KeptFile[];
   /** By local day; null where nothing is kept. */

@@ -1,5 +1,6 @@
 import { benchIntake } from './intake';
 import { benchIntakeBook, benchIntakeRows } from './intake-rows';
+import { benchKeep } from './keep';
 import { benchMinuteYears } from './minute-years';
 import { benchPricing } from './pricing';
 import { benchRepricing } from './repricing';
@@ -34,6 +35,7 @@ async function main(): Promise<void> {
     benchIntake,
     benchIntakeRows,
     benchIntakeBook,
+    benchKeep,
     benchServer,
   ];
   for (const part of parts) {

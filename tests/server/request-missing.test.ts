@@ -71,6 +71,8 @@ describe('missingIntervals', () => {
       peak: null,
       gaps: gaps.map(([from, to]) => ({ fromMs: utc(from), toMs: utc(to), intervals: 1 })),
       gapCount: gaps.length,
+      fills: [],
+      findings: [],
       months,
     },
   });

@@ -3,7 +3,7 @@ import { formatDate, formatNumber } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 import { carpetRuns, thresholdDecimals, type CarpetData, type CarpetMark, type CarpetRun } from './carpet';
 import { ChartFigure, type FigureText } from './ChartFigure';
-import { HatchDefs, useHatch } from './HatchDefs';
+import { HatchDefs, useHatch, type Hatch } from './HatchDefs';
 import { axisLook, narrowBelow, OnPlot, PlotFrame, Words, type ChartSize, type Plot } from './kit';
 import { pagePalette, type Palette } from './palette';
 
@@ -36,8 +36,33 @@ function Carpet({ data, plot, palette, hatchId }: Parts & { hatchId: string }) {
     const d = runsPath(found, plot, data.days.length, data.stepMinutes);
     if (step === '-')
       return <path key={step} d={d} fill={`url(#${hatchId})`} stroke={palette.madder} strokeWidth={0.75} />;
-    return <path key={step} d={d} fill={palette.ink} fillOpacity={inkSteps[Number(step)] ?? 1} />;
+    return <path key={step} d={d} {...inkOf(step, data.channel, palette)} />;
   });
+}
+
+/** Colour and strength of a step. */
+function inkOf(step: string, channel: CarpetData['channel'], palette: Palette) {
+  const lead = 'abcdefg'.indexOf(step);
+  if (lead >= 0) return { fill: palette.verdigris, fillOpacity: inkSteps[lead] };
+  return { fill: channel === 'kw' ? palette.ink : palette.copper, fillOpacity: inkSteps[Number(step)] ?? 1 };
+}
+
+/** Hatching over what is not plain: the leading intervals in verdigris, so that colour is not their only sign, and the estimated in ochre. */
+function Hatchings({ data, plot, palette, hatch }: Parts & { hatch: Record<Hatch, string> }) {
+  const leading: CarpetRun[] = [];
+  for (const [step, runs] of carpetRuns(data.days)) if ('bcdefg'.includes(step)) leading.push(...runs);
+  const estimated = data.days.flatMap((one, day) =>
+    (one.estimated ?? []).map(([from, length]): CarpetRun => ({ day, from, length })),
+  );
+  const pathOf = (runs: CarpetRun[]) => runsPath(runs, plot, data.days.length, data.stepMinutes);
+  return (
+    <>
+      {leading.length > 0 && <path d={pathOf(leading)} fill={`url(#${hatch.saving})`} />}
+      {estimated.length > 0 && (
+        <path d={pathOf(estimated)} fill={`url(#${hatch.pullOut})`} stroke={palette.ochre} strokeWidth={0.75} />
+      )}
+    </>
+  );
 }
 
 /** Names of the months where they begin; fewer on a phone. */
@@ -90,37 +115,70 @@ function Marks({ data, plot, palette, marks }: Parts & { marks: CarpetMark[] }) 
   });
 }
 
-/** The steps named at the foot, with what is missing. */
-function Key({ data, plot, palette, hatchId, narrow }: Parts & { hatchId: string; narrow: boolean }) {
+/** The steps named at the foot, with the senses, what is estimated and what is missing. */
+function Key({ data, plot, palette, hatch, narrow }: Parts & { hatch: Record<Hatch, string>; narrow: boolean }) {
+  const { channel = 'kw' } = data;
   const y = plot.bottom + 36;
-  const pitch = Math.min(96, (plot.right - plot.left - 60) / (narrow ? 4 : 8));
+  const senses = keySigns(data, palette, hatch);
+  const reserved = 12 + senses.reduce((sum, { word }) => sum + signWidth(word), 0);
   const shown = narrow ? [1, 3, 5] : [1, 2, 3, 4, 5, 6];
-  const decimals = thresholdDecimals(data.thresholds);
+  const pitch = Math.min(96, (plot.right - plot.left - 84 - (narrow ? 0 : reserved)) / shown.length);
+  const decimals = channel === 'pf' ? 2 : thresholdDecimals(data.thresholds);
   const threshold = (index: number) => formatNumber(data.thresholds[index] ?? 0, { decimals });
+  const [under, beyond] = channel === 'pf' ? ['above', 'and below'] : ['below', 'and above'];
   const box = { y: y - 9, width: 14, height: 10, stroke: palette.rule2, strokeWidth: 0.75 };
+  let right = plot.right;
   return (
     <>
       <Words x={plot.left} y={y} palette={palette} tone="ink2">
-        {narrow ? data.unit : `below ${threshold(0)}`}
+        {narrow ? data.unit : `${under} ${threshold(0)}`}
       </Words>
       {shown.map((step, index) => {
-        const x = plot.left + (narrow ? 30 : 84) + index * pitch;
+        const x = plot.left + (narrow ? 34 : 84) + index * (narrow ? 56 : pitch);
         const last = index === shown.length - 1;
         return (
           <g key={step}>
-            <rect x={x} {...box} fill={palette.ink} fillOpacity={inkSteps[step]} />
+            <rect x={x} {...box} {...inkOf(String(step), channel, palette)} />
             <Words x={x + 19} y={y} palette={palette} tone="ink2">
-              {`${threshold(step - 1)}${last && !narrow ? ` and above, ${data.unit}` : ''}`}
+              {`${threshold(step - 1)}${last && !narrow && pitch > 90 ? ` ${beyond}, ${data.unit}` : ''}`}
             </Words>
           </g>
         );
       })}
-      <rect x={plot.right - 64} {...box} fill={`url(#${hatchId})`} stroke={palette.madder} />
-      <Words x={plot.right} y={y} palette={palette} tone="ink2" anchor="end">
-        missing
-      </Words>
+      {senses.map(({ word, ...sign }) => {
+        const at = narrow ? y + 18 : y;
+        const end = right;
+        right -= signWidth(word);
+        return (
+          <g key={word}>
+            <rect x={end - signWidth(word) + 14} {...box} y={at - 9} {...sign.ground} />
+            {sign.over && <rect x={end - signWidth(word) + 14} {...box} y={at - 9} fill={sign.over} />}
+            <Words x={end} y={at} palette={palette} tone="ink2" anchor="end">
+              {word}
+            </Words>
+          </g>
+        );
+      })}
     </>
   );
+}
+
+const signWidth = (word: string) => 34 + word.length * 6.2;
+
+/** What the key names besides the steps, from the right. */
+function keySigns({ channel = 'kw', days }: CarpetData, palette: Palette, hatch: Record<Hatch, string>) {
+  const signs: { word: string; ground: { fill: string; fillOpacity?: number; stroke?: string }; over?: string }[] = [
+    { word: 'missing', ground: { fill: `url(#${hatch.limit})`, stroke: palette.madder } },
+  ];
+  if (days.some(({ estimated }) => estimated)) {
+    signs.push({ word: 'estimated', ground: { fill: `url(#${hatch.pullOut})`, stroke: palette.ochre } });
+  }
+  if (channel !== 'kw') {
+    const verdigris = { fill: palette.verdigris, fillOpacity: inkSteps[4] };
+    signs.push({ word: 'leading', ground: verdigris, over: `url(#${hatch.saving})` });
+    signs.push({ word: 'lagging', ground: { fill: palette.copper, fillOpacity: inkSteps[4] } });
+  }
+  return signs;
 }
 
 const hourTicks = [0, 360, 720, 1080, 1440];
@@ -129,7 +187,6 @@ const hourName = (minute: number) => `${String(minute / 60).padStart(2, '0')}:00
 /** A day a column, midnight at the foot, one ink in seven steps, what is missing hatched in madder. */
 export function CarpetChart({ width, height, palette = pagePalette, ...data }: CarpetData & ChartSize) {
   const hatch = useHatch();
-  const missingHatch = hatch.limit;
   const rows = [{ day: 0, minute: 0 }];
   const name = `Carpet picture of ${data.days.length} days: one column a day, ${data.unit}`;
   return (
@@ -162,7 +219,12 @@ export function CarpetChart({ width, height, palette = pagePalette, ...data }: C
       <HatchDefs ids={hatch} palette={palette} />
       <Scatter dataKey="minute" fill="none" isAnimationActive={false} shape={() => <g />} />
       <OnPlot at="ground">
-        {(plot) => <Carpet data={data} plot={plot} palette={palette} hatchId={missingHatch} />}
+        {(plot) => (
+          <>
+            <Carpet data={data} plot={plot} palette={palette} hatchId={hatch.limit} />
+            <Hatchings data={data} plot={plot} palette={palette} hatch={hatch} />
+          </>
+        )}
       </OnPlot>
       <PlotFrame palette={palette} xTicks={[]} yTicks={hourTicks} />
       <OnPlot at="words">
@@ -170,7 +232,7 @@ export function CarpetChart({ width, height, palette = pagePalette, ...data }: C
           <>
             <Months data={data} plot={plot} palette={palette} />
             <Marks data={data} plot={plot} palette={palette} marks={data.marks ?? []} />
-            <Key data={data} plot={plot} palette={palette} hatchId={missingHatch} narrow={width < narrowBelow} />
+            <Key data={data} plot={plot} palette={palette} hatch={hatch} narrow={width < narrowBelow} />
           </>
         )}
       </OnPlot>
@@ -178,20 +240,33 @@ export function CarpetChart({ width, height, palette = pagePalette, ...data }: C
   );
 }
 
-/** The same as a table: least, mean and greatest of every day, and what is missing. */
+/** The same as a table: least, mean and greatest of every day, and what is missing or estimated. */
 export function carpetTable(data: CarpetData): LedgerData {
-  const figure = { kind: 'number', decimals: 1, unit: data.unit } as const;
+  const isFactor = data.channel === 'pf';
+  const figure = { kind: 'number', decimals: isFactor ? 3 : 1, unit: isFactor ? undefined : data.unit } as const;
+  const sense = (value: number | null) =>
+    value === null || data.channel === 'kw' ? value : ({ value, tone: value < 0 ? 'leading' : 'lagging' } as const);
+  const count = (key: string, head: string) => ({ key, head, unit: 'readings', kind: 'number' as const });
+  const anyEstimated = data.days.some(({ estimated }) => estimated);
   return {
     columns: [
       { key: 'date', head: 'Day' },
       { key: 'least', head: 'Least', ...figure },
       { key: 'mean', head: 'Mean', ...figure },
       { key: 'greatest', head: 'Greatest', ...figure },
-      { key: 'missing', head: 'Missing', unit: 'readings', kind: 'number' },
+      count('missing', 'Missing'),
+      ...(anyEstimated ? [count('estimated', 'Estimated')] : []),
     ],
-    rows: data.days.map(({ date, least, mean, greatest, missing }) => ({
+    rows: data.days.map(({ date, least, mean, greatest, missing, estimated = [] }) => ({
       id: date,
-      cells: { date: formatDate(date), least, mean, greatest, missing },
+      cells: {
+        date: formatDate(date),
+        least: sense(least),
+        mean: sense(mean),
+        greatest: sense(greatest),
+        missing,
+        estimated: estimated.reduce((sum, [, length]) => sum + length, 0),
+      },
     })),
   };
 }

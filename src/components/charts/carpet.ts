@@ -1,17 +1,23 @@
-/** One day of a carpet: a character per interval, 0 to 6 for the step of ink, `-` for missing. */
+/** What a carpet shows: kW in ink; kvar in copper where lagging, in verdigris where leading; power factor the poorer the stronger. */
+export type CarpetChannel = 'kw' | 'kvar' | 'pf';
+
+/** One day of a carpet: a character per interval, 0 to 6 for the step of ink, `a` to `g` for the same where leading, `-` for missing. */
 export interface CarpetDay {
   /** Local date YYYY-MM-DD. */
   date: string;
   steps: string;
-  /** Over the readings that are there; null where the whole day is missing. */
+  /** Over the readings that are there; null where the whole day is missing. Leading kvar and power factors are below nought. */
   least: number | null;
   mean: number | null;
   greatest: number | null;
   missing: number;
+  /** Runs of estimated intervals: first, and how many. Absent where none is. */
+  estimated?: [first: number, count: number][];
 }
 
 /** A year of readings as plain JSON, a fortieth of the readings' own size. */
 export interface CarpetData {
+  channel?: CarpetChannel;
   unit: string;
   stepMinutes: number;
   /** Six values that part the seven steps. */
@@ -47,6 +53,26 @@ function carpetThresholds(readings: number[]): number[] {
   return Array.from({ length: 6 }, (_, index) => rounded(low + step * (index + 0.5)));
 }
 
+interface DayReadings {
+  date: string;
+  readings: ArrayLike<number | null>;
+  estimated?: number[];
+}
+
+const isPresent = (value: number | null): value is number => value !== null && !Number.isNaN(value);
+
+/** Power factors that part the steps, the poorer the stronger: those that tariffs commonly name. */
+const factorThresholds = [0.98, 0.95, 0.9, 0.85, 0.8, 0.7];
+const leadingSteps = 'abcdefg';
+
+/** The character of a reading. The sign of kvar and power factor is their sense: below nought leads. */
+function stepOf(value: number, channel: CarpetChannel, thresholds: number[]): string {
+  const size = Math.abs(value);
+  const isBeyond = (threshold: number) => (channel === 'pf' ? size < threshold : size >= threshold);
+  const step = thresholds.filter(isBeyond).length;
+  return value < 0 && channel !== 'kw' ? leadingSteps[step]! : String(step);
+}
+
 /**
  * Packs readings for a carpet.
  *
@@ -54,27 +80,71 @@ function carpetThresholds(readings: number[]): number[] {
  *   null or NaN is missing.
  */
 export function packCarpet(input: {
+  channel?: CarpetChannel;
   unit: string;
   stepMinutes: number;
-  days: { date: string; readings: ArrayLike<number | null> }[];
+  days: DayReadings[];
   marks?: CarpetMark[];
 }): CarpetData {
-  const present = (value: number | null): value is number => value !== null && !Number.isNaN(value);
-  const thresholds = carpetThresholds(input.days.flatMap((day) => Array.from(day.readings).filter(present)));
-  const stepOf = (value: number) => thresholds.filter((threshold) => value >= threshold).length;
-  const days = input.days.map(({ date, readings }) => {
+  const { channel = 'kw', unit, stepMinutes, marks } = input;
+  const sizes = input.days.flatMap((day) => Array.from(day.readings).filter(isPresent).map(Math.abs));
+  const thresholds = channel === 'pf' ? factorThresholds : carpetThresholds(sizes);
+  const days = input.days.map(({ date, readings, estimated }): CarpetDay => {
     const values = Array.from(readings);
-    const known = values.filter(present);
+    const known = values.filter(isPresent);
     return {
       date,
-      steps: values.map((value) => (present(value) ? String(stepOf(value)) : '-')).join(''),
+      steps: values.map((value) => (isPresent(value) ? stepOf(value, channel, thresholds) : '-')).join(''),
       least: known.length ? Math.min(...known) : null,
       mean: known.length ? known.reduce((sum, value) => sum + value, 0) / known.length : null,
       greatest: known.length ? Math.max(...known) : null,
       missing: values.length - known.length,
+      ...(estimated && { estimated: runsOf(estimated) }),
     };
   });
-  return { unit: input.unit, stepMinutes: input.stepMinutes, thresholds, days, marks: input.marks };
+  return { channel, unit, stepMinutes, thresholds, days, marks };
+}
+
+/** Ascending positions as runs. */
+function runsOf(positions: number[]): [number, number][] {
+  const runs: [number, number][] = [];
+  for (const at of positions) {
+    const open = runs.at(-1);
+    if (open && open[0] + open[1] === at) open[1]++;
+    else runs.push([at, 1]);
+  }
+  return runs;
+}
+
+/** The same readings as kW, and as kvar and power factor where they carry reactive energy. */
+export function packCarpets(input: {
+  stepMinutes: number;
+  days: (DayReadings & { kvar?: ArrayLike<number | null> })[];
+  marks?: CarpetMark[];
+}): CarpetData[] {
+  const kw = packCarpet({ channel: 'kw', unit: 'kW', ...input });
+  if (!input.days.some(({ kvar }) => kvar)) return [kw];
+  const derive = (of: (kw: number, kvar: number) => number) =>
+    input.days.map(({ date, readings, kvar = [], estimated }) => ({
+      date,
+      estimated,
+      readings: Array.from(readings, (one, at) => {
+        const other = kvar[at] ?? null;
+        return isPresent(one) && isPresent(other) ? of(one, other) : null;
+      }),
+    }));
+  return [
+    kw,
+    packCarpet({ ...input, channel: 'kvar', unit: 'kvar', days: derive((_, kvar) => kvar) }),
+    packCarpet({ ...input, channel: 'pf', unit: 'pf', days: derive(factorOf) }),
+  ];
+}
+
+/** Displacement power factor with its sense as sign; 1 where nothing flows, since nothing is poor then. */
+function factorOf(kw: number, kvar: number): number {
+  const apparent = Math.hypot(kw, kvar);
+  if (apparent === 0) return 1;
+  return (kw / apparent) * (kvar < 0 ? -1 : 1);
 }
 
 /** A run of equal intervals within one day. */

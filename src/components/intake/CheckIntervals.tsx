@@ -1,16 +1,18 @@
 import { useQuery } from '@tanstack/react-query';
-import { fetchIntakeDays } from '../../client/intake';
+import { fetchIntakePicture } from '../../client/intake';
 import type { IntakeReport, IntervalPreview } from '../../core/intake';
 import { localDateStartMs } from '../../core/load';
-import type { IntakeView } from '../../schemas/intake';
-import { packCarpet } from '../charts/carpet';
-import { CarpetFigure } from '../charts/CarpetChart';
+import type { IntakePicture, IntakeView } from '../../schemas/intake';
+import { packCarpets } from '../charts/carpet';
+import { CarpetTabs } from '../charts/CarpetTabs';
 import { FindingSlip } from '../ui/FindingSlip';
 import { formatCount, formatDateTime, formatNumber, formatPeriod, formatQuantity, formatTime } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { ResultSums, type SumRow } from '../ui/ResultSums';
-import { gapInWords, gapMarks, longestGaps } from './carpet-marks';
+import { gapInWords, longestGaps } from './carpet-marks';
+import { FindingSlips } from './FindingSlips';
 import { isKnown } from './interval-words';
+import { loadMarks } from './load-findings';
 import { Notes } from './Notes';
 import { SheetPart } from './Sheet';
 
@@ -22,6 +24,11 @@ export interface CheckIntervalsProps {
 /** The readings as they would be kept: picture, gaps, sums, peak, notes. */
 export function CheckIntervals({ intake, preview }: CheckIntervalsProps) {
   const { report } = preview;
+  const picture = useQuery({
+    queryKey: ['intake-picture', intake.id, intake.version],
+    queryFn: () => fetchIntakePicture(intake.id),
+    enabled: report !== null && preview.problems.length === 0,
+  });
   return (
     <SheetPart
       id="check"
@@ -34,11 +41,11 @@ export function CheckIntervals({ intake, preview }: CheckIntervalsProps) {
           <p>Missing stays missing: nothing is filled in.</p>
         </>
       }
-      result={report && <Results intake={intake} report={report} />}
+      result={report && <Results intake={intake} report={report} picture={picture.data} />}
     >
       {report && (
         <div className="stacked">
-          <Picture intake={intake} report={report} />
+          <Picture intake={intake} report={report} picture={picture.data} error={picture.error} />
           <Notes report={report} />
         </div>
       )}
@@ -46,14 +53,16 @@ export function CheckIntervals({ intake, preview }: CheckIntervalsProps) {
   );
 }
 
-function Picture({ intake, report }: { intake: IntakeView; report: IntakeReport }) {
+interface PartProps {
+  intake: IntakeView;
+  report: IntakeReport;
+  picture: IntakePicture | undefined;
+}
+
+function Picture({ intake, report, picture, error }: PartProps & { error: Error | null }) {
   const { timeZone } = intake;
-  const { data, error, isPending } = useQuery({
-    queryKey: ['intake-days', intake.id, intake.version],
-    queryFn: () => fetchIntakeDays(intake.id),
-  });
   if (error) return <Notice kind="fault" title={error.message} />;
-  if (isPending) {
+  if (!picture) {
     return (
       <p className="hint carpet-waiting" role="status">
         The picture is being drawn from {formatNumber(report.intervals)} readings.
@@ -67,16 +76,16 @@ function Picture({ intake, report }: { intake: IntakeView; report: IntakeReport 
   const edge =
     formatTime(report.firstMs, timeZone) === '00:00' ? '' : ' Hatched on the first day: before the file begins.';
   return (
-    <CarpetFigure
-      {...packCarpet({ unit: 'kW', ...data, marks: gapMarks(report.gaps ?? [], timeZone) })}
+    <CarpetTabs
+      carpets={packCarpets({ ...picture, marks: loadMarks(report.gaps ?? [], picture.findings, timeZone) })}
       finding={finding}
-      reading={`Mean kW of each interval. The stronger the ink, the higher.${edge}`}
+      more={edge}
       fileName={`${intake.engagement.code}-${intake.fileName.replace(/\W+/g, '-')}`}
     />
   );
 }
 
-function Results({ intake, report }: { intake: IntakeView; report: IntakeReport }) {
+function Results({ intake, report, picture }: PartProps) {
   const timeZone = intake.engagement.siteTimeZone;
   const gaps = longestGaps(report.gaps ?? []);
   const energy = (label: string, value: number, tone?: SumRow['tone']): SumRow => ({
@@ -124,6 +133,7 @@ function Results({ intake, report }: { intake: IntakeView; report: IntakeReport 
             {gapInWords(gap, timeZone)}. Left missing; no peak can be proven then.
           </FindingSlip>
         ))}
+        {picture && <FindingSlips findings={picture.findings} gaps={report.gaps ?? []} timeZone={timeZone} />}
       </div>
       {(report.gaps?.length ?? 0) > gaps.length && (
         <p>{formatCount((report.gaps?.length ?? 0) - gaps.length, 'shorter gap')} more.</p>

@@ -39,7 +39,7 @@ function besideTable({ months, total }: IntervalsOverlap, timeZone: string): Led
       figure('differing', 'Differing'),
       figure('keptKwh', 'Kept', 'kWh'),
       figure('comesKwh', 'This file', 'kWh'),
-      { ...figure('less', 'Less kept', 'kWh'), signed: true },
+      { ...figure('less', 'Difference', 'kWh'), signed: true },
       { ...figure('greatest', 'Widest apart'), decimals: 1, signed: true },
       figure('onlyKept', 'Only kept'),
       figure('onlyComes', 'Only in file'),

@@ -1,7 +1,9 @@
+import { Fragment } from 'react';
 import type { CarpetData } from '../charts/carpet';
-import { CarpetFigure } from '../charts/CarpetChart';
+import { Queries } from '../../client/queries';
+import { CarpetTabs } from '../charts/CarpetTabs';
 import { DayFigure } from '../charts/DayChart';
-import type { IntervalsStation, KeptYear } from '../../schemas/intake';
+import type { IntervalsStation, KeptYear, MetersOfYear } from '../../schemas/intake';
 import { FindingSlip } from '../ui/FindingSlip';
 import {
   formatCount,
@@ -16,21 +18,27 @@ import { ResultSums } from '../ui/ResultSums';
 import { BringIn } from './BringIn';
 import { gapInWords, longestGaps } from './carpet-marks';
 import { FileList } from './FileList';
+import { FillsPart } from './FillsPart';
+import { FindingSlips } from './FindingSlips';
+import { GapChoice } from './GapChoice';
 import { intervalName, presentInWords, readingsOf } from './interval-words';
+import { MetersPart } from './MetersPart';
 import { MonthsPart } from './MonthsPart';
 import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
 
 export interface IntervalsSheetProps {
   code: string;
-  meter: string;
+  meters: MetersOfYear;
   yearDates: { from: string; to: string };
   station: Omit<IntervalsStation, 'picture'>;
-  carpet: CarpetData | null;
+  /** kW, kvar and power factor of the year; empty where nothing is kept. */
+  carpets: CarpetData[];
 }
 
 /** Station Intervals: what is kept of the year, its picture, the day of the peak, gaps, months, files. */
-export function IntervalsSheet({ code, meter, yearDates, station, carpet }: IntervalsSheetProps) {
+export function IntervalsSheet({ code, meters, yearDates, station, carpets }: IntervalsSheetProps) {
   const { year, files, kept, timeZone } = station;
+  const { id: meterId, label: meter } = station.meter;
   const period = formatPeriod(yearDates.from, yearDates.to, { year: true });
   const goes = Object.fromEntries(
     kept.map((file) => [
@@ -38,20 +46,24 @@ export function IntervalsSheet({ code, meter, yearDates, station, carpet }: Inte
       `${formatCount(file.intervals - file.missing, 'reading')} of ${formatDateTime(file.fromMs, timeZone)} to ${formatDateTime(file.toMs, timeZone)}`,
     ]),
   );
+  /** Number of a part behind the picture; the day of the peak may be wanting. */
+  const part = (position: number) => `2.${position + (year?.peak ? 1 : 0)}`;
+  const numberOf = (behind: number) => (year ? part((year.fills.length > 0 ? 4 : 3) + behind) : `2.${1 + behind}`);
   return (
-    <>
+    <Queries>
       <SheetHeading {...heading(year, station, meter, period)} />
       <ColumnNames />
-      {year && carpet && (
+      {year && carpets.length > 0 && (
         <>
-          <YearPart year={year} carpet={carpet} timeZone={timeZone} code={code} />
+          <YearPart year={year} carpets={carpets} timeZone={timeZone} code={code} meterId={meterId} />
           {year.peak && <PeakPart year={year} peak={year.peak} timeZone={timeZone} code={code} />}
           <MonthsPart year={year} timeZone={timeZone} />
+          {year.fills.length > 0 && <FillsPart code={code} number={part(3)} fills={year.fills} timeZone={timeZone} />}
         </>
       )}
       <SheetPart
         id="files"
-        number={year ? (year.peak ? '2.4' : '2.3') : '2.1'}
+        number={numberOf(0)}
         title={files.length > 0 ? 'Files' : 'Bring in the meter’s readings'}
         lead={
           files.length > 0
@@ -65,11 +77,12 @@ export function IntervalsSheet({ code, meter, yearDates, station, carpet }: Inte
         }
       >
         <div className="stacked">
-          <BringIn code={code} kind="intervals" primary={files.length === 0} />
+          <BringIn code={code} kind="intervals" meterId={meterId} primary={files.length === 0} />
           {files.length > 0 && <FileList code={code} files={files} timeZone={timeZone} goes={goes} />}
         </div>
       </SheetPart>
-    </>
+      <MetersPart {...meters} code={code} number={numberOf(1)} shown={meterId} />
+    </Queries>
   );
 }
 
@@ -102,7 +115,7 @@ interface PartProps {
   code: string;
 }
 
-function YearPart({ year, carpet, timeZone, code }: PartProps & { carpet: CarpetData }) {
+function YearPart({ year, carpets, timeZone, code, meterId }: PartProps & { carpets: CarpetData[]; meterId: number }) {
   const missing = year.intervals - year.present;
   const finding =
     missing === 0
@@ -132,14 +145,14 @@ function YearPart({ year, carpet, timeZone, code }: PartProps & { carpet: Carpet
           />
           <div className="mt-3">
             {gaps.map((gap, index) => (
-              <FindingSlip
-                key={gap.fromMs}
-                letter={String(index + 1)}
-                title={`Gap, ${formatCount(gap.intervals, 'reading')}`}
-              >
-                {gapInWords(gap, timeZone)}. Left missing.
-              </FindingSlip>
+              <Fragment key={gap.fromMs}>
+                <FindingSlip letter={String(index + 1)} title={`Gap, ${formatCount(gap.intervals, 'reading')}`}>
+                  {gapInWords(gap, timeZone)}. Left missing.
+                </FindingSlip>
+                <GapChoice code={code} meterId={meterId} gap={gap} />
+              </Fragment>
             ))}
+            <FindingSlips findings={year.findings} gaps={year.gaps} timeZone={timeZone} />
           </div>
           {year.gapCount > gaps.length && (
             <p>{formatCount(year.gapCount - gaps.length, 'shorter gap')} more, in the table of months.</p>
@@ -147,12 +160,7 @@ function YearPart({ year, carpet, timeZone, code }: PartProps & { carpet: Carpet
         </>
       }
     >
-      <CarpetFigure
-        {...carpet}
-        finding={finding}
-        reading="Mean kW of each interval. The stronger the ink, the higher."
-        fileName={`${code}-load-of-the-year`}
-      />
+      <CarpetTabs carpets={carpets} finding={finding} fileName={`${code}-load-of-the-year`} />
     </SheetPart>
   );
 }

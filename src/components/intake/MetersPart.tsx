@@ -1,9 +1,7 @@
 import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
 import { addMeter, removeMeter } from '../../client/engagements';
-import { Queries } from '../../client/queries';
-import type { MeterView } from '../../schemas/engagement';
-import type { MeterOfYear } from '../../schemas/intake';
+import type { MeterOfYear, MetersOfYear } from '../../schemas/intake';
 import { Button } from '../ui/Button';
 import { Field, SelectField } from '../ui/Field';
 import { LedgerTable } from '../ui/LedgerTable';
@@ -12,15 +10,9 @@ import { metersLedger } from './meters-ledger';
 import { reload } from './reload';
 import { SheetPart } from './Sheet';
 
-export interface MetersPartProps {
+export interface MetersPartProps extends MetersOfYear {
   code: string;
   number: string;
-  /** The meters billed together, the first naming the engagement, with what is kept of each. */
-  meters: MeterOfYear[];
-  /** All of them added up; null with one meter, or where one has no readings. */
-  together: Omit<MeterOfYear, 'id' | 'label'> | null;
-  /** Meters of the site that are not among them. */
-  others: MeterView[];
   /** The meter the rest of the page shows. */
   shown: number;
 }
@@ -36,18 +28,18 @@ export function MetersPart(props: MetersPartProps) {
       title={several ? 'Meters billed together' : 'Meters'}
       lead={
         several
-          ? 'Their readings are added, interval by interval and register by register, before anything is measured. The picture below is of the meter marked.'
+          ? 'Their readings are added, interval by interval and register by register, before anything is measured. The rest of the page shows the meter marked.'
           : 'The bills are those of one meter. Where the utility adds several of the site before it bills, add them here.'
       }
       reference={several && <p>The schedule must say “meters: summed”; else the year is not priced.</p>}
     >
-      <Queries>
+      <div className="stacked">
         {several && <LedgerTable {...metersLedger(code, meters, together, shown)} label="Meters billed together" />}
         {meters.slice(1).map((meter) => (
           <TakeOff key={meter.id} code={code} meter={meter} />
         ))}
         <AddMeter {...props} />
-      </Queries>
+      </div>
     </SheetPart>
   );
 }

@@ -12,7 +12,7 @@ export function MonthsPart({ year, timeZone }: { year: KeptYear; timeZone: strin
       id="months"
       number={year.peak ? '2.3' : '2.2'}
       title="Month by month"
-      lead="Calendar months of the site’s time. Sums are of the readings that are there; nothing is filled in."
+      lead={`Calendar months of the site’s time. Sums are of the readings that are there${year.estimated > 0 ? ', estimated ones included' : '; nothing is filled in'}.`}
       result={<Balance months={year.months} />}
     >
       <LedgerTable {...monthsTable(year.months, timeZone)} label="Readings month by month" />

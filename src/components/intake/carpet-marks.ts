@@ -21,23 +21,27 @@ export function longestGaps(gaps: ReadingGap[]): ReadingGap[] {
     .sort((a, b) => a.fromMs - b.fromMs);
 }
 
-/** The longest gaps as numbered marks; a gap over several days is marked where it begins. */
+/** Where a stretch stands on the picture; one over several days is marked where it begins. */
+export function markOf({ fromMs, toMs }: { fromMs: number; toMs: number }, timeZone: string) {
+  const fromMinute = minuteOfDay(fromMs, timeZone);
+  return {
+    date: dateOf(fromMs, timeZone),
+    fromMinute,
+    toMinute: Math.min(1440, fromMinute + (toMs - fromMs) / 60_000),
+  };
+}
+
+/** The longest gaps as numbered marks. */
 export function gapMarks(gaps: ReadingGap[], timeZone: string): CarpetMark[] {
-  return longestGaps(gaps).map((gap, index) => {
-    const fromMinute = minuteOfDay(gap.fromMs, timeZone);
-    const minutes = (gap.toMs - gap.fromMs) / 60_000;
-    return {
-      label: String(index + 1),
-      date: dateOf(gap.fromMs, timeZone),
-      fromMinute,
-      toMinute: Math.min(1440, fromMinute + minutes),
-      kind: 'missing',
-    };
-  });
+  return longestGaps(gaps).map((gap, index) => ({
+    label: String(index + 1),
+    ...markOf(gap, timeZone),
+    kind: 'missing',
+  }));
 }
 
 /** `4 Sep 2025, 10:00 to 17:30`, or with both days where the gap runs over midnight. */
-export function gapInWords({ fromMs, toMs }: ReadingGap, timeZone: string): string {
+export function gapInWords({ fromMs, toMs }: { fromMs: number; toMs: number }, timeZone: string): string {
   const sameDay = dateOf(fromMs, timeZone) === dateOf(toMs - 1, timeZone);
   const end = formatTime(toMs, timeZone);
   if (!sameDay) return `${formatDateTime(fromMs, timeZone)} to ${formatDateTime(toMs, timeZone)}`;

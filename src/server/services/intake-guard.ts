@@ -2,6 +2,7 @@ import { Op } from 'sequelize';
 import { conflict, notFound, staleVersion } from '../errors';
 import { Bill } from '../models/Bill';
 import { Intake } from '../models/Intake';
+import type { Meter } from '../models/Meter';
 import type { Actor } from '../policies/actor';
 import { presentIntakeRow } from '../presenters/intake';
 import { openEngagement, openEngagementById, type OpenEngagement } from './engagements';
@@ -28,6 +29,10 @@ export interface OpenIntake {
   intake: Intake;
   opened: OpenEngagement;
 }
+
+/** The meter whose readings a file holds. */
+export const meterOf = ({ intake, opened }: OpenIntake): Meter =>
+  opened.meters.find(({ id }) => id === intake.meterId) ?? opened.meter;
 
 /** @throws {ServiceError} 404 where there is none, or none this person may know of */
 export async function openIntake(actor: Actor, id: number): Promise<OpenIntake> {

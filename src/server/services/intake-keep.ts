@@ -1,16 +1,18 @@
-import { toConfirm, type IntakeView, type LoadDays, type OverlapChoice } from '../../schemas/intake';
+import { toConfirm, type IntakeView, type IntakePicture, type OverlapChoice } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
 import type { Intake } from '../models/Intake';
 import { ReadingBlock } from '../models/ReadingBlock';
 import type { Actor } from '../policies/actor';
+import { refreshFills } from './gap-fills';
 import { present } from './intake';
-import { openIntake, openIntakeForChange } from './intake-guard';
+import { meterOf, openIntake, openIntakeForChange } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
 import { assertNotReading } from './intake-reading';
-import { daysOf } from './intervals';
 import { keepBills, takeBillsBack } from './keep-bills';
 import { keepIntervals } from './keep-intervals';
+import { daysOf } from './load-days';
+import { loadFindings } from './load-findings';
 
 /**
  * Keeps what a file holds: readings at the engagement's meter, or bills. All of it or nothing.
@@ -63,17 +65,18 @@ export async function undoIntake(actor: Actor, id: number, version: number): Pro
     const blocks = await ReadingBlock.findAll({ where: { intakeId: id }, attributes: { exclude: ['values'] } });
     for (const block of blocks) await block.destroy();
     await takeBillsBack(intake);
+    if (blocks.length > 0) await refreshFills(meterOf(open).id, open.opened.site.timeZone);
     await intake.update({ state: 'undone', undoneAt: new Date() });
   });
   return present(open);
 }
 
-/** Mean kW of what the file holds, before it is kept. */
-export async function intakePicture(actor: Actor, id: number): Promise<LoadDays> {
-  const { intake } = await openIntake(actor, id);
+/** What the file holds by local day, before it is kept, and what of it may not be true. */
+export async function intakePicture(actor: Actor, id: number): Promise<IntakePicture> {
+  const { intake, opened } = await openIntake(actor, id);
   const stored = intake.preview;
   if (intake.kind !== 'intervals' || !stored || stored.preview.problems.length > 0) throw notFound();
   const { timeZone } = stored;
   const { load } = await readIntervalFile(intake, { timeZone, columnMap: stored.preview.columnMap });
-  return daysOf(load, timeZone);
+  return { ...daysOf(load, timeZone), findings: await loadFindings(opened, load) };
 }

@@ -3,7 +3,7 @@ import type {
   DayReading,
   IntervalsStation,
   KeptFile,
-  LoadDays,
+  MetersOfYear,
   MonthOfLoad,
   PeakOfYear,
   ReadingGap,
@@ -12,6 +12,11 @@ import { Intake } from '../models/Intake';
 import { User } from '../models/User';
 import { presentIntakeRow } from '../presenters/intake';
 import type { OpenEngagement } from './engagements';
+import { listFills } from './gap-fills';
+import { daysOf } from './load-days';
+import { loadFindings } from './load-findings';
+import { meteredLoad } from './metered-load';
+import { metersOf, presentMeter } from './meters';
 import { keptSpans, loadSeries } from './readings';
 
 const minuteMs = 60_000;
@@ -27,9 +32,14 @@ function yearOf({ engagement, site }: OpenEngagement): { fromMs: number; toMs: n
 }
 
 /** The files of an engagement on their way in or kept, newest first; those given up are left out. */
-export async function listIntakes(opened: OpenEngagement, kind: 'intervals' | 'bills') {
+export async function listIntakes(opened: OpenEngagement, kind: 'intervals' | 'bills', meterId?: number) {
   const rows = await Intake.findAll({
-    where: { engagementId: opened.engagement.id, kind, state: ['reading', 'read', 'refused', 'kept', 'undone'] },
+    where: {
+      ...(meterId === undefined ? {} : { meterId }),
+      engagementId: opened.engagement.id,
+      kind,
+      state: ['reading', 'read', 'refused', 'kept', 'undone'],
+    },
     attributes: { exclude: ['preview', 'report', 'columnMap'] },
     order: [['id', 'DESC']],
   });
@@ -37,20 +47,20 @@ export async function listIntakes(opened: OpenEngagement, kind: 'intervals' | 'b
   return rows.map((row) => presentIntakeRow(row, people.find((person) => person.id === row.broughtById)?.name ?? null));
 }
 
-/** Everything the station Intervals shows besides the pictures. */
-export async function intervalsStation(opened: OpenEngagement): Promise<IntervalsStation> {
+/** Everything the station Intervals shows of a meter besides the pictures. */
+export async function intervalsStation(opened: OpenEngagement, meter = opened.meter): Promise<IntervalsStation> {
   const { fromMs, toMs } = yearOf(opened);
   const { timeZone } = opened.site;
   const [files, spans] = await Promise.all([
-    listIntakes(opened, 'intervals'),
-    keptSpans(opened.meter.id, fromMs, toMs),
+    listIntakes(opened, 'intervals', meter.id),
+    keptSpans(meter.id, fromMs, toMs),
   ]);
   const kept = files.filter((file) => file.state === 'kept');
-  const empty = { files, kept: [], picture: null, timeZone, fromMs, toMs, year: null };
+  const empty = { meter: presentMeter(meter), files, kept: [], picture: null, timeZone, fromMs, toMs, year: null };
   if (spans.length === 0) return empty;
-  const load = await loadSeries(opened.meter.id, fromMs, toMs);
+  const load = await loadSeries(meter.id, fromMs, toMs);
   const gaps = gapsOf(load);
-  const allSpans = await keptSpans(opened.meter.id, -8.64e15, 8.64e15);
+  const allSpans = await keptSpans(meter.id, -8.64e15, 8.64e15);
   return {
     ...empty,
     kept: kept.map((file) => spanOf(file.id, file.fileName, allSpans)),
@@ -61,9 +71,34 @@ export async function intervalsStation(opened: OpenEngagement): Promise<Interval
       peak: peakOf(load, timeZone),
       gaps: gaps.slice(0, longestGapList),
       gapCount: gaps.length,
+      fills: await listFills(meter.id, fromMs, toMs),
+      findings: await loadFindings(opened, load),
       months: monthsOf(load, timeZone),
     },
   };
+}
+
+/** What is kept of each meter of the year, and of all added up. */
+export async function metersOfYear(opened: OpenEngagement): Promise<MetersOfYear> {
+  const { fromMs, toMs } = yearOf(opened);
+  const { meters, others } = await metersOf(opened);
+  const figures = await Promise.all(
+    meters.map(async ({ id, label }) => {
+      const any = (await keptSpans(id, fromMs, toMs)).length > 0;
+      return { id, label, ...figuresOf(any ? await loadSeries(id, fromMs, toMs) : null) };
+    }),
+  );
+  const isWhole = meters.length > 1 && figures.every(({ intervals }) => intervals > 0);
+  const together = isWhole ? await meteredLoad(opened, fromMs, toMs) : null;
+  return { meters: figures, together: together && figuresOf(together.load), others };
+}
+
+function figuresOf(load: LoadSeries | null): Omit<MetersOfYear['meters'][number], 'id' | 'label'> {
+  if (!load) return { intervals: 0, present: 0, kwh: null, kvarhLagging: null, maxKw: null };
+  const { intervals, present } = countsOf(load);
+  const peak = peakIndex(load);
+  const maxKw = peak === null ? null : meanOf(load.kwh, peak, load.stepMinutes);
+  return { intervals, present, kwh: sumOf(load.kwh), kvarhLagging: sumOf(load.kvarhLagging), maxKw };
 }
 
 function spanOf(intakeId: number, fileName: string, spans: Awaited<ReturnType<typeof keptSpans>>): KeptFile {
@@ -185,22 +220,4 @@ function monthOf(load: LoadSeries, from: string, first: number, end: number): Mo
     maxKw: peak === null ? null : meanOf(part.kwh, peak, load.stepMinutes),
     maxKwMs: peak === null ? null : startOf(part, peak),
   };
-}
-
-/** Mean kW by local day, rounded to a tenth: it is drawn, not reckoned with. A day that begins late is padded. */
-export function daysOf(load: LoadSeries, timeZone: string): LoadDays {
-  const stepMs = load.stepMinutes * minuteMs;
-  const perHour = 60 / load.stepMinutes;
-  const indexOf = (date: string) => Math.round((localDateStartMs(date, timeZone) - load.startMs) / stepMs);
-  const meanKw = (index: number) => {
-    const kwh = load.kwh[index] ?? NaN;
-    return Number.isNaN(kwh) ? null : Math.round(kwh * perHour * 10) / 10;
-  };
-  const days: LoadDays['days'] = [];
-  for (let date = localDateOf(load.startMs, timeZone); indexOf(date) < load.kwh.length; date = addDays(date, 1)) {
-    const first = indexOf(date);
-    const end = Math.min(load.kwh.length, indexOf(addDays(date, 1)));
-    days.push({ date, readings: Array.from({ length: end - first }, (_, offset) => meanKw(first + offset)) });
-  }
-  return { stepMinutes: load.stepMinutes, days };
 }

@@ -11,7 +11,7 @@ import type { IntervalsBeside, IntervalsOverlap } from '../../schemas/intake';
 import { conflict } from '../errors';
 import { Intake } from '../models/Intake';
 import type { Meter } from '../models/Meter';
-import type { OpenIntake } from './intake-guard';
+import { meterOf, type OpenIntake } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
 import { keptLayers } from './reading-blocks';
 import { keptSpans } from './readings';
@@ -21,7 +21,7 @@ const minuteMs = 60_000;
 /** What is kept under the span of a file, and what the file brings. */
 export async function intervalsOverlap(open: OpenIntake, how: HowToRead): Promise<IntervalsOverlap> {
   const { load } = await readIntervalFile(open.intake, how);
-  await assertSteps(open.opened.meter, load);
+  await assertSteps(meterOf(open), load);
   return intervalsBeside(open, load);
 }
 
@@ -48,8 +48,10 @@ export async function assertSteps(meter: Meter, load: LoadSeries): Promise<void>
 }
 
 /** The readings of a file beside those kept, month by month of the site's time. */
-export async function intervalsBeside({ intake, opened }: OpenIntake, load: LoadSeries): Promise<IntervalsOverlap> {
-  const layers = (await keptLayers(opened.meter.id, { fromMs: load.startMs, toMs: endOfLoad(load) })).filter(
+export async function intervalsBeside(open: OpenIntake, load: LoadSeries): Promise<IntervalsOverlap> {
+  const { intake, opened } = open;
+  const meter = meterOf(open);
+  const layers = (await keptLayers(meter.id, { fromMs: load.startMs, toMs: endOfLoad(load) })).filter(
     ({ source }) => source !== intake.id,
   );
   const files = await Intake.findAll({ where: { id: layers.map(({ source }) => source) } });
@@ -72,7 +74,7 @@ export async function intervalsBeside({ intake, opened }: OpenIntake, load: Load
     months: months.map(presentBeside),
     total: months.length > 0 ? totalOf(months.map(presentBeside)) : null,
     keepNewRefused: foreign
-      ? `Readings under this file came with another engagement of ${opened.meter.label}, which is priced on them. Keep only what is not kept already, or undo them there first.`
+      ? `Readings under this file came with another engagement of ${meter.label}, which is priced on them. Keep only what is not kept already, or undo them there first.`
       : null,
   };
 }

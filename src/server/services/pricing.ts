@@ -6,6 +6,7 @@ import type { PricingGrid, Schedule } from '../../core/tariff';
 import type { BillView } from '../../schemas/bill';
 import type { PricedYear } from '../../schemas/pricing';
 import { conflict, ServiceError } from '../errors';
+import { GapFill } from '../models/GapFill';
 import { ReadingBlock } from '../models/ReadingBlock';
 import { TariffChoice } from '../models/TariffChoice';
 import { reconcileInPool } from '../workers/pool';
@@ -139,8 +140,17 @@ async function dataKeyOf(opened: OpenEngagement, bills: BillView[], choice: Tari
     ],
     raw: true,
   });
+  // Values of an estimate change only together with blocks.
+  const fills = await GapFill.findOne({
+    where: { meterId: opened.meters.map(({ id }) => id) },
+    attributes: [
+      [fn('COUNT', col('id')), 'count'],
+      [fn('MAX', col('id')), 'newest'],
+    ],
+    raw: true,
+  });
   const ofChoice = [choice.id, choice.version, choice.updatedAt.getTime()];
-  return digestOf(JSON.stringify([readings, opened.meters.map(({ id }) => id), bills, ofChoice]));
+  return digestOf(JSON.stringify([readings, fills, opened.meters.map(({ id }) => id), bills, ofChoice]));
 }
 
 async function readBasis(
@@ -154,6 +164,7 @@ async function readBasis(
   refuseSeveral(opened, schedule);
   const metered = await readLoad(opened, bills, schedule.timeZone);
   const load = metered?.load ?? null;
+  if (load) refuseCoarse(schedule, load);
   return {
     route: load ? 'intervals' : 'printed',
     schedule,
@@ -214,6 +225,20 @@ function refuseSeveral({ meters }: OpenEngagement, schedule: Schedule): void {
     `${schedule.id} bills one meter; this engagement has ${meters.length}: ${meters.map(({ label }) => label).join(', ')}. Where the contract has them billed together, write "meters: summed" into a text of the schedule and choose that; otherwise take the other meters off at the station Intervals.`,
     { station: 'tariff' },
   );
+}
+
+/** A demand over a window shorter than the readings cannot be told from them: their mean hides its peak. */
+function refuseCoarse(schedule: Schedule, { stepMinutes }: LoadSeries): void {
+  for (const { demandWindow, quantities } of schedule.texts) {
+    const finer = quantities.find(
+      ({ definition }) => definition.kind === 'measure' && definition.each === 'demand window',
+    );
+    if (!finer || !demandWindow || demandWindow.minutes >= stepMinutes) continue;
+    throw conflict(
+      `${schedule.id} measures "${finer.name}" over ${demandWindow.minutes} minutes, and the kept readings are means of ${stepMinutes}: the peak within them is not known. Bring in readings of ${demandWindow.minutes} minutes or shorter, or undo these to price from what the bills print.`,
+      { station: 'intervals' },
+    );
+  }
 }
 
 /** The kept readings under the bills; null where the meters have none in that time. */

@@ -6,6 +6,7 @@ import { ServiceError } from '../errors';
 import { Edition } from '../models/Edition';
 import { HourEntry } from '../models/HourEntry';
 import { Intake } from '../models/Intake';
+import type { Meter } from '../models/Meter';
 import { Motor } from '../models/Motor';
 import { Plan } from '../models/Plan';
 import { TariffChoice } from '../models/TariffChoice';
@@ -151,14 +152,22 @@ async function billsState(opened: OpenEngagement): Promise<State> {
   return open(`${bills.length} of ${Math.max(bills.length + 1, Math.round(yearDays / 30.4375))} kept`);
 }
 
+/** Of several meters the one of which least is there. */
 async function intervalsState(opened: OpenEngagement): Promise<State> {
-  const { engagement, meter, site } = opened;
+  const states = await Promise.all(opened.meters.map((meter) => meterState(opened, meter)));
+  const [first] = states.sort((a, b) => a.present - b.present);
+  return first!.state;
+}
+
+async function meterState(opened: OpenEngagement, meter: Meter): Promise<{ present: number; state: State }> {
+  const { engagement, site } = opened;
   const fromMs = localDateStartMs(engagement.yearFrom, site.timeZone);
   const toMs = localDateStartMs(engagement.yearTo, site.timeZone);
   const spans = await keptSpans(meter.id, fromMs, toMs);
   if (spans.length === 0) {
     const waiting = await waitingFiles(opened, 'intervals');
-    return open(waiting > 0 ? `${counted(waiting, 'file')} to check` : 'bring in intervals');
+    const state = open(waiting > 0 ? `${counted(waiting, 'file')} to check` : 'bring in intervals');
+    return { present: 0, state };
   }
   let coveredMs = 0;
   let reached = fromMs;
@@ -172,7 +181,7 @@ async function intervalsState(opened: OpenEngagement): Promise<State> {
   const present = await presentFraction(meter.id, fromMs, toMs);
   // Rounded down, so that 100 % is only said where nothing at all is missing.
   const reason = `${(Math.floor(present * 10_000) / 100).toFixed(2).replace(/\.00$/, '')} % present`;
-  return coveredMs >= toMs - fromMs ? closed(reason) : open(reason);
+  return { present, state: coveredMs >= toMs - fromMs ? closed(reason) : open(reason) };
 }
 
 /** What the year shows; null where it cannot be priced yet (no bills or intervals, or a gap in them). */

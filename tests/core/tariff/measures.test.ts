@@ -246,6 +246,23 @@ describe('steps of the series', () => {
     );
   });
 
+  it('add shorter steps up to the demand window before they look for the highest', () => {
+    // Five-minute energies: 09:00 to 09:15 holds 10 + 70 + 10 kWh = 360 kW; the single 70 kWh would be 840 kW. Elsewhere 5 kWh, 60 kW.
+    const fine = twoDays((local) => {
+      const minute = local.getUTCHours() * 60 + local.getUTCMinutes();
+      return [minute === 545 ? 840 : minute === 540 || minute === 550 ? 120 : 60, 0, 0];
+    }, 5);
+    expect(valuesOf(measured('  maxKw: { highest: kw }', fine, monday))).toEqual({ maxKw: 360 });
+  });
+
+  it('name an estimated interval that sets a demand', () => {
+    const load = twoDays((local) => [local.getUTCHours() === 9 && local.getUTCMinutes() === 30 ? 700 : 100, 0, 0]);
+    expect(measured('  maxKw: { highest: kw }', load, monday).notes.join()).not.toMatch(/not measured/);
+    load.quality[load.kwh.findIndex((kwh) => kwh === Math.max(...load.kwh))] = 1;
+    const { notes } = measured('  maxKw: { highest: kw }', load, monday);
+    expect(notes.join('\n')).toMatch(/"maxKw" is set by an estimated interval, .*09:30: it was not measured\./);
+  });
+
   it('refuse a demand window or rolling step that is no multiple of the step', () => {
     const load = twoDays(() => [100, 0, 0], 10);
     expect(() => measured('  maxKw: { highest: kw }', load, monday)).toThrow(

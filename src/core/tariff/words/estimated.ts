@@ -3,7 +3,7 @@ import { extremeCells } from '../price/cell-loops';
 import type { MeasurePlan } from '../price/reduction';
 import type { QuantityEntry } from '../model';
 import { expressionsOf, expressionsOfQuantity } from '../price/text-plan';
-import type { Speech } from './speak';
+import { wordInstant, type Speech } from './speak';
 
 /** Places of the quantities and lines that an estimated interval has a part in, carried through formulas and percentages. */
 export function estimatedSlots(speech: Speech): Set<number> {
@@ -22,6 +22,19 @@ export function estimatedSlots(speech: Speech): Set<number> {
     if ([...parts, ...lines].some((part) => estimated.has(part))) estimated.add(slot);
   }
   return estimated;
+}
+
+/** Names the highest or lowest values that an estimated interval alone has set: what they are charged by was never measured. */
+export function noteEstimatedExtremes(speech: Speech): void {
+  const { source, bill, state, run } = speech;
+  if (!source) return;
+  for (const { name, slot, definition } of state.piece.text.text.quantities) {
+    if (definition.kind !== 'measure' || definition.operation === 'sum' || definition.count > 1) continue;
+    const { plan } = source.planOf(bill, state, slot);
+    if (state.known[slot] !== 1 || !isCellEstimated(plan, source.load.quality, state.atCell[slot]!)) continue;
+    const when = wordInstant(state.atMs[slot]!, run.schedule.timeZone);
+    bill.notes?.add(`"${name}" is set by an estimated interval, ${when}: it was not measured.`);
+  }
 }
 
 function isMeasuredFromEstimates({ source, bill, state }: Speech, { definition, slot }: QuantityEntry): boolean {

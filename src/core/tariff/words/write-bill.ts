@@ -10,7 +10,7 @@ import { evaluateIn, withPlace, type Run } from '../price/run';
 import type { PricedBill, PricedLine, PricedQuantity } from '../types';
 import { explainLine } from './charge-words';
 import { writeInputs } from './input-words';
-import { estimatedSlots } from './estimated';
+import { estimatedSlots, noteEstimatedExtremes } from './estimated';
 import { explainQuantity } from './quantity-words';
 import type { Speech } from './speak';
 
@@ -25,6 +25,7 @@ function writeBill(run: Run, bill: BillState, unity: BillState, source: Interval
   const estimated = source ? estimatedSlots(speech) : new Set<number>();
   const { from, to } = bill.plan.period;
   noteStraddle(bill, run);
+  noteEstimatedExtremes(speech);
   if (run.told.length > 0 && state.piece.text.text.quantities.some(({ definition }) => definition.kind === 'past')) {
     bill.notes?.add('The history given serves the run at unity power factor too.');
   }

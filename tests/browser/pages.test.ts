@@ -235,7 +235,7 @@ describe('files of strangers', () => {
     await remove.click();
     await page.getByRole('button', { name: 'Remove it' }).click();
     await page.getByText(`${name} is removed.`).waitFor();
-    await page.getByRole('button', { name: 'Undo', exact: true }).click();
+    await page.locator('.page-list').getByRole('button', { name: 'Undo', exact: true }).click();
     await page.locator('.page-file', { hasText: name }).waitFor({ state: 'attached' });
   });
 });

@@ -85,9 +85,10 @@ describe('a bill beside its statement', () => {
     expect(await fuel.evaluate((field) => field === document.activeElement)).toBe(true);
     expect(await markedText(page)).toBe(before[1]);
 
-    await page.getByRole('button', { name: 'Save the bill' }).click();
-    await page.waitForLoadState('load');
-    await page.getByRole('button', { name: 'Edit the bill of Jun 2026' }).waitFor();
+    await Promise.all([
+      page.waitForEvent('load', { timeout: 60_000 }),
+      page.getByRole('button', { name: 'Save the bill' }).click(),
+    ]);
     await openJune(page);
     await (await lineField(page, 'Demand')).focus();
     await page.locator('[data-page-mark]').waitFor();
@@ -228,14 +229,13 @@ describe('files of strangers', () => {
   it('are removed after one question and come back', async () => {
     const page = await pick(['gone.pdf', scanPdf()]);
     await page.getByText('No text on this page').waitFor();
-    const drawer = page.locator('.page-drawer');
-    if (await drawer.locator('summary').isVisible()) await drawer.locator('summary').click();
+    await page.locator('.page-drawer > summary').click();
     const remove = page.getByRole('button', { name: /^Remove (scan|gone|again)\.pdf$/ }).first();
     const name = (await remove.getAttribute('aria-label'))!.replace('Remove ', '');
     await remove.click();
     await page.getByRole('button', { name: 'Remove it' }).click();
     await page.getByText(`${name} is removed.`).waitFor();
-    await page.getByRole('button', { name: 'Undo', exact: true }).click();
-    await page.getByRole('button', { name: `Remove ${name}` }).waitFor();
+    await page.locator('.page-list').getByRole('button', { name: 'Undo', exact: true }).click();
+    await page.locator('.page-file', { hasText: name }).waitFor({ state: 'attached' });
   });
 });

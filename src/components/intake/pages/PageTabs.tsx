@@ -18,14 +18,14 @@ export function PageTabs(props: { files: AttachmentView[]; shownId: number | nul
   );
 }
 
-/** What is done with the files themselves, folded away once the bill has its pages. */
-export function PagesDrawer(props: { open: boolean; own: number; waiting: number; children: ReactNode }) {
-  const { open, own, waiting, children } = props;
-  if (open) return <div className="page-drawer">{children}</div>;
+/** What is done with the files themselves: open while the bill has none, then folded away. */
+export function PagesDrawer(props: { own: number; waiting: number; children: ReactNode }) {
+  const { own, waiting, children } = props;
+  const here = own === 0 ? 'This bill has no pages yet' : `${formatCount(own, 'file')} of this bill`;
   const more = waiting > 0 ? `; ${formatCount(waiting, 'other waits', 'others wait')} for a bill` : '';
   return (
-    <details className="page-drawer">
-      <summary>{`${formatCount(own, 'file')} of this bill${more}: attach, move, remove`}</summary>
+    <details className="page-drawer" open={own === 0}>
+      <summary>{`${here}${more}: attach, move, remove`}</summary>
       {children}
     </details>
   );

@@ -98,7 +98,7 @@ export function PagesBeside({ code, timeZone, bill, bills }: PagesBesideProps) {
         </p>
       )}
       {attachments.loaded && (
-        <PagesDrawer open={own.length === 0} own={own.length} waiting={waiting.length}>
+        <PagesDrawer own={own.length} waiting={waiting.length}>
           <AttachPages code={code} billId={bill?.id ?? null} first={own.length === 0} onAttached={handleAttached} />
           <PagesList
             attachments={attachments}

@@ -47,7 +47,7 @@ export function PagesList(props: PagesListProps) {
           <b>{one.fileName}</b>
           <span className="quiet">{pagesInWords(one)}</span>
           <span className="actions-tight">
-            <Button kind="quiet" onClick={() => onUse(one)} aria-label={`Use ${one.fileName} for this bill`}>
+            <Button kind="quiet" onClick={() => onUse(one)} aria-label={`Use for this bill: ${one.fileName}`}>
               Use for this bill
             </Button>
             <Button kind="quiet" onClick={() => setAsked(one)} aria-label={`Remove ${one.fileName}`}>
@@ -103,7 +103,7 @@ function OwnFile(props: PagesListProps & { attachment: AttachmentView; onAsk(): 
         <a className="text-link" href={pagesPath(id)} download={fileName} aria-label={`Original of ${fileName}`}>
           Original
         </a>
-        <Button kind="quiet" onClick={() => onLetWait(attachment)} aria-label={`Take ${fileName} off this bill`}>
+        <Button kind="quiet" onClick={() => onLetWait(attachment)} aria-label={`Take off ${fileName}`}>
           Take off
         </Button>
         {others.length > 0 && attachment.billId !== null && (

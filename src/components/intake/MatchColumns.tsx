@@ -56,7 +56,7 @@ function ColumnRow({ column, intake, preview, actions }: MatchStepProps & { colu
       <td className="left" data-name="Unit">
         {rate ? (
           <Choice
-            className="unit-select"
+            className="role-select"
             label={`${name}, rate of`}
             value={rate.charge ?? ''}
             options={rateOptions(uses)}

@@ -60,13 +60,16 @@ export function settleDocuments(
 function choose(all: readonly Settled[], one: Settled, isTaken: boolean): void {
   const own = amountOf(one.draft) ?? 0;
   if (!isTaken) {
-    if (one.stands) Object.assign(one, { stands: false, into: undefined, why: 'Left out by choice' });
+    if (one.stands) Object.assign(one, { stands: false, into: undefined, why: 'A person chose so' });
     return;
   }
   const bill = all.find((other) => other !== one && other.stands && !other.into && covers(other, one));
-  Object.assign(one, { stands: true, why: 'Taken by choice' });
+  Object.assign(one, { stands: true, why: 'A person chose so' });
   if (own < 0 && bill)
-    Object.assign(one, { into: bill, why: `Taken by choice: its amount is a line of the bill in ${bill.draft.where}` });
+    Object.assign(one, {
+      into: bill,
+      why: `A person chose so: its amount is a line of the bill in ${bill.draft.where}`,
+    });
 }
 
 const standing = (all: readonly Settled[]): Settled[] => all.filter((one) => one.stands);

@@ -45,7 +45,7 @@ describe('estimated, then corrected', () => {
       },
     });
     expect(reading.bills.map(({ invoice }) => invoice)).toEqual(['1001', '1002', '1003']);
-    expect(reading.report.documents?.[3]).toMatchObject({ bill: null, why: 'Left out by choice' });
+    expect(reading.report.documents?.[3]).toMatchObject({ bill: null, why: 'A person chose so' });
   });
 
   it('ignores a choice made on another file, whose row has another total', async () => {

@@ -11,7 +11,7 @@ import { changeMotor, createMotor, openMotor } from '@/server/services/motors';
 import { planBasis, priceSettings } from '@/server/services/plan-basis';
 import { priceOn } from '@/server/services/price-basis';
 import { pricingBasis } from '@/server/services/pricing';
-import { keepSeries } from '@/server/services/readings';
+import { keepSeries } from '@/server/services/reading-blocks';
 import { engagementFrame } from '@/server/services/stations';
 import { closePool } from '@/server/workers/pool';
 import { buildActor, buildEngagement, buildIntake } from '../setup/build';

@@ -86,7 +86,7 @@ function LineRow({ form, index, line, currency, before, withRate, onRemove }: Li
           />
         }
         note={
-          <span className="flex justify-between gap-2">
+          <span className="flex items-baseline justify-between gap-2">
             <span>{check ? <Checks checks={[check]} /> : <BeforeNote {...{ before, line, currency }} />}</span>
             <Button kind="quiet" onClick={onRemove} aria-label={`Remove line ${index + 1}`}>
               remove

@@ -1,6 +1,7 @@
 import { billQuantity, daysBetween, type BillView, type MeterCheck, type MeterFigure } from '../../schemas/bill';
-import { formatBillName, formatPercent } from '../ui/format';
+import { formatBillName } from '../ui/format';
 import type { LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
+import { offInPercent } from './meter-words';
 
 const order = ['kwh', 'maxKw', 'maxKva', 'kvarh', 'kvarhLeading', 'powerFactor'];
 const sums = new Set(['kwh', 'kvarh', 'kvarhLeading']);
@@ -10,13 +11,6 @@ const namesOf = (checks: MeterCheck[]) =>
   order.filter((name) => checks.some(({ figures }) => figures.some((figure) => figure.name === name)));
 
 const tones = { true: undefined, false: 'fault', null: 'quiet' } as const;
-
-/** `+0.02 %`, `−1.4 %`. */
-export function offInPercent(printed: number, metered: number): string {
-  const off = metered === 0 ? 0 : (printed - metered) / metered;
-  const text = formatPercent(Math.abs(off), 2);
-  return /[1-9]/.test(text) ? `${off < 0 ? '\u2212' : '+'}${text}` : text;
-}
 
 function columnsOf(names: string[]): LedgerColumn[] {
   return [

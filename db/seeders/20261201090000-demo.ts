@@ -10,6 +10,8 @@ import { demoAccounts } from '../../src/server/demo-accounts';
 import { actAs } from '../../src/server/db/context';
 import { getEnv } from '../../src/server/env';
 import type { Actor } from '../../src/server/policies/actor';
+import { joinBills } from '../../src/server/services/bill-joins';
+import { addBill } from '../../src/server/services/bills';
 import { createEngagement } from '../../src/server/services/create-engagement';
 import {
   editionReaders,
@@ -31,7 +33,7 @@ import { chooseSchedule } from '../../src/server/services/tariff';
 import { sendUtilityLetter, utilityLetterDraft } from '../../src/server/services/utility-letters';
 import { attachJuneBill } from './demo/bill-pages';
 import { addPersonWithPassword, bringIn, daysAgo, ended } from './demo/helpers';
-import { harrowBills, harrowSchedule } from './demo/harrow';
+import { harrowBills, harrowInvoicesOfMay, harrowSchedule } from './demo/harrow';
 import { kestrelBillsFile, kestrelMeterFile } from './demo/kestrel-year';
 import { askKestrel } from './demo/requests';
 import { earlierAdjustedKw, kestrel, kestrelMotors } from './demo/scenario';
@@ -188,6 +190,10 @@ async function openHarrow({ ilse: partner, sana: consultant }: Staff): Promise<O
     rights: readerRights,
   });
   await bringIn(consultant, opened, { kind: 'bills', ...harrowBills() });
+  const invoices = [];
+  for (const invoice of harrowInvoicesOfMay) invoices.push(await addBill(consultant, code, invoice));
+  const note = 'The store changed hands on 20 May; each owner got an invoice.';
+  await joinBills(consultant, code, { bills: invoices, note });
   return opened;
 }
 

@@ -53,6 +53,16 @@ export interface BillView {
 /** Days of a half-open period. */
 export const daysBetween = (from: string, to: string) => Math.round((Date.parse(to) - Date.parse(from)) / 86_400_000);
 
+const demandLine = /demand|capacity|\bkw\b|\bkva\b/i;
+const demandQuantities = ['billedKw', 'billedKva'];
+
+/** Whether a bill asks for demand: a line of that name with an amount, or a billed demand. */
+export function billsDemand({ lines, quantities }: BillView): boolean {
+  const named = lines.filter((line) => demandLine.test(line.label));
+  if (named.length > 0) return named.some((line) => line.amountMinor !== 0);
+  return demandQuantities.some((name) => (quantities[name] ?? 0) > 0);
+}
+
 /** A quantity that bills print, with its unit. */
 export interface BillQuantity {
   name: string;

@@ -112,12 +112,14 @@ describe('quantities against one another', () => {
 
 describe('a figure against the meter', () => {
   it('is told in per cent for energies and by the value for others', () => {
-    expect(plain(meterCheck('kwh', 2_479_826, metered)?.words)).toBe('meter +0.00 %');
+    expect(plain(meterCheck('kwh', 2_479_826, metered)?.words)).toBe('meter 0.00 %');
     // (1,600,000 - 1,650,000) / 1,650,000 = -3.03 %
     expect(plain(meterCheck('kvarh', 1_600_000, metered)?.words)).toBe('meter \u22123.03 %');
     expect(meterCheck('kvarh', 1_600_000, metered)?.tone).toBe('warn');
     expect(meterCheck('maxKw', 4469, metered)?.words).toBe('meter 4,469');
     expect(meterCheck('billedKw', 5115, metered)).toBeNull();
+    expect(meterCheck('powerFactor', 0.83, metered)?.words).toBe('meter 0.83');
+    expect(meterCheck('powerFactor', 0.842, metered)?.words).toBe('meter 0.84 over the period');
   });
 
   it('is the least there can be where readings are missing, and nothing without a meter', () => {

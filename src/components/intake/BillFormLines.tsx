@@ -28,9 +28,11 @@ export function LineRows({ form, currency, others }: LinesProps) {
     <>
       <Legend
         action={
-          <Button kind="quiet" aria-expanded={open} onClick={() => setOpen(!open)}>
-            {open ? 'Amounts alone' : 'With quantities and rates'}
-          </Button>
+          <span className="text-sm">
+            <Button kind="quiet" aria-expanded={open} onClick={() => setOpen(!open)}>
+              {open ? 'Amounts alone' : 'With quantities and rates'}
+            </Button>
+          </span>
         }
       >{`Lines, ${currency}`}</Legend>
       <div className="form-rows">
@@ -84,7 +86,7 @@ function LineRow({ form, index, line, currency, before, withRate, onRemove }: Li
           />
         }
         note={
-          <span className="flex justify-between gap-2">
+          <span className="flex items-baseline justify-between gap-2">
             <span>{check ? <Checks checks={[check]} /> : <BeforeNote {...{ before, line, currency }} />}</span>
             <Button kind="quiet" onClick={onRemove} aria-label={`Remove line ${index + 1}`}>
               remove
@@ -102,31 +104,35 @@ function LineRow({ form, index, line, currency, before, withRate, onRemove }: Li
       </FormRow>
       {withRate && (
         <div className="bill-line-rate">
-          <input
-            {...figureProps}
-            aria-label={`Quantity of ${name}`}
-            aria-invalid={faults?.quantity ? true : undefined}
-            className={figureClass}
-            placeholder="quantity"
-            {...register(`lines.${index}.quantity`)}
-          />
-          <input
-            type="text"
-            aria-label={`Unit of ${name}`}
-            autoComplete="off"
-            className="input input-small"
-            placeholder="unit"
-            {...register(`lines.${index}.unit`)}
-          />
-          <span aria-hidden="true">×</span>
-          <input
-            {...figureProps}
-            aria-label={`Rate of ${name}`}
-            aria-invalid={faults?.rate ? true : undefined}
-            className={figureClass}
-            placeholder="rate"
-            {...register(`lines.${index}.rate`)}
-          />
+          <span>
+            <input
+              {...figureProps}
+              aria-label={`Quantity of ${name}`}
+              aria-invalid={faults?.quantity ? true : undefined}
+              className={figureClass}
+              placeholder="quantity"
+              {...register(`lines.${index}.quantity`)}
+            />
+            <input
+              type="text"
+              aria-label={`Unit of ${name}`}
+              autoComplete="off"
+              className="input input-small"
+              placeholder="unit"
+              {...register(`lines.${index}.unit`)}
+            />
+          </span>
+          <span>
+            <i aria-hidden="true">×</i>
+            <input
+              {...figureProps}
+              aria-label={`Rate of ${name}`}
+              aria-invalid={faults?.rate ? true : undefined}
+              className={figureClass}
+              placeholder="rate"
+              {...register(`lines.${index}.rate`)}
+            />
+          </span>
           <span className="hint fault">
             {faults?.quantity?.message ?? faults?.unit?.message ?? faults?.rate?.message}
           </span>

@@ -114,7 +114,7 @@ function YearPart(props: TableProps) {
       result={<BillsResult {...props} />}
     >
       {props.bills.length > 0 ? (
-        <div className="stacked">
+        <div className="stacked bill-year">
           <BillTable {...props} label="Bills of the year" />
           <JoinSuggestions code={props.code} bills={[...props.bills, ...props.laterBills]} joinable={props.joinable} />
         </div>

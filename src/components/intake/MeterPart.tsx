@@ -2,13 +2,14 @@ import type { BillsStation } from '../../schemas/bill';
 import { FindingSlip } from '../ui/FindingSlip';
 import { formatBillName, formatPeriod } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
-import { meterLedger, meterLetters } from './meter-ledger';
+import { meterLedger, meterLetters, sharedRemarks } from './meter-ledger';
 import { SheetPart } from './Sheet';
 
 /** Every bill of the year beside the kept readings of its period, with what differs named. */
 export function MeterPart({ bills, meterChecks, number }: BillsStation & { number: string }) {
   const letters = meterLetters(meterChecks);
-  const said = meterChecks.filter(({ billId }) => letters.has(billId));
+  const { shared, own } = sharedRemarks(meterChecks);
+  const said = own.filter(({ billId }) => letters.has(billId));
   return (
     <SheetPart
       id="meter"
@@ -22,7 +23,15 @@ export function MeterPart({ bills, meterChecks, number }: BillsStation & { numbe
           <p>Power factor: at the peak, or over the period where the bill prints that.</p>
         </>
       }
-      result={said.length === 0 ? <p>No bill differs from the readings.</p> : <Slips {...{ bills, said, letters }} />}
+      result={
+        <>
+          {said.length === 0 && <p>No bill differs from the readings.</p>}
+          {shared.length > 0 && <p>{`On every bill: ${shared.join(' ')}`}</p>}
+          <div className="mt-3">
+            <Slips {...{ bills, said, letters }} />
+          </div>
+        </>
+      }
     >
       <LedgerTable {...meterLedger(bills, meterChecks)} label="Bills against the meter" stack />
     </SheetPart>

@@ -1,16 +1,9 @@
 import { energiesDiffer } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
 import { billQuantity, daysBetween, type BillView, type MeteredPeriod } from '../../schemas/bill';
-import {
-  formatAmount,
-  formatBillName,
-  formatCount,
-  formatDay,
-  formatNumber,
-  formatPercent,
-  formatQuantity,
-} from '../ui/format';
+import { formatAmount, formatBillName, formatCount, formatDay, formatNumber, formatQuantity } from '../ui/format';
 import { typedNumber } from '../ui/typed-number';
+import { offInPercent } from './meter-words';
 import { dayAfter, dayBefore, isPercent, typedAmount, typedQuantity, type TypedBill, type TypedLine } from './typed';
 
 /** What is said beside a field while one types. */
@@ -108,26 +101,32 @@ const meteredOf: Record<string, keyof MeteredPeriod> = {
   kvarhLeading: 'kvarhLeading',
   maxKw: 'maxKw',
   maxKva: 'maxKva',
-  powerFactor: 'powerFactorAtPeak',
 };
 
 /** A typed figure against the meter: energies by per cent, the others by the metered value. */
 export function meterCheck(name: string, printed: number | undefined, metered: MeteredPeriod | null): Check | null {
+  if (name === 'powerFactor') return factorOfMeter(printed, metered);
   const key = meteredOf[name];
   const value = key && metered ? metered[key] : null;
   if (!metered || typeof value !== 'number') return null;
   const { unit, decimals } = billQuantity(name);
-  const shown = formatNumber(value, { decimals: name === 'powerFactor' ? 2 : decimals });
-  if (metered.missing > 0) {
-    return name === 'powerFactor' ? null : { words: `meter ${shown} at least, readings are missing` };
-  }
+  const shown = formatNumber(value, { decimals });
+  if (metered.missing > 0) return { words: `meter ${shown} at least, readings are missing` };
   if (printed === undefined || !/h$/.test(unit) || value <= 0) return { words: `meter ${shown}` };
-  const off = (printed - value) / value;
-  const sign = off < 0 ? '\u2212' : '+';
   return {
-    words: `meter ${sign}${formatPercent(Math.abs(off), 2)}`,
+    words: `meter ${offInPercent(printed, value)}`,
     tone: energiesDiffer(printed, value) ? 'warn' : undefined,
   };
+}
+
+/** The metered power factor: that of the peak, or of the whole period where the printed one is nearer to it. */
+function factorOfMeter(printed: number | undefined, metered: MeteredPeriod | null): Check | null {
+  if (!metered || metered.missing > 0) return null;
+  const { powerFactorAtPeak: atPeak, powerFactorOfPeriod: ofPeriod } = metered;
+  if (atPeak === null || ofPeriod === null) return null;
+  const isOfPeriod = printed !== undefined && Math.abs(printed - ofPeriod) < Math.abs(printed - atPeak);
+  const shown = formatNumber(isOfPeriod ? ofPeriod : atPeak, { decimals: 2 });
+  return { words: isOfPeriod ? `meter ${shown} over the period` : `meter ${shown}` };
 }
 
 /** Everything said beside a quantity, faults first. */

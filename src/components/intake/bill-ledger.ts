@@ -159,7 +159,7 @@ function columnsOf(bills: LedgerBill[], currency: string): LedgerColumn[] {
   return [
     { key: 'name', head: 'Bill of' },
     { key: 'period', head: 'Period', quiet: true },
-    { key: 'days', head: 'Days', kind: 'number' },
+    { key: 'days', head: 'Days', kind: 'number', spare: true },
     ...(bills.some(({ invoice, invoices = 1 }) => invoice || invoices > 1)
       ? [{ key: 'invoice', head: 'Invoice' }]
       : []),
@@ -170,8 +170,8 @@ function columnsOf(bills: LedgerBill[], currency: string): LedgerColumn[] {
       kind: 'number',
       decimals: decimals === 0 ? 0 : 3,
     })),
-    ...labels.map((label) => money(lineKey(label), label)),
-    ...(others ? [money('others', 'Other lines')] : []),
+    ...labels.map((label) => ({ ...money(lineKey(label), label), spare: true })),
+    ...(others ? [{ ...money('others', 'Other lines'), spare: true }] : []),
     { ...money('total', 'Printed total'), strong: true },
     { key: 'less', head: 'Lines less total', kind: 'money', currency, unit: currency, signed: true },
     { key: 'source', head: 'Source', quiet: true },

@@ -1,4 +1,4 @@
-import { daysBetween, periodFlaws, type BillView } from '../../schemas/bill';
+import { billsDemand, daysBetween, periodFlaws, type BillView } from '../../schemas/bill';
 import { capital, formatBillName, formatCount, formatMoney, formatPeriod, formatSpelled } from '../ui/format';
 import { billedMinor, lessTotal, oddSumsInWords, type LedgerBill } from './bill-ledger';
 
@@ -17,9 +17,7 @@ function daysInWords(bills: LedgerBill[]): string {
 
 /** How joined invoices stand to one another, and what follows. */
 export function joinedWords(bill: BillView): string {
-  const demanded = (bill.parts ?? []).flatMap((part, index) =>
-    (part.quantities.billedKw ?? part.quantities.billedKva ?? 0) > 0 ? [index] : [],
-  );
+  const demanded = (bill.parts ?? []).flatMap((part, index) => (billsDemand(part) ? [index] : []));
   const last = (bill.parts?.length ?? 0) - 1;
   const where = demanded[0] === 0 ? 'the first' : demanded[0] === last ? 'the last' : 'one of them';
   const demand = demanded.length === 1 ? ` demand is billed once, on ${where}.` : '';

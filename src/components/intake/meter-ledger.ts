@@ -1,6 +1,7 @@
 import { billQuantity, daysBetween, type BillView, type MeterCheck, type MeterFigure } from '../../schemas/bill';
-import { formatBillName, formatPercent } from '../ui/format';
+import { formatBillName } from '../ui/format';
 import type { LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
+import { offInPercent } from './meter-words';
 
 const order = ['kwh', 'maxKw', 'maxKva', 'kvarh', 'kvarhLeading', 'powerFactor'];
 const sums = new Set(['kwh', 'kvarh', 'kvarhLeading']);
@@ -11,17 +12,10 @@ const namesOf = (checks: MeterCheck[]) =>
 
 const tones = { true: undefined, false: 'fault', null: 'quiet' } as const;
 
-/** `+0.02 %`, `−1.4 %`. */
-export function offInPercent(printed: number, metered: number): string {
-  const off = metered === 0 ? 0 : (printed - metered) / metered;
-  const text = formatPercent(Math.abs(off), 2);
-  return /[1-9]/.test(text) ? `${off < 0 ? '\u2212' : '+'}${text}` : text;
-}
-
 function columnsOf(names: string[]): LedgerColumn[] {
   return [
     { key: 'name', head: 'Bill of' },
-    { key: 'days', head: 'Days', kind: 'number' },
+    { key: 'days', head: 'Days', kind: 'number', spare: true },
     ...names.flatMap((name): LedgerColumn[] => {
       const { label, unit } = billQuantity(name);
       const decimals = name === 'powerFactor' ? 2 : 0;
@@ -65,13 +59,25 @@ export function meterLedger(bills: BillView[], checks: MeterCheck[]): LedgerData
     };
     for (const figure of check.figures) Object.assign(cells, figureCells(figure, check.missing > 0));
     const differs = check.figures.some(({ agrees }) => agrees === false);
-    return [{ id: String(bill.id), cells, finding: letters.get(check.billId), kind: differs ? 'asks' : 'plain' }];
+    const finding = letters.get(check.billId);
+    return [{ id: String(bill.id), cells, finding, caution: !differs, kind: differs ? 'asks' : 'plain' }];
   });
   return { columns, rows };
 }
 
-/** Numbers of the bills with something to say, the same in the table and on the slips. */
+/** Remarks that hold for every bill are said once; what is left is each bill's own. */
+export function sharedRemarks(checks: MeterCheck[]): { shared: string[]; own: MeterCheck[] } {
+  const [first, ...others] = checks;
+  const shared =
+    first && others.length > 0
+      ? first.remarks.filter((remark) => others.every(({ remarks }) => remarks.includes(remark)))
+      : [];
+  const ownOf = (check: MeterCheck) => check.remarks.filter((remark) => !shared.includes(remark));
+  return { shared, own: checks.map((check) => ({ ...check, remarks: ownOf(check) })) };
+}
+
+/** Numbers of the bills with something of their own to say, the same in the table and on the slips. */
 export function meterLetters(checks: MeterCheck[]): Map<number, string> {
-  const said = checks.filter(({ remarks }) => remarks.length > 0);
+  const said = sharedRemarks(checks).own.filter(({ remarks }) => remarks.length > 0);
   return new Map(said.map(({ billId }, index) => [billId, String(index + 1)]));
 }

@@ -1,6 +1,13 @@
 import type { BillView, MeterCheck } from '../../schemas/bill';
 import { formatBillName, formatNumber, formatPercent, formatSpelled } from '../ui/format';
 
+/** `+0.02 %`, `−1.4 %`. */
+export function offInPercent(printed: number, metered: number): string {
+  const off = metered === 0 ? 0 : (printed - metered) / metered;
+  const text = formatPercent(Math.abs(off), 2);
+  return /[1-9]/.test(text) ? `${off < 0 ? '\u2212' : '+'}${text}` : text;
+}
+
 /** How the printed energies stand to the readings, over the periods that have every reading. */
 export function meterWords(checks: MeterCheck[], bills: BillView[]): string {
   const compared = checks.flatMap(({ billId, missing, figures }) => {

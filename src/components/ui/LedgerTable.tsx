@@ -40,6 +40,7 @@ function cellClass(column: LedgerColumn, cell: LedgerCell): string | undefined {
   return classes(
     columnAlign(column) !== 'right' && columnAlign(column),
     column.wrap && 'wrap',
+    column.spare && 'spare',
     (column.strong || cell.strong) && 'strong',
     column.picked && 'picked',
     column.quiet && !cell.tone && 'quiet',
@@ -185,7 +186,11 @@ export function LedgerTable(props: LedgerTableProps) {
                   <Cells columns={columns} cells={row.cells} figure={figureOf(row)} stack={stack}>
                     {tail && (
                       <td className={renderActions ? 'row-actions' : 'left'}>
-                        {row.finding && <span className="finding-letter">{row.finding}</span>}
+                        {row.finding && (
+                          <span className={classes('finding-letter', row.caution && 'finding-letter-caution')}>
+                            {row.finding}
+                          </span>
+                        )}
                         {renderActions?.(row)}
                       </td>
                     )}

@@ -1,18 +1,8 @@
-import { daysBetween, type BillView, type JoinSuggestion } from '../../schemas/bill';
+import { billsDemand, daysBetween, type BillView, type JoinSuggestion } from '../../schemas/bill';
 
 /** Shorter than any month's bill; and as long as a month's bill gets. Both are choices of ours. [days] */
 const shortDays = 26;
 const monthDays = 38;
-
-const demandLine = /demand|capacity|\bkw\b|\bkva\b/i;
-const demandQuantities = ['billedKw', 'billedKva'];
-
-/** Whether a bill asks for demand: a line of that name with an amount, or a billed demand. */
-function billsDemand({ lines, quantities }: BillView): boolean {
-  const named = lines.filter((line) => demandLine.test(line.label));
-  if (named.length > 0) return named.some((line) => line.amountMinor !== 0);
-  return demandQuantities.some((name) => (quantities[name] ?? 0) > 0);
-}
 
 /**
  * Short bills that join on day by day within one month: likely the invoices of one bill.

@@ -1,4 +1,5 @@
 import { benchIntake } from './intake';
+import { benchIntakeMemory } from './intake-memory';
 import { benchMinuteYears } from './minute-years';
 import { benchPricing } from './pricing';
 import { benchRepricing } from './repricing';
@@ -24,7 +25,16 @@ function verdict({ ratio, atMost, perSecond, atLeast }: Measured): string {
 }
 
 async function main(): Promise<void> {
-  const parts = [benchPricing, benchRepricing, benchRivals, benchMinuteYears, benchSearch, benchIntake, benchServer];
+  const parts = [
+    benchPricing,
+    benchRepricing,
+    benchRivals,
+    benchMinuteYears,
+    benchSearch,
+    benchIntake,
+    benchIntakeMemory,
+    benchServer,
+  ];
   for (const part of parts) {
     for (const measured of await part()) {
       const value = measured.ratio ?? measured.perSecond;

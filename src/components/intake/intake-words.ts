@@ -1,6 +1,6 @@
 import type { IntakeProblem } from '../../core/intake';
 import { toConfirm, type IntakePreview, type IntakeView } from '../../schemas/intake';
-import { capital, formatCount, formatDate, formatNumber, formatSpelled } from '../ui/format';
+import { capital, formatCount, formatDate, formatSpelled } from '../ui/format';
 import type { Problem } from '../ui/Notice';
 import { readBill } from './bill-ledger';
 import { readBillsHeading } from './bill-words';

@@ -1,8 +1,9 @@
-import { mkdtempSync, openSync, closeSync, rmSync, statSync, writeSync } from 'node:fs';
-import { readFileSync } from 'node:fs';
+import { fork } from 'node:child_process';
+import { closeSync, mkdtempSync, openSync, readFileSync, rmSync, statSync, writeSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
-import { readInChild } from '../../src/server/workers/fork-reader';
+import { readInChild, type ReadAnswer } from '../../src/server/workers/fork-reader';
+import { readerFlags } from '../../src/server/workers/reader-child';
 import type { Measured } from './run';
 
 const megabyte = 1024 * 1024;
@@ -17,43 +18,53 @@ function residentMegabytes(pid: number | 'self'): number {
   }
 }
 
-/** Process ids of the children of this process that read files. */
-function readers(): number[] {
-  const children = readFileSync(`/proc/self/task/${process.pid}/children`, 'utf8').trim().split(' ');
-  return children.filter((pid) => pid !== '').map(Number);
-}
+/** The built program that reads files: run from its source it would carry the translator of TypeScript with it. */
+const builtReader = 'dist/server/read-file.worker.mjs';
 
-/** Reads a file in a child and watches both processes. */
-async function watched(
-  file: string,
-): Promise<{ childMb: number; growthMb: number; seconds: number; kwh: number; intervals: number }> {
-  const request = {
-    kind: 'intervals' as const,
-    mode: 'read' as const,
-    path: file,
-    fileName: path.basename(file),
-    timeZone: 'UTC',
-  };
-  globalThis.gc?.();
-  const before = residentMegabytes('self');
-  let [childMb, most] = [0, before];
-  const timer = setInterval(() => {
-    for (const pid of readers()) childMb = Math.max(childMb, residentMegabytes(pid) || 0);
-    most = Math.max(most, residentMegabytes('self'));
-  }, 20);
+/** Highest memory of a child that reads a file, with the flags the server gives it. [MiB] */
+async function childPeak(file: string, handOver: string): Promise<{ peakMb: number; seconds: number }> {
+  const child = fork(builtReader, [], { execArgv: readerFlags(), serialization: 'advanced', env: {} });
+  let peakMb = 0;
+  const timer = setInterval(() => (peakMb = Math.max(peakMb, residentMegabytes(child.pid ?? 0) || 0)), 10);
   const startMs = performance.now();
   try {
-    const { load, report } = await readInChild(request);
+    const answer = new Promise<ReadAnswer>((resolve, reject) => {
+      child.on('message', (message: { answer?: ReadAnswer }) => message.answer && resolve(message.answer));
+      child.once('exit', () => reject(new Error('the reader ended without an answer')));
+    });
+    child.send({ ...requestOf(file), handOver });
+    if (!('handed' in (await answer))) throw new Error(`${file} was not read`);
+    return { peakMb, seconds: (performance.now() - startMs) / 1000 };
+  } finally {
+    clearInterval(timer);
+    child.kill('SIGKILL');
+  }
+}
+
+const requestOf = (file: string) => ({
+  kind: 'intervals' as const,
+  mode: 'read' as const,
+  path: file,
+  fileName: path.basename(file),
+  timeZone: 'UTC',
+});
+
+/** How much this process grows while it has a file read. [MiB] */
+async function serverGrowth(file: string): Promise<{ growthMb: number; intervals: number }> {
+  const before = residentMegabytes('self');
+  let most = before;
+  const timer = setInterval(() => (most = Math.max(most, residentMegabytes('self'))), 10);
+  try {
+    const { load } = await readInChild(requestOf(file));
     most = Math.max(most, residentMegabytes('self'));
-    const seconds = (performance.now() - startMs) / 1000;
-    return { childMb, growthMb: most - before, seconds, kwh: report.totalKwh, intervals: load.kwh.length };
+    return { growthMb: most - before, intervals: load.kwh.length };
   } finally {
     clearInterval(timer);
   }
 }
 
 /** Writes text piece by piece, so that this process stays small. */
-export function writePieces(file: string, pieces: Iterable<string>): void {
+function writePieces(file: string, pieces: Iterable<string>): void {
   const handle = openSync(file, 'w');
   for (const piece of pieces) writeSync(handle, piece);
   closeSync(handle);
@@ -62,7 +73,7 @@ export function writePieces(file: string, pieces: Iterable<string>): void {
 const start = Date.UTC(2020, 0, 1) / 1000;
 
 /** An ESPI feed of quarter-hours of 250 Wh, a block a day, until it has the bytes asked for. */
-export function* feedPieces(bytes: number): Generator<string> {
+function* feedPieces(bytes: number): Generator<string> {
   const link = (rel: string, href: string) => `<link rel="${rel}" href="${href}"/>`;
   const self = '/UsagePoint/1/MeterReading/1';
   const head = `<?xml version="1.0"?><feed xmlns="http://www.w3.org/2005/Atom" xmlns:espi="http://naesb.org/espi"><entry>${link('self', self)}${link('related', '/ReadingType/1')}<title>Energy</title><content><espi:MeterReading/></content></entry><entry>${link('self', '/ReadingType/1')}<content><espi:ReadingType><espi:accumulationBehaviour>4</espi:accumulationBehaviour><espi:flowDirection>1</espi:flowDirection><espi:intervalLength>900</espi:intervalLength><espi:powerOfTenMultiplier>0</espi:powerOfTenMultiplier><espi:uom>72</espi:uom></espi:ReadingType></content></entry>`;
@@ -81,7 +92,7 @@ export function* feedPieces(bytes: number): Generator<string> {
 }
 
 /** One-minute readings of two channels. */
-export function* minutePieces(rows: number): Generator<string> {
+function* minutePieces(rows: number): Generator<string> {
   yield 'Interval start (UTC),Active energy kWh,Reactive lagging kvarh\n';
   const perPiece = 1000;
   for (let from = 0; from < rows; from += perPiece) {
@@ -113,7 +124,8 @@ export async function benchIntakeMemory(): Promise<Measured[]> {
 
 async function measured(name: string, file: string, childLimitMb: (fileMb: number) => number): Promise<Measured[]> {
   const fileMb = statSync(file).size / megabyte;
-  const { childMb, growthMb, seconds, intervals } = await watched(file);
+  const { peakMb: childMb, seconds } = await childPeak(file, `${file}.load`);
+  const { growthMb, intervals } = await serverGrowth(file);
   const limitMb = childLimitMb(fileMb);
   const size = `${fileMb.toFixed(0)} MiB, ${intervals} intervals, ${seconds.toFixed(1)} s`;
   return [

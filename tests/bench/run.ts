@@ -1,6 +1,7 @@
 import { benchIntake } from './intake';
 import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
+import { benchIntakeMemory } from './intake-memory';
 import { benchMinuteYears } from './minute-years';
 import { benchPricing } from './pricing';
 import { benchRepricing } from './repricing';
@@ -36,6 +37,7 @@ async function main(): Promise<void> {
     benchIntakeRows,
     benchIntakeBook,
     benchKeep,
+    benchIntakeMemory,
     benchServer,
   ];
   for (const part of parts) {

@@ -61,22 +61,45 @@ function Followed({ job: first, fileName, onEnd }: { job: JobProgress; fileName:
   };
   return (
     <div className="stacked">
-      <Progress {...measureOf(job ?? first, fileName)} secondsLeft={secondsLeft} goesOn onStop={stop} />
+      <Measure job={job ?? first} fileName={fileName} secondsLeft={secondsLeft} onStop={stop} />
       {(fault ?? error) && <Notice kind="fault" title={fault ?? error ?? ''} />}
     </div>
   );
 }
 
-/** Bytes as kB; a format that cannot be counted by its stages; nothing while it waits for its turn. */
-function measureOf({ done, planned, unit }: JobProgress, fileName: string) {
-  if (planned === null) return { title: `Opening ${fileName}`, done: 0, units: 'read so far' };
-  const title = `Reading ${fileName}`;
-  if (unit === 'bytes')
-    return {
-      title,
-      done: Math.round(done / kilobyte),
-      total: Math.max(1, Math.round(planned / kilobyte)),
-      units: 'kB',
-    };
-  return { title, done, total: planned, units: unit ?? 'steps' };
+interface MeasureProps {
+  job: JobProgress;
+  fileName: string;
+  secondsLeft: number | null;
+  onStop: () => void;
+}
+
+/** Bytes as kB, a format that cannot be counted by its stages; before the first word of the reader only that it waits. */
+function Measure({ job: { done, planned, unit }, fileName, secondsLeft, onStop }: MeasureProps) {
+  if (planned === null) {
+    return (
+      <div className="progress" role="status">
+        <div className="progress-line">
+          <span>Opening {fileName}</span>
+        </div>
+        <div className="progress-line hint">
+          <span>Two files are read at a time; others wait for their turn.</span>
+          <Button kind="quiet" onClick={onStop}>
+            Stop
+          </Button>
+        </div>
+      </div>
+    );
+  }
+  const size = unit === 'bytes' ? kilobyte : 1;
+  return (
+    <Progress
+      title={`Reading ${fileName}`}
+      done={Math.round(done / size)}
+      total={Math.max(1, Math.round(planned / size))}
+      units={unit === 'bytes' ? 'kB' : (unit ?? 'steps')}
+      secondsLeft={secondsLeft}
+      onStop={onStop}
+    />
+  );
 }

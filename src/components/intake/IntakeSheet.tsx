@@ -189,7 +189,12 @@ function HeadActions({ intake, actions }: { intake: IntakeView; actions: IntakeA
       </>
     );
   }
-  if (state === 'reading') return <ButtonLink href={station}>Back to the station</ButtonLink>;
+  if (state === 'reading')
+    return (
+      <ButtonLink kind="secondary" href={station}>
+        Back to the station
+      </ButtonLink>
+    );
   const left = preview ? toConfirm(preview, intake.confirmed).count : 0;
   const ready = preview !== null && preview.problems.length === 0;
   return (

@@ -191,7 +191,7 @@ export function previewEspiBills(
     headerRow: null,
     firstRow: 1,
     lastRow: summariesOf(feed).length,
-    rows: headRows(head),
+    rows: headRows(head, null),
     columnMap: reading.result?.report.columnMap ?? options.columnMap ?? { kind: 'bills' },
     mapApplied: options.columnMap !== undefined,
     shape,

@@ -80,6 +80,7 @@ export function billOfSummary(
   const quantities = quantitiesOf(tree, where, notes);
   const total = amountOf(textOf(tree, 'billLastPeriod'));
   const charges = chargesOf(tree, where, notes);
+  noteRest(charges, total, where, notes);
   if (total === null && charges.length === 0 && Object.keys(quantities).length === 0) return null;
   const number = textOf(tree, 'currency') || currencyCode || '';
   const currency = currencies.get(String(Number(number)));
@@ -154,6 +155,18 @@ function chargesOf(tree: EspiNode, where: string, notes: IntakeNote[]): BillChar
   });
   const lump = amountOf(textOf(tree, 'costAdditionalLastPeriod'));
   return lines.length === 0 && lump !== null && lump !== 0 ? [{ label: 'Additional charges', amount: lump }] : charges;
+}
+
+/** A feed may name the additional lines alone: the rest of the total then has none, which is no fault of the bill. */
+function noteRest(charges: readonly BillCharge[], total: number | null, where: string, notes: IntakeNote[]): void {
+  if (total === null || charges.length === 0) return;
+  const rest = total - charges.reduce((sum, { amount }) => sum + amount, 0);
+  if (Math.abs(rest) < 0.005) return;
+  notes.push({
+    code: 'lines-partial',
+    message: `The summary names additional lines alone: ${rest.toFixed(2)} of the total of ${total.toFixed(2)} have no line.`,
+    where,
+  });
 }
 
 /** Quantity, unit and rate of a line; the rate only where it gives the amount, since feeds scale it in several ways. */

@@ -166,7 +166,7 @@ export function previewOfChannels(
     headerRow: null,
     firstRow: 1,
     lastRow: file.rowsInFile,
-    rows: headRows(file.head),
+    rows: headRows(file.head, file.format === 'nem12' ? ',' : null),
     columnMap: reading.result?.report.columnMap ?? file.columnMap,
     mapApplied: options.columnMap !== undefined,
     shape: file.shape,
@@ -186,11 +186,21 @@ export function meterGuess(meters: readonly string[], map: ColumnMap | undefined
   return [guess('meter', taken, [[picked, `${meters.length} meters in one file`]])];
 }
 
-/** The first lines of a text as rows to show. */
-export function headRows(head: string): PreviewRow[] {
-  return head.split(/\r\n|\n|\r/, rowsShown).map((line, at) => ({
-    number: at + 1,
-    cells: line.split(',', 60).map((cell) => cell.trim().slice(0, charactersShown)),
+/** The first lines of a text as rows to show; of XML those from the first element on, each as one cell. */
+export function headRows(head: string, delimiter: ',' | null): PreviewRow[] {
+  const lines = head.split(/\r\n|\n|\r/, 400);
+  const from =
+    delimiter === null
+      ? Math.max(
+          0,
+          lines.findIndex((line) => /<[\w-]*:?feed\b/.test(line)),
+        )
+      : 0;
+  return lines.slice(from, from + rowsShown).map((line, at) => ({
+    number: from + at + 1,
+    cells: (delimiter === null ? [line] : line.split(delimiter, 60)).map((cell) =>
+      cell.trim().slice(0, charactersShown),
+    ),
     isHeader: false,
   }));
 }

@@ -10,7 +10,7 @@ const texts = (trace: Trace) => trace.rows.map((row) => [row.number, ...row.cell
 
 describe('tracing an interval to its rows', () => {
   it('names the row of a table behind a preamble, without the columns left out', async () => {
-    const table = `Plant of Tarn Ltd\n\nTime,kWh,Remark\n${stamps.map((stamp, hour) => `${stamp},${hour + 0.5},x`).join('\n')}\n`;
+    const table = `Plant of Tarn Ltd\n\nTime,kWh,Remark\n${stamps.map((stamp, hour) => `${stamp},${hour + 0.5},north`).join('\n')}\n`;
     const trace = await traceInterval(bytesOf(table), options, startMs + 5 * hourMs);
     // Three rows stand above; the sixth reading is in row 9.
     expect(texts(trace)).toEqual([[9, '2025-03-13 05:00', '5.5']]);

@@ -136,7 +136,7 @@ export const sheetDialects: Dialect[] = [
   },
   {
     ...step,
-    name: 'date and time apart',
+    name: 'dates and times of day in two columns',
     write: book({
       header: ['Date', 'Time', ...channelNames],
       formats: { 0: 'dd.mm.yyyy', 1: 'hh:mm' },

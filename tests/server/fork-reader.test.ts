@@ -90,10 +90,13 @@ describe('readInChild', () => {
     expect(after.report.intervals).toBe(96);
   });
 
-  it.skipIf(!existsSync('/proc/self/status'))('stops a child whose memory outside the heap grows too large', async () => {
-    const outcome = readInChild({ ...request('big.csv', halfHours()), mode: 'read' }, { residentMegabytes: 5 });
-    await expect(outcome).rejects.toThrow(/more memory than one file may have/);
-  });
+  it.skipIf(!existsSync('/proc/self/status'))(
+    'stops a child whose memory outside the heap grows too large',
+    async () => {
+      const outcome = readInChild({ ...request('big.csv', halfHours()), mode: 'read' }, { residentMegabytes: 5 });
+      await expect(outcome).rejects.toThrow(/more memory than one file may have/);
+    },
+  );
 
   it('tells how far it is', async () => {
     const told: ReadProgress[] = [];

@@ -31,6 +31,7 @@ import { createSchedule, keepRevision } from '../../src/server/services/schedule
 import { startSearch } from '../../src/server/services/search';
 import { chooseSchedule } from '../../src/server/services/tariff';
 import { sendUtilityLetter, utilityLetterDraft } from '../../src/server/services/utility-letters';
+import { attachJuneBill } from './demo/bill-pages';
 import { addPersonWithPassword, bringIn, daysAgo, ended } from './demo/helpers';
 import { harrowBills, harrowInvoicesOfMay, harrowSchedule } from './demo/harrow';
 import { kestrelBillsFile, kestrelMeterFile } from './demo/kestrel-year';
@@ -117,6 +118,7 @@ async function auditKestrel(consultant: Actor, opened: OpenEngagement): Promise<
     takeNewText: false,
   });
   for (const motor of kestrelMotors) await createMotor(opened, motor);
+  await attachJuneBill(consultant, opened);
 }
 
 /** Puts the greatest finding to the utility; the other waits for somebody. */

@@ -11,8 +11,13 @@ function fieldOf(target: EventTarget | null): HTMLInputElement | null {
   return target;
 }
 
-const labelOf = (field: HTMLInputElement) =>
-  field.getAttribute('aria-label') ?? field.labels?.[0]?.textContent?.trim() ?? field.name;
+/** What a field is called: one of a line by the name the line has, others by their label. */
+export function labelOf(field: HTMLInputElement): string {
+  const [, line, part] = /^(lines\.\d+)\.(\w+)$/.exec(field.name) ?? [];
+  const named = line && part !== 'label' ? fieldOf(document.getElementsByName(`${line}.label`)[0] ?? null)?.value : '';
+  if (named) return part === 'amount' ? named : `${named}, ${part}`;
+  return field.getAttribute('aria-label') ?? field.labels?.[0]?.textContent?.trim() ?? field.name;
+}
 
 /** What of an offer goes into a field: fields for days take dates, those for figures numbers, others the print itself. */
 function textFor(field: HTMLInputElement, { kind, typed, place }: Offer): string | null {

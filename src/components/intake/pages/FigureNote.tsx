@@ -16,8 +16,13 @@ export function FigureNote({
     return (
       <p className="page-note hint">
         {alone
-          ? 'Drag a number onto a field of the form in the other window, or click it: it goes into the field that has the focus there.'
-          : 'Drag a number onto a field. With the keys: F2 goes from a field to the numbers, Enter takes one, Escape goes back.'}
+          ? 'Drag a number onto a field of the form in the other window, or click it: it goes into the field that had the focus there.'
+          : 'Click a number for the chosen field, or drag it onto one.'}
+        {!alone && (
+          <span className="max-phone:hidden">
+            {' Keys: F2 leads from a field to the numbers, Enter takes one, Escape goes back.'}
+          </span>
+        )}
       </p>
     );
   }
@@ -44,6 +49,7 @@ interface PageStyleFieldsProps {
 /** How the page writes decimals and dates; the person has the last word. */
 export function PageStyleFields({ style, shown, hasDates, onChange }: PageStyleFieldsProps) {
   const id = useId();
+  const open = [shown.decimal === null && 'decimals', hasDates && shown.dates === null && 'dates'].filter(Boolean);
   return (
     <div className="page-style">
       <label htmlFor={`${id}-decimal`}>Decimals behind a</label>
@@ -70,12 +76,7 @@ export function PageStyleFields({ style, shown, hasDates, onChange }: PageStyleF
           </select>
         </>
       )}
-      <span className="hint">{wordOf(shown, hasDates)}</span>
+      {open.length > 0 && <span className="hint">{`the page leaves ${open.join(' and ')} open`}</span>}
     </div>
   );
-}
-
-function wordOf({ decimal, dates }: PageStyleFieldsProps['shown'], hasDates: boolean): string {
-  const open = [decimal === null && 'decimals', hasDates && dates === null && 'dates'].filter(Boolean);
-  return open.length === 0 ? 'as the page shows' : `the page leaves ${open.join(' and ')} open`;
 }

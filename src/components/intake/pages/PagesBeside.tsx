@@ -6,10 +6,12 @@ import type { BillView } from '../../../schemas/bill';
 import { formatBillName, formatList } from '../../ui/format';
 import { Notice } from '../../ui/Notice';
 import { useBillFieldTarget } from '../bill-field-target';
+import { labelOf } from '../use-bill-field-target';
 import type { TypedBill } from '../typed';
 import { AttachPages } from './AttachPages';
 import { pageChannel } from './channel';
 import type { Offer } from './offer';
+import { PagesDrawer, PageTabs } from './PageTabs';
 import { PagesList } from './PagesList';
 import { PageViewer } from './PageViewer';
 import { PlaceWire } from './PlaceWire';
@@ -68,10 +70,11 @@ export function PagesBeside({ code, timeZone, bill, bills }: PagesBesideProps) {
 
   const used = placedFields(typed)
     .filter((one) => isTrue(typed, one))
-    .map(({ path, place }) => ({ path, place, label: labelOf(path) }))
+    .map(({ path, place }) => ({ path, place, label: nameOf(path) }))
     .filter(({ place }) => place.attachmentId === shown?.id);
   return (
     <div className="pages">
+      <PageTabs files={[...own, ...waiting]} shownId={shown?.id ?? null} onShow={setChosenId} />
       {shown && target && (
         <PageViewer
           key={shown.id}
@@ -95,29 +98,30 @@ export function PagesBeside({ code, timeZone, bill, bills }: PagesBesideProps) {
         </p>
       )}
       {attachments.loaded && (
-        <AttachPages code={code} billId={bill?.id ?? null} first={own.length === 0} onAttached={handleAttached} />
+        <PagesDrawer own={own.length} waiting={waiting.length}>
+          <AttachPages code={code} billId={bill?.id ?? null} first={own.length === 0} onAttached={handleAttached} />
+          <PagesList
+            attachments={attachments}
+            own={own}
+            waiting={waiting}
+            others={bills.filter(({ id }) => id !== bill?.id)}
+            timeZone={timeZone}
+            onUse={(one) => void use(one)}
+            onLetWait={(one) => void letWait(one)}
+          />
+        </PagesDrawer>
       )}
       {word !== '' && <Notice title={word} />}
-      <PagesList
-        attachments={attachments}
-        own={own}
-        waiting={waiting}
-        shownId={shown?.id ?? null}
-        others={bills.filter(({ id }) => id !== bill?.id)}
-        timeZone={timeZone}
-        onShow={setChosenId}
-        onUse={(one) => void use(one)}
-        onLetWait={(one) => void letWait(one)}
-      />
+      {attachments.fault && <Notice kind="fault" title={attachments.fault} />}
       <PlaceWire path={marked ? (field?.path ?? null) : null} shown={shown?.id} />
     </div>
   );
 }
 
-/** What the form calls a field. */
-function labelOf(path: string): string {
-  const input = document.getElementsByName(path)[0] as HTMLInputElement | undefined;
-  return input?.getAttribute('aria-label') ?? input?.labels?.[0]?.textContent?.trim() ?? path;
+/** What the form calls a field, by its path. */
+function nameOf(path: string): string {
+  const field = document.getElementsByName(path)[0];
+  return field instanceof HTMLInputElement ? labelOf(field) : path;
 }
 
 /** Marks the rows of the form a figure of the page went into. */

@@ -13,11 +13,9 @@ export interface PagesListProps {
   own: AttachmentView[];
   /** Files that wait for a bill. */
   waiting: AttachmentView[];
-  shownId: number | null;
   /** Other bills the pages can be moved to. */
   others: BillView[];
   timeZone: string;
-  onShow(id: number): void;
   /** A waiting file is taken for this bill. */
   onUse(attachment: AttachmentView): void;
   /** A file of this bill is let wait. */
@@ -46,12 +44,10 @@ export function PagesList(props: PagesListProps) {
       )}
       {waiting.map((one) => (
         <div key={one.id} className="page-file">
-          <Button kind="quiet" onClick={() => props.onShow(one.id)} aria-pressed={props.shownId === one.id}>
-            {one.fileName}
-          </Button>
+          <b>{one.fileName}</b>
           <span className="quiet">{pagesInWords(one)}</span>
           <span className="actions-tight">
-            <Button kind="quiet" onClick={() => onUse(one)} aria-label={`Use ${one.fileName} for this bill`}>
+            <Button kind="quiet" onClick={() => onUse(one)} aria-label={`Use for this bill: ${one.fileName}`}>
               Use for this bill
             </Button>
             <Button kind="quiet" onClick={() => setAsked(one)} aria-label={`Remove ${one.fileName}`}>
@@ -82,7 +78,6 @@ export function PagesList(props: PagesListProps) {
           </span>
         </Notice>
       )}
-      {attachments.fault && <Notice kind="fault" title={attachments.fault} />}
     </div>
   );
 }
@@ -95,14 +90,12 @@ const pagesInWords = ({ pageCount, mediaType }: AttachmentView) =>
       : formatCount(pageCount, 'page');
 
 function OwnFile(props: PagesListProps & { attachment: AttachmentView; onAsk(): void }) {
-  const { attachments, attachment, shownId, others, timeZone, onShow, onLetWait, onAsk } = props;
+  const { attachments, attachment, others, timeZone, onLetWait, onAsk } = props;
   const { id, fileName, attachedBy, attachedAt, bytes } = attachment;
   const move = (billId: number) => void attachments.change(movePages(attachment, billId));
   return (
     <div className="page-file">
-      <Button kind="quiet" onClick={() => onShow(id)} aria-pressed={shownId === id}>
-        {fileName}
-      </Button>
+      <b>{fileName}</b>
       <span className="quiet">
         {`${pagesInWords(attachment)}, ${formatBytes(bytes)}, ${formatDateTime(attachedAt, timeZone)}${attachedBy ? `, ${attachedBy}` : ''}`}
       </span>
@@ -110,7 +103,7 @@ function OwnFile(props: PagesListProps & { attachment: AttachmentView; onAsk(): 
         <a className="text-link" href={pagesPath(id)} download={fileName} aria-label={`Original of ${fileName}`}>
           Original
         </a>
-        <Button kind="quiet" onClick={() => onLetWait(attachment)} aria-label={`Take ${fileName} off this bill`}>
+        <Button kind="quiet" onClick={() => onLetWait(attachment)} aria-label={`Take off ${fileName}`}>
           Take off
         </Button>
         {others.length > 0 && attachment.billId !== null && (

@@ -54,7 +54,7 @@ export function PdfSheet({ pdf, fileName, page, quarters, zoom, onPage, children
   const ratio = open ? (upright ? open.width / open.height : open.height / open.width) : 0.707;
   return (
     <div ref={sheet} className="page-paper" style={{ width: `${zoom * 100}%`, aspectRatio: String(ratio) }}>
-      <canvas ref={canvas} role="img" aria-label={`Page ${page} of ${fileName}`} key={`${page}-${quarters}`} />
+      <canvas ref={canvas} role="img" aria-label={`Page ${page} of ${fileName}`} key={quarters} />
       {fault ? (
         <p className="page-words">This page is damaged and cannot be drawn. The others may be whole.</p>
       ) : (

@@ -123,8 +123,15 @@ const drawing =
     const wanted = width / bare.width;
     const scale = Math.min(wanted, Math.sqrt(canvasCapPixels / (bare.width * bare.height)));
     const viewport = page.getViewport({ scale, rotation });
-    canvas.width = Math.max(1, Math.floor(viewport.width));
-    canvas.height = Math.max(1, Math.floor(viewport.height));
-    const task = page.render({ canvas, viewport, background: '#ffffff' });
-    return { done: task.promise, stop: () => task.cancel() };
+    // Drawn aside and shown when it is whole: what is on the screen stays until then.
+    const aside = document.createElement('canvas');
+    aside.width = Math.max(1, Math.floor(viewport.width));
+    aside.height = Math.max(1, Math.floor(viewport.height));
+    const task = page.render({ canvas: aside, viewport, background: '#ffffff' });
+    const done = task.promise.then(() => {
+      canvas.width = aside.width;
+      canvas.height = aside.height;
+      canvas.getContext('2d')?.drawImage(aside, 0, 0);
+    });
+    return { done, stop: () => task.cancel() };
   };

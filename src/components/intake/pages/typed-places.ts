@@ -52,11 +52,11 @@ export const isTrue = (typed: TypedPages, { path, place }: { path: string; place
 
 /**
  * Places as a bill keeps them: by the names of quantities and the order of kept lines. A place whose figure was typed over
- * is left out, since it no longer says where the value comes from.
+ * is left out, since it no longer says where the value comes from; without any there is nothing to keep.
  *
  * @param lines  Rows of the form that are kept as lines, in order
  */
-export function placesToKeep(typed: TypedPages, lines: readonly number[]): Places {
+export function placesToKeep(typed: TypedPages, lines: readonly number[]): Places | undefined {
   const kept: Places = {};
   for (const { path, place } of placedFields(typed)) {
     if (!isTrue(typed, { path, place })) continue;
@@ -65,7 +65,7 @@ export function placesToKeep(typed: TypedPages, lines: readonly number[]): Place
     else if (row[1] === 'quantities') kept[`quantities.${typed.quantities[Number(row[2])]?.name}.${row[3]}`] = place;
     else if (lines.includes(Number(row[2]))) kept[`lines.${lines.indexOf(Number(row[2]))}.${row[3]}`] = place;
   }
-  return kept;
+  return Object.keys(kept).length > 0 ? kept : undefined;
 }
 
 /** A typed bill with the places it was kept with. */

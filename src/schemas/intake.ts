@@ -97,11 +97,21 @@ const columnUse = z.object({
     'quality',
     'period-from',
     'period-to',
+    'period',
     'month',
+    'year',
     'days',
+    'invoice',
+    'read-type',
     'quantity',
     'charge',
+    'rate',
     'total',
+    'line-label',
+    'line-quantity',
+    'line-unit',
+    'line-rate',
+    'line-amount',
     'ignore',
   ]),
   unit: shortText.optional(),
@@ -112,6 +122,8 @@ const columnUse = z.object({
     .max(1e9, 'The multiplier is too large.')
     .optional(),
   quantity: z.string().max(60).optional(),
+  charge: z.string().max(1000).optional(),
+  times: z.string().max(1000).optional(),
   minuteOfDay: z.number().int().min(0).max(1440).optional(),
 });
 
@@ -123,7 +135,7 @@ export const columnMapInput = z.object({
   decimalMark: z.enum(['.', ',']).optional(),
   headerRow: z.number().int().min(1).max(1_000_000).nullable().optional(),
   firstRow: z.number().int().min(1).max(1_000_000).optional(),
-  layout: z.enum(['long', 'wide', 'transposed']).optional(),
+  layout: z.enum(['long', 'wide', 'transposed', 'items']).optional(),
   columns: z.array(columnUse).max(5000).optional(),
   stamp: z
     .object({
@@ -135,6 +147,13 @@ export const columnMapInput = z.object({
     .optional(),
   meter: shortText.optional(),
   periodEnds: z.enum(['inclusive', 'exclusive']).optional(),
+  year: z.number().int().min(1970).max(2200).optional(),
+  documents: z
+    .array(
+      z.object({ row: z.number().int().min(1).max(1_000_000), total: z.number().nullable(), isTaken: z.boolean() }),
+    )
+    .max(2000)
+    .optional(),
 }) satisfies z.ZodType<ColumnMap>;
 
 const version = z.number().int().min(0);

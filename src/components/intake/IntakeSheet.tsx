@@ -128,7 +128,7 @@ function Steps({ initial }: { initial: IntakeView }) {
           <ReadStep intake={intake} preview={preview} folded={state === 'kept'} />
           <MatchStep intake={intake} preview={preview} actions={actions} />
           {preview.kind === 'bills' ? (
-            <CheckBills intake={intake} preview={preview} />
+            <CheckBills intake={intake} preview={preview} actions={actions} />
           ) : (
             <CheckIntervals intake={intake} preview={preview} />
           )}

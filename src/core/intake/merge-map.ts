@@ -7,7 +7,8 @@ import type { ColumnEvidence, ColumnMap, ColumnUse, IntakeProblem } from './type
 const soleRoles: ReadonlySet<string> = new Set([
   'stamp', 'stamp-begin', 'stamp-end', 'date', 'time', 'interval-number', 'meter', 'channel', 'unit', 'value', 'quality',
   'active', 'export', 'reactive-lagging', 'reactive-leading', 'reactive-signed', 'apparent', 'power-factor',
-  'period-from', 'period-to', 'month', 'days', 'total',
+  'period-from', 'period-to', 'period', 'month', 'year', 'days', 'invoice', 'read-type', 'total',
+  'line-label', 'line-quantity', 'line-unit', 'line-rate', 'line-amount',
 ]); // prettier-ignore
 
 /**

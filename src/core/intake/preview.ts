@@ -1,7 +1,9 @@
+import { metersOf } from './bill-meters';
 import { planBills, type BillPlan } from './bill-plan';
-import { readPlannedBills } from './bills';
+import { readBillTable, type BillTable } from './bills';
 import type { TableBlock } from './block';
 import { IntakeError } from './errors';
+import { guess } from './evidence';
 import type { Grid } from './grid';
 import { planIntervals, readPlanned, type IntervalPlan } from './intervals';
 import type { OpenedTable } from './open';
@@ -40,16 +42,32 @@ export function previewOfIntervals(opened: OpenedTable, options: ReadOptions): I
 /** What intake shows of a table of bills, whether or not it can be read. */
 export function previewOfBills(opened: OpenedTable, options: ReadOptions): BillPreview {
   const plan = attempt(() => planBills(opened, options));
-  const reading = plan.result && attempt(() => readPlannedBills(plan.result as BillPlan, options));
-  const read = reading?.result ?? null;
+  const table = plan.result && attempt(() => readBillTable(plan.result as BillPlan, options));
+  const found: BillTable | null = table?.result ?? null;
+  const meters = found?.meters ?? (plan.result ? metersOf(plan.result) : []);
+  const problems = found?.problems ?? table?.problems ?? plan.problems;
+  const read = found && problems.length === 0 ? { ...found.reading, guesses: found.guesses } : null;
   return {
     kind: 'bills',
     ...common(opened, options, plan.result, read),
-    columnMap: read?.report.columnMap ?? plan.result?.columnMap ?? fallbackMap('bills', options),
-    problems: reading?.problems ?? plan.problems,
+    columnMap: plan.result?.columnMap ?? fallbackMap('bills', options),
+    problems: problems.slice(0, 20),
+    meters,
+    documents: found?.documents ?? [],
     bills: read?.bills ?? [],
+    guesses: withReadGuesses(plan.result?.guesses ?? [], found?.guesses ?? meterGuess(meters)),
   };
 }
+
+/** Several meters stand in the way of reading: the choice is shown beside the other decisions. */
+const meterGuess = (meters: readonly string[]): Guess[] =>
+  meters.length < 2
+    ? []
+    : [
+        guess('meter', meters.slice(0, 8).join(', '), [
+          [false, `${meters.length} accounts or meters with bills of the same days`],
+        ]),
+      ];
 
 interface Attempt<T> {
   result: T | null;
@@ -76,7 +94,8 @@ function common(
   plan: IntervalPlan | BillPlan | null,
   read: ((IntervalReading | BillReading) & { guesses: Guess[] }) | null,
 ): Common {
-  const grid = plan && 'grid' in plan ? plan.grid : opened.grid;
+  // A table that is turned is shown turned; cells filled down are shown as the file has them.
+  const grid = plan && 'isTransposed' in plan && plan.isTransposed ? plan.grid : opened.grid;
   const block = plan?.block ?? null;
   return {
     fileName: options.fileName,

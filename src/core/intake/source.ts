@@ -50,10 +50,7 @@ export async function openSource(bytes: Uint8Array, options: ReadOptions, isInAr
       return { load, report };
     },
     previewBills: () => previewOfBills(opened, options),
-    readBills: () => {
-      const { bills, report } = readPlannedBills(planBills(opened, options), options);
-      return { bills, report };
-    },
+    readBills: () => readPlannedBills(planBills(opened, options), options),
   };
 }
 

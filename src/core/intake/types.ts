@@ -51,7 +51,26 @@ export type IntervalRole =
   | 'ignore';
 
 /** What a column of a table of bills is taken for. */
-export type BillRole = 'period-from' | 'period-to' | 'month' | 'days' | 'quantity' | 'charge' | 'total' | 'ignore';
+export type BillRole =
+  | 'period-from'
+  | 'period-to'
+  | 'period' // first and last day in one cell
+  | 'month'
+  | 'year' // beside a month that names none
+  | 'days'
+  | 'meter' // account, meter or service point of the row
+  | 'invoice'
+  | 'read-type' // estimated, actual, corrected, credit note ...
+  | 'quantity'
+  | 'charge'
+  | 'rate' // price of one of the charges
+  | 'total'
+  | 'line-label' // a row a line of the bill: what the line is for
+  | 'line-quantity'
+  | 'line-unit'
+  | 'line-rate'
+  | 'line-amount'
+  | 'ignore';
 
 /** What the figures of a column measure. */
 export type Measure = 'energy' | 'power' | 'register';
@@ -70,6 +89,10 @@ export interface ColumnUse {
   factor?: number;
   /** Bills: name of the quantity (kwh, kwhPeak, maxKw, billedKw, maxKva, kvarh, kvarhLeading, powerFactor ...). */
   quantity?: string;
+  /** Bills, role `rate`: name of the column of the charge it prices. */
+  charge?: string;
+  /** Bills, role `rate`: name of the column of the quantity it is multiplied with. */
+  times?: string;
   /** Wide layout: start of the reading, minutes after local midnight. */
   minuteOfDay?: number;
 }
@@ -101,13 +124,25 @@ export interface ColumnMap {
   headerRow?: number | null;
   /** First row of readings or bills, 1 is the first row of the file. */
   firstRow?: number;
-  layout?: 'long' | 'wide' | 'transposed';
+  /** `items`: bills with a row for each of their lines. */
+  layout?: 'long' | 'wide' | 'transposed' | 'items';
   columns?: ColumnUse[];
   stamp?: StampStyle;
   /** The meter to keep where the file holds several. */
   meter?: string;
   /** Bills: whether the last day printed belongs to the period. */
   periodEnds?: 'inclusive' | 'exclusive';
+  /** Bills: year of the first bill where the file names months alone. */
+  year?: number;
+  /** Bills: documents a person takes or leaves out against the proposal; one counts only where row and total agree. */
+  documents?: DocumentChoice[];
+}
+
+/** A person's word on one document of a file of bills. */
+export interface DocumentChoice {
+  row: number;
+  total: number | null;
+  isTaken: boolean;
 }
 
 /** Stretch of missing intervals, half-open UTC. */
@@ -143,6 +178,10 @@ export interface IntakeReport {
   columnMap?: ColumnMap;
   /** Bills: the row of the file each bill stands in, in the order of the bills. */
   billRows?: number[];
+  /** Bills: every document met in the file, in its order. */
+  documents?: BillDocument[];
+  /** Bills: lines whose quantity times rate is more than a cent off the amount. */
+  rateFaults?: RateFault[];
   /** Bills: the currency named in the file, as an ISO code, where one could be told. */
   currency?: string;
 }
@@ -166,6 +205,38 @@ export interface BillRecord {
   invoice?: string;
 }
 
+/** What a document in a file of bills is. */
+export type DocumentKind =
+  'bill' | 'estimate' | 'correction' | 'cancelled' | 'credit-note' | 'part' | 'repeat' | 'nought' | 'no-bill';
+
+/** A document met in a file of bills, and what became of it. */
+export interface BillDocument {
+  /** Row of the file it begins in (column, where a column holds a bill), and the place in words. */
+  row: number;
+  where: string;
+  invoice?: string;
+  /** Half-open; null where the file gives it none. */
+  period: { from: string; to: string } | null;
+  total: number | null;
+  kind: DocumentKind;
+  /** Position of the bill it stands in; null where it is left out. */
+  bill: number | null;
+  /** Why it stands or is left out. */
+  why: string;
+}
+
+/** A line of a bill whose quantity times rate is not its amount. */
+export interface RateFault {
+  /** Position of the bill. */
+  bill: number;
+  where: string;
+  label: string;
+  quantity: number;
+  unit: string;
+  rate: number;
+  amount: number;
+}
+
 /** How the bytes of a file were turned into cells. */
 export interface Dialect {
   encoding?: string;
@@ -187,6 +258,7 @@ export interface Guess {
     | 'clock'
     | 'step'
     | 'period-ends'
+    | 'year'
     | 'meter';
   takenAs: string;
   why: string;
@@ -264,6 +336,10 @@ export interface IntervalPreview extends Preview {
 /** What the steps Read and Match show of a table of bills. */
 export interface BillPreview extends Preview {
   kind: 'bills';
+  /** Accounts or meters met in the file, where they hold bills of the same days. */
+  meters: string[];
+  /** Every document met, also where the bills cannot be read as they stand. */
+  documents: BillDocument[];
   /** The bills as they would be kept; empty if the table cannot be read. */
   bills: BillRecord[];
 }

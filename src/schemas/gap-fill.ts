@@ -9,7 +9,9 @@ const stretch = {
   meterId: z.coerce.number().int().min(1).optional(),
 };
 const longestDays = 62;
-const isStretch = ({ fromMs, toMs }: { fromMs: number; toMs: number }) =>
+
+/** Whether a stretch is short enough to be estimated at all: a choice of ours; beyond two months there is no plant to go by. */
+export const isStretch = ({ fromMs, toMs }: { fromMs: number; toMs: number }) =>
   toMs > fromMs && toMs - fromMs <= longestDays * 86_400_000;
 const wrongStretch = {
   path: ['toMs'],

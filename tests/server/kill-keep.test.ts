@@ -125,7 +125,7 @@ async function prepared() {
 }
 
 describe('a server killed while it keeps a year of four channels', () => {
-  it('leaves all of it or nothing, and a sound database, fifty times', { timeout: 600_000 }, async () => {
+  it('leaves all of it or nothing, and a sound database, fifty times', { timeout: 900_000 }, async () => {
     await bundle();
     const { begin, intakeId } = await prepared();
     const random = noise(20_26);

@@ -194,7 +194,7 @@ export function CarpetChart({ width, height, palette = pagePalette, ...data }: C
       width={width}
       height={height}
       data={rows}
-      margin={{ top: 24, right: 10, bottom: 26, left: 0 }}
+      margin={{ top: 24, right: 10, bottom: width < narrowBelow ? 44 : 26, left: 0 }}
       role="img"
       accessibilityLayer={false}
       aria-label={name}
@@ -274,13 +274,7 @@ export function carpetTable(data: CarpetData): LedgerData {
 /** Island: the picture in its frame. */
 export function CarpetFigure({ finding, reading, fileName, ...data }: CarpetData & FigureText) {
   return (
-    <ChartFigure
-      finding={finding}
-      reading={reading}
-      fileName={fileName}
-      table={carpetTable(data)}
-      heightOf={(w) => (w < narrowBelow ? 220 : 240)}
-    >
+    <ChartFigure finding={finding} reading={reading} fileName={fileName} table={carpetTable(data)} heightOf={() => 240}>
       {(size) => <CarpetChart {...data} {...size} />}
     </ChartFigure>
   );

@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { fetchGapPreviews, fillGap } from '../../client/gap-fills';
-import type { GapPreview, GapPreviews } from '../../schemas/gap-fill';
+import { isStretch, type GapPreview, type GapPreviews } from '../../schemas/gap-fill';
 import type { ReadingGap } from '../../schemas/intake';
 import { Button } from '../ui/Button';
 import { formatCount, formatQuantity } from '../ui/format';
@@ -17,6 +17,7 @@ export interface GapChoiceProps {
 /** A gap is left missing unless somebody chooses to have it estimated; what each way would add is shown first. */
 export function GapChoice({ code, meterId, gap }: GapChoiceProps) {
   const [opened, setOpened] = useState(false);
+  if (!isStretch(gap)) return null;
   return (
     <div className="mb-3">
       <Button kind="quiet" aria-expanded={opened} onClick={() => setOpened(!opened)}>

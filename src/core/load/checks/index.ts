@@ -27,14 +27,17 @@ export function checkLoad(
   options: { timeZone: string; said?: readonly SaidEnergy[]; serviceKw?: number | null },
 ): LoadFinding[] {
   const clock = localClockOf(load, options.timeZone);
+  const zeros = zerosAtWork(load);
+  const alone = reactiveAlone(load);
   const found = [
     ...impossibleReadings(load, options.serviceKw ?? null),
     ...energyDiffers(load, options.said ?? []),
     ...spikes(load, clock),
-    ...zerosAtWork(load),
+    // Noughts of the active channel alone are told once, by what says more.
+    ...zeros.filter((one) => !alone.some(({ fromMs, toMs }) => fromMs === one.fromMs && toMs === one.toMs)),
+    ...alone,
     ...flatLines(load),
     ...poorFactors(load),
-    ...reactiveAlone(load),
     ...clockShifts(load, clock),
   ];
   return found.sort((a, b) => order[a.severity] - order[b.severity] || a.fromMs - b.fromMs);

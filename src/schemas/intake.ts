@@ -338,6 +338,8 @@ export interface DayReading {
 /** The interval of the highest mean kW and the day it lies in. */
 export interface PeakOfYear {
   ms: number;
+  /** The kept file it comes from; null where it is estimated here or came with another engagement. */
+  intakeId: number | null;
   kw: number;
   date: string;
   minute: number;

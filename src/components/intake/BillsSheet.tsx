@@ -17,6 +17,7 @@ import { MeterPart } from './MeterPart';
 import { reload } from './reload';
 import { PagesBeside } from './pages/PagesBeside';
 import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
+import { TraceOf } from './TraceOf';
 
 export interface BillsSheetProps extends BillsStation {
   /** Begin with the empty form open: one types bill after bill. */
@@ -166,6 +167,11 @@ function FormPart(props: PartProps & { bill: BillView | null; onLeave: () => voi
         onCancel={props.onLeave}
         beside={<PagesBeside key={bill?.id ?? 'new'} code={code} timeZone={timeZone} bill={bill} bills={all} />}
       />
+      {bill?.source && !bill.parts && (
+        <div className="mt-4 text-sm">
+          <TraceOf intakeId={bill.source.intakeId} from={bill.from} />
+        </div>
+      )}
     </SheetPart>
   );
 }

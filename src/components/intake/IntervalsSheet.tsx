@@ -25,6 +25,7 @@ import { intervalName, presentInWords, readingsOf } from './interval-words';
 import { MetersPart } from './MetersPart';
 import { MonthsPart } from './MonthsPart';
 import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
+import { TraceOf } from './TraceOf';
 
 export interface IntervalsSheetProps {
   code: string;
@@ -206,6 +207,7 @@ function PeakPart({ year, peak, timeZone, code }: PartProps & { peak: NonNullabl
         reading="Mean power of each interval of the day."
         fileName={`${code}-day-of-peak`}
       />
+      {peak.intakeId !== null && <TraceOf intakeId={peak.intakeId} ms={peak.ms} />}
     </SheetPart>
   );
 }

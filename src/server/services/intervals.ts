@@ -17,7 +17,7 @@ import { daysOf } from './load-days';
 import { loadFindings } from './load-findings';
 import { meteredLoad } from './metered-load';
 import { metersOf, presentMeter } from './meters';
-import { keptSpans, loadSeries } from './readings';
+import { keptSpans, laidSeries, loadSeries } from './readings';
 
 const minuteMs = 60_000;
 const missing = 2;
@@ -58,7 +58,7 @@ export async function intervalsStation(opened: OpenEngagement, meter = opened.me
   const kept = files.filter((file) => file.state === 'kept');
   const empty = { meter: presentMeter(meter), files, kept: [], picture: null, timeZone, fromMs, toMs, year: null };
   if (spans.length === 0) return empty;
-  const load = await loadSeries(meter.id, fromMs, toMs);
+  const { load, sources } = await laidSeries(meter.id, fromMs, toMs);
   const gaps = gapsOf(load);
   const allSpans = await keptSpans(meter.id, -8.64e15, 8.64e15);
   return {
@@ -68,7 +68,7 @@ export async function intervalsStation(opened: OpenEngagement, meter = opened.me
     year: {
       stepMinutes: load.stepMinutes,
       ...countsOf(load),
-      peak: peakOf(load, timeZone),
+      peak: peakOf(load, timeZone, (at) => kept.find((file) => file.id === sources[at])?.id ?? null),
       gaps: gaps.slice(0, longestGapList),
       gapCount: gaps.length,
       fills: await listFills(meter.id, fromMs, toMs),
@@ -141,7 +141,7 @@ const meanOf = (values: Float64Array, index: number, stepMinutes: number) => {
 };
 
 /** The interval of the highest mean kW with the readings of its day. */
-function peakOf(load: LoadSeries, timeZone: string): PeakOfYear | null {
+function peakOf(load: LoadSeries, timeZone: string, fileOf: (at: number) => number | null): PeakOfYear | null {
   const at = peakIndex(load);
   if (at === null) return null;
   const { stepMinutes } = load;
@@ -160,7 +160,7 @@ function peakOf(load: LoadSeries, timeZone: string): PeakOfYear | null {
   }
   const kw = meanOf(load.kwh, at, stepMinutes) ?? 0;
   const kvarLagging = meanOf(load.kvarhLagging, at, stepMinutes);
-  return { ms, kw, date, minute: (at - first) * stepMinutes, kvarLagging, day };
+  return { ms, intakeId: fileOf(at), kw, date, minute: (at - first) * stepMinutes, kvarLagging, day };
 }
 
 function gapsOf(load: LoadSeries): ReadingGap[] {

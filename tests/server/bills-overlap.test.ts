@@ -69,6 +69,19 @@ describe('a file of bills that overlaps kept ones', () => {
     expect(await totals(engagement.id)).toEqual([...old, fresh[2]]);
   }, 240_000);
 
+  it('keeps invoice number, estimated reading, and quantity and rate of a line, as the file prints them', async () => {
+    const { consultant, engagement, code } = await scene();
+    const printed = `Invoice,From,To,Read type,kWh,Energy rate USD/kWh,Energy charge USD,Total USD
+A-101,2025-11-01,2025-11-30,Actual,1000,0.05,50.00,50.00
+A-102,2025-12-01,2025-12-31,Estimated,1200,0.05,60.00,60.00
+`;
+    await bringAndKeep(consultant, code, 'bills', 'rates.csv', printed);
+    expect(await listBills(engagement.id)).toMatchObject([
+      { invoice: 'A-101', estimated: false, lines: [{ amountMinor: 5000, quantity: 1000, unit: 'kWh', rate: 0.05 }] },
+      { invoice: 'A-102', estimated: true, lines: [{ amountMinor: 6000, quantity: 1200, unit: 'kWh', rate: 0.05 }] },
+    ]);
+  }, 240_000);
+
   it('that holds the same bills again leaves nothing to keep beside the old ones', async () => {
     const { consultant, engagement, code } = await scene();
     await bringAndKeep(consultant, code, 'bills', 'first.csv', billCsv);

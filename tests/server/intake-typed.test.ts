@@ -48,7 +48,6 @@ describe('readTyped', () => {
           { label: 'Credit', amountMinor: -500, quantity: 100, unit: 'kWh', rate: -0.05 },
         ],
         totalMinor: 41_000,
-        places: {},
       },
     });
   });

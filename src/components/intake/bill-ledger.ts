@@ -65,6 +65,7 @@ export function readBill(bill: BillRecord, index: number, currency: string, row:
     })),
     totalMinor: bill.total === null ? null : toMinorUnits(bill.total, currency),
     invoice: bill.invoice,
+    isEstimated: bill.isEstimated,
     source: row === undefined ? '' : `row ${row}`,
   };
 }

@@ -112,10 +112,11 @@ function placedBills(settled: readonly Settled[]): PlacedBill[] {
     .map((draft) => ({ draft, bill: billOf(draft) }));
 }
 
-const billOf = ({ dated, quantities, charges, total, invoice }: BillDraft): BillRecord => ({
+const billOf = ({ dated, quantities, charges, total, invoice, marks }: BillDraft): BillRecord => ({
   period: { from: isoDate(dated.from), to: isoDate(dated.to) },
   quantities,
   charges,
   total,
   ...(invoice ? { invoice } : {}),
+  ...(marks.has('estimated') && !marks.has('corrected') ? { isEstimated: true } : {}),
 });

@@ -215,6 +215,8 @@ export interface BillRecord {
   total: number | null;
   /** Number of the invoice as printed. */
   invoice?: string;
+  /** The file says that the reading is estimated. */
+  isEstimated?: boolean;
 }
 
 /** What a document in a file of bills is. */

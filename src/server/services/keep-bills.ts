@@ -102,6 +102,7 @@ function billValues(bill: BillRecord, currency: string, sourceRow: string | null
   const parsed = billInput.safeParse({
     ...bill.period,
     invoice: bill.invoice,
+    estimated: bill.isEstimated ?? false,
     quantities: bill.quantities,
     lines: bill.charges.map(({ label, amount, quantity, unit, rate }) => ({
       label: lineLabel(label, currency),

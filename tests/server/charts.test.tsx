@@ -226,6 +226,42 @@ describe('charts drawn without a browser', () => {
   });
 });
 
+describe('the carpet of kvar and power factor', () => {
+  const input = {
+    stepMinutes: 360,
+    days: [
+      { date: '2026-03-01', readings: [400, 300, 0, null], kvar: [300, -400, 0, null], estimated: [1] },
+      { date: '2026-03-02', readings: [600, 600, 600, 600], kvar: [800, 0, 80, -80] },
+    ],
+  };
+
+  it('packs three pictures where reactive energy is carried, else one', async () => {
+    const { packCarpets } = await import('@/components/charts/carpet');
+    const [kw, kvar, pf] = packCarpets(input);
+    expect([kw!.unit, kvar!.unit, pf!.unit]).toEqual(['kW', 'kvar', 'pf']);
+    // 400 and 300 make 500: pf 0.8 lagging, step 4 (below 0.98, 0.95, 0.9, 0.85, not below 0.8); 300 and -400: pf 0.6 leading, the
+    // poorest step; nothing flows: 1; 600 and 800 make 1,000: 0.6 lagging; 600 and 80 make 605.3: 0.991.
+    expect(pf!.days.map(({ steps }) => steps)).toEqual(['4g0-', '600a']);
+    expect(kvar!.days[0]).toMatchObject({ least: -400, greatest: 300, missing: 1, estimated: [[1, 1]] });
+    expect(kvar!.days[0]!.steps).toMatch(/^[1-6][b-g]0-$/);
+    expect(packCarpets({ ...input, days: [{ date: '2026-03-01', readings: [1, 2] }] })).toHaveLength(1);
+  });
+
+  it('draws lagging in copper, leading in verdigris and hatched, what is estimated hatched, each named in the key', async () => {
+    const { packCarpets } = await import('@/components/charts/carpet');
+    const { CarpetChart, carpetTable } = await import('@/components/charts/CarpetChart');
+    const [, kvar] = packCarpets(input);
+    const svg = await draw(<CarpetChart {...kvar!} {...size} />);
+    const fills = [...svg.querySelectorAll('path')].map((path) => path.getAttribute('fill'));
+    expect(fills).toEqual(expect.arrayContaining([lightPalette.copper, lightPalette.verdigris]));
+    expect(fills.filter((fill) => fill?.startsWith('url(#hatch-s')).length).toBeGreaterThan(0);
+    expect(fills.filter((fill) => fill?.startsWith('url(#hatch-p')).length).toBeGreaterThan(0);
+    expect(words(svg)).toEqual(expect.arrayContaining(['lagging', 'leading', 'estimated', 'missing']));
+    const [first] = carpetTable(kvar!).rows;
+    expect(first!.cells).toMatchObject({ least: { value: -400, tone: 'leading' }, estimated: 1, missing: 1 });
+  });
+});
+
 describe('ledgerCsv', () => {
   it('keeps text that a spreadsheet would run as a formula as text', () => {
     const columns = [

@@ -9,7 +9,7 @@ import { afterAll, describe, expect, it } from 'vitest';
 import { sequelize } from '@/server/db/connection';
 import { inTx } from '@/server/db/tx';
 import { Intake } from '@/server/models/Intake';
-import { buildEngagement, buildIntake, buildUser } from '../setup/build';
+import { buildEngagement, buildIntake } from '../setup/build';
 
 const rounds = 50;
 /** A year of UTC months, each with four channels. */
@@ -25,7 +25,8 @@ const bundle = () =>
     bundle: true,
     platform: 'node',
     format: 'esm',
-    packages: 'external',
+    external: ['sequelize', 'sqlite3', 'xlsx'],
+    banner: { js: "import { createRequire } from 'node:module'; const require = createRequire(import.meta.url);" },
     logLevel: 'error',
   });
 
@@ -50,8 +51,8 @@ class Keeper {
   private readonly ended: Promise<void>;
   private readonly child: ChildProcess;
 
-  constructor(dataDir: string, ids: number[]) {
-    this.child = spawn(process.execPath, [program, ...ids.map(String)], {
+  constructor(dataDir: string, intakeId: number) {
+    this.child = spawn(process.execPath, [program, String(intakeId)], {
       env: {
         PATH: process.env.PATH,
         NODE_ENV: 'test',
@@ -109,8 +110,7 @@ async function leftIn(dataDir: string, intakeId: number) {
 }
 
 async function prepared() {
-  const user = await buildUser();
-  const engagement = await buildEngagement({ memberIds: [user.id], timeZone: 'UTC' });
+  const engagement = await buildEngagement({ timeZone: 'UTC' });
   const intake = await buildIntake({ engagementId: engagement.id, state: 'read' });
   const base = path.join(folder, 'base.sqlite');
   await sequelize.query(`VACUUM INTO '${base}'`);
@@ -119,7 +119,7 @@ async function prepared() {
     const dataDir = path.join(folder, `round-${round}`);
     mkdirSync(dataDir);
     copyFileSync(base, path.join(dataDir, 'counterlag.sqlite'));
-    return { dataDir, keeper: new Keeper(dataDir, [user.id, intake.id]) };
+    return { dataDir, keeper: new Keeper(dataDir, intake.id) };
   };
   return { begin, intakeId: intake.id };
 }

@@ -168,7 +168,7 @@ function FormPart(props: PartProps & { bill: BillView | null; onLeave: () => voi
         beside={<PagesBeside key={bill?.id ?? 'new'} code={code} timeZone={timeZone} bill={bill} bills={all} />}
       />
       {bill?.source && !bill.parts && (
-        <div className="mt-4 text-sm">
+        <div className="mt-4">
           <TraceOf intakeId={bill.source.intakeId} from={bill.from} />
         </div>
       )}

@@ -26,7 +26,7 @@ export function TraceOf({ intakeId, ...at }: TraceOfProps) {
     );
   };
   return (
-    <div className="trace-of">
+    <div className="mt-2 text-sm">
       <Button kind="quiet" aria-expanded={open} aria-controls={body} onClick={toggle}>
         {open ? 'Hide the rows of the file' : 'Show the rows of the file'}
       </Button>
@@ -46,13 +46,13 @@ function Rows({ intakeId, trace }: { intakeId: number; trace: Trace }) {
   const heads = [unit === 'row' ? 'Row' : unit === 'line' ? 'Line' : 'Column', ...names];
   return (
     <>
+      <p>
+        <a className="text-link" href={originalPath(intakeId)} download>
+          {place}
+        </a>
+      </p>
       <div className="first-rows" role="region" aria-label={`Rows of ${place}`} tabIndex={0}>
         <table>
-          <caption>
-            <a className="text-link" href={originalPath(intakeId)} download>
-              {place}
-            </a>
-          </caption>
           <thead>
             <tr>
               {heads.map((head, index) => (

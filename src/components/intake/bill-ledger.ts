@@ -174,7 +174,9 @@ function columnsOf(bills: LedgerBill[], currency: string): LedgerColumn[] {
     ...labels.map((label) => ({ ...money(lineKey(label), label), spare: true })),
     ...(others ? [{ ...money('others', 'Other lines'), spare: true }] : []),
     { ...money('total', 'Printed total'), strong: true },
-    { key: 'less', head: 'Lines less total', kind: 'money', currency, unit: currency, signed: true },
+    ...(bills.some((bill) => (lessTotal(bill) ?? 0) !== 0)
+      ? [{ key: 'less', head: 'Lines less total', kind: 'money' as const, currency, unit: currency, signed: true }]
+      : []),
     { key: 'source', head: 'Source', quiet: true },
   ];
 }

@@ -43,6 +43,7 @@ export default defineConfig({
         '@resvg/resvg-js',
         '@node-rs/argon2',
         'nodemailer',
+        'pdfmake',
         'umzug',
         'pino',
         'date-holidays',

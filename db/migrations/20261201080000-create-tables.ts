@@ -14,10 +14,12 @@ import {
   whole,
   type Columns,
 } from './tables/columns';
+import { attachmentChecks, attachmentIndexes, attachmentTables } from './tables/attachments';
 import { billChecks, billTables } from './tables/bills';
 import { gapFillChecks, gapFillTables } from './tables/gap-fills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
+import { requestChecks, requestIndexes, requestTables, requestUniques } from './tables/requests';
 
 /** Columns of the tables, in the order in which the tables can be made. */
 const tables: Record<string, Columns> = {
@@ -97,6 +99,7 @@ const tables: Record<string, Columns> = {
   ...intakeTables,
   ...gapFillTables,
   ...billTables,
+  ...attachmentTables,
   tariff_choices: {
     ...id,
     engagement_id: { ...link('engagements', false, 'CASCADE'), unique: true },
@@ -152,6 +155,7 @@ const tables: Record<string, Columns> = {
     ...version,
     ...stamps,
   },
+  ...requestTables,
   plans: {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),
@@ -252,7 +256,9 @@ const tables: Record<string, Columns> = {
 const indexes: Record<string, string[][]> = {
   sessions: [['expires']],
   ...intakeIndexes,
+  ...attachmentIndexes,
   ...findingIndexes,
+  ...requestIndexes,
   hour_entries: [['user_id', 'day']],
   trail_rows: [['subject', 'subject_id'], ['actor_id'], ['at']],
 };
@@ -266,7 +272,9 @@ const checks: Record<string, string[]> = {
   jobs: ["state IN ('running','done','failed','cancelled')"],
   letters: ["state IN ('sent','failed')"],
   ...billChecks,
+  ...attachmentChecks,
   ...findingChecks,
+  ...requestChecks,
   hour_entries: ['minutes > 0', 'minutes <= 1440'],
   engagements: ['year_from < year_to'],
 };
@@ -276,7 +284,7 @@ async function addChecks(database: QueryInterface, table: string): Promise<void>
     for (const event of ['INSERT', 'UPDATE']) {
       const name = `${table}_${event.toLowerCase()}_${checks[table]?.indexOf(condition)}`;
       const onNew = condition.replace(
-        /\b(role|client_id|kind|state|method|family|way|period_from|period_to|minutes|year_from|year_to)\b/g,
+        /\b(role|client_id|kind|state|method|family|way|media_type|period_from|period_to|minutes|year_from|year_to)\b/g,
         'NEW.$1',
       );
       await database.sequelize.query(
@@ -314,6 +322,7 @@ export async function up(database: QueryInterface): Promise<void> {
   await database.addIndex('editions', ['engagement_id', 'number'], { unique: true, name: 'editions_number' });
   await database.addIndex('schedule_revisions', ['schedule_id', 'number'], { unique: true, name: 'revisions_number' });
   await database.addIndex('schedule_drafts', ['schedule_slug', 'user_id'], { unique: true, name: 'drafts_once' });
+  for (const [table, columns, name] of requestUniques) await database.addIndex(table, columns, { unique: true, name });
 }
 
 /** Takes it away again. */

@@ -10,6 +10,8 @@ import { demoAccounts } from '../../src/server/demo-accounts';
 import { actAs } from '../../src/server/db/context';
 import { getEnv } from '../../src/server/env';
 import type { Actor } from '../../src/server/policies/actor';
+import { joinBills } from '../../src/server/services/bill-joins';
+import { addBill } from '../../src/server/services/bills';
 import { createEngagement } from '../../src/server/services/create-engagement';
 import {
   editionReaders,
@@ -29,9 +31,11 @@ import { createSchedule, keepRevision } from '../../src/server/services/schedule
 import { startSearch } from '../../src/server/services/search';
 import { chooseSchedule } from '../../src/server/services/tariff';
 import { sendUtilityLetter, utilityLetterDraft } from '../../src/server/services/utility-letters';
+import { attachJuneBill } from './demo/bill-pages';
 import { addPersonWithPassword, bringIn, daysAgo, ended } from './demo/helpers';
-import { harrowBills, harrowSchedule } from './demo/harrow';
+import { harrowBills, harrowInvoicesOfMay, harrowSchedule } from './demo/harrow';
 import { kestrelBillsFile, kestrelMeterFile } from './demo/kestrel-year';
+import { askKestrel } from './demo/requests';
 import { earlierAdjustedKw, kestrel, kestrelMotors } from './demo/scenario';
 
 const [ilse, tom, sana, mira, jon] = demoAccounts.people;
@@ -115,6 +119,7 @@ async function auditKestrel(consultant: Actor, opened: OpenEngagement): Promise<
     takeNewText: false,
   });
   for (const motor of kestrelMotors) await createMotor(opened, motor);
+  await attachJuneBill(consultant, opened);
 }
 
 /** Puts the greatest finding to the utility; the other waits for somebody. */
@@ -185,6 +190,10 @@ async function openHarrow({ ilse: partner, sana: consultant }: Staff): Promise<O
     rights: readerRights,
   });
   await bringIn(consultant, opened, { kind: 'bills', ...harrowBills() });
+  const invoices = [];
+  for (const invoice of harrowInvoicesOfMay) invoices.push(await addBill(consultant, code, invoice));
+  const note = 'The store changed hands on 20 May; each owner got an invoice.';
+  await joinBills(consultant, code, { bills: invoices, note });
   return opened;
 }
 
@@ -227,6 +236,7 @@ export async function up(): Promise<void> {
   await inTheNameOf(staff.tom, () => auditKestrel(staff.tom, works));
   await inTheNameOf(staff.tom, () => writeToUtility(staff.tom, works));
   await inTheNameOf(staff.tom, () => proposeToKestrel(staff.tom, works));
+  await inTheNameOf(staff.tom, () => askKestrel(staff.tom, works, mira.email));
   const pier = await inTheNameOf(staff.sana, () => openHarrow(staff));
   await inTheNameOf(staff.sana, () => writeHarrowSchedule(staff.sana));
   await inTheNameOf(staff.tom, () => log(staff.tom, works, tomsHours));

@@ -4,8 +4,10 @@ import { call } from './api';
 const path = (code: string) => `/api/engagements/${encodeURIComponent(code)}/gap-fills`;
 
 /** What each way to estimate a gap would add. */
-export const fetchGapPreviews = (code: string, { fromMs, toMs }: { fromMs: number; toMs: number }) =>
-  call<GapPreviews>('GET', `${path(code)}?${new URLSearchParams({ fromMs: String(fromMs), toMs: String(toMs) })}`);
+export const fetchGapPreviews = (code: string, stretch: { meterId: number; fromMs: number; toMs: number }) => {
+  const entries = Object.entries(stretch).map(([name, value]) => [name, String(value)]);
+  return call<GapPreviews>('GET', `${path(code)}?${new URLSearchParams(entries)}`);
+};
 
 /** Has a gap estimated. */
 export const fillGap = (code: string, input: GapFillInput) => call<GapFillView>('POST', path(code), input);

@@ -1,4 +1,5 @@
-import type { BillInput, BillView } from '../schemas/bill';
+import type { Trace, TracePoint } from '../core/intake';
+import type { BillInput, BillView, MeteredPeriod } from '../schemas/bill';
 import type { IntakeOverlap, IntakePicture, IntakeView, MatchInput, OverlapChoice } from '../schemas/intake';
 import { call, sendFile } from './api';
 
@@ -8,12 +9,13 @@ type Seen = { id: number; version: number };
 /** Brings a file in; `onProgress` hears the share that has gone up. */
 export function bringIn(
   code: string,
-  kind: Kind,
+  { kind, meterId }: { kind: Kind; meterId?: number },
   file: File,
   onProgress: (share: number) => void,
   signal: AbortSignal,
 ): Promise<IntakeView> {
   const query = new URLSearchParams({ kind, fileName: file.name });
+  if (meterId !== undefined) query.set('meterId', String(meterId));
   return sendFile(`/api/engagements/${encodeURIComponent(code)}/uploads?${query}`, file, onProgress, signal);
 }
 
@@ -41,6 +43,16 @@ export const undoIntake = step('undo');
 /** Puts a file aside. */
 export const giveUpIntake = step('give-up');
 
+/** The file as it is now. */
+export const fetchIntake = (id: number) => call<IntakeView>('GET', `/api/intakes/${id}`);
+
+/** Reads a file again that could not be read, or whose reading was stopped. */
+export const readAgain = ({ id, version }: Seen) => call<IntakeView>('POST', `/api/intakes/${id}/read`, { version });
+
+/** Where in its file a kept value stands. */
+export const fetchTrace = (id: number, at: TracePoint) =>
+  call<Trace>('GET', `/api/intakes/${id}/trace?${'ms' in at ? `ms=${at.ms}` : `from=${at.from}`}`);
+
 /** Reads the file again as corrected. */
 export const matchIntake = (id: number, input: MatchInput) =>
   call<IntakeView>('POST', `/api/intakes/${id}/match`, input);
@@ -59,6 +71,18 @@ const billsPath = (code: string) => `/api/engagements/${encodeURIComponent(code)
 
 /** Keeps a bill typed by hand. */
 export const addBill = (code: string, bill: BillInput) => call<BillView>('POST', billsPath(code), bill);
+
+/** Joins invoices to one bill. */
+export const joinBills = (code: string, bills: Seen[], note: string) =>
+  call<BillView>('POST', `${billsPath(code)}/join`, { bills: bills.map(({ id, version }) => ({ id, version })), note });
+
+/** Takes a joined bill apart again. */
+export const takeBillApart = (code: string, { id, version }: Seen) =>
+  call<BillView[]>('POST', `${billsPath(code)}/${id}/apart`, { version });
+
+/** What the kept readings say of a period; null where there are none. */
+export const fetchMetered = (code: string, { from, to }: { from: string; to: string }) =>
+  call<MeteredPeriod | null>('GET', `${billsPath(code)}/metered?${new URLSearchParams({ from, to })}`);
 
 /** Changes a kept bill against the version seen. */
 export const changeBill = (code: string, { id, version }: Seen, bill: BillInput) =>

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { isCalendarDate } from '../core/load';
+import { placesShape, type BillPages, type Places } from './attachment';
 import type { IntakeRow } from './intake';
 
 /** A line charge as printed. */
@@ -7,6 +8,11 @@ export interface BillLineView {
   id: number;
   label: string;
   amountMinor: number;
+  /** What the amount was worked out from, where the bill prints it. */
+  quantity?: number | null;
+  unit?: string | null;
+  /** Per unit, in major units of the currency; with the unit `%` a percentage of the quantity. */
+  rate?: number | null;
 }
 
 /** A kept bill with its lines, period [from, to). */
@@ -28,10 +34,34 @@ export interface BillView {
   differenceMinor: number | null;
   /** The file the bill came in; null where it was typed. */
   source: { intakeId: number; fileName: string; row: string | null } | null;
+  /** The bill itself, as PDF or photo. */
+  pages?: BillPages[];
+  /** Where on the pages a value was taken from, by field. */
+  places?: Places;
+  /** Number of the invoice as printed; null where none is known, or where several are joined. */
+  invoice?: string | null;
+  /** Day the meter was read. */
+  readOn?: string | null;
+  /** Whether the utility estimated the reading. */
+  estimated?: boolean;
+  /** The invoices that make this bill together, in order; absent where one invoice is the bill. */
+  parts?: BillView[];
+  /** Why they are one bill, as a person wrote it. */
+  joinNote?: string | null;
 }
 
 /** Days of a half-open period. */
 export const daysBetween = (from: string, to: string) => Math.round((Date.parse(to) - Date.parse(from)) / 86_400_000);
+
+const demandLine = /demand|capacity|\bkw\b|\bkva\b/i;
+const demandQuantities = ['billedKw', 'billedKva'];
+
+/** Whether a bill asks for demand: a line of that name with an amount, or a billed demand. */
+export function billsDemand({ lines, quantities }: BillView): boolean {
+  const named = lines.filter((line) => demandLine.test(line.label));
+  if (named.length > 0) return named.some((line) => line.amountMinor !== 0);
+  return demandQuantities.some((name) => (quantities[name] ?? 0) > 0);
+}
 
 /** A quantity that bills print, with its unit. */
 export interface BillQuantity {
@@ -58,8 +88,8 @@ export const billQuantities: readonly BillQuantity[] = [
 ];
 
 const unitEndings: [RegExp, string][] = [
-  [/^kwh/i, 'kWh'],
-  [/^kvarh/i, 'kvarh'],
+  [/kwh/i, 'kWh'],
+  [/kvarh/i, 'kvarh'],
   [/kvar$/i, 'kvar'],
   [/kva$/i, 'kVA'],
   [/kw$/i, 'kW'],
@@ -90,6 +120,19 @@ const quantity = z
   .min(0, 'A printed quantity is not negative.')
   .max(1e12, 'The quantity is too large.');
 
+const signedNumber = z
+  .number('Write a number, such as 0.00376.')
+  .min(-1e12, 'The number is too large.')
+  .max(1e12, 'The number is too large.');
+
+/** A period asked about, half-open. */
+export const billPeriod = z
+  .object({ from: localDate, to: localDate })
+  .refine(({ from, to }) => from < to && daysBetween(from, to) <= 400, {
+    path: ['to'],
+    message: 'The period ends after it begins and covers at most 400 days.',
+  });
+
 /** A bill typed or changed by hand, period half-open. */
 export const billInput = z
   .object({
@@ -110,15 +153,28 @@ export const billInput = z
             .min(1, 'Name the line as the bill does.')
             .max(120, 'The name is longer than 120 characters.'),
           amountMinor,
+          quantity: signedNumber.nullish(),
+          unit: z.string().trim().max(20, 'The unit is longer than 20 characters.').nullish(),
+          rate: signedNumber.nullish(),
         }),
       )
       .max(60, 'A bill has at most 60 lines here; add small ones together.'),
     totalMinor: amountMinor.nullable(),
+    places: placesShape.optional(),
+    /** Waiting pages that go with the bill. */
+    attachmentIds: z.array(z.number().int().positive()).max(50, 'A bill takes at most 50 files of pages.').optional(),
+    invoice: z.string().trim().max(60, 'The number is longer than 60 characters.').nullish(),
+    readOn: localDate.nullish(),
+    estimated: z.boolean().optional(),
   })
   .refine((bill) => bill.from < bill.to, { path: ['to'], message: 'The last day lies before the first.' })
   .refine((bill) => !(bill.from < bill.to) || daysBetween(bill.from, bill.to) <= 400, {
     path: ['to'],
     message: 'A bill covers at most 400 days. Look at the years of the two dates.',
+  })
+  .refine((bill) => !bill.readOn || Math.abs(daysBetween(bill.to, bill.readOn)) <= 120, {
+    path: ['readOn'],
+    message: 'The meter is read about the end of the period. Look at the month and the year.',
   })
   .refine((bill) => bill.lines.length > 0 || bill.totalMinor !== null, {
     path: ['totalMinor'],
@@ -130,6 +186,29 @@ export type BillInput = z.infer<typeof billInput>;
 /** A changed bill carries the version its editor saw. */
 export const billChange = z.object({ version: z.number().int().min(0), bill: billInput });
 export const billRemoval = z.object({ version: z.number().int().min(0) });
+
+/** The most days that invoices joined to one bill may cover: two months. */
+export const mostJoinedDays = 70;
+
+/** Invoices that make one bill together, each with the version seen. */
+export const billJoin = z.object({
+  bills: z
+    .array(z.object({ id: z.number().int().positive(), version: z.number().int().min(0) }))
+    .min(2, 'Name the invoices that make one bill: two or more.')
+    .max(6, 'At most six invoices make one bill.')
+    .refine((bills) => new Set(bills.map(({ id }) => id)).size === bills.length, 'Name each invoice once.'),
+  note: z.string().trim().max(500, 'The reason is longer than 500 characters.').default(''),
+});
+export type BillJoin = z.infer<typeof billJoin>;
+
+/** Bills that look like the invoices of one bill. */
+export interface JoinSuggestion {
+  ids: number[];
+  from: string;
+  to: string;
+  /** On how many of them demand is billed: on one, where they are one bill. */
+  demandBilledOn: number;
+}
 
 /** A stretch of the engagement's year that no bill covers, or that two cover, [from, to). */
 export interface PeriodFlaw {
@@ -159,11 +238,40 @@ export function periodFlaws(
   return flaws;
 }
 
-/** Energy of one bill as printed and as the kept readings sum it. */
+/** One printed quantity beside what the kept readings say. */
+export interface MeterFigure {
+  name: string;
+  printed: number;
+  /** From the readings that are present; null where the meter does not record it. */
+  metered: number | null;
+  /** Null where readings are missing or it is not metered, and nothing contradicts. */
+  agrees: boolean | null;
+}
+
+/** One bill beside the kept readings of its period. */
 export interface MeterCheck {
   billId: number;
-  billedKwh: number;
-  meterKwh: number;
+  /** Readings of the period: all, missing, estimated. */
+  expected: number;
+  missing: number;
+  estimated: number;
+  figures: MeterFigure[];
+  /** What differs and what would make it agree, a sentence each. */
+  remarks: string[];
+}
+
+/** What the kept readings say of a period, for the form; `null` where none of it is kept or metered. */
+export interface MeteredPeriod {
+  expected: number;
+  missing: number;
+  estimated: number;
+  kwh: number;
+  kvarh: number | null;
+  kvarhLeading: number | null;
+  maxKw: number | null;
+  maxKva: number | null;
+  powerFactorAtPeak: number | null;
+  powerFactorOfPeriod: number | null;
 }
 
 /** The station Bills. */
@@ -177,6 +285,8 @@ export interface BillsStation {
   /** The others: earlier ones, and later ones for the proof. */
   laterBills: BillView[];
   files: IntakeRow[];
-  /** Bills with a printed energy whose period has every reading. */
+  /** Bills of the year beside the readings, where any of their period is kept. */
   meterChecks: MeterCheck[];
+  /** Bills that look like the invoices of one bill. */
+  joinable: JoinSuggestion[];
 }

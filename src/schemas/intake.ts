@@ -1,7 +1,9 @@
 import { z } from 'zod';
 import type { BillPreview, ColumnEvidence, ColumnMap, Guess, IntakeProblem, IntervalPreview } from '../core/intake';
-import { isTimeZone, type LoadFinding } from '../core/load';
+import { isCalendarDate, isTimeZone, type LoadFinding } from '../core/load';
+import type { MeterView } from './engagement';
 import type { GapFillView } from './gap-fill';
+import type { JobProgress } from './job';
 
 export type IntakePreview = IntervalPreview | BillPreview;
 
@@ -29,7 +31,7 @@ export interface IntakeRow {
   fileName: string;
   bytes: number;
   sha256: string;
-  state: 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
+  state: 'reading' | 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
   /** Who brought it in. */
   broughtBy: string | null;
   broughtAt: string;
@@ -47,6 +49,8 @@ export interface IntakeView extends IntakeRow {
   confirmed: string[];
   preview: IntakePreview | null;
   problems: IntakeProblem[];
+  /** The job that reads it; null where none does. */
+  reading: JobProgress | null;
   /** The remembered map it was read with. */
   readWith: RememberedMap | null;
   /** Remembered maps of files of this shape, newest first. */
@@ -95,14 +99,25 @@ const columnUse = z.object({
     'reactive-signed',
     'apparent',
     'power-factor',
+    'sense',
     'quality',
     'period-from',
     'period-to',
+    'period',
     'month',
+    'year',
     'days',
+    'invoice',
+    'read-type',
     'quantity',
     'charge',
+    'rate',
     'total',
+    'line-label',
+    'line-quantity',
+    'line-unit',
+    'line-rate',
+    'line-amount',
     'ignore',
   ]),
   unit: shortText.optional(),
@@ -113,7 +128,9 @@ const columnUse = z.object({
     .max(1e9, 'The multiplier is too large.')
     .optional(),
   quantity: z.string().max(60).optional(),
-  minuteOfDay: z.number().int().min(0).max(1440).optional(),
+  charge: z.string().max(1000).optional(),
+  times: z.string().max(1000).optional(),
+  minuteOfDay: z.number().int().min(0).max(1499).optional(),
 });
 
 /** The whole map as a person corrected it. */
@@ -124,7 +141,7 @@ export const columnMapInput = z.object({
   decimalMark: z.enum(['.', ',']).optional(),
   headerRow: z.number().int().min(1).max(1_000_000).nullable().optional(),
   firstRow: z.number().int().min(1).max(1_000_000).optional(),
-  layout: z.enum(['long', 'wide', 'transposed']).optional(),
+  layout: z.enum(['long', 'wide', 'transposed', 'items']).optional(),
   columns: z.array(columnUse).max(5000).optional(),
   stamp: z
     .object({
@@ -135,7 +152,15 @@ export const columnMapInput = z.object({
     })
     .optional(),
   meter: shortText.optional(),
+  member: z.string().max(1000).optional(),
   periodEnds: z.enum(['inclusive', 'exclusive']).optional(),
+  year: z.number().int().min(1970).max(2200).optional(),
+  documents: z
+    .array(
+      z.object({ row: z.number().int().min(1).max(1_000_000), total: z.number().nullable(), isTaken: z.boolean() }),
+    )
+    .max(2000)
+    .optional(),
 }) satisfies z.ZodType<ColumnMap>;
 
 const version = z.number().int().min(0);
@@ -203,21 +228,50 @@ export interface IntervalsOverlap {
   keepNewRefused: string | null;
 }
 
+/** What of a bill stands beside another one of the same time. */
+export interface BillBeside {
+  from: string;
+  to: string;
+  invoice: string | null;
+  isEstimated: boolean;
+  kwh: number | null;
+  /** Metered or else billed demand. */
+  kw: number | null;
+  /** Printed, or the sum of the lines where none is. */
+  totalMinor: number | null;
+}
+
 /** Two bills of one time: that of the file and the kept ones it shares days with. */
 export interface BillsBeside {
-  comes: { from: string; to: string; totalMinor: number | null };
-  kept: { id: number; from: string; to: string; totalMinor: number | null }[];
+  comes: BillBeside & { row: string | null };
+  kept: (BillBeside & { id: number; fileName: string | null; isJoined: boolean })[];
+  /** In what they differ, a sentence each; empty where they are the same bill twice. */
+  differences: string[];
 }
 
 /** The kept bills that share days with those of a file. */
 export interface BillsOverlap {
   kind: 'bills';
   asks: boolean;
+  currency: string;
+  /** Bills of the file that share no day with a kept one. */
+  apart: number;
   bills: BillsBeside[];
 }
 
 /** What is kept and what comes, side by side. */
 export type IntakeOverlap = IntervalsOverlap | BillsOverlap;
+
+const latestMs = 8.64e15;
+
+/** What is traced to its file: the interval that begins at an instant, or the bill whose period begins on a day. */
+export const tracePoint = z.union(
+  [
+    z.object({ ms: z.coerce.number().int().min(-latestMs).max(latestMs) }),
+    z.object({ from: z.string().refine(isCalendarDate) }),
+  ],
+  'Say ms, the beginning of an interval, or from, the first day of a bill as YYYY-MM-DD.',
+);
 
 /** Mean kW of every interval by local day, for the carpet picture; null where missing. */
 export interface LoadDays {
@@ -284,11 +338,25 @@ export interface DayReading {
 /** The interval of the highest mean kW and the day it lies in. */
 export interface PeakOfYear {
   ms: number;
+  /** The kept file it comes from; null where it is estimated here or came with another engagement. */
+  intakeId: number | null;
   kw: number;
   date: string;
   minute: number;
   kvarLagging: number | null;
   day: DayReading[];
+}
+
+/** What is kept of the engagement's year of one meter, in figures. */
+export interface MeterOfYear {
+  id: number;
+  label: string;
+  intervals: number;
+  present: number;
+  kwh: number | null;
+  kvarhLagging: number | null;
+  /** Highest mean of an interval. */
+  maxKw: number | null;
 }
 
 /** What is kept of the engagement's year. */
@@ -306,8 +374,19 @@ export interface KeptYear {
   months: MonthOfLoad[];
 }
 
-/** The station Intervals. */
+/** The meters billed together, and what could be among them. */
+export interface MetersOfYear {
+  meters: MeterOfYear[];
+  /** All of them added up; null with one meter, or where one has no readings. */
+  together: Omit<MeterOfYear, 'id' | 'label'> | null;
+  /** Meters of the site that are not among them. */
+  others: MeterView[];
+}
+
+/** The station Intervals, of one of the engagement's meters. */
 export interface IntervalsStation {
+  /** The meter shown. */
+  meter: MeterView;
   files: IntakeRow[];
   kept: KeptFile[];
   /** By local day; null where nothing is kept. */

@@ -1,7 +1,7 @@
 import type { SearchView } from './plan';
 
-/** What long work leaves behind: what a search found, or the number of the edition that was made. */
-export type JobResult = SearchView | { number: number };
+/** What long work leaves behind: what a search found, the number of the edition that was made, or the file that was read. */
+export type JobResult = SearchView | { number: number } | { intakeId: number };
 
 /** How far long work is, or how it ended. */
 export interface JobProgress {

@@ -19,6 +19,8 @@ export interface WaitingView {
   next: string;
   href: string;
   action: string;
+  /** A second way to go on. */
+  other?: { href: string; action: string };
 }
 
 /** A long work under way, with its engagement. */

@@ -12,6 +12,7 @@ import { toErrorBody } from './http';
 import { notFound, ServiceError } from './errors';
 import type { Actor } from './policies/actor';
 import { checkSignIn, loadActor, sessionEpochOf } from './services/sign-in';
+import { clientUploadRoutes } from './client-uploads';
 import { uploadRoutes } from './uploads';
 
 const bodyCapBytes = 1024 * 1024;
@@ -193,6 +194,7 @@ async function build(): Promise<Express> {
   );
   app.use(refuseNul);
   app.use(uploadRoutes());
+  app.use(clientUploadRoutes());
   app.use(limitBody);
   app.use((error: unknown, _req: Request, res: Response, _next: NextFunction) => sendError(error, res));
   return app;

@@ -15,11 +15,17 @@ function demoSecret(folder: string): string {
 async function serve(stopMore: () => void = () => undefined): Promise<void> {
   const { startServer, stopServer } = await import('./main');
   const { closeOrphanedJobs } = await import('./services/jobs');
+  const { startMailClock } = await import('./mail-clock');
+  const { closeOrphanedReadings } = await import('./services/intake-reading');
+  const { clearHandOver } = await import('./workers/fork-reader');
   const server = await startServer();
   await closeOrphanedJobs();
+  await closeOrphanedReadings();
+  await clearHandOver();
+  const stopMailClock = startMailClock();
   closeWithGrace({ delay: 10_000 }, async () => {
+    await Promise.all([stopMailClock(), stopServer(server)]);
     stopMore();
-    await stopServer(server);
   });
 }
 

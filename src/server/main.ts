@@ -25,6 +25,9 @@ async function astroHandler(): Promise<AstroHandler> {
   return module.handler;
 }
 
+/** What the reader of strangers' PDF may do: decode pictures, and reach nothing. A worker goes by the policy of its own file. */
+const readerPolicy = "default-src 'none'; script-src 'wasm-unsafe-eval'";
+
 function staticFiles(): express.Handler {
   const year = 365 * 24 * 60 * 60;
   return express.static(clientFolder(), {
@@ -32,6 +35,7 @@ function staticFiles(): express.Handler {
     redirect: false,
     setHeaders: (res, file) => {
       const forever = file.includes(`${path.sep}_astro${path.sep}`);
+      if (/[\\/]pdf\.worker[^\\/]*$/.test(file)) res.setHeader('Content-Security-Policy', readerPolicy);
       res.setHeader('Cache-Control', forever ? `public, max-age=${year}, immutable` : 'public, max-age=300');
     },
   });

@@ -15,6 +15,10 @@ const signedIn: Row = ['sign in', 'reached', 'reached', 'reached', 'reached', 'r
 const staff: Row = ['sign in', 'not found', 'not found', 'reached', 'reached', 'reached'];
 const members: Row = ['sign in', 'not found', 'not found', 'not found', 'reached', 'reached'];
 const released: Row = ['sign in', 'not found', 'reached', 'not found', 'reached', 'reached'];
+/** For the client's people alone; who works on it may know of it. */
+const clientOnly: Row = ['sign in', 'not found', 'reached', 'not found', 'forbidden', 'forbidden'];
+/** For the practice alone; the client's people may know of it. */
+const practiceOnly: Row = ['sign in', 'not found', 'forbidden', 'not found', 'reached', 'reached'];
 const partners: Row = ['sign in', 'not found', 'not found', 'forbidden', 'forbidden', 'reached'];
 
 /** Every method and address x {nobody, client of another firm, client, consultant not a member, consultant, partner}. */
@@ -39,6 +43,7 @@ export const roleTable: Record<string, Row> = {
   'GET /engagements': staff,
   'GET /engagements/new': staff,
   'GET /engagements/[code]': members,
+  'GET /engagements/[code]/attachments/[id]': members,
   'GET /engagements/[code]/bills': members,
   'GET /engagements/[code]/intervals': members,
   'GET /engagements/[code]/tariff': members,
@@ -52,6 +57,9 @@ export const roleTable: Record<string, Row> = {
   'GET /engagements/[code]/proof': members,
   'GET /engagements/[code]/hours': members,
   'GET /engagements/[code]/intake/[id]': members,
+  'GET /engagements/[code]/requests': members,
+  'GET /engagements/[code]/requests/new': members,
+  'GET /engagements/[code]/requests/[number]': members,
   'GET /schedules': staff,
   'GET /schedules/[id]': staff,
   'GET /schedules/[id]/edit': staff,
@@ -75,13 +83,20 @@ export const roleTable: Record<string, Row> = {
   'GET /client/[code]/bills': released,
   'GET /client/[code]/reports': released,
   'GET /client/[code]/reports/[number]': released,
+  'GET /client/[code]/requests': released,
+  'GET /client/[code]/requests/[number]': released,
 
   'GET /api/engagements': staff,
   'POST /api/engagements': staff,
   'POST /api/engagements/[code]/bills': members,
   'PUT /api/engagements/[code]/bills/[id]': members,
   'DELETE /api/engagements/[code]/bills/[id]': members,
+  'POST /api/engagements/[code]/bills/[id]/apart': members,
+  'POST /api/engagements/[code]/bills/join': members,
+  'GET /api/engagements/[code]/bills/metered': members,
   'POST /api/engagements/[code]/editions': members,
+  'GET /api/engagements/[code]/attachments': members,
+  'PUT /api/engagements/[code]/attachments': members,
   'DELETE /api/engagements/[code]/gap-fills/[id]': members,
   'GET /api/engagements/[code]/gap-fills': members,
   'POST /api/engagements/[code]/gap-fills': members,
@@ -96,12 +111,22 @@ export const roleTable: Record<string, Row> = {
   'GET /api/engagements/[code]/plans': members,
   'POST /api/engagements/[code]/plans': members,
   'POST /api/engagements/[code]/plans/search': members,
+  'POST /api/engagements/[code]/requests': members,
+  'PATCH /api/engagements/[code]/requests/[number]': practiceOnly,
+  'PATCH /api/engagements/[code]/requests/[number]/items/[position]': practiceOnly,
+  'PUT /api/engagements/[code]/requests/[number]/items/[position]/answer': clientOnly,
+  'PUT /api/engagements/[code]/requests/[number]/items/[position]/uploads': clientOnly,
+  'GET /api/engagements/[code]/requests/[number]/files/[key]': released,
+  'PATCH /api/engagements/[code]/requests/[number]/files/[key]': practiceOnly,
+  'DELETE /api/engagements/[code]/requests/[number]/files/[key]': clientOnly,
   'PUT /api/engagements/[code]/tariff': members,
   'POST /api/engagements/[code]/tariff/letters': members,
   'POST /api/engagements/[code]/tariff/letters/[number]': members,
   'PUT /api/engagements/[code]/tariff/matches': members,
   'GET /api/engagements/[code]/tariff/why': members,
   'PUT /api/engagements/[code]/uploads': members,
+  'PATCH /api/attachments/[id]': members,
+  'GET /api/attachments/[id]/original': members,
   'POST /api/editions/[id]/mail': members,
   'PATCH /api/findings/[id]': members,
   'POST /api/findings/[id]/notes': members,
@@ -116,6 +141,8 @@ export const roleTable: Record<string, Row> = {
   'POST /api/intakes/[id]/match': members,
   'GET /api/intakes/[id]/original': members,
   'GET /api/intakes/[id]/overlap': members,
+  'POST /api/intakes/[id]/read': members,
+  'GET /api/intakes/[id]/trace': members,
   'POST /api/intakes/[id]/undo': members,
   'GET /api/jobs/[id]': members,
   'GET /api/jobs/[id]/events': members,

@@ -29,6 +29,8 @@ function firstValue(database: sqlite3.Database, sql: string): Promise<string> {
 
 /** A row of the first client's engagement for each kind of address. */
 const rowSql: Record<string, string> = {
+  attachments:
+    "SELECT a.id value FROM attachments a JOIN engagements e ON e.id = a.engagement_id WHERE e.code = 'KG-02'",
   bills: "SELECT b.id value FROM bills b JOIN engagements e ON e.id = b.engagement_id WHERE e.code = 'KG-02'",
   clients: "SELECT client_id value FROM engagements WHERE code = 'KG-02'",
   editions: 'SELECT id value FROM editions',
@@ -42,6 +44,8 @@ const rowSql: Record<string, string> = {
   motors: 'SELECT id value FROM motors',
   people: "SELECT id value FROM users WHERE email LIKE 'sana@%'",
   plans: 'SELECT id value FROM plans',
+  requests: 'SELECT number value FROM data_requests',
+  files: 'SELECT key value FROM request_files',
   rates: "SELECT r.id value FROM rates r JOIN users u ON u.id = r.user_id WHERE u.email LIKE 'sana@%'",
 };
 
@@ -60,12 +64,14 @@ function addressOf(pattern: string): string {
   return pattern
     .replace('[code]', 'KG-02')
     .replace(/(\w+)\/\[(id|number)\]/, (_, kind: string) => `${kind}/${ids.get(kind) ?? `no-id-for-${kind}`}`)
+    .replace('[position]', '1')
+    .replace('[key]', ids.get('files') ?? 'no-key')
     .replace('[token]', 'a-token-nobody-was-given');
 }
 
 async function ask(route: string, cookie: string | null): Promise<Response> {
   const [method, pattern] = route.split(' ') as [string, string];
-  const upload = pattern.endsWith('/uploads');
+  const upload = pattern.endsWith('/uploads') || (route.startsWith('PUT') && pattern.endsWith('/attachments'));
   const address = `${origin}${addressOf(pattern)}${upload ? '?kind=bills&fileName=probe.txt' : ''}`;
   const isForm = method === 'POST' && !pattern.startsWith('/api/');
   const body =

@@ -1,5 +1,7 @@
 import { benchIntake } from './intake';
+import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
+import { benchIntakeMemory } from './intake-memory';
 import { benchMinuteYears } from './minute-years';
 import { benchPricing } from './pricing';
 import { benchRepricing } from './repricing';
@@ -32,7 +34,10 @@ async function main(): Promise<void> {
     benchMinuteYears,
     benchSearch,
     benchIntake,
+    benchIntakeRows,
+    benchIntakeBook,
     benchKeep,
+    benchIntakeMemory,
     benchServer,
   ];
   for (const part of parts) {

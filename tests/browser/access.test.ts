@@ -1,12 +1,9 @@
-import { readFileSync } from 'node:fs';
-import { createRequire } from 'node:module';
-import type { AxeResults } from 'axe-core';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
+import { accessFaults } from './axe';
 import { openWindow, signIn, startBrowser } from './browser';
 
 const origin = inject('origin');
-const axeSource = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
 
 const visits = [
   {
@@ -17,11 +14,15 @@ const visits = [
       '/engagements',
       '/engagements/new',
       '/engagements/KG-02/bills',
+      '/engagements/KG-02/attachments/1',
       '/engagements/KG-02/intervals',
       '/engagements/KG-02/tariff',
       '/engagements/KG-02/tariff/compare?with=ostrander-hv3&ostrander-hv3.contractKva=3000',
       '/engagements/KG-02/tariff/letter',
       '/engagements/KG-02/tariff/letters/1',
+      '/engagements/KG-02/requests',
+      '/engagements/KG-02/requests/new?about=motors',
+      '/engagements/KG-02/requests/1',
       '/engagements/KG-02/motors',
       '/engagements/KG-02/plans',
       '/engagements/KG-02/report',
@@ -47,7 +48,14 @@ const visits = [
   {
     who: 'client',
     email: 'mira@kestrel-gap.example',
-    addresses: ['/client/KG-02/overview', '/client/KG-02/bills', '/client/KG-02/reports', '/client/KG-02/reports/1'],
+    addresses: [
+      '/client/KG-02/overview',
+      '/client/KG-02/bills',
+      '/client/KG-02/reports',
+      '/client/KG-02/reports/1',
+      '/client/KG-02/requests',
+      '/client/KG-02/requests/1',
+    ],
   },
 ] as const;
 
@@ -66,16 +74,6 @@ afterAll(async () => {
   await browser?.close();
 });
 
-/** Faults against the published accessibility rules (WCAG 2.2 A and AA), each with the first element it concerns. */
-async function faults(page: Page): Promise<string[]> {
-  await page.evaluate(axeSource);
-  const results = await page.evaluate(async () => {
-    const { axe } = window as unknown as { axe: { run(context: unknown, options: unknown): Promise<AxeResults> } };
-    return axe.run(document, { runOnly: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'] });
-  });
-  return results.violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.target.join(' ')}`);
-}
-
 const overflow = (page: Page) =>
   page.evaluate(() => Math.max(0, document.documentElement.scrollWidth - document.documentElement.clientWidth));
 
@@ -89,7 +87,7 @@ describe.each(visits)('the pages of a $who', ({ email, addresses }) => {
       for (const address of addresses) {
         await page.goto(address);
         await page.waitForLoadState('networkidle');
-        const wrong = await faults(page);
+        const wrong = await accessFaults(page);
         const wide = await overflow(page);
         if (wrong.length > 0 || wide > 0) found[address] = { wrong, wide };
       }
@@ -105,7 +103,7 @@ describe('the way in', () => {
     const { page } = await openWindow(browser, origin, { colorScheme, viewport, bypassCSP: true });
     for (const address of ['/sign-in', '/reset', '/invitation/none']) {
       await page.goto(address);
-      expect([address, await faults(page), await overflow(page)]).toEqual([address, [], 0]);
+      expect([address, await accessFaults(page), await overflow(page)]).toEqual([address, [], 0]);
     }
     await page.context().close();
   });

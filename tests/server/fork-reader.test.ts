@@ -1,9 +1,9 @@
-import { mkdtempSync, rmSync, truncateSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdtempSync, rmSync, truncateSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
 import * as XLSX from 'xlsx';
-import { IntakeError } from '@/core/intake';
+import { IntakeError, type ReadProgress } from '@/core/intake';
 import { fileByteCap, readInChild } from '@/server/workers/fork-reader';
 
 const folder = mkdtempSync(path.join(tmpdir(), 'counterlag-reader-'));
@@ -88,6 +88,21 @@ describe('readInChild', () => {
     await expect(outcome).rejects.toThrow(/more memory than one file may have/);
     const after = await readInChild({ ...request('after.csv', halfHours()), mode: 'read' });
     expect(after.report.intervals).toBe(96);
+  });
+
+  it.skipIf(!existsSync('/proc/self/status'))(
+    'stops a child whose memory outside the heap grows too large',
+    async () => {
+      const outcome = readInChild({ ...request('big.csv', halfHours()), mode: 'read' }, { residentMegabytes: 5 });
+      await expect(outcome).rejects.toThrow(/more memory than one file may have/);
+    },
+  );
+
+  it('tells how far it is', async () => {
+    const told: ReadProgress[] = [];
+    const limits = { onProgress: (progress: ReadProgress) => void told.push(progress) };
+    await readInChild({ ...request('told.csv', halfHours()), mode: 'read' }, limits);
+    expect(told[0]).toEqual({ unit: 'stages', done: 0, planned: 2 });
   });
 
   it('gives up when asked to, also while waiting for a place', async () => {

@@ -1,5 +1,6 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
+import { clientUploadRoutes } from '@/server/client-uploads';
 import { uploadRoutes } from '@/server/uploads';
 
 const pagesFolder = path.resolve('src/pages');
@@ -19,11 +20,12 @@ function methodsOf(file: string): string[] {
 
 /** Routes of the Express layer, in the form of Astro's patterns. */
 function expressRoutes(): string[] {
-  return uploadRoutes().stack.flatMap(({ route }) => {
+  const found = [...uploadRoutes().stack, ...clientUploadRoutes().stack].flatMap(({ route }) => {
     if (!route) return [];
     const pattern = route.path.replace(/:(\w+)/g, '[$1]');
     return route.stack.map((layer) => `${layer.method.toUpperCase()} ${pattern}`);
   });
+  return [...new Set(found)];
 }
 
 /** Every method and address of the application, made from its files. */

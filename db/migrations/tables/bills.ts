@@ -1,4 +1,4 @@
-import { date, id, json, link, stamps, text, version, whole, type Columns } from './columns';
+import { date, flag, id, json, link, real, stamps, text, version, whole, type Columns } from './columns';
 
 /** Bills as the utility issued them. */
 export const billTables: Record<string, Columns> = {
@@ -12,6 +12,13 @@ export const billTables: Record<string, Columns> = {
     currency: text(),
     total_minor: whole(true),
     source_row: text(true),
+    places: json(true),
+    invoice: text(true),
+    read_on: date(true),
+    estimated: flag(false),
+    joined_to_id: link('bills', true, 'SET NULL'),
+    join_note: text(true),
+    put_away_by_id: link('intakes', true, 'SET NULL'),
     ...version,
     ...stamps,
   },
@@ -21,6 +28,9 @@ export const billTables: Record<string, Columns> = {
     position: whole(),
     label: text(),
     amount_minor: whole(),
+    quantity: real(true),
+    unit: text(true),
+    rate: real(true),
     ...stamps,
   },
 };

@@ -55,5 +55,5 @@ export const intakeIndexes: Record<string, string[][]> = {
 };
 
 export const intakeChecks: Record<string, string[]> = {
-  intakes: ["kind IN ('intervals','bills')", "state IN ('read','refused','kept','undone','given-up')"],
+  intakes: ["kind IN ('intervals','bills')", "state IN ('reading','read','refused','kept','undone','given-up')"],
 };

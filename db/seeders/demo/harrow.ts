@@ -1,3 +1,4 @@
+import type { BillInput } from '../../../src/schemas/bill';
 import { billsWorkbook, type PrintedBill } from './bills-file';
 
 const months = ['2026-06-01', '2026-07-01', '2026-08-01', '2026-09-01', '2026-10-01', '2026-11-01'];
@@ -32,6 +33,31 @@ export function harrowBills(): { fileName: string; bytes: Uint8Array } {
     bytes: billsWorkbook(bills, ['Harrow Sound Cold Store', 'Pier 4, meter OV 2207-031']),
   };
 }
+
+const line = (label: string, amountMinor: number) => ({ label, amountMinor });
+
+/**
+ * The May before, typed from paper: the store changed hands on 20 May and the utility made an invoice for each owner. Customer
+ * charge 96.00 by days, 58.84 + 37.16; energy 118,600 and 75,900 kWh at 0.0588; demand 478.6 kW at 15.20 on the second alone.
+ */
+export const harrowInvoicesOfMay: readonly [BillInput, BillInput] = [
+  {
+    from: '2026-05-01',
+    to: '2026-05-20',
+    invoice: '39145',
+    quantities: { kwh: 118_600 },
+    lines: [line('Customer charge', 5884), line('Energy charge', 697_368), line('Demand charge', 0)],
+    totalMinor: 703_252,
+  },
+  {
+    from: '2026-05-20',
+    to: '2026-06-01',
+    invoice: '39146',
+    quantities: { kwh: 75_900, maxKw: 478.6, powerFactor: 0.86 },
+    lines: [line('Customer charge', 3716), line('Energy charge', 446_292), line('Demand charge', 727_472)],
+    totalMinor: 1_177_480,
+  },
+];
 
 /** The sheet those bills were made on, as a consultant wrote it down. */
 export const harrowSchedule = `# Invented for demonstration: no utility of this name sells power.

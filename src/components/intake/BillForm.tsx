@@ -1,5 +1,5 @@
-import { useRef, useState } from 'react';
-import { useForm, type Resolver } from 'react-hook-form';
+import { useRef, useState, type ReactNode } from 'react';
+import { FormProvider, useForm, useWatch, type Resolver } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { addBill, changeBill } from '../../client/intake';
@@ -7,10 +7,14 @@ import type { BillView } from '../../schemas/bill';
 import { Button } from '../ui/Button';
 import { Notice } from '../ui/Notice';
 import { nestErrors } from '../ui/form-errors';
+import { BillFieldTargetContext } from './bill-field-target';
 import { keptAsTyped, startOfTyped } from './bill-start';
-import { LineRows, PeriodRows, QuantityRows, TotalRows } from './BillFormRows';
+import { LineRows, TotalRows } from './BillFormLines';
+import { HeadRows, QuantityRows } from './BillFormRows';
 import { BillSaveFault } from './BillSaveFault';
 import { readTyped, type TypedBill } from './typed';
+import { useFieldTarget } from './use-bill-field-target';
+import { useMetered } from './use-metered';
 
 export interface BillFormProps {
   code: string;
@@ -22,6 +26,8 @@ export interface BillFormProps {
   yearFrom: string;
   onDone: (saved: BillView) => void;
   onCancel: () => void;
+  /** What stands left of the form, such as the pages of the bill; it can write into fields through `useBillFieldTarget`. */
+  beside?: ReactNode;
 }
 
 /** Turns the faults of the typed bill into the form's own errors, by field. */
@@ -35,7 +41,7 @@ function resolverFor(currency: string): Resolver<TypedBill> {
 }
 
 /** A bill typed from paper: period, quantities, lines, total, with running checks. */
-export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCancel }: BillFormProps) {
+export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCancel, beside }: BillFormProps) {
   const start = bill ? keptAsTyped(bill, currency) : startOfTyped(bills, yearFrom);
   const form = useForm<TypedBill>({ defaultValues: start, resolver: resolverFor(currency), mode: 'onTouched' });
   const others = bills.filter((other) => other.id !== bill?.id);
@@ -43,6 +49,9 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
   const version = useRef(bill?.version ?? 0);
   const kept = useDraft<TypedBill>(`bill:${code}:${bill?.id ?? 'new'}`, form);
   const { handleSubmit, formState } = form;
+  const [from, lastDay] = useWatch({ control: form.control, name: ['from', 'lastDay'] });
+  const metered = useMetered(code, from, lastDay);
+  const { target, handlers } = useFieldTarget(form);
 
   const save = handleSubmit(async (values) => {
     const read = readTyped(values, currency);
@@ -60,13 +69,13 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
       else throw error;
     }
   });
-  return (
-    <form onSubmit={(event) => void save(event)} noValidate className="bill-form">
+  const typed = (
+    <form onSubmit={(event) => void save(event)} noValidate className="bill-form" {...handlers}>
       {kept.restored && <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />}
-      <PeriodRows form={form} others={others} />
-      <QuantityRows form={form} />
+      <HeadRows form={form} others={others} />
+      <QuantityRows form={form} metered={metered} />
       <LineRows form={form} currency={currency} others={others} />
-      <TotalRows form={form} currency={currency} />
+      <TotalRows form={form} currency={currency} others={others} />
       {fault && (
         <BillSaveFault
           fault={fault}
@@ -91,5 +100,17 @@ export function BillForm({ code, currency, bill, bills, yearFrom, onDone, onCanc
         </Button>
       </div>
     </form>
+  );
+  return (
+    <BillFieldTargetContext.Provider value={target}>
+      {beside ? (
+        <div className="bill-pair">
+          <FormProvider {...form}>{beside}</FormProvider>
+          {typed}
+        </div>
+      ) : (
+        typed
+      )}
+    </BillFieldTargetContext.Provider>
   );
 }

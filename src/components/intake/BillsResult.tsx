@@ -1,16 +1,9 @@
-import { daysBetween, periodFlaws, type BillsStation, type MeterCheck } from '../../schemas/bill';
+import { daysBetween, periodFlaws, type BillsStation } from '../../schemas/bill';
 import { FindingSlip } from '../ui/FindingSlip';
-import {
-  formatAmount,
-  formatBillName,
-  formatCount,
-  formatNumber,
-  formatPercent,
-  formatPeriod,
-  formatSpelled,
-} from '../ui/format';
+import { formatAmount, formatCount, formatNumber, formatPeriod } from '../ui/format';
 import { ResultSums } from '../ui/ResultSums';
 import { billedMinor, keptBill, lineSums } from './bill-ledger';
+import { meterWords } from './meter-words';
 
 const mostSums = 12;
 
@@ -57,21 +50,4 @@ export function BillsResult({ bills, currency, year, meterChecks }: BillsStation
       <p>{meterWords(meterChecks, bills)}</p>
     </>
   );
-}
-
-/** How the printed energies stand to the readings, over the periods that have every reading. */
-function meterWords(checks: MeterCheck[], bills: BillsStation['bills']): string {
-  if (checks.length === 0) return 'No period has both a printed energy and every reading yet.';
-  const off = (check: MeterCheck) => Math.abs(check.meterKwh - check.billedKwh) / Math.max(1, check.billedKwh);
-  const worst = checks.reduce((a, b) => (off(b) > off(a) ? b : a));
-  const bill = bills.find((one) => one.id === worst.billId);
-  const left = bills.length - checks.length;
-  const compared =
-    left === 0
-      ? `All ${formatSpelled(checks.length)}`
-      : `${formatNumber(checks.length)} of ${formatNumber(bills.length)}`;
-  const others = left === 0 ? '' : ` In the other ${formatSpelled(left)} a reading or the printed energy is missing.`;
-  const kwh = Math.abs(worst.meterKwh - worst.billedKwh);
-  if (kwh < 1) return `${compared} agree with the readings to the kWh.${others}`;
-  return `${compared} agree with the readings within ${formatPercent(Math.ceil(off(worst) * 10_000) / 10_000, 2)}; the farthest, ${bill ? formatBillName(bill) : ''}, by ${formatNumber(kwh)} kWh.${others}`;
 }

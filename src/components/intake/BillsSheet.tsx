@@ -6,13 +6,18 @@ import { LedgerTable } from '../ui/LedgerTable';
 import type { LedgerRow } from '../ui/ledger';
 import { BillForm } from './BillForm';
 import { billLedger, keptBill } from './bill-ledger';
-import { billsHeading } from './bill-words';
+import { billsHeading, joinedLead } from './bill-words';
 import { BillNotes } from './BillNotes';
 import { BillsResult } from './BillsResult';
 import { BringIn } from './BringIn';
 import { FileList } from './FileList';
+import { JoinedPanel } from './JoinedPanel';
+import { JoinSuggestions } from './JoinSuggestions';
+import { MeterPart } from './MeterPart';
 import { reload } from './reload';
+import { PagesBeside } from './pages/PagesBeside';
 import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
+import { TraceOf } from './TraceOf';
 
 export interface BillsSheetProps extends BillsStation {
   /** Begin with the empty form open: one types bill after bill. */
@@ -38,11 +43,18 @@ export function BillsSheet(props: BillsSheetProps) {
       document.querySelector<HTMLElement>('#bill input')?.focus({ preventScroll: true });
     });
   };
-  const shown = [any && 'year', laterBills.length > 0 && 'others', editing && 'form', 'files'].filter(Boolean);
+  const metered = props.meterChecks.length > 0;
+  const shown = [
+    any && 'year',
+    laterBills.length > 0 && 'others',
+    editing && 'form',
+    metered && 'meter',
+    'files',
+  ].filter(Boolean);
   const number = (part: string) => `1.${shown.indexOf(part) + 1}`;
   return (
     <>
-      <SheetHeading {...heading}>
+      <SheetHeading title={heading.title} lead={[heading.lead, joinedLead(bills)].filter(Boolean).join(' ')}>
         {!editing && (
           <Button kind={any ? 'primary' : 'secondary'} onClick={() => open(null)}>
             Type a bill
@@ -53,6 +65,7 @@ export function BillsSheet(props: BillsSheetProps) {
       {any && <YearPart {...props} number={number('year')} onEdit={open} />}
       {laterBills.length > 0 && <OtherBillsPart {...props} number={number('others')} onEdit={open} />}
       {editing && <FormPart {...props} number={number('form')} bill={editing.bill} onLeave={() => setEditing(null)} />}
+      {metered && <MeterPart {...props} number={number('meter')} />}
       <FilesPart {...props} number={number('files')} isFirst={!any && !editing} />
     </>
   );
@@ -65,10 +78,12 @@ interface PartProps extends BillsStation {
 type TableProps = PartProps & { onEdit: (bill: BillView) => void };
 
 function BillTable({ code, currency, bills, label, onEdit }: TableProps & { label: string }) {
+  const billOf = (row: LedgerRow) => bills.find((one) => String(one.id) === row.id);
   const actions = (row: LedgerRow) => {
-    const bill = bills.find((one) => String(one.id) === row.id);
+    const bill = billOf(row);
     return (
-      bill && (
+      bill &&
+      !bill.parts && (
         <Button kind="quiet" onClick={() => onEdit(bill)} aria-label={`Edit the bill of ${formatBillName(bill)}`}>
           Edit
         </Button>
@@ -76,7 +91,12 @@ function BillTable({ code, currency, bills, label, onEdit }: TableProps & { labe
     );
   };
   const rows = bills.map((bill) => keptBill(bill, code));
-  return <LedgerTable {...billLedger(rows, currency, overlapping(bills))} label={label} renderActions={actions} />;
+  const panel = (row: LedgerRow, close: () => void) => {
+    const bill = billOf(row);
+    return bill?.parts && <JoinedPanel {...{ code, bill, currency, onEdit }} onClose={close} />;
+  };
+  const ledger = billLedger(rows, currency, overlapping(bills));
+  return <LedgerTable {...ledger} label={label} stack renderActions={actions} renderPanel={panel} />;
 }
 
 function YearPart(props: TableProps) {
@@ -95,7 +115,10 @@ function YearPart(props: TableProps) {
       result={<BillsResult {...props} />}
     >
       {props.bills.length > 0 ? (
-        <BillTable {...props} label="Bills of the year" />
+        <div className="stacked bill-year">
+          <BillTable {...props} label="Bills of the year" />
+          <JoinSuggestions code={props.code} bills={[...props.bills, ...props.laterBills]} joinable={props.joinable} />
+        </div>
       ) : (
         <p>None of the kept bills lies in the year.</p>
       )}
@@ -117,8 +140,10 @@ function OtherBillsPart(props: TableProps) {
 }
 
 function FormPart(props: PartProps & { bill: BillView | null; onLeave: () => void }) {
-  const { code, currency, bill, year } = props;
-  const all = [...props.bills, ...props.laterBills].sort((a, b) => a.from.localeCompare(b.from));
+  const { code, currency, bill, year, timeZone } = props;
+  const all = [...props.bills, ...props.laterBills]
+    .flatMap((one) => one.parts ?? one)
+    .sort((a, b) => a.from.localeCompare(b.from));
   // One types bill after bill until the year has no gap left.
   const handleDone = (saved: BillView) =>
     reload(bill === null && periodFlaws([...all, saved], year).some((flaw) => flaw.kind === 'gap'));
@@ -140,7 +165,13 @@ function FormPart(props: PartProps & { bill: BillView | null; onLeave: () => voi
         yearFrom={year.from}
         onDone={handleDone}
         onCancel={props.onLeave}
+        beside={<PagesBeside key={bill?.id ?? 'new'} code={code} timeZone={timeZone} bill={bill} bills={all} />}
       />
+      {bill?.source && !bill.parts && (
+        <div className="mt-4 text-sm">
+          <TraceOf intakeId={bill.source.intakeId} from={bill.from} />
+        </div>
+      )}
     </SheetPart>
   );
 }
@@ -161,7 +192,14 @@ function FilesPart(props: PartProps & { isFirst: boolean }) {
     >
       <div className="stacked">
         <BringIn code={code} kind="bills" primary={props.isFirst} />
-        {any && <FileList code={code} files={files} timeZone={timeZone} goes={goesWith([...bills, ...laterBills])} />}
+        {any && (
+          <FileList
+            code={code}
+            files={files}
+            timeZone={timeZone}
+            goes={goesWith([...bills, ...laterBills].flatMap((bill) => bill.parts ?? bill))}
+          />
+        )}
       </div>
     </SheetPart>
   );

@@ -8,6 +8,8 @@ import { Progress } from '../ui/Progress';
 export interface BringInProps {
   code: string;
   kind: 'intervals' | 'bills';
+  /** The meter of the readings; left out: the engagement's own. */
+  meterId?: number;
   /** The one primary button of the screen. */
   primary?: boolean;
 }
@@ -28,7 +30,7 @@ interface Sending {
 }
 
 /** Picks or takes a dropped file, sends it with an honest measure, and opens its intake. */
-export function BringIn({ code, kind, primary = false }: BringInProps) {
+export function BringIn({ code, kind, meterId, primary = false }: BringInProps) {
   const picker = useRef<HTMLInputElement>(null);
   const [sending, setSending] = useState<Sending | null>(null);
   const [fault, setFault] = useState<ApiError | null>(null);
@@ -40,7 +42,7 @@ export function BringIn({ code, kind, primary = false }: BringInProps) {
     setSending({ file, sent: 0, stop });
     const onProgress = (share: number) => setSending({ file, sent: share * file.size, stop });
     try {
-      const intake = await bringIn(code, kind, file, onProgress, stop.signal);
+      const intake = await bringIn(code, { kind, meterId }, file, onProgress, stop.signal);
       window.location.assign(intakePage(code, intake.id));
     } catch (error) {
       setSending(null);

@@ -5,16 +5,44 @@ import { FindingSlip } from '../ui/FindingSlip';
 import { formatAmount, formatBillName, formatCount, formatPeriod } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums } from '../ui/ResultSums';
+import { BillDocuments, rateFaultInWords } from './BillDocuments';
 import { billedMinor, billLedger, lessTotal, lineSums, readBill } from './bill-ledger';
 import { coverage } from './bill-words';
+import type { IntakeActions } from './IntakeSheet';
 import { Notes } from './Notes';
 import { SheetPart } from './Sheet';
 
+interface CheckBillsProps {
+  intake: IntakeView;
+  preview: BillPreview;
+  actions: IntakeActions;
+}
+
+/** Notes that stand elsewhere in the step: in the table of documents and on slips. */
+const shownElsewhere = new Set([
+  'document-left-out',
+  'document-joined',
+  'document-undated',
+  'rate-differs',
+  'sum-differs',
+]);
+const mostRateFaults = 6;
+
+/** Where a bill stands in the file, in words. */
+const placeOf = ({ documents }: BillPreview, bill: number): string =>
+  documents
+    .filter((document) => document.bill === bill)
+    .map((document) => document.where)
+    .join(' and ');
+
 /** The bills as they would be kept: lines, sums against totals, days, overlaps. */
-export function CheckBills({ intake, preview }: { intake: IntakeView; preview: BillPreview }) {
+export function CheckBills({ intake, preview, actions }: CheckBillsProps) {
   const { currency, yearFrom, yearTo } = intake.engagement;
   const { report } = preview;
-  const bills = preview.bills.map((bill, index) => readBill(bill, index, currency, report?.billRows?.[index]));
+  const bills = preview.bills.map((bill, index) => ({
+    ...readBill(bill, index, currency, report?.billRows?.[index]),
+    source: placeOf(preview, index),
+  }));
   const flaws = periodFlaws(bills);
   const odd = bills.filter((bill) => (lessTotal(bill) ?? 0) !== 0);
   const asks = new Set([
@@ -52,6 +80,7 @@ export function CheckBills({ intake, preview }: { intake: IntakeView; preview: B
                   {`Its lines come to ${formatAmount(lessTotal(bill) ?? 0, currency, { signed: true })} ${currency} against the printed total. It is kept as printed.`}
                 </FindingSlip>
               ))}
+              <RateFaults preview={preview} currency={currency} />
               {flaws.map((flaw, index) => (
                 <FindingSlip
                   key={index}
@@ -71,12 +100,37 @@ export function CheckBills({ intake, preview }: { intake: IntakeView; preview: B
         )
       }
     >
-      {bills.length > 0 && (
-        <div className="stacked">
-          <LedgerTable {...billLedger(bills, currency, asks)} label="Bills of the file" />
-          {report && <Notes report={report} />}
-        </div>
-      )}
+      <div className="stacked">
+        {bills.length > 0 && <LedgerTable {...billLedger(bills, currency, asks)} label="Bills of the file" />}
+        {preview.documents.length > 0 && <BillDocuments intake={intake} preview={preview} actions={actions} />}
+        {report && (
+          <Notes report={{ ...report, notes: report.notes.filter(({ code }) => !shownElsewhere.has(code)) }} />
+        )}
+      </div>
     </SheetPart>
+  );
+}
+
+/** Lines whose quantity times rate is not their amount, each with its working. */
+function RateFaults({ preview, currency }: { preview: BillPreview; currency: string }) {
+  const faults = preview.report?.rateFaults ?? [];
+  const more = faults.length - mostRateFaults;
+  return (
+    <>
+      {faults.slice(0, mostRateFaults).map((fault, index) => {
+        const bill = preview.bills[fault.bill];
+        return (
+          <FindingSlip
+            key={index}
+            caution
+            letter="×"
+            title={`${fault.label}${bill ? ` of ${formatBillName(bill.period)}` : ''}`}
+          >
+            {rateFaultInWords(fault, currency)}
+          </FindingSlip>
+        );
+      })}
+      {more > 0 && <p>{`${formatCount(more, 'more line')} whose quantity times rate is not the amount.`}</p>}
+    </>
   );
 }

@@ -18,6 +18,7 @@ export interface FileListProps {
 }
 
 const states: Record<IntakeRow['state'], MarkProps> = {
+  reading: { kind: 'half', word: 'being read' },
   read: { kind: 'half', word: 'to check' },
   refused: { kind: 'diamond', word: 'cannot be read', tone: 'fault' },
   kept: { kind: 'filled', word: 'kept' },

@@ -10,11 +10,12 @@ import { gapMethodNames } from './gap-words';
 
 export interface GapChoiceProps {
   code: string;
+  meterId: number;
   gap: ReadingGap;
 }
 
 /** A gap is left missing unless somebody chooses to have it estimated; what each way would add is shown first. */
-export function GapChoice({ code, gap }: GapChoiceProps) {
+export function GapChoice({ code, meterId, gap }: GapChoiceProps) {
   const [opened, setOpened] = useState(false);
   if (!isStretch(gap)) return null;
   return (
@@ -22,15 +23,15 @@ export function GapChoice({ code, gap }: GapChoiceProps) {
       <Button kind="quiet" aria-expanded={opened} onClick={() => setOpened(!opened)}>
         {opened ? 'Leave it missing' : 'Estimate it'}
       </Button>
-      {opened && <Ways code={code} gap={gap} />}
+      {opened && <Ways code={code} meterId={meterId} gap={gap} />}
     </div>
   );
 }
 
-function Ways({ code, gap }: GapChoiceProps) {
+function Ways({ code, meterId, gap }: GapChoiceProps) {
   const { data, error } = useQuery({
-    queryKey: ['gap', code, gap.fromMs, gap.toMs],
-    queryFn: () => fetchGapPreviews(code, gap),
+    queryKey: ['gap', code, meterId, gap.fromMs, gap.toMs],
+    queryFn: () => fetchGapPreviews(code, { meterId, fromMs: gap.fromMs, toMs: gap.toMs }),
   });
   const [busy, setBusy] = useState(false);
   const [fault, setFault] = useState<string | null>(null);
@@ -40,7 +41,7 @@ function Ways({ code, gap }: GapChoiceProps) {
     setBusy(true);
     setFault(null);
     try {
-      await fillGap(code, { fromMs: gap.fromMs, toMs: gap.toMs, method: way.method });
+      await fillGap(code, { meterId, fromMs: gap.fromMs, toMs: gap.toMs, method: way.method });
       window.location.reload();
     } catch (refusal) {
       setBusy(false);

@@ -1,10 +1,12 @@
 import { useState } from 'react';
 import { ApiError } from '../../client/api';
 import {
+  fetchIntake,
   giveUpIntake,
   keepIntake,
   matchIntake,
   originalPath,
+  readAgain,
   readWithMap,
   rememberMap,
   undoIntake,
@@ -20,6 +22,7 @@ import { CheckIntervals } from './CheckIntervals';
 import { foldProblems, intakeHeading, stepsOf } from './intake-words';
 import { KeepStep } from './KeepStep';
 import { MatchStep } from './MatchStep';
+import { BeingRead } from './BeingRead';
 import { ReadStep } from './ReadStep';
 import { SheetHeading, StepBus } from './Sheet';
 
@@ -29,6 +32,10 @@ export interface IntakeActions {
   match: (columnMap: ColumnMap, more?: { timeZone?: string; confirm?: string[] }) => void;
   confirm: (keys: string[]) => void;
   useMap: (mapId: number) => void;
+  /** Reads a file again that could not be read. */
+  readAgain: () => void;
+  /** Takes up what the job of reading found. */
+  takeUp: () => void;
   remember: (name: string) => Promise<string | null>;
   keep: (overlap?: OverlapChoice) => void;
   undo: () => void;
@@ -86,6 +93,8 @@ function useIntake(initial: IntakeView) {
     match,
     confirm: (keys) => intake.preview && match(intake.preview.columnMap, { confirm: keys }),
     useMap: (mapId) => void run(readWithMap(intake, mapId)),
+    readAgain: () => void run(readAgain(intake)),
+    takeUp: () => void run(fetchIntake(intake.id)),
     remember: async (name) => (await run(rememberMap(intake.id, name)))?.title ?? null,
     keep: (overlap) => void run(keepIntake(intake, overlap)).then(follow),
     undo: () => void run(undoIntake(intake)).then(follow),
@@ -128,12 +137,14 @@ function Steps({ initial }: { initial: IntakeView }) {
           <ReadStep intake={intake} preview={preview} folded={state === 'kept'} />
           <MatchStep intake={intake} preview={preview} actions={actions} />
           {preview.kind === 'bills' ? (
-            <CheckBills intake={intake} preview={preview} />
+            <CheckBills intake={intake} preview={preview} actions={actions} />
           ) : (
             <CheckIntervals intake={intake} preview={preview} />
           )}
           <KeepStep intake={intake} preview={preview} actions={actions} />
         </>
+      ) : state === 'reading' ? (
+        <BeingRead intake={intake} actions={actions} />
       ) : (
         <Refused intake={intake} />
       )}
@@ -178,6 +189,12 @@ function HeadActions({ intake, actions }: { intake: IntakeView; actions: IntakeA
       </>
     );
   }
+  if (state === 'reading')
+    return (
+      <ButtonLink kind="secondary" href={station}>
+        Back to the station
+      </ButtonLink>
+    );
   const left = preview ? toConfirm(preview, intake.confirmed).count : 0;
   const ready = preview !== null && preview.problems.length === 0;
   return (
@@ -185,6 +202,11 @@ function HeadActions({ intake, actions }: { intake: IntakeView; actions: IntakeA
       <Button kind="secondary" busy={actions.busy} onClick={actions.giveUp}>
         Give up this file
       </Button>
+      {!preview && (
+        <Button kind="primary" busy={actions.busy} onClick={actions.readAgain}>
+          Read it again
+        </Button>
+      )}
       {ready && left > 0 && <ButtonLink href="#match">Look at the {formatSpelled(left)} to confirm</ButtonLink>}
       {ready && left === 0 && (
         <ButtonLink kind="secondary" href="#keep">

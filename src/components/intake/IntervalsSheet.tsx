@@ -3,7 +3,7 @@ import type { CarpetData } from '../charts/carpet';
 import { Queries } from '../../client/queries';
 import { CarpetTabs } from '../charts/CarpetTabs';
 import { DayFigure } from '../charts/DayChart';
-import type { IntervalsStation, KeptYear } from '../../schemas/intake';
+import type { IntervalsStation, KeptYear, MetersOfYear } from '../../schemas/intake';
 import { FindingSlip } from '../ui/FindingSlip';
 import {
   formatCount,
@@ -22,12 +22,14 @@ import { FillsPart } from './FillsPart';
 import { FindingSlips } from './FindingSlips';
 import { GapChoice } from './GapChoice';
 import { intervalName, presentInWords, readingsOf } from './interval-words';
+import { MetersPart } from './MetersPart';
 import { MonthsPart } from './MonthsPart';
 import { ColumnNames, SheetHeading, SheetPart } from './Sheet';
+import { TraceOf } from './TraceOf';
 
 export interface IntervalsSheetProps {
   code: string;
-  meter: string;
+  meters: MetersOfYear;
   yearDates: { from: string; to: string };
   station: Omit<IntervalsStation, 'picture'>;
   /** kW, kvar and power factor of the year; empty where nothing is kept. */
@@ -35,8 +37,9 @@ export interface IntervalsSheetProps {
 }
 
 /** Station Intervals: what is kept of the year, its picture, the day of the peak, gaps, months, files. */
-export function IntervalsSheet({ code, meter, yearDates, station, carpets }: IntervalsSheetProps) {
+export function IntervalsSheet({ code, meters, yearDates, station, carpets }: IntervalsSheetProps) {
   const { year, files, kept, timeZone } = station;
+  const { id: meterId, label: meter } = station.meter;
   const period = formatPeriod(yearDates.from, yearDates.to, { year: true });
   const goes = Object.fromEntries(
     kept.map((file) => [
@@ -46,13 +49,14 @@ export function IntervalsSheet({ code, meter, yearDates, station, carpets }: Int
   );
   /** Number of a part behind the picture; the day of the peak may be wanting. */
   const part = (position: number) => `2.${position + (year?.peak ? 1 : 0)}`;
+  const numberOf = (behind: number) => (year ? part((year.fills.length > 0 ? 4 : 3) + behind) : `2.${1 + behind}`);
   return (
     <Queries>
       <SheetHeading {...heading(year, station, meter, period)} />
       <ColumnNames />
       {year && carpets.length > 0 && (
         <>
-          <YearPart year={year} carpets={carpets} timeZone={timeZone} code={code} />
+          <YearPart year={year} carpets={carpets} timeZone={timeZone} code={code} meterId={meterId} />
           {year.peak && <PeakPart year={year} peak={year.peak} timeZone={timeZone} code={code} />}
           <MonthsPart year={year} timeZone={timeZone} />
           {year.fills.length > 0 && <FillsPart code={code} number={part(3)} fills={year.fills} timeZone={timeZone} />}
@@ -60,7 +64,7 @@ export function IntervalsSheet({ code, meter, yearDates, station, carpets }: Int
       )}
       <SheetPart
         id="files"
-        number={year ? part(year.fills.length > 0 ? 4 : 3) : '2.1'}
+        number={numberOf(0)}
         title={files.length > 0 ? 'Files' : 'Bring in the meter’s readings'}
         lead={
           files.length > 0
@@ -74,10 +78,11 @@ export function IntervalsSheet({ code, meter, yearDates, station, carpets }: Int
         }
       >
         <div className="stacked">
-          <BringIn code={code} kind="intervals" primary={files.length === 0} />
+          <BringIn code={code} kind="intervals" meterId={meterId} primary={files.length === 0} />
           {files.length > 0 && <FileList code={code} files={files} timeZone={timeZone} goes={goes} />}
         </div>
       </SheetPart>
+      <MetersPart {...meters} code={code} number={numberOf(1)} shown={meterId} />
     </Queries>
   );
 }
@@ -111,7 +116,7 @@ interface PartProps {
   code: string;
 }
 
-function YearPart({ year, carpets, timeZone, code }: PartProps & { carpets: CarpetData[] }) {
+function YearPart({ year, carpets, timeZone, code, meterId }: PartProps & { carpets: CarpetData[]; meterId: number }) {
   const missing = year.intervals - year.present;
   const finding =
     missing === 0
@@ -145,7 +150,7 @@ function YearPart({ year, carpets, timeZone, code }: PartProps & { carpets: Carp
                 <FindingSlip letter={String(index + 1)} title={`Gap, ${formatCount(gap.intervals, 'reading')}`}>
                   {gapInWords(gap, timeZone)}. Left missing.
                 </FindingSlip>
-                <GapChoice code={code} gap={gap} />
+                <GapChoice code={code} meterId={meterId} gap={gap} />
               </Fragment>
             ))}
             <FindingSlips findings={year.findings} gaps={year.gaps} timeZone={timeZone} />
@@ -202,6 +207,7 @@ function PeakPart({ year, peak, timeZone, code }: PartProps & { peak: NonNullabl
         reading="Mean power of each interval of the day."
         fileName={`${code}-day-of-peak`}
       />
+      {peak.intakeId !== null && <TraceOf intakeId={peak.intakeId} ms={peak.ms} />}
     </SheetPart>
   );
 }

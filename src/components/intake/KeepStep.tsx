@@ -6,6 +6,7 @@ import { formatCount, formatDateTime, formatNumber } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import type { IntakeActions } from './IntakeSheet';
 import { isKnown, readingsOf } from './interval-words';
+import { KeepBillsOverlap } from './KeepBillsOverlap';
 import { KeepChoice } from './KeepChoice';
 import { SheetPart } from './Sheet';
 
@@ -49,7 +50,7 @@ function Choice({ intake, preview, actions, readable }: KeepStepProps & { readab
   const overlap = useQuery({
     queryKey: ['intake-overlap', intake.id, intake.version],
     queryFn: () => fetchOverlap(intake.id),
-    enabled: settled && preview.kind === 'intervals',
+    enabled: settled,
   });
   const what =
     preview.kind === 'bills'
@@ -59,6 +60,9 @@ function Choice({ intake, preview, actions, readable }: KeepStepProps & { readab
   const beside = overlap.data;
   if (beside?.kind === 'intervals' && beside.asks) {
     return <KeepChoice intake={intake} overlap={beside} what={what} actions={actions} />;
+  }
+  if (beside?.kind === 'bills' && beside.asks) {
+    return <KeepBillsOverlap intake={intake} overlap={beside} actions={actions} />;
   }
   const waiting = !readable
     ? 'after the file can be read'

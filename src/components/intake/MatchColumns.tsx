@@ -2,7 +2,7 @@ import type { ColumnEvidence, ColumnUse } from '../../core/intake';
 import { columnKey } from '../../schemas/intake';
 import { Choice, Heads, sentence, Tests } from './match-parts';
 import type { MatchStepProps } from './MatchStep';
-import { roleOptions, roleValue, unitOptions, unitValue, withRole, withUnit } from './roles';
+import { rateOptions, roleOptions, roleValue, unitOptions, unitValue, withCharge, withRole, withUnit } from './roles';
 
 /** A row for each column: what it is taken for, its unit, and what speaks for it. */
 export function ColumnTable({ intake, preview, actions }: MatchStepProps) {
@@ -33,6 +33,8 @@ function ColumnRow({ column, intake, preview, actions }: MatchStepProps & { colu
     actions.match({ ...preview.columnMap, columns }, { confirm: [key] });
   };
   const units = unitOptions(column);
+  const uses = preview.columnMap.columns ?? [];
+  const rate = column.takenAs === 'rate' ? uses.find((use) => use.index === column.index) : undefined;
   return (
     <tr className={asks ? 'asks' : undefined}>
       <th scope="row" className="left wrap strong">
@@ -46,13 +48,22 @@ function ColumnRow({ column, intake, preview, actions }: MatchStepProps & { colu
           className="role-select"
           label={`${name}, taken as`}
           value={roleValue(column)}
-          options={roleOptions(preview.kind, column)}
+          options={roleOptions(preview.kind, column, preview.columnMap.layout)}
           disabled={fixed || actions.busy}
           onChoose={(value) => change((use) => withRole(use, value))}
         />
       </td>
       <td className="left" data-name="Unit">
-        {units.length > 0 ? (
+        {rate ? (
+          <Choice
+            className="role-select"
+            label={`${name}, rate of`}
+            value={rate.charge ?? ''}
+            options={rateOptions(uses)}
+            disabled={fixed || actions.busy}
+            onChoose={(value) => change((use) => withCharge(use, value))}
+          />
+        ) : units.length > 0 ? (
           <span className={column.isUnitAssumed ? 'assumed' : undefined}>
             <Choice
               className="unit-select"

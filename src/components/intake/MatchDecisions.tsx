@@ -27,7 +27,7 @@ export function DecisionTable({ intake, preview, actions }: MatchStepProps) {
               <td />
             </tr>
           )}
-          {preview.kind === 'intervals' && (
+          {(preview.kind === 'intervals' || preview.format === 'espi') && (
             <TimeZoneField
               key={intake.timeZone}
               intake={intake}

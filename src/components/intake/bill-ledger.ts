@@ -21,6 +21,10 @@ export interface LedgerBill {
   quantities: Record<string, number>;
   lines: { label: string; amountMinor: number }[];
   totalMinor: number | null;
+  invoice?: string | null;
+  isEstimated?: boolean;
+  /** How many invoices are joined to it; 1 where it is one. */
+  invoices?: number;
   source: string;
   /** Where the rows of the file can be seen. */
   sourceHref?: string;
@@ -31,10 +35,22 @@ const mostLines = 8;
 
 /** A kept bill for the table. */
 export function keptBill(bill: BillView, code?: string): LedgerBill {
-  const { id, from, to, quantities, lines, totalMinor, source } = bill;
-  const base = { id: String(id), from, to, quantities, lines, totalMinor };
-  if (!source) return { ...base, source: 'typed' };
-  return { ...base, source: source.row ?? 'file', sourceHref: code && intakePage(code, source.intakeId) };
+  const { id, from, to, quantities, lines, totalMinor, invoice, estimated, parts, source } = bill;
+  const invoices = parts?.length ?? 1;
+  const base = { id: String(id), from, to, quantities, lines, totalMinor, invoice, isEstimated: estimated, invoices };
+  if (source) return { ...base, source: sourceWords(bill), sourceHref: code && intakePage(code, source.intakeId) };
+  return { ...base, source: sourceWords(bill) };
+}
+
+/** Where a bill came from, short: `row 3`, `PDF`, `2 PDF`, `typed`. */
+function sourceWords({ source, pages, parts }: BillView): string {
+  const kind = pages?.[0]?.kind;
+  if (parts && parts.length > 1) {
+    const words = [...new Set(parts.map(sourceWords))];
+    if (words.length > 1) return words.join(', ');
+    return /^row/.test(words[0] ?? '') ? 'rows' : `${parts.length} ${words[0]}`;
+  }
+  return source ? (source.row ?? 'file') : (kind ?? 'typed');
 }
 
 /** A bill as the file has it, before it is kept. */
@@ -48,6 +64,8 @@ export function readBill(bill: BillRecord, index: number, currency: string, row:
       amountMinor: toMinorUnits(amount, currency),
     })),
     totalMinor: bill.total === null ? null : toMinorUnits(bill.total, currency),
+    invoice: bill.invoice,
+    isEstimated: bill.isEstimated,
     source: row === undefined ? '' : `row ${row}`,
   };
 }
@@ -142,7 +160,10 @@ function columnsOf(bills: LedgerBill[], currency: string): LedgerColumn[] {
   return [
     { key: 'name', head: 'Bill of' },
     { key: 'period', head: 'Period', quiet: true },
-    { key: 'days', head: 'Days', kind: 'number' },
+    { key: 'days', head: 'Days', kind: 'number', spare: true },
+    ...(bills.some(({ invoice, invoices = 1 }) => invoice || invoices > 1)
+      ? [{ key: 'invoice', head: 'Invoice' }]
+      : []),
     ...quantitiesOf(bills).map(({ name, label, unit, decimals }): LedgerColumn => ({
       key: quantityKey(name),
       head: label,
@@ -150,10 +171,11 @@ function columnsOf(bills: LedgerBill[], currency: string): LedgerColumn[] {
       kind: 'number',
       decimals: decimals === 0 ? 0 : 3,
     })),
-    ...labels.map((label) => money(lineKey(label), label)),
-    ...(others ? [money('others', 'Other lines')] : []),
+    ...labels.map((label) => ({ ...money(lineKey(label), label), spare: true })),
+    ...(others ? [{ ...money('others', 'Other lines'), spare: true }] : []),
     { ...money('total', 'Printed total'), strong: true },
     { key: 'less', head: 'Lines less total', kind: 'money', currency, unit: currency, signed: true },
+    { key: 'source', head: 'Source', quiet: true },
   ];
 }
 
@@ -165,6 +187,8 @@ function rowOf(bill: LedgerBill, columns: LedgerColumn[], currency: string, flaw
     name: formatBillName(bill),
     period: formatPeriod(bill.from, bill.to),
     days: daysBetween(bill.from, bill.to),
+    invoice: invoiceCell(bill),
+    source: { value: bill.source, href: bill.sourceHref },
     others: unshown.length > 0 ? sumOf(unshown) : null,
     total: totalCell(bill, currency),
     less: difference === null ? null : { value: difference, tone: difference === 0 ? undefined : 'fault' },
@@ -172,6 +196,13 @@ function rowOf(bill: LedgerBill, columns: LedgerColumn[], currency: string, flaw
   for (const [name, value] of Object.entries(bill.quantities)) cells[quantityKey(name)] = value;
   for (const label of labels) cells[lineKey(label)] = lineOf(bill, label);
   return { id: bill.id, cells, kind: flaws.has(bill.id) ? 'asks' : 'plain' };
+}
+
+/** Its number; how many where several are joined, opening them; and whether the reading was estimated. */
+function invoiceCell({ invoice, invoices = 1, isEstimated }: LedgerBill): LedgerCell {
+  const note = isEstimated ? 'estimated' : undefined;
+  if (invoices > 1) return { value: `${formatSpelled(invoices)} invoices`, opens: true, note };
+  return { value: invoice ?? null, note };
 }
 
 function totalCell(bill: LedgerBill, currency: string): LedgerCell {
@@ -210,6 +241,18 @@ export function billLedger(bills: LedgerBill[], currency: string, flaws: Set<str
     rows: bills.map((bill) => rowOf(bill, columns, currency, flaws)),
     total: bills.length > 1 ? totalsOf(bills, columns) : undefined,
   };
+}
+
+/** The invoices of a joined bill under it: the same lines, their sum the bill itself. */
+export function partsLedger(bill: BillView, currency: string, code: string): LedgerData {
+  const parts = (bill.parts ?? []).map((part) => keptBill(part, code));
+  const columns = columnsOf([keptBill(bill), ...parts], currency)
+    .filter(({ key }) => !['name', 'less'].includes(key))
+    .sort((a, b) => Number(b.key === 'invoice') - Number(a.key === 'invoice'));
+  const named = (part: LedgerBill) => ({ ...part, invoice: part.invoice ?? 'no number' });
+  const rows = parts.map((part) => rowOf(named(part), columns, currency, new Set()));
+  const { cells } = rowOf(keptBill(bill), columns, currency, new Set());
+  return { columns, rows, total: { ...cells, invoice: 'One bill', source: null } };
 }
 
 /** Bills whose lines do not come to the printed total, in words; null where all do. */

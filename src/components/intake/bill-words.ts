@@ -1,5 +1,5 @@
-import { daysBetween, periodFlaws } from '../../schemas/bill';
-import { capital, formatCount, formatMoney, formatPeriod, formatSpelled } from '../ui/format';
+import { billsDemand, daysBetween, periodFlaws, type BillView } from '../../schemas/bill';
+import { capital, formatBillName, formatCount, formatMoney, formatPeriod, formatSpelled } from '../ui/format';
 import { billedMinor, lessTotal, oddSumsInWords, type LedgerBill } from './bill-ledger';
 
 /** Gaps between bills and overlaps, as words for a heading. */
@@ -13,6 +13,26 @@ function daysInWords(bills: LedgerBill[]): string {
     twice > 0 && `${formatCount(twice, 'day')} billed twice`,
   ].filter(Boolean);
   return `${formatCount(days, 'day')} ${faults.length === 0 ? 'without a gap' : `with ${faults.join(' and ')}`}`;
+}
+
+/** How joined invoices stand to one another, and what follows. */
+export function joinedWords(bill: BillView): string {
+  const demanded = (bill.parts ?? []).flatMap((part, index) => (billsDemand(part) ? [index] : []));
+  const last = (bill.parts?.length ?? 0) - 1;
+  const where = demanded[0] === 0 ? 'the first' : demanded[0] === last ? 'the last' : 'one of them';
+  const demand = demanded.length === 1 ? ` demand is billed once, on ${where}.` : '';
+  return `Days meet without gap or overlap${demand ? `;${demand}` : '.'} A ratchet counts this as one bill.`;
+}
+
+/** `January came as two invoices and is priced as one bill.` for every joined bill. */
+export function joinedLead(bills: BillView[]): string {
+  return bills
+    .flatMap((bill) =>
+      bill.parts
+        ? `${formatBillName(bill)} came as ${formatSpelled(bill.parts.length)} invoices and is priced as one bill.`
+        : [],
+    )
+    .join(' ');
 }
 
 /** The finding of the station Bills in one sentence. */

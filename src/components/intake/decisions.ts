@@ -15,7 +15,6 @@ export interface Decision {
 const words: Partial<Record<Guess['key'], Record<string, string>>> = {
   delimiter: { ',': 'Comma', ';': 'Semicolon', '\t': 'Tabulator', '|': 'Vertical bar' },
   'decimal-mark': { '.': 'Point, 1,234.5', ',': 'Comma, 1.234,5' },
-  layout: { long: 'A row for each reading', wide: 'A row for each day', transposed: 'A column for each bill' },
   'date-order': {
     DMY: 'Day, month, year',
     MDY: 'Month, day, year',
@@ -48,7 +47,9 @@ const labels: Record<Guess['key'], string> = {
   clock: 'Clock',
   step: 'Length of interval',
   'period-ends': 'End of period',
+  year: 'Year of the first bill',
   meter: 'Meter',
+  member: 'File in the archive',
 };
 
 /** The map without its columns: they are detected anew. */
@@ -73,7 +74,15 @@ const current: Record<Guess['key'], (map: ColumnMap) => string | undefined> = {
   clock: (map) => map.stamp?.clock,
   step: (map) => map.stamp?.stepMinutes?.toString(),
   'period-ends': (map) => map.periodEnds,
+  year: (map) => map.year?.toString(),
   meter: (map) => map.meter,
+  member: (map) => map.member,
+};
+
+/** Layouts, by what the file holds. */
+const layouts: Record<IntakePreview['kind'], Record<string, string>> = {
+  intervals: { long: 'A row for each reading', wide: 'A row for each day' },
+  bills: { long: 'A row for each bill', transposed: 'A column for each bill', items: 'A row for each line of a bill' },
 };
 
 type Stamp = NonNullable<ColumnMap['stamp']>;
@@ -91,7 +100,9 @@ const apply: Record<Guess['key'], (map: ColumnMap, value: string) => ColumnMap> 
   clock: (map, value) => stamped(map, { clock: value as Stamp['clock'] }),
   step: (map, value) => stamped(map, { stepMinutes: Number(value) }),
   'period-ends': (map, value) => ({ ...map, periodEnds: value as ColumnMap['periodEnds'] }),
+  year: (map, value) => ({ ...map, year: Number(value) }),
   meter: (map, value) => ({ ...map, meter: value }),
+  member: (map, value) => ({ kind: map.kind, member: value }),
 };
 
 function optionsOf(key: Guess['key'], preview: IntakePreview): SelectOption[] {
@@ -99,11 +110,15 @@ function optionsOf(key: Guess['key'], preview: IntakePreview): SelectOption[] {
     const rows = preview.rows.map((row) => ({ value: String(row.number), label: `Row ${row.number}` }));
     return [...rows, { value: 'none', label: 'The file has none' }];
   }
-  if (key === 'meter') {
-    return (preview.kind === 'intervals' ? preview.meters : []).map((meter) => ({ value: meter, label: meter }));
-  }
-  return Object.entries(words[key] ?? {}).map(([value, label]) => ({ value, label }));
+  if (key === 'meter') return preview.meters.map((meter) => ({ value: meter, label: meter }));
+  if (key === 'member') return (preview.dialect.members ?? []).map((member) => ({ value: member, label: member }));
+  if (key === 'year') return yearsAround(preview.columnMap.year);
+  const wordsOfKey = key === 'layout' ? layouts[preview.kind] : words[key];
+  return Object.entries(wordsOfKey ?? {}).map(([value, label]) => ({ value, label }));
 }
+
+const yearsAround = (year = 0): SelectOption[] =>
+  [-2, -1, 0, 1, 2].map((step) => ({ value: String(year + step), label: String(year + step) }));
 
 /** A guess of the reader as a decision one can correct. A value that is none of the usual ones is offered too. */
 export function decisionOf(guess: Guess, preview: IntakePreview): Decision {
@@ -123,7 +138,7 @@ export function sheetDecision(preview: IntakePreview): Decision | null {
     label: 'Sheet',
     value: sheet,
     options: sheets.map((name) => ({ value: name, label: name })),
-    apply: (map, value) => ({ kind: map.kind, sheet: value }),
+    apply: (map, value) => ({ kind: map.kind, member: map.member, sheet: value }),
   };
 }
 

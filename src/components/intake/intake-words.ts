@@ -1,6 +1,6 @@
 import type { IntakeProblem } from '../../core/intake';
 import { toConfirm, type IntakePreview, type IntakeView } from '../../schemas/intake';
-import { capital, formatCount, formatDate, formatNumber, formatSpelled } from '../ui/format';
+import { capital, formatCount, formatDate, formatSpelled } from '../ui/format';
 import type { Problem } from '../ui/Notice';
 import { readBill } from './bill-ledger';
 import { readBillsHeading } from './bill-words';
@@ -37,7 +37,8 @@ export function wantsWord(preview: IntakePreview, confirmed: readonly string[]):
 export function intakeHeading(intake: IntakeView): string {
   const { state, preview, fileName, engagement, problems } = intake;
   if (state === 'given-up') return `${fileName} was given up. Nothing of it is kept.`;
-  if (!preview) return `${fileName} cannot be read.`;
+  if (state === 'reading') return `${fileName} is being read.`;
+  if (!preview) return `${fileName} is not read. ${problems[0]?.message ?? ''}`.trim();
   const found = holds(preview, engagement.currency);
   if (!found) return `${fileName} cannot be read yet. ${problems[0]?.message ?? 'See the step Match.'}`;
   const ends: Record<string, string> = {
@@ -62,14 +63,16 @@ export function stepsOf(intake: IntakeView): StepTap[] {
       id: 'read',
       label: 'Read',
       done: preview !== null,
-      reason: preview ? `${formatNumber(preview.rowsInFile)} rows` : 'cannot be read',
+      reason: preview ? formatCount(preview.rowsInFile, 'row') : state === 'reading' ? 'being read' : 'not read',
     },
     {
       id: 'match',
       label: 'Match',
       done: matched,
       reason: !readable
-        ? 'to correct'
+        ? state === 'reading'
+          ? 'after reading'
+          : 'to correct'
         : left === 0
           ? 'all sure'
           : `${parts - left} of ${parts} sure, ${left} to confirm`,

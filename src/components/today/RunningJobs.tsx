@@ -2,7 +2,11 @@ import { cancelJob, useJob } from '../../client/jobs';
 import type { RunningView } from '../../schemas/today';
 import { Progress } from '../ui/Progress';
 
-const kindWords: Record<string, string> = { search: 'Search of settings', edition: 'Making an edition' };
+const kindWords: Record<string, string> = {
+  search: 'Search of settings',
+  edition: 'Making an edition',
+  'read-file': 'Reading a file',
+};
 
 function Running({ code, job: first }: RunningView) {
   const { job, secondsLeft } = useJob(first.id);

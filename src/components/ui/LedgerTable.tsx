@@ -23,6 +23,8 @@ export interface LedgerTableProps extends LedgerData {
   stack?: boolean;
   /** Islands only: actions at the row's end. */
   renderActions?: (row: LedgerRow) => ReactNode;
+  /** Islands only: what opens under a row where a cell `opens`. */
+  renderPanel?: (row: LedgerRow, close: () => void) => ReactNode;
   /** Islands only: the picture beside an opened reasoning. */
   renderPicture?: (row: LedgerRow, columnKey: string) => ReactNode;
 }
@@ -38,6 +40,7 @@ function cellClass(column: LedgerColumn, cell: LedgerCell): string | undefined {
   return classes(
     columnAlign(column) !== 'right' && columnAlign(column),
     column.wrap && 'wrap',
+    column.spare && 'spare',
     (column.strong || cell.strong) && 'strong',
     column.picked && 'picked',
     column.quiet && !cell.tone && 'quiet',
@@ -138,7 +141,7 @@ function Cells(props: {
  * `why` open their reasoning under the row.
  */
 export function LedgerTable(props: LedgerTableProps) {
-  const { columns, rows, total, label, roomy, stack, renderActions, renderPicture } = props;
+  const { columns, rows, total, label, roomy, stack, renderActions, renderPanel, renderPicture } = props;
   const [open, setOpen] = useState<OpenWhy | null>(null);
   const origin = useRef<HTMLButtonElement>(null);
   const close = useCallback(() => setOpen(null), []);
@@ -146,7 +149,7 @@ export function LedgerTable(props: LedgerTableProps) {
   const tail = renderActions ? 'Actions' : hasFindings ? 'Finding' : null;
   const width = columns.length + (tail ? 1 : 0);
   const figureOf = (row: LedgerRow) => (column: LedgerColumn, cell: LedgerCell) => {
-    if (!cell.why) return undefined;
+    if (!cell.why && !cell.opens) return undefined;
     const expanded = open?.rowId === row.id && open.columnKey === column.key;
     return (
       <button
@@ -167,7 +170,9 @@ export function LedgerTable(props: LedgerTableProps) {
         <tbody>
           {rows.map((row) => {
             const opened = open?.rowId === row.id ? open : null;
-            const why = opened && toCell(row.cells[opened.columnKey]).why;
+            const openedCell = opened && toCell(row.cells[opened.columnKey]);
+            const why = openedCell?.why;
+            const panel = openedCell?.opens ? renderPanel?.(row, close) : null;
             return (
               <Fragment key={row.id}>
                 {row.group && (
@@ -181,12 +186,21 @@ export function LedgerTable(props: LedgerTableProps) {
                   <Cells columns={columns} cells={row.cells} figure={figureOf(row)} stack={stack}>
                     {tail && (
                       <td className={renderActions ? 'row-actions' : 'left'}>
-                        {row.finding && <span className="finding-letter">{row.finding}</span>}
+                        {row.finding && (
+                          <span className={classes('finding-letter', row.caution && 'finding-letter-caution')}>
+                            {row.finding}
+                          </span>
+                        )}
                         {renderActions?.(row)}
                       </td>
                     )}
                   </Cells>
                 </tr>
+                {panel && (
+                  <tr className="why-row">
+                    <td colSpan={width}>{panel}</td>
+                  </tr>
+                )}
                 {opened && why && (
                   <tr className="why-row">
                     <td colSpan={width}>

@@ -23,6 +23,8 @@ export interface LedgerColumn {
   /** Head for readers only. */
   headUnseen?: boolean;
   wrap?: boolean;
+  /** Left out where rows are stacked on a phone: what opens from the row says it. */
+  spare?: boolean;
   width?: string;
 }
 
@@ -41,6 +43,8 @@ export interface LedgerCell {
   mark?: MarkProps;
   /** Opens under the row when the figure is pressed. */
   why?: WhyContent;
+  /** The same, with what the table's `renderPanel` gives. */
+  opens?: boolean;
 }
 
 export type LedgerValue = string | number | null | undefined | LedgerCell;
@@ -50,6 +54,8 @@ export interface LedgerRow {
   cells: Record<string, LedgerValue>;
   /** Letter in a square at the row's end, the same as on its slip. */
   finding?: string;
+  /** The letter in ochre instead of madder, as on its slip. */
+  caution?: boolean;
   /** `chosen`: opened or picked; `asks`: wants a word; `refused`. `subtotal`, `total`: sums among the rows. */
   kind?: 'plain' | 'chosen' | 'asks' | 'refused' | 'subtotal' | 'total';
   /** Heading line above this row. */

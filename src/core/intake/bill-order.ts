@@ -4,7 +4,8 @@ import { findDateOrder, orderInWords, type OrderFinding } from './stamp-order';
 import { StampScanner } from './stamps';
 import type { DateOrder } from './types';
 
-interface OrderInput {
+/** Columns of dates whose order is looked for. */
+export interface OrderInput {
   grid: Grid;
   rows: readonly number[];
   timeZone: string;
@@ -43,11 +44,14 @@ function scoreOf(input: OrderInput, order: DateOrder): number {
   const scanner = new StampScanner();
   const dayOf = (row: number, column: ColumnProfile | undefined): number =>
     column && input.grid.scan(row, column.index, scanner) && scanner.resolve(order) ? scanner.day : Number.NaN;
-  const periods = input.rows.map((row) => ({
-    from: dayOf(row, input.from),
-    to: dayOf(row, input.to),
-    days: input.days ? input.grid.number(row, input.days.index, '.') : Number.NaN,
-  }));
+  const periods = input.rows
+    .map((row) => ({
+      from: dayOf(row, input.from),
+      to: dayOf(row, input.to),
+      days: input.days ? input.grid.number(row, input.days.index, '.') : Number.NaN,
+    }))
+    // Lines of one bill repeat its dates.
+    .filter(({ from, to }, at, all) => !(from === all[at - 1]?.from && to === all[at - 1]?.to));
   let score = 0;
   periods.forEach((period, at) => {
     const length = period.to - period.from;

@@ -1,29 +1,40 @@
+import { figureDigits } from './bill-figures';
+import { findItems } from './bill-items';
+import { findLabels } from './bill-labels';
+import { filledDown, locateBills, type LocatedBills } from './bill-layout';
 import { billCellKind } from './bill-months';
 import { findPeriods } from './bill-periods';
+import { pairRates } from './bill-rates';
+import { meaningOf, settleDoubles } from './bill-roles';
 import { settleSums } from './bill-sums';
-import { billMeaning } from './bill-words';
-import { findBlock, type TableBlock } from './block';
+import { findYears, type FoundYears } from './bill-years';
+import type { TableBlock } from './block';
 import { profileColumns, sampleRows, shareOf, withoutFooters, type ColumnProfile } from './cells';
-import { decimalGuess, decimalVote, headerGuess } from './detect';
-import { IntakeError } from './errors';
+import { decimalGuess, headerGuess } from './detect';
 import { columnEvidence, guess, useOf, valuesShown, type RoleFinding } from './evidence';
-import { transpose, type Grid } from './grid';
+import type { Grid } from './grid';
 import { delimiterGuesses } from './guesses';
 import { mergeColumns, mergeEvidence } from './merge-map';
+import { voteDecimalMark, type DecimalVote } from './numbers';
 import type { OpenedTable } from './open';
 import type { ColumnEvidence, ColumnMap, ColumnUse, DateOrder, Guess, ReadOptions } from './types';
-import { unitOfHeader } from './units';
 
 /** A table of bills with its meaning settled. */
 export interface BillPlan {
   opened: OpenedTable;
-  /** The table with a row a bill; the file's own grid turned where it has a column a bill. */
+  /** The table with a row a bill or a line; the file's own grid turned where it has a column a bill. */
   grid: Grid;
   block: TableBlock;
+  /** What a line is called, by column. */
+  labels: readonly string[];
   columns: ColumnUse[];
   decimalMark: '.' | ',';
   order: DateOrder;
+  /** Years of months written without one. */
+  years: FoundYears | null;
   isTransposed: boolean;
+  /** A row is a line of a bill. */
+  isItems: boolean;
   columnMap: ColumnMap;
   evidence: ColumnEvidence[];
   guesses: Guess[];
@@ -35,22 +46,66 @@ export interface BillPlan {
  */
 export function planBills(opened: OpenedTable, options: ReadOptions): BillPlan {
   const map: Partial<ColumnMap> = options.columnMap ?? {};
-  const { grid, block, isTransposed } = locateBills(opened.grid, options.fileName, map);
-  const rows = withoutFooters(grid, sampleRows(block.firstRow, block.lastRow, 400));
-  const profiles = profileColumns(grid, block.names, rows, billCellKind);
-  const vote = decimalVote(
-    grid,
-    profiles,
-    rows,
-    opened.dialect.delimiter ? { delimiter: opened.dialect.delimiter } : {},
+  const located = locateBills(opened.grid, options.fileName, map);
+  const found = detect(opened, located, options, map);
+  const { grid, block, rows, evidence, decimalMark } = found;
+  const merged = mergeColumns(
+    evidence.map((line) => useOf(line)),
+    map,
+    block,
+    options.fileName,
   );
+  const shown = mergeEvidence(evidence, merged, map);
+  const columns = pairRates({ grid, rows, decimalMark, columns: merged }, shown);
+  const years = yearsOf({ opened, grid, block, columns }, options, map);
+  const settled: Settled = { ...found, columns, years, isTransposed: located.isTransposed };
+  return {
+    ...settled,
+    opened: { ...opened, dialect: { ...opened.dialect, decimalMark } },
+    columnMap: completeMap(opened, settled, map),
+    evidence: shown,
+    guesses: [
+      ...delimiterGuesses(opened, map),
+      headerGuess(grid, block),
+      layoutGuess(settled),
+      decimalGuess(found.vote, map),
+      found.orderGuess,
+      ...(years ? [years.guess] : []),
+    ],
+  };
+}
+
+type Settled = Pick<
+  BillPlan,
+  'grid' | 'block' | 'labels' | 'columns' | 'decimalMark' | 'order' | 'years' | 'isTransposed' | 'isItems'
+>;
+
+interface Detected extends Omit<Settled, 'columns' | 'years' | 'isTransposed'> {
+  rows: readonly number[];
+  evidence: ColumnEvidence[];
+  vote: DecimalVote;
+  orderGuess: Guess;
+}
+
+/** What every column is taken for before a map is laid over it. */
+function detect(opened: OpenedTable, located: LocatedBills, options: ReadOptions, map: Partial<ColumnMap>): Detected {
+  const { block, names, labels } = located;
+  const rows = withoutFooters(located.grid, sampleRows(block.firstRow, block.lastRow, 400));
+  const plain = profileColumns(located.grid, names, rows, billCellKind);
+  const vote = voteOf(located.grid, plain, rows, opened);
   const decimalMark = map.decimalMark ?? vote.mark;
-  const findings = new Map<number, RoleFinding>();
-  const order = findPeriods({ grid, profiles, rows, map, timeZone: options.timeZone, findings });
+  const periods = new Map<number, RoleFinding>();
+  const orderGuess = findPeriods({
+    grid: located.grid, profiles: plain, rows, map, timeZone: options.timeZone, findings: periods,
+  }); // prettier-ignore
+  const base: Columns = { grid: located.grid, profiles: plain, rows, decimalMark, findings: periods };
+  const items = located.isTransposed || map.layout === 'long' ? null : withItems(base, map.layout === 'items');
+  const table = items ?? base;
+  if (!items) findLabels(table);
+  const { grid, profiles, findings } = table;
   for (const profile of profiles)
-    if (!findings.has(profile.index)) findings.set(profile.index, meaningOf(grid, profile, rows));
-  settleTotals(grid, profiles, rows, decimalMark, findings);
-  settleSums({ grid, profiles, rows, decimalMark, findings });
+    if (!findings.has(profile.index)) findings.set(profile.index, meaningOf(grid, profile, rows, decimalMark));
+  if (!items) settleSums(table);
   settleDoubles(profiles, findings);
   const evidence = profiles.map((profile) =>
     columnEvidence(
@@ -59,29 +114,74 @@ export function planBills(opened: OpenedTable, options: ReadOptions): BillPlan {
       valuesShown(grid, profile, rows, decimalMark),
     ),
   );
-  const columns = mergeColumns(
-    evidence.map((line) => useOf(line)),
-    map,
-    block,
-    options.fileName,
-  );
-  const layout = guess('layout', isTransposed ? 'transposed' : 'long', [
-    [true, isTransposed ? 'A column holds one bill' : 'A row holds one bill'],
-  ]);
-  const settled = { grid, block, columns, decimalMark, order: order.order, isTransposed };
-  return {
-    ...settled,
-    opened: { ...opened, dialect: { ...opened.dialect, decimalMark } },
-    columnMap: completeMap(opened, settled, map),
-    evidence: mergeEvidence(evidence, columns, map),
-    guesses: [...delimiterGuesses(opened, map), headerGuess(grid, block), layout, decimalGuess(vote, map), order],
-  };
+  const isItems = items !== null;
+  return { grid, block, labels, rows, evidence, vote, orderGuess, decimalMark, order: orderGuess.order, isItems };
 }
 
-type Settled = Pick<BillPlan, 'grid' | 'block' | 'columns' | 'decimalMark' | 'order' | 'isTransposed'>;
+interface Columns {
+  grid: Grid;
+  profiles: readonly ColumnProfile[];
+  rows: readonly number[];
+  decimalMark: '.' | ',';
+  findings: Map<number, RoleFinding>;
+}
+
+/** The columns of a table with a row a line, its dates filled down; null if rows are bills. */
+function withItems(base: Columns, isGiven: boolean): Columns | null {
+  const grid = filledDown(base.grid);
+  const names = base.profiles.map((profile) => profile.name);
+  const filled: Columns = {
+    ...base,
+    grid,
+    profiles: profileColumns(grid, names, base.rows, billCellKind),
+    findings: new Map(base.findings),
+  };
+  findLabels(filled);
+  return findItems({ ...filled, isGiven }) ? filled : null;
+}
+
+/** Decimal mark by the figures alone, whatever units and signs stand beside them. */
+function voteOf(
+  grid: Grid,
+  profiles: readonly ColumnProfile[],
+  rows: readonly number[],
+  opened: OpenedTable,
+): DecimalVote {
+  const figures = profiles.filter((profile) => shareOf(profile, 'number') > 0.6);
+  const cells = figures.flatMap((profile) =>
+    rows.map((row) => figureDigits(grid.figureText(row, profile.index))).filter((text) => text !== ''),
+  );
+  return voteDecimalMark(cells, opened.dialect.delimiter === ';' ? ',' : '.');
+}
+
+function layoutGuess({ isTransposed, isItems }: Settled): Guess {
+  if (isItems)
+    return guess('layout', 'items', [
+      [true, 'Several rows of the same invoice or period, each with a label and an amount'],
+    ]);
+  return guess('layout', isTransposed ? 'transposed' : 'long', [
+    [true, isTransposed ? 'A column holds one bill' : 'A row holds one bill'],
+  ]);
+}
+
+/** Years of a table that names months alone, from the texts about it. */
+function yearsOf(
+  { opened, grid, block, columns }: Pick<BillPlan, 'opened' | 'grid' | 'block' | 'columns'>,
+  options: ReadOptions,
+  map: Partial<ColumnMap>,
+): FoundYears | null {
+  const month = columns.find((use) => use.role === 'month')?.index ?? -1;
+  if (month < 0 || columns.some((use) => use.role === 'year')) return null;
+  const rows = sampleRows(block.firstRow, block.lastRow, 5000);
+  const above = Array.from({ length: block.firstRow }, (_, row) =>
+    Array.from({ length: Math.min(grid.width(row), 60) }, (_unused, column) => grid.text(row, column)).join(' '),
+  );
+  const texts = [above.join(' '), opened.dialect.sheet ?? '', options.fileName];
+  return findYears({ grid, month, rows, texts, map });
+}
 
 function completeMap({ dialect }: OpenedTable, settled: Settled, map: Partial<ColumnMap>): ColumnMap {
-  const { grid, block, columns, decimalMark, order, isTransposed } = settled;
+  const { grid, block, columns, decimalMark, order, isTransposed, isItems, years } = settled;
   return {
     kind: 'bills',
     ...(dialect.sheet === undefined ? {} : { sheet: dialect.sheet }),
@@ -89,87 +189,12 @@ function completeMap({ dialect }: OpenedTable, settled: Settled, map: Partial<Co
     decimalMark,
     headerRow: block.headerRow === null ? null : grid.rowNumber(block.headerRow),
     firstRow: grid.rowNumber(block.firstRow),
-    layout: isTransposed ? 'transposed' : 'long',
+    layout: isTransposed ? 'transposed' : isItems ? 'items' : 'long',
     columns,
     stamp: { order },
     ...(map.periodEnds ? { periodEnds: map.periodEnds } : {}),
+    ...(map.meter === undefined ? {} : { meter: map.meter }),
+    ...(years ? { year: years.first } : {}),
+    ...(map.documents ? { documents: map.documents } : {}),
   };
-}
-
-/** A row a bill, or, where no row holds a date beside figures, a column a bill. */
-function locateBills(
-  grid: Grid,
-  fileName: string,
-  map: Partial<ColumnMap>,
-): { grid: Grid; block: TableBlock; isTransposed: boolean } {
-  if (map.layout === 'transposed') {
-    const turned = transpose(grid);
-    return { grid: turned, block: findBlock(turned, fileName, map, 'bills', billCellKind), isTransposed: true };
-  }
-  try {
-    return { grid, block: findBlock(grid, fileName, map, 'bills', billCellKind), isTransposed: false };
-  } catch (cause) {
-    if (!(cause instanceof IntakeError) || map.layout === 'long' || grid.rows > 300) throw cause;
-    const turned = transpose(grid);
-    try {
-      return { grid: turned, block: findBlock(turned, fileName, {}, 'bills', billCellKind), isTransposed: true };
-    } catch {
-      throw cause;
-    }
-  }
-}
-
-/** Meaning of a column of figures by its name and by currency signs or brackets in its cells. */
-function meaningOf(grid: Grid, profile: ColumnProfile, rows: readonly number[]): RoleFinding {
-  const isFigures = shareOf(profile, 'number') > (unitOfHeader(profile.name) ? 0.2 : 0.7);
-  if (!isFigures)
-    return {
-      role: 'ignore',
-      tests: [[true, profile.kinds.blank === profile.sampled ? 'Blank throughout' : 'Words, no figures']],
-    };
-  const texts = rows.map((row) => grid.figureText(row, profile.index)).filter((text) => text !== '');
-  const isMoney =
-    texts.filter((text) => /[$€£¥₹]|\b(USD|EUR|GBP|CAD|AUD|CHF|INR)\b|^\(.*\)$/.test(text)).length >
-      texts.length * 0.3 && texts.length > 0;
-  const { role, quantity, unit, tests } = billMeaning(profile.name, isMoney);
-  return { role, quantity, unit, tests };
-}
-
-/** One total: the greatest of those named so; others are subtotals, which repeat the lines. */
-function settleTotals(
-  grid: Grid,
-  profiles: readonly ColumnProfile[],
-  rows: readonly number[],
-  decimalMark: '.' | ',',
-  findings: Map<number, RoleFinding>,
-): void {
-  const sumOf = (profile: ColumnProfile): number =>
-    rows.reduce((sum, row) => sum + (grid.number(row, profile.index, decimalMark) || 0), 0);
-  const totals = profiles
-    .filter((profile) => findings.get(profile.index)?.role === 'total')
-    .sort((a, b) => sumOf(b) - sumOf(a) || b.index - a.index);
-  const subtotals = profiles.filter(
-    (profile) =>
-      findings.get(profile.index)?.role === 'charge' &&
-      /sub ?-?total|total .*(before|excl)|net total/i.test(profile.name),
-  );
-  for (const profile of [...totals.slice(1), ...subtotals]) {
-    findings.set(profile.index, { role: 'ignore', tests: [[true, 'A subtotal: it repeats lines of the bill']] });
-  }
-}
-
-/** A quantity has one column: a second one of the same meaning is left out, to be looked at. */
-function settleDoubles(profiles: readonly ColumnProfile[], findings: Map<number, RoleFinding>): void {
-  const seen = new Map<string, ColumnProfile>();
-  for (const profile of profiles) {
-    const finding = findings.get(profile.index);
-    if (!finding?.quantity) continue;
-    const first = seen.get(finding.quantity);
-    if (first)
-      findings.set(profile.index, {
-        role: 'ignore',
-        tests: [[false, `Means the same as “${first.name}”, which is taken`]],
-      });
-    else seen.set(finding.quantity, profile);
-  }
 }

@@ -1,16 +1,20 @@
-import type { DatedRow } from './bill-dates';
+import { isoDate } from '../load';
+import type { PlacedBill } from './bill-checks';
+import { amountOf, type Settled } from './bill-documents';
 import type { BillPlan } from './bill-plan';
-import type { BillReading, BillRecord, IntakeNote } from './types';
+import type { BillDocument, BillReading, IntakeNote, IntakeReport } from './types';
+
+/** What reading adds to the figures of the bills. */
+type Findings = Pick<IntakeReport, 'notes' | 'currency' | 'documents' | 'rateFaults'>;
 
 /** The report of a table of bills: interval fields are nought, sums and the highest demand are of what is printed. */
 export function reportOfBills(
   plan: BillPlan,
-  rows: readonly DatedRow[],
-  bills: readonly BillRecord[],
-  notes: IntakeNote[],
+  placed: readonly PlacedBill[],
+  findings: Findings,
 ): BillReading['report'] {
   const printed = (pick: (name: string) => boolean): number[] =>
-    bills.flatMap((bill) =>
+    placed.flatMap(({ bill }) =>
       Object.entries(bill.quantities)
         .filter(([name]) => pick(name))
         .map(([, figure]) => figure),
@@ -21,10 +25,10 @@ export function reportOfBills(
   };
   const highest = printed((name) => name.startsWith('maxKw'));
   const demands = highest.length > 0 ? highest : printed((name) => name.startsWith('billedKw'));
-  const currency = currencyOf(plan);
+  const { currency, ...others } = findings;
   return {
     format: plan.opened.format,
-    rowsRead: bills.length,
+    rowsRead: placed.flatMap(({ draft }) => draft.rows).length,
     intervals: 0,
     missing: 0,
     duplicates: 0,
@@ -35,22 +39,59 @@ export function reportOfBills(
     totalKvarhLagging: sum('kvarh'),
     totalKvarhLeading: sum('kvarhLeading'),
     maxKw: demands.length === 0 ? Number.NaN : Math.max(...demands),
-    notes,
     columnMap: plan.columnMap,
-    billRows: rows.map((row) => plan.grid.rowNumber(row.row)),
+    billRows: placed.map(({ draft }) => plan.grid.rowNumber(draft.dated.row)),
+    ...others,
     ...(currency ? { currency } : {}),
   };
 }
 
-/** A code, or a sign that stands for one currency only, in a header or the first bill. */
-function currencyOf(plan: BillPlan): string | undefined {
-  const money = plan.columns.filter((use) => use.role === 'charge' || use.role === 'total');
-  const texts = money.flatMap((use) => [use.name, plan.grid.text(plan.block.firstRow, use.index)]);
-  for (const text of texts) {
-    const code = /\b(USD|EUR|GBP|CAD|AUD|CHF|INR|ZAR|PLN|SEK|NOK|DKK|CZK|JPY|KRW|MXN|BRL|NZD)\b/.exec(text)?.[1];
-    if (code) return code;
-    if (text.includes('€')) return 'EUR';
-    if (text.includes('£')) return 'GBP';
-  }
-  return undefined;
+/** Every document of the file with the bill it stands in. */
+export function documentsOf(
+  plan: BillPlan,
+  settled: readonly Settled[],
+  placed: readonly PlacedBill[],
+): BillDocument[] {
+  const bills = placed.map(({ draft }) => draft.dated.row);
+  return settled.map((one) => {
+    const { dated, where, invoice } = one.draft;
+    const isDated = !Number.isNaN(dated.from + dated.to);
+    const bill = one.stands ? bills.indexOf((one.into ?? one).draft.dated.row) : -1;
+    return {
+      row: plan.grid.rowNumber(dated.row),
+      where,
+      ...(invoice ? { invoice } : {}),
+      period: isDated ? { from: isoDate(dated.from), to: isoDate(dated.to) } : null,
+      total: one.draft.total,
+      kind: one.kind,
+      bill: bill < 0 ? null : bill,
+      why: one.why,
+    };
+  });
 }
+
+/** Notes on documents that do not stand as bills of their own. */
+export function noteDocuments(settled: readonly Settled[], notes: IntakeNote[]): void {
+  for (const { draft, kind, stands, into, why } of settled) {
+    if (stands && !into) continue;
+    const amount = amountOf(draft);
+    notes.push({
+      code: stands ? 'document-joined' : kind === 'no-bill' ? 'document-undated' : 'document-left-out',
+      message: `${nameOf(kind)}${draft.invoice ? ` ${draft.invoice}` : ''}${amount === null ? '' : ` of ${amount.toFixed(2)}`} ${stands ? 'is joined to another' : 'is left out'}. ${why}.`,
+      where: draft.where,
+    });
+  }
+}
+
+const nameOf = (kind: BillDocument['kind']): string =>
+  ({
+    bill: 'The bill',
+    estimate: 'The estimated bill',
+    correction: 'The correction',
+    cancelled: 'The invoice',
+    'credit-note': 'The credit note',
+    part: 'A part of the invoice',
+    repeat: 'The repeated bill',
+    nought: 'The bill of noughts',
+    'no-bill': 'The document',
+  })[kind];

@@ -4,7 +4,7 @@ import { headerWords, mentions, namesPowerFactor } from './words';
 
 /** What the name of a column of a table of bills says. */
 interface BillMeaning {
-  role: 'quantity' | 'charge' | 'total' | 'ignore';
+  role: 'quantity' | 'charge' | 'rate' | 'total' | 'ignore';
   quantity?: string;
   unit?: string;
   tests: Test[];
@@ -16,21 +16,34 @@ const rateWords =
   /(\bper\b|\/)\s*(kwh|kw|kva|kvarh|mwh|day|month)\b|\b(unit price|price|rate(?! class)|tariff rate|preis|prezzo|precio)\b/i;
 const idWords =
   /\b(accounts?|meter|serial|id|no|nr|number|invoice|reference|ref|rate class|class|schedule|tariff|service point|customer name|name|site|address|type|status|year)\b/i;
-const leftMoney = /\b(previous balance|balance forward|balance|payments?|paid|deposit)\b/i;
+const leftMoney = /\b(previous balance|balance forward|balance|arrears|payments?|paid|deposit|carried forward)\b/i;
+const lateMoney =
+  /\b(late (fee|payment|charge)s?|interest|penalty interest|dunning|reminder fee|mahngeb[uü]hr|verzugszins(en)?|recargo por mora|int[eé]r[eê]ts?)\b/i;
 const totalWords =
-  /\b(total|gesamt|totale|importe total|montant total|amount due|total due|bill amount|net amount|grand total|summe|sum)\b/i;
+  /\b(total|gesamt|totale|importe total|montant total|amount due|total due|bill amount|invoice (amount|total|value)|(amount|invoice) billed|(current|new) charges|amount payable|net amount|gross amount|grand total|summe|sum|rechnungsbetrag|gesamtbetrag)\b/i;
 
 /** A header as lower-case words with single spaces, signs of money kept. */
 const plain = (name: string): string => headerWords(name).join(' ');
+
+/** Payments and what was owed before: no part of the bill. */
+export const isBalance = (name: string): boolean => leftMoney.test(plain(name));
+
+/** What is asked for paying late: no part of the bill unless its total says so. */
+export const isLateFee = (name: string): boolean => lateMoney.test(plain(name));
+
+/** A total of the whole bill by its name. */
+export const namesTotal = (name: string): boolean =>
+  totalWords.test(plain(name)) && !/\bsub ?total\b/.test(plain(name));
 
 /** Reads the meaning of a column's name; `looksLikeMoney` is what its cells show. */
 export function billMeaning(name: string, looksLikeMoney: boolean): BillMeaning {
   const words = plain(name);
   if (words === '') return { role: 'ignore', tests: [[true, 'It has no name']] };
   if (rateWords.test(name) || /\b(c|ct|cents?) ?\/? ?kwh\b/i.test(name))
-    return { role: 'ignore', tests: [[true, 'Named as a rate, not an amount']] };
-  if (leftMoney.test(words))
-    return { role: 'ignore', tests: [[true, 'Named as a payment or balance, no part of the bill']] };
+    return { role: 'rate', tests: [[true, 'Named as a rate, not an amount']] };
+  if (isBalance(name)) return { role: 'ignore', tests: [[true, 'Named as a payment or balance, no part of the bill']] };
+  if (isLateFee(name))
+    return { role: 'ignore', tests: [[true, 'Named as a fee for paying late, no part of the bill']] };
   const isMoney = looksLikeMoney || moneyWords.test(words) || moneyWords.test(name);
   if (isMoney && !isPlainQuantity(name, looksLikeMoney)) return moneyMeaning(words, looksLikeMoney);
   const quantity = quantityOf(name);
@@ -52,19 +65,21 @@ function isPlainQuantity(name: string, looksLikeMoney: boolean): boolean {
   );
 }
 
+/** A total of one part of the bill: of its energy, of its taxes. */
+const namesPart = (words: string): boolean =>
+  /\b(energy|demand|delivery|supply|kwh|kw|before)\b/.test(words) ||
+  (/\b(tax(es)?|vat)\b/.test(words) && !/\b(incl|including|inclusive|inkl|with|after)\b/.test(words));
+
 function moneyMeaning(words: string, looksLikeMoney: boolean): BillMeaning {
   const why: Test = looksLikeMoney ? [true, 'Its cells are money'] : [true, 'Named as money'];
-  if (
-    totalWords.test(words) &&
-    !/\bsub ?total\b/.test(words) &&
-    !/\b(energy|demand|delivery|supply|kwh|kw|tax|before)\b/.test(words)
-  ) {
+  if (namesTotal(words) && !namesPart(words)) {
     return { role: 'total', tests: [why, [true, 'Named as the total']] };
   }
   return { role: 'charge', tests: [why] };
 }
 
-function quantityOf(name: string): { quantity: string; unit?: string; tests: Test[] } | null {
+/** The quantity a name speaks of, with its unit; null if it names none. */
+export function quantityOf(name: string): { quantity: string; unit?: string; tests: Test[] } | null {
   if (namesPowerFactor(name)) return { quantity: 'powerFactor', tests: [[true, 'Named a power factor']] };
   const unit = unitOfHeader(name);
   const words = plain(name);
@@ -74,7 +89,9 @@ function quantityOf(name: string): { quantity: string; unit?: string; tests: Tes
   const suffix = periodSuffix(words);
   const isBilled = /\b(billed|billing|billable|chargeable|verrechnet)\b/.test(words);
   const isContract =
-    /\b(contract(ed)?|subscribed|reserved|agreed|capacity|contratada|souscrite|impegnata|vertraglich)\b/.test(words);
+    /\b(contract(ed|ual)?|subscribed|reserved|agreed|capacity|contratada|souscrite|impegnata|vertraglich)\b/.test(
+      words,
+    );
   const demand = (kind: string): string =>
     (isContract ? `contract${kind}` : isBilled ? `billed${kind}` : `max${kind}`) + suffix;
   const result = (own: string, fallback: string): { quantity: string; unit: string; tests: Test[] } => ({
@@ -97,7 +114,8 @@ function quantityOf(name: string): { quantity: string; unit?: string; tests: Tes
   if (quantity === 'active')
     return result(mentions(name, 'export') && !/\bimport\b/.test(words) ? `kwhExport${suffix}` : `kwh${suffix}`, 'kWh');
   if (/\bdemand\b/.test(words)) return result(demand('Kw'), 'kW');
-  if (/\b(consumption|usage|energy|consumo|verbrauch|consommation)\b/.test(words)) return result(`kwh${suffix}`, 'kWh');
+  if (/\b(consumption|usage|energy|consumo|verbrauch|consommation|wirkarbeit|verbruik)\b/.test(words))
+    return result(`kwh${suffix}`, 'kWh');
   return null;
 }
 

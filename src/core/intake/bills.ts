@@ -1,121 +1,122 @@
-import { addDays, isoDate } from '../load';
-import { placeOf, readDates, type DatedRow } from './bill-dates';
+import { isoDate } from '../load';
+import { checkPeriods, noteFigures, rateFaults, type PlacedBill } from './bill-checks';
+import { currencyOf } from './bill-currency';
+import { placeOf, readDates } from './bill-dates';
+import { settleDocuments, type Settled } from './bill-documents';
+import { draftOf, type BillDraft } from './bill-drafts';
 import { settleEnds } from './bill-ends';
-import { reportOfBills } from './bill-report';
+import { itemDrafts } from './bill-item-drafts';
+import { checkMeters, metersOf, noteMeters } from './bill-meters';
+import { joinedDraft } from './bill-parts';
 import type { BillPlan } from './bill-plan';
-import { IntakeError, intakeError } from './errors';
-import { columnLetter } from './grid';
+import { documentsOf, noteDocuments, reportOfBills } from './bill-report';
+import { IntakeError } from './errors';
+import { guess } from './evidence';
 import { openNotes } from './guesses';
-import { isBlankWord } from './numbers';
-import type { BillReading, BillRecord, ColumnUse, Guess, IntakeNote, IntakeProblem, ReadOptions } from './types';
-import { scaled, unitMeaning } from './units';
+import type { BillDocument, BillReading, BillRecord, Guess, IntakeNote, IntakeProblem, ReadOptions } from './types';
+
+/** What a table of bills holds, whether or not it can stand. */
+export interface BillTable {
+  documents: BillDocument[];
+  meters: string[];
+  guesses: Guess[];
+  problems: IntakeProblem[];
+  reading: BillReading;
+}
 
 /**
  * Reads the bills of a planned table.
  * @throws {IntakeError} for periods that cannot be told, run backwards or overlap, and for cells that hold no figure.
  */
-export function readPlannedBills(plan: BillPlan, options: ReadOptions): BillReading & { guesses: Guess[] } {
-  const notes: IntakeNote[] = openNotes(plan.guesses, plan.opened);
-  const dated = readDates(plan, options, notes);
-  const ends = settleEnds(plan, dated, options, notes);
-  const bills = dated.map((row) => billOf(plan, row, options));
-  checkPeriods(plan, dated, bills, options, notes);
-  noteSums(plan, dated, bills, notes);
-  return { bills, report: reportOfBills(plan, dated, bills, notes), guesses: [ends] };
+export function readPlannedBills(plan: BillPlan, options: ReadOptions): BillReading {
+  const { reading, problems } = readBillTable(plan, options);
+  if (problems.length > 0) throw new IntakeError(problems.slice(0, 20));
+  return reading;
 }
 
-function billOf(plan: BillPlan, dated: DatedRow, options: ReadOptions): BillRecord {
-  const { grid, decimalMark } = plan;
-  const quantities: [string, number][] = [];
-  const charges: BillRecord['charges'] = [];
-  let total: number | null = null;
-  for (const use of plan.columns) {
-    if (use.role !== 'quantity' && use.role !== 'charge' && use.role !== 'total') continue;
-    const text = grid.text(dated.row, use.index);
-    if (isBlankWord(text)) continue;
-    const figure = grid.number(dated.row, use.index, decimalMark) * (use.factor ?? 1);
-    if (Number.isNaN(figure)) {
-      throw intakeError(
-        `“${text.slice(0, 40)}” under “${use.name}” is no figure.`,
-        `${options.fileName}, ${placeOf(plan, dated.row)}`,
-        'Correct the cell, or leave the column out in the column map.',
-      );
-    }
-    if (use.role === 'total') total = figure;
-    else if (use.role === 'charge')
-      charges.push({ label: use.name || `Column ${columnLetter(use.index)}`, amount: figure });
-    else quantities.push([use.quantity ?? 'kwh', quantityFigure(use, figure, text)]);
-  }
+/**
+ * As `readPlannedBills`, with the documents and what speaks against them as bills.
+ * @throws {IntakeError} for dates and figures that cannot be read, several meters, several currencies.
+ */
+export function readBillTable(plan: BillPlan, options: ReadOptions): BillTable {
+  const notes: IntakeNote[] = openNotes(plan.guesses, plan.opened);
+  const meters = metersOf(plan);
+  checkMeters(plan, meters, options);
+  const { dated, undated } = readDates(plan, options);
+  noteMeters(plan, dated, notes);
+  const drafts = draftsOf(plan, dated, options, notes).filter(
+    ({ meter }) => meters.length === 0 || meter === plan.columnMap.meter || meters.length === 1,
+  );
+  noteUndated(plan, undated, notes);
+  const ends = settleEnds(
+    plan,
+    drafts.map((draft) => draft.dated),
+    options,
+    notes,
+  );
+  const rowOf = (draft: BillDraft): number => plan.grid.rowNumber(draft.dated.row);
+  const settled = settleDocuments(drafts, plan.columnMap.documents ?? [], rowOf);
+  const placed = placedBills(settled);
+  const problems = checkPeriods(placed, options, notes);
+  noteDocuments(settled, notes);
+  noteFigures(placed, notes);
+  const rows = drafts.flatMap((draft) => draft.rows);
+  const currency = currencyOf(plan, rows, options);
+  const faults = rateFaults(placed, currency, notes);
+  const documents = documentsOf(plan, settled, placed);
+  const report = reportOfBills(plan, placed, { notes, currency, documents, rateFaults: faults });
+  const meterGuess = plan.columnMap.meter
+    ? [guess('meter', plan.columnMap.meter, [[true, `One of ${meters.length} in the file`]])]
+    : [];
   return {
-    period: { from: isoDate(dated.from), to: isoDate(dated.to) },
-    quantities: Object.fromEntries(quantities),
-    charges,
-    total,
+    documents,
+    meters,
+    problems,
+    guesses: [ends, ...meterGuess],
+    reading: { bills: placed.map(({ bill }) => bill), report },
   };
 }
 
-/** In kWh, kW, kVA, kvarh, kvar; the power factor as a fraction. */
-function quantityFigure(use: ColumnUse, figure: number, text: string): number {
-  if (use.quantity === 'powerFactor')
-    return text.includes('%') || use.unit === '%' || Math.abs(figure) > 1.5 ? figure / 100 : figure;
-  return scaled(figure, unitMeaning(use.unit ?? '')?.factor ?? 1);
-}
-
-function checkPeriods(
+function draftsOf(
   plan: BillPlan,
-  rows: readonly DatedRow[],
-  bills: readonly BillRecord[],
+  dated: Parameters<typeof itemDrafts>[1],
   options: ReadOptions,
   notes: IntakeNote[],
-): void {
-  const problems: IntakeProblem[] = [];
-  rows.forEach((row, at) => {
-    const bill = bills[at];
-    const next = rows[at + 1];
-    const place = placeOf(plan, row.row);
-    if (!bill) return;
-    if (row.to <= row.from) {
-      problems.push({
-        message: `The period from ${bill.period.from} to ${bill.period.to} has no day.`,
-        where: `${options.fileName}, ${place}`,
-        remedy: 'Check which column is the first and which the last day, and the order of day and month.',
-      });
-    } else if (row.to - row.from > 400) {
-      problems.push({
-        message: `The period from ${bill.period.from} to ${bill.period.to} is longer than a year.`,
-        where: `${options.fileName}, ${place}`,
-        remedy: 'Check the dates of the row and the order of day and month in the column map.',
-      });
-    }
-    if (!next) return;
-    const [own, other] = [placeOf(plan, row.row), placeOf(plan, next.row)];
-    if (next.from < row.to) {
-      problems.push({
-        message: `The bills in ${own} (${bill.period.from} to ${bill.period.to}) and ${other} (from ${isoDate(next.from)}) overlap.`,
-        where: `${options.fileName}, ${own} and ${other}`,
-        remedy:
-          'Keep one of them: an estimated bill and its correction, or two meters, cannot both stand for the same days.',
-      });
-    } else if (next.from > row.to) {
-      notes.push({
-        code: 'period-gap',
-        message: `No bill covers ${bill.period.to} to ${addDays(isoDate(next.from), -1)}.`,
-        where: `between ${own} and ${other}`,
-      });
-    }
-  });
-  if (problems.length > 0) throw new IntakeError(problems.slice(0, 20));
+): BillDraft[] {
+  return plan.isItems ? itemDrafts(plan, dated, options, notes) : dated.map((row) => draftOf(plan, row, options));
 }
 
-function noteSums(plan: BillPlan, rows: readonly DatedRow[], bills: readonly BillRecord[], notes: IntakeNote[]): void {
-  bills.forEach((bill, at) => {
-    if (bill.total === null || bill.charges.length === 0) return;
-    const sum = bill.charges.reduce((running, charge) => running + charge.amount, 0);
-    if (Math.abs(sum - bill.total) < 0.005 + 1e-9 * Math.abs(sum)) return;
-    notes.push({
-      code: 'sum-differs',
-      message: `The lines add up to ${sum.toFixed(2)}, the total printed is ${bill.total.toFixed(2)}: ${(bill.total - sum).toFixed(2)} apart.`,
-      where: placeOf(plan, rows[at]?.row ?? 0),
-    });
+function noteUndated(plan: BillPlan, undated: readonly number[], notes: IntakeNote[]): void {
+  if (undated.length === 0) return;
+  notes.push({
+    code: 'rows-left-out',
+    message: `${undated.length} undated ${undated.length === 1 ? 'row is' : 'rows are'} no bill: totals or remarks.`,
+    where: undated
+      .slice(0, 8)
+      .map((row) => placeOf(plan, row))
+      .join(', '),
   });
 }
+
+/** The bills that stand, in the order of time. */
+function placedBills(settled: readonly Settled[]): PlacedBill[] {
+  return settled
+    .filter((one) => one.stands && !one.into)
+    .map((one) =>
+      joinedDraft(
+        one,
+        settled.filter((other) => other.stands && other.into === one),
+      ),
+    )
+    .sort((a, b) => a.dated.from - b.dated.from || a.dated.row - b.dated.row)
+    .map((draft) => ({ draft, bill: billOf(draft) }));
+}
+
+const billOf = ({ dated, quantities, charges, total, invoice, marks }: BillDraft): BillRecord => ({
+  period: { from: isoDate(dated.from), to: isoDate(dated.to) },
+  quantities,
+  charges,
+  total,
+  ...(invoice ? { invoice } : {}),
+  ...(marks.has('estimated') && !marks.has('corrected') ? { isEstimated: true } : {}),
+});

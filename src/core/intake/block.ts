@@ -13,6 +13,8 @@ export interface TableBlock {
   names: string[];
   /** Rows above the header with anything in them. */
   preambleRows: number;
+  /** First column of each of several tables laid side by side; absent where there is one. */
+  sections?: number[];
 }
 
 const searchRows = 80;

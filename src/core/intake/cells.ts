@@ -57,7 +57,7 @@ export function sampleRows(first: number, last: number, wanted = 500): number[] 
 
 /** First words of rows of totals, averages and remarks under or between the data. */
 export const footerWords =
-  /^["'\s]*(grand\s+)?(sub)?(total|sum|summe|gesamt|totale|somma|suma|average|mean|mittel|media|moyenne|max|maximum|min|minimum|end of|note|remark|source|eof|report|generated|printed)/i;
+  /^["'\s]*((grand|daily|day|weekly|monthly|hourly|yearly|annual|tages|wochen|monats|jahres|zwischen|end)[\s-]*)?(sub)?(total|sum|summe|gesamt|totale|somma|suma|average|mean|mittel|media|moyenne|max|maximum|min|minimum|end of|note|remark|source|eof|report|generated|printed)/i;
 
 /** The rows that do not begin like a footer. */
 export function withoutFooters(grid: Grid, rows: readonly number[]): number[] {

@@ -28,7 +28,7 @@ export function channelMeaning(name: string, unitGiven: UnitMeaning | null = nul
   if (namesPowerFactor(name))
     return { role: 'power-factor', unit: null, measure: 'energy', why: 'Named a power factor', isPlain: true };
   if (!unit && isForeignUnit(name)) return ignored('Its unit is none of power or energy');
-  const measure = unit?.measure ?? 'energy';
+  const measure = unit?.measure ?? usualMeasure(name);
   const coded = codedChannel(name);
   if (coded && fitsUnit(coded.role, unit)) return { ...coded, unit, measure, isPlain: true };
   const isReactive = unit
@@ -42,11 +42,27 @@ export function channelMeaning(name: string, unitGiven: UnitMeaning | null = nul
     return { ...ignored('Its name speaks of no power or energy'), isPlain: false };
   }
   const isExport = mentions(name, 'export') && !mentions(name, 'lagging');
-  const named = unit ? `Named in ${unit.unit}` : 'Named as energy, without a unit';
+  const named = unit ? `Named in ${unit.unit}` : `Named as ${measure}, without a unit`;
   return isExport
     ? { role: 'export', unit, measure, why: `${named}, delivered to the grid`, isPlain: true }
-    : { role: 'active', unit, measure, why: named, isPlain: unit !== null };
+    : isContradictory(name, unit)
+      ? {
+          role: 'active',
+          unit,
+          measure,
+          why: `${named}, a unit of power, though its name speaks of energy`,
+          isPlain: false,
+        }
+      : { role: 'active', unit, measure, why: named, isPlain: unit !== null };
 }
+
+/** A name of energy over a unit of power. */
+export const isContradictory = (name: string, unit: UnitMeaning | null): boolean =>
+  unit?.measure === 'power' && mentions(name, 'energy');
+
+/** Names of power that say nothing of energy or consumption are average power; all else without a unit is energy. */
+const usualMeasure = (name: string): Measure =>
+  mentions(name, 'power') && !mentions(name, 'energy') ? 'power' : 'energy';
 
 /** A code counts only where the unit, if there is one, is of its quantity. */
 function fitsUnit(role: IntervalRole, unit: UnitMeaning | null): boolean {

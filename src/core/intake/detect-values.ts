@@ -1,27 +1,13 @@
-import type { TableBlock } from './block';
+import { set, type Candidate, type ValueInput } from './candidates';
 import { shareOf, type ColumnProfile } from './cells';
-import { channelMeaning, type ChannelMeaning } from './channel-words';
+import { channelMeaning } from './channel-words';
+import { chooseReactive, dropIdleSense } from './detect-reactive';
+import { sensedFactor } from './power-factor';
 import { preambleUnit } from './preamble';
 import { isConstant, onlyGrows } from './registers';
-import type { RoleFinding, Test } from './evidence';
-import type { Grid } from './grid';
+import type { Test } from './evidence';
 import { unitOfHeader } from './units';
-import { mentions, namesRegister } from './words';
-
-interface ValueInput {
-  grid: Grid;
-  block: TableBlock;
-  profiles: readonly ColumnProfile[];
-  rows: readonly number[];
-  decimalMark: '.' | ',';
-  findings: Map<number, RoleFinding>;
-}
-
-interface Candidate {
-  profile: ColumnProfile;
-  meaning: ChannelMeaning;
-  figures: Float64Array;
-}
+import { mentions, namesPowerFactor, namesRegister } from './words';
 
 /** Finds what the columns of figures of a long table measure. */
 export function findChannels(input: ValueInput): void {
@@ -44,6 +30,7 @@ export function findChannels(input: ValueInput): void {
     chooseActive(input, used);
   } else nameActive(input, candidates);
   chooseReactive(input, used);
+  dropIdleSense(input);
   for (const candidate of candidates) {
     if (input.findings.has(candidate.profile.index)) continue;
     const role = candidate.meaning.role === 'export' ? 'export' : 'ignore';
@@ -55,21 +42,12 @@ export function findChannels(input: ValueInput): void {
 function isFigures(profile: ColumnProfile): boolean {
   const isNamed = unitOfHeader(profile.name) !== null;
   const filled = profile.sampled - profile.kinds.blank;
+  if (namesPowerFactor(profile.name) && [...profile.distinct.keys()].some((text) => sensedFactor(text))) return true;
   return filled === 0 ? isNamed : shareOf(profile, 'number') > (isNamed ? 0.2 : 0.9);
 }
 
 function figuresOf(input: ValueInput, profile: ColumnProfile): Float64Array {
   return Float64Array.from(input.rows, (row) => input.grid.number(row, profile.index, input.decimalMark));
-}
-
-const usualUnit = (role: string): string =>
-  role.startsWith('reactive') ? 'kvarh' : role === 'apparent' ? 'kVAh' : 'kWh';
-
-function set(input: ValueInput, candidate: Candidate, role: RoleFinding['role'], tests: Test[]): void {
-  const { unit, measure } = candidate.meaning;
-  const isUsed = role !== 'ignore' && role !== 'power-factor';
-  const own = unit ? { unit: unit.unit, measure } : { unit: usualUnit(role), measure, isUnitAssumed: true };
-  input.findings.set(candidate.profile.index, { role, tests, ...(isUsed ? own : {}) });
 }
 
 /** One value column whose quantity another column of the row names. */
@@ -195,41 +173,5 @@ function nameActive(input: ValueInput, candidates: Candidate[]): void {
     const several: Test[] =
       chosen.length > 1 ? [[false, `One of ${chosen.length} columns that may each be a meter`]] : [];
     set(input, candidate, 'active', [...activeTests(candidate, false), ...several]);
-  }
-}
-
-/** Ratings of equipment and contracts that stand in every row. */
-const platesWords =
-  /\b(name ?plate|rated|rating|transformer|trafo|contract(ed)?|subscribed|souscrite|installed|capacity|nenn\w*)\b/i;
-
-/** Lagging and leading apart, or one signed column; apparent energy or a power factor serve only where both lack. */
-function chooseReactive(input: ValueInput, used: Candidate[]): void {
-  const reactive = used.filter((candidate) => candidate.meaning.role.startsWith('reactive'));
-  const best = (['energy', 'register', 'power'] as const).find((measure) =>
-    reactive.some((candidate) => candidate.meaning.measure === measure),
-  );
-  for (const candidate of reactive) {
-    const tests: Test[] = [[candidate.meaning.isPlain, candidate.meaning.why]];
-    const filled = candidate.figures.filter((figure) => !Number.isNaN(figure));
-    const isVaried = filled.some((figure) => figure !== 0);
-    tests.push([isVaried, isVaried ? 'Figures throughout' : 'Nought throughout: cannot be tested on this file']);
-    const signed = filled.some((figure) => figure < 0);
-    if (candidate.meaning.measure !== best)
-      set(input, candidate, 'ignore', [[true, 'The other reactive column says the same']]);
-    else if (candidate.meaning.role === 'reactive-signed' && !signed) {
-      set(input, candidate, 'reactive-lagging', [...tests, [true, 'None below nought: taken as lagging']]);
-    } else set(input, candidate, candidate.meaning.role, tests);
-  }
-  for (const candidate of used) {
-    const { role } = candidate.meaning;
-    if (role !== 'apparent' && role !== 'power-factor') continue;
-    const isPlate = platesWords.test(candidate.profile.name);
-    const hasApparent = used.some(
-      (other) => other.meaning.role === 'apparent' && !platesWords.test(other.profile.name),
-    );
-    const serves = reactive.length === 0 && !isPlate && (role === 'apparent' || !hasApparent);
-    const unused = isPlate ? 'Named as a rating, not a reading' : 'Not needed beside the reactive columns';
-    const why = serves ? 'No reactive column: kvarh are worked out from it, taken as lagging' : unused;
-    set(input, candidate, serves ? role : 'ignore', [[!serves, why]]);
   }
 }

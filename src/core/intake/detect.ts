@@ -4,9 +4,12 @@ import type { TableBlock } from './block';
 import { findChannels } from './detect-values';
 import { findTimeColumns } from './detect-time';
 import { columnEvidence, guess, useOf, valuesShown, type RoleFinding, type Test } from './evidence';
-import type { Grid } from './grid';
+import { columnLetter, type Grid } from './grid';
 import { isBlankWord, voteDecimalMark, type DecimalVote } from './numbers';
-import { preambleUnit } from './preamble';
+import { senseOf } from './power-factor';
+import { preambleMultiplier, preambleUnit } from './preamble';
+import { furtherStamps } from './further-stamps';
+import { valueRoles } from './extract';
 import { qualityOf } from './quality';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, StampStyle } from './types';
 import { findWideColumns, type WideColumns } from './wide';
@@ -41,9 +44,10 @@ export function detectColumns(
       [wide?.sure ?? true, wide?.why ?? 'Each row holds the readings of one interval'],
     ]),
   );
+  const sections = block.sections ?? [0];
   const time = findTimeColumns({
     grid,
-    profiles,
+    profiles: profiles.slice(0, sections[1]),
     rows,
     timeZone: options.timeZone,
     map: options.map,
@@ -51,7 +55,10 @@ export function detectColumns(
     decimalMark,
   });
   guesses.push(...time.guesses);
-  const findings = new Map<number, RoleFinding>(time.findings);
+  const findings = new Map<number, RoleFinding>([
+    ...time.findings,
+    ...furtherStamps(profiles, time.findings, sections),
+  ]);
   if (wide) for (const use of wide.columns) findings.set(use.index, wideFinding(grid, block, wide));
   const open = profiles.filter((profile) => !findings.has(profile.index));
   findLabels(open, findings);
@@ -60,16 +67,23 @@ export function detectColumns(
   for (const profile of remaining)
     if (!findings.has(profile.index))
       findings.set(profile.index, { role: 'ignore', tests: [[true, 'Holds nothing an interval needs']] });
+  const multiplier = preambleMultiplier(grid, block);
+  const factor = multiplier?.isUnapplied ? multiplier.factor : null;
+  if (factor !== null) proposeFactor(findings, factor, multiplier?.words ?? '');
   const evidence = profiles.map((profile) =>
     columnEvidence(
       profile,
       findings.get(profile.index) ?? { role: 'ignore', tests: [] },
       valuesShown(grid, profile, rows, decimalMark),
+      columnLetter(grid.sourceColumn?.(profile.index) ?? profile.index),
     ),
   );
   const minutes = new Map(wide?.columns.map((use) => [use.index, use.minuteOfDay]) ?? []);
   const columns = evidence.map((line) =>
-    useOf(line, minutes.has(line.index) ? { minuteOfDay: minutes.get(line.index) ?? 0 } : {}),
+    useOf(line, {
+      ...(minutes.has(line.index) ? { minuteOfDay: minutes.get(line.index) ?? 0 } : {}),
+      ...(factor !== null && isMultiplied(line.takenAs) ? { factor } : {}),
+    }),
   );
   const stamp: StampStyle = { ...time.stamp, ...(wide ? { stepMinutes: wide.stepMinutes, marks: 'begin' } : {}) };
   return {
@@ -80,6 +94,16 @@ export function detectColumns(
     evidence,
     guesses,
   };
+}
+
+const isMultiplied = (role: RoleFinding['role']): boolean =>
+  role === 'day-value' || role === 'value' || (valueRoles.has(role) && role !== 'power-factor');
+
+/** A multiplier that the file says is not in its figures yet is proposed, to be confirmed. */
+function proposeFactor(findings: ReadonlyMap<number, RoleFinding>, factor: number, words: string): void {
+  for (const finding of findings.values())
+    if (isMultiplied(finding.role))
+      finding.tests.push([false, `Multiplied by ${factor}: above the table stands “${words}”`]);
 }
 
 /** A wide table's unit stands in a header, above the table, or nowhere. */
@@ -144,6 +168,13 @@ function findLabels(profiles: readonly ColumnProfile[], findings: Map<number, Ro
     const isMark = isText && mentions(profile.name, 'quality');
     if (filled === 0 || profile.isManyValued || (unitOfHeader(profile.name) && !isMark)) continue;
     const words = [...profile.distinct.keys()];
+    if (isSenses(profile, words)) {
+      findings.set(profile.index, {
+        role: 'sense',
+        tests: [[true, `Names the sense of each row: ${words.slice(0, 4).join(', ')}`]],
+      });
+      continue;
+    }
     const isUnit = (word: string): boolean => unitMeaning(word) !== null;
     // A unit of another trade (therms) beside those of energy names rows to leave out.
     const isUnits =
@@ -174,6 +205,11 @@ function findLabels(profiles: readonly ColumnProfile[], findings: Map<number, Ro
     }
   }
 }
+
+/** Words of lagging and leading; letters alone count only under a name that speaks of them. */
+const isSenses = (profile: ColumnProfile, words: readonly string[]): boolean =>
+  words.every((word) => senseOf(word) !== null) &&
+  (mentions(profile.name, 'sense') || words.some((word) => word.length > 1));
 
 const namesChannel = (word: string): boolean =>
   codedChannel(word) !== null || mentions(word, 'active') || mentions(word, 'reactive') || mentions(word, 'export');

@@ -1,178 +1,173 @@
-import type { EspiEntry, EspiReading } from './espi-feed';
+import type { EspiEntry, EspiFeed } from './espi-feed';
+import { meaningOfType, type EspiMeaning } from './espi-meaning';
+import { estimatedBits, qualityBit, type EspiReadings } from './espi-readings';
+import { quality as grades } from '../load';
 import { isConstant, onlyGrows } from './registers';
-import type { ColumnMap, IntervalRole, Measure } from './types';
-import { unitMeaning } from './units';
+import type { ColumnMap } from './types';
 
 /** One meter reading of a feed: its type and its blocks, brought together by links. */
-export interface EspiChannel {
+export interface EspiChannel extends EspiMeaning {
   name: string;
   meter: string;
-  role: IntervalRole;
-  unit: string;
-  /** To kWh, kvarh or kVAh. */
-  factor: number;
-  measure: Measure;
-  why: string;
-  sure: boolean;
-  readings: EspiReading[];
+  /** Position of each reading in the feed, in the order of the file. */
+  rows: Uint32Array;
+  /** Beginnings. [s since 1970] */
+  starts: Float64Array;
+  /** Lengths. [s] */
+  durations: Float64Array;
+  /** Figures as printed. */
+  values: Float64Array;
+  marks: Uint8Array;
 }
 
-// Codes of units and flows: NAESB REQ.21, as listed in the schema of ESPI (usage.xsd).
-const unitsByCode = new Map([
-  ['72', 'Wh'],
-  ['73', 'varh'],
-  ['71', 'VAh'],
-  ['38', 'W'],
-  ['63', 'var'],
-  ['61', 'VA'],
-]);
-const powerFactorCode = '65';
-
-const reactiveSenses = new Map<string, IntervalRole>([
-  ['2', 'reactive-lagging'],
-  ['3', 'reactive-leading'],
-  ['15', 'reactive-lagging'],
-  ['18', 'reactive-leading'],
-  ['16', 'ignore'],
-  ['17', 'ignore'],
-  ['5', 'reactive-lagging'],
-  ['13', 'reactive-leading'],
-  ['1', 'reactive-lagging'],
-  ['19', 'reactive-leading'],
-]);
-
-// Accumulation behaviours of a register: bulk quantity, continuous cumulative, cumulative. Bulk quantity alone is no proof:
-// feeds put it on energies per interval too.
+// Accumulation behaviours of a register: continuous cumulative, cumulative. Bulk quantity alone is no proof: feeds put it on
+// energies per interval too.
 const cumulativeCodes = new Set(['2', '3']);
+/** Kinds of service of a usage point: 0 is electricity; where a feed names another, its readings are none. */
+const otherServices = new Map([
+  ['1', 'gas'],
+  ['2', 'water'],
+]);
 
-/** Brings the entries of a feed together by their links: blocks to meter readings, those to their types and usage points. */
-export function channelsOfFeed(entries: readonly EspiEntry[], map: Partial<ColumnMap>): EspiChannel[] {
-  const of = (kind: EspiEntry['kind']): EspiEntry[] => entries.filter((entry) => entry.kind === kind);
+/** Brings a feed together by its links: blocks to meter readings, those to their types and usage points. */
+export function channelsOfFeed(feed: EspiFeed, map: Partial<ColumnMap>): EspiChannel[] {
+  const of = (kind: EspiEntry['kind']): EspiEntry[] => feed.entries.filter((entry) => entry.kind === kind);
   const types = of('ReadingType');
-  const readings = of('MeterReading');
-  const blocks = of('IntervalBlock');
+  const typeOf = bySelf(types);
+  const pointOf = pointFinder(of('UsagePoint'));
+  const groups = groupBlocks(of('IntervalBlock'), of('MeterReading'));
+  const channels = [...groups].map(([reading, blocks], index): EspiChannel => {
+    const linked = reading?.related.map((href) => typeOf.get(href)).find((one) => one !== undefined);
+    const type = linked ?? (types.length === 1 ? types[0] : undefined);
+    const point = pointOf(reading);
+    const service = otherServices.get(point.entry?.fields.get('ServiceCategory.kind') ?? '');
+    const given = map.columns?.find((use) => use.index === index);
+    const meaning = meaningOfType(type, { given, service });
+    const columns = columnsOf(feed.readings, blocks, type);
+    return {
+      name: reading?.title || `Readings ${index + 1}`,
+      meter: point.name,
+      ...meaning,
+      measure: given?.measure ?? (isRegister(meaning, type, columns) ? 'register' : meaning.measure),
+      ...columns,
+    };
+  });
+  for (const channel of channels) if (!map.columns && standsStill(channel, channels)) channel.measure = 'register';
+  return channels;
+}
+
+function bySelf(entries: readonly EspiEntry[]): Map<string, EspiEntry> {
+  const found = new Map<string, EspiEntry>();
+  for (const entry of entries) if (entry.self !== '' && !found.has(entry.self)) found.set(entry.self, entry);
+  return found;
+}
+
+/** Blocks by the meter reading they belong to. A feed with one meter reading needs no links; blocks of nobody stand apart. */
+function groupBlocks(blocks: readonly EspiEntry[], readings: readonly EspiEntry[]): Map<EspiEntry | null, EspiEntry[]> {
+  const bySelfLink = bySelf(readings);
+  const byRelated = new Map<string, EspiEntry>();
+  for (const reading of readings)
+    for (const href of reading.related) if (!byRelated.has(href)) byRelated.set(href, reading);
+  const ownerOf = (block: EspiEntry): EspiEntry | undefined => {
+    for (const path of [...pathsUp(block.up), block.self]) {
+      const owner = bySelfLink.get(path) ?? byRelated.get(path);
+      if (owner && path !== '') return owner;
+    }
+    return undefined;
+  };
   const groups = new Map<EspiEntry | null, EspiEntry[]>();
   for (const block of blocks) {
-    const owner =
-      readings.find((reading) => belongsTo(block, reading)) ??
-      (readings.length === 1 ? readings[0] : undefined) ??
-      null;
+    const owner = ownerOf(block) ?? (readings.length === 1 ? readings[0] : undefined) ?? null;
     const group = groups.get(owner);
     if (group) group.push(block);
     else groups.set(owner, [block]);
   }
-  const meterOf = meterNamer(of('UsagePoint'));
-  const channels = [...groups].map(([reading, own], index): EspiChannel => {
-    const type =
-      types.find((one) => one.self !== '' && reading?.related.includes(one.self)) ??
-      (types.length === 1 ? types[0] : undefined);
-    const name = reading?.title || `Readings ${index + 1}`;
-    const given = map.columns?.find((use) => use.index === index);
-    const meaning = meaningOf(type, given?.role as IntervalRole | undefined, given?.unit);
-    const all = own.flatMap((block) => timedReadings(block, type));
-    const isCumulative = cumulativeCodes.has(type?.fields.get('accumulationBehaviour') ?? '');
-    const inOrder = [...all].sort((a, b) => a.startS - b.startS).map((one) => one.value);
-    const isRegister = meaning.measure === 'energy' && onlyGrows(inOrder, isCumulative);
-    return {
-      name,
-      meter: meterOf(reading),
-      ...meaning,
-      measure: isRegister ? 'register' : meaning.measure,
-      readings: all,
-    };
-  });
-  for (const channel of channels) if (standsStill(channel, channels)) channel.measure = 'register';
-  return channels;
+  return groups;
 }
 
-/** A register that stands still throughout, told by another of its meter that does not. */
-function standsStill(channel: EspiChannel, channels: readonly EspiChannel[]): boolean {
-  const runs = channels.some((other) => other.meter === channel.meter && other.measure === 'register');
-  return runs && channel.measure === 'energy' && isConstant(channel.readings.map((reading) => reading.value));
+/** An address and those it lies below: `/a/b/c`, `/a/b`, `/a`. */
+function pathsUp(href: string): string[] {
+  const paths: string[] = [];
+  for (let path = href; path !== ''; path = path.slice(0, Math.max(0, path.lastIndexOf('/')))) paths.push(path);
+  return paths;
 }
 
 /** Names the meter of a reading by its usage point: the title, with the end of the link where titles are alike. */
-function meterNamer(points: readonly EspiEntry[]): (reading: EspiEntry | null) => string {
+export function pointFinder(
+  points: readonly EspiEntry[],
+): (reading: EspiEntry | null) => { entry: EspiEntry | undefined; name: string } {
   const endOf = (point: EspiEntry): string => point.self.split('/').at(-1) ?? '';
   const isShared = (title: string): boolean => points.filter((point) => point.title === title).length > 1;
   const nameOf = (point: EspiEntry): string =>
     point.title === '' ? endOf(point) : isShared(point.title) ? `${point.title} (${endOf(point)})` : point.title;
   const isOf = (reading: EspiEntry, point: EspiEntry): boolean =>
     point.self !== '' &&
-    ([reading.up, reading.self].some((link) => link.startsWith(`${point.self}/`)) ||
-      [reading.up, reading.self].some((link) => link !== '' && point.related.includes(link)));
+    ([reading.up, reading.self].some((href) => href.startsWith(`${point.self}/`)) ||
+      [reading.up, reading.self].some((href) => href !== '' && point.related.includes(href)));
   return (reading) => {
     const own = points.find((point) => reading !== null && isOf(reading, point));
-    const point = own ?? (points.length === 1 ? points[0] : undefined);
-    return (point && nameOf(point)) || 'one meter';
+    const entry = own ?? (points.length === 1 ? points[0] : undefined);
+    return { entry, name: (entry && nameOf(entry)) || 'one meter' };
   };
 }
 
-function belongsTo(block: EspiEntry, reading: EspiEntry): boolean {
-  if (reading.self === '') return false;
-  return (
-    block.up === reading.self ||
-    block.up.startsWith(`${reading.self}/`) ||
-    reading.related.includes(block.up) ||
-    reading.related.includes(block.self)
-  );
-}
+type Columns = Pick<EspiChannel, 'rows' | 'starts' | 'durations' | 'values' | 'marks'>;
 
 /** A reading without a start of its own follows the one before in its block; a duration may stand in three places. */
-function timedReadings(block: EspiEntry, type: EspiEntry | undefined): EspiReading[] {
-  const usual = Number(type?.fields.get('intervalLength')) || Number.NaN;
-  const initial = Number(type?.fields.get('defaultQuality') ?? Number.NaN);
-  let next = Number(block.fields.get('interval.start') ?? Number.NaN);
-  return block.readings.map((reading) => {
-    const startS = Number.isNaN(reading.startS) ? next : reading.startS;
-    const durationS = reading.durationS > 0 ? reading.durationS : usual;
-    next = startS + durationS;
-    return {
-      startS,
-      durationS,
-      value: reading.value,
-      qualities: reading.qualities.length === 0 ? [initial] : reading.qualities,
-    };
-  });
-}
-
-type Meaning = Pick<EspiChannel, 'role' | 'unit' | 'factor' | 'measure' | 'why' | 'sure'>;
-
-function meaningOf(
-  type: EspiEntry | undefined,
-  givenRole: IntervalRole | undefined,
-  givenUnit: string | undefined,
-): Meaning {
-  const code = type?.fields.get('uom') ?? '';
-  const unitText = givenUnit ?? unitsByCode.get(code) ?? '';
-  const unit = unitMeaning(unitText);
-  const power = Number(type?.fields.get('powerOfTenMultiplier') ?? 0);
-  const isSane = Number.isInteger(power) && Math.abs(power) <= 12;
-  const scale = givenUnit ? 1 : isSane ? 10 ** power : Number.NaN;
-  if (code === powerFactorCode && !givenUnit && isSane) {
-    const why = `Unit code ${code}, a power factor`;
-    return { role: 'power-factor', unit: '', factor: scale, measure: 'energy', why, sure: true };
-  }
-  if (!unit || Number.isNaN(scale)) {
-    const why = type ? `Unit code ${code || 'absent'} is none of energy or power` : 'No reading type tells the unit';
-    return { role: 'ignore', unit: '', factor: 1, measure: 'energy', why, sure: type !== undefined };
-  }
-  const flow = type?.fields.get('flowDirection') ?? '';
-  const role = givenRole ?? roleOf(unit.quantity, flow);
-  const why =
-    givenRole || givenUnit ? 'Given by the column map' : `Unit code ${code}, flow direction ${flow || 'absent'}`;
-  return {
-    role,
-    unit: unit.unit,
-    factor: unit.factor * scale,
-    measure: unit.measure,
-    why,
-    sure: flow !== '' || givenRole !== undefined,
+function columnsOf(readings: EspiReadings, blocks: readonly EspiEntry[], type: EspiEntry | undefined): Columns {
+  const count = blocks.reduce((sum, block) => sum + block.to - block.from, 0);
+  const columns: Columns = {
+    rows: new Uint32Array(count),
+    starts: new Float64Array(count),
+    durations: new Float64Array(count),
+    values: new Float64Array(count),
+    marks: new Uint8Array(count),
   };
+  const usualS = Number(type?.fields.get('intervalLength')) || Number.NaN;
+  const usualQuality = qualityBit(Number(type?.fields.get('defaultQuality') ?? Number.NaN));
+  let at = 0;
+  for (const block of blocks) {
+    let nextS = Number(block.fields.get('interval.start') ?? Number.NaN);
+    for (let row = block.from; row < block.to; row += 1) {
+      const ownS = readings.durations[row] ?? Number.NaN;
+      const durationS = ownS > 0 ? ownS : usualS;
+      const saidS = readings.starts[row] ?? Number.NaN;
+      const startS = Number.isNaN(saidS) ? nextS : saidS;
+      nextS = startS + durationS;
+      columns.rows[at] = row;
+      columns.starts[at] = startS;
+      columns.durations[at] = durationS;
+      columns.values[at] = readings.values[row] ?? Number.NaN;
+      const codes = readings.qualities[row] || usualQuality;
+      columns.marks[at] = (codes & estimatedBits) === 0 ? grades.measured : grades.estimated;
+      at += 1;
+    }
+  }
+  return columns;
 }
 
-function roleOf(quantity: string, flow: string): IntervalRole {
-  if (quantity === 'apparent') return flow === '19' ? 'ignore' : 'apparent';
-  if (quantity === 'active') return flow === '19' ? 'export' : 'active';
-  return reactiveSenses.get(flow) ?? 'reactive-signed';
+function isRegister(meaning: EspiMeaning, type: EspiEntry | undefined, { starts, values }: Columns): boolean {
+  if (meaning.measure !== 'energy' || meaning.role === 'power-factor') return false;
+  return onlyGrows(inOrder(starts, values), cumulativeCodes.has(type?.fields.get('accumulationBehaviour') ?? ''));
+}
+
+/** Figures in the order of time, however the feed runs. */
+function inOrder(starts: Float64Array, values: Float64Array): Float64Array {
+  let rises = 0;
+  let falls = 0;
+  for (let at = 1; at < starts.length; at += 1) {
+    const step = (starts[at] ?? 0) - (starts[at - 1] ?? 0);
+    if (step < 0) falls += 1;
+    else if (step > 0) rises += 1;
+  }
+  if (falls === 0) return values;
+  if (rises === 0) return values.slice().reverse();
+  const order = Uint32Array.from(starts, (_start, at) => at).sort((a, b) => (starts[a] ?? 0) - (starts[b] ?? 0));
+  return Float64Array.from(order, (at) => values[at] ?? Number.NaN);
+}
+
+/** A register that stands still throughout, told by another of its meter that does not. */
+function standsStill(channel: EspiChannel, channels: readonly EspiChannel[]): boolean {
+  const runs = channels.some((other) => other.meter === channel.meter && other.measure === 'register');
+  return runs && channel.measure === 'energy' && isConstant(channel.values);
 }

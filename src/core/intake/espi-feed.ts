@@ -1,124 +1,187 @@
 import { SaxesParser, type SaxesTagNS } from 'saxes';
 import { intakeError } from './errors';
+import { EspiReadings, qualityBit } from './espi-readings';
+import { decodePieces } from './text';
 
 const espiNamespace = 'http://naesb.org/espi';
 const deepest = 40;
 const mostReadings = 1_200_000;
+const mostEntries = 250_000;
+const longestField = 20_000;
+/** What a reading takes in a terse feed; room for as many is made at once. */
+const usualReadingBytes = 160;
 
-/** One reading of an interval block; NaN where the file leaves a number out. */
-export interface EspiReading {
-  startS: number;
-  durationS: number;
-  value: number;
-  /** Codes of quality that the reading carries; a reading may have several. */
-  qualities: readonly number[];
+const kindNames = [
+  'UsagePoint',
+  'MeterReading',
+  'ReadingType',
+  'IntervalBlock',
+  'LocalTimeParameters',
+  'UsageSummary',
+  'ElectricPowerUsageSummary',
+] as const;
+type EspiKind = (typeof kindNames)[number];
+
+/** An element below an object of the feed, for objects whose parts repeat. */
+export interface EspiNode {
+  name: string;
+  text: string;
+  children: EspiNode[];
 }
 
-/** An entry of the feed that intervals need; related to others by its links only. */
+/** An entry of the feed that intake needs; related to others by its links only. */
 export interface EspiEntry {
-  kind: 'UsagePoint' | 'MeterReading' | 'ReadingType' | 'IntervalBlock' | 'other';
+  kind: EspiKind;
   title: string;
   self: string;
   up: string;
   related: string[];
-  /** Simple children of the object by local name. */
+  /** Simple children of the object by local name, those of a part as `part.name`. */
   fields: Map<string, string>;
-  readings: EspiReading[];
+  /** Its readings in the feed's columns, half-open. */
+  from: number;
+  to: number;
+  /** The whole object; kept for summaries alone. */
+  tree: EspiNode | null;
+  /** Line of the file it begins on. */
+  line: number;
 }
 
-const kinds = new Set(['UsagePoint', 'MeterReading', 'ReadingType', 'IntervalBlock']);
-const noCodes: readonly number[] = [];
+/** A feed taken apart. */
+export interface EspiFeed {
+  entries: EspiEntry[];
+  readings: EspiReadings;
+}
+
+type OpenEntry = Omit<EspiEntry, 'kind'> & { kind: EspiKind | null };
+
+/** The kind by its name. The parser's own string is not kept: it would keep the piece of the feed it was cut from. */
+const kindOf = (name: string): EspiKind | null => kindNames.find((kind) => kind === name) ?? null;
+const isSummary = (kind: EspiKind | null): boolean => kind === 'UsageSummary' || kind === 'ElectricPowerUsageSummary';
+
+// The least number of 48 bits stands for "no value" (seen in a conformance file).
+const noValue = -(2 ** 47);
 
 function numberOf(text: string): number {
   const figure = text.trim() === '' ? Number.NaN : Number(text);
-  return Number.isFinite(figure) ? figure : Number.NaN;
+  return Number.isFinite(figure) && figure !== noValue ? figure : Number.NaN;
 }
 
-/** Collects entries while the parser walks the feed; names are matched by namespace and local name, never by prefix. */
-class FeedCollector {
-  readonly entries: EspiEntry[] = [];
-  private readonly path: string[] = [];
-  private entry: EspiEntry | null = null;
-  private reading: EspiReading | null = null;
-  private text = '';
-  private count = 0;
+/** A string of its own: one cut from a piece of the feed would keep the whole piece in memory. */
+const detached = (text: string): string => ` ${text}`.slice(1);
 
-  constructor(private readonly fileName: string) {}
+const blankReading = () => ({ start: Number.NaN, duration: Number.NaN, value: Number.NaN, qualities: 0, line: 0 });
+
+/** Collects a feed while the parser walks it; names are matched by namespace and local name, never by prefix. */
+class FeedCollector {
+  readonly feed: EspiFeed;
+  private readonly path: string[] = [];
+  private readonly nodes: EspiNode[] = [];
+  private entry: OpenEntry | null = null;
+  private reading: ReturnType<typeof blankReading> | null = null;
+  private text = '';
+
+  constructor(
+    private readonly fileName: string,
+    bytes: number,
+    private readonly lineOf: () => number,
+  ) {
+    this.feed = { entries: [], readings: new EspiReadings(Math.min(mostReadings, bytes / usualReadingBytes)) };
+  }
 
   open(tag: SaxesTagNS): void {
     this.path.push(tag.local);
     this.text = '';
     if (this.path.length > deepest)
       throw intakeError('The XML is nested too deep.', this.fileName, 'Ask the sender for a plain ESPI feed.');
-    if (tag.local === 'entry') {
-      this.entry = { kind: 'other', title: '', self: '', up: '', related: [], fields: new Map(), readings: [] };
-    }
+    if (tag.local === 'entry') this.entry = this.newEntry();
     const { entry } = this;
     if (!entry) return;
-    if (tag.local === 'link') this.link(entry, tag.attributes.rel?.value ?? '', tag.attributes.href?.value ?? '');
+    if (tag.local === 'link') link(entry, tag.attributes.rel?.value ?? '', tag.attributes.href?.value ?? '');
     if (tag.uri !== espiNamespace) return;
-    if (kinds.has(tag.local) && entry.kind === 'other') entry.kind = tag.local as EspiEntry['kind'];
-    if (tag.local === 'IntervalReading') {
-      this.reading = { startS: Number.NaN, durationS: Number.NaN, value: Number.NaN, qualities: noCodes };
-      this.count += 1;
-      if (this.count > mostReadings)
-        throw intakeError(
-          `The feed holds more than ${mostReadings} readings.`,
-          this.fileName,
-          'Ask for a feed of one meter and one year.',
-        );
-    }
+    entry.kind ??= kindOf(tag.local);
+    if (tag.local === 'IntervalReading') this.reading = blankReading();
+    if (isSummary(entry.kind)) this.openNode(entry, tag.local);
   }
 
-  private link(entry: EspiEntry, rel: string, href: string): void {
-    const path = href.replace(/\/+$/, '');
-    if (rel === 'self') entry.self = path;
-    else if (rel === 'up') entry.up = path;
-    else if (rel === 'related') entry.related.push(path);
+  private newEntry(): OpenEntry {
+    const at = this.feed.readings.length;
+    const names = { kind: null, title: '', self: '', up: '', related: [], fields: new Map<string, string>() };
+    return { ...names, from: at, to: at, tree: null, line: this.lineOf() };
+  }
+
+  private openNode(entry: OpenEntry, name: string): void {
+    const node: EspiNode = { name: detached(name), text: '', children: [] };
+    this.nodes.at(-1)?.children.push(node);
+    entry.tree ??= node;
+    this.nodes.push(node);
   }
 
   addText(text: string): void {
-    this.text += text;
+    if (this.text.length < longestField) this.text += text;
   }
 
   close(tag: SaxesTagNS): void {
     this.path.pop();
-    const { entry, reading } = this;
-    if (entry && tag.local === 'title' && entry.kind === 'other') entry.title = this.text.trim();
-    if (entry && tag.uri === espiNamespace) {
-      if (reading) this.closeInReading(entry, reading, tag.local);
-      else if (this.text.trim() !== '') {
-        const parent = this.path.at(-1) ?? '';
-        entry.fields.set(kinds.has(parent) ? tag.local : `${parent}.${tag.local}`, this.text.trim());
-      }
-    }
-    if (tag.local === 'entry' && entry) {
-      this.entries.push(entry);
-      this.entry = null;
-    }
+    const { entry } = this;
+    if (entry && tag.local === 'title' && entry.kind === null) entry.title = detached(this.text.trim());
+    if (entry && tag.uri === espiNamespace) this.closeField(entry, tag.local);
+    if (tag.local === 'entry' && entry) this.closeEntry(entry);
     this.text = '';
   }
 
-  private closeInReading(entry: EspiEntry, reading: EspiReading, name: string): void {
-    const figure = numberOf(this.text);
-    if (name === 'value') reading.value = figure;
-    else if (name === 'start') reading.startS = figure;
-    else if (name === 'duration') reading.durationS = figure;
-    else if (name === 'quality') reading.qualities = [...reading.qualities, figure];
+  private closeField(entry: OpenEntry, name: string): void {
+    const node = isSummary(entry.kind) ? this.nodes.pop() : undefined;
+    if (this.reading) this.closeInReading(this.reading, name);
+    else if (this.text.trim() !== '') {
+      const parent = this.path.at(-1) ?? '';
+      if (node) node.text = detached(this.text.trim());
+      else entry.fields.set(kindOf(parent) ? detached(name) : `${parent}.${name}`, detached(this.text.trim()));
+    }
+  }
+
+  private closeEntry({ kind, ...entry }: OpenEntry): void {
+    this.entry = null;
+    this.reading = null;
+    this.nodes.length = 0;
+    if (kind === null) return;
+    this.feed.entries.push({ ...entry, kind, to: this.feed.readings.length });
+    if (this.feed.entries.length > mostEntries) throw tooMany(`${mostEntries} entries`, this.fileName);
+  }
+
+  private closeInReading(reading: NonNullable<typeof this.reading>, name: string): void {
+    if (name === 'value') reading.value = numberOf(this.text);
+    else if (name === 'start') reading.start = numberOf(this.text);
+    else if (name === 'duration') reading.duration = numberOf(this.text);
+    else if (name === 'quality') reading.qualities |= qualityBit(numberOf(this.text));
     else if (name === 'IntervalReading') {
-      entry.readings.push(reading);
+      this.feed.readings.push({ ...reading, line: this.lineOf() });
       this.reading = null;
+      if (this.feed.readings.length > mostReadings) throw tooMany(`${mostReadings} readings`, this.fileName);
     }
   }
 }
 
+function link(entry: OpenEntry, rel: string, href: string): void {
+  const path = detached(href.replace(/\/+$/, ''));
+  if (rel === 'self') entry.self = path;
+  else if (rel === 'up') entry.up = path;
+  else if (rel === 'related') entry.related.push(path);
+}
+
+const tooMany = (what: string, fileName: string) =>
+  intakeError(`The feed holds more than ${what}.`, fileName, 'Ask for a feed of one meter and one year.');
+
 /**
- * Entries of an ESPI feed (NAESB REQ.21, an Atom feed). A document type is refused, so that no entity is ever expanded.
+ * Takes an ESPI feed (NAESB REQ.21, an Atom feed) apart, piece by piece. A document type is refused, so that no entity is
+ * ever expanded.
+ *
+ * @param onBytes  Hears how many bytes are read
  * @throws {IntakeError} if the XML is no feed, is broken or holds a document type.
  */
-export function parseEspi(text: string, fileName: string): EspiEntry[] {
-  const collector = new FeedCollector(fileName);
+export function parseEspi(bytes: Uint8Array, fileName: string, onBytes?: (read: number) => void): EspiFeed {
   const parser = new SaxesParser({ xmlns: true, position: true });
+  const collector = new FeedCollector(fileName, bytes.length, () => parser.line);
   parser.on('doctype', () => {
     throw intakeError(
       'The XML holds a document type, which readings never need.',
@@ -137,13 +200,17 @@ export function parseEspi(text: string, fileName: string): EspiEntry[] {
       'Download the file again; it may have been cut off.',
     );
   });
-  parser.write(text).close();
-  if (!collector.entries.some((entry) => entry.kind !== 'other')) {
+  for (const piece of decodePieces(bytes, fileName)) {
+    parser.write(piece.text);
+    onBytes?.(piece.bytesRead);
+  }
+  parser.close();
+  if (collector.feed.entries.length === 0) {
     throw intakeError(
       'The XML is no ESPI feed of readings.',
       fileName,
       'Bring in the interval data as ESPI XML, delimited text or a spreadsheet.',
     );
   }
-  return collector.entries;
+  return collector.feed;
 }

@@ -33,11 +33,16 @@ export interface RoleFinding {
 }
 
 /** The evidence line of one column. */
-export function columnEvidence(profile: ColumnProfile, finding: RoleFinding, valuesShown: string): ColumnEvidence {
+export function columnEvidence(
+  profile: ColumnProfile,
+  finding: RoleFinding,
+  valuesShown: string,
+  letter = columnLetter(profile.index),
+): ColumnEvidence {
   return {
     index: profile.index,
     span: 1,
-    letter: columnLetter(profile.index),
+    letter,
     name: profile.name,
     values: valuesShown,
     takenAs: finding.role,

@@ -1,5 +1,5 @@
+import { collectBad } from './bad-values';
 import {
-  collectBad,
   columnOf,
   factorOf,
   readMarks,

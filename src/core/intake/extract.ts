@@ -1,12 +1,15 @@
 import { quality as grades } from '../load';
 import type { TableBlock } from './block';
+import { collectBad } from './bad-values';
 import { channelMeaning } from './channel-words';
-import { cellPlace, type Grid } from './grid';
-import { isBlankWord } from './numbers';
+import type { Grid } from './grid';
 import { qualityOf } from './quality';
+import { columnGroups } from './column-groups';
+import { apartBySteps } from './coarser';
 import { isConstant, onlyGrows } from './registers';
+import { readFactors, readSenses } from './read-factors';
 import { readStamps } from './read-stamps';
-import { runsBackwards, turnStrand, type Strand, type StrandChannel } from './strand';
+import { pickReadings, runsBackwards, turnStrand, type Strand, type StrandChannel } from './strand';
 import type { ColumnUse, IntakeNote, IntervalRole, StampStyle } from './types';
 import { scaled, unitMeaning, type UnitMeaning } from './units';
 import { namesRegister } from './words';
@@ -50,8 +53,23 @@ export function columnOf(columns: readonly ColumnUse[], role: ColumnUse['role'])
   return columns.find((use) => use.role === role)?.index ?? -1;
 }
 
-/** Reads every row of a long table. */
+/** Reads every row of a long table; tables side by side, each with stamps of its own, are read one after the other. */
 export function extractLong(plan: ColumnPlan): Extraction {
+  const groups = columnGroups(plan);
+  const parts = groups.map((columns) => extractGroup({ ...plan, columns }));
+  const [only] = parts;
+  if (parts.length === 1 && only) return only;
+  const rows = new Set(parts.flatMap((part) => part.strands.flatMap((strand) => [...strand.rows])));
+  return {
+    strands: parts.flatMap((part) => part.strands),
+    rowsRead: rows.size,
+    badValues: parts.flatMap((part) => part.badValues),
+    badStamps: parts.flatMap((part) => part.badStamps),
+    notes: parts.flatMap((part) => part.notes),
+  };
+}
+
+function extractGroup(plan: ColumnPlan): Extraction {
   const { grid, columns } = plan;
   const stamps = readStamps(plan);
   const { rows } = stamps;
@@ -63,30 +81,39 @@ export function extractLong(plan: ColumnPlan): Extraction {
     notes: stamps.notes,
   };
   const explained = columns.find((use) => use.role === 'value');
-  const values = columns.filter((use) => valueRoles.has(use.role));
-  const figures = readColumns(plan, rows, values, extraction);
-  const channels = values.map((use, at): StrandChannel => ({
-    role: use.role as IntervalRole,
-    measure: use.measure ?? unitMeaning(use.unit ?? '')?.measure ?? 'energy',
-    name: use.name,
-    values: figures[at] ?? new Float64Array(),
-  }));
-  const marks = readMarks(grid, rows, columns, extraction);
   const whole: Strand = {
     walls: stamps.walls,
     offsets: stamps.offsets,
     spans: stamps.spans,
     days: stamps.days,
     rows,
-    channels,
-    quality: marks,
+    channels: readChannels(plan, rows, extraction),
+    quality: readMarks(grid, rows, columns, extraction),
     isTurned: false,
   };
-  const strands = explained ? splitChannels(plan, whole, explained, extraction) : [whole];
+  const strands = explained ? splitChannels(plan, whole, explained, extraction) : apartBySteps(whole);
   // Rows of other quantities are no data.
-  extraction.rowsRead = strands.reduce((sum, strand) => sum + strand.rows.length, 0);
+  if (explained) extraction.rowsRead = strands.reduce((sum, strand) => sum + strand.rows.length, 0);
   extraction.strands = strands.map((strand) => (runsBackwards(strand.walls) ? turnStrand(strand) : strand));
   return extraction;
+}
+
+function readChannels(plan: ColumnPlan, rows: Uint32Array, extraction: Extraction): StrandChannel[] {
+  const { columns } = plan;
+  const values = columns.filter((use) => valueRoles.has(use.role) && use.role !== 'power-factor');
+  const figures = readColumns(plan, rows, values, extraction);
+  const channels = values.map((use, at): StrandChannel => ({
+    role: use.role as IntervalRole,
+    measure: use.measure ?? unitMeaning(use.unit ?? '')?.measure ?? 'energy',
+    name: use.name,
+    values: figures[at] ?? new Float64Array(),
+    scale: factorOf(use),
+  }));
+  for (const use of columns) {
+    if (use.role === 'power-factor') channels.push(...readFactors(plan, rows, use, extraction));
+    else if (use.role === 'sense') channels.push(...readSenses(plan, rows, use, extraction));
+  }
+  return channels;
 }
 
 /** What a figure of the column is multiplied by to give kWh, kvarh or kVAh. */
@@ -116,12 +143,6 @@ function readColumns(
   return uses.map(
     (use) => inOrder.find((column) => column.index === use.index)?.figures ?? new Float64Array(rows.length),
   );
-}
-
-/** Keeps the place of a cell that is neither figure nor blank. */
-export function collectBad(grid: Grid, row: number, column: number, extraction: Extraction): void {
-  const text = grid.text(row, column);
-  if (!isBlankWord(text)) extraction.badValues.push({ place: cellPlace(grid, row, column), text });
 }
 
 /** Quality of every row, the worst where several columns mark it; marks nobody knows count as measured, with a note. */
@@ -213,20 +234,12 @@ function splitChannels(plan: ColumnPlan, whole: Strand, value: ColumnUse, extrac
   });
   const strands = [...groups].map(([channel, positions]): Strand => {
     const rows = Uint32Array.from(positions, (at) => whole.rows[at] ?? 0);
-    const pick = (source: Float64Array | null): Float64Array | null =>
-      source && Float64Array.from(positions, (at) => source[at] ?? Number.NaN);
     const [figures = new Float64Array()] = readColumns(plan, rows, [{ ...value, unit: undefined }], extraction);
     const values = figures.map((figure) => scaled(figure, channel.factor));
-    return {
-      walls: pick(whole.walls) ?? new Float64Array(),
-      offsets: pick(whole.offsets),
-      spans: pick(whole.spans),
-      days: pick(whole.days),
-      rows,
-      channels: [{ role: channel.role, measure: channel.measure, name: channel.name, values }],
-      quality: whole.quality && Uint8Array.from(positions, (at) => whole.quality?.[at] ?? 0),
-      isTurned: false,
-    };
+    const scale = channel.factor * (value.factor ?? 1);
+    return pickReadings(whole, positions, [
+      { role: channel.role, measure: channel.measure, name: channel.name, values, scale },
+    ]);
   });
   markRegisters(strands);
   return strands;

@@ -17,9 +17,17 @@ export interface Grid {
   number(row: number, column: number, decimalMark: '.' | ','): number;
   /** Hands the cell to the scanner; false if it is blank or cannot be a date or time. */
   scan(row: number, column: number, scanner: StampScanner): boolean;
+  /** Whether the cell begins with a letter. */
+  isWordAt(row: number, column: number): boolean;
   /** Number of the row in the file as people see it, 1 is the first. */
   rowNumber(row: number): number;
+  /** Column of the file a column shows, where tables one below the other are laid side by side. */
+  sourceColumn?(column: number): number;
 }
+
+/** Whether a code is that of a letter. */
+export const isLetterCode = (code: number): boolean =>
+  (code >= 65 && code <= 90) || (code >= 97 && code <= 122) || code >= 192;
 
 /** A cell of a spreadsheet: text (dates already as ISO text), a number, or nothing. */
 export type Cell = string | number | null;
@@ -44,7 +52,8 @@ export class CellGrid implements Grid {
 
   text(row: number, column: number): string {
     const cell = this.cells[row]?.[column];
-    return cell === null || cell === undefined ? '' : String(cell).trim();
+    if (typeof cell === 'string') return cell;
+    return cell === null || cell === undefined ? '' : String(cell);
   }
 
   figureText(row: number, column: number): string {
@@ -61,6 +70,10 @@ export class CellGrid implements Grid {
   scan(row: number, column: number, scanner: StampScanner): boolean {
     const text = this.text(row, column);
     return text !== '' && scanner.scan(text, 0, text.length);
+  }
+
+  isWordAt(row: number, column: number): boolean {
+    return isLetterCode(this.text(row, column).charCodeAt(0));
   }
 
   rowNumber(row: number): number {
@@ -91,5 +104,5 @@ export function columnLetter(column: number): string {
 
 /** Place of a cell as people write it, such as `row 12, column C`. */
 export function cellPlace(grid: Grid, row: number, column: number): string {
-  return `row ${grid.rowNumber(row)}, column ${columnLetter(column)}`;
+  return `row ${grid.rowNumber(row)}, column ${columnLetter(grid.sourceColumn?.(column) ?? column)}`;
 }

@@ -34,5 +34,5 @@ export function openNotes(guesses: readonly Guess[], opened: OpenedTable): Intak
       message: `The sheet “${opened.dialect.sheet ?? ''}” is read; others may hold tables too: ${opened.otherSheets.slice(0, 12).join(', ')}.`,
     });
   }
-  return notes;
+  return [...notes, ...opened.sheetNotes];
 }

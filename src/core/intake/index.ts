@@ -1,5 +1,5 @@
 import { openSource } from './source';
-import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions } from './types';
+import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions, Trace } from './types';
 
 export { IntakeError } from './errors';
 export type * from './types';
@@ -46,6 +46,22 @@ export async function previewIntervals(bytes: Uint8Array, options: ReadOptions):
  */
 export async function previewBills(bytes: Uint8Array, options: ReadOptions): Promise<BillPreview> {
   return (await openSource(bytes, options)).previewBills();
+}
+
+/**
+ * Where in the file the interval stands that begins at an instant: sheet, rows and the cells that were read.
+ *
+ * @param options  As the file was read to be kept: the same map and zone
+ * @param ms  Beginning of the interval. [ms since epoch]
+ * @throws {IntakeError} if the file holds no such interval
+ */
+export async function traceInterval(bytes: Uint8Array, options: ReadOptions, ms: number): Promise<Trace> {
+  return (await openSource(bytes, options)).traceInterval(ms);
+}
+
+/** The same for the bill whose period begins on a local day. */
+export async function traceBill(bytes: Uint8Array, options: ReadOptions, from: string): Promise<Trace> {
+  return (await openSource(bytes, options)).traceBill(from);
 }
 
 /**

@@ -3,15 +3,19 @@ import { findBlock, type TableBlock } from './block';
 import { checkColumns, checkExtraction, checkMeters } from './checks';
 import { detectColumns } from './detect';
 import { guess } from './evidence';
-import { columnOf, extractLong, type ColumnPlan } from './extract';
+import { columnOf, extractLong, valueRoles, type ColumnPlan, type Extraction } from './extract';
 import { extractWide } from './extract-wide';
-import { channelMeaning } from './channel-words';
+import { channelMeaning, isContradictory } from './channel-words';
 import { delimiterGuesses, openNotes } from './guesses';
 import { foldRuns, mergeColumns, mergeEvidence } from './merge-map';
+import type { Grid } from './grid';
 import type { OpenedTable } from './open';
 import { preambleMultiplier } from './preamble';
+import type { PlacedStrand } from './series';
+import { unstack } from './stacked';
 import { timelineOf } from './timeline';
 import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
+import { unitMeaning } from './units';
 
 /** A table of intervals with its meaning settled. */
 export interface IntervalPlan {
@@ -22,6 +26,7 @@ export interface IntervalPlan {
   evidence: ColumnEvidence[];
   guesses: Guess[];
   meters: string[];
+  notes: IntakeNote[];
 }
 
 /**
@@ -30,8 +35,9 @@ export interface IntervalPlan {
  */
 export function planIntervals(opened: OpenedTable, options: ReadOptions): IntervalPlan {
   const map: Partial<ColumnMap> = options.columnMap ?? {};
-  const { grid, dialect } = opened;
-  const block = findBlock(grid, options.fileName, map, 'readings');
+  const { dialect } = opened;
+  const found = findBlock(opened.grid, options.fileName, map, 'readings');
+  const { grid, block, notes } = unstack(opened.grid, found);
   const detection = detectColumns(grid, block, {
     timeZone: options.timeZone,
     map,
@@ -39,7 +45,7 @@ export function planIntervals(opened: OpenedTable, options: ReadOptions): Interv
   });
   const columns = mergeColumns(detection.columns, map, block, options.fileName);
   const stamp = { ...detection.stamp, ...map.stamp };
-  const meters = metersOf(opened, block, columns);
+  const meters = metersOf(grid, block, columns);
   const plan: ColumnPlan = {
     grid,
     block,
@@ -52,6 +58,7 @@ export function planIntervals(opened: OpenedTable, options: ReadOptions): Interv
   };
   return {
     opened: { ...opened, dialect: { ...dialect, decimalMark: detection.decimalMark } },
+    notes,
     block,
     plan,
     meters,
@@ -89,30 +96,32 @@ function meterGuesses(meters: string[], map: Partial<ColumnMap>): Guess[] {
 }
 
 /** Names of the meters the rows speak of, at most 200. */
-function metersOf(opened: OpenedTable, block: TableBlock, columns: readonly ColumnUse[]): string[] {
+function metersOf(grid: Grid, block: TableBlock, columns: readonly ColumnUse[]): string[] {
   const column = columnOf(columns, 'meter');
   const timeColumn =
     columns.find((use) => use.role === 'stamp' || use.role === 'stamp-begin' || use.role === 'date')?.index ?? -1;
   if (column < 0) return [];
   const meters = new Set<string>();
   for (let row = block.firstRow; row <= block.lastRow && meters.size < 200; row += 1) {
-    const meter = opened.grid.text(row, column);
-    if (meter !== '' && (timeColumn < 0 || opened.grid.text(row, timeColumn) !== '')) meters.add(meter);
+    const meter = grid.text(row, column);
+    if (meter !== '' && (timeColumn < 0 || grid.text(row, timeColumn) !== '')) meters.add(meter);
   }
   return [...meters];
 }
 
 /**
- * Reads a planned table into a load.
- * @throws {IntakeError} naming every reason why it cannot be read.
+ * The readings of a planned table with their places in time.
+ * @throws {IntakeError} naming every reason why they cannot be read.
  */
-export function readPlanned(planned: IntervalPlan, options: ReadOptions): IntervalReading & { guesses: Guess[] } {
+export function placePlanned(
+  planned: IntervalPlan,
+  options: ReadOptions,
+): { placed: PlacedStrand[]; extraction: Extraction } {
   checkMeters(planned, options);
   checkColumns(planned, options);
-  const { plan, opened } = planned;
+  const { plan } = planned;
   const extraction = plan.layout === 'wide' ? extractWide(plan) : extractLong(plan);
   checkExtraction(extraction, options);
-  const notes = [...extraction.notes, ...assumptions(planned)];
   const strands = extraction.strands.filter((strand) => strand.rows.length > 0);
   const isRegister = strands.every((strand) => strand.channels.every((channel) => channel.measure === 'register'));
   const given = options.columnMap?.stamp ?? {};
@@ -127,6 +136,17 @@ export function readPlanned(planned: IntervalPlan, options: ReadOptions): Interv
       isWide: plan.layout === 'wide',
     }),
   }));
+  return { placed, extraction };
+}
+
+/**
+ * Reads a planned table into a load.
+ * @throws {IntakeError} naming every reason why it cannot be read.
+ */
+export function readPlanned(planned: IntervalPlan, options: ReadOptions): IntervalReading & { guesses: Guess[] } {
+  const { placed, extraction } = placePlanned(planned, options);
+  const notes = [...planned.notes, ...extraction.notes, ...assumptions(planned)];
+  const { opened } = planned;
   const first = placed[0]?.timeline;
   const columnMap: ColumnMap = { ...planned.columnMap, stamp: { ...planned.columnMap.stamp, ...first?.style } };
   const { load, report } = assemble(placed, {
@@ -151,6 +171,15 @@ function assumptions(planned: IntervalPlan): IntakeNote[] {
       code: 'reactive-sense',
       message: `${senseless.map((use) => use.name).join(', ')} names no sense and has no negative figure: it is taken as lagging.`,
     });
+  const doubtful = planned.plan.columns.filter(
+    (use) =>
+      valueRoles.has(use.role) && use.measure === 'power' && isContradictory(use.name, unitMeaning(use.unit ?? '')),
+  );
+  if (doubtful.length > 0)
+    notes.push({
+      code: 'unit-doubtful',
+      message: `${doubtful.map((use) => use.name).join(', ')}: the name speaks of energy and the unit is one of power; the figures are read as average power.`,
+    });
   const isExplained = planned.plan.columns.some((use) => use.role === 'unit' || use.role === 'channel');
   const assumed = planned.evidence.filter((line) => line.isUnitAssumed && line.takenAs !== 'ignore');
   if (assumed.length > 0 && !isExplained) {
@@ -162,10 +191,18 @@ function assumptions(planned: IntervalPlan): IntakeNote[] {
     });
   }
   const multiplier = preambleMultiplier(planned.opened.grid, planned.block);
-  if (multiplier !== '')
-    notes.push({
-      code: 'multiplier-mentioned',
-      message: `The file mentions a multiplier (${multiplier}); the figures are taken as printed, not multiplied.`,
-    });
+  const factor = planned.plan.columns.find((use) => use.factor !== undefined)?.factor;
+  if (multiplier)
+    notes.push(
+      factor === undefined
+        ? {
+            code: 'multiplier-mentioned',
+            message: `The file mentions a multiplier (${multiplier.words}); the figures are taken as printed, not multiplied.`,
+          }
+        : {
+            code: 'multiplier-applied',
+            message: `The figures are multiplied by ${factor}: the file mentions a multiplier (${multiplier.words}).`,
+          },
+    );
   return notes;
 }

@@ -18,6 +18,11 @@ export function reactiveOf(
   const signed = channels.get('reactive-signed');
   const lagging = channels.get('reactive-lagging');
   const leading = channels.get('reactive-leading');
+  const sense = channels.get('sense');
+  if (signed && sense) {
+    notes.push({ code: 'reactive-sensed', message: 'Whether reactive energy lags or leads is told beside it.' });
+    return splitSigned(withSense(signed.map(Math.abs), sense));
+  }
   if (signed) {
     notes.push({
       code: 'reactive-signed',
@@ -37,17 +42,23 @@ export function reactiveOf(
   const apparent = channels.get('apparent');
   const factor = channels.get('power-factor');
   if (!apparent && !factor) return { lagging: null, leading: null };
-  notes.push({
-    code: 'reactive-derived',
-    message: `kvarh are worked out from ${apparent ? 'apparent energy' : 'the power factor'} and taken as lagging: the file does not tell the sense.`,
-  });
-  return {
-    lagging: kwh.map((energy, slot) =>
-      apparent ? fromApparent(energy, apparent[slot]) : fromPowerFactor(energy, factor?.[slot]),
-    ),
-    leading: null,
-  };
+  const kvarh = kwh.map((energy, slot) =>
+    apparent ? fromApparent(energy, apparent[slot]) : fromPowerFactor(energy, factor?.[slot]),
+  );
+  const told = sense ?? (isSigned(factor ?? null) ? factor : undefined);
+  const source = apparent ? 'apparent energy' : 'the power factor';
+  const how = sense
+    ? 'lagging and leading as told beside it'
+    : told
+      ? 'a negative power factor is read as leading'
+      : 'taken as lagging: the file does not tell the sense';
+  notes.push({ code: 'reactive-derived', message: `kvarh are worked out from ${source}; ${how}.` });
+  return told ? splitSigned(withSense(kvarh, told)) : { lagging: kvarh, leading: null };
 }
+
+/** Sizes below nought where the sense is leading. */
+const withSense = (sizes: Float64Array, sense: Float64Array): Float64Array =>
+  sizes.map((size, slot) => ((sense[slot] ?? 0) < 0 && size > 0 ? -size : size));
 
 function splitSigned(signed: Float64Array): Reactive {
   return {

@@ -48,7 +48,7 @@ export function layStrand(
   const isEnd = timeline.style.marks === 'end' || timeline.style.marks === 'own-day-end';
   strand.channels.forEach((channel, index) => {
     const figures = targets[index] ?? new Float64Array(length);
-    if (channel.measure === 'register') gridded.falls += registerEnergy(figures, isEnd);
+    if (channel.measure === 'register') gridded.falls += registerEnergy(figures, isEnd, channel.scale);
     addChannel(gridded, channel, figures);
   });
   keepMarks(strand, marks, gridded.quality, isEnd);

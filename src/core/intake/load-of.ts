@@ -19,7 +19,7 @@ export function loadOf(gridded: GriddedChannels): { load: LoadSeries; notes: Int
     });
   }
   const reactive = reactiveOf(channels, kwh, notes);
-  const carried = [...channels].filter(([role]) => role !== 'export').map(([, figures]) => figures);
+  const carried = [...channels].filter(([role]) => role !== 'export' && role !== 'sense').map(([, figures]) => figures);
   const quality = gridded.quality.slice();
   const lagging = reactive.lagging ?? absent();
   const leading = reactive.leading ?? absent();

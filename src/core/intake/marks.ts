@@ -55,12 +55,16 @@ function detectMarks(walls: Float64Array, stepMinutes: number, hint: StampStyle[
   const first = walls[0] ?? Number.NaN;
   const last = walls[walls.length - 1] ?? Number.NaN;
   const { ownDay, nextDay } = countMidnights(walls, stepMinutes);
-  const span = `first stamp ${clockTime(first)}, last ${clockTime(last)}`;
+  const isNextDay = clockTime(last) === '00:00' && last > first;
+  const span = `First stamp ${clockTime(first)}, last ${clockTime(last)}${isNextDay ? ' of the day after' : ''}`;
   const opensAtStep = clockTime(first) === clockTime(stepMinutes);
   if (ownDay > nextDay) {
     const tests: Test[] = [
-      [true, `${ownDay} midnights follow the last stamp of the same date: they close that day`],
-      [nextDay === 0, nextDay === 0 ? 'no midnight opens a day' : `${nextDay} midnights open a day`],
+      [
+        true,
+        `${ownDay} ${ownDay === 1 ? 'midnight follows' : 'midnights follow'} the last stamp of the same date and ${ownDay === 1 ? 'closes' : 'close'} that day`,
+      ],
+      [nextDay === 0, nextDay === 0 ? 'No midnight opens a day' : `${nextDay} midnights open a day`],
       [opensAtStep, span],
     ];
     return { marks: 'own-day-end', guess: guess('marks', marksInWords('own-day-end'), tests) };
@@ -68,11 +72,16 @@ function detectMarks(walls: Float64Array, stepMinutes: number, hint: StampStyle[
   const lastOfDay = clockTime(1440 - stepMinutes);
   const endTests: Test[] = [
     [opensAtStep, span],
-    [clockTime(last) === '00:00', 'the last stamp is midnight'],
+    [clockTime(last) === '00:00', 'The last stamp is the midnight that closes the last day'],
   ];
   const beginTests: Test[] = [
     [clockTime(first) === '00:00', span],
-    [clockTime(last) === lastOfDay, `the last stamp is ${lastOfDay}`],
+    [
+      clockTime(last) === lastOfDay,
+      clockTime(last) === lastOfDay
+        ? 'The last stamp is one interval before midnight'
+        : 'The file does not end with a whole day, so that its last stamp tells nothing',
+    ],
   ];
   const score = (tests: Test[]): number => tests.filter(([isMet]) => isMet).length;
   if (hint === 'end' || hint === 'begin') {

@@ -6,8 +6,9 @@ import type { ColumnEvidence, ColumnMap, ColumnUse, IntakeProblem } from './type
 /** Roles that only one column can have: a column given one takes it from the column detected for it. */
 const soleRoles: ReadonlySet<string> = new Set([
   'stamp', 'stamp-begin', 'stamp-end', 'date', 'time', 'interval-number', 'meter', 'channel', 'unit', 'value', 'quality',
-  'active', 'export', 'reactive-lagging', 'reactive-leading', 'reactive-signed', 'apparent', 'power-factor',
-  'period-from', 'period-to', 'month', 'days', 'total',
+  'active', 'export', 'reactive-lagging', 'reactive-leading', 'reactive-signed', 'apparent', 'power-factor', 'sense',
+  'period-from', 'period-to', 'period', 'month', 'year', 'days', 'invoice', 'read-type', 'total',
+  'line-label', 'line-quantity', 'line-unit', 'line-rate', 'line-amount',
 ]); // prettier-ignore
 
 /**
@@ -44,7 +45,8 @@ export function mergeColumns(
   const timeGiven = [...taken].some((role) => ['stamp', 'stamp-begin', 'date'].includes(role));
   return detected.map((use) => {
     const own = placed.get(use.index);
-    if (own) return own.role === use.role ? { ...use, ...own } : own;
+    // A multiplier the person took out is not put back.
+    if (own) return own.role === use.role ? { ...use, ...own, factor: own.factor } : own;
     const isReplacedTime =
       timeGiven && ['stamp', 'stamp-begin', 'stamp-end', 'date', 'time', 'interval-number'].includes(use.role);
     return taken.has(use.role) || isReplacedTime ? { index: use.index, name: use.name, role: 'ignore' } : use;

@@ -196,10 +196,10 @@ export function evidenceOfNem(file: NemFile): ColumnEvidence[] {
 }
 
 /**
- * Reads the load of one meter of a NEM12 file.
+ * The streams of one meter that make its load.
  * @throws {IntakeError} listing the meters if there are several and the map picks none.
  */
-export function readNem12(file: NemFile, options: ReadOptions): IntervalReading {
+function chooseStreams(file: NemFile, options: ReadOptions): { meter: string; used: NemStream[]; left: string[] } {
   const meters = metersOfNem(file);
   const meter = options.columnMap?.meter ?? (meters.length === 1 ? meters[0] : undefined);
   if (meters.length === 0)
@@ -223,7 +223,19 @@ export function readNem12(file: NemFile, options: ReadOptions): IntervalReading 
       options.fileName,
       'Ask for the streams E, Q and K of the meter.',
     );
-  const left = own.filter((stream) => stream.role === 'ignore').map((stream) => stream.suffix);
+  return { meter, used, left: own.filter((stream) => stream.role === 'ignore').map((stream) => stream.suffix) };
+}
+
+/** The readings of one meter with their places in time. */
+export const placeNem12 = (file: NemFile, options: ReadOptions): PlacedStrand[] =>
+  chooseStreams(file, options).used.flatMap(placedOf);
+
+/**
+ * Reads the load of one meter of a NEM12 file.
+ * @throws {IntakeError} listing the meters if there are several and the map picks none.
+ */
+export function readNem12(file: NemFile, options: ReadOptions): IntervalReading {
+  const { meter, used, left } = chooseStreams(file, options);
   const notes: IntakeNote[] = [
     ...file.notes,
     { code: 'market-time', message: 'Dates are market time, UTC+10 all year, whatever the zone of the site.' },

@@ -5,7 +5,7 @@ import type { Container } from './format';
 import type { Grid } from './grid';
 import { openWorkbook } from './sheet';
 import { decodeText } from './text';
-import type { ColumnMap, Dialect, IntakeFormat } from './types';
+import type { ColumnMap, Dialect, IntakeFormat, IntakeNote } from './types';
 
 /** A file opened as a table of raw cells. */
 export interface OpenedTable {
@@ -15,6 +15,8 @@ export interface OpenedTable {
   vote: DelimiterVote | null;
   /** Sheets of a workbook that seem to hold a table too and are not read. */
   otherSheets: readonly string[];
+  /** What a workbook hides or works out. */
+  sheetNotes: readonly IntakeNote[];
 }
 
 /**
@@ -28,8 +30,15 @@ export function openTable(
   map: Partial<ColumnMap>,
 ): OpenedTable {
   if (container === 'workbook-zip' || container === 'workbook-ole') {
-    const { grid, sheet, sheets, others } = openWorkbook(bytes, fileName, map.sheet);
-    return { grid, format: 'spreadsheet', dialect: { sheet, sheets }, vote: null, otherSheets: others };
+    const { grid, sheet, sheets, others, notes } = openWorkbook(bytes, fileName, map.sheet);
+    return {
+      grid,
+      format: 'spreadsheet',
+      dialect: { sheet, sheets },
+      vote: null,
+      otherSheets: others,
+      sheetNotes: notes,
+    };
   }
   const { text, encoding } = decodeText(bytes, fileName);
   if (text.trim() === '')
@@ -46,5 +55,6 @@ export function openTable(
     dialect: { encoding, delimiter },
     vote,
     otherSheets: [],
+    sheetNotes: [],
   };
 }

@@ -1,7 +1,9 @@
+import { metersOf } from './bill-meters';
 import { planBills, type BillPlan } from './bill-plan';
-import { readPlannedBills } from './bills';
+import { readBillTable, type BillTable } from './bills';
 import type { TableBlock } from './block';
 import { IntakeError } from './errors';
+import { guess } from './evidence';
 import type { Grid } from './grid';
 import { planIntervals, readPlanned, type IntervalPlan } from './intervals';
 import type { OpenedTable } from './open';
@@ -40,16 +42,32 @@ export function previewOfIntervals(opened: OpenedTable, options: ReadOptions): I
 /** What intake shows of a table of bills, whether or not it can be read. */
 export function previewOfBills(opened: OpenedTable, options: ReadOptions): BillPreview {
   const plan = attempt(() => planBills(opened, options));
-  const reading = plan.result && attempt(() => readPlannedBills(plan.result as BillPlan, options));
-  const read = reading?.result ?? null;
+  const table = plan.result && attempt(() => readBillTable(plan.result as BillPlan, options));
+  const found: BillTable | null = table?.result ?? null;
+  const meters = found?.meters ?? (plan.result ? metersOf(plan.result) : []);
+  const problems = found?.problems ?? table?.problems ?? plan.problems;
+  const read = found && problems.length === 0 ? { ...found.reading, guesses: found.guesses } : null;
   return {
     kind: 'bills',
     ...common(opened, options, plan.result, read),
-    columnMap: read?.report.columnMap ?? plan.result?.columnMap ?? fallbackMap('bills', options),
-    problems: reading?.problems ?? plan.problems,
+    columnMap: plan.result?.columnMap ?? fallbackMap('bills', options),
+    problems: problems.slice(0, 20),
+    meters,
+    documents: found?.documents ?? [],
     bills: read?.bills ?? [],
+    guesses: withReadGuesses(plan.result?.guesses ?? [], found?.guesses ?? accountGuess(meters)),
   };
 }
+
+/** Several meters stand in the way of reading: the choice is shown beside the other decisions. */
+const accountGuess = (meters: readonly string[]): Guess[] =>
+  meters.length < 2
+    ? []
+    : [
+        guess('meter', meters.slice(0, 8).join(', '), [
+          [false, `${meters.length} accounts or meters with bills of the same days`],
+        ]),
+      ];
 
 interface Attempt<T> {
   result: T | null;
@@ -57,7 +75,7 @@ interface Attempt<T> {
 }
 
 /** A refusal becomes problems to show; anything else is a fault of ours and passes on. */
-function attempt<T>(work: () => T): Attempt<T> {
+export function attempt<T>(work: () => T): Attempt<T> {
   try {
     return { result: work(), problems: [] };
   } catch (cause) {
@@ -76,7 +94,8 @@ function common(
   plan: IntervalPlan | BillPlan | null,
   read: ((IntervalReading | BillReading) & { guesses: Guess[] }) | null,
 ): Common {
-  const grid = plan && 'grid' in plan ? plan.grid : opened.grid;
+  // A table that is turned is shown turned; cells filled down are shown as the file has them.
+  const grid = plan && 'isTransposed' in plan && plan.isTransposed ? plan.grid : opened.grid;
   const block = plan?.block ?? null;
   return {
     fileName: options.fileName,
@@ -123,34 +142,65 @@ function firstRows(grid: Grid, block: TableBlock | null): PreviewRow[] {
 
 /** What intake shows of a file whose format says itself what its channels are. */
 export function previewOfChannels(
-  file: { format: IntakeFormat; text: string; columns: ColumnEvidence[]; meters: string[]; shape: string },
+  file: {
+    format: IntakeFormat;
+    /** Text of the beginning of the file. */
+    head: string;
+    rowsInFile: number;
+    columns: ColumnEvidence[];
+    meters: string[];
+    shape: string;
+    /** The map where the file cannot be read with it yet. */
+    columnMap: ColumnMap;
+  },
   options: ReadOptions,
   read: () => IntervalReading,
 ): IntervalPreview {
   const reading = attempt(read);
-  const lines = file.text.split(/\r\n|\n|\r/, 4000);
-  const filled = lines.filter((line) => line.trim() !== '').length;
   return {
     kind: 'intervals',
     fileName: options.fileName,
     format: file.format,
     dialect: {},
-    rowsInFile: filled,
+    rowsInFile: file.rowsInFile,
     headerRow: null,
     firstRow: 1,
-    lastRow: filled,
-    rows: lines.slice(0, rowsShown).map((line, at) => ({
-      number: at + 1,
-      cells: line.split(',', 60).map((cell) => cell.trim().slice(0, charactersShown)),
-      isHeader: false,
-    })),
-    columnMap: reading.result?.report.columnMap ?? fallbackMap('intervals', options),
+    lastRow: file.rowsInFile,
+    rows: headRows(file.head, file.format === 'nem12' ? ',' : null),
+    columnMap: reading.result?.report.columnMap ?? file.columnMap,
     mapApplied: options.columnMap !== undefined,
     shape: file.shape,
     columns: file.columns,
-    guesses: [],
+    guesses: meterGuess(file.meters, options.columnMap),
     problems: reading.problems,
     meters: file.meters,
     report: reading.result?.report ?? null,
   };
+}
+
+/** Which of several meters a format names is read; nothing to decide where there is one. */
+export function meterGuess(meters: readonly string[], map: ColumnMap | undefined): Guess[] {
+  if (meters.length < 2) return [];
+  const picked = map?.meter !== undefined && meters.includes(map.meter);
+  const taken = picked ? (map.meter ?? '') : 'none yet';
+  return [guess('meter', taken, [[picked, `${meters.length} meters in one file`]])];
+}
+
+/** The first lines of a text as rows to show; of XML those from the first element on, each as one cell. */
+export function headRows(head: string, delimiter: ',' | null): PreviewRow[] {
+  const lines = head.split(/\r\n|\n|\r/, 400);
+  const from =
+    delimiter === null
+      ? Math.max(
+          0,
+          lines.findIndex((line) => /<[\w-]*:?feed\b/.test(line)),
+        )
+      : 0;
+  return lines.slice(from, from + rowsShown).map((line, at) => ({
+    number: from + at + 1,
+    cells: (delimiter === null ? [line] : line.split(delimiter, 60)).map((cell) =>
+      cell.trim().slice(0, charactersShown),
+    ),
+    isHeader: false,
+  }));
 }

@@ -45,7 +45,7 @@ export function readStamps(plan: ColumnPlan): StampRows {
     if (Number.isNaN(wall)) {
       if (isLeftOut(grid, row, plan, left)) continue;
       badStamps.push({
-        place: `row ${grid.rowNumber(row)}, column ${columnLetter(stampColumn)}`,
+        place: `row ${grid.rowNumber(row)}, column ${columnLetter(grid.sourceColumn?.(stampColumn) ?? stampColumn)}`,
         text: grid.text(row, stampColumn),
       });
       continue;
@@ -94,6 +94,8 @@ function isLeftOut(grid: Grid, row: number, plan: ColumnPlan, left: { row: numbe
   if (grid.width(row) === 0) return true;
   const cells = Array.from({ length: Math.min(grid.width(row), 8) }, (_, column) => grid.text(row, column));
   if (cells.every((cell) => isBlankWord(cell))) return true;
+  const own = plan.columns.filter((use) => use.role !== 'ignore' && use.role !== 'meter');
+  if (own.every((use) => isBlankWord(grid.text(row, use.index)))) return true;
   const isHeader =
     plan.block.headerRow !== null &&
     cells.every((cell, column) => cell === grid.text(plan.block.headerRow ?? 0, column));

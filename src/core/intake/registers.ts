@@ -15,15 +15,16 @@ export function onlyGrows(readings: readonly number[] | Float64Array, isNamed = 
     count += 1;
     if (count === 1) first = figure;
     const step = figure - before;
-    // A roll-over or a reset falls to near nought; any other fall is no register's.
-    if (step < 0) falls += figure < before * 0.1 ? 1 : Infinity;
+    // A roll-over or a reset falls to near nought, seen from far apart perhaps no more; any other fall is no register's.
+    if (step < 0) falls += isNamed || figure < before * 0.1 ? 1 : Infinity;
     else if (step > 0) {
       steps += 1;
       largest = Math.max(largest, step);
     }
     before = figure;
   }
-  if (count < (isNamed ? 2 : 4) || falls > Math.max(isNamed ? 2 : 1, count * 0.01)) return false;
+  if (count < (isNamed ? 2 : 4) || falls > (isNamed ? Math.max(2, count * 0.1) : Math.max(1, count * 0.01)))
+    return false;
   if (steps <= count * 0.2) return false;
   const isLarge = first > 20 * (largest / Math.max(1, readings.length / 100));
   return isNamed || (isLarge && count >= 10);
@@ -44,11 +45,12 @@ export function isConstant(readings: readonly number[] | Float64Array): boolean 
  * reading stood, or its last if readings name the end of the interval beside them. A roll-over is carried on, a reset
  * leaves its interval missing.
  *
+ * @param scale  What the register's own figures were multiplied by
  * @returns how often the register falls
  */
-export function registerEnergy(readings: Float64Array, isEnd: boolean): number {
-  const most = readings.reduce((greatest, figure) => (figure > greatest ? figure : greatest), 1);
-  const size = 10 ** Math.ceil(Math.log10(most + 1));
+export function registerEnergy(readings: Float64Array, isEnd: boolean, scale = 1): number {
+  const most = readings.reduce((greatest, figure) => (figure > greatest ? figure : greatest), scale);
+  const size = 10 ** Math.ceil(Math.log10(most / scale + 1)) * scale;
   const energyOf = (before: number, after: number): number => {
     const isRollover = before > size * 0.95 && after < size * 0.05;
     return after >= before ? after - before : isRollover ? after - before + size : Number.NaN;

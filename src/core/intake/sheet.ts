@@ -1,13 +1,18 @@
 import XLSX from 'xlsx';
 import { intakeError } from './errors';
 import { CellGrid, gridCaps, type Cell } from './grid';
-import { checkZip } from './zip-caps';
+import { PlainCells } from './plain-cells';
+import { sheetNotes } from './sheet-notes';
+import type { IntakeNote } from './types';
 
-interface SheetCell {
+/** A cell as the parser of workbooks gives it. */
+export interface SheetCell {
   t: string;
   v?: unknown;
   w?: string;
   z?: unknown;
+  /** Formula behind the value. */
+  f?: string;
 }
 
 /** A sheet opened as a grid, its name and the names of all sheets. */
@@ -17,6 +22,8 @@ interface OpenedSheet {
   sheets: string[];
   /** Other visible sheets that seem to hold as much. */
   others: string[];
+  /** Formulas, hidden rows, columns and sheets. */
+  notes: IntakeNote[];
 }
 
 /** Rows of a sheet that are read; a year of five-minute readings has 105,120. */
@@ -28,7 +35,6 @@ const sheetRowCap = 250_000;
  * @throws {IntakeError} if the workbook is damaged, locked, too large or lacks the sheet asked for.
  */
 export function openWorkbook(bytes: Uint8Array, fileName: string, wanted?: string): OpenedSheet {
-  if (bytes[0] === 0x50) checkZip(bytes, fileName);
   const workbook = parse(bytes, fileName);
   const sheets = workbook.SheetNames;
   const is1904 = workbook.Workbook?.WBProps?.date1904 === true;
@@ -54,7 +60,14 @@ export function openWorkbook(bytes: Uint8Array, fileName: string, wanted?: strin
       'Check that the right file was saved, then bring it in again.',
     );
   const others = opened.filter((one) => one !== best && !one.isHidden && one.weight * 2 >= best.weight);
-  return { grid: new CellGrid(best.cells), sheet: best.sheet, sheets, others: others.map((one) => one.sheet) };
+  const hidden = opened.filter((one) => one !== best && one.isHidden && one.weight > 0).map((one) => one.sheet);
+  return {
+    grid: new CellGrid(best.cells),
+    sheet: best.sheet,
+    sheets,
+    others: others.map((one) => one.sheet),
+    notes: sheetNotes(best, workbook.Sheets[best.sheet], hidden),
+  };
 }
 
 function parse(bytes: Uint8Array, fileName: string): XLSX.WorkBook {
@@ -62,7 +75,8 @@ function parse(bytes: Uint8Array, fileName: string): XLSX.WorkBook {
     const workbook = XLSX.read(bytes, {
       type: 'array',
       dense: true,
-      cellFormula: false,
+      cellFormula: true,
+      cellStyles: true,
       cellHTML: false,
       cellText: false,
       cellNF: true,
@@ -87,14 +101,19 @@ function parse(bytes: Uint8Array, fileName: string): XLSX.WorkBook {
 /** Rows with two cells or more: the sheet with the most of them holds the table. */
 function weightOf(cells: Cell[][]): number {
   let rows = 0;
-  for (const row of cells)
-    if (row.reduce<number>((count, cell) => count + (cell === null || cell === '' ? 0 : 1), 0) > 1) rows += 1;
+  for (const row of cells) {
+    let filled = 0;
+    for (let column = 0; column < row.length && filled < 2; column += 1)
+      if (row[column] !== null && row[column] !== '') filled += 1;
+    if (filled > 1) rows += 1;
+  }
   return rows;
 }
 
 function cellsOf(sheet: XLSX.WorkSheet | undefined, is1904: boolean, fileName: string): Cell[][] {
   const rows = (Array.isArray(sheet) ? sheet : []) as (SheetCell | undefined)[][];
   const cells: Cell[][] = [];
+  const plain = new PlainCells(is1904);
   for (let row = 0; row < rows.length; row += 1) {
     const source = rows[row] ?? [];
     if (source.length > gridCaps.columns && reachesBeyond(source)) {
@@ -104,14 +123,20 @@ function cellsOf(sheet: XLSX.WorkSheet | undefined, is1904: boolean, fileName: s
         'Keep the table alone on its sheet and bring the file in again.',
       );
     }
-    cells.push(
-      Array.from({ length: Math.min(source.length, gridCaps.columns) }, (_, column) =>
-        plainCell(source[column], is1904),
-      ),
-    );
+    cells.push(plainRow(source, plain));
   }
   fillMergedDates(cells, Array.isArray(sheet) ? ((sheet as XLSX.WorkSheet)['!merges'] ?? []) : []);
   return cells;
+}
+
+function plainRow(source: readonly (SheetCell | undefined)[], plain: PlainCells): Cell[] {
+  const width = Math.min(source.length, gridCaps.columns);
+  const row = new Array<Cell>(width).fill(null);
+  for (let column = 0; column < width; column += 1) {
+    const cell = source[column];
+    if (cell !== undefined) row[column] = plain.of(cell);
+  }
+  return row;
 }
 
 /** Whether a row holds anything beyond the cap. A row may claim any width: only the cells it has are walked. */
@@ -129,35 +154,4 @@ function fillMergedDates(cells: Cell[][], merges: readonly XLSX.Range[]): void {
       if (below) below[first.c] = cell;
     }
   }
-}
-
-function plainCell(cell: SheetCell | undefined, is1904: boolean): Cell {
-  if (!cell || cell.v === undefined || cell.v === null || cell.t === 'z') return null;
-  if (cell.t === 'e') return '#N/A';
-  if (cell.t === 'b') return cell.v === true ? 'true' : 'false';
-  if (typeof cell.v === 'number') {
-    if (typeof cell.z === 'string' && XLSX.SSF.is_date(cell.z))
-      return serialText(cell.v + (is1904 && cell.v >= 1 ? 1462 : 0), cell.z);
-    return cell.v;
-  }
-  return String(cell.v).slice(0, gridCaps.cellCharacters).trim();
-}
-
-const two = (figure: number): string => String(figure).padStart(2, '0');
-
-/** ISO text of a date serial of the 1900 system, by whole seconds; a time alone below one day. */
-function serialText(serial: number, format: string): Cell {
-  if (/\[h+\]/i.test(format) && serial >= 1 && serial <= 1.0000001) return '24:00';
-  const seconds = Math.round(serial * 86_400);
-  const day = Math.floor(seconds / 86_400);
-  const rest = seconds - day * 86_400;
-  const time = `${two(Math.floor(rest / 3600))}:${two(Math.floor(rest / 60) % 60)}${rest % 60 === 0 ? '' : `:${two(rest % 60)}`}`;
-  if (serial < 0 || serial > 110_000) return serial;
-  const showsDay = /[dy]/i.test(format.replace(/\[[^\]]*\]|"[^"]*"/g, ''));
-  if (day === 0 && !showsDay) return time;
-  if (day === 1 && rest === 0 && !showsDay) return '24:00';
-  // Serial 60 is a day that never was; real tables begin long after it.
-  const date = new Date((day - 25_569) * 86_400_000).toISOString().slice(0, 10);
-  const showsTime = /h/i.test(format) || rest !== 0;
-  return showsTime ? `${date} ${time}` : date;
 }

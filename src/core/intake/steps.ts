@@ -73,5 +73,6 @@ function lengthened({ strand, timeline }: PlacedStrand, stepMinutes: number): Pl
 /** What a part gives to the whole: its energy, or its share of the average. */
 function shareOf(channel: StrandChannel, at: number, parts: number): number {
   const figure = channel.values[at] ?? Number.NaN;
-  return channel.measure === 'energy' && channel.role !== 'power-factor' ? figure : figure / parts;
+  const isRatio = channel.role === 'power-factor' || channel.role === 'sense';
+  return channel.measure === 'energy' && !isRatio ? figure : figure / parts;
 }

@@ -5,8 +5,10 @@ export interface StrandChannel {
   role: IntervalRole;
   measure: Measure;
   name: string;
-  /** Figures in kWh, kvarh, kVAh (or kW, kvar, kVA), NaN where blank. */
+  /** Figures in kWh, kvarh, kVAh (or kW, kvar, kVA), NaN where blank; senses as 1 and -1. */
   values: Float64Array;
+  /** What the figures of the file were multiplied by; registers roll over by the digits of the file. */
+  scale?: number;
 }
 
 /** Readings in the order of time, as stamped: one strand for a table of one meter, one per channel where rows name them. */
@@ -26,6 +28,21 @@ export interface Strand {
   quality: Uint8Array | null;
   /** The file runs backwards in time: the strand has been turned round. */
   isTurned: boolean;
+}
+
+/** Some readings of a strand, with channels of their own. */
+export function pickReadings(strand: Strand, positions: readonly number[], channels: StrandChannel[]): Strand {
+  const pick = (source: Float64Array): Float64Array => Float64Array.from(positions, (at) => source[at] ?? Number.NaN);
+  return {
+    walls: pick(strand.walls),
+    offsets: strand.offsets && pick(strand.offsets),
+    spans: strand.spans && pick(strand.spans),
+    days: strand.days && pick(strand.days),
+    rows: Uint32Array.from(positions, (at) => strand.rows[at] ?? 0),
+    channels,
+    quality: strand.quality && Uint8Array.from(positions, (at) => strand.quality?.[at] ?? 0),
+    isTurned: strand.isTurned,
+  };
 }
 
 /** The strand with its order of time turned round. */

@@ -1,4 +1,4 @@
-import type { Grid } from './grid';
+import { isLetterCode, type Grid } from './grid';
 import { parseNumberAt, parseNumberText } from './numbers';
 import type { StampScanner } from './stamps';
 
@@ -41,8 +41,21 @@ abstract class TextGrid implements Grid {
     return Number.isNaN(quick) ? parseNumberText(this.text(row, column), decimalMark) : quick;
   }
 
+  isWordAt(row: number, column: number): boolean {
+    if (!this.locate(row, column)) return false;
+    let at = this.cellStart;
+    while (at < this.cellEnd && (this.source.charCodeAt(at) === 32 || this.source.charCodeAt(at) === 34)) at += 1;
+    return at < this.cellEnd && isLetterCode(this.source.charCodeAt(at));
+  }
+
   scan(row: number, column: number, scanner: StampScanner): boolean {
-    return this.locate(row, column) && scanner.scan(this.source, this.cellStart, this.cellEnd);
+    if (!this.locate(row, column)) return false;
+    // A guard of ="..." is taken off first.
+    if (this.source.charCodeAt(this.cellStart) === 61) {
+      const text = this.text(row, column);
+      return scanner.scan(text, 0, text.length);
+    }
+    return scanner.scan(this.source, this.cellStart, this.cellEnd);
   }
 }
 

@@ -8,6 +8,15 @@ export interface ReadOptions {
   timeZone: string;
   /** A column map to follow; what it leaves out is detected. Omitted: detect everything. */
   columnMap?: ColumnMap;
+  /** Hears how far reading is. */
+  onProgress?: (progress: ReadProgress) => void;
+}
+
+/** How far reading is: bytes taken in, or one stage after another where a format cannot be counted. */
+export interface ReadProgress {
+  unit: 'bytes' | 'stages';
+  done: number;
+  planned: number;
 }
 
 /** Container and dialect family a file was recognised as. */
@@ -47,11 +56,31 @@ export type IntervalRole =
   | 'reactive-signed' // positive is lagging
   | 'apparent'
   | 'power-factor'
+  | 'sense' // says whether the reactive share of the row lags or leads
   | 'quality'
   | 'ignore';
 
 /** What a column of a table of bills is taken for. */
-export type BillRole = 'period-from' | 'period-to' | 'month' | 'days' | 'quantity' | 'charge' | 'total' | 'ignore';
+export type BillRole =
+  | 'period-from'
+  | 'period-to'
+  | 'period' // first and last day in one cell
+  | 'month'
+  | 'year' // beside a month that names none
+  | 'days'
+  | 'meter' // account, meter or service point of the row
+  | 'invoice'
+  | 'read-type' // estimated, actual, corrected, credit note ...
+  | 'quantity'
+  | 'charge'
+  | 'rate' // price of one of the charges
+  | 'total'
+  | 'line-label' // a row a line of the bill: what the line is for
+  | 'line-quantity'
+  | 'line-unit'
+  | 'line-rate'
+  | 'line-amount'
+  | 'ignore';
 
 /** What the figures of a column measure. */
 export type Measure = 'energy' | 'power' | 'register';
@@ -70,6 +99,10 @@ export interface ColumnUse {
   factor?: number;
   /** Bills: name of the quantity (kwh, kwhPeak, maxKw, billedKw, maxKva, kvarh, kvarhLeading, powerFactor ...). */
   quantity?: string;
+  /** Bills, role `rate`: name of the column of the charge it prices. */
+  charge?: string;
+  /** Bills, role `rate`: name of the column of the quantity it is multiplied with. */
+  times?: string;
   /** Wide layout: start of the reading, minutes after local midnight. */
   minuteOfDay?: number;
 }
@@ -101,13 +134,27 @@ export interface ColumnMap {
   headerRow?: number | null;
   /** First row of readings or bills, 1 is the first row of the file. */
   firstRow?: number;
-  layout?: 'long' | 'wide' | 'transposed';
+  /** `items`: bills with a row for each of their lines. */
+  layout?: 'long' | 'wide' | 'transposed' | 'items';
   columns?: ColumnUse[];
   stamp?: StampStyle;
   /** The meter to keep where the file holds several. */
   meter?: string;
+  /** The file to read where an archive holds several: its name in there. */
+  member?: string;
   /** Bills: whether the last day printed belongs to the period. */
   periodEnds?: 'inclusive' | 'exclusive';
+  /** Bills: year of the first bill where the file names months alone. */
+  year?: number;
+  /** Bills: documents a person takes or leaves out against the proposal; one counts only where row and total agree. */
+  documents?: DocumentChoice[];
+}
+
+/** A person's word on one document of a file of bills. */
+export interface DocumentChoice {
+  row: number;
+  total: number | null;
+  isTaken: boolean;
 }
 
 /** Stretch of missing intervals, half-open UTC. */
@@ -143,6 +190,10 @@ export interface IntakeReport {
   columnMap?: ColumnMap;
   /** Bills: the row of the file each bill stands in, in the order of the bills. */
   billRows?: number[];
+  /** Bills: every document met in the file, in its order. */
+  documents?: BillDocument[];
+  /** Bills: lines whose quantity times rate is more than a cent off the amount. */
+  rateFaults?: RateFault[];
   /** Bills: the currency named in the file, as an ISO code, where one could be told. */
   currency?: string;
 }
@@ -164,6 +215,40 @@ export interface BillRecord {
   total: number | null;
   /** Number of the invoice as printed. */
   invoice?: string;
+  /** The file says that the reading is estimated. */
+  isEstimated?: boolean;
+}
+
+/** What a document in a file of bills is. */
+export type DocumentKind =
+  'bill' | 'estimate' | 'correction' | 'cancelled' | 'credit-note' | 'part' | 'repeat' | 'nought' | 'no-bill';
+
+/** A document met in a file of bills, and what became of it. */
+export interface BillDocument {
+  /** Row of the file it begins in (column, where a column holds a bill), and the place in words. */
+  row: number;
+  where: string;
+  invoice?: string;
+  /** Half-open; null where the file gives it none. */
+  period: { from: string; to: string } | null;
+  total: number | null;
+  kind: DocumentKind;
+  /** Position of the bill it stands in; null where it is left out. */
+  bill: number | null;
+  /** Why it stands or is left out. */
+  why: string;
+}
+
+/** A line of a bill whose quantity times rate is not its amount. */
+export interface RateFault {
+  /** Position of the bill. */
+  bill: number;
+  where: string;
+  label: string;
+  quantity: number;
+  unit: string;
+  rate: number;
+  amount: number;
 }
 
 /** How the bytes of a file were turned into cells. */
@@ -173,6 +258,8 @@ export interface Dialect {
   decimalMark?: '.' | ',';
   sheet?: string;
   sheets?: string[];
+  /** Files of readings or bills in an archive, where it holds several. */
+  members?: string[];
 }
 
 /** One decision about the whole file and what speaks for it. */
@@ -187,7 +274,9 @@ export interface Guess {
     | 'clock'
     | 'step'
     | 'period-ends'
-    | 'meter';
+    | 'year'
+    | 'meter'
+    | 'member';
   takenAs: string;
   why: string;
   testsMet: number;
@@ -264,6 +353,10 @@ export interface IntervalPreview extends Preview {
 /** What the steps Read and Match show of a table of bills. */
 export interface BillPreview extends Preview {
   kind: 'bills';
+  /** Accounts or meters met in the file, where they hold bills of the same days. */
+  meters: string[];
+  /** Every document met, also where the bills cannot be read as they stand. */
+  documents: BillDocument[];
   /** The bills as they would be kept; empty if the table cannot be read. */
   bills: BillRecord[];
 }
@@ -278,4 +371,26 @@ export interface IntervalReading {
 export interface BillReading {
   bills: BillRecord[];
   report: IntakeReport;
+}
+
+/** What is traced back to the file: the interval that begins at an instant, or the bill whose period begins on a day. */
+export type TracePoint = { ms: number } | { from: string };
+
+/** A row of the file behind a kept value, with the cells that were read. */
+export interface TraceRow {
+  /** Number of the row (column, line) in the file, 1 is the first. */
+  number: number;
+  cells: { name: string; text: string }[];
+}
+
+/** Where in a file a kept value stands. */
+export interface Trace {
+  /** Name of the file; of one in an archive with the archive's before it. */
+  fileName: string;
+  /** What is counted: lines of XML, rows of a table, columns of a table with a bill a column. */
+  unit: 'row' | 'column' | 'line';
+  sheet?: string | undefined;
+  rows: TraceRow[];
+  /** Rows beyond those listed. */
+  more: number;
 }

@@ -1,5 +1,5 @@
 import type { Measure } from './types';
-import { headerWords } from './words';
+import { headerWords, mentions } from './words';
 
 /** A unit as it is written in files, and what it is worth in the unit the core uses. */
 export interface UnitMeaning {
@@ -82,6 +82,8 @@ export function unitOfHeader(name: string): UnitMeaning | null {
     const meaning = units.get(word);
     if (meaning) return meaning;
   }
+  // A lone W behind a word of power is watts; behind others it may be a bearing or a name.
+  if (/[\s_,;]W$/.test(name.trim()) && mentions(name, 'power')) return units.get('w') ?? null;
   // Names run together: UsagekWh, totalkvarh.
   const glued = words.map((word) => /(kwh|mwh|kvarh|kvah)$/.exec(word)?.[1]).find((unit) => unit !== undefined);
   return glued ? (units.get(glued) ?? null) : null;
@@ -92,8 +94,15 @@ export function isForeignUnit(name: string): boolean {
   return headerWords(name).some((word) => otherUnits.includes(word) && word.length > 1) || /[$€£°]/.test(name);
 }
 
-/** Figures times a factor; a factor that is the inverse of a whole number divides, so that 959 Wh are 0.959 kWh to the bit. */
+const tens = new Set([10, 100, 1000, 10_000, 100_000, 1_000_000]);
+
+/**
+ * Figures times a factor. A factor that is the inverse of a whole number divides, so that 959 Wh are 0.959 kWh to the bit; a
+ * power of ten moves the mark of up to fifteen digits, so that 0.253875 Mvarh are 253.875 kvarh to the bit.
+ */
 export function scaled(figure: number, factor: number): number {
+  if (factor === 1) return figure;
+  if (tens.has(factor)) return Number((figure * factor).toPrecision(15));
   const inverse = Math.round(1 / factor);
   return factor < 1 && inverse * factor === 1 ? figure / inverse : figure * factor;
 }

@@ -7,6 +7,8 @@ export const zipCaps = { members: 2000, inflatedBytes: 512 * 1024 * 1024, ratio:
 export interface ZipMember {
   name: string;
   method: number;
+  /** CRC-32 of the bytes inside. */
+  crc: number;
   compressedBytes: number;
   inflatedBytes: number;
   /** Where its local header begins. */
@@ -47,6 +49,7 @@ export function readZipDirectory(bytes: Uint8Array, fileName: string): ZipMember
       name: decoder.decode(bytes.subarray(at + 46, at + 46 + nameLength)),
       isEncrypted: (view.getUint16(at + 8, true) & 1) === 1,
       method: view.getUint16(at + 10, true),
+      crc: view.getUint32(at + 16, true),
       compressedBytes: view.getUint32(at + 20, true),
       inflatedBytes: view.getUint32(at + 24, true),
       headerAt: view.getUint32(at + 42, true),

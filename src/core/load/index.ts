@@ -3,6 +3,7 @@ export { checkLoad } from './checks';
 export type { SaidEnergy } from './checks/bill-energy';
 export type { LoadFault, LoadFinding } from './checks/finding';
 export { compareLoads, type LoadsBeside } from './compare-loads';
+export { energiesDiffer, meteredDays, meteredOver, type Metered, type MeteredPeak } from './metered';
 export {
   estimateGap,
   gapMethods,

@@ -9,6 +9,10 @@ export class BillLine extends Model<InferAttributes<BillLine>, InferCreationAttr
   declare position: number;
   declare label: string;
   declare amountMinor: number;
+  /** What the amount was worked out from, where the bill prints it. */
+  declare quantity: CreationOptional<number | null>;
+  declare unit: CreationOptional<string | null>;
+  declare rate: CreationOptional<number | null>;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;
 }
@@ -20,6 +24,9 @@ BillLine.init(
     position: { type: DataTypes.INTEGER, allowNull: false },
     label: { type: DataTypes.TEXT, allowNull: false },
     amountMinor: { type: DataTypes.INTEGER, allowNull: false },
+    quantity: { type: DataTypes.DOUBLE, allowNull: true },
+    unit: { type: DataTypes.TEXT, allowNull: true },
+    rate: { type: DataTypes.DOUBLE, allowNull: true },
     createdAt: DataTypes.DATE,
     updatedAt: DataTypes.DATE,
   },

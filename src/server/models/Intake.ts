@@ -5,7 +5,7 @@ import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 
 export type IntakeKind = 'intervals' | 'bills';
-export type IntakeState = 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
+export type IntakeState = 'reading' | 'read' | 'refused' | 'kept' | 'undone' | 'given-up';
 
 /** One file on its way in: read, matched, checked, kept or given up. The file itself lies in the drawer by its SHA-256. */
 export class Intake extends Model<InferAttributes<Intake>, InferCreationAttributes<Intake>> {

@@ -33,6 +33,7 @@ export function presentIntake(
   around: {
     engagement: IntakeView['engagement'];
     broughtBy: string | null;
+    reading: IntakeView['reading'];
     maps: ColumnMapRow[];
   },
 ): IntakeView {
@@ -45,6 +46,7 @@ export function presentIntake(
     confirmed: stored?.confirmed ?? [],
     preview: stored?.preview ?? null,
     problems: intake.problems ?? [],
+    reading: around.reading,
     readWith: readWith ? presentMap(readWith) : null,
     offered: around.maps.map(presentMap),
   };

@@ -104,22 +104,27 @@ async function authorizeInvitation(actor: Actor, user: User): Promise<void> {
   if (user.disabledAt) throw invalid(`The account of ${user.name} is closed. Open it again first.`);
 }
 
+/** A link that goes into a mail; `expiresAt` is null where it does not run out. */
+export interface MailLink {
+  url: string;
+  expiresAt: Date | null;
+}
+
 /**
  * A link for a mail that brings a person in: to an invitation where they have no password yet, else to sign in, and
- * then to the target (a path of this site). `expiresAt` is null where the link does not run out.
- *
- * @throws {ServiceError} 403 where the actor may not invite the person, 422 where their account is closed
+ * then to the target (a path of this site). Whether they may be written to is the caller's to know.
  */
-export async function invite(
-  actor: Actor,
-  user: User,
-  target?: string,
-): Promise<{ url: string; expiresAt: Date | null }> {
-  await authorizeInvitation(actor, user);
+export async function linkFor(user: User, target?: string): Promise<MailLink> {
   const path = localPath(target) ?? homeOf(user);
   if (user.passwordHash) return { url: absoluteUrl(`/sign-in?next=${encodeURIComponent(path)}`), expiresAt: null };
   const { secret, expiresAt } = await inTx(() => issueToken(user.id, 'invitation', path));
   return { url: absoluteUrl(`/invitation/${secret}`), expiresAt };
+}
+
+/** The same in the name of somebody. @throws {ServiceError} 403 where they may not invite the person, 422 where the account is closed */
+export async function invite(actor: Actor, user: User, target?: string): Promise<MailLink> {
+  await authorizeInvitation(actor, user);
+  return linkFor(user, target);
 }
 
 /** Mails an invitation. @throws {ServiceError} 404, 403, 422 where the person has a password already */

@@ -1,10 +1,10 @@
-import { dayNumber, localDateStartMs } from '../../core/load';
-import type { BillsStation, BillView, MeterCheck } from '../../schemas/bill';
-import { ServiceError } from '../errors';
+import { dayNumber } from '../../core/load';
+import type { BillsStation, BillView } from '../../schemas/bill';
 import { listBills } from './bills';
 import type { OpenEngagement } from './engagements';
 import { listIntakes } from './intervals';
-import { loadSeries } from './readings';
+import { joinSuggestions } from './join-suggestions';
+import { meterChecks } from './meter-check';
 
 /** Everything the station Bills shows. */
 export async function billsStation(opened: OpenEngagement): Promise<BillsStation> {
@@ -26,24 +26,6 @@ export async function billsStation(opened: OpenEngagement): Promise<BillsStation
     laterBills: all.filter((bill) => !inYear(bill)),
     files,
     meterChecks: await meterChecks(opened, bills),
+    joinable: joinSuggestions(all),
   };
-}
-
-/** Sums the kept readings over every bill that prints its energy; a period with a missing reading is left out. */
-async function meterChecks({ meter, site }: OpenEngagement, bills: BillView[]): Promise<MeterCheck[]> {
-  const printed = bills.filter((bill) => bill.quantities.kwh !== undefined);
-  const [first] = printed;
-  if (!first) return [];
-  const startOf = (date: string) => localDateStartMs(date, site.timeZone);
-  const end = printed.reduce((latest, bill) => (bill.to > latest ? bill.to : latest), first.to);
-  const load = await loadSeries(meter.id, startOf(first.from), startOf(end)).catch((error: unknown) => {
-    if (error instanceof ServiceError) return null;
-    throw error;
-  });
-  if (!load) return [];
-  const indexOf = (date: string) => Math.round((startOf(date) - load.startMs) / (load.stepMinutes * 60_000));
-  return printed.flatMap((bill) => {
-    const meterKwh = load.kwh.subarray(indexOf(bill.from), indexOf(bill.to)).reduce((sum, kwh) => sum + kwh, 0);
-    return Number.isNaN(meterKwh) ? [] : [{ billId: bill.id, billedKwh: bill.quantities.kwh ?? 0, meterKwh }];
-  });
 }

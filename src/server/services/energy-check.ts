@@ -1,10 +1,7 @@
 import type { EnergyDifference, ReconciledBill } from '../../schemas/pricing';
+import { energiesDiffer } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
 import type { ScheduleText } from '../../core/tariff';
-
-/** Bills print whole units; and a meter read an hour from midnight is off by an hour of about 730. Both are choices of ours. */
-const leastKwh = 1;
-const leastShare = 0.002;
 
 const isEnergy = (name: string, unit: string | undefined) => (unit ? unit === 'kWh' : /^kwh/i.test(name));
 
@@ -19,10 +16,7 @@ export function energyDifference(bill: ReconciledBill, text: ScheduleText): Ener
     if (!metered || !isEnergy(name, units.get(name))) return [];
     return [{ printedKwh, meteredKwh: metered.value }];
   });
-  const differing = compared.filter(({ printedKwh, meteredKwh }) => {
-    const off = Math.abs(printedKwh - meteredKwh);
-    return off > leastKwh && off > leastShare * Math.abs(meteredKwh);
-  });
+  const differing = compared.filter(({ printedKwh, meteredKwh }) => energiesDiffer(printedKwh, meteredKwh));
   const [widest] = differing.sort((a, b) => b.meteredKwh - a.meteredKwh);
   if (!widest) return null;
   const rate = meanEnergyRate(bill);

@@ -44,17 +44,21 @@ async function furtherMeters(engagementId: number): Promise<Meter[]> {
 }
 
 /**
- * Opens an engagement for somebody who works on it.
+ * Opens an engagement for whomever a policy lets in.
  *
  * @throws {ServiceError} 404 where there is none, or none this person may know of
  */
-export async function openEngagement(actor: Actor, code: string): Promise<OpenEngagement> {
+export async function openWhere(code: string, may: (scope: EngagementScope) => boolean): Promise<OpenEngagement> {
   const engagement = await Engagement.findOne({ where: { code } });
   if (!engagement) throw notFound();
   const opened = await open(engagement);
-  if (!canWorkOn(actor, opened.scope)) throw notFound();
+  if (!may(opened.scope)) throw notFound();
   return opened;
 }
+
+/** Opens an engagement for somebody who works on it. */
+export const openEngagement = (actor: Actor, code: string): Promise<OpenEngagement> =>
+  openWhere(code, (scope) => canWorkOn(actor, scope));
 
 /** The same by its id, for rows that hang off an engagement (a motor, a plan, an intake, a job). */
 export async function openEngagementById(actor: Actor, id: number): Promise<OpenEngagement> {
@@ -64,13 +68,8 @@ export async function openEngagementById(actor: Actor, id: number): Promise<Open
 }
 
 /** Opens an engagement for reading what was released: its client's people, and those who work on it. */
-export async function openReleased(actor: Actor, code: string): Promise<OpenEngagement> {
-  const engagement = await Engagement.findOne({ where: { code } });
-  if (!engagement) throw notFound();
-  const opened = await open(engagement);
-  if (!canReadReleased(actor, opened.scope)) throw notFound();
-  return opened;
-}
+export const openReleased = (actor: Actor, code: string): Promise<OpenEngagement> =>
+  openWhere(code, (scope) => canReadReleased(actor, scope));
 
 /** The engagements a person works on, newest first: all for partners, those they are a member of for consultants. */
 export async function listEngagements(actor: Actor): Promise<OpenEngagement[]> {
@@ -80,10 +79,14 @@ export async function listEngagements(actor: Actor): Promise<OpenEngagement[]> {
   return opened.filter((one) => canWorkOn(actor, one.scope));
 }
 
-/** The engagements whose released material a client's person may read. */
-export async function listReleased(actor: Actor): Promise<OpenEngagement[]> {
+/** The engagements under way, for work no person asks for. */
+export async function listRunning(): Promise<OpenEngagement[]> {
+  return Promise.all((await Engagement.findAll({ where: { closedAt: null } })).map(open));
+}
+
+/** The engagements for the organisation of a client's person, newest first, whatever they may read of each. */
+export async function listOfOwnClient(actor: Actor): Promise<OpenEngagement[]> {
   if (actor.clientId === null) return [];
   const all = await Engagement.findAll({ where: { clientId: actor.clientId }, order: [['id', 'DESC']] });
-  const opened = await Promise.all(all.map(open));
-  return opened.filter((one) => canReadReleased(actor, one.scope));
+  return Promise.all(all.map(open));
 }

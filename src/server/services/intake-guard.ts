@@ -16,7 +16,8 @@ export async function openForChange(actor: Actor, code: string): Promise<OpenEng
   return assertNotClosed(await openEngagement(actor, code));
 }
 
-function assertNotClosed(opened: OpenEngagement): OpenEngagement {
+/** @throws {ServiceError} 409 where the engagement is closed */
+export function assertNotClosed(opened: OpenEngagement): OpenEngagement {
   if (!opened.engagement.closedAt) return opened;
   throw conflict(
     `${opened.engagement.code} is closed. A partner can open it again; then its files and bills can change.`,

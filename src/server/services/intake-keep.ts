@@ -1,16 +1,15 @@
 import { toConfirm, type IntakeView, type IntakePicture, type OverlapChoice } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
-import { Bill } from '../models/Bill';
 import type { Intake } from '../models/Intake';
 import { ReadingBlock } from '../models/ReadingBlock';
 import type { Actor } from '../policies/actor';
-import { destroyBill } from './bills';
 import { refreshFills } from './gap-fills';
 import { present } from './intake';
 import { meterOf, openIntake, openIntakeForChange } from './intake-guard';
 import { readIntervalFile, type HowToRead } from './intake-read';
-import { keepBills } from './keep-bills';
+import { assertNotReading } from './intake-reading';
+import { keepBills, takeBillsBack } from './keep-bills';
 import { keepIntervals } from './keep-intervals';
 import { daysOf } from './load-days';
 import { loadFindings } from './load-findings';
@@ -31,13 +30,14 @@ export async function keepIntake(
   const open = await openIntakeForChange(actor, id, version);
   const how = readyToKeep(open.intake);
   if (open.intake.kind === 'intervals') await keepIntervals(open, how, overlap);
-  else await keepBills(open, how);
+  else await keepBills(open, how, overlap);
   return present(open);
 }
 
 /** How the file is to be read. @throws {ServiceError} where it cannot be kept as it stands */
 export function readyToKeep(intake: Intake): HowToRead {
   const { state, fileName } = intake;
+  assertNotReading(intake);
   if (state === 'kept') throw conflict(`${fileName} is kept already.`);
   if (state === 'given-up') throw conflict(`${fileName} was given up. Bring it in again to keep it.`);
   const stored = intake.preview;
@@ -64,8 +64,8 @@ export async function undoIntake(actor: Actor, id: number, version: number): Pro
   await inTx(async () => {
     const blocks = await ReadingBlock.findAll({ where: { intakeId: id }, attributes: { exclude: ['values'] } });
     for (const block of blocks) await block.destroy();
+    await takeBillsBack(intake);
     if (blocks.length > 0) await refreshFills(meterOf(open).id, open.opened.site.timeZone);
-    for (const bill of await Bill.findAll({ where: { intakeId: id } })) await destroyBill(bill);
     await intake.update({ state: 'undone', undoneAt: new Date() });
   });
   return present(open);

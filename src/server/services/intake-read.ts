@@ -4,11 +4,14 @@ import {
   type ColumnMap,
   type IntakeProblem,
   type IntervalReading,
+  type Trace,
+  type TracePoint,
 } from '../../core/intake';
 import type { IntakePreview } from '../../schemas/intake';
 import { originalPath } from '../drawer';
 import { invalid } from '../errors';
 import { readInChild } from '../workers/fork-reader';
+import type { ReadLimits } from '../workers/reader-child';
 
 /** A file in the drawer that is to be read. */
 interface StoredOriginal {
@@ -36,10 +39,14 @@ const request = ({ fileName, sha256 }: StoredOriginal, how: HowToRead) => ({
 const plainJson = <Value>(value: Value) => JSON.parse(JSON.stringify(value)) as Value;
 
 /** Previews a file in a child process; a file that is refused is a finding, not an error. */
-export async function previewFile(file: StoredOriginal, how: HowToRead): Promise<FileReading> {
+export async function previewFile(
+  file: StoredOriginal,
+  how: HowToRead,
+  limits: Pick<ReadLimits, 'signal' | 'onProgress'> = {},
+): Promise<FileReading> {
   try {
     const { kind } = file;
-    const preview = await readInChild({ kind, mode: 'preview', ...request(file, how) });
+    const preview = await readInChild({ kind, mode: 'preview', ...request(file, how) }, limits);
     return { preview: plainJson(preview) };
   } catch (error) {
     if (error instanceof IntakeError) return { problems: error.problems };
@@ -58,6 +65,10 @@ export const readIntervalFile = (file: StoredOriginal, how: HowToRead): Promise<
 /** The same for a table of bills. */
 export const readBillFile = (file: StoredOriginal, how: HowToRead): Promise<BillReading> =>
   refusedAsInvalid(file, readInChild({ kind: 'bills', mode: 'read', ...request(file, how) }));
+
+/** Where in a file a kept value stands. */
+export const traceInFile = (file: StoredOriginal, how: HowToRead, at: TracePoint): Promise<Trace> =>
+  refusedAsInvalid(file, readInChild({ kind: file.kind, mode: 'trace', at, ...request(file, how) }));
 
 async function refusedAsInvalid<Reading>(file: StoredOriginal, reading: Promise<Reading>): Promise<Reading> {
   try {

@@ -1,13 +1,6 @@
 import { isDeepStrictEqual } from 'node:util';
 import type { ColumnMap } from '../../core/intake';
-import {
-  columnKey,
-  guessKey,
-  type IntakePreview,
-  type IntakeView,
-  type MatchInput,
-  type StoredReading,
-} from '../../schemas/intake';
+import { columnKey, guessKey, type IntakePreview, type IntakeView, type MatchInput } from '../../schemas/intake';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
 import { readOriginal, type StoredFile } from '../drawer';
@@ -19,7 +12,9 @@ import type { Actor } from '../policies/actor';
 import { presentIntake } from '../presenters/intake';
 import type { OpenEngagement } from './engagements';
 import { openForChange, openIntake, openIntakeForChange, type OpenIntake } from './intake-guard';
-import { previewFile, type FileReading } from './intake-read';
+import { previewFile } from './intake-read';
+import { assertNotReading, readingOf, readingValues, startReading } from './intake-reading';
+import { jobEnded } from './jobs';
 
 /**
  * Whether the person may bring files into an engagement.
@@ -27,6 +22,9 @@ import { previewFile, type FileReading } from './intake-read';
  * @throws {ServiceError} 404 for those who do not work on it, 409 where it is closed
  */
 export const authorizeIntake = (actor: Actor, code: string): Promise<OpenEngagement> => openForChange(actor, code);
+
+/** How long an answer waits for reading to end: a small file is there at once, a large one goes on as a job. */
+export const patienceMs = 1500;
 
 /** A file that lies in the drawer. */
 export interface ReceivedFile extends StoredFile {
@@ -37,11 +35,17 @@ export interface ReceivedFile extends StoredFile {
 }
 
 /**
- * Takes a stored file in: reads it with what can be detected and makes its row. A file that cannot be read is taken in
- * too, as refused, with what is wrong.
+ * Takes a stored file in: makes its row and reads it with what can be detected, as a job that goes on when nobody waits
+ * for it. A file that cannot be read is taken in too, as refused, with what is wrong.
+ *
+ * @param withinMs  How long to wait for the end of reading; omitted: until the end
  */
-export async function receiveFile(actor: Actor, opened: OpenEngagement, file: ReceivedFile): Promise<IntakeView> {
-  const reading = await previewFile(file, { timeZone: opened.site.timeZone });
+export async function receiveFile(
+  actor: Actor,
+  opened: OpenEngagement,
+  file: ReceivedFile,
+  withinMs?: number,
+): Promise<IntakeView> {
   const intake = await inTx(() =>
     Intake.create({
       engagementId: opened.engagement.id,
@@ -50,13 +54,38 @@ export async function receiveFile(actor: Actor, opened: OpenEngagement, file: Re
       fileName: file.fileName,
       bytes: file.bytes,
       sha256: file.sha256,
-      ...readingValues(reading, { timeZone: opened.site.timeZone, confirmed: [], readWithId: null }),
+      state: 'reading',
+      columnMap: null,
+      preview: null,
+      report: null,
+      problems: null,
       broughtById: actor.id,
       keptAt: null,
       undoneAt: null,
     }),
   );
-  return present({ intake, opened });
+  return readAsJob(actor, { intake, opened }, withinMs);
+}
+
+/**
+ * Reads a file again that could not be read, or whose reading was stopped.
+ *
+ * @throws {ServiceError} 409 where it is being read, or there is nothing to read again
+ */
+export async function readAgain(actor: Actor, id: number, version: number, withinMs?: number): Promise<IntakeView> {
+  const open = await openIntakeForChange(actor, id, version);
+  const { intake } = open;
+  assertNotReading(intake);
+  if (intake.preview)
+    throw conflict(`${intake.fileName} has been read. Change what it is taken for in the step Match.`);
+  await inTx(() => intake.update({ state: 'reading', problems: null }));
+  return readAsJob(actor, open, withinMs);
+}
+
+async function readAsJob(actor: Actor, open: OpenIntake, withinMs?: number): Promise<IntakeView> {
+  const job = await startReading(actor, open);
+  await jobEnded(job.id, withinMs);
+  return present(open);
 }
 
 /** @throws {ServiceError} 422 where the meter is none of the engagement's */
@@ -156,22 +185,8 @@ async function rereadFile(intake: Intake, how: { timeZone: string; columnMap: Co
 }
 
 function assertNotKept(intake: Intake): void {
+  assertNotReading(intake);
   if (intake.state === 'kept') throw conflict(`${intake.fileName} is kept. Undo it first; then it can be changed.`);
-}
-
-/** What of a reading goes into the row. */
-function readingValues(reading: FileReading, said: Omit<StoredReading, 'preview'>) {
-  if (!('preview' in reading)) {
-    return { state: 'refused' as const, columnMap: null, preview: null, report: null, problems: reading.problems };
-  }
-  const { preview } = reading;
-  return {
-    state: 'read' as const,
-    columnMap: preview.columnMap,
-    preview: { ...said, preview },
-    report: preview.report,
-    problems: preview.problems,
-  };
 }
 
 const everyKey = (preview: IntakePreview) => [...preview.columns.map(columnKey), ...preview.guesses.map(guessKey)];
@@ -186,8 +201,9 @@ function mapsFor(intake: Intake): Promise<ColumnMapRow[]> {
 /** The row with its surroundings, for the page. */
 export async function present({ intake, opened }: OpenIntake): Promise<IntakeView> {
   const { engagement, meter, meters, site } = opened;
-  const [maps, broughtBy] = await Promise.all([
+  const [maps, reading, broughtBy] = await Promise.all([
     mapsFor(intake),
+    readingOf(intake),
     intake.broughtById === null ? null : User.findByPk(intake.broughtById, { attributes: ['name'] }),
   ]);
   const { code, currency, yearFrom, yearTo } = engagement;
@@ -201,6 +217,7 @@ export async function present({ intake, opened }: OpenIntake): Promise<IntakeVie
       siteTimeZone: site.timeZone,
     },
     broughtBy: broughtBy?.name ?? null,
+    reading,
     maps,
   });
 }

@@ -1,5 +1,13 @@
 import { addDays, addMonths, localDateOf, localDateStartMs, type LoadSeries } from '../../core/load';
-import type { DayReading, IntervalsStation, KeptFile, MonthOfLoad, PeakOfYear, ReadingGap } from '../../schemas/intake';
+import type {
+  DayReading,
+  IntervalsStation,
+  KeptFile,
+  MetersOfYear,
+  MonthOfLoad,
+  PeakOfYear,
+  ReadingGap,
+} from '../../schemas/intake';
 import { Intake } from '../models/Intake';
 import { User } from '../models/User';
 import { presentIntakeRow } from '../presenters/intake';
@@ -7,7 +15,9 @@ import type { OpenEngagement } from './engagements';
 import { listFills } from './gap-fills';
 import { daysOf } from './load-days';
 import { loadFindings } from './load-findings';
-import { keptSpans, loadSeries } from './readings';
+import { meteredLoad } from './metered-load';
+import { metersOf, presentMeter } from './meters';
+import { keptSpans, laidSeries, loadSeries } from './readings';
 
 const minuteMs = 60_000;
 const missing = 2;
@@ -22,9 +32,14 @@ function yearOf({ engagement, site }: OpenEngagement): { fromMs: number; toMs: n
 }
 
 /** The files of an engagement on their way in or kept, newest first; those given up are left out. */
-export async function listIntakes(opened: OpenEngagement, kind: 'intervals' | 'bills') {
+export async function listIntakes(opened: OpenEngagement, kind: 'intervals' | 'bills', meterId?: number) {
   const rows = await Intake.findAll({
-    where: { engagementId: opened.engagement.id, kind, state: ['read', 'refused', 'kept', 'undone'] },
+    where: {
+      ...(meterId === undefined ? {} : { meterId }),
+      engagementId: opened.engagement.id,
+      kind,
+      state: ['reading', 'read', 'refused', 'kept', 'undone'],
+    },
     attributes: { exclude: ['preview', 'report', 'columnMap'] },
     order: [['id', 'DESC']],
   });
@@ -32,20 +47,20 @@ export async function listIntakes(opened: OpenEngagement, kind: 'intervals' | 'b
   return rows.map((row) => presentIntakeRow(row, people.find((person) => person.id === row.broughtById)?.name ?? null));
 }
 
-/** Everything the station Intervals shows besides the pictures. */
-export async function intervalsStation(opened: OpenEngagement): Promise<IntervalsStation> {
+/** Everything the station Intervals shows of a meter besides the pictures. */
+export async function intervalsStation(opened: OpenEngagement, meter = opened.meter): Promise<IntervalsStation> {
   const { fromMs, toMs } = yearOf(opened);
   const { timeZone } = opened.site;
   const [files, spans] = await Promise.all([
-    listIntakes(opened, 'intervals'),
-    keptSpans(opened.meter.id, fromMs, toMs),
+    listIntakes(opened, 'intervals', meter.id),
+    keptSpans(meter.id, fromMs, toMs),
   ]);
   const kept = files.filter((file) => file.state === 'kept');
-  const empty = { files, kept: [], picture: null, timeZone, fromMs, toMs, year: null };
+  const empty = { meter: presentMeter(meter), files, kept: [], picture: null, timeZone, fromMs, toMs, year: null };
   if (spans.length === 0) return empty;
-  const load = await loadSeries(opened.meter.id, fromMs, toMs);
+  const { load, sources } = await laidSeries(meter.id, fromMs, toMs);
   const gaps = gapsOf(load);
-  const allSpans = await keptSpans(opened.meter.id, -8.64e15, 8.64e15);
+  const allSpans = await keptSpans(meter.id, -8.64e15, 8.64e15);
   return {
     ...empty,
     kept: kept.map((file) => spanOf(file.id, file.fileName, allSpans)),
@@ -53,14 +68,37 @@ export async function intervalsStation(opened: OpenEngagement): Promise<Interval
     year: {
       stepMinutes: load.stepMinutes,
       ...countsOf(load),
-      peak: peakOf(load, timeZone),
+      peak: peakOf(load, timeZone, (at) => kept.find((file) => file.id === sources[at])?.id ?? null),
       gaps: gaps.slice(0, longestGapList),
       gapCount: gaps.length,
-      fills: await listFills(opened.meter.id, fromMs, toMs),
+      fills: await listFills(meter.id, fromMs, toMs),
       findings: await loadFindings(opened, load),
       months: monthsOf(load, timeZone),
     },
   };
+}
+
+/** What is kept of each meter of the year, and of all added up. */
+export async function metersOfYear(opened: OpenEngagement): Promise<MetersOfYear> {
+  const { fromMs, toMs } = yearOf(opened);
+  const { meters, others } = await metersOf(opened);
+  const figures = await Promise.all(
+    meters.map(async ({ id, label }) => {
+      const any = (await keptSpans(id, fromMs, toMs)).length > 0;
+      return { id, label, ...figuresOf(any ? await loadSeries(id, fromMs, toMs) : null) };
+    }),
+  );
+  const isWhole = meters.length > 1 && figures.every(({ intervals }) => intervals > 0);
+  const together = isWhole ? await meteredLoad(opened, fromMs, toMs) : null;
+  return { meters: figures, together: together && figuresOf(together.load), others };
+}
+
+function figuresOf(load: LoadSeries | null): Omit<MetersOfYear['meters'][number], 'id' | 'label'> {
+  if (!load) return { intervals: 0, present: 0, kwh: null, kvarhLagging: null, maxKw: null };
+  const { intervals, present } = countsOf(load);
+  const peak = peakIndex(load);
+  const maxKw = peak === null ? null : meanOf(load.kwh, peak, load.stepMinutes);
+  return { intervals, present, kwh: sumOf(load.kwh), kvarhLagging: sumOf(load.kvarhLagging), maxKw };
 }
 
 function spanOf(intakeId: number, fileName: string, spans: Awaited<ReturnType<typeof keptSpans>>): KeptFile {
@@ -103,7 +141,7 @@ const meanOf = (values: Float64Array, index: number, stepMinutes: number) => {
 };
 
 /** The interval of the highest mean kW with the readings of its day. */
-function peakOf(load: LoadSeries, timeZone: string): PeakOfYear | null {
+function peakOf(load: LoadSeries, timeZone: string, fileOf: (at: number) => number | null): PeakOfYear | null {
   const at = peakIndex(load);
   if (at === null) return null;
   const { stepMinutes } = load;
@@ -122,7 +160,7 @@ function peakOf(load: LoadSeries, timeZone: string): PeakOfYear | null {
   }
   const kw = meanOf(load.kwh, at, stepMinutes) ?? 0;
   const kvarLagging = meanOf(load.kvarhLagging, at, stepMinutes);
-  return { ms, kw, date, minute: (at - first) * stepMinutes, kvarLagging, day };
+  return { ms, intakeId: fileOf(at), kw, date, minute: (at - first) * stepMinutes, kvarLagging, day };
 }
 
 function gapsOf(load: LoadSeries): ReadingGap[] {

@@ -16,7 +16,8 @@ interface Running {
 
 /** What the work may tell and hear: how far it is, and whether it is to stop. */
 export interface JobControls {
-  report(done: number, planned?: number): void;
+  /** Units may change on the way: what is counted first may not be what is counted last. */
+  report(done: number, planned?: number, unit?: string): void;
   signal: AbortSignal;
 }
 
@@ -76,8 +77,9 @@ function enter(job: Job): Running {
 }
 
 async function carryOut(job: Job, entry: Running, work: Work): Promise<void> {
-  const report: JobControls['report'] = (done, planned) => {
-    Object.assign(entry.progress, { done, planned: planned ?? entry.progress.planned });
+  const report: JobControls['report'] = (done, planned, unit) => {
+    const { progress } = entry;
+    Object.assign(progress, { done, planned: planned ?? progress.planned, unit: unit ?? progress.unit });
     entry.events.emit('progress', entry.progress);
   };
   const { signal } = entry.controller;
@@ -88,9 +90,9 @@ async function carryOut(job: Job, entry: Running, work: Work): Promise<void> {
   } catch (error) {
     ending = signal.aborted ? { state: 'cancelled', result: null, error: null } : failure(job.id, error);
   }
-  const { done, planned } = entry.progress;
+  const { done, planned, unit } = entry.progress;
   try {
-    await inTx(() => job.update({ ...ending, done, planned, endedAt: new Date() }));
+    await inTx(() => job.update({ ...ending, done, planned, unit, endedAt: new Date() }));
   } finally {
     Object.assign(entry.progress, ending);
     running.delete(job.id);
@@ -128,6 +130,22 @@ export function runningJobs(engagementId: number, kind: string): Promise<JobProg
   return Job.findAll({ where: { engagementId, kind, state: 'running' } }).then((jobs) =>
     jobs.flatMap((job) => running.get(job.id)?.progress ?? []),
   );
+}
+
+/** Waits until a job has ended, at most for a while. Whether it has. */
+export function jobEnded(id: number, withinMs = Number.POSITIVE_INFINITY): Promise<boolean> {
+  const entry = running.get(id);
+  if (!entry) return Promise.resolve(true);
+  return new Promise((resolve) => {
+    const finish = (hasEnded: boolean) => {
+      clearTimeout(timer);
+      entry.events.off('progress', hear);
+      resolve(hasEnded);
+    };
+    const hear = ({ state }: JobProgress) => state !== 'running' && finish(true);
+    const timer = Number.isFinite(withinMs) ? setTimeout(() => finish(false), withinMs) : undefined;
+    entry.events.on('progress', hear);
+  });
 }
 
 /** Asks a job to stop; it ends as cancelled. */

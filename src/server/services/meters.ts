@@ -1,4 +1,4 @@
-import type { MeterInput, MetersView } from '../../schemas/engagement';
+import type { MeterInput, MetersView, MeterView } from '../../schemas/engagement';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
 import { EngagementMeter } from '../models/EngagementMeter';
@@ -9,13 +9,14 @@ import { openForChange } from './intake-guard';
 import type { Actor } from '../policies/actor';
 import { openEngagement, type OpenEngagement } from './engagements';
 
-const present = ({ id, label, serviceVoltageKv }: Meter) => ({ id, label, serviceVoltageKv });
+/** A meter as lists show it. */
+export const presentMeter = ({ id, label, serviceVoltageKv }: Meter): MeterView => ({ id, label, serviceVoltageKv });
 
 /** The meters of an engagement, and those of its site that could be billed together with them. */
 export async function metersOf({ meters, site }: OpenEngagement): Promise<MetersView> {
   const all = await Meter.findAll({ where: { siteId: site.id }, order: ['label'] });
   const taken = new Set(meters.map(({ id }) => id));
-  return { meters: meters.map(present), others: all.filter(({ id }) => !taken.has(id)).map(present) };
+  return { meters: meters.map(presentMeter), others: all.filter(({ id }) => !taken.has(id)).map(presentMeter) };
 }
 
 /**

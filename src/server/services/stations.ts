@@ -3,15 +3,16 @@ import { addMonths, dayNumber, localDateStartMs } from '../../core/load';
 import type { StationView, StripView } from '../../schemas/engagement';
 import type { FindingState } from '../../schemas/finding';
 import { ServiceError } from '../errors';
-import { Bill } from '../models/Bill';
 import { Edition } from '../models/Edition';
 import { HourEntry } from '../models/HourEntry';
 import { Intake } from '../models/Intake';
+import type { Meter } from '../models/Meter';
 import { Motor } from '../models/Motor';
 import { Plan } from '../models/Plan';
 import { TariffChoice } from '../models/TariffChoice';
 import type { Actor } from '../policies/actor';
 import { canSeePractice } from '../policies/engagement';
+import { listPeriods } from './bills';
 import { openEngagement, type OpenEngagement } from './engagements';
 import { findingsSummary } from './finding-records';
 import { keptSpans, presentFraction } from './readings';
@@ -111,14 +112,13 @@ export function standsAt(stations: StationView[]): StationView {
 const waitingFiles = (opened: OpenEngagement, kind: 'bills' | 'intervals') =>
   Intake.count({ where: { engagementId: opened.engagement.id, kind, state: 'read' } });
 
-type Period = Pick<Bill, 'periodFrom' | 'periodTo'>;
+type Period = Awaited<ReturnType<typeof listPeriods>>[number];
 
-const middleOf = (bill: Period) => (dayNumber(bill.periodFrom) + dayNumber(bill.periodTo)) / 2;
+const middleOf = (bill: Period) => (dayNumber(bill.from) + dayNumber(bill.to)) / 2;
 
 /** Bills whose middle day lies in [from, to), in order: the rule by which the year is priced. */
 async function billsBetween(opened: OpenEngagement, from: string, to: string): Promise<Period[]> {
-  const where = { engagementId: opened.engagement.id };
-  const bills = await Bill.findAll({ where, attributes: ['periodFrom', 'periodTo'], order: ['periodFrom'] });
+  const bills = await listPeriods(opened.engagement.id);
   return bills.filter((bill) => middleOf(bill) >= dayNumber(from) && middleOf(bill) < dayNumber(to));
 }
 
@@ -126,10 +126,10 @@ async function billsBetween(opened: OpenEngagement, from: string, to: string): P
 function coverage(bills: Period[]): { covered: number; gaps: number } {
   let covered = 0;
   let gaps = 0;
-  let reached = dayNumber(bills[0]?.periodFrom ?? '1970-01-01');
+  let reached = dayNumber(bills[0]?.from ?? '1970-01-01');
   for (const bill of bills) {
-    const from = dayNumber(bill.periodFrom);
-    const to = dayNumber(bill.periodTo);
+    const from = dayNumber(bill.from);
+    const to = dayNumber(bill.to);
     gaps += Math.max(0, from - reached);
     covered += Math.max(0, to - Math.max(from, reached));
     reached = Math.max(reached, to);
@@ -152,14 +152,22 @@ async function billsState(opened: OpenEngagement): Promise<State> {
   return open(`${bills.length} of ${Math.max(bills.length + 1, Math.round(yearDays / 30.4375))} kept`);
 }
 
+/** Of several meters the one of which least is there. */
 async function intervalsState(opened: OpenEngagement): Promise<State> {
-  const { engagement, meter, site } = opened;
+  const states = await Promise.all(opened.meters.map((meter) => meterState(opened, meter)));
+  const [first] = states.sort((a, b) => a.present - b.present);
+  return first!.state;
+}
+
+async function meterState(opened: OpenEngagement, meter: Meter): Promise<{ present: number; state: State }> {
+  const { engagement, site } = opened;
   const fromMs = localDateStartMs(engagement.yearFrom, site.timeZone);
   const toMs = localDateStartMs(engagement.yearTo, site.timeZone);
   const spans = await keptSpans(meter.id, fromMs, toMs);
   if (spans.length === 0) {
     const waiting = await waitingFiles(opened, 'intervals');
-    return open(waiting > 0 ? `${counted(waiting, 'file')} to check` : 'bring in intervals');
+    const state = open(waiting > 0 ? `${counted(waiting, 'file')} to check` : 'bring in intervals');
+    return { present: 0, state };
   }
   let coveredMs = 0;
   let reached = fromMs;
@@ -173,7 +181,7 @@ async function intervalsState(opened: OpenEngagement): Promise<State> {
   const present = await presentFraction(meter.id, fromMs, toMs);
   // Rounded down, so that 100 % is only said where nothing at all is missing.
   const reason = `${(Math.floor(present * 10_000) / 100).toFixed(2).replace(/\.00$/, '')} % present`;
-  return coveredMs >= toMs - fromMs ? closed(reason) : open(reason);
+  return { present, state: coveredMs >= toMs - fromMs ? closed(reason) : open(reason) };
 }
 
 /** What the year shows; null where it cannot be priced yet (no bills or intervals, or a gap in them). */

@@ -106,12 +106,20 @@ async function invitationsNotTaken(actor: Actor, today: string): Promise<Waiting
   });
 }
 
+/** Where letters of a kind are sent from; the others belong to an edition. */
+const sentFrom: Record<string, { name: string; path: string }> = {
+  utility: { name: 'the station Tariff', path: 'tariff#findings' },
+  request: { name: 'the request', path: 'requests' },
+  reminder: { name: 'the request', path: 'requests' },
+  'sent-back': { name: 'the request', path: 'requests' },
+};
+
 /** Letters of the last two weeks that did not go, unless the same went later. */
 async function lettersNotSent(listed: ListedEngagement[], today: string): Promise<WaitingView[]> {
   const byId = new Map(listed.map((one) => [one.opened.engagement.id, one]));
   const since = new Date(Date.parse(`${addDays(today, -14)}T00:00:00Z`));
   const letters = await Letter.findAll({
-    where: { engagementId: [...byId.keys()], createdAt: { [Op.gte]: since } },
+    where: { engagementId: [...byId.keys()], createdAt: { [Op.gte]: since }, kind: { [Op.ne]: 'received' } },
     order: ['id'],
   });
   const same = (a: Letter, b: Letter) =>
@@ -122,7 +130,7 @@ async function lettersNotSent(listed: ListedEngagement[], today: string): Promis
   return failed.map((letter) => {
     const { row } = byId.get(letter.engagementId as number) as ListedEngagement;
     const date = dateOfInstant(letter.createdAt);
-    const station = letter.kind === 'utility' ? 'tariff' : 'report';
+    const from = sentFrom[letter.kind] ?? { name: 'the station Report', path: 'report' };
     return {
       id: `letter-${letter.id}`,
       group: 'overdue',
@@ -134,8 +142,8 @@ async function lettersNotSent(listed: ListedEngagement[], today: string): Promis
       where: `${letter.subject}, ${row.code}`,
       why: letter.error ?? 'The mail server did not take it.',
       stake: null,
-      next: `Send it again from the station ${station === 'tariff' ? 'Tariff' : 'Report'}.`,
-      href: `/engagements/${row.code}/${station}${station === 'tariff' ? '#findings' : ''}`,
+      next: `Send it again from ${from.name}.`,
+      href: `/engagements/${row.code}/${from.path}`,
       action: 'Send again',
     };
   });

@@ -8,6 +8,7 @@ import type { ListedEngagement } from './engagement-list';
 import type { OpenEngagement } from './engagements';
 import { waitingFindings } from './waiting-findings';
 import { daysBetween, whereOf, type Told } from './waiting-parts';
+import { waitingRequests } from './waiting-requests';
 
 /** What an engagement's stations wait for. A station that something more particular waits at is not told twice. */
 export async function waitingAt({ opened, row }: ListedEngagement, today: string): Promise<WaitingView[]> {
@@ -15,10 +16,11 @@ export async function waitingAt({ opened, row }: ListedEngagement, today: string
   const files = await halfBroughtIn(opened, today);
   const findings = await waitingFindings(opened, today);
   const editions = await editionsMade(opened, today);
-  const told = new Set([...files.stations, ...findings.stations, ...editions.stations]);
+  const requests = await waitingRequests(opened, today);
+  const told = new Set([files, findings, editions, requests].flatMap(({ stations }) => stations));
   const { standsAt } = row;
   const next = told.has(standsAt.id) ? [] : nextStation(opened, standsAt, today);
-  return [...files.rows, ...findings.rows, ...editions.rows, ...next];
+  return [...files.rows, ...requests.rows, ...findings.rows, ...editions.rows, ...next];
 }
 
 async function halfBroughtIn(opened: OpenEngagement, today: string): Promise<Told> {
@@ -124,6 +126,9 @@ const stationWords: Record<string, { title: string; why: string; next: string; a
   },
 };
 
+/** Stations whose material the client may have. */
+const askable = new Set(['bills', 'intervals', 'motors']);
+
 function nextStation(opened: OpenEngagement, station: StationView, today: string): WaitingView[] {
   const words = stationWords[station.id];
   if (!words) return [];
@@ -143,6 +148,9 @@ function nextStation(opened: OpenEngagement, station: StationView, today: string
       next: words.next,
       href: station.href,
       action: words.action,
+      other: askable.has(station.id)
+        ? { href: `/engagements/${opened.engagement.code}/requests/new?about=${station.id}`, action: 'Ask the client' }
+        : undefined,
     },
   ];
 }

@@ -1,5 +1,5 @@
-import { fork, type ChildProcess } from 'node:child_process';
-import { stat } from 'node:fs/promises';
+import { mkdir, mkdtemp, rm, stat } from 'node:fs/promises';
+import path from 'node:path';
 import { Semaphore } from 'async-mutex';
 import {
   IntakeError,
@@ -9,23 +9,24 @@ import {
   type IntakeProblem,
   type IntervalPreview,
   type IntervalReading,
+  type Trace,
+  type TracePoint,
 } from '../../core/intake';
-import { locateWorker } from './locate';
+import { getEnv } from '../env';
+import { readLoad, type HandedLoad } from './load-file';
+import { askChild, ChildStopped, type ReadLimits } from './reader-child';
 
 interface Results {
-  intervals: { preview: IntervalPreview; read: IntervalReading };
-  bills: { preview: BillPreview; read: BillReading };
+  intervals: { preview: IntervalPreview; read: IntervalReading; trace: Trace };
+  bills: { preview: BillPreview; read: BillReading; trace: Trace };
 }
 
-export type ReadResult = Results['intervals' | 'bills']['preview' | 'read'];
+type Mode = keyof Results['intervals'];
 
 /** What the child is asked to read, and how. */
-export interface ReadRequest<
-  Kind extends keyof Results = keyof Results,
-  Mode extends 'preview' | 'read' = 'preview' | 'read',
-> {
+export interface ReadRequest<Kind extends keyof Results = keyof Results, Asked extends Mode = Mode> {
   kind: Kind;
-  mode: Mode;
+  mode: Asked;
   /** Where the file lies. */
   path: string;
   /** What the file is called in messages. */
@@ -33,40 +34,47 @@ export interface ReadRequest<
   /** IANA zone of stamps without offset. */
   timeZone: string;
   columnMap?: ColumnMap | undefined;
+  /** What is to be traced, for that mode. */
+  at?: TracePoint;
 }
+
+/** The same as the child gets it: with the file it writes a load to. */
+export type ChildRequest = ReadRequest & { handOver: string };
+
+/** A load goes by file, all else by message. */
+export type HandedReading = Omit<IntervalReading, 'load'> & { load: HandedLoad };
 
 /** What the child answers: a result, why the file is refused, or a fault of ours. */
-export type ReadAnswer = { result: ReadResult } | { problems: IntakeProblem[] } | { fault: string };
-
-/** When to give up on a child. */
-export interface ReadLimits {
-  signal?: AbortSignal | undefined;
-  timeoutMs?: number;
-  heapMegabytes?: number;
-}
+export type ReadAnswer =
+  | { result: IntervalPreview | BillPreview | BillReading | Trace }
+  | { handed: HandedReading }
+  | { problems: IntakeProblem[] }
+  | { fault: string };
 
 /** Most bytes of a file that is read at all. */
 export const fileByteCap = 128 * 1024 * 1024;
-const defaultHeapMegabytes = 256;
-const defaultTimeoutMs = 60_000;
 
 /** At most two files are read at once; others wait their turn. */
 const places = new Semaphore(2);
 
+/** Where children hand loads over. */
+const handOverFolder = () => path.resolve(getEnv().DATA_DIR, 'handed-over');
+
+/** Removes what a killed server left of loads that were handed over. Called at boot. */
+export const clearHandOver = () => rm(handOverFolder(), { recursive: true, force: true });
+
 /**
- * Reads a stranger's file in a child process of its own with a heap limit, an empty environment and a deadline; whatever
- * the file does to the child, the server stands.
+ * Reads a stranger's file in a child process of its own; whatever the file does to the child, the server stands. A load
+ * comes back through a file of arrays that is removed in any case.
  *
- * @param request  File, kind, and whether to preview or to read
- * @param options.signal  Gives up, also while waiting
- * @param options.timeoutMs  Time the child may take, waiting not counted. [ms]
- * @param options.heapMegabytes  Limit of the child's heap. [MiB]
+ * @param request  File, kind, and whether to preview, to read or to trace
+ * @param limits  When to give up, waiting for a place not counted, and who hears of progress
  * @throws {IntakeError} if the file is refused, too large, too slow, or takes too much memory
  */
-export async function readInChild<Kind extends keyof Results, Mode extends 'preview' | 'read'>(
-  request: ReadRequest<Kind, Mode>,
-  options: ReadLimits = {},
-): Promise<Results[Kind][Mode]> {
+export async function readInChild<Kind extends keyof Results, Asked extends Mode>(
+  request: ReadRequest<Kind, Asked>,
+  limits: ReadLimits = {},
+): Promise<Results[Kind][Asked]> {
   const { size } = await stat(request.path);
   if (size > fileByteCap) {
     throw refusal(
@@ -76,72 +84,38 @@ export async function readInChild<Kind extends keyof Results, Mode extends 'prev
     );
   }
   return places.runExclusive(async () => {
-    options.signal?.throwIfAborted();
-    const answer = await askChild(request, options);
-    if ('problems' in answer) throw new IntakeError(answer.problems);
-    if ('fault' in answer) throw new Error(`The reader of files failed on ${request.fileName}: ${answer.fault}`);
-    return answer.result as Results[Kind][Mode];
+    limits.signal?.throwIfAborted();
+    await mkdir(handOverFolder(), { recursive: true });
+    const folder = await mkdtemp(path.join(handOverFolder(), 'read-'));
+    try {
+      return (await ask(request, path.join(folder, 'load'), limits)) as Results[Kind][Asked];
+    } finally {
+      await rm(folder, { recursive: true, force: true });
+    }
   });
+}
+
+async function ask(request: ReadRequest, handOver: string, limits: ReadLimits) {
+  const answer = await askChild<ReadAnswer>({ ...request, handOver } satisfies ChildRequest, limits).catch(
+    (error: unknown) => {
+      if (error instanceof ChildStopped) throw stopped(request, error.reason);
+      throw error;
+    },
+  );
+  if ('problems' in answer) throw new IntakeError(answer.problems);
+  if ('fault' in answer) throw new Error(`The reader of files failed on ${request.fileName}: ${answer.fault}`);
+  if ('result' in answer) return answer.result;
+  return { ...answer.handed, load: await readLoad(handOver, answer.handed.load) };
+}
+
+const alone = 'Bring in the table of readings or bills alone, as delimited text.';
+
+function stopped(request: ReadRequest, reason: ChildStopped['reason']): IntakeError {
+  return reason === 'memory'
+    ? refusal(request, 'Reading the file takes more memory than one file may have.', alone)
+    : refusal(request, `Reading the file took longer than ${reason.slowSeconds} seconds and was stopped.`, alone);
 }
 
 function refusal(request: ReadRequest, message: string, remedy: string): IntakeError {
   return new IntakeError([{ message, where: request.fileName, remedy }]);
-}
-
-/** The child gets no environment, so that no secret of the server is within reach of what it reads. */
-function startChild(heapMegabytes: number): ChildProcess {
-  const { file, execArgv } = locateWorker('read-file');
-  return fork(file, [], {
-    execArgv: [...execArgv, `--max-old-space-size=${heapMegabytes}`],
-    serialization: 'advanced',
-    stdio: ['ignore', 'ignore', 'pipe', 'ipc'],
-    env: {},
-  });
-}
-
-function askChild(
-  request: ReadRequest,
-  { signal, timeoutMs = defaultTimeoutMs, heapMegabytes = defaultHeapMegabytes }: ReadLimits,
-): Promise<ReadAnswer> {
-  const child = startChild(heapMegabytes);
-  let words = '';
-  child.stderr?.on('data', (chunk: Buffer) => (words = (words + chunk.toString()).slice(-4000)));
-  let timer: NodeJS.Timeout | undefined;
-  const giveUp = new AbortController();
-  const asked = new Promise<ReadAnswer>((resolve, reject) => {
-    timer = setTimeout(() => {
-      const seconds = Math.round(timeoutMs / 1000);
-      reject(
-        refusal(
-          request,
-          `Reading the file took longer than ${seconds} seconds and was stopped.`,
-          'Bring in the table of readings or bills alone, as delimited text.',
-        ),
-      );
-    }, timeoutMs);
-    signal?.addEventListener('abort', () => reject(signal.reason as Error), { signal: giveUp.signal });
-    child.once('message', (answer: ReadAnswer) => resolve(answer));
-    child.once('error', reject);
-    child.once('exit', (code, death) => reject(endedEarly(request, words, code, death)));
-    child.send(request);
-  });
-  return asked.finally(() => {
-    clearTimeout(timer);
-    giveUp.abort();
-    child.kill('SIGKILL');
-  });
-}
-
-/** A child that ran out of memory says so before it dies; anything else is a fault of ours. */
-function endedEarly(request: ReadRequest, words: string, code: number | null, death: NodeJS.Signals | null): Error {
-  if (/heap out of memory|heap limit|Array buffer allocation failed/i.test(words) || death === 'SIGABRT') {
-    return refusal(
-      request,
-      'Reading the file takes more memory than one file may have.',
-      'Bring in the table of readings or bills alone, as delimited text.',
-    );
-  }
-  return new Error(
-    `The reader of ${request.fileName} ended without an answer (${death ?? code ?? 'unknown'}). ${words}`,
-  );
 }

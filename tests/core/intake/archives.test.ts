@@ -1,44 +1,7 @@
-import { deflateRawSync } from 'node:zlib';
 import { describe, expect, it } from 'vitest';
-import { readIntervals } from '@/core/intake';
+import { previewIntervals, readIntervals } from '@/core/intake';
 import { bytesOf, workbook } from './files';
-
-interface Member {
-  name: string;
-  bytes: Uint8Array;
-  /** What the directory says the size is, if it lies. */
-  claimed?: number;
-  isStored?: boolean;
-}
-
-/** A ZIP after PKWARE's application note (local headers, central directory, end record); checksums left at nought. */
-function zip(members: Member[]): Uint8Array {
-  const locals: Buffer[] = [];
-  const directory: Buffer[] = [];
-  let at = 0;
-  for (const { name, bytes, claimed = bytes.length, isStored = false } of members) {
-    const packed = isStored ? Buffer.from(bytes) : deflateRawSync(bytes);
-    const sizes = Buffer.alloc(26);
-    sizes.writeUInt16LE(20, 0);
-    sizes.writeUInt16LE(isStored ? 0 : 8, 4);
-    sizes.writeUInt32LE(packed.length, 14);
-    sizes.writeUInt32LE(claimed, 18);
-    sizes.writeUInt16LE(name.length, 22);
-    locals.push(Buffer.concat([Buffer.from([0x50, 0x4b, 3, 4]), sizes, Buffer.from(name), packed]));
-    const tail = Buffer.alloc(14);
-    tail.writeUInt32LE(at, 10);
-    directory.push(Buffer.concat([Buffer.from([0x50, 0x4b, 1, 2, 20, 0]), sizes, tail, Buffer.from(name)]));
-    at += locals.at(-1)?.length ?? 0;
-  }
-  const size = directory.reduce((sum, part) => sum + part.length, 0);
-  const end = Buffer.alloc(22);
-  end.writeUInt32LE(0x06054b50, 0);
-  end.writeUInt16LE(members.length, 8);
-  end.writeUInt16LE(members.length, 10);
-  end.writeUInt32LE(size, 12);
-  end.writeUInt32LE(at, 16);
-  return new Uint8Array(Buffer.concat([...locals, ...directory, end]));
-}
+import { zip } from './zip';
 
 const table = bytesOf(
   `Time,kWh\n${Array.from({ length: 24 }, (_, hour) => `2025-03-13 ${String(hour).padStart(2, '0')}:00,${hour + 1}`).join('\n')}`,
@@ -101,6 +64,39 @@ describe('archives', () => {
     ['one that is cut off', zip([{ name: 'a.csv', bytes: table }]).subarray(0, 150), /cannot be read/],
   ])('refuses %s', async (_name, bytes, message) => {
     await expect(read(bytes)).rejects.toThrow(message);
+  });
+
+  describe('with several files', () => {
+    const small = bytesOf('Time,kWh\n2025-03-13 00:00,7\n2025-03-13 01:00,8\n2025-03-13 02:00,9\n');
+    const both = zip([
+      { name: 'april/b.csv', bytes: small },
+      { name: 'a.csv', bytes: table },
+      { name: 'readme.md', bytes: bytesOf('x') },
+    ]);
+    const options = { fileName: 'readings.zip', timeZone: 'Etc/UTC' };
+
+    it('shows the largest, unsure, and names them all', async () => {
+      const preview = await previewIntervals(both, options);
+      expect(preview.dialect.members).toEqual(['a.csv', 'april/b.csv']);
+      expect(preview.guesses[0]).toMatchObject({ key: 'member', takenAs: 'a.csv', sure: false });
+      expect(preview).toMatchObject({ problems: [], report: { totalKwh: 300 } });
+      const { report } = await readIntervals(both, { ...options, columnMap: preview.columnMap });
+      expect(report.totalKwh).toBe(300);
+    });
+
+    it('reads the one that is chosen and says so in its map', async () => {
+      const columnMap = { kind: 'intervals' as const, member: 'april/b.csv' };
+      const { report } = await readIntervals(both, { ...options, columnMap });
+      // 7 + 8 + 9
+      expect(report).toMatchObject({ totalKwh: 24, columnMap: { member: 'april/b.csv' } });
+      const preview = await previewIntervals(both, { ...options, columnMap });
+      expect(preview.guesses[0]).toMatchObject({ key: 'member', sure: true });
+    });
+
+    it('refuses one it does not hold', async () => {
+      const columnMap = { kind: 'intervals' as const, member: 'c.csv' };
+      await expect(readIntervals(both, { ...options, columnMap })).rejects.toThrow(/no file “c\.csv”.*a\.csv/s);
+    });
   });
 
   it('names the archive and the file in it where something is wrong', async () => {

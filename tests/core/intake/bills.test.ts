@@ -244,12 +244,6 @@ describe('bills that are refused', () => {
     await expect(refused).rejects.toThrow(/row 2 .* row 3 .* overlap/);
   });
 
-  it('names an estimated bill and its correction', async () => {
-    const text =
-      'From,To,Read type,kWh,Total\n2025-01-01,2025-02-01,Estimated,100,10\n2025-01-01,2025-02-01,Actual,95,9.5\n2025-02-01,2025-03-01,Actual,90,9\n';
-    await expect(read(text)).rejects.toThrow(/overlap/);
-  });
-
   it.each([
     [
       'a period that runs backwards',

@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { parseNumberAt, parseNumberText, voteDecimalMark } from '@/core/intake/numbers';
 import { civilDay, StampScanner } from '@/core/intake/stamps';
+import { readText } from './files';
 
 const point = 46;
 
@@ -154,5 +155,26 @@ describe('StampScanner', () => {
     '',
   ])('refuses “%s”', (text) => {
     expect(minuteOf(text)).toBeNaN();
+  });
+});
+
+describe('two styles of numbers in one column', () => {
+  const rows = (figures: string[]) =>
+    figures.map(
+      (figure, at) =>
+        `2025-06-10 ${String(Math.floor(at / 4)).padStart(2, '0')}:${String((at % 4) * 15).padStart(2, '0')};${figure}`,
+    );
+  const read = (figures: string[]) => readText(['Time;Energy kWh', ...rows(figures)].join('\n'), 'UTC');
+
+  it('are refused by their place where they contradict each other', async () => {
+    const mixed = Array.from({ length: 40 }, (_, at) => (at % 2 === 0 ? '1.234,5' : '1,234.5'));
+    await expect(read(mixed)).rejects.toThrow(/hold words.*row \d+, column B/);
+  });
+
+  it('are left missing by name where they are few, and the mark is asked', async () => {
+    const { report } = await read(Array.from({ length: 40 }, (_, at) => (at === 7 ? '12.75' : '12,5')));
+    expect(report).toMatchObject({ missing: 1, totalKwh: 39 * 12.5 });
+    const codes = report.notes.map((note) => note.code);
+    expect(codes).toEqual(expect.arrayContaining(['value-unreadable', 'decimal-mark-assumed']));
   });
 });

@@ -1,0 +1,3 @@
+import { readsEveryDialect } from './suite';
+
+readsEveryDialect('America/Chicago', ['America/Chicago', 'UTC']);

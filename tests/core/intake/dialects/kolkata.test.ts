@@ -1,0 +1,3 @@
+import { readsEveryDialect } from './suite';
+
+readsEveryDialect('Asia/Kolkata', ['Asia/Kolkata', 'Australia/Lord_Howe']);

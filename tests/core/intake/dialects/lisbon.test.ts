@@ -1,0 +1,3 @@
+import { readsEveryDialect } from './suite';
+
+readsEveryDialect('Europe/Lisbon', ['Europe/Lisbon', 'Asia/Kolkata']);

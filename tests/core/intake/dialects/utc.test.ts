@@ -1,0 +1,3 @@
+import { readsEveryDialect } from './suite';
+
+readsEveryDialect('UTC', ['UTC', 'Europe/Lisbon']);

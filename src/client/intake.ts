@@ -1,6 +1,8 @@
 import type { Trace, TracePoint } from '../core/intake';
 import type { BillInput, BillView, MeteredPeriod } from '../schemas/bill';
-import type { IntakeOverlap, IntakePicture, IntakeView, MatchInput, OverlapChoice } from '../schemas/intake';
+import type { IntakeView, MatchInput, OverlapChoice } from '../schemas/intake';
+import type { IntakePicture } from '../schemas/intervals';
+import type { IntakeOverlap } from '../schemas/overlap';
 import { call, sendFile } from './api';
 
 type Kind = 'intervals' | 'bills';

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import type { BillsOverlap } from '@/schemas/intake';
+import type { BillsOverlap } from '@/schemas/overlap';
 import { Bill } from '@/server/models/Bill';
 import { Intake } from '@/server/models/Intake';
 import { addBill, listBills, removeBill } from '@/server/services/bills';

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import type { IntervalsOverlap } from '@/schemas/intake';
+import type { IntervalsOverlap } from '@/schemas/overlap';
 import { inTx } from '@/server/db/tx';
 import { Engagement } from '@/server/models/Engagement';
 import { Intake } from '@/server/models/Intake';

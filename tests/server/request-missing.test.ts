@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import type { MonthOfLoad } from '@/schemas/intake';
+import type { MonthOfLoad } from '@/schemas/intervals';
 import { usualDueDay } from '@/server/services/request-draft';
 import { missingBills, missingIntervals, missingPlates, uncoveredStretches } from '@/server/services/request-missing';
 

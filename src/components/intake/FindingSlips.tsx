@@ -1,5 +1,5 @@
 import type { LoadFinding } from '../../core/load';
-import type { ReadingGap } from '../../schemas/intake';
+import type { ReadingGap } from '../../schemas/intervals';
 import { FindingSlip } from '../ui/FindingSlip';
 import { formatCount } from '../ui/format';
 import { numberedFindings, wordFinding } from './load-findings';

@@ -2,7 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { fetchGapPreviews, fillGap } from '../../client/gap-fills';
 import { isStretch, type GapPreview, type GapPreviews } from '../../schemas/gap-fill';
-import type { ReadingGap } from '../../schemas/intake';
+import type { ReadingGap } from '../../schemas/intervals';
 import { Button } from '../ui/Button';
 import { formatCount, formatQuantity } from '../ui/format';
 import { Notice } from '../ui/Notice';

@@ -1,4 +1,4 @@
-import type { IntervalsBeside, IntervalsOverlap } from '../../schemas/intake';
+import type { IntervalsBeside, IntervalsOverlap } from '../../schemas/overlap';
 import { formatDateTime, formatMonth } from '../ui/format';
 import type { LedgerData, LedgerRow } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';

@@ -3,7 +3,7 @@ import type { CarpetData } from '../charts/carpet';
 import { Queries } from '../../client/queries';
 import { CarpetTabs } from '../charts/CarpetTabs';
 import { DayFigure } from '../charts/DayChart';
-import type { IntervalsStation, KeptYear, MetersOfYear } from '../../schemas/intake';
+import type { IntervalsStation, KeptYear, MetersOfYear } from '../../schemas/intervals';
 import { FindingSlip } from '../ui/FindingSlip';
 import {
   formatCount,

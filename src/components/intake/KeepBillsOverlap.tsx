@@ -1,5 +1,6 @@
 import { daysBetween } from '../../schemas/bill';
-import type { BillBeside, BillsBeside, BillsOverlap, IntakeView } from '../../schemas/intake';
+import type { IntakeView } from '../../schemas/intake';
+import type { BillBeside, BillsBeside, BillsOverlap } from '../../schemas/overlap';
 import { Button } from '../ui/Button';
 import { formatBillName, formatCount, formatPeriod, formatSpelled } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';

@@ -1,4 +1,5 @@
-import type { IntakeView, IntervalsOverlap } from '../../schemas/intake';
+import type { IntakeView } from '../../schemas/intake';
+import type { IntervalsOverlap } from '../../schemas/overlap';
 import { Button } from '../ui/Button';
 import { formatCount, formatDate, formatNumber } from '../ui/format';
 import { Notice } from '../ui/Notice';

@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { fetchOverlap } from '../../client/intake';
-import { toConfirm, type IntakePreview, type IntakeView, type IntervalsOverlap } from '../../schemas/intake';
+import { toConfirm, type IntakePreview, type IntakeView } from '../../schemas/intake';
+import type { IntervalsOverlap } from '../../schemas/overlap';
 import { Button } from '../ui/Button';
 import { formatCount, formatDateTime, formatNumber } from '../ui/format';
 import { Notice } from '../ui/Notice';
@@ -95,10 +96,10 @@ function Lengths({ overlap }: { overlap: IntervalsOverlap }) {
 
 function sentence(intake: IntakeView, preview: IntakePreview): string {
   const { engagement, state } = intake;
-  const go = state === 'kept' ? 'went' : 'go';
+  const went = (count: number) => (state === 'kept' ? 'went' : count === 1 ? 'goes' : 'go');
   if (preview.kind === 'bills') {
     const first = preview.bills[0]?.period.from;
-    return `${formatCount(preview.bills.length, 'bill')} ${go} to engagement ${engagement.code}${first ? ', with their lines and printed quantities' : ''}. Amounts are kept in ${engagement.currency} exactly as printed.`;
+    return `${formatCount(preview.bills.length, 'bill')} ${went(preview.bills.length)} to engagement ${engagement.code}${first ? ', with their lines and printed quantities' : ''}. Amounts are kept in ${engagement.currency} exactly as printed.`;
   }
   const { report } = preview;
   if (!report) return '';
@@ -111,5 +112,5 @@ function sentence(intake: IntakeView, preview: IntakePreview): string {
   ].filter(Boolean);
   const listed = channels.length > 1 ? `${channels.slice(0, -1).join(', ')} and ${channels.at(-1)}` : channels[0];
   const estimated = report.estimated > 0 ? ` ${formatNumber(report.estimated)} of them are marked estimated.` : '';
-  return `${formatCount(report.intervals - report.missing, 'reading')} of ${listed} ${go} to meter ${engagement.meter}, from ${formatDateTime(report.firstMs, zone)} to ${formatDateTime(report.lastMs + stepMs, zone)}, ${zone}.${estimated}`;
+  return `${formatCount(report.intervals - report.missing, 'reading')} of ${listed} ${went(report.intervals - report.missing)} to meter ${engagement.meter}, from ${formatDateTime(report.firstMs, zone)} to ${formatDateTime(report.lastMs + stepMs, zone)}, ${zone}.${estimated}`;
 }

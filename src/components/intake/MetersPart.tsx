@@ -1,7 +1,7 @@
 import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
 import { addMeter, removeMeter } from '../../client/engagements';
-import type { MeterOfYear, MetersOfYear } from '../../schemas/intake';
+import type { MeterOfYear, MetersOfYear } from '../../schemas/intervals';
 import { Button } from '../ui/Button';
 import { Field, SelectField } from '../ui/Field';
 import { LedgerTable } from '../ui/LedgerTable';

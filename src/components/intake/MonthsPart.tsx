@@ -1,4 +1,4 @@
-import type { KeptYear, MonthOfLoad } from '../../schemas/intake';
+import type { KeptYear, MonthOfLoad } from '../../schemas/intervals';
 import { formatDate, formatDateTime, formatMonth, formatNumber } from '../ui/format';
 import type { LedgerData, LedgerRow } from '../ui/ledger';
 import { LedgerTable } from '../ui/LedgerTable';

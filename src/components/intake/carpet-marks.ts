@@ -1,6 +1,6 @@
 import type { CarpetMark } from '../charts/carpet';
 import { formatDate, formatDateTime, formatTime } from '../ui/format';
-import type { ReadingGap } from '../../schemas/intake';
+import type { ReadingGap } from '../../schemas/intervals';
 
 /** Gaps with a number on the picture and a slip beside it. */
 export const numberedGaps = 6;

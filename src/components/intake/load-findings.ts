@@ -2,7 +2,7 @@ import type { LoadFault, LoadFinding } from '../../core/load';
 import type { CarpetMark } from '../charts/carpet';
 import { formatCount, formatDateTime, formatNumber, formatQuantity } from '../ui/format';
 import { gapInWords, gapMarks, longestGaps, markOf } from './carpet-marks';
-import type { ReadingGap } from '../../schemas/intake';
+import type { ReadingGap } from '../../schemas/intervals';
 
 /** Findings with a slip of their own; the rest is counted. */
 const shownFindings = 8;

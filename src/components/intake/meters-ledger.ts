@@ -1,4 +1,4 @@
-import type { MeterOfYear } from '../../schemas/intake';
+import type { MeterOfYear } from '../../schemas/intervals';
 import type { LedgerData, LedgerRow } from '../ui/ledger';
 
 /** Address of the station Intervals with one of its meters shown. */

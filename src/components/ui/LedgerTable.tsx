@@ -154,7 +154,7 @@ export function LedgerTable(props: LedgerTableProps) {
     return (
       <button
         type="button"
-        className="why-figure"
+        className={classes('why-figure', cell.opens && 'opens-figure')}
         aria-expanded={expanded}
         ref={expanded ? origin : undefined}
         onClick={() => setOpen(expanded ? null : { rowId: row.id, columnKey: column.key })}

@@ -1,7 +1,8 @@
 import { addDays, isoDate } from '../load';
 import { isNought } from './bill-documents';
 import type { BillDraft } from './bill-drafts';
-import type { BillRecord, IntakeNote, IntakeProblem, RateFault, ReadOptions } from './types';
+import type { BillRecord, RateFault } from './bill-types';
+import type { IntakeNote, IntakeProblem, ReadOptions } from './types';
 
 /** A bill beside the document it is read from, in the order of time. */
 export interface PlacedBill {

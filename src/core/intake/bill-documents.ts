@@ -1,6 +1,6 @@
 import type { BillDraft } from './bill-drafts';
 import { joinParts } from './bill-parts';
-import type { DocumentChoice, DocumentKind } from './types';
+import type { DocumentChoice, DocumentKind } from './bill-types';
 
 /** A document and what becomes of it. */
 export interface Settled {

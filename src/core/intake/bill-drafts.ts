@@ -7,7 +7,8 @@ import { ratesOf } from './bill-rates';
 import { intakeError } from './errors';
 import { columnLetter } from './grid';
 import { isBlankWord } from './numbers';
-import type { BillCharge, ColumnUse, ReadOptions } from './types';
+import type { BillCharge } from './bill-types';
+import type { ColumnUse, ReadOptions } from './types';
 import { scaled, unitMeaning } from './units';
 
 /** A document of the file before it is settled whether it stands as a bill. */

@@ -1,5 +1,5 @@
 import { quantityOf } from './bill-words';
-import type { BillCharge } from './types';
+import type { BillCharge } from './bill-types';
 import { scaled, unitMeaning } from './units';
 
 /** Lines that share the energy of one bill by steps of its amount. */

@@ -1,6 +1,6 @@
 import type { Settled } from './bill-documents';
 import type { BillDraft } from './bill-drafts';
-import type { BillCharge } from './types';
+import type { BillCharge } from './bill-types';
 
 const cent = 0.0051;
 const sumOf = (charges: readonly BillCharge[]): number => charges.reduce((sum, charge) => sum + charge.amount, 0);

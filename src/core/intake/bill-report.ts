@@ -2,7 +2,8 @@ import { isoDate } from '../load';
 import type { PlacedBill } from './bill-checks';
 import { amountOf, type Settled } from './bill-documents';
 import type { BillPlan } from './bill-plan';
-import type { BillDocument, BillReading, IntakeNote, IntakeReport } from './types';
+import type { BillDocument } from './bill-types';
+import type { BillReading, IntakeNote, IntakeReport } from './types';
 
 /** What reading adds to the figures of the bills. */
 type Findings = Pick<IntakeReport, 'notes' | 'currency' | 'documents' | 'rateFaults'>;

@@ -13,7 +13,8 @@ import { documentsOf, noteDocuments, reportOfBills } from './bill-report';
 import { IntakeError } from './errors';
 import { guess } from './evidence';
 import { openNotes } from './guesses';
-import type { BillDocument, BillReading, BillRecord, Guess, IntakeNote, IntakeProblem, ReadOptions } from './types';
+import type { BillDocument, BillRecord } from './bill-types';
+import type { BillReading, Guess, IntakeNote, IntakeProblem, ReadOptions } from './types';
 
 /** What a table of bills holds, whether or not it can stand. */
 export interface BillTable {

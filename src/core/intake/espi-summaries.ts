@@ -1,7 +1,8 @@
 import { localDateOf, zoneOffsetMs } from '../load';
 import type { EspiEntry, EspiFeed, EspiNode } from './espi-feed';
 import { scaledUnit } from './espi-meaning';
-import type { BillCharge, BillRecord, IntakeNote } from './types';
+import type { BillCharge, BillRecord } from './bill-types';
+import type { IntakeNote } from './types';
 import { scaled } from './units';
 
 /** Amounts of a feed are whole hundred-thousandths of the currency (NAESB REQ.21). */

@@ -1,7 +1,10 @@
 import { openSource } from './source';
-import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions, Trace } from './types';
+import type { Trace } from './trace-types';
+import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions } from './types';
 
 export { IntakeError } from './errors';
+export type * from './bill-types';
+export type * from './trace-types';
 export type * from './types';
 
 /**

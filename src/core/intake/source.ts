@@ -10,7 +10,8 @@ import { previewOfBills, previewOfChannels, previewOfIntervals } from './preview
 import { shapeOf, shapeOfNames } from './shape';
 import { decodeText } from './text';
 import { traceNem, traceTable, traceTableBill } from './trace';
-import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions, Trace } from './types';
+import type { Trace } from './trace-types';
+import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOptions } from './types';
 import { unpackedWorkbook } from './workbook-zip';
 import { zipSource } from './zip-source';
 

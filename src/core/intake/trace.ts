@@ -7,7 +7,8 @@ import { columnLetter, type Grid } from './grid';
 import { placePlanned, type IntervalPlan } from './intervals';
 import type { NemFile } from './nem12';
 import type { PlacedStrand } from './series';
-import type { ReadOptions, Trace, TraceRow } from './types';
+import type { Trace, TraceRow } from './trace-types';
+import type { ReadOptions } from './types';
 
 const mostRows = 60;
 const charactersShown = 120;

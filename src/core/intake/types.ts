@@ -1,3 +1,4 @@
+import type { BillDocument, BillRecord, DocumentChoice, RateFault } from './bill-types';
 import type { LoadSeries } from '../load';
 
 /** How a file is to be read. */
@@ -150,13 +151,6 @@ export interface ColumnMap {
   documents?: DocumentChoice[];
 }
 
-/** A person's word on one document of a file of bills. */
-export interface DocumentChoice {
-  row: number;
-  total: number | null;
-  isTaken: boolean;
-}
-
 /** Stretch of missing intervals, half-open UTC. */
 export interface IntakeGap {
   fromMs: number;
@@ -196,59 +190,6 @@ export interface IntakeReport {
   rateFaults?: RateFault[];
   /** Bills: the currency named in the file, as an ISO code, where one could be told. */
   currency?: string;
-}
-
-/** A line charge as printed; quantity, unit and rate where the bill shows them. */
-export interface BillCharge {
-  label: string;
-  amount: number;
-  quantity?: number;
-  unit?: string;
-  rate?: number;
-}
-
-/** A bill as printed. */
-export interface BillRecord {
-  period: { from: string; to: string };
-  quantities: Record<string, number>;
-  charges: BillCharge[];
-  total: number | null;
-  /** Number of the invoice as printed. */
-  invoice?: string;
-  /** The file says that the reading is estimated. */
-  isEstimated?: boolean;
-}
-
-/** What a document in a file of bills is. */
-export type DocumentKind =
-  'bill' | 'estimate' | 'correction' | 'cancelled' | 'credit-note' | 'part' | 'repeat' | 'nought' | 'no-bill';
-
-/** A document met in a file of bills, and what became of it. */
-export interface BillDocument {
-  /** Row of the file it begins in (column, where a column holds a bill), and the place in words. */
-  row: number;
-  where: string;
-  invoice?: string;
-  /** Half-open; null where the file gives it none. */
-  period: { from: string; to: string } | null;
-  total: number | null;
-  kind: DocumentKind;
-  /** Position of the bill it stands in; null where it is left out. */
-  bill: number | null;
-  /** Why it stands or is left out. */
-  why: string;
-}
-
-/** A line of a bill whose quantity times rate is not its amount. */
-export interface RateFault {
-  /** Position of the bill. */
-  bill: number;
-  where: string;
-  label: string;
-  quantity: number;
-  unit: string;
-  rate: number;
-  amount: number;
 }
 
 /** How the bytes of a file were turned into cells. */
@@ -371,26 +312,4 @@ export interface IntervalReading {
 export interface BillReading {
   bills: BillRecord[];
   report: IntakeReport;
-}
-
-/** What is traced back to the file: the interval that begins at an instant, or the bill whose period begins on a day. */
-export type TracePoint = { ms: number } | { from: string };
-
-/** A row of the file behind a kept value, with the cells that were read. */
-export interface TraceRow {
-  /** Number of the row (column, line) in the file, 1 is the first. */
-  number: number;
-  cells: { name: string; text: string }[];
-}
-
-/** Where in a file a kept value stands. */
-export interface Trace {
-  /** Name of the file; of one in an archive with the archive's before it. */
-  fileName: string;
-  /** What is counted: lines of XML, rows of a table, columns of a table with a bill a column. */
-  unit: 'row' | 'column' | 'line';
-  sheet?: string | undefined;
-  rows: TraceRow[];
-  /** Rows beyond those listed. */
-  more: number;
 }

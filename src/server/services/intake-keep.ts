@@ -1,4 +1,5 @@
-import { toConfirm, type IntakeView, type IntakePicture, type OverlapChoice } from '../../schemas/intake';
+import { toConfirm, type IntakeView, type OverlapChoice } from '../../schemas/intake';
+import type { IntakePicture } from '../../schemas/intervals';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound } from '../errors';
 import type { Intake } from '../models/Intake';

@@ -1,4 +1,4 @@
-import type { IntakeOverlap } from '../../schemas/intake';
+import type { IntakeOverlap } from '../../schemas/overlap';
 import type { Actor } from '../policies/actor';
 import { openIntake } from './intake-guard';
 import { readyToKeep } from './intake-keep';

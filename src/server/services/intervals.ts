@@ -7,7 +7,7 @@ import type {
   MonthOfLoad,
   PeakOfYear,
   ReadingGap,
-} from '../../schemas/intake';
+} from '../../schemas/intervals';
 import { Intake } from '../models/Intake';
 import { User } from '../models/User';
 import { presentIntakeRow } from '../presenters/intake';

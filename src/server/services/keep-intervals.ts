@@ -1,6 +1,7 @@
 import { formatCount } from '../../components/ui/format';
 import type { LoadSeries } from '../../core/load';
-import type { IntervalsOverlap, OverlapChoice } from '../../schemas/intake';
+import type { OverlapChoice } from '../../schemas/intake';
+import type { IntervalsOverlap } from '../../schemas/overlap';
 import { inTx } from '../db/tx';
 import { conflict } from '../errors';
 import { refreshFills } from './gap-fills';

@@ -1,5 +1,5 @@
 import { addDays, localDateOf, localDateStartMs, quality as grades, type LoadSeries } from '../../core/load';
-import type { DayOfLoad, LoadDays } from '../../schemas/intake';
+import type { DayOfLoad, LoadDays } from '../../schemas/intervals';
 
 /** Means by local day, rounded to a tenth: they are drawn, not reckoned with. A day that begins late is padded. */
 export function daysOf(load: LoadSeries, timeZone: string): LoadDays {

@@ -1,6 +1,6 @@
 import { formatMoney, formatNumber, formatQuantity } from '../../components/ui/format';
 import { billQuantity, type BillInput } from '../../schemas/bill';
-import type { BillBeside, BillsBeside, BillsOverlap } from '../../schemas/intake';
+import type { BillBeside, BillsBeside, BillsOverlap } from '../../schemas/overlap';
 import { Bill } from '../models/Bill';
 import { BillLine } from '../models/BillLine';
 import { Intake } from '../models/Intake';

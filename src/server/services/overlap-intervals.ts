@@ -7,7 +7,7 @@ import {
   type LoadSeries,
   type LoadsBeside,
 } from '../../core/load';
-import type { IntervalsBeside, IntervalsOverlap } from '../../schemas/intake';
+import type { IntervalsBeside, IntervalsOverlap } from '../../schemas/overlap';
 import { conflict } from '../errors';
 import { Intake } from '../models/Intake';
 import type { Meter } from '../models/Meter';

@@ -8,7 +8,7 @@ import {
   formatPeriod,
 } from '../../components/ui/format';
 import type { BillView } from '../../schemas/bill';
-import type { IntervalsStation, MonthOfLoad, ReadingGap } from '../../schemas/intake';
+import type { IntervalsStation, MonthOfLoad, ReadingGap } from '../../schemas/intervals';
 import type { MotorView } from '../../schemas/motor';
 import type { DraftItem } from '../../schemas/request';
 

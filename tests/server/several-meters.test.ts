@@ -10,7 +10,7 @@ import { addMeter, metersOf, removeMeter } from '@/server/services/meters';
 import { changeMotor, createMotor, openMotor } from '@/server/services/motors';
 import { planBasis, priceSettings } from '@/server/services/plan-basis';
 import { priceOn } from '@/server/services/price-basis';
-import { pricingBasis } from '@/server/services/pricing';
+import { pricedYear, pricingBasis } from '@/server/services/pricing';
 import { keepSeries } from '@/server/services/reading-blocks';
 import { engagementFrame } from '@/server/services/stations';
 import { closePool } from '@/server/workers/pool';
@@ -157,5 +157,24 @@ describe('a bill of two meters', () => {
     });
     const [, behindFirst] = await price();
     expect(behindFirst).toBeLessThan(standing! - 100_000);
+  });
+});
+
+describe('a meter whose files carry different registers', () => {
+  it('has a month without kvarh named as missing, and the next one priced', async () => {
+    const load = steadyLoad('2025-11-01', '2026-01-01', () => 3000, 0.3);
+    // The first file, of November, carried kWh alone: 721 hours of four readings.
+    load.kvarhLagging.fill(Number.NaN, 0, 4 * 721);
+    load.kvarhLeading.fill(Number.NaN, 0, 4 * 721);
+    await keepLoad(engagement, load);
+    const december = { from: '2025-12-01', to: '2026-01-01' };
+    await keepBills(
+      engagement,
+      [november, december].map((period) => ({ ...period, lines: [], totalMinor: null })),
+    );
+    await chooseSchedule(engagement.id);
+    const { bills } = await pricedYear(await open());
+    expect(bills.map(({ missingReadings }) => missingReadings)).toEqual([4 * 721, 0]);
+    expect(bills[1]!.priced.quantities.kvarh!.value).toBeCloseTo(744 * 900, 6);
   });
 });

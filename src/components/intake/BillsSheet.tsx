@@ -109,7 +109,9 @@ function YearPart(props: TableProps) {
       reference={
         <>
           <p>A bill is named by the month of its middle day.</p>
-          <p>Lines less total: the sum of the lines less the printed total.</p>
+          {props.bills.some(({ differenceMinor }) => differenceMinor) && (
+            <p>Lines less total: the sum of the lines less the printed total.</p>
+          )}
         </>
       }
       result={<BillsResult {...props} />}

@@ -32,3 +32,4 @@ export {
   type BillingPeriod,
   type LoadSeries,
 } from './series';
+export { wholeReadings } from './whole-readings';

@@ -1,4 +1,4 @@
-import { sumLoads, type LoadSeries } from '../../core/load';
+import { sumLoads, wholeReadings, type LoadSeries } from '../../core/load';
 import { conflict } from '../errors';
 import type { OpenEngagement } from './engagements';
 import { keptSpans, loadSeries } from './readings';
@@ -12,7 +12,7 @@ export interface MeteredLoad {
 }
 
 /**
- * The kept readings of an engagement's meters over [fromMs, toMs), added up; null where none is kept in that time.
+ * The kept readings of an engagement's meters over [fromMs, toMs), added up, as pricing takes them; null where none is kept in that time.
  *
  * @throws {ServiceError} 409 where one of several meters has none, or their intervals differ in length
  */
@@ -30,7 +30,7 @@ export async function meteredLoad(
       { station: 'intervals' },
     );
   }
-  const loads = await Promise.all(meters.map((meter) => loadSeries(meter.id, fromMs, toMs)));
+  const loads = await Promise.all(meters.map(async (meter) => wholeReadings(await loadSeries(meter.id, fromMs, toMs))));
   const other = loads.findIndex((load) => load.stepMinutes !== loads[0]?.stepMinutes);
   if (other > 0) {
     throw conflict(

@@ -40,6 +40,7 @@ const rowSql: Record<string, string> = {
     "SELECT i.id value FROM intakes i JOIN engagements e ON e.id = i.engagement_id WHERE e.code = 'KG-02' AND i.kind = 'intervals'",
   jobs: 'SELECT id value FROM jobs',
   members: "SELECT id value FROM users WHERE email LIKE 'sana@%'",
+  meters: "SELECT meter_id value FROM engagements WHERE code = 'KG-02'",
   letters: 'SELECT number value FROM utility_letters',
   motors: 'SELECT id value FROM motors',
   people: "SELECT id value FROM users WHERE email LIKE 'sana@%'",

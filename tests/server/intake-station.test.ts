@@ -77,16 +77,22 @@ describe('station Intervals', () => {
 });
 
 describe('station Bills', () => {
-  it('sets printed energies against the readings, and leaves periods with a missing reading out', async () => {
+  it('sets printed energies against the readings, of a period with a missing one as the least it can be', async () => {
     const year = { yearFrom: '2026-01-01', yearTo: '2026-04-01' };
     const { actor, opened } = await keptEngagement(evenLoad('2026-01-01', '2026-03-01', [3000]), year);
     const bill = (from: string, to: string, kwh: number) =>
       addBill(actor, opened.engagement.code, { from, to, quantities: { kwh }, lines: [], totalMinor: 100 });
     const january = await bill('2026-01-01', '2026-02-01', 2975);
-    await bill('2026-02-01', '2026-03-01', 2688);
+    const february = await bill('2026-02-01', '2026-03-01', 2688);
     const later = await bill('2026-04-01', '2026-05-01', 10);
     const station = await billsStation(opened);
-    expect(station.meterChecks).toEqual([{ billId: january.id, billedKwh: 2975, meterKwh: 31 * 96 }]);
+    const energy = (printed: number, metered: number) => [{ name: 'kwh', printed, metered }];
+    // One kWh in each quarter-hour: 31 days in January, 28 in February less the one that is missing.
+    expect(station.meterChecks).toMatchObject([
+      { billId: january.id, missing: 0, figures: energy(2975, 31 * 96) },
+      { billId: february.id, missing: 1, figures: energy(2688, 28 * 96 - 1) },
+    ]);
+    expect(station.meterChecks[1]!.remarks.join()).toMatch(/at least 2,687 kWh/);
     expect(station.bills).toHaveLength(2);
     expect(station.laterBills.map((one) => one.id)).toEqual([later.id]);
   });

@@ -77,7 +77,8 @@ describe('meters of an engagement', () => {
 
   it('keep the first, and one that a motor stands behind or whose readings are kept', async () => {
     const { meters } = await addMeter(actor, engagement.code, newMeter('Feeder 2'));
-    expect(await refusal(removeMeter(actor, engagement.code, meters[0]!.id))).toMatchObject({ status: 404 });
+    expect(await refusal(removeMeter(actor, engagement.code, meters[0]!.id))).toMatchObject({ status: 409 });
+    expect(await refusal(removeMeter(actor, engagement.code, 9_999_999))).toMatchObject({ status: 404 });
     const motor = await createMotor(await open(), motorOf(millMotor, {}, { meterId: meters[1]!.id }));
     expect((await refusal(removeMeter(actor, engagement.code, meters[1]!.id))).message).toMatch(
       /M-1 stands behind Feeder 2/,

@@ -50,11 +50,16 @@ async function meterFor({ site }: OpenEngagement, input: MeterInput): Promise<Me
 /**
  * Takes a further meter off an engagement. It stays at its site with what is kept of it.
  *
- * @throws {ServiceError} 404; 409 where a motor stands behind it or a kept file of the engagement brought its readings
+ * @throws {ServiceError} 404; 409 for the first, where a motor stands behind it, or where a kept file of the engagement brought its readings
  */
 export async function removeMeter(actor: Actor, code: string, meterId: number): Promise<MetersView> {
   const { engagement, meters } = await openForChange(actor, code);
-  const meter = meters.slice(1).find(({ id }) => id === meterId);
+  const [first] = meters;
+  if (first?.id === meterId)
+    throw conflict(
+      `${first.label} is the meter the engagement is named by; it cannot be taken off. Take off the others.`,
+    );
+  const meter = meters.find(({ id }) => id === meterId);
   if (!meter) throw notFound();
   const where = { engagementId: engagement.id, meterId };
   await inTx(async () => {

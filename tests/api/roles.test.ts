@@ -45,8 +45,10 @@ const rowSql: Record<string, string> = {
   motors: 'SELECT id value FROM motors',
   people: "SELECT id value FROM users WHERE email LIKE 'sana@%'",
   plans: 'SELECT id value FROM plans',
-  requests: 'SELECT number value FROM data_requests',
-  files: 'SELECT key value FROM request_files',
+  requests:
+    "SELECT r.number value FROM data_requests r JOIN engagements e ON e.id = r.engagement_id WHERE e.code = 'KG-02'",
+  files:
+    "SELECT f.key value FROM request_files f JOIN request_items i ON i.id = f.item_id JOIN data_requests r ON r.id = i.request_id JOIN engagements e ON e.id = r.engagement_id WHERE e.code = 'KG-02'",
   rates: "SELECT r.id value FROM rates r JOIN users u ON u.id = r.user_id WHERE u.email LIKE 'sana@%'",
 };
 

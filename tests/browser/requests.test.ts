@@ -141,9 +141,18 @@ describe('a request, from asking to keeping', () => {
     const keep = page.getByRole('button', { name: /^Keep 2 bills/ });
     await keep.waitFor();
     await keep.click();
+    const kept = /intake\/(\d+)/.exec(page.url())?.[1];
     await page.getByRole('link', { name: /^See the bills/ }).click();
     // Six of the demo, the two of May joined to one, and the two sent.
     expect(await heading(page)).toMatch(/^All eight bills are kept/);
+    // Undone again: the other files of tests find the demo as it was.
+    const undone = await page.evaluate(async (id) => {
+      const { version } = (await (await fetch(`/api/intakes/${id}`)).json()) as { version: number };
+      const headers = { 'content-type': 'application/json' };
+      return (await fetch(`/api/intakes/${id}/undo`, { method: 'POST', headers, body: JSON.stringify({ version }) }))
+        .status;
+    }, kept);
+    expect(undone).toBe(200);
   });
 
   it('5: the photo stands beside the form of the motor, and the request is closed', async () => {

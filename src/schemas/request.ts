@@ -230,6 +230,8 @@ export interface RequestSummary extends Omit<RequestFrame, 'note'> {
 export interface DraftItem extends RequestItemInput {
   /** Why it is proposed: "Interval readings stop on 3 May". */
   why: string;
+  /** Number of the open request that asks for it already and waits; null where none does. */
+  askedIn: number | null;
 }
 
 /** A new request as it could be sent now. */

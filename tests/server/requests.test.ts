@@ -10,6 +10,7 @@ import type { Actor } from '@/server/policies/actor';
 import { canAnswerRequest, canAskClient, canOpenFile, canReadRequest } from '@/server/policies/request';
 import { clientFrame, clientHome, requestFrame } from '@/server/services/client-pages';
 import { openEngagement } from '@/server/services/engagements';
+import { requestDraft } from '@/server/services/request-draft';
 import { openRequest, openRequestAsStaff, openRequestToAnswer } from '@/server/services/request-open';
 import { changeRequest, sendRequest } from '@/server/services/request-sending';
 import { clientRequest, listRequests, staffRequest } from '@/server/services/requests';
@@ -268,5 +269,18 @@ describe('Today', () => {
       group: 'overdue',
       days: 4,
     });
+  });
+});
+
+describe('the draft of a further request', () => {
+  it('leaves out what an open one asks for and nobody answered, and says which', async () => {
+    const opened = await openEngagement(scene.consultant, scene.code);
+    const bills = async () =>
+      (await requestDraft(scene.consultant, opened)).items.filter(({ kind }) => kind === 'bills');
+    const [first] = await bills();
+    expect(first).toMatchObject({ askedIn: null });
+    const { kind, words, from, to, motorId } = first!;
+    const { request } = await ask(scene, { items: [{ kind, words, from, to, motorId }] });
+    expect((await bills()).map(({ askedIn }) => askedIn)).toEqual([request.number]);
   });
 });

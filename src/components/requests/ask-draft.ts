@@ -39,14 +39,14 @@ export const emptyRow = (): AskRow => ({
 
 /** What the form begins with: everything that is missing, chosen where the page was opened for its kind. */
 export function startDraft(draft: RequestDraft, about: ItemKind | null): AskDraft {
-  const rows = draft.items.map(({ kind, words, from, to, motorId, why }) => ({
-    chosen: about === null || kind === about,
+  const rows = draft.items.map(({ kind, words, from, to, motorId, why, askedIn }) => ({
+    chosen: askedIn === null && (about === null || kind === about),
     kind,
     words,
     from: from ?? '',
     lastDay: to ? addDays(to, -1) : '',
     motorId: motorId === null ? '' : String(motorId),
-    why,
+    why: askedIn === null ? why : `Asked already in request ${askedIn}, not answered yet. ${why}`,
   }));
   const { daysBefore, onDue, everyDaysAfter } = usualReminders;
   return {

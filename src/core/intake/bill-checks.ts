@@ -23,7 +23,7 @@ export function checkPeriods(
     if (!next) return;
     if (next.draft.dated.from < draft.dated.to) {
       problems.push({
-        message: `The bills in ${draft.where} (${bill.period.from} to ${bill.period.to}) and ${next.draft.where} (from ${isoDate(next.draft.dated.from)}) overlap.`,
+        message: `The bills in ${draft.where} and ${next.draft.where} are of days that overlap, from ${isoDate(next.draft.dated.from)} on.`,
         where: `${options.fileName}, ${draft.where} and ${next.draft.where}`,
         remedy:
           'Leave one of them out in the table of documents: an estimated bill and its correction, or two meters, cannot both stand for the same days.',

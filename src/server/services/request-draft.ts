@@ -2,13 +2,15 @@ import { addDays, dayNumber, weekdayOf } from '../../core/load';
 import type { DraftItem, RequestDraft } from '../../schemas/request';
 import { today } from '../clock';
 import { ServiceError } from '../errors';
+import { DataRequest } from '../models/DataRequest';
 import { Practice } from '../models/Practice';
+import { RequestItem } from '../models/RequestItem';
 import type { Actor } from '../policies/actor';
 import { billsStation } from './bills-station';
 import type { OpenEngagement } from './engagements';
 import { intervalsStation } from './intervals';
 import { motorsOf } from './motors';
-import { missingBills, missingIntervals, missingPlates } from './request-missing';
+import { missingBills, missingIntervals, missingPlates, type Missing } from './request-missing';
 import { clientPeople } from './request-sending';
 
 const usualDays = 14;
@@ -23,7 +25,7 @@ export function usualDueDay(from: string): string {
 }
 
 /** Everything the data of an engagement show to be missing. What cannot be looked at (readings of two lengths) proposes nothing. */
-async function missingOf(opened: OpenEngagement): Promise<DraftItem[]> {
+async function missingOf(opened: OpenEngagement): Promise<Missing[]> {
   const { engagement, meter } = opened;
   const year = { from: engagement.yearFrom, to: engagement.yearTo };
   const intervals = await intervalsStation(opened).catch((error: unknown) => {
@@ -38,10 +40,27 @@ async function missingOf(opened: OpenEngagement): Promise<DraftItem[]> {
   ];
 }
 
+/** What is missing, with the open request that asks for it already: of the same kind for the same motor, or for days it shares. */
+async function withAsked(engagementId: number, missing: Missing[]): Promise<DraftItem[]> {
+  const open = await DataRequest.findAll({ where: { engagementId, state: 'open' }, order: ['number'] });
+  const waiting = await RequestItem.findAll({
+    where: { requestId: open.map(({ id }) => id), state: ['asked', 'sent-back'] },
+  });
+  const asksFor = (item: RequestItem, { kind, motorId, from, to }: Missing) => {
+    if (item.kind !== kind || item.motorId !== motorId) return false;
+    const { periodFrom, periodTo } = item;
+    return !from || !to || !periodFrom || !periodTo || (periodFrom < to && from < periodTo);
+  };
+  return missing.map((one) => {
+    const asked = waiting.find((item) => asksFor(item, one));
+    return { ...one, askedIn: open.find(({ id }) => id === asked?.requestId)?.number ?? null };
+  });
+}
+
 /** A new request as it could be sent now. */
 export async function requestDraft(actor: Actor, opened: OpenEngagement): Promise<RequestDraft> {
   const [items, people, motors, practice] = await Promise.all([
-    missingOf(opened),
+    missingOf(opened).then((missing) => withAsked(opened.engagement.id, missing)),
     clientPeople(opened),
     motorsOf(opened),
     Practice.findOne(),

@@ -24,7 +24,10 @@ const dayMs = 24 * hourMs;
 /** More gaps than these become one line: nobody answers a list of thirty. */
 const mostGaps = 5;
 
-const item = (given: Pick<DraftItem, 'kind' | 'words' | 'why'> & Partial<DraftItem>): DraftItem => ({
+/** A thing that is missing, whether or not it has been asked for. */
+export type Missing = Omit<DraftItem, 'askedIn'>;
+
+const item = (given: Pick<Missing, 'kind' | 'words' | 'why'> & Partial<Missing>): Missing => ({
   from: null,
   to: null,
   motorId: null,
@@ -49,7 +52,7 @@ export function uncoveredStretches(bills: Pick<BillView, 'from' | 'to'>[], year:
 }
 
 /** What of the year's bills is missing. */
-export function missingBills(bills: Pick<BillView, 'from' | 'to'>[], year: Year): DraftItem[] {
+export function missingBills(bills: Pick<BillView, 'from' | 'to'>[], year: Year): Missing[] {
   return uncoveredStretches(bills, year).map(({ from, to }) => {
     const days = dayNumber(to) - dayNumber(from);
     const whole = from === year.from && to === year.to;
@@ -70,7 +73,7 @@ const localPeriod = ({ fromMs, toMs }: Pick<ReadingGap, 'fromMs' | 'toMs'>, time
   to: addDays(localDateOf(toMs - 1, timeZone), 1),
 });
 
-function missingGaps(gaps: ReadingGap[], gapCount: number, timeZone: string): DraftItem[] {
+function missingGaps(gaps: ReadingGap[], gapCount: number, timeZone: string): Missing[] {
   const long = gaps.filter(({ fromMs, toMs }) => toMs - fromMs >= dayMs);
   const own = [...long].sort((a, b) => b.toMs - b.fromMs - (a.toMs - a.fromMs)).slice(0, mostGaps);
   const items = [...own]
@@ -94,7 +97,7 @@ function missingGaps(gaps: ReadingGap[], gapCount: number, timeZone: string): Dr
 }
 
 /** Months with active energy but no reactive energy; all of the year where the meter's file has no such column. */
-function missingReactive(months: MonthOfLoad[], year: Year): DraftItem[] {
+function missingReactive(months: MonthOfLoad[], year: Year): Missing[] {
   const without = months.filter(
     ({ kwh, kvarhLagging, kvarhLeading }) => kwh !== null && kvarhLagging === null && kvarhLeading === null,
   );
@@ -117,7 +120,7 @@ export function missingIntervals(
   station: Pick<IntervalsStation, 'year' | 'timeZone'>,
   meter: string,
   year: Year,
-): DraftItem[] {
+): Missing[] {
   if (!station.year) {
     return [
       item({
@@ -135,7 +138,7 @@ export function missingIntervals(
 type Plate = Pick<MotorView, 'id' | 'name' | 'drives' | 'assumed'>;
 
 /** What of the motors' plates is missing: all of them, or the values that were assumed. */
-export function missingPlates(motors: Plate[]): DraftItem[] {
+export function missingPlates(motors: Plate[]): Missing[] {
   if (motors.length === 0) {
     return [
       item({

@@ -1,7 +1,8 @@
-import { useRef, useState, type DragEvent } from 'react';
+import { useRef, useState } from 'react';
 import { ApiError } from '../../client/api';
 import { bringIn, intakePage } from '../../client/intake';
 import { Button } from '../ui/Button';
+import { DropPlace, FilePicker } from '../ui/DropPlace';
 import { Notice } from '../ui/Notice';
 import { Progress } from '../ui/Progress';
 
@@ -34,7 +35,6 @@ export function BringIn({ code, kind, meterId, primary = false }: BringInProps) 
   const picker = useRef<HTMLInputElement>(null);
   const [sending, setSending] = useState<Sending | null>(null);
   const [fault, setFault] = useState<ApiError | null>(null);
-  const [over, setOver] = useState(false);
 
   const send = async (file: File) => {
     const stop = new AbortController();
@@ -51,37 +51,12 @@ export function BringIn({ code, kind, meterId, primary = false }: BringInProps) 
       );
     }
   };
-  const take = (files: FileList | null) => {
-    const [file] = files ?? [];
+  const take = ([file]: File[]) => {
     if (file && !sending) void send(file);
   };
-  const handleDrop = (event: DragEvent) => {
-    event.preventDefault();
-    setOver(false);
-    take(event.dataTransfer.files);
-  };
   return (
-    <div
-      className={`drop-place ${over ? 'drop-place-over' : ''}`}
-      onDragOver={(event) => {
-        event.preventDefault();
-        setOver(true);
-      }}
-      onDragLeave={() => setOver(false)}
-      onDrop={handleDrop}
-    >
-      <input
-        ref={picker}
-        type="file"
-        className="unseen"
-        tabIndex={-1}
-        aria-hidden="true"
-        accept={accepted[kind]}
-        onChange={(event) => {
-          take(event.target.files);
-          event.target.value = '';
-        }}
-      />
+    <DropPlace onFiles={take}>
+      <FilePicker picker={picker} accept={accepted[kind]} onFiles={take} />
       {sending ? (
         <SendingFile {...sending} />
       ) : (
@@ -104,7 +79,7 @@ export function BringIn({ code, kind, meterId, primary = false }: BringInProps) 
           )}
         </div>
       )}
-    </div>
+    </DropPlace>
   );
 }
 

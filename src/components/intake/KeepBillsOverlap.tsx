@@ -1,11 +1,11 @@
 import { daysBetween } from '../../schemas/bill';
 import type { IntakeView } from '../../schemas/intake';
 import type { BillBeside, BillsBeside, BillsOverlap } from '../../schemas/overlap';
-import { Button } from '../ui/Button';
 import { formatBillName, formatCount, formatPeriod, formatSpelled } from '../ui/format';
 import { LedgerTable } from '../ui/LedgerTable';
 import type { LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
 import type { IntakeActions } from './IntakeSheet';
+import { KeepButtons } from './KeepButtons';
 
 export interface KeepBillsOverlapProps {
   intake: IntakeView;
@@ -40,19 +40,7 @@ export function KeepBillsOverlap({ intake, overlap, actions }: KeepBillsOverlapP
           <b>Give it up:</b> nothing changes.
         </li>
       </ul>
-      <div className="actions">
-        <Button busy={actions.busy} onClick={() => actions.keep('keep-new')}>
-          {`Keep ${what}`}
-        </Button>
-        {apart > 0 && (
-          <Button kind="secondary" busy={actions.busy} onClick={() => actions.keep('keep-old')}>
-            Keep without what is kept already
-          </Button>
-        )}
-        <Button kind="quiet" busy={actions.busy} onClick={actions.giveUp}>
-          Give it up
-        </Button>
-      </div>
+      <KeepButtons actions={actions} what={what} above around={apart > 0} />
     </div>
   );
 }

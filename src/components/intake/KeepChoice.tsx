@@ -1,9 +1,9 @@
 import type { IntakeView } from '../../schemas/intake';
 import type { IntervalsOverlap } from '../../schemas/overlap';
-import { Button } from '../ui/Button';
 import { formatCount, formatDate, formatNumber } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import type { IntakeActions } from './IntakeSheet';
+import { KeepButtons } from './KeepButtons';
 import { IntervalsBesideTable } from './IntervalsBesideTable';
 
 export interface KeepChoiceProps {
@@ -36,19 +36,7 @@ export function KeepChoice({ intake, overlap, what, actions }: KeepChoiceProps) 
         </li>
       </ul>
       {keepNewRefused && <Notice title="They cannot go above the kept ones">{keepNewRefused}</Notice>}
-      <div className="actions">
-        {!keepNewRefused && (
-          <Button busy={actions.busy} onClick={() => actions.keep('keep-new')}>
-            Keep {what}
-          </Button>
-        )}
-        <Button kind="secondary" busy={actions.busy} onClick={() => actions.keep('keep-old')}>
-          Keep without what is kept already
-        </Button>
-        <Button kind="quiet" busy={actions.busy} onClick={actions.giveUp}>
-          Give it up
-        </Button>
-      </div>
+      <KeepButtons actions={actions} what={what} above={!keepNewRefused} around />
     </div>
   );
 }

@@ -1,5 +1,6 @@
-import { useRef, useState, type DragEvent } from 'react';
+import { useRef } from 'react';
 import { Button } from '../ui/Button';
+import { DropPlace, FilePicker } from '../ui/DropPlace';
 import { formatCount } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { Progress } from '../ui/Progress';
@@ -20,29 +21,10 @@ const accepted = '.csv,.txt,.tsv,.xlsx,.xls,.ods,.xml,.zip,.pdf,.heic,image/*';
 export function SendFiles({ position, isNext, photoFirst, sending: files }: SendFilesProps) {
   const picker = useRef<HTMLInputElement>(null);
   const camera = useRef<HTMLInputElement>(null);
-  const [over, setOver] = useState(false);
   const { sending, send, stopSending } = files;
   const failed = files.notSent.filter((one) => one.position === position);
   const isHere = sending?.position === position;
-  const input = (ref: typeof picker, given: { accept: string; capture?: 'environment'; multiple?: boolean }) => (
-    <input
-      ref={ref}
-      type="file"
-      className="unseen"
-      tabIndex={-1}
-      aria-hidden="true"
-      {...given}
-      onChange={(event) => {
-        send(position, event.target.files ?? []);
-        event.target.value = '';
-      }}
-    />
-  );
-  const handleDrop = (event: DragEvent) => {
-    event.preventDefault();
-    setOver(false);
-    send(position, event.dataTransfer.files);
-  };
+  const take = (chosen: File[]) => send(position, chosen);
   const kindOf = (isFirst: boolean) => (isNext && isFirst ? 'primary' : 'secondary');
   const choose = (
     <Button key="choose" kind={kindOf(!photoFirst)} onClick={() => picker.current?.click()}>
@@ -55,17 +37,9 @@ export function SendFiles({ position, isNext, photoFirst, sending: files }: Send
     </Button>
   );
   return (
-    <div
-      className={`drop-place ${over ? 'drop-place-over' : ''}`}
-      onDragOver={(event) => {
-        event.preventDefault();
-        setOver(true);
-      }}
-      onDragLeave={() => setOver(false)}
-      onDrop={handleDrop}
-    >
-      {input(picker, { accept: accepted, multiple: true })}
-      {input(camera, { accept: 'image/*', capture: 'environment' })}
+    <DropPlace onFiles={take}>
+      <FilePicker picker={picker} accept={accepted} multiple onFiles={take} />
+      <FilePicker picker={camera} accept="image/*" capture="environment" onFiles={take} />
       <div className="actions">
         {photoFirst ? [photo, choose] : [choose, photo]}
         <span className="hint drop-word">or drop them here</span>
@@ -91,6 +65,6 @@ export function SendFiles({ position, isNext, photoFirst, sending: files }: Send
           </Notice>
         </div>
       ))}
-    </div>
+    </DropPlace>
   );
 }

@@ -1,8 +1,9 @@
-import { useRef, useState, type DragEvent } from 'react';
+import { useRef, useState } from 'react';
 import { ApiError } from '../../../client/api';
 import { attachFile } from '../../../client/attachments';
 import { pagesCapBytes, type AttachedFile } from '../../../schemas/attachment';
 import { Button } from '../../ui/Button';
+import { DropPlace, FilePicker } from '../../ui/DropPlace';
 import { Notice } from '../../ui/Notice';
 import { Progress } from '../../ui/Progress';
 import { countPages } from './load-pdf';
@@ -22,6 +23,7 @@ interface Refusal {
   message: string;
 }
 
+const accepted = '.pdf,.jpg,.jpeg,.png,.webp,application/pdf,image/jpeg,image/png,image/webp';
 const tooLarge = 'The file is larger than 32 MiB. Split it by bill, or save it smaller.';
 
 /** Takes PDF and photos, several at once, and sends them one after another. */
@@ -29,7 +31,6 @@ export function AttachPages({ code, billId, first, onAttached }: AttachPagesProp
   const picker = useRef<HTMLInputElement>(null);
   const [sending, setSending] = useState<{ fileName: string; share: number } | null>(null);
   const [refusals, setRefusals] = useState<Refusal[]>([]);
-  const [over, setOver] = useState(false);
 
   const sendOne = async (file: File) => {
     setSending({ fileName: file.name, share: 0 });
@@ -50,35 +51,13 @@ export function AttachPages({ code, billId, first, onAttached }: AttachPagesProp
     for (const file of files) await sendOne(file);
     setSending(null);
   };
-  const handleDrop = (event: DragEvent) => {
-    event.preventDefault();
-    setOver(false);
-    void send([...event.dataTransfer.files]);
-  };
   return (
-    <div
-      className={`drop-place ${over ? 'drop-place-over' : ''} ${first ? 'page-attach-first' : ''}`}
-      onDragOver={(event) => {
-        if (isOffer(event.dataTransfer)) return;
-        event.preventDefault();
-        setOver(true);
-      }}
-      onDragLeave={() => setOver(false)}
-      onDrop={handleDrop}
+    <DropPlace
+      onFiles={(files) => void send(files)}
+      takes={(dragged) => !isOffer(dragged)}
+      className={first ? 'page-attach-first' : ''}
     >
-      <input
-        ref={picker}
-        type="file"
-        multiple
-        className="unseen"
-        tabIndex={-1}
-        aria-hidden="true"
-        accept=".pdf,.jpg,.jpeg,.png,.webp,application/pdf,image/jpeg,image/png,image/webp"
-        onChange={(event) => {
-          void send([...(event.target.files ?? [])]);
-          event.target.value = '';
-        }}
-      />
+      <FilePicker picker={picker} multiple accept={accepted} onFiles={(files) => void send(files)} />
       {sending ? (
         <Progress title={`Sending ${sending.fileName}`} done={Math.round(sending.share * 100)} total={100} units="%" />
       ) : (
@@ -105,6 +84,6 @@ export function AttachPages({ code, billId, first, onAttached }: AttachPagesProp
           />
         </div>
       )}
-    </div>
+    </DropPlace>
   );
 }

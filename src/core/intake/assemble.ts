@@ -1,7 +1,8 @@
 import { loadOf } from './load-of';
 import { reportOf } from './report';
 import { gridChannels, type PlacedStrand, type RowNumbers } from './series';
-import type { ColumnMap, IntakeFormat, IntakeNote, IntervalReading } from './types';
+import type { ColumnMap } from './column-map';
+import type { IntakeFormat, IntakeNote, IntervalReading } from './types';
 
 interface AssemblyInput {
   format: IntakeFormat;

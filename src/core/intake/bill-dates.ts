@@ -6,7 +6,8 @@ import { IntakeError, intakeError } from './errors';
 import { columnLetter } from './grid';
 import { isBlankWord } from './numbers';
 import { civilDay, StampScanner } from './stamps';
-import type { ColumnUse, IntakeProblem, ReadOptions } from './types';
+import type { ColumnUse } from './column-map';
+import type { IntakeProblem, ReadOptions } from './types';
 
 /** A bill with the row it stands in and its dates as printed (days since 1970-01-01, NaN where absent). */
 export interface DatedRow {

@@ -8,7 +8,8 @@ import { intakeError } from './errors';
 import { columnLetter } from './grid';
 import { isBlankWord } from './numbers';
 import type { BillCharge } from './bill-types';
-import type { ColumnUse, ReadOptions } from './types';
+import type { ColumnUse } from './column-map';
+import type { ReadOptions } from './types';
 import { scaled, unitMeaning } from './units';
 
 /** A document of the file before it is settled whether it stands as a bill. */

@@ -5,7 +5,8 @@ import { quantitiesOfLines } from './bill-item-quantities';
 import type { BillPlan } from './bill-plan';
 import { isBalance, isLateFee, namesTotal, quantityOf as meaningOfName } from './bill-words';
 import type { BillCharge } from './bill-types';
-import type { ColumnUse, IntakeNote, ReadOptions } from './types';
+import type { ColumnUse } from './column-map';
+import type { IntakeNote, ReadOptions } from './types';
 import { unitMeaning } from './units';
 
 /** A line as its row shows it. */

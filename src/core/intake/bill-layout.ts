@@ -4,7 +4,7 @@ import { findBlock, type TableBlock } from './block';
 import { IntakeError } from './errors';
 import { CellGrid, gridCaps, transpose, type Cell, type Grid } from './grid';
 import { StampScanner } from './stamps';
-import type { ColumnMap } from './types';
+import type { ColumnMap } from './column-map';
 
 /** A table of bills found in a file, with its names. */
 export interface LocatedBills extends BillHeads {

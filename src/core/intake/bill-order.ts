@@ -2,7 +2,7 @@ import { shareOf, type ColumnProfile } from './cells';
 import type { Grid } from './grid';
 import { findDateOrder, orderInWords, type OrderFinding } from './stamp-order';
 import { StampScanner } from './stamps';
-import type { DateOrder } from './types';
+import type { DateOrder } from './column-map';
 
 /** Columns of dates whose order is looked for. */
 export interface OrderInput {

@@ -4,7 +4,8 @@ import { profileColumns, shareOf, type ColumnProfile } from './cells';
 import { guess, type RoleFinding, type Test } from './evidence';
 import { CellGrid, type Grid } from './grid';
 import { orderInWords } from './stamp-order';
-import type { ColumnMap, DateOrder, Guess } from './types';
+import type { ColumnMap, DateOrder } from './column-map';
+import type { Guess } from './types';
 import { mentions } from './words';
 
 /** What is known of the table when its periods are looked for. */

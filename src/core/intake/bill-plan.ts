@@ -17,7 +17,8 @@ import { delimiterGuesses } from './guesses';
 import { mergeColumns, mergeEvidence } from './merge-map';
 import { voteDecimalMark, type DecimalVote } from './numbers';
 import type { OpenedTable } from './open';
-import type { ColumnEvidence, ColumnMap, ColumnUse, DateOrder, Guess, ReadOptions } from './types';
+import type { ColumnMap, ColumnUse, DateOrder } from './column-map';
+import type { ColumnEvidence, Guess, ReadOptions } from './types';
 
 /** A table of bills with its meaning settled. */
 export interface BillPlan {

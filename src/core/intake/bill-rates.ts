@@ -1,6 +1,7 @@
 import { readCell } from './bill-cells';
 import type { Grid } from './grid';
-import type { ColumnEvidence, ColumnUse } from './types';
+import type { ColumnUse } from './column-map';
+import type { ColumnEvidence } from './types';
 import { headerWords } from './words';
 
 interface RateInput {

@@ -1,7 +1,8 @@
 import { bareMonth } from './bill-months';
 import { guess } from './evidence';
 import type { Grid } from './grid';
-import type { ColumnMap, Guess } from './types';
+import type { ColumnMap } from './column-map';
+import type { Guess } from './types';
 
 interface YearInput {
   grid: Grid;

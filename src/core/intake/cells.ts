@@ -1,7 +1,7 @@
 import { gridCaps, type Grid } from './grid';
 import { isBlankWord, parseNumberAt, parseNumberText } from './numbers';
 import { StampScanner } from './stamps';
-import type { DateOrder } from './types';
+import type { DateOrder } from './column-map';
 
 /** What a cell looks like by itself. */
 export type CellKind = 'blank' | 'number' | 'stamp' | 'date' | 'time' | 'text';

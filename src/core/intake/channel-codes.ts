@@ -1,4 +1,4 @@
-import type { IntervalRole } from './types';
+import type { IntervalRole } from './column-map';
 
 /** A code that names a channel. */
 interface CodedChannel {

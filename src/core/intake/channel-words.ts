@@ -1,5 +1,5 @@
 import { codedChannel } from './channel-codes';
-import type { IntervalRole, Measure } from './types';
+import type { IntervalRole, Measure } from './column-map';
 import { isForeignUnit, unitOfHeader, type UnitMeaning } from './units';
 import { mentions, namesPowerFactor } from './words';
 

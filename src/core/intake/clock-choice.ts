@@ -1,6 +1,7 @@
 import { guess, type Test } from './evidence';
 import type { Strand } from './strand';
-import type { Guess, IntakeNote, StampStyle } from './types';
+import type { StampStyle } from './column-map';
+import type { Guess, IntakeNote } from './types';
 import { localise, zoneSpan, type ClockChange, type Localised, type ZoneSpan } from './zone';
 
 interface PlaceOptions {

@@ -1,5 +1,5 @@
 import { valueRoles, type ColumnPlan } from './extract';
-import type { ColumnUse } from './types';
+import type { ColumnUse } from './column-map';
 
 const openers: ReadonlySet<string> = new Set(['stamp', 'stamp-begin', 'date']);
 

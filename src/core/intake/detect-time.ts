@@ -3,7 +3,8 @@ import { guess, type RoleFinding, type Test } from './evidence';
 import type { Grid } from './grid';
 import { findDateOrder, orderInWords } from './stamp-order';
 import { StampScanner } from './stamps';
-import type { ColumnMap, DateOrder, Guess, IntervalRole, StampStyle } from './types';
+import type { ColumnMap, DateOrder, IntervalRole, StampStyle } from './column-map';
+import type { Guess } from './types';
 import type { WideColumns } from './wide';
 import { mentions, namesTime } from './words';
 

@@ -3,7 +3,8 @@ import { pointFinder } from './espi-channels';
 import type { EspiEntry, EspiFeed } from './espi-feed';
 import { billOfSummary, summariesOf, type SummaryBill } from './espi-summaries';
 import { attempt, headRows, meterGuess } from './preview';
-import type { BillPreview, BillReading, ColumnMap, IntakeNote, IntakeProblem, ReadOptions } from './types';
+import type { ColumnMap } from './column-map';
+import type { BillPreview, BillReading, IntakeNote, IntakeProblem, ReadOptions } from './types';
 
 // Cost of a kWh outside which a feed's amounts are doubted, for currencies of like worth. Real feeds met: 0.10 CAD and
 // 0.13 USD; made-up ones 0.56 and 1.42.

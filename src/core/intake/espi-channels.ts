@@ -3,7 +3,7 @@ import { meaningOfType, type EspiMeaning } from './espi-meaning';
 import { estimatedBits, qualityBit, type EspiReadings } from './espi-readings';
 import { quality as grades } from '../load';
 import { isConstant, onlyGrows } from './registers';
-import type { ColumnMap } from './types';
+import type { ColumnMap } from './column-map';
 
 /** One meter reading of a feed: its type and its blocks, brought together by links. */
 export interface EspiChannel extends EspiMeaning {

@@ -1,5 +1,5 @@
 import type { EspiEntry } from './espi-feed';
-import type { ColumnUse, IntervalRole, Measure } from './types';
+import type { ColumnUse, IntervalRole, Measure } from './column-map';
 import { unitMeaning, type UnitMeaning } from './units';
 
 /** What the figures of a meter reading are. */

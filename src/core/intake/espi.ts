@@ -6,7 +6,8 @@ import type { EspiFeed } from './espi-feed';
 import { notesOnLocalTime } from './espi-times';
 import { findStep } from './marks';
 import type { PlacedStrand } from './series';
-import type { ColumnEvidence, ColumnMap, IntakeNote, IntervalReading, ReadOptions } from './types';
+import type { ColumnMap } from './column-map';
+import type { ColumnEvidence, IntakeNote, IntervalReading, ReadOptions } from './types';
 import { scaled } from './units';
 
 /** Evidence: a line a meter reading. */

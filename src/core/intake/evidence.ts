@@ -1,6 +1,7 @@
 import type { ColumnProfile } from './cells';
 import { columnLetter, type Grid } from './grid';
-import type { BillRole, ColumnEvidence, ColumnUse, Guess, IntervalRole, Measure } from './types';
+import type { BillRole, ColumnUse, IntervalRole, Measure } from './column-map';
+import type { ColumnEvidence, Guess } from './types';
 
 /** One test of a reading of the file: whether it is met, and the finding in words. */
 export type Test = [isMet: boolean, finding: string];

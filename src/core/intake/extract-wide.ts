@@ -11,7 +11,7 @@ import {
 import { footerWords } from './cells';
 import { StampScanner } from './stamps';
 import type { Strand } from './strand';
-import type { ColumnUse } from './types';
+import type { ColumnUse } from './column-map';
 import { scaled, unitMeaning } from './units';
 
 interface DayRow {

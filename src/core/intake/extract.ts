@@ -10,7 +10,8 @@ import { isConstant, onlyGrows } from './registers';
 import { readFactors, readSenses } from './read-factors';
 import { readStamps } from './read-stamps';
 import { pickReadings, runsBackwards, turnStrand, type Strand, type StrandChannel } from './strand';
-import type { ColumnUse, IntakeNote, IntervalRole, StampStyle } from './types';
+import type { ColumnUse, IntervalRole, StampStyle } from './column-map';
+import type { IntakeNote } from './types';
 import { scaled, unitMeaning, type UnitMeaning } from './units';
 import { namesRegister } from './words';
 

@@ -1,6 +1,7 @@
 import { guess } from './evidence';
 import type { OpenedTable } from './open';
-import type { ColumnMap, Guess, IntakeNote } from './types';
+import type { ColumnMap } from './column-map';
+import type { Guess, IntakeNote } from './types';
 
 const delimiterNames: Record<string, string> = { ',': 'comma', ';': 'semicolon', '\t': 'tab', '|': 'bar' };
 

@@ -4,6 +4,7 @@ import type { BillPreview, BillReading, IntervalPreview, IntervalReading, ReadOp
 
 export { IntakeError } from './errors';
 export type * from './bill-types';
+export type * from './column-map';
 export type * from './trace-types';
 export type * from './types';
 

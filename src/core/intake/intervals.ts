@@ -14,7 +14,8 @@ import { preambleMultiplier } from './preamble';
 import type { PlacedStrand } from './series';
 import { unstack } from './stacked';
 import { timelineOf } from './timeline';
-import type { ColumnEvidence, ColumnMap, ColumnUse, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
+import type { ColumnMap, ColumnUse } from './column-map';
+import type { ColumnEvidence, Guess, IntakeNote, IntervalReading, ReadOptions } from './types';
 import { unitMeaning } from './units';
 
 /** A table of intervals with its meaning settled. */

@@ -1,4 +1,5 @@
-import type { IntakeNote, IntervalRole } from './types';
+import type { IntervalRole } from './column-map';
+import type { IntakeNote } from './types';
 
 /** kvarh of every interval by sense; null where the file does not carry it. */
 export interface Reactive {

@@ -1,7 +1,8 @@
 import { quality as grades, type LoadSeries } from '../load';
 import { reactiveOf } from './kvarh-senses';
 import type { GriddedChannels } from './series';
-import type { IntakeNote, IntervalRole } from './types';
+import type { IntervalRole } from './column-map';
+import type { IntakeNote } from './types';
 
 /** The load of gridded channels, with notes on what was assumed about reactive energy and export. */
 export function loadOf(gridded: GriddedChannels): { load: LoadSeries; notes: IntakeNote[]; negative: number } {

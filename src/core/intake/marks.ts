@@ -1,5 +1,6 @@
 import { guess, type Test } from './evidence';
-import type { Guess, StampStyle } from './types';
+import type { StampStyle } from './column-map';
+import type { Guess } from './types';
 
 /** Length of an interval and which end of it the stamps name. */
 interface MarkFinding {

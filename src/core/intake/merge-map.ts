@@ -1,7 +1,8 @@
 import type { TableBlock } from './block';
 import { IntakeError } from './errors';
 import { columnLetter } from './grid';
-import type { ColumnEvidence, ColumnMap, ColumnUse, IntakeProblem } from './types';
+import type { ColumnMap, ColumnUse } from './column-map';
+import type { ColumnEvidence, IntakeProblem } from './types';
 
 /** Roles that only one column can have: a column given one takes it from the column detected for it. */
 const soleRoles: ReadonlySet<string> = new Set([

@@ -5,15 +5,8 @@ import { IntakeError, intakeError } from './errors';
 import { columnLetter, type Grid } from './grid';
 import type { PlacedStrand } from './series';
 import { StampScanner } from './stamps';
-import type {
-  ColumnEvidence,
-  ColumnMap,
-  IntakeNote,
-  IntakeProblem,
-  IntervalReading,
-  IntervalRole,
-  ReadOptions,
-} from './types';
+import type { ColumnMap, IntervalRole } from './column-map';
+import type { ColumnEvidence, IntakeNote, IntakeProblem, IntervalReading, ReadOptions } from './types';
 import { scaled, unitMeaning, type UnitMeaning } from './units';
 
 // Meter data file format of the Australian market (AEMO, MDFF specification, NEM12): 200 names a stream, 300 holds a day of

@@ -5,7 +5,8 @@ import type { Container } from './format';
 import type { Grid } from './grid';
 import { openWorkbook } from './sheet';
 import { decodeText } from './text';
-import type { ColumnMap, Dialect, IntakeFormat, IntakeNote } from './types';
+import type { ColumnMap } from './column-map';
+import type { Dialect, IntakeFormat, IntakeNote } from './types';
 
 /** A file opened as a table of raw cells. */
 export interface OpenedTable {

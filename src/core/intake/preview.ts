@@ -8,11 +8,11 @@ import type { Grid } from './grid';
 import { planIntervals, readPlanned, type IntervalPlan } from './intervals';
 import type { OpenedTable } from './open';
 import { shapeOf } from './shape';
+import type { ColumnMap } from './column-map';
 import type {
   BillPreview,
   BillReading,
   ColumnEvidence,
-  ColumnMap,
   Guess,
   IntakeFormat,
   IntakeProblem,

@@ -3,7 +3,7 @@ import type { ColumnPlan, Extraction } from './extract';
 import { isBlankWord, parseNumberText } from './numbers';
 import { sensedFactor, senseOf } from './power-factor';
 import type { StrandChannel } from './strand';
-import type { ColumnUse } from './types';
+import type { ColumnUse } from './column-map';
 
 const channelOf = (role: 'power-factor' | 'sense', name: string, values: Float64Array): StrandChannel => ({
   role,

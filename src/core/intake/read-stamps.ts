@@ -3,7 +3,8 @@ import type { ColumnPlan } from './extract';
 import { columnLetter, type Grid } from './grid';
 import { isBlankWord } from './numbers';
 import { StampScanner } from './stamps';
-import type { ColumnUse, DateOrder, IntakeNote } from './types';
+import type { ColumnUse, DateOrder } from './column-map';
+import type { IntakeNote } from './types';
 
 /** Stamps of every usable row. */
 interface StampRows {

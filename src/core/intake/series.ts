@@ -4,7 +4,8 @@ import { layStrand } from './lay-strand';
 import { joinSteps } from './steps';
 import type { Strand } from './strand';
 import type { Timeline } from './timeline';
-import type { IntakeNote, IntervalRole } from './types';
+import type { IntervalRole } from './column-map';
+import type { IntakeNote } from './types';
 
 const mostIntervals = 1_200_000;
 

@@ -1,7 +1,7 @@
 import type { Test } from './evidence';
 import type { Grid } from './grid';
 import { StampScanner } from './stamps';
-import type { DateOrder } from './types';
+import type { DateOrder } from './column-map';
 
 /** Order of day, month and year, with what speaks for it. */
 export interface OrderFinding {

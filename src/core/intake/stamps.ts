@@ -1,4 +1,4 @@
-import type { DateOrder } from './types';
+import type { DateOrder } from './column-map';
 
 const monthWords: Record<string, number> = Object.assign(Object.create(null) as Record<string, number>, {
   jan: 1, ene: 1, gen: 1, feb: 2, fev: 2, fév: 2, mar: 3, mär: 3, mae: 3, maa: 3, mrt: 3, apr: 4, avr: 4, abr: 4,

@@ -1,4 +1,4 @@
-import type { IntervalRole, Measure } from './types';
+import type { IntervalRole, Measure } from './column-map';
 
 /** One kind of figure along a strand. */
 export interface StrandChannel {

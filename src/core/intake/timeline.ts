@@ -4,7 +4,8 @@ import { guess, type Test } from './evidence';
 import { placeStarts } from './clock-choice';
 import { beginnings, findMarks, findStep } from './marks';
 import type { Strand } from './strand';
-import type { Guess, IntakeNote, StampStyle } from './types';
+import type { StampStyle } from './column-map';
+import type { Guess, IntakeNote } from './types';
 
 /** When every reading of a strand begins. */
 export interface Timeline {

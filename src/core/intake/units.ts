@@ -1,4 +1,4 @@
-import type { Measure } from './types';
+import type { Measure } from './column-map';
 import { headerWords, mentions } from './words';
 
 /** A unit as it is written in files, and what it is worth in the unit the core uses. */

@@ -1,6 +1,6 @@
 import { shareOf, type ColumnProfile } from './cells';
 import { StampScanner } from './stamps';
-import type { ColumnUse } from './types';
+import type { ColumnUse } from './column-map';
 
 /** Time-of-day columns of a wide table: a day a row. */
 export interface WideColumns {

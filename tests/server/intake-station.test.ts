@@ -92,7 +92,7 @@ describe('station Bills', () => {
       { billId: january.id, missing: 0, figures: energy(2975, 31 * 96) },
       { billId: february.id, missing: 1, figures: energy(2688, 28 * 96 - 1) },
     ]);
-    expect(station.meterChecks[1]!.remarks.join()).toMatch(/at least 2,687 kWh/);
+    expect(station.meterChecks[1]!.remarks.join()).toMatch(/at least 2,687\skWh/);
     expect(station.bills).toHaveLength(2);
     expect(station.laterBills.map((one) => one.id)).toEqual([later.id]);
   });

@@ -22,3 +22,13 @@ export type { FixedField, TakenPower } from './fixed-field';
 export { leastField } from './least-field';
 export { pqLimits } from './pq-limits';
 export type { PqLimits, PqPoint } from './pq-limits';
+export type {
+  FieldControl,
+  FieldCurrentControl,
+  FieldVoltageControl,
+  KvarControl,
+  OwnFieldControl,
+  PlantPowerFactorControl,
+  PowerFactorControl,
+  VoltageControl,
+} from './field-control';

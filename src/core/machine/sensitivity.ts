@@ -44,8 +44,12 @@ export function assumedSensitivity(
   return { kvarDelivered: capability(motor, at).kvarDelivered, swings };
 }
 
-/** The motor with one assumed value replaced; what hangs on it by a fixed ratio moves along. */
-function withAssumed(motor: SynchronousMotor, field: string, value: number): SynchronousMotor {
+/**
+ * The motor with one assumed value replaced; what hangs on it by a fixed ratio moves along.
+ *
+ * @param field  Path in `SynchronousMotor`, as in `AssumedValue`.
+ */
+export function withAssumed(motor: SynchronousMotor, field: string, value: number): SynchronousMotor {
   if (field.startsWith('lossSplit.')) {
     return { ...motor, lossSplit: { ...lossSplitKw(motor), [field.slice('lossSplit.'.length)]: value } };
   }

@@ -25,3 +25,8 @@ export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
 export { judgePlans } from './judge-plans';
 export type { Alternative, JudgedAlternative, Verdict } from './judge-plans';
 export { shaftLoadFromSubmeter } from './submeter';
+export type { SubmeterLoad } from './submeter';
+export { laidPowerOn, meanPowerOn } from './mean-power';
+export type { PowerSeries } from './mean-power';
+export { AGREES_SHARE, compareLoadTest } from './load-test';
+export type { LoadTestPoint, LoadTestResult, LoadTestRow, LoadTestSuspect, SuspectField } from './load-test';

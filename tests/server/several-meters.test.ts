@@ -8,6 +8,7 @@ import type { Actor } from '@/server/policies/actor';
 import { openEngagement } from '@/server/services/engagements';
 import { addMeter, metersOf, removeMeter } from '@/server/services/meters';
 import { changeMotor, createMotor, openMotor } from '@/server/services/motors';
+import { standingAct } from '@/server/services/plan-acts';
 import { planBasis, priceSettings } from '@/server/services/plan-basis';
 import { priceOn } from '@/server/services/price-basis';
 import { pricedYear, pricingBasis } from '@/server/services/pricing';
@@ -144,8 +145,9 @@ describe('a bill of two meters', () => {
     const motor = await createMotor(await open(), motorOf(millMotor, {}, { meterId }));
     const price = async () => {
       const basis = await planBasis(await open());
-      const raised = { fields: [{ motorId: motor.id, fieldA: 160 }], capacitors: null };
-      const [standing, set] = await priceSettings(basis, [{ fields: [], capacitors: null }, raised]);
+      const controls = [{ holds: 'field-current' as const, fieldCurrentA: 160 }];
+      const raised = { ...standingAct, controls: [{ motorId: motor.id, controls }] };
+      const [standing, set] = await priceSettings(basis, [standingAct, raised]);
       return [standing, set].map((setting) => setting!.bills[0]!.quantities.kvarh!.value);
     };
     const [standing, behindSecond] = await price();

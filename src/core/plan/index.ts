@@ -9,7 +9,19 @@ export { fieldBounds } from './field-bounds';
 export type { FieldBounds } from './field-bounds';
 export { searchFields } from './search-fields';
 export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './search-fields';
-export type { CapacitorStep, PlanAction, PlanMotor, Plant, Upstream } from './types';
+export type {
+  BusSupply,
+  CapacitorBank,
+  CapacitorStep,
+  InductionMotor,
+  PlanAction,
+  PlanMotor,
+  PlanSetup,
+  Plant,
+  Replacement,
+  Spans,
+  Upstream,
+} from './types';
 export {
   combineLoads,
   correctiveKvar,
@@ -25,3 +37,5 @@ export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
 export { judgePlans } from './judge-plans';
 export type { Alternative, JudgedAlternative, Verdict } from './judge-plans';
 export { shaftLoadFromSubmeter } from './submeter';
+export { resolveSpans, spanNames } from './spans';
+export type { ClockSpan, SpanSet } from './spans';

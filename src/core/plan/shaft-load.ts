@@ -154,7 +154,7 @@ function dayOf(date: string, name: string): number {
 }
 
 /** Local time of the middle of each interval, as if UTC. The zone's offset is looked up once a day and at its changes. */
-function localMiddles(grid: Grid, timeZone: string): Float64Array {
+export function localMiddles(grid: Grid, timeZone: string): Float64Array {
   const stepMs = grid.stepMinutes * 60_000;
   const middles = new Float64Array(grid.count);
   let offsetMs = 0;

@@ -1,10 +1,10 @@
 import type { MessagePort } from 'node:worker_threads';
 import type { BillingPeriod, LoadSeries } from '../../core/load';
-import type { SynchronousMotor } from '../../core/machine';
-import type { MotorPlanResult } from '../../core/plan';
+import type { FieldControl, SynchronousMotor } from '../../core/machine';
+import type { BusSupply, CapacitorBank, InductionMotor, MotorPlanResult, SpanSet, Upstream } from '../../core/plan';
 import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
-import type { SearchView } from '../../schemas/plan';
+import type { SearchView } from '../../schemas/search';
 import type { ReconcileBasis } from '../services/price-basis';
 
 /** A motor as the calculations see it. */
@@ -30,21 +30,35 @@ export interface TaskBasis {
   /** Of each meter, where several are summed; `load` is their sum. */
   meters: LoadSeries[];
   motors: TaskMotor[];
+  /** Transformer and cable whose losses the meter counts; absent where there are none or they are not known. */
+  upstream?: Upstream;
+  supply?: BusSupply;
 }
 
-/** Field currents by motor; a motor not named stays at today's. */
-export type TaskFields = { motorId: number; fieldA: number }[];
+/** A new motor in place of an induction motor, with when it runs. */
+export interface TaskReplacement {
+  name: string;
+  induction: InductionMotor;
+  machine: SynchronousMotor;
+  calendar: CalendarInput;
+  controls: FieldControl[];
+  /** Position of the meter it stands behind. */
+  behind: number;
+}
 
 /** One way to act. */
 export interface TaskAct {
-  fields: TaskFields;
-  capacitors: { kvar: number; lossWPerKvar: number } | null;
+  spans: SpanSet;
+  /** By motor, one for all spans or one for each; a motor not named stays at today's field. */
+  controls: { motorId: number; controls: FieldControl[] }[];
+  banks: CapacitorBank[];
+  replacements: TaskReplacement[];
 }
 
 export interface YearTask {
   kind: 'year';
   basis: TaskBasis;
-  /** Settings to price; none at all is standing. */
+  /** Acts to price; one without any control, bank or replacement is standing. */
   settings: TaskAct[];
 }
 

@@ -1,8 +1,8 @@
 import { z } from 'zod';
 import type { AssumedValue } from './motor';
-import type { SpanSet } from '../core/plan';
 import type { BankView, ChargeGroup, PlanField, PlanView, ReplacementView } from './plan';
 import type { AppraisalView, CashFlowMonth, PlanEconomics } from './plan-money';
+import type { SpanSet } from './plan-spans';
 
 /** What an edition says of a plan, or of the plant as it runs. Major units of the edition's currency. */
 export interface EditionPlan {

@@ -1,7 +1,7 @@
 import { z } from 'zod';
-import type { DayKind } from '../core/plan';
 import { calendarInput, plateInput } from './motor';
 import { economicsInput } from './plan-money';
+import { spanNames, spanSetInput } from './plan-spans';
 
 const money = z
   .number({ error: 'Write an amount.' })
@@ -51,83 +51,6 @@ const motorSettingInput = z
     message: 'Write a field current in amperes.',
   });
 export type MotorSettingInput = z.output<typeof motorSettingInput>;
-
-const spanName = z.string().trim().min(1, 'Name this part of the year.').max(40, 'At most 40 characters.');
-const clock = z
-  .string()
-  .regex(/^([01]\d|2[0-3]):[0-5]\d$|^24:00$/, 'Write a clock time as 06:00; midnight at the end is 24:00.');
-const dayKinds = [
-  'every',
-  'weekday',
-  'weekend',
-  'mon',
-  'tue',
-  'wed',
-  'thu',
-  'fri',
-  'sat',
-  'sun',
-] as const satisfies readonly Exclude<DayKind, 'holiday'>[];
-
-function everyMonthOnce(spans: { months: number[] }[], context: z.RefinementCtx): void {
-  const seen = new Set<number>();
-  spans.forEach(({ months }, index) => {
-    const twice = months.find((month) => seen.has(month));
-    if (twice !== undefined)
-      context.addIssue({
-        code: 'custom',
-        path: ['spans', index, 'months'],
-        message: 'A month stands in two seasons. Keep it in one.',
-      });
-    months.forEach((month) => seen.add(month));
-  });
-  if (seen.size < 12)
-    context.addIssue({
-      code: 'custom',
-      path: ['spans'],
-      message: 'Some months are in no season. Put every month into one.',
-    });
-}
-
-/** How the year is parted. */
-export const spanSetInput = z.discriminatedUnion('by', [
-  z.object({ by: z.literal('year') }),
-  z
-    .object({
-      by: z.literal('months'),
-      spans: z
-        .array(
-          z.object({ name: spanName, months: z.array(z.number().int().min(1).max(12)).min(1, 'Choose its months.') }),
-        )
-        .min(2, 'Two seasons at least.')
-        .max(6, 'At most six seasons.'),
-    })
-    .superRefine(({ spans }, context) => everyMonthOnce(spans, context)),
-  z.object({
-    by: z.literal('schedule'),
-    spans: z
-      .array(z.object({ name: spanName }))
-      .min(2)
-      .max(8),
-  }),
-  z.object({
-    by: z.literal('clock'),
-    spans: z
-      .array(
-        z
-          .object({
-            name: spanName,
-            days: z.array(z.enum(dayKinds)).min(1, 'Choose its days.'),
-            from: clock,
-            to: clock,
-          })
-          .refine(({ from, to }) => from !== to, { path: ['to'], message: 'The shift ends where it begins.' }),
-      )
-      .min(1, 'Name one shift at least.')
-      .max(5, 'At most five shifts.'),
-    rest: spanName,
-  }),
-]);
 
 /** Capacitors: fixed, or switched in equal steps by a controller that holds a power factor. */
 const bankInput = z.object({
@@ -193,8 +116,7 @@ const planFields = z.object({
 
 /** Controls are one for all, or one for each span. */
 function oneASpan(plan: z.output<typeof planFields>, context: z.RefinementCtx): void {
-  const { spans } = plan;
-  const count = spans.by === 'year' ? 1 : spans.spans.length + (spans.by === 'clock' ? 1 : 0);
+  const count = spanNames(plan.spans).length;
   const check = (path: (string | number)[], controls: unknown[] | undefined) => {
     if (!controls || controls.length === 1 || controls.length === count) return;
     const message = `The year has ${count} parts and this motor ${controls.length} settings. Write one for each, or one for all.`;

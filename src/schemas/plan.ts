@@ -1,9 +1,9 @@
 import type { FieldControl } from '../core/machine';
-import type { SpanSet } from '../core/plan';
 import type { AssumedValue } from './motor';
 import type { BankInput } from './plan-input';
 import type { AppraisalView, CashFlowMonth, PlanEconomics } from './plan-money';
 import type { MotorSetting } from './plan-settings';
+import type { SpanSet } from './plan-spans';
 import type { SearchView } from './search';
 
 export type ChargeGroup = 'energy' | 'demand' | 'reactive' | 'fixed' | 'adjustment' | 'tax';

@@ -8,7 +8,6 @@ import type { Actor } from '@/server/policies/actor';
 import { openEngagement } from '@/server/services/engagements';
 import { addMeter, metersOf, removeMeter } from '@/server/services/meters';
 import { changeMotor, createMotor, openMotor } from '@/server/services/motors';
-import { standingAct } from '@/server/services/plan-acts';
 import { planBasis, priceSettings } from '@/server/services/plan-basis';
 import { priceOn } from '@/server/services/price-basis';
 import { pricedYear, pricingBasis } from '@/server/services/pricing';
@@ -145,9 +144,8 @@ describe('a bill of two meters', () => {
     const motor = await createMotor(await open(), motorOf(millMotor, {}, { meterId }));
     const price = async () => {
       const basis = await planBasis(await open());
-      const controls = [{ holds: 'field-current' as const, fieldCurrentA: 160 }];
-      const raised = { ...standingAct, controls: [{ motorId: motor.id, controls }] };
-      const [standing, set] = await priceSettings(basis, [standingAct, raised]);
+      const controls = [{ motorId: motor.id, controls: [{ holds: 'field-current' as const, fieldCurrentA: 160 }] }];
+      const [standing, set] = await priceSettings(basis, [{}, { controls }]);
       return [standing, set].map((setting) => setting!.bills[0]!.quantities.kvarh!.value);
     };
     const [standing, behindSecond] = await price();

@@ -1,6 +1,6 @@
 import type { FieldControl } from '../../core/machine';
-import { spanNames, type SpanSet } from '../../core/plan';
 import { controlsOf, type MotorSetting } from '../../schemas/plan-settings';
+import { spanNames, type SpanSet } from '../../schemas/plan-spans';
 import { formatList, formatNumber, formatQuantity } from './format';
 
 /** A motor's setting with its name, and what a brushless machine's panel shows, control by control. */

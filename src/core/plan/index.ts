@@ -1,6 +1,9 @@
 export { shiftRegisters } from './registers';
 export { shaftLoadSeries } from './shaft-load';
-export type { DayKind, Grid, ShiftCalendar, ShiftRule } from './shaft-load';
+export type { ShiftCalendar, ShiftRule } from './shaft-load';
+export type { DayKind, Grid } from './local-days';
+export { MOST_SPANS, spanSeries } from './spans';
+export type { SpanRule } from './spans';
 export { createSimulator } from './simulator';
 export type { Simulator } from './simulator';
 export { applyActions, simulatePlan } from './simulate-plan';
@@ -37,5 +40,3 @@ export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
 export { judgePlans } from './judge-plans';
 export type { Alternative, JudgedAlternative, Verdict } from './judge-plans';
 export { shaftLoadFromSubmeter } from './submeter';
-export { resolveSpans, spanNames } from './spans';
-export type { ClockSpan, SpanSet } from './spans';

@@ -1,85 +1,72 @@
-import { isoDate } from '../load';
-import { localMiddles, shaftLoadSeries, type DayKind, type Grid } from './shaft-load';
+import { isTimeZone, isoDate } from '../load';
+import type { BillingPeriod } from '../load';
+import { MINUTES_PER_DAY, compileDayRule, dayOf, holdsAt, localMiddles } from './local-days';
+import type { CompiledDayRule, DayKind, Grid } from './local-days';
 import type { Spans } from './types';
 
-/** How a year is parted into stretches that may have settings of their own, as a person says it. */
-export type SpanSet =
-  | { by: 'year' }
-  /** Every month, 1 to 12, in one of the seasons. */
-  | { by: 'months'; spans: { name: string; months: number[] }[] }
-  /** The schedule's own seasons, in its order. */
-  | { by: 'schedule'; spans: { name: string }[] }
-  /** Hours of the local clock; a later shift wins over an earlier one, all other time is the last span, `rest`. */
-  | { by: 'clock'; spans: ClockSpan[]; rest: string };
-
-/** A shift. One whose end is not after its beginning runs into the next day. */
-export interface ClockSpan {
+/** A stretch of the year with settings of its own: a season, a shift, or a shift within a season. What is absent does not narrow it. */
+export interface SpanRule {
   name: string;
-  /** A holiday counts as the day of the week it falls on. */
-  days: Exclude<DayKind, 'holiday'>[];
-  /** Local clock times HH:MM; `to` may be 24:00. */
-  from: string;
-  to: string;
+  /** Calendar months, January is 1. */
+  months?: number[];
+  /** Local dates, [from, to). */
+  dates?: BillingPeriod;
+  days?: DayKind[];
+  /** Local clock times HH:MM, both or neither; `to` may be 24:00. An end that is not after its beginning lies in the next day. */
+  from?: string;
+  to?: string;
 }
 
-/** Names of the spans in their order; one, empty, where the year is whole. */
-export function spanNames(set: SpanSet): string[] {
-  if (set.by === 'year') return [''];
-  const names = set.spans.map(({ name }) => name);
-  return set.by === 'clock' ? [...names, set.rest] : names;
-}
+/** Most spans of a plan: an operator keeps no more settings apart. */
+export const MOST_SPANS = 12;
 
 /**
- * The span of every interval. An interval belongs where its middle lies.
+ * Which span each interval lies in, by the local time of its middle.
  *
- * @param set  How the year is parted.
- * @param at.grid  The intervals.
- * @param at.timeZone  IANA zone of the plant.
- * @param at.seasonOfDate  Position in the schedule's order of the season of a local date YYYY-MM-DD; needed for its seasons.
- * @throws {RangeError} naming what is missing: a month without a season, a season the schedule has not
+ * The first span covers what no other does, whatever its own rule says; of the others a later one wins over an earlier one. A span
+ * over midnight belongs to the day, month and date it begins in.
+ *
+ * @param rules  Spans in order, 1 to 12.
+ * @param grid  The intervals.
+ * @param timeZone  IANA zone of the plant.
+ * @param holidays  Local dates that count as holidays: neither weekday nor Saturday nor Sunday.
+ * @returns index[interval] of the rule, uint8[grid.count]; count of the rules
+ * @throws {RangeError} naming the rule and what is wrong with it
  */
-export function resolveSpans(
-  set: SpanSet,
-  at: { grid: Grid; timeZone: string; seasonOfDate?: (date: string) => number },
-): Spans {
-  const { grid, timeZone, seasonOfDate } = at;
-  const count = spanNames(set).length;
-  switch (set.by) {
-    case 'year':
-      return { index: new Uint8Array(grid.count), count };
-    case 'months': {
-      const ofMonth = Array.from({ length: 13 }, (_, month) =>
-        set.spans.findIndex((one) => one.months.includes(month)),
-      );
-      return { index: byDate(grid, timeZone, (date) => ofMonth[Number(date.slice(5, 7))]!, count), count };
-    }
-    case 'schedule':
-      if (!seasonOfDate) throw new RangeError('seasonOfDate must be given for seasons of the schedule, got none');
-      return { index: byDate(grid, timeZone, seasonOfDate, count), count };
-    case 'clock':
-      return { index: byClock(set.spans, grid, timeZone), count };
-  }
-}
-
-function byDate(grid: Grid, timeZone: string, spanOf: (date: string) => number, count: number): Uint8Array {
+export function spanSeries(rules: SpanRule[], grid: Grid, timeZone: string, holidays: string[] = []): Spans {
+  if (!(rules.length >= 1 && rules.length <= MOST_SPANS))
+    throw new RangeError(`rules must be 1 to ${MOST_SPANS} spans, got ${rules.length}`);
+  if (!isTimeZone(timeZone)) throw new RangeError(`timeZone must be an IANA zone, got ${timeZone}`);
+  const compiled = rules.map((rule, i) => compileSpan(rule, `rules[${i}]`));
+  const offDays = new Set(holidays.map((date, i) => dayOf(date, `holidays[${i}]`)));
   const index = new Uint8Array(grid.count);
-  let day = NaN;
-  let span = 0;
   localMiddles(grid, timeZone).forEach((localMs, i) => {
-    const today = Math.floor(localMs / 86_400_000);
-    if (today !== day) {
-      day = today;
-      span = spanOf(isoDate(day));
-      if (!(span >= 0 && span < count)) throw new RangeError(`spans must cover ${isoDate(day)}, got none of ${count}`);
-    }
-    index[i] = span;
+    const minute = Math.floor(localMs / 60_000);
+    const day = Math.floor(minute / MINUTES_PER_DAY);
+    index[i] = spanAt(compiled, offDays, day, minute - day * MINUTES_PER_DAY);
   });
-  return index;
+  return { index, count: rules.length };
 }
 
-/** The rules of a shift calendar choose the span as they choose a load: load k + 1 is span k, none is the rest. */
-function byClock(shifts: readonly ClockSpan[], grid: Grid, timeZone: string): Uint8Array {
-  const rules = shifts.map(({ days, from, to }, k) => ({ days, from, to, shaftKw: k + 1 }));
-  const chosen = shaftLoadSeries({ rules }, grid, timeZone);
-  return Uint8Array.from(chosen, (code) => (code === 0 ? shifts.length : code - 1));
+interface CompiledSpan extends CompiledDayRule {
+  months: Set<number> | null;
+}
+
+function compileSpan(rule: SpanRule, name: string): CompiledSpan {
+  if ((rule.from === undefined) !== (rule.to === undefined))
+    throw new RangeError(`${name} must have both from and to, or neither, got one`);
+  const wrong = rule.months?.find((month) => !(Number.isInteger(month) && month >= 1 && month <= 12));
+  if (wrong !== undefined) throw new RangeError(`${name}.months must be months from 1 to 12, got ${wrong}`);
+  const { days = ['every' as const], dates, from = '00:00', to = '24:00' } = rule;
+  return { ...compileDayRule({ days, dates, from, to }, name), months: rule.months ? new Set(rule.months) : null };
+}
+
+function spanAt(spans: CompiledSpan[], holidays: Set<number>, day: number, minute: number): number {
+  for (let k = spans.length - 1; k >= 1; k--) {
+    const begins = holdsAt(spans[k]!, holidays, day, minute);
+    if (begins === null) continue;
+    const { months } = spans[k]!;
+    if (!months || months.has(Number(isoDate(begins).slice(5, 7)))) return k;
+  }
+  return 0;
 }

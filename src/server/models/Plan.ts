@@ -1,7 +1,7 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
-import type { SpanSet } from '../../core/plan';
 import type { PlanEconomics } from '../../schemas/plan-money';
 import type { PlanAction } from '../../schemas/plan-settings';
+import type { SpanSet } from '../../schemas/plan-spans';
 import type { SearchView } from '../../schemas/search';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';

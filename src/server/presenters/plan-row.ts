@@ -1,4 +1,3 @@
-import { spanNames } from '../../core/plan';
 import { fromMinorUnits, toMinorUnits } from '../../core/units';
 import type { CostPart } from '../../schemas/plan';
 import type { BankInput, PlanInput, ReplacementInput } from '../../schemas/plan-input';
@@ -89,6 +88,3 @@ export function storedPlan(plan: Plan, currency: string): Omit<PlanInput, 'searc
 
 /** What a saved plan answers: its row, not its prices. */
 export const presentPlanRow = ({ id, version, name, chosen }: Plan) => ({ id, version, name, chosen });
-
-/** Number of settings a motor may have under a plan. */
-export const spanCount = ({ spans }: Pick<Plan, 'spans'>) => spanNames(spans).length;

@@ -1,5 +1,5 @@
 import { operatingPoint, panelCurrentA, type SynchronousMotor } from '../../core/machine';
-import { resonanceCheck, type MotorPlanResult, type SpanSet } from '../../core/plan';
+import { resonanceCheck, type MotorPlanResult } from '../../core/plan';
 import { wordNumber } from '../../core/units';
 import type { PricedBill } from '../../core/tariff';
 import type { AssumedValue } from '../../schemas/motor';
@@ -17,6 +17,7 @@ import type {
 import type { BankInput } from '../../schemas/plan-input';
 import type { AppraisalView, CashFlowMonth, PlanEconomics } from '../../schemas/plan-money';
 import { controlsOf, type MotorSetting } from '../../schemas/plan-settings';
+import type { SpanSet } from '../../schemas/plan-spans';
 import type { SearchView } from '../../schemas/search';
 import type { Plan } from '../models/Plan';
 import { limitsOf } from './motor';

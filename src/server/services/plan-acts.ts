@@ -1,5 +1,5 @@
-import { KW_PER_HP, type SynchronousMotor } from '../../core/machine';
-import type { CapacitorBank, SpanSet } from '../../core/plan';
+import { KW_PER_HP, type FieldControl, type SynchronousMotor } from '../../core/machine';
+import type { CapacitorBank } from '../../core/plan';
 import type { BankInput, ReplacementInput } from '../../schemas/plan-input';
 import { controlsOf } from '../../schemas/plan-settings';
 import { conflict } from '../errors';
@@ -8,22 +8,29 @@ import { banksOf, motorSettings, replacementsOf } from '../presenters/plan-row';
 import type { TaskAct, TaskReplacement } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import { completePlate } from './nameplates';
+import { spanRules, type SpanYear } from './plan-spans';
 
 /** The plant as it runs now. */
-export const standingAct: TaskAct = { spans: { by: 'year' }, controls: [], banks: [], replacements: [] };
+export const standingAct: TaskAct = {};
 
 /**
  * What a stored plan does, as the calculations take it.
  *
- * @throws {ServiceError} 409 where the plate of a new motor cannot be read
+ * @throws {ServiceError} 409 where the plate of a new motor cannot be read, or the schedule has other seasons by now
  */
-export function actOf(plan: Plan, opened: OpenEngagement): TaskAct {
+export function actOf(plan: Plan, opened: OpenEngagement, year: SpanYear): TaskAct {
   const { currency } = opened.engagement;
+  const spans = spanRules(plan.spans, year);
+  const bySpan = (controls: FieldControl[]) =>
+    spans && controls.length > 1 ? spans.of.map((span) => controls[span]!) : controls;
   return {
-    spans: plan.spans,
-    controls: motorSettings(plan).map((setting) => ({ motorId: setting.motorId, controls: controlsOf(setting) })),
+    ...(spans ? { spans: spans.rules } : {}),
+    controls: motorSettings(plan).map((setting) => ({
+      motorId: setting.motorId,
+      controls: bySpan(controlsOf(setting)),
+    })),
     banks: banksOf(plan, currency).map((bank) => taskBank(bank, opened)),
-    replacements: replacementsOf(plan, currency).map((one) => taskReplacement(one, opened)),
+    replacements: replacementsOf(plan, currency).map((one) => taskReplacement(one, opened, bySpan(one.controls))),
   };
 }
 
@@ -55,9 +62,8 @@ export function replacementMachine({ name, plate }: ReplacementInput): Synchrono
   return motor;
 }
 
-function taskReplacement(one: ReplacementInput, opened: OpenEngagement): TaskReplacement {
+function taskReplacement(one: ReplacementInput, opened: OpenEngagement, controls: FieldControl[]): TaskReplacement {
   return {
-    name: one.name,
     induction: {
       ratedOutputKw: inductionKw(one.induction),
       points: one.induction.points.map(({ loadPercent, efficiencyPercent, powerFactor }) => ({
@@ -68,13 +74,14 @@ function taskReplacement(one: ReplacementInput, opened: OpenEngagement): TaskRep
     },
     machine: replacementMachine(one),
     calendar: one.calendar,
-    controls: one.controls,
+    controls,
     behind: positionOf(opened, one.meterId),
   };
 }
 
 /** The same act as a text that is equal for equal acts, whatever the order of its motors. */
-export function actKey({ spans, controls, banks, replacements }: TaskAct): string {
-  const part: SpanSet = [...controls, ...replacements].some((one) => one.controls.length > 1) ? spans : { by: 'year' };
-  return JSON.stringify([part, [...controls].sort((a, b) => a.motorId - b.motorId), banks, replacements]);
+export function actKey({ spans, controls = [], banks = [], replacements = [] }: TaskAct): string {
+  const goesBySpan = [...controls, ...replacements].some((one) => one.controls.length > 1);
+  const ordered = [...controls].sort((a, b) => a.motorId - b.motorId);
+  return JSON.stringify([goesBySpan ? spans : null, ordered, banks, replacements]);
 }

@@ -5,6 +5,7 @@ import { formatPayback } from '../../components/ui/format';
 import type { CostPart, Missing, PlanView, UnpricedPlan, YearView } from '../../schemas/plan';
 import { planDefaults, type PlanEconomics } from '../../schemas/plan-money';
 import { constantFieldA, type MotorSetting } from '../../schemas/plan-settings';
+import { wholeYear } from '../../schemas/plan-spans';
 import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
 import { limitsOf, presentAssumed } from '../presenters/motor';
@@ -28,6 +29,7 @@ import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan
 import { appraisePlan, planCashFlow, type PlanMoney } from './plan-economics';
 import { fieldFault } from './plan-limits';
 import { listPlans } from './plan-rows';
+import type { SpanYear } from './plan-spans';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -63,7 +65,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
     standingAct,
-    ...priceable.map((row) => actOf(row, opened)),
+    ...priceable.map((row) => actOf(row, opened, spanYearOf(basis))),
   ])) as [TaskSetting, ...TaskSetting[]];
   const year: Year = { opened, basis, motors, standing };
   const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
@@ -86,6 +88,13 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     fingerprint: basis.fingerprint,
   };
 }
+
+/** What the spans of plans are laid over. */
+const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+  seasons: pricing.schedule.texts.at(-1)?.seasons,
+  from: task.periods[0]!.from,
+  to: task.periods.at(-1)!.to,
+});
 
 const wholeYearDays = 350;
 
@@ -174,7 +183,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
   return presentPlan({
     plan: row,
     currency,
-    spans: row?.spans ?? standingAct.spans,
+    spans: row?.spans ?? wholeYear,
     fields: motors.map((motor) => presentPlanField(motorFacts(motor), settingOf(motor))),
     banks: row ? banksOf(row, currency).map((bank) => presentBank(bank, null)) : [],
     replacements: [],

@@ -37,9 +37,9 @@ export function priceYear({ basis, settings }: YearTask): TaskSetting[] {
   return settings.map((act) => priceSetting(ready, act));
 }
 
-function priceSetting({ basis, motors, pricing }: ReadyYear, { controls, banks }: TaskAct): TaskSetting {
+function priceSetting({ basis, motors, pricing }: ReadyYear, { controls = [], banks = [] }: TaskAct): TaskSetting {
   const fieldOf = (index: number) => {
-    const [control] = controls.find((one) => one.motorId === basis.motors[index]?.id)?.controls ?? [];
+    const control = controls.find((one) => one.motorId === basis.motors[index]?.id)?.controls[0];
     return control?.holds === 'field-current' ? control.fieldCurrentA : undefined;
   };
   const result = simulatePlan({

@@ -5,9 +5,11 @@ export type { DayKind, Grid } from './local-days';
 export { MOST_SPANS, spanSeries } from './spans';
 export type { SpanRule } from './spans';
 export { createSimulator } from './simulator';
-export type { Simulator } from './simulator';
-export { applyActions, simulatePlan } from './simulate-plan';
-export type { MotorInPlan, MotorPlanResult, PlanResult } from './simulate-plan';
+export type { FixedSetup, SimulationTrace, Simulator } from './simulator';
+export { simulatePlan } from './simulate-plan';
+export type { BankPlanResult, PlanResult } from './simulate-plan';
+export type { MotorPlanResult, MotorSpanResult } from './motor-result';
+export type { BusVoltage } from './bus-voltage';
 export { fieldBounds } from './field-bounds';
 export type { FieldBounds } from './field-bounds';
 export { searchFields } from './search-fields';
@@ -15,9 +17,7 @@ export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './sea
 export type {
   BusSupply,
   CapacitorBank,
-  CapacitorStep,
   InductionMotor,
-  PlanAction,
   PlanMotor,
   PlanSetup,
   Plant,

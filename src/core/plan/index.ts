@@ -40,3 +40,5 @@ export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
 export { judgePlans } from './judge-plans';
 export type { Alternative, JudgedAlternative, Verdict } from './judge-plans';
 export { shaftLoadFromSubmeter } from './submeter';
+export { admissibleFieldA, settingFault } from './setting-fault';
+export type { LimitedMotor } from './setting-fault';

@@ -17,7 +17,7 @@ export type { LimitsBeside } from './plate-limits';
 export { completeNameplate } from './nameplate';
 export type { CompletedMotor } from './nameplate';
 export type { ExciterKind, InsulationClass, RotorKind, TypicalValue } from './typical';
-export { assumedSensitivity } from './sensitivity';
+export { assumedSensitivity, withAssumed } from './sensitivity';
 export type { AssumedSwing } from './sensitivity';
 export { fixField } from './fixed-field';
 export type { FixedField, TakenPower } from './fixed-field';

@@ -140,7 +140,7 @@ function checkTwice(plate: Nameplate): PlateRemark | null {
   for (const name of ['xd', 'xq', 'ra'] as const) {
     if (plate[`${name}Pu`] === undefined || plate.ohms?.[`${name}Ohm`] === undefined) continue;
     const message = `${name}Pu and ${name}Ohm are both given.`;
-    return { field: `${name}Ohm`, message, remedy: 'Enter the value once, per unit or in ohms.' };
+    return { field: `ohms.${name}Ohm`, message, remedy: 'Enter the value once, per unit or in ohms.' };
   }
   return null;
 }

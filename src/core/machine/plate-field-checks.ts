@@ -59,7 +59,7 @@ function checkCold(
   if (fits) return null;
   const impossible = impliedC < atC || impliedC > HOTTEST_C;
   return {
-    field: 'coldFieldResistanceOhm',
+    field: 'coldField',
     message:
       `Cold and hot field resistance disagree: ${resistanceOhm} ohm at ${atC} degC become ${expected.toFixed(3)} ohm at ` +
       `${hot.value} degC, ${hot.known ? 'ambient plus rise' : 'typical at rated load'}; ${warm.words} is ${percent(off)} ` +

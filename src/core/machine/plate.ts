@@ -101,7 +101,7 @@ export interface AssumedValue {
 /** Notes a value as assumed and returns it. */
 export type Assume = (field: string, typical: TypicalValue, why: string) => number;
 
-/** What is wrong with a nameplate, or worth a look. `field` is a field of `Nameplate`. */
+/** What is wrong with a nameplate, or worth a look. `field` is a path in `Nameplate`. */
 export interface PlateRemark {
   field: string;
   message: string;

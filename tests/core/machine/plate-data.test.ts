@@ -81,7 +81,7 @@ describe('a field resistance measured cold', () => {
       completeNameplate({ ...plate, ...rise, coldField: { resistanceOhm, atC: 20 } });
     expect(at(1.18).problems).toEqual([]);
     const [problem] = at(1.05).problems;
-    expect(problem).toMatchObject({ field: 'coldFieldResistanceOhm' });
+    expect(problem).toMatchObject({ field: 'coldField' });
     expect(problem!.message).toMatch(/1\.380 ohm at 100 degC.*125 V \/ 78 A = 1\.603 ohm is 16\.1 % above/);
     // 1.60256 / 1.05 x 254.5 - 234.5 = 153.9 degC: hot, but no nonsense
     expect(problem!.message).toContain('154 degC');
@@ -102,7 +102,7 @@ describe('a field resistance measured cold', () => {
       coldField: { resistanceOhm: 1.3, atC: 20 },
       temperatureRiseC: 80,
     });
-    expect(fields(problems)).toEqual(['coldFieldResistanceOhm']);
+    expect(fields(problems)).toEqual(['coldField']);
     expect(problems[0]!.message).toContain('the hot resistance of 1.3 ohm');
   });
 });
@@ -141,7 +141,7 @@ describe('reactances and resistance in ohms', () => {
 
   it('are refused beside per-unit values of the same name', () => {
     const { problems } = completeNameplate({ ...plate, xdPu: 1.1, ohms: { connection: 'wye', xdOhm: 12 } });
-    expect(fields(problems)).toEqual(['xdOhm']);
+    expect(fields(problems)).toEqual(['ohms.xdOhm']);
   });
 
   it('leave what they do not say to typical values', () => {

@@ -1,6 +1,7 @@
 import { z } from 'zod';
-import { calendarInput, plateInput } from './motor';
+import { calendarInput } from './motor';
 import { economicsInput } from './plan-money';
+import { plateInput } from './plate';
 import { spanNames, spanSetInput } from './plan-spans';
 
 const money = z

@@ -15,20 +15,27 @@ import { wordNumber } from '../units';
 export interface LimitedMotor {
   name: string;
   machine: SynchronousMotor;
-  limits: { fieldA: number; armatureA: number; pullOutMargin: number; reservePercent: number };
-  /** Least field current allowed besides the pull-out margin. [A] */
-  leastFieldA?: number;
-  /** Terminal voltages at which every limit must hold; rated alone when absent. [pu] */
-  voltageBandPu?: { low: number; high: number };
+  limits: {
+    fieldA: number;
+    armatureA: number;
+    pullOutMargin: number;
+    reservePercent: number;
+    /** Least field current allowed besides the pull-out margin. [A] */
+    leastFieldA?: number;
+    /** Terminal voltages at which every limit must hold; rated alone when absent. [pu] */
+    voltageBandPu?: { low: number; high: number };
+  };
 }
 
 const amperes = (value: number) => `${wordNumber(value, 0.1).replace(/\.0$/, '')} A`;
 
-const voltagesOf = ({ voltageBandPu }: LimitedMotor) => (voltageBandPu ? [voltageBandPu.low, voltageBandPu.high] : [1]);
+const voltagesOf = ({ limits: { voltageBandPu } }: LimitedMotor) =>
+  voltageBandPu ? [voltageBandPu.low, voltageBandPu.high] : [1];
 
 /** "At its load of 1,119 kW M-1", with the voltage where it is not rated. */
 function atWords({ name }: LimitedMotor, shaftKw: number, voltagePu: number): string {
-  const voltage = voltagePu === 1 ? '' : ` and ${wordNumber(100 * voltagePu, 0.1).replace(/\.0$/, '')} % of rated voltage`;
+  const voltage =
+    voltagePu === 1 ? '' : ` and ${wordNumber(100 * voltagePu, 0.1).replace(/\.0$/, '')} % of rated voltage`;
   return `At its load of ${wordNumber(shaftKw, 1)} kW${voltage} ${name}`;
 }
 
@@ -51,7 +58,8 @@ export function settingFault(motor: LimitedMotor, control: FieldControl, loads: 
   return fieldLimitFault(motor, fieldA, set) ?? loadFault(motor, fieldA, loads);
 }
 
-function fieldLimitFault({ name, limits, leastFieldA = 0 }: LimitedMotor, fieldA: number, set: string): string | null {
+function fieldLimitFault({ name, limits }: LimitedMotor, fieldA: number, set: string): string | null {
+  const { leastFieldA = 0 } = limits;
   if (fieldA > limits.fieldA * (1 + 1e-9)) {
     const reserve = limits.reservePercent > 0 ? `, ${wordNumber(limits.reservePercent, 1)} % kept in reserve` : '';
     return (
@@ -90,10 +98,10 @@ function loadFault(motor: LimitedMotor, fieldA: number, loads: readonly number[]
 }
 
 function rangeFault(motor: LimitedMotor, loads: readonly number[]): string | null {
-  const { machine, leastFieldA } = motor;
+  const { machine, limits } = motor;
   for (const shaftKw of loads) {
     for (const voltagePu of voltagesOf(motor)) {
-      if (!reactiveRange(machine, { shaftKw, voltagePu, leastFieldA })) {
+      if (!reactiveRange(machine, { shaftKw, voltagePu, leastFieldA: limits.leastFieldA })) {
         return `${atWords(motor, shaftKw, voltagePu)} has no excitation within all its limits: no regulator can hold it there. Correct load or limits.`;
       }
     }
@@ -106,9 +114,12 @@ function rangeFault(motor: LimitedMotor, loads: readonly number[]): string | nul
  *
  * @param loads  Shaft loads it runs at. [kW]
  */
-export function admissibleFieldA(motor: LimitedMotor, loads: readonly number[]): { lowA: number; highA: number } | null {
-  const { machine, limits, leastFieldA = 0 } = motor;
-  let [lowA, highA] = [leastFieldA, limits.fieldA];
+export function admissibleFieldA(
+  motor: LimitedMotor,
+  loads: readonly number[],
+): { lowA: number; highA: number } | null {
+  const { machine, limits } = motor;
+  let [lowA, highA] = [limits.leastFieldA ?? 0, limits.fieldA];
   for (const shaftKw of loads) {
     for (const voltagePu of voltagesOf(motor)) {
       const high = capability(machine, { shaftKw, voltagePu }).fieldCurrentA;

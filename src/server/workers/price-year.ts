@@ -1,7 +1,7 @@
 import { localDateStartMs, type LoadSeries } from '../../core/load';
-import { shaftLoadSeries, simulatePlan, type PlanMotor } from '../../core/plan';
+import { simulatePlan, type PlanMotor } from '../../core/plan';
 import { compilePricing, readSchedule, type CompiledPricing } from '../../core/tariff';
-import { toShiftCalendar } from '../services/shaft-load';
+import { shaftLoadOf } from '../services/shaft-load';
 import type { TaskAct, TaskBasis, TaskSetting, YearTask } from './tasks';
 
 /** A task made ready: the motors' shaft loads on the readings' own intervals, the schedule laid out over them. */
@@ -11,15 +11,15 @@ export interface ReadyYear {
   pricing: CompiledPricing;
 }
 
-/** Reads the schedule and lays calendars and schedule over the readings. */
+/** Reads the schedule and lays shaft loads and schedule over the readings. */
 export function readyYear(basis: TaskBasis): ReadyYear {
   const { load, timeZone, periods, contract, history, given } = basis;
   const grid = { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length };
-  const motors = basis.motors.map(({ calendar, machine, fieldTodayA, behind }) => ({
-    motor: machine,
-    shaftKw: shaftLoadSeries(toShiftCalendar(calendar, machine.ratedOutputKw), grid, timeZone),
-    standingFieldA: fieldTodayA,
-    behind,
+  const motors = basis.motors.map((motor) => ({
+    motor: motor.machine,
+    shaftKw: shaftLoadOf(motor, grid, timeZone).shaftKw,
+    standingFieldA: motor.fieldTodayA,
+    behind: motor.behind,
   }));
   const options = { periods, contract, given, ...(history ? { history } : {}) };
   return { basis, motors, pricing: compilePricing(readSchedule(basis.scheduleText), grid, options) };

@@ -4,7 +4,7 @@ import type { FieldControl, SynchronousMotor } from '../../core/machine';
 import type { BusSupply, CapacitorBank, InductionMotor, MotorPlanResult, SpanRule, Upstream } from '../../core/plan';
 import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
-import type { SearchView } from '../../schemas/plan';
+import type { SearchView } from '../../schemas/search';
 import type { ReconcileBasis } from '../services/price-basis';
 
 /** A motor as the calculations see it. */

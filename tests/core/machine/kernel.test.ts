@@ -43,7 +43,7 @@ describe('excitation', () => {
           expect(Math.abs(imag) / m.v).toBeLessThan(1e-9);
         },
       ),
-      { numRuns: 1000 },
+      { numRuns: 10_000 },
     );
   });
 
@@ -98,7 +98,7 @@ describe('reactivePower', () => {
           expect(Math.abs(back.currentA - forward.currentA)).toBeLessThan(1e-9 * (unit / m.v));
         },
       ),
-      { numRuns: 1500 },
+      { numRuns: 10_000 },
     );
   });
 
@@ -158,7 +158,7 @@ describe('pullOut', () => {
         const found = pullOut({ phaseVoltageV: m.v, emfV: emfPu * m.v }, z);
         expect(Math.cos(found.loadAngleRad)).toBeCloseTo(cosine, 8);
       }),
-      { numRuns: 1000 },
+      { numRuns: 10_000 },
     );
   });
 

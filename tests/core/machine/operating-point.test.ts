@@ -206,7 +206,7 @@ describe('operatingPoint for random motors', () => {
         expect(Math.abs(Math.hypot(point.inputKw - beside, point.kvar) - kva) / scale).toBeLessThan(1e-11);
         expect(point.powerFactor).toBeCloseTo(point.inputKw / Math.hypot(point.inputKw, point.kvar), 12);
       }),
-      { numRuns: 1000 },
+      { numRuns: 10_000 },
     );
   });
 
@@ -226,7 +226,7 @@ describe('operatingPoint for random motors', () => {
         // cos is flat at unity: the power factor fixes the kvar only to the square root of rounding there.
         expect(Math.abs(byFactor.kvar - point.kvar) / kva).toBeLessThan(point.powerFactor > 0.9999 ? 1e-6 : 1e-9);
       }),
-      { numRuns: 1000 },
+      { numRuns: 10_000 },
     );
   });
 

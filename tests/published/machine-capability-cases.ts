@@ -104,7 +104,10 @@ function leastExcitation(loadsPu: number[], ratios: number[]): Figures {
   return figures;
 }
 
-/** What over-excited motors may deliver, in per unit on rated kVA, losses and armature resistance left out. */
+/**
+ * What over-excited motors may deliver, in per unit on rated kVA, losses and armature resistance left out: the power-angle equations of
+ * [FIT] ch. 5, common practice. Rows by load.
+ */
 export const nameplateCases = [
   nameplateCase(
     'CAP-1.0pf-round-X1.0',

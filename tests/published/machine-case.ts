@@ -9,8 +9,8 @@ import {
 import { kvarPerKw, type BusLoad } from '@/core/plan';
 import { buildLosslessMotor } from '../core/machine/build-motor';
 
-/** Figures by their names in the list of published cases; null where nothing is admissible. */
-export type Figures = Record<string, number | null>;
+/** Figures by their names in the list of published cases; null where nothing is admissible; the sense of a power factor is a word. */
+export type Figures = Record<string, number | string | null>;
 
 /**
  * A worked example of the list of published cases.
@@ -20,7 +20,10 @@ export type Figures = Record<string, number | null>;
  */
 export interface MachineCase {
   id: string;
-  /** Author or publisher, title, example; "from memory" where the figures were not read in a source. */
+  /**
+   * Author or publisher, title, example. "Companion notebook": of FOSSEE, Python Textbook Companions; "from memory": the figures were not
+   * read in a source.
+   */
   source: string;
   /** What the core gives. */
   find: () => Figures;
@@ -77,6 +80,7 @@ export function atEmf(phaseVoltageV: number, kw: number, emfV: number, z: Machin
     currentA,
     currentDeg: degrees(Math.atan2(-reactivePowerVar, activePowerW)),
     powerFactor: activePowerW / (phaseVoltageV * currentA),
+    sense: reactivePowerVar < 0 ? 'leading' : 'lagging',
   };
 }
 

@@ -8,7 +8,8 @@ import type { MachineCase } from './machine-case';
 export const emfCases: MachineCase[] = [
   {
     id: 'CHP-EX1b',
-    source: 'Chapman, the same motor at 30 hp and the same field; from memory',
+    source:
+      'S. J. Chapman, Electric Machinery Fundamentals, synchronous motors, first example at 30 hp and the same field; from memory',
     find: () => {
       const kw = 30 * KW_PER_HP + 2.5;
       const { emfV } = atLoad(208, leading(15 * KW_PER_HP + 2.5, 0.8), round(2.5));
@@ -20,12 +21,13 @@ export const emfCases: MachineCase[] = [
         Ia_angle_deg: found.currentDeg,
         IL_A: atEmf(toNeutral(208), kw, toNeutral(emfV), round(2.5 / 3)).currentA,
         pf: found.powerFactor,
+        pf_sense: found.sense,
         Q_supplied_kvar: found.kvarDelivered,
       };
     },
     printed: { delta_deg: -23, Ia_A: 41.2, Ia_angle_deg: 15, IL_A: 71.4, pf: 0.966 },
     tolerance: 0.01,
-    // The source carries an angle of 15 degrees on, so its amperes are low by rounding; it prints -23.0 and 15.0 degrees.
+    // The source rounds emf and angle on the way, so its amperes are low; it prints -23.0 and 15.0 degrees.
     within: { delta_deg: 0.05, Ia_A: 0.1, Ia_angle_deg: 0.07, IL_A: 0.13 },
     recomputed: {
       Pin_kW: 24.88,
@@ -34,6 +36,7 @@ export const emfCases: MachineCase[] = [
       Ia_angle_deg: 15.06,
       IL_A: 71.516,
       pf: 0.96565,
+      pf_sense: 'leading',
       Q_supplied_kvar: 6.6945,
     },
   },
@@ -54,6 +57,7 @@ export const emfCases: MachineCase[] = [
         Ia2_A: second.currentA,
         Ia2_angle_deg: second.currentDeg,
         pf2: second.powerFactor,
+        pf2_sense: second.sense,
         Q1_supplied_kvar: -load.kvar,
         Q2_supplied_kvar: second.kvarDelivered,
       };
@@ -83,13 +87,15 @@ export const emfCases: MachineCase[] = [
       Ia2_A: 22.581,
       Ia2_angle_deg: 13.696,
       pf2: 0.97157,
+      pf2_sense: 'leading',
       Q1_supplied_kvar: -8.4843,
       Q2_supplied_kvar: 3.3362,
     },
   },
   {
     id: 'HUB-8-2',
-    source: 'Hubert, ex. 8.2, p. 322: least excitation for 40 hp; read in the companion notebook',
+    source:
+      'C. I. Hubert, Electric Machines, ex. 8.2, p. 322: least excitation for 40 hp; read in the companion notebook',
     find: () => {
       const wide = { pullOutMargin: 1, armatureCurrentA: 1e6 };
       const motor = motorOfOhms({ kva: 40, lineV: 220 }, round(1.27), { limits: wide });
@@ -114,6 +120,7 @@ export const emfCases: MachineCase[] = [
         delta_deg: found.deltaDeg,
         T_Nm: torqueNm(9, (188.5 * 60) / (2 * Math.PI)),
         pf: found.powerFactor,
+        pf_sense: found.sense,
         pf_notebook: found.powerFactor,
         IL_A: found.currentA,
       };
@@ -123,7 +130,14 @@ export const emfCases: MachineCase[] = [
     // Printed -26.0.
     within: { delta_deg: 0.05 },
     wrong: { pf_notebook: 'The notebook takes the cosine of degrees as radians.' },
-    recomputed: { delta_deg: -25.996, T_Nm: 47.745, pf: 0.96828, pf_notebook: 0.96828, IL_A: 12.196 },
+    recomputed: {
+      delta_deg: -25.996,
+      T_Nm: 47.745,
+      pf: 0.96828,
+      pf_sense: 'leading',
+      pf_notebook: 0.96828,
+      IL_A: 12.196,
+    },
   },
   {
     // The power of a round rotor at an angle is in proportion to its emf.
@@ -142,6 +156,7 @@ export const emfCases: MachineCase[] = [
         Ia_imag_A: found.currentA * Math.sin(turn),
         Ia_A: found.currentA,
         pf: found.powerFactor,
+        pf_sense: found.sense,
         Q_supplied_kvar: found.kvarDelivered,
       };
     },
@@ -155,6 +170,7 @@ export const emfCases: MachineCase[] = [
       Ia_imag_A: 34.586,
       Ia_A: 54.11,
       pf: 0.76906,
+      pf_sense: 'leading',
       Q_supplied_kvar: 137.78,
     },
   },
@@ -210,6 +226,7 @@ export const emfCases: MachineCase[] = [
         E_V: emfV,
         delta2_deg: found.deltaDeg,
         pf2: found.powerFactor,
+        pf2_sense: found.sense,
         Q1_supplied_kvar: -load.kvar,
         Q2_supplied_kvar: found.kvarDelivered,
       };
@@ -218,6 +235,13 @@ export const emfCases: MachineCase[] = [
     tolerance: 0.01,
     // The source rounds on the way.
     within: { pf2: 0.0001 },
-    recomputed: { E_V: 5413.2, delta2_deg: -28.999, pf2: 0.94324, Q1_supplied_kvar: 750, Q2_supplied_kvar: 528.14 },
+    recomputed: {
+      E_V: 5413.2,
+      delta2_deg: -28.999,
+      pf2: 0.94324,
+      pf2_sense: 'leading',
+      Q1_supplied_kvar: 750,
+      Q2_supplied_kvar: 528.14,
+    },
   },
 ];

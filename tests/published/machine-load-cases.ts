@@ -57,8 +57,7 @@ export const loadCases: MachineCase[] = [
   },
   {
     id: 'HUB-8-1',
-    source:
-      'C. I. Hubert, Electric Machines, ex. 8.1, p. 317: 100 hp at 0.8 leading; read in the companion notebook of FOSSEE, Python Textbook Companions',
+    source: 'C. I. Hubert, Electric Machines, ex. 8.1, p. 317: 100 hp at 0.8 leading; read in the companion notebook',
     find: () => {
       const load = leading((100 * KW_PER_HP) / 0.96, 0.8);
       const found = atLoad(toNeutral(460), load, round(2.72));

@@ -89,7 +89,7 @@ export const lossCases: MachineCase[] = [
     // The field is fed beside the armature; its ohms are those that take 70 W at the amperes of this point.
     id: 'GUR-8-1',
     source:
-      'Guru and Hiziroglu, ex. 8.1, p. 477: 10 hp at 0.707 leading, 230 W of rotation and 70 W of field; read in the companion notebook of FOSSEE, Python Textbook Companions',
+      'B. S. Guru and H. R. Hiziroglu, Electric Machinery and Transformers, ex. 8.1, p. 477: 10 hp at 0.707 leading, 230 W of rotation and 70 W of field; read in the companion notebook',
     find: () => {
       const motor = motorOfOhms({ kva: 10, lineV: 230 }, round(5), {
         exciterSupply: 'bus',

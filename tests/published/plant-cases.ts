@@ -51,7 +51,7 @@ export const plantCases: MachineCase[] = [
   {
     id: 'KOS-8-7',
     source:
-      'I. L. Kosow, Electric Machinery and Transformers, ex. 8-7, p. 244: induction motor or synchronous motor of 1000 hp; read in the companion notebook of FOSSEE, Python Textbook Companions',
+      'I. L. Kosow, Electric Machinery and Transformers, ex. 8-7, p. 244: induction motor or synchronous motor of 1000 hp; read in the companion notebook',
     find: () => {
       const kw = (1000 * KW_PER_HP) / 0.92;
       const induction = combineLoads([lagging(2000, 0.6), lagging(kw, 0.8)]);

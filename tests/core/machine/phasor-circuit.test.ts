@@ -66,7 +66,13 @@ describe.skipIf(!python)('operating points against the complex circuit in numpy'
     const worst: Record<string, number> = {};
     all.forEach(({ asked: { motor }, point }, k) => {
       const expected = solved[k]!;
-      const scales = { inputKw: 0.01 * motor.ratedOutputKw, lineCurrentA: 1e-3, powerFactor: 1, emfPu: 1, loadAngleDeg: 1 };
+      const scales = {
+        inputKw: 0.01 * motor.ratedOutputKw,
+        lineCurrentA: 1e-3,
+        powerFactor: 1,
+        emfPu: 1,
+        loadAngleDeg: 1,
+      };
       const figures = { ...scales, fieldCurrentA: 0.01 * motor.ratedFieldCurrentA, pullOutRatio: 1 };
       for (const [name, scale] of Object.entries(figures)) {
         const key = name as keyof typeof figures;

@@ -11,9 +11,12 @@ export type { BankPlanResult, PlanResult } from './simulate-plan';
 export type { MotorPlanResult, MotorSpanResult } from './motor-result';
 export type { BusVoltage } from './bus-voltage';
 export { fieldBounds } from './field-bounds';
-export type { FieldBounds } from './field-bounds';
-export { searchFields } from './search-fields';
-export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './search-fields';
+export type { Binding, FieldBounds } from './field-bounds';
+export { searchSettings } from './search-settings';
+export type { CostPoint, SearchInput, SearchResult, SearchedAxis } from './search-settings';
+export type { SearchMotor, SearchedSetting } from './search-axes';
+export type { SearchedBank } from './search-candidates';
+export type { SearchProgress } from './search-parts';
 export type {
   BusSupply,
   CapacitorBank,

@@ -79,6 +79,9 @@ export const submeterQuery = z.object({
     .default(1),
 });
 
+/** Which file of a submeter is taken back. */
+export const submeterRemoval = z.object({ fileId: z.number({ error: 'Say which file.' }).int().positive() });
+
 /** A file of the motor's submeter. */
 export interface SubmeterFileView {
   id: number;

@@ -36,7 +36,7 @@ async function sourceOf({ id, calendar }: Motor, row: MotorLoad | undefined): Pr
     return { kind, calendar, metered, key: `${key} ${files.map((file) => file.id).join(' ')}` };
   }
   const profile = kind === 'profile' ? row?.profile : null;
-  return { kind, calendar: profile ? calendarOfProfile(profile, calendar) : calendar, metered: null, key };
+  return { kind, calendar: profile ? calendarOfProfile(profile, calendar) : calendar, key };
 }
 
 /** The files of a motor's submeter in the order in which they came: of two readings of one time that of the later stands. */
@@ -69,7 +69,8 @@ export async function keepPower(submeterFileId: number, { startMs, stepMinutes, 
 /** Takes a file of a submeter away with its blocks; it stays in the drawer. Call inside inTx. */
 export async function removePower(file: SubmeterFile): Promise<void> {
   const where = { submeterFileId: file.id };
-  for (const block of await SubmeterBlock.findAll({ where, attributes: { exclude: ['values'] } })) await block.destroy();
+  for (const block of await SubmeterBlock.findAll({ where, attributes: { exclude: ['values'] } }))
+    await block.destroy();
   await file.destroy();
 }
 

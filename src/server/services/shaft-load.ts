@@ -17,8 +17,8 @@ import type { GapLoad, ProfileInput } from '../../schemas/shaft-load';
 export interface LoadSource {
   /** Rules of the week: the shift calendar's, or a profile's. */
   calendar: CalendarInput;
-  /** What a submeter read; null where the rules tell all. */
-  metered: { series: PowerSeries[]; whenMissing: GapLoad } | null;
+  /** What a submeter read; without it the rules tell all. */
+  metered?: { series: PowerSeries[]; whenMissing: GapLoad } | null;
 }
 
 /** A motor with what tells its load, and the field that its losses hang on. */
@@ -55,11 +55,7 @@ function weekOf({ rules }: CalendarInput): (LoadRule | null)[] {
 }
 
 /** Hours of [from, to) at each load of the rules, most hours first, by the clock: the odd hour of a clock change is not counted. */
-function hoursOfRules(
-  calendar: CalendarInput,
-  ratedOutputKw: number,
-  year: { from: string; to: string },
-): LoadHours[] {
+function hoursOfRules(calendar: CalendarInput, ratedOutputKw: number, year: { from: string; to: string }): LoadHours[] {
   const week = weekOf(calendar);
   const steps = new Map<number, number>();
   for (let day = dayNumber(year.from); day < dayNumber(year.to); day += 1) {
@@ -176,5 +172,8 @@ export function calendarOfProfile(profile: ProfileInput, { shutdowns }: Calendar
     }));
   };
   const { weekday, saturday, sunday } = profile;
-  return { rules: [...rulesOf(weekdays, weekday), ...rulesOf(['Sat'], saturday), ...rulesOf(['Sun'], sunday)], shutdowns };
+  return {
+    rules: [...rulesOf(weekdays, weekday), ...rulesOf(['Sat'], saturday), ...rulesOf(['Sun'], sunday)],
+    shutdowns,
+  };
 }

@@ -1,4 +1,4 @@
-import type { Grid } from './shaft-load';
+import type { Grid } from './local-days';
 
 /** Mean power of consecutive intervals. */
 export interface PowerSeries {

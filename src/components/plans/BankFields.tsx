@@ -1,14 +1,10 @@
 import { useFieldArray, useFormContext } from 'react-hook-form';
+import type { FormMeter } from '../../schemas/plan-form';
 import { Button } from '../ui/Button';
 import { Field, NumberField, SelectField } from '../ui/Field';
 import { messageAt } from '../ui/form-errors';
 import type { PlanDraft } from './draft';
 import { emptyBank } from './part-draft';
-
-export interface FormMeter {
-  id: number;
-  label: string;
-}
 
 /** The meter a part stands behind; nothing to choose where there is one alone. */
 export function MeterField({

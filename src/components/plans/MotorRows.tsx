@@ -1,10 +1,11 @@
 import { useMemo } from 'react';
 import { useFormContext } from 'react-hook-form';
+import type { FormMotor } from '../../schemas/plan-form';
 import { controlValueKey } from '../../schemas/plan-settings';
 import { NumberField, SelectField } from '../ui/Field';
 import { messageAt } from '../ui/form-errors';
 import type { PlanDraft } from './draft';
-import { loadsOfSpans, rangeWords, remarkOn, type FormMotor } from './setting-check';
+import { loadsOfSpans, rangeWords, remarkOn } from './setting-check';
 import { modes, typed, type Mode } from './setting-draft';
 import { spanNamesOf } from './span-draft';
 

@@ -1,11 +1,12 @@
 import { useFieldArray, useFormContext } from 'react-hook-form';
 import { dayNames } from '../../schemas/motor';
+import type { FormMeter } from '../../schemas/plan-form';
 import { emptyRule } from '../motors/draft';
 import { Button } from '../ui/Button';
 import { Field, NumberField, SelectField } from '../ui/Field';
 import { FieldError } from '../ui/FieldError';
 import { messageAt } from '../ui/form-errors';
-import { MeterField, type FormMeter } from './BankFields';
+import { MeterField } from './BankFields';
 import type { PlanDraft } from './draft';
 import { SettingRow } from './MotorRows';
 import { emptyReplacement } from './part-draft';

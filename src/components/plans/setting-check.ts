@@ -1,28 +1,12 @@
-import { PullOutError, NotConvergedError, type FieldControl } from '../../core/machine';
-import { admissibleFieldA, settingFault, spanSeries, type LimitedMotor, type SpanRule } from '../../core/plan';
+import { NotConvergedError, panelCurrentA, PullOutError, type FieldControl } from '../../core/machine';
+import { admissibleFieldA, settingFault, spanSeries, type SpanRule } from '../../core/plan';
+import type { FormLoads, FormMotor } from '../../schemas/plan-form';
 import { fieldControlInput } from '../../schemas/plan-input';
 import { spanSetInput } from '../../schemas/plan-spans';
 import { formatNumber } from '../ui/format';
 import { amperes, controlWords } from '../ui/setting-words';
-import { panelCurrentA } from '../../core/machine';
 import { controlOf, type SettingDraft } from './setting-draft';
 import { spansToInput, type SpanDraft } from './span-draft';
-
-/** A motor as the form knows it: machine, limits, and the loads it runs at. */
-export interface FormMotor extends LimitedMotor {
-  motorId: number;
-  todayA: number;
-  loads: FormLoads;
-}
-
-/** Distinct shaft loads of the year, [kW], and which of them come when. */
-export interface FormLoads {
-  kw: number[];
-  /** By calendar month, January first; by quarter-hour of the week, Monday 0 h first; by season of the schedule. */
-  ofMonth: number[][];
-  ofQuarter: number[][];
-  ofSeason: number[][];
-}
 
 const quartersPerWeek = 672;
 /** A Monday 0 h. */

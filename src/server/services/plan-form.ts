@@ -1,8 +1,7 @@
 import { addDays, dayNumber, localDateStartMs, weekdayOf } from '../../core/load';
 import { shaftLoadSeries } from '../../core/plan';
 import type { SeasonTable } from '../../core/tariff';
-import type { FormLoads, FormMotor } from '../../components/plans/setting-check';
-import type { FormMeter } from '../../components/plans/BankFields';
+import type { FormLoads, FormMeter, FormMotor } from '../../schemas/plan-form';
 import { limitsOf } from '../presenters/motor';
 import type { OpenEngagement } from './engagements';
 import { planBasis, type PlanMotor } from './plan-basis';

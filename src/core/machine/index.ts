@@ -41,3 +41,5 @@ export type { ControlledField } from './controlled-field';
 export { LIMIT_CODE, reactiveSupply } from './kvar-supply';
 export type { ReactiveSupply, TakenMany } from './kvar-supply';
 export { COPPER_ZERO_C, DEFAULT_FIELD_HOT_C, fieldResistanceAtOhm } from './field-temperature';
+export { cubicTable } from './cubic-table';
+export { goldenMinimum } from './roots';

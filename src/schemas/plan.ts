@@ -1,5 +1,10 @@
 import { z } from 'zod';
+import type { PlanEconomics } from './assumptions';
+import { economicsInput, moneyInput, refineMoney } from './money';
+import type { MoneyView } from './money-view';
 import type { AssumedValue } from './motor';
+
+export { planDefaults, type PlanEconomics } from './assumptions';
 
 export type ChargeGroup = 'energy' | 'demand' | 'reactive' | 'fixed' | 'adjustment' | 'tax';
 
@@ -33,12 +38,6 @@ export interface AppraisalView {
   npv: number;
   irr: number | null;
   notes: string[];
-}
-
-export interface PlanEconomics {
-  discountPercent: number;
-  escalationPercent: number;
-  horizonYears: number;
 }
 
 /** One month of the cumulative cash flow; `low` and `high` hold eight of ten samples. Major units. */
@@ -168,6 +167,8 @@ export interface PlanView {
   /** Eight of ten samples pay back between these, in months; null: not within the horizon. */
   paybackSpread: { lowMonths: number | null; highMonths: number | null } | null;
   cashFlow: CashFlowMonth[];
+  /** Null for standing. */
+  money: MoneyView | null;
   motors: PlanMotorView[];
   /** Extra energy drawn by the motors over the year, and its cost at the mean energy price. */
   extraLossKwh: number;
@@ -221,11 +222,6 @@ export interface Missing {
   remedy: string;
 }
 
-const money = z
-  .number({ error: 'Write an amount.' })
-  .min(0, 'Write an amount of 0 or more.')
-  .max(1e10, 'This amount is too large.');
-
 const capacitorInput = z.object({
   kvar: z
     .number({ error: 'Write the size of the bank in kvar.' })
@@ -247,8 +243,7 @@ const capacitorInput = z.object({
     .optional(),
 });
 
-/** A plan as its form sends it. Amounts in major units. */
-export const planInput = z.object({
+const planEntries = z.object({
   name: z.string().trim().min(1, 'Give the plan a name.').max(80, 'A name has at most 80 characters.'),
   fields: z
     .array(
@@ -261,30 +256,19 @@ export const planInput = z.object({
     )
     .max(40, 'A plan has at most 40 motors.'),
   capacitors: capacitorInput.optional(),
-  capitalCost: money,
-  yearlyUpkeep: money,
-  economics: z.object({
-    discountPercent: z
-      .number({ error: 'Write the discount rate in per cent.' })
-      .min(0, 'The discount rate lies between 0 and 40 %.')
-      .max(40, 'The discount rate lies between 0 and 40 %.'),
-    escalationPercent: z
-      .number({ error: 'Write the yearly rise of prices in per cent.' })
-      .min(-20, 'The yearly rise lies between −20 and 30 %.')
-      .max(30, 'The yearly rise lies between −20 and 30 %.'),
-    horizonYears: z
-      .number({ error: 'Write the horizon in years.' })
-      .int('Write whole years.')
-      .min(1, 'The horizon lies between 1 and 30 years.')
-      .max(30, 'The horizon lies between 1 and 30 years.'),
-  }),
+  capitalCost: moneyInput,
+  yearlyUpkeep: moneyInput,
+  economics: economicsInput,
   /** Job whose result the plan is made of. */
   searchJobId: z.number().int().optional(),
 });
+
+/** A plan as its form sends it. Amounts in major units. */
+export const planInput = planEntries.superRefine(refineMoney);
 export type PlanInput = z.output<typeof planInput>;
 
 /** A change of a plan carries the version that was seen. */
-export const planChangeInput = planInput.extend({ version: z.number().int() });
+export const planChangeInput = planEntries.extend({ version: z.number().int() }).superRefine(refineMoney);
 export type PlanChangeInput = z.output<typeof planChangeInput>;
 
 export const planChoiceInput = z.object({ version: z.number().int(), chosen: z.boolean() });
@@ -298,8 +282,3 @@ export const searchInput = z.object({
     .default(2),
 });
 export type SearchInput = z.output<typeof searchInput>;
-
-export const planDefaults = { discountPercent: 8, escalationPercent: 0, horizonYears: 10 } as const;
-
-/** How far the figures of a plan are taken to scatter when its cash flow is sampled: one standard deviation. */
-export const cashFlowSpread = { savingPercent: 10, costPercent: 15, escalationPercentPoints: 1 } as const;

@@ -2,6 +2,7 @@ import { formatBillName } from '../../components/ui/format';
 import { dayNumber } from '../../core/load';
 import { wordNumber } from '../../core/units';
 import { formatPayback } from '../../components/ui/format';
+import type { PlanMoney } from '../../schemas/assumptions';
 import {
   planDefaults,
   type FieldSetting,
@@ -16,9 +17,7 @@ import type { Plan } from '../models/Plan';
 import { limitsOf, presentAssumed } from '../presenters/motor';
 import {
   capacitorBank,
-  chargeGroups,
   fieldSettings,
-  groupTotals,
   nearestLimitWords,
   presentCapacitors,
   presentPlan,
@@ -26,13 +25,14 @@ import {
   presentPlanMotor,
   presentPricedBill,
   storedPlan,
+  type PlanParts,
 } from '../presenters/plan';
 import type { TaskAct, TaskSetting } from '../workers/tasks';
 import { notesOfBills } from './bill-notes';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
-import { appraisePlan, planCashFlow, type PlanMoney } from './plan-economics';
+import { appraisePlan, planCashFlow, savingOf } from './plan-economics';
 import { fieldFault } from './plan-limits';
 import { listPlans } from './plan-rows';
 
@@ -147,11 +147,6 @@ function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedP
   return { id: row.id, version: row.version, name: row.name, chosen: row.chosen, fields, reason };
 }
 
-/** First year's saving by group of charges. */
-function savingByGroup(standing: ReturnType<typeof groupTotals>, plan: ReturnType<typeof groupTotals>) {
-  return Object.fromEntries(chargeGroups.map((group) => [group, standing[group] - plan[group]]));
-}
-
 const atRest: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconomics } = {
   capitalCost: 0,
   yearlyUpkeep: 0,
@@ -167,12 +162,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
   const bills = setting.bills.map(presentPricedBill);
   const before = standing.bills.map(presentPricedBill);
   const { capitalCost, yearlyUpkeep, economics } = row ? storedPlan(row, currency) : atRest;
-  const money: PlanMoney = {
-    savingByGroup: savingByGroup(groupTotals(before), groupTotals(bills)),
-    capitalCost,
-    yearlyUpkeep,
-    economics,
-  };
+  const money = { ...savingOf(before, bills), capitalCost, yearlyUpkeep, economics };
   const appraisal = appraisePlan(money);
   const views = motors.map((motor) => {
     const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
@@ -189,7 +179,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     money: { capitalCost, yearlyUpkeep, economics },
     appraisal,
     paybackWords: formatPayback(appraisal.simplePaybackYears),
-    ...(row ? planCashFlow(money) : { cashFlow: [], paybackSpread: null }),
+    ...moneyOf(row && money),
     motors: views,
     hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
     nearestLimit: nearestLimitWords(views),
@@ -198,6 +188,12 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     search,
     stale: search && search.fingerprint !== basis.fingerprint ? [staleWords] : [],
   });
+}
+
+function moneyOf(money: PlanMoney | null): Pick<PlanParts, 'cashFlow' | 'paybackSpread' | 'moneyView'> {
+  if (!money) return { cashFlow: [], paybackSpread: null, moneyView: null };
+  const { money: moneyView, ...flow } = planCashFlow(money);
+  return { ...flow, moneyView };
 }
 
 const staleWords =

@@ -1,4 +1,5 @@
 import { movedInvestment, type Investment, type Spreads } from '../core/economics';
+import type { PlanEconomics } from './plan-money';
 
 /** How uncertain the inputs of a plan's money are: one standard deviation each. */
 export interface MoneySpread {
@@ -38,32 +39,6 @@ export interface AssumptionRange {
   low: number;
   high: number;
 }
-
-/**
- * What a plan's money is reckoned with, as stored with it and frozen in editions. What is absent (all of it but the
- * first three in plans and editions made before) has the value of `economicsDefaults`.
- */
-export interface PlanEconomics {
-  discountPercent: number;
-  /** Rise of all charges that have none of their own. */
-  escalationPercent: number;
-  horizonYears: number;
-  energyRisePercent?: number;
-  demandRisePercent?: number;
-  reactiveRisePercent?: number;
-  fixedRisePercent?: number;
-  upkeepGrowthPercent?: number;
-  /** Grant or rebate received when the work is done, in major units as the form writes it. */
-  incentive?: number;
-  /** Rate on profit; 0 or absent: before tax. */
-  taxPercent?: number;
-  depreciationYears?: number;
-  spread?: Partial<MoneySpread>;
-  /** What the client may move, and how far; an absent assumption is fixed. */
-  ranges?: Partial<Record<AssumptionKey, AssumptionRange>>;
-}
-
-export const planDefaults = { discountPercent: 8, escalationPercent: 0, horizonYears: 10 } as const;
 
 /** Spreads where a plan gives none. Common practice, not measured. */
 export const defaultSpread: MoneySpread = {

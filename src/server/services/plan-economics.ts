@@ -8,7 +8,8 @@ import {
 } from '../../core/economics';
 import { investmentOf, spreadsOf, type PlanMoney } from '../../schemas/assumptions';
 import type { MoneyView } from '../../schemas/money-view';
-import type { AppraisalView, CashFlowMonth, PlanView, PricedBillView, PricedLineView } from '../../schemas/plan';
+import type { PlanView, PricedBillView, PricedLineView } from '../../schemas/plan';
+import type { AppraisalView, CashFlowMonth } from '../../schemas/plan-money';
 
 const samples = 1000;
 const seed = 20_260_907;
@@ -16,8 +17,18 @@ const seed = 20_260_907;
 /** Paybacks, present value and rate of return, after upkeep, tax and incentive. */
 export const appraisePlan = (money: PlanMoney): AppraisalView => appraiseInvestment(investmentOf(money));
 
+/** What is told of a plan's cash. */
+interface CashFlowParts {
+  cashFlow: CashFlowMonth[];
+  paybackSpread: PlanView['paybackSpread'];
+  moneyView: MoneyView | null;
+}
+
+/** The standing plant has no cash flow. */
+export const noCashFlow: CashFlowParts = { cashFlow: [], paybackSpread: null, moneyView: null };
+
 /** Cash flow, its spread and what moves it. The same plan gives the same samples. */
-export function planCashFlow(money: PlanMoney): Pick<PlanView, 'cashFlow' | 'paybackSpread'> & { money: MoneyView } {
+export function planCashFlow(money: PlanMoney): CashFlowParts {
   const investment = investmentOf(money);
   const spreads = spreadsOf(money.economics);
   const years = investmentYears(investment);
@@ -31,7 +42,7 @@ export function planCashFlow(money: PlanMoney): Pick<PlanView, 'cashFlow' | 'pay
   return {
     cashFlow: monthly,
     paybackSpread: { lowMonths: paybackMonths.p10, highMonths: paybackMonths.p90 },
-    money: {
+    moneyView: {
       saving: money.saving,
       savingWithHours: money.savingWithHours,
       years,

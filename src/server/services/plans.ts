@@ -1,14 +1,16 @@
 import { toMinorUnits } from '../../core/units';
 import { searchFound } from '../../schemas/job';
 import type { MotorView } from '../../schemas/motor';
-import type { FieldSetting, PlanAction, PlanChangeInput, PlanInput, SearchView } from '../../schemas/plan';
+import type { PlanChangeInput, PlanInput } from '../../schemas/plan-input';
+import { constantFieldA, type MotorSetting } from '../../schemas/plan-settings';
+import type { SearchView } from '../../schemas/search';
 import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
 import { Job } from '../models/Job';
 import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
-import { presentPlanRow, storedPlan } from '../presenters/plan';
+import { actionsOf, presentPlanRow, storedPlan } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { motorsOf } from './motors';
 import { fieldFault } from './plan-limits';
@@ -104,26 +106,23 @@ async function checkedValues(opened: OpenEngagement, input: PlanInput) {
   const { currency } = opened.engagement;
   return {
     name: input.name,
-    actions: actionsOf(input),
-    capitalCostMinor: toMinorUnits(input.capitalCost, currency),
+    spans: input.spans,
+    actions: actionsOf(input, currency),
+    workCostMinor: toMinorUnits(input.workCost, currency),
     yearlyUpkeepMinor: toMinorUnits(input.yearlyUpkeep, currency),
     economics: input.economics,
   };
 }
-
-const actionsOf = ({ fields, capacitors }: PlanInput): PlanAction[] => [
-  ...fields.map(({ motorId, fieldA }) => ({ kind: 'field' as const, motorId, fieldA })),
-  ...(capacitors ? [{ kind: 'capacitor' as const, ...capacitors }] : []),
-];
 
 /** Refuses fields of unknown motors, twice the same motor, and every field beyond a limit at a load of its calendar. */
 async function refuseBeyondLimits(opened: OpenEngagement, input: PlanInput): Promise<void> {
   const motors = await motorsOf(opened);
   const fields: FieldErrors = {};
   const seen = new Set<number>();
-  input.fields.forEach(({ motorId, fieldA }, index) => {
+  input.fields.forEach((setting, index) => {
+    const { motorId } = setting;
     const motor = motors.find((one) => one.id === motorId);
-    const fault = faultOf(motor, motorId, fieldA, seen, opened);
+    const fault = faultOf(motor, motorId, constantFieldA(setting) ?? 0, seen, opened);
     if (fault) fields[`fields.${index}.fieldA`] = [fault];
     seen.add(motorId);
   });
@@ -154,7 +153,7 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
   }
 }
 
-type Fields = readonly FieldSetting[];
+type Fields = readonly MotorSetting[];
 
 const sameFields = (found: Fields, set: Fields) =>
   found.every((one) => set.some((other) => other.motorId === one.motorId && other.fieldA === one.fieldA));

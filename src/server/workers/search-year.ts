@@ -1,5 +1,5 @@
 import { searchFields, type SearchResult } from '../../core/plan';
-import type { CostCurveView, SearchView } from '../../schemas/plan';
+import type { CostCurveView, SearchView } from '../../schemas/search';
 import { metersOf, readyYear } from './price-year';
 import type { SearchTask, TaskMotor } from './tasks';
 

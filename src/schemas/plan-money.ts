@@ -5,7 +5,51 @@ import {
   type AssumptionKey,
   type AssumptionRange,
   type MoneyEntries,
+  type MoneySpread,
 } from './assumptions';
+
+/** What a plan's money is worth, on the assumptions of its own form. */
+export interface AppraisalView {
+  simplePaybackYears: number | null;
+  discountedPaybackYears: number | null;
+  npv: number;
+  irr: number | null;
+  notes: string[];
+}
+
+/**
+ * What a plan's money is reckoned with, as stored with it and frozen in editions. What is absent (all of it but the
+ * first three in plans and editions made before) is as `assumptionValue` and `spreadsOf` say.
+ */
+export interface PlanEconomics {
+  discountPercent: number;
+  /** Rise of all charges that have none of their own. */
+  escalationPercent: number;
+  horizonYears: number;
+  energyRisePercent?: number;
+  demandRisePercent?: number;
+  reactiveRisePercent?: number;
+  fixedRisePercent?: number;
+  upkeepGrowthPercent?: number;
+  /** Grant or rebate received when the work is done, in major units as the form writes it. */
+  incentive?: number;
+  /** Rate on profit; 0 or absent: before tax. */
+  taxPercent?: number;
+  depreciationYears?: number;
+  spread?: Partial<MoneySpread>;
+  /** What the client may move, and how far; an absent assumption is fixed. */
+  ranges?: Partial<Record<AssumptionKey, AssumptionRange>>;
+}
+
+export const planDefaults = { discountPercent: 8, escalationPercent: 0, horizonYears: 10 } as const;
+
+/** One month of the cumulative cash flow; `low` and `high` hold eight of ten samples. Major units. */
+export interface CashFlowMonth {
+  month: number;
+  cumulative: number;
+  low?: number;
+  high?: number;
+}
 
 /** Per cent or percentage points an entry must lie within, with the words of its refusal. */
 const within = (low: number, high: number, what: string, unit = '%') =>

@@ -1,6 +1,7 @@
 import { constantFieldA } from '../../schemas/plan-settings';
 import type { PlanInput } from '../../schemas/plan-input';
 import { typedNumber } from '../ui/typed-number';
+import { economicsDraftOf, economicsEntries, economicsToInput, type EconomicsDraft } from './money-draft';
 
 /** A plan as it is typed; paths are those of `planInput`. Fields stay in the order of the motors. */
 export interface PlanDraft {
@@ -10,23 +11,18 @@ export interface PlanDraft {
   capacitors: { kvar: string; lossWPerKvar: string; detuningPercent: string };
   workCost: string;
   yearlyUpkeep: string;
-  economics: { discountPercent: string; escalationPercent: string; horizonYears: string };
+  economics: EconomicsDraft;
 }
 
 /** What the schema is asked to read. */
 export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknown {
-  const { economics } = draft;
   return {
     name: draft.name,
     fields: draft.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typedNumber(fieldA) })),
     banks: bankToInput(draft.capacitors),
     workCost: typedNumber(draft.workCost),
     yearlyUpkeep: typedNumber(draft.yearlyUpkeep),
-    economics: {
-      discountPercent: typedNumber(economics.discountPercent),
-      escalationPercent: typedNumber(economics.escalationPercent),
-      horizonYears: typedNumber(economics.horizonYears),
-    },
+    economics: economicsToInput(draft.economics),
     searchJobId,
   };
 }
@@ -53,7 +49,6 @@ const usualLossWPerKvar = 5;
 
 /** A stored plan, or the start of a new one, in the form. */
 export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
-  const { economics } = plan;
   return {
     name: plan.name,
     fields: plan.fields.map((field) => ({ motorId: field.motorId, fieldA: typed(constantFieldA(field) ?? undefined) })),
@@ -64,11 +59,7 @@ export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
     },
     workCost: typed(plan.workCost),
     yearlyUpkeep: typed(plan.yearlyUpkeep),
-    economics: {
-      discountPercent: typed(economics.discountPercent),
-      escalationPercent: typed(economics.escalationPercent),
-      horizonYears: typed(economics.horizonYears),
-    },
+    economics: economicsDraftOf(plan.economics),
   };
 }
 
@@ -82,8 +73,6 @@ export function planEntries(draft: PlanDraft, motorName: (motorId: number) => st
     'Detuning, %': draft.capacitors.detuningPercent,
     'Work, once': draft.workCost,
     'Upkeep a year': draft.yearlyUpkeep,
-    'Discount rate, %': draft.economics.discountPercent,
-    'Rise of prices, %': draft.economics.escalationPercent,
-    'Horizon, years': draft.economics.horizonYears,
+    ...economicsEntries(draft.economics),
   };
 }

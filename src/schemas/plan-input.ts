@@ -1,6 +1,7 @@
 import { z } from 'zod';
-import { calendarInput, plateInput } from './motor';
+import { calendarInput } from './motor';
 import { economicsInput, moneyInput, refineMoney } from './plan-money';
+import { plateInput } from './plate';
 import { spanNames, spanSetInput } from './plan-spans';
 
 const within = (least: number, most: number, words: string) =>
@@ -131,7 +132,7 @@ export const capitalOf = ({
   replacements,
 }: Pick<PlanFields, 'workCost' | 'fields' | 'banks' | 'replacements'>) =>
   workCost +
-  [...fields.map((field) => field.equipmentCost ?? 0), ...[...banks, ...replacements].map(({ cost = 0 }) => cost)].reduce(
+  [...fields.map((field) => field.equipmentCost ?? 0), ...[...banks, ...replacements].map(({ cost }) => cost)].reduce(
     (sum, cost) => sum + cost,
     0,
   );

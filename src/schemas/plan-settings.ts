@@ -14,6 +14,16 @@ export function controlsOf({ fieldA, controls }: Pick<MotorSetting, 'fieldA' | '
   return controls ?? [{ holds: 'field-current', fieldCurrentA: fieldA ?? NaN }];
 }
 
+/** The entry of each control that may go by span. */
+export const controlValueKey = {
+  'field-current': 'fieldCurrentA',
+  'field-voltage': 'fieldVoltageV',
+  'power-factor': 'powerFactor',
+  kvar: 'kvarDelivered',
+  voltage: 'setPu',
+  'plant-power-factor': 'powerFactor',
+} as const satisfies Record<FieldControl['holds'], string>;
+
 /** The constant field current of the year; null where a setting is no such thing. */
 export function constantFieldA(setting: Pick<MotorSetting, 'fieldA' | 'controls'>): number | null {
   const [first, ...rest] = controlsOf(setting);

@@ -1,19 +1,13 @@
 import { useFormContext, useWatch } from 'react-hook-form';
-import { capitalOf, type PlanInput } from '../../schemas/plan-input';
 import { assumptionKeys, type AssumptionKey } from '../../schemas/assumptions';
 import { assumptionFigure, assumptionUnit, assumptionWords } from '../ui/assumption-words';
 import { Button } from '../ui/Button';
 import { NumberField } from '../ui/Field';
 import { messageAt } from '../ui/form-errors';
-import { planDraftToInput, type PlanDraft } from './draft';
+import { capitalTyped, type PlanDraft } from './draft';
 import { ownTyped, usualRange } from './money-draft';
 
-/** The plan's own value of an assumption as it stands typed, all that is paid once counted as work. */
-function ownOf(key: AssumptionKey, draft: PlanDraft): number | undefined {
-  const { workCost = NaN, fields = [], banks = [], replacements = [] } = planDraftToInput(draft) as Partial<PlanInput>;
-  const capitalCost = capitalOf({ workCost, fields, banks, replacements });
-  return ownTyped(key, { ...draft, capitalCost });
-}
+const ownOf = (key: AssumptionKey, draft: PlanDraft) => ownTyped(key, { ...draft, capitalCost: capitalTyped(draft) });
 
 function RangeRow({ name, currency }: { name: AssumptionKey; currency: string }) {
   const { register, formState } = useFormContext<PlanDraft>();

@@ -115,7 +115,7 @@ function editionMotors(plan: PlanView, motors: MotorView[]): EditionMotor[] {
       fieldTodayA: motor.fieldTodayA,
       fieldPlanA: (field && constantFieldA(field)) ?? motor.fieldTodayA,
       fieldLimitA: planned.fieldLimitA,
-      fieldRatedA: motor.plate.fieldCurrentA,
+      fieldRatedA: motor.machine.ratedFieldCurrentA,
       armatureTodayA: planned.armatureTodayA,
       armaturePlanA: planned.armaturePlanA,
       armatureRatedA: motor.ratedCurrentA,

@@ -4,7 +4,7 @@ import { wordNumber } from '../../core/units';
 import { formatPayback } from '../../components/ui/format';
 import type { CostPart, Missing, PlanView, UnpricedPlan, YearView } from '../../schemas/plan';
 import { planDefaults, type PlanEconomics } from '../../schemas/plan-money';
-import { constantFieldA, type MotorSetting } from '../../schemas/plan-settings';
+import { constantFieldA } from '../../schemas/plan-settings';
 import { wholeYear } from '../../schemas/plan-spans';
 import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
@@ -25,9 +25,9 @@ import { loadOf } from './motors';
 import { actOf, standingAct } from './plan-acts';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
 import { appraisePlan, noCashFlow, planCashFlow, savingOf } from './plan-economics';
-import { fieldFault } from './plan-limits';
+import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
-import type { SpanYear } from './plan-spans';
+import { spanRules, type SpanYear } from './plan-spans';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -59,7 +59,7 @@ interface Year {
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
   const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
-  const faults = rows.map((row) => faultOf(motorSettings(row), motors));
+  const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
     standingAct,
@@ -113,16 +113,30 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
 }
 
 /** Why a stored plan cannot be offered any more; null where it can. */
-function faultOf(settings: MotorSetting[], motors: LoadedMotor[]): string | null {
-  for (const setting of settings) {
-    const motor = motors.find(({ row }) => row.id === setting.motorId);
+function faultOf(row: Plan, motors: LoadedMotor[], basis: PlanBasis, opened: OpenEngagement): string | null {
+  const { result: rules, fault } = attemptSync(() => spanRules(row.spans, spanYearOf(basis)));
+  if (fault !== null) return fault;
+  const { yearFrom: from, yearTo: to } = opened.engagement;
+  const year: LimitYear = { from, to, timeZone: basis.task.timeZone, set: row.spans, rules };
+  for (const setting of motorSettings(row)) {
+    const motor = motors.find((one) => one.row.id === setting.motorId);
     if (!motor) return 'It sets a motor that is no longer there.';
-    const limited = { name: motor.row.name, machine: motor.machine, limits: limitsOf(motor.machine) };
-    const fieldA = constantFieldA(setting);
-    const fault = fieldA === null ? null : fieldFault(limited, fieldA, motor.load.hours);
-    if (fault) return fault;
+    const { name, calendar } = motor.row;
+    const limits = limitsOf(motor.machine, motor.completed);
+    const words = storedFault({ name, machine: motor.machine, limits, calendar }, setting, year);
+    if (words) return words;
   }
   return null;
+}
+
+/** What is refused, in words; anything else is thrown on. */
+function attemptSync<Result>(work: () => Result): { result: Result; fault: null } | { result: null; fault: string } {
+  try {
+    return { result: work(), fault: null };
+  } catch (error) {
+    if (!(error instanceof ServiceError)) throw error;
+    return { result: null, fault: error.message };
+  }
 }
 
 const motorFacts = ({ row, machine, load }: LoadedMotor) => ({

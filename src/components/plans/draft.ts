@@ -1,25 +1,51 @@
-import type { PlanInput } from '../../schemas/plan';
+import type { SynchronousMotor } from '../../core/machine';
+import type { PlanInput } from '../../schemas/plan-input';
 import { typedNumber } from '../ui/typed-number';
+import {
+  bankDraftOf,
+  bankToInput,
+  replacementDraftOf,
+  replacementToInput,
+  type BankDraft,
+  type ReplacementDraft,
+} from './part-draft';
+import { modes, settingDraftOf, settingToInput, typed, valuesOf, type SettingDraft } from './setting-draft';
+import { spanCountOf, spanDraftOf, spansEntry, spansToInput, type SpanDraft } from './span-draft';
 
-/** A plan as it is typed; paths are those of `planInput`. Fields stay in the order of the motors. */
+/** A plan as it is typed. Faults stand at the paths of `planInput`. */
 export interface PlanDraft {
   name: string;
-  fields: { motorId: number; fieldA: string }[];
-  /** An empty size is no bank. */
-  capacitors: { kvar: string; lossWPerKvar: string; detuningPercent: string; shortCircuitKva: string };
-  capitalCost: string;
+  spans: SpanDraft;
+  /** In the order of the motors. */
+  settings: SettingDraft[];
+  banks: BankDraft[];
+  replacements: ReplacementDraft[];
+  workCost: string;
   yearlyUpkeep: string;
   economics: { discountPercent: string; escalationPercent: string; horizonYears: string };
 }
 
+/** What the form knows of the plant and its schedule. */
+export interface PlanPlant {
+  motors: { motorId: number; name: string; machine: SynchronousMotor }[];
+  /** Names of the schedule's seasons, in its order. */
+  seasons: string[];
+}
+
+const machineOf = ({ motors }: PlanPlant, motorId: number) =>
+  motors.find((motor) => motor.motorId === motorId)?.machine;
+
 /** What the schema is asked to read. */
-export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknown {
+export function planDraftToInput(draft: PlanDraft, plant: PlanPlant, searchJobId?: number): unknown {
   const { economics } = draft;
+  const count = spanCountOf(draft.spans, plant.seasons);
   return {
     name: draft.name,
-    fields: draft.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typedNumber(fieldA) })),
-    capacitors: bankToInput(draft.capacitors),
-    capitalCost: typedNumber(draft.capitalCost),
+    spans: spansToInput(draft.spans, plant.seasons),
+    fields: draft.settings.map((setting) => settingToInput(setting, count, machineOf(plant, setting.motorId))),
+    banks: draft.banks.map(bankToInput),
+    replacements: draft.replacements.map((one) => replacementToInput(one, count)),
+    workCost: typedNumber(draft.workCost),
     yearlyUpkeep: typedNumber(draft.yearlyUpkeep),
     economics: {
       discountPercent: typedNumber(economics.discountPercent),
@@ -30,37 +56,18 @@ export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknow
   };
 }
 
-/** A bank of 0 or no kvar is none. */
-function bankToInput(bank: PlanDraft['capacitors']): unknown {
-  const kvar = typedNumber(bank.kvar);
-  if (kvar === undefined || kvar === 0) return undefined;
-  return {
-    kvar,
-    lossWPerKvar: typedNumber(bank.lossWPerKvar),
-    detuningPercent: typedNumber(bank.detuningPercent),
-    shortCircuitKva: typedNumber(bank.shortCircuitKva),
-  };
-}
-
-/** Amperes as an operator reads them: a tenth at most, so that a solved value stays within its limit. */
-const typed = (value: number | undefined) => (value === undefined ? '' : String(Math.round(value * 1e6) / 1e6));
-
-/** Losses of a detuned bank with its reactors and contactors. Common practice, [W/kvar]. */
-const usualLossWPerKvar = 5;
-
 /** A stored plan, or the start of a new one, in the form. */
-export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
+export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>, plant: PlanPlant): PlanDraft {
   const { economics } = plan;
+  const spans = spanDraftOf(plan.spans);
+  const count = spanCountOf(spans, plant.seasons);
   return {
     name: plan.name,
-    fields: plan.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typed(fieldA) })),
-    capacitors: {
-      kvar: typed(plan.capacitors?.kvar),
-      lossWPerKvar: typed(plan.capacitors?.lossWPerKvar ?? usualLossWPerKvar),
-      detuningPercent: typed(plan.capacitors?.detuningPercent),
-      shortCircuitKva: typed(plan.capacitors?.shortCircuitKva),
-    },
-    capitalCost: typed(plan.capitalCost),
+    spans,
+    settings: plan.fields.map((setting) => settingDraftOf(setting, count, machineOf(plant, setting.motorId))),
+    banks: plan.banks.map(bankDraftOf),
+    replacements: plan.replacements.map((one) => replacementDraftOf(one, count)),
+    workCost: typed(plan.workCost),
     yearlyUpkeep: typed(plan.yearlyUpkeep),
     economics: {
       discountPercent: typed(economics.discountPercent),
@@ -70,16 +77,26 @@ export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
   };
 }
 
+const bankEntry = ({ steps, stepKvar, lossWPerKvar, detuningPercent, holdsPowerFactor, cost }: BankDraft) =>
+  `${steps} x ${stepKvar} kvar, ${lossWPerKvar} W/kvar, detuning ${detuningPercent || 'none'}, holds ${holdsPowerFactor || 'fixed'}, cost ${cost || '0'}`;
+
 /** Entries of a draft as text, with names, for comparing two versions. */
-export function planEntries(draft: PlanDraft, motorName: (motorId: number) => string): Record<string, string> {
+export function planEntries(draft: PlanDraft, plant: PlanPlant): Record<string, string> {
+  const nameOf = (motorId: number) =>
+    plant.motors.find((motor) => motor.motorId === motorId)?.name ?? `motor ${motorId}`;
+  const count = spanCountOf(draft.spans, plant.seasons);
+  const settings = draft.settings.map((setting) => {
+    const mode = modes.find(({ value }) => value === setting.holds);
+    const cost = setting.equipmentCost.trim() === '' ? '' : `, regulator ${setting.equipmentCost}`;
+    return [`${nameOf(setting.motorId)} holds`, `${mode?.label}: ${valuesOf(setting, count).join(', ')}${cost}`];
+  });
   return {
     Name: draft.name,
-    ...Object.fromEntries(draft.fields.map(({ motorId, fieldA }) => [`${motorName(motorId)} field, A`, fieldA])),
-    'Capacitors, kvar': draft.capacitors.kvar,
-    'Capacitor losses, W/kvar': draft.capacitors.lossWPerKvar,
-    'Detuning, %': draft.capacitors.detuningPercent,
-    'Short-circuit power, kVA': draft.capacitors.shortCircuitKva,
-    'Work, once': draft.capitalCost,
+    'Parts of the year': spansEntry(draft.spans, plant.seasons),
+    ...Object.fromEntries(settings),
+    Capacitors: draft.banks.map(bankEntry).join('; ') || 'none',
+    'New motors': draft.replacements.map(({ name, cost }) => `${name}, cost ${cost || '0'}`).join('; ') || 'none',
+    'Work, once': draft.workCost,
     'Upkeep a year': draft.yearlyUpkeep,
     'Discount rate, %': draft.economics.discountPercent,
     'Rise of prices, %': draft.economics.escalationPercent,

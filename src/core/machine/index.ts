@@ -43,3 +43,5 @@ export type { ControlledField } from './controlled-field';
 export { LIMIT_CODE, reactiveSupply } from './kvar-supply';
 export type { ReactiveSupply, TakenMany } from './kvar-supply';
 export { DEFAULT_FIELD_HOT_C, fieldResistanceAtOhm } from './field-temperature';
+export { cubicTable } from './cubic-table';
+export { goldenMinimum } from './roots';

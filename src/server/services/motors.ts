@@ -16,7 +16,7 @@ import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
 import { fieldWords } from '../presenters/field-words';
 import { limitsOf, presentMotor, storedMotor } from '../presenters/motor';
-import { fieldSettings } from '../presenters/plan';
+import { motorSettings } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { completePlate, machineOrThrow } from './nameplates';
 import { loadHoursOf, ruleLoadKw } from './shaft-load';
@@ -88,7 +88,7 @@ export async function removeMotor({ motor }: OpenMotor, { version }: { version: 
   await inTx(async () => {
     await refuseStale(motor, version, { version });
     const plans = await Plan.findAll({ where: { engagementId: motor.engagementId } });
-    const setting = plans.filter((plan) => fieldSettings(plan).some((field) => field.motorId === motor.id));
+    const setting = plans.filter((plan) => motorSettings(plan).some((field) => field.motorId === motor.id));
     if (setting.length > 0) {
       const named = setting.map((plan) => plan.name).join(', ');
       throw conflict(`${motor.name} is set by ${named}. Take it out of the plan first, or remove the plan.`);

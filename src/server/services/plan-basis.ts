@@ -1,13 +1,16 @@
 import { createHash } from 'node:crypto';
 import type { CompletedMotor, SynchronousMotor } from '../../core/machine';
+import type { SupplyView } from '../../schemas/supply';
 import { conflict } from '../errors';
 import type { Motor } from '../models/Motor';
 import { calculateYear } from '../workers/pool';
+import { actKey } from './plan-acts';
 import type { TaskAct, TaskBasis, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import { listMotors } from './motors';
 import { completePlate } from './nameplates';
 import { pricingInputs, type PricingInputs } from './pricing';
+import { supplyForTask, supplyOf } from './supplies';
 
 /** A motor's row with the machine its plate makes. */
 export interface PlanMotor {
@@ -21,7 +24,8 @@ export interface PlanBasis {
   pricing: PricingInputs;
   motors: PlanMotor[];
   task: TaskBasis;
-  /** Changes whenever readings, bills, tariff or a motor change. */
+  supply: SupplyView;
+  /** Changes whenever readings, bills, tariff, supply or a motor change. */
   fingerprint: string;
 }
 
@@ -44,7 +48,7 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
   if (motors.length === 0) {
     throw conflict('No motor is entered yet. Enter one at the station Motors.', { station: 'motors' });
   }
-  const pricing = await pricingInputs(opened);
+  const [pricing, supply] = await Promise.all([pricingInputs(opened), supplyOf(opened)]);
   const { scheduleText, periods, contract, history, given, load, meters, schedule } = pricing;
   const task: TaskBasis = {
     scheduleText,
@@ -55,12 +59,15 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
     given,
     load,
     meters,
-    motors: motors.map(({ row, machine }) => ({
+    ...supplyForTask(supply),
+    motors: motors.map(({ row, machine, completed }) => ({
       id: row.id,
       name: row.name,
       machine,
       calendar: row.calendar,
       fieldTodayA: row.fieldTodayA,
+      leastFieldA: completed.leastFieldA,
+      voltageBandPu: completed.voltageBandPu,
       behind: Math.max(
         0,
         opened.meters.findIndex(({ id }) => id === row.meterId),
@@ -69,17 +76,16 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
   };
   const ofMotors = motors.map(({ row }) => [row.id, row.version, row.updatedAt.getTime()]);
   const fingerprint = createHash('sha256')
-    .update(JSON.stringify([pricing.dataKey, ofMotors]))
+    .update(JSON.stringify([pricing.dataKey, ofMotors, supply]))
     .digest('hex');
-  return { pricing, motors, task, fingerprint };
+  return { pricing, motors, supply, task, fingerprint };
 }
 
 const cacheSize = 60;
 const shared = globalThis as typeof globalThis & { counterlagSettings?: Map<string, Promise<TaskSetting>> };
 const cache = (shared.counterlagSettings ??= new Map());
 
-const keyOf = (basis: PlanBasis, { fields, capacitors }: TaskAct) =>
-  `${basis.fingerprint} ${JSON.stringify([[...fields].sort((a, b) => a.motorId - b.motorId), capacitors])}`;
+const keyOf = (basis: PlanBasis, act: TaskAct) => `${basis.fingerprint} ${actKey(act)}`;
 
 /** Prices settings over the year; each is worked out once as long as nothing it hangs on changes. */
 export async function priceSettings(basis: PlanBasis, settings: TaskAct[]): Promise<TaskSetting[]> {

@@ -4,6 +4,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { packCarpet } from '@/components/charts/carpet';
 import { lightPalette } from '@/components/charts/palette';
 import { ledgerCsv } from '@/components/ui/ledger';
+import { investmentYears } from '@/core/economics';
 
 const borrowed = [
   'document',
@@ -281,17 +282,70 @@ describe('charts drawn without a browser', () => {
   });
 
   it('CashFlowChart draws spending below the line and saving above it', async () => {
-    const { CashFlowChart, cashFlowTable } = await import('@/components/charts/CashFlowChart');
-    const data = {
-      currency: 'USD',
-      years: [
-        { year: 0, flow: -100_000 },
-        { year: 1, flow: 60_000 },
-      ],
-    };
-    const svg = await draw(<CashFlowChart {...data} {...size} />);
+    const { CashFlowChart } = await import('@/components/charts/CashFlowChart');
+    const { cashFlowTable, stepsOf } = await import('@/components/charts/cash-flow');
+    // Saved 70,000 less upkeep 10,000: 60,000 remain, -40,000 so far, 5,000 a month.
+    const investment = { capitalCost: 100_000, saving: { demand: 70_000 }, growth: {}, yearlyUpkeep: 10_000 };
+    const years = investmentYears({ ...investment, discountRate: 0, years: 1 });
+    const svg = await draw(<CashFlowChart steps={stepsOf(years, 'years')} by="years" currency="USD" {...size} />);
     expect(words(svg)).toEqual(expect.arrayContaining(['\u2212100,000', '60,000']));
-    expect(cashFlowTable(data).rows.at(-1)?.cells.soFar).toBe(-40_000);
+    const table = cashFlowTable({ currency: 'USD', years }, 'years');
+    expect(table.columns.map(({ head }) => head)).toEqual(['Year', 'Work', 'Saved', 'Upkeep', 'Remains', 'So far']);
+    expect(table.rows.at(-1)?.cells).toMatchObject({
+      saving: 70_000,
+      upkeep: -10_000,
+      net: 60_000,
+      cumulative: -40_000,
+    });
+    const monthly = cashFlowTable({ currency: 'USD', years }, 'months');
+    expect(monthly.rows).toHaveLength(13);
+    expect(monthly.rows.at(-1)?.cells).toMatchObject({ step: '12', net: 5000, cumulative: -40_000 });
+    const months = await draw(<CashFlowChart steps={stepsOf(years, 'months')} by="months" currency="USD" {...size} />);
+    expect(words(months)).toContain('12');
+  });
+
+  it('RankingChart puts what, from and to, and the paybacks beside the bars', async () => {
+    const { RankingChart } = await import('@/components/charts/RankingChart');
+    const { rankingFinding, rankingTable } = await import('@/components/charts/ranking');
+    const work = {
+      name: 'The cost of the work',
+      unit: 'USD',
+      low: { words: '80,000', npv: 120_000, paybackYears: 1.25 },
+      high: { words: '130,000', npv: 70_000, paybackYears: 2 },
+    };
+    const hours = {
+      name: 'Operating hours',
+      unit: '% of last year',
+      low: { words: '94', npv: -5000, paybackYears: null },
+      high: { words: '107', npv: 40_000, paybackYears: 1.5 },
+    };
+    const data = { currency: 'USD', npv: 95_000, paybackYears: 1.6, rows: [work, hours] };
+    const svg = await draw(<RankingChart {...data} {...size} />);
+    expect(words(svg).map((one) => one.replaceAll('\u00a0', ' '))).toEqual(
+      expect.arrayContaining([
+        'The cost of the work',
+        '80,000 to 130,000 USD',
+        '15 to 24 months',
+        '18 months to never',
+      ]),
+    );
+    expect(rankingFinding(data).replaceAll('\u00a0', ' ')).toBe(
+      'The cost of the work moves the result most, from 70,000 USD to 120,000 USD in present value. Operating hours alone can make the plan a loss.',
+    );
+    expect(rankingTable(data).rows[1]?.cells).toMatchObject({
+      npvLow: -5000,
+      paybackLow: 'never',
+      paybackHigh: '18 months',
+    });
+  });
+
+  it('PaybackChart names where the reader’s own line is paid back', async () => {
+    const { PaybackChart } = await import('@/components/charts/PaybackChart');
+    const points = [0, 1, 2, 3].map((year) => ({ year, cumulative: -100 + 60 * year, yours: -100 + 50 * year }));
+    const data = { currency: 'USD', capitalCost: 120, incentive: 20, points, paybackYears: 5 / 3 };
+    const svg = await draw(<PaybackChart {...data} editionName="edition 1" yoursPaybackYears={2} {...size} />);
+    expect(words(svg)).toEqual(expect.arrayContaining(['yours: 24 months', 'paid back after 20 months']));
+    expect(words(svg).join(' ')).toContain('120\u00a0USD paid once, 20 of it a grant');
   });
 
   it('CarpetChart draws a year of quarter-hours with few nodes', async () => {

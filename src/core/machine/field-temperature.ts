@@ -1,5 +1,4 @@
-import { COPPER_ZERO_C, copperResistanceOhm } from './copper';
-import { requireRange } from './errors';
+import { copperResistanceOhm } from './copper';
 import type { SynchronousMotor } from './motor';
 
 /** Temperature that `fieldResistanceOhm` is taken to hold at when the motor's data name none: common practice for class 130 (B). [degC] */
@@ -12,10 +11,8 @@ export const DEFAULT_FIELD_HOT_C = 95;
  * @param fieldC  Temperature of the winding. [degC], > -234.5
  * @returns [ohm]
  * @throws {RangeError} naming the argument out of range
- * @source See `copperResistanceOhm`.
  */
 export function fieldResistanceAtOhm(motor: SynchronousMotor, fieldC: number): number {
-  requireRange(fieldC > -COPPER_ZERO_C && Number.isFinite(fieldC), 'fieldC', `> -${COPPER_ZERO_C}`, fieldC);
   const fromC = motor.fieldHotC ?? DEFAULT_FIELD_HOT_C;
   return copperResistanceOhm({ ohm: motor.fieldResistanceOhm, fromC, toC: fieldC });
 }

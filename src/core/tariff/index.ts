@@ -31,6 +31,9 @@
  * - `per` said by a version of a percentage belongs to the percentage; only `percentOf: removed` makes another charge of it.
  * - Misspelt contract inputs and given quantities are refused; names of history nobody knows are noted.
  */
+export { boundTotals, type BoundedBill, type BoundedTotals } from './bound/bound-totals';
+export { boxOfLoad, type LoadBox, type Registers } from './bound/load-box';
+export type { Range } from './bound/range';
 export { breakEvens, type BreakEven, type BreakEvens, type CheaperStretch } from './compare/break-evens';
 export { carryQuantities, type CarriedQuantities } from './compare/carry-quantities';
 export { averagePowerFactor, energiesOf, scaledLoad, shareToReach, withoutLagging } from './compare/vary-load';

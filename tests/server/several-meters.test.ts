@@ -144,8 +144,8 @@ describe('a bill of two meters', () => {
     const motor = await createMotor(await open(), motorOf(millMotor, {}, { meterId }));
     const price = async () => {
       const basis = await planBasis(await open());
-      const raised = { fields: [{ motorId: motor.id, fieldA: 160 }], capacitors: null };
-      const [standing, set] = await priceSettings(basis, [{ fields: [], capacitors: null }, raised]);
+      const controls = [{ motorId: motor.id, controls: [{ holds: 'field-current' as const, fieldCurrentA: 160 }] }];
+      const [standing, set] = await priceSettings(basis, [{}, { controls }]);
       return [standing, set].map((setting) => setting!.bills[0]!.quantities.kvarh!.value);
     };
     const [standing, behindSecond] = await price();

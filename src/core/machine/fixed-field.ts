@@ -1,3 +1,4 @@
+import { cubicTable } from './cubic-table';
 import { requireRange } from './errors';
 import { compileMotor } from './motor';
 import type { MotorModel, SynchronousMotor } from './motor';
@@ -8,9 +9,6 @@ import type { HeldField } from './solve';
 
 /** Error of a table's figures, as a share of rated kVA. */
 const TABLE_TOLERANCE = 2e-8;
-
-/** Least width of a table's piece, as a share of its range: where the open-circuit curve has a corner. */
-const LEAST_WIDTH = 1e-7;
 
 /** What a motor takes at a load. Load view. */
 export interface TakenPower {
@@ -87,66 +85,11 @@ function takenAtMany(model: MotorModel, held: HeldField, loads: Float64Array, ta
   const to = loads[loads.length - 1]!;
   requireRange(from >= 0 && Number.isFinite(to), 'shaftKw', 'finite and >= 0', from);
   if (to / model.baseKva > held.greatest) taken(to);
-  const table = buildTable(taken, from, to, TABLE_TOLERANCE * model.baseKva);
-  let piece = 0;
-  loads.forEach((shaftKw, i) => {
-    while (piece < table.length - 1 && shaftKw > table[piece]!.to) piece++;
-    const { from: start, scale, kvar: q, lossKw: l } = table[piece]!;
-    const t = (shaftKw - start) * scale;
-    kvar[i] = q[0] + t * (q[1] + t * (q[2] + t * q[3]));
-    inputKw[i] = shaftKw + l[0] + t * (l[1] + t * (l[2] + t * l[3]));
-  });
-  return { kvar, inputKw };
-}
-
-type Cubic = [number, number, number, number];
-
-interface Piece {
-  from: number;
-  to: number;
-  scale: number;
-  kvar: Cubic;
-  lossKw: Cubic;
-}
-
-/** Cubic pieces through four solved loads each, halved until three more solved loads agree. */
-function buildTable(taken: (shaftKw: number) => TakenPower, from: number, to: number, tolerance: number): Piece[] {
-  const pieces: Piece[] = [];
-  const least = (to - from) * LEAST_WIDTH;
-  const build = (lo: number, hi: number) => {
-    const at = (share: number) => {
-      const shaftKw = lo + (hi - lo) * share;
-      const { kvar, inputKw } = taken(Math.min(shaftKw, to));
-      return { kvar, loss: inputKw - shaftKw };
-    };
-    const knots = [0, 1 / 3, 2 / 3, 1].map(at);
-    const kvar = cubicThrough(knots.map((k) => k.kvar));
-    const lossKw = cubicThrough(knots.map((k) => k.loss));
-    const agrees = [1 / 6, 1 / 2, 5 / 6].every((t) => {
-      const solved = at(t);
-      return (
-        Math.abs(cubic(kvar, t) - solved.kvar) <= tolerance && Math.abs(cubic(lossKw, t) - solved.loss) <= tolerance
-      );
-    });
-    if (agrees || hi - lo <= least) pieces.push({ from: lo, to: hi, scale: 1 / (hi - lo), kvar, lossKw });
-    else {
-      build(lo, (lo + hi) / 2);
-      build((lo + hi) / 2, hi);
-    }
+  const sample = (shaftKw: number) => {
+    const point = taken(shaftKw);
+    return { a: point.kvar, b: point.inputKw - shaftKw };
   };
-  if (to > from) build(from, to);
-  return pieces;
-}
-
-function cubic(c: Cubic, t: number): number {
-  return c[0] + t * (c[1] + t * (c[2] + t * c[3]));
-}
-
-/** Cubic through values at 0, 1/3, 2/3 and 1. Derivation: Newton's forward differences with step 1/3. */
-function cubicThrough(values: number[]): Cubic {
-  const [a, b, c, d] = values as Cubic;
-  const first = b - a;
-  const second = (c - 2 * b + a) / 2;
-  const third = (d - 3 * c + 3 * b - a) / 6;
-  return [a, 3 * (first - second + 2 * third), 9 * (second - 3 * third), 27 * third];
+  const table = cubicTable(sample, from, to, TABLE_TOLERANCE * model.baseKva).read(loads);
+  for (let i = 0; i < loads.length; i++) inputKw[i] = table.b[i]! + loads[i]!;
+  return { kvar: table.a, inputKw };
 }

@@ -5,7 +5,7 @@ export { ASSUMED_SPLIT, DEFAULT_PULL_OUT_MARGIN, lossSplitKw, ratedCurrentA, rat
 export type { SynchronousMotor } from './motor';
 export { operatingPoint } from './operating-point';
 export type { Excitation, Limit, OperatingPoint } from './operating-point';
-export { capability } from './capability';
+export { capability, capabilityOverBand } from './capability';
 export type { Capability } from './capability';
 export { fieldCurrentAtPanelA, panelCurrentA } from './panel';
 export { capabilityCurve, leastLossField, unityField, vCurve } from './v-curve';
@@ -20,6 +20,8 @@ export type { AssumedSwing } from './sensitivity';
 export { fixField } from './fixed-field';
 export type { FixedField, TakenPower } from './fixed-field';
 export { leastField } from './least-field';
+export { reactiveRange } from './kvar-range';
+export type { RangeLimit, ReactiveRange } from './kvar-range';
 export { pqLimits } from './pq-limits';
 export type { PqLimits, PqPoint } from './pq-limits';
 export type {
@@ -32,3 +34,8 @@ export type {
   PowerFactorControl,
   VoltageControl,
 } from './field-control';
+export { controlField, heldFieldA } from './controlled-field';
+export type { ControlledField } from './controlled-field';
+export { LIMIT_CODE, reactiveSupply } from './kvar-supply';
+export type { ReactiveSupply, TakenMany } from './kvar-supply';
+export { COPPER_ZERO_C, DEFAULT_FIELD_HOT_C, fieldResistanceAtOhm } from './field-temperature';

@@ -21,6 +21,8 @@ export interface SynchronousMotor {
   ratedFieldCurrentA: number;
   /** Field resistance, hot. [ohm], >= 0 */
   fieldResistanceOhm: number;
+  /** Temperature of the field winding that `fieldResistanceOhm` holds at, 95 when absent. [degC] */
+  fieldHotC?: number;
   /** [unitless], (0, 1] */
   exciterEfficiency: number;
   /** `shaft` (default): the exciter's power comes through the armature; `bus`: it is drawn beside it. */
@@ -154,6 +156,8 @@ function checkMotor(motor: SynchronousMotor): void {
   requireNotNegative({ fieldResistanceOhm: motor.fieldResistanceOhm, raPu: motor.raPu });
   requireRange(motor.xqPu <= motor.xdPu, 'xqPu', 'at most xdPu', motor.xqPu);
   if (motor.xlPu !== undefined) requireNotNegative({ xlPu: motor.xlPu });
+  if (motor.fieldHotC !== undefined)
+    requireRange(motor.fieldHotC > 0 && Number.isFinite(motor.fieldHotC), 'fieldHotC', '> 0', motor.fieldHotC);
   if (motor.lossSplit) requireNotNegative({ ...motor.lossSplit });
   const limits = motor.limits ?? {};
   for (const [name, limit] of Object.entries({

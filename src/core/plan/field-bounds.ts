@@ -1,6 +1,6 @@
 import { capability, leastField } from '../machine';
 import type { Limit } from '../machine';
-import { distinctLoads } from './simulator';
+import { distinctLoads } from './distinct-loads';
 import type { PlanMotor } from './types';
 
 /** Field currents a motor may hold at every load it runs at. */

@@ -1,15 +1,30 @@
 export { shiftRegisters } from './registers';
 export { shaftLoadSeries } from './shaft-load';
-export type { DayKind, Grid, ShiftCalendar, ShiftRule } from './shaft-load';
+export type { ShiftCalendar, ShiftRule } from './shaft-load';
+export type { DayKind, Grid } from './local-days';
+export { MOST_SPANS, spanSeries } from './spans';
+export type { SpanRule } from './spans';
 export { createSimulator } from './simulator';
-export type { Simulator } from './simulator';
-export { applyActions, simulatePlan } from './simulate-plan';
-export type { MotorInPlan, MotorPlanResult, PlanResult } from './simulate-plan';
+export type { FixedSetup, SimulationTrace, Simulator } from './simulator';
+export { simulatePlan } from './simulate-plan';
+export type { BankPlanResult, PlanResult } from './simulate-plan';
+export type { MotorPlanResult, MotorSpanResult } from './motor-result';
+export type { BusVoltage } from './bus-voltage';
 export { fieldBounds } from './field-bounds';
 export type { FieldBounds } from './field-bounds';
 export { searchFields } from './search-fields';
 export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './search-fields';
-export type { CapacitorStep, PlanAction, PlanMotor, Plant, Upstream } from './types';
+export type {
+  BusSupply,
+  CapacitorBank,
+  InductionMotor,
+  PlanMotor,
+  PlanSetup,
+  Plant,
+  Replacement,
+  Spans,
+  Upstream,
+} from './types';
 export {
   combineLoads,
   correctiveKvar,

@@ -18,18 +18,6 @@ export interface PlanMotor {
   voltageBandPu?: { low: number; high: number };
 }
 
-/** A fixed capacitor step at the plant's bus, behind the first meter. */
-export interface CapacitorStep {
-  /** Delivered at rated voltage. [kvar], > 0 */
-  kvar: number;
-  /** Losses of the step, reactors included. [W/kvar], >= 0 */
-  lossWPerKvar: number;
-  /** Bus voltage over the step's rated voltage, 1 when absent: output goes with its square. [pu] */
-  voltagePu?: number;
-  /** UTC instant from which it is connected; always when absent. [ms] */
-  fromMs?: number;
-}
-
 /** Capacitors at the plant's bus: fixed, or switched in equal steps by a controller. */
 export interface CapacitorBank {
   /** Number of equal steps. Whole, >= 1 */
@@ -101,13 +89,6 @@ export interface PlanSetup {
   banks?: CapacitorBank[];
   replacements?: Replacement[];
 }
-
-/**
- * One thing a plan does. Settings that vary with season or follow a control mode are further kinds of this union; a motor
- * without an action stays as it stands.
- */
-export type PlanAction =
-  { kind: 'constant-field'; motorIndex: number; fieldCurrentA: number } | ({ kind: 'capacitor' } & CapacitorStep);
 
 /** The plant a plan is made for. */
 export interface Plant {

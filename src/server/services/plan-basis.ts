@@ -78,8 +78,10 @@ const cacheSize = 60;
 const shared = globalThis as typeof globalThis & { counterlagSettings?: Map<string, Promise<TaskSetting>> };
 const cache = (shared.counterlagSettings ??= new Map());
 
-const keyOf = (basis: PlanBasis, { fields, capacitors }: TaskAct) =>
-  `${basis.fingerprint} ${JSON.stringify([[...fields].sort((a, b) => a.motorId - b.motorId), capacitors])}`;
+const keyOf = (basis: PlanBasis, { spans, controls = [], banks, replacements }: TaskAct) => {
+  const ordered = [...controls].sort((a, b) => a.motorId - b.motorId);
+  return `${basis.fingerprint} ${JSON.stringify([spans, ordered, banks, replacements])}`;
+};
 
 /** Prices settings over the year; each is worked out once as long as nothing it hangs on changes. */
 export async function priceSettings(basis: PlanBasis, settings: TaskAct[]): Promise<TaskSetting[]> {

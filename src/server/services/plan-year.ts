@@ -68,10 +68,10 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
   const faults = rows.map((row) => faultOf(fieldSettings(row), motors));
   const priceable = rows.filter((_, index) => faults[index] === null);
-  const [standing, ...settings] = (await priceSettings(basis, [
-    { fields: [], capacitors: null },
-    ...priceable.map(actOf),
-  ])) as [TaskSetting, ...TaskSetting[]];
+  const [standing, ...settings] = (await priceSettings(basis, [{}, ...priceable.map(actOf)])) as [
+    TaskSetting,
+    ...TaskSetting[],
+  ];
   const year: Year = { opened, basis, motors, standing };
   const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
   return {
@@ -115,8 +115,13 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
 /** What a stored plan does. */
 function actOf(row: Plan): TaskAct {
   const bank = capacitorBank(row);
-  const capacitors = bank && { kvar: bank.kvar, lossWPerKvar: bank.lossWPerKvar };
-  return { fields: fieldSettings(row), capacitors };
+  return {
+    controls: fieldSettings(row).map(({ motorId, fieldA }) => ({
+      motorId,
+      controls: [{ holds: 'field-current', fieldCurrentA: fieldA }],
+    })),
+    banks: bank ? [{ steps: 1, stepKvar: bank.kvar, lossWPerKvar: bank.lossWPerKvar }] : [],
+  };
 }
 
 /** Why a stored plan cannot be offered any more; null where it can. */

@@ -37,12 +37,15 @@ export function priceYear({ basis, settings }: YearTask): TaskSetting[] {
   return settings.map((act) => priceSetting(ready, act));
 }
 
-function priceSetting({ basis, motors, pricing }: ReadyYear, { fields, capacitors }: TaskAct): TaskSetting {
-  const fieldOf = (index: number) => fields.find((one) => one.motorId === basis.motors[index]?.id)?.fieldA;
+function priceSetting({ basis, motors, pricing }: ReadyYear, { controls = [], banks = [] }: TaskAct): TaskSetting {
+  const fieldOf = (index: number) => {
+    const control = controls.find((one) => one.motorId === basis.motors[index]?.id)?.controls[0];
+    return control?.holds === 'field-current' ? control.fieldCurrentA : undefined;
+  };
   const result = simulatePlan({
     ...metersOf(basis),
     motors: motors.map((motor, index) => ({ ...motor, planFieldA: fieldOf(index) ?? motor.standingFieldA })),
-    capacitors: capacitors ? [capacitors] : [],
+    capacitors: banks.map(({ steps, stepKvar, lossWPerKvar }) => ({ kvar: steps * stepKvar, lossWPerKvar })),
   });
   const bills = pricing.bills(result.load);
   return {

@@ -1,7 +1,7 @@
 import type { MessagePort } from 'node:worker_threads';
 import type { BillingPeriod, LoadSeries } from '../../core/load';
-import type { SynchronousMotor } from '../../core/machine';
-import type { MotorPlanResult } from '../../core/plan';
+import type { FieldControl, SynchronousMotor } from '../../core/machine';
+import type { BusSupply, CapacitorBank, InductionMotor, MotorPlanResult, SpanRule, Upstream } from '../../core/plan';
 import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
 import type { SearchView } from '../../schemas/plan';
@@ -16,6 +16,11 @@ export interface TaskMotor {
   fieldTodayA: number;
   /** Position of the meter it stands behind. */
   behind: number;
+  /** Terminal voltage, 1 when absent. [pu] */
+  voltagePu?: number;
+  /** Limits of plans, as in `PlanMotor`. */
+  leastFieldA?: number;
+  voltageBandPu?: { low: number; high: number };
 }
 
 /** What a year is priced from, with its motors. */
@@ -30,15 +35,36 @@ export interface TaskBasis {
   /** Of each meter, where several are summed; `load` is their sum. */
   meters: LoadSeries[];
   motors: TaskMotor[];
+  /** Between the first meter and its bus; where not known, not computed. */
+  upstream?: Upstream;
+  supply?: BusSupply;
+  /** Local dates that count as holidays where spans name kinds of day. */
+  holidays?: string[];
 }
 
-/** Field currents by motor; a motor not named stays at today's. */
-export type TaskFields = { motorId: number; fieldA: number }[];
+/** What a motor is set to: one control a span, or one for all. */
+export interface TaskControls {
+  motorId: number;
+  controls: FieldControl[];
+}
 
-/** One way to act. */
+/** A new synchronous motor in place of an induction motor. */
+export interface TaskReplacement {
+  induction: InductionMotor;
+  machine: SynchronousMotor;
+  /** When it runs and at what shaft load, as the induction motor does. */
+  calendar: CalendarInput;
+  controls: FieldControl[];
+  behind?: number;
+}
+
+/** One way to act; what is not named stays as it stands. No lists at all is standing. */
 export interface TaskAct {
-  fields: TaskFields;
-  capacitors: { kvar: number; lossWPerKvar: number } | null;
+  /** Stretches with settings of their own, the first covers the rest; absent: the year is one. */
+  spans?: SpanRule[];
+  controls?: TaskControls[];
+  banks?: CapacitorBank[];
+  replacements?: TaskReplacement[];
 }
 
 export interface YearTask {

@@ -67,7 +67,7 @@ describe('leastField', () => {
         }
         fc.pre(
           found.fieldCurrentA < 0.999 * motor.ratedFieldCurrentA &&
-            found.fieldCurrentA > 1e-5 * motor.ratedFieldCurrentA,
+            operatingPoint(motor, { shaftKw, fieldCurrentA: found.fieldCurrentA * (1 + 1e-6) }).emfPu > 1e-5,
         );
         expect(operatingPoint(motor, { shaftKw, fieldCurrentA: found.fieldCurrentA * (1 + 1e-6) }).beyond).toEqual([]);
         let below: string[];

@@ -1,4 +1,5 @@
 import type { LoadSeries } from '../../../src/core/load';
+import type { FieldControl } from '../../../src/core/machine';
 import type { PlanMotor } from '../../../src/core/plan';
 import { buildMotor } from '../machine/build-motor';
 
@@ -33,4 +34,9 @@ export function buildPlanMotor(load: LoadSeries, overrides: Partial<PlanMotor> =
     standingFieldA: 105,
     ...overrides,
   };
+}
+
+/** One field current for the whole year. */
+export function field(fieldCurrentA: number): FieldControl[] {
+  return [{ holds: 'field-current', fieldCurrentA }];
 }

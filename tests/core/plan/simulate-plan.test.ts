@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { PullOutError, operatingPoint } from '../../../src/core/machine';
-import { applyActions, createSimulator, fieldBounds, shiftRegisters, simulatePlan } from '../../../src/core/plan';
+import { createSimulator, fieldBounds, shiftRegisters, simulatePlan } from '../../../src/core/plan';
 import { buildMotor } from '../machine/build-motor';
-import { buildLoad, buildPlanMotor } from './build-plant';
+import { buildLoad, buildPlanMotor, field } from './build-plant';
 
 const load = buildLoad(7);
 const planMotor = buildPlanMotor(load);
@@ -10,7 +10,7 @@ const at = (fieldCurrentA: number, shaftKw = 1200) => operatingPoint(planMotor.m
 
 describe('simulatePlan', () => {
   it('changes every running interval by what the motor takes beyond standing, the others not at all', () => {
-    const result = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 140 }] });
+    const result = simulatePlan({ load, motors: [planMotor] }, { controls: [field(140)] });
     const more = at(140).kvar - at(105).kvar;
     const loss = at(140).inputKw - at(105).inputKw;
     expect(more).toBeLessThan(-400);
@@ -36,7 +36,7 @@ describe('simulatePlan', () => {
   });
 
   it('changes nothing when the plan is standing', () => {
-    const result = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: planMotor.standingFieldA }] });
+    const result = simulatePlan({ load, motors: [planMotor] }, { controls: [field(planMotor.standingFieldA)] });
     expect(result.load).toEqual(load);
     expect(result.extraKwh).toBe(0);
     expect(result.motors[0]!.extraLossKwh).toBe(0);
@@ -44,25 +44,18 @@ describe('simulatePlan', () => {
 
   it('is the same change whether two motors are simulated together or one after the other', () => {
     const other = buildPlanMotor(load, { motor: buildMotor({ ratedFieldCurrentA: 80 }), standingFieldA: 50 });
-    const both = simulatePlan({
-      load,
-      motors: [
-        { ...planMotor, planFieldA: 120 },
-        { ...other, planFieldA: 60 },
-      ],
-    });
-    const first = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 120 }] });
-    const second = simulatePlan({ load: first.load, motors: [{ ...other, planFieldA: 60 }] });
+    const both = simulatePlan({ load, motors: [planMotor, other] }, { controls: [field(120), field(60)] });
+    const first = simulatePlan({ load, motors: [planMotor] }, { controls: [field(120)] });
+    const second = simulatePlan({ load: first.load, motors: [other] }, { controls: [field(60)] });
     both.load.kvarhLagging.forEach((kvarh, i) => expect(kvarh).toBeCloseTo(second.load.kvarhLagging[i]!, 8));
   });
 
   it('adds capacitor steps from their date, their output with the square of the voltage, and their losses', () => {
     const fromMs = load.startMs + 3 * 86_400_000;
-    const result = simulatePlan({
-      load,
-      motors: [],
-      capacitors: [{ kvar: 400, lossWPerKvar: 2, voltagePu: 1.05, fromMs }],
-    });
+    const result = simulatePlan(
+      { load, motors: [] },
+      { controls: [], banks: [{ steps: 1, stepKvar: 400, lossWPerKvar: 2, voltagePu: 1.05, fromMs }] },
+    );
     // 400 x 1.05^2 = 441 kvar, 0.882 kW.
     expect(result.load.kvarhLagging[3 * 96 - 1]).toBe(load.kvarhLagging[3 * 96 - 1]);
     expect(result.load.kvarhLagging[3 * 96 + 40]).toBeCloseTo(load.kvarhLagging[3 * 96 + 40]! - 441 / 4, 9);
@@ -72,7 +65,7 @@ describe('simulatePlan', () => {
 
   it('meters the change of transformer loss: R (S2^2 - S1^2)/kVA and X alike, S at the meter', () => {
     const upstream = { ratedKva: 7500, resistancePu: 0.008, reactancePu: 0.06 };
-    const result = simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 140 }], upstream });
+    const result = simulatePlan({ load, motors: [planMotor], upstream }, { controls: [field(140)] });
     const i = 50;
     const before = (load.kwh[i]! * 4) ** 2 + (load.kvarhLagging[i]! * 4) ** 2;
     const after = (result.load.kwh[i]! * 4) ** 2 + (result.load.kvarhLagging[i]! * 4) ** 2;
@@ -91,7 +84,7 @@ describe('simulatePlan', () => {
     for (const channel of [holed.kwh, holed.kvarhLagging, holed.kvarhLeading]) channel[40] = NaN;
     holed.quality[40] = 2;
     holed.quality[41] = 1;
-    const result = simulatePlan({ load: holed, motors: [{ ...buildPlanMotor(holed), planFieldA: 130 }] });
+    const result = simulatePlan({ load: holed, motors: [buildPlanMotor(holed)] }, { controls: [field(130)] });
     expect([result.load.kwh[40], result.load.kvarhLagging[40], result.load.kvarhLeading[40]]).toEqual([NaN, NaN, NaN]);
     expect([...result.load.quality.slice(39, 43)]).toEqual([0, 2, 1, 0]);
     expect(Number.isFinite(result.extraKwh)).toBe(true);
@@ -99,21 +92,21 @@ describe('simulatePlan', () => {
 
   it('takes an absent leading register as zero and says so', () => {
     const single = buildLoad(1, { kvarhLeading: new Float64Array(96).fill(NaN) });
-    const result = simulatePlan({ load: single, motors: [{ ...buildPlanMotor(single), planFieldA: 130 }] });
+    const result = simulatePlan({ load: single, motors: [buildPlanMotor(single)] }, { controls: [field(130)] });
     expect(result.notes.join(' ')).toMatch(/no leading register/);
     expect(result.load.kvarhLeading.every((kvarh) => kvarh >= 0)).toBe(true);
   });
 
   it('counts hours leading at the service point before and after', () => {
     const light = buildLoad(1, { kvarhLagging: new Float64Array(96).fill(50) });
-    const result = simulatePlan({ load: light, motors: [{ ...buildPlanMotor(light), planFieldA: 140 }] });
+    const result = simulatePlan({ load: light, motors: [buildPlanMotor(light)] }, { controls: [field(140)] });
     expect(result.hoursLeadingBefore).toBe(0);
     expect(result.hoursLeadingAfter).toBe(16);
   });
 
   it('gathers a submeter series of many loads without losing its highest, to 0.1 % of the loss', () => {
     const shaftKw = Float64Array.from(load.kwh, (_, i) => (i % 7 === 0 ? 0 : 600 + 800 * Math.abs(Math.sin(i * 0.37))));
-    const result = simulatePlan({ load, motors: [{ ...planMotor, shaftKw, planFieldA: 140 }] });
+    const result = simulatePlan({ load, motors: [{ ...planMotor, shaftKw }] }, { controls: [field(140)] });
     let expected = 0;
     for (const kw of shaftKw) if (kw > 0) expected += (at(140, kw).inputKw - at(105, kw).inputKw) / 4;
     expect(Math.abs(result.motors[0]!.extraLossKwh / expected - 1)).toBeLessThan(1e-3);
@@ -122,7 +115,7 @@ describe('simulatePlan', () => {
   });
 
   it('names the motor whose field does not hold its load', () => {
-    const run = () => simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 30 }] });
+    const run = () => simulatePlan({ load, motors: [planMotor] }, { controls: [field(30)] });
     expect(run).toThrow(PullOutError);
     expect(run).toThrow(/motors\[0\]: The shaft load of 1200 kW exceeds/);
   });
@@ -132,16 +125,20 @@ describe('simulatePlan', () => {
     [{ shaftKw: new Float64Array(672).fill(-1) }, /shaftKw\[0\] must be >= 0, got -1/],
     [{ shaftKw: new Float64Array(672).fill(NaN) }, /got NaN/],
   ])('refuses a shaft load that does not fit', (wrong, message) => {
-    expect(() => simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 120, ...wrong }] })).toThrow(message);
+    expect(() => simulatePlan({ load, motors: [{ ...planMotor, ...wrong }] }, { controls: [field(120)] })).toThrow(message);
   });
 
   it.each([
-    [{ kvar: 0, lossWPerKvar: 1 }, /kvar must be > 0/],
-    [{ kvar: 1, lossWPerKvar: -1 }, /lossWPerKvar/],
-    [{ kvar: 1, lossWPerKvar: 1, voltagePu: 3 }, /voltagePu/],
-    [{ kvar: 1, lossWPerKvar: 1, fromMs: NaN }, /fromMs must be an instant in ms, got NaN/],
-  ])('refuses the capacitor %j', (step, message) => {
-    expect(() => simulatePlan({ load, motors: [], capacitors: [step] })).toThrow(message);
+    [{ stepKvar: 0, lossWPerKvar: 1 }, /stepKvar must be > 0/],
+    [{ stepKvar: 1, lossWPerKvar: -1 }, /lossWPerKvar/],
+    [{ stepKvar: 1, lossWPerKvar: 1, voltagePu: 3 }, /voltagePu/],
+    [{ stepKvar: 1, lossWPerKvar: 1, fromMs: NaN }, /fromMs must be an instant in ms, got NaN/],
+    [{ stepKvar: 1, lossWPerKvar: 1, steps: 0 }, /steps must be a whole number/],
+    [{ stepKvar: 1, lossWPerKvar: 1, holdsPowerFactor: 1.2 }, /powerFactor must be in \(0, 1\]/],
+    [{ stepKvar: 1, lossWPerKvar: 1, behind: 1 }, /banks\[0\]\.behind must name one of 1 meters/],
+  ])('refuses the bank %j', (bank, message) => {
+    const run = () => simulatePlan({ load, motors: [] }, { controls: [], banks: [{ steps: 1, ...bank }] });
+    expect(run).toThrow(message);
   });
 
   it.each([
@@ -149,12 +146,15 @@ describe('simulatePlan', () => {
     [{ ratedKva: 1, resistancePu: -0.01, reactancePu: 0.06 }, /resistancePu/],
     [{ ratedKva: 1, resistancePu: 0.01, reactancePu: 6 }, /reactancePu/],
   ])('refuses upstream data %j', (upstream, message) => {
-    expect(() => simulatePlan({ load, motors: [], upstream })).toThrow(message);
+    expect(() => simulatePlan({ load, motors: [], upstream }, { controls: [] })).toThrow(message);
   });
 
   it('does not change its arguments', () => {
     const copy = buildLoad(7);
-    simulatePlan({ load, motors: [{ ...planMotor, planFieldA: 140 }], capacitors: [{ kvar: 10, lossWPerKvar: 1 }] });
+    simulatePlan(
+      { load, motors: [planMotor] },
+      { controls: [field(140)], banks: [{ steps: 1, stepKvar: 10, lossWPerKvar: 1 }] },
+    );
     expect(load).toEqual(copy);
   });
 });
@@ -162,28 +162,11 @@ describe('simulatePlan', () => {
 describe('createSimulator', () => {
   it('gives the same series however often and in whatever order fields are tried', () => {
     const simulator = createSimulator({ load, motors: [planMotor] });
-    const first = Float64Array.from(simulator.apply([130]).kvarhLagging);
-    simulator.apply([90]);
-    simulator.apply([105]);
-    expect(simulator.apply([130]).kvarhLagging).toEqual(first);
-    expect(() => simulator.apply([1, 2])).toThrow(/fieldsA must have 1 values/);
-  });
-});
-
-describe('applyActions', () => {
-  it('leaves motors without an action as they stand', () => {
-    const plan = applyActions({ load, motors: [planMotor, planMotor] }, [
-      { kind: 'constant-field', motorIndex: 1, fieldCurrentA: 130 },
-      { kind: 'capacitor', kvar: 300, lossWPerKvar: 3 },
-    ]);
-    expect(plan.motors.map((m) => m.planFieldA)).toEqual([105, 130]);
-    expect(plan.capacitors).toEqual([{ kvar: 300, lossWPerKvar: 3 }]);
-  });
-
-  it('refuses an action on a motor that is not there, or two on one', () => {
-    const action = { kind: 'constant-field' as const, motorIndex: 0, fieldCurrentA: 130 };
-    expect(() => applyActions({ load, motors: [] }, [action])).toThrow(/motorIndex must be below 0/);
-    expect(() => applyActions({ load, motors: [planMotor] }, [action, action])).toThrow(/named once/);
+    const first = Float64Array.from(simulator.apply([field(130)]).kvarhLagging);
+    simulator.apply([field(90)]);
+    simulator.apply([field(105)]);
+    expect(simulator.apply([field(130)]).kvarhLagging).toEqual(first);
+    expect(() => simulator.apply([field(1), field(2)])).toThrow(/controls must have 1 lists, one a motor, got 2/);
   });
 });
 

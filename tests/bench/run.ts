@@ -1,3 +1,4 @@
+import { benchBound } from './bound';
 import { benchIntake } from './intake';
 import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
@@ -33,6 +34,7 @@ async function main(): Promise<void> {
     benchRivals,
     benchMinuteYears,
     benchSearch,
+    benchBound,
     benchIntake,
     benchIntakeRows,
     benchIntakeBook,

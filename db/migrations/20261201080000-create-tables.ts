@@ -20,6 +20,7 @@ import { gapFillChecks, gapFillTables } from './tables/gap-fills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
 import { requestChecks, requestIndexes, requestTables, requestUniques } from './tables/requests';
+import { supplyTables } from './tables/supplies';
 
 /** Columns of the tables, in the order in which the tables can be made. */
 const tables: Record<string, Columns> = {
@@ -160,8 +161,9 @@ const tables: Record<string, Columns> = {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),
     name: text(),
+    spans: json(),
     actions: json(),
-    capital_cost_minor: whole(),
+    work_cost_minor: whole(),
     yearly_upkeep_minor: whole(),
     economics: json(),
     chosen: flag(false),
@@ -169,6 +171,7 @@ const tables: Record<string, Columns> = {
     ...version,
     ...stamps,
   },
+  ...supplyTables,
   jobs: {
     ...id,
     engagement_id: link('engagements', false, 'CASCADE'),

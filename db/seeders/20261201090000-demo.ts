@@ -5,7 +5,8 @@ import { rightsInput } from '../../src/schemas/client';
 import { engagementInput } from '../../src/schemas/engagement';
 import { hourInput, type HourStation } from '../../src/schemas/hour';
 import { searchFound } from '../../src/schemas/job';
-import { planDefaults } from '../../src/schemas/plan';
+import { planInput } from '../../src/schemas/plan-input';
+import { planDefaults } from '../../src/schemas/plan-money';
 import { demoAccounts } from '../../src/server/demo-accounts';
 import { actAs } from '../../src/server/db/context';
 import { getEnv } from '../../src/server/env';
@@ -145,14 +146,17 @@ async function writeToUtility(consultant: Actor, opened: OpenEngagement): Promis
 async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Promise<void> {
   const search = await ended(consultant, await startSearch(consultant, opened, { stepA: 2 }));
   const fields = searchFound(search)?.fields ?? [];
-  const plan = await createPlan(opened, {
-    name: 'Plan A',
-    fields: fields.map(({ motorId, fieldA }) => ({ motorId, fieldA })),
-    capitalCost: 61_500,
-    yearlyUpkeep: 1_800,
-    economics: { ...planDefaults },
-    searchJobId: search.id,
-  });
+  const plan = await createPlan(
+    opened,
+    planInput.parse({
+      name: 'Plan A',
+      fields: fields.map(({ motorId, fieldA }) => ({ motorId, fieldA })),
+      workCost: 61_500,
+      yearlyUpkeep: 1_800,
+      economics: { ...planDefaults },
+      searchJobId: search.id,
+    }),
+  );
   const found = await openPlan(consultant, plan.id);
   await choosePlan(found, { version: found.plan.version, chosen: true });
   await ended(consultant, await makeEdition(consultant, opened, plan.id));

@@ -1,5 +1,6 @@
 import type { JobProgress } from '../schemas/job';
-import type { PlanInput, SearchInput } from '../schemas/plan';
+import type { PlanInput } from '../schemas/plan-input';
+import type { SearchInput } from '../schemas/search';
 import { call } from './api';
 
 /** What the server answers to a saved plan: its row, not its prices. */

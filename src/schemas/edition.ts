@@ -1,21 +1,18 @@
 import { z } from 'zod';
 import type { AssumedValue } from './motor';
-import type {
-  AppraisalView,
-  CapacitorBank,
-  CashFlowMonth,
-  ChargeGroup,
-  PlanEconomics,
-  PlanField,
-  PlanView,
-} from './plan';
+import type { BankView, ChargeGroup, PlanField, PlanView, ReplacementView } from './plan';
+import type { AppraisalView, CashFlowMonth, PlanEconomics } from './plan-money';
+import type { SpanSet } from './plan-spans';
 
 /** What an edition says of a plan, or of the plant as it runs. Major units of the edition's currency. */
 export interface EditionPlan {
   name: string;
   fields: PlanField[];
-  /** A bank the plan adds; absent in editions frozen without this field. */
-  capacitors?: CapacitorBank | null;
+  /** How the year is parted for the fields; absent: it is whole. */
+  spans?: SpanSet;
+  /** Capacitors the plan adds, and new motors it brings; absent in editions frozen without them. */
+  banks?: BankView[];
+  replacements?: ReplacementView[];
   yearTotal: number;
   saving: number;
   reactiveCost: number;

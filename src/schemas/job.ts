@@ -1,4 +1,4 @@
-import type { SearchView } from './plan';
+import type { SearchView } from './search';
 
 /** What long work leaves behind: what a search found, the number of the edition that was made, or the file that was read. */
 export type JobResult = SearchView | { number: number } | { intakeId: number };

@@ -1,5 +1,10 @@
-import { z } from 'zod';
+import type { FieldControl } from '../core/machine';
 import type { AssumedValue } from './motor';
+import type { BankInput } from './plan-input';
+import type { AppraisalView, CashFlowMonth, PlanEconomics } from './plan-money';
+import type { MotorSetting } from './plan-settings';
+import type { SpanSet } from './plan-spans';
+import type { SearchView } from './search';
 
 export type ChargeGroup = 'energy' | 'demand' | 'reactive' | 'fixed' | 'adjustment' | 'tax';
 
@@ -26,29 +31,6 @@ export interface PricedBillView {
   notes: string[];
 }
 
-/** What a plan's money is worth, on the assumptions of its own form. */
-export interface AppraisalView {
-  simplePaybackYears: number | null;
-  discountedPaybackYears: number | null;
-  npv: number;
-  irr: number | null;
-  notes: string[];
-}
-
-export interface PlanEconomics {
-  discountPercent: number;
-  escalationPercent: number;
-  horizonYears: number;
-}
-
-/** One month of the cumulative cash flow; `low` and `high` hold eight of ten samples. Major units. */
-export interface CashFlowMonth {
-  month: number;
-  cumulative: number;
-  low?: number;
-  high?: number;
-}
-
 /** One motor at the standing setting and under the plan. Kvar delivered is positive when leading. */
 export interface PlanMotorView {
   motorId: number;
@@ -72,77 +54,52 @@ export interface PlanMotorView {
   hoursRunning: number;
   /** Running hours by the limit that lies nearest. */
   hoursNearest: { field: number; armature: number; pullOut: number };
+  /** Hours a regulator is kept at a limit by its limiters. */
+  hoursLimited: number;
   /** Hours beyond the limit broken longest; a plan on offer has none. */
   hoursBeyond: number;
 }
 
-/** A field current one motor is set to. */
-export interface FieldSetting {
-  motorId: number;
-  fieldA: number;
-}
-
-export interface PlanField extends FieldSetting {
+/** A motor's setting under a plan. */
+export interface PlanField extends MotorSetting {
   name: string;
   todayA: number;
-  /** What a brushless machine's panel shows at fieldA. */
-  panelA?: number;
+  /** What a brushless machine's panel shows, control by control; null where no field current is held. */
+  panelA?: (number | null)[];
 }
 
-/** Total of the year at one field current of one motor, the others held. Major units. */
-export interface CurvePoint {
-  fieldA: number;
-  total: number;
-  admissible: boolean;
-}
-
-export interface CostCurveView {
-  motorId: number;
-  name: string;
-  chosenA: number;
-  todayA: number;
-  /** Limit after and before the reserve. */
-  limitA: number;
-  ratedLimitA: number;
-  points: CurvePoint[];
-  /** Field currents round the chosen one within which the year moves by less than `toleranceAmount`. */
-  tolerance: { lowA: number; highA: number; amount: number } | null;
-}
-
-/** A fixed capacitor bank of a plan, and how it sits with the supply. */
-export interface CapacitorBank {
+/** Capacitors of a plan, and how they sit with the supply. */
+export interface BankView extends Omit<BankInput, 'cost'> {
+  /** All steps together. */
   kvar: number;
-  lossWPerKvar: number;
-  /** Reactors, per cent of the capacitive reactance; absent: none. */
-  detuningPercent?: number;
-  /** At the bank's bus; absent: not known, no resonance check. */
-  shortCircuitKva?: number;
+  /** Worst harmonic order of resonance over the steps, and the usual harmonics within half an order; null: not checked. */
+  resonance: { order: number; near: number[]; kvar: number } | null;
 }
 
-/** One action of a stored plan: a field current that is set, or a bank that is added. */
-export type PlanAction = ({ kind: 'field' } & FieldSetting) | ({ kind: 'capacitor' } & CapacitorBank);
-
-export interface CapacitorView extends CapacitorBank {
-  /** Harmonic order of resonance and the usual harmonics within half an order of it. */
-  resonance: { order: number; near: number[] } | null;
+/** A new motor in place of an induction motor. */
+export interface ReplacementView {
+  name: string;
+  inductionKw: number;
+  ratedKw: number;
+  controls: FieldControl[];
+  hoursRunning: number;
+  /** Mean while running, against the induction motor. */
+  kvarGained: number;
+  kwSaved: number;
 }
 
-/** What a search found, as stored with the plan made of it. */
-export interface SearchView {
-  fields: { motorId: number; name: string; fieldA: number; todayA: number }[];
-  yearTotal: number;
-  standingTotal: number;
-  saving: number;
-  priced: number;
-  /** Every combination was priced: there is no better setting at this step. */
-  exhaustive: boolean;
-  /** No setting is cheaper than the fields of today. */
-  leaveAlone: boolean;
-  stepA: number;
-  curves: CostCurveView[];
-  notes: string[];
-  /** What the search was made on; another fingerprint means it is stale. */
-  fingerprint: string;
+/** What a plan costs once, part by part. Major units. */
+export interface CostPart {
+  label: string;
+  amount: number;
+}
+
+/** The bus voltage as estimated, standing or with a plan. [pu of rated] */
+export interface VoltageView {
+  lowPu: number;
+  highPu: number;
+  /** Hours outside the allowed band; null where no band is known. */
+  hoursOutside: number | null;
 }
 
 /** A plan, or the plant as it runs now (id null), priced over the year. */
@@ -151,15 +108,20 @@ export interface PlanView {
   version: number;
   name: string;
   currency: string;
+  /** How the year is parted for the settings. */
+  spans: SpanSet;
   fields: PlanField[];
-  capacitors: CapacitorView | null;
+  banks: BankView[];
+  replacements: ReplacementView[];
   bills: PricedBillView[];
   yearTotal: number;
   /** Standing total minus this total; 0 for standing. */
   saving: number;
   reactiveCost: number;
   groupTotals: Record<ChargeGroup, number>;
+  /** Sum of `costParts`. */
   capitalCost: number;
+  costParts: CostPart[];
   yearlyUpkeep: number;
   economics: PlanEconomics;
   appraisal: AppraisalView;
@@ -172,6 +134,8 @@ export interface PlanView {
   /** Extra energy drawn by the motors over the year, and its cost at the mean energy price. */
   extraLossKwh: number;
   hoursLeading: { before: number; after: number };
+  /** null: the supply is not known well enough. */
+  voltage: VoltageView | null;
   /** "field, M-1 at 80 %". */
   nearestLimit: string;
   /** Power factor at the interval of greatest demand, per bill; the worst of them. `bill` is the day its period ends before. */
@@ -189,6 +153,7 @@ export interface UnpricedPlan {
   version: number;
   name: string;
   chosen: boolean;
+  spans: SpanSet;
   fields: PlanField[];
   reason: string;
 }
@@ -220,86 +185,3 @@ export interface Missing {
   what: string;
   remedy: string;
 }
-
-const money = z
-  .number({ error: 'Write an amount.' })
-  .min(0, 'Write an amount of 0 or more.')
-  .max(1e10, 'This amount is too large.');
-
-const capacitorInput = z.object({
-  kvar: z
-    .number({ error: 'Write the size of the bank in kvar.' })
-    .positive('The bank is larger than 0 kvar; leave it empty for none.')
-    .max(100_000, 'The bank is at most 100,000 kvar.'),
-  lossWPerKvar: z
-    .number({ error: 'Write the losses in watts per kvar.' })
-    .min(0, 'Losses lie between 0 and 20 W per kvar.')
-    .max(20, 'Losses lie between 0 and 20 W per kvar.'),
-  detuningPercent: z
-    .number({ error: 'Write the reactors in per cent, as 7.' })
-    .min(1, 'Detuning reactors lie between 1 and 25 %.')
-    .max(25, 'Detuning reactors lie between 1 and 25 %.')
-    .optional(),
-  shortCircuitKva: z
-    .number({ error: 'Write the short-circuit power in kVA.' })
-    .min(100, 'The short-circuit power lies between 100 and 10,000,000 kVA.')
-    .max(1e7, 'The short-circuit power lies between 100 and 10,000,000 kVA.')
-    .optional(),
-});
-
-/** A plan as its form sends it. Amounts in major units. */
-export const planInput = z.object({
-  name: z.string().trim().min(1, 'Give the plan a name.').max(80, 'A name has at most 80 characters.'),
-  fields: z
-    .array(
-      z.object({
-        motorId: z.number().int(),
-        fieldA: z
-          .number({ error: 'Write a field current in amperes.' })
-          .positive('The field current must be above 0 A.'),
-      }),
-    )
-    .max(40, 'A plan has at most 40 motors.'),
-  capacitors: capacitorInput.optional(),
-  capitalCost: money,
-  yearlyUpkeep: money,
-  economics: z.object({
-    discountPercent: z
-      .number({ error: 'Write the discount rate in per cent.' })
-      .min(0, 'The discount rate lies between 0 and 40 %.')
-      .max(40, 'The discount rate lies between 0 and 40 %.'),
-    escalationPercent: z
-      .number({ error: 'Write the yearly rise of prices in per cent.' })
-      .min(-20, 'The yearly rise lies between −20 and 30 %.')
-      .max(30, 'The yearly rise lies between −20 and 30 %.'),
-    horizonYears: z
-      .number({ error: 'Write the horizon in years.' })
-      .int('Write whole years.')
-      .min(1, 'The horizon lies between 1 and 30 years.')
-      .max(30, 'The horizon lies between 1 and 30 years.'),
-  }),
-  /** Job whose result the plan is made of. */
-  searchJobId: z.number().int().optional(),
-});
-export type PlanInput = z.output<typeof planInput>;
-
-/** A change of a plan carries the version that was seen. */
-export const planChangeInput = planInput.extend({ version: z.number().int() });
-export type PlanChangeInput = z.output<typeof planChangeInput>;
-
-export const planChoiceInput = z.object({ version: z.number().int(), chosen: z.boolean() });
-
-/** How the search is made. */
-export const searchInput = z.object({
-  stepA: z
-    .number({ error: 'Write the step of the field current in amperes.' })
-    .min(0.5, 'The step is at least 0.5 A: nobody sets a rheostat finer.')
-    .max(50, 'The step is at most 50 A.')
-    .default(2),
-});
-export type SearchInput = z.output<typeof searchInput>;
-
-export const planDefaults = { discountPercent: 8, escalationPercent: 0, horizonYears: 10 } as const;
-
-/** How far the figures of a plan are taken to scatter when its cash flow is sampled: one standard deviation. */
-export const cashFlowSpread = { savingPercent: 10, costPercent: 15, escalationPercentPoints: 1 } as const;

@@ -60,4 +60,5 @@ def main():
     print(json.dumps({"totals": totals, "ms": sorted(times)[10]}))
 
 
-main()
+if __name__ == "__main__":
+    main()

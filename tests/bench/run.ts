@@ -8,6 +8,7 @@ import { benchPricing } from './pricing';
 import { benchRepricing } from './repricing';
 import { benchRivals } from './rivals';
 import { benchSearch } from './search';
+import { benchSearchServer } from './search-server';
 import { benchServer } from './server';
 
 /** One measured figure: a ratio within this run, or a rate, with the limit it is held to where there is one. */
@@ -40,6 +41,7 @@ async function main(): Promise<void> {
     benchIntakeBook,
     benchKeep,
     benchIntakeMemory,
+    benchSearchServer,
     benchServer,
   ];
   for (const part of parts) {

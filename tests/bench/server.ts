@@ -1,21 +1,13 @@
 import { readFileSync } from 'node:fs';
 import autocannon, { type Result } from 'autocannon';
-import { demoAccounts } from '../../src/server/demo-accounts';
-import { startServerProcess, type ServerProcess } from '../setup/server-process';
+import { startServerProcess } from '../setup/server-process';
+import { signInCookie } from '../setup/sign-in';
 import type { Measured } from './run';
 
 /** Resident memory of the server process itself, children apart. [MB] */
 function residentMb(pid: number): number {
   const line = readFileSync(`/proc/${pid}/status`, 'utf8').match(/VmRSS:\s+(\d+) kB/);
   return Number(line?.[1] ?? NaN) / 1024;
-}
-
-async function signedInCookie({ origin }: ServerProcess): Promise<string> {
-  const body = new URLSearchParams({ email: 'tom@calder-vane.example', password: demoAccounts.password });
-  const response = await fetch(`${origin}/sign-in`, { method: 'POST', body, headers: { origin }, redirect: 'manual' });
-  const cookie = response.headers.getSetCookie().find((one) => one.startsWith('counterlag.sid='));
-  if (!cookie) throw new Error(`sign-in answered ${response.status} without a session`);
-  return cookie.split(';')[0] as string;
 }
 
 interface LoadResult {
@@ -40,7 +32,7 @@ async function load(url: string, cookie?: string): Promise<LoadResult> {
 export async function benchServer(): Promise<Measured[]> {
   const server = await startServerProcess();
   try {
-    const cookie = await signedInCookie(server);
+    const cookie = await signInCookie(server.origin, 'tom@calder-vane.example');
     const idle = residentMb(server.pid);
     const page = await load(`${server.origin}/engagements/KG-02/tariff`, cookie);
     const bare = await load(`${server.origin}/robots.txt`);

@@ -1,5 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { planInput } from '@/schemas/plan';
+import { planInput } from '@/schemas/plan-input';
 import { noLine } from '@/schemas/tariff';
 import type { ServiceError } from '@/server/errors';
 import { Motor } from '@/server/models/Motor';
@@ -45,7 +45,7 @@ const plan = (name: string) =>
   planInput.parse({
     name,
     fields: [{ motorId: station.millId, fieldA: 150 }],
-    capitalCost: 20_000,
+    workCost: 20_000,
     yearlyUpkeep: 0,
     economics: { discountPercent: 8, escalationPercent: 0, horizonYears: 10 },
   });

@@ -1,7 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { operatingPoint } from '@/core/machine';
 import { searchFound, type JobProgress, type JobResult } from '@/schemas/job';
-import { planInput } from '@/schemas/plan';
+import { planInput } from '@/schemas/plan-input';
 import type { ServiceError } from '@/server/errors';
 import { jobEvents } from '@/server/job-events';
 import { Job } from '@/server/models/Job';
@@ -150,7 +150,7 @@ describe('the search for the best field currents', () => {
     const input = planInput.parse({
       name: 'Found',
       fields: found.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA })),
-      capitalCost: 1000,
+      workCost: 1000,
       yearlyUpkeep: 0,
       economics: { discountPercent: 8, escalationPercent: 0, horizonYears: 10 },
       searchJobId: job.id,

@@ -7,7 +7,7 @@ import { Op } from 'sequelize';
 import { afterAll, describe, expect, it } from 'vitest';
 import { mailEditionInput } from '@/schemas/edition';
 import { motorInput } from '@/schemas/motor';
-import { planInput } from '@/schemas/plan';
+import { planInput } from '@/schemas/plan-input';
 import { inTx } from '@/server/db/tx';
 import { configureEnv } from '@/server/env';
 import { readJson } from '@/server/http';
@@ -137,8 +137,8 @@ describe('a plan that cannot be priced any more', () => {
     const stored = planInput.parse({
       name: 'Costly',
       fields: [{ motorId: millId, fieldA: 190 }],
-      capacitors: { kvar: 300, lossWPerKvar: 0.5, detuningPercent: 7 },
-      capitalCost: 61_500,
+      banks: [{ steps: 2, stepKvar: 150, lossWPerKvar: 0.5, detuningPercent: 7 }],
+      workCost: 61_500,
       yearlyUpkeep: 1_200,
       economics: { discountPercent: 6, escalationPercent: 2, horizonYears: 15 },
     });
@@ -149,8 +149,8 @@ describe('a plan that cannot be priced any more', () => {
     const year = await plansOf(opened);
     expect(year.unpriced.map((plan) => plan.name)).toEqual(['Costly']);
     const form = await planStart(actor, year, { plan: String(id), search: null });
-    const { capacitors, capitalCost, yearlyUpkeep, economics } = stored;
-    expect(form?.start).toMatchObject({ capacitors, capitalCost, yearlyUpkeep, economics });
+    const { banks, workCost, yearlyUpkeep, economics } = stored;
+    expect(form?.start).toMatchObject({ banks, workCost, yearlyUpkeep, economics });
     expect(form?.start.fields).toContainEqual({ motorId: millId, fieldA: 190 });
   });
 });

@@ -1,5 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { planDefaults, planInput, type PlanInput, type PlanView } from '@/schemas/plan';
+import type { PlanView } from '@/schemas/plan';
+import { planInput, type PlanInput } from '@/schemas/plan-input';
+import { planDefaults } from '@/schemas/plan-money';
 import type { ServiceError } from '@/server/errors';
 import { Plan } from '@/server/models/Plan';
 import { openEngagement } from '@/server/services/engagements';
@@ -28,7 +30,7 @@ const plan = (name: string, fields: PlanInput['fields'], rest: Partial<PlanInput
   planInput.parse({
     name,
     fields,
-    capitalCost: 20_000,
+    workCost: 20_000,
     yearlyUpkeep: 500,
     economics: { discountPercent: 8, escalationPercent: 0, horizonYears: 10 },
     ...rest,
@@ -174,7 +176,7 @@ describe('a priced plan', () => {
 
   it('at the fields of today costs what standing costs and never pays back', async () => {
     const same = [{ motorId: station.millId, fieldA: 109 }];
-    await createPlan(station.opened, plan('Same', same, { capitalCost: 0, yearlyUpkeep: 0 }));
+    await createPlan(station.opened, plan('Same', same, { workCost: 0, yearlyUpkeep: 0 }));
     const view = await named('Same');
     expect(view.saving).toBe(0);
     expect(view.paybackWords).toBe('never');
@@ -185,20 +187,18 @@ describe('a priced plan', () => {
 
 describe('capacitors in a plan', () => {
   it('are refused by the form without a size or with losses nobody builds', () => {
-    const base = { name: 'C', fields: [], capitalCost: 0, yearlyUpkeep: 0, economics: { ...planDefaults } };
-    const paths = (capacitors: unknown) =>
-      planInput.safeParse({ ...base, capacitors }).error?.issues.map((issue) => issue.path.join('.'));
-    expect(paths({ kvar: 0, lossWPerKvar: 5 })).toEqual(['capacitors.kvar']);
-    expect(paths({ kvar: 600, lossWPerKvar: 50 })).toEqual(['capacitors.lossWPerKvar']);
-    expect(paths({ kvar: 600, lossWPerKvar: 5 })).toBeUndefined();
+    const base = { name: 'C', fields: [], workCost: 0, yearlyUpkeep: 0, economics: { ...planDefaults } };
+    const paths = (bank: unknown) =>
+      planInput.safeParse({ ...base, banks: [bank] }).error?.issues.map((issue) => issue.path.join('.'));
+    expect(paths({ steps: 1, stepKvar: 0, lossWPerKvar: 5 })).toEqual(['banks.0.stepKvar']);
+    expect(paths({ steps: 2, stepKvar: 300, lossWPerKvar: 50 })).toEqual(['banks.0.lossWPerKvar']);
+    expect(paths({ steps: 2, stepKvar: 300, lossWPerKvar: 5 })).toBeUndefined();
   });
 
   it('draw their losses and resonate at the root of short-circuit power over kvar', async () => {
-    const capacitors = { kvar: 600, lossWPerKvar: 5, shortCircuitKva: 15_000 };
-    await createPlan(station.opened, plan('C', [], { capacitors }));
+    const banks = [{ name: '', steps: 1, stepKvar: 600, lossWPerKvar: 5, cost: 0 }];
+    await createPlan(station.opened, plan('C', [], { banks }));
     const view = await named('C');
-    // h = sqrt(15,000 / 600) = 5, at the fifth harmonic
-    expect(view.capacitors?.resonance).toEqual({ order: 5, near: [5] });
     expect(view.fields.every((field) => field.fieldA === field.todayA)).toBe(true);
     const { standing } = await plansOf(station.opened);
     const energyOf = (one: PlanView) => one.groupTotals.energy;
@@ -221,7 +221,7 @@ describe('changing, choosing and removing a plan', () => {
     expect(error).toMatchObject({ status: 409, code: 'stale' });
     expect(error.details).toMatchObject({
       mine: { fields: [{ fieldA: 160 }] },
-      theirs: { version: 1, fields: [{ fieldA: 155 }], capitalCost: 20_000 },
+      theirs: { version: 1, fields: [{ fieldA: 155 }], workCost: 20_000 },
     });
   });
 

@@ -76,12 +76,12 @@ describe('what a plan does', () => {
   });
 
   it('names capacitors with their caution, in report and letter', () => {
-    const capacitors = { kvar: 900, lossWPerKvar: 0.5 };
-    const alone = edition({ capacitors, fields: base.plan.fields.map((one) => ({ ...one, fieldA: one.todayA })) });
+    const banks = [{ name: '', steps: 3, stepKvar: 300, kvar: 900, lossWPerKvar: 0.5, resonance: null }];
+    const alone = edition({ banks, fields: base.plan.fields.map((one) => ({ ...one, fieldA: one.todayA })) });
     expect(plain(answer(alone))).toMatch(/^900 kvar of capacitors can cut your power bills by 60,000 USD a year/);
     expect(plain(toDo(alone))).toMatch(/Add 900 kvar of capacitors\. Capacitors can resonate with harmonics/);
     expect(letterOf(alone)).toContain('Capacitors can resonate with harmonics');
-    const both = edition({ capacitors });
+    const both = edition({ banks });
     expect(plain(answer(both))).toMatch(/^One motor you already own and 900 kvar of capacitors can cut/);
     expect(toDo(both)).not.toContain('no capacitors are bought');
     expect(toDo(base)).toContain('no capacitors are bought');

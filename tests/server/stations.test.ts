@@ -1,6 +1,6 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import { addDays, addMonths, localDateStartMs } from '@/core/load';
-import { planDefaults } from '@/schemas/plan';
+import { planDefaults } from '@/schemas/plan-money';
 import { inTx } from '@/server/db/tx';
 import { Edition } from '@/server/models/Edition';
 import type { Engagement } from '@/server/models/Engagement';
@@ -140,7 +140,7 @@ describe('engagementFrame', () => {
         engagementId,
         name: 'A',
         actions: [],
-        capitalCostMinor: 0,
+        workCostMinor: 0,
         yearlyUpkeepMinor: 0,
         economics: { ...planDefaults },
         search: null,

@@ -42,8 +42,14 @@ function nodeFlags(): string[] {
   return scripts.demo.split(' ').filter((word) => word.startsWith('--'));
 }
 
-/** Starts `cli.mjs demo` from the build on free ports and waits until it answers. */
-export async function startServerProcess(): Promise<ServerProcess> {
+/**
+ * Starts `cli.mjs demo` from the build on free ports and waits until it answers.
+ *
+ * @param more.flags  further flags of Node, `more.env` further variables of its environment
+ */
+export async function startServerProcess(
+  more: { flags?: string[]; env?: Record<string, string> } = {},
+): Promise<ServerProcess> {
   const cli = path.resolve('dist/server/cli.mjs');
   if (!existsSync(cli)) throw new Error('There is no build. Run `npm run build` before these tests.');
   const dataDir = mkdtempSync(path.join(tmpdir(), 'counterlag-built-'));
@@ -51,12 +57,13 @@ export async function startServerProcess(): Promise<ServerProcess> {
   const origin = `http://127.0.0.1:${port}`;
   const env = {
     ...process.env,
+    ...more.env,
     PORT: String(port),
     SMTP_PORT: String(smtpPort),
     APP_ORIGIN: origin,
     NODE_ENV: 'production',
   };
-  const child = spawn(process.execPath, [...nodeFlags(), cli, 'demo', dataDir], {
+  const child = spawn(process.execPath, [...nodeFlags(), ...(more.flags ?? []), cli, 'demo', dataDir], {
     env,
     stdio: ['ignore', 'pipe', 'pipe'],
   });

@@ -1,6 +1,6 @@
 import { useMemo, useState } from 'react';
 import { appraise, cashFlow } from '../../core/economics';
-import type { CashFlowMonth, PlanEconomics } from '../../schemas/plan';
+import type { CashFlowMonth, PlanEconomics } from '../../schemas/plan-money';
 import type { PaybackData } from '../charts/payback';
 import { PaybackFigure } from '../charts/PaybackChart';
 import { paidBackSentence } from '../report/words';

@@ -1,6 +1,6 @@
 import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
-import { FormProvider, useForm } from 'react-hook-form';
+import { FormProvider, useForm, useFormContext } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { changeMotor, createMotor, removeMotor } from '../../client/motors';
@@ -13,10 +13,19 @@ import { StaleCompare, type StaleDifference } from '../ui/StaleCompare';
 import { CalendarFields } from './CalendarFields';
 import { draftEntries, draftOf, draftToInput, emptyDraft, entryLabels, type MotorDraft } from './draft';
 import { draftResolver } from '../ui/form-errors';
-import { DataSheetFields, LimitFields, PlateFields, useEntry } from './PlateFields';
+import { DataSheetFields, LimitFields } from './MachineFields';
+import { FieldFields, PlateFields, useEntry } from './PlateFields';
 
 /** What the server keeps, as it comes with a 409. */
-type StoredMotor = Omit<MotorInput, 'fieldReadAt'> & { version: number };
+type StoredMotor = MotorInput & { version: number };
+
+/** A motor's view as its form holds it: today's field of a brushless machine as its panel shows it. */
+const asEntered = (motor: MotorView) =>
+  draftOf({
+    ...motor,
+    fieldTodayA: motor.panel?.todayA ?? motor.fieldTodayA,
+    fieldReadAt: motor.panel ? 'panel' : 'field',
+  });
 
 export interface MotorFormProps {
   code: string;
@@ -34,6 +43,8 @@ function differences(mine: MotorDraft, theirs: StoredMotor): StaleDifference[] {
 
 function SettingFields({ meters }: Pick<MotorFormProps, 'meters'>) {
   const entry = useEntry();
+  const { watch } = useFormContext<MotorDraft>();
+  const brushless = watch('plate.exciterKind') === 'brushless';
   return (
     <fieldset>
       <legend>Setting today</legend>
@@ -46,14 +57,16 @@ function SettingFields({ meters }: Pick<MotorFormProps, 'meters'>) {
           />
         )}
         <NumberField {...entry('fieldTodayA')} unit="A" hint="At its usual load, read at the panel" />
-        <SelectField
-          {...entry('fieldReadAt')}
-          label="Read at"
-          options={[
-            { value: 'field', label: 'the motor’s own field' },
-            { value: 'panel', label: 'the exciter’s field (brushless)' },
-          ]}
-        />
+        {brushless && (
+          <SelectField
+            {...entry('fieldReadAt')}
+            label="Read at"
+            options={[
+              { value: 'panel', label: 'the panel: the exciter’s field' },
+              { value: 'field', label: 'the motor’s own field' },
+            ]}
+          />
+        )}
       </div>
     </fieldset>
   );
@@ -61,7 +74,7 @@ function SettingFields({ meters }: Pick<MotorFormProps, 'meters'>) {
 
 function useMotorForm({ code, motor }: MotorFormProps) {
   const form = useForm<MotorDraft>({
-    defaultValues: motor ? draftOf(motor) : emptyDraft(),
+    defaultValues: motor ? asEntered(motor) : emptyDraft(),
     resolver: draftResolver<MotorDraft>(motorInput, draftToInput),
   });
   const kept = useDraft<MotorDraft>(`motor:${code}:${motor?.id ?? 'new'}`, form);
@@ -138,6 +151,7 @@ function Form(props: MotorFormProps) {
           <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />
         )}
         <PlateFields />
+        <FieldFields />
         <DataSheetFields />
         <LimitFields />
         <CalendarFields />

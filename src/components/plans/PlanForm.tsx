@@ -5,14 +5,15 @@ import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { changePlan, createPlan, removePlan } from '../../client/plans';
 import { Queries } from '../../client/queries';
-import { planInput, type PlanInput } from '../../schemas/plan';
+import { planInput, type PlanInput } from '../../schemas/plan-input';
 import { draftResolver, messageAt } from '../ui/form-errors';
 import { Button, ButtonLink } from '../ui/Button';
 import { Field, NumberField } from '../ui/Field';
 import { Notice } from '../ui/Notice';
 import { StaleCompare } from '../ui/StaleCompare';
 import { planDraftOf, planDraftToInput, planEntries, type PlanDraft } from './draft';
-import { amperes } from './words';
+import { amperes } from '../ui/setting-words';
+import { MoneyFields } from './MoneyFields';
 
 /** What the form says of a motor beside its field current. */
 export interface FormMotor {
@@ -67,7 +68,7 @@ function usePlanForm({ code, start, plan, searchJobId }: PlanFormProps) {
   return { form, kept, version, stored, save, submit, loadTheirs };
 }
 
-function PlanFields({ motors, currency }: Pick<PlanFormProps, 'motors' | 'currency'>) {
+function PlanFields({ motors }: Pick<PlanFormProps, 'motors'>) {
   const { register, formState } = useFormContext<PlanDraft>();
   const fault = (path: string) => messageAt(formState.errors, path);
   return (
@@ -84,37 +85,6 @@ function PlanFields({ motors, currency }: Pick<PlanFormProps, 'motors' | 'curren
             error={fault(`fields.${index}.fieldA`)}
           />
         ))}
-        <NumberField
-          label="Work, once"
-          unit={currency}
-          hint="Visit, tests, protection review, new regulators"
-          {...register('capitalCost')}
-          error={fault('capitalCost')}
-        />
-        <NumberField
-          label="Upkeep a year"
-          unit={currency}
-          {...register('yearlyUpkeep')}
-          error={fault('yearlyUpkeep')}
-        />
-        <NumberField
-          label="Discount rate"
-          unit="% a year"
-          {...register('economics.discountPercent')}
-          error={fault('economics.discountPercent')}
-        />
-        <NumberField
-          label="Rise of power prices"
-          unit="% a year"
-          {...register('economics.escalationPercent')}
-          error={fault('economics.escalationPercent')}
-        />
-        <NumberField
-          label="Horizon"
-          unit="years"
-          {...register('economics.horizonYears')}
-          error={fault('economics.horizonYears')}
-        />
       </div>
     </>
   );
@@ -152,13 +122,6 @@ function CapacitorFields() {
               hint="5.67, 7 or 14; empty for none"
               {...register('capacitors.detuningPercent')}
               error={fault('capacitors.detuningPercent')}
-            />
-            <NumberField
-              label="Short-circuit power at the bank"
-              unit="kVA"
-              hint="For the check of resonance; empty if not known"
-              {...register('capacitors.shortCircuitKva')}
-              error={fault('capacitors.shortCircuitKva')}
             />
           </>
         )}
@@ -218,8 +181,9 @@ function Form(props: PlanFormProps) {
         {kept.restored && (
           <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />
         )}
-        <PlanFields motors={motors} currency={currency} />
+        <PlanFields motors={motors} />
         <CapacitorFields />
+        <MoneyFields currency={currency} />
         {stored && (
           <StaleCompare
             what={stored.name}

@@ -5,14 +5,15 @@ import { cancelJob, useJob } from '../../client/jobs';
 import { startSearch } from '../../client/plans';
 import { Queries } from '../../client/queries';
 import { searchFound } from '../../schemas/job';
-import { searchInput, type SearchView } from '../../schemas/plan';
+import { searchInput, type SearchView } from '../../schemas/search';
 import { Button, ButtonLink } from '../ui/Button';
 import { NumberField } from '../ui/Field';
 import { formatCount } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { Progress } from '../ui/Progress';
 import { typedNumber } from '../ui/typed-number';
-import { amperes, fieldWords, searchSentence } from './words';
+import { amperes, settingsWords } from '../ui/setting-words';
+import { searchSentence } from './words';
 
 export interface SearchPanelProps {
   code: string;
@@ -42,7 +43,8 @@ function Found({
       title={searchSentence(found.saving, found.leaveAlone, currency)}
     >
       <span>
-        {fieldWords(found.fields)}. {formatCount(found.priced, 'setting')} priced in steps of {amperes(found.stepA)}
+        {settingsWords(found.fields, { by: 'year' })}. {formatCount(found.priced, 'setting')} priced in steps of{' '}
+        {amperes(found.stepA)}
         {found.exhaustive ? ', every one there is.' : '.'}
       </span>
       {found.notes.map((note) => (

@@ -1,10 +1,11 @@
-import type { PricedBillView, CostCurveView, PlanView, SearchView, YearView } from '../../schemas/plan';
+import type { PlanView, PricedBillView, YearView } from '../../schemas/plan';
+import type { CostCurveView, SearchView } from '../../schemas/search';
 import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
 import type { CashFlowData } from '../charts/CashFlowChart';
 import type { CostCurveData } from '../charts/CostCurveChart';
 import type { PaybackData } from '../charts/payback';
 import { formatBillName } from '../ui/format';
-import { amperes } from './words';
+import { amperes } from '../ui/setting-words';
 
 const drawnGroups = new Set(['demand', 'reactive']);
 const drawnTotal = (bill: PricedBillView) =>

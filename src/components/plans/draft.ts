@@ -1,4 +1,5 @@
-import type { PlanInput } from '../../schemas/plan';
+import { constantFieldA } from '../../schemas/plan-settings';
+import type { PlanInput } from '../../schemas/plan-input';
 import { typedNumber } from '../ui/typed-number';
 
 /** A plan as it is typed; paths are those of `planInput`. Fields stay in the order of the motors. */
@@ -6,8 +7,8 @@ export interface PlanDraft {
   name: string;
   fields: { motorId: number; fieldA: string }[];
   /** An empty size is no bank. */
-  capacitors: { kvar: string; lossWPerKvar: string; detuningPercent: string; shortCircuitKva: string };
-  capitalCost: string;
+  capacitors: { kvar: string; lossWPerKvar: string; detuningPercent: string };
+  workCost: string;
   yearlyUpkeep: string;
   economics: { discountPercent: string; escalationPercent: string; horizonYears: string };
 }
@@ -18,8 +19,8 @@ export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknow
   return {
     name: draft.name,
     fields: draft.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typedNumber(fieldA) })),
-    capacitors: bankToInput(draft.capacitors),
-    capitalCost: typedNumber(draft.capitalCost),
+    banks: bankToInput(draft.capacitors),
+    workCost: typedNumber(draft.workCost),
     yearlyUpkeep: typedNumber(draft.yearlyUpkeep),
     economics: {
       discountPercent: typedNumber(economics.discountPercent),
@@ -33,13 +34,15 @@ export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknow
 /** A bank of 0 or no kvar is none. */
 function bankToInput(bank: PlanDraft['capacitors']): unknown {
   const kvar = typedNumber(bank.kvar);
-  if (kvar === undefined || kvar === 0) return undefined;
-  return {
-    kvar,
-    lossWPerKvar: typedNumber(bank.lossWPerKvar),
-    detuningPercent: typedNumber(bank.detuningPercent),
-    shortCircuitKva: typedNumber(bank.shortCircuitKva),
-  };
+  if (kvar === undefined || kvar === 0) return [];
+  return [
+    {
+      steps: 1,
+      stepKvar: kvar,
+      lossWPerKvar: typedNumber(bank.lossWPerKvar),
+      detuningPercent: typedNumber(bank.detuningPercent),
+    },
+  ];
 }
 
 /** Amperes as an operator reads them: a tenth at most, so that a solved value stays within its limit. */
@@ -53,14 +56,13 @@ export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
   const { economics } = plan;
   return {
     name: plan.name,
-    fields: plan.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typed(fieldA) })),
+    fields: plan.fields.map((field) => ({ motorId: field.motorId, fieldA: typed(constantFieldA(field) ?? undefined) })),
     capacitors: {
-      kvar: typed(plan.capacitors?.kvar),
-      lossWPerKvar: typed(plan.capacitors?.lossWPerKvar ?? usualLossWPerKvar),
-      detuningPercent: typed(plan.capacitors?.detuningPercent),
-      shortCircuitKva: typed(plan.capacitors?.shortCircuitKva),
+      kvar: typed(plan.banks[0] && plan.banks[0].steps * plan.banks[0].stepKvar),
+      lossWPerKvar: typed(plan.banks[0]?.lossWPerKvar ?? usualLossWPerKvar),
+      detuningPercent: typed(plan.banks[0]?.detuningPercent),
     },
-    capitalCost: typed(plan.capitalCost),
+    workCost: typed(plan.workCost),
     yearlyUpkeep: typed(plan.yearlyUpkeep),
     economics: {
       discountPercent: typed(economics.discountPercent),
@@ -78,8 +80,7 @@ export function planEntries(draft: PlanDraft, motorName: (motorId: number) => st
     'Capacitors, kvar': draft.capacitors.kvar,
     'Capacitor losses, W/kvar': draft.capacitors.lossWPerKvar,
     'Detuning, %': draft.capacitors.detuningPercent,
-    'Short-circuit power, kVA': draft.capacitors.shortCircuitKva,
-    'Work, once': draft.capitalCost,
+    'Work, once': draft.workCost,
     'Upkeep a year': draft.yearlyUpkeep,
     'Discount rate, %': draft.economics.discountPercent,
     'Rise of prices, %': draft.economics.escalationPercent,

@@ -1,5 +1,7 @@
 import { addDays } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
+import { constantFieldA } from '../../schemas/plan-settings';
+import { settingValueWords } from '../ui/setting-words';
 import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
 import { formatAmount, formatBillName, formatDay, formatNumber } from '../ui/format';
@@ -25,7 +27,7 @@ export function plansTable(year: YearView, shownId: number | null): LedgerData {
       unit: 'A',
       cell: (plan) => fieldCell(plan, motorId),
     })),
-    ...(year.plans.some((plan) => plan.capacitors) ? bankEntries : []),
+    ...(year.plans.some((plan) => plan.banks.length > 0) ? bankEntries : []),
     { label: 'pf at peak, worst bill', unit: '', cell: pfCell },
     ...groupNames
       .filter(([group]) => [year.standing, ...year.plans].some((plan) => plan.groupTotals[group] !== 0))
@@ -67,17 +69,21 @@ const keyOf = (plan: PlanView) => `plan-${plan.id ?? 'standing'}`;
 function fieldCell(plan: PlanView, motorId: number): LedgerValue {
   const field = plan.fields.find((one) => one.motorId === motorId);
   if (!field) return null;
-  const note = field.panelA === undefined ? undefined : `panel ${formatNumber(field.panelA, { decimals: 2 })}`;
-  return { value: formatNumber(field.fieldA, { upTo: 1 }), note };
+  const constantA = constantFieldA(field);
+  if (constantA === null) return { value: settingValueWords(field, plan.spans) };
+  const panelA = field.panelA?.[0];
+  const note = typeof panelA === 'number' ? `panel ${formatNumber(panelA, { decimals: 2 })}` : undefined;
+  return { value: formatNumber(constantA, { upTo: 1 }), note };
 }
 
 const bankEntries: Entry[] = [
   {
     label: 'Capacitors',
     unit: 'kvar',
-    cell: ({ capacitors }) => {
-      if (!capacitors) return { value: 'none', tone: 'quiet' };
-      const { kvar, detuningPercent } = capacitors;
+    cell: (plan) => {
+      const [bank] = plan.banks;
+      if (!bank) return { value: 'none', tone: 'quiet' };
+      const { kvar, detuningPercent } = bank;
       const note = detuningPercent === undefined ? 'plain' : `detuned, ${formatNumber(detuningPercent, { upTo: 2 })} %`;
       return { value: formatNumber(kvar), note };
     },
@@ -85,10 +91,11 @@ const bankEntries: Entry[] = [
   {
     label: 'Resonance with the supply',
     unit: 'order',
-    cell: ({ capacitors }) => {
-      if (!capacitors) return null;
-      if (!capacitors.resonance) return { value: 'not checked', tone: 'warn' };
-      const { order, near } = capacitors.resonance;
+    cell: ({ banks }) => {
+      const [bank] = banks;
+      if (!bank) return null;
+      if (!bank.resonance) return { value: 'not checked', tone: 'warn' };
+      const { order, near } = bank.resonance;
       const words = near.length > 0 ? `near the ${near.map(ordinal).join(', ')}` : undefined;
       return { value: formatNumber(order, { decimals: 1 }), note: words, tone: near.length > 0 ? 'fault' : undefined };
     },

@@ -1,6 +1,7 @@
 import type { AssumedValue } from '../../schemas/motor';
-import type { ChargeGroup, PlanField, PlanView, YearView } from '../../schemas/plan';
+import type { ChargeGroup, PlanView, YearView } from '../../schemas/plan';
 import { capacitorCaution } from '../ui/Caution';
+import { directionOf, isAsToday } from '../ui/setting-words';
 import {
   capital,
   formatBillName,
@@ -21,24 +22,24 @@ export const groupNames: [ChargeGroup, string][] = [
   ['tax', 'Tax'],
 ];
 
-export const amperes = (fieldA: number) => formatQuantity(fieldA, 'A', { upTo: 1 });
-
-const changed = (field: PlanField) => Math.abs(field.fieldA - field.todayA) > 1e-6;
-
 /** "5th", "7th", "3rd". */
 export const ordinal = (count: number) => `${count}${count % 10 === 3 && count % 100 !== 13 ? 'rd' : 'th'}`;
 
+/** All capacitors of a plan together. [kvar] */
+export const bankKvar = ({ banks }: PlanView) => banks.reduce((sum, { kvar }) => sum + kvar, 0);
+
 /** What a plan does: "Raise two fields", "Leave the fields alone and add 900 kvar of capacitors". */
 export function actionWords(plan: PlanView): string {
-  const bank = plan.capacitors ? ` and add ${formatQuantity(plan.capacitors.kvar, 'kvar')} of capacitors` : '';
-  return `${fieldAction(plan.fields.filter(changed))}${bank}`;
+  const kvar = bankKvar(plan);
+  const bank = kvar > 0 ? ` and add ${formatQuantity(kvar, 'kvar')} of capacitors` : '';
+  return `${fieldAction(plan.fields.filter((field) => !isAsToday(field)))}${bank}`;
 }
 
-function fieldAction(fields: PlanField[]): string {
+function fieldAction(fields: PlanView['fields']): string {
   const [first] = fields;
   if (!first) return 'Leave the fields alone';
-  const raised = fields.filter((field) => field.fieldA > field.todayA).length;
-  const verb = raised === fields.length ? 'Raise' : raised === 0 ? 'Lower' : 'Reset';
+  const all = (direction: 'up' | 'down') => fields.every((field) => directionOf(field) === direction);
+  const verb = all('up') ? 'Raise' : all('down') ? 'Lower' : 'Reset';
   return fields.length === 1 ? `${verb} the field of ${first.name}` : `${verb} ${formatSpelled(fields.length)} fields`;
 }
 
@@ -131,10 +132,6 @@ export function searchSentence(saving: number, leaveAlone: boolean, currency: st
   return `The best setting saves ${formatMajor(saving, currency, { whole: true })} a year before any cost of the work.`;
 }
 
-/** Field settings in a row: "M-1 138 A, M-2 84 A". */
-export const fieldWords = (fields: { name: string; fieldA: number }[]) =>
-  fields.map((field) => `${field.name} ${amperes(field.fieldA)}`).join(', ');
-
 /** Hours as a share that people can picture. */
 export const hoursWords = (hours: number) => formatNumber(Math.round(hours));
 
@@ -180,16 +177,16 @@ export function lossesFinding(year: YearView, plan: PlanView): string {
 
 /** What stands beside plans with capacitors: the usual caution, and each bank's resonance. */
 export function capacitorSentences(year: YearView): string[] {
-  const banks = year.plans.filter((plan) => plan.capacitors);
+  const banks = year.plans.flatMap(({ name, banks: own }) => own.map((bank) => ({ name, bank })));
   if (banks.length === 0) return [];
   return [
     capacitorCaution,
-    ...banks.map(({ name, capacitors }) => {
-      const resonance = capacitors?.resonance;
+    ...banks.map(({ name, bank }) => {
+      const { resonance } = bank;
       if (!resonance) return `${name}: resonance is not checked, the short-circuit power is not known.`;
       const order = `order ${formatNumber(resonance.order, { decimals: 1 })}`;
       return resonance.near.length > 0
-        ? `${name} resonates at ${order}, near the ${resonance.near.map(ordinal).join(' and ')} harmonic: ${capacitors.detuningPercent ? 'choose another size or tuning' : 'detune it or choose another size'}.`
+        ? `${name} resonates at ${order}, near the ${resonance.near.map(ordinal).join(' and ')} harmonic: ${bank.detuningPercent ? 'choose another size or tuning' : 'detune it or choose another size'}.`
         : `${name} resonates at ${order}, half an order and more from the usual harmonics.`;
     }),
   ];

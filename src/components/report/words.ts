@@ -1,6 +1,8 @@
 import { dayNumber } from '../../core/load';
 import type { EditionContent, EditionPlan } from '../../schemas/edition';
+import { constantFieldA } from '../../schemas/plan-settings';
 import { capacitorCaution } from '../ui/Caution';
+import { amperes, directionOf, isAsToday, settingValueWords } from '../ui/setting-words';
 import {
   capital,
   formatCount,
@@ -16,7 +18,7 @@ import {
 export const pays = (plan: EditionPlan) => plan.saving > 0 && plan.appraisal.npv > 0;
 
 /** Motors whose field the plan changes. */
-export const changedFields = (plan: EditionPlan) => plan.fields.filter((field) => field.fieldA !== field.todayA);
+export const changedFields = (plan: EditionPlan) => plan.fields.filter((field) => !isAsToday(field));
 
 const wholeYearDays = 350;
 
@@ -28,11 +30,13 @@ function span({ bills }: EditionContent): string {
 
 const whole = (amount: number, currency: string) => formatMajor(amount, currency, { whole: true });
 
-const bankWords = ({ capacitors }: EditionPlan) =>
-  capacitors ? `${formatQuantity(capacitors.kvar, 'kvar')} of capacitors` : null;
+const bankKvar = ({ banks = [] }: EditionPlan) => banks.reduce((sum, { kvar }) => sum + kvar, 0);
+
+const bankWords = (plan: EditionPlan) =>
+  bankKvar(plan) > 0 ? `${formatQuantity(bankKvar(plan), 'kvar')} of capacitors` : null;
 
 /** The caution a bank brings with it; empty without one. */
-export const bankCaution = ({ capacitors }: EditionPlan) => (capacitors ? capacitorCaution : '');
+export const bankCaution = (plan: EditionPlan) => (bankKvar(plan) > 0 ? capacitorCaution : '');
 
 /** Why a plan is not proposed, in the figures that say so. */
 function whyNot(content: EditionContent): string {
@@ -68,15 +72,19 @@ function settingWords({ plan, motors }: EditionContent): string[] {
   return changedFields(plan).map((field) => {
     const drives = motors.find((motor) => motor.motorId === field.motorId)?.drives;
     const who = drives ? `${field.name} (${drives.toLowerCase()})` : field.name;
-    return `${who} from ${formatNumber(field.todayA, { upTo: 1 })} to ${formatNumber(field.fieldA, { upTo: 1 })} A`;
+    const constantA = constantFieldA(field);
+    if (constantA !== null)
+      return `${who} from ${formatNumber(field.todayA, { upTo: 1 })} to ${formatNumber(constantA, { upTo: 1 })} A`;
+    const words = settingValueWords(field, plan.spans ?? { by: 'year' }).replace(/^holds/, 'holding');
+    return `${who} from ${amperes(field.todayA)} to ${words}`;
   });
 }
 
 /** "Raise", "Lower", or "Set" where some rise and some fall. */
 function verbOf(plan: EditionPlan): string {
   const changed = changedFields(plan);
-  if (changed.every((field) => field.fieldA > field.todayA)) return 'Raise';
-  return changed.every((field) => field.fieldA < field.todayA) ? 'Lower' : 'Set';
+  if (changed.every((field) => directionOf(field) === 'up')) return 'Raise';
+  return changed.every((field) => directionOf(field) === 'down') ? 'Lower' : 'Set';
 }
 
 /** What is to be done, motor by motor; nothing where the plan does not pay. */

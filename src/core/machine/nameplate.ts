@@ -2,24 +2,17 @@ import { ASSUMED_SPLIT, compileMotor, ratedKva, remainingLossKw } from './motor'
 import type { SynchronousMotor } from './motor';
 import { operatingPoint } from './operating-point';
 import { outputKwOf, polesOf } from './plate';
-import type { AssumedValue, Nameplate, PlateRemark } from './plate';
+import type { AssumedValue, Assume, Nameplate, PlateRemark } from './plate';
 import { checkPlate, checkRanges, checkRatedPoint, checkRemainder } from './plate-checks';
-import {
-  isPlausibleEfficiency,
-  typicalEfficiency,
-  typicalExciterEfficiency,
-  typicalFieldShare,
-  typicalFieldVoltageV,
-  typicalLossShares,
-  typicalRaPu,
-  typicalXdPu,
-  typicalXlPu,
-  typicalXqShare,
-} from './typical';
-import type { TypicalValue } from './typical';
+import { fieldOf } from './plate-field';
+import { impedancesOf } from './plate-impedance';
+import { resolveLimits } from './plate-limits';
+import type { LimitsBeside } from './plate-limits';
+import { checkTemperature } from './plate-temperature';
+import { isPlausibleEfficiency, typicalEfficiency, typicalLossShares } from './typical';
 
 /** A nameplate made into a motor. */
-export interface CompletedMotor {
+export interface CompletedMotor extends LimitsBeside {
   /** Null while a problem leaves no motor that could be computed. */
   motor: SynchronousMotor | null;
   assumed: AssumedValue[];
@@ -38,41 +31,45 @@ export interface CompletedMotor {
  */
 export function completeNameplate(plate: Nameplate): CompletedMotor {
   const problems = checkRanges(plate);
-  if (problems.length > 0) return { motor: null, assumed: [], problems, warnings: [] };
+  if (problems.length > 0) return unusable(problems, []);
   const assumed: AssumedValue[] = [];
-  const assume = (field: string, typical: TypicalValue, why: string) => {
+  const assume: Assume = (field, typical, why) => {
     assumed.push({ field, ...typical, why });
     return typical.value;
   };
   problems.push(...checkPlate(plate));
+  const rating = ratingOf(plate, assume);
   const motor: SynchronousMotor = {
-    ...ratingOf(plate, assume),
-    ...reactancesOf(plate, assume),
-    ...fieldOf(plate, assume),
+    ...rating,
+    ...impedancesOf(plate, rating, assume),
+    ...fieldOf(plate, rating, assume),
   };
   if (plate.lossSplit) motor.lossSplit = plate.lossSplit;
-  if (plate.limits) motor.limits = plate.limits;
   lowerAssumedResistance(motor, assumed);
   const remainder = checkRemainder(motor, assumed);
-  if (remainder) return { motor: null, assumed, problems: [...problems, remainder], warnings: [] };
+  if (remainder) return unusable([...problems, remainder], assumed);
   if (!plate.lossSplit) assumeLossSplit(motor, assumed);
   try {
+    const resolved = resolveLimits(motor, plate.limits ?? {});
+    if (plate.limits) motor.limits = resolved.limits;
     compileMotor(motor);
     operatingPoint(motor, { shaftKw: motor.ratedOutputKw, powerFactor: motor.ratedPowerFactor, leading: true });
+    const warnings = [checkTemperature(plate), ...checkRatedPoint(plate, motor)].filter((remark) => remark !== null);
+    return { motor, assumed, problems: [...problems, ...resolved.problems], warnings, ...resolved.beside };
   } catch (error) {
     if (!(error instanceof Error)) throw error;
     const remedy = 'Correct the value named, or leave it out to have a typical one assumed.';
-    return {
-      motor: null,
-      assumed,
-      problems: [...problems, { field: 'motor', message: error.message, remedy }],
-      warnings: [],
-    };
+    return unusable([...problems, { field: 'motor', message: error.message, remedy }], assumed);
   }
-  return { motor, assumed, problems, warnings: checkRatedPoint(plate, motor) };
 }
 
-type Assume = (field: string, typical: TypicalValue, why: string) => number;
+const unusable = (problems: PlateRemark[], assumed: AssumedValue[]): CompletedMotor => ({
+  motor: null,
+  assumed,
+  problems,
+  warnings: [],
+  fieldLimitBy: 'field',
+});
 
 function ratingOf(plate: Nameplate, assume: Assume) {
   const ratedOutputKw = outputKwOf(plate);
@@ -105,80 +102,6 @@ function ratingOf(plate: Nameplate, assume: Assume) {
     ratedPowerFactor,
     ratedEfficiency,
   };
-}
-
-function reactancesOf(plate: Nameplate, assume: Assume) {
-  const speedRpm = (120 * plate.frequencyHz) / polesOf(plate);
-  const rotor = plate.rotor ?? (polesOf(plate) === 2 ? 'round' : 'salient');
-  const kind = rotor === 'round' ? 'round rotors' : `salient poles at ${Math.round(speedRpm)} rpm`;
-  const raPu =
-    plate.raPu ?? assume('raPu', typicalRaPu(outputKwOf(plate)), 'Armature resistance typical of this size.');
-  let typicalXd = typicalXdPu(speedRpm, rotor);
-  if (plate.xqPu !== undefined && plate.xqPu > typicalXd.value) {
-    const value = plate.xqPu / typicalXqShare(speedRpm, rotor).value;
-    typicalXd = { value, low: plate.xqPu, high: Math.max(value, typicalXd.high) };
-  }
-  const xdPu = plate.xdPu ?? assume('xdPu', typicalXd, `Direct-axis reactance typical of ${kind}.`);
-  const share = typicalXqShare(speedRpm, rotor);
-  const typicalXq = { value: share.value * xdPu, low: share.low * xdPu, high: share.high * xdPu };
-  const xqPu =
-    plate.xqPu ?? assume('xqPu', typicalXq, `Quadrature-axis reactance typical of ${kind}: a share of xdPu.`);
-  const curve = plate.openCircuitCurve;
-  if (!curve) return { raPu, xdPu, xqPu, ...(plate.xlPu !== undefined && { xlPu: plate.xlPu }) };
-  const xlPu =
-    plate.xlPu ?? assume('xlPu', typicalXlPu, 'Leakage reactance typical of salient and round rotors alike.');
-  return { raPu, xdPu, xqPu, xlPu, openCircuitCurve: curve };
-}
-
-function fieldOf(plate: Nameplate, assume: Assume) {
-  const outputKw = outputKwOf(plate);
-  const kva = outputKw / ((plate.efficiency ?? 0.95) * (plate.powerFactor ?? 0.8));
-  const share = typicalFieldShare(kva);
-  const watts = share.value * kva * 1000;
-  const ratedFieldCurrentA =
-    plate.fieldCurrentA ?? currentFromOthers(plate) ?? assumedFieldCurrent(plate, watts, assume);
-  const resistanceFor = (power: number) => power / ratedFieldCurrentA ** 2;
-  const fieldResistanceOhm =
-    plate.fieldResistanceOhm ??
-    (plate.fieldVoltageV === undefined
-      ? assume(
-          'fieldResistanceOhm',
-          {
-            value: resistanceFor(watts),
-            low: resistanceFor(share.low * kva * 1000),
-            high: resistanceFor(share.high * kva * 1000),
-          },
-          `Field power typical of this size: ${(100 * share.value).toFixed(2)} % of rated kVA.`,
-        )
-      : plate.fieldVoltageV / ratedFieldCurrentA);
-  const kind = plate.exciter;
-  const why = kind ? 'Typical of this kind of exciter.' : 'The kind of exciter is not known.';
-  return {
-    ratedFieldCurrentA,
-    fieldResistanceOhm,
-    exciterEfficiency: plate.exciterEfficiency ?? assume('exciterEfficiency', typicalExciterEfficiency(kind), why),
-    exciterSupply: kind === 'static' ? ('bus' as const) : ('shaft' as const),
-    ...(plate.exciterField && { exciterField: plate.exciterField }),
-  };
-}
-
-function currentFromOthers(plate: Nameplate): number | null {
-  if (plate.fieldVoltageV === undefined || plate.fieldResistanceOhm === undefined) return null;
-  return plate.fieldVoltageV / plate.fieldResistanceOhm;
-}
-
-function assumedFieldCurrent(plate: Nameplate, watts: number, assume: Assume): number {
-  const volts = typicalFieldVoltageV(outputKwOf(plate));
-  const at = plate.fieldVoltageV;
-  const typical =
-    at === undefined
-      ? { value: watts / volts.value, low: watts / volts.high, high: watts / volts.low }
-      : { value: watts / at, low: (0.6 * watts) / at, high: (1.5 * watts) / at };
-  return assume(
-    'ratedFieldCurrentA',
-    typical,
-    'The plate gives no field current: settings in amperes need it. Ratios to rated field hold without.',
-  );
 }
 
 /** An assumed armature resistance gives way, within its range, where the efficiency leaves too little for other losses. */

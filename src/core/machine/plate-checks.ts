@@ -1,14 +1,14 @@
 import { remainingLossKw } from './motor';
 import type { SynchronousMotor } from './motor';
-import { KW_PER_HP, outputKwOf, polesOf } from './plate';
+import { KW_PER_HP, KW_PER_METRIC_HP, outputKwOf, polesOf } from './plate';
 import type { AssumedValue, Nameplate, PlateRemark } from './plate';
+import { checkField } from './plate-field-checks';
+import { percent } from './plate-words';
 import { isPlausibleEfficiency } from './typical';
 import { operatingPoint } from './operating-point';
 
 /** Agreement expected of figures on one plate, which are rounded. [unitless] */
 const PLATE_TOLERANCE = 0.02;
-
-const percent = (share: number) => `${(100 * Math.abs(share)).toFixed(1)} %`;
 
 /** Values out of any range: no motor can be made of them. */
 export function checkRanges(plate: Nameplate): PlateRemark[] {
@@ -25,6 +25,8 @@ function checkPositive(plate: Nameplate): PlateRemark[] {
     'fieldResistanceOhm',
     'xdPu',
     'xqPu',
+    'apparentKva',
+    'temperatureRiseC',
   ] as const;
   return [...needed, ...optional.filter((name) => plate[name] !== undefined)]
     .filter((field) => !(plate[field]! > 0 && Number.isFinite(plate[field])))
@@ -58,7 +60,8 @@ function checkPoles({ poles, speedRpm }: Nameplate): PlateRemark[] {
 
 /** Data of the plate that contradict one another. */
 export function checkPlate(plate: Nameplate): PlateRemark[] {
-  return [checkSpeed(plate), checkCurrent(plate), checkField(plate)].filter((remark) => remark !== null);
+  const remarks = [checkSpeed(plate), checkCurrent(plate), checkApparent(plate), checkTwice(plate)];
+  return [...remarks.filter((remark) => remark !== null), ...checkField(plate)];
 }
 
 function checkSpeed(plate: Nameplate): PlateRemark | null {
@@ -111,13 +114,43 @@ function checkImpliedEfficiency(plate: Nameplate, currentA: number, powerFactor:
   };
 }
 
+/** The plate's kVA against volts and amperes, or against output, efficiency and power factor. */
+function checkApparent(plate: Nameplate): PlateRemark | null {
+  const { apparentKva, currentA, voltageV, efficiency, powerFactor } = plate;
+  if (apparentKva === undefined) return null;
+  const byCurrent = currentA === undefined ? null : (Math.sqrt(3) * voltageV * currentA) / 1000;
+  const byOutput = efficiency && powerFactor ? outputKwOf(plate) / (efficiency * powerFactor) : null;
+  const others = byCurrent ?? byOutput;
+  if (others === null || Math.abs(apparentKva / others - 1) <= PLATE_TOLERANCE) return null;
+  const pair = byCurrent === null ? 'output, efficiency and power factor' : 'voltage and current';
+  return {
+    field: 'apparentKva',
+    message:
+      `Rated kVA disagrees with ${pair} by ${percent(apparentKva / others - 1)}: the plate says ${apparentKva} kVA, ` +
+      `the others make ${others.toFixed(1)} kVA.`,
+    remedy:
+      Math.abs(apparentKva / outputKwOf(plate) - 1) <= PLATE_TOLERANCE
+        ? 'The kVA entered is the output in kW: leave it empty where the plate states none.'
+        : 'Read kVA, volts and amperes again; kVA are what the motor takes, not its output.',
+  };
+}
+
+/** A value given in ohms and per unit at once. */
+function checkTwice(plate: Nameplate): PlateRemark | null {
+  for (const name of ['xd', 'xq', 'ra'] as const) {
+    if (plate[`${name}Pu`] === undefined || plate.ohms?.[`${name}Ohm`] === undefined) continue;
+    const message = `${name}Pu and ${name}Ohm are both given.`;
+    return { field: `ohms.${name}Ohm`, message, remedy: 'Enter the value once, per unit or in ohms.' };
+  }
+  return null;
+}
+
 /** The usual slips that explain a current off by a ratio. */
 function explainRatio(ratio: number, plate: Nameplate, tolerance = PLATE_TOLERANCE): string | null {
   const slips: [number, string][] = [
-    [
-      plate.outputUnit === 'hp' ? 1 / KW_PER_HP : KW_PER_HP,
-      `They agree if the output is in ${plate.outputUnit === 'hp' ? 'kW' : 'hp'}.`,
-    ],
+    plate.outputUnit === 'kW'
+      ? [KW_PER_HP, 'They agree if the output is in hp.']
+      : [1 / (plate.outputUnit === 'hp' ? KW_PER_HP : KW_PER_METRIC_HP), 'They agree if the output is in kW.'],
     [Math.sqrt(3), 'They agree if the current belongs to the other connection of the winding (delta).'],
     [
       1 / Math.sqrt(3),
@@ -128,22 +161,6 @@ function explainRatio(ratio: number, plate: Nameplate, tolerance = PLATE_TOLERAN
   ];
   const found = slips.find(([factor]) => Math.abs(factor - 1) > 0.05 && Math.abs(ratio / factor - 1) <= tolerance);
   return found ? found[1] : null;
-}
-
-function checkField(plate: Nameplate): PlateRemark | null {
-  const { fieldCurrentA, fieldVoltageV, fieldResistanceOhm } = plate;
-  if (fieldCurrentA === undefined || fieldVoltageV === undefined || fieldResistanceOhm === undefined) return null;
-  const implied = fieldVoltageV / fieldCurrentA;
-  const off = fieldResistanceOhm / implied - 1;
-  if (Math.abs(off) <= 0.05) return null;
-  const cold = off < -0.1 && off > -0.35 ? ' A resistance measured cold is 15 to 30 % below the hot one.' : '';
-  return {
-    field: 'fieldResistanceOhm',
-    message:
-      `Field resistance disagrees with field volts and amperes by ${percent(off)}: ${fieldVoltageV} V / ${fieldCurrentA} A = ` +
-      `${implied.toFixed(3)} ohm, entered ${fieldResistanceOhm} ohm.`,
-    remedy: `Keep the hot resistance.${cold}`,
-  };
 }
 
 /** The problem of losses that exceed what the efficiency leaves, or null. */

@@ -44,16 +44,27 @@ export function assumedSensitivity(
   return { kvarDelivered: capability(motor, at).kvarDelivered, swings };
 }
 
-/** The motor with one assumed value replaced; what hangs on it by a fixed ratio moves along. */
-function withAssumed(motor: SynchronousMotor, field: string, value: number): SynchronousMotor {
+/**
+ * The motor with one assumed value replaced; what hangs on it by a fixed ratio moves along.
+ *
+ * @param field  Path in `SynchronousMotor`, as in `AssumedValue`.
+ */
+export function withAssumed(motor: SynchronousMotor, field: string, value: number): SynchronousMotor {
   if (field.startsWith('lossSplit.')) {
     return { ...motor, lossSplit: { ...lossSplitKw(motor), [field.slice('lossSplit.'.length)]: value } };
   }
   const changed = { ...motor, [field]: value } as SynchronousMotor;
   if (field === 'xdPu') changed.xqPu = (motor.xqPu / motor.xdPu) * value;
   if (field === 'xqPu') changed.xqPu = Math.min(value, motor.xdPu);
-  // Amperes are a scale: the field's power stays what it was.
-  if (field === 'ratedFieldCurrentA')
-    changed.fieldResistanceOhm = motor.fieldResistanceOhm * (motor.ratedFieldCurrentA / value) ** 2;
-  return changed;
+  return field === 'ratedFieldCurrentA' ? rescaledField(changed, value / motor.ratedFieldCurrentA) : changed;
+}
+
+/** Amperes nobody read are a scale: the field's power and the place of its limit stay what they were. */
+function rescaledField(motor: SynchronousMotor, scale: number): SynchronousMotor {
+  const limitA = motor.limits?.fieldCurrentA;
+  return {
+    ...motor,
+    fieldResistanceOhm: motor.fieldResistanceOhm / scale ** 2,
+    ...(limitA !== undefined && { limits: { ...motor.limits, fieldCurrentA: limitA * scale } }),
+  };
 }

@@ -8,6 +8,9 @@ export interface TypicalValue {
 /** How the field is fed. */
 export type ExciterKind = 'static' | 'shaft-dc' | 'brushless';
 
+/** Class of the winding's insulation by its letter. */
+export type InsulationClass = 'A' | 'B' | 'F' | 'H';
+
 /** Kind of rotor. */
 export type RotorKind = 'salient' | 'round';
 
@@ -80,3 +83,20 @@ export const typicalLossShares: Record<'coreKw' | 'frictionWindageKw' | 'strayKw
   frictionWindageKw: { low: 0.003, high: 0.02 },
   strayKw: { low: 0.003, high: 0.01 },
 };
+
+/** Ambient that temperature rises count from. [degC], common practice of nameplates */
+export const USUAL_AMBIENT_C = 40;
+
+/**
+ * Temperature of a winding at rated load. [degC]
+ *
+ * By the class of insulation: the reference temperatures to which efficiency tests bring windings (75, 95, 115, 130), from
+ * memory of IEC 60034-2-1; the range runs from a rise 20 K lower to the class's own limit. Without a class: between them.
+ */
+export function typicalHotC(insulation: InsulationClass | undefined): TypicalValue {
+  if (insulation === 'A') return { value: 75, low: 60, high: 105 };
+  if (insulation === 'B') return { value: 95, low: 75, high: 130 };
+  if (insulation === 'F') return { value: 115, low: 95, high: 155 };
+  if (insulation === 'H') return { value: 130, low: 110, high: 180 };
+  return { value: 95, low: 75, high: 130 };
+}

@@ -23,8 +23,7 @@ export function placeBank(bank: CapacitorBank, load: LoadSeries, name: string): 
     throw new RangeError(`${name}.stepKvar must be > 0, got ${stepKvar}`);
   if (!(lossWPerKvar >= 0 && Number.isFinite(lossWPerKvar)))
     throw new RangeError(`${name}.lossWPerKvar must be >= 0, got ${lossWPerKvar}`);
-  if (!(voltagePu > 0 && voltagePu <= 2))
-    throw new RangeError(`${name}.voltagePu must be in (0, 2], got ${voltagePu}`);
+  if (!(voltagePu > 0 && voltagePu <= 2)) throw new RangeError(`${name}.voltagePu must be in (0, 2], got ${voltagePu}`);
   if (!Number.isFinite(fromMs)) throw new RangeError(`${name}.fromMs must be an instant in ms, got ${fromMs}`);
   const delivered = stepKvar * voltagePu ** 2;
   const first = Math.max(0, Math.ceil((fromMs - load.startMs) / (load.stepMinutes * 60_000)));

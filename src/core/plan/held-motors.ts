@@ -116,7 +116,10 @@ function holdFactor(ground: HeldGround, held: Holding<PlantPowerFactorControl>):
       `controls must hold one power factor at a meter, got ${powerFactor} and ${other.control.powerFactor}`,
     );
   const target = kvarPerKw(powerFactor);
-  const together = togetherStates(ground, held.map(({ m }) => m));
+  const together = togetherStates(
+    ground,
+    held.map(({ m }) => m),
+  );
   const seen = { kw: 0, kvar: 0 };
   const shared = new Float64Array(held.length);
   return (at, state, trace) => {

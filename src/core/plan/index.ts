@@ -19,9 +19,12 @@ export type { BankPlanResult, PlanResult } from './simulate-plan';
 export type { MotorPlanResult, MotorSpanResult } from './motor-result';
 export type { BusVoltage } from './bus-voltage';
 export { fieldBounds } from './field-bounds';
-export type { FieldBounds } from './field-bounds';
-export { searchFields } from './search-fields';
-export type { CostPoint, SearchMotor, SearchProgress, SearchResult } from './search-fields';
+export type { Binding, FieldBounds } from './field-bounds';
+export { searchSettings } from './search-settings';
+export type { CostPoint, SearchInput, SearchResult, SearchedAxis } from './search-settings';
+export type { SearchMotor, SearchedSetting } from './search-axes';
+export type { SearchedBank } from './search-candidates';
+export type { SearchProgress } from './search-parts';
 export type {
   BusSupply,
   CapacitorBank,
@@ -48,3 +51,10 @@ export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
 export { judgePlans } from './judge-plans';
 export type { Alternative, JudgedAlternative, Verdict } from './judge-plans';
 export { shaftLoadFromSubmeter } from './submeter';
+export type { SubmeterLoad } from './submeter';
+export { laidPowerOn, meanPowerOn } from './mean-power';
+export type { PowerSeries } from './mean-power';
+export { AGREES_SHARE, compareLoadTest } from './load-test';
+export type { LoadTestPoint, LoadTestResult, LoadTestRow, LoadTestSuspect, SuspectField } from './load-test';
+export { admissibleFieldA, settingFault } from './setting-fault';
+export type { LimitedMotor } from './setting-fault';

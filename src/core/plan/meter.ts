@@ -7,7 +7,7 @@ import { jointStates } from './distinct-loads';
 import { holdMotors } from './held-motors';
 import type { HeldGround, HeldMotors, HeldTrace, IntervalAtWork } from './held-motors';
 import type { PlacedMotor } from './placed-motor';
-import { laggingShare } from './registers';
+import { laggingShare, shiftRegisters } from './registers';
 import { supplyImpedance } from './supply';
 import type { BusSupply, Spans, Upstream } from './types';
 import { noUpstream, upstreamLosses } from './upstream';
@@ -105,7 +105,12 @@ function applyControls(work: MeterWork, controls: FieldControl[][], trace: Meter
 }
 
 /** Adds what a motor takes beyond standing under controls of its own. */
-function addMotor({ moreKw, moreKvar, parts, spanOf }: MeterWork, motor: PlacedMotor, m: number, controls: FieldControl[]): void {
+function addMotor(
+  { moreKw, moreKvar, parts, spanOf }: MeterWork,
+  motor: PlacedMotor,
+  m: number,
+  controls: FieldControl[],
+): void {
   const part = parts[m]!;
   controls.forEach((control, span) => {
     const change = isOwn(control) ? motor.changeFor(control) : null;
@@ -132,29 +137,26 @@ function heldBySpan({ ground }: MeterWork, controls: FieldControl[][]): (HeldMot
 }
 
 /** The usual case by itself: nothing hangs on what the meter sees. */
-function shiftAll(work: MeterWork): void {
-  const { load, state, moreKw, moreKvar, fixed, hours } = work;
-  for (let i = 0; i < load.kwh.length; i++) {
+function shiftAll({ load, state, shares, moreKw, moreKvar, fixed, hours, out }: MeterWork): void {
+  const { kwh, kvarhLagging, kvarhLeading } = load;
+  const { kwh: outKwh, kvarhLagging: outLagging, kvarhLeading: outLeading } = out;
+  for (let i = 0; i < kwh.length; i++) {
     const s = state[i]!;
-    const kw = fixed ? moreKw[s]! + fixed.kw[i]! : moreKw[s]!;
-    const kvar = fixed ? moreKvar[s]! + fixed.kvar[i]! : moreKvar[s]!;
-    shift(work, i, kw * hours, kvar * hours);
+    const kw = fixed === null ? moreKw[s]! : moreKw[s]! + fixed.kw[i]!;
+    const kvar = fixed === null ? moreKvar[s]! : moreKvar[s]! + fixed.kvar[i]!;
+    const share = shares[i]!;
+    const e = kvar * hours;
+    const a = kvarhLagging[i]! + share * e;
+    const b = kvarhLeading[i]! - (1 - share) * e;
+    outKwh[i] = kwh[i]! + kw * hours;
+    outLagging[i] = Math.max(a, 0) + Math.max(-b, 0);
+    outLeading[i] = Math.max(b, 0) + Math.max(-a, 0);
   }
-}
-
-/** Sets the registers of an interval by the rule of `shiftRegisters`, unchecked. */
-function shift({ load, shares, out }: MeterWork, i: number, moreKwh: number, moreKvarh: number): void {
-  const share = shares[i]!;
-  const a = load.kvarhLagging[i]! + share * moreKvarh;
-  const b = load.kvarhLeading[i]! - (1 - share) * moreKvarh;
-  out.kvarhLagging[i] = Math.max(a, 0) + Math.max(-b, 0);
-  out.kvarhLeading[i] = Math.max(b, 0) + Math.max(-a, 0);
-  out.kwh[i] = load.kwh[i]! + moreKwh;
 }
 
 /** Interval by interval: motors that hold voltage or power factor, then switched banks, then the losses upstream. */
 function settleAll(work: MeterWork, held: (HeldMotors | null)[], trace: MeterTrace | null): void {
-  const { load, state, spanOf, fixed, hours, ground } = work;
+  const { load, state, spanOf, fixed, hours, ground, out } = work;
   const metered = { kw: 0, kvar: 0 };
   const seen = { kw: 0, kvar: 0 };
   const at: IntervalAtWork = { i: 0, metered, moreKw: 0, moreKvar: 0 };
@@ -170,7 +172,10 @@ function settleAll(work: MeterWork, held: (HeldMotors | null)[], trace: MeterTra
       switchBanks(work, at, seen, trace);
     }
     ground.upstream.seen(metered, at.moreKw, at.moreKvar, seen);
-    shift(work, i, (seen.kw - metered.kw) * hours, (seen.kvar - metered.kvar) * hours);
+    const after = shiftRegisters(load.kvarhLagging[i]!, load.kvarhLeading[i]!, (seen.kvar - metered.kvar) * hours);
+    out.kvarhLagging[i] = after.kvarhLagging;
+    out.kvarhLeading[i] = after.kvarhLeading;
+    out.kwh[i] = load.kwh[i]! + (seen.kw - metered.kw) * hours;
   }
 }
 

@@ -139,7 +139,11 @@ function spanResult(figures: Figures[]): MotorSpanResult {
   };
 }
 
-function addLimits(result: MotorPlanResult, motor: SynchronousMotor, { spell, point, standing, limited }: Figures): void {
+function addLimits(
+  result: MotorPlanResult,
+  motor: SynchronousMotor,
+  { spell, point, standing, limited }: Figures,
+): void {
   const shares = limitShares(motor, point);
   const reserve = motor.limits?.reserve ?? 0;
   const nearest = (Object.keys(shares) as Limit[]).reduce((a, b) => (shares[b] > shares[a] ? b : a));

@@ -50,7 +50,9 @@ export function motorSpells(input: {
     spell.hours += hours;
     spells.set(key, spell);
   }
-  return [...spells.values()].sort((a, b) => a.span - b.span || a.shaftKw - b.shaftKw || a.deliveredKvar - b.deliveredKvar);
+  return [...spells.values()].sort(
+    (a, b) => a.span - b.span || a.shaftKw - b.shaftKw || a.deliveredKvar - b.deliveredKvar,
+  );
 }
 
 /** Level of each distinct load. [kW] */

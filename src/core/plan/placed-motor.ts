@@ -121,7 +121,10 @@ function supplyAt({ motor, voltagePu, leastFieldA }: Placed, loads: Float64Array
   const curves = Array.from(levels, (shaftKw, level): LossCurve => {
     const low = range.least[level]!;
     const width = range.most[level]! - low;
-    const kvar = width > 0 ? Float64Array.from({ length: PIECES + 1 }, (_, j) => low + (width * j) / PIECES) : Float64Array.of(low);
+    const kvar =
+      width > 0
+        ? Float64Array.from({ length: PIECES + 1 }, (_, j) => low + (width * j) / PIECES)
+        : Float64Array.of(low);
     return { kvar, lossKw: kvar.map((delivered) => range.inputKwAt(level, delivered) - shaftKw) };
   });
   return { levelOf, curves: [{ kvar: Float64Array.of(0), lossKw: Float64Array.of(0) }, ...curves] };

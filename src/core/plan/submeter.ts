@@ -1,56 +1,93 @@
-import { fixField } from '../machine';
-import type { SynchronousMotor } from '../machine';
+import { cubicTable, fixField, ratedKva } from '../machine';
+import type { FixedField, SynchronousMotor } from '../machine';
+
+/** Distinct readings up to this number are solved one by one. */
+const FEW = 60;
+
+/** Error of the table that many readings are read from, as a share of rated kVA. */
+const TABLE_TOLERANCE = 1e-7;
+
+/** Shaft load from a submeter. */
+export interface SubmeterLoad {
+  /** 0 at standstill. [kW] */
+  shaftKw: Float64Array;
+  /** Readings that are missing (NaN). */
+  missing: number;
+  /** Readings beyond what the field can hold: they are set to the greatest it holds. */
+  beyondPullOut: number;
+}
 
 /**
  * Shaft load of a motor from its submeter, at the field it ran with.
  *
- * The input less the losses at that field, solved for each reading. A reading below half the motor's input at no load is a motor
- * that stands still: 0. So is a missing reading (NaN), which is counted: a motor that is not known to run is not planned with.
+ * The input less the losses at that field, solved to 1e-6 of rated kVA. A reading below half the motor's input at no load is a
+ * motor that stands still: 0. A missing reading (NaN) takes `whenMissing`, standstill when absent, and is counted.
  *
  * @param motor  Motor data.
  * @param at.inputKw  Metered active power per interval, mean. [kW], Float64Array
  * @param at.fieldCurrentA  Field current during the metering. [A]
  * @param at.voltagePu  Terminal voltage, 1 when absent. [pu]
- * @returns Shaft load per interval, never NaN [kW]; how many readings were missing; how many exceeded what the field can hold
- *   (they are set to the greatest it holds).
+ * @param at.whenMissing  Shaft load of each interval where its reading is missing. [kW]
  * @throws {RangeError} naming the argument out of range
  */
 export function shaftLoadFromSubmeter(
   motor: SynchronousMotor,
-  at: { inputKw: Float64Array; fieldCurrentA: number; voltagePu?: number },
-): { shaftKw: Float64Array; missing: number; beyondPullOut: number } {
+  at: { inputKw: Float64Array; fieldCurrentA: number; voltagePu?: number; whenMissing?: Float64Array },
+): SubmeterLoad {
   const fixed = fixField(motor, at);
-  const noLoadKw = fixed.taken(0).inputKw;
   const greatestKw = fixed.greatestShaftKw * (1 - 1e-9);
+  const noLoadKw = fixed.taken(0).inputKw;
   const mostInputKw = fixed.taken(greatestKw).inputKw;
-  const known = new Map<number, number>();
+  const runs = (inputKw: number) => inputKw >= noLoadKw / 2 && inputKw < mostInputKw;
+  const shaftAt = solveAll(fixed, at.inputKw.filter(runs), noLoadKw, greatestKw, TABLE_TOLERANCE * ratedKva(motor));
   let missing = 0;
   let beyondPullOut = 0;
-  const shaftKw = at.inputKw.map((inputKw) => {
+  const shaftKw = at.inputKw.map((inputKw, i) => {
     if (Number.isNaN(inputKw)) {
       missing++;
-      return 0;
+      return at.whenMissing?.[i] ?? 0;
     }
-    if (inputKw < noLoadKw / 2) return 0;
-    if (inputKw >= mostInputKw) {
-      beyondPullOut++;
-      return greatestKw;
-    }
-    const found = known.get(inputKw) ?? shaftFor(fixed.taken, inputKw, noLoadKw, greatestKw);
-    known.set(inputKw, found);
-    return found;
+    if (runs(inputKw)) return shaftAt.get(inputKw)!;
+    if (inputKw < noLoadKw) return 0;
+    beyondPullOut++;
+    return greatestKw;
   });
   return { shaftKw, missing, beyondPullOut };
 }
 
-/** Load whose input is as metered; running at no load keeps a token load, since 0 stands for standstill. */
+/** Shaft load by reading, for distinct readings of a running motor: many are read from a table of the inverse. */
+function solveAll(
+  fixed: FixedField,
+  inputKw: Float64Array,
+  noLoadKw: number,
+  greatestKw: number,
+  tolerance: number,
+): Map<number, number> {
+  const readings = Float64Array.from(new Set(inputKw)).sort();
+  const solve = (reading: number) => shaftFor(fixed.taken, reading, noLoadKw, greatestKw);
+  if (readings.length <= FEW) return new Map(Array.from(readings, (reading) => [reading, solve(reading)]));
+  const token = tokenLoadKw(greatestKw);
+  const idle = readings.filter((reading) => reading <= noLoadKw + token);
+  const loaded = readings.subarray(idle.length);
+  const known = new Map(Array.from(idle, (reading) => [reading, token]));
+  if (loaded.length === 0) return known;
+  const sample = (reading: number) => ({ a: solve(reading), b: 0 });
+  const table = cubicTable(sample, noLoadKw + token, loaded[loaded.length - 1]!, tolerance).read(loaded);
+  loaded.forEach((reading, i) => known.set(reading, Math.max(token, table.a[i]!)));
+  return known;
+}
+
+/** Running at no load keeps a token load, since 0 stands for standstill. */
+const tokenLoadKw = (greatestKw: number) => 1e-6 * greatestKw;
+
+/** Load whose input is as metered. */
 function shaftFor(
   taken: (shaftKw: number) => { inputKw: number },
   inputKw: number,
   noLoadKw: number,
   greatestKw: number,
 ): number {
-  const token = 1e-6 * greatestKw;
+  const token = tokenLoadKw(greatestKw);
   let lo = token;
   let hi = greatestKw;
   if (inputKw <= noLoadKw + token) return token;

@@ -1,5 +1,6 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize';
-import type { CalendarInput, PlateInput } from '../../schemas/motor';
+import type { CalendarInput } from '../../schemas/motor';
+import type { PlateInput } from '../../schemas/plate';
 import { sequelize } from '../db/connection';
 import { withTrail } from './Trail';
 

@@ -8,25 +8,36 @@ import {
   ratedKva,
   type AssumedSwing,
   type CompletedMotor,
+  type LimitsBeside,
   type SynchronousMotor,
 } from '../../core/machine';
-import type { AssumedValue, MotorInput, MotorView, PlateNote } from '../../schemas/motor';
+import { wordNumber } from '../../core/units';
+import type { AssumedValue, MotorInput, MotorView, PanelView, PlateNote } from '../../schemas/motor';
 import type { Motor } from '../models/Motor';
 
-/** What a motor's row holds, as the form that wrote it. */
+/** What a motor's row holds, as the form that wrote it: today's field of a brushless machine as its panel shows it. */
 export function storedMotor(
   motor: Motor,
-): Omit<MotorInput, 'fieldReadAt' | 'meterId'> & { meterId: number; version: number } {
+  machine: SynchronousMotor | null,
+): Omit<MotorInput, 'meterId'> & {
+  meterId: number;
+  version: number;
+} {
+  const atPanel = machine?.exciterField !== undefined;
   return {
     name: motor.name,
     drives: motor.drives ?? undefined,
     meterId: motor.meterId,
     plate: motor.plate,
     calendar: motor.calendar,
-    fieldTodayA: motor.fieldTodayA,
+    fieldTodayA: atPanel ? readingA(machine, motor.fieldTodayA) : motor.fieldTodayA,
+    fieldReadAt: atPanel ? 'panel' : 'field',
     version: motor.version,
   };
 }
+
+/** A panel's reading, to the microampere: what was typed comes back as it was typed. */
+const readingA = (machine: SynchronousMotor, fieldA: number) => Number(panelCurrentA(machine, fieldA).toFixed(6));
 
 const names: Record<string, [label: string, unit: string]> = {
   ratedEfficiency: ['Efficiency', ''],
@@ -70,57 +81,88 @@ function effectOf(kvarDelivered: number | null, swing: AssumedSwing | undefined)
 }
 
 /** Limits of a machine before and after the reserve. */
-export function limitsOf(machine: SynchronousMotor) {
+export function limitsOf(machine: SynchronousMotor, beside: LimitsBeside = { fieldLimitBy: 'field' }) {
   const reserve = machine.limits?.reserve ?? 0;
   const fieldA = machine.limits?.fieldCurrentA ?? machine.ratedFieldCurrentA;
   const armatureA = machine.limits?.armatureCurrentA ?? ratedCurrentA(machine);
   return {
     fieldA: fieldA * (1 - reserve),
+    fieldBy: beside.fieldLimitBy,
     armatureA: armatureA * (1 - reserve),
     fieldBeforeReserveA: fieldA,
     armatureBeforeReserveA: armatureA,
     pullOutMargin: machine.limits?.pullOutMargin ?? DEFAULT_PULL_OUT_MARGIN,
     reservePercent: reserve * 100,
+    leastFieldA: beside.leastFieldA,
+    voltageBandPu: beside.voltageBandPu,
   };
+}
+
+/** What the panel of a brushless machine shows; nothing where the panel shows the field itself. */
+function presentPanel(machine: SynchronousMotor, fieldTodayA: number, limitA: number): PanelView | undefined {
+  if (!machine.exciterField) return undefined;
+  const { ratedA } = machine.exciterField;
+  return { todayA: readingA(machine, fieldTodayA), ratedA, limitA: panelCurrentA(machine, limitA) };
 }
 
 /** A motor with its present state and what it may give at its usual load. */
 export function presentMotor(
   row: Motor,
   completed: CompletedMotor & { motor: SynchronousMotor },
-  load: { usualShaftKw: number; hoursRunning: number },
+  load: { usualShaftKw: number; hoursRunning: number; hours: { shaftKw: number; hours: number }[] },
 ): MotorView {
   const machine = completed.motor;
-  const { usualShaftKw: shaftKw, hoursRunning } = load;
+  const { usualShaftKw: shaftKw, hoursRunning, hours } = load;
   const today = operatingPoint(machine, { shaftKw, fieldCurrentA: row.fieldTodayA });
   const most = capability(machine, { shaftKw });
-  const { version, ...stored } = storedMotor(row);
+  const { version, fieldReadAt: _readAt, ...stored } = storedMotor(row, machine);
+  const limits = limitsOf(machine, completed);
+  const band = completed.voltageBandPu;
   return {
     ...stored,
     id: row.id,
     version,
     drives: row.drives,
-    panelTodayA: machine.exciterField ? panelCurrentA(machine, row.fieldTodayA) : undefined,
+    fieldTodayA: row.fieldTodayA,
+    panel: presentPanel(machine, row.fieldTodayA, limits.fieldA),
     machine,
     assumed: presentAssumed(row, completed, shaftKw),
-    notes: completed.warnings.map(({ field, message, remedy }): PlateNote => ({
-      field,
-      message: `${message} ${remedy}`,
-      severity: 'warning',
-    })),
+    notes: [
+      ...completed.warnings.map(({ field, message, remedy }): PlateNote => ({
+        field,
+        message: `${message} ${remedy}`,
+        severity: 'warning',
+      })),
+      ...notesOfToday(row.fieldTodayA, limits),
+    ],
     ratedKva: ratedKva(machine),
     ratedCurrentA: ratedCurrentA(machine),
     speedRpm: (120 * machine.frequencyHz) / machine.poles,
     usualShaftKw: shaftKw,
     usualLoadPercent: (100 * shaftKw) / machine.ratedOutputKw,
     hoursRunning,
+    loadHours: hours,
     kvarToday: -today.kvar,
     pullOutToday: today.pullOutRatio,
     armatureTodayA: today.lineCurrentA,
     capability: most,
-    limits: limitsOf(machine),
+    band: band
+      ? {
+          low: capability(machine, { shaftKw, voltagePu: band.low }),
+          high: capability(machine, { shaftKw, voltagePu: band.high }),
+        }
+      : null,
+    limits,
     wattsPerKvar: wattsPerKvar(machine, shaftKw, today, most.fieldCurrentA),
   };
+}
+
+/** What today's setting breaks that no plan may break. */
+function notesOfToday(fieldTodayA: number, { leastFieldA }: { leastFieldA?: number }): PlateNote[] {
+  if (leastFieldA === undefined || fieldTodayA >= leastFieldA) return [];
+  const short = wordNumber(leastFieldA - fieldTodayA, 0.1);
+  const message = `The field of today lies ${short} A below the least field that was set. Read the ammeter again, or correct the least field.`;
+  return [{ field: 'fieldTodayA', message, severity: 'warning' }];
 }
 
 /** Extra watts per kvar from a point to the most the motor may deliver. */

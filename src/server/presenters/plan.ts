@@ -1,52 +1,26 @@
 import { operatingPoint, panelCurrentA, type SynchronousMotor } from '../../core/machine';
-import { fromMinorUnits, wordNumber } from '../../core/units';
 import { resonanceCheck, type MotorPlanResult } from '../../core/plan';
+import { wordNumber } from '../../core/units';
 import type { PricedBill } from '../../core/tariff';
 import type { AssumedValue } from '../../schemas/motor';
 import type {
-  AppraisalView,
-  PricedBillView,
-  CapacitorBank,
-  CapacitorView,
-  CashFlowMonth,
+  BankView,
   ChargeGroup,
-  FieldSetting,
-  PlanEconomics,
+  CostPart,
   PlanField,
   PlanMotorView,
   PlanView,
-  SearchView,
+  PricedBillView,
+  ReplacementView,
+  VoltageView,
 } from '../../schemas/plan';
+import type { BankInput } from '../../schemas/plan-input';
+import type { AppraisalView, CashFlowMonth, PlanEconomics } from '../../schemas/plan-money';
+import { controlsOf, type MotorSetting } from '../../schemas/plan-settings';
+import type { SpanSet } from '../../schemas/plan-spans';
+import type { SearchView } from '../../schemas/search';
 import type { Plan } from '../models/Plan';
 import { limitsOf } from './motor';
-
-/** The field settings of a stored plan. */
-export const fieldSettings = (plan: Plan): FieldSetting[] =>
-  plan.actions.flatMap((action) => (action.kind === 'field' ? { motorId: action.motorId, fieldA: action.fieldA } : []));
-
-/** The capacitor bank of a stored plan; null where it has none. */
-export function capacitorBank(plan: Plan): CapacitorBank | null {
-  const [bank] = plan.actions.flatMap((action) => (action.kind === 'capacitor' ? action : []));
-  if (!bank) return null;
-  const { kvar, lossWPerKvar, detuningPercent, shortCircuitKva } = bank;
-  return { kvar, lossWPerKvar, detuningPercent, shortCircuitKva };
-}
-
-/** A plan's row as the form that wrote it. Amounts in major units. */
-export function storedPlan(plan: Plan, currency: string) {
-  return {
-    version: plan.version,
-    name: plan.name,
-    fields: fieldSettings(plan),
-    capacitors: capacitorBank(plan) ?? undefined,
-    capitalCost: fromMinorUnits(plan.capitalCostMinor, currency),
-    yearlyUpkeep: fromMinorUnits(plan.yearlyUpkeepMinor, currency),
-    economics: plan.economics,
-  };
-}
-
-/** What a saved plan answers: its row, not its prices. */
-export const presentPlanRow = ({ id, version, name, chosen }: Plan) => ({ id, version, name, chosen });
 
 /** A priced bill as screens read it. */
 export function presentPricedBill(bill: PricedBill): PricedBillView {
@@ -109,26 +83,41 @@ export function presentPlanMotor(
       armature: year.nearestLimitHours.armature,
       pullOut: year.nearestLimitHours['pull-out'],
     },
+    hoursLimited: 0,
     hoursBeyond: Math.max(...Object.values(year.beyondHours)),
   };
 }
 
-/** A capacitor bank with its resonance against the usual harmonics. */
-export function presentCapacitors(bank: CapacitorBank | null): CapacitorView | null {
-  if (!bank) return null;
-  const { kvar, shortCircuitKva, detuningPercent } = bank;
-  const resonance = shortCircuitKva ? resonanceCheck({ kvar, shortCircuitKva, detuningPercent }) : null;
-  return { ...bank, resonance };
+/** A bank with its worst resonance against the usual harmonics, step by step. */
+export function presentBank({ cost: _cost, ...bank }: BankInput, shortCircuitKva: number | null): BankView {
+  const kvar = bank.steps * bank.stepKvar;
+  return { ...bank, kvar, resonance: shortCircuitKva === null ? null : worstResonance(bank, shortCircuitKva) };
 }
 
-/** A motor's field under a plan, with what a brushless machine's panel shows. */
+/** A switched bank passes through every number of steps; a fixed one stands at all of them. */
+function worstResonance(bank: Omit<BankInput, 'cost'>, shortCircuitKva: number): NonNullable<BankView['resonance']> {
+  const { steps, stepKvar, detuningPercent, holdsPowerFactor } = bank;
+  const sizes = holdsPowerFactor === undefined ? [steps] : Array.from({ length: steps }, (_, k) => k + 1);
+  const checks = sizes.map((count) => {
+    const kvar = count * stepKvar;
+    return { kvar, ...resonanceCheck({ kvar, shortCircuitKva, detuningPercent }) };
+  });
+  return checks.find(({ near }) => near.length > 0) ?? checks.at(-1)!;
+}
+
+/** A motor's setting under a plan, with what a brushless machine's panel shows. */
 export function presentPlanField(
   motor: { id: number; name: string; machine: SynchronousMotor; fieldTodayA: number },
-  fieldA: number,
+  setting: MotorSetting | undefined,
 ): PlanField {
   const { id, name, machine, fieldTodayA } = motor;
-  const panelA = machine.exciterField ? panelCurrentA(machine, fieldA) : undefined;
-  return { motorId: id, name, fieldA, todayA: fieldTodayA, panelA };
+  const { fieldA, controls } = setting ?? { fieldA: fieldTodayA };
+  const panelA = machine.exciterField
+    ? controlsOf({ fieldA, controls }).map((control) =>
+        control.holds === 'field-current' ? panelCurrentA(machine, control.fieldCurrentA) : null,
+      )
+    : undefined;
+  return { motorId: id, name, ...(controls ? { controls } : { fieldA }), todayA: fieldTodayA, panelA };
 }
 
 /** Which limit of which motor lies nearest over the year, in words: "field, M-1 at 80 %", "pull-out, M-1 1.68". */
@@ -148,17 +137,20 @@ export function nearestLimitWords(motors: PlanMotorView[]): string {
 export interface PlanParts {
   plan: Plan | null;
   currency: string;
+  spans: SpanSet;
   fields: PlanField[];
-  capacitors: CapacitorView | null;
+  banks: BankView[];
+  replacements: ReplacementView[];
   bills: PricedBillView[];
   standingTotal: number;
-  money: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconomics };
+  money: { capitalCost: number; costParts: CostPart[]; yearlyUpkeep: number; economics: PlanEconomics };
   appraisal: AppraisalView;
   paybackWords: string;
   paybackSpread: PlanView['paybackSpread'];
   cashFlow: CashFlowMonth[];
   motors: PlanMotorView[];
   hoursLeading: PlanView['hoursLeading'];
+  voltage: VoltageView | null;
   nearestLimit: string;
   worstPf: PlanView['worstPf'];
   assumed: AssumedValue[];
@@ -177,8 +169,10 @@ export function presentPlan(parts: PlanParts): PlanView {
     version: plan?.version ?? 0,
     name: plan?.name ?? 'Standing',
     currency: parts.currency,
+    spans: parts.spans,
     fields: parts.fields,
-    capacitors: parts.capacitors,
+    banks: parts.banks,
+    replacements: parts.replacements,
     bills,
     yearTotal,
     saving: plan ? sumOf([parts.standingTotal, -yearTotal]) : 0,
@@ -192,6 +186,7 @@ export function presentPlan(parts: PlanParts): PlanView {
     motors: parts.motors,
     extraLossKwh: parts.motors.reduce((sum, motor) => sum + motor.extraLossKwh, 0),
     hoursLeading: parts.hoursLeading,
+    voltage: parts.voltage,
     nearestLimit: parts.nearestLimit,
     worstPf: parts.worstPf,
     chosen: plan?.chosen ?? false,

@@ -8,6 +8,7 @@ import type {
 } from '../../schemas/edition';
 import type { MotorView } from '../../schemas/motor';
 import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
+import { constantFieldA } from '../../schemas/plan-settings';
 import type { PricedYear } from '../../schemas/pricing';
 import { formatNumber } from '../../components/ui/format';
 import { fromMinorUnits } from '../../core/units';
@@ -27,12 +28,26 @@ export interface EditionBasis {
 }
 
 function editionPlan(plan: PlanView): EditionPlan {
-  const { name, fields, capacitors, yearTotal, saving, reactiveCost, groupTotals, capitalCost, yearlyUpkeep } = plan;
+  const {
+    name,
+    spans,
+    fields,
+    banks,
+    replacements,
+    yearTotal,
+    saving,
+    reactiveCost,
+    groupTotals,
+    capitalCost,
+    yearlyUpkeep,
+  } = plan;
   const { economics, appraisal, paybackWords, paybackSpread, nearestLimit, extraLossKwh, hoursLeading, worstPf } = plan;
   return {
     name,
+    spans,
     fields,
-    capacitors,
+    banks,
+    replacements,
     yearTotal,
     saving,
     reactiveCost,
@@ -98,9 +113,9 @@ function editionMotors(plan: PlanView, motors: MotorView[]): EditionMotor[] {
       drives: motor.drives,
       rated: `${formatNumber(motor.plate.output, { upTo: 1 })} ${motor.plate.outputUnit}, ${formatNumber(motor.plate.voltageV)} V, ${formatNumber(motor.plate.powerFactor, { decimals: 2 })} leading`,
       fieldTodayA: motor.fieldTodayA,
-      fieldPlanA: field?.fieldA ?? motor.fieldTodayA,
+      fieldPlanA: (field && constantFieldA(field)) ?? motor.fieldTodayA,
       fieldLimitA: planned.fieldLimitA,
-      fieldRatedA: motor.plate.fieldCurrentA,
+      fieldRatedA: motor.machine.ratedFieldCurrentA,
       armatureTodayA: planned.armatureTodayA,
       armaturePlanA: planned.armaturePlanA,
       armatureRatedA: motor.ratedCurrentA,

@@ -2,6 +2,7 @@ import {
   fieldCurrentAtPanelA,
   NotConvergedError,
   operatingPoint,
+  panelCurrentA,
   PullOutError,
   type SynchronousMotor,
 } from '../../core/machine';
@@ -13,8 +14,9 @@ import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../
 import { Motor } from '../models/Motor';
 import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
+import { fieldWords } from '../presenters/field-words';
 import { limitsOf, presentMotor, storedMotor } from '../presenters/motor';
-import { fieldSettings } from '../presenters/plan';
+import { motorSettings } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { completePlate, machineOrThrow } from './nameplates';
 import { loadHoursOf, ruleLoadKw } from './shaft-load';
@@ -86,7 +88,7 @@ export async function removeMotor({ motor }: OpenMotor, { version }: { version: 
   await inTx(async () => {
     await refuseStale(motor, version, { version });
     const plans = await Plan.findAll({ where: { engagementId: motor.engagementId } });
-    const setting = plans.filter((plan) => fieldSettings(plan).some((field) => field.motorId === motor.id));
+    const setting = plans.filter((plan) => motorSettings(plan).some((field) => field.motorId === motor.id));
     if (setting.length > 0) {
       const named = setting.map((plan) => plan.name).join(', ');
       throw conflict(`${motor.name} is set by ${named}. Take it out of the plan first, or remove the plan.`);
@@ -98,7 +100,8 @@ export async function removeMotor({ motor }: OpenMotor, { version }: { version: 
 /** Refuses a change of a motor that somebody changed in between. Call it inside inTx. */
 async function refuseStale(motor: Motor, version: number, mine: unknown): Promise<void> {
   await freshen(motor);
-  if (motor.version !== version) throw staleVersion(`Motor ${motor.name}`, mine, storedMotor(motor));
+  if (motor.version !== version)
+    throw staleVersion(`Motor ${motor.name}`, mine, storedMotor(motor, completePlate(motor.plate).motor));
 }
 
 /** @throws {ServiceError} 422 where the meter is none of those the engagement's bills are of */
@@ -139,11 +142,12 @@ function fieldOfReading(machine: SynchronousMotor, input: MotorInput): number {
 /** Refuses a field beyond its limit, or one that cannot hold the motor's loads. */
 function refuseField(machine: SynchronousMotor, input: MotorInput, fieldA: number): void {
   const limitA = limitsOf(machine).fieldBeforeReserveA;
-  const amperes = (value: number) => `${wordNumber(value, 0.1).replace(/\.0$/, '')} A`;
+  const amperes = (value: number) => fieldWords(machine, value);
   if (fieldA > limitA * (1 + 1e-9)) {
+    const over = panelCurrentA(machine, fieldA) - panelCurrentA(machine, limitA);
     throw invalid(`The field current today lies beyond the limit of ${input.name}.`, {
       fieldTodayA: [
-        `${amperes(fieldA)} is ${amperes(fieldA - limitA)} beyond the field limit of ${input.name}, ${amperes(limitA)}. ` +
+        `${amperes(fieldA)} is ${wordNumber(over, machine.exciterField ? 0.01 : 0.1).replace(/\.0$/, '')} A beyond the field limit of ${input.name}, ${amperes(limitA)}. ` +
           'Read the ammeter again. If it is right the motor runs too hot: lower the field now, or correct the limit.',
       ],
     });
@@ -155,7 +159,7 @@ function refuseField(machine: SynchronousMotor, input: MotorInput, fieldA: numbe
     if (fault === null) return;
     const loadWords = `${wordNumber(shaftKw, 1)} kW (${wordNumber((100 * shaftKw) / machine.ratedOutputKw, 1)} % of rated)`;
     (fields[`calendar.rules.${index}.load`] ??= []).push(
-      `At ${amperes(fieldA)} of field ${input.name} cannot carry ${loadWords}: it ${fault}. Check the load and the field current.`,
+      `At ${amperes(fieldA)} ${input.name} cannot carry ${loadWords}: it ${fault}. Check the load and the field current.`,
     );
     fields.fieldTodayA = [
       `At ${amperes(fieldA)} ${input.name} ${fault}, and its load reaches ${loadWords}. Read the ammeter at that load again.`,

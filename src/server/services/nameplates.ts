@@ -1,25 +1,40 @@
-import { completeNameplate, type CompletedMotor, type Nameplate, type SynchronousMotor } from '../../core/machine';
-import type { PlateInput } from '../../schemas/motor';
+import {
+  completeNameplate,
+  type CompletedMotor,
+  type Nameplate,
+  type PlateLimits,
+  type SynchronousMotor,
+} from '../../core/machine';
+import type { PlateInput } from '../../schemas/plate';
 import { invalid, type FieldErrors } from '../errors';
 
 const fraction = (percent: number | undefined) => (percent === undefined ? undefined : percent / 100);
 
 /** A plate in the words of the core. */
 export function toNameplate(plate: PlateInput): Nameplate {
-  const { exciterFieldA, exciterNoLoadA, limits } = plate;
+  const { exciterFieldA, exciterNoLoadA, coldFieldResistanceOhm, coldFieldAtC } = plate;
   return {
     output: plate.output,
     outputUnit: plate.outputUnit,
     voltageV: plate.voltageV,
     currentA: plate.currentA,
+    apparentKva: plate.apparentKva,
     powerFactor: plate.powerFactor,
     speedRpm: plate.speedRpm,
     poles: plate.poles,
     frequencyHz: plate.frequencyHz,
     efficiency: fraction(plate.efficiencyPercent),
+    serviceFactor: plate.serviceFactor,
+    temperatureRiseC: plate.temperatureRiseC,
+    insulationClass: plate.insulationClass,
+    ambientC: plate.ambientC,
     fieldCurrentA: plate.fieldCurrentA,
     fieldVoltageV: plate.fieldVoltageV,
     fieldResistanceOhm: plate.fieldResistanceOhm,
+    coldField:
+      coldFieldResistanceOhm === undefined || coldFieldAtC === undefined
+        ? undefined
+        : { resistanceOhm: coldFieldResistanceOhm, atC: coldFieldAtC },
     exciter: plate.exciterKind,
     exciterEfficiency: fraction(plate.exciterEfficiencyPercent),
     exciterField: exciterFieldA === undefined ? undefined : { ratedA: exciterFieldA, noLoadA: exciterNoLoadA },
@@ -28,13 +43,22 @@ export function toNameplate(plate: PlateInput): Nameplate {
     xdPu: plate.xdPu,
     xqPu: plate.xqPu,
     xlPu: plate.xlPu,
+    ohms: windingOhms(plate),
     openCircuitCurve: plate.openCircuitCurve,
-    limits: {
-      fieldCurrentA: limits.fieldCurrentA,
-      armatureCurrentA: limits.armatureCurrentA,
-      pullOutMargin: limits.pullOutMargin,
-      reserve: fraction(limits.reservePercent),
-    },
+    limits: plateLimits(plate.limits),
+  };
+}
+
+function windingOhms({ connection, xdOhm, xqOhm, raOhm, raAtC }: PlateInput): Nameplate['ohms'] {
+  return connection && { connection, xdOhm, xqOhm, raOhm, raAtC };
+}
+
+function plateLimits({ reservePercent, voltageLowPu, voltageHighPu, ...limits }: PlateInput['limits']): PlateLimits {
+  const band = voltageLowPu !== undefined && voltageHighPu !== undefined;
+  return {
+    ...limits,
+    reserve: fraction(reservePercent),
+    voltageBandPu: band ? { low: voltageLowPu, high: voltageHighPu } : undefined,
   };
 }
 
@@ -44,8 +68,13 @@ const formPaths: Record<string, string> = {
   exciter: 'plate.exciterKind',
   exciterEfficiency: 'plate.exciterEfficiencyPercent',
   exciterField: 'plate.exciterFieldA',
+  coldField: 'plate.coldFieldResistanceOhm',
   motor: 'plate.output',
   lossSplit: 'plate.efficiencyPercent',
+  'ohms.xdOhm': 'plate.xdOhm',
+  'ohms.xqOhm': 'plate.xqOhm',
+  'ohms.raOhm': 'plate.raOhm',
+  'limits.voltageBandPu': 'plate.limits.voltageLowPu',
 };
 
 /** Where an entry of the core's nameplate stands in the form, `plate.xdPu` for instance. */

@@ -3,6 +3,7 @@ import type { CompletedMotor, SynchronousMotor } from '../../core/machine';
 import { conflict } from '../errors';
 import type { Motor } from '../models/Motor';
 import { calculateYear } from '../workers/pool';
+import { actKey } from './plan-acts';
 import type { TaskAct, TaskBasis, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import { listMotors } from './motors';
@@ -78,10 +79,7 @@ const cacheSize = 60;
 const shared = globalThis as typeof globalThis & { counterlagSettings?: Map<string, Promise<TaskSetting>> };
 const cache = (shared.counterlagSettings ??= new Map());
 
-const keyOf = (basis: PlanBasis, { spans, controls = [], banks, replacements }: TaskAct) => {
-  const ordered = [...controls].sort((a, b) => a.motorId - b.motorId);
-  return `${basis.fingerprint} ${JSON.stringify([spans, ordered, banks, replacements])}`;
-};
+const keyOf = (basis: PlanBasis, act: TaskAct) => `${basis.fingerprint} ${actKey(act)}`;
 
 /** Prices settings over the year; each is worked out once as long as nothing it hangs on changes. */
 export async function priceSettings(basis: PlanBasis, settings: TaskAct[]): Promise<TaskSetting[]> {

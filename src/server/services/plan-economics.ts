@@ -1,11 +1,6 @@
 import { appraise, cashFlow, escalatedSavings, sampleAppraisal, type Project } from '../../core/economics';
-import {
-  cashFlowSpread,
-  type AppraisalView,
-  type CashFlowMonth,
-  type PlanEconomics,
-  type PlanView,
-} from '../../schemas/plan';
+import type { PlanView } from '../../schemas/plan';
+import { cashFlowSpread, type AppraisalView, type CashFlowMonth, type PlanEconomics } from '../../schemas/plan-money';
 
 /** What a plan's money hangs on. Amounts in major units. */
 export interface PlanMoney {

@@ -1,46 +1,67 @@
-import { NotConvergedError, operatingPoint, PullOutError, type SynchronousMotor } from '../../core/machine';
-import { wordNumber } from '../../core/units';
+import { localDateStartMs } from '../../core/load';
+import { settingFault, shaftLoadSeries, spanSeries, type LimitedMotor } from '../../core/plan';
+import type { FieldControl } from '../../core/machine';
+import type { CalendarInput } from '../../schemas/motor';
+import { controlsOf, type MotorSetting } from '../../schemas/plan-settings';
+import { spanNames, type SpanSet } from '../../schemas/plan-spans';
+import type { SpanRules } from './plan-spans';
+import { loadHoursOf, toShiftCalendar } from './shaft-load';
 
-/** What a field current is checked against. */
-export interface LimitedMotor {
-  name: string;
-  machine: SynchronousMotor;
-  limits: { fieldA: number; armatureA: number; pullOutMargin: number; reservePercent: number };
+/** A motor with the loads its settings must hold. */
+export interface LoadedLimits extends LimitedMotor {
+  calendar: CalendarInput;
 }
 
-const amperes = (value: number) => `${wordNumber(value, 0.1).replace(/\.0$/, '')} A`;
+/** The year and its parts that settings are checked over. */
+export interface LimitYear {
+  from: string;
+  to: string;
+  timeZone: string;
+  set: SpanSet;
+  /** null: the year is whole. */
+  rules: SpanRules | null;
+}
 
-/**
- * Why a motor may not be set to a field current, naming motor and limit; null where it may.
- *
- * @param loads  every shaft load of its calendar. [kW]
- */
-export function fieldFault(motor: LimitedMotor, fieldA: number, loads: readonly { shaftKw: number }[]): string | null {
-  const { name, machine, limits } = motor;
-  if (fieldA > limits.fieldA * (1 + 1e-9)) {
-    const reserve = limits.reservePercent > 0 ? `, ${wordNumber(limits.reservePercent, 1)} % kept in reserve` : '';
-    return (
-      `${amperes(fieldA)} is ${amperes(fieldA - limits.fieldA)} beyond the field limit of ${name}, ` +
-      `${amperes(limits.fieldA)}${reserve}. Set it lower.`
-    );
+/** A setting that may not be: of which span, in the plan's order, and why. */
+export interface SettingFault {
+  span: number;
+  words: string;
+}
+
+const stepMinutes = 15;
+
+/** Distinct shaft loads of every span, in the plan's order. [kW] */
+function loadsBySpan({ calendar, machine }: LoadedLimits, year: LimitYear): number[][] {
+  const { from, to, timeZone, rules, set } = year;
+  if (!rules) return [loadHoursOf(calendar, machine.ratedOutputKw, { from, to }).map(({ shaftKw }) => shaftKw)];
+  const startMs = localDateStartMs(from, timeZone);
+  const count = Math.round((localDateStartMs(to, timeZone) - startMs) / (stepMinutes * 60_000));
+  const grid = { startMs, stepMinutes, count };
+  const { index } = spanSeries(rules.rules, grid, timeZone);
+  const found = spanNames(set).map(() => new Set<number>());
+  shaftLoadSeries(toShiftCalendar(calendar, machine.ratedOutputKw), grid, timeZone).forEach((shaftKw, i) => {
+    if (shaftKw > 0) found[rules.of[index[i]!]!]?.add(shaftKw);
+  });
+  return found.map((loads) => [...loads].sort((a, b) => b - a));
+}
+
+/** What a motor may not be set to, span by span; a control for all spans is checked at the loads of each. */
+export function settingFaults(motor: LoadedLimits, controls: FieldControl[], year: LimitYear): SettingFault[] {
+  const bySpan = loadsBySpan(motor, year);
+  if (controls.length === 1) {
+    const words = settingFault(motor, controls[0]!, [...new Set(bySpan.flat())]);
+    return words === null ? [] : [{ span: 0, words }];
   }
-  for (const { shaftKw } of loads) {
-    const at = `At its load of ${wordNumber(shaftKw, 1)} kW ${name}`;
-    try {
-      const point = operatingPoint(machine, { shaftKw, fieldCurrentA: fieldA });
-      if (point.beyond.includes('armature')) {
-        return `${at} would draw ${amperes(point.lineCurrentA)} at ${amperes(fieldA)} of field, beyond the stator limit of ${amperes(limits.armatureA)}.`;
-      }
-      if (point.beyond.includes('pull-out')) {
-        return (
-          `${at} would keep a pull-out of ${wordNumber(point.pullOutRatio, 0.01)} times the load at ${amperes(fieldA)}, ` +
-          `below the ${wordNumber(limits.pullOutMargin, 0.01)} it must keep. Set it higher.`
-        );
-      }
-    } catch (error) {
-      if (!(error instanceof PullOutError || error instanceof NotConvergedError)) throw error;
-      return `${at} would fall out of step at ${amperes(fieldA)} of field: the pull-out limit. Set it higher.`;
-    }
-  }
-  return null;
+  return controls.flatMap((control, span) => {
+    const words = settingFault(motor, control, bySpan[span] ?? []);
+    return words === null ? [] : [{ span, words }];
+  });
+}
+
+/** Why a stored setting cannot be offered any more, naming the span; null where it can. */
+export function storedFault(motor: LoadedLimits, setting: MotorSetting, year: LimitYear): string | null {
+  const controls = controlsOf(setting);
+  const [fault] = settingFaults(motor, controls, year);
+  if (!fault) return null;
+  return controls.length === 1 ? fault.words : `${spanNames(year.set)[fault.span]}: ${fault.words}`;
 }

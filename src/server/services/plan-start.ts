@@ -1,9 +1,11 @@
 import { searchFound } from '../../schemas/job';
-import { planDefaults, type FieldSetting, type PlanInput, type YearView } from '../../schemas/plan';
+import type { YearView } from '../../schemas/plan';
+import type { MotorSettingInput, PlanInput } from '../../schemas/plan-input';
+import { planDefaults } from '../../schemas/plan-money';
 import { notFound } from '../errors';
 import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
-import { storedPlan } from '../presenters/plan';
+import { storedPlan } from '../presenters/plan-row';
 import { readJob } from './jobs';
 
 /** What the form of a plan begins with. */
@@ -31,11 +33,10 @@ export async function planStart(
   asked: { plan: string | null; search: string | null },
 ): Promise<PlanStart | null> {
   const stored = [...year.plans, ...year.unpriced].find((one) => String(one.id) === asked.plan);
-  const fieldsOf = (fields: readonly FieldSetting[]) =>
-    year.standing.fields.map(({ motorId, todayA }) => ({
-      motorId,
-      fieldA: fields.find((field) => field.motorId === motorId)?.fieldA ?? todayA,
-    }));
+  const fieldsOf = (fields: readonly MotorSettingInput[]) =>
+    year.standing.fields.map(
+      ({ motorId, todayA }) => fields.find((field) => field.motorId === motorId) ?? { motorId, fieldA: todayA },
+    );
   if (stored && stored.id !== null) {
     const row = await Plan.findByPk(stored.id);
     if (!row) throw notFound();
@@ -50,8 +51,11 @@ export async function planStart(
   return {
     start: {
       name: freeName([...year.plans, ...year.unpriced].map((one) => one.name)),
-      fields: fieldsOf(found?.fields ?? []),
-      capitalCost: 0,
+      spans: { by: 'year' },
+      fields: fieldsOf((found?.fields ?? []).map(({ motorId, fieldA }) => ({ motorId, fieldA }))),
+      banks: [],
+      replacements: [],
+      workCost: 0,
       yearlyUpkeep: 0,
       economics: { ...planDefaults },
     },

@@ -2,39 +2,34 @@ import { formatBillName } from '../../components/ui/format';
 import { dayNumber } from '../../core/load';
 import { wordNumber } from '../../core/units';
 import { formatPayback } from '../../components/ui/format';
-import {
-  planDefaults,
-  type FieldSetting,
-  type Missing,
-  type PlanEconomics,
-  type PlanView,
-  type UnpricedPlan,
-  type YearView,
-} from '../../schemas/plan';
+import type { CostPart, Missing, PlanView, UnpricedPlan, YearView } from '../../schemas/plan';
+import { planDefaults, type PlanEconomics } from '../../schemas/plan-money';
+import { constantFieldA } from '../../schemas/plan-settings';
+import { wholeYear } from '../../schemas/plan-spans';
 import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
 import { limitsOf, presentAssumed } from '../presenters/motor';
 import {
-  capacitorBank,
   chargeGroups,
-  fieldSettings,
   groupTotals,
   nearestLimitWords,
-  presentCapacitors,
+  presentBank,
   presentPlan,
   presentPlanField,
   presentPlanMotor,
   presentPricedBill,
-  storedPlan,
 } from '../presenters/plan';
-import type { TaskAct, TaskSetting } from '../workers/tasks';
+import { banksOf, costPartsOf, motorSettings, storedPlan } from '../presenters/plan-row';
+import type { TaskSetting } from '../workers/tasks';
 import { notesOfBills } from './bill-notes';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
+import { actOf, standingAct } from './plan-acts';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
 import { appraisePlan, planCashFlow, type PlanMoney } from './plan-economics';
-import { fieldFault } from './plan-limits';
+import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
+import { spanRules, type SpanYear } from './plan-spans';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -66,12 +61,12 @@ interface Year {
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
   const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
-  const faults = rows.map((row) => faultOf(fieldSettings(row), motors));
+  const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
-  const [standing, ...settings] = (await priceSettings(basis, [{}, ...priceable.map(actOf)])) as [
-    TaskSetting,
-    ...TaskSetting[],
-  ];
+  const [standing, ...settings] = (await priceSettings(basis, [
+    standingAct,
+    ...priceable.map((row) => actOf(row, opened, spanYearOf(basis))),
+  ])) as [TaskSetting, ...TaskSetting[]];
   const year: Year = { opened, basis, motors, standing };
   const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
   return {
@@ -94,6 +89,13 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   };
 }
 
+/** What the spans of plans are laid over. */
+const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+  seasons: pricing.schedule.texts.at(-1)?.seasons,
+  from: task.periods[0]!.from,
+  to: task.periods.at(-1)!.to,
+});
+
 const wholeYearDays = 350;
 
 /** What makes the figures stand for less than a year. */
@@ -112,28 +114,31 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
   ];
 }
 
-/** What a stored plan does. */
-function actOf(row: Plan): TaskAct {
-  const bank = capacitorBank(row);
-  return {
-    controls: fieldSettings(row).map(({ motorId, fieldA }) => ({
-      motorId,
-      controls: [{ holds: 'field-current', fieldCurrentA: fieldA }],
-    })),
-    banks: bank ? [{ steps: 1, stepKvar: bank.kvar, lossWPerKvar: bank.lossWPerKvar }] : [],
-  };
-}
-
 /** Why a stored plan cannot be offered any more; null where it can. */
-function faultOf(fields: FieldSetting[], motors: LoadedMotor[]): string | null {
-  for (const { motorId, fieldA } of fields) {
-    const motor = motors.find(({ row }) => row.id === motorId);
+function faultOf(row: Plan, motors: LoadedMotor[], basis: PlanBasis, opened: OpenEngagement): string | null {
+  const { result: rules, fault } = attemptSync(() => spanRules(row.spans, spanYearOf(basis)));
+  if (fault !== null) return fault;
+  const { yearFrom: from, yearTo: to } = opened.engagement;
+  const year: LimitYear = { from, to, timeZone: basis.task.timeZone, set: row.spans, rules };
+  for (const setting of motorSettings(row)) {
+    const motor = motors.find((one) => one.row.id === setting.motorId);
     if (!motor) return 'It sets a motor that is no longer there.';
-    const limited = { name: motor.row.name, machine: motor.machine, limits: limitsOf(motor.machine) };
-    const fault = fieldFault(limited, fieldA, motor.load.hours);
-    if (fault) return fault;
+    const { name, calendar } = motor.row;
+    const limits = limitsOf(motor.machine, motor.completed);
+    const words = storedFault({ name, machine: motor.machine, limits, calendar }, setting, year);
+    if (words) return words;
   }
   return null;
+}
+
+/** What is refused, in words; anything else is thrown on. */
+function attemptSync<Result>(work: () => Result): { result: Result; fault: null } | { result: null; fault: string } {
+  try {
+    return { result: work(), fault: null };
+  } catch (error) {
+    if (!(error instanceof ServiceError)) throw error;
+    return { result: null, fault: error.message };
+  }
 }
 
 const motorFacts = ({ row, machine, load }: LoadedMotor) => ({
@@ -145,11 +150,12 @@ const motorFacts = ({ row, machine, load }: LoadedMotor) => ({
 });
 
 function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedPlan {
-  const fields = fieldSettings(row).flatMap(({ motorId, fieldA }) => {
-    const motor = motors.find((one) => one.row.id === motorId);
-    return motor ? presentPlanField(motorFacts(motor), fieldA) : [];
+  const fields = motorSettings(row).flatMap((setting) => {
+    const motor = motors.find((one) => one.row.id === setting.motorId);
+    return motor ? presentPlanField(motorFacts(motor), setting) : [];
   });
-  return { id: row.id, version: row.version, name: row.name, chosen: row.chosen, fields, reason };
+  const { id, version, name, chosen, spans } = row;
+  return { id, version, name, chosen, spans, fields, reason };
 }
 
 /** First year's saving by group of charges. */
@@ -157,8 +163,8 @@ function savingByGroup(standing: ReturnType<typeof groupTotals>, plan: ReturnTyp
   return Object.fromEntries(chargeGroups.map((group) => [group, standing[group] - plan[group]]));
 }
 
-const atRest: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconomics } = {
-  capitalCost: 0,
+const atRest: { costParts: CostPart[]; yearlyUpkeep: number; economics: PlanEconomics } = {
+  costParts: [],
   yearlyUpkeep: 0,
   economics: { ...planDefaults },
 };
@@ -166,12 +172,14 @@ const atRest: { capitalCost: number; yearlyUpkeep: number; economics: PlanEconom
 function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
   const { basis, motors, standing } = year;
   const { currency } = basis.pricing.schedule;
-  const actions = row ? fieldSettings(row) : [];
-  const fieldOf = (motor: LoadedMotor) =>
-    actions.find((action) => action.motorId === motor.row.id)?.fieldA ?? motor.row.fieldTodayA;
+  const settings = row ? motorSettings(row) : [];
+  const settingOf = (motor: LoadedMotor) => settings.find((one) => one.motorId === motor.row.id);
   const bills = setting.bills.map(presentPricedBill);
   const before = standing.bills.map(presentPricedBill);
-  const { capitalCost, yearlyUpkeep, economics } = row ? storedPlan(row, currency) : atRest;
+  const { costParts, yearlyUpkeep, economics } = row
+    ? { ...storedPlan(row, currency), costParts: costPartsOf(row, currency) }
+    : atRest;
+  const capitalCost = costParts.reduce((sum, { amount }) => sum + amount, 0);
   const money: PlanMoney = {
     savingByGroup: savingByGroup(groupTotals(before), groupTotals(bills)),
     capitalCost,
@@ -181,22 +189,27 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
   const appraisal = appraisePlan(money);
   const views = motors.map((motor) => {
     const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
-    return presentPlanMotor(motorFacts(motor), fieldOf(motor), figures);
+    const own = settingOf(motor);
+    const fieldA = own && constantFieldA(own);
+    return presentPlanMotor(motorFacts(motor), fieldA ?? motor.row.fieldTodayA, figures);
   });
   const search = row?.search ?? null;
   return presentPlan({
     plan: row,
     currency,
-    fields: motors.map((motor) => presentPlanField(motorFacts(motor), fieldOf(motor))),
-    capacitors: presentCapacitors(row && capacitorBank(row)),
+    spans: row?.spans ?? wholeYear,
+    fields: motors.map((motor) => presentPlanField(motorFacts(motor), settingOf(motor))),
+    banks: row ? banksOf(row, currency).map((bank) => presentBank(bank, null)) : [],
+    replacements: [],
     bills,
     standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
-    money: { capitalCost, yearlyUpkeep, economics },
+    money: { capitalCost, costParts, yearlyUpkeep, economics },
     appraisal,
     paybackWords: formatPayback(appraisal.simplePaybackYears),
     ...(row ? planCashFlow(money) : { cashFlow: [], paybackSpread: null }),
     motors: views,
     hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
+    voltage: null,
     nearestLimit: nearestLimitWords(views),
     worstPf: setting.worstPf && { ...setting.worstPf, bill: bills[setting.worstPf.bill]?.to ?? '' },
     assumed: motors.flatMap(({ row: motor, completed, load }) => presentAssumed(motor, completed, load.usualShaftKw)),

@@ -1,18 +1,22 @@
 import { toMinorUnits } from '../../core/units';
 import { searchFound } from '../../schemas/job';
 import type { MotorView } from '../../schemas/motor';
-import type { FieldSetting, PlanAction, PlanChangeInput, PlanInput, SearchView } from '../../schemas/plan';
+import type { PlanChangeInput, PlanInput } from '../../schemas/plan-input';
+import { controlsOf, controlValueKey, type MotorSetting } from '../../schemas/plan-settings';
+import type { SpanSet } from '../../schemas/plan-spans';
+import type { SearchView } from '../../schemas/search';
 import { freshen } from '../db/fresh';
 import { inTx } from '../db/tx';
 import { conflict, invalid, notFound, staleVersion, type FieldErrors } from '../errors';
 import { Job } from '../models/Job';
 import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
-import { presentPlanRow, storedPlan } from '../presenters/plan';
+import { actionsOf, presentPlanRow, storedPlan } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { motorsOf } from './motors';
-import { fieldFault } from './plan-limits';
-import { loadHoursOf } from './shaft-load';
+import { settingFaults, type LimitYear } from './plan-limits';
+import { spanRules } from './plan-spans';
+import { pricingInputs } from './pricing';
 
 export { missingForPlans, plansOf } from './plan-year';
 
@@ -104,27 +108,29 @@ async function checkedValues(opened: OpenEngagement, input: PlanInput) {
   const { currency } = opened.engagement;
   return {
     name: input.name,
-    actions: actionsOf(input),
-    capitalCostMinor: toMinorUnits(input.capitalCost, currency),
+    spans: input.spans,
+    actions: actionsOf(input, currency),
+    workCostMinor: toMinorUnits(input.workCost, currency),
     yearlyUpkeepMinor: toMinorUnits(input.yearlyUpkeep, currency),
     economics: input.economics,
   };
 }
 
-const actionsOf = ({ fields, capacitors }: PlanInput): PlanAction[] => [
-  ...fields.map(({ motorId, fieldA }) => ({ kind: 'field' as const, motorId, fieldA })),
-  ...(capacitors ? [{ kind: 'capacitor' as const, ...capacitors }] : []),
-];
-
-/** Refuses fields of unknown motors, twice the same motor, and every field beyond a limit at a load of its calendar. */
+/** Refuses settings of unknown motors, twice the same motor, and every setting beyond a limit at a load of its span. */
 async function refuseBeyondLimits(opened: OpenEngagement, input: PlanInput): Promise<void> {
   const motors = await motorsOf(opened);
+  const year = await limitYear(opened, input.spans);
   const fields: FieldErrors = {};
   const seen = new Set<number>();
-  input.fields.forEach(({ motorId, fieldA }, index) => {
+  input.fields.forEach((setting, index) => {
+    const { motorId } = setting;
     const motor = motors.find((one) => one.id === motorId);
-    const fault = faultOf(motor, motorId, fieldA, seen, opened);
-    if (fault) fields[`fields.${index}.fieldA`] = [fault];
+    const refused = refusedMotor(motor, seen.has(motorId));
+    if (refused) fields[`fields.${index}.fieldA`] = [refused];
+    else if (motor) {
+      for (const { span, words } of settingFaults(motor, controlsOf(setting), year))
+        fields[faultPath(index, setting, span)] = [words];
+    }
     seen.add(motorId);
   });
   if (Object.keys(fields).length > 0) {
@@ -132,17 +138,22 @@ async function refuseBeyondLimits(opened: OpenEngagement, input: PlanInput): Pro
   }
 }
 
-function faultOf(
-  motor: MotorView | undefined,
-  motorId: number,
-  fieldA: number,
-  seen: Set<number>,
-  { engagement }: OpenEngagement,
-): string | null {
+/** The parts of the year settings are checked over; the seasons of a schedule need the tariff to be chosen. */
+async function limitYear(opened: OpenEngagement, set: SpanSet): Promise<LimitYear> {
+  const { yearFrom: from, yearTo: to } = opened.engagement;
+  const seasons = set.by === 'schedule' ? (await pricingInputs(opened)).schedule.texts.at(-1)?.seasons : undefined;
+  return { from, to, timeZone: opened.site.timeZone, set, rules: spanRules(set, { seasons, from, to }) };
+}
+
+function refusedMotor(motor: MotorView | undefined, isTwice: boolean): string | null {
   if (!motor) return 'This motor is not one of the plant’s. Load the page again.';
-  if (seen.has(motorId)) return `${motor.name} is set twice. Keep one of the two.`;
-  const { yearFrom: from, yearTo: to } = engagement;
-  return fieldFault(motor, fieldA, loadHoursOf(motor.calendar, motor.machine.ratedOutputKw, { from, to }));
+  return isTwice ? `${motor.name} is set twice. Keep one of the two.` : null;
+}
+
+/** Where in the input a setting of a span stands. */
+function faultPath(index: number, { controls }: MotorSetting, span: number): string {
+  const control = controls?.[span];
+  return control ? `fields.${index}.controls.${span}.${controlValueKey[control.holds]}` : `fields.${index}.fieldA`;
 }
 
 async function refuseSameName(engagementId: number, name: string, except?: number): Promise<void> {
@@ -154,7 +165,7 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
   }
 }
 
-type Fields = readonly FieldSetting[];
+type Fields = readonly MotorSetting[];
 
 const sameFields = (found: Fields, set: Fields) =>
   found.every((one) => set.some((other) => other.motorId === one.motorId && other.fieldA === one.fieldA));

@@ -1,5 +1,5 @@
 import { searchFound, type JobProgress } from '../../schemas/job';
-import type { SearchInput, SearchView } from '../../schemas/plan';
+import type { SearchInput, SearchView } from '../../schemas/search';
 import { Job } from '../models/Job';
 import type { Actor } from '../policies/actor';
 import { calculateSearch } from '../workers/pool';

@@ -1,67 +1,21 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { capability, operatingPoint, pullOut, ratedCurrentA, ratedKva } from '../../../src/core/machine';
-import { capabilityCases, voltageCase } from '../../published/machine-capability';
+import { capability, operatingPoint, ratedCurrentA, ratedKva } from '../../../src/core/machine';
+import { loadShares, nameplateCases } from '../../published/machine-capability-cases';
 import { buildLosslessMotor, buildMotor, randomMotor } from './build-motor';
 
-const DIGITS = 5e-6;
-
 describe('capability', () => {
-  for (const c of capabilityCases) {
-    const motor = buildLosslessMotor({ ratedPowerFactor: c.powerFactor, xdPu: c.xdPu, xqPu: c.xqPu });
-
-    it(`has the emf and pull-out of ${c.id}`, () => {
-      const rated = operatingPoint(motor, { shaftKw: motor.ratedOutputKw, powerFactor: c.powerFactor, leading: true });
-      expect(Math.abs(rated.emfPu - c.emfPu)).toBeLessThan(5e-5);
-      const greatest = pullOut({ phaseVoltageV: 1, emfV: rated.emfPu }, { raOhm: 0, xdOhm: c.xdPu, xqOhm: c.xqPu });
-      expect(Math.abs(greatest.activePowerW - c.pullOutPu)).toBeLessThan(5e-5);
-    });
-
-    it.each(c.loads)(`gives the kvar of ${c.id} at %d of rated load`, (load, field, armature) => {
-      const shaftKw = load * motor.ratedOutputKw;
-      const wide = { armatureCurrentA: 1e6, pullOutMargin: 1 };
-      const byField = capability({ ...motor, limits: wide }, { shaftKw });
-      expect(Math.abs(byField.kvarDelivered! / 1000 - field)).toBeLessThan(DIGITS);
-      expect(byField.binding).toBe('field');
-      const both = capability({ ...motor, limits: { pullOutMargin: 1 } }, { shaftKw });
-      if (armature === null) {
-        expect(both).toEqual({ kvarDelivered: null, fieldCurrentA: null, binding: 'armature' });
-      } else {
-        expect(Math.abs(both.kvarDelivered! / 1000 - Math.min(field, armature))).toBeLessThan(DIGITS);
-        if (field !== armature) expect(both.binding).toBe(field < armature ? 'field' : 'armature');
-      }
-      if (armature !== null && load < 1) {
-        const strong = capability({ ...motor, limits: { fieldCurrentA: 1e4, pullOutMargin: 1 } }, { shaftKw });
-        expect(Math.abs(strong.kvarDelivered! / 1000 - armature)).toBeLessThan(DIGITS);
-        expect(strong.binding).toBe('armature');
-      }
+  for (const { id, plate, recomputed } of nameplateCases) {
+    it.each(loadShares)(`names the limit that leaves less of ${id} at %d of rated load`, (share) => {
+      const motor = buildLosslessMotor({ ...plate, limits: { pullOutMargin: 1 } });
+      const at = `load${String(Math.round(100 * share)).padStart(3, '0')}`;
+      const [field, armature] = [recomputed[`Qfield_pu_${at}`]!, recomputed[`Qarm_pu_${at}`]!];
+      const { binding } = capability(motor, { shaftKw: share * motor.ratedOutputKw });
+      // At the rated point both bind.
+      if (field === armature) expect(['field', 'armature']).toContain(binding);
+      else expect(binding).toBe(armature === null || armature < field ? 'armature' : 'field');
     });
   }
-
-  it.each(voltageCase.rows)('follows the voltage at $voltagePu pu', ({ voltagePu, field, armature, fieldAtNoLoad }) => {
-    const motor = buildLosslessMotor({ ratedPowerFactor: 0.8, xdPu: voltageCase.xdPu, xqPu: voltageCase.xqPu });
-    const shaftKw = motor.ratedOutputKw;
-    const wide = { ...motor, limits: { armatureCurrentA: 1e6 } };
-    expect(Math.abs(capability(wide, { shaftKw, voltagePu }).kvarDelivered! / 1000 - field)).toBeLessThan(DIGITS);
-    expect(Math.abs(capability(wide, { shaftKw: 0, voltagePu }).kvarDelivered! / 1000 - fieldAtNoLoad)).toBeLessThan(
-      DIGITS,
-    );
-    const both = capability(motor, { shaftKw, voltagePu }).kvarDelivered! / 1000;
-    expect(Math.abs(both - Math.min(field, armature))).toBeLessThan(DIGITS);
-  });
-
-  it('delivers 0.6 kvar per hp at rated load for 0.8 power factor', () => {
-    // A trade chart of motor capability: 250 hp, 0.8 power factor, 100 % load, excitation held: factor 0.6, 150 kvar (graph reading, 1 %).
-    const motor = buildMotor({
-      ratedOutputKw: 250 * 0.746,
-      ratedVoltageV: 2300,
-      ratedEfficiency: 0.93,
-      ratedFieldCurrentA: 40,
-      fieldResistanceOhm: 1.5,
-    });
-    const { kvarDelivered } = capability(motor, { shaftKw: motor.ratedOutputKw });
-    expect(Math.abs(kvarDelivered! / 150 - 1)).toBeLessThan(0.01);
-  });
 
   it('names pull-out when the field cannot hold the load or the margin fails', () => {
     expect(capability(buildMotor(), { shaftKw: 6000 })).toEqual({

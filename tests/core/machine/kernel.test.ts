@@ -1,19 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { PullOutError, excitation, pullOut, reactivePower } from '../../../src/core/machine';
-import { excitationCases, fixedFieldCases, pullOutCases } from '../../published/machine-kernel';
-
-const degrees = (rad: number) => (rad * 180) / Math.PI;
 
 describe('excitation', () => {
-  it.each(excitationCases)('agrees with $source', (row) => {
-    const found = excitation(row, row.z);
-    const figures = { emfV: found.emfV, currentA: found.currentA, loadAngleDeg: degrees(found.loadAngleRad) };
-    for (const { quantity, printed, tolerance, factor } of row.expected) {
-      expect(Math.abs(figures[quantity] * (factor ?? 1) - printed), quantity).toBeLessThanOrEqual(tolerance);
-    }
-  });
-
   it('gives the terminal voltage as emf when nothing is taken', () => {
     const z = { raOhm: 0.1, xdOhm: 5, xqOhm: 3 };
     expect(excitation({ phaseVoltageV: 240, activePowerW: 0, reactivePowerVar: 0 }, z)).toEqual({
@@ -43,7 +32,7 @@ describe('excitation', () => {
           expect(Math.abs(imag) / m.v).toBeLessThan(1e-9);
         },
       ),
-      { numRuns: 1000 },
+      { numRuns: 10_000 },
     );
   });
 
@@ -66,19 +55,6 @@ describe('excitation', () => {
 });
 
 describe('reactivePower', () => {
-  it.each(fixedFieldCases)('agrees with $source', (row) => {
-    const found = reactivePower(row, row.z);
-    const figures = {
-      loadAngleDeg: degrees(found.loadAngleRad),
-      currentA: found.currentA,
-      kvarDelivered: -found.reactivePowerVar / 1000,
-      powerFactor: row.activePowerW / (row.phaseVoltageV * found.currentA),
-    };
-    for (const { quantity, printed, tolerance } of row.expected) {
-      expect(Math.abs(figures[quantity] - printed), quantity).toBeLessThanOrEqual(tolerance);
-    }
-  });
-
   it('undoes excitation on the stable side, for random machines', () => {
     fc.assert(
       fc.property(
@@ -98,7 +74,7 @@ describe('reactivePower', () => {
           expect(Math.abs(back.currentA - forward.currentA)).toBeLessThan(1e-9 * (unit / m.v));
         },
       ),
-      { numRuns: 1500 },
+      { numRuns: 10_000 },
     );
   });
 
@@ -139,13 +115,6 @@ describe('reactivePower of a generator', () => {
 });
 
 describe('pullOut', () => {
-  it.each(pullOutCases)('agrees with $source', (row) => {
-    const found = pullOut(row, row.z);
-    expect(Math.abs(3 * found.activePowerW - row.totalW)).toBeLessThanOrEqual(row.tolerance);
-    if (row.angleDeg !== undefined)
-      expect(Math.abs(degrees(found.loadAngleRad) - row.angleDeg)).toBeLessThanOrEqual(0.05);
-  });
-
   it('meets the closed form cos d = (-a + sqrt(a^2 + 8 b^2))/(4 b) without resistance', () => {
     // dP/dd = a cos d + b cos 2d with a = V E/Xd, b = V^2 (1/Xq - 1/Xd): a quadratic in cos d.
     fc.assert(
@@ -158,7 +127,7 @@ describe('pullOut', () => {
         const found = pullOut({ phaseVoltageV: m.v, emfV: emfPu * m.v }, z);
         expect(Math.cos(found.loadAngleRad)).toBeCloseTo(cosine, 8);
       }),
-      { numRuns: 1000 },
+      { numRuns: 10_000 },
     );
   });
 

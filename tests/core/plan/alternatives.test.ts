@@ -3,7 +3,7 @@ import type { LoadSeries } from '../../../src/core/load';
 import { operatingPoint } from '../../../src/core/machine';
 import { judgePlans, shaftLoadFromSubmeter, simulatePlan, sizeCapacitors } from '../../../src/core/plan';
 import { buildMotor } from '../machine/build-motor';
-import { buildLoad, buildPlanMotor } from './build-plant';
+import { buildLoad, buildPlanMotor, field } from './build-plant';
 
 const total = (series: Float64Array) => series.reduce((sum, value) => sum + value, 0);
 
@@ -12,7 +12,7 @@ describe('sizeCapacitors', () => {
   const load = buildLoad(1, { kvarhLagging: new Float64Array(96).fill(100) });
   const plant = { load, motors: [buildPlanMotor(load)] };
   const totals = (series: LoadSeries) => Float64Array.of(total(series.kvarhLagging) + 3 * total(series.kvarhLeading));
-  const step = { kvar: 50, lossWPerKvar: 0 };
+  const step = { stepKvar: 50, lossWPerKvar: 0 };
 
   it('finds the size that meets a constant load', () => {
     const found = sizeCapacitors({ plant, step, mostSteps: 12, totals });
@@ -31,20 +31,51 @@ describe('sizeCapacitors', () => {
   it('prices as the simulation does, with motors at given fields, and checks resonance', () => {
     const found = sizeCapacitors({
       plant,
-      step: { kvar: 50, lossWPerKvar: 3, voltagePu: 1.02 },
+      step: { stepKvar: 50, lossWPerKvar: 3, voltagePu: 1.02 },
       mostSteps: 3,
       totals: (series) => Float64Array.of(total(series.kvarhLagging), total(series.kwh)),
-      fieldsA: [120],
+      controls: [field(120)],
       shortCircuitKva: 26087,
     });
-    const plan = simulatePlan({
-      load,
-      motors: [{ ...plant.motors[0]!, planFieldA: 120 }],
-      capacitors: [{ kvar: 150, lossWPerKvar: 3, voltagePu: 1.02 }],
+    const plan = simulatePlan(plant, {
+      controls: [field(120)],
+      banks: [{ steps: 3, stepKvar: 50, lossWPerKvar: 3, voltagePu: 1.02 }],
     });
     expect(found.sizes[3]!.billCost).toBeCloseTo(total(plan.load.kvarhLagging) + total(plan.load.kwh), 6);
     expect(found.sizes[0]!.resonance).toBeNull();
     expect(found.sizes[3]!.resonance!.order).toBeCloseTo(Math.sqrt(26087 / 150), 9);
+  });
+
+  it('tries a controller besides, which never leads, and weighs what it costs', () => {
+    // By night 400 kvar are not there: 64 quarter-hours of 400 kvar lagging, 32 of none. Fixed, 50 kvar save 64 x 12.5 = 800 and cost
+    // 32 x 3 x 12.5 = 1200 a step, so none pays; switched, eight steps save 64 x 100 = 6400.
+    const part = buildLoad(1, { kvarhLagging: Float64Array.from({ length: 96 }, (_, i) => (i < 64 ? 100 : 0)) });
+    const size = (yearlyCostOfController: number) =>
+      sizeCapacitors({
+        plant: { load: part, motors: [] },
+        step,
+        mostSteps: 12,
+        totals,
+        holdsPowerFactor: 1,
+        yearlyCostOfController,
+      });
+    expect(size(6000).best).toMatchObject({ steps: 8, switched: true, billCost: 0, yearCost: 6000 });
+    expect(size(6500).best).toMatchObject({ steps: 0, switched: false, billCost: 6400 });
+  });
+
+  it('checks every number of steps of a switched bank for resonance', () => {
+    // 26,087 kVA: 7 x 149 = 1043 kvar resonate at 5.00, 3 x 149 at 7.64, 4 x 149 at 6.62, 5 x 149 at 5.92, 6 x 149 at 5.40.
+    const found = sizeCapacitors({
+      plant,
+      step: { stepKvar: 149, lossWPerKvar: 0 },
+      mostSteps: 7,
+      totals,
+      holdsPowerFactor: 1,
+      shortCircuitKva: 26_087,
+    });
+    const seven = found.sizes.find(({ steps, switched }) => steps === 7 && switched)!;
+    expect(seven.resonance).toMatchObject({ steps: 7, near: [5] });
+    expect(seven.resonance!.order).toBeCloseTo(Math.sqrt(26_087 / 1043), 9);
   });
 
   it('can be cancelled', () => {

@@ -136,14 +136,22 @@ describe('power factor at the service point', () => {
     const holed = buildLoad(1);
     for (const channel of [holed.kwh, holed.kvarhLagging, holed.kvarhLeading]) channel[40] = NaN;
     holed.quality[40] = 2;
-    const { load: after } = simulatePlan({ load: holed, motors: [buildPlanMotor(holed)] }, { controls: [holdFactor(0.9)] });
+    const { load: after } = simulatePlan(
+      { load: holed, motors: [buildPlanMotor(holed)] },
+      { controls: [holdFactor(0.9)] },
+    );
     expect([after.kwh[40], after.kvarhLagging[40], after.kvarhLeading[40]]).toEqual([NaN, NaN, NaN]);
     expect(after.kwh[41]).toBeGreaterThan(0);
   });
 });
 
 describe('bus voltage', () => {
-  const supply: BusSupply = { shortCircuitKva: 60_000, xOverR: 10, noLoadPu: 1.02, allowedPu: { low: 0.95, high: 1.0 } };
+  const supply: BusSupply = {
+    shortCircuitKva: 60_000,
+    xOverR: 10,
+    noLoadPu: 1.02,
+    allowedPu: { low: 0.95, high: 1.0 },
+  };
 
   it('is estimated as it stands and with the plan', () => {
     const { bus } = simulatePlan({ load, motors: [one], supply }, { controls: [field(140)] });
@@ -187,7 +195,9 @@ describe('bus voltage', () => {
 
   it('refuses to be held where the supply is not known, or by a droop that is none', () => {
     const control = (setPu: number, droopPu: number): FieldControl[][] => [[{ holds: 'voltage', setPu, droopPu }]];
-    expect(() => createSimulator({ load, motors: [one] }).apply(control(1, 0.05))).toThrow(/supply of its bus is not known/);
+    expect(() => createSimulator({ load, motors: [one] }).apply(control(1, 0.05))).toThrow(
+      /supply of its bus is not known/,
+    );
     const { apply } = createSimulator({ load, motors: [one], supply });
     expect(() => apply(control(1, 0))).toThrow(/droopPu must be in \(0, 1\], got 0/);
     expect(() => apply(control(0, 0.05))).toThrow(/setPu/);
@@ -227,7 +237,10 @@ describe('capacitor banks', () => {
     const alone = simulatePlan({ load: flat, motors: [motor] }, { controls: [field(110)] });
     const left = net(alone.load, 50) - kw(alone.load, 50) * Math.tan(Math.acos(0.95));
     expect(net(plan.load, 50)).toBeCloseTo(net(alone.load, 50) - 150 * Math.floor(left / 150), 6);
-    const beside = simulatePlan({ load: flat, beside: [flat], motors: [] }, { controls: [], banks: [{ ...banks[0]!, behind: 1 }] });
+    const beside = simulatePlan(
+      { load: flat, beside: [flat], motors: [] },
+      { controls: [], banks: [{ ...banks[0]!, behind: 1 }] },
+    );
     expect(beside.load.kvarhLagging[50]).toBeCloseTo((900 + 450) / 4, 9);
   });
 
@@ -257,7 +270,10 @@ describe('a synchronous motor in place of an induction motor', () => {
   });
 
   it('takes out what the data sheet says and puts in what the new motor takes', () => {
-    const { load: after, replacements } = simulatePlan({ load, motors: [] }, { controls: [], replacements: [replace(750)] });
+    const { load: after, replacements } = simulatePlan(
+      { load, motors: [] },
+      { controls: [], replacements: [replace(750)] },
+    );
     // 750/0.95 = 789.474 kW; kvar = 789.474 x sqrt(1 - 0.86^2)/0.86 = 468.444.
     const point = operatingPoint(buildMotor(), { shaftKw: 750, fieldCurrentA: 140 });
     expect(kw(after, 10)).toBeCloseTo(kw(load, 10) - 789.4737 + point.inputKw, 3);
@@ -278,7 +294,8 @@ describe('a synchronous motor in place of an induction motor', () => {
     [{ ...induction, points: induction.points.slice(0, 1) }, /at least two, got 1/],
     [{ ...induction, points: [...induction.points].reverse() }, /points\[1\]\.loadShare must be above 1/],
   ])('refuses a data sheet %#', (wrong, message) => {
-    const run = () => simulatePlan({ load, motors: [] }, { controls: [], replacements: [{ ...replace(500), induction: wrong }] });
+    const run = () =>
+      simulatePlan({ load, motors: [] }, { controls: [], replacements: [{ ...replace(500), induction: wrong }] });
     expect(run).toThrow(message);
   });
 });

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { operatingPoint } from '../../../src/core/machine';
-import { createSimulator, searchFields, simulatePlan } from '../../../src/core/plan';
-import { buildLoad, buildPlanMotor } from './build-plant';
+import { createSimulator, searchSettings, simulatePlan } from '../../../src/core/plan';
+import { buildLoad, buildPlanMotor, field } from './build-plant';
 
 // Two meters billed together. The first stands at 1,000 kvarh lagging in each quarter-hour; behind the second a motor runs and its meter
 // shows nothing of either sense, so that all it delivers more turns up on that meter's leading register.
@@ -14,11 +14,10 @@ const deliveredKvarh = (at(105).kvar - at(140).kvar) / 4;
 describe('several meters summed', () => {
   it('changes the registers of the meter a motor stands behind', () => {
     expect(deliveredKvarh).toBeGreaterThan(100);
-    const { load, hoursLeadingBefore } = simulatePlan({
-      load: first,
-      beside: [second],
-      motors: [{ ...motor, behind: 1, planFieldA: 140 }],
-    });
+    const { load, hoursLeadingBefore } = simulatePlan(
+      { load: first, beside: [second], motors: [{ ...motor, behind: 1 }] },
+      { controls: [field(140)] },
+    );
     expect(hoursLeadingBefore).toBe(0);
     load.kvarhLagging.forEach((lagging) => expect(lagging).toBeCloseTo(1000, 9));
     load.kvarhLeading.forEach((leading) => expect(leading).toBeCloseTo(deliveredKvarh, 9));
@@ -27,12 +26,10 @@ describe('several meters summed', () => {
   });
 
   it('takes the same delivery off the lagging register of the first meter when it stands behind that', () => {
-    const { load } = simulatePlan({
-      load: first,
-      beside: [second],
-      motors: [{ ...motor, planFieldA: 140 }],
-      capacitors: [{ kvar: 400, lossWPerKvar: 0 }],
-    });
+    const { load } = simulatePlan(
+      { load: first, beside: [second], motors: [motor] },
+      { controls: [field(140)], banks: [{ steps: 1, stepKvar: 400, lossWPerKvar: 0 }] },
+    );
     load.kvarhLagging.forEach((lagging) => expect(lagging).toBeCloseTo(1000 - deliveredKvarh - 100, 9));
     load.kvarhLeading.forEach((leading) => expect(leading).toBe(0));
   });
@@ -40,14 +37,18 @@ describe('several meters summed', () => {
   it('hands each meter the field currents of its own motors, whatever their order', () => {
     const ofFirst = buildPlanMotor(first, { shaftKw: motor.shaftKw });
     const plant = { load: first, beside: [second], motors: [{ ...motor, behind: 1 }, ofFirst] };
-    const load = createSimulator(plant).apply([105, 140]);
+    const load = createSimulator(plant).apply([field(105), field(140)]);
     load.kvarhLagging.forEach((lagging) => expect(lagging).toBeCloseTo(1000 - deliveredKvarh, 9));
     load.kvarhLeading.forEach((leading) => expect(leading).toBeCloseTo(0, 9));
   });
 
   it('searches with the sum: a motor behind a meter that lags nothing is left alone where leading is charged', () => {
-    const found = searchFields({
-      plant: { load: first, beside: [second], motors: [{ ...motor, behind: 1, stepA: 5 }] },
+    const found = searchSettings({
+      plant: {
+        load: first,
+        beside: [second],
+        motors: [{ ...motor, behind: 1, searched: { holds: 'field-current', stepA: 5 } }],
+      },
       totals: (load) =>
         Float64Array.of(load.kvarhLagging.reduce((a, b) => a + b) + 3 * load.kvarhLeading.reduce((a, b) => a + b)),
     });

@@ -125,7 +125,9 @@ describe('simulatePlan', () => {
     [{ shaftKw: new Float64Array(672).fill(-1) }, /shaftKw\[0\] must be >= 0, got -1/],
     [{ shaftKw: new Float64Array(672).fill(NaN) }, /got NaN/],
   ])('refuses a shaft load that does not fit', (wrong, message) => {
-    expect(() => simulatePlan({ load, motors: [{ ...planMotor, ...wrong }] }, { controls: [field(120)] })).toThrow(message);
+    expect(() => simulatePlan({ load, motors: [{ ...planMotor, ...wrong }] }, { controls: [field(120)] })).toThrow(
+      message,
+    );
   });
 
   it.each([
@@ -181,17 +183,43 @@ describe('fieldBounds', () => {
     }
     expect(at(bounds.highA * 1.001, bounds.highBinding.shaftKw).beyond).toContain(bounds.highBinding.limit);
     expect(at(bounds.lowA * 0.999, bounds.lowBinding.shaftKw).beyond).toContain(bounds.lowBinding.limit);
-    expect(bounds.highBinding).toEqual({ limit: 'armature', shaftKw: 1550 });
+    expect(bounds.highBinding).toEqual({ limit: 'armature', shaftKw: 1550, voltagePu: 1 });
   });
 
   it('says at which load nothing is admissible', () => {
     expect(fieldBounds({ ...planMotor, shaftKw: new Float64Array(4).fill(2500) })).toEqual({
-      none: { limit: 'armature', shaftKw: 2500 },
+      none: { limit: 'armature', shaftKw: 2500, voltagePu: 1 },
     });
   });
 
   it('bounds a motor that never runs by its field limit', () => {
     const bounds = fieldBounds({ ...planMotor, shaftKw: new Float64Array(4) });
     expect('none' in bounds ? null : bounds.highA).toBeCloseTo(150, 9);
+  });
+
+  it('holds at both ends of the voltage band, each end set by its own voltage', () => {
+    const shaftKw = new Float64Array(4).fill(1450);
+    const bounds = fieldBounds({ ...planMotor, shaftKw, voltageBandPu: { low: 0.92, high: 1.06 } });
+    if ('none' in bounds) throw new Error('bounds expected');
+    const beyond = (fieldCurrentA: number, voltagePu: number) =>
+      operatingPoint(planMotor.motor, { shaftKw: 1450, voltagePu, fieldCurrentA }).beyond;
+    for (const voltagePu of [0.92, 0.95, 1, 1.03, 1.06]) {
+      expect(beyond(bounds.lowA * (1 + 1e-9), voltagePu)).toEqual([]);
+      expect(beyond(bounds.highA * (1 - 1e-9), voltagePu)).toEqual([]);
+    }
+    // Less voltage, more current for the same power: the over-excited end is set low, where one more ampere breaks the armature's limit.
+    expect(bounds.highBinding).toEqual({ limit: 'armature', shaftKw: 1450, voltagePu: 0.92 });
+    expect(beyond(bounds.highA * 1.001, 0.92)).toContain('armature');
+    expect(beyond(bounds.lowA * 0.999, bounds.lowBinding.voltagePu)).toContain(bounds.lowBinding.limit);
+    const alone = fieldBounds({ ...planMotor, shaftKw });
+    expect('none' in alone ? 0 : alone.highA).toBeGreaterThan(bounds.highA);
+  });
+
+  it('keeps the least field a regulator or maker allows, and says so', () => {
+    const bounds = fieldBounds({ ...planMotor, leastFieldA: 95 });
+    expect(bounds).toMatchObject({ lowA: 95, lowBinding: { limit: 'least-field', shaftKw: 1200, voltagePu: 1 } });
+    expect(fieldBounds({ ...planMotor, leastFieldA: 400 })).toMatchObject({ none: { limit: 'least-field' } });
+    expect(() => fieldBounds({ ...planMotor, leastFieldA: -1 })).toThrow(/leastFieldA must be >= 0/);
+    expect(() => fieldBounds({ ...planMotor, voltageBandPu: { low: 1.1, high: 0.9 } })).toThrow(/voltageBandPu/);
   });
 });

@@ -1,4 +1,4 @@
-import { planChangeInput, planChoiceInput } from '@/schemas/plan';
+import { planChangeInput, planChoiceInput } from '@/schemas/plan-input';
 import { versionInput } from '@/schemas/motor';
 import { endpoint, parseOrThrow, readJson } from '@/server/http';
 import { rowId } from '@/server/row-id';

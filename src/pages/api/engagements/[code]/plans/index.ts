@@ -1,4 +1,4 @@
-import { planInput } from '@/schemas/plan';
+import { planInput } from '@/schemas/plan-input';
 import { endpoint, parseOrThrow, readJson } from '@/server/http';
 import { openEngagement } from '@/server/services/engagements';
 import { createPlan, plansOf } from '@/server/services/plans';

@@ -1,4 +1,4 @@
-import { searchInput } from '@/schemas/plan';
+import { searchInput } from '@/schemas/search';
 import { endpoint, parseOrThrow, readJson } from '@/server/http';
 import { openEngagement } from '@/server/services/engagements';
 import { startSearch } from '@/server/services/search';

@@ -1,10 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import type { LoadSeries } from '../../../src/core/load';
 import { operatingPoint } from '../../../src/core/machine';
-import { searchFields, simulatePlan } from '../../../src/core/plan';
+import { searchSettings, simulatePlan } from '../../../src/core/plan';
+import type { SearchResult } from '../../../src/core/plan';
 import type { SearchMotor } from '../../../src/core/plan';
 import { buildMotor } from '../machine/build-motor';
-import { buildLoad, buildPlanMotor } from './build-plant';
+import { buildLoad, buildPlanMotor, field } from './build-plant';
 
 const load = buildLoad(4);
 const one = buildPlanMotor(load);
@@ -23,19 +24,25 @@ const highestKva = (series: LoadSeries) => {
   });
   return highest;
 };
+/** Field current of every motor in its first span. */
+const fieldsOf = (result: SearchResult) =>
+  result.controls.map(([first]) => (first?.holds === 'field-current' ? first.fieldCurrentA : NaN));
+const inSteps = (stepA: number, more: { panelLowA?: number; panelHighA?: number } = {}) => ({
+  searched: { holds: 'field-current' as const, stepA, ...more },
+});
 const kvarDelivered = (motor: SearchMotor, fieldCurrentA: number) =>
   -operatingPoint(motor.motor, { shaftKw: Math.max(...motor.shaftKw), fieldCurrentA }).kvar;
 
-describe('searchFields on bills with a known best', () => {
+describe('searchSettings on bills with a known best', () => {
   it('finds the field whose kvar brings a convex charge to nought', () => {
     // The charge is the square of what is missing to the kvarh that 127 A would deliver in the 64 running hours.
     const target = (kvarDelivered(one, 127) - kvarDelivered(one, 105)) * 64;
     const before = total(load.kvarhLagging);
-    const result = searchFields({
+    const result = searchSettings({
       plant: { load, motors: [one] },
       totals: (series) => bill((before - total(series.kvarhLagging) + total(series.kvarhLeading) - target) ** 2),
     });
-    expect(result.fieldsA).toEqual([127]);
+    expect(fieldsOf(result)).toEqual([127]);
     expect(result.cost).toBeLessThan(1e-6);
     expect(result.leaveAlone).toBe(false);
     expect(result.exhaustive).toBe(true);
@@ -45,31 +52,31 @@ describe('searchFields on bills with a known best', () => {
   it('stops a kVA charge where its own losses outweigh it', () => {
     const energyPrice = 1.2;
     const totals = (series: LoadSeries) => bill(highestKva(series) * 3, total(series.kwh) * energyPrice);
-    const result = searchFields({ plant: { load, motors: [{ ...one, stepA: 0.5 }] }, totals });
+    const result = searchSettings({ plant: { load, motors: [{ ...one, ...inSteps(0.5) }] }, totals });
     // Brute force over the same half amperes, each simulated on its own.
-    let best = { field: 0, cost: Infinity };
-    for (let field = 75; field <= 150; field += 0.5) {
-      const cost = total(totals(simulatePlan({ load, motors: [{ ...one, planFieldA: field }] }).load));
-      if (cost < best.cost) best = { field, cost };
+    let best = { amperes: 0, cost: Infinity };
+    for (let amperes = 75; amperes <= 150; amperes += 0.5) {
+      const cost = total(totals(simulatePlan({ load, motors: [one] }, { controls: [field(amperes)] }).load));
+      if (cost < best.cost) best = { amperes, cost };
     }
-    expect(result.fieldsA).toEqual([best.field]);
+    expect(fieldsOf(result)).toEqual([best.amperes]);
     expect(result.cost).toBeCloseTo(best.cost, 8);
-    expect(best.field).toBeGreaterThan(105);
-    expect(best.field).toBeLessThan(150);
+    expect(best.amperes).toBeGreaterThan(105);
+    expect(best.amperes).toBeLessThan(150);
   });
 
   it('steps just over a cliff and no further', () => {
     // 5000 as soon as lagging energy passes 0.86 of active energy, and energy at 0.1: the least field that clears the cliff.
     const totals = (series: LoadSeries) =>
       bill((total(series.kvarhLagging) > 0.83 * total(series.kwh) ? 5000 : 0) + 0.1 * total(series.kwh));
-    const result = searchFields({ plant: { load, motors: [one] }, totals });
-    const clears = (field: number) => {
-      const series = simulatePlan({ load, motors: [{ ...one, planFieldA: field }] }).load;
+    const result = searchSettings({ plant: { load, motors: [one] }, totals });
+    const clears = (amperes: number) => {
+      const series = simulatePlan({ load, motors: [one] }, { controls: [field(amperes)] }).load;
       return total(series.kvarhLagging) <= 0.83 * total(series.kwh);
     };
-    const [field] = result.fieldsA as [number];
-    expect(clears(field)).toBe(true);
-    expect(clears(field - 1)).toBe(false);
+    const [amperes] = fieldsOf(result) as [number];
+    expect(clears(amperes)).toBe(true);
+    expect(clears(amperes - 1)).toBe(false);
     expect(result.standingCost - result.cost).toBeGreaterThan(4000);
   });
 
@@ -77,24 +84,27 @@ describe('searchFields on bills with a known best', () => {
     // Billed demand is held up by last year's 12 MVA whatever the plan does; what is left is the motors' loss. Fields stand at least loss.
     const atLeast = { ...one, standingFieldA: leastLossStep(one) };
     const totals = (series: LoadSeries) => bill(Math.max(highestKva(series), 12000) * 9, total(series.kwh) * 0.1);
-    const result = searchFields({ plant: { load, motors: [atLeast] }, totals });
+    const result = searchSettings({ plant: { load, motors: [atLeast] }, totals });
     expect(result.leaveAlone).toBe(true);
-    expect(result.fieldsA).toEqual([atLeast.standingFieldA]);
+    expect(fieldsOf(result)).toEqual([atLeast.standingFieldA]);
     expect(result.cost).toBe(result.standingCost);
   });
 
   it('leaves the fields alone where nothing is charged for them at all', () => {
-    const result = searchFields({ plant: { load, motors: [one, two] }, totals: () => bill(1000) });
+    const result = searchSettings({ plant: { load, motors: [one, two] }, totals: () => bill(1000) });
     expect(result.leaveAlone).toBe(true);
-    expect(result.fieldsA).toEqual([105, 60]);
+    expect(fieldsOf(result)).toEqual([105, 60]);
   });
 
   it('moves no other motor where one must leave a field of nothing', () => {
-    // Nothing is charged: the motor that stands at 0 A must take the least step within its limits, the other stays.
+    // Nothing is charged: the motor that stands at 0 A must be moved, to the step it loses least at; the other stays.
     const motor = buildMotor({ limits: { pullOutMargin: 1, armatureCurrentA: 1000 } });
     const idle = { ...one, motor, shaftKw: new Float64Array(load.kwh.length).fill(1), standingFieldA: 0 };
-    const result = searchFields({ plant: { load, motors: [idle, { ...two, stepA: 5 }] }, totals: () => bill(1000) });
-    expect(result.fieldsA).toEqual([1, 60]);
+    const result = searchSettings({
+      plant: { load, motors: [idle, { ...two, ...inSteps(5) }] },
+      totals: () => bill(1000),
+    });
+    expect(fieldsOf(result)).toEqual([leastLossStep(idle, { from: 1, shaftKw: 1 }), 60]);
   });
 
   it('goes no further than a leading charge allows', () => {
@@ -102,9 +112,9 @@ describe('searchFields on bills with a known best', () => {
     const light = buildLoad(4, { kvarhLagging: new Float64Array(load.kwh.length).fill(60) });
     const motor = buildPlanMotor(light);
     const totals = (series: LoadSeries) => bill(total(series.kvarhLagging) + 10 * total(series.kvarhLeading));
-    const result = searchFields({ plant: { load: light, motors: [motor] }, totals });
-    const delivered = kvarDelivered(motor, result.fieldsA[0]!) - kvarDelivered(motor, 105);
-    const oneMore = kvarDelivered(motor, result.fieldsA[0]! + 1) - kvarDelivered(motor, 105);
+    const result = searchSettings({ plant: { load: light, motors: [motor] }, totals });
+    const delivered = kvarDelivered(motor, fieldsOf(result)[0]!) - kvarDelivered(motor, 105);
+    const oneMore = kvarDelivered(motor, fieldsOf(result)[0]! + 1) - kvarDelivered(motor, 105);
     // 60 kvarh a quarter-hour is 240 kvar.
     expect(delivered).toBeLessThanOrEqual(240);
     expect(oneMore).toBeGreaterThan(240);
@@ -123,23 +133,23 @@ describe('searchFields on bills with a known best', () => {
         series.kvarhLagging.reduce((sum, kvarh, i) => sum + (night(i) ? 0 : kvarh), 0),
         price * series.kvarhLeading.reduce((sum, kvarh, i) => sum + (night(i) ? kvarh : 0), 0),
       );
-    const more = (field: number) => kvarDelivered(motor, field) - kvarDelivered(motor, 105);
-    const dear = searchFields({ plant: { load: steady, motors: [motor] }, totals: charge(3) });
-    expect(more(dear.fieldsA[0]!)).toBeLessThanOrEqual(321);
-    expect(more(dear.fieldsA[0]! + 1)).toBeGreaterThan(320);
+    const more = (amperes: number) => kvarDelivered(motor, amperes) - kvarDelivered(motor, 105);
+    const dear = searchSettings({ plant: { load: steady, motors: [motor] }, totals: charge(3) });
+    expect(more(fieldsOf(dear)[0]!)).toBeLessThanOrEqual(321);
+    expect(more(fieldsOf(dear)[0]! + 1)).toBeGreaterThan(320);
     // At 1 per kvarh (8 < 16) the night charge never outweighs the day: the field goes to its limit of 150 A.
-    const cheap = searchFields({ plant: { load: steady, motors: [motor] }, totals: charge(1) });
-    expect(cheap.fieldsA).toEqual([150]);
+    const cheap = searchSettings({ plant: { load: steady, motors: [motor] }, totals: charge(1) });
+    expect(fieldsOf(cheap)).toEqual([150]);
   });
 
   it('finds the best of two motors on a jagged bill, as brute force does', () => {
-    const coarse = [one, two].map((motor) => ({ ...motor, stepA: motor === one ? 3 : 2 }));
+    const coarse = [one, two].map((motor) => ({ ...motor, ...inSteps(motor === one ? 3 : 2) }));
     const totals = (series: LoadSeries) => {
       const kva = highestKva(series);
       return bill(Math.ceil(kva / 40) * 400 + (total(series.kvarhLeading) > 500 ? 700 : 0), total(series.kwh) * 0.2);
     };
-    const result = searchFields({ plant: { load, motors: coarse }, totals, exhaustiveUpTo: 0 });
-    const whole = searchFields({ plant: { load, motors: coarse }, totals });
+    const result = searchSettings({ plant: { load, motors: coarse }, totals, exhaustiveUpTo: 0 });
+    const whole = searchSettings({ plant: { load, motors: coarse }, totals });
     expect(whole.exhaustive).toBe(true);
     expect(result.exhaustive).toBe(false);
     expect(result.priced).toBeLessThan(whole.priced);
@@ -148,13 +158,7 @@ describe('searchFields on bills with a known best', () => {
     for (let a = 75; a <= 150; a += 3) {
       for (let b = 40; b <= 90; b += 2) {
         try {
-          const plan = simulatePlan({
-            load,
-            motors: [
-              { ...one, planFieldA: a },
-              { ...two, planFieldA: b },
-            ],
-          });
+          const plan = simulatePlan({ load, motors: [one, two] }, { controls: [field(a), field(b)] });
           if (plan.motors.every((m) => Object.values(m.beyondHours).every((hours) => hours === 0))) {
             least = Math.min(least, total(totals(plan.load)));
           }
@@ -168,91 +172,84 @@ describe('searchFields on bills with a known best', () => {
   });
 });
 
-describe('searchFields', () => {
+describe('searchSettings', () => {
   it('keeps every limit with its reserve and every range given', () => {
     const motor = { ...one, motor: buildMotor({ limits: { reserve: 0.05 } }) };
     const totals = (series: LoadSeries) => bill(total(series.kvarhLagging));
-    const result = searchFields({ plant: { load, motors: [motor] }, totals });
+    const result = searchSettings({ plant: { load, motors: [motor] }, totals });
     // 95 % of 150 A is 142.5: 142 is the highest whole ampere.
-    expect(result.fieldsA).toEqual([142]);
-    expect(result.bounds[0]!.highBinding.limit).toBe('field');
-    const narrow = searchFields({ plant: { load, motors: [{ ...motor, panelHighA: 130.5, panelLowA: 100 }] }, totals });
-    expect(narrow.fieldsA).toEqual([130]);
-    expect(Math.min(...narrow.curves[0]!.map((p) => p.panelA))).toBe(100);
+    expect(fieldsOf(result)).toEqual([142]);
+    expect(result.axes[0]!.bounds!.highBinding.limit).toBe('field');
+    const narrow = searchSettings({
+      plant: { load, motors: [{ ...motor, ...inSteps(1, { panelHighA: 130.5, panelLowA: 100 }) }] },
+      totals,
+    });
+    expect(fieldsOf(narrow)).toEqual([130]);
+    expect(narrow.axes[0]!.curve[0]!.control).toEqual({ holds: 'field-current', fieldCurrentA: 100 });
   });
 
   it('steps in amperes of the panel for a brushless motor', () => {
-    const motor = { ...one, motor: buildMotor({ exciterField: { ratedA: 5 } }), stepA: 0.1 };
-    const result = searchFields({
+    const motor = { ...one, motor: buildMotor({ exciterField: { ratedA: 5 } }), ...inSteps(0.1) };
+    const result = searchSettings({
       plant: { load, motors: [motor] },
       totals: (series) => bill(total(series.kvarhLagging)),
     });
-    expect(result.panelsA[0]).toBeCloseTo(5, 9);
-    expect(result.fieldsA[0]).toBeCloseTo(150, 6);
+    // 5 A of the exciter's field are 150 A of the motor's.
+    expect(fieldsOf(result)[0]).toBeCloseTo(150, 6);
   });
 
   it('draws the cost along each field with the others at their best', () => {
     const totals = (series: LoadSeries) => bill(highestKva(series) * 9 + total(series.kwh) * 0.3);
-    const result = searchFields({ plant: { load, motors: [one, two] }, totals });
-    expect(result.curves).toHaveLength(2);
-    result.curves.forEach((curve, m) => {
-      const own = curve.find((point) => point.fieldCurrentA === result.fieldsA[m])!;
-      expect(own.cost).toBeCloseTo(result.cost, 6);
+    const result = searchSettings({ plant: { load, motors: [one, two] }, totals });
+    expect(result.axes).toHaveLength(2);
+    for (const { curve, chosen } of result.axes) {
+      expect(curve.find(({ control }) => control === chosen)!.cost).toBeCloseTo(result.cost, 6);
       for (const point of curve) expect(point.cost).toBeGreaterThanOrEqual(result.cost - 0.006);
-    });
-    const [a, b] = result.fieldsA as [number, number];
-    const direct = simulatePlan({
-      load,
-      motors: [
-        { ...one, planFieldA: a },
-        { ...two, planFieldA: b },
-      ],
-    });
+    }
+    const [a, b] = fieldsOf(result) as [number, number];
+    const direct = simulatePlan({ load, motors: [one, two] }, { controls: [field(a), field(b)] });
     expect(total(totals(direct.load))).toBeCloseTo(result.cost, 6);
   });
 
   it('does not offer standing where it breaks a limit, and says so', () => {
     const motor = { ...one, standingFieldA: 148, motor: buildMotor({ limits: { reserve: 0.05 } }) };
-    const result = searchFields({
+    const result = searchSettings({
       plant: { load, motors: [motor] },
       totals: (series) => bill(total(series.kvarhLagging)),
     });
-    expect(result.fieldsA).toEqual([142]);
+    expect(fieldsOf(result)).toEqual([142]);
     expect(result.cost).toBeGreaterThan(result.standingCost);
     expect(result.notes.join(' ')).toMatch(/Motor 1 stands at 148 A, outside its limits of .* to 142.5 A/);
   });
 
   it('leaves a motor without an admissible field alone, naming load and limit', () => {
     const heavy = { ...one, shaftKw: new Float64Array(load.kwh.length).fill(2000) };
-    const result = searchFields({
+    const result = searchSettings({
       plant: { load, motors: [heavy] },
       totals: (series) => bill(total(series.kvarhLagging)),
     });
     expect(result.leaveAlone).toBe(true);
-    expect(result.bounds).toEqual([null]);
+    expect(result.axes).toEqual([]);
     expect(result.notes.join(' ')).toMatch(/no admissible field at 2000\.0 kW \(armature\)/);
   });
 
   it('prices candidates with the capacitors connected, and standing without', () => {
     const totals = (series: LoadSeries) => bill(total(series.kvarhLagging) + 20 * total(series.kvarhLeading));
-    const result = searchFields({
+    const banks = [{ steps: 1, stepKvar: 200, lossWPerKvar: 0 }];
+    const result = searchSettings({
       plant: { load, motors: [one] },
-      capacitors: [{ kvar: 200, lossWPerKvar: 0 }],
+      fixed: { banks },
       totals,
     });
     expect(result.standingCost).toBeCloseTo(total(load.kvarhLagging), 6);
-    const planned = simulatePlan({
-      load,
-      motors: [{ ...one, planFieldA: result.fieldsA[0]! }],
-      capacitors: [{ kvar: 200, lossWPerKvar: 0 }],
-    });
+    const planned = simulatePlan({ load, motors: [one] }, { controls: [field(fieldsOf(result)[0]!)], banks });
     expect(result.cost).toBeCloseTo(total(totals(planned.load)), 6);
   });
 
   it('tells its progress honestly and can be cancelled, with the best so far', () => {
     const totals = (series: LoadSeries) => bill(highestKva(series) * 9);
     const seen: { priced: number; planned: number }[] = [];
-    const whole = searchFields({
+    const whole = searchSettings({
       plant: { load, motors: [one, two] },
       totals,
       exhaustiveUpTo: 0,
@@ -261,7 +258,7 @@ describe('searchFields', () => {
     expect(seen.map((p) => p.priced)).toEqual(seen.map((_, i) => i + 1));
     expect(seen.every((p) => p.planned >= p.priced)).toBe(true);
     expect(seen.at(-1)!.priced).toBe(whole.priced);
-    const cut = searchFields({
+    const cut = searchSettings({
       plant: { load, motors: [one, two] },
       totals,
       exhaustiveUpTo: 0,
@@ -278,7 +275,7 @@ describe('searchFields', () => {
     const standing = total(load.kwh);
     const totals = (series: LoadSeries) => bill(Math.abs(total(series.kwh) - standing) < 1e-9 ? 500 : 1500);
     for (const exhaustiveUpTo of [0, 1e6]) {
-      const result = searchFields({
+      const result = searchSettings({
         plant: { load, motors: [one, two] },
         totals,
         exhaustiveUpTo,
@@ -291,39 +288,39 @@ describe('searchFields', () => {
   it('answers with numbers when cancelled before any setting keeps the limits', () => {
     const wrong = { ...one, standingFieldA: 148, motor: buildMotor({ limits: { reserve: 0.05 } }) };
     const totals = (series: LoadSeries) => bill(total(series.kvarhLagging));
-    const result = searchFields({ plant: { load, motors: [wrong, two] }, totals, onProgress: () => false });
-    expect(result.fieldsA).toEqual([148, 60]);
+    const result = searchSettings({ plant: { load, motors: [wrong, two] }, totals, onProgress: () => false });
+    expect(fieldsOf(result)).toEqual([148, 60]);
     expect(result.cost).toBe(result.standingCost);
   });
 
   it('says so where a motor stands beyond a limit and no step lies within', () => {
-    const wrong = { ...one, standingFieldA: 148, stepA: 400, motor: buildMotor({ limits: { reserve: 0.05 } }) };
-    const result = searchFields({ plant: { load, motors: [wrong] }, totals: () => bill(1) });
-    expect(result.fieldsA).toEqual([148]);
+    const wrong = { ...one, standingFieldA: 148, ...inSteps(400), motor: buildMotor({ limits: { reserve: 0.05 } }) };
+    const result = searchSettings({ plant: { load, motors: [wrong] }, totals: () => bill(1) });
+    expect(fieldsOf(result)).toEqual([148]);
     expect(result.notes.join(' ')).toMatch(/stands at 148 A, outside its limits.*no step lies within them/);
   });
 
   it('gives the same result twice', () => {
     const totals = (series: LoadSeries) => bill(Math.ceil(highestKva(series) / 25) * 100);
-    const run = () => searchFields({ plant: { load, motors: [one, two] }, totals, exhaustiveUpTo: 0 });
+    const run = () => searchSettings({ plant: { load, motors: [one, two] }, totals, exhaustiveUpTo: 0 });
     expect(run()).toEqual(run());
   });
 
   it('refuses a step that is none and totals that are not numbers', () => {
     const totals = () => bill(NaN);
-    expect(() => searchFields({ plant: { load, motors: [{ ...one, stepA: 0 }] }, totals: () => bill(1) })).toThrow(
-      /stepA/,
-    );
-    expect(() => searchFields({ plant: { load, motors: [one] }, totals })).toThrow(/NaN/);
+    expect(() =>
+      searchSettings({ plant: { load, motors: [{ ...one, ...inSteps(0) }] }, totals: () => bill(1) }),
+    ).toThrow(/stepA/);
+    expect(() => searchSettings({ plant: { load, motors: [one] }, totals })).toThrow(/NaN/);
   });
 });
 
-/** Whole ampere at which a motor takes least at its running load, by trying all. */
-function leastLossStep(motor: SearchMotor): number {
-  let best = { field: 0, kw: Infinity };
-  for (let field = 75; field <= 150; field++) {
-    const { inputKw } = operatingPoint(motor.motor, { shaftKw: 1200, fieldCurrentA: field });
-    if (inputKw < best.kw) best = { field, kw: inputKw };
+/** Whole ampere at which a motor takes least at a load, by trying all. */
+function leastLossStep(motor: SearchMotor, { from, shaftKw } = { from: 75, shaftKw: 1200 }): number {
+  let best = { amperes: 0, kw: Infinity };
+  for (let amperes = from; amperes <= 150; amperes++) {
+    const { inputKw } = operatingPoint(motor.motor, { shaftKw, fieldCurrentA: amperes });
+    if (inputKw < best.kw) best = { amperes, kw: inputKw };
   }
-  return best.field;
+  return best.amperes;
 }

@@ -5,6 +5,7 @@ import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
 import { benchIntakeMemory } from './intake-memory';
 import { benchMinuteYears } from './minute-years';
+import { benchPlanRivals } from './plan-rivals';
 import { benchPricing } from './pricing';
 import { benchRepricing } from './repricing';
 import { benchRivals } from './rivals';
@@ -37,6 +38,7 @@ async function main(): Promise<void> {
     benchMinuteYears,
     benchSearch,
     benchEconomics,
+    benchPlanRivals,
     benchBound,
     benchIntake,
     benchIntakeRows,

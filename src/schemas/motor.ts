@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import type { LoadSource } from './shaft-load';
 import { isCalendarDate } from '../core/load';
 import type { SynchronousMotor } from '../core/machine';
 import { plateInput, type PlateInput } from './plate';
@@ -143,6 +144,8 @@ export interface MotorView {
   ratedKva: number;
   ratedCurrentA: number;
   speedRpm: number;
+  /** What tells its shaft load. */
+  loadSource: LoadSource;
   usualShaftKw: number;
   usualLoadPercent: number;
   hoursRunning: number;
@@ -151,10 +154,10 @@ export interface MotorView {
   kvarToday: number;
   pullOutToday: number;
   armatureTodayA: number;
-  /** At rated voltage. */
+  /** At rated voltage, or what both ends of the voltage band admit. */
   capability: CapabilityView;
   /** At the ends of the voltage band, where one is set. */
-  band: { low: CapabilityView; high: CapabilityView } | null;
+  band: { low: CapabilityView & { voltagePu: number }; high: CapabilityView & { voltagePu: number } } | null;
   limits: LimitsView;
   /** Extra watts per kvar gained from today to the most it may deliver. */
   wattsPerKvar: number | null;

@@ -119,6 +119,7 @@ export const roleTable: Record<string, Row> = {
   'GET /api/engagements/[code]/requests/[number]/files/[key]': released,
   'PATCH /api/engagements/[code]/requests/[number]/files/[key]': practiceOnly,
   'DELETE /api/engagements/[code]/requests/[number]/files/[key]': clientOnly,
+  'PUT /api/engagements/[code]/supply': members,
   'PUT /api/engagements/[code]/tariff': members,
   'POST /api/engagements/[code]/tariff/letters': members,
   'POST /api/engagements/[code]/tariff/letters/[number]': members,

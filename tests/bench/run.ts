@@ -1,3 +1,4 @@
+import { benchEconomics } from './economics';
 import { benchIntake } from './intake';
 import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
@@ -34,6 +35,7 @@ async function main(): Promise<void> {
     benchRivals,
     benchMinuteYears,
     benchSearch,
+    benchEconomics,
     benchIntake,
     benchIntakeRows,
     benchIntakeBook,

@@ -10,7 +10,7 @@ export type { Capability } from './capability';
 export { fieldCurrentAtPanelA, panelCurrentA } from './panel';
 export { capabilityCurve, leastLossField, unityField, vCurve } from './v-curve';
 export type { LeastLoss, VCurvePoint } from './v-curve';
-export { copperResistanceOhm, copperTemperatureC } from './copper';
+export { COPPER_ZERO_C, copperResistanceOhm, copperTemperatureC } from './copper';
 export { KW_PER_HP, KW_PER_METRIC_HP } from './plate';
 export type { AssumedValue, Nameplate, OutputUnit, PlateLimits, PlateRemark, WindingOhms } from './plate';
 export type { LimitsBeside } from './plate-limits';
@@ -24,6 +24,8 @@ export type { FixedField, TakenPower } from './fixed-field';
 export { leastField } from './least-field';
 export { reactiveRange } from './kvar-range';
 export type { RangeLimit, ReactiveRange } from './kvar-range';
+export { lossCurve } from './loss-curve';
+export type { LossPoint } from './loss-curve';
 export { pqLimits } from './pq-limits';
 export type { PqLimits, PqPoint } from './pq-limits';
 export type {

@@ -1,18 +1,21 @@
 import {
   assumedSensitivity,
   capability,
+  capabilityOverBand,
   DEFAULT_PULL_OUT_MARGIN,
   operatingPoint,
   panelCurrentA,
   ratedCurrentA,
   ratedKva,
   type AssumedSwing,
+  type Capability,
   type CompletedMotor,
   type LimitsBeside,
   type SynchronousMotor,
 } from '../../core/machine';
 import { wordNumber } from '../../core/units';
 import type { AssumedValue, MotorInput, MotorView, PanelView, PlateNote } from '../../schemas/motor';
+import type { LoadSource } from '../../schemas/shaft-load';
 import type { Motor } from '../models/Motor';
 
 /** What a motor's row holds, as the form that wrote it: today's field of a brushless machine as its panel shows it. */
@@ -109,15 +112,19 @@ function presentPanel(machine: SynchronousMotor, fieldTodayA: number, limitA: nu
 export function presentMotor(
   row: Motor,
   completed: CompletedMotor & { motor: SynchronousMotor },
-  load: { usualShaftKw: number; hoursRunning: number; hours: { shaftKw: number; hours: number }[] },
+  load: {
+    source: LoadSource;
+    usualShaftKw: number;
+    hoursRunning: number;
+    hours: { shaftKw: number; hours: number }[];
+  },
 ): MotorView {
   const machine = completed.motor;
   const { usualShaftKw: shaftKw, hoursRunning, hours } = load;
   const today = operatingPoint(machine, { shaftKw, fieldCurrentA: row.fieldTodayA });
-  const most = capability(machine, { shaftKw });
+  const most = mostOf(machine, shaftKw, completed.voltageBandPu);
   const { version, fieldReadAt: _readAt, ...stored } = storedMotor(row, machine);
   const limits = limitsOf(machine, completed);
-  const band = completed.voltageBandPu;
   return {
     ...stored,
     id: row.id,
@@ -138,6 +145,7 @@ export function presentMotor(
     ratedKva: ratedKva(machine),
     ratedCurrentA: ratedCurrentA(machine),
     speedRpm: (120 * machine.frequencyHz) / machine.poles,
+    loadSource: load.source,
     usualShaftKw: shaftKw,
     usualLoadPercent: (100 * shaftKw) / machine.ratedOutputKw,
     hoursRunning,
@@ -146,15 +154,24 @@ export function presentMotor(
     pullOutToday: today.pullOutRatio,
     armatureTodayA: today.lineCurrentA,
     capability: most,
-    band: band
-      ? {
-          low: capability(machine, { shaftKw, voltagePu: band.low }),
-          high: capability(machine, { shaftKw, voltagePu: band.high }),
-        }
-      : null,
+    band: presentBand(machine, shaftKw, completed.voltageBandPu),
     limits,
     wattsPerKvar: wattsPerKvar(machine, shaftKw, today, most.fieldCurrentA),
   };
+}
+
+/** The most a motor may deliver: at rated voltage, or what both ends of its voltage band admit. */
+function mostOf(machine: SynchronousMotor, shaftKw: number, voltageBandPu: LimitsBeside['voltageBandPu']): Capability {
+  if (!voltageBandPu) return capability(machine, { shaftKw });
+  const { kvarDelivered, fieldCurrentA, binding } = capabilityOverBand(machine, { shaftKw, voltageBandPu });
+  return { kvarDelivered, fieldCurrentA, binding };
+}
+
+/** The most at both ends of a voltage band. */
+function presentBand(machine: SynchronousMotor, shaftKw: number, band: LimitsBeside['voltageBandPu']): MotorView['band'] {
+  if (!band) return null;
+  const at = (voltagePu: number) => ({ voltagePu, ...capability(machine, { shaftKw, voltagePu }) });
+  return { low: at(band.low), high: at(band.high) };
 }
 
 /** What today's setting breaks that no plan may break. */

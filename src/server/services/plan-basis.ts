@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto';
 import type { CompletedMotor, SynchronousMotor } from '../../core/machine';
+import type { SupplyView } from '../../schemas/supply';
 import { conflict } from '../errors';
 import type { Motor } from '../models/Motor';
 import { calculateYear } from '../workers/pool';
@@ -9,6 +10,7 @@ import type { OpenEngagement } from './engagements';
 import { loadSourcesOf, type StoredSource } from './load-sources';
 import { completedOf, listMotors } from './motors';
 import { pricingInputs, type PricingInputs } from './pricing';
+import { supplyForTask, supplyOf } from './supplies';
 
 /** A motor's row with the machine its plate makes. */
 export interface PlanMotor {
@@ -24,7 +26,8 @@ export interface PlanBasis {
   pricing: PricingInputs;
   motors: PlanMotor[];
   task: TaskBasis;
-  /** Changes whenever readings, bills, tariff or a motor change. */
+  supply: SupplyView;
+  /** Changes whenever readings, bills, tariff, supply or a motor change. */
   fingerprint: string;
 }
 
@@ -48,7 +51,7 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
   if (motors.length === 0) {
     throw conflict('No motor is entered yet. Enter one at the station Motors.', { station: 'motors' });
   }
-  const pricing = await pricingInputs(opened);
+  const [pricing, supply] = await Promise.all([pricingInputs(opened), supplyOf(opened)]);
   const { scheduleText, periods, contract, history, given, load, meters, schedule } = pricing;
   const task: TaskBasis = {
     scheduleText,
@@ -59,13 +62,16 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
     given,
     load,
     meters,
-    motors: motors.map(({ row, machine, source }) => ({
+    ...supplyForTask(supply),
+    motors: motors.map(({ row, machine, completed, source }) => ({
       id: row.id,
       name: row.name,
       machine,
       calendar: source.calendar,
       metered: source.metered,
       fieldTodayA: row.fieldTodayA,
+      leastFieldA: completed.leastFieldA,
+      voltageBandPu: completed.voltageBandPu,
       behind: Math.max(
         0,
         opened.meters.findIndex(({ id }) => id === row.meterId),
@@ -74,9 +80,9 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
   };
   const ofMotors = motors.map(({ row, source }) => [row.id, row.version, row.updatedAt.getTime(), source.key]);
   const fingerprint = createHash('sha256')
-    .update(JSON.stringify([pricing.dataKey, ofMotors]))
+    .update(JSON.stringify([pricing.dataKey, ofMotors, supply]))
     .digest('hex');
-  return { pricing, motors, task, fingerprint };
+  return { pricing, motors, supply, task, fingerprint };
 }
 
 const cacheSize = 60;

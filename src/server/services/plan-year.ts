@@ -10,8 +10,6 @@ import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
 import { limitsOf, presentAssumed } from '../presenters/motor';
 import {
-  chargeGroups,
-  groupTotals,
   nearestLimitWords,
   presentBank,
   presentPlan,
@@ -26,7 +24,7 @@ import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { actOf, standingAct } from './plan-acts';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
-import { appraisePlan, planCashFlow, type PlanMoney } from './plan-economics';
+import { appraisePlan, noCashFlow, planCashFlow, savingOf } from './plan-economics';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
@@ -83,7 +81,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
       return reason ? [unpricedOf(row, reason, motors)] : [];
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
-    gaps: gapsOf(basis, standing),
+    gaps: [...gapsOf(basis, standing), ...motors.flatMap(loadGapOf)],
     notes: notesOfBills(standing.bills.map(({ period, notes }) => ({ name: formatBillName(period), notes }))),
     fingerprint: basis.fingerprint,
   };
@@ -110,6 +108,20 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
       ? [
           `${wordNumber(missing, 1)} of ${wordNumber(intervals, 1)} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
         ]
+      : []),
+  ];
+}
+
+/** What a motor's submeter does not tell. */
+function loadGapOf({ row, source, load }: LoadedMotor): string[] {
+  if (!source.metered || load.hoursMissing + load.hoursBeyond === 0) return [];
+  const stand = source.metered.whenMissing === 'calendar' ? 'its shift calendar stands in' : 'it is taken to stand still';
+  return [
+    ...(load.hoursMissing > 0
+      ? [`The submeter of ${row.name} has no reading for ${wordNumber(load.hoursMissing, 1)} hours of the year: there ${stand}.`]
+      : []),
+    ...(load.hoursBeyond > 0
+      ? [`In ${wordNumber(load.hoursBeyond, 1)} hours the submeter of ${row.name} reads more than its field of today can hold: there the most it holds is taken.`]
       : []),
   ];
 }
@@ -158,11 +170,6 @@ function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedP
   return { id, version, name, chosen, spans, fields, reason };
 }
 
-/** First year's saving by group of charges. */
-function savingByGroup(standing: ReturnType<typeof groupTotals>, plan: ReturnType<typeof groupTotals>) {
-  return Object.fromEntries(chargeGroups.map((group) => [group, standing[group] - plan[group]]));
-}
-
 const atRest: { costParts: CostPart[]; yearlyUpkeep: number; economics: PlanEconomics } = {
   costParts: [],
   yearlyUpkeep: 0,
@@ -180,12 +187,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     ? { ...storedPlan(row, currency), costParts: costPartsOf(row, currency) }
     : atRest;
   const capitalCost = costParts.reduce((sum, { amount }) => sum + amount, 0);
-  const money: PlanMoney = {
-    savingByGroup: savingByGroup(groupTotals(before), groupTotals(bills)),
-    capitalCost,
-    yearlyUpkeep,
-    economics,
-  };
+  const money = { ...savingOf(before, bills), capitalCost, yearlyUpkeep, economics };
   const appraisal = appraisePlan(money);
   const views = motors.map((motor) => {
     const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
@@ -206,7 +208,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     money: { capitalCost, costParts, yearlyUpkeep, economics },
     appraisal,
     paybackWords: formatPayback(appraisal.simplePaybackYears),
-    ...(row ? planCashFlow(money) : { cashFlow: [], paybackSpread: null }),
+    ...(row ? planCashFlow(money) : noCashFlow),
     motors: views,
     hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
     voltage: null,

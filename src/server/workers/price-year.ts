@@ -1,35 +1,68 @@
 import { localDateStartMs, type LoadSeries } from '../../core/load';
-import { simulatePlan, type PlanMotor } from '../../core/plan';
-import { compilePricing, readSchedule, type CompiledPricing } from '../../core/tariff';
-import { shaftLoadOf } from '../services/shaft-load';
+import { simulatePlan, spanSeries } from '../../core/plan';
+import type { FixedSetup, Grid, PlanMotor, PlanSetup, Plant, Spans } from '../../core/plan';
+import { compilePricing, readSchedule, type CompiledPricing, type Schedule } from '../../core/tariff';
+import { rulesLoad, shaftLoadOf } from '../services/shaft-load';
 import type { TaskAct, TaskBasis, TaskSetting, YearTask } from './tasks';
 
-/** A task made ready: the motors' shaft loads on the readings' own intervals, the schedule laid out over them. */
+/** A task made ready: the plant on the readings' own intervals, the schedule laid out over them. */
 export interface ReadyYear {
   basis: TaskBasis;
-  motors: PlanMotor[];
+  grid: Grid;
+  plant: Plant;
+  schedule: Schedule;
   pricing: CompiledPricing;
 }
 
 /** Reads the schedule and lays shaft loads and schedule over the readings. */
 export function readyYear(basis: TaskBasis): ReadyYear {
-  const { load, timeZone, periods, contract, history, given } = basis;
+  const { load, meters, periods, contract, history, given, upstream, supply } = basis;
   const grid = { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length };
-  const motors = basis.motors.map((motor) => ({
-    motor: motor.machine,
-    shaftKw: shaftLoadOf(motor, grid, timeZone).shaftKw,
-    standingFieldA: motor.fieldTodayA,
-    behind: motor.behind,
-  }));
+  const motors = basis.motors.map((motor): PlanMotor => {
+    const { machine, fieldTodayA, behind, voltagePu, leastFieldA, voltageBandPu } = motor;
+    const { shaftKw } = shaftLoadOf(motor, grid, basis.timeZone);
+    return { motor: machine, shaftKw, standingFieldA: fieldTodayA, behind, voltagePu, leastFieldA, voltageBandPu };
+  });
   const options = { periods, contract, given, ...(history ? { history } : {}) };
-  return { basis, motors, pricing: compilePricing(readSchedule(basis.scheduleText), grid, options) };
+  const schedule = readSchedule(basis.scheduleText);
+  return {
+    basis,
+    grid,
+    plant: { load: meters[0] ?? load, beside: meters.slice(1), motors, upstream, supply },
+    schedule,
+    pricing: compilePricing(schedule, grid, options),
+  };
 }
 
-/** The first meter's load and those beside it. */
-export const metersOf = ({ load, meters }: TaskBasis): { load: LoadSeries; beside: LoadSeries[] } => ({
-  load: meters[0] ?? load,
-  beside: meters.slice(1),
-});
+/** The spans of an act over the readings. */
+export function spansOf({ basis, grid }: ReadyYear, rules: TaskAct['spans']): Spans | undefined {
+  return rules && spanSeries(rules, grid, basis.timeZone, basis.holidays);
+}
+
+/** What an act builds and when its spans are. */
+export function fixedSetupOf(ready: ReadyYear, act: TaskAct): FixedSetup {
+  const { basis, grid } = ready;
+  return {
+    spans: spansOf(ready, act.spans),
+    banks: act.banks ?? [],
+    replacements: (act.replacements ?? []).map(({ induction, machine, calendar, controls, behind }) => ({
+      induction,
+      motor: machine,
+      shaftKw: rulesLoad(calendar, induction.ratedOutputKw, grid, basis.timeZone),
+      controls,
+      behind,
+    })),
+  };
+}
+
+/** An act over the readings: motors it does not name stand. */
+export function setupOf(ready: ReadyYear, act: TaskAct): PlanSetup {
+  const controls = ready.basis.motors.map(({ id, fieldTodayA }) => {
+    const own = act.controls?.find((one) => one.motorId === id)?.controls;
+    return own ?? [{ holds: 'field-current' as const, fieldCurrentA: fieldTodayA }];
+  });
+  return { ...fixedSetupOf(ready, act), controls };
+}
 
 /** Prices every setting of a task over the year. */
 export function priceYear({ basis, settings }: YearTask): TaskSetting[] {
@@ -37,21 +70,18 @@ export function priceYear({ basis, settings }: YearTask): TaskSetting[] {
   return settings.map((act) => priceSetting(ready, act));
 }
 
-function priceSetting({ basis, motors, pricing }: ReadyYear, { controls = [], banks = [] }: TaskAct): TaskSetting {
-  const fieldOf = (index: number) => {
-    const control = controls.find((one) => one.motorId === basis.motors[index]?.id)?.controls[0];
-    return control?.holds === 'field-current' ? control.fieldCurrentA : undefined;
-  };
-  const result = simulatePlan({
-    ...metersOf(basis),
-    motors: motors.map((motor, index) => ({ ...motor, planFieldA: fieldOf(index) ?? motor.standingFieldA })),
-    capacitors: banks.map(({ steps, stepKvar, lossWPerKvar }) => ({ kvar: steps * stepKvar, lossWPerKvar })),
-  });
+function priceSetting(ready: ReadyYear, act: TaskAct): TaskSetting {
+  const { basis, plant, pricing } = ready;
+  const result = simulatePlan(plant, setupOf(ready, act));
   const bills = pricing.bills(result.load);
   return {
     bills: bills.map((bill) => ({ ...bill, notes: [...bill.notes, ...result.notes] })),
     motors: result.motors.map((figures, index) => ({ ...figures, motorId: basis.motors[index]!.id })),
+    replacements: result.replacements,
+    banks: result.banks,
+    extraKwh: result.extraKwh,
     hoursLeading: result.hoursLeadingAfter,
+    bus: result.bus,
     worstPf: worstPowerFactor(basis, result.load),
     readings: readingsOf(result.load),
   };

@@ -1,7 +1,16 @@
 import type { MessagePort } from 'node:worker_threads';
 import type { BillingPeriod, LoadSeries } from '../../core/load';
 import type { FieldControl, SynchronousMotor } from '../../core/machine';
-import type { BusSupply, CapacitorBank, InductionMotor, MotorPlanResult, SpanRule, Upstream } from '../../core/plan';
+import type {
+  BankPlanResult,
+  BusSupply,
+  CapacitorBank,
+  InductionMotor,
+  MotorPlanResult,
+  PlanResult,
+  SpanRule,
+  Upstream,
+} from '../../core/plan';
 import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
 import type { SearchView } from '../../schemas/search';
@@ -83,7 +92,14 @@ export interface TaskMotorYear extends MotorPlanResult {
 export interface TaskSetting {
   bills: PricedBill[];
   motors: TaskMotorYear[];
+  /** New motors and banks, in the act's order. */
+  replacements: MotorPlanResult[];
+  banks: BankPlanResult[];
+  /** Change of active energy over the metered intervals: motors, capacitors and upstream. [kWh] */
+  extraKwh: number;
   hoursLeading: number;
+  /** Estimated voltage of the first meter's bus; null where its supply is not known. */
+  bus: PlanResult['bus'];
   worstPf: { value: number; leading: boolean; bill: number } | null;
   readings: { intervals: number; missing: number; estimated: number; stepMinutes: number };
 }

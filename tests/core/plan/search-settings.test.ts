@@ -26,7 +26,7 @@ const highestKva = (series: LoadSeries) => {
 };
 /** Field current of every motor in its first span. */
 const fieldsOf = (result: SearchResult) =>
-  result.controls.map(([first]) => (first!.holds === 'field-current' ? first.fieldCurrentA : NaN));
+  result.controls.map(([first]) => (first?.holds === 'field-current' ? first.fieldCurrentA : NaN));
 const inSteps = (stepA: number, more: { panelLowA?: number; panelHighA?: number } = {}) => ({
   searched: { holds: 'field-current' as const, stepA, ...more },
 });

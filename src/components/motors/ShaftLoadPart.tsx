@@ -39,6 +39,7 @@ function useLoadForm(props: ShaftLoadPartProps) {
   const kept = useDraft<LoadDraft>(`shaft-load:${props.motor.id}`, form);
   const take = (saved: ShaftLoadView) => {
     setView(saved);
+    form.clearErrors('source');
     form.setValue('source', saved.source);
   };
   const save = useMutation({
@@ -51,12 +52,16 @@ function useLoadForm(props: ShaftLoadPartProps) {
         form.setError(path as keyof LoadDraft, { type: 'server', message: fault[0] });
     },
   });
-  return { form, kept, view, take, save };
+  const takeFile = (saved: ShaftLoadView) => {
+    save.reset();
+    take(saved);
+  };
+  return { form, kept, view, takeFile, save };
 }
 
 function Form(props: ShaftLoadPartProps) {
   const { motor, timeZone } = props;
-  const { form, kept, view, take, save } = useLoadForm(props);
+  const { form, kept, view, takeFile, save } = useLoadForm(props);
   const source = form.watch('source');
   const gaps = gapSentence(view);
   return (
@@ -78,7 +83,7 @@ function Form(props: ShaftLoadPartProps) {
           </div>
           <FieldError fault={messageAt(form.formState.errors, 'source')} id="load-source-error" />
           {source === 'profile' && <ProfileFields />}
-          {source === 'submeter' && <SubmeterFields view={view} timeZone={timeZone} onChange={take} />}
+          {source === 'submeter' && <SubmeterFields view={view} timeZone={timeZone} onChange={takeFile} />}
         </fieldset>
         <LoadTestFields test={view.test} brushless={motor.brushless} />
         {gaps && <Notice title={gaps} />}

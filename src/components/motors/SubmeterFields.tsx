@@ -49,7 +49,11 @@ function Fault({ error }: { error: Error }) {
   const remedies = Object.values(error.fields).flat();
   return (
     <Notice kind="fault" title="The file was not taken in." problems={problems}>
-      {problems.length === 0 && <span>{[error.message, ...remedies].join(' ')}</span>}
+      {problems.length === 0 ? (
+        <span>{[error.message, ...remedies].join(' ')}</span>
+      ) : (
+        <span>A table of two columns is the simplest: the beginning of each interval, and kW.</span>
+      )}
     </Notice>
   );
 }

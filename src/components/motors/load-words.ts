@@ -1,5 +1,5 @@
 import type { LoadSource, LoadTestView, ShaftLoadView, SubmeterFileView } from '../../schemas/shaft-load';
-import { formatDate, formatList, formatNumber, formatQuantity } from '../ui/format';
+import { formatDate, formatDelivered, formatList, formatNumber, formatQuantity } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
 
 /** What tells a load, in a sentence. */
@@ -13,7 +13,7 @@ export const sourceWords: Record<LoadSource, string> = {
 export function yearSentence(name: string, { source, year }: ShaftLoadView): string {
   if (year.hoursRunning === 0) return `By its ${sourceWords[source]} ${name} stands still all year.`;
   const kw = formatQuantity(year.usualShaftKw, 'kW');
-  return `By its ${sourceWords[source]} ${name} runs ${formatNumber(year.hoursRunning)} hours of the year, most of them at ${kw} of shaft load.`;
+  return `By its ${sourceWords[source]} ${name} runs ${formatNumber(year.hoursRunning)} hours of the year, most often at ${kw} of shaft load.`;
 }
 
 /** What the submeter does not tell, and what stands in; null where nothing is missing. */
@@ -69,9 +69,9 @@ export function testTable(test: LoadTestView): LedgerData {
       { key: 'row', head: 'Row' },
       { key: 'shaft', head: 'Shaft load', unit: 'kW', kind: 'number', strong: true },
       { key: 'percent', head: 'Of rated', unit: '%', kind: 'number' },
-      { key: 'kvar', head: 'By the data', unit: 'kvar delivered', kind: 'number' },
-      { key: 'kvarOff', head: 'Less as read', unit: 'kvar', kind: 'number', signed: true },
-      { key: 'lineOff', head: 'Stator, less as read', unit: 'A', kind: 'number', signed: true, decimals: 1 },
+      { key: 'kvar', head: 'By the data', unit: 'kvar', align: 'right' },
+      { key: 'kvarOff', head: 'Data less reading', unit: 'kvar delivered', kind: 'number', signed: true },
+      { key: 'lineOff', head: 'Data less reading', unit: 'stator A', kind: 'number', signed: true, decimals: 1 },
       { key: 'said', head: 'Reading', wrap: true },
     ],
     rows: test.rows.map((row, index) => ({
@@ -81,7 +81,7 @@ export function testTable(test: LoadTestView): LedgerData {
         row: String(index + 1),
         shaft: row.fault ? null : row.shaftKw,
         percent: row.fault ? null : row.shaftPercent,
-        kvar: row.fault ? null : row.kvarDelivered,
+        kvar: row.fault ? null : formatDelivered(row.kvarDelivered),
         kvarOff: row.fault ? null : row.kvarOff,
         lineOff: row.fault ? null : row.lineOffA,
         said: saidOf(row),

@@ -84,6 +84,5 @@ function refuseProfile({ motor }: OpenMotor, { source, profile }: ShaftLoadInput
       fields[`profile.${day}.${hour}`] = [`${words} Check the load, or the field current of today.`];
     });
   }
-  if (Object.keys(fields).length > 0)
-    throw invalid('Load and field current of today cannot both be right.', fields);
+  if (Object.keys(fields).length > 0) throw invalid('Load and field current of today cannot both be right.', fields);
 }

@@ -12,6 +12,8 @@ export type { MotorPlanResult, MotorSpanResult } from './motor-result';
 export type { BusVoltage } from './bus-voltage';
 export { fieldBounds } from './field-bounds';
 export type { Binding, FieldBounds } from './field-bounds';
+export { billReach } from './bill-reach';
+export type { BillReach } from './bill-reach';
 export { searchSettings } from './search-settings';
 export type { CostPoint, SearchInput, SearchResult, SearchedAxis } from './search-settings';
 export type { SearchMotor, SearchedSetting } from './search-axes';

@@ -1,5 +1,7 @@
 import type { LoadSeries } from '../load';
 import type { FieldControl } from '../machine';
+import { movedBills } from './bill-reach';
+import type { BillReach } from './bill-reach';
 import type { FieldBounds } from './field-bounds';
 import { searchAxes } from './search-axes';
 import type { SearchAxis, SearchMotor } from './search-axes';
@@ -20,10 +22,13 @@ export interface SearchInput {
   fixed?: FixedSetup;
   /** A bank whose number of steps is searched too, none included. */
   bank?: SearchedBank;
-  /** Bill totals of a load series, period by period. [currency] */
-  totals: (load: LoadSeries) => Float64Array;
-  /** Per span: the bills its settings may move, look-backs included. Absent: every setting may move every bill. */
-  billsOfSpan?: number[][];
+  /**
+   * Bill totals of a load series, period by period. `changed`: positions of the only bills whose intervals may differ from the
+   * previous call; absent: any may. [currency]
+   */
+  totals: (load: LoadSeries, changed?: ReadonlySet<number>) => Float64Array;
+  /** Which bills the settings of each span move. Absent: every setting may move every bill. */
+  bills?: BillReach;
   /** Called after every candidate; returning false ends the search with the best so far. */
   onProgress?: (progress: SearchProgress) => boolean | void;
   /** Price every combination when there are no more than this; 2000 when absent. */
@@ -134,8 +139,9 @@ export function searchSettings(input: SearchInput): SearchResult {
 }
 
 /** Bills that each axis may move; a searched bank moves all, its own cost the last. */
-function reachOf({ billsOfSpan }: SearchInput, axes: SearchAxis[], bills: number, count: number): number[][] {
+function reachOf(input: SearchInput, axes: SearchAxis[], bills: number, count: number): number[][] {
   const all = Array.from({ length: bills }, (_, bill) => bill);
+  const billsOfSpan = input.bills && movedBills(input.bills, input.bank ? bills - 1 : bills);
   return Array.from({ length: count }, (_, a) => {
     const axis = axes[a];
     return axis ? (billsOfSpan?.[axis.span] ?? all) : all;

@@ -2,7 +2,6 @@ import type { LoadSeries } from '../load';
 import type { FieldControl } from '../machine';
 import { movedBills } from './bill-reach';
 import type { BillReach } from './bill-reach';
-import type { FieldBounds } from './field-bounds';
 import { searchAxes } from './search-axes';
 import type { SearchAxis, SearchMotor } from './search-axes';
 import { createCandidates } from './search-candidates';
@@ -44,11 +43,10 @@ export interface CostPoint {
 }
 
 /** What was searched on one axis. */
-export interface SearchedAxis {
-  motors: number[];
-  span: number;
+export interface SearchedAxis extends SearchAxis {
+  /** Place of the best among the settings. */
+  place: number;
   chosen: FieldControl;
-  bounds: FieldBounds | null;
   /** Cost of the year along the axis; empty when cancelled. */
   curve: CostPoint[];
 }
@@ -120,10 +118,9 @@ export function searchSettings(input: SearchInput): SearchResult {
     standingTotals: candidates.standingTotals,
     leaveAlone: winner.every((k, axis) => k === standing[axis]),
     axes: axes.map((axis, a) => ({
-      motors: axis.motors,
-      span: axis.span,
+      ...axis,
+      place: winner[a]!,
       chosen: axis.settings[winner[a]!]!,
-      bounds: axis.bounds,
       curve: curveOf(a).map((cost, k) => ({
         control: axis.settings[k]!,
         cost,

@@ -1,6 +1,7 @@
 import type { FieldControl } from '../core/machine';
 import type { AssumedValue } from './motor';
 import type { BankInput } from './plan-input';
+import type { MoneyView } from './money-view';
 import type { AppraisalView, CashFlowMonth, PlanEconomics } from './plan-money';
 import type { MotorSetting } from './plan-settings';
 import type { SpanSet } from './plan-spans';
@@ -130,6 +131,8 @@ export interface PlanView {
   /** Eight of ten samples pay back between these, in months; null: not within the horizon. */
   paybackSpread: { lowMonths: number | null; highMonths: number | null } | null;
   cashFlow: CashFlowMonth[];
+  /** Null for standing. */
+  money: MoneyView | null;
   motors: PlanMotorView[];
   /** Extra energy drawn by the motors over the year, and its cost at the mean energy price. */
   extraLossKwh: number;

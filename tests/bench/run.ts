@@ -1,3 +1,5 @@
+import { benchEconomics } from './economics';
+import { benchBound } from './bound';
 import { benchIntake } from './intake';
 import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
@@ -34,6 +36,8 @@ async function main(): Promise<void> {
     benchRivals,
     benchMinuteYears,
     benchSearch,
+    benchEconomics,
+    benchBound,
     benchIntake,
     benchIntakeRows,
     benchIntakeBook,

@@ -39,7 +39,7 @@ export function presentPricedBill(bill: PricedBill): PricedBillView {
   return { from: period.from, to: period.to, total, reactiveCost, lines, notes };
 }
 
-export const chargeGroups = ['demand', 'reactive', 'energy', 'fixed', 'adjustment', 'tax'] as const;
+const chargeGroups = ['demand', 'reactive', 'energy', 'fixed', 'adjustment', 'tax'] as const;
 
 /** Sum of the year's lines by group. */
 export function groupTotals(bills: PricedBillView[]): Record<ChargeGroup, number> {
@@ -148,6 +148,7 @@ export interface PlanParts {
   paybackWords: string;
   paybackSpread: PlanView['paybackSpread'];
   cashFlow: CashFlowMonth[];
+  moneyView: PlanView['money'];
   motors: PlanMotorView[];
   hoursLeading: PlanView['hoursLeading'];
   voltage: VoltageView | null;
@@ -183,6 +184,7 @@ export function presentPlan(parts: PlanParts): PlanView {
     paybackWords: parts.paybackWords,
     paybackSpread: parts.paybackSpread,
     cashFlow: parts.cashFlow,
+    money: parts.moneyView,
     motors: parts.motors,
     extraLossKwh: parts.motors.reduce((sum, motor) => sum + motor.extraLossKwh, 0),
     hoursLeading: parts.hoursLeading,

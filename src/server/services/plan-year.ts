@@ -10,8 +10,6 @@ import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
 import { limitsOf, presentAssumed } from '../presenters/motor';
 import {
-  chargeGroups,
-  groupTotals,
   nearestLimitWords,
   presentBank,
   presentPlan,
@@ -26,7 +24,7 @@ import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { actOf, standingAct } from './plan-acts';
 import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
-import { appraisePlan, planCashFlow, type PlanMoney } from './plan-economics';
+import { appraisePlan, noCashFlow, planCashFlow, savingOf } from './plan-economics';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
@@ -60,7 +58,7 @@ interface Year {
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
+  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
@@ -123,9 +121,9 @@ function faultOf(row: Plan, motors: LoadedMotor[], basis: PlanBasis, opened: Ope
   for (const setting of motorSettings(row)) {
     const motor = motors.find((one) => one.row.id === setting.motorId);
     if (!motor) return 'It sets a motor that is no longer there.';
-    const { name, calendar } = motor.row;
+    const { name, fieldTodayA } = motor.row;
     const limits = limitsOf(motor.machine, motor.completed);
-    const words = storedFault({ name, machine: motor.machine, limits, calendar }, setting, year);
+    const words = storedFault({ name, machine: motor.machine, limits, fieldTodayA, ...motor.source }, setting, year);
     if (words) return words;
   }
   return null;
@@ -158,11 +156,6 @@ function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedP
   return { id, version, name, chosen, spans, fields, reason };
 }
 
-/** First year's saving by group of charges. */
-function savingByGroup(standing: ReturnType<typeof groupTotals>, plan: ReturnType<typeof groupTotals>) {
-  return Object.fromEntries(chargeGroups.map((group) => [group, standing[group] - plan[group]]));
-}
-
 const atRest: { costParts: CostPart[]; yearlyUpkeep: number; economics: PlanEconomics } = {
   costParts: [],
   yearlyUpkeep: 0,
@@ -180,12 +173,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     ? { ...storedPlan(row, currency), costParts: costPartsOf(row, currency) }
     : atRest;
   const capitalCost = costParts.reduce((sum, { amount }) => sum + amount, 0);
-  const money: PlanMoney = {
-    savingByGroup: savingByGroup(groupTotals(before), groupTotals(bills)),
-    capitalCost,
-    yearlyUpkeep,
-    economics,
-  };
+  const money = { ...savingOf(before, bills), capitalCost, yearlyUpkeep, economics };
   const appraisal = appraisePlan(money);
   const views = motors.map((motor) => {
     const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
@@ -206,7 +194,7 @@ function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
     money: { capitalCost, costParts, yearlyUpkeep, economics },
     appraisal,
     paybackWords: formatPayback(appraisal.simplePaybackYears),
-    ...(row ? planCashFlow(money) : { cashFlow: [], paybackSpread: null }),
+    ...(row ? planCashFlow(money) : noCashFlow),
     motors: views,
     hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
     voltage: null,

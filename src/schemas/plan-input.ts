@@ -125,7 +125,12 @@ function oneASpan(plan: z.output<typeof planFields>, context: z.RefinementCtx): 
 type PlanFields = z.output<typeof planFields>;
 
 /** What a plan costs once, all parts together. */
-export const capitalOf = ({ workCost, fields, banks, replacements }: Omit<PlanFields, 'searchJobId'>) =>
+export const capitalOf = ({
+  workCost,
+  fields,
+  banks,
+  replacements,
+}: Pick<PlanFields, 'workCost' | 'fields' | 'banks' | 'replacements'>) =>
   workCost +
   [...fields.map((field) => field.equipmentCost ?? 0), ...[...banks, ...replacements].map(({ cost }) => cost)].reduce(
     (sum, cost) => sum + cost,

@@ -1,6 +1,7 @@
 import type { SynchronousMotor } from '../../core/machine';
 import type { PlanInput } from '../../schemas/plan-input';
 import { typedNumber } from '../ui/typed-number';
+import { economicsDraftOf, economicsEntries, economicsToInput, type EconomicsDraft } from './money-draft';
 import {
   bankDraftOf,
   bankToInput,
@@ -22,7 +23,7 @@ export interface PlanDraft {
   replacements: ReplacementDraft[];
   workCost: string;
   yearlyUpkeep: string;
-  economics: { discountPercent: string; escalationPercent: string; horizonYears: string };
+  economics: EconomicsDraft;
 }
 
 /** What the form knows of the plant and its schedule. */
@@ -37,7 +38,6 @@ const machineOf = ({ motors }: PlanPlant, motorId: number) =>
 
 /** What the schema is asked to read. */
 export function planDraftToInput(draft: PlanDraft, plant: PlanPlant, searchJobId?: number): unknown {
-  const { economics } = draft;
   const count = spanCountOf(draft.spans, plant.seasons);
   return {
     name: draft.name,
@@ -47,18 +47,13 @@ export function planDraftToInput(draft: PlanDraft, plant: PlanPlant, searchJobId
     replacements: draft.replacements.map((one) => replacementToInput(one, count)),
     workCost: typedNumber(draft.workCost),
     yearlyUpkeep: typedNumber(draft.yearlyUpkeep),
-    economics: {
-      discountPercent: typedNumber(economics.discountPercent),
-      escalationPercent: typedNumber(economics.escalationPercent),
-      horizonYears: typedNumber(economics.horizonYears),
-    },
+    economics: economicsToInput(draft.economics),
     searchJobId,
   };
 }
 
 /** A stored plan, or the start of a new one, in the form. */
 export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>, plant: PlanPlant): PlanDraft {
-  const { economics } = plan;
   const spans = spanDraftOf(plan.spans);
   const count = spanCountOf(spans, plant.seasons);
   return {
@@ -69,16 +64,22 @@ export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>, plant: PlanPla
     replacements: plan.replacements.map((one) => replacementDraftOf(one, count)),
     workCost: typed(plan.workCost),
     yearlyUpkeep: typed(plan.yearlyUpkeep),
-    economics: {
-      discountPercent: typed(economics.discountPercent),
-      escalationPercent: typed(economics.escalationPercent),
-      horizonYears: typed(economics.horizonYears),
-    },
+    economics: economicsDraftOf(plan.economics),
   };
 }
 
 const bankEntry = ({ steps, stepKvar, lossWPerKvar, detuningPercent, holdsPowerFactor, cost }: BankDraft) =>
   `${steps} x ${stepKvar} kvar, ${lossWPerKvar} W/kvar, detuning ${detuningPercent || 'none'}, holds ${holdsPowerFactor || 'fixed'}, cost ${cost || '0'}`;
+
+/** All that is paid once, as it stands typed; undefined while the work is missing. */
+export function capitalTyped({ workCost, settings, banks, replacements }: PlanDraft): number | undefined {
+  const work = typedNumber(workCost);
+  const costs = [
+    ...settings.map((setting) => setting.equipmentCost),
+    ...[...banks, ...replacements].map((part) => part.cost),
+  ];
+  return work === undefined ? undefined : costs.reduce((sum, cost) => sum + (typedNumber(cost) ?? 0), work);
+}
 
 /** Entries of a draft as text, with names, for comparing two versions. */
 export function planEntries(draft: PlanDraft, plant: PlanPlant): Record<string, string> {
@@ -98,8 +99,6 @@ export function planEntries(draft: PlanDraft, plant: PlanPlant): Record<string, 
     'New motors': draft.replacements.map(({ name, cost }) => `${name}, cost ${cost || '0'}`).join('; ') || 'none',
     'Work, once': draft.workCost,
     'Upkeep a year': draft.yearlyUpkeep,
-    'Discount rate, %': draft.economics.discountPercent,
-    'Rise of prices, %': draft.economics.escalationPercent,
-    'Horizon, years': draft.economics.horizonYears,
+    ...economicsEntries(draft.economics),
   };
 }

@@ -170,6 +170,7 @@ export async function editionContent(actor: Actor, basis: EditionBasis, number: 
     motors: editionMotors(plan, motors),
     assumed: plan.assumed,
     cashFlow: plan.cashFlow,
+    money: plan.money,
     sources,
     notes: [...year.gaps, ...year.notes],
   };

@@ -153,7 +153,16 @@ async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Prom
       fields: fields.map(({ motorId, fieldA }) => ({ motorId, fieldA })),
       workCost: 61_500,
       yearlyUpkeep: 1_800,
-      economics: { ...planDefaults },
+      economics: {
+        ...planDefaults,
+        escalationPercent: 2,
+        ranges: {
+          escalationPercent: { low: -2, high: 6 },
+          runsPercent: { low: 60, high: 120 },
+          capitalCost: { low: 40_000, high: 120_000 },
+          discountPercent: { low: 0, high: 15 },
+        },
+      },
       searchJobId: search.id,
     }),
   );

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { AssumedValue } from './motor';
 import type { BankView, ChargeGroup, PlanField, PlanView, ReplacementView } from './plan';
+import type { MoneyView } from './money-view';
 import type { AppraisalView, CashFlowMonth, PlanEconomics } from './plan-money';
 import type { SpanSet } from './plan-spans';
 
@@ -67,7 +68,10 @@ export interface EditionMotor {
   drives: string | null;
   rated: string;
   fieldTodayA: number;
+  /** At the usual load. */
   fieldPlanA: number;
+  /** What it is set to where that is no constant field current: "holds 0.95 leading", amperes by season. */
+  setting?: string;
   fieldLimitA: number;
   fieldRatedA: number;
   armatureTodayA: number;
@@ -112,6 +116,8 @@ export interface EditionContent {
   motors: EditionMotor[];
   assumed: AssumedValue[];
   cashFlow: CashFlowMonth[];
+  /** Years, spread and ranking of the plan's money; absent in editions frozen without it. */
+  money?: MoneyView | null;
   sources: EditionSource[];
   notes: string[];
 }

@@ -1,13 +1,8 @@
 import { z } from 'zod';
 import { calendarInput } from './motor';
-import { economicsInput } from './plan-money';
+import { economicsInput, moneyInput, refineMoney } from './plan-money';
 import { plateInput } from './plate';
 import { spanNames, spanSetInput } from './plan-spans';
-
-const money = z
-  .number({ error: 'Write an amount.' })
-  .min(0, 'Write an amount of 0 or more.')
-  .max(1e10, 'This amount is too large.');
 
 const within = (least: number, most: number, words: string) =>
   z.number({ error: words }).min(least, words).max(most, words);
@@ -45,7 +40,7 @@ const motorSettingInput = z
     fieldA: fieldA.optional(),
     controls: z.array(fieldControlInput).min(1, 'Say what the motor holds.').max(8).optional(),
     /** Regulator and its fitting, once. */
-    equipmentCost: money.optional(),
+    equipmentCost: moneyInput.optional(),
   })
   .refine((setting) => (setting.fieldA === undefined) !== (setting.controls === undefined), {
     path: ['fieldA'],
@@ -69,7 +64,7 @@ const bankInput = z.object({
   /** Meter it stands behind; absent: the engagement's own. */
   meterId: z.number().int().positive().optional(),
   /** Bank with its fitting, once. */
-  cost: money.default(0),
+  cost: moneyInput.default(0),
 });
 export type BankInput = z.output<typeof bankInput>;
 
@@ -97,7 +92,7 @@ const replacementInput = z.object({
   calendar: calendarInput,
   controls: z.array(fieldControlInput).min(1, 'Say what the new motor holds.').max(8),
   meterId: z.number().int().positive().optional(),
-  cost: money.default(0),
+  cost: moneyInput.default(0),
 });
 export type ReplacementInput = z.output<typeof replacementInput>;
 
@@ -108,8 +103,8 @@ const planFields = z.object({
   banks: z.array(bankInput).max(8, 'A plan has at most eight banks.').default([]),
   replacements: z.array(replacementInput).max(8, 'A plan has at most eight new motors.').default([]),
   /** Work at the motors, once: visit, tests, protection review. What regulators, banks and new motors cost stands with them. */
-  workCost: money,
-  yearlyUpkeep: money,
+  workCost: moneyInput,
+  yearlyUpkeep: moneyInput,
   economics: economicsInput,
   /** Job whose result the plan is made of. */
   searchJobId: z.number().int().optional(),
@@ -127,12 +122,32 @@ function oneASpan(plan: z.output<typeof planFields>, context: z.RefinementCtx): 
   plan.replacements.forEach(({ controls }, index) => check(['replacements', index], controls));
 }
 
+type PlanFields = z.output<typeof planFields>;
+
+/** What a plan costs once, all parts together. */
+export const capitalOf = ({
+  workCost,
+  fields,
+  banks,
+  replacements,
+}: Pick<PlanFields, 'workCost' | 'fields' | 'banks' | 'replacements'>) =>
+  workCost +
+  [...fields.map((field) => field.equipmentCost ?? 0), ...[...banks, ...replacements].map(({ cost }) => cost)].reduce(
+    (sum, cost) => sum + cost,
+    0,
+  );
+
+function checkPlan(plan: PlanFields, context: z.RefinementCtx): void {
+  oneASpan(plan, context);
+  refineMoney({ ...plan, capitalCost: capitalOf(plan) }, context);
+}
+
 /** A plan as its form sends it. Amounts in major units. */
-export const planInput = planFields.superRefine(oneASpan);
+export const planInput = planFields.superRefine(checkPlan);
 export type PlanInput = z.output<typeof planInput>;
 
 /** A change of a plan carries the version that was seen. */
-export const planChangeInput = planFields.extend({ version: z.number().int() }).superRefine(oneASpan);
+export const planChangeInput = planFields.extend({ version: z.number().int() }).superRefine(checkPlan);
 export type PlanChangeInput = z.output<typeof planChangeInput>;
 
 export const planChoiceInput = z.object({ version: z.number().int(), chosen: z.boolean() });

@@ -1,46 +1,112 @@
+import { useState } from 'react';
 import { Bar, ComposedChart, XAxis, YAxis } from 'recharts';
 import { formatNumber } from '../ui/format';
-import type { LedgerData } from '../ui/ledger';
 import { barBox, BarFigure, BarNames, barWidth } from './bars';
+import {
+  barsReading,
+  cashFlowTable,
+  stackedParts,
+  type CashFlowData,
+  stepsOf,
+  type CashFlowSpan,
+  type CashFlowStep,
+  type PartKind,
+} from './cash-flow';
 import { ChartFigure, type FigureText } from './ChartFigure';
 import { HatchDefs, useHatch } from './HatchDefs';
-import { axisLook, narrowBelow, OnPlot, PlotFrame, type ChartSize } from './kit';
-import { pagePalette } from './palette';
+import { axisLook, narrowBelow, OnPlot, PlotFrame, type ChartSize, type Plot } from './kit';
+import { pagePalette, type Palette } from './palette';
 import { domainOf, moneyScale, niceTicks } from './scale';
 
-export interface CashFlowYear {
-  /** 0 is the year of the work. */
-  year: number;
-  /** Saved less upkeep less work, major units. */
-  flow: number;
+type Hatch = ReturnType<typeof useHatch>;
+
+/** How each part is filled: saving hatched, work solid, upkeep grey, tax and incentive open. */
+function fillOf(kind: PartKind, palette: Palette, hatch: Hatch) {
+  switch (kind) {
+    case 'saving':
+      return { fill: `url(#${hatch.saving})`, stroke: palette.verdigris };
+    case 'incentive':
+      return { fill: palette.verdigrisWash, stroke: palette.verdigris, strokeDasharray: '2 2' };
+    case 'work':
+      return { fill: palette.ink, stroke: palette.ink };
+    case 'upkeep':
+      return { fill: palette.rule2, stroke: palette.rule2 };
+    case 'tax':
+      return { fill: palette.ground, stroke: palette.ink };
+  }
 }
 
-export interface CashFlowData {
-  currency: string;
-  years: CashFlowYear[];
+interface BarProps {
+  step: CashFlowStep;
+  index: number;
+  count: number;
+  divisor: number;
+  plot: Plot;
+  palette: Palette;
+  hatch: Hatch;
 }
 
-/** Cash of each year: spent in ink below the line, saved hatched verdigris above it. */
-export function CashFlowChart({ width, height, palette = pagePalette, years, currency }: CashFlowData & ChartSize) {
+function StackedBar({ step, index, count, divisor, plot, palette, hatch }: BarProps) {
+  const parts = stackedParts(step);
+  const width = barWidth(plot, count);
+  const top = Math.max(0, ...parts.map(({ to }) => to)) / divisor;
+  const bottom = Math.min(0, ...parts.map(({ to }) => to)) / divisor;
+  const netY = plot.y(step.net / divisor);
+  const figureAbove = step.net >= 0;
+  return (
+    <g>
+      {parts.map(({ kind, from, to }) => (
+        <rect
+          key={kind}
+          {...barBox(plot, plot.x(index), width, from / divisor, to / divisor)}
+          {...fillOf(kind, palette, hatch)}
+        />
+      ))}
+      {parts.length > 1 && (
+        <path
+          d={`M${plot.x(index) - width / 2 - 3} ${netY}h${width + 6}`}
+          stroke={palette.ink}
+          strokeWidth={2}
+          shapeRendering="crispEdges"
+        />
+      )}
+      <BarFigure
+        plot={plot}
+        index={index}
+        count={count}
+        y={figureAbove ? plot.y(top) : plot.y(bottom) + 20}
+        palette={palette}
+        tone={figureAbove ? 'verdigris' : 'ink'}
+        bold
+      >
+        {formatNumber(step.net)}
+      </BarFigure>
+    </g>
+  );
+}
+
+/** Cash of each year or month: what is saved above the line; work, upkeep and tax below it; a bar across at what remains. */
+export function CashFlowChart(props: { steps: CashFlowStep[]; currency: string; by: CashFlowSpan } & ChartSize) {
+  const { width, height, palette = pagePalette, steps, currency, by } = props;
   const hatch = useHatch();
-  const flows = years.map((year) => year.flow);
-  const scale = moneyScale(Math.max(...flows.map(Math.abs)));
+  const ends = steps.flatMap((step) => stackedParts(step).map(({ to }) => to));
+  const scale = moneyScale(Math.max(1, ...ends.map(Math.abs)));
   const yTicks = niceTicks(
-    (Math.min(0, ...flows) * 1.08) / scale.divisor,
-    (Math.max(0, ...flows) * 1.12) / scale.divisor,
+    (Math.min(0, ...ends) * 1.12) / scale.divisor,
+    (Math.max(0, ...ends) * 1.12) / scale.divisor,
     4,
   );
-  const rows = flows.map((flow, index) => ({ index, flow: flow / scale.divisor }));
-  const names = years.map((year) => ({ label: String(year.year) }));
+  const every = by === 'months' ? 6 : 1;
+  const names = steps.map(({ step }) => ({ label: step % every === 0 ? String(step) : '' }));
   return (
     <ComposedChart
       width={width}
       height={height}
-      data={rows}
+      data={steps.map((step, index) => ({ index, net: step.net / scale.divisor }))}
       margin={{ top: 28, right: 2, bottom: 4, left: 0 }}
       role="img"
       accessibilityLayer={false}
-      aria-label="Cash of each year"
+      aria-label={by === 'years' ? 'Cash of each year' : 'Cash of each month'}
     >
       <XAxis dataKey="index" height={20} {...axisLook(palette)} tick={false} />
       <YAxis
@@ -56,32 +122,20 @@ export function CashFlowChart({ width, height, palette = pagePalette, years, cur
         palette={palette}
         xTicks={[]}
         yTicks={yTicks}
-        yName={`${scale.word}${currency} a year; year 0 is the work`}
+        yName={`${scale.word}${currency} a ${by === 'years' ? 'year' : 'month'}; ${by === 'years' ? 'year' : 'month'} 0 is the work`}
       />
-      <Bar dataKey="flow" fill="none" isAnimationActive={false} />
+      <Bar dataKey="net" fill="none" isAnimationActive={false} />
       <OnPlot at="over">
         {(plot) => (
           <>
-            {years.map(({ flow }, index) => {
-              const box = barBox(plot, plot.x(index), barWidth(plot, years.length), 0, flow / scale.divisor);
-              const fill = flow < 0 ? palette.ink : `url(#${hatch.saving})`;
-              return (
-                <g key={index}>
-                  <rect {...box} fill={fill} stroke={flow < 0 ? palette.ink : palette.verdigris} />
-                  <BarFigure
-                    plot={plot}
-                    index={index}
-                    count={years.length}
-                    y={flow < 0 ? box.y + box.height + 20 : box.y}
-                    palette={palette}
-                    tone={flow < 0 ? 'ink' : 'verdigris'}
-                    bold
-                  >
-                    {formatNumber(flow)}
-                  </BarFigure>
-                </g>
-              );
-            })}
+            {steps.map((step, index) => (
+              <StackedBar
+                key={step.step}
+                {...{ step, index, plot, palette, hatch }}
+                count={steps.length}
+                divisor={scale.divisor}
+              />
+            ))}
             <BarNames plot={plot} bills={names} palette={palette} />
           </>
         )}
@@ -90,34 +144,35 @@ export function CashFlowChart({ width, height, palette = pagePalette, years, cur
   );
 }
 
-/** The same as a table, with the running total. */
-export function cashFlowTable(data: CashFlowData): LedgerData {
-  const money = { kind: 'number', decimals: 0, unit: data.currency } as const;
-  let soFar = 0;
-  return {
-    columns: [
-      { key: 'year', head: 'Year', kind: 'number', align: 'left' },
-      { key: 'flow', head: 'In the year', ...money },
-      { key: 'soFar', head: 'So far', ...money, strong: true },
-    ],
-    rows: data.years.map(({ year, flow }) => {
-      soFar += flow;
-      return { id: String(year), cells: { year: String(year), flow, soFar } };
-    }),
-  };
-}
+/** Months that are drawn at most; the table holds all of them. */
+const drawnMonths = 36;
 
-/** Island: the chart in its frame. */
-export function CashFlowFigure({ finding, reading, fileName, ...data }: CashFlowData & FigureText) {
+/** Island: the chart in its frame, by year or by month. */
+export function CashFlowFigure({ finding, fileName, ...data }: CashFlowData & Omit<FigureText, 'reading'>) {
+  const [by, setBy] = useState<CashFlowSpan>('years');
+  const all = stepsOf(data.years, by);
+  const steps = by === 'years' ? all : all.slice(0, drawnMonths + 1);
+  const cut = all.length > steps.length ? ` The first ${drawnMonths} months; the table holds them all.` : '';
+  const choose = (span: CashFlowSpan, words: string) => (
+    <button type="button" aria-pressed={by === span} onClick={() => setBy(span)}>
+      {words}
+    </button>
+  );
   return (
     <ChartFigure
       finding={finding}
-      reading={reading}
-      fileName={fileName}
-      table={cashFlowTable(data)}
-      heightOf={(w) => (w < narrowBelow ? 240 : 220)}
+      reading={`${barsReading(steps)}${cut}`}
+      fileName={`${fileName}-${by}`}
+      table={cashFlowTable(data, by)}
+      heightOf={(w) => (w < narrowBelow ? 250 : 240)}
+      choice={
+        <div className="chart-choice" role="group" aria-label="Years or months">
+          {choose('years', 'By year')}
+          {choose('months', 'By month')}
+        </div>
+      }
     >
-      {(size) => <CashFlowChart {...data} {...size} />}
+      {(size) => <CashFlowChart steps={steps} by={by} currency={data.currency} {...size} />}
     </ChartFigure>
   );
 }

@@ -14,6 +14,8 @@ export interface FigureText {
 
 export interface ChartFigureProps extends FigureText {
   table: LedgerData;
+  /** Choice of the reader above the picture. */
+  choice?: ReactNode;
   /** Height for a width; a chart is drawn anew for every width, never stretched. */
   heightOf: (width: number) => number;
   children: (size: { width: number; height: number }) => ReactNode;

@@ -10,6 +10,8 @@ export interface ChartFrameProps {
   fileName: string;
   /** The table twin; also the CSV. */
   table: LedgerData;
+  /** What of it is shown, chosen by the reader: above the picture. */
+  choice?: ReactNode;
   children: ReactNode;
 }
 
@@ -20,7 +22,7 @@ const isTyping = (target: EventTarget) => target instanceof HTMLElement && targe
  * Caption, picture, foot line. `t` shows the table twin in the same place while the frame has focus, Escape goes
  * back to the picture; the foot keeps its place.
  */
-export function ChartFrame({ finding, reading, fileName, table, children }: ChartFrameProps) {
+export function ChartFrame({ finding, reading, fileName, table, choice, children }: ChartFrameProps) {
   const [asTable, setAsTable] = useState(false);
   const [trouble, setTrouble] = useState<string | null>(null);
   const picture = useRef<HTMLDivElement>(null);
@@ -46,6 +48,7 @@ export function ChartFrame({ finding, reading, fileName, table, children }: Char
         {finding}
         {reading && <span>{reading}</span>}
       </figcaption>
+      {choice}
       <div className="chart-picture" ref={picture} hidden={asTable}>
         {children}
       </div>

@@ -4,7 +4,7 @@ import { ChartFigure, type FigureText } from './ChartFigure';
 import { axisLook, linePath, narrowBelow, OnPlot, PlotFrame, type ChartSize } from './kit';
 import { pagePalette } from './palette';
 import { chartRows, paybackTable, type PaybackData } from './payback';
-import { EndWords, PaybackMark, PaybackNotes } from './PaybackParts';
+import { EndWords, PaybackMark, PaybackNotes, WorkDrop, YoursMark } from './PaybackParts';
 import { domainOf, moneyScale, niceTicks, ticksWithin } from './scale';
 
 /** Cumulative cash after the work, with the point where it is paid back. Give 592 or 900 wide, 358 on a phone. */
@@ -82,7 +82,9 @@ export function PaybackChart({ width, height, palette = pagePalette, ...data }: 
           const parts = { data, divisor: scale.divisor, plot, palette, narrow };
           return (
             <>
+              <WorkDrop {...parts} />
               <PaybackNotes {...parts} />
+              <YoursMark {...parts} />
               <PaybackMark {...parts} />
               {!narrow && <EndWords {...parts} />}
             </>

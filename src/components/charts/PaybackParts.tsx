@@ -85,9 +85,40 @@ export function PaybackMark({ data, plot, palette, narrow }: PaybackParts) {
   );
 }
 
+/** Where the reader's own line is paid back, named above the line of nought. */
+export function YoursMark({ data, plot, palette }: PaybackParts) {
+  const years = data.yoursPaybackYears ?? null;
+  const end = data.points.at(-1);
+  if (years === null || !end || end.yours === undefined || years > end.year) return null;
+  const x = plot.x(years);
+  const y = plot.y(0);
+  const flip = x > (plot.left + plot.right) / 2 + 40;
+  return (
+    <>
+      <path d={`M${x} ${y - 22}V${y + 4}`} stroke={palette.ink} strokeDasharray="4 2" fill="none" />
+      <Words x={flip ? x - 5 : x + 5} y={y - 26} palette={palette} anchor={flip ? 'end' : 'start'} bold halo>
+        {`yours: ${formatPayback(years)}`}
+      </Words>
+    </>
+  );
+}
+
+/** The work as the drop the line begins with. */
+export function WorkDrop({ data, divisor, plot, palette }: PaybackParts) {
+  const start = data.points[0]?.cumulative ?? 0;
+  if (start >= 0) return null;
+  return <path d={`M${plot.left} ${plot.y(0)}V${plot.y(start / divisor)}`} stroke={palette.ink} strokeWidth={5} />;
+}
+
+/** "114,400 USD paid once, 10,000 of it a grant". */
+function paidOnceWords({ capitalCost, incentive = 0, currency }: PaybackData, narrow: boolean): string {
+  const paid = `${formatMajor(capitalCost, currency, { whole: true })} paid once`;
+  return incentive > 0 && !narrow ? `${paid}, ${formatNumber(incentive)} of it a grant` : paid;
+}
+
 /** What the parts of the picture mean. */
 export function PaybackNotes({ data, divisor, plot, palette, narrow }: PaybackParts) {
-  const low = plot.y(-data.capitalCost / divisor);
+  const low = plot.y((data.points[0]?.cumulative ?? 0) / divisor);
   const last = data.points.at(-1);
   const aheadYear = last && data.paybackYears !== null ? (data.paybackYears + last.year) / 2 : null;
   const aheadAt = aheadYear === null ? null : valueAt(data.points, aheadYear, byYear, (p) => p.p90 ?? p.cumulative);
@@ -100,7 +131,7 @@ export function PaybackNotes({ data, divisor, plot, palette, narrow }: PaybackPa
         bold
         halo
       >
-        {`${formatMajor(data.capitalCost, data.currency, { whole: true })} paid once`}
+        {paidOnceWords(data, narrow)}
       </Words>
       {aheadYear !== null && aheadAt !== null && (
         <Words

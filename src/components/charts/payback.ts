@@ -16,12 +16,16 @@ export interface PaybackData {
   currency: string;
   /** Paid once at year 0, major units. */
   capitalCost: number;
+  /** Received at year 0. */
+  incentive?: number;
   points: PaybackPoint[];
   paybackYears: number | null;
   /** Eight in ten samples pay back between these. */
   paybackRange?: { fromYears: number; toYears: number } | null;
   /** "edition 2". */
   editionName: string;
+  /** Where the reader's own line crosses nought. */
+  yoursPaybackYears?: number | null;
   /** Words at the end of the reader's own line. */
   yoursName?: string;
 }

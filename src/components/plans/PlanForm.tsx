@@ -1,27 +1,22 @@
 import { useMutation } from '@tanstack/react-query';
-import { useState } from 'react';
-import { FormProvider, useForm, useFormContext } from 'react-hook-form';
+import { useMemo, useState } from 'react';
+import { FormProvider, useForm } from 'react-hook-form';
 import { ApiError } from '../../client/api';
 import { useDraft } from '../../client/drafts';
 import { changePlan, createPlan, removePlan } from '../../client/plans';
 import { Queries } from '../../client/queries';
+import type { FormMeter, FormMotor } from '../../schemas/plan-form';
 import { planInput, type PlanInput } from '../../schemas/plan-input';
-import { draftResolver, messageAt } from '../ui/form-errors';
+import { draftResolver } from '../ui/form-errors';
 import { Button, ButtonLink } from '../ui/Button';
-import { Field, NumberField } from '../ui/Field';
 import { Notice } from '../ui/Notice';
 import { StaleCompare } from '../ui/StaleCompare';
 import { planDraftOf, planDraftToInput, planEntries, type PlanDraft } from './draft';
-import { amperes } from '../ui/setting-words';
+import { BankFields } from './BankFields';
 import { MoneyFields } from './MoneyFields';
-
-/** What the form says of a motor beside its field current. */
-export interface FormMotor {
-  motorId: number;
-  name: string;
-  todayA: number;
-  limitA: number;
-}
+import { MotorRows } from './MotorRows';
+import { ReplacementFields } from './ReplacementFields';
+import { SpanFields } from './SpanFields';
 
 type StoredPlan = Omit<PlanInput, 'searchJobId'> & { version: number };
 
@@ -29,16 +24,20 @@ export interface PlanFormProps {
   code: string;
   currency: string;
   motors: FormMotor[];
+  meters: FormMeter[];
+  /** Names of the schedule's seasons. */
+  seasons: string[];
   /** Values to begin with: the stored plan, or the settings a search found. */
   start: Omit<PlanInput, 'searchJobId'>;
   plan?: { id: number; version: number };
   searchJobId?: number;
 }
 
-function usePlanForm({ code, start, plan, searchJobId }: PlanFormProps) {
-  const toInput = (draft: PlanDraft) => planDraftToInput(draft, searchJobId);
+function usePlanForm({ code, start, plan, motors, seasons, searchJobId }: PlanFormProps) {
+  const plant = useMemo(() => ({ motors, seasons }), [motors, seasons]);
+  const toInput = (draft: PlanDraft) => planDraftToInput(draft, plant, searchJobId);
   const form = useForm<PlanDraft>({
-    defaultValues: planDraftOf(start),
+    defaultValues: planDraftOf(start, plant),
     resolver: draftResolver<PlanDraft>(planInput, toInput),
   });
   const kept = useDraft<PlanDraft>(`plan:${code}:${plan?.id ?? 'new'}`, form);
@@ -60,74 +59,12 @@ function usePlanForm({ code, start, plan, searchJobId }: PlanFormProps) {
   const submit = (over: number) => form.handleSubmit((draft) => save.mutate({ draft, over }))();
   const loadTheirs = () => {
     if (!stored) return;
-    form.reset(planDraftOf(stored));
+    form.reset(planDraftOf(stored, plant));
     setVersion(stored.version);
     setStored(null);
     save.reset();
   };
-  return { form, kept, version, stored, save, submit, loadTheirs };
-}
-
-function PlanFields({ motors }: Pick<PlanFormProps, 'motors'>) {
-  const { register, formState } = useFormContext<PlanDraft>();
-  const fault = (path: string) => messageAt(formState.errors, path);
-  return (
-    <>
-      <div className="form-grid">
-        <Field label="Name" {...register('name')} error={fault('name')} />
-        {motors.map((motor, index) => (
-          <NumberField
-            key={motor.motorId}
-            label={`Field of ${motor.name}`}
-            unit="A"
-            hint={`Today ${amperes(motor.todayA)}, limit ${amperes(motor.limitA)}`}
-            {...register(`fields.${index}.fieldA`)}
-            error={fault(`fields.${index}.fieldA`)}
-          />
-        ))}
-      </div>
-    </>
-  );
-}
-
-/** The alternative everybody knows: a fixed bank on the plant's bus. */
-function CapacitorFields() {
-  const { register, formState, watch } = useFormContext<PlanDraft>();
-  const fault = (path: string) => messageAt(formState.errors, path);
-  const size = watch('capacitors.kvar').trim();
-  const none = size === '' || size === '0';
-  return (
-    <fieldset className="mt-5">
-      <legend>Capacitors instead, or besides</legend>
-      <div className="form-grid">
-        <NumberField
-          label="Bank, all steps together"
-          unit="kvar"
-          hint="Empty for none"
-          {...register('capacitors.kvar')}
-          error={fault('capacitors.kvar')}
-        />
-        {!none && (
-          <>
-            <NumberField
-              label="Losses"
-              unit="W/kvar"
-              hint="About 0.5 plain, 4 to 8 with reactors"
-              {...register('capacitors.lossWPerKvar')}
-              error={fault('capacitors.lossWPerKvar')}
-            />
-            <NumberField
-              label="Detuning reactors"
-              unit="%"
-              hint="5.67, 7 or 14; empty for none"
-              {...register('capacitors.detuningPercent')}
-              error={fault('capacitors.detuningPercent')}
-            />
-          </>
-        )}
-      </div>
-    </fieldset>
-  );
+  return { form, kept, version, stored, save, submit, loadTheirs, plant };
 }
 
 function RemovePlan({ code, name, plan }: { code: string; name: string; plan: { id: number; version: number } }) {
@@ -161,11 +98,10 @@ function RemovePlan({ code, name, plan }: { code: string; name: string; plan: { 
 }
 
 function Form(props: PlanFormProps) {
-  const { code, currency, motors, plan, start } = props;
-  const { form, kept, version, stored, save, submit, loadTheirs } = usePlanForm(props);
-  const nameOf = (motorId: number) => motors.find((motor) => motor.motorId === motorId)?.name ?? `motor ${motorId}`;
-  const theirs = stored && planEntries(planDraftOf(stored), nameOf);
-  const differences = Object.entries(planEntries(form.getValues(), nameOf))
+  const { code, currency, motors, meters, seasons, plan, start } = props;
+  const { form, kept, version, stored, save, submit, loadTheirs, plant } = usePlanForm(props);
+  const theirs = stored && planEntries(planDraftOf(stored, plant), plant);
+  const differences = Object.entries(planEntries(form.getValues(), plant))
     .filter(([label, mine]) => theirs && mine !== theirs[label])
     .map(([label, mine]) => ({ label, mine, theirs: theirs?.[label] ?? '' }));
   return (
@@ -181,8 +117,10 @@ function Form(props: PlanFormProps) {
         {kept.restored && (
           <Notice title="This is what you typed before you had to sign in again. It is not saved yet." />
         )}
-        <PlanFields motors={motors} />
-        <CapacitorFields />
+        <SpanFields seasons={seasons} />
+        <MotorRows motors={motors} currency={currency} seasons={seasons} />
+        <BankFields meters={meters} currency={currency} />
+        <ReplacementFields meters={meters} currency={currency} seasons={seasons} />
         <MoneyFields currency={currency} />
         {stored && (
           <StaleCompare

@@ -1,7 +1,6 @@
 import type { PlanView, PricedBillView, YearView } from '../../schemas/plan';
 import type { CostCurveView, SearchView } from '../../schemas/search';
 import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
-import type { CashFlowData } from '../charts/CashFlowChart';
 import type { CostCurveData } from '../charts/CostCurveChart';
 import type { PaybackData } from '../charts/payback';
 import { formatBillName } from '../ui/format';
@@ -63,23 +62,12 @@ export function paybackChart(plan: PlanView): PaybackData {
   return {
     currency: plan.currency,
     capitalCost: plan.capitalCost,
+    incentive: plan.economics.incentive,
     paybackYears: plan.appraisal.simplePaybackYears,
     paybackRange: paybackRange(plan),
     editionName: plan.name,
     points: plan.cashFlow
       .filter((month) => month.month % 3 === 0)
       .map((month) => ({ year: month.month / 12, cumulative: month.cumulative, p10: month.low, p90: month.high })),
-  };
-}
-
-/** Cash of each year: the work, then saving less upkeep. */
-export function cashFlowChart(plan: PlanView): CashFlowData {
-  const atYear = (year: number) => plan.cashFlow.find((month) => month.month === 12 * year)?.cumulative ?? 0;
-  return {
-    currency: plan.currency,
-    years: Array.from({ length: plan.economics.horizonYears + 1 }, (_, year) => ({
-      year,
-      flow: year === 0 ? atYear(0) : atYear(year) - atYear(year - 1),
-    })),
   };
 }

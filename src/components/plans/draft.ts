@@ -1,89 +1,104 @@
-import { constantFieldA } from '../../schemas/plan-settings';
+import type { SynchronousMotor } from '../../core/machine';
 import type { PlanInput } from '../../schemas/plan-input';
 import { typedNumber } from '../ui/typed-number';
+import { economicsDraftOf, economicsEntries, economicsToInput, type EconomicsDraft } from './money-draft';
+import {
+  bankDraftOf,
+  bankToInput,
+  replacementDraftOf,
+  replacementToInput,
+  type BankDraft,
+  type ReplacementDraft,
+} from './part-draft';
+import { modes, settingDraftOf, settingToInput, typed, valuesOf, type SettingDraft } from './setting-draft';
+import { spanCountOf, spanDraftOf, spansEntry, spansToInput, type SpanDraft } from './span-draft';
 
-/** A plan as it is typed; paths are those of `planInput`. Fields stay in the order of the motors. */
+/** A plan as it is typed. Faults stand at the paths of `planInput`. */
 export interface PlanDraft {
   name: string;
-  fields: { motorId: number; fieldA: string }[];
-  /** An empty size is no bank. */
-  capacitors: { kvar: string; lossWPerKvar: string; detuningPercent: string };
+  spans: SpanDraft;
+  /** In the order of the motors. */
+  settings: SettingDraft[];
+  banks: BankDraft[];
+  replacements: ReplacementDraft[];
   workCost: string;
   yearlyUpkeep: string;
-  economics: { discountPercent: string; escalationPercent: string; horizonYears: string };
+  economics: EconomicsDraft;
 }
 
+/** What the form knows of the plant and its schedule. */
+export interface PlanPlant {
+  motors: { motorId: number; name: string; machine: SynchronousMotor }[];
+  /** Names of the schedule's seasons, in its order. */
+  seasons: string[];
+}
+
+const machineOf = ({ motors }: PlanPlant, motorId: number) =>
+  motors.find((motor) => motor.motorId === motorId)?.machine;
+
 /** What the schema is asked to read. */
-export function planDraftToInput(draft: PlanDraft, searchJobId?: number): unknown {
-  const { economics } = draft;
+export function planDraftToInput(draft: PlanDraft, plant: PlanPlant, searchJobId?: number): unknown {
+  const count = spanCountOf(draft.spans, plant.seasons);
   return {
     name: draft.name,
-    fields: draft.fields.map(({ motorId, fieldA }) => ({ motorId, fieldA: typedNumber(fieldA) })),
-    banks: bankToInput(draft.capacitors),
+    spans: spansToInput(draft.spans, plant.seasons),
+    fields: draft.settings.map((setting) => settingToInput(setting, count, machineOf(plant, setting.motorId))),
+    banks: draft.banks.map(bankToInput),
+    replacements: draft.replacements.map((one) => replacementToInput(one, count)),
     workCost: typedNumber(draft.workCost),
     yearlyUpkeep: typedNumber(draft.yearlyUpkeep),
-    economics: {
-      discountPercent: typedNumber(economics.discountPercent),
-      escalationPercent: typedNumber(economics.escalationPercent),
-      horizonYears: typedNumber(economics.horizonYears),
-    },
+    economics: economicsToInput(draft.economics),
     searchJobId,
   };
 }
 
-/** A bank of 0 or no kvar is none. */
-function bankToInput(bank: PlanDraft['capacitors']): unknown {
-  const kvar = typedNumber(bank.kvar);
-  if (kvar === undefined || kvar === 0) return [];
-  return [
-    {
-      steps: 1,
-      stepKvar: kvar,
-      lossWPerKvar: typedNumber(bank.lossWPerKvar),
-      detuningPercent: typedNumber(bank.detuningPercent),
-    },
-  ];
-}
-
-/** Amperes as an operator reads them: a tenth at most, so that a solved value stays within its limit. */
-const typed = (value: number | undefined) => (value === undefined ? '' : String(Math.round(value * 1e6) / 1e6));
-
-/** Losses of a detuned bank with its reactors and contactors. Common practice, [W/kvar]. */
-const usualLossWPerKvar = 5;
-
 /** A stored plan, or the start of a new one, in the form. */
-export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>): PlanDraft {
-  const { economics } = plan;
+export function planDraftOf(plan: Omit<PlanInput, 'searchJobId'>, plant: PlanPlant): PlanDraft {
+  const spans = spanDraftOf(plan.spans);
+  const count = spanCountOf(spans, plant.seasons);
   return {
     name: plan.name,
-    fields: plan.fields.map((field) => ({ motorId: field.motorId, fieldA: typed(constantFieldA(field) ?? undefined) })),
-    capacitors: {
-      kvar: typed(plan.banks[0] && plan.banks[0].steps * plan.banks[0].stepKvar),
-      lossWPerKvar: typed(plan.banks[0]?.lossWPerKvar ?? usualLossWPerKvar),
-      detuningPercent: typed(plan.banks[0]?.detuningPercent),
-    },
+    spans,
+    settings: plan.fields.map((setting) => settingDraftOf(setting, count, machineOf(plant, setting.motorId))),
+    banks: plan.banks.map(bankDraftOf),
+    replacements: plan.replacements.map((one) => replacementDraftOf(one, count)),
     workCost: typed(plan.workCost),
     yearlyUpkeep: typed(plan.yearlyUpkeep),
-    economics: {
-      discountPercent: typed(economics.discountPercent),
-      escalationPercent: typed(economics.escalationPercent),
-      horizonYears: typed(economics.horizonYears),
-    },
+    economics: economicsDraftOf(plan.economics),
   };
 }
 
+const bankEntry = ({ steps, stepKvar, lossWPerKvar, detuningPercent, holdsPowerFactor, cost }: BankDraft) =>
+  `${steps} x ${stepKvar} kvar, ${lossWPerKvar} W/kvar, detuning ${detuningPercent || 'none'}, holds ${holdsPowerFactor || 'fixed'}, cost ${cost || '0'}`;
+
+/** All that is paid once, as it stands typed; undefined while the work is missing. */
+export function capitalTyped({ workCost, settings, banks, replacements }: PlanDraft): number | undefined {
+  const work = typedNumber(workCost);
+  const costs = [
+    ...settings.map((setting) => setting.equipmentCost),
+    ...[...banks, ...replacements].map((part) => part.cost),
+  ];
+  return work === undefined ? undefined : costs.reduce((sum, cost) => sum + (typedNumber(cost) ?? 0), work);
+}
+
 /** Entries of a draft as text, with names, for comparing two versions. */
-export function planEntries(draft: PlanDraft, motorName: (motorId: number) => string): Record<string, string> {
+export function planEntries(draft: PlanDraft, plant: PlanPlant): Record<string, string> {
+  const nameOf = (motorId: number) =>
+    plant.motors.find((motor) => motor.motorId === motorId)?.name ?? `motor ${motorId}`;
+  const count = spanCountOf(draft.spans, plant.seasons);
+  const settings = draft.settings.map((setting) => {
+    const mode = modes.find(({ value }) => value === setting.holds);
+    const cost = setting.equipmentCost.trim() === '' ? '' : `, regulator ${setting.equipmentCost}`;
+    return [`${nameOf(setting.motorId)} holds`, `${mode?.label}: ${valuesOf(setting, count).join(', ')}${cost}`];
+  });
   return {
     Name: draft.name,
-    ...Object.fromEntries(draft.fields.map(({ motorId, fieldA }) => [`${motorName(motorId)} field, A`, fieldA])),
-    'Capacitors, kvar': draft.capacitors.kvar,
-    'Capacitor losses, W/kvar': draft.capacitors.lossWPerKvar,
-    'Detuning, %': draft.capacitors.detuningPercent,
+    'Parts of the year': spansEntry(draft.spans, plant.seasons),
+    ...Object.fromEntries(settings),
+    Capacitors: draft.banks.map(bankEntry).join('; ') || 'none',
+    'New motors': draft.replacements.map(({ name, cost }) => `${name}, cost ${cost || '0'}`).join('; ') || 'none',
     'Work, once': draft.workCost,
     'Upkeep a year': draft.yearlyUpkeep,
-    'Discount rate, %': draft.economics.discountPercent,
-    'Rise of prices, %': draft.economics.escalationPercent,
-    'Horizon, years': draft.economics.horizonYears,
+    ...economicsEntries(draft.economics),
   };
 }

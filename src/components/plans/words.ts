@@ -1,3 +1,4 @@
+import { wordOrdinal } from '../../core/units';
 import type { AssumedValue } from '../../schemas/motor';
 import type { ChargeGroup, PlanView, YearView } from '../../schemas/plan';
 import { capacitorCaution } from '../ui/Caution';
@@ -11,6 +12,7 @@ import {
   formatQuantity,
   formatSpelled,
 } from '../ui/format';
+import { ceilingWords, paybackInFull } from './money-words';
 
 /** Groups in the order of the tables, in words. */
 export const groupNames: [ChargeGroup, string][] = [
@@ -21,9 +23,6 @@ export const groupNames: [ChargeGroup, string][] = [
   ['fixed', 'Fixed'],
   ['tax', 'Tax'],
 ];
-
-/** "5th", "7th", "3rd". */
-export const ordinal = (count: number) => `${count}${count % 10 === 3 && count % 100 !== 13 ? 'rd' : 'th'}`;
 
 /** All capacitors of a plan together. [kvar] */
 export const bankKvar = ({ banks }: PlanView) => banks.reduce((sum, { kvar }) => sum + kvar, 0);
@@ -105,11 +104,7 @@ function leadOf(year: YearView, shown: PlanView, left: number): string {
 /** What would turn the verdict, and where the plan brings least. */
 export function turningWords(year: YearView, plan: PlanView): { turn: string; least: string | null } {
   const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
-  const ceiling = plan.capitalCost + plan.appraisal.npv;
-  const turn =
-    ceiling > 0
-      ? `Work dearer than ${money(ceiling)}: then its present value over ${plan.economics.horizonYears} years is nought.`
-      : 'Nothing of its cost: even without any it would be worth less than standing.';
+  const turn = ceilingWords(plan);
   const savings = plan.bills.map((bill, index) => ({
     name: formatBillName(bill),
     saved: (year.standing.bills[index]?.total ?? 0) - bill.total,
@@ -162,7 +157,7 @@ export function paybackFinding(plan: PlanView): string {
   const after = `after ${plan.economics.horizonYears} years it has brought ${formatMajor(end, plan.currency, { whole: true })}`;
   return plan.paybackWords === 'at once'
     ? `It costs nothing to do; ${after}.`
-    : `Paid back in ${plan.paybackWords}; ${after}.`;
+    : `Paid back in ${paybackInFull(plan.appraisal.simplePaybackYears)}; ${after}.`;
 }
 
 /** What the losses do to the saving: how much of the gain they take back, or that they fall too. */
@@ -186,7 +181,7 @@ export function capacitorSentences(year: YearView): string[] {
       if (!resonance) return `${name}: resonance is not checked, the short-circuit power is not known.`;
       const order = `order ${formatNumber(resonance.order, { decimals: 1 })}`;
       return resonance.near.length > 0
-        ? `${name} resonates at ${order}, near the ${resonance.near.map(ordinal).join(' and ')} harmonic: ${bank.detuningPercent ? 'choose another size or tuning' : 'detune it or choose another size'}.`
+        ? `${name} resonates at ${order}, near the ${resonance.near.map(wordOrdinal).join(' and ')} harmonic: ${bank.detuningPercent ? 'choose another size or tuning' : 'detune it or choose another size'}.`
         : `${name} resonates at ${order}, half an order and more from the usual harmonics.`;
     }),
   ];

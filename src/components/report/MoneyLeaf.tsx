@@ -1,10 +1,15 @@
 import type { EditionContent } from '../../schemas/edition';
 import { formatNumber, formatPayback, formatPercent, formatQuantity } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
+import { moneyOf } from '../client/edition-money';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums, type SumRow } from '../ui/ResultSums';
 import type { LeafContext } from './AnswerLeaf';
 import { Leaf, LeafRow } from './Leaf';
+import { rankingShort, type RankingData } from '../charts/ranking';
+import { rankingChart } from '../plans/money-charts';
+import { riseWords, spreadWords } from '../plans/money-words';
+import type { MoneyView } from '../../schemas/money-view';
 import { Picture } from './Picture';
 import { paybackFinding } from './words';
 
@@ -38,13 +43,19 @@ function yearsTable({ cashFlow, currency }: EditionContent): LedgerData {
   };
 }
 
-function sums({ plan, currency }: EditionContent): SumRow[] {
+function sums({ plan, currency, money }: EditionContent): SumRow[] {
   const { appraisal, economics } = plan;
+  const { incentive = 0, taxPercent = 0 } = economics;
+  const tax = money?.years[1]?.tax ?? 0;
   return [
     { label: `Work, once, ${currency}`, value: formatNumber(plan.capitalCost) },
+    ...(incentive > 0 ? [{ label: 'Incentive, once', value: formatNumber(-incentive) }] : []),
     { label: 'Saved a year', value: formatNumber(plan.saving) },
     { label: 'Upkeep a year', value: formatNumber(plan.yearlyUpkeep) },
-    { label: 'Net a year', value: formatNumber(plan.saving - plan.yearlyUpkeep), kind: 'total' },
+    ...(taxPercent > 0
+      ? [{ label: `Tax of year 1, ${formatQuantity(taxPercent, '%', { upTo: 1 })}`, value: formatNumber(tax) }]
+      : []),
+    { label: 'Net in year 1', value: formatNumber(plan.saving - plan.yearlyUpkeep - tax), kind: 'total' },
     { label: 'Pays back', value: plan.paybackWords, kind: 'strong' },
     {
       label: `At ${formatQuantity(economics.discountPercent, '%', { upTo: 1 })} interest`,
@@ -55,6 +66,18 @@ function sums({ plan, currency }: EditionContent): SumRow[] {
   ];
 }
 
+/** The ranking of what moves the plan's money. */
+function rankingOf(content: EditionContent, { ranking }: MoneyView): RankingData {
+  const { npv, simplePaybackYears } = content.plan.appraisal;
+  return rankingChart({
+    currency: content.currency,
+    money: moneyOf(content),
+    npv,
+    paybackYears: simplePaybackYears,
+    ranking,
+  });
+}
+
 export interface MoneyLeafProps extends LeafContext {
   pictures: Record<string, string>;
   page: number;
@@ -63,6 +86,7 @@ export interface MoneyLeafProps extends LeafContext {
 /** Payback and cash flow. */
 export function MoneyLeaf({ content, taps, foot, pictures, page }: MoneyLeafProps) {
   const { plan } = content;
+  const ranking = content.money && rankingOf(content, content.money);
   return (
     <Leaf page={page} taps={taps} foot={foot} finding={paybackFinding(content)}>
       <LeafRow
@@ -70,10 +94,11 @@ export function MoneyLeaf({ content, taps, foot, pictures, page }: MoneyLeafProp
         number={`${page}.1`}
         title="Payback"
         reference={
-          <p>
-            Work and upkeep as quoted or entered; prices rise{' '}
-            {formatQuantity(plan.economics.escalationPercent, '%', { upTo: 1 })} a year
-          </p>
+          <>
+            <p>Work and upkeep as quoted or entered</p>
+            <p>{riseWords(plan.economics)}</p>
+            {content.money && <p>{spreadWords(plan.economics)}</p>}
+          </>
         }
       >
         <Picture svg={pictures['payback-page']} label="Payback" />
@@ -91,6 +116,15 @@ export function MoneyLeaf({ content, taps, foot, pictures, page }: MoneyLeafProp
           </p>
         ))}
       </LeafRow>
+      {ranking && ranking.rows.length > 0 && (
+        <LeafRow
+          number={`${page}.3`}
+          title="What moves it"
+          reference={<p>One figure at a time, between the values it lies between eight of ten times</p>}
+        >
+          <LedgerTable label="What moves the result" {...rankingShort(ranking)} />
+        </LeafRow>
+      )}
     </Leaf>
   );
 }

@@ -1,5 +1,4 @@
 import { useId, useState, type CSSProperties } from 'react';
-import { formatNumber } from './format';
 import { typedNumber } from './typed-number';
 
 export interface AssumptionFieldProps {
@@ -13,20 +12,30 @@ export interface AssumptionFieldProps {
   max: number;
   step: number;
   unit: string;
-  decimals?: number;
+  /** The figure as it is shown and typed. */
+  figure: (value: number) => string;
   onChange: (value: number) => void;
+}
+
+/** Why what was typed is not taken as it is; null where it is. */
+function refusal(typed: number, min: number, max: number, figure: (value: number) => string): string | null {
+  if (!Number.isFinite(typed)) return 'Write a number, as 2.5.';
+  if (typed >= min && typed <= max) return null;
+  return `It may be moved from ${figure(min)} to ${figure(max)}; taken to the end of it.`;
 }
 
 /** A payback assumption: number with unit, slider with a tick at the edition's value, ends of the range. */
 export function AssumptionField(props: AssumptionFieldProps) {
-  const { label, value, editionValue, editionName, min, max, step, unit, decimals = 0, onChange } = props;
+  const { label, value, editionValue, editionName, min, max, step, unit, figure, onChange } = props;
   const id = useId();
   const [draft, setDraft] = useState<string | null>(null);
+  const [refused, setRefused] = useState<string | null>(null);
   const share = (at: number) => (100 * (Math.min(max, Math.max(min, at)) - min)) / (max - min);
-  const figure = (at: number) => formatNumber(at, { decimals });
   const accept = () => {
-    const typed = typedNumber(draft ?? '') ?? NaN;
+    if (draft === null) return;
+    const typed = typedNumber(draft) ?? NaN;
     if (Number.isFinite(typed)) onChange(Math.min(max, Math.max(min, typed)));
+    setRefused(refusal(typed, min, max, figure));
     setDraft(null);
   };
   return (
@@ -37,6 +46,7 @@ export function AssumptionField(props: AssumptionFieldProps) {
           id={id}
           className="input"
           type="text"
+          aria-describedby={`${id}-range`}
           inputMode="decimal"
           value={draft ?? figure(value)}
           onChange={(event) => setDraft(event.target.value)}
@@ -56,7 +66,10 @@ export function AssumptionField(props: AssumptionFieldProps) {
           step={step}
           value={value}
           style={{ '--share': `${share(value)}%` } as CSSProperties}
-          onChange={(event) => onChange(Number(event.target.value))}
+          onChange={(event) => {
+            setRefused(null);
+            onChange(Number(event.target.value));
+          }}
         />
         <i
           className="assumption-tick"
@@ -64,7 +77,10 @@ export function AssumptionField(props: AssumptionFieldProps) {
           style={{ left: `calc(6px + (100% - 12px) * ${share(editionValue) / 100})` }}
         />
       </div>
-      <div className="assumption-ends">
+      <p className="assumption-limit" role="status">
+        {refused}
+      </p>
+      <div className="assumption-ends" id={`${id}-range`}>
         <span>{figure(min)}</span>
         <span>
           {editionName}: {figure(editionValue)}

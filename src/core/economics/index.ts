@@ -1,7 +1,11 @@
 export { appraise } from './appraise';
 export type { Appraisal, Project } from './appraise';
 export { ratesOfReturn } from './irr';
-export { afterTax, cashFlow, escalatedSavings } from './cash-flow';
-export type { CashFlowMonth, CashFlowYear } from './cash-flow';
-export { sampleAppraisal } from './uncertainty';
-export type { Quantiles, UncertainProject, UncertaintyResult } from './uncertainty';
+export { appraiseInvestment, breakEvenCapital, investmentMonths, investmentYears } from './investment';
+export type { Investment, InvestmentMonth, InvestmentYear } from './investment';
+export { movedInvestment } from './moves';
+export type { MovedInput, Moves, Spreads } from './moves';
+export { rankInputs } from './ranking';
+export type { RankedInput } from './ranking';
+export { sampleAppraisal } from './sampling';
+export type { Quantiles, SampledAppraisal } from './sampling';

@@ -37,6 +37,9 @@ function figures({ plan, currency }: EditionContent): [label: string, value: str
   return [
     ['Saved on the bills, a year', whole(plan.saving)],
     ['The work, once', whole(plan.capitalCost)],
+    ...((plan.economics.incentive ?? 0) > 0
+      ? [['Incentive', whole(-(plan.economics.incentive ?? 0))] as [string, string]]
+      : []),
     ['Pays for itself', paybackFigure(plan)],
     ...spread(plan),
     [

@@ -15,6 +15,7 @@ export function paybackData({ cashFlow, plan, currency, number }: EditionContent
   return {
     currency,
     capitalCost: plan.capitalCost,
+    incentive: plan.economics.incentive,
     points: cashFlow.map(({ month, cumulative, low, high }) => ({ year: month / 12, cumulative, p10: low, p90: high })),
     paybackYears: plan.appraisal.simplePaybackYears,
     paybackRange: paybackRange(plan),

@@ -1,20 +1,24 @@
 import { createHash } from 'node:crypto';
 import type { CompletedMotor, SynchronousMotor } from '../../core/machine';
+import type { SupplyView } from '../../schemas/supply';
 import { conflict } from '../errors';
 import type { Motor } from '../models/Motor';
 import { calculateYear } from '../workers/pool';
 import { actKey } from './plan-acts';
 import type { TaskAct, TaskBasis, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
-import { listMotors } from './motors';
-import { completePlate } from './nameplates';
+import { loadSourcesOf, type StoredSource } from './load-sources';
+import { completedOf, listMotors } from './motors';
 import { pricingInputs, type PricingInputs } from './pricing';
+import { supplyForTask, supplyOf } from './supplies';
 
 /** A motor's row with the machine its plate makes. */
 export interface PlanMotor {
   row: Motor;
   machine: SynchronousMotor;
   completed: CompletedMotor;
+  /** What tells its shaft load. */
+  source: StoredSource;
 }
 
 /** Everything a plan of an engagement is priced from. */
@@ -22,16 +26,18 @@ export interface PlanBasis {
   pricing: PricingInputs;
   motors: PlanMotor[];
   task: TaskBasis;
-  /** Changes whenever readings, bills, tariff or a motor change. */
+  supply: SupplyView;
+  /** Changes whenever readings, bills, tariff, supply or a motor change. */
   fingerprint: string;
 }
 
-/** Motors of an engagement with their machines. */
+/** Motors of an engagement with their machines, and what tells their loads. */
 export async function planMotors(engagementId: number): Promise<PlanMotor[]> {
-  return (await listMotors(engagementId)).map((row) => {
-    const completed = completePlate(row.plate);
-    if (!completed.motor) throw conflict(`The plate of ${row.name} cannot be read. Open it at the station Motors.`);
-    return { row, machine: completed.motor, completed };
+  const rows = await listMotors(engagementId);
+  const sources = await loadSourcesOf(rows);
+  return rows.map((row, index) => {
+    const completed = completedOf(row);
+    return { row, machine: completed.motor, completed, source: sources[index]! };
   });
 }
 
@@ -45,7 +51,7 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
   if (motors.length === 0) {
     throw conflict('No motor is entered yet. Enter one at the station Motors.', { station: 'motors' });
   }
-  const pricing = await pricingInputs(opened);
+  const [pricing, supply] = await Promise.all([pricingInputs(opened), supplyOf(opened)]);
   const { scheduleText, periods, contract, history, given, load, meters, schedule } = pricing;
   const task: TaskBasis = {
     scheduleText,
@@ -56,23 +62,27 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
     given,
     load,
     meters,
-    motors: motors.map(({ row, machine }) => ({
+    ...supplyForTask(supply),
+    motors: motors.map(({ row, machine, completed, source }) => ({
       id: row.id,
       name: row.name,
       machine,
-      calendar: row.calendar,
+      calendar: source.calendar,
+      metered: source.metered,
       fieldTodayA: row.fieldTodayA,
+      leastFieldA: completed.leastFieldA,
+      voltageBandPu: completed.voltageBandPu,
       behind: Math.max(
         0,
         opened.meters.findIndex(({ id }) => id === row.meterId),
       ),
     })),
   };
-  const ofMotors = motors.map(({ row }) => [row.id, row.version, row.updatedAt.getTime()]);
+  const ofMotors = motors.map(({ row, source }) => [row.id, row.version, row.updatedAt.getTime(), source.key]);
   const fingerprint = createHash('sha256')
-    .update(JSON.stringify([pricing.dataKey, ofMotors]))
+    .update(JSON.stringify([pricing.dataKey, ofMotors, supply]))
     .digest('hex');
-  return { pricing, motors, task, fingerprint };
+  return { pricing, motors, supply, task, fingerprint };
 }
 
 const cacheSize = 60;

@@ -1,8 +1,8 @@
 import * as formulajs from '@formulajs/formulajs';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { afterTax, appraise, cashFlow, escalatedSavings, ratesOfReturn } from '../../../src/core/economics';
-import { irrCases, npvCases, pumpCase } from '../../published/economics-cases';
+import { appraise, ratesOfReturn } from '../../../src/core/economics';
+import { irrCases, npvAndIrrCases, npvCases, paybackCases, pumpCase } from '../../published/economics-cases';
 
 const amount = (min: number, max: number) => fc.double({ min, max, noNaN: true });
 const project = (yearlySaving: number[], capitalCost = 1000, discountRate = 0.1) => ({
@@ -19,6 +19,47 @@ describe('appraise', () => {
   it.each(irrCases)('has the rate of return of $source', (row) => {
     const { irr } = appraise({ ...row, discountRate: 0 });
     expect(Math.abs(irr! - row.expected)).toBeLessThanOrEqual(row.tolerance);
+  });
+
+  it.each(npvAndIrrCases)('has both of $source', (row) => {
+    const { npv, irr } = appraise(row);
+    expect(Math.abs(npv - row.npv.expected)).toBeLessThanOrEqual(row.npv.tolerance);
+    expect(Math.abs(irr! - row.irr.expected)).toBeLessThanOrEqual(row.irr.tolerance);
+  });
+
+  it.each(paybackCases)('has the paybacks of $source', (row) => {
+    const { simplePaybackYears, discountedPaybackYears, npv } = appraise(row);
+    expect(Math.abs(simplePaybackYears! - row.simpleYears.expected)).toBeLessThanOrEqual(row.simpleYears.tolerance);
+    expect(Math.abs(discountedPaybackYears! - row.discountedYears.expected)).toBeLessThanOrEqual(
+      row.discountedYears.tolerance,
+    );
+    expect(Math.abs(npv - row.npv.expected)).toBeLessThanOrEqual(row.npv.tolerance);
+  });
+
+  it('agrees with the number of periods of a spreadsheet library on the paybacks of an even saving', () => {
+    fc.assert(
+      fc.property(amount(1000, 1e6), amount(0.06, 0.9), amount(0.001, 0.05), (cost, share, rate) => {
+        const saving = cost * share;
+        const found = appraise(project(new Array<number>(60).fill(saving), cost, rate));
+        const simple = formulajs.NPER(0, saving, -cost) as number;
+        expect(found.simplePaybackYears!).toBeCloseTo(simple, 9);
+        // Within the year the library goes along a power, here a straight line is drawn: the whole years agree.
+        const discounted = formulajs.NPER(rate, saving, -cost) as number;
+        expect(Math.abs(found.discountedPaybackYears! - discounted)).toBeLessThan(rate);
+        if (Math.abs(discounted - Math.round(discounted)) > 1e-6)
+          expect(Math.floor(found.discountedPaybackYears!)).toBe(Math.floor(discounted));
+      }),
+      { numRuns: 500 },
+    );
+  });
+
+  it('has no present value at its own rate of return', () => {
+    fc.assert(
+      fc.property(amount(100, 1e6), fc.array(amount(1, 1e6), { minLength: 1, maxLength: 30 }), (cost, saving) => {
+        const { irr } = appraise(project(saving, cost));
+        expect(Math.abs(appraise(project(saving, cost, irr!)).npv) / cost).toBeLessThan(1e-9);
+      }),
+    );
   });
 
   it('agrees with a general-purpose library on NPV and IRR of random projects', () => {
@@ -135,59 +176,5 @@ describe('ratesOfReturn', () => {
   it('finds none where the present value keeps its sign', () => {
     expect(ratesOfReturn([1, -1, 1])).toEqual([]);
     expect(ratesOfReturn([0, 5, 5])).toEqual([]);
-  });
-});
-
-describe('cashFlow', () => {
-  it('ends each year where the sum of its flows stands and crosses zero at the simple payback', () => {
-    const p = { ...project([400, 500, 600]), yearlyUpkeep: [50, 50, 50] };
-    const { years, months } = cashFlow(p);
-    expect(years.map((y) => y.cumulative)).toEqual([-1000, -650, -200, 350]);
-    expect(years.map((y) => y.upkeep)).toEqual([0, 50, 50, 50]);
-    expect(months).toHaveLength(37);
-    expect(months[24]!.cumulative).toBeCloseTo(-200, 12);
-    expect(years[3]!.cumulativeDiscounted).toBeCloseTo(appraise(p).npv, 10);
-    const paidBack = 12 * appraise(p).simplePaybackYears!;
-    expect(months[Math.floor(paidBack)]!.cumulative).toBeLessThanOrEqual(0);
-    expect(months[Math.ceil(paidBack)]!.cumulative).toBeGreaterThanOrEqual(0);
-  });
-});
-
-describe('escalatedSavings', () => {
-  it('grows each group at its own rate', () => {
-    // 100 x 1.02^2 + 50 x 1.05^2 = 104.04 + 55.125
-    const found = escalatedSavings({
-      firstYear: { energy: 100, reactive: 50 },
-      escalation: { reactive: 0.05 },
-      otherEscalation: 0.02,
-      years: 3,
-    });
-    expect(found[0]).toBe(150);
-    expect(found[2]).toBeCloseTo(159.165, 10);
-  });
-
-  it.each([
-    [{ firstYear: { energy: 1 }, years: 0 }, /years/],
-    [{ firstYear: { energy: NaN }, years: 1 }, /firstYear.energy/],
-    [{ firstYear: { energy: 1 }, escalation: { energy: -1 }, years: 1 }, /escalation of energy/],
-  ])('refuses %o', (wrong, message) => {
-    expect(() => escalatedSavings(wrong)).toThrow(message);
-  });
-});
-
-describe('afterTax', () => {
-  it('taxes saving less upkeep less straight-line depreciation', () => {
-    // Capital 1000 - 200 = 800, written off over 2 years: 400 a year. (500 - 100)(1 - 0.25) + 0.25 x 400 = 400; then 300.
-    const p = { ...project([500, 500, 500]), yearlyUpkeep: [100, 100, 100] };
-    const taxed = afterTax(p, { taxRate: 0.25, depreciationYears: 2, incentive: 200 });
-    expect(taxed).toEqual({ capitalCost: 800, yearlySaving: [400, 400, 300], discountRate: 0.1 });
-  });
-
-  it.each([
-    [{ taxRate: 1, depreciationYears: 5 }, /taxRate/],
-    [{ taxRate: 0.2, depreciationYears: 0 }, /depreciationYears/],
-    [{ taxRate: 0.2, depreciationYears: 5, incentive: 2000 }, /incentive/],
-  ])('refuses %o', (wrong, message) => {
-    expect(() => afterTax(project([500]), wrong)).toThrow(message);
   });
 });

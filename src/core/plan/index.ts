@@ -43,6 +43,7 @@ export type {
   Upstream,
 } from './types';
 export {
+  USUAL_HARMONICS,
   combineLoads,
   correctiveKvar,
   kvarPerKw,

@@ -59,7 +59,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
       return reason ? [unpricedOf(row, reason, motors)] : [];
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
-    gaps: gapsOf(basis, standing),
+    gaps: [...gapsOf(basis, standing), ...motors.flatMap(loadGapOf)],
     notes: notesOfBills(standing.bills.map(({ period, notes }) => ({ name: formatBillName(period), notes }))),
     fingerprint: basis.fingerprint,
   };
@@ -86,6 +86,20 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
       ? [
           `${wordNumber(missing, 1)} of ${wordNumber(intervals, 1)} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
         ]
+      : []),
+  ];
+}
+
+/** What a motor's submeter does not tell. */
+function loadGapOf({ row, source, load }: LoadedMotor): string[] {
+  if (!source.metered || load.hoursMissing + load.hoursBeyond === 0) return [];
+  const stand = source.metered.whenMissing === 'calendar' ? 'its shift calendar stands in' : 'it is taken to stand still';
+  return [
+    ...(load.hoursMissing > 0
+      ? [`The submeter of ${row.name} has no reading for ${wordNumber(load.hoursMissing, 1)} hours of the year: there ${stand}.`]
+      : []),
+    ...(load.hoursBeyond > 0
+      ? [`In ${wordNumber(load.hoursBeyond, 1)} hours the submeter of ${row.name} reads more than its field of today can hold: there the most it holds is taken.`]
       : []),
   ];
 }

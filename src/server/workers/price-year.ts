@@ -1,8 +1,8 @@
 import { localDateStartMs, type LoadSeries } from '../../core/load';
-import { shaftLoadSeries, simulatePlan, spanSeries } from '../../core/plan';
+import { simulatePlan, spanSeries } from '../../core/plan';
 import type { FixedSetup, Grid, PlanMotor, PlanSetup, Plant, Spans } from '../../core/plan';
 import { compilePricing, readSchedule, type CompiledPricing, type Schedule } from '../../core/tariff';
-import { shaftLoadOf, toShiftCalendar } from '../services/shaft-load';
+import { rulesLoad, shaftLoadOf } from '../services/shaft-load';
 import type { TaskAct, TaskBasis, TaskSetting, YearTask } from './tasks';
 
 /** A task made ready: the plant on the readings' own intervals, the schedule laid out over them. */
@@ -19,9 +19,9 @@ export function readyYear(basis: TaskBasis): ReadyYear {
   const { load, meters, periods, contract, history, given, upstream, supply } = basis;
   const grid = { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length };
   const motors = basis.motors.map((motor): PlanMotor => {
-    const { machine, fieldTodayA: standingFieldA, behind, voltagePu, leastFieldA, voltageBandPu } = motor;
+    const { machine, fieldTodayA, behind, voltagePu, leastFieldA, voltageBandPu } = motor;
     const { shaftKw } = shaftLoadOf(motor, grid, basis.timeZone);
-    return { motor: machine, shaftKw, standingFieldA, behind, voltagePu, leastFieldA, voltageBandPu };
+    return { motor: machine, shaftKw, standingFieldA: fieldTodayA, behind, voltagePu, leastFieldA, voltageBandPu };
   });
   const options = { periods, contract, given, ...(history ? { history } : {}) };
   const schedule = readSchedule(basis.scheduleText);
@@ -48,7 +48,7 @@ export function fixedSetupOf(ready: ReadyYear, act: TaskAct): FixedSetup {
     replacements: (act.replacements ?? []).map(({ induction, machine, calendar, controls, behind }) => ({
       induction,
       motor: machine,
-      shaftKw: shaftLoadSeries(toShiftCalendar(calendar, induction.ratedOutputKw), grid, basis.timeZone),
+      shaftKw: rulesLoad(calendar, induction.ratedOutputKw, grid, basis.timeZone),
       controls,
       behind,
     })),

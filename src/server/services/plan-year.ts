@@ -36,7 +36,10 @@ export async function missingForPlans(opened: OpenEngagement): Promise<Missing |
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
+  const motors = basis.motors.map((motor) => ({
+    ...motor,
+    load: loadOf(motor.row, motor.machine, opened, motor.source),
+  }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
@@ -51,6 +54,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     to: basis.task.periods.at(-1)!.to,
     route: 'intervals',
     scheduleTitle: basis.pricing.schedule.title,
+    seasons: basis.pricing.schedule.texts.at(-1)?.seasons?.names ?? [],
     readings: standing.readings,
     standing: viewOf(year, null, standing),
     plans,
@@ -66,7 +70,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
 }
 
 /** What the spans of plans are laid over. */
-const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+export const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
   seasons: pricing.schedule.texts.at(-1)?.seasons,
   from: task.periods[0]!.from,
   to: task.periods.at(-1)!.to,
@@ -93,13 +97,18 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
 /** What a motor's submeter does not tell. */
 function loadGapOf({ row, source, load }: LoadedMotor): string[] {
   if (!source.metered || load.hoursMissing + load.hoursBeyond === 0) return [];
-  const stand = source.metered.whenMissing === 'calendar' ? 'its shift calendar stands in' : 'it is taken to stand still';
+  const stand =
+    source.metered.whenMissing === 'calendar' ? 'its shift calendar stands in' : 'it is taken to stand still';
   return [
     ...(load.hoursMissing > 0
-      ? [`The submeter of ${row.name} has no reading for ${wordNumber(load.hoursMissing, 1)} hours of the year: there ${stand}.`]
+      ? [
+          `The submeter of ${row.name} has no reading for ${wordNumber(load.hoursMissing, 1)} hours of the year: there ${stand}.`,
+        ]
       : []),
     ...(load.hoursBeyond > 0
-      ? [`In ${wordNumber(load.hoursBeyond, 1)} hours the submeter of ${row.name} reads more than its field of today can hold: there the most it holds is taken.`]
+      ? [
+          `In ${wordNumber(load.hoursBeyond, 1)} hours the submeter of ${row.name} reads more than its field of today can hold: there the most it holds is taken.`,
+        ]
       : []),
   ];
 }

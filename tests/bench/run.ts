@@ -1,4 +1,5 @@
 import { benchEconomics } from './economics';
+import { benchBound } from './bound';
 import { benchIntake } from './intake';
 import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
@@ -36,6 +37,7 @@ async function main(): Promise<void> {
     benchMinuteYears,
     benchSearch,
     benchEconomics,
+    benchBound,
     benchIntake,
     benchIntakeRows,
     benchIntakeBook,

@@ -1,13 +1,14 @@
 import type { LoadSeries } from '../load';
 import type { FieldControl } from '../machine';
-import type { FieldBounds } from './field-bounds';
+import { movedBills } from './bill-reach';
+import type { BillReach } from './bill-reach';
 import { searchAxes } from './search-axes';
 import type { SearchAxis, SearchMotor } from './search-axes';
 import { createCandidates } from './search-candidates';
 import type { Candidates, SearchedBank } from './search-candidates';
 import { partsOf, searchParts } from './search-parts';
 import type { PartCost, SearchPart, SearchProgress, SearchTable } from './search-parts';
-import { cheapestPath } from './search-paths';
+import { cheapestPath, exchangesOf, ladderOf, stepLadder } from './search-paths';
 import type { At, WalkGround } from './search-walk';
 import type { FixedSetup } from './simulator';
 import type { Plant, Spans } from './types';
@@ -20,10 +21,13 @@ export interface SearchInput {
   fixed?: FixedSetup;
   /** A bank whose number of steps is searched too, none included. */
   bank?: SearchedBank;
-  /** Bill totals of a load series, period by period. [currency] */
-  totals: (load: LoadSeries) => Float64Array;
-  /** Per span: the bills its settings may move, look-backs included. Absent: every setting may move every bill. */
-  billsOfSpan?: number[][];
+  /**
+   * Bill totals of a load series, period by period. `changed`: positions of the only bills whose intervals may differ from the
+   * previous call; absent: any may. [currency]
+   */
+  totals: (load: LoadSeries, changed?: ReadonlySet<number>) => Float64Array;
+  /** Which bills the settings of each span move. Absent: every setting may move every bill. */
+  bills?: BillReach;
   /** Called after every candidate; returning false ends the search with the best so far. */
   onProgress?: (progress: SearchProgress) => boolean | void;
   /** Price every combination when there are no more than this; 2000 when absent. */
@@ -39,11 +43,10 @@ export interface CostPoint {
 }
 
 /** What was searched on one axis. */
-export interface SearchedAxis {
-  motors: number[];
-  span: number;
+export interface SearchedAxis extends SearchAxis {
+  /** Place of the best among the settings. */
+  place: number;
   chosen: FieldControl;
-  bounds: FieldBounds | null;
   /** Cost of the year along the axis; empty when cancelled. */
   curve: CostPoint[];
 }
@@ -98,7 +101,7 @@ export function searchSettings(input: SearchInput): SearchResult {
   const bills = candidates.standingTotals.length + (bank ? 1 : 0);
   const parts = partsOf(reachOf(input, axes, bills, lengths.length), bills);
   const grounds = parts.map((part) =>
-    groundOf(part, { axes, lengths, standing, motors: plant.motors, spans: fixed.spans, exhaustiveUpTo }),
+    groundOf(part, { axes, lengths, standing, motors: plant.motors, spans: fixed.spans, bank, exhaustiveUpTo }),
   );
   const table = searchParts({ parts, grounds, standing, price: candidates.price, onProgress });
   const winner = pickWinner(table, candidates, axes);
@@ -115,10 +118,9 @@ export function searchSettings(input: SearchInput): SearchResult {
     standingTotals: candidates.standingTotals,
     leaveAlone: winner.every((k, axis) => k === standing[axis]),
     axes: axes.map((axis, a) => ({
-      motors: axis.motors,
-      span: axis.span,
+      ...axis,
+      place: winner[a]!,
       chosen: axis.settings[winner[a]!]!,
-      bounds: axis.bounds,
       curve: curveOf(a).map((cost, k) => ({
         control: axis.settings[k]!,
         cost,
@@ -134,41 +136,47 @@ export function searchSettings(input: SearchInput): SearchResult {
 }
 
 /** Bills that each axis may move; a searched bank moves all, its own cost the last. */
-function reachOf({ billsOfSpan }: SearchInput, axes: SearchAxis[], bills: number, count: number): number[][] {
+function reachOf(input: SearchInput, axes: SearchAxis[], bills: number, count: number): number[][] {
   const all = Array.from({ length: bills }, (_, bill) => bill);
+  const billsOfSpan = input.bills && movedBills(input.bills, input.bank ? bills - 1 : bills);
   return Array.from({ length: count }, (_, a) => {
     const axis = axes[a];
     return axis ? (billsOfSpan?.[axis.span] ?? all) : all;
   });
 }
 
-function groundOf(
-  { axes: own }: SearchPart,
-  all: {
-    axes: SearchAxis[];
-    lengths: number[];
-    standing: At;
-    motors: readonly SearchMotor[];
-    spans?: Spans;
-    exhaustiveUpTo: number;
-  },
-): WalkGround {
-  const bySpan = new Map<number, number[]>();
-  const paths: WalkGround['paths'] = [];
-  own.forEach((axis, k) => {
-    const known = all.axes[axis];
-    if (!known) paths.push({ axes: [k], points: Array.from({ length: all.lengths[axis]! }, (_, steps) => [steps]) });
-    else bySpan.set(known.span, [...(bySpan.get(known.span) ?? []), k]);
+interface GroundInput {
+  axes: SearchAxis[];
+  lengths: number[];
+  standing: At;
+  motors: readonly SearchMotor[];
+  spans?: Spans;
+  bank?: SearchedBank;
+  exhaustiveUpTo: number;
+}
+
+function groundOf({ axes: own }: SearchPart, all: GroundInput): WalkGround {
+  const { axes, lengths, standing, motors, spans, bank, exhaustiveUpTo } = all;
+  const rungs = own.map((axis, k) => {
+    const known = axes[axis];
+    const ladder = known
+      ? ladderOf(known, motors, spans)
+      : stepLadder(bank!.mostSteps, bank!.stepKvar, bank!.lossWPerKvar);
+    return { axis: k, ladder, span: known?.span ?? null };
   });
-  for (const places of bySpan.values()) {
-    const axes = places.map((k) => all.axes[own[k]!]!);
-    paths.unshift({ axes: places, points: cheapestPath(axes, all.motors, all.spans) });
-  }
+  // The bank stands in every span: it is a path of its own and can take over from any motor.
+  const groups = [...new Set(rungs.map(({ span }) => span))].map((span) => rungs.filter((one) => one.span === span));
+  const banks = rungs.filter(({ span }) => span === null);
+  const exchanges = groups.flatMap((group) => exchangesOf(group[0]!.span === null ? group : [...group, ...banks]));
   return {
-    lengths: own.map((axis) => all.lengths[axis]!),
-    standing: own.map((axis) => all.standing[axis]!),
-    paths,
-    exhaustiveUpTo: all.exhaustiveUpTo,
+    lengths: own.map((axis) => lengths[axis]!),
+    standing: own.map((axis) => standing[axis]!),
+    paths: groups.map((group) => ({
+      axes: group.map(({ axis }) => axis),
+      points: cheapestPath(group.map(({ ladder }) => ladder)),
+    })),
+    exchanges,
+    exhaustiveUpTo,
   };
 }
 

@@ -51,8 +51,12 @@ export async function planStart(
   return {
     start: {
       name: freeName([...year.plans, ...year.unpriced].map((one) => one.name)),
-      spans: { by: 'year' },
-      fields: fieldsOf((found?.fields ?? []).map(({ motorId, fieldA }) => ({ motorId, fieldA }))),
+      spans: found?.spans ?? { by: 'year' },
+      fields: fieldsOf(
+        (found?.fields ?? []).map(({ motorId, fieldA, controls }) =>
+          controls ? { motorId, controls } : { motorId, fieldA },
+        ),
+      ),
       banks: [],
       replacements: [],
       workCost: 0,

@@ -1,8 +1,16 @@
 import { readFileSync } from 'node:fs';
+import { localDateStartMs } from '../../src/core/load';
 import type { FieldControl, SynchronousMotor } from '../../src/core/machine';
-import { createSimulator, searchSettings, shaftLoadSeries, simulatePlan, spanSeries } from '../../src/core/plan';
+import {
+  billReach,
+  createSimulator,
+  searchSettings,
+  shaftLoadSeries,
+  simulatePlan,
+  spanSeries,
+} from '../../src/core/plan';
 import type { Grid, PlanMotor, ShiftRule } from '../../src/core/plan';
-import { compilePricing, priceBills, readSchedule, type Schedule } from '../../src/core/tariff';
+import { compilePricing, looksBack, priceBills, readSchedule, type Schedule } from '../../src/core/tariff';
 import { calendarMonths, generatedYear } from './pricing';
 import type { Measured } from './run';
 
@@ -102,7 +110,8 @@ function measureSearch(name: string, motors: PlanMotor[], { schedule, load, grid
   const found = searchSettings({
     plant: { load, motors },
     fixed: { spans },
-    totals: (series) => pricing.totals(series),
+    totals: (series, changed) => pricing.totals(series, { changed }),
+    bills: billReach(spans, billIntervals(grid, schedule.timeZone), looksBack(schedule)),
     onProgress: () => void told++,
   });
   const { user, system } = process.cpuUsage(used);
@@ -116,6 +125,13 @@ function measureSearch(name: string, motors: PlanMotor[], { schedule, load, grid
       `${found.priced} settings, ${((performance.now() - start) / 1000).toFixed(1)} s by the clock; ` +
       `${found.cost.toFixed(2)} against ${found.standingCost.toFixed(2)} standing`,
   };
+}
+
+/** Intervals of each bill. */
+function billIntervals({ startMs, stepMinutes, count }: Grid, timeZone: string) {
+  const place = (date: string) =>
+    Math.min(count, Math.round((localDateStartMs(date, timeZone) - startMs) / (stepMinutes * 60_000)));
+  return calendarMonths().map(({ from, to }) => ({ first: place(from), end: place(to) }));
 }
 
 /** Candidates per second of processor time, which other work on the machine does not change, and of the clock on the wall. */

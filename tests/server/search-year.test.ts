@@ -50,7 +50,8 @@ describe('the stretch of settings that are equally good', () => {
           },
         ],
       },
-      stepA: 1,
+      asked: { stepA: 1 },
+      spanRules: null,
       fingerprint: 'one',
       port: port1,
     });

@@ -20,6 +20,12 @@ export type { MotorPlanResult, MotorSpanResult } from './motor-result';
 export type { BusVoltage } from './bus-voltage';
 export { fieldBounds } from './field-bounds';
 export type { Binding, FieldBounds } from './field-bounds';
+export { USUAL_PERTURBATION, perturbPlant } from './perturb';
+export type { Perturbation } from './perturb';
+export { tryRobustness } from './robustness';
+export type { Robustness, TriedSetting } from './robustness';
+export { billReach } from './bill-reach';
+export type { BillReach } from './bill-reach';
 export { searchSettings } from './search-settings';
 export type { CostPoint, SearchInput, SearchResult, SearchedAxis } from './search-settings';
 export type { SearchMotor, SearchedSetting } from './search-axes';
@@ -37,6 +43,7 @@ export type {
   Upstream,
 } from './types';
 export {
+  USUAL_HARMONICS,
   combineLoads,
   correctiveKvar,
   kvarPerKw,
@@ -49,7 +56,7 @@ export type { BusLoad } from './network';
 export { sizeCapacitors } from './size-capacitors';
 export type { CapacitorSize, CapacitorSizing } from './size-capacitors';
 export { judgePlans } from './judge-plans';
-export type { Alternative, JudgedAlternative, Verdict } from './judge-plans';
+export type { Alternative, AlternativeKind, JudgedAlternative, Verdict } from './judge-plans';
 export { shaftLoadFromSubmeter } from './submeter';
 export type { SubmeterLoad } from './submeter';
 export { laidPowerOn, meanPowerOn } from './mean-power';

@@ -1,33 +1,21 @@
 import { formatBillName } from '../../components/ui/format';
 import { dayNumber } from '../../core/load';
 import { wordNumber } from '../../core/units';
-import { formatPayback } from '../../components/ui/format';
-import type { CostPart, Missing, PlanView, UnpricedPlan, YearView } from '../../schemas/plan';
-import { planDefaults, type PlanEconomics } from '../../schemas/plan-money';
-import { constantFieldA } from '../../schemas/plan-settings';
-import { wholeYear } from '../../schemas/plan-spans';
+import type { Missing, UnpricedPlan, YearView } from '../../schemas/plan';
 import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
-import { limitsOf, presentAssumed } from '../presenters/motor';
-import {
-  nearestLimitWords,
-  presentBank,
-  presentPlan,
-  presentPlanField,
-  presentPlanMotor,
-  presentPricedBill,
-} from '../presenters/plan';
-import { banksOf, costPartsOf, motorSettings, storedPlan } from '../presenters/plan-row';
+import { limitsOf } from '../presenters/motor';
+import { motorSettings } from '../presenters/plan-row';
 import type { TaskSetting } from '../workers/tasks';
 import { notesOfBills } from './bill-notes';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { actOf, standingAct } from './plan-acts';
-import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
-import { appraisePlan, noCashFlow, planCashFlow, savingOf } from './plan-economics';
+import { planBasis, priceSettings, type PlanBasis } from './plan-basis';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
+import { unpricedOf, viewOf, type LoadedMotor, type YearParts } from './plan-view';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -41,16 +29,6 @@ export async function missingForPlans(opened: OpenEngagement): Promise<Missing |
   }
 }
 
-/** A motor with its load, as the views need it. */
-type LoadedMotor = PlanMotor & { load: ReturnType<typeof loadOf> };
-
-interface Year {
-  opened: OpenEngagement;
-  basis: PlanBasis;
-  motors: LoadedMotor[];
-  standing: TaskSetting;
-}
-
 /**
  * The year of an engagement: standing, its plans, the chosen one, every bill priced.
  *
@@ -58,14 +36,17 @@ interface Year {
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
+  const motors = basis.motors.map((motor) => ({
+    ...motor,
+    load: loadOf(motor.row, motor.machine, opened, motor.source),
+  }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
     standingAct,
     ...priceable.map((row) => actOf(row, opened, spanYearOf(basis))),
   ])) as [TaskSetting, ...TaskSetting[]];
-  const year: Year = { opened, basis, motors, standing };
+  const year: YearParts = { opened, basis, motors, standing };
   const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
   return {
     currency: basis.pricing.schedule.currency,
@@ -73,6 +54,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     to: basis.task.periods.at(-1)!.to,
     route: 'intervals',
     scheduleTitle: basis.pricing.schedule.title,
+    seasons: basis.pricing.schedule.texts.at(-1)?.seasons?.names ?? [],
     readings: standing.readings,
     standing: viewOf(year, null, standing),
     plans,
@@ -81,14 +63,14 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
       return reason ? [unpricedOf(row, reason, motors)] : [];
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
-    gaps: gapsOf(basis, standing),
+    gaps: [...gapsOf(basis, standing), ...motors.flatMap(loadGapOf)],
     notes: notesOfBills(standing.bills.map(({ period, notes }) => ({ name: formatBillName(period), notes }))),
     fingerprint: basis.fingerprint,
   };
 }
 
 /** What the spans of plans are laid over. */
-const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+export const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
   seasons: pricing.schedule.texts.at(-1)?.seasons,
   from: task.periods[0]!.from,
   to: task.periods.at(-1)!.to,
@@ -107,6 +89,25 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
     ...(missing > 0
       ? [
           `${wordNumber(missing, 1)} of ${wordNumber(intervals, 1)} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
+        ]
+      : []),
+  ];
+}
+
+/** What a motor's submeter does not tell. */
+function loadGapOf({ row, source, load }: LoadedMotor): string[] {
+  if (!source.metered || load.hoursMissing + load.hoursBeyond === 0) return [];
+  const stand =
+    source.metered.whenMissing === 'calendar' ? 'its shift calendar stands in' : 'it is taken to stand still';
+  return [
+    ...(load.hoursMissing > 0
+      ? [
+          `The submeter of ${row.name} has no reading for ${wordNumber(load.hoursMissing, 1)} hours of the year: there ${stand}.`,
+        ]
+      : []),
+    ...(load.hoursBeyond > 0
+      ? [
+          `In ${wordNumber(load.hoursBeyond, 1)} hours the submeter of ${row.name} reads more than its field of today can hold: there the most it holds is taken.`,
         ]
       : []),
   ];
@@ -138,73 +139,3 @@ function attemptSync<Result>(work: () => Result): { result: Result; fault: null 
     return { result: null, fault: error.message };
   }
 }
-
-const motorFacts = ({ row, machine, load }: LoadedMotor) => ({
-  id: row.id,
-  name: row.name,
-  machine,
-  fieldTodayA: row.fieldTodayA,
-  usualShaftKw: load.usualShaftKw,
-});
-
-function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedPlan {
-  const fields = motorSettings(row).flatMap((setting) => {
-    const motor = motors.find((one) => one.row.id === setting.motorId);
-    return motor ? presentPlanField(motorFacts(motor), setting) : [];
-  });
-  const { id, version, name, chosen, spans } = row;
-  return { id, version, name, chosen, spans, fields, reason };
-}
-
-const atRest: { costParts: CostPart[]; yearlyUpkeep: number; economics: PlanEconomics } = {
-  costParts: [],
-  yearlyUpkeep: 0,
-  economics: { ...planDefaults },
-};
-
-function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
-  const { basis, motors, standing } = year;
-  const { currency } = basis.pricing.schedule;
-  const settings = row ? motorSettings(row) : [];
-  const settingOf = (motor: LoadedMotor) => settings.find((one) => one.motorId === motor.row.id);
-  const bills = setting.bills.map(presentPricedBill);
-  const before = standing.bills.map(presentPricedBill);
-  const { costParts, yearlyUpkeep, economics } = row
-    ? { ...storedPlan(row, currency), costParts: costPartsOf(row, currency) }
-    : atRest;
-  const capitalCost = costParts.reduce((sum, { amount }) => sum + amount, 0);
-  const money = { ...savingOf(before, bills), capitalCost, yearlyUpkeep, economics };
-  const appraisal = appraisePlan(money);
-  const views = motors.map((motor) => {
-    const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
-    const own = settingOf(motor);
-    const fieldA = own && constantFieldA(own);
-    return presentPlanMotor(motorFacts(motor), fieldA ?? motor.row.fieldTodayA, figures);
-  });
-  const search = row?.search ?? null;
-  return presentPlan({
-    plan: row,
-    currency,
-    spans: row?.spans ?? wholeYear,
-    fields: motors.map((motor) => presentPlanField(motorFacts(motor), settingOf(motor))),
-    banks: row ? banksOf(row, currency).map((bank) => presentBank(bank, null)) : [],
-    replacements: [],
-    bills,
-    standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
-    money: { capitalCost, costParts, yearlyUpkeep, economics },
-    appraisal,
-    paybackWords: formatPayback(appraisal.simplePaybackYears),
-    ...(row ? planCashFlow(money) : noCashFlow),
-    motors: views,
-    hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
-    voltage: null,
-    nearestLimit: nearestLimitWords(views),
-    worstPf: setting.worstPf && { ...setting.worstPf, bill: bills[setting.worstPf.bill]?.to ?? '' },
-    assumed: motors.flatMap(({ row: motor, completed, load }) => presentAssumed(motor, completed, load.usualShaftKw)),
-    search,
-    stale: search && search.fingerprint !== basis.fingerprint ? [staleWords] : [],
-  });
-}
-
-const staleWords =
-  'Motors, bills, readings or tariff were changed after the search. The plan is priced afresh, but its settings may no longer be the best: search again.';

@@ -88,7 +88,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
 }
 
 /** What the spans of plans are laid over. */
-const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+export const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
   seasons: pricing.schedule.texts.at(-1)?.seasons,
   from: task.periods[0]!.from,
   to: task.periods.at(-1)!.to,

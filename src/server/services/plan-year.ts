@@ -58,7 +58,7 @@ interface Year {
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
+  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
@@ -121,9 +121,9 @@ function faultOf(row: Plan, motors: LoadedMotor[], basis: PlanBasis, opened: Ope
   for (const setting of motorSettings(row)) {
     const motor = motors.find((one) => one.row.id === setting.motorId);
     if (!motor) return 'It sets a motor that is no longer there.';
-    const { name, calendar } = motor.row;
+    const { name, fieldTodayA } = motor.row;
     const limits = limitsOf(motor.machine, motor.completed);
-    const words = storedFault({ name, machine: motor.machine, limits, calendar }, setting, year);
+    const words = storedFault({ name, machine: motor.machine, limits, fieldTodayA, ...motor.source }, setting, year);
     if (words) return words;
   }
   return null;

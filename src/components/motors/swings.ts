@@ -38,7 +38,7 @@ export function swingsOf(assumed: AssumedValue[], saving: AssumedSaving | null):
 
 /** Below this share a value moves nothing that a person would see. */
 const leastShare = 0.005;
-const percentWords = (share: number) => formatQuantity(100 * share, '%', { decimals: share < 0.095 ? 1 : 0 });
+const percentWords = (share: number) => formatQuantity(100 * share, '%', { upTo: 1 });
 
 /** What to measure first, in one sentence. */
 export function measureFirst(swings: Swing[], saving: AssumedSaving | null): string {
@@ -59,7 +59,7 @@ export function measureFirst(swings: Swing[], saving: AssumedSaving | null): str
         : ` Most of the kvar hangs on ${named(byKvar)}, ${percentWords(byKvar.kvarShare)}.`;
     return `No assumed value moves the saving of ${saving.planName} by more than half a per cent.${kvar}`;
   }
-  const money = formatMoney(greatest(first.savingEffect), saving.currency);
+  const money = formatMoney(greatest(first.savingEffect), saving.currency, { whole: true });
   return `Measure ${named(first)} first: it moves the saving of ${saving.planName} by ${percentWords(first.savingShare)}, ${money} a year, and ${most(first)}.`;
 }
 
@@ -103,7 +103,9 @@ export function swingsTable(swings: Swing[], saving: AssumedSaving | null): Ledg
         kvar: changeWords(one.assumed.kvarEffect, (change) => formatNumber(change, { signed: true })),
         share: 100 * (saving ? one.savingShare : one.kvarShare),
         ...(saving && {
-          saving: changeWords(one.savingEffect, (change) => formatAmount(change, saving.currency, { signed: true })),
+          saving: changeWords(one.savingEffect, (change) =>
+            formatAmount(change, saving.currency, { signed: true, whole: true }),
+          ),
         }),
       },
     })),

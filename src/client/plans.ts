@@ -26,6 +26,10 @@ export const choosePlan = (id: number, version: number, chosen: boolean) =>
 /** Removes a plan. */
 export const removePlan = (id: number, version: number) => call<void>('DELETE', `/api/plans/${id}`, { version });
 
+/** Begins to price the plan on offer with every assumed value at either end of its range. */
+export const startAssumedSaving = (code: string) =>
+  call<JobProgress>('POST', `/api/engagements/${code}/plans/assumed-saving`);
+
 /** Begins the search for the best field currents. */
 export const startSearch = (code: string, input: SearchInput) =>
   call<JobProgress>('POST', `/api/engagements/${code}/plans/search`, input);

@@ -81,7 +81,9 @@ export interface AssumedValue {
   unit: string;
   /** Typical range of the value. */
   range: [number, number] | null;
-  /** Change of deliverable kvar at the usual load, at the range's ends. */
+  /** What the motor may deliver at its usual load with the value as assumed; null where nothing is admissible. */
+  kvarMost: number | null;
+  /** Change of it at the range's ends. */
   kvarEffect: [number, number] | null;
   why: string;
 }

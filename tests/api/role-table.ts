@@ -110,6 +110,7 @@ export const roleTable: Record<string, Row> = {
   'POST /api/engagements/[code]/motors': members,
   'GET /api/engagements/[code]/plans': members,
   'POST /api/engagements/[code]/plans': members,
+  'POST /api/engagements/[code]/plans/assumed-saving': members,
   'POST /api/engagements/[code]/plans/search': members,
   'POST /api/engagements/[code]/requests': members,
   'PATCH /api/engagements/[code]/requests/[number]': practiceOnly,

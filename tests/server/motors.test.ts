@@ -189,3 +189,137 @@ describe('changing and removing a motor', () => {
     expect(paths).toEqual(['calendar.rules', 'calendar.shutdowns.0.from']);
   });
 });
+
+describe('a brushless machine', () => {
+  /** 5.1 A of exciter field at rated load, 2.1 A at no load; nobody read the field behind the rectifier. */
+  const brushless = {
+    exciterKind: 'brushless',
+    exciterFieldA: 5.1,
+    exciterNoLoadA: 2.1,
+    fieldCurrentA: null,
+    fieldVoltageV: null,
+  };
+
+  it('needs no amperes of its own field where the plate gives those of the exciter', async () => {
+    const { opened } = await station();
+    const input = motorOf(millMotor, brushless, { fieldTodayA: 3, fieldReadAt: 'panel' });
+    const motor = await createMotor(opened, input);
+    expect(motor.panel).toMatchObject({ todayA: 3, ratedA: 5.1 });
+    expect(motor.panel?.limitA).toBeCloseTo(5.1, 9);
+    expect(motor.assumed.map((one) => one.field)).toContain('ratedFieldCurrentA');
+  });
+
+  it('is asked for the exciter’s amperes, or its own', () => {
+    const plate = { ...(millMotor.plate as object), exciterKind: 'brushless', fieldCurrentA: null };
+    expect(plateInput.safeParse(plate).error?.issues[0]).toMatchObject({ path: ['exciterFieldA'] });
+    const static_ = plateInput.safeParse({ ...plate, exciterKind: 'static' });
+    expect(static_.error?.issues[0]).toMatchObject({ path: ['fieldCurrentA'] });
+  });
+
+  it('is limited and refused in amperes of the exciter’s field', async () => {
+    const { opened } = await station();
+    const limited = { ...brushless, limits: { exciterFieldA: 4.5 } };
+    const error = await refusal(
+      createMotor(opened, motorOf(millMotor, limited, { fieldTodayA: 4.8, fieldReadAt: 'panel' })),
+    );
+    expect(error.fields?.fieldTodayA?.[0]).toMatch(
+      /^4\.80 A of exciter field is 0\.30 A beyond the field limit of M-1, 4\.50 A of exciter field\./,
+    );
+    const motor = await createMotor(opened, motorOf(millMotor, limited, { fieldTodayA: 3, fieldReadAt: 'panel' }));
+    expect(motor.panel?.limitA).toBeCloseTo(4.5, 9);
+    expect(motor.limits.fieldBy).toBe('exciter');
+  });
+
+  it('gives the reading back as it was typed where somebody saved in between', async () => {
+    const { actor, opened } = await station();
+    const input = motorOf(millMotor, brushless, { fieldTodayA: 3.15, fieldReadAt: 'panel' });
+    const { id } = await createMotor(opened, input);
+    const error = await refusal(changeMotor(await openMotor(actor, id), { ...input, version: 7 }));
+    expect(error.details?.theirs).toMatchObject({ fieldTodayA: 3.15, fieldReadAt: 'panel' });
+  });
+});
+
+describe('a plate as it is worded', () => {
+  it('takes a field resistance measured cold in place of volts, with its temperature', async () => {
+    const { opened } = await station();
+    const cold = { fieldVoltageV: null, coldFieldResistanceOhm: 0.45, coldFieldAtC: 20, temperatureRiseC: 80 };
+    const motor = await createMotor(opened, motorOf(millMotor, cold));
+    // 0.45 x (234.5 + 40 + 80) / (234.5 + 20) = 0.62682 ohm
+    expect(motor.machine.fieldResistanceOhm).toBeCloseTo(0.62682, 5);
+    const alone = plateInput.safeParse({ ...(millMotor.plate as object), coldFieldResistanceOhm: 0.45 });
+    expect(alone.error?.issues[0]).toMatchObject({ path: ['coldFieldAtC'] });
+  });
+
+  it('is refused where cold and hot resistance disagree, at the measured one', async () => {
+    const { opened } = await station();
+    const cold = { coldFieldResistanceOhm: 0.3, coldFieldAtC: 20, temperatureRiseC: 80 };
+    const error = await refusal(createMotor(opened, motorOf(millMotor, cold)));
+    // 118 V / 204 A = 0.5784 ohm; 0.3 becomes 0.4179: 38.4 % above
+    expect(error.fields?.['plate.coldFieldResistanceOhm']?.[0]).toContain('38.4 %');
+  });
+
+  it('takes reactances in ohms where the connection is said', async () => {
+    const { opened } = await station();
+    const ohms = { xdPu: null, raPu: null, xdOhm: 29.2, raOhm: 0.27, connection: 'delta' };
+    const motor = await createMotor(opened, motorOf(millMotor, ohms));
+    // 1492 / (0.957 x 0.8) = 1948.80 kVA; base 4160^2 / 1948800 = 8.88013 ohm; 29.2 / 3 / 8.88013 = 1.09608
+    expect(motor.machine.xdPu).toBeCloseTo(1.09608, 4);
+    const unsaid = plateInput.safeParse({ ...(millMotor.plate as object), xdOhm: 29.2, xdPu: null });
+    expect(unsaid.error?.issues[0]).toMatchObject({ path: ['connection'] });
+  });
+
+  it('reads metric horsepower as 735.5 W', async () => {
+    const { opened } = await station();
+    const motor = await createMotor(opened, motorOf(millMotor, { outputUnit: 'metric-hp', currentA: 267 }));
+    expect(motor.machine.ratedOutputKw).toBeCloseTo(1471, 9);
+  });
+
+  it('is refused where its kVA contradict volts and amperes', async () => {
+    const { opened } = await station();
+    const error = await refusal(createMotor(opened, motorOf(millMotor, { apparentKva: 1492 })));
+    expect(error.fields?.['plate.apparentKva']?.[0]).toContain('output in kW');
+  });
+});
+
+describe('limits a person sets', () => {
+  it('say which binds at either end of the voltage band', async () => {
+    const { opened } = await station();
+    const motor = await createMotor(
+      opened,
+      motorOf(
+        millMotor,
+        { limits: { voltageLowPu: 0.9, voltageHighPu: 1.1 } },
+        {
+          calendar: {
+            ...(millMotor.calendar as object),
+            rules: [{ days: ['Mon'], fromHour: 0, toHour: 24, load: 100, unit: 'percent' }],
+          },
+          fieldTodayA: 190,
+        },
+      ),
+    );
+    // At rated load the stator binds at low voltage, the field at high: CAP-VDEP of the reference, 0.512 below 0.600
+    expect(motor.band?.low).toMatchObject({ voltagePu: 0.9, binding: 'armature' });
+    expect(motor.band?.high).toMatchObject({ voltagePu: 1.1, binding: 'field' });
+    expect(motor.capability.kvarDelivered).toBe(motor.band?.low.kvarDelivered);
+    expect(motor.limits.voltageBandPu).toEqual({ low: 0.9, high: 1.1 });
+  });
+
+  it('want both ends of the band', () => {
+    const half = plateInput.safeParse({ ...(millMotor.plate as object), limits: { voltageLowPu: 0.95 } });
+    expect(half.error?.issues[0]).toMatchObject({ path: ['limits', 'voltageHighPu'] });
+  });
+
+  it('take the exciter’s rating for the lower field limit it is', async () => {
+    const { opened } = await station();
+    const motor = await createMotor(opened, motorOf(millMotor, { limits: { exciterOutputA: 170, leastPanelA: 120 } }));
+    expect(motor.limits).toMatchObject({ fieldA: 170, fieldBy: 'exciter', leastFieldA: 120 });
+    expect(motor.notes.map((note) => note.message).join(' ')).toContain('11.0 A below the least field');
+  });
+
+  it('are refused where no setting is left', async () => {
+    const { opened } = await station();
+    const error = await refusal(createMotor(opened, motorOf(millMotor, { limits: { leastPanelA: 210 } })));
+    expect(error.fields?.['plate.limits.leastPanelA']?.[0]).toContain('no setting is left');
+  });
+});

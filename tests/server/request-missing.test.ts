@@ -127,7 +127,7 @@ describe('missingPlates', () => {
         id: 3,
         name: 'M-2',
         drives: 'Compressor',
-        assumed: [{ ...assumed, range: [0, 2] as [number, number], kvarEffect: null }],
+        assumed: [{ ...assumed, range: [0, 2] as [number, number], kvarMost: null, kvarEffect: null }],
       },
     ];
     expect(missingPlates(motors)).toMatchObject([{ motorId: 3, why: 'Assumed so far: Xd.' }]);

@@ -61,12 +61,21 @@ function LimitNames({ data, plot, palette }: Parts) {
     ...stretches(data.least).map((part) => ({ ...part, lift: 16 })),
   ];
   return parts.map(({ binding, points, lift }, index) => {
-    if (points.length < 4) return null;
-    const { x, y } = at(points[Math.floor(points.length / (lift < 0 ? 2 : 3))]!);
+    const inside = points.map(at).filter(({ y }) => y > plot.top && y < plot.bottom);
+    if (inside.length < 3) return null;
+    const { x, y } = inside[Math.floor(inside.length / 2)]!;
     const tone = binding === 'pull-out' ? 'ochre' : 'madder';
-    const inside = Math.min(plot.bottom - 6, Math.max(plot.top + 14, y + lift));
     return (
-      <Words key={index} x={x} y={inside} palette={palette} tone={tone} bold anchor="middle" halo>
+      <Words
+        key={index}
+        x={Math.min(x, plot.right - 22)}
+        y={y + lift}
+        palette={palette}
+        tone={tone}
+        bold
+        anchor="middle"
+        halo
+      >
         {names[binding]}
       </Words>
     );
@@ -105,12 +114,12 @@ function LineNames({ data, plot, palette, narrow }: Parts & { narrow: boolean })
   );
   return found.map(({ line }, index) => (
     <Words key={line.name} x={plot.left + 8} y={placed[index]!} palette={palette} bold={line.strong} halo>
-      {line.name}
+      {narrow ? (line.brief ?? line.name) : line.name}
     </Words>
   ));
 }
 
-function UsualLoad({ data, plot, palette }: Parts) {
+function UsualLoad({ data, plot, palette, narrow }: Parts & { narrow: boolean }) {
   const x = plot.x(data.usualLoadPercent);
   const right = x > plot.right - 150;
   return (
@@ -126,7 +135,7 @@ function UsualLoad({ data, plot, palette }: Parts) {
       >
         {`usual load, ${formatQuantity(data.usualLoadPercent, '%')}`}
       </Words>
-      {data.marks.map(({ name, shape, kvarDelivered }) => (
+      {data.marks.map(({ name, brief, shape, kvarDelivered }) => (
         <g key={shape}>
           <PointMark x={x} y={plot.y(kvarDelivered)} shape={shape} palette={palette} />
           <Words
@@ -137,7 +146,7 @@ function UsualLoad({ data, plot, palette }: Parts) {
             halo
             anchor={right ? 'end' : 'start'}
           >
-            {`${name} ${kvarDelivered < 0 ? 'absorbs' : 'delivers'} ${formatNumber(Math.abs(kvarDelivered))}`}
+            {`${narrow ? (brief ?? name) : name} ${kvarDelivered < 0 ? 'absorbs' : 'delivers'} ${formatNumber(Math.abs(kvarDelivered))}`}
           </Words>
         </g>
       ))}
@@ -184,7 +193,7 @@ export function FieldControlChart({ width, height, palette = pagePalette, ...dat
         <>
           <LimitNames {...parts(plot)} />
           <LineNames {...parts(plot)} narrow={narrow} />
-          <UsualLoad {...parts(plot)} />
+          <UsualLoad {...parts(plot)} narrow={narrow} />
         </>
       )}
     />

@@ -125,12 +125,24 @@ function LimitNames({ data, plot, palette, narrow }: Parts & { narrow: boolean }
   );
 }
 
+/** The usual load, named at the end that lies farther from the clouds. */
 function UsualLoad({ data, plot, palette }: Parts) {
   const y = plot.y(data.usualKw);
+  const spots = data.clouds.map((cloud) => plot.x(-cloud.usual.kvarDelivered));
+  const rightRoom = plot.right - Math.max(plot.left, ...spots);
+  const leftRoom = Math.min(plot.right, ...spots) - plot.left;
+  const onRight = rightRoom >= leftRoom;
   return (
     <>
       <path d={`M${plot.left} ${y}H${plot.right}`} stroke={palette.ink2} strokeDasharray="4 3" />
-      <Words x={plot.right - 6} y={y - 5} palette={palette} tone="ink2" anchor="end" halo>
+      <Words
+        x={onRight ? plot.right - 6 : plot.left + 6}
+        y={y - 5}
+        palette={palette}
+        tone="ink2"
+        anchor={onRight ? 'end' : 'start'}
+        halo
+      >
         {data.usualName}
       </Words>
     </>

@@ -16,8 +16,9 @@ export interface LimitPoint extends KvarPoint {
 
 /** What a motor delivers over its load while one thing is held. */
 export interface ControlLine {
-  /** "held 164 A". */
+  /** "held 164 A"; `brief` on a phone: "164 A". */
   name: string;
+  brief?: string;
   points: KvarPoint[];
   /** Dashes of its line; none: drawn through. */
   dash?: string;
@@ -36,7 +37,7 @@ export interface FieldControlData {
   fieldBy: string;
   lines: ControlLine[];
   usualLoadPercent: number;
-  marks: { name: string; shape: 'circle' | 'diamond'; kvarDelivered: number }[];
+  marks: { name: string; brief?: string; shape: 'circle' | 'diamond'; kvarDelivered: number }[];
 }
 
 export const limitNames = (fieldBy: string): Record<LimitPoint['binding'], string> => ({

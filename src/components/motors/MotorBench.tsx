@@ -6,7 +6,7 @@ import { PqPlaneFigure } from '../charts/PqPlaneChart';
 import { VCurveFigure } from '../charts/VCurveChart';
 import { vCurveEnds } from '../charts/v-curve';
 import { NumberField } from '../ui/Field';
-import { formatDelivered, formatDelivers, formatNumber, formatQuantity } from '../ui/format';
+import { formatDelivers, formatNumber, formatQuantity } from '../ui/format';
 import { Notice } from '../ui/Notice';
 import { typedNumber } from '../ui/typed-number';
 import { fieldControlData, fieldControlFinding } from './control-lines';
@@ -33,11 +33,7 @@ function vCurveFinding(motor: MotorView, meter: FieldMeter, tried: SettingReadin
 function Readings({ motor, reading }: { motor: MotorView; reading: SettingReading }) {
   const share = (value: number, limit: number) => `${formatNumber((100 * value) / limit)} % of its limit`;
   const entries: [string, string, string][] = [
-    [
-      'Reactive power',
-      `${formatDelivered(reading.kvarDelivered)} kvar`,
-      reading.kvarDelivered < 0 ? 'lagging' : 'leading',
-    ],
+    ['Reactive power', formatDelivers(reading.kvarDelivered), reading.kvarDelivered < 0 ? 'lagging' : 'leading'],
     ['Stator', formatQuantity(reading.armatureA, 'A'), share(reading.armatureA, motor.limits.armatureA)],
     [
       'Pull-out over load',
@@ -157,6 +153,22 @@ export function MotorBench({ motor, plan }: MotorBenchProps) {
   const [least, most] = vCurveEnds(curves).field;
   return (
     <div className="motor-bench">
+      <div className="bench-head">
+        <TypedField motor={motor} meter={meter} fieldA={fieldA} onField={onField} />
+        {reading ? (
+          <Readings motor={motor} reading={reading} />
+        ) : (
+          <Notice
+            kind="fault"
+            title={`${meter.words(fieldA)} cannot hold ${formatQuantity(motor.usualShaftKw, 'kW')}: the motor falls out of step.`}
+          />
+        )}
+      </div>
+      {reading && reading.beyond.length > 0 && (
+        <Notice kind="fault" title={`Not admissible: beyond the limit of ${reading.beyond.join(' and ')}.`}>
+          <span>It can be looked at here; no plan takes it.</span>
+        </Notice>
+      )}
       <div className="figure-pair">
         <VCurveFigure
           {...curves}
@@ -177,20 +189,6 @@ export function MotorBench({ motor, plan }: MotorBenchProps) {
         />
         <Pictures motor={motor} tried={behind} />
       </div>
-      <TypedField motor={motor} meter={meter} fieldA={fieldA} onField={onField} />
-      {reading ? (
-        <Readings motor={motor} reading={reading} />
-      ) : (
-        <Notice
-          kind="fault"
-          title={`${meter.words(fieldA)} cannot hold ${formatQuantity(motor.usualShaftKw, 'kW')}: the motor falls out of step.`}
-        />
-      )}
-      {reading && reading.beyond.length > 0 && (
-        <Notice kind="fault" title={`Not admissible: beyond the limit of ${reading.beyond.join(' and ')}.`}>
-          <span>It can be looked at here; no plan takes it.</span>
-        </Notice>
-      )}
     </div>
   );
 }

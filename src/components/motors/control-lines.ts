@@ -9,7 +9,7 @@ import {
 import type { MotorView } from '../../schemas/motor';
 import type { ControlLine, FieldControlData, KvarPoint, LimitPoint } from '../charts/field-control';
 import { kvarAt } from '../charts/field-control';
-import { formatNumber, formatQuantity } from '../ui/format';
+import { formatDelivered, formatNumber, formatQuantity } from '../ui/format';
 import type { NamedField } from './curves';
 import { fieldMeter } from './field-meter';
 
@@ -52,27 +52,25 @@ function limitsOver({ machine, limits }: MotorView): { most: LimitPoint[]; least
  * field current given. Held volts are those of that current in the hot winding; cold, the same volts drive more current.
  */
 export function fieldControlData(motor: MotorView, at: NamedField): FieldControlData {
-  const { machine, usualShaftKw, limits } = motor;
-  const meter = fieldMeter(machine);
-  const isToday = at.fieldA === motor.fieldTodayA;
   return {
     motorName: motor.name,
     loadPercents,
     ...limitsOver(motor),
-    fieldBy: limits.fieldBy,
+    fieldBy: motor.limits.fieldBy,
     lines: linesOf(motor, at.fieldA),
     usualLoadPercent: Math.round(motor.usualLoadPercent),
-    marks: (isToday
-      ? [{ ...at, name: 'today', shape: 'circle' as const }]
-      : [
-          { name: 'today', fieldA: motor.fieldTodayA, shape: 'circle' as const },
-          { ...at, name: `${at.name} ${meter.words(at.fieldA)}`, shape: 'diamond' as const },
-        ]
-    ).flatMap(({ name, fieldA, shape }) => {
-      const kvarDelivered = deliveredAt(motor, usualShaftKw, fieldA);
-      return kvarDelivered === null ? [] : [{ name, shape, kvarDelivered }];
-    }),
+    marks: marksOf(motor, at),
   };
+}
+
+function marksOf(motor: MotorView, at: NamedField): FieldControlData['marks'] {
+  const today = { name: 'today', brief: 'today', fieldA: motor.fieldTodayA, shape: 'circle' as const };
+  const words = `${at.name} ${fieldMeter(motor.machine).words(at.fieldA)}`;
+  const other = { name: words, brief: at.name, fieldA: at.fieldA, shape: 'diamond' as const };
+  return (at.fieldA === motor.fieldTodayA ? [today] : [today, other]).flatMap(({ fieldA, ...mark }) => {
+    const kvarDelivered = deliveredAt(motor, motor.usualShaftKw, fieldA);
+    return kvarDelivered === null ? [] : [{ ...mark, kvarDelivered }];
+  });
 }
 
 function deliveredAt({ machine }: MotorView, shaftKw: number, fieldCurrentA: number): number | null {
@@ -92,13 +90,14 @@ function linesOf(motor: MotorView, fieldCurrentA: number): ControlLine[] {
   const lines: ControlLine[] = [
     {
       name: `held ${amperes}, or ${volts} warm`,
+      brief: amperes,
       points: heldOver(motor, { holds: 'field-current', fieldCurrentA }),
       strong: true,
     },
   ];
   if (fieldVoltageV > 0) {
     const control = { holds: 'field-voltage', fieldVoltageV, fieldC: coldC } as const;
-    lines.push({ name: `held ${volts}, cold`, points: heldOver(motor, control), dash: '2 3' });
+    lines.push({ name: `held ${volts}, cold`, brief: `${volts} cold`, points: heldOver(motor, control), dash: '2 3' });
   }
   const usual = deliveredAt(motor, usualShaftKw, fieldCurrentA);
   if (usual === null) return lines;
@@ -108,11 +107,13 @@ function linesOf(motor: MotorView, fieldCurrentA: number): ControlLine[] {
     ...lines,
     {
       name: `held power factor ${formatNumber(powerFactor, { decimals: 2 })}${sense}`,
+      brief: `pf ${formatNumber(powerFactor, { decimals: 2 })}`,
       points: heldOver(motor, { holds: 'power-factor', powerFactor, leading }),
       dash: '8 4',
     },
     {
       name: `held ${formatQuantity(Math.abs(usual), 'kvar')} ${usual < 0 ? 'absorbed' : 'delivered'}`,
+      brief: formatQuantity(Math.abs(usual), 'kvar'),
       points: heldOver(motor, { holds: 'kvar', kvarDelivered: usual }),
       dash: '10 3 2 3',
     },
@@ -126,10 +127,13 @@ export function fieldControlFinding({ lines }: FieldControlData): string {
   const half = current && kvarAt(current.points, 50);
   const full = current && kvarAt(current.points, 100);
   if (half == null || full == null) return 'This field cannot hold the motor from half to full load.';
-  const words = (kvar: number) => `${formatNumber(Math.abs(kvar))}${kvar < 0 ? ' absorbed' : ''}`;
-  const held = `From half to full load a held current goes from ${words(half)} to ${words(full)} kvar`;
+  const fromTo = (from: number, to: number) =>
+    from >= 0 && to >= 0
+      ? `from ${formatNumber(from)} to ${formatQuantity(to, 'kvar')}`
+      : `from ${formatDelivered(from)} to ${formatDelivered(to)}`;
+  const held = `From half to full load a held current goes ${fromTo(half, full)}`;
   const [halfFactor, fullFactor] = [50, 100].map((load) => (factor ? kvarAt(factor.points, load) : null));
   return halfFactor == null || fullFactor == null
     ? `${held}.`
-    : `${held}, a held power factor from ${words(halfFactor)} to ${words(fullFactor)}.`;
+    : `${held}, a held power factor ${fromTo(halfFactor, fullFactor)}.`;
 }

@@ -56,12 +56,13 @@ function deliveredAt({ machine, usualShaftKw }: MotorView, fieldCurrentA: number
 }
 
 /** The finding: the price of the next kvar, and of the mean one. */
-export function lossFinding({ tried, today, least }: LossData): string {
+export function lossFinding({ tried, today, least, fieldDecimals }: LossData): string {
   const watts = (amount: number) => formatQuantity(amount, 'W', { decimals: 1 });
   const saved = today.lossKw - least.lossKw;
   const at = tried ?? today;
-  const next = `${tried ? 'There' : 'Today'} the next kvar costs ${watts(at.marginalWPerKvar)}`;
+  const where = tried ? `At ${formatQuantity(tried.fieldA, 'A', { upTo: fieldDecimals })}` : 'Today';
+  const next = `${where} the next kvar costs ${watts(at.marginalWPerKvar)}`;
   if (tried && tried.kvarDelivered > today.kvarDelivered + 1)
     return `${next}; those gained since today cost ${watts(tried.averageWPerKvar)} each on average.`;
-  return `${next}; losses are least at another field, by ${formatQuantity(saved, 'kW', { decimals: 1 })}.`;
+  return `${next}; the losses would be least, by ${formatQuantity(saved, 'kW', { decimals: 1 })}, at ${formatQuantity(least.fieldA, 'A', { upTo: fieldDecimals })}.`;
 }

@@ -3,7 +3,6 @@ import type { LedgerCell, LedgerData, LedgerRow, LedgerValue } from '../ui/ledge
 import { formatDelivered, formatNumber, formatQuantity } from '../ui/format';
 import { limitWord } from './curves';
 import { fieldMeter } from './field-meter';
-import { fit } from './words';
 
 const exciterWords = { static: 'static', brushless: 'brushless', 'shaft-dc': 'with commutator' } as const;
 const unitWords = { hp: 'hp', 'metric-hp': 'metric hp', kW: 'kW' } as const;
@@ -172,11 +171,4 @@ export function limitWords({ limits, machine }: MotorView): string {
     ...(limits.reservePercent > 0 ? [`${formatNumber(limits.reservePercent)} % kept in reserve`] : []),
     ...(band ? [`bus ${pu(band.low)} to ${pu(band.high)} of rated voltage`] : []),
   ].join(', ');
-}
-
-/** An assumed value with its range: "Xq of M-1, 0.60 to 0.90". */
-export function rangeWords(assumed: MotorView['assumed'][number]): string {
-  const [low, high] = assumed.range ?? [assumed.value, assumed.value];
-  const digits = fit(high);
-  return `${assumed.label} of ${assumed.motorName}, ${formatNumber(low, { decimals: digits })} to ${formatNumber(high, { decimals: digits })}${assumed.unit && assumed.unit !== 'pu' ? ` ${assumed.unit}` : ''}`;
 }

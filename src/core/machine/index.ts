@@ -10,7 +10,7 @@ export type { Capability } from './capability';
 export { fieldCurrentAtPanelA, panelCurrentA } from './panel';
 export { capabilityCurve, leastLossField, unityField, vCurve } from './v-curve';
 export type { LeastLoss, VCurvePoint } from './v-curve';
-export { COPPER_ZERO_C, copperResistanceOhm, copperTemperatureC } from './copper';
+export { copperResistanceOhm, copperTemperatureC } from './copper';
 export { KW_PER_HP, KW_PER_METRIC_HP } from './plate';
 export type { AssumedValue, Nameplate, OutputUnit, PlateLimits, PlateRemark, WindingOhms } from './plate';
 export type { LimitsBeside } from './plate-limits';

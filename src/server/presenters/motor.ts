@@ -72,6 +72,7 @@ export function presentAssumed(motor: Motor, completed: CompletedMotor, shaftKw:
       value: one.value,
       unit,
       range: [one.low, one.high],
+      kvarMost: kvarDelivered,
       kvarEffect: effectOf(kvarDelivered, swing),
       why: one.why,
     };

@@ -19,6 +19,7 @@ import { billChecks, billTables } from './tables/bills';
 import { gapFillChecks, gapFillTables } from './tables/gap-fills';
 import { findingChecks, findingIndexes, findingTables } from './tables/findings';
 import { intakeChecks, intakeIndexes, intakeTables } from './tables/intakes';
+import { motorLoadChecks, motorLoadTables } from './tables/motor-loads';
 import { requestChecks, requestIndexes, requestTables, requestUniques } from './tables/requests';
 import { supplyTables } from './tables/supplies';
 
@@ -156,6 +157,7 @@ const tables: Record<string, Columns> = {
     ...version,
     ...stamps,
   },
+  ...motorLoadTables,
   ...requestTables,
   plans: {
     ...id,
@@ -277,6 +279,7 @@ const checks: Record<string, string[]> = {
   ...billChecks,
   ...attachmentChecks,
   ...findingChecks,
+  ...motorLoadChecks,
   ...requestChecks,
   hour_entries: ['minutes > 0', 'minutes <= 1440'],
   engagements: ['year_from < year_to'],
@@ -287,7 +290,7 @@ async function addChecks(database: QueryInterface, table: string): Promise<void>
     for (const event of ['INSERT', 'UPDATE']) {
       const name = `${table}_${event.toLowerCase()}_${checks[table]?.indexOf(condition)}`;
       const onNew = condition.replace(
-        /\b(role|client_id|kind|state|method|family|way|media_type|period_from|period_to|minutes|year_from|year_to)\b/g,
+        /\b(role|source|when_missing|client_id|kind|state|method|family|way|media_type|period_from|period_to|minutes|year_from|year_to)\b/g,
         'NEW.$1',
       );
       await database.sequelize.query(

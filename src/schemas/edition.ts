@@ -68,7 +68,10 @@ export interface EditionMotor {
   drives: string | null;
   rated: string;
   fieldTodayA: number;
+  /** At the usual load. */
   fieldPlanA: number;
+  /** What it is set to where that is no constant field current: "holds 0.95 leading", amperes by season. */
+  setting?: string;
   fieldLimitA: number;
   fieldRatedA: number;
   armatureTodayA: number;

@@ -151,10 +151,10 @@ export interface MotorView {
   kvarToday: number;
   pullOutToday: number;
   armatureTodayA: number;
-  /** At rated voltage. */
+  /** At rated voltage, or what both ends of the voltage band admit. */
   capability: CapabilityView;
   /** At the ends of the voltage band, where one is set. */
-  band: { low: CapabilityView; high: CapabilityView } | null;
+  band: { low: CapabilityView & { voltagePu: number }; high: CapabilityView & { voltagePu: number } } | null;
   limits: LimitsView;
   /** Extra watts per kvar gained from today to the most it may deliver. */
   wattsPerKvar: number | null;

@@ -40,12 +40,14 @@ export interface PlanMotorView {
   usualLoadPercent: number;
   kvarToday: number;
   kvarPlan: number;
+  /** Field current under the plan at the usual load. */
+  fieldPlanA: number;
   armatureTodayA: number;
   armaturePlanA: number;
   /** Mean over running hours and energy over the year, both against standing. */
   extraLossKw: number;
   extraLossKwh: number;
-  /** After the reserve. */
+  /** After the reserve; the greatest share of it in the year. */
   fieldLimitA: number;
   fieldSharePercent: number;
   leastPullOut: number;
@@ -75,6 +77,9 @@ export interface BankView extends Omit<BankInput, 'cost'> {
   kvar: number;
   /** Worst harmonic order of resonance over the steps, and the usual harmonics within half an order; null: not checked. */
   resonance: { order: number; near: number[]; kvar: number } | null;
+  /** Operations of single steps, and losses, over the year. */
+  switchings: number;
+  lossKwh: number;
 }
 
 /** A new motor in place of an induction motor. */
@@ -84,7 +89,9 @@ export interface ReplacementView {
   ratedKw: number;
   controls: FieldControl[];
   hoursRunning: number;
-  /** Mean while running, against the induction motor. */
+  /** Hours its regulator is kept at a limit. */
+  hoursLimited: number;
+  /** At the usual load, and mean while running, against the induction motor. */
   kvarGained: number;
   kwSaved: number;
 }
@@ -134,7 +141,7 @@ export interface PlanView {
   /** Null for standing. */
   money: MoneyView | null;
   motors: PlanMotorView[];
-  /** Extra energy drawn by the motors over the year, and its cost at the mean energy price. */
+  /** Energy drawn more over the metered year: losses of motors, capacitors, transformer and cable. */
   extraLossKwh: number;
   hoursLeading: { before: number; after: number };
   /** null: the supply is not known well enough. */

@@ -1,13 +1,16 @@
 import { Router, type Request, type Response } from 'express';
 import { z } from 'zod';
 import { attachmentQuery } from '../schemas/attachment';
+import { submeterQuery } from '../schemas/shaft-load';
 import { unauthenticated } from './errors';
 import { parseOrThrow, toErrorBody } from './http';
 import { storeOriginal } from './drawer';
 import { storePages } from './page-stream';
 import type { Actor } from './policies/actor';
+import { rowId } from './row-id';
 import { assertBillOf, attachPages } from './services/attachments';
 import { authorizeIntake, patienceMs, receiveFile } from './services/intake';
+import { authorizeSubmeter, takeSubmeter } from './services/submeter';
 
 const query = z.object({
   kind: z.enum(['intervals', 'bills'], { error: 'Say whether the file holds intervals or bills.' }),
@@ -28,6 +31,12 @@ async function takePages(actor: Actor, req: Request): Promise<unknown> {
   await assertBillOf(opened.engagement.id, billId);
   const file = await storePages(req, fileName);
   return attachPages(actor, opened, { ...file, fileName, billId, pageCount });
+}
+
+async function takeSubmeterFile(actor: Actor, req: Request): Promise<unknown> {
+  const found = await authorizeSubmeter(actor, rowId(String(req.params.id)));
+  const input = parseOrThrow(submeterQuery, req.query);
+  return takeSubmeter(actor, found, { ...input, ...(await storeOriginal(req)) });
 }
 
 /** Takes a raw PUT; what goes wrong is told as the other endpoints tell it. */
@@ -51,5 +60,6 @@ export function uploadRoutes(): Router {
   const router = Router();
   router.put('/api/engagements/:code/uploads', taking(takeUpload));
   router.put('/api/engagements/:code/attachments', taking(takePages));
+  router.put('/api/motors/:id/submeter', taking(takeSubmeterFile));
   return router;
 }

@@ -121,24 +121,120 @@ describe('charts drawn without a browser', () => {
     expect(row?.cells['load-75']).toBeCloseTo(140, 9);
   });
 
-  it('CapabilityChart says delivers and absorbs instead of signs', async () => {
-    const { CapabilityChart, capabilityTable } = await import('@/components/charts/CapabilityChart');
+  it('FieldControlChart says delivers and absorbs instead of signs', async () => {
+    const { FieldControlChart } = await import('@/components/charts/FieldControlChart');
+    const { fieldControlTable } = await import('@/components/charts/field-control');
     const points = (kvar: number) => [0, 50, 100].map((loadPercent) => ({ loadPercent, kvarDelivered: kvar }));
     const data = {
       motorName: 'M-1',
-      capability: [
-        ...points(900).map((p) => ({ ...p, binding: 'field' as const })),
-        { loadPercent: 125, kvarDelivered: null, binding: 'armature' as const },
+      loadPercents: [0, 50, 100, 125],
+      most: [0, 25, 50, 75, 100].map((loadPercent) => ({ loadPercent, kvarDelivered: 900, binding: 'field' as const })),
+      least: points(-700).map((p) => ({ ...p, binding: 'pull-out' as const })),
+      fieldBy: 'exciter',
+      lines: [
+        { name: 'held 164 A', points: points(600), strong: true },
+        { name: 'held kvar', points: points(-300), dash: '8 4' },
       ],
-      today: points(-300),
-      plan: points(600),
-      planName: 'plan A',
       usualLoadPercent: 50,
+      marks: [
+        { name: 'today', shape: 'circle' as const, kvarDelivered: -300 },
+        { name: 'plan A', shape: 'diamond' as const, kvarDelivered: 600 },
+      ],
     };
-    const svg = await draw(<CapabilityChart {...data} {...size} />);
-    expect(words(svg)).toEqual(expect.arrayContaining(['today absorbs 300', 'plan A delivers 600', 'field']));
+    const svg = await draw(<FieldControlChart {...data} {...size} />);
+    const expected = ['today absorbs 300', 'plan A delivers 600', 'exciter', 'held 164 A', 'held kvar'];
+    expect(words(svg)).toEqual(expect.arrayContaining(expected));
     expect(words(svg).join(' ')).not.toMatch(/[-\u2212]\d/);
-    expect(capabilityTable(data).rows.at(-1)?.cells.most).toBe('not admissible');
+    const table = fieldControlTable(data);
+    expect(table.rows.at(-1)?.cells).toMatchObject({ most: 'not admissible', 'line-0': 'cannot run' });
+    expect(table.rows[1]?.cells).toMatchObject({ limit: 'exciter', 'line-1': '300 absorbed' });
+  });
+
+  it('PqPlaneChart draws hours as squares, filled where the motor absorbs', async () => {
+    const { PqPlaneChart } = await import('@/components/charts/PqPlaneChart');
+    const { deliveryEdge, pqPlaneTable } = await import('@/components/charts/pq-plane');
+    const half = Array.from({ length: 13 }, (_, i) => (Math.PI * i) / 12);
+    const data = {
+      motorName: 'M-1',
+      squareKw: 25,
+      squareKvar: 25,
+      limits: {
+        armature: half.map((angle) => ({ kw: 1000 * Math.sin(angle), kvarDelivered: 1000 * Math.cos(angle) })),
+        field: [0, 500, 900, 1100].map((kw) => ({ kw, kvarDelivered: 800 })),
+        fieldBy: 'field',
+        pullOut: [200, 500, 900].map((kw) => ({ kw, kvarDelivered: kw - 1000 })),
+        pullOutName: 'pull-out 1.5',
+      },
+      nameplate: { kw: 800, kvarDelivered: 600 },
+      usualKw: 600,
+      usualName: 'usual load, 75 %',
+      clouds: [
+        {
+          name: 'today 109 A',
+          shape: 'circle' as const,
+          usual: { kw: 600, kvarDelivered: -300 },
+          squares: [{ kw: 600, kvarDelivered: -300, hours: 400, beyond: 'pull-out' }],
+        },
+        {
+          name: 'plan A 164 A',
+          shape: 'diamond' as const,
+          usual: { kw: 610, kvarDelivered: 500 },
+          squares: [
+            { kw: 600, kvarDelivered: 500, hours: 400, beyond: '' },
+            { kw: 500, kvarDelivered: 525, hours: 100, beyond: '' },
+          ],
+        },
+      ],
+    };
+    // At 900 kW the circle of 1000 kVA leaves sqrt(1 - 0.81) x 1000 = 435.9 kvar, below the 800 of the field; 1100 kW lies outside
+    const edge = deliveryEdge(data.limits).map((p) => p.kvarDelivered);
+    expect(edge).toHaveLength(3);
+    expect(edge[1]).toBe(800);
+    expect(edge[2]).toBeCloseTo(435.9, 1);
+    const svg = await draw(<PqPlaneChart {...data} {...size} />);
+    const expected = ['absorbs 300', 'delivers 500', 'stator', 'field', 'pull-out 1.5', 'nameplate', 'plan A 164 A'];
+    expect(words(svg)).toEqual(expect.arrayContaining(expected));
+    expect(words(svg).join(' ')).not.toMatch(/[-\u2212]\d/);
+    const areas = [...svg.querySelectorAll('rect[stroke-width="1.3"]')].map(
+      (r) => Number(r.getAttribute('width')) ** 2,
+    );
+    expect(areas[0]! / areas[1]!).toBeCloseTo(4, 6);
+    expect(svg.querySelectorAll('rect[stroke-width="0.5"]')).toHaveLength(1);
+    expect(pqPlaneTable(data).rows[0]?.cells).toMatchObject({ hours: 400, kvar: '300 absorbed', beyond: 'pull-out' });
+  });
+
+  it('LossChart marks today, the setting tried and the least loss', async () => {
+    const { LossChart } = await import('@/components/charts/LossChart');
+    const { lossTable } = await import('@/components/charts/loss-per-kvar');
+    const at = (kvarDelivered: number) => ({
+      kvarDelivered,
+      fieldA: 120 + kvarDelivered / 10,
+      lossKw: 40 + kvarDelivered / 100,
+      marginalWPerKvar: 10 + kvarDelivered / 100,
+      averageWPerKvar: 8 + kvarDelivered / 200,
+    });
+    const data = {
+      motorName: 'M-1',
+      fieldName: 'Field current',
+      fieldDecimals: 0,
+      points: [-900, -600, -300, 0, 300, 600, 900].map(at),
+      least: at(-900),
+      today: at(-300),
+      tried: { ...at(600), name: 'plan A' },
+      most: { kvarDelivered: 800, name: 'field' },
+    };
+    const svg = await draw(<LossChart {...data} {...size} />);
+    const expected = [
+      'today 7.0\u00a0W',
+      'plan A 16.0\u00a0W',
+      'the next kvar',
+      'mean since today',
+      'absorbs kvar',
+      'field',
+    ];
+    expect(words(svg)).toEqual(expect.arrayContaining(expected));
+    expect(words(svg)).toContain('least loss, 31.0\u00a0kW');
+    expect(lossTable(data).rows[1]?.cells).toMatchObject({ kvar: '600 delivered', marginal: 16 });
   });
 
   it('CostCurveChart says that its axis is cut', async () => {

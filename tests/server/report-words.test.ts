@@ -76,7 +76,9 @@ describe('what a plan does', () => {
   });
 
   it('names capacitors with their caution, in report and letter', () => {
-    const banks = [{ name: '', steps: 3, stepKvar: 300, kvar: 900, lossWPerKvar: 0.5, resonance: null }];
+    const banks = [
+      { name: '', steps: 3, stepKvar: 300, kvar: 900, lossWPerKvar: 0.5, resonance: null, switchings: 0, lossKwh: 0 },
+    ];
     const alone = edition({ banks, fields: base.plan.fields.map((one) => ({ ...one, fieldA: one.todayA })) });
     expect(plain(answer(alone))).toMatch(/^900 kvar of capacitors can cut your power bills by 60,000 USD a year/);
     expect(plain(toDo(alone))).toMatch(/Add 900 kvar of capacitors\. Capacitors can resonate with harmonics/);

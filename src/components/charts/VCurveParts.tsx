@@ -16,7 +16,7 @@ const toPixels = (plot: Plot) => (p: CurrentPoint) => ({ x: plot.x(p.fieldA), y:
 
 /** Ground beyond the three limits. */
 export function VCurveGrounds({ data, plot, palette, ends, hatch }: VCurveParts & { hatch: Record<Hatch, string> }) {
-  const { armatureA, fieldA, pullOut } = data.limits;
+  const { armatureA, fieldA, leastFieldA, pullOut } = data.limits;
   const stator = plot.y(Math.min(armatureA, ends.armature[1]));
   const field = plot.x(Math.min(fieldA, ends.field[1]));
   const edge = pullOut?.map(toPixels(plot)) ?? [];
@@ -38,6 +38,15 @@ export function VCurveGrounds({ data, plot, palette, ends, hatch }: VCurveParts 
         height={plot.bottom - stator}
         fill={`url(#${hatch.limit})`}
       />
+      {leastFieldA !== undefined && (
+        <rect
+          x={plot.left}
+          y={plot.top}
+          width={Math.max(0, plot.x(leastFieldA) - plot.left)}
+          height={plot.bottom - plot.top}
+          fill={`url(#${hatch.limit})`}
+        />
+      )}
       {first && last && (
         <>
           <path
@@ -76,17 +85,17 @@ export function VCurveLines({ data, plot, palette }: VCurveParts) {
 }
 
 export function VCurveLimits({ data, plot, palette, ends }: VCurveParts) {
-  const { armatureA, fieldA } = data.limits;
+  const { armatureA, fieldA, leastFieldA } = data.limits;
   const y = plot.y(armatureA);
-  const x = plot.x(fieldA);
+  const upright = [fieldA, leastFieldA].filter((at) => at !== undefined && at >= ends.field[0] && at <= ends.field[1]);
   return (
     <>
       {armatureA <= ends.armature[1] && (
         <path d={`M${plot.left} ${y}H${plot.right}`} stroke={palette.madder} strokeWidth={1.5} />
       )}
-      {fieldA <= ends.field[1] && (
-        <path d={`M${x} ${plot.top}V${plot.bottom}`} stroke={palette.madder} strokeWidth={1.5} />
-      )}
+      {upright.map((at) => (
+        <path key={at} d={`M${plot.x(at)} ${plot.top}V${plot.bottom}`} stroke={palette.madder} strokeWidth={1.5} />
+      ))}
     </>
   );
 }
@@ -127,7 +136,7 @@ function marksOf({ data, plot, narrow }: VCurveParts): Mark[] {
     const { x, y } = at(point);
     return { x, y, shape, words, above, anchor: x > plot.right - 60 ? 'end' : 'middle' };
   };
-  const amperes = ({ fieldA }: CurrentPoint) => formatQuantity(fieldA, 'A', { upTo: 1 });
+  const amperes = ({ fieldA }: CurrentPoint) => formatQuantity(fieldA, 'A', { upTo: data.fieldDecimals ?? 1 });
   const near = today && plan && Math.abs(at(plan).x - at(today).x) < 104 && Math.abs(at(plan).y - at(today).y) < 30;
   return [
     ...(nameplate ? [mark(nameplate, 'square', narrow ? '' : 'nameplate', true)] : []),
@@ -182,7 +191,8 @@ function LoadNames(parts: VCurveParts) {
 
 export function VCurveNames(parts: VCurveParts) {
   const { data, plot, palette, ends, narrow } = parts;
-  const { armatureA, fieldA, pullOut, pullOutName } = data.limits;
+  const { armatureA, fieldA, fieldBy, leastFieldA, pullOut, pullOutName } = data.limits;
+  const style = { upTo: data.fieldDecimals ?? 0 };
   const edge = pullOut?.[0];
   const low = plot.bottom - 24;
   return (
@@ -209,7 +219,12 @@ export function VCurveNames(parts: VCurveParts) {
           upward
           halo
         >
-          {`field, ${formatQuantity(fieldA, 'A')}`}
+          {`${fieldBy ?? 'field'}, ${formatQuantity(fieldA, 'A', style)}`}
+        </Words>
+      )}
+      {leastFieldA !== undefined && leastFieldA > ends.field[0] && (
+        <Words x={plot.x(leastFieldA) - 6} y={plot.bottom - 30} palette={palette} tone="madder" bold upward halo>
+          {`least, ${formatQuantity(leastFieldA, 'A', style)}`}
         </Words>
       )}
       {edge && (

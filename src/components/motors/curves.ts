@@ -1,15 +1,8 @@
-import {
-  capabilityCurve,
-  operatingPoint,
-  PullOutError,
-  unityField,
-  vCurve,
-  type SynchronousMotor,
-} from '../../core/machine';
+import { operatingPoint, PullOutError, unityField, vCurve, type SynchronousMotor } from '../../core/machine';
 import type { MotorView } from '../../schemas/motor';
-import type { CapabilityData, KvarPoint } from '../charts/CapabilityChart';
 import type { CurrentPoint, VCurveData } from '../charts/v-curve';
 import { formatNumber } from '../ui/format';
+import { fieldMeter } from './field-meter';
 
 const loadPercents = [0, 25, 50, 75, 100] as const;
 const pointsPerCurve = 70;
@@ -17,6 +10,7 @@ const pointsPerCurve = 70;
 /** A field setting on a picture: the plan's, or the one being tried. */
 export interface NamedField {
   name: string;
+  /** Of the machine's own field. [A] */
   fieldA: number;
 }
 
@@ -71,9 +65,12 @@ function loadsOnPicture(usualPercent: number): number[] {
   return loadPercents.map((percent) => (percent === nearest ? usualPercent : percent));
 }
 
-/** The family of V-curves of a motor with its limits and marks. */
+/** The family of V-curves of a motor with its limits and marks, in the amperes its ammeter shows. */
 export function vCurveData(motor: MotorView, plan: NamedField | null): VCurveData {
   const { machine, limits, usualShaftKw } = motor;
+  const meter = fieldMeter(machine);
+  const shown = (point: CurrentPoint) => ({ ...point, fieldA: meter.shownA(point.fieldA) });
+  const shownOrNone = (point: CurrentPoint | null) => point && shown(point);
   const fieldToA = Math.max(limits.fieldA, machine.ratedFieldCurrentA) * 1.1;
   const usualLoadPercent = Math.round(motor.usualLoadPercent);
   const percents = loadsOnPicture(usualLoadPercent);
@@ -81,6 +78,8 @@ export function vCurveData(motor: MotorView, plan: NamedField | null): VCurveDat
     percent === usualLoadPercent ? usualShaftKw : (percent / 100) * machine.ratedOutputKw;
   return {
     motorName: motor.name,
+    fieldName: meter.name,
+    fieldDecimals: meter.decimals,
     usualLoadPercent,
     curves: percents.map((loadPercent) => ({
       loadPercent,
@@ -89,52 +88,28 @@ export function vCurveData(motor: MotorView, plan: NamedField | null): VCurveDat
         fieldFromA: 0.15 * machine.ratedFieldCurrentA,
         fieldToA,
         points: pointsPerCurve,
-      }).map((point) => ({ fieldA: point.fieldCurrentA, armatureA: point.lineCurrentA, leading: point.leading })),
+      })
+        .map(({ fieldCurrentA, lineCurrentA, leading }) => ({
+          fieldA: meter.shownA(fieldCurrentA),
+          armatureA: lineCurrentA,
+          leading,
+        }))
+        .filter(({ fieldA }) => fieldA >= 0),
     })),
     unity: percents.flatMap((percent) => {
       const fieldA = unityField(machine, { shaftKw: shaft(percent) });
-      return currentsAt(machine, shaft(percent), fieldA) ?? [];
+      return shownOrNone(currentsAt(machine, shaft(percent), fieldA)) ?? [];
     }),
     limits: {
       armatureA: limits.armatureA,
-      fieldA: limits.fieldA,
-      pullOut: pullOutEdge(machine, limits.pullOutMargin),
+      fieldA: meter.shownA(limits.fieldA),
+      fieldBy: limits.fieldBy,
+      leastFieldA: limits.leastFieldA === undefined ? undefined : meter.shownA(limits.leastFieldA),
+      pullOut: pullOutEdge(machine, limits.pullOutMargin).map(shown),
       pullOutName: `pull-out below ${formatNumber(limits.pullOutMargin, { upTo: 2 })}`,
     },
-    today: currentsAt(machine, usualShaftKw, motor.fieldTodayA),
-    plan: plan && currentsAt(machine, usualShaftKw, plan.fieldA),
-    planName: plan?.name,
-  };
-}
-
-/** Kvar delivered over the loads at a constant field; loads it cannot hold are left out. */
-function kvarOverLoad(machine: SynchronousMotor, fieldCurrentA: number, percents: number[]): KvarPoint[] {
-  return percents.flatMap((loadPercent) => {
-    try {
-      const shaftKw = (loadPercent / 100) * machine.ratedOutputKw;
-      return { loadPercent, kvarDelivered: -operatingPoint(machine, { shaftKw, fieldCurrentA }).kvar };
-    } catch (error) {
-      if (error instanceof PullOutError) return [];
-      throw error;
-    }
-  });
-}
-
-/** What a motor may deliver over its load, with today's field and the plan's. */
-export function capabilityData(motor: MotorView, plan: NamedField | null): CapabilityData {
-  const { machine } = motor;
-  const percents = Array.from({ length: 25 }, (_, index) => index * 5);
-  const curve = capabilityCurve(machine, { loads: percents.map((percent) => (percent / 100) * machine.ratedOutputKw) });
-  return {
-    motorName: motor.name,
-    usualLoadPercent: Math.round(motor.usualLoadPercent),
-    capability: curve.map(({ kvarDelivered, binding }, index) => ({
-      loadPercent: percents[index] ?? 0,
-      kvarDelivered,
-      binding,
-    })),
-    today: kvarOverLoad(machine, motor.fieldTodayA, percents),
-    plan: plan ? kvarOverLoad(machine, plan.fieldA, percents) : undefined,
+    today: shownOrNone(currentsAt(machine, usualShaftKw, motor.fieldTodayA)),
+    plan: plan && shownOrNone(currentsAt(machine, usualShaftKw, plan.fieldA)),
     planName: plan?.name,
   };
 }
@@ -152,11 +127,14 @@ export interface SettingReading {
   beyond: string[];
 }
 
-const limitWords = { armature: 'stator', field: 'field', 'pull-out': 'pull-out' } as const;
+/** A limit's name as a person knows it; the field's may be its exciter's. */
+export const limitWord = ({ limits }: Pick<MotorView, 'limits'>, limit: string) =>
+  limit === 'armature' ? 'stator' : limit === 'field' ? limits.fieldBy : limit;
 
 /** Reads a motor at a field current and its usual load; null where it would fall out of step. */
 export function settingReading(motor: MotorView, fieldCurrentA: number): SettingReading | null {
   const { machine, usualShaftKw: shaftKw } = motor;
+  const least = motor.limits.leastFieldA;
   try {
     const point = operatingPoint(machine, { shaftKw, fieldCurrentA });
     const today = operatingPoint(machine, { shaftKw, fieldCurrentA: motor.fieldTodayA });
@@ -170,7 +148,10 @@ export function settingReading(motor: MotorView, fieldCurrentA: number): Setting
       lossesKw: point.inputKw - shaftKw,
       extraLossKw,
       wattsPerKvar: gained > 1 ? (1000 * extraLossKw) / gained : null,
-      beyond: point.beyond.map((limit) => limitWords[limit]),
+      beyond: [
+        ...point.beyond.map((limit) => limitWord(motor, limit)),
+        ...(least !== undefined && fieldCurrentA < least ? ['the least field'] : []),
+      ],
     };
   } catch (error) {
     if (error instanceof PullOutError) return null;

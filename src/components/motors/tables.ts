@@ -1,15 +1,22 @@
 import type { MotorView } from '../../schemas/motor';
 import type { LedgerCell, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
-import { formatDelivered, formatNumber } from '../ui/format';
+import { formatDelivered, formatNumber, formatQuantity } from '../ui/format';
+import { limitWord } from './curves';
+import { fieldMeter } from './field-meter';
 import { fit } from './words';
 
 const exciterWords = { static: 'static', brushless: 'brushless', 'shaft-dc': 'with commutator' } as const;
-const bindingWords: Record<string, string> = { field: 'field', armature: 'stator', 'pull-out': 'pull-out' };
+const unitWords = { hp: 'hp', 'metric-hp': 'metric hp', kW: 'kW' } as const;
 
 /** A figure of the machine, dashed where it was assumed. */
-function machineCell(motor: MotorView, field: string, value: number, decimals: number): LedgerCell {
+function machineCell(
+  motor: MotorView,
+  field: string,
+  value: number,
+  style: { decimals?: number; upTo?: number },
+): LedgerCell {
   return {
-    value: formatNumber(value, { decimals }),
+    value: formatNumber(value, style),
     assumed: motor.assumed.some((one) => one.field === field),
   };
 }
@@ -18,7 +25,7 @@ type Entry = [label: string, unit: string, cell: (motor: MotorView) => LedgerVal
 
 const plateEntries: Entry[] = [
   ['Drives', '', (motor) => motor.drives ?? { value: 'not said', tone: 'quiet' }],
-  ['Rated output', '', ({ plate }) => `${formatNumber(plate.output)} ${plate.outputUnit}`],
+  ['Rated output', '', ({ plate }) => `${formatNumber(plate.output)} ${unitWords[plate.outputUnit]}`],
   ['Rated voltage', 'kV', ({ plate }) => formatNumber(plate.voltageV / 1000, { upTo: 2 })],
   [
     'Rated power factor',
@@ -26,29 +33,40 @@ const plateEntries: Entry[] = [
     ({ plate }) => `${formatNumber(plate.powerFactor, { decimals: 2 })}${plate.powerFactor < 1 ? ' leading' : ''}`,
   ],
   ['Rated armature current', 'A', (motor) => formatNumber(motor.plate.currentA ?? motor.ratedCurrentA)],
-  ['Rated field current', 'A', ({ plate }) => formatNumber(plate.fieldCurrentA, { upTo: 1 })],
+  [
+    'Rated field current',
+    'A',
+    (motor) => machineCell(motor, 'ratedFieldCurrentA', motor.machine.ratedFieldCurrentA, { upTo: 1 }),
+  ],
   [
     'Rated field voltage',
     'V',
-    ({ plate, machine }) =>
-      formatNumber(plate.fieldVoltageV ?? machine.ratedFieldCurrentA * machine.fieldResistanceOhm, { upTo: 1 }),
+    (motor) => {
+      const { plate, machine } = motor;
+      const volts = plate.fieldVoltageV ?? machine.ratedFieldCurrentA * machine.fieldResistanceOhm;
+      return machineCell(motor, 'fieldResistanceOhm', volts, { upTo: 1 });
+    },
   ],
   ['Exciter', '', ({ plate }) => exciterWords[plate.exciterKind]],
-  ['Efficiency', '%', (motor) => machineCell(motor, 'ratedEfficiency', motor.machine.ratedEfficiency * 100, 1)],
+  [
+    'Efficiency',
+    '%',
+    (motor) => machineCell(motor, 'ratedEfficiency', motor.machine.ratedEfficiency * 100, { decimals: 1 }),
+  ],
 ];
 
 const machineEntries: Entry[] = [
   ['Speed, poles', 'rpm', ({ speedRpm, machine }) => `${formatNumber(speedRpm, { upTo: 1 })}, ${machine.poles}`],
-  ['Xd', 'pu', (motor) => machineCell(motor, 'xdPu', motor.machine.xdPu, 2)],
-  ['Xq', 'pu', (motor) => machineCell(motor, 'xqPu', motor.machine.xqPu, 2)],
-  ['Ra', 'pu', (motor) => machineCell(motor, 'raPu', motor.machine.raPu, 3)],
+  ['Xd', 'pu', (motor) => machineCell(motor, 'xdPu', motor.machine.xdPu, { decimals: 2 })],
+  ['Xq', 'pu', (motor) => machineCell(motor, 'xqPu', motor.machine.xqPu, { decimals: 2 })],
+  ['Ra', 'pu', (motor) => machineCell(motor, 'raPu', motor.machine.raPu, { decimals: 3 })],
   [
-    'Field today',
+    'Field today, as its ammeter shows it',
     'A',
-    (motor) => ({
-      value: formatNumber(motor.fieldTodayA, { upTo: 1 }),
-      note: motor.panelTodayA === undefined ? undefined : `panel ${formatNumber(motor.panelTodayA, { decimals: 2 })}`,
-    }),
+    (motor) => {
+      const { decimals, shownA } = fieldMeter(motor.machine);
+      return formatNumber(shownA(motor.fieldTodayA), { upTo: decimals });
+    },
   ],
   [
     'kvar today at usual load',
@@ -65,7 +83,7 @@ const machineEntries: Entry[] = [
           ? { value: formatDelivered(kvarDelivered), tone: 'lagging' }
           : { value: formatNumber(kvarDelivered), tone: 'leading', strong: true },
   ],
-  ['Limit met first', '', ({ capability }) => bindingWords[capability.binding] ?? capability.binding],
+  ['Limit met first', '', (motor) => limitWord(motor, motor.capability.binding)],
   [
     'Pull-out over load, today',
     '',
@@ -91,20 +109,69 @@ function tableOf(head: string, entries: Entry[], motors: MotorView[]): LedgerDat
   };
 }
 
+/** Entries that only some plates have: shown where one of the motors has them. */
+const rareEntries: [Entry, has: (motor: MotorView) => boolean][] = [
+  [
+    ['Service factor, raises no limit', '', ({ plate }) => said(plate.serviceFactor, { decimals: 2 })],
+    ({ plate }) => plate.serviceFactor !== undefined,
+  ],
+  [
+    ['Temperature rise, class', 'K', ({ plate }) => riseWords(plate)],
+    ({ plate }) => (plate.temperatureRiseC ?? plate.insulationClass) !== undefined,
+  ],
+  [
+    ['Exciter field at rated field', 'A', ({ panel }) => said(panel?.ratedA, { upTo: 2 })],
+    ({ panel }) => panel !== undefined,
+  ],
+];
+
+const said = (value: number | undefined, style: { decimals?: number; upTo?: number }): LedgerValue =>
+  value === undefined ? { value: 'not said', tone: 'quiet' } : formatNumber(value, style);
+
+function riseWords({ temperatureRiseC, insulationClass }: MotorView['plate']): LedgerValue {
+  const words = [temperatureRiseC !== undefined && formatNumber(temperatureRiseC), insulationClass].filter(Boolean);
+  return words.length > 0 ? words.join(', ') : { value: 'not said', tone: 'quiet' };
+}
+
 /** Nameplates side by side, as worded. */
 export function plateTable(motors: MotorView[], meters: { id: number; label: string }[]) {
   const labelOf = (motor: MotorView) => meters.find(({ id }) => id === motor.meterId)?.label ?? '';
   const behind: Entry[] = meters.length > 1 ? [['Behind meter', '', labelOf]] : [];
-  return tableOf('Nameplate', [...plateEntries.slice(0, 1), ...behind, ...plateEntries.slice(1)], motors);
+  const rare = rareEntries.filter(([, has]) => motors.some(has)).map(([entry]) => entry);
+  return tableOf('Nameplate', [...plateEntries.slice(0, 1), ...behind, ...plateEntries.slice(1), ...rare], motors);
+}
+
+/** What the motor may deliver at an end of its voltage band: "1,210, stator". */
+function bandCell(motor: MotorView, end: 'low' | 'high'): LedgerValue {
+  const at = motor.band?.[end];
+  if (!at) return { value: 'no band set', tone: 'quiet' };
+  const most = at.kvarDelivered === null ? 'nothing' : formatDelivered(at.kvarDelivered);
+  return `${most}, ${limitWord(motor, at.binding)} at ${formatNumber(at.voltagePu, { upTo: 3 })}`;
 }
 
 /** Machine data and settings side by side. */
-export const settingTable = (motors: MotorView[]) => tableOf('Machine and setting', machineEntries, motors);
+export function settingTable(motors: MotorView[]) {
+  const banded = motors.some(({ band }) => band !== null);
+  const ends: Entry[] = [
+    ['At low voltage', 'kvar', (motor) => bandCell(motor, 'low')],
+    ['At high voltage', 'kvar', (motor) => bandCell(motor, 'high')],
+  ];
+  return tableOf('Machine and setting', [...machineEntries, ...(banded ? ends : [])], motors);
+}
 
 /** Limits of a motor in words, for the reference column. */
-export function limitWords({ limits }: MotorView): string {
-  const reserve = limits.reservePercent > 0 ? `, ${formatNumber(limits.reservePercent)} % kept in reserve` : '';
-  return `stator ${formatNumber(limits.armatureA)} A, field ${formatNumber(limits.fieldA, { upTo: 1 })} A, pull-out ${formatNumber(limits.pullOutMargin, { upTo: 2 })} times the load${reserve}`;
+export function limitWords({ limits, machine }: MotorView): string {
+  const { words } = fieldMeter(machine);
+  const band = limits.voltageBandPu;
+  const pu = (value: number) => formatNumber(value, { upTo: 3 });
+  return [
+    `stator ${formatQuantity(limits.armatureA, 'A')}`,
+    `${limits.fieldBy} ${words(limits.fieldA)}`,
+    ...(limits.leastFieldA === undefined ? [] : [`least field ${words(limits.leastFieldA)}`]),
+    `pull-out ${formatNumber(limits.pullOutMargin, { upTo: 2 })} times the load`,
+    ...(limits.reservePercent > 0 ? [`${formatNumber(limits.reservePercent)} % kept in reserve`] : []),
+    ...(band ? [`bus ${pu(band.low)} to ${pu(band.high)} of rated voltage`] : []),
+  ].join(', ');
 }
 
 /** An assumed value with its range: "Xq of M-1, 0.60 to 0.90". */

@@ -1,11 +1,11 @@
 import { addDays } from '../../core/load';
-import { toMinorUnits } from '../../core/units';
+import { toMinorUnits, wordOrdinal } from '../../core/units';
 import { constantFieldA } from '../../schemas/plan-settings';
 import { settingValueWords } from '../ui/setting-words';
 import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
 import type { LedgerCell, LedgerColumn, LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
 import { formatAmount, formatBillName, formatDay, formatNumber } from '../ui/format';
-import { groupNames, hoursWords, ordinal } from './words';
+import { groupNames, hoursWords } from './words';
 
 interface Entry {
   label: string;
@@ -96,7 +96,7 @@ const bankEntries: Entry[] = [
       if (!bank) return null;
       if (!bank.resonance) return { value: 'not checked', tone: 'warn' };
       const { order, near } = bank.resonance;
-      const words = near.length > 0 ? `near the ${near.map(ordinal).join(', ')}` : undefined;
+      const words = near.length > 0 ? `near the ${near.map(wordOrdinal).join(', ')}` : undefined;
       return { value: formatNumber(order, { decimals: 1 }), note: words, tone: near.length > 0 ? 'fault' : undefined };
     },
   },

@@ -1,3 +1,4 @@
+import { wordOrdinal } from '../../core/units';
 import type { AssumedValue } from '../../schemas/motor';
 import type { ChargeGroup, PlanView, YearView } from '../../schemas/plan';
 import { capacitorCaution } from '../ui/Caution';
@@ -22,9 +23,6 @@ export const groupNames: [ChargeGroup, string][] = [
   ['fixed', 'Fixed'],
   ['tax', 'Tax'],
 ];
-
-/** "5th", "7th", "3rd". */
-export const ordinal = (count: number) => `${count}${count % 10 === 3 && count % 100 !== 13 ? 'rd' : 'th'}`;
 
 /** All capacitors of a plan together. [kvar] */
 export const bankKvar = ({ banks }: PlanView) => banks.reduce((sum, { kvar }) => sum + kvar, 0);
@@ -183,7 +181,7 @@ export function capacitorSentences(year: YearView): string[] {
       if (!resonance) return `${name}: resonance is not checked, the short-circuit power is not known.`;
       const order = `order ${formatNumber(resonance.order, { decimals: 1 })}`;
       return resonance.near.length > 0
-        ? `${name} resonates at ${order}, near the ${resonance.near.map(ordinal).join(' and ')} harmonic: ${bank.detuningPercent ? 'choose another size or tuning' : 'detune it or choose another size'}.`
+        ? `${name} resonates at ${order}, near the ${resonance.near.map(wordOrdinal).join(' and ')} harmonic: ${bank.detuningPercent ? 'choose another size or tuning' : 'detune it or choose another size'}.`
         : `${name} resonates at ${order}, half an order and more from the usual harmonics.`;
     }),
   ];

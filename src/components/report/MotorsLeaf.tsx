@@ -28,7 +28,7 @@ function settingsTable(motors: readonly EditionMotor[]): LedgerData {
     ],
     rows: [
       row('today', 'Today', 'A', (motor) => amperes(motor.fieldTodayA)),
-      row('plan', 'Proposed', 'A', (motor) => amperes(motor.fieldPlanA)),
+      row('plan', 'Proposed', 'A', (motor) => motor.setting ?? amperes(motor.fieldPlanA)),
       row('limit', 'Limit after the reserve', 'A', (motor) => amperes(motor.fieldLimitA)),
       row('rated', 'On the nameplate', 'A', (motor) => amperes(motor.fieldRatedA)),
       row('kvarToday', 'At its usual load, today', '', (motor) => formatDelivers(motor.kvarToday)),
@@ -55,7 +55,10 @@ function motorsFinding(motors: readonly EditionMotor[]): string {
   const [first] = motors;
   if (!first) return 'The plan changes no motor.';
   const below = first.fieldLimitA - first.fieldPlanA;
-  return `At ${amperes(first.fieldPlanA)} A ${first.name} ${formatDelivers(first.kvarPlan)} and stays ${amperes(below)} A under its field limit.`;
+  const at = first.setting
+    ? `${first.name} ${first.setting}: at its usual load it`
+    : `At ${amperes(first.fieldPlanA)} A ${first.name}`;
+  return `${at} ${formatDelivers(first.kvarPlan)} and stays ${amperes(below)} A under its field limit.`;
 }
 
 export interface MotorsLeafProps extends LeafContext {
@@ -84,7 +87,11 @@ export function MotorsLeaf({ content, taps, foot, pictures, page, shown }: Motor
             <ResultSums
               rows={[
                 { label: 'Field, today', value: formatQuantity(motor.fieldTodayA, 'A', { upTo: 1 }) },
-                { label: 'Field, proposed', value: formatQuantity(motor.fieldPlanA, 'A', { upTo: 1 }), kind: 'strong' },
+                {
+                  label: motor.setting ? 'Field at its usual load' : 'Field, proposed',
+                  value: formatQuantity(motor.fieldPlanA, 'A', { upTo: 1 }),
+                  kind: 'strong',
+                },
                 { label: 'Usual load', value: formatQuantity(motor.usualLoadPercent, '%') },
                 { label: 'Hours running', value: formatNumber(motor.hoursRunning) },
               ]}
@@ -98,7 +105,13 @@ export function MotorsLeaf({ content, taps, foot, pictures, page, shown }: Motor
         first={shown.length === 0}
         number={`${page}.${shown.length + 1}`}
         title="Settings and limits"
-        reference={<p>Constant field current, set by hand</p>}
+        reference={
+          <p>
+            {shown.some(({ setting }) => setting)
+              ? 'As set by hand or held by a regulator'
+              : 'Constant field current, set by hand'}
+          </p>
+        }
       >
         <LedgerTable label="Settings and limits" {...settingsTable(shown)} />
       </LeafRow>

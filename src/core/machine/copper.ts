@@ -1,7 +1,7 @@
 import { requireRange } from './errors';
 
-/** Temperature at which the resistance of copper, continued as a straight line, is nought. [degC], magnitude */
-const COPPER_ZERO_C = 234.5;
+/** Temperature below zero at which copper's resistance, prolonged in a straight line, would vanish. [degC], from memory */
+export const COPPER_ZERO_C = 234.5;
 
 /**
  * Resistance of a copper winding at another temperature.

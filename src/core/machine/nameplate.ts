@@ -8,7 +8,7 @@ import { fieldOf } from './plate-field';
 import { impedancesOf } from './plate-impedance';
 import { resolveLimits } from './plate-limits';
 import type { LimitsBeside } from './plate-limits';
-import { checkTemperature } from './plate-temperature';
+import { checkTemperature, hotTemperatureC } from './plate-temperature';
 import { isPlausibleEfficiency, typicalEfficiency, typicalLossShares } from './typical';
 
 /** A nameplate made into a motor. */
@@ -45,6 +45,7 @@ export function completeNameplate(plate: Nameplate): CompletedMotor {
     ...fieldOf(plate, rating, assume),
   };
   if (plate.lossSplit) motor.lossSplit = plate.lossSplit;
+  if (plate.temperatureRiseC ?? plate.insulationClass) motor.fieldHotC = hotTemperatureC(plate).value;
   lowerAssumedResistance(motor, assumed);
   const remainder = checkRemainder(motor, assumed);
   if (remainder) return unusable([...problems, remainder], assumed);

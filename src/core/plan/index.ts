@@ -29,6 +29,7 @@ export type {
   Upstream,
 } from './types';
 export {
+  USUAL_HARMONICS,
   combineLoads,
   correctiveKvar,
   kvarPerKw,

@@ -85,7 +85,7 @@ export function resonanceOrder(input: { kvar: number; shortCircuitKva: number })
 }
 
 /** Characteristic orders of six-pulse rectifiers and drives, with the third of single-phase loads. */
-const USUAL_HARMONICS = [3, 5, 7, 11, 13] as const;
+export const USUAL_HARMONICS = [3, 5, 7, 11, 13] as const;
 
 /**
  * Resonance of capacitors with the supply, judged against the usual harmonics.

@@ -2,10 +2,10 @@ import { controlField } from '../machine';
 import type { OwnFieldControl } from '../machine';
 import type { SearchAxis, SearchMotor } from './search-axes';
 import type { Spans } from './types';
-import type { At } from './search-walk';
+import type { At, Exchange } from './search-walk';
 
 /** What a motor takes at its usual load under each setting of an axis. */
-interface Ladder {
+export interface Ladder {
   /** Delivered, ascending. [kvar] */
   kvar: number[];
   inputKw: number[];
@@ -15,12 +15,11 @@ interface Ladder {
 
 /**
  * The cheapest order of raising the axes of one span: from all at their least to all at their most delivery, each step the one that
- * loses least per kvar, at the load each motor runs at longest in the span.
+ * loses least per kvar.
  *
  * @returns Points over the axes given, in their order.
  */
-export function cheapestPath(axes: readonly SearchAxis[], motors: readonly SearchMotor[], spans?: Spans): At[] {
-  const ladders = axes.map((axis) => ladderOf(axis, motors, spans));
+export function cheapestPath(ladders: readonly Ladder[]): At[] {
   const rung = ladders.map(() => 0);
   const point = () => ladders.map(({ place }, a) => place[rung[a]!]!);
   const points = [point()];
@@ -40,7 +39,35 @@ function priceOf({ kvar, inputKw }: Ladder, rung: number): number {
   return more > 0 ? (inputKw[rung + 1]! - inputKw[rung]!) / more : -Infinity;
 }
 
-function ladderOf(axis: SearchAxis, motors: readonly SearchMotor[], spans?: Spans): Ladder {
+/** A ladder of capacitor steps. */
+export function stepLadder(mostSteps: number, stepKvar: number, lossWPerKvar: number): Ladder {
+  const place = Array.from({ length: mostSteps + 1 }, (_, k) => k);
+  const kvar = place.map((steps) => steps * stepKvar);
+  return { kvar, inputKw: kvar.map((amount) => (amount * lossWPerKvar) / 1000), place };
+}
+
+/**
+ * Pairs of axes that can take over reactive power from one another, the one of coarser steps first.
+ *
+ * @param ladders  Per axis; those of one list can.
+ */
+export function exchangesOf(ladders: readonly { axis: number; ladder: Ladder }[]): Exchange[] {
+  const stepOf = ({ kvar }: Ladder) => Math.abs(kvar.at(-1)! - kvar[0]!) / Math.max(1, kvar.length - 1);
+  const bySetting = ({ kvar, place }: Ladder) => {
+    const found = new Array<number>(kvar.length).fill(0);
+    place.forEach((setting, rung) => (found[setting] = kvar[rung]!));
+    return found;
+  };
+  return ladders.flatMap((one, k) =>
+    ladders.slice(k + 1).map((other): Exchange => {
+      const [from, to] = stepOf(one.ladder) >= stepOf(other.ladder) ? [one, other] : [other, one];
+      return { from: from.axis, to: to.axis, fromKvar: bySetting(from.ladder), toKvar: bySetting(to.ladder) };
+    }),
+  );
+}
+
+/** What the settings of an axis come to at the load its motor runs at longest in the axis' span. */
+export function ladderOf(axis: SearchAxis, motors: readonly SearchMotor[], spans?: Spans): Ladder {
   const places = axis.settings.map((_, k) => k);
   const motor = motors[axis.motors[0]!]!;
   const shaftKw = usualLoad(motor.shaftKw, spans && { ...spans, span: axis.span });

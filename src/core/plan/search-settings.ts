@@ -7,7 +7,7 @@ import { createCandidates } from './search-candidates';
 import type { Candidates, SearchedBank } from './search-candidates';
 import { partsOf, searchParts } from './search-parts';
 import type { PartCost, SearchPart, SearchProgress, SearchTable } from './search-parts';
-import { cheapestPath } from './search-paths';
+import { cheapestPath, exchangesOf, ladderOf, stepLadder } from './search-paths';
 import type { At, WalkGround } from './search-walk';
 import type { FixedSetup } from './simulator';
 import type { Plant, Spans } from './types';
@@ -98,7 +98,7 @@ export function searchSettings(input: SearchInput): SearchResult {
   const bills = candidates.standingTotals.length + (bank ? 1 : 0);
   const parts = partsOf(reachOf(input, axes, bills, lengths.length), bills);
   const grounds = parts.map((part) =>
-    groundOf(part, { axes, lengths, standing, motors: plant.motors, spans: fixed.spans, exhaustiveUpTo }),
+    groundOf(part, { axes, lengths, standing, motors: plant.motors, spans: fixed.spans, bank, exhaustiveUpTo }),
   );
   const table = searchParts({ parts, grounds, standing, price: candidates.price, onProgress });
   const winner = pickWinner(table, candidates, axes);
@@ -142,33 +142,38 @@ function reachOf({ billsOfSpan }: SearchInput, axes: SearchAxis[], bills: number
   });
 }
 
-function groundOf(
-  { axes: own }: SearchPart,
-  all: {
-    axes: SearchAxis[];
-    lengths: number[];
-    standing: At;
-    motors: readonly SearchMotor[];
-    spans?: Spans;
-    exhaustiveUpTo: number;
-  },
-): WalkGround {
-  const bySpan = new Map<number, number[]>();
-  const paths: WalkGround['paths'] = [];
-  own.forEach((axis, k) => {
-    const known = all.axes[axis];
-    if (!known) paths.push({ axes: [k], points: Array.from({ length: all.lengths[axis]! }, (_, steps) => [steps]) });
-    else bySpan.set(known.span, [...(bySpan.get(known.span) ?? []), k]);
+interface GroundInput {
+  axes: SearchAxis[];
+  lengths: number[];
+  standing: At;
+  motors: readonly SearchMotor[];
+  spans?: Spans;
+  bank?: SearchedBank;
+  exhaustiveUpTo: number;
+}
+
+function groundOf({ axes: own }: SearchPart, all: GroundInput): WalkGround {
+  const { axes, lengths, standing, motors, spans, bank, exhaustiveUpTo } = all;
+  const rungs = own.map((axis, k) => {
+    const known = axes[axis];
+    const ladder = known
+      ? ladderOf(known, motors, spans)
+      : stepLadder(bank!.mostSteps, bank!.stepKvar, bank!.lossWPerKvar);
+    return { axis: k, ladder, span: known?.span ?? null };
   });
-  for (const places of bySpan.values()) {
-    const axes = places.map((k) => all.axes[own[k]!]!);
-    paths.unshift({ axes: places, points: cheapestPath(axes, all.motors, all.spans) });
-  }
+  // The bank stands in every span: it is a path of its own and can take over from any motor.
+  const groups = [...new Set(rungs.map(({ span }) => span))].map((span) => rungs.filter((one) => one.span === span));
+  const banks = rungs.filter(({ span }) => span === null);
+  const exchanges = groups.flatMap((group) => exchangesOf(group[0]!.span === null ? group : [...group, ...banks]));
   return {
-    lengths: own.map((axis) => all.lengths[axis]!),
-    standing: own.map((axis) => all.standing[axis]!),
-    paths,
-    exhaustiveUpTo: all.exhaustiveUpTo,
+    lengths: own.map((axis) => lengths[axis]!),
+    standing: own.map((axis) => standing[axis]!),
+    paths: groups.map((group) => ({
+      axes: group.map(({ axis }) => axis),
+      points: cheapestPath(group.map(({ ladder }) => ladder)),
+    })),
+    exchanges,
+    exhaustiveUpTo,
   };
 }
 

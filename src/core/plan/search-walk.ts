@@ -1,6 +1,15 @@
 /** A setting: one index per axis into its list. */
 export type At = number[];
 
+/** Two axes of which one can take over reactive power from the other. */
+export interface Exchange {
+  from: number;
+  to: number;
+  /** Reactive power by setting of each. [kvar] */
+  fromKvar: number[];
+  toKvar: number[];
+}
+
 /** Axes that are priced together, and the orders in which some of them are raised together. */
 export interface WalkGround {
   /** Number of settings per axis. */
@@ -9,6 +18,8 @@ export interface WalkGround {
   standing: At;
   /** Paths over some axes, from all at their least to all at their most, each cheapest step first. */
   paths: { axes: number[]; points: At[] }[];
+  /** Pairs of axes that can stand in for one another: per setting of `from`, the setting of `to` for each change that makes up for it. */
+  exchanges: Exchange[];
   /** Price every combination when there are no more than this. */
   exhaustiveUpTo: number;
 }
@@ -40,8 +51,8 @@ const TOGETHER = 3;
  *
  * Bills are jagged in the settings (ratchets, cliffs, steps), so no slope is used. Where the combinations are few all are priced. Else:
  * a coarse grid over the paths; from its best points, far from one another, and from the standing setting a descent by coarse lines
- * along each axis; the best is then polished: whole lines along each axis and each path, and all neighbours two settings away, two axes
- * at a time where there are many, until nothing is cheaper. Equal costs keep the setting met first, so the same input walks the same way.
+ * along each axis; the best is then polished: whole lines along each axis and each path, whole lines along which one axis makes up for
+ * another (the floor of a valley), and all neighbours two settings away, two axes at a time where there are many, until nothing is cheaper. Equal costs keep the setting met first, so the same input walks the same way.
  */
 export function* walk(ground: WalkGround): Walk {
   const { lengths, standing, paths, exhaustiveUpTo } = ground;
@@ -135,9 +146,23 @@ function* polish(ground: WalkGround, start: Priced): Generator<At[], void, numbe
       best = yield* bestOf(line, best.at, best.cost);
     }
     if (best.cost < before) continue;
+    for (const exchange of ground.exchanges) {
+      best = yield* bestOf(exchangeLine(exchange, best.at), best.at, best.cost);
+    }
+    if (best.cost < before) continue;
     best = yield* bestOf(neighbours(best.at, lengths), best.at, best.cost);
     if (!(best.cost < before)) return;
   }
+}
+
+/** One axis over all its settings, the other making up for each change as nearly as its steps allow. */
+function exchangeLine({ from, to, fromKvar, toKvar }: Exchange, at: At): At[] {
+  const together = fromKvar[at[from]!]! + toKvar[at[to]!]!;
+  return fromKvar.map((kvar, k) => {
+    const gap = (own: number) => Math.abs(toKvar[own]! - (together - kvar));
+    const nearest = toKvar.reduce((best, _, own) => (gap(own) < gap(best) ? own : best), 0);
+    return moved(moved(at, from, k), to, nearest);
+  });
 }
 
 /** Settings up to two away: in all axes together where they are few, else in two axes at a time. */

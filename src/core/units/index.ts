@@ -1,3 +1,3 @@
 export { decimalsOf, roundToStep, type RoundingMode, type Rounding } from './rounding';
 export { minorUnitDecimals, roundToMinorUnit, toMinorUnits, fromMinorUnits } from './currency';
-export { wordNumber, wordMoney } from './wording';
+export { wordNumber, wordMoney, wordOrdinal } from './wording';

@@ -29,3 +29,9 @@ function withCommas(text: string): string {
   const digits = fraction === undefined ? grouped : `${grouped}.${fraction}`;
   return /^-[0.,]*$/.test(digits) ? digits.slice(1) : digits;
 }
+
+/** A whole number as a rank: 3rd, 5th, 11th, 13th, 21st. */
+export function wordOrdinal(count: number): string {
+  const teens = count % 100 >= 11 && count % 100 <= 13;
+  return `${count}${(!teens && { 1: 'st', 2: 'nd', 3: 'rd' }[count % 10]) || 'th'}`;
+}

@@ -1,12 +1,14 @@
 import {
   assumedSensitivity,
   capability,
+  capabilityOverBand,
   DEFAULT_PULL_OUT_MARGIN,
   operatingPoint,
   panelCurrentA,
   ratedCurrentA,
   ratedKva,
   type AssumedSwing,
+  type Capability,
   type CompletedMotor,
   type LimitsBeside,
   type SynchronousMotor,
@@ -114,10 +116,9 @@ export function presentMotor(
   const machine = completed.motor;
   const { usualShaftKw: shaftKw, hoursRunning, hours } = load;
   const today = operatingPoint(machine, { shaftKw, fieldCurrentA: row.fieldTodayA });
-  const most = capability(machine, { shaftKw });
+  const most = mostOf(machine, shaftKw, completed.voltageBandPu);
   const { version, fieldReadAt: _readAt, ...stored } = storedMotor(row, machine);
   const limits = limitsOf(machine, completed);
-  const band = completed.voltageBandPu;
   return {
     ...stored,
     id: row.id,
@@ -146,15 +147,24 @@ export function presentMotor(
     pullOutToday: today.pullOutRatio,
     armatureTodayA: today.lineCurrentA,
     capability: most,
-    band: band
-      ? {
-          low: capability(machine, { shaftKw, voltagePu: band.low }),
-          high: capability(machine, { shaftKw, voltagePu: band.high }),
-        }
-      : null,
+    band: presentBand(machine, shaftKw, completed.voltageBandPu),
     limits,
     wattsPerKvar: wattsPerKvar(machine, shaftKw, today, most.fieldCurrentA),
   };
+}
+
+/** The most a motor may deliver: at rated voltage, or what both ends of its voltage band admit. */
+function mostOf(machine: SynchronousMotor, shaftKw: number, voltageBandPu: LimitsBeside['voltageBandPu']): Capability {
+  if (!voltageBandPu) return capability(machine, { shaftKw });
+  const { kvarDelivered, fieldCurrentA, binding } = capabilityOverBand(machine, { shaftKw, voltageBandPu });
+  return { kvarDelivered, fieldCurrentA, binding };
+}
+
+/** The most at both ends of a voltage band. */
+function presentBand(machine: SynchronousMotor, shaftKw: number, band: LimitsBeside['voltageBandPu']): MotorView['band'] {
+  if (!band) return null;
+  const at = (voltagePu: number) => ({ voltagePu, ...capability(machine, { shaftKw, voltagePu }) });
+  return { low: at(band.low), high: at(band.high) };
 }
 
 /** What today's setting breaks that no plan may break. */

@@ -11,6 +11,7 @@ import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
 import { constantFieldA } from '../../schemas/plan-settings';
 import type { PricedYear } from '../../schemas/pricing';
 import { formatNumber } from '../../components/ui/format';
+import { settingValueWords } from '../../components/ui/setting-words';
 import { fromMinorUnits } from '../../core/units';
 import { Intake } from '../models/Intake';
 import { Practice } from '../models/Practice';
@@ -113,7 +114,8 @@ function editionMotors(plan: PlanView, motors: MotorView[]): EditionMotor[] {
       drives: motor.drives,
       rated: `${formatNumber(motor.plate.output, { upTo: 1 })} ${motor.plate.outputUnit}, ${formatNumber(motor.plate.voltageV)} V, ${formatNumber(motor.plate.powerFactor, { decimals: 2 })} leading`,
       fieldTodayA: motor.fieldTodayA,
-      fieldPlanA: (field && constantFieldA(field)) ?? motor.fieldTodayA,
+      fieldPlanA: planned.fieldPlanA,
+      ...(field && constantFieldA(field) === null ? { setting: settingValueWords(field, plan.spans) } : {}),
       fieldLimitA: planned.fieldLimitA,
       fieldRatedA: motor.machine.ratedFieldCurrentA,
       armatureTodayA: planned.armatureTodayA,

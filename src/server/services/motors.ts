@@ -4,6 +4,7 @@ import {
   operatingPoint,
   panelCurrentA,
   PullOutError,
+  type CompletedMotor,
   type SynchronousMotor,
 } from '../../core/machine';
 import { wordNumber } from '../../core/units';
@@ -19,7 +20,8 @@ import { limitsOf, presentMotor, storedMotor } from '../presenters/motor';
 import { motorSettings } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { completePlate, machineOrThrow } from './nameplates';
-import { loadHoursOf, ruleLoadKw } from './shaft-load';
+import { forgetLoad, loadSourcesOf } from './load-sources';
+import { loadHoursOf, ruleLoadKw, type LoadSource } from './shaft-load';
 
 /** A motor's row opened by somebody who works on its engagement. */
 export interface OpenMotor {
@@ -33,7 +35,17 @@ export const listMotors = (engagementId: number) =>
 
 /** The motors with their present state and what they may give. */
 export async function motorsOf(opened: OpenEngagement): Promise<MotorView[]> {
-  return (await listMotors(opened.engagement.id)).map((motor) => viewOf(motor, opened));
+  return (await motorsWithLoads(opened)).map(({ view }) => view);
+}
+
+/** The same with what tells each one's load. */
+export async function motorsWithLoads(opened: OpenEngagement): Promise<{ view: MotorView; source: LoadSource }[]> {
+  const motors = await listMotors(opened.engagement.id);
+  const sources = await loadSourcesOf(motors);
+  return motors.map((motor, index) => {
+    const source = sources[index]!;
+    return { view: viewOf(motor, opened, source), source };
+  });
 }
 
 /**
@@ -60,7 +72,7 @@ export async function createMotor(opened: OpenEngagement, input: MotorInput): Pr
     const position = await Motor.count({ where: { engagementId } });
     return Motor.create({ ...values, engagementId, position });
   });
-  return viewOf(motor, opened);
+  return viewWithSource(motor, opened);
 }
 
 /**
@@ -70,13 +82,14 @@ export async function createMotor(opened: OpenEngagement, input: MotorInput): Pr
  */
 export async function changeMotor({ motor, opened }: OpenMotor, input: MotorChangeInput): Promise<MotorView> {
   const values = { ...checkedValues(input), meterId: meterFor(opened, input.meterId ?? motor.meterId) };
+  await refuseBelowProfile(motor, input, values.fieldTodayA);
   const { version, ...mine } = input;
   await inTx(async () => {
     await refuseSameName(motor.engagementId, input.name, motor.id);
     await refuseStale(motor, version, mine);
     await motor.update(values);
   });
-  return viewOf(motor, opened);
+  return viewWithSource(motor, opened);
 }
 
 /**
@@ -93,6 +106,7 @@ export async function removeMotor({ motor }: OpenMotor, { version }: { version: 
       const named = setting.map((plan) => plan.name).join(', ');
       throw conflict(`${motor.name} is set by ${named}. Take it out of the plan first, or remove the plan.`);
     }
+    await forgetLoad(motor.id);
     await motor.destroy();
   });
 }
@@ -168,8 +182,23 @@ function refuseField(machine: SynchronousMotor, input: MotorInput, fieldA: numbe
   if (Object.keys(fields).length > 0) throw invalid('Load and field current of today cannot both be right.', fields);
 }
 
+/** Refuses a field that cannot hold the loads of a profile. A submeter's loads are those that the field held. */
+async function refuseBelowProfile(motor: Motor, { name, plate }: MotorInput, fieldTodayA: number): Promise<void> {
+  const [source] = await loadSourcesOf([motor]);
+  if (source?.kind !== 'profile') return;
+  const machine = machineOrThrow(plate);
+  const highestKw = Math.max(...source.calendar.rules.map((rule) => ruleLoadKw(rule, machine.ratedOutputKw)));
+  const fault = cannotHold(machine, highestKw, fieldTodayA);
+  if (fault === null) return;
+  throw invalid('Load and field current of today cannot both be right.', {
+    fieldTodayA: [
+      `At ${fieldWords(machine, fieldTodayA)} ${name} ${fault}, and its profile reaches ${wordNumber(highestKw, 1)} kW. Read the ammeter at that load again, or correct the profile.`,
+    ],
+  });
+}
+
 /** Why a field current cannot hold a load; null where it can. */
-function cannotHold(machine: SynchronousMotor, shaftKw: number, fieldCurrentA: number): string | null {
+export function cannotHold(machine: SynchronousMotor, shaftKw: number, fieldCurrentA: number): string | null {
   try {
     operatingPoint(machine, { shaftKw, fieldCurrentA });
     return null;
@@ -191,18 +220,33 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
   }
 }
 
-/** What a stored motor is to the calculations: its machine, its loads over the year. */
-export function loadOf(motor: Motor, machine: SynchronousMotor, opened: OpenEngagement) {
-  const { yearFrom, yearTo } = opened.engagement;
-  const { calendar } = motor;
-  const hours = loadHoursOf(calendar, machine.ratedOutputKw, { from: yearFrom, to: yearTo });
-  const usualShaftKw = hours[0]?.shaftKw ?? ruleLoadKw(calendar.rules[0]!, machine.ratedOutputKw);
+/** What a stored motor is to the calculations: its loads over the year. */
+export function loadOf(motor: Motor, machine: SynchronousMotor, opened: OpenEngagement, source: LoadSource) {
+  const { yearFrom: from, yearTo: to } = opened.engagement;
+  const running = { ...source, machine, fieldTodayA: motor.fieldTodayA };
+  const hours = loadHoursOf(running, { from, to, timeZone: opened.site.timeZone });
+  const usualShaftKw = hours[0]?.shaftKw ?? ruleLoadKw(motor.calendar.rules[0]!, machine.ratedOutputKw);
   return { usualShaftKw, hoursRunning: hours.reduce((sum, one) => sum + one.hours, 0), hours };
 }
 
-function viewOf(motor: Motor, opened: OpenEngagement): MotorView {
-  const completed = completePlate(motor.plate);
-  const { motor: machine } = completed;
-  if (!machine) throw conflict(`The plate of ${motor.name} can no longer be read. Open it at the station Motors.`);
-  return presentMotor(motor, { ...completed, motor: machine }, loadOf(motor, machine, opened));
+/**
+ * The machine of a stored motor with what was assumed.
+ *
+ * @throws {ServiceError} 409 where its plate can no longer be read
+ */
+export function completedOf({ name, plate }: Motor): CompletedMotor & { motor: SynchronousMotor } {
+  const completed = completePlate(plate);
+  const { motor } = completed;
+  if (!motor) throw conflict(`The plate of ${name} can no longer be read. Open it at the station Motors.`);
+  return { ...completed, motor };
+}
+
+function viewOf(motor: Motor, opened: OpenEngagement, source: LoadSource): MotorView {
+  const completed = completedOf(motor);
+  return presentMotor(motor, completed, loadOf(motor, completed.motor, opened, source));
+}
+
+async function viewWithSource(motor: Motor, opened: OpenEngagement): Promise<MotorView> {
+  const [source] = await loadSourcesOf([motor]);
+  return viewOf(motor, opened, source!);
 }

@@ -7,8 +7,8 @@ import { calculateYear } from '../workers/pool';
 import { actKey } from './plan-acts';
 import type { TaskAct, TaskBasis, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
-import { listMotors } from './motors';
-import { completePlate } from './nameplates';
+import { loadSourcesOf, type StoredSource } from './load-sources';
+import { completedOf, listMotors } from './motors';
 import { pricingInputs, type PricingInputs } from './pricing';
 import { supplyForTask, supplyOf } from './supplies';
 
@@ -17,6 +17,8 @@ export interface PlanMotor {
   row: Motor;
   machine: SynchronousMotor;
   completed: CompletedMotor;
+  /** What tells its shaft load. */
+  source: StoredSource;
 }
 
 /** Everything a plan of an engagement is priced from. */
@@ -29,12 +31,13 @@ export interface PlanBasis {
   fingerprint: string;
 }
 
-/** Motors of an engagement with their machines. */
+/** Motors of an engagement with their machines, and what tells their loads. */
 export async function planMotors(engagementId: number): Promise<PlanMotor[]> {
-  return (await listMotors(engagementId)).map((row) => {
-    const completed = completePlate(row.plate);
-    if (!completed.motor) throw conflict(`The plate of ${row.name} cannot be read. Open it at the station Motors.`);
-    return { row, machine: completed.motor, completed };
+  const rows = await listMotors(engagementId);
+  const sources = await loadSourcesOf(rows);
+  return rows.map((row, index) => {
+    const completed = completedOf(row);
+    return { row, machine: completed.motor, completed, source: sources[index]! };
   });
 }
 
@@ -60,11 +63,12 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
     load,
     meters,
     ...supplyForTask(supply),
-    motors: motors.map(({ row, machine, completed }) => ({
+    motors: motors.map(({ row, machine, completed, source }) => ({
       id: row.id,
       name: row.name,
       machine,
-      calendar: row.calendar,
+      calendar: source.calendar,
+      metered: source.metered,
       fieldTodayA: row.fieldTodayA,
       leastFieldA: completed.leastFieldA,
       voltageBandPu: completed.voltageBandPu,
@@ -74,7 +78,7 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
       ),
     })),
   };
-  const ofMotors = motors.map(({ row }) => [row.id, row.version, row.updatedAt.getTime()]);
+  const ofMotors = motors.map(({ row, source }) => [row.id, row.version, row.updatedAt.getTime(), source.key]);
   const fingerprint = createHash('sha256')
     .update(JSON.stringify([pricing.dataKey, ofMotors, supply]))
     .digest('hex');

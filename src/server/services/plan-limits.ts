@@ -1,16 +1,12 @@
-import { localDateStartMs } from '../../core/load';
-import { settingFault, shaftLoadSeries, spanSeries, type LimitedMotor } from '../../core/plan';
+import { settingFault, spanSeries, type LimitedMotor } from '../../core/plan';
 import type { FieldControl } from '../../core/machine';
-import type { CalendarInput } from '../../schemas/motor';
 import { controlsOf, type MotorSetting } from '../../schemas/plan-settings';
 import { spanNames, type SpanSet } from '../../schemas/plan-spans';
 import type { SpanRules } from './plan-spans';
-import { loadHoursOf, toShiftCalendar } from './shaft-load';
+import { gatheredHours, gridOf, loadHoursOf, shaftLoadOf, type RunningMotor } from './shaft-load';
 
 /** A motor with the loads its settings must hold. */
-export interface LoadedLimits extends LimitedMotor {
-  calendar: CalendarInput;
-}
+export type LoadedLimits = LimitedMotor & RunningMotor;
 
 /** The year and its parts that settings are checked over. */
 export interface LimitYear {
@@ -28,21 +24,18 @@ export interface SettingFault {
   words: string;
 }
 
-const stepMinutes = 15;
-
 /** Distinct shaft loads of every span, in the plan's order. [kW] */
-function loadsBySpan({ calendar, machine }: LoadedLimits, year: LimitYear): number[][] {
-  const { from, to, timeZone, rules, set } = year;
-  if (!rules) return [loadHoursOf(calendar, machine.ratedOutputKw, { from, to }).map(({ shaftKw }) => shaftKw)];
-  const startMs = localDateStartMs(from, timeZone);
-  const count = Math.round((localDateStartMs(to, timeZone) - startMs) / (stepMinutes * 60_000));
-  const grid = { startMs, stepMinutes, count };
+function loadsBySpan(motor: LoadedLimits, year: LimitYear): number[][] {
+  const { timeZone, rules, set } = year;
+  if (!rules) return [loadHoursOf(motor, year).map(({ shaftKw }) => shaftKw)];
+  const grid = gridOf(year);
   const { index } = spanSeries(rules.rules, grid, timeZone);
-  const found = spanNames(set).map(() => new Set<number>());
-  shaftLoadSeries(toShiftCalendar(calendar, machine.ratedOutputKw), grid, timeZone).forEach((shaftKw, i) => {
-    if (shaftKw > 0) found[rules.of[index[i]!]!]?.add(shaftKw);
+  const { shaftKw } = shaftLoadOf(motor, grid, timeZone);
+  return spanNames(set).map((_, span) => {
+    const inSpan = shaftKw.filter((_kw, i) => rules.of[index[i]!] === span);
+    const loads = motor.metered ? gatheredHours(inSpan, motor.machine.ratedOutputKw).map((one) => one.shaftKw) : inSpan;
+    return [...new Set(loads)].filter((kw) => kw > 0).sort((a, b) => b - a);
   });
-  return found.map((loads) => [...loads].sort((a, b) => b - a));
 }
 
 /** What a motor may not be set to, span by span; a control for all spans is checked at the loads of each. */

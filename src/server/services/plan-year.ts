@@ -1,33 +1,21 @@
 import { formatBillName } from '../../components/ui/format';
 import { dayNumber } from '../../core/load';
 import { wordNumber } from '../../core/units';
-import { formatPayback } from '../../components/ui/format';
-import type { CostPart, Missing, PlanView, UnpricedPlan, YearView } from '../../schemas/plan';
-import { planDefaults, type PlanEconomics } from '../../schemas/plan-money';
-import { constantFieldA } from '../../schemas/plan-settings';
-import { wholeYear } from '../../schemas/plan-spans';
+import type { Missing, UnpricedPlan, YearView } from '../../schemas/plan';
 import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
-import { limitsOf, presentAssumed } from '../presenters/motor';
-import {
-  nearestLimitWords,
-  presentBank,
-  presentPlan,
-  presentPlanField,
-  presentPlanMotor,
-  presentPricedBill,
-} from '../presenters/plan';
-import { banksOf, costPartsOf, motorSettings, storedPlan } from '../presenters/plan-row';
+import { limitsOf } from '../presenters/motor';
+import { motorSettings } from '../presenters/plan-row';
 import type { TaskSetting } from '../workers/tasks';
 import { notesOfBills } from './bill-notes';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { actOf, standingAct } from './plan-acts';
-import { planBasis, priceSettings, type PlanBasis, type PlanMotor } from './plan-basis';
-import { appraisePlan, noCashFlow, planCashFlow, savingOf } from './plan-economics';
+import { planBasis, priceSettings, type PlanBasis } from './plan-basis';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
+import { unpricedOf, viewOf, type LoadedMotor, type YearParts } from './plan-view';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -41,16 +29,6 @@ export async function missingForPlans(opened: OpenEngagement): Promise<Missing |
   }
 }
 
-/** A motor with its load, as the views need it. */
-type LoadedMotor = PlanMotor & { load: ReturnType<typeof loadOf> };
-
-interface Year {
-  opened: OpenEngagement;
-  basis: PlanBasis;
-  motors: LoadedMotor[];
-  standing: TaskSetting;
-}
-
 /**
  * The year of an engagement: standing, its plans, the chosen one, every bill priced.
  *
@@ -58,14 +36,14 @@ interface Year {
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened) }));
+  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
     standingAct,
     ...priceable.map((row) => actOf(row, opened, spanYearOf(basis))),
   ])) as [TaskSetting, ...TaskSetting[]];
-  const year: Year = { opened, basis, motors, standing };
+  const year: YearParts = { opened, basis, motors, standing };
   const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
   return {
     currency: basis.pricing.schedule.currency,
@@ -121,9 +99,9 @@ function faultOf(row: Plan, motors: LoadedMotor[], basis: PlanBasis, opened: Ope
   for (const setting of motorSettings(row)) {
     const motor = motors.find((one) => one.row.id === setting.motorId);
     if (!motor) return 'It sets a motor that is no longer there.';
-    const { name, calendar } = motor.row;
+    const { name, fieldTodayA } = motor.row;
     const limits = limitsOf(motor.machine, motor.completed);
-    const words = storedFault({ name, machine: motor.machine, limits, calendar }, setting, year);
+    const words = storedFault({ name, machine: motor.machine, limits, fieldTodayA, ...motor.source }, setting, year);
     if (words) return words;
   }
   return null;
@@ -138,73 +116,3 @@ function attemptSync<Result>(work: () => Result): { result: Result; fault: null 
     return { result: null, fault: error.message };
   }
 }
-
-const motorFacts = ({ row, machine, load }: LoadedMotor) => ({
-  id: row.id,
-  name: row.name,
-  machine,
-  fieldTodayA: row.fieldTodayA,
-  usualShaftKw: load.usualShaftKw,
-});
-
-function unpricedOf(row: Plan, reason: string, motors: LoadedMotor[]): UnpricedPlan {
-  const fields = motorSettings(row).flatMap((setting) => {
-    const motor = motors.find((one) => one.row.id === setting.motorId);
-    return motor ? presentPlanField(motorFacts(motor), setting) : [];
-  });
-  const { id, version, name, chosen, spans } = row;
-  return { id, version, name, chosen, spans, fields, reason };
-}
-
-const atRest: { costParts: CostPart[]; yearlyUpkeep: number; economics: PlanEconomics } = {
-  costParts: [],
-  yearlyUpkeep: 0,
-  economics: { ...planDefaults },
-};
-
-function viewOf(year: Year, row: Plan | null, setting: TaskSetting): PlanView {
-  const { basis, motors, standing } = year;
-  const { currency } = basis.pricing.schedule;
-  const settings = row ? motorSettings(row) : [];
-  const settingOf = (motor: LoadedMotor) => settings.find((one) => one.motorId === motor.row.id);
-  const bills = setting.bills.map(presentPricedBill);
-  const before = standing.bills.map(presentPricedBill);
-  const { costParts, yearlyUpkeep, economics } = row
-    ? { ...storedPlan(row, currency), costParts: costPartsOf(row, currency) }
-    : atRest;
-  const capitalCost = costParts.reduce((sum, { amount }) => sum + amount, 0);
-  const money = { ...savingOf(before, bills), capitalCost, yearlyUpkeep, economics };
-  const appraisal = appraisePlan(money);
-  const views = motors.map((motor) => {
-    const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
-    const own = settingOf(motor);
-    const fieldA = own && constantFieldA(own);
-    return presentPlanMotor(motorFacts(motor), fieldA ?? motor.row.fieldTodayA, figures);
-  });
-  const search = row?.search ?? null;
-  return presentPlan({
-    plan: row,
-    currency,
-    spans: row?.spans ?? wholeYear,
-    fields: motors.map((motor) => presentPlanField(motorFacts(motor), settingOf(motor))),
-    banks: row ? banksOf(row, currency).map((bank) => presentBank(bank, null)) : [],
-    replacements: [],
-    bills,
-    standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
-    money: { capitalCost, costParts, yearlyUpkeep, economics },
-    appraisal,
-    paybackWords: formatPayback(appraisal.simplePaybackYears),
-    ...(row ? planCashFlow(money) : noCashFlow),
-    motors: views,
-    hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },
-    voltage: null,
-    nearestLimit: nearestLimitWords(views),
-    worstPf: setting.worstPf && { ...setting.worstPf, bill: bills[setting.worstPf.bill]?.to ?? '' },
-    assumed: motors.flatMap(({ row: motor, completed, load }) => presentAssumed(motor, completed, load.usualShaftKw)),
-    search,
-    stale: search && search.fingerprint !== basis.fingerprint ? [staleWords] : [],
-  });
-}
-
-const staleWords =
-  'Motors, bills, readings or tariff were changed after the search. The plan is priced afresh, but its settings may no longer be the best: search again.';

@@ -13,7 +13,7 @@ import { Plan } from '../models/Plan';
 import type { Actor } from '../policies/actor';
 import { actionsOf, presentPlanRow, storedPlan } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
-import { motorsOf } from './motors';
+import { motorsWithLoads } from './motors';
 import { settingFaults, type LimitYear } from './plan-limits';
 import { spanRules } from './plan-spans';
 import { pricingInputs } from './pricing';
@@ -118,17 +118,17 @@ async function checkedValues(opened: OpenEngagement, input: PlanInput) {
 
 /** Refuses settings of unknown motors, twice the same motor, and every setting beyond a limit at a load of its span. */
 async function refuseBeyondLimits(opened: OpenEngagement, input: PlanInput): Promise<void> {
-  const motors = await motorsOf(opened);
+  const motors = await motorsWithLoads(opened);
   const year = await limitYear(opened, input.spans);
   const fields: FieldErrors = {};
   const seen = new Set<number>();
   input.fields.forEach((setting, index) => {
     const { motorId } = setting;
-    const motor = motors.find((one) => one.id === motorId);
-    const refused = refusedMotor(motor, seen.has(motorId));
+    const motor = motors.find(({ view }) => view.id === motorId);
+    const refused = refusedMotor(motor?.view, seen.has(motorId));
     if (refused) fields[`fields.${index}.fieldA`] = [refused];
     else if (motor) {
-      for (const { span, words } of settingFaults(motor, controlsOf(setting), year))
+      for (const { span, words } of settingFaults({ ...motor.view, ...motor.source }, controlsOf(setting), year))
         fields[faultPath(index, setting, span)] = [words];
     }
     seen.add(motorId);

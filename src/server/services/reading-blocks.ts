@@ -1,5 +1,5 @@
 import { Op } from 'sequelize';
-import { emptyLoad, type LoadLayer, type LoadSeries } from '../../core/load';
+import { emptyLoad, type LoadGrid, type LoadLayer, type LoadSeries } from '../../core/load';
 import type { OverlapChoice } from '../../schemas/intake';
 import { ReadingBlock, type ReadingChannel } from '../models/ReadingBlock';
 
@@ -13,15 +13,15 @@ interface Slice {
   count: number;
 }
 
-/** Cuts a series at the UTC months. */
-function slices(load: LoadSeries): Slice[] {
-  const stepMs = load.stepMinutes * minuteMs;
+/** Cuts a grid at the UTC months. */
+export function monthSlices({ startMs, stepMinutes, count }: LoadGrid): Slice[] {
+  const stepMs = stepMinutes * minuteMs;
   const parts: Slice[] = [];
   let first = 0;
-  while (first < load.kwh.length) {
-    const begins = new Date(load.startMs + first * stepMs);
+  while (first < count) {
+    const begins = new Date(startMs + first * stepMs);
     const nextMonth = Date.UTC(begins.getUTCFullYear(), begins.getUTCMonth() + 1, 1);
-    const end = Math.min(load.kwh.length, Math.ceil((nextMonth - load.startMs) / stepMs));
+    const end = Math.min(count, Math.ceil((nextMonth - startMs) / stepMs));
     parts.push({ month: begins.toISOString().slice(0, 7), first, count: end - first });
     first = end;
   }
@@ -71,7 +71,7 @@ export async function keepSeries(
   overlap: OverlapChoice = 'keep-new',
 ): Promise<void> {
   const rank = await rankOf(meterId, overlap);
-  for (const slice of slices(load)) {
+  for (const slice of monthSlices({ ...load, count: load.kwh.length })) {
     const missing = load.quality.subarray(slice.first, slice.first + slice.count).filter((mark) => mark === 2).length;
     for (const channel of allChannels) {
       await ReadingBlock.create({

@@ -1,6 +1,31 @@
-import { addDays, dayNumber, isoDate, weekdayOf } from '../../core/load';
-import type { DayKind, ShiftCalendar } from '../../core/plan';
-import { dayNames, type CalendarInput, type LoadRule } from '../../schemas/motor';
+import { addDays, dayNumber, isoDate, localDateStartMs, weekdayOf } from '../../core/load';
+import type { SynchronousMotor } from '../../core/machine';
+import {
+  laidPowerOn,
+  shaftLoadFromSubmeter,
+  shaftLoadSeries,
+  type DayKind,
+  type Grid,
+  type PowerSeries,
+  type ShiftCalendar,
+  type SubmeterLoad,
+} from '../../core/plan';
+import { dayNames, type CalendarInput, type DayName, type LoadRule } from '../../schemas/motor';
+import type { GapLoad, ProfileInput } from '../../schemas/shaft-load';
+
+/** What tells a motor's shaft load. */
+export interface LoadSource {
+  /** Rules of the week: the shift calendar's, or a profile's. */
+  calendar: CalendarInput;
+  /** What a submeter read; without it the rules tell all. */
+  metered?: { series: PowerSeries[]; whenMissing: GapLoad } | null;
+}
+
+/** A motor with what tells its load, and the field that its losses hang on. */
+export interface RunningMotor extends LoadSource {
+  machine: SynchronousMotor;
+  fieldTodayA: number;
+}
 
 /** Shaft power of a rule's load. [kW] */
 export const ruleLoadKw = (rule: LoadRule, ratedOutputKw: number) =>
@@ -29,12 +54,8 @@ function weekOf({ rules }: CalendarInput): (LoadRule | null)[] {
   return week;
 }
 
-/** Hours of [from, to) at each load, most hours first, by the clock: the odd hour of a clock change is not counted. */
-export function loadHoursOf(
-  calendar: CalendarInput,
-  ratedOutputKw: number,
-  year: { from: string; to: string },
-): LoadHours[] {
+/** Hours of [from, to) at each load of the rules, most hours first, by the clock: the odd hour of a clock change is not counted. */
+function hoursOfRules(calendar: CalendarInput, ratedOutputKw: number, year: { from: string; to: string }): LoadHours[] {
   const week = weekOf(calendar);
   const steps = new Map<number, number>();
   for (let day = dayNumber(year.from); day < dayNumber(year.to); day += 1) {
@@ -64,5 +85,95 @@ export function toShiftCalendar(calendar: CalendarInput, ratedOutputKw: number):
       shaftKw: ruleLoadKw(rule, ratedOutputKw),
     })),
     shutdowns: calendar.shutdowns.map(({ from, lastDay }) => ({ from, to: addDays(lastDay, 1) })),
+  };
+}
+
+/**
+ * Shaft load of a motor in every interval of a grid: of what its submeter read less its losses, or by its rules.
+ *
+ * Where the submeter has no reading the rules hold, or standstill, as was chosen; such intervals are counted.
+ */
+export function shaftLoadOf(motor: RunningMotor, grid: Grid, timeZone: string): SubmeterLoad {
+  const { machine, calendar, metered, fieldTodayA } = motor;
+  const byRules = () => shaftLoadSeries(toShiftCalendar(calendar, machine.ratedOutputKw), grid, timeZone);
+  if (!metered) return { shaftKw: byRules(), missing: 0, beyondPullOut: 0 };
+  return shaftLoadFromSubmeter(machine, {
+    inputKw: laidPowerOn(metered.series, grid),
+    fieldCurrentA: fieldTodayA,
+    whenMissing: metered.whenMissing === 'calendar' ? byRules() : undefined,
+  });
+}
+
+/** A year by local days, [from, to). */
+export interface LoadYear {
+  from: string;
+  to: string;
+  timeZone: string;
+}
+
+/** Steps of the year's grid: those of pricing in most places. */
+const yearStepMinutes = 15;
+
+/** The intervals of a year of local days. */
+export function gridOf({ from, to, timeZone }: LoadYear): Grid {
+  const startMs = localDateStartMs(from, timeZone);
+  const count = Math.round((localDateStartMs(to, timeZone) - startMs) / (yearStepMinutes * 60_000));
+  return { startMs, stepMinutes: yearStepMinutes, count };
+}
+
+/** Loads of a submeter are gathered in steps of this share of rated output. */
+const binShare = 0.01;
+
+/**
+ * Hours of the year at each shaft load, most hours first; standstill is not among them. The many loads of a submeter are gathered:
+ * each entry stands for the mean of its loads, and the highest and lowest of all have entries of their own.
+ */
+export function loadHoursOf(motor: RunningMotor, year: LoadYear): LoadHours[] {
+  if (!motor.metered) return hoursOfRules(motor.calendar, motor.machine.ratedOutputKw, year);
+  return gatheredHours(shaftLoadOf(motor, gridOf(year), year.timeZone).shaftKw, motor.machine.ratedOutputKw);
+}
+
+/** Hours of a series at each load, gathered. */
+export function gatheredHours(shaftKw: Float64Array, ratedOutputKw: number): LoadHours[] {
+  const bins = new Map<number, { sum: number; count: number }>();
+  let highest = 0;
+  let lowest = Infinity;
+  for (const kw of shaftKw) {
+    if (kw <= 0) continue;
+    const at = Math.floor(kw / (binShare * ratedOutputKw));
+    const bin = bins.get(at) ?? { sum: 0, count: 0 };
+    bins.set(at, { sum: bin.sum + kw, count: bin.count + 1 });
+    highest = Math.max(highest, kw);
+    lowest = Math.min(lowest, kw);
+  }
+  const gathered = [...bins.values()].map(({ sum, count }) => ({
+    shaftKw: Math.min(highest, Math.max(lowest, sum / count)),
+    hours: (count * yearStepMinutes) / 60,
+  }));
+  const missing = bins.size === 0 ? [] : [...new Set([highest, lowest])];
+  const ends = missing.filter((kw) => !gathered.some((one) => one.shaftKw === kw));
+  return [...gathered, ...ends.map((kw) => ({ shaftKw: kw, hours: 0 }))].sort(
+    (a, b) => b.hours - a.hours || b.shaftKw - a.shaftKw,
+  );
+}
+
+const weekdays: DayName[] = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri'];
+
+/** A profile as rules of the week, with the shutdowns of the calendar: hours of one load that follow each other are one rule. */
+export function calendarOfProfile(profile: ProfileInput, { shutdowns }: CalendarInput): CalendarInput {
+  const rulesOf = (days: DayName[], loads: number[]) => {
+    const starts = loads.flatMap((load, hour) => (hour === 0 || load !== loads[hour - 1] ? [hour] : []));
+    return starts.map((fromHour, k) => ({
+      days,
+      fromHour,
+      toHour: starts[k + 1] ?? 24,
+      load: loads[fromHour]!,
+      unit: profile.unit,
+    }));
+  };
+  const { weekday, saturday, sunday } = profile;
+  return {
+    rules: [...rulesOf(weekdays, weekday), ...rulesOf(['Sat'], saturday), ...rulesOf(['Sun'], sunday)],
+    shutdowns,
   };
 }

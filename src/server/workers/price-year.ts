@@ -2,8 +2,7 @@ import { localDateStartMs, type LoadSeries } from '../../core/load';
 import { shaftLoadSeries, simulatePlan, spanSeries } from '../../core/plan';
 import type { FixedSetup, Grid, PlanMotor, PlanSetup, Plant, Spans } from '../../core/plan';
 import { compilePricing, readSchedule, type CompiledPricing, type Schedule } from '../../core/tariff';
-import type { CalendarInput } from '../../schemas/motor';
-import { toShiftCalendar } from '../services/shaft-load';
+import { shaftLoadOf, toShiftCalendar } from '../services/shaft-load';
 import type { TaskAct, TaskBasis, TaskSetting, YearTask } from './tasks';
 
 /** A task made ready: the plant on the readings' own intervals, the schedule laid out over them. */
@@ -15,14 +14,14 @@ export interface ReadyYear {
   pricing: CompiledPricing;
 }
 
-/** Reads the schedule and lays calendars and schedule over the readings. */
+/** Reads the schedule and lays shaft loads and schedule over the readings. */
 export function readyYear(basis: TaskBasis): ReadyYear {
   const { load, meters, periods, contract, history, given, upstream, supply } = basis;
   const grid = { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length };
-  const motors = basis.motors.map(({ calendar, machine, fieldTodayA, behind, ...limits }): PlanMotor => {
-    const { voltagePu, leastFieldA, voltageBandPu } = limits;
-    const shaftKw = shaftKwOf(basis, grid, calendar, machine.ratedOutputKw);
-    return { motor: machine, shaftKw, standingFieldA: fieldTodayA, behind, voltagePu, leastFieldA, voltageBandPu };
+  const motors = basis.motors.map((motor): PlanMotor => {
+    const { machine, fieldTodayA: standingFieldA, behind, voltagePu, leastFieldA, voltageBandPu } = motor;
+    const { shaftKw } = shaftLoadOf(motor, grid, basis.timeZone);
+    return { motor: machine, shaftKw, standingFieldA, behind, voltagePu, leastFieldA, voltageBandPu };
   });
   const options = { periods, contract, given, ...(history ? { history } : {}) };
   const schedule = readSchedule(basis.scheduleText);
@@ -34,9 +33,6 @@ export function readyYear(basis: TaskBasis): ReadyYear {
     pricing: compilePricing(schedule, grid, options),
   };
 }
-
-const shaftKwOf = ({ timeZone }: TaskBasis, grid: Grid, calendar: CalendarInput, ratedOutputKw: number) =>
-  shaftLoadSeries(toShiftCalendar(calendar, ratedOutputKw), grid, timeZone);
 
 /** The spans of an act over the readings. */
 export function spansOf({ basis, grid }: ReadyYear, rules: TaskAct['spans']): Spans | undefined {
@@ -52,7 +48,7 @@ export function fixedSetupOf(ready: ReadyYear, act: TaskAct): FixedSetup {
     replacements: (act.replacements ?? []).map(({ induction, machine, calendar, controls, behind }) => ({
       induction,
       motor: machine,
-      shaftKw: shaftKwOf(basis, grid, calendar, induction.ratedOutputKw),
+      shaftKw: shaftLoadSeries(toShiftCalendar(calendar, induction.ratedOutputKw), grid, basis.timeZone),
       controls,
       behind,
     })),

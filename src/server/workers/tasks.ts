@@ -15,13 +15,13 @@ import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
 import type { SearchView } from '../../schemas/search';
 import type { ReconcileBasis } from '../services/price-basis';
+import type { LoadSource } from '../services/shaft-load';
 
 /** A motor as the calculations see it. */
-export interface TaskMotor {
+export interface TaskMotor extends LoadSource {
   id: number;
   name: string;
   machine: SynchronousMotor;
-  calendar: CalendarInput;
   fieldTodayA: number;
   /** Position of the meter it stands behind. */
   behind: number;

@@ -9,7 +9,6 @@ import {
   reactiveRange,
 } from '../../../src/core/machine';
 import type { SynchronousMotor } from '../../../src/core/machine';
-import { voltageCase } from '../../published/machine-capability';
 import { buildLosslessMotor, buildMotor, randomMotor } from './build-motor';
 import { randomAt, tinyMotor } from './random-at';
 
@@ -126,16 +125,18 @@ describe('reactiveRange', () => {
 });
 
 describe('capabilityOverBand', () => {
-  const motor = buildLosslessMotor({ ratedPowerFactor: 0.8, xdPu: voltageCase.xdPu, xqPu: voltageCase.xqPu });
+  const motor = buildLosslessMotor({ ratedPowerFactor: 0.8, xdPu: 1, xqPu: 0.65 });
   const band = { low: 0.95, high: 1.05 };
-  const rowAt = (voltagePu: number) => voltageCase.rows.find((row) => row.voltagePu === voltagePu)!;
 
   it('is the armature at the low voltage at rated load, the field at the high one without load', () => {
+    // CAP-VDEP of the machine cases, worked apart from this code: salient 1.0/0.65 of 0.8 leading. At rated load the armature leaves 0.51235 pu
+    // at 0.95 pu of voltage (0.6 at 1, 0.68007 at 1.05) and the field 0.59712 (0.6, 0.59662); without load the field leaves 0.78743, 0.77888
+    // and 0.76532.
     const rated = capabilityOverBand(motor, { shaftKw: 800, voltageBandPu: band });
-    expect(rated.kvarDelivered! / 1000).toBeCloseTo(rowAt(0.95).armature, 5);
+    expect(rated.kvarDelivered! / 1000).toBeCloseTo(0.51235, 4);
     expect(rated).toMatchObject({ binding: 'armature', voltagePu: 0.95 });
     const idle = capabilityOverBand(motor, { shaftKw: 0, voltageBandPu: band });
-    expect(idle.kvarDelivered! / 1000).toBeCloseTo(rowAt(1.05).fieldAtNoLoad, 5);
+    expect(idle.kvarDelivered! / 1000).toBeCloseTo(0.76532, 4);
     expect(idle).toMatchObject({ binding: 'field', voltagePu: 1.05 });
   });
 

@@ -57,6 +57,12 @@ describe('a field resistance measured cold', () => {
     expect(valueOf(completed, 'fieldResistanceOhm')).toBeUndefined();
   });
 
+  it('tells at which temperature the hot resistance holds', () => {
+    expect(completeNameplate({ ...plate, temperatureRiseC: 80, ambientC: 35 }).motor!.fieldHotC).toBe(115);
+    expect(completeNameplate({ ...plate, insulationClass: 'B' }).motor!.fieldHotC).toBe(95);
+    expect(completeNameplate(plate).motor!.fieldHotC).toBeUndefined();
+  });
+
   it('counts the rise from 40 degC where the plate names no ambient', () => {
     const cold = { coldField: { resistanceOhm: 1.25, atC: 20 }, temperatureRiseC: 60 };
     // 1.25 x (234.5 + 100) / 254.5 = 1.64293

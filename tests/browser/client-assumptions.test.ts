@@ -87,7 +87,7 @@ describe('the consultant’s form', () => {
     await page.getByLabel('Operating hours from').fill('130');
     await page.getByText('What the client may move').click();
     await page.getByRole('button', { name: /^Save Plan/ }).click();
-    const fault = page.getByRole('group', { name: 'Operating hours' }).getByRole('alert');
+    const fault = page.getByRole('group', { name: 'Operating hours, range' }).getByRole('alert');
     await fault.waitFor();
     expect(await readText(fault)).toMatch(
       /The end of the range lies above its beginning|The range holds the plan’s own 100/,

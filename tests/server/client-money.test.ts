@@ -36,7 +36,7 @@ describe('what the client may move', () => {
     expect(editionRanking(base)).toBeNull();
     expect(fixedRows(old, 'USD').map(({ label, value }) => [label, plain(value)])).toEqual([
       ['Rise of power prices', '0.0 % a year'],
-      ['Work, once', '90,000 USD'],
+      ['Work in all', '90,000 USD'],
       ['Upkeep', '0 USD a year'],
       ['Discount rate', '8.0 % a year'],
       ['Tax rate', 'before tax'],
@@ -66,7 +66,7 @@ describe('the money of an edition', () => {
     const content = { ...base, plan: cheaper };
     const money = planCashFlow(moneyOf(content)).moneyView;
     const [first] = editionRanking({ ...content, money })!.rows;
-    expect(first).toMatchObject({ name: 'The saving, as calculated', unit: 'USD a year' });
+    expect(first).toMatchObject({ name: 'The calculated saving', unit: 'USD a year' });
   });
 });
 

@@ -30,7 +30,7 @@ function RangeRow({ name, currency, own }: { name: AssumptionKey; currency: stri
     />
   );
   return (
-    <div className="range-row" role="group" aria-label={label}>
+    <div className="range-row" role="group" aria-label={`${label}, range`}>
       <span className="range-name">{label}</span>
       <span className="range-own">
         {own === undefined || Number.isNaN(own) ? 'not given' : assumptionFigure(name, own)}

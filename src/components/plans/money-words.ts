@@ -34,7 +34,7 @@ export function cashFlowFinding({ money, currency, name, economics }: PlanView):
   const trend =
     years === 1 || Math.abs(last.net - first.net) < 0.5
       ? `${whole(first.net)} ${first.net < 0 ? 'are lost' : 'remain'} each year`
-      : `${whole(first.net)} remain of the first year and ${whole(last.net)} of the ${years}th`;
+      : `${whole(first.net)} remain of year 1 and ${whole(last.net)} of year ${years}`;
   return capital(`${spent}; ${trend}, ${moneyBasis(economics)}.`);
 }
 

@@ -2,7 +2,7 @@ import type { ChargeGroup, PlanView, PricedBillView, YearView } from '../../sche
 import type { CostCurveView, SearchView } from '../../schemas/search';
 import type { BillsBeforeAfterData } from '../charts/BillsBeforeAfterChart';
 import type { CostCurveData } from '../charts/CostCurveChart';
-import type { PaybackData } from '../charts/payback';
+import { yearsWorthDrawing, type PaybackData } from '../charts/payback';
 import { formatBillName } from '../ui/format';
 import type { WaterfallData } from '../charts/WaterfallChart';
 import { amperes } from '../ui/setting-words';
@@ -70,6 +70,7 @@ export function paybackChart(plan: PlanView): PaybackData {
     paybackYears: plan.appraisal.simplePaybackYears,
     paybackRange: paybackRange(plan),
     editionName: plan.name,
+    shownYears: yearsWorthDrawing(plan.appraisal.simplePaybackYears, plan.economics.horizonYears),
     points: plan.cashFlow
       .filter((month) => month.month % 3 === 0)
       .map((month) => ({ year: month.month / 12, cumulative: month.cumulative, p10: month.low, p90: month.high })),

@@ -1,9 +1,11 @@
 import { benchEconomics } from './economics';
+import { benchBound } from './bound';
 import { benchIntake } from './intake';
 import { benchIntakeBook, benchIntakeRows } from './intake-rows';
 import { benchKeep } from './keep';
 import { benchIntakeMemory } from './intake-memory';
 import { benchMinuteYears } from './minute-years';
+import { benchPlanRivals } from './plan-rivals';
 import { benchPricing } from './pricing';
 import { benchRepricing } from './repricing';
 import { benchRivals } from './rivals';
@@ -36,6 +38,8 @@ async function main(): Promise<void> {
     benchMinuteYears,
     benchSearch,
     benchEconomics,
+    benchPlanRivals,
+    benchBound,
     benchIntake,
     benchIntakeRows,
     benchIntakeBook,

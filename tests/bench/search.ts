@@ -30,7 +30,7 @@ const whole = { days: ['every' as const], from: '00:00', to: '24:00' };
 const shift = { days: ['weekday' as const], from: '06:00', to: '22:00' };
 
 /** Three motors: one of two shifts, two that run day and night. */
-function buildMotors(grid: Grid, timeZone: string): PlanMotor[] {
+export function buildMotors(grid: Grid, timeZone: string): PlanMotor[] {
   const loads = (...rules: ShiftRule[]) => shaftLoadSeries({ rules }, grid, timeZone);
   return [
     { motor: large, shaftKw: loads({ ...shift, shaftKw: 900 }), standingFieldA: 50 },

@@ -210,7 +210,7 @@ function fixedBanks(banks: PlacedBank[], count: number): MeterWork['fixed'] {
 }
 
 /** The load with an absent leading register taken as zero, and a note if so. */
-function withBothRegisters(load: LoadSeries): { load: LoadSeries; notes: string[] } {
+export function withBothRegisters(load: LoadSeries): { load: LoadSeries; notes: string[] } {
   const absent = (channel: Float64Array) => channel.length > 0 && channel.every((value) => Number.isNaN(value));
   if (absent(load.kvarhLagging) || !absent(load.kvarhLeading)) return { load, notes: [] };
   const kvarhLeading = load.kvarhLagging.map((lagging) => (Number.isNaN(lagging) ? NaN : 0));

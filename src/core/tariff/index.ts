@@ -31,7 +31,13 @@
  * - `per` said by a version of a percentage belongs to the percentage; only `percentOf: removed` makes another charge of it.
  * - Misspelt contract inputs and given quantities are refused; names of history nobody knows are noted.
  */
+export { boundQuantities, type RangeRow } from './bound/bound-quantities';
+export { boundTotals, type BoundedBill, type BoundedTotals } from './bound/bound-totals';
+export { boxOfLoad, type LoadBox, type Registers } from './bound/load-box';
+export type { Range } from './bound/range';
 export { breakEvens, type BreakEven, type BreakEvens, type CheaperStretch } from './compare/break-evens';
+export { measuredQuantities, type MeasuredQuantity } from './compare/measured-intervals';
+export { printedParts, type PrintedFactor, type PrintedParts } from './compare/printed-parts';
 export { carryQuantities, type CarriedQuantities } from './compare/carry-quantities';
 export { averagePowerFactor, energiesOf, scaledLoad, shareToReach, withoutLagging } from './compare/vary-load';
 export { PriceError, ScheduleError, wordProblem, type ScheduleProblem } from './errors';
@@ -62,6 +68,7 @@ export type {
 export { compilePricing, priceBills } from './price/compile-pricing';
 export { wordPeriod } from './price/period-plan';
 export { priceQuantities } from './price/price-quantities';
+export { stepMinutesFor } from './try/steady-measures';
 export { assumeMonth } from './try/assume';
 export { ToldError, type AskedQuantity, type AssumedMonth, type ToldMonth } from './try/told';
 export { monthAtPowerFactor, priceMonth, type AskedLookBack, type TriedBill } from './try/try-month';

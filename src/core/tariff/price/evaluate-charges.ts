@@ -55,7 +55,13 @@ export function isCharged(run: Run, bill: BillState, state: PieceState, plan: Ch
   return true;
 }
 
-function requireKnown(bill: BillState, state: PieceState, { charge }: ChargePlan, slots: readonly number[]): void {
+/** @throws {PriceError} naming what a line needs and nothing gives */
+export function requireKnown(
+  bill: BillState,
+  state: PieceState,
+  { charge }: ChargePlan,
+  slots: readonly number[],
+): void {
   const cause = firstMissing(state, slots);
   if (cause) throw missingError(bill, cause, charge.heading, (name) => unitOf(bill, name));
 }

@@ -10,12 +10,17 @@ import { evaluateIn, roundedValue, setRounded, setValue, type Run } from './run'
 
 /** Works out every value of a piece's text: facts, contract, rates, then the quantities from top to bottom. */
 export function evaluateQuantities(run: Run, bill: BillState, state: PieceState): void {
+  enterPiece(run, bill, state);
+  for (const { quantity, needs } of state.piece.text.quantities) settle(run, bill, state, quantity, needs);
+}
+
+/** Works out what hangs on no load: facts, contract, rates; everything else is not known yet. */
+export function enterPiece(run: Run, bill: BillState, state: PieceState): void {
   state.known.fill(0);
   state.missing.length = 0;
   setFacts(bill, state);
   setContract(run, bill, state);
   for (const rate of state.piece.text.text.rates) setRate(run, state, rate);
-  for (const { quantity, needs } of state.piece.text.quantities) settle(run, bill, state, quantity, needs);
 }
 
 function setFacts({ plan }: BillState, state: PieceState): void {

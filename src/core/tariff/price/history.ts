@@ -113,14 +113,9 @@ export function evaluatePast(
   present: BillingPeriod,
   seasons: SeasonTable | undefined,
 ): PastResult {
-  const { expression, take, over, season } = definition;
+  const { expression, take, over } = definition;
   if (take.kind === 'streak') return streak(definition, records);
-  const asked =
-    over.kind === 'year'
-      ? records.filter(({ period }) => period.from.slice(0, 4) === present.from.slice(0, 4))
-      : records.slice(-(over.count + (over.includesThis ? 1 : 0)));
-  const known = asked.filter((record) => expression.slots.every((slot) => record.known[slot] === 1));
-  const kept = season ? known.filter(({ period }) => isInSeason(period, season, seasons)) : known;
+  const { known, kept } = recordsAsked(definition, records, present, seasons);
   const values = kept.map((record) => expression.evaluate(record.values));
   const askedCount = over.kind === 'last' ? over.count : monthsOfYearBefore(present.from);
   const knownEarlier = over.includesThis ? Math.max(0, known.length - 1) : known.length;
@@ -131,6 +126,21 @@ export function evaluatePast(
     known: Math.min(askedCount, knownEarlier),
     setBy: index === undefined ? undefined : kept[index]!.period,
   };
+}
+
+/** Records that a look back asks for and that are known; of these, those its season keeps. */
+export function recordsAsked<R extends Pick<HistoryRecord, 'period' | 'known'>>(
+  { expression, over, season }: PastDefinition,
+  records: R[],
+  present: BillingPeriod,
+  seasons: SeasonTable | undefined,
+): { known: R[]; kept: R[] } {
+  const asked =
+    over.kind === 'year'
+      ? records.filter(({ period }) => period.from.slice(0, 4) === present.from.slice(0, 4))
+      : records.slice(-(over.count + (over.includesThis ? 1 : 0)));
+  const known = asked.filter((record) => expression.slots.every((slot) => record.known[slot] === 1));
+  return { known, kept: season ? known.filter(({ period }) => isInSeason(period, season, seasons)) : known };
 }
 
 function monthsOfYearBefore(from: string): number {

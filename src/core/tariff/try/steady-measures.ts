@@ -1,5 +1,5 @@
 import { localDateStartMs, type BillingPeriod, type LoadSeries } from '../../load';
-import type { Schedule, ScheduleText } from '../model';
+import type { Schedule } from '../model';
 import { textsWithin } from '../compare/needs';
 import { evaluateQuantities } from '../price/evaluate-quantities';
 import { IntervalSource, layGround } from '../price/interval-source';
@@ -52,7 +52,7 @@ function steadySeries(
   { from, to }: BillingPeriod,
   { kw, kvar }: { kw: number; kvar: number },
 ): LoadSeries {
-  const stepMinutes = stepOf(textsWithin(schedule, { from, to }));
+  const stepMinutes = stepMinutesFor(schedule, { from, to });
   const startMs = localDateStartMs(from, schedule.timeZone);
   const count = Math.round((localDateStartMs(to, schedule.timeZone) - startMs) / (stepMinutes * 60_000));
   return {
@@ -65,8 +65,9 @@ function steadySeries(
   };
 }
 
-function stepOf(texts: ScheduleText[]): number {
-  const borders = texts.flatMap(({ windows, demandWindow }) => [
+/** Step of a series made up for a period: the longest of those tried that cuts no window and no demand window. [min] */
+export function stepMinutesFor(schedule: Schedule, period: BillingPeriod): number {
+  const borders = textsWithin(schedule, period).flatMap(({ windows, demandWindow }) => [
     ...[...windows.values()].flatMap(({ rules }) => rules.flatMap(({ spans }) => spans.flat())),
     ...(demandWindow ? [demandWindow.minutes, demandWindow.everyMinutes ?? demandWindow.minutes] : []),
   ]);

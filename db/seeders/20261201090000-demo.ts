@@ -30,12 +30,14 @@ import { choosePlan, createPlan, openPlan } from '../../src/server/services/plan
 import { setRate } from '../../src/server/services/rates';
 import { createSchedule, keepRevision } from '../../src/server/services/schedule-revisions';
 import { startSearch } from '../../src/server/services/search';
+import { changeSupply } from '../../src/server/services/supplies';
 import { chooseSchedule } from '../../src/server/services/tariff';
 import { sendUtilityLetter, utilityLetterDraft } from '../../src/server/services/utility-letters';
 import { attachJuneBill } from './demo/bill-pages';
 import { addPersonWithPassword, bringIn, daysAgo, ended } from './demo/helpers';
 import { harrowBills, harrowInvoicesOfMay, harrowSchedule } from './demo/harrow';
 import { kestrelBillsFile, kestrelMeterFile } from './demo/kestrel-year';
+import { kestrelBoth, kestrelCapacitors, kestrelSupply } from './demo/plans';
 import { askKestrel } from './demo/requests';
 import { earlierAdjustedKw, kestrel, kestrelMotors } from './demo/scenario';
 
@@ -142,8 +144,9 @@ async function writeToUtility(consultant: Actor, opened: OpenEngagement): Promis
   });
 }
 
-/** Searches the best fields, makes the plan of them, and reports it to the client. */
+/** Searches the best fields, makes the plan of them, sets capacitors beside it, and reports it to the client. */
 async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Promise<void> {
+  await changeSupply(opened, { version: 0, supply: kestrelSupply });
   const search = await ended(consultant, await startSearch(consultant, opened, { stepA: 2 }));
   const fields = searchFound(search)?.fields ?? [];
   const plan = await createPlan(
@@ -166,6 +169,8 @@ async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Prom
       searchJobId: search.id,
     }),
   );
+  await createPlan(opened, kestrelCapacitors);
+  await createPlan(opened, kestrelBoth(fields));
   const found = await openPlan(consultant, plan.id);
   await choosePlan(found, { version: found.plan.version, chosen: true });
   await ended(consultant, await makeEdition(consultant, opened, plan.id));

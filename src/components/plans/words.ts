@@ -2,7 +2,6 @@ import { wordOrdinal } from '../../core/units';
 import type { AssumedValue } from '../../schemas/motor';
 import type { ChargeGroup, PlanView, YearView } from '../../schemas/plan';
 import { capacitorCaution } from '../ui/Caution';
-import { directionOf, isAsToday } from '../ui/setting-words';
 import {
   capital,
   formatBillName,
@@ -13,6 +12,7 @@ import {
   formatSpelled,
 } from '../ui/format';
 import { ceilingWords, paybackInFull } from './money-words';
+import { capacitorTurn } from './verdict';
 
 /** Groups in the order of the tables, in words. */
 export const groupNames: [ChargeGroup, string][] = [
@@ -24,87 +24,11 @@ export const groupNames: [ChargeGroup, string][] = [
   ['tax', 'Tax'],
 ];
 
-/** All capacitors of a plan together. [kvar] */
-export const bankKvar = ({ banks }: PlanView) => banks.reduce((sum, { kvar }) => sum + kvar, 0);
-
-/** What a plan does: "Raise two fields", "Leave the fields alone and add 900 kvar of capacitors". */
-export function actionWords(plan: PlanView): string {
-  const kvar = bankKvar(plan);
-  const bank = kvar > 0 ? ` and add ${formatQuantity(kvar, 'kvar')} of capacitors` : '';
-  return `${fieldAction(plan.fields.filter((field) => !isAsToday(field)))}${bank}`;
-}
-
-function fieldAction(fields: PlanView['fields']): string {
-  const [first] = fields;
-  if (!first) return 'Leave the fields alone';
-  const all = (direction: 'up' | 'down') => fields.every((field) => directionOf(field) === direction);
-  const verb = all('up') ? 'Raise' : all('down') ? 'Lower' : 'Reset';
-  return fields.length === 1 ? `${verb} the field of ${first.name}` : `${verb} ${formatSpelled(fields.length)} fields`;
-}
-
-/** Plans by net present value, the best first. */
-export const byValue = (plans: PlanView[]) => [...plans].sort((a, b) => b.appraisal.npv - a.appraisal.npv);
-
-/** The plan a page shows in full: the chosen one, else the best by net present value. */
-export const shownPlan = (year: YearView): PlanView | null => year.chosen ?? byValue(year.plans)[0] ?? null;
-
-const worthDoing = (plan: PlanView) => plan.saving > 0 && plan.appraisal.npv > 0;
-
-/** When a plan has paid for itself, in a sentence's words. */
-function paybackPhrase(plan: PlanView): string {
-  if (plan.paybackWords === 'never') return `does not pay back within ${plan.economics.horizonYears} years`;
-  return plan.paybackWords === 'at once' ? 'costs nothing to do' : `pays back in ${plan.paybackWords}`;
-}
-
-/** What a plan does to the year's bills, in a sentence's words. */
-function savingPhrase({ saving, currency }: PlanView): string {
-  const money = (amount: number) => formatMajor(amount, currency, { whole: true });
-  if (Math.round(saving) === 0) return 'saves nothing';
-  return saving > 0 ? `saves ${money(saving)} a year` : `makes the year ${money(-saving)} dearer`;
-}
-
-/** The finding of the station: what to do, what it saves, what it costs; honest where nothing pays. */
-export function plansVerdict(year: YearView, shown: PlanView | null): { title: string; lead: string } {
-  const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
-  if (!shown) {
-    return {
-      title: `As it runs now the year costs ${money(year.standing.yearTotal)}; ${money(year.standing.reactiveCost)} of it is the price of reactive power.`,
-      lead: 'No plan yet. Search for the best field currents, or enter settings of your own.',
-    };
-  }
-  const best = byValue(year.plans)[0] ?? shown;
-  if (!worthDoing(best)) {
-    return {
-      title: 'Leave the fields alone: no plan brings in more than it costs.',
-      lead: `The nearest, ${best.name}, ${savingPhrase(best)} and ${paybackPhrase(best)}.`,
-    };
-  }
-  const cost = shown.capitalCost > 0 ? ` for ${money(shown.capitalCost)}` : '';
-  const left = year.standing.reactiveCost - shown.saving;
-  return {
-    title: `${actionWords(shown)}: ${shown.name} ${savingPhrase(shown)}${cost} and ${paybackPhrase(shown)}.`,
-    lead: leadOf(year, shown, left),
-  };
-}
-
-function leadOf(year: YearView, shown: PlanView, left: number): string {
-  const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
-  const other = byValue(year.plans).find((plan) => plan.id !== shown.id);
-  if (other) {
-    const difference = other.appraisal.npv - shown.appraisal.npv;
-    return difference > 0
-      ? `${other.name} would be worth ${money(difference)} more in present value.`
-      : `${other.name} would save ${money(other.saving)} a year and be worth ${money(-difference)} less in present value.`;
-  }
-  return left > 0
-    ? `Of the ${money(year.standing.reactiveCost)} a year that reactive power costs today, ${money(left)} stay.`
-    : 'It takes away all that reactive power costs today.';
-}
-
 /** What would turn the verdict, and where the plan brings least. */
-export function turningWords(year: YearView, plan: PlanView): { turn: string; least: string | null } {
+export function turningWords(year: YearView, plan: PlanView): { turn: string[]; least: string | null } {
   const money = (amount: number) => formatMajor(amount, year.currency, { whole: true });
-  const turn = ceilingWords(plan);
+  const capacitors = capacitorTurn(year, plan);
+  const turn = [ceilingWords(plan), ...(capacitors ? [capacitors] : [])];
   const savings = plan.bills.map((bill, index) => ({
     name: formatBillName(bill),
     saved: (year.standing.bills[index]?.total ?? 0) - bill.total,

@@ -15,6 +15,7 @@ import { planBasis, priceSettings, type PlanBasis } from './plan-basis';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
+import type { PricingBasis } from './pricing';
 import { unpricedOf, viewOf, type LoadedMotor, type YearParts } from './plan-view';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
@@ -36,7 +37,10 @@ export async function missingForPlans(opened: OpenEngagement): Promise<Missing |
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
+  const motors = basis.motors.map((motor) => ({
+    ...motor,
+    load: loadOf(motor.row, motor.machine, opened, motor.source),
+  }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
@@ -66,10 +70,10 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
 }
 
 /** What the spans of plans are laid over. */
-const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+export const spanYearOf = ({ pricing }: { pricing: Pick<PricingBasis, 'schedule' | 'periods'> }): SpanYear => ({
   seasons: pricing.schedule.texts.at(-1)?.seasons,
-  from: task.periods[0]!.from,
-  to: task.periods.at(-1)!.to,
+  from: pricing.periods[0]!.from,
+  to: pricing.periods.at(-1)!.to,
 });
 
 const wholeYearDays = 350;

@@ -9,7 +9,6 @@ import { listPlans } from './plan-rows';
 import { spanYearOf } from './plan-year';
 import { knownTo } from './price-basis';
 import { pricingBasis } from './pricing';
-import { digestOf } from './schedule-files';
 import { supplyForTask, supplyOf } from './supplies';
 
 /** How far fields are raised towards their limits where no plan says it. */
@@ -52,7 +51,8 @@ export async function plansFromBills(opened: OpenEngagement): Promise<BillsOnlyV
     acts: rows.map((row) => actOf(row, opened, spanYearOf({ pricing }))),
     shares: shares.map(({ share }) => share),
   };
-  const result = await estimated(task, pricing.dataKey);
+  const ofMotors = motors.map(({ row, source }) => [row.id, row.version, row.updatedAt.getTime(), source.key]);
+  const result = await estimated(task, JSON.stringify([pricing.dataKey, ofMotors, supply, task.acts]));
   if ('refused' in result) return result;
   const standing = result.acts[0]?.standing ?? result.raised[0]?.estimate.standing;
   if (standing === undefined) return { refused: 'Every motor stands at its limits already, and no plan is kept.' };
@@ -89,8 +89,7 @@ const shared = globalThis as typeof globalThis & {
 const cache = (shared.counterlagEstimates ??= new Map());
 
 /** Estimates a task, once as long as bills, tariff, motors, plans and supply stay as they are. */
-function estimated(task: EstimateTask, dataKey: string): Promise<EstimateResult | Refused> {
-  const key = digestOf(JSON.stringify([dataKey, task.basis.motors, task.basis.upstream, task.basis.supply, task.acts]));
+function estimated(task: EstimateTask, key: string): Promise<EstimateResult | Refused> {
   const result = cache.get(key) ?? estimateInPool(task);
   cache.delete(key);
   cache.set(key, result);

@@ -33,6 +33,7 @@
  */
 export { boundQuantities, type RangeRow } from './bound/bound-quantities';
 export { boundTotals, type BoundedBill, type BoundedTotals } from './bound/bound-totals';
+export type { Coupling, DeliveryCurve } from './bound/coupling';
 export { boxOfLoad, type LoadBox, type Registers } from './bound/load-box';
 export type { Range } from './bound/range';
 export { breakEvens, type BreakEven, type BreakEvens, type CheaperStretch } from './compare/break-evens';

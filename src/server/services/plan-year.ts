@@ -15,6 +15,7 @@ import { planBasis, priceSettings, type PlanBasis } from './plan-basis';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
+import type { PricingBasis } from './pricing';
 import { unpricedOf, viewOf, type LoadedMotor, type YearParts } from './plan-view';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
@@ -70,10 +71,10 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
 }
 
 /** What the spans of plans are laid over. */
-export const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+export const spanYearOf = ({ pricing }: { pricing: Pick<PricingBasis, 'schedule' | 'periods'> }): SpanYear => ({
   seasons: pricing.schedule.texts.at(-1)?.seasons,
-  from: task.periods[0]!.from,
-  to: task.periods.at(-1)!.to,
+  from: pricing.periods[0]!.from,
+  to: pricing.periods.at(-1)!.to,
 });
 
 const wholeYearDays = 350;

@@ -3,6 +3,7 @@ import type { BillingPeriod, LoadSeries } from '../../core/load';
 import type { FieldControl, SynchronousMotor } from '../../core/machine';
 import type {
   BankPlanResult,
+  BillsEstimate,
   BusSupply,
   CapacitorBank,
   InductionMotor,
@@ -176,8 +177,25 @@ export interface ReconcileTask {
   basis: Omit<ReconcileBasis, 'schedule'> & { scheduleText: string };
 }
 
+/** A year of bills without readings, with its motors. */
+export interface EstimateTask {
+  kind: 'estimate';
+  basis: Omit<TaskBasis, 'load' | 'meters'>;
+  rows: PrintedRow[];
+  /** Stored plans. */
+  acts: TaskAct[];
+  /** How far all fields are raised from today's towards their limits besides, from 0 to 1. */
+  shares: number[];
+}
+
+/** What acts and raised fields are estimated to come to, in their order. */
+export interface EstimateResult {
+  acts: BillsEstimate[];
+  raised: { share: number; fields: { motorId: number; fieldA: number }[]; estimate: BillsEstimate }[];
+}
+
 /** Anything a calculation thread does. */
-export type Task = YearTask | SearchTask | TextTask | CompareTask | ReconcileTask;
+export type Task = EstimateTask | YearTask | SearchTask | TextTask | CompareTask | ReconcileTask;
 
 /** Why a task cannot be done, in words for a person. */
 export interface Refused {

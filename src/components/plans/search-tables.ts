@@ -21,11 +21,11 @@ export function alternativesTable(
     ],
     rows: [
       ...alternatives.map(({ kind, name, words, yearTotal, capitalCost, npv }) => ({
-        key: kind,
+        id: kind,
         cells: { what: name, words, year: money(yearTotal), capital: money(capitalCost), npv: money(npv) },
       })),
       {
-        key: 'standing',
+        id: 'standing',
         cells: { what: 'Leave the plant as it stands', words: '', year: money(standingTotal), capital: 0, npv: 0 },
       },
     ],
@@ -44,7 +44,7 @@ export function limitsTable(limits: LimitHours[]): LedgerData {
       { key: 'pullOut', head: 'To pull-out', unit: 'h', align: 'right' },
     ],
     rows: limits.map(({ motorId, name, nearest, bounds }) => ({
-      key: String(motorId),
+      id: String(motorId),
       cells: {
         motor: name,
         range: bounds ? `${amperes(bounds.lowA)} to ${amperes(bounds.highA)}` : '',

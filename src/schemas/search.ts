@@ -69,7 +69,7 @@ export interface SearchedBankView {
   stepKvar: number;
   lossWPerKvar: number;
   holdsPowerFactor?: number;
-  /** Of the best bank beside standing fields, and of the best together with the fields; 0: none. */
+  /** Of the best bank beside standing fields, one at least, and of the best together with the fields; 0: none. */
   aloneSteps: number;
   aloneSwitched: boolean;
   togetherSteps: number;

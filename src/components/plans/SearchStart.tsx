@@ -95,10 +95,16 @@ function BankEntries({ draft, faults, set, currency }: EntryProps & { currency: 
   });
   return (
     <div className="search-bank">
-      <label className="search-with-bank">
-        <input type="checkbox" checked={draft.withBank} onChange={(event) => set({ withBank: event.target.checked })} />
-        Weigh capacitors against the fields
-      </label>
+      <div className="load-days">
+        <label>
+          <input
+            type="checkbox"
+            checked={draft.withBank}
+            onChange={(event) => set({ withBank: event.target.checked })}
+          />
+          Weigh capacitors against the fields
+        </label>
+      </div>
       {draft.withBank && (
         <div className="search-entries">
           <NumberField label="One step" unit="kvar" {...entry('stepKvar')} />

@@ -64,7 +64,6 @@ export function searchedBankWords(bank: SearchedBankView): string {
       ? 'none'
       : `${formatNumber(steps)} ${aloneSwitched ? 'switched' : 'fixed'} of ${formatQuantity(stepKvar, 'kvar')}`;
   const sizes = `Steps: alone ${size(aloneSteps)}, beside the fields ${size(togetherSteps)}.`;
-  if (aloneSteps === 0) return sizes;
   if (!resonance) return `${sizes} Resonance is not checked: the short-circuit power is not known.`;
   const order = formatNumber(resonance.order, { decimals: 1 });
   return resonance.near.length > 0

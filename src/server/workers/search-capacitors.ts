@@ -1,6 +1,6 @@
 import { judgePlans, searchSettings, sizeCapacitors } from '../../core/plan';
-import type { Alternative, CapacitorSizing, SearchInput, SearchResult } from '../../core/plan';
-import { wordMoney, wordNumber } from '../../core/units';
+import type { Alternative, CapacitorSize, CapacitorSizing, SearchInput, SearchResult } from '../../core/plan';
+import { wordNumber } from '../../core/units';
 import { planDefaults } from '../../schemas/plan-money';
 import type { AlternativeView, SearchView, SearchedBankInput } from '../../schemas/search';
 import type { ReadyYear } from './price-year';
@@ -49,21 +49,22 @@ export function weighCapacitors(weighing: Weighing): Weighed {
     },
     onProgress: ({ priced, planned }) => tell(priced, planned),
   });
+  const sizes = { alone: bestBankAlone(alone), together: bestBankTogether(together, yearly * stepKvar) };
   const alternatives = [
     motor,
-    ofBank('capacitors', 'Capacitors alone', alone.best.billCost, alone.best.steps, bank),
-    ofBank('both', 'Both together', together.cost - together.bankCost, together.bankSteps, bank),
-  ].filter((one) => one.kind === 'motor' || one.capitalCost > 0 || bank.costPerKvar === 0);
+    ofBank('capacitors', 'Capacitors alone', sizes.alone.billCost, sizes.alone.steps, bank),
+    ofBank('both', 'Both together', sizes.together.billCost, sizes.together.steps, bank),
+  ];
   return {
-    alternatives: viewsOf(ready, found, alternatives, { alone, together }),
+    alternatives: viewsOf(ready, found, alternatives, sizes),
     bank: {
       stepKvar,
       lossWPerKvar,
       holdsPowerFactor,
-      aloneSteps: alone.best.steps,
-      aloneSwitched: alone.best.switched,
+      aloneSteps: sizes.alone.steps,
+      aloneSwitched: sizes.alone.switched,
       togetherSteps: together.bankSteps,
-      resonance: alone.best.resonance,
+      resonance: sizes.alone.resonance,
     },
     verdict: verdictOf(ready, found.standingCost, alternatives).verdict,
   };
@@ -94,25 +95,36 @@ const judged = (ready: ReadyYear, standingCost: number, alternatives: Alternativ
     years: planDefaults.horizonYears,
     discountRate: planDefaults.discountPercent / 100,
     escalationRate: planDefaults.escalationPercent / 100,
-    wordMoney: (amount) => wordMoney(Math.round(amount), ready.schedule.currency),
+    wordMoney: (amount) => `${wordNumber(amount, 1)} ${ready.schedule.currency}`,
   });
 
 const verdictOf = (ready: ReadyYear, standingCost: number, alternatives: Alternative[]) => ({
   verdict: judged(ready, standingCost, alternatives).words,
 });
 
+/** The best size of a bank that is there at all: none is what leaving the plant alone stands for. */
+function bestBankAlone({ sizes }: CapacitorSizing): CapacitorSize {
+  return sizes.filter(({ steps }) => steps > 0).reduce((a, b) => (b.yearCost < a.yearCost ? b : a));
+}
+
+/** The best number of steps beside the fields, one at least; its bills without the bank's own cost. */
+function bestBankTogether({ bankCurve }: SearchResult, yearlyCostPerStep: number): { steps: number; billCost: number } {
+  const [best] = bankCurve.filter(({ steps }) => steps > 0).sort((a, b) => a.cost - b.cost);
+  return { steps: best!.steps, billCost: best!.cost - best!.steps * yearlyCostPerStep };
+}
+
 function viewsOf(
   ready: ReadyYear,
   found: SearchResult,
   alternatives: Alternative[],
-  { alone, together }: { alone: CapacitorSizing; together: SearchResult },
+  { alone, together }: { alone: CapacitorSize; together: { steps: number } },
 ): AlternativeView[] {
-  const bankWords = (steps: number, switched: boolean) =>
-    `${wordNumber(steps, 1)} ${switched ? 'switched' : 'fixed'} ${steps === 1 ? 'step' : 'steps'}`;
+  const bankWords = (steps: number) =>
+    `${wordNumber(steps, 1)} ${alone.switched ? 'switched' : 'fixed'} ${steps === 1 ? 'step' : 'steps'}`;
   const words: Record<Alternative['kind'], string> = {
     motor: found.leaveAlone ? 'the fields of today' : 'the fields as found',
-    capacitors: bankWords(alone.best.steps, alone.best.switched),
-    both: `${bankWords(together.bankSteps, alone.best.switched)} with fields of their own best`,
+    capacitors: bankWords(alone.steps),
+    both: `${bankWords(together.steps)} beside the fields`,
   };
   return judged(ready, found.standingCost, alternatives).judged.map(
     ({ kind, name, yearCost, capitalCost, yearlyUpkeep = 0, appraisal }) => ({

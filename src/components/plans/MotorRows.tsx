@@ -1,4 +1,4 @@
-import { useMemo } from 'react';
+import { useEffect, useMemo } from 'react';
 import { useFormContext } from 'react-hook-form';
 import type { FormMotor } from '../../schemas/plan-form';
 import { controlValueKey } from '../../schemas/plan-settings';
@@ -33,7 +33,7 @@ interface RowProps {
 
 /** What one motor holds, with a value for each part of the year. */
 export function SettingRow({ motor, name, path, inputPath, currency, seasons }: RowProps) {
-  const { register, watch, setValue, formState } = useFormContext<PlanDraft>();
+  const { register, watch, setValue, getValues, formState } = useFormContext<PlanDraft>();
   const fault = (at: string) => messageAt(formState.errors, `${inputPath}.${at}`);
   const draft = watch(path);
   const spans = watch('spans');
@@ -45,6 +45,12 @@ export function SettingRow({ motor, name, path, inputPath, currency, seasons }: 
     // The draft's own object is the same while its entries change.
     [motor, JSON.stringify(spans), seasons],
   );
+  // A part of the year that is added begins with the value of the first.
+  useEffect(() => {
+    const first = getValues(`${path}.values.0`);
+    for (let k = 1; k < names.length; k += 1)
+      if (!getValues(`${path}.values.${k}`)) setValue(`${path}.values.${k}`, first);
+  }, [names.length, path, getValues, setValue]);
   const chooseMode = (holds: Mode) => {
     const first = holds === 'field-current' && motor ? typed(motor.todayA) : firstValue[holds];
     setValue(

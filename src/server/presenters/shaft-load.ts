@@ -15,7 +15,6 @@ import type {
 } from '../../schemas/shaft-load';
 import type { MotorLoad } from '../models/MotorLoad';
 import type { SubmeterFile } from '../models/SubmeterFile';
-import type { YearLoad } from '../services/shaft-load';
 
 /** A row of a load test in the words of the core: the machine's own field, kvar absorbed, per-unit volts. */
 export function toLoadTestRow(machine: SynchronousMotor, row: LoadTestRowInput): LoadTestRow {
@@ -96,7 +95,7 @@ export function presentShaftLoad(told: {
   motorId: number;
   row: MotorLoad | null;
   files: SubmeterFile[];
-  load: YearLoad & { usualShaftKw: number; hoursRunning: number };
+  load: Omit<ShaftLoadView['year'], 'highestShaftKw'> & { hours: { shaftKw: number }[] };
   test: LoadTestView | null;
 }): ShaftLoadView {
   const { motorId, row, files, load, test } = told;

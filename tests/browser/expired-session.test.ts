@@ -28,13 +28,13 @@ describe('a session that ends while a form is open', () => {
     await signIn(page, tom);
     await page.goto('/engagements/KG-02/plans?plan=new', { waitUntil: 'networkidle' });
     await page.getByLabel('Name').fill('Typed for nothing');
-    await page.getByLabel('Work, once').fill('12345');
+    await page.getByLabel('Work at the motors, once').fill('12345');
     await page.context().clearCookies();
     await page.getByRole('button', { name: 'Price this plan' }).click();
     await signInAgain(page);
     await page.getByText(restored).waitFor();
     expect(await page.getByLabel('Name').inputValue()).toBe('Typed for nothing');
-    expect(await page.getByLabel('Work, once').inputValue()).toBe('12345');
+    expect(await page.getByLabel('Work at the motors, once').inputValue()).toBe('12345');
     await page.context().close();
   }, 90_000);
 

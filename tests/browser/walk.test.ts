@@ -205,7 +205,7 @@ describe('the whole job, as the three people', () => {
     await page.getByRole('link', { name: 'Make it a plan' }).click({ timeout: 60_000 });
     await page.waitForLoadState('networkidle');
     await page.getByLabel('Name', { exact: true }).fill('Plan A');
-    await page.getByLabel('Work, once').fill('61,500');
+    await page.getByLabel('Work at the motors, once').fill('61,500');
     await page.getByLabel('Upkeep a year').fill('1,800');
     await page
       .getByRole('button', { name: /Keep|Price|Save/ })

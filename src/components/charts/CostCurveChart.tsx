@@ -24,6 +24,8 @@ export interface CostCurveData {
   /** Field limit, and the lower one after the reserve. */
   limitFieldA: number;
   reserveFieldA?: number;
+  /** Bills of the year that no admissible kvar in any interval can beat; absent: not known. */
+  boundCost?: number;
   /** "Field current of M-1, A (M-2 at 104 A)". */
   axisName: string;
 }
@@ -115,11 +117,28 @@ function Marks({ data, plot, palette, divisor }: Parts) {
   );
 }
 
+/** The line no finer control can get below. */
+function Bound({ cost, plot, palette, divisor }: Parts & { cost: number }) {
+  const y = plot.y(cost / divisor);
+  return (
+    <>
+      <path d={`M${plot.left} ${y}H${plot.right}`} stroke={palette.ink} strokeDasharray="6 3" />
+      <Words x={plot.left + 8} y={y - 5} palette={palette} bold halo>
+        {`bound, every interval its own best kvar: ${formatNumber(cost)}`}
+      </Words>
+    </>
+  );
+}
+
 /** The year's bills over the field current. The axis of money is cut and says so. */
 export function CostCurveChart({ width, height, palette = pagePalette, ...data }: CostCurveData & ChartSize) {
   const hatch = useHatch();
   const narrow = width < narrowBelow;
-  const costs = [...data.points, data.chosen, ...(data.standing ? [data.standing] : [])].map((p) => p.yearCost);
+  const { boundCost } = data;
+  const costs = [
+    ...[...data.points, data.chosen, ...(data.standing ? [data.standing] : [])].map((p) => p.yearCost),
+    ...(boundCost === undefined ? [] : [boundCost]),
+  ];
   const lowest = Math.min(...costs);
   const scale = moneyScale(Math.max(...costs));
   const divisor = Math.min(scale.divisor, 1000);
@@ -171,6 +190,11 @@ export function CostCurveChart({ width, height, palette = pagePalette, ...data }
         stroke={palette.ink}
         strokeWidth={1.75}
       />
+      {boundCost !== undefined && (
+        <OnPlot at="over">
+          {(plot) => <Bound cost={boundCost} data={data} plot={plot} palette={palette} divisor={divisor} />}
+        </OnPlot>
+      )}
       <OnPlot at="words">{(plot) => <Marks data={data} plot={plot} palette={palette} divisor={divisor} />}</OnPlot>
     </ComposedChart>
   );

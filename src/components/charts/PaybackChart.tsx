@@ -3,12 +3,13 @@ import { formatNumber, formatPayback } from '../ui/format';
 import { ChartFigure, type FigureText } from './ChartFigure';
 import { axisLook, linePath, narrowBelow, OnPlot, PlotFrame, type ChartSize } from './kit';
 import { pagePalette } from './palette';
-import { chartRows, paybackTable, type PaybackData } from './payback';
+import { chartRows, drawnPart, paybackTable, type PaybackData } from './payback';
 import { EndWords, PaybackMark, PaybackNotes, WorkDrop, YoursMark } from './PaybackParts';
 import { domainOf, moneyScale, niceTicks, ticksWithin } from './scale';
 
 /** Cumulative cash after the work, with the point where it is paid back. Give 592 or 900 wide, 358 on a phone. */
-export function PaybackChart({ width, height, palette = pagePalette, ...data }: PaybackData & ChartSize) {
+export function PaybackChart({ width, height, palette = pagePalette, ...all }: PaybackData & ChartSize) {
+  const data = drawnPart(all);
   const narrow = width < narrowBelow;
   const values = data.points.flatMap((p) => [
     p.cumulative,

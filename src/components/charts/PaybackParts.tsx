@@ -110,6 +110,16 @@ export function WorkDrop({ data, divisor, plot, palette }: PaybackParts) {
   return <path d={`M${plot.left} ${plot.y(0)}V${plot.y(start / divisor)}`} stroke={palette.ink} strokeWidth={5} />;
 }
 
+/** Height of the words on the work: under the line's beginning, or at the foot where the payback is named beside it. */
+function paidOnceY({ data, plot, low }: Pick<PaybackParts, 'data' | 'plot'> & { low: number }): number {
+  const foot = plot.bottom - 7;
+  const wanted = Math.min(low + 18, foot);
+  if (data.paybackYears === null) return wanted;
+  const mark = plot.y(0);
+  const beside = plot.x(data.paybackYears) < plot.left + 8 + paidOnceWords(data, false).length * 6.8;
+  return beside && wanted > mark + 28 && wanted < mark + 74 ? Math.max(wanted, Math.min(foot, mark + 76)) : wanted;
+}
+
 /** "114,400 USD paid once, 10,000 of it a grant". */
 function paidOnceWords({ capitalCost, incentive = 0, currency }: PaybackData, narrow: boolean): string {
   const paid = `${formatMajor(capitalCost, currency, { whole: true })} paid once`;
@@ -126,7 +136,7 @@ export function PaybackNotes({ data, divisor, plot, palette, narrow }: PaybackPa
     <>
       <Words
         x={plot.left + 8}
-        y={narrow ? plot.bottom - 7 : Math.min(low + 18, plot.bottom - 7)}
+        y={narrow ? plot.bottom - 7 : paidOnceY({ data, plot, low })}
         palette={palette}
         bold
         halo

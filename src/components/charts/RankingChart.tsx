@@ -17,7 +17,7 @@ import { moneyScale, niceTicks } from './scale';
 function layoutOf(width: number) {
   const narrow = width < narrowBelow;
   return narrow
-    ? { narrow, left: 6, right: width - 6, top: 30, rowHeight: 66, barTop: 36, barHeight: 16 }
+    ? { narrow, left: 20, right: width - 20, top: 30, rowHeight: 68, barTop: 38, barHeight: 16 }
     : { narrow, left: 236, right: width - 128, top: 36, rowHeight: 42, barTop: 8, barHeight: 18 };
 }
 type Layout = ReturnType<typeof layoutOf>;
@@ -53,15 +53,15 @@ function Row({ row, y, layout, width, x, npv, palette, hatchId }: RowProps) {
   });
   return (
     <g>
-      <Words x={narrow ? 6 : 0} y={y + 16} palette={palette} bold>
+      <Words x={0} y={y + 16} palette={palette} bold halo>
         {row.name}
       </Words>
-      <Words x={narrow ? 6 : 0} y={y + 31} palette={palette} tone="ink2">
+      <Words x={0} y={y + 31} palette={palette} tone="ink2" halo>
         {rangeWords(row)}
       </Words>
       <rect {...box(worst, split)} fill={palette.ink2} stroke={palette.ink2} />
       <rect {...box(split, best)} fill={`url(#${hatchId})`} stroke={palette.verdigris} />
-      <Words x={width} y={narrow ? y + 31 : y + 22} palette={palette} anchor="end">
+      <Words x={width} y={narrow ? y + 31 : y + 22} palette={palette} anchor="end" halo>
         {paybackRangeWords(row)}
       </Words>
     </g>
@@ -92,6 +92,7 @@ export function RankingChart({ width, height, palette = pagePalette, ...data }: 
       {first < 0 && last > 0 && (
         <path d={`M${x(0)} ${top}V${bottom}`} stroke={palette.ink} shapeRendering="crispEdges" />
       )}
+      <path d={`M${x(data.npv)} ${top - 8}V${bottom}`} stroke={palette.ink} strokeWidth={2} />
       {data.rows.map((row, index) => (
         <Row
           key={row.name}
@@ -101,7 +102,6 @@ export function RankingChart({ width, height, palette = pagePalette, ...data }: 
           hatchId={hatch.saving}
         />
       ))}
-      <path d={`M${x(data.npv)} ${top - 8}V${bottom}`} stroke={palette.ink} strokeWidth={2} />
       <Words
         x={x(data.npv)}
         y={top - 14}

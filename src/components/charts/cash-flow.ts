@@ -56,18 +56,18 @@ const kindsOf = (steps: CashFlowStep[]) =>
   new Set(steps.flatMap((step) => stackedParts(step).map((part) => part.kind)));
 
 const names: Record<PartKind, string> = {
-  saving: 'hatched, what is saved',
-  incentive: 'dotted edge, the incentive',
-  work: 'solid, the work',
-  upkeep: 'grey, upkeep',
-  tax: 'open, tax',
+  saving: 'Hatched: saved.',
+  incentive: 'Dotted edge: the incentive.',
+  work: 'Solid: the work.',
+  upkeep: 'Grey: upkeep.',
+  tax: 'Open: tax.',
 };
 
 /** How to read the bars: only what is in them. */
 export function barsReading(steps: CashFlowStep[]): string {
   const kinds = kindsOf(steps);
   const said = signs.filter(([kind]) => kinds.has(kind)).map(([kind]) => names[kind]);
-  return `Above the line ${said[0] ?? 'nothing'}${said.length > 1 ? `; ${said.slice(1).join('; ')}` : ''}. Figures: what remains.`;
+  return [...said, 'The stroke across: what remains.'].join(' ');
 }
 
 /** The same as a table, years or months, with the running total. */

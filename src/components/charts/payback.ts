@@ -19,6 +19,8 @@ export interface PaybackData {
   /** Received at year 0. */
   incentive?: number;
   points: PaybackPoint[];
+  /** Years that are drawn; the table holds all points. Absent: all. */
+  shownYears?: number;
   paybackYears: number | null;
   /** Eight in ten samples pay back between these. */
   paybackRange?: { fromYears: number; toYears: number } | null;
@@ -33,6 +35,16 @@ export interface PaybackData {
 /** Year of a point, for reading between points. */
 export const byYear = (p: PaybackPoint) => p.year;
 const cumulative = (p: PaybackPoint) => p.cumulative;
+
+/** The years worth drawing of a horizon: three times the payback, three at least. */
+export const yearsWorthDrawing = (paybackYears: number | null, horizonYears: number) =>
+  Math.min(horizonYears, Math.max(3, Math.ceil((paybackYears ?? horizonYears) * 3)));
+
+/** The part of the data that is drawn. */
+export function drawnPart(data: PaybackData): PaybackData {
+  const { shownYears } = data;
+  return shownYears === undefined ? data : { ...data, points: data.points.filter((p) => p.year <= shownYears) };
+}
 
 /** Rows with the band as a pair and the line split where it crosses nought: ink below, verdigris above. */
 export function chartRows(data: PaybackData, divisor: number) {

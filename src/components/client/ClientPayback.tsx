@@ -1,6 +1,8 @@
 import type { PlanMoney } from '../../schemas/assumptions';
 import type { CashFlowMonth } from '../../schemas/plan-money';
-import type { PaybackData } from '../charts/payback';
+import { yearsWorthDrawing, type PaybackData } from '../charts/payback';
+import type { RankingData } from '../charts/ranking';
+import { RankingFigure } from '../charts/RankingChart';
 import { PaybackFigure } from '../charts/PaybackChart';
 import { paidBackSentence } from '../report/words';
 import { formatCount, formatPayback } from '../ui/format';
@@ -16,17 +18,19 @@ export interface ClientPaybackProps {
   paybackYears: number | null;
   paybackRange: PaybackData['paybackRange'];
   npv: number;
+  /** What moves the edition's result; null in editions made without it. */
+  ranking: RankingData | null;
   /** Whom to ask about what is fixed. */
   askName: string;
 }
 
-/** The years worth showing, three times the longer payback, with the edition's finding in them. */
+/** The edition's line and finding, which nothing moves, with the reader's own line where there is one. */
 function pictureOf({ money, cashFlow, currency, paybackYears }: ClientPaybackProps, own: OwnFigures, moved: boolean) {
-  const longest = Math.max(paybackYears ?? 10, moved ? (own.appraisal.simplePaybackYears ?? 10) : 0);
-  const years = Math.min(money.economics.horizonYears, Math.max(3, Math.ceil(longest * 3)));
-  const shown = cashFlow.filter((point) => point.month <= years * 12);
-  const ahead = shown.at(-1)?.cumulative ?? 0;
-  const banded = shown.some((point) => point.low !== undefined);
+  const { horizonYears } = money.economics;
+  const years = yearsWorthDrawing(paybackYears, horizonYears);
+  const ownYears = moved ? yearsWorthDrawing(own.appraisal.simplePaybackYears, horizonYears) : 0;
+  const ahead = cashFlow.find((point) => point.month === years * 12)?.cumulative ?? 0;
+  const banded = cashFlow.some((point) => point.low !== undefined);
   return {
     finding:
       paybackYears === null
@@ -36,7 +40,8 @@ function pictureOf({ money, cashFlow, currency, paybackYears }: ClientPaybackPro
       banded ? 'Band: eight of ten samples lie inside it.' : '',
       moved ? 'Dashed: your own assumptions; the report shows the full line.' : '',
     ].join(' '),
-    points: shown.map(({ month, cumulative, low, high }) => ({
+    shownYears: Math.max(years, ownYears),
+    points: cashFlow.map(({ month, cumulative, low, high }) => ({
       year: month / 12,
       cumulative,
       p10: low,
@@ -48,11 +53,11 @@ function pictureOf({ money, cashFlow, currency, paybackYears }: ClientPaybackPro
 
 /** The payback picture with the client's own assumptions beside it; worked out here in the browser. */
 export function ClientPayback(props: ClientPaybackProps) {
-  const { money, currency, editionNumber, paybackYears } = props;
+  const { money, currency, editionNumber, paybackYears, ranking } = props;
   const own = useOwnFigures(money);
   const moved = movableOf(money).some(({ key, own: value }) => (own.own[key] ?? value) !== value);
   return (
-    <div className="client-columns">
+    <div className="client-columns client-money">
       <div className="working">
         <PaybackFigure
           {...pictureOf(props, own, moved)}
@@ -67,6 +72,11 @@ export function ClientPayback(props: ClientPaybackProps) {
         />
       </div>
       <OwnFiguresPanel {...props} own={own} moved={moved} />
+      {ranking && ranking.rows.length > 0 && (
+        <div className="working client-ranking">
+          <RankingFigure {...ranking} fileName={`what-moves-it-edition-${editionNumber}`} />
+        </div>
+      )}
     </div>
   );
 }

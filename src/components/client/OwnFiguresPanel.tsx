@@ -3,7 +3,7 @@ import { AssumptionField } from '../ui/AssumptionField';
 import { assumptionFigure, assumptionUnit, assumptionWords } from '../ui/assumption-words';
 import { Button } from '../ui/Button';
 import { formatCount, formatMajor, formatPayback } from '../ui/format';
-import { ResultSums } from '../ui/ResultSums';
+import { ResultSums, type SumRow } from '../ui/ResultSums';
 import { fixedRows, movableOf, stepOf } from './edition-money';
 import { ownSentence, type OwnFigures } from './own-figures';
 
@@ -33,6 +33,7 @@ function FixedAssumptions({ money, currency, editionNumber, askName }: OwnFigure
 
 function Outcome({ own, moved, currency, editionNumber, paybackYears, npv }: OwnFiguresPanelProps) {
   const { appraisal, horizonYears, spread } = own;
+  const mine = (label: string, value: string): SumRow[] => (moved ? [{ label, value, kind: 'strong' }] : []);
   const whole = (amount: number) => formatMajor(amount, currency, { whole: true });
   return (
     <>
@@ -42,13 +43,9 @@ function Outcome({ own, moved, currency, editionNumber, paybackYears, npv }: Own
       <ResultSums
         rows={[
           { label: `Pays back, edition ${editionNumber}`, value: formatPayback(paybackYears) },
-          { label: 'With your figures', value: formatPayback(appraisal.simplePaybackYears), kind: 'strong' },
+          ...mine('With your figures', formatPayback(appraisal.simplePaybackYears)),
           { label: `Worth today, edition ${editionNumber}`, value: whole(npv) },
-          {
-            label: `With your figures, ${formatCount(horizonYears, 'year')}`,
-            value: whole(appraisal.npv),
-            kind: 'strong',
-          },
+          ...mine(`With your figures, ${formatCount(horizonYears, 'year')}`, whole(appraisal.npv)),
         ]}
       />
     </>

@@ -1,5 +1,7 @@
 import { assumptionKeys, assumptionValue, type AssumptionKey, type PlanMoney } from '../../schemas/assumptions';
 import type { EditionContent } from '../../schemas/edition';
+import type { RankingData } from '../charts/ranking';
+import { rankingChart } from '../plans/money-charts';
 import { assumptionValueWords, assumptionWords } from '../ui/assumption-words';
 import type { SumRow } from '../ui/ResultSums';
 
@@ -14,6 +16,15 @@ export function moneyOf({ plan, standing, money }: EditionContent): PlanMoney {
     Object.fromEntries(groups.map((group) => [group, standing.groupTotals[group] - plan.groupTotals[group]]));
   const { capitalCost, yearlyUpkeep, economics } = plan;
   return { saving, savingWithHours: money?.savingWithHours ?? saving, capitalCost, yearlyUpkeep, economics };
+}
+
+/** What moves the result of an edition's plan; null in editions made without it. */
+export function editionRanking(content: EditionContent): RankingData | null {
+  const { money, currency, plan } = content;
+  if (!money) return null;
+  const { npv, simplePaybackYears } = plan.appraisal;
+  const { ranking } = money;
+  return rankingChart({ currency, money: moneyOf(content), npv, paybackYears: simplePaybackYears, ranking });
 }
 
 /** An assumption the consultant lets the client move. */

@@ -1,38 +1,44 @@
+import { useId } from 'react';
 import { useFormContext, useWatch } from 'react-hook-form';
 import { assumptionKeys, type AssumptionKey } from '../../schemas/assumptions';
 import { assumptionFigure, assumptionUnit, assumptionWords } from '../ui/assumption-words';
 import { Button } from '../ui/Button';
-import { NumberField } from '../ui/Field';
+import { FieldError } from '../ui/FieldError';
 import { messageAt } from '../ui/form-errors';
 import { capitalTyped, type PlanDraft } from './draft';
 import { ownTyped, usualRange } from './money-draft';
 
 const ownOf = (key: AssumptionKey, draft: PlanDraft) => ownTyped(key, { ...draft, capitalCost: capitalTyped(draft) });
 
-function RangeRow({ name, currency }: { name: AssumptionKey; currency: string }) {
+function RangeRow({ name, currency, own }: { name: AssumptionKey; currency: string; own: number | undefined }) {
   const { register, formState } = useFormContext<PlanDraft>();
-  const draft = useWatch<PlanDraft>() as PlanDraft;
-  const own = ownOf(name, draft);
+  const id = useId();
   const { name: label } = assumptionWords[name];
+  const path = `economics.ranges.${name}` as const;
+  const fault = messageAt(formState.errors, `${path}.low`) ?? messageAt(formState.errors, `${path}.high`);
   const field = (end: 'low' | 'high', words: string) => (
-    <NumberField
-      label={`${label} ${words}`}
-      labelUnseen
-      size="small"
+    <input
+      className="input input-small input-number"
+      type="text"
+      inputMode="decimal"
+      autoComplete="off"
+      aria-label={`${label} ${words}`}
+      aria-invalid={fault !== undefined || undefined}
+      aria-describedby={fault === undefined ? undefined : id}
       placeholder={words}
-      {...register(`economics.ranges.${name}.${end}`)}
-      error={messageAt(formState.errors, `economics.ranges.${name}.${end}`)}
+      {...register(`${path}.${end}`)}
     />
   );
   return (
-    <div className="range-row" role="group" aria-label={label}>
+    <div className="range-row" role="group" aria-label={`${label}, range`}>
       <span className="range-name">{label}</span>
       <span className="range-own">
-        {own === undefined || Number.isNaN(own) ? 'as power prices' : assumptionFigure(name, own)}
+        {own === undefined || Number.isNaN(own) ? 'not given' : assumptionFigure(name, own)}
       </span>
       {field('low', 'from')}
       {field('high', 'to')}
       <span className="range-unit">{assumptionUnit(name, currency)}</span>
+      <FieldError fault={fault} id={id} />
     </div>
   );
 }
@@ -40,6 +46,12 @@ function RangeRow({ name, currency }: { name: AssumptionKey; currency: string })
 /** Within which the client may move each assumption on their own page; empty is fixed. */
 export function ClientRanges({ currency }: { currency: string }) {
   const { getValues, setValue } = useFormContext<PlanDraft>();
+  const draft = useWatch<PlanDraft>() as PlanDraft;
+  // A rise that follows the common one cannot be moved by itself.
+  const shown = assumptionKeys.filter((key) => {
+    const { low, high } = draft.economics.ranges[key];
+    return ownOf(key, draft) !== undefined || low !== '' || high !== '';
+  });
   const set = (rangeOf: (key: AssumptionKey) => { low: string; high: string } | null) => {
     for (const key of assumptionKeys) {
       const range = rangeOf(key);
@@ -60,8 +72,8 @@ export function ClientRanges({ currency }: { currency: string }) {
           <span>To</span>
           <span />
         </div>
-        {assumptionKeys.map((key) => (
-          <RangeRow key={key} name={key} currency={currency} />
+        {shown.map((key) => (
+          <RangeRow key={key} name={key} currency={currency} own={ownOf(key, draft)} />
         ))}
       </div>
       <div className="actions">

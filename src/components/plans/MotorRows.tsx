@@ -55,7 +55,7 @@ export function SettingRow({ motor, name, path, inputPath, currency, seasons }: 
   const atPanel = holdsAtPanel(motor, draft.holds);
   return (
     <div className="setting-row" role="group" aria-label={name}>
-      <div className="setting-head">
+      <div className="setting-grid">
         <SelectField
           label={`${name} holds`}
           options={modes.map(({ value, label }) => ({ value, label }))}
@@ -81,16 +81,6 @@ export function SettingRow({ motor, name, path, inputPath, currency, seasons }: 
             error={fault('controls.0.fieldC')}
           />
         )}
-        {motor && (draft.holds !== 'field-current' || draft.equipmentCost !== '') && (
-          <NumberField
-            label="Regulator and fitting, once"
-            unit={currency}
-            {...register(`${path}.equipmentCost`)}
-            error={fault('equipmentCost')}
-          />
-        )}
-      </div>
-      <div className="setting-values">
         {names.map((span, k) => {
           const value = draft.values[k] ?? draft.values[0] ?? '';
           const remark = motor && loads ? remarkOn(motor, draft, value, loads[k] ?? []) : null;
@@ -107,6 +97,14 @@ export function SettingRow({ motor, name, path, inputPath, currency, seasons }: 
             </div>
           );
         })}
+        {motor && (draft.holds !== 'field-current' || draft.equipmentCost !== '') && (
+          <NumberField
+            label="Regulator and fitting, once"
+            unit={currency}
+            {...register(`${path}.equipmentCost`)}
+            error={fault('equipmentCost')}
+          />
+        )}
       </div>
       {motor && <p className="hint">{rangeWords(motor)}</p>}
     </div>

@@ -139,7 +139,7 @@ export function SpanFields({ seasons }: { seasons: string[] }) {
   return (
     <div className="plan-spans">
       <div className="form-grid">
-        <Field label="Name of the plan" {...register('name')} error={fault('name')} />
+        <Field label="Name" {...register('name')} error={fault('name')} />
         <SelectField
           label="Settings"
           {...register('spans.by')}

@@ -21,7 +21,7 @@ function wording({ money, currency }: RankedMoney, input: RankedInput['input']) 
   const rise = (own: number) => (move: number) => formatNumber(100 * (own + move), { decimals: 1 });
   switch (input) {
     case 'saving':
-      return { name: 'The saving, as calculated', unit: `${currency} a year`, words: amount(saved) };
+      return { name: 'The calculated saving', unit: `${currency} a year`, words: amount(saved) };
     case 'hours':
       return { name: 'Operating hours', unit: '% of last year', words: amount(100) };
     case 'work':

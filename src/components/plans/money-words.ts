@@ -34,7 +34,7 @@ export function cashFlowFinding({ money, currency, name, economics }: PlanView):
   const trend =
     years === 1 || Math.abs(last.net - first.net) < 0.5
       ? `${whole(first.net)} ${first.net < 0 ? 'are lost' : 'remain'} each year`
-      : `${whole(first.net)} remain of the first year and ${whole(last.net)} of the ${years}th`;
+      : `${whole(first.net)} remain of year 1 and ${whole(last.net)} of year ${years}`;
   return capital(`${spent}; ${trend}, ${moneyBasis(economics)}.`);
 }
 
@@ -79,17 +79,17 @@ export function moneySums(plan: PlanView): SumRow[] {
 
 const months = (value: number | null) => formatPayback(value === null ? null : value / 12);
 
-/** What the samples say: one in ten, half and nine in ten of them. */
-export function spreadSums({ money, currency }: PlanView): SumRow[] {
+/** What the samples say: one in ten of them lies below P10, half below P50, nine in ten below P90. */
+export function spreadSums({ money }: PlanView): SumRow[] {
   if (!money) return [];
   const { paybackMonths, npv, paidBackShare } = money;
   return [
-    { label: 'Paid back, 1 in 10 sooner than', value: months(paybackMonths.p10) },
-    { label: 'half of them by', value: months(paybackMonths.p50), kind: 'strong' },
-    { label: '1 in 10 later than', value: months(paybackMonths.p90) },
-    { label: `Worth, ${currency}, 1 in 10 below`, value: formatNumber(npv.p10), kind: 'subtotal' },
-    { label: 'half of them above', value: formatNumber(npv.p50), kind: 'strong' },
-    { label: '1 in 10 above', value: formatNumber(npv.p90) },
+    { label: 'Payback, P10', value: months(paybackMonths.p10) },
+    { label: 'P50', value: months(paybackMonths.p50), kind: 'strong' },
+    { label: 'P90', value: months(paybackMonths.p90) },
+    { label: 'Present value, P10', value: formatNumber(npv.p10), kind: 'subtotal' },
+    { label: 'P50', value: formatNumber(npv.p50), kind: 'strong' },
+    { label: 'P90', value: formatNumber(npv.p90) },
     ...(paidBackShare < 0.995
       ? [
           {

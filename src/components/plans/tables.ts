@@ -1,9 +1,8 @@
 import { addDays } from '../../core/load';
 import { toMinorUnits } from '../../core/units';
-import type { PricedBillView, PlanView, YearView } from '../../schemas/plan';
-import type { LedgerData, LedgerRow, LedgerValue } from '../ui/ledger';
+import type { PricedBillView } from '../../schemas/plan';
+import type { LedgerData, LedgerValue } from '../ui/ledger';
 import { formatAmount, formatBillName, formatDay } from '../ui/format';
-import { groupNames } from './words';
 
 /** One bill line by line, before and after; each figure can be asked why. */
 export function billLines(
@@ -56,32 +55,5 @@ export function billLines(
       after: minor(after.total),
       change: minor(after.total - before.total),
     },
-  };
-}
-
-/** From standing to the plan by groups of charges: what it takes away, what its losses take back. */
-export function changeTable(year: YearView, plan: PlanView): LedgerData {
-  const minor = (amount: number) => toMinorUnits(amount, year.currency);
-  const money = { kind: 'money' as const, currency: year.currency };
-  const changes = groupNames
-    .map(([group, label]) => ({ label, change: plan.groupTotals[group] - year.standing.groupTotals[group] }))
-    .filter(({ change }) => Math.abs(change) >= 0.005);
-  return {
-    columns: [
-      { key: 'group', head: `From standing to ${plan.name}` },
-      { key: 'change', head: 'Change a year', ...money, signed: true },
-    ],
-    rows: [
-      {
-        id: 'standing',
-        kind: 'subtotal',
-        cells: { group: 'Standing', change: formatAmount(minor(year.standing.yearTotal), year.currency) },
-      },
-      ...changes.map(({ label, change }): LedgerRow => ({
-        id: label,
-        cells: { group: label, change: { value: minor(change), tone: change < 0 ? 'leading' : undefined } },
-      })),
-    ],
-    total: { group: plan.name, change: formatAmount(minor(plan.yearTotal), year.currency) },
   };
 }

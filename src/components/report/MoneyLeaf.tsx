@@ -1,15 +1,13 @@
 import type { EditionContent } from '../../schemas/edition';
 import { formatNumber, formatPayback, formatPercent, formatQuantity } from '../ui/format';
 import type { LedgerData } from '../ui/ledger';
-import { moneyOf } from '../client/edition-money';
+import { editionRanking } from '../client/edition-money';
 import { LedgerTable } from '../ui/LedgerTable';
 import { ResultSums, type SumRow } from '../ui/ResultSums';
 import type { LeafContext } from './AnswerLeaf';
 import { Leaf, LeafRow } from './Leaf';
-import { rankingShort, type RankingData } from '../charts/ranking';
-import { rankingChart } from '../plans/money-charts';
+import { rankingShort } from '../charts/ranking';
 import { riseWords, spreadWords } from '../plans/money-words';
-import type { MoneyView } from '../../schemas/money-view';
 import { Picture } from './Picture';
 import { paybackFinding } from './words';
 
@@ -66,18 +64,6 @@ function sums({ plan, currency, money }: EditionContent): SumRow[] {
   ];
 }
 
-/** The ranking of what moves the plan's money. */
-function rankingOf(content: EditionContent, { ranking }: MoneyView): RankingData {
-  const { npv, simplePaybackYears } = content.plan.appraisal;
-  return rankingChart({
-    currency: content.currency,
-    money: moneyOf(content),
-    npv,
-    paybackYears: simplePaybackYears,
-    ranking,
-  });
-}
-
 export interface MoneyLeafProps extends LeafContext {
   pictures: Record<string, string>;
   page: number;
@@ -86,7 +72,7 @@ export interface MoneyLeafProps extends LeafContext {
 /** Payback and cash flow. */
 export function MoneyLeaf({ content, taps, foot, pictures, page }: MoneyLeafProps) {
   const { plan } = content;
-  const ranking = content.money && rankingOf(content, content.money);
+  const ranking = editionRanking(content);
   return (
     <Leaf page={page} taps={taps} foot={foot} finding={paybackFinding(content)}>
       <LeafRow

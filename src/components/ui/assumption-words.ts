@@ -24,7 +24,7 @@ export const assumptionWords: Record<AssumptionKey, AssumptionWords> = {
   fixedRisePercent: { name: 'Rise of fixed charges', asked: 'Fixed charges rise by', ...rise },
   runsPercent: { name: 'Operating hours', asked: 'The plant runs', unit: '% of last year', decimals: 0, step: 1 },
   savingPercent: { name: 'Saving', asked: 'Saved on the bills', unit: '% of calculated', decimals: 0, step: 1 },
-  capitalCost: { name: 'Work, once', asked: 'The work costs', unit: '', money: true, decimals: 0, step: 500 },
+  capitalCost: { name: 'Work in all', asked: 'The work costs', unit: '', money: true, decimals: 0, step: 500 },
   incentive: { name: 'Incentive', asked: 'A grant pays', unit: '', money: true, decimals: 0, step: 500 },
   yearlyUpkeep: { name: 'Upkeep', asked: 'Upkeep costs', unit: 'a year', money: true, decimals: 0, step: 100 },
   upkeepGrowthPercent: { name: 'Rise of upkeep', asked: 'Upkeep rises by', ...rise },

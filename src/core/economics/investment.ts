@@ -98,7 +98,9 @@ export function yearsOfChecked(investment: Investment): InvestmentYear[] {
   const incentive = incentiveOf(investment);
   const basis = capitalCost - incentive;
   const start = { year: 0, work: capitalCost, incentive, saving: 0, upkeep: 0, tax: 0, net: 0 - basis };
-  const rows: InvestmentYear[] = [{ ...start, cumulative: start.net, discounted: start.net, cumulativeDiscounted: start.net }];
+  const rows: InvestmentYear[] = [
+    { ...start, cumulative: start.net, discounted: start.net, cumulativeDiscounted: start.net },
+  ];
   yearlySavings(investment).forEach((saving, k) => {
     const upkeep = yearlyUpkeep * (1 + upkeepGrowth) ** k;
     const depreciation = k < depreciationYears ? basis / depreciationYears : 0;

@@ -14,6 +14,8 @@ export interface CubicTable {
    * @param at  Ascending, within the table's range.
    */
   read: (at: Float64Array) => { a: Float64Array; b: Float64Array; regime: Uint8Array };
+  /** The first curve at one abscissa within the table's range, in any order. */
+  firstAt: (x: number) => number;
 }
 
 /** Least width of a table's piece, as a share of its range: where a curve has a corner. */
@@ -65,7 +67,7 @@ export function cubicTable(
     }
   };
   if (to > from) build(from, to);
-  return { read: (at) => readPieces(pieces, at) };
+  return { read: (at) => readPieces(pieces, at), firstAt: (x) => firstOf(pieces, x) };
 }
 
 function readPieces(pieces: Piece[], at: Float64Array) {
@@ -86,6 +88,18 @@ function readPieces(pieces: Piece[], at: Float64Array) {
     }
   });
   return { a, b, regime };
+}
+
+function firstOf(pieces: Piece[], x: number): number {
+  let lo = 0;
+  let hi = pieces.length - 1;
+  while (lo < hi) {
+    const middle = (lo + hi) >> 1;
+    if (x <= pieces[middle]!.to) hi = middle;
+    else lo = middle + 1;
+  }
+  const { a, from, scale } = pieces[lo]!;
+  return cubic(a, (x - from) * scale);
 }
 
 function cubic(c: Cubic, t: number): number {

@@ -1,5 +1,5 @@
 import { sumLoads, type LoadSeries } from '../load';
-import type { LoadBox } from '../tariff';
+import type { Coupling, LoadBox } from '../tariff';
 import { placeBank } from './banks';
 import { motorReach, type MotorReach } from './bound-motor';
 import { seenAtBus, seenThrough, type Ends, type SeenEnds } from './bound-upstream';
@@ -20,6 +20,8 @@ export interface BoundGround {
 /** All loads that admissible reactive power can make of a plant's. */
 export interface PlantBox {
   box: LoadBox;
+  /** What delivering costs; nothing where losses upstream hang on it too. */
+  coupling?: Coupling;
   /** As if every motor delivered its most, at the losses of that and at the least losses of all: the difference is not charged. */
   mostDelivered: { withLosses: LoadSeries; withLeast: LoadSeries };
 }
@@ -65,6 +67,7 @@ export function plantBox({ plant, banks = [], replacements = [] }: BoundGround):
   const { startMs, stepMinutes, quality } = low;
   return {
     box: { startMs, stepMinutes, quality, low, high },
+    ...(plant.upstream ? {} : { coupling: couplingOf(loads, motors, banks) }),
     mostDelivered: {
       withLosses: sumLoads(own.map((box) => box.withLosses)),
       withLeast: sumLoads(own.map((box) => box.withLeast)),
@@ -93,6 +96,37 @@ function addBank({ kvar, kw }: BusReach, { steps, stepKvar, stepKw }: ReturnType
     kw.high[i]! += steps * stepKw;
     kw.atMost[i]! += steps * stepKw;
   }
+}
+
+interface PlacedReach {
+  behind: number;
+  reach: MotorReach;
+}
+
+/** What motors and banks lose for what they deliver, interval by interval; the registers of all meters are summed. */
+function couplingOf(loads: LoadSeries[], motors: PlacedReach[], banks: CapacitorBank[]): Coupling {
+  const [first] = loads;
+  const hours = first!.stepMinutes / 60;
+  const leastLossKvarh = new Float64Array(first!.kwh.length);
+  for (const load of loads) {
+    const { kvarhLagging, kvarhLeading } = withBothRegisters(load).load;
+    kvarhLagging.forEach((lagging, i) => (leastLossKvarh[i]! += lagging - kvarhLeading[i]!));
+  }
+  const ofMotors = motors.map(({ reach: { index, leastLossKvar, pieces } }) => {
+    index.forEach((k, i) => (leastLossKvarh[i]! += leastLossKvar[k]! * hours));
+    const curves = pieces.map(
+      (one) =>
+        one && { kvarh: one.kvar.map((kvar) => kvar * hours), kwhPerKvarh: one.kwPerKvar, roomKwh: one.roomKw * hours },
+    );
+    return { index, curves };
+  });
+  const ofBanks = banks.map((bank, b) => {
+    const { steps, stepKvar, stepKw } = placeBank(bank, first!, `banks[${b}]`);
+    const kvarh = Float64Array.of(steps * stepKvar * hours);
+    const curve = { kvarh, kwhPerKvarh: Float64Array.of(stepKw / stepKvar), roomKwh: 0 };
+    return { index: new Uint32Array(leastLossKvarh.length), curves: [curve] };
+  });
+  return { leastLossKvarh, sources: [...ofMotors, ...ofBanks] };
 }
 
 interface MeterBox {

@@ -1,3 +1,4 @@
+import { piecesAt, type LossPieces } from './bound-pieces';
 import { reactiveSupply } from '../machine';
 import type { ReactiveSupply } from '../machine';
 import type { PlacedMotor } from './placed-motor';
@@ -13,6 +14,10 @@ export interface MotorReach {
   leastKw: Float64Array;
   mostKw: Float64Array;
   atMostDeliveredKw: Float64Array;
+  /** Reactive power taken beyond standing where the losses are least. [kvar] */
+  leastLossKvar: Float64Array;
+  /** What delivering more than that costs; per kvar and kW. */
+  pieces: (LossPieces | undefined)[];
 }
 
 /** Room for the error of the machine's tables, as a share of rated kVA. */
@@ -53,10 +58,12 @@ export function motorReach(
     leastKw: new Float64Array(count),
     mostKw: new Float64Array(count),
     atMostDeliveredKw: new Float64Array(count),
+    leastLossKvar: new Float64Array(count),
+    pieces: [undefined],
   };
   const none = canStand ? 0 : NaN;
   for (let k = 1; k < count; k++) {
-    const { lossLow, lossHigh, atMost } = inputsAt(supply, k - 1);
+    const { lossLow, lossHigh, atMost, leastLossAt, isConvex } = inputsAt(supply, k - 1);
     const standingKw = standing.kw[k]!;
     const standingKvar = standing.kvar[k]!;
     reach.leastKvar[k] = least(-supply.most[k - 1]! - standingKvar - room, none);
@@ -64,6 +71,9 @@ export function motorReach(
     reach.leastKw[k] = least(lossLow - standingKw - room, none);
     reach.mostKw[k] = most(lossHigh - standingKw + room, none);
     reach.atMostDeliveredKw[k] = atMost - standingKw;
+    reach.leastLossKvar[k] = -leastLossAt - standingKvar;
+    const beyond = (canStand ? Math.max(0, -standingKvar - supply.most[k - 1]!) : 0) + room;
+    reach.pieces.push(piecesAt(supply, k - 1, { from: leastLossAt, isConvex, beyond, room }));
   }
   return reach;
 }
@@ -71,19 +81,31 @@ export function motorReach(
 const least = (a: number, b: number): number => (Number.isNaN(b) ? a : Math.min(a, b));
 const most = (a: number, b: number): number => (Number.isNaN(b) ? a : Math.max(a, b));
 
+/** Inputs over the range at a load. */
+interface Inputs {
+  lossLow: number;
+  lossHigh: number;
+  /** At most delivered. */
+  atMost: number;
+  /** Delivered where the input is least. [kvar] */
+  leastLossAt: number;
+  isConvex: boolean;
+}
+
 /** Lower and upper end of the input over the range at a load, and that at most delivered. */
-function inputsAt(supply: ReactiveSupply, k: number): { lossLow: number; lossHigh: number; atMost: number } {
+function inputsAt(supply: ReactiveSupply, k: number): Inputs {
   let [low, high] = [supply.least[k]!, supply.most[k]!];
   const atLeast = supply.inputKwAt(k, low);
   const atMost = supply.inputKwAt(k, high);
   const lossHigh = Math.max(atLeast, atMost);
   const slope = (q: number): number => supply.marginalLossAt(k, q);
-  const atEnd = { lossLow: Math.min(atLeast, atMost), lossHigh, atMost };
+  const leastLossAt = atMost < atLeast ? high : low;
+  const atEnd = { lossLow: Math.min(atLeast, atMost), lossHigh, atMost, leastLossAt, isConvex: true };
   if (!(high > low)) return atEnd;
   if (!risesEverywhere(slope, low, high)) {
     const middle = [0.25, 0.5, 0.75].map((share) => supply.inputKwAt(k, low + share * (high - low)));
     const [lowest, highest] = [Math.min(atEnd.lossLow, ...middle), Math.max(lossHigh, ...middle)];
-    return { lossLow: 2 * lowest - highest, lossHigh: 2 * highest - lowest, atMost };
+    return { lossLow: 2 * lowest - highest, lossHigh: 2 * highest - lowest, atMost, leastLossAt: low, isConvex: false };
   }
   if (slope(low) >= 0 || slope(high) <= 0) return atEnd;
   for (let halving = 0; halving < HALVINGS; halving++) {
@@ -92,7 +114,7 @@ function inputsAt(supply: ReactiveSupply, k: number): { lossLow: number; lossHig
     else high = middle;
   }
   const lossLow = supply.inputKwAt(k, low) + slope(low) * (high - low);
-  return { lossLow, lossHigh, atMost };
+  return { lossLow, lossHigh, atMost, leastLossAt: low, isConvex: true };
 }
 
 function risesEverywhere(slope: (q: number) => number, low: number, high: number): boolean {

@@ -42,8 +42,8 @@ export function boundOf(ask: BoundGround & { schedule: Schedule; options: PriceO
     return {
       refused: 'The upstream impedance is too great for what the motors could take: check its rating and reactance.',
     };
-  const { box, mostDelivered } = made;
-  const bound = boundTotals(schedule, box, options);
+  const { box, coupling, mostDelivered } = made;
+  const bound = boundTotals(schedule, box, options, coupling);
   if (bound.refused !== undefined) return { refused: bound.refused };
   const { low } = bound.totals;
   const total = low.reduce((sum, value) => sum + value, 0);

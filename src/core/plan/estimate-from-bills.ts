@@ -125,8 +125,9 @@ function plannedChange({ year, plant, setup }: EstimateAsk): PlannedChange {
   return change;
 }
 
-/** Values of all measures on the even load, before and after; none where it cannot be priced. */
+/** Values on the even load, before and after, where some measure is a formula; none where it cannot be priced. */
 function evenMeasures({ schedule, options, year }: EstimateAsk, { before, after }: PlannedChange): MonthValues[] {
+  if (!year.months.some(({ measured }) => measured.some(({ channel }) => channel === undefined))) return [];
   const periods = year.months.map(({ row: { from, to } }) => ({ from, to }));
   try {
     const bills = [before, after].map((load) => priceBills(schedule, load, { ...options, periods }));

@@ -23,7 +23,7 @@ export function meanPowerOn(series: PowerSeries, grid: Grid): Float64Array {
   const stepMs = series.stepMinutes * MINUTE_MS;
   const wantedMs = grid.stepMinutes * MINUTE_MS;
   const lengthMs = series.kw.length * stepMs;
-  return Float64Array.from({ length: grid.count }, (_, i) => {
+  return new Float64Array(grid.count).map((_, i) => {
     // Whole milliseconds: parts are exact, and no sliver of a neighbour slips in by rounding.
     const fromMs = grid.startMs + i * wantedMs - series.startMs;
     const toMs = fromMs + wantedMs;

@@ -1,5 +1,5 @@
 import { cubicTable, fixField, ratedKva } from '../machine';
-import type { FixedField, SynchronousMotor } from '../machine';
+import type { SynchronousMotor } from '../machine';
 
 /** Distinct readings up to this number are solved one by one. */
 const FEW = 60;
@@ -39,7 +39,8 @@ export function shaftLoadFromSubmeter(
   const noLoadKw = fixed.taken(0).inputKw;
   const mostInputKw = fixed.taken(greatestKw).inputKw;
   const runs = (inputKw: number) => inputKw >= noLoadKw / 2 && inputKw < mostInputKw;
-  const shaftAt = solveAll(fixed, at.inputKw.filter(runs), noLoadKw, greatestKw, TABLE_TOLERANCE * ratedKva(motor));
+  const solve = (inputKw: number) => shaftFor(fixed.taken, inputKw, noLoadKw, greatestKw);
+  const shaftAt = inverse(solve, at.inputKw.filter(runs), noLoadKw, greatestKw, TABLE_TOLERANCE * ratedKva(motor));
   let missing = 0;
   let beyondPullOut = 0;
   const shaftKw = at.inputKw.map((inputKw, i) => {
@@ -47,7 +48,7 @@ export function shaftLoadFromSubmeter(
       missing++;
       return at.whenMissing?.[i] ?? 0;
     }
-    if (runs(inputKw)) return shaftAt.get(inputKw)!;
+    if (runs(inputKw)) return shaftAt(inputKw);
     if (inputKw < noLoadKw) return 0;
     beyondPullOut++;
     return greatestKw;
@@ -55,26 +56,26 @@ export function shaftLoadFromSubmeter(
   return { shaftKw, missing, beyondPullOut };
 }
 
-/** Shaft load by reading, for distinct readings of a running motor: many are read from a table of the inverse. */
-function solveAll(
-  fixed: FixedField,
-  inputKw: Float64Array,
+/** Shaft load by reading of a running motor: few distinct readings are solved, many are read from a table of the inverse. */
+function inverse(
+  solve: (inputKw: number) => number,
+  readings: Float64Array,
   noLoadKw: number,
   greatestKw: number,
   tolerance: number,
-): Map<number, number> {
-  const readings = Float64Array.from(new Set(inputKw)).sort();
-  const solve = (reading: number) => shaftFor(fixed.taken, reading, noLoadKw, greatestKw);
-  if (readings.length <= FEW) return new Map(Array.from(readings, (reading) => [reading, solve(reading)]));
+): (inputKw: number) => number {
+  const known = new Map<number, number>();
+  let highest = 0;
+  for (const reading of readings) {
+    if (known.size <= FEW && !known.has(reading)) known.set(reading, solve(reading));
+    highest = Math.max(highest, reading);
+  }
+  if (known.size <= FEW) return (reading) => known.get(reading)!;
   const token = tokenLoadKw(greatestKw);
-  const idle = readings.filter((reading) => reading <= noLoadKw + token);
-  const loaded = readings.subarray(idle.length);
-  const known = new Map(Array.from(idle, (reading) => [reading, token]));
-  if (loaded.length === 0) return known;
-  const sample = (reading: number) => ({ a: solve(reading), b: 0 });
-  const table = cubicTable(sample, noLoadKw + token, loaded[loaded.length - 1]!, tolerance).read(loaded);
-  loaded.forEach((reading, i) => known.set(reading, Math.max(token, table.a[i]!)));
-  return known;
+  const lowest = noLoadKw + token;
+  if (highest <= lowest) return () => token;
+  const table = cubicTable((reading) => ({ a: solve(reading), b: 0 }), lowest, highest, tolerance);
+  return (reading) => (reading <= lowest ? token : Math.max(token, table.firstAt(reading)));
 }
 
 /** Running at no load keeps a token load, since 0 stands for standstill. */

@@ -33,6 +33,7 @@
  */
 export { boundQuantities, type RangeRow } from './bound/bound-quantities';
 export { boundTotals, type BoundedBill, type BoundedTotals } from './bound/bound-totals';
+export type { Coupling, DeliveryCurve } from './bound/coupling';
 export { boxOfLoad, type LoadBox, type Registers } from './bound/load-box';
 export type { Range } from './bound/range';
 export { breakEvens, type BreakEven, type BreakEvens, type CheaperStretch } from './compare/break-evens';
@@ -43,6 +44,7 @@ export { averagePowerFactor, energiesOf, scaledLoad, shareToReach, withoutLaggin
 export { PriceError, ScheduleError, wordProblem, type ScheduleProblem } from './errors';
 export { checkExamples, type ExampleResult } from './check-examples';
 export { describeSchedule, type ScheduleDescription } from './describe';
+export { looksBack } from './looks-back';
 export { scheduleJsonSchema } from './schema';
 export type {
   ChargeDefinition,

@@ -5,7 +5,7 @@ import { conflict } from '../errors';
 import type { Motor } from '../models/Motor';
 import { calculateYear } from '../workers/pool';
 import { actKey } from './plan-acts';
-import type { TaskAct, TaskBasis, TaskSetting } from '../workers/tasks';
+import type { TaskAct, TaskBasis, TaskMotor, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import { loadSourcesOf, type StoredSource } from './load-sources';
 import { completedOf, listMotors } from './motors';
@@ -41,6 +41,23 @@ export async function planMotors(engagementId: number): Promise<PlanMotor[]> {
   });
 }
 
+/** The motors as the calculations see them. */
+export const taskMotors = ({ meters }: OpenEngagement, motors: PlanMotor[]): TaskMotor[] =>
+  motors.map(({ row, machine, completed, source }) => ({
+    id: row.id,
+    name: row.name,
+    machine,
+    calendar: source.calendar,
+    metered: source.metered,
+    fieldTodayA: row.fieldTodayA,
+    leastFieldA: completed.leastFieldA,
+    voltageBandPu: completed.voltageBandPu,
+    behind: Math.max(
+      0,
+      meters.findIndex(({ id }) => id === row.meterId),
+    ),
+  }));
+
 /**
  * What the plans of an engagement are priced from.
  *
@@ -63,20 +80,7 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
     load,
     meters,
     ...supplyForTask(supply),
-    motors: motors.map(({ row, machine, completed, source }) => ({
-      id: row.id,
-      name: row.name,
-      machine,
-      calendar: source.calendar,
-      metered: source.metered,
-      fieldTodayA: row.fieldTodayA,
-      leastFieldA: completed.leastFieldA,
-      voltageBandPu: completed.voltageBandPu,
-      behind: Math.max(
-        0,
-        opened.meters.findIndex(({ id }) => id === row.meterId),
-      ),
-    })),
+    motors: taskMotors(opened, motors),
   };
   const ofMotors = motors.map(({ row, source }) => [row.id, row.version, row.updatedAt.getTime(), source.key]);
   const fingerprint = createHash('sha256')

@@ -73,7 +73,8 @@ export function savingOf(
   const sumOf = (chosen: typeof changes) => {
     const sums: Record<string, number> = {};
     for (const { line, amount } of chosen) sums[line.group] = (sums[line.group] ?? 0) + amount;
-    return sums;
+    // What is left of equal bills by the order of adding is no saving.
+    return Object.fromEntries(Object.entries(sums).map(([group, sum]) => [group, Math.round(sum * 1e6) / 1e6]));
   };
   const size = (sums: Record<string, number>) => Object.values(sums).reduce((sum, one) => sum + Math.abs(one), 0);
   const hourly = sumOf(changes.filter(({ line }) => withHours(line) === true));

@@ -22,15 +22,15 @@ function freeName(taken: string[]): string {
 }
 
 /**
- * Where the form of a plan begins: a stored plan, the settings a search found, or the fields of today.
+ * Where the form of a plan begins: a stored plan, a copy of one, the settings a search found, or the fields of today.
  *
- * @param asked  `new`, or the id of a plan
+ * @param asked.plan  `new`, or the id of a plan; `from`: the plan a new one begins as
  * @returns null where no form was asked for
  */
 export async function planStart(
   actor: Actor,
   year: YearView,
-  asked: { plan: string | null; search: string | null },
+  asked: { plan: string | null; search: string | null; from?: string | null },
 ): Promise<PlanStart | null> {
   const stored = [...year.plans, ...year.unpriced].find((one) => String(one.id) === asked.plan);
   const fieldsOf = (fields: readonly MotorSettingInput[]) =>
@@ -45,14 +45,26 @@ export async function planStart(
     return { start: { ...entries, fields: fieldsOf(entries.fields) }, plan: { id: row.id, version } };
   }
   if (asked.plan !== 'new') return null;
+  const name = freeName([...year.plans, ...year.unpriced].map((one) => one.name));
+  const twin = [...year.plans, ...year.unpriced].find((one) => String(one.id) === asked.from);
+  if (twin?.id) {
+    const row = await Plan.findByPk(twin.id);
+    if (!row) throw notFound();
+    const { version: _version, ...entries } = storedPlan(row, year.currency);
+    return { start: { ...entries, name, fields: fieldsOf(entries.fields) } };
+  }
   const searchJobId = asked.search && /^\d+$/.test(asked.search) ? Number(asked.search) : undefined;
   const job = searchJobId === undefined ? null : await readJob(actor, searchJobId);
   const found = searchFound(job);
   return {
     start: {
-      name: freeName([...year.plans, ...year.unpriced].map((one) => one.name)),
-      spans: { by: 'year' },
-      fields: fieldsOf((found?.fields ?? []).map(({ motorId, fieldA }) => ({ motorId, fieldA }))),
+      name,
+      spans: found?.spans ?? { by: 'year' },
+      fields: fieldsOf(
+        (found?.fields ?? []).map(({ motorId, fieldA, controls }) =>
+          controls ? { motorId, controls } : { motorId, fieldA },
+        ),
+      ),
       banks: [],
       replacements: [],
       workCost: 0,

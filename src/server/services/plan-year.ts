@@ -15,6 +15,7 @@ import { planBasis, priceSettings, type PlanBasis } from './plan-basis';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
+import type { PricingBasis } from './pricing';
 import { unpricedOf, viewOf, type LoadedMotor, type YearParts } from './plan-view';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
@@ -36,7 +37,10 @@ export async function missingForPlans(opened: OpenEngagement): Promise<Missing |
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
+  const motors = basis.motors.map((motor) => ({
+    ...motor,
+    load: loadOf(motor.row, motor.machine, opened, motor.source),
+  }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
@@ -51,6 +55,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     to: basis.task.periods.at(-1)!.to,
     route: 'intervals',
     scheduleTitle: basis.pricing.schedule.title,
+    seasons: basis.pricing.schedule.texts.at(-1)?.seasons?.names ?? [],
     readings: standing.readings,
     standing: viewOf(year, null, standing),
     plans,
@@ -59,17 +64,17 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
       return reason ? [unpricedOf(row, reason, motors)] : [];
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
-    gaps: gapsOf(basis, standing),
+    gaps: [...gapsOf(basis, standing), ...motors.flatMap(loadGapOf)],
     notes: notesOfBills(standing.bills.map(({ period, notes }) => ({ name: formatBillName(period), notes }))),
     fingerprint: basis.fingerprint,
   };
 }
 
 /** What the spans of plans are laid over. */
-export const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+export const spanYearOf = ({ pricing }: { pricing: Pick<PricingBasis, 'schedule' | 'periods'> }): SpanYear => ({
   seasons: pricing.schedule.texts.at(-1)?.seasons,
-  from: task.periods[0]!.from,
-  to: task.periods.at(-1)!.to,
+  from: pricing.periods[0]!.from,
+  to: pricing.periods.at(-1)!.to,
 });
 
 const wholeYearDays = 350;
@@ -85,6 +90,25 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
     ...(missing > 0
       ? [
           `${wordNumber(missing, 1)} of ${wordNumber(intervals, 1)} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
+        ]
+      : []),
+  ];
+}
+
+/** What a motor's submeter does not tell. */
+function loadGapOf({ row, source, load }: LoadedMotor): string[] {
+  if (!source.metered || load.hoursMissing + load.hoursBeyond === 0) return [];
+  const stand =
+    source.metered.whenMissing === 'calendar' ? 'its shift calendar stands in' : 'it is taken to stand still';
+  return [
+    ...(load.hoursMissing > 0
+      ? [
+          `The submeter of ${row.name} has no reading for ${wordNumber(load.hoursMissing, 1)} hours of the year: there ${stand}.`,
+        ]
+      : []),
+    ...(load.hoursBeyond > 0
+      ? [
+          `In ${wordNumber(load.hoursBeyond, 1)} hours the submeter of ${row.name} reads more than its field of today can hold: there the most it holds is taken.`,
         ]
       : []),
   ];

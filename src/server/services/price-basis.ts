@@ -22,7 +22,7 @@ export interface ReconcileBasis {
 }
 
 /** Of a bill's printed quantities those the schedule has a name for. */
-function knownTo(schedule: Schedule, bill: BillView): Record<string, number> {
+export function knownTo(schedule: Schedule, bill: BillView): Record<string, number> {
   const names = new Set(schedule.texts.flatMap((text) => text.quantities.map((quantity) => quantity.name)));
   return Object.fromEntries(Object.entries(bill.quantities).filter(([name]) => names.has(name)));
 }

@@ -15,7 +15,6 @@ import type { ShaftLoadView } from '../../schemas/shaft-load';
 import { keepSource, shaftLoadViewOf } from './motor-loads';
 import { completedOf, openMotor, type OpenMotor } from './motors';
 
-
 /** A submeter's file that lies in the drawer. */
 export interface ReceivedSubmeter extends StoredFile {
   fileName: string;
@@ -133,5 +132,8 @@ function notesOf({ columns, guesses, report }: IntakePreview): string[] {
       ? `Column ${one.letter}, ${one.name || 'without a name'}, is taken as ${one.measure ?? 'energy'} in ${one.unit}: ${one.why}`
       : `Taken as ${one.takenAs}: ${one.why}`,
   );
-  return [...unsure, ...(report?.notes ?? []).filter(({ code }) => code !== 'channel-absent').map((note) => note.message)];
+  return [
+    ...unsure,
+    ...(report?.notes ?? []).filter(({ code }) => code !== 'channel-absent').map((note) => note.message),
+  ];
 }

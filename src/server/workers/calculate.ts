@@ -4,12 +4,13 @@ import type { CompareResult } from '../../schemas/compare';
 import type { PricedYear } from '../../schemas/pricing';
 import { reconcileYear } from '../services/reconcile';
 import { compareYear } from './compare-year';
+import { estimateYear } from './estimate-year';
 import { priceText } from './price-text';
 import { priceYear } from './price-year';
 import { searchYear } from './search-year';
-import type { Refused, SearchResult, Task, TaskSetting, TextResult } from './tasks';
+import type { EstimateResult, Refused, SearchResult, Task, TaskSetting, TextResult } from './tasks';
 
-type Done = TaskSetting[] | SearchResult | TextResult | CompareResult | PricedYear;
+type Done = EstimateResult | TaskSetting[] | SearchResult | TextResult | CompareResult | PricedYear;
 
 /** Errors whose words a person can act on; any other is a fault of the program. */
 const tellable = [PriceError, ScheduleError, PullOutError, NotConvergedError];
@@ -29,6 +30,8 @@ export default function calculate(task: Task): Done | Refused {
 
 function doneOf(task: Task): Done {
   switch (task.kind) {
+    case 'estimate':
+      return estimateYear(task);
     case 'year':
       return priceYear(task);
     case 'search':

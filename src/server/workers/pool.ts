@@ -7,6 +7,8 @@ import type { CompareResult } from '../../schemas/compare';
 import type { PricedYear } from '../../schemas/pricing';
 import type {
   CompareTask,
+  EstimateResult,
+  EstimateTask,
   ReconcileTask,
   Refused,
   SearchProgress,
@@ -50,6 +52,11 @@ function resultOf<Result extends object>(answer: Result | Refused): Result {
  */
 export async function calculateYear(task: YearTask): Promise<TaskSetting[]> {
   return resultOf((await pool().run(task)) as TaskSetting[] | Refused);
+}
+
+/** Estimates plans from bills alone in a thread of its own; what cannot be estimated says why in the result. */
+export async function estimateInPool(task: EstimateTask): Promise<EstimateResult | Refused> {
+  return (await pool().run(task)) as EstimateResult | Refused;
 }
 
 /**

@@ -3,6 +3,7 @@ import type { BillingPeriod, LoadSeries } from '../../core/load';
 import type { FieldControl, SynchronousMotor } from '../../core/machine';
 import type {
   BankPlanResult,
+  BillsEstimate,
   BusSupply,
   CapacitorBank,
   InductionMotor,
@@ -13,7 +14,8 @@ import type {
 } from '../../core/plan';
 import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
-import type { SearchView } from '../../schemas/search';
+import type { SearchInput, SearchView } from '../../schemas/search';
+import type { SpanRules } from '../services/plan-spans';
 import type { ReconcileBasis } from '../services/price-basis';
 import type { LoadSource } from '../services/shaft-load';
 
@@ -107,7 +109,9 @@ export interface TaskSetting {
 export interface SearchTask {
   kind: 'search';
   basis: TaskBasis;
-  stepA: number;
+  asked: SearchInput;
+  /** Of the spans asked for; null: the year is whole. */
+  spanRules: SpanRules | null;
   fingerprint: string;
   port: MessagePort;
 }
@@ -115,6 +119,8 @@ export interface SearchTask {
 export interface SearchProgress {
   done: number;
   planned: number;
+  /** What is counted; settings where absent. */
+  unit?: string;
 }
 
 export type SearchResult = SearchView;
@@ -171,8 +177,25 @@ export interface ReconcileTask {
   basis: Omit<ReconcileBasis, 'schedule'> & { scheduleText: string };
 }
 
+/** A year of bills without readings, with its motors. */
+export interface EstimateTask {
+  kind: 'estimate';
+  basis: Omit<TaskBasis, 'load' | 'meters'>;
+  rows: PrintedRow[];
+  /** Stored plans. */
+  acts: TaskAct[];
+  /** How far all fields are raised from today's towards their limits besides, from 0 to 1. */
+  shares: number[];
+}
+
+/** What acts and raised fields are estimated to come to, in their order. */
+export interface EstimateResult {
+  acts: BillsEstimate[];
+  raised: { share: number; fields: { motorId: number; fieldA: number }[]; estimate: BillsEstimate }[];
+}
+
 /** Anything a calculation thread does. */
-export type Task = YearTask | SearchTask | TextTask | CompareTask | ReconcileTask;
+export type Task = EstimateTask | YearTask | SearchTask | TextTask | CompareTask | ReconcileTask;
 
 /** Why a task cannot be done, in words for a person. */
 export interface Refused {

@@ -6,7 +6,7 @@ import { addDays, localDateStartMs, type LoadSeries } from '@/core/load';
 import { ratedKva, reactiveRange, type FieldControl } from '@/core/machine';
 import { boundOf, createSimulator, type CapacitorBank, type PlanBound, type PlanMotor, type Plant } from '@/core/plan';
 import { plantBox } from '@/core/plan/bound-box';
-import { priceBills, readSchedule, type PriceOptions, type Schedule } from '@/core/tariff';
+import { boundTotals, priceBills, readSchedule, type PriceOptions, type Schedule } from '@/core/tariff';
 import { buildMotor, buildLosslessMotor, randomMotor } from '../machine/build-motor';
 import { buildSchedule } from '../tariff/build';
 import { buildLoad, buildPlanMotor } from './build-plant';
@@ -94,7 +94,7 @@ describe('the box of a plant', () => {
 const year2026 = (days: number): PriceOptions => ({
   periods: [{ from: '2026-01-05', to: `2026-01-${String(5 + days).padStart(2, '0')}` }],
 });
-const utc = { timeZone: 'UTC', demandWindow: '15 min' };
+const utc = { timeZone: 'UTC', demandWindow: '15 min', zeroKwh: '{ pf: 1 }' };
 
 describe('boundOf on a convex kVA demand', () => {
   // One motor without losses runs at one load. The charge is 10 a kVA of the highest quarter-hour: the optimum delivers in the highest
@@ -158,6 +158,102 @@ charges:
     expect(part).toBeLessThan((10 * freeLossKwh) / 48 + 0.05);
     return part;
   }
+});
+
+describe('boundOf where delivering costs energy', () => {
+  const windows = `windows:
+  peak: { days: every day, hours: 08:00-20:00 }
+  low: { rest: peak }
+`;
+  const linear = buildSchedule(
+    `${windows}quantities:
+  kwh: { sum: kwh, inEach: [peak, low] }
+  kvarh: { sum: kvarhLagging }
+charges:
+  energy: { per: kwh, rate: { peak: 0.2, low: 0.2 }, group: energy }
+  reactive: { per: kvarh, rate: 0.004, group: reactive }`,
+    utc,
+  );
+  const mixed = buildSchedule(
+    `${windows}quantities:
+  kwh: { sum: kwh, inEach: [peak, low] }
+  all: { formula: total(kwh), unit: kWh }
+  kvarh: { sum: kvarhLagging }
+  lead: { sum: kvarhLeading, in: low }
+  maxKva: { highest: kva }
+  pf: { formula: pf(all; kvarh) }
+  points: { formula: 100 * excess(0.95; pf), unit: points }
+  over: { formula: excess(kvarh; 0.3 * all), unit: kvarh }
+charges:
+  energy: { per: kwh, rate: { peak: 0.25, low: 0.1 }, group: energy }
+  demand: { per: maxKva, rate: 0.4, group: demand }
+  reactive: { per: over, rate: 0.006, group: reactive }
+  leading: { per: lead, rate: 0.02, group: reactive }
+  slope: { percentOf: [demand, energy], per: points, rate: 0.3, group: reactive }
+  tax: { percentOf: all above, rate: 10, group: tax }`,
+    utc,
+  );
+
+  it('comes near a known optimum: with one price of energy and of kvarh each interval is best by itself, all alike', () => {
+    const load = buildLoad(4);
+    const motor = buildMotor();
+    const plant: Plant = { load, motors: [{ motor, shaftKw: new Float64Array(384).fill(1200), standingFieldA: 100 }] };
+    const options = year2026(4);
+    const simulator = createSimulator(plant);
+    const range = reactiveRange(motor, { shaftKw: 1200 })!;
+    let best = Infinity;
+    for (let k = 0; k <= 200; k++) {
+      const at = range.least + (k / 200) * (range.most - range.least);
+      best = Math.min(best, totalOf(linear, simulator.apply([[kvar(at)]]), options));
+    }
+    const bound = bounded({ plant, schedule: linear, options });
+    // By the box alone, losses and reactive energy each at their least.
+    const { box } = plantBox({ plant })!;
+    const apart = boundTotals(linear, box, options);
+    const withoutLosses = apart.refused === undefined ? apart.totals.low[0]! : NaN;
+    expect(bound.total).toBeLessThanOrEqual(best);
+    expect(best - withoutLosses).toBeGreaterThan(100);
+    expect(best - bound.total).toBeLessThan(0.15 * (best - withoutLosses));
+  });
+
+  it.each([
+    ['linear', linear],
+    ['mixed', mixed],
+  ])('lies below every bill of random reactive power in every interval on the %s tariff', (_, schedule) => {
+    const share = fc.double({ min: 0, max: 1, noNaN: true });
+    const levels = fc.array(share, { minLength: 192, maxLength: 192 });
+    fc.assert(
+      fc.property(levels, share, share, fc.boolean(), (shares, common, mixture, hasBank) => {
+        const load = buildLoad(2);
+        const motors = [
+          buildMotor(),
+          buildMotor({ ratedOutputKw: 900, ratedFieldCurrentA: 90, fieldResistanceOhm: 0.9 }),
+        ];
+        const shaftKw = (kw: number): Float64Array =>
+          Float64Array.from(load.kwh, (__, i) => (i % 96 < 24 ? 0 : kw * (i % 3 === 0 ? 0.7 : 1)));
+        const plant: Plant = {
+          load,
+          motors: [
+            { motor: motors[0]!, shaftKw: shaftKw(1300), standingFieldA: 110 },
+            { motor: motors[1]!, shaftKw: shaftKw(800), standingFieldA: 60 },
+          ],
+        };
+        const banks: CapacitorBank[] = [{ steps: 4, stepKvar: 150, lossWPerKvar: 3 }];
+        const spans = { index: Uint8Array.from(load.kwh, (__, i) => i), count: 192 };
+        const simulator = createSimulator(plant, { spans, ...(hasBank ? { banks } : {}) });
+        const controls = motors.map((motor) => {
+          const range = reactiveRange(motor, { shaftKw: 0.7 * motor.ratedOutputKw })!;
+          return shares.map((own) =>
+            kvar(range.least + (mixture * own + (1 - mixture) * common) * (range.most - range.least)),
+          );
+        });
+        const simulated = simulator.apply(controls);
+        const bound = bounded({ plant, schedule, options: year2026(2), banks });
+        expect(totalOf(schedule, simulated, year2026(2))).toBeGreaterThanOrEqual(bound.total);
+      }),
+      { numRuns: 40 },
+    );
+  });
 });
 
 const bench = readSchedule(readFileSync(path.resolve('tests', 'bench', 'heavy.yaml'), 'utf8'));

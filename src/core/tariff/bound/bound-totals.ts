@@ -6,6 +6,8 @@ import { planPeriods, wordPeriod } from '../price/period-plan';
 import { checkNames, prepareRun } from '../price/pricing';
 import type { PriceOptions } from '../types';
 import { BoxSource } from './box-source';
+import { branchBill } from './branch-bill';
+import { envelopesOf, type Coupling } from './coupling';
 import { LineBlocks } from './line-blocks';
 import { cornersOf, type LoadBox } from './load-box';
 import { point, type Range } from './range';
@@ -36,18 +38,25 @@ export type BoundedTotals =
  *
  * @param box  Lowest and highest energies of every interval, which are missing in none or all of the loads
  * @param options  As of `priceBills`
+ * @param coupling  What delivering reactive energy costs in active energy at least: it raises the low ends of totals
  * @returns Totals per period, [currency], float64[periods]; `refused` says why bills of such loads cannot be priced at all
  * @throws {RangeError} where a lower end of the box lies above its upper end
  * @source Moore, Kearfott, Cloud, Introduction to Interval Analysis, SIAM 2009, ch. 5 (natural interval extension); from memory.
  */
-export function boundTotals(schedule: Schedule, box: LoadBox, options: PriceOptions): BoundedTotals {
+export function boundTotals(
+  schedule: Schedule,
+  box: LoadBox,
+  options: PriceOptions,
+  coupling?: Coupling,
+): BoundedTotals {
   return orRefused(() => {
     checkNames(schedule, options);
     const plans = planPeriods(schedule, options.periods);
     const { startMs, stepMinutes, quality } = box;
     const ground = layGround(schedule, plans, { startMs, stepMinutes, count: quality.length });
     const source = new BoxSource(ground, cornersOf(schedule, box));
-    return boundRun(prepareRanges(schedule, plans, options, source));
+    const run = prepareRanges(schedule, plans, options, source);
+    return boundRun(run, coupling && ((bill) => branchCoupled(run, bill, source, coupling, quality)));
   });
 }
 
@@ -75,11 +84,24 @@ export function prepareRanges(
   return { run, source, bills };
 }
 
-/** Works all bills out, in order. */
-export function boundRun(run: RangeRun): BoundedTotals {
+function branchCoupled(
+  run: RangeRun,
+  bill: RangeBill,
+  source: BoxSource,
+  coupling: Coupling,
+  quality: Uint8Array,
+): void {
+  if (bill.states.length > 1 || !Number.isFinite(bill.total.low)) return;
+  const box = source.reductionOf(bill, bill.states[0]!);
+  branchBill(run, bill, box, envelopesOf(coupling, box.low, quality));
+}
+
+/** Works all bills out, in order; `tighten` may then raise a bill's low end. */
+export function boundRun(run: RangeRun, tighten?: (bill: RangeBill) => void): BoundedTotals {
   for (const bill of run.bills) {
     for (const state of bill.states) rangeQuantities(run, bill, state);
     rangeCharges(run, bill);
+    tighten?.(bill);
   }
   return {
     totals: {

@@ -26,7 +26,8 @@ interface CellPair {
   high: CellPlan;
 }
 
-interface BoxReduction {
+/** A text's gathering in a period, with the energies of both corners. */
+export interface BoxReduction {
   reduction: Reduction;
   low: ClassPlan;
   high: ClassPlan;
@@ -68,7 +69,8 @@ export class BoxSource implements RangeSource {
     }
   }
 
-  private reductionOf(bill: RangeBill, state: RangeState): BoxReduction {
+  /** How the measures of a bill's piece are gathered. */
+  reductionOf(bill: RangeBill, state: RangeState): BoxReduction {
     return this.periods[bill.bill.plan.index]!.get(state.point.piece.text)!;
   }
 

@@ -119,7 +119,11 @@ const rareEntries: [Entry, has: (motor: MotorView) => boolean][] = [
     ({ plate }) => (plate.temperatureRiseC ?? plate.insulationClass) !== undefined,
   ],
   [
-    ['Exciter field at rated field', 'A', ({ panel }) => said(panel?.ratedA, { upTo: 2 })],
+    [
+      'Exciter field at rated field',
+      'A',
+      ({ panel }) => (panel ? formatNumber(panel.ratedA, { upTo: 2 }) : { value: 'none', tone: 'quiet' }),
+    ],
     ({ panel }) => panel !== undefined,
   ],
 ];

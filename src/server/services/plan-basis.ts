@@ -10,6 +10,7 @@ import type { OpenEngagement } from './engagements';
 import { loadSourcesOf, type StoredSource } from './load-sources';
 import { completedOf, listMotors } from './motors';
 import { pricingInputs, type PricingInputs } from './pricing';
+import { remembered, type Memory } from './remembered';
 import { supplyForTask, supplyOf } from './supplies';
 
 /** A motor's row with the machine its plate makes. */
@@ -89,30 +90,13 @@ export async function planBasis(opened: OpenEngagement): Promise<PlanBasis> {
   return { pricing, motors, supply, task, fingerprint };
 }
 
-const cacheSize = 60;
-const shared = globalThis as typeof globalThis & { counterlagSettings?: Map<string, Promise<TaskSetting>> };
-const cache = (shared.counterlagSettings ??= new Map());
-
-const keyOf = (basis: PlanBasis, act: TaskAct) => `${basis.fingerprint} ${actKey(act)}`;
+const shared = globalThis as typeof globalThis & { counterlagSettings?: Memory<TaskSetting> };
 
 /** Prices settings over the year; each is worked out once as long as nothing it hangs on changes. */
-export async function priceSettings(basis: PlanBasis, settings: TaskAct[]): Promise<TaskSetting[]> {
-  const fresh = settings.filter((act) => !cache.has(keyOf(basis, act)));
-  const work = fresh.length > 0 ? calculateYear({ kind: 'year', basis: basis.task, settings: fresh }) : null;
-  const results = settings.map((act) => {
-    const index = fresh.indexOf(act);
-    const known = cache.get(keyOf(basis, act));
-    return work && index >= 0 ? work.then((done) => done[index] as TaskSetting) : (known as Promise<TaskSetting>);
-  });
-  settings.forEach((act, index) => keep(keyOf(basis, act), results[index] as Promise<TaskSetting>));
-  return Promise.all(results);
-}
-
-/** Keeps a result, newest last; one that fails is forgotten, so that the next look tries again. */
-function keep(key: string, result: Promise<TaskSetting>): void {
-  cache.delete(key);
-  cache.set(key, result);
-  result.catch(() => cache.delete(key));
-  const [oldest] = cache.keys();
-  if (cache.size > cacheSize && oldest !== undefined) cache.delete(oldest);
+export function priceSettings(basis: PlanBasis, settings: TaskAct[]): Promise<TaskSetting[]> {
+  const kept = { memory: (shared.counterlagSettings ??= new Map()), size: 60 };
+  const keyOf = (act: TaskAct) => `${basis.fingerprint} ${actKey(act)}`;
+  return remembered(kept, settings, keyOf, (fresh) =>
+    calculateYear({ kind: 'year', basis: basis.task, settings: fresh }),
+  );
 }

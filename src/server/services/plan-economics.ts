@@ -7,22 +7,15 @@ import {
   sampleAppraisal,
 } from '../../core/economics';
 import { investmentOf, spreadsOf, type PlanMoney } from '../../schemas/assumptions';
-import type { MoneyView } from '../../schemas/money-view';
-import type { PlanView, PricedBillView, PricedLineView } from '../../schemas/plan';
+import type { PricedBillView, PricedLineView } from '../../schemas/plan';
 import type { AppraisalView, CashFlowMonth } from '../../schemas/plan-money';
+import type { CashFlowParts } from '../workers/tasks';
 
 const samples = 1000;
 const seed = 20_260_907;
 
 /** Paybacks, present value and rate of return, after upkeep, tax and incentive. */
 export const appraisePlan = (money: PlanMoney): AppraisalView => appraiseInvestment(investmentOf(money));
-
-/** What is told of a plan's cash. */
-interface CashFlowParts {
-  cashFlow: CashFlowMonth[];
-  paybackSpread: PlanView['paybackSpread'];
-  moneyView: MoneyView | null;
-}
 
 /** The standing plant has no cash flow. */
 export const noCashFlow: CashFlowParts = { cashFlow: [], paybackSpread: null, moneyView: null };

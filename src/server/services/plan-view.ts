@@ -1,4 +1,5 @@
 import { formatPayback } from '../../components/ui/format';
+import type { PlanMoney } from '../../schemas/assumptions';
 import type { CostPart, PlanView, UnpricedPlan } from '../../schemas/plan';
 import { planDefaults, type PlanEconomics } from '../../schemas/plan-money';
 import { wholeYear } from '../../schemas/plan-spans';
@@ -14,12 +15,12 @@ import {
   presentReplacement,
   presentVoltage,
 } from '../presenters/plan-parts';
-import type { TaskSetting } from '../workers/tasks';
+import type { CashFlowParts, TaskSetting } from '../workers/tasks';
 import type { OpenEngagement } from './engagements';
 import type { loadOf } from './motors';
 import { inductionKw, replacementMachine } from './plan-acts';
 import type { PlanBasis, PlanMotor } from './plan-basis';
-import { appraisePlan, noCashFlow, planCashFlow, savingOf } from './plan-economics';
+import { appraisePlan, savingOf } from './plan-economics';
 
 /** A motor with its load, as the views need it. */
 export type LoadedMotor = PlanMotor & { load: ReturnType<typeof loadOf> };
@@ -56,19 +57,30 @@ const atRest: { costParts: CostPart[]; yearlyUpkeep: number; economics: PlanEcon
   economics: { ...planDefaults },
 };
 
+/** What a plan's money hangs on, and what its work is made of. */
+export function moneyOf(
+  { basis, standing }: YearParts,
+  row: Plan | null,
+  setting: TaskSetting,
+): PlanMoney & { costParts: CostPart[] } {
+  const { currency } = basis.pricing.schedule;
+  const { costParts, yearlyUpkeep, economics } = row
+    ? { ...storedPlan(row, currency), costParts: costPartsOf(row, currency) }
+    : atRest;
+  const capitalCost = costParts.reduce((sum, { amount }) => sum + amount, 0);
+  const saving = savingOf(standing.bills.map(presentPricedBill), setting.bills.map(presentPricedBill));
+  return { ...saving, capitalCost, yearlyUpkeep, economics, costParts };
+}
+
 /** A plan, or standing where there is none, priced. */
-export function viewOf(year: YearParts, row: Plan | null, setting: TaskSetting): PlanView {
+export function viewOf(year: YearParts, row: Plan | null, setting: TaskSetting, cash: CashFlowParts): PlanView {
   const { basis, motors, standing } = year;
   const { currency } = basis.pricing.schedule;
   const settings = row ? motorSettings(row) : [];
   const settingOf = (motor: LoadedMotor) => settings.find((one) => one.motorId === motor.row.id);
   const bills = setting.bills.map(presentPricedBill);
-  const before = standing.bills.map(presentPricedBill);
-  const { costParts, yearlyUpkeep, economics } = row
-    ? { ...storedPlan(row, currency), costParts: costPartsOf(row, currency) }
-    : atRest;
-  const capitalCost = costParts.reduce((sum, { amount }) => sum + amount, 0);
-  const money = { ...savingOf(before, bills), capitalCost, yearlyUpkeep, economics };
+  const { costParts, ...money } = moneyOf(year, row, setting);
+  const { capitalCost, yearlyUpkeep, economics } = money;
   const appraisal = appraisePlan(money);
   const views = motors.map((motor) => {
     const figures = setting.motors.find((one) => one.motorId === motor.row.id)!;
@@ -94,11 +106,11 @@ export function viewOf(year: YearParts, row: Plan | null, setting: TaskSetting):
         )
       : [],
     bills,
-    standingTotal: before.reduce((sum, bill) => sum + bill.total, 0),
+    standingTotal: standing.bills.reduce((sum, bill) => sum + bill.total, 0),
     money: { capitalCost, costParts, yearlyUpkeep, economics },
     appraisal,
     paybackWords: formatPayback(appraisal.simplePaybackYears),
-    ...(row ? planCashFlow(money) : noCashFlow),
+    ...cash,
     motors: views,
     extraLossKwh: setting.extraKwh,
     hoursLeading: { before: standing.hoursLeading, after: setting.hoursLeading },

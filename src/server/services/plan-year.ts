@@ -16,7 +16,9 @@ import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
 import { spanRules, type SpanYear } from './plan-spans';
 import type { PricingBasis } from './pricing';
-import { unpricedOf, viewOf, type LoadedMotor, type YearParts } from './plan-view';
+import { cashFlowsOf } from './plan-cash';
+import { noCashFlow } from './plan-economics';
+import { moneyOf, unpricedOf, viewOf, type LoadedMotor, type YearParts } from './plan-view';
 
 /** What stands between an engagement and priced plans; nothing where all is there. */
 export async function missingForPlans(opened: OpenEngagement): Promise<Missing | null> {
@@ -48,7 +50,8 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     ...priceable.map((row) => actOf(row, opened, spanYearOf(basis))),
   ])) as [TaskSetting, ...TaskSetting[]];
   const year: YearParts = { opened, basis, motors, standing };
-  const plans = priceable.map((row, index) => viewOf(year, row, settings[index] as TaskSetting));
+  const cash = await cashFlowsOf(priceable.map((row, index) => moneyOf(year, row, settings[index]!)));
+  const plans = priceable.map((row, index) => viewOf(year, row, settings[index]!, cash[index]!));
   return {
     currency: basis.pricing.schedule.currency,
     from: basis.task.periods[0]!.from,
@@ -57,7 +60,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     scheduleTitle: basis.pricing.schedule.title,
     seasons: basis.pricing.schedule.texts.at(-1)?.seasons?.names ?? [],
     readings: standing.readings,
-    standing: viewOf(year, null, standing),
+    standing: viewOf(year, null, standing, noCashFlow),
     plans,
     unpriced: rows.flatMap((row, index): UnpricedPlan[] => {
       const reason = faults[index];

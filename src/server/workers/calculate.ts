@@ -5,12 +5,13 @@ import type { PricedYear } from '../../schemas/pricing';
 import { reconcileYear } from '../services/reconcile';
 import { compareYear } from './compare-year';
 import { estimateYear } from './estimate-year';
+import { planCashFlow } from '../services/plan-economics';
 import { priceText } from './price-text';
 import { priceYear } from './price-year';
 import { searchYear } from './search-year';
-import type { EstimateResult, Refused, SearchResult, Task, TaskSetting, TextResult } from './tasks';
+import type { CashFlowParts, EstimateResult, Refused, SearchResult, Task, TaskSetting, TextResult } from './tasks';
 
-type Done = EstimateResult | TaskSetting[] | SearchResult | TextResult | CompareResult | PricedYear;
+type Done = CashFlowParts[] | EstimateResult | TaskSetting[] | SearchResult | TextResult | CompareResult | PricedYear;
 
 /** Errors whose words a person can act on; any other is a fault of the program. */
 const tellable = [PriceError, ScheduleError, PullOutError, NotConvergedError];
@@ -30,6 +31,8 @@ export default function calculate(task: Task): Done | Refused {
 
 function doneOf(task: Task): Done {
   switch (task.kind) {
+    case 'cash':
+      return task.plans.map(planCashFlow);
     case 'estimate':
       return estimateYear(task);
     case 'year':

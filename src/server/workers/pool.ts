@@ -3,9 +3,12 @@ import { Piscina } from 'piscina';
 import { conflict } from '../errors';
 import { log } from '../log';
 import { locateWorker } from './locate';
+import type { PlanMoney } from '../../schemas/assumptions';
 import type { CompareResult } from '../../schemas/compare';
 import type { PricedYear } from '../../schemas/pricing';
 import type {
+  CashFlowParts,
+  CashTask,
   CompareTask,
   EstimateResult,
   EstimateTask,
@@ -57,6 +60,12 @@ export async function calculateYear(task: YearTask): Promise<TaskSetting[]> {
 /** Estimates plans from bills alone in a thread of its own; what cannot be estimated says why in the result. */
 export async function estimateInPool(task: EstimateTask): Promise<EstimateResult | Refused> {
   return (await pool().run(task)) as EstimateResult | Refused;
+}
+
+/** Samples cash flows in a thread of its own, in the order asked. */
+export async function calculateCash(plans: PlanMoney[]): Promise<CashFlowParts[]> {
+  const task: CashTask = { kind: 'cash', plans };
+  return resultOf((await pool().run(task)) as CashFlowParts[] | Refused);
 }
 
 /**

@@ -13,7 +13,11 @@ import type {
   Upstream,
 } from '../../core/plan';
 import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
+import type { PlanMoney } from '../../schemas/assumptions';
+import type { MoneyView } from '../../schemas/money-view';
 import type { CalendarInput } from '../../schemas/motor';
+import type { PlanView } from '../../schemas/plan';
+import type { CashFlowMonth } from '../../schemas/plan-money';
 import type { SearchInput, SearchView } from '../../schemas/search';
 import type { SpanRules } from '../services/plan-spans';
 import type { ReconcileBasis } from '../services/price-basis';
@@ -194,8 +198,21 @@ export interface EstimateResult {
   raised: { share: number; fields: { motorId: number; fieldA: number }[]; estimate: BillsEstimate }[];
 }
 
+/** Cash flows to sample, one for each plan. */
+export interface CashTask {
+  kind: 'cash';
+  plans: PlanMoney[];
+}
+
+/** What is told of a plan's cash. */
+export interface CashFlowParts {
+  cashFlow: CashFlowMonth[];
+  paybackSpread: PlanView['paybackSpread'];
+  moneyView: MoneyView | null;
+}
+
 /** Anything a calculation thread does. */
-export type Task = EstimateTask | YearTask | SearchTask | TextTask | CompareTask | ReconcileTask;
+export type Task = CashTask | EstimateTask | YearTask | SearchTask | TextTask | CompareTask | ReconcileTask;
 
 /** Why a task cannot be done, in words for a person. */
 export interface Refused {

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import type { LoadSource } from './shaft-load';
 import { isCalendarDate } from '../core/load';
 import type { SynchronousMotor } from '../core/machine';
 import { plateInput, type PlateInput } from './plate';
@@ -143,6 +144,8 @@ export interface MotorView {
   ratedKva: number;
   ratedCurrentA: number;
   speedRpm: number;
+  /** What tells its shaft load. */
+  loadSource: LoadSource;
   usualShaftKw: number;
   usualLoadPercent: number;
   hoursRunning: number;

@@ -176,6 +176,8 @@ export interface YearView {
   /** `intervals`: from metered readings; the only route for plans. */
   route: 'intervals';
   scheduleTitle: string;
+  /** Names of the schedule's seasons. */
+  seasons: string[];
   readings: { intervals: number; missing: number; estimated: number; stepMinutes: number };
   standing: PlanView;
   plans: PlanView[];

@@ -23,7 +23,7 @@ import {
   removeMotor,
   type OpenMotor,
 } from '@/server/services/motors';
-import { calendarOfProfile, gatheredHours, loadHoursOf, shaftLoadOf } from '@/server/services/shaft-load';
+import { calendarOfProfile, gatheredHours, yearLoadOf, shaftLoadOf } from '@/server/services/shaft-load';
 import { authorizeSubmeter, removeSubmeter, takeSubmeter } from '@/server/services/submeter';
 import { buildActor, buildEngagement } from '../setup/build';
 import { millMotor, motorOf } from '../setup/motors';
@@ -135,7 +135,7 @@ describe('a profile', () => {
       shutdowns: [{ from: '2026-03-03', lastDay: '2026-03-03' }],
     });
     const { motor: machine } = completedOf(found.motor);
-    const hours = loadHoursOf(
+    const { hours } = yearLoadOf(
       { calendar, machine, fieldTodayA: 109 },
       { from: '2026-03-02', to: '2026-03-09', timeZone: zone },
     );

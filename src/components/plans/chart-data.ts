@@ -37,7 +37,9 @@ export function costCurve(curve: CostCurveView, search: Pick<SearchView, 'fields
     .map(({ fieldA, total }) => ({ fieldA, yearCost: total }));
   const at = (fieldA: number) => points.find((point) => Math.abs(point.fieldA - fieldA) < 1e-6);
   const others = search.fields.filter((field) => field.motorId !== curve.motorId);
-  const held = others.map((other) => `${other.name} at ${amperes(other.fieldA)}`).join(', ');
+  const held = others
+    .flatMap(({ name, fieldA }) => (fieldA === undefined ? [] : `${name} at ${amperes(fieldA)}`))
+    .join(', ');
   const isMoved = Math.abs(curve.todayA - curve.chosenA) > 1e-6;
   return {
     currency,
@@ -47,7 +49,7 @@ export function costCurve(curve: CostCurveView, search: Pick<SearchView, 'fields
     standingName: `${curve.name} left at ${amperes(curve.todayA)}`,
     limitFieldA: curve.ratedLimitA,
     reserveFieldA: curve.limitA < curve.ratedLimitA - 1e-6 ? curve.limitA : undefined,
-    axisName: `Field current of ${curve.name}, A${held ? ` (${held})` : ''}`,
+    axisName: `Field current of ${curve.name}${curve.span ? `, ${curve.span}` : ''}, A${held ? ` (${held})` : ''}`,
   };
 }
 

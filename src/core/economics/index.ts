@@ -1,3 +1,4 @@
+export { normalStream, uniformStream } from './random';
 export { appraise } from './appraise';
 export type { Appraisal, Project } from './appraise';
 export { ratesOfReturn } from './irr';

@@ -31,8 +31,11 @@ export interface MeterTrace extends HeldTrace {
 
 /** A meter ready for any controls of its motors. */
 export interface SimulatedMeter {
-  /** Controls per motor: one a span, or one for all. The arrays of the result are overwritten by the next call. */
-  apply: (controls: FieldControl[][], trace?: MeterTrace) => LoadSeries;
+  /**
+   * Controls per motor: one a span, or one for all. The arrays of the result are overwritten by the next call. `changed`: the only
+   * spans in which controls differ from the previous call.
+   */
+  apply: (controls: FieldControl[][], how?: { trace?: MeterTrace; changed?: ReadonlySet<number> }) => LoadSeries;
   notes: string[];
 }
 
@@ -52,6 +55,7 @@ export function simulateMeter(part: MeteredPart): SimulatedMeter {
     state: states.state,
     parts,
     spanOf: states.parts.at(-1)!,
+    runs: runsOf(spanIndex),
     moreKw: new Float64Array(states.count),
     moreKvar: new Float64Array(states.count),
     fixed: fixedBanks(part.banks, count),
@@ -71,7 +75,7 @@ export function simulateMeter(part: MeteredPart): SimulatedMeter {
       quality: load.quality.slice(),
     },
   };
-  return { apply: (controls, trace) => applyControls(work, controls, trace ?? null), notes };
+  return { apply: (controls, how = {}) => applyControls(work, controls, how), notes };
 }
 
 interface MeterWork extends MeteredPart {
@@ -81,6 +85,8 @@ interface MeterWork extends MeteredPart {
   state: Uint32Array;
   parts: Uint32Array[];
   spanOf: Uint32Array;
+  /** Successive intervals of one span. */
+  runs: { span: number; first: number; end: number }[];
   /** What the motors take beyond standing in each state, at work. */
   moreKw: Float64Array;
   moreKvar: Float64Array;
@@ -93,15 +99,33 @@ interface MeterWork extends MeteredPart {
 const isOwn = (control: FieldControl): control is OwnFieldControl =>
   control.holds !== 'voltage' && control.holds !== 'plant-power-factor';
 
-function applyControls(work: MeterWork, controls: FieldControl[][], trace: MeterTrace | null): LoadSeries {
+function applyControls(
+  work: MeterWork,
+  controls: FieldControl[][],
+  { trace, changed }: { trace?: MeterTrace; changed?: ReadonlySet<number> },
+): LoadSeries {
   work.moreKw.fill(0);
   work.moreKvar.fill(0);
   work.motors.forEach((motor, m) => addMotor(work, motor, m, controls[m]!));
   const held = heldBySpan(work, controls);
-  if (held.every((one) => one === null) && work.switched.length === 0 && !work.upstream) shiftAll(work);
-  else settleAll(work, held, trace);
+  const isUsual = held.every((one) => one === null) && work.switched.length === 0 && !work.upstream;
+  for (const { span, first, end } of work.runs) {
+    if (changed && !changed.has(span)) continue;
+    if (isUsual) shiftRun(work, first, end);
+    else settleRun(work, held, { first, end }, trace ?? null);
+  }
   if (trace) work.banks.forEach((bank, b) => bank.target === null && trace.bankSteps[b]!.fill(bank.steps, bank.first));
   return work.out;
+}
+
+function runsOf(index: Uint8Array): MeterWork['runs'] {
+  const runs: MeterWork['runs'] = [];
+  index.forEach((span, i) => {
+    const last = runs.at(-1);
+    if (last?.span === span) last.end = i + 1;
+    else runs.push({ span, first: i, end: i + 1 });
+  });
+  return runs;
 }
 
 /** Adds what a motor takes beyond standing under controls of its own. */
@@ -137,10 +161,14 @@ function heldBySpan({ ground }: MeterWork, controls: FieldControl[][]): (HeldMot
 }
 
 /** The usual case by itself: nothing hangs on what the meter sees. */
-function shiftAll({ load, state, shares, moreKw, moreKvar, fixed, hours, out }: MeterWork): void {
+function shiftRun(
+  { load, state, shares, moreKw, moreKvar, fixed, hours, out }: MeterWork,
+  first: number,
+  end: number,
+): void {
   const { kwh, kvarhLagging, kvarhLeading } = load;
   const { kwh: outKwh, kvarhLagging: outLagging, kvarhLeading: outLeading } = out;
-  for (let i = 0; i < kwh.length; i++) {
+  for (let i = first; i < end; i++) {
     const s = state[i]!;
     const kw = fixed === null ? moreKw[s]! : moreKw[s]! + fixed.kw[i]!;
     const kvar = fixed === null ? moreKvar[s]! : moreKvar[s]! + fixed.kvar[i]!;
@@ -155,12 +183,17 @@ function shiftAll({ load, state, shares, moreKw, moreKvar, fixed, hours, out }: 
 }
 
 /** Interval by interval: motors that hold voltage or power factor, then switched banks, then the losses upstream. */
-function settleAll(work: MeterWork, held: (HeldMotors | null)[], trace: MeterTrace | null): void {
+function settleRun(
+  work: MeterWork,
+  held: (HeldMotors | null)[],
+  { first, end }: { first: number; end: number },
+  trace: MeterTrace | null,
+): void {
   const { load, state, spanOf, fixed, hours, ground, out } = work;
   const metered = { kw: 0, kvar: 0 };
   const seen = { kw: 0, kvar: 0 };
   const at: IntervalAtWork = { i: 0, metered, moreKw: 0, moreKvar: 0 };
-  for (let i = 0; i < load.kwh.length; i++) {
+  for (let i = first; i < end; i++) {
     const s = state[i]!;
     metered.kw = load.kwh[i]! / hours;
     metered.kvar = (load.kvarhLagging[i]! - load.kvarhLeading[i]!) / hours;

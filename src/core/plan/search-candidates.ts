@@ -4,6 +4,7 @@ import type { SearchAxis } from './search-axes';
 import { createSimulator } from './simulator';
 import type { FixedSetup, Simulator } from './simulator';
 import type { At } from './search-walk';
+import type { BillReach } from './bill-reach';
 import type { CapacitorBank, Plant } from './types';
 
 /** A bank whose number of steps is searched. */
@@ -35,9 +36,10 @@ export function createCandidates(input: {
   bank?: SearchedBank;
   axes: SearchAxis[];
   spans: number;
-  totals: (load: LoadSeries) => Float64Array;
+  totals: (load: LoadSeries, changed?: ReadonlySet<number>) => Float64Array;
+  bills?: BillReach;
 }): Candidates {
-  const { plant, fixed, bank, axes, spans, totals } = input;
+  const { plant, fixed, bank, axes, spans, totals, bills } = input;
   if (bank && !(Number.isInteger(bank.mostSteps) && bank.mostSteps >= 1 && bank.mostSteps <= 200))
     throw new RangeError(`bank.mostSteps must be a whole number from 1 to 200, got ${bank.mostSteps}`);
   const standingControls = plant.motors.map(({ standingFieldA }): FieldControl[] => [
@@ -54,7 +56,19 @@ export function createCandidates(input: {
     });
     return controls;
   };
-  const loadOf = (at: At) => simulatorOf(stepsOf(at)).apply(controlsOf(at));
+  let last: { at: At; steps: number } | null = null;
+  /** Spans in which a setting differs from the one simulated before; undefined: any may. */
+  const changedSpans = (at: At) => {
+    const before = last;
+    last = { at: [...at], steps: stepsOf(at) };
+    if (before?.steps !== last.steps) return undefined;
+    return new Set(axes.flatMap(({ span }, a) => (at[a] === before.at[a] ? [] : [span])));
+  };
+  const totalsOf = (at: At) => {
+    const changed = changedSpans(at);
+    const touched = bills && changed && new Set([...changed].flatMap((span) => bills.ofSpan[span]!));
+    return totals(simulatorOf(stepsOf(at)).apply(controlsOf(at), changed), touched);
+  };
   const bankCost = (at: At) => stepsOf(at) * (bank?.yearlyCostPerStep ?? 0);
   return {
     lengths: [...axes.map(({ settings }) => settings.length), ...(bank ? [bank.mostSteps + 1] : [])],
@@ -62,10 +76,13 @@ export function createCandidates(input: {
     standingTotals,
     controlsOf,
     stepsOf,
-    price: (at) =>
-      bank ? Float64Array.of(...totals(loadOf(at)), bankCost(at)) : Float64Array.from(totals(loadOf(at))),
+    price: (at) => (bank ? Float64Array.of(...totalsOf(at), bankCost(at)) : Float64Array.from(totalsOf(at))),
     bankCost,
-    energyKwh: (at) => loadOf(at).kwh.reduce((sum, kwh) => (Number.isNaN(kwh) ? sum : sum + kwh), 0),
+    energyKwh: (at) => {
+      last = null;
+      const { kwh } = simulatorOf(stepsOf(at)).apply(controlsOf(at));
+      return kwh.reduce((sum, value) => (Number.isNaN(value) ? sum : sum + value), 0);
+    },
     notes: simulatorOf(0).notes,
   };
 }

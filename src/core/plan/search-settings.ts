@@ -1,6 +1,7 @@
 import type { LoadSeries } from '../load';
 import type { FieldControl } from '../machine';
-import type { FieldBounds } from './field-bounds';
+import { movedBills } from './bill-reach';
+import type { BillReach } from './bill-reach';
 import { searchAxes } from './search-axes';
 import type { SearchAxis, SearchMotor } from './search-axes';
 import { createCandidates } from './search-candidates';
@@ -20,10 +21,13 @@ export interface SearchInput {
   fixed?: FixedSetup;
   /** A bank whose number of steps is searched too, none included. */
   bank?: SearchedBank;
-  /** Bill totals of a load series, period by period. [currency] */
-  totals: (load: LoadSeries) => Float64Array;
-  /** Per span: the bills its settings may move, look-backs included. Absent: every setting may move every bill. */
-  billsOfSpan?: number[][];
+  /**
+   * Bill totals of a load series, period by period. `changed`: positions of the only bills whose intervals may differ from the
+   * previous call; absent: any may. [currency]
+   */
+  totals: (load: LoadSeries, changed?: ReadonlySet<number>) => Float64Array;
+  /** Which bills the settings of each span move. Absent: every setting may move every bill. */
+  bills?: BillReach;
   /** Called after every candidate; returning false ends the search with the best so far. */
   onProgress?: (progress: SearchProgress) => boolean | void;
   /** Price every combination when there are no more than this; 2000 when absent. */
@@ -39,11 +43,10 @@ export interface CostPoint {
 }
 
 /** What was searched on one axis. */
-export interface SearchedAxis {
-  motors: number[];
-  span: number;
+export interface SearchedAxis extends SearchAxis {
+  /** Place of the best among the settings. */
+  place: number;
   chosen: FieldControl;
-  bounds: FieldBounds | null;
   /** Cost of the year along the axis; empty when cancelled. */
   curve: CostPoint[];
 }
@@ -115,10 +118,9 @@ export function searchSettings(input: SearchInput): SearchResult {
     standingTotals: candidates.standingTotals,
     leaveAlone: winner.every((k, axis) => k === standing[axis]),
     axes: axes.map((axis, a) => ({
-      motors: axis.motors,
-      span: axis.span,
+      ...axis,
+      place: winner[a]!,
       chosen: axis.settings[winner[a]!]!,
-      bounds: axis.bounds,
       curve: curveOf(a).map((cost, k) => ({
         control: axis.settings[k]!,
         cost,
@@ -134,8 +136,9 @@ export function searchSettings(input: SearchInput): SearchResult {
 }
 
 /** Bills that each axis may move; a searched bank moves all, its own cost the last. */
-function reachOf({ billsOfSpan }: SearchInput, axes: SearchAxis[], bills: number, count: number): number[][] {
+function reachOf(input: SearchInput, axes: SearchAxis[], bills: number, count: number): number[][] {
   const all = Array.from({ length: bills }, (_, bill) => bill);
+  const billsOfSpan = input.bills && movedBills(input.bills, input.bank ? bills - 1 : bills);
   return Array.from({ length: count }, (_, a) => {
     const axis = axes[a];
     return axis ? (billsOfSpan?.[axis.span] ?? all) : all;

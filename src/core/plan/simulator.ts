@@ -17,11 +17,12 @@ export interface Simulator {
    * The load series with the motors under these controls.
    *
    * @param controls  Per motor, in the plant's order: one a span, or one for all.
+   * @param changed  The only spans in which controls differ from the previous call; absent: any.
    * @returns A series whose arrays are overwritten by the next call.
    * @throws {PullOutError} naming the motor that would fall out of step
    * @throws {RangeError} naming the control out of range
    */
-  apply: (controls: FieldControl[][]) => LoadSeries;
+  apply: (controls: FieldControl[][], changed?: ReadonlySet<number>) => LoadSeries;
   /** The same with what happened in each interval. `first` is the first meter's own series. */
   trace: (controls: FieldControl[][]) => { load: LoadSeries; first: LoadSeries; trace: SimulationTrace };
   /** Motors of the plant, then those of replacements. */
@@ -71,19 +72,24 @@ export function createSimulator(plant: Plant, fixed: FixedSetup = {}): Simulator
       ...(meter === 0 ? { upstream: plant.upstream, supply: plant.supply } : {}),
     }),
   );
-  const run = (controls: FieldControl[][], trace?: SimulationTrace): LoadSeries[] => {
+  let hasRun = false;
+  const run = (
+    controls: FieldControl[][],
+    { trace, changed }: { trace?: SimulationTrace; changed?: ReadonlySet<number> },
+  ): LoadSeries[] => {
     const all = withReplacements(controls, replacements, plant.motors.length, spans?.count ?? 1);
+    hasRun = true;
     return meters.map((meter, at) => {
       const own = motorsBy[at]!;
       const ofOwn = own.map((m) => all[m]!);
-      return meter.apply(ofOwn, trace && traceOf(trace, own, banksBy[at]!));
+      return meter.apply(ofOwn, { changed, trace: trace && traceOf(trace, own, banksBy[at]!) });
     });
   };
   return {
-    apply: (controls) => sumLoads(run(controls)),
+    apply: (controls, changed) => sumLoads(run(controls, { changed: hasRun ? changed : undefined })),
     trace: (controls) => {
       const trace = emptyTrace(placed.length, banks, count);
-      const series = run(controls, trace);
+      const series = run(controls, { trace });
       return { load: sumLoads(series), first: series[0]!, trace };
     },
     placed,

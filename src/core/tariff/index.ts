@@ -43,6 +43,7 @@ export { averagePowerFactor, energiesOf, scaledLoad, shareToReach, withoutLaggin
 export { PriceError, ScheduleError, wordProblem, type ScheduleProblem } from './errors';
 export { checkExamples, type ExampleResult } from './check-examples';
 export { describeSchedule, type ScheduleDescription } from './describe';
+export { looksBack } from './looks-back';
 export { scheduleJsonSchema } from './schema';
 export type {
   ChargeDefinition,

@@ -90,6 +90,8 @@ export interface PricingGrid {
 export interface TotalsOptions {
   /** The active energy and qualities are those of the previous call, element by element; only kvarh differ. */
   isActiveUnchanged?: boolean;
+  /** Positions of the periods whose intervals may differ from the previous call; in all others they are the same. Absent: any may. */
+  changed?: ReadonlySet<number>;
 }
 
 /** A schedule laid out over a grid and periods; prices any load on that grid. Not for use by two callers at once: it reuses its arrays. */

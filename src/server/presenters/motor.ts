@@ -15,6 +15,7 @@ import {
 } from '../../core/machine';
 import { wordNumber } from '../../core/units';
 import type { AssumedValue, MotorInput, MotorView, PanelView, PlateNote } from '../../schemas/motor';
+import type { LoadSource } from '../../schemas/shaft-load';
 import type { Motor } from '../models/Motor';
 
 /** What a motor's row holds, as the form that wrote it: today's field of a brushless machine as its panel shows it. */
@@ -111,7 +112,12 @@ function presentPanel(machine: SynchronousMotor, fieldTodayA: number, limitA: nu
 export function presentMotor(
   row: Motor,
   completed: CompletedMotor & { motor: SynchronousMotor },
-  load: { usualShaftKw: number; hoursRunning: number; hours: { shaftKw: number; hours: number }[] },
+  load: {
+    source: LoadSource;
+    usualShaftKw: number;
+    hoursRunning: number;
+    hours: { shaftKw: number; hours: number }[];
+  },
 ): MotorView {
   const machine = completed.motor;
   const { usualShaftKw: shaftKw, hoursRunning, hours } = load;
@@ -139,6 +145,7 @@ export function presentMotor(
     ratedKva: ratedKva(machine),
     ratedCurrentA: ratedCurrentA(machine),
     speedRpm: (120 * machine.frequencyHz) / machine.poles,
+    loadSource: load.source,
     usualShaftKw: shaftKw,
     usualLoadPercent: (100 * shaftKw) / machine.ratedOutputKw,
     hoursRunning,

@@ -4,7 +4,6 @@ import {
   type LoadTestPoint,
   type LoadTestResult,
   type LoadTestRow,
-  type SubmeterLoad,
   type SuspectField,
 } from '../../core/plan';
 import type {
@@ -16,7 +15,7 @@ import type {
 } from '../../schemas/shaft-load';
 import type { MotorLoad } from '../models/MotorLoad';
 import type { SubmeterFile } from '../models/SubmeterFile';
-import type { LoadHours } from '../services/shaft-load';
+import type { YearLoad } from '../services/shaft-load';
 
 /** A row of a load test in the words of the core: the machine's own field, kvar absorbed, per-unit volts. */
 export function toLoadTestRow(machine: SynchronousMotor, row: LoadTestRowInput): LoadTestRow {
@@ -97,11 +96,10 @@ export function presentShaftLoad(told: {
   motorId: number;
   row: MotorLoad | null;
   files: SubmeterFile[];
-  load: SubmeterLoad & { hours: LoadHours[]; stepMinutes: number };
+  load: YearLoad & { usualShaftKw: number; hoursRunning: number };
   test: LoadTestView | null;
 }): ShaftLoadView {
   const { motorId, row, files, load, test } = told;
-  const hoursOf = (intervals: number) => (intervals * load.stepMinutes) / 60;
   return {
     motorId,
     version: row?.version ?? 0,
@@ -111,11 +109,11 @@ export function presentShaftLoad(told: {
     loadTest: row?.loadTest ?? [],
     files: files.map(presentFile),
     year: {
-      hoursRunning: load.hours.reduce((sum, { hours }) => sum + hours, 0),
-      usualShaftKw: load.hours[0]?.shaftKw ?? 0,
+      hoursRunning: load.hoursRunning,
+      usualShaftKw: load.usualShaftKw,
       highestShaftKw: load.hours.reduce((most, { shaftKw }) => Math.max(most, shaftKw), 0),
-      hoursMissing: hoursOf(load.missing),
-      hoursBeyond: hoursOf(load.beyondPullOut),
+      hoursMissing: load.hoursMissing,
+      hoursBeyond: load.hoursBeyond,
     },
     test,
   };

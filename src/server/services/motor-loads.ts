@@ -10,35 +10,20 @@ import { presentLoadTest, presentShaftLoad, toLoadTestRow } from '../presenters/
 import { fieldWords } from '../presenters/field-words';
 import { assertNotClosed } from './intake-guard';
 import { loadSourcesOf, submeterFiles } from './load-sources';
-import { cannotHold, completedOf, type OpenMotor } from './motors';
-import { gatheredHours, gridOf, shaftLoadOf } from './shaft-load';
+import { cannotHold, completedOf, loadOf, type OpenMotor } from './motors';
 
 /** Where a motor's load comes from, what that gives over the year, and what its load test says. */
 export async function shaftLoadViewOf({ motor, opened }: OpenMotor): Promise<ShaftLoadView> {
   const row = await MotorLoad.findOne({ where: { motorId: motor.id } });
   const [[source], files] = await Promise.all([loadSourcesOf([motor]), submeterFiles(motor.id)]);
   const completed = completedOf(motor);
-  const { yearFrom: from, yearTo: to } = opened.engagement;
-  const year = { from, to, timeZone: opened.site.timeZone };
-  const running = { ...source!, machine: completed.motor, fieldTodayA: motor.fieldTodayA };
-  const grid = gridOf(year);
-  const load = shaftLoadOf(running, grid, year.timeZone);
-  const rows = row?.loadTest ?? [];
+  const tested = (row?.loadTest ?? []).map((one) => toLoadTestRow(completed.motor, one));
   return presentShaftLoad({
     motorId: motor.id,
     row,
     files,
-    load: { ...load, hours: gatheredHours(load.shaftKw, completed.motor.ratedOutputKw), stepMinutes: grid.stepMinutes },
-    test:
-      rows.length === 0
-        ? null
-        : presentLoadTest(
-            completed,
-            compareLoadTest(
-              completed.motor,
-              rows.map((one) => toLoadTestRow(completed.motor, one)),
-            ),
-          ),
+    load: loadOf(motor, completed.motor, opened, source!),
+    test: tested.length === 0 ? null : presentLoadTest(completed, compareLoadTest(completed.motor, tested)),
   });
 }
 

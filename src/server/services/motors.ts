@@ -20,8 +20,8 @@ import { limitsOf, presentMotor, storedMotor } from '../presenters/motor';
 import { motorSettings } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { completePlate, machineOrThrow } from './nameplates';
-import { forgetLoad, loadSourcesOf } from './load-sources';
-import { loadHoursOf, ruleLoadKw, type LoadSource } from './shaft-load';
+import { forgetLoad, loadSourcesOf, type StoredSource } from './load-sources';
+import { ruleLoadKw, yearLoadOf, type LoadSource } from './shaft-load';
 
 /** A motor's row opened by somebody who works on its engagement. */
 export interface OpenMotor {
@@ -224,9 +224,10 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
 export function loadOf(motor: Motor, machine: SynchronousMotor, opened: OpenEngagement, source: LoadSource) {
   const { yearFrom: from, yearTo: to } = opened.engagement;
   const running = { ...source, machine, fieldTodayA: motor.fieldTodayA };
-  const hours = loadHoursOf(running, { from, to, timeZone: opened.site.timeZone });
+  const load = yearLoadOf(running, { from, to, timeZone: opened.site.timeZone });
+  const { hours } = load;
   const usualShaftKw = hours[0]?.shaftKw ?? ruleLoadKw(motor.calendar.rules[0]!, machine.ratedOutputKw);
-  return { usualShaftKw, hoursRunning: hours.reduce((sum, one) => sum + one.hours, 0), hours };
+  return { ...load, usualShaftKw, hoursRunning: hours.reduce((sum, one) => sum + one.hours, 0) };
 }
 
 /**
@@ -241,9 +242,10 @@ export function completedOf({ name, plate }: Motor): CompletedMotor & { motor: S
   return { ...completed, motor };
 }
 
-function viewOf(motor: Motor, opened: OpenEngagement, source: LoadSource): MotorView {
+function viewOf(motor: Motor, opened: OpenEngagement, source: StoredSource): MotorView {
   const completed = completedOf(motor);
-  return presentMotor(motor, completed, loadOf(motor, completed.motor, opened, source));
+  const load = { ...loadOf(motor, completed.motor, opened, source), source: source.kind };
+  return presentMotor(motor, completed, load);
 }
 
 async function viewWithSource(motor: Motor, opened: OpenEngagement): Promise<MotorView> {

@@ -1,11 +1,10 @@
 import { addDays, dayNumber, localDateStartMs, weekdayOf } from '../../core/load';
-import { shaftLoadSeries } from '../../core/plan';
 import type { SeasonTable } from '../../core/tariff';
 import type { FormLoads, FormMeter, FormMotor } from '../../schemas/plan-form';
 import { limitsOf } from '../presenters/motor';
 import type { OpenEngagement } from './engagements';
 import { planBasis, type PlanMotor } from './plan-basis';
-import { toShiftCalendar } from './shaft-load';
+import { shaftLoadOf } from './shaft-load';
 
 /** What the form of a plan knows of the plant. */
 export interface PlanFormPlant {
@@ -48,14 +47,11 @@ const mostLoads = 24;
 
 /** Distinct loads of the year with the months, hours of the week and seasons they come in. */
 function loadsOf(motor: PlanMotor, { engagement }: OpenEngagement, timeZone: string, seasons?: SeasonTable): FormLoads {
-  const { row, machine } = motor;
+  const { row, machine, source } = motor;
   const startMs = localDateStartMs(engagement.yearFrom, timeZone);
   const count = Math.round((localDateStartMs(engagement.yearTo, timeZone) - startMs) / stepMs);
-  const series = shaftLoadSeries(
-    toShiftCalendar(row.calendar, machine.ratedOutputKw),
-    { startMs, stepMinutes: 15, count },
-    timeZone,
-  );
+  const running = { ...source, machine, fieldTodayA: row.fieldTodayA };
+  const { shaftKw: series } = shaftLoadOf(running, { startMs, stepMinutes: 15, count }, timeZone);
   const kw = gathered(series);
   const placeOf = (shaftKw: number) => kw.findIndex((one) => one >= shaftKw * (1 - 1e-9));
   const sets = (length: number) => Array.from({ length }, () => new Set<number>());

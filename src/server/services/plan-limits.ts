@@ -3,7 +3,7 @@ import type { FieldControl } from '../../core/machine';
 import { controlsOf, type MotorSetting } from '../../schemas/plan-settings';
 import { spanNames, type SpanSet } from '../../schemas/plan-spans';
 import type { SpanRules } from './plan-spans';
-import { gatheredHours, gridOf, loadHoursOf, shaftLoadOf, type RunningMotor } from './shaft-load';
+import { gatheredHours, gridOf, shaftLoadOf, yearLoadOf, type RunningMotor } from './shaft-load';
 
 /** A motor with the loads its settings must hold. */
 export type LoadedLimits = LimitedMotor & RunningMotor;
@@ -27,7 +27,7 @@ export interface SettingFault {
 /** Distinct shaft loads of every span, in the plan's order. [kW] */
 function loadsBySpan(motor: LoadedLimits, year: LimitYear): number[][] {
   const { timeZone, rules, set } = year;
-  if (!rules) return [loadHoursOf(motor, year).map(({ shaftKw }) => shaftKw)];
+  if (!rules) return [yearLoadOf(motor, year).hours.map(({ shaftKw }) => shaftKw)];
   const grid = gridOf(year);
   const { index } = spanSeries(rules.rules, grid, timeZone);
   const { shaftKw } = shaftLoadOf(motor, grid, timeZone);

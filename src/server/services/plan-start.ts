@@ -59,8 +59,12 @@ export async function planStart(
   return {
     start: {
       name,
-      spans: { by: 'year' },
-      fields: fieldsOf((found?.fields ?? []).map(({ motorId, fieldA }) => ({ motorId, fieldA }))),
+      spans: found?.spans ?? { by: 'year' },
+      fields: fieldsOf(
+        (found?.fields ?? []).map(({ motorId, fieldA, controls }) =>
+          controls ? { motorId, controls } : { motorId, fieldA },
+        ),
+      ),
       banks: [],
       replacements: [],
       workCost: 0,

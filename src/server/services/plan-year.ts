@@ -36,7 +36,10 @@ export async function missingForPlans(opened: OpenEngagement): Promise<Missing |
  */
 export async function plansOf(opened: OpenEngagement): Promise<YearView> {
   const [basis, rows] = await Promise.all([planBasis(opened), listPlans(opened.engagement.id)]);
-  const motors = basis.motors.map((motor) => ({ ...motor, load: loadOf(motor.row, motor.machine, opened, motor.source) }));
+  const motors = basis.motors.map((motor) => ({
+    ...motor,
+    load: loadOf(motor.row, motor.machine, opened, motor.source),
+  }));
   const faults = rows.map((row) => faultOf(row, motors, basis, opened));
   const priceable = rows.filter((_, index) => faults[index] === null);
   const [standing, ...settings] = (await priceSettings(basis, [
@@ -51,6 +54,7 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
     to: basis.task.periods.at(-1)!.to,
     route: 'intervals',
     scheduleTitle: basis.pricing.schedule.title,
+    seasons: basis.pricing.schedule.texts.at(-1)?.seasons?.names ?? [],
     readings: standing.readings,
     standing: viewOf(year, null, standing),
     plans,
@@ -59,14 +63,14 @@ export async function plansOf(opened: OpenEngagement): Promise<YearView> {
       return reason ? [unpricedOf(row, reason, motors)] : [];
     }),
     chosen: plans.find((plan) => plan.chosen) ?? null,
-    gaps: gapsOf(basis, standing),
+    gaps: [...gapsOf(basis, standing), ...motors.flatMap(loadGapOf)],
     notes: notesOfBills(standing.bills.map(({ period, notes }) => ({ name: formatBillName(period), notes }))),
     fingerprint: basis.fingerprint,
   };
 }
 
 /** What the spans of plans are laid over. */
-const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
+export const spanYearOf = ({ pricing, task }: PlanBasis): SpanYear => ({
   seasons: pricing.schedule.texts.at(-1)?.seasons,
   from: task.periods[0]!.from,
   to: task.periods.at(-1)!.to,
@@ -85,6 +89,25 @@ function gapsOf({ task }: PlanBasis, { readings }: TaskSetting): string[] {
     ...(missing > 0
       ? [
           `${wordNumber(missing, 1)} of ${wordNumber(intervals, 1)} readings are missing. Nothing is priced in their place: amounts and savings are those of the readings there are.`,
+        ]
+      : []),
+  ];
+}
+
+/** What a motor's submeter does not tell. */
+function loadGapOf({ row, source, load }: LoadedMotor): string[] {
+  if (!source.metered || load.hoursMissing + load.hoursBeyond === 0) return [];
+  const stand =
+    source.metered.whenMissing === 'calendar' ? 'its shift calendar stands in' : 'it is taken to stand still';
+  return [
+    ...(load.hoursMissing > 0
+      ? [
+          `The submeter of ${row.name} has no reading for ${wordNumber(load.hoursMissing, 1)} hours of the year: there ${stand}.`,
+        ]
+      : []),
+    ...(load.hoursBeyond > 0
+      ? [
+          `In ${wordNumber(load.hoursBeyond, 1)} hours the submeter of ${row.name} reads more than its field of today can hold: there the most it holds is taken.`,
         ]
       : []),
   ];

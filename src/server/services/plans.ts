@@ -168,7 +168,11 @@ async function refuseSameName(engagementId: number, name: string, except?: numbe
 type Fields = readonly MotorSetting[];
 
 const sameFields = (found: Fields, set: Fields) =>
-  found.every((one) => set.some((other) => other.motorId === one.motorId && other.fieldA === one.fieldA));
+  found.every((one) =>
+    set.some(
+      (other) => other.motorId === one.motorId && JSON.stringify(controlsOf(other)) === JSON.stringify(controlsOf(one)),
+    ),
+  );
 
 /** The search a plan was made of, as long as the plan sets what it found. */
 async function searchOf(engagementId: number, input: PlanInput): Promise<SearchView | null> {

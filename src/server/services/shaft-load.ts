@@ -76,7 +76,7 @@ const clock = (hour: number) =>
   `${String(Math.floor(hour)).padStart(2, '0')}:${String(Math.round((hour % 1) * 60)).padStart(2, '0')}`;
 
 /** The calendar in the words of the core. */
-export function toShiftCalendar(calendar: CalendarInput, ratedOutputKw: number): ShiftCalendar {
+function toShiftCalendar(calendar: CalendarInput, ratedOutputKw: number): ShiftCalendar {
   return {
     rules: calendar.rules.map((rule) => ({
       days: rule.days.map((day) => day.toLowerCase() as DayKind),
@@ -88,6 +88,10 @@ export function toShiftCalendar(calendar: CalendarInput, ratedOutputKw: number):
   };
 }
 
+/** Shaft load of every interval by the rules of a calendar. [kW] */
+export const rulesLoad = (calendar: CalendarInput, ratedOutputKw: number, grid: Grid, timeZone: string) =>
+  shaftLoadSeries(toShiftCalendar(calendar, ratedOutputKw), grid, timeZone);
+
 /**
  * Shaft load of a motor in every interval of a grid: of what its submeter read less its losses, or by its rules.
  *
@@ -95,7 +99,7 @@ export function toShiftCalendar(calendar: CalendarInput, ratedOutputKw: number):
  */
 export function shaftLoadOf(motor: RunningMotor, grid: Grid, timeZone: string): SubmeterLoad {
   const { machine, calendar, metered, fieldTodayA } = motor;
-  const byRules = () => shaftLoadSeries(toShiftCalendar(calendar, machine.ratedOutputKw), grid, timeZone);
+  const byRules = () => rulesLoad(calendar, machine.ratedOutputKw, grid, timeZone);
   if (!metered) return { shaftKw: byRules(), missing: 0, beyondPullOut: 0 };
   return shaftLoadFromSubmeter(machine, {
     inputKw: laidPowerOn(metered.series, grid),
@@ -124,14 +128,28 @@ export function gridOf({ from, to, timeZone }: LoadYear): Grid {
 /** Loads of a submeter are gathered in steps of this share of rated output. */
 const binShare = 0.01;
 
-/**
- * Hours of the year at each shaft load, most hours first; standstill is not among them. The many loads of a submeter are gathered:
- * each entry stands for the mean of its loads, and the highest and lowest of all have entries of their own.
- */
-export function loadHoursOf(motor: RunningMotor, year: LoadYear): LoadHours[] {
-  if (!motor.metered) return hoursOfRules(motor.calendar, motor.machine.ratedOutputKw, year);
-  return gatheredHours(shaftLoadOf(motor, gridOf(year), year.timeZone).shaftKw, motor.machine.ratedOutputKw);
+/** A motor's load over a year. */
+export interface YearLoad {
+  /**
+   * Hours at each shaft load, most hours first; standstill is not among them. The many loads of a submeter are gathered: each entry
+   * stands for the mean of its loads, and the highest and lowest of all have entries of their own.
+   */
+  hours: LoadHours[];
+  /** Of a submeter: hours without reading, hours set to the most that the field can hold. */
+  hoursMissing: number;
+  hoursBeyond: number;
 }
+
+/** A motor's load over a year, whatever tells it. */
+export function yearLoadOf(motor: RunningMotor, year: LoadYear): YearLoad {
+  const { calendar, machine, metered } = motor;
+  if (!metered) return { hours: hoursOfRules(calendar, machine.ratedOutputKw, year), hoursMissing: 0, hoursBeyond: 0 };
+  const { shaftKw, missing, beyondPullOut } = shaftLoadOf(motor, gridOf(year), year.timeZone);
+  const hours = gatheredHours(shaftKw, machine.ratedOutputKw);
+  return { hours, hoursMissing: hoursOfSteps(missing), hoursBeyond: hoursOfSteps(beyondPullOut) };
+}
+
+const hoursOfSteps = (count: number) => (count * yearStepMinutes) / 60;
 
 /** Hours of a series at each load, gathered. */
 export function gatheredHours(shaftKw: Float64Array, ratedOutputKw: number): LoadHours[] {
@@ -148,7 +166,7 @@ export function gatheredHours(shaftKw: Float64Array, ratedOutputKw: number): Loa
   }
   const gathered = [...bins.values()].map(({ sum, count }) => ({
     shaftKw: Math.min(highest, Math.max(lowest, sum / count)),
-    hours: (count * yearStepMinutes) / 60,
+    hours: hoursOfSteps(count),
   }));
   const missing = bins.size === 0 ? [] : [...new Set([highest, lowest])];
   const ends = missing.filter((kw) => !gathered.some((one) => one.shaftKw === kw));

@@ -1,8 +1,14 @@
 import { localDateStartMs, type LoadSeries } from '../../core/load';
-import { shaftLoadSeries, simulatePlan, spanSeries } from '../../core/plan';
+import { simulatePlan, spanSeries } from '../../core/plan';
 import type { FixedSetup, Grid, PlanMotor, PlanSetup, Plant, Spans } from '../../core/plan';
-import { compilePricing, readSchedule, type CompiledPricing, type Schedule } from '../../core/tariff';
-import { shaftLoadOf, toShiftCalendar } from '../services/shaft-load';
+import {
+  compilePricing,
+  readSchedule,
+  type CompiledPricing,
+  type PriceOptions,
+  type Schedule,
+} from '../../core/tariff';
+import { rulesLoad, shaftLoadOf } from '../services/shaft-load';
 import type { TaskAct, TaskBasis, TaskSetting, YearTask } from './tasks';
 
 /** A task made ready: the plant on the readings' own intervals, the schedule laid out over them. */
@@ -16,23 +22,30 @@ export interface ReadyYear {
 
 /** Reads the schedule and lays shaft loads and schedule over the readings. */
 export function readyYear(basis: TaskBasis): ReadyYear {
-  const { load, meters, periods, contract, history, given, upstream, supply } = basis;
+  const { load, meters, upstream, supply } = basis;
   const grid = { startMs: load.startMs, stepMinutes: load.stepMinutes, count: load.kwh.length };
   const motors = basis.motors.map((motor): PlanMotor => {
-    const { machine, fieldTodayA: standingFieldA, behind, voltagePu, leastFieldA, voltageBandPu } = motor;
+    const { machine, fieldTodayA, behind, voltagePu, leastFieldA, voltageBandPu } = motor;
     const { shaftKw } = shaftLoadOf(motor, grid, basis.timeZone);
-    return { motor: machine, shaftKw, standingFieldA, behind, voltagePu, leastFieldA, voltageBandPu };
+    return { motor: machine, shaftKw, standingFieldA: fieldTodayA, behind, voltagePu, leastFieldA, voltageBandPu };
   });
-  const options = { periods, contract, given, ...(history ? { history } : {}) };
   const schedule = readSchedule(basis.scheduleText);
   return {
     basis,
     grid,
     plant: { load: meters[0] ?? load, beside: meters.slice(1), motors, upstream, supply },
     schedule,
-    pricing: compilePricing(schedule, grid, options),
+    pricing: compilePricing(schedule, grid, priceOptionsOf(basis)),
   };
 }
+
+/** What the year's bills are priced with, beside the schedule. */
+export const priceOptionsOf = ({ periods, contract, given, history }: TaskBasis): PriceOptions => ({
+  periods,
+  contract,
+  given,
+  ...(history ? { history } : {}),
+});
 
 /** The spans of an act over the readings. */
 export function spansOf({ basis, grid }: ReadyYear, rules: TaskAct['spans']): Spans | undefined {
@@ -48,7 +61,7 @@ export function fixedSetupOf(ready: ReadyYear, act: TaskAct): FixedSetup {
     replacements: (act.replacements ?? []).map(({ induction, machine, calendar, controls, behind }) => ({
       induction,
       motor: machine,
-      shaftKw: shaftLoadSeries(toShiftCalendar(calendar, induction.ratedOutputKw), grid, basis.timeZone),
+      shaftKw: rulesLoad(calendar, induction.ratedOutputKw, grid, basis.timeZone),
       controls,
       behind,
     })),

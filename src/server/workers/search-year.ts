@@ -1,34 +1,65 @@
-import { searchSettings, type SearchResult, type SearchedAxis } from '../../core/plan';
-import type { CostCurveView, SearchView } from '../../schemas/search';
-import { readyYear } from './price-year';
-import type { SearchTask, TaskMotor } from './tasks';
+import {
+  billReach,
+  boundOf,
+  searchSettings,
+  simulatePlan,
+  spanSeries,
+  tryRobustness,
+  type Robustness,
+  type SearchInput,
+  type SearchMotor,
+  type SearchResult,
+  type Spans,
+} from '../../core/plan';
+import { localDateStartMs } from '../../core/load';
+import { looksBack } from '../../core/tariff';
+import { wordNumber } from '../../core/units';
+import { spanNames, wholeYear } from '../../schemas/plan-spans';
+import type { SearchView } from '../../schemas/search';
+import { priceOptionsOf, readyYear, type ReadyYear } from './price-year';
+import { weighCapacitors } from './search-capacitors';
+import { curvesOf, foundSettings, limitHours, namedNote } from './search-views';
+import type { SearchTask, TaskBasis } from './tasks';
 
-/** Share of the saving within which settings round the best count as equally good. */
-const toleranceShare = 0.02;
 const tellEvery = 5;
+const triedYears = 16;
 
-/** Searches the field currents that make the year's bills least, and tells the port how far it is. */
-export function searchYear({ basis, stepA, fingerprint, port }: SearchTask): SearchView {
-  const { plant, pricing } = readyYear(basis);
-  const found = searchSettings({
-    plant: {
-      ...plant,
-      motors: plant.motors.map((motor) => ({ ...motor, searched: { holds: 'field-current', stepA } })),
-    },
-    totals: (load) => pricing.totals(load),
+/**
+ * Searches the field currents that make the year's bills least, tries them on years like the metered one, weighs capacitors and
+ * bounds what finer control could bring; tells the port how far it is.
+ */
+export function searchYear({ basis, asked, spanRules, fingerprint, port }: SearchTask): SearchView {
+  const ready = readyYear(basis);
+  const { stepA, motorIds } = asked;
+  const { spans: set = wholeYear } = asked;
+  const names = spanNames(set);
+  const spans = spanRules ? spansInOrder(ready, spanRules, names.length) : undefined;
+  const input: SearchInput = {
+    plant: { ...ready.plant, motors: searchedMotors(ready, stepA, motorIds) },
+    fixed: spans ? { spans } : {},
+    totals: (load, changed) => ready.pricing.totals(load, { changed }),
+    bills: billReach(spans, billIntervals(ready), looksBack(ready.schedule)),
     onProgress: ({ priced, planned }) => {
       if (priced % tellEvery === 0) port.postMessage({ done: priced, planned });
     },
-  });
+  };
+  const found = searchSettings(input);
   port.postMessage({ done: found.priced, planned: found.priced });
+  const tellYears = ({ years, planned }: { years: number; planned: number }) =>
+    port.postMessage({ done: years, planned, unit: 'trial years' });
+  const robust = found.leaveAlone ? null : tryRobustness(input, found, { years: triedYears, onProgress: tellYears });
+  const weighed = weighCapacitors({
+    ready,
+    input,
+    found,
+    asked,
+    tell: (done, planned) => port.postMessage({ done, planned, unit: 'bank sizes' }),
+  });
   const saving = found.standingCost - found.cost;
+  const year = simulatePlan(ready.plant, { ...input.fixed, controls: found.controls });
   return {
-    fields: basis.motors.map(({ id, name, fieldTodayA }, index) => ({
-      motorId: id,
-      name,
-      fieldA: fieldOf(found, index) ?? fieldTodayA,
-      todayA: fieldTodayA,
-    })),
+    fields: foundSettings(basis, found.controls, spans !== undefined),
+    spans: set,
     yearTotal: found.cost,
     standingTotal: found.standingCost,
     saving,
@@ -36,63 +67,69 @@ export function searchYear({ basis, stepA, fingerprint, port }: SearchTask): Sea
     exhaustive: found.exhaustive,
     leaveAlone: found.leaveAlone,
     stepA,
-    curves: found.axes.flatMap((axis) =>
-      curveOf(basis.motors[axis.motors[0]!]!, axis, found.cost, Math.max(1, toleranceShare * saving)),
-    ),
-    notes: found.notes.map((note) => namedNote(note, basis.motors)),
+    curves: curvesOf(basis, found, spans ? names : null),
+    limits: limitHours(basis, found, year),
+    robustness: robust && robustnessOf(basis, robust, spans !== undefined),
+    ...weighed,
+    bound: boundView(ready, found),
+    notes: [...new Set(found.notes.map((note) => namedNote(note, basis.motors)))],
     fingerprint,
   };
 }
 
-function fieldOf({ controls }: SearchResult, index: number): number | undefined {
-  const control = controls[index]?.[0];
-  return control?.holds === 'field-current' ? control.fieldCurrentA : undefined;
+function searchedMotors({ basis, plant }: ReadyYear, stepA: number, motorIds: number[] | undefined): SearchMotor[] {
+  return plant.motors.map((motor, index) => {
+    const isSearched = !motorIds || motorIds.includes(basis.motors[index]!.id);
+    return { ...motor, searched: isSearched ? { holds: 'field-current', stepA } : null };
+  });
 }
 
-function curveOf(motor: TaskMotor, axis: SearchedAxis, cost: number, amount: number): CostCurveView[] {
-  const { chosen, curve } = axis;
-  if (chosen.holds !== 'field-current' || curve.length < 2) return [];
-  const { machine } = motor;
-  const ratedLimitA = machine.limits?.fieldCurrentA ?? machine.ratedFieldCurrentA;
-  const points = curve.flatMap(({ control, cost: total, admissible }) =>
-    control.holds === 'field-current' ? [{ fieldA: control.fieldCurrentA, total, admissible }] : [],
-  );
-  return [
-    {
-      motorId: motor.id,
-      name: motor.name,
-      chosenA: chosen.fieldCurrentA,
-      todayA: motor.fieldTodayA,
-      limitA: ratedLimitA * (1 - (machine.limits?.reserve ?? 0)),
-      ratedLimitA,
-      points,
-      tolerance: toleranceOf(
-        points.filter(({ admissible }) => admissible),
-        chosen.fieldCurrentA,
-        cost + amount,
-        amount,
-      ),
+/** Spans in the order a person named them: a season that comes twice is one. */
+function spansInOrder(
+  { basis, grid }: ReadyYear,
+  { rules, of }: NonNullable<SearchTask['spanRules']>,
+  count: number,
+): Spans {
+  const { index } = spanSeries(rules, grid, basis.timeZone, basis.holidays);
+  return { index: index.map((rule) => of[rule]!), count };
+}
+
+/** Intervals of each bill. */
+function billIntervals({ basis, grid }: ReadyYear): { first: number; end: number }[] {
+  const place = (date: string) => {
+    const at = Math.round((localDateStartMs(date, basis.timeZone) - grid.startMs) / (grid.stepMinutes * 60_000));
+    return Math.min(grid.count, Math.max(0, at));
+  };
+  return basis.periods.map(({ from, to }) => ({ first: place(from), end: place(to) }));
+}
+
+function robustnessOf(basis: TaskBasis, robust: Robustness, bySpan: boolean): SearchView['robustness'] {
+  const { years, bestYears, chosen, safer } = robust;
+  const { meanSaving, worstSaving } = chosen;
+  return {
+    years,
+    bestYears,
+    meanSaving,
+    worstSaving,
+    safer: safer && {
+      fields: foundSettings(basis, safer.controls, bySpan),
+      meanSaving: safer.meanSaving,
+      worstSaving: safer.worstSaving,
     },
-  ];
+  };
 }
 
-/** The stretch of settings round the chosen one, all within the limits, that costs less than a ceiling. */
-function toleranceOf(
-  points: { fieldA: number; total: number }[],
-  chosenA: number,
-  ceiling: number,
-  amount: number,
-): CostCurveView['tolerance'] {
-  const at = points.findIndex((point) => point.fieldA === chosenA);
-  if (at < 0) return null;
-  let low = at;
-  let high = at;
-  while (low > 0 && points[low - 1]!.total <= ceiling) low -= 1;
-  while (high < points.length - 1 && points[high + 1]!.total <= ceiling) high += 1;
-  return { lowA: points[low]!.fieldA, highA: points[high]!.fieldA, amount };
-}
-
-/** The core counts motors; people know their names. */
-function namedNote(note: string, motors: TaskMotor[]): string {
-  return note.replace(/^Motor (\d+)/, (words, number: string) => motors[Number(number) - 1]?.name ?? words);
+/** What no reactive power within the limits can beat, and how far the best found lies above it. */
+function boundView(ready: ReadyYear, found: SearchResult): SearchView['bound'] {
+  const bound = boundOf({ plant: ready.plant, schedule: ready.schedule, options: priceOptionsOf(ready.basis) });
+  if (bound.refused !== undefined) return null;
+  const share = (100 * (found.cost - bound.total)) / Math.abs(found.cost || 1);
+  const losses =
+    bound.freeLossCost !== null && bound.freeLossCost > 0
+      ? ' Part of the distance is no room at all: the bound charges each motor only the losses it cannot avoid.'
+      : '';
+  return {
+    total: bound.total,
+    words: `The setting found lies ${wordNumber(share, 0.1)} % above it: finer control, hour by hour, can bring no more than that.${losses}`,
+  };
 }

@@ -13,7 +13,8 @@ import type {
 } from '../../core/plan';
 import type { ExampleResult, PricedBill, PrintedRow } from '../../core/tariff';
 import type { CalendarInput } from '../../schemas/motor';
-import type { SearchView } from '../../schemas/search';
+import type { SearchInput, SearchView } from '../../schemas/search';
+import type { SpanRules } from '../services/plan-spans';
 import type { ReconcileBasis } from '../services/price-basis';
 import type { LoadSource } from '../services/shaft-load';
 
@@ -107,7 +108,9 @@ export interface TaskSetting {
 export interface SearchTask {
   kind: 'search';
   basis: TaskBasis;
-  stepA: number;
+  asked: SearchInput;
+  /** Of the spans asked for; null: the year is whole. */
+  spanRules: SpanRules | null;
   fingerprint: string;
   port: MessagePort;
 }
@@ -115,6 +118,8 @@ export interface SearchTask {
 export interface SearchProgress {
   done: number;
   planned: number;
+  /** What is counted; settings where absent. */
+  unit?: string;
 }
 
 export type SearchResult = SearchView;

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import type { Alternative } from '../../../src/core/plan';
 import type { LoadSeries } from '../../../src/core/load';
 import { operatingPoint } from '../../../src/core/machine';
 import { judgePlans, shaftLoadFromSubmeter, simulatePlan, sizeCapacitors } from '../../../src/core/plan';
@@ -98,39 +99,67 @@ describe('judgePlans', () => {
     years: 10,
     discountRate: 0.08,
     alternatives: [
-      { name: 'Capacitors', yearCost: 88000, capitalCost: 40000, yearlyUpkeep: 500 },
-      { name: 'Field settings', yearCost: 91000, capitalCost: 6000 },
+      { kind: 'capacitors' as const, name: 'Capacitors', yearCost: 88000, capitalCost: 40000, yearlyUpkeep: 500 },
+      { kind: 'motor' as const, name: 'Field settings', yearCost: 91000, capitalCost: 6000 },
+      { kind: 'both' as const, name: 'Both together', yearCost: 86500, capitalCost: 46000, yearlyUpkeep: 500 },
     ],
   };
 
-  it('ranks by present value and says which wins', () => {
-    // Annuity of 10 years at 8 %: 6.71008. Capacitors 11500 x 6.71008 - 40000 = 37165.9; fields 9000 x 6.71008 - 6000 = 54390.7.
+  it('ranks by present value and says in one sentence with three numbers which wins', () => {
+    // Annuity of 10 years at 8 %: 6.71008. Capacitors 11500 x 6.71008 - 40000 = 37165.9; fields 9000 x 6.71008 - 6000 = 54390.7;
+    // both 13000 x 6.71008 - 46000 = 41231.1.
     const verdict = judgePlans(input);
-    expect(verdict.winner).toBe('Field settings');
-    expect(verdict.judged.map((row) => Math.round(row.appraisal.npv))).toEqual([54391, 37166]);
+    expect(verdict.winner).toBe('motor');
+    expect(verdict.judged.map((row) => Math.round(row.appraisal.npv))).toEqual([54391, 41231, 37166]);
     expect(verdict.judged[0]!.yearlySaving).toBe(9000);
-    expect(verdict.words).toMatch(/Field settings: present value 54391 over 10 years, paid back in 0\.7 years/);
+    expect(verdict.words.replaceAll('\u00a0', ' ')).toBe(
+      'Field settings gain 54,391 in present value over 10 years; both together gain 41,231 and capacitors gain 37,166.',
+    );
+    expect(judgePlans({ ...input, wordMoney: (amount) => `$${amount.toFixed(0)}` }).words).toMatch(
+      /^Field settings gain \$54391 /,
+    );
   });
 
-  it('leaves the plant alone when nothing earns its cost', () => {
+  it('says when capacitors win, or both', () => {
+    const dear = input.alternatives.map((one) => (one.kind === 'motor' ? { ...one, capitalCost: 30000 } : one));
+    expect(judgePlans({ ...input, alternatives: dear }).winner).toBe('both');
+    expect(judgePlans({ ...input, alternatives: dear.slice(0, 2) }).winner).toBe('capacitors');
+  });
+
+  it('leaves the plant alone when nothing earns its cost, and says what each would lose', () => {
+    // 200 a year more: -200 x 6.71008 = -1342.0. Capacitors save 300 less 500 of upkeep: -200 x 6.71008 - 40000 = -41342.0.
+    const [capacitors, motor] = input.alternatives as [Alternative, Alternative];
     const verdict = judgePlans({
       ...input,
-      alternatives: [{ name: 'Field settings', yearCost: 100200, capitalCost: 0 }],
+      alternatives: [
+        { ...motor, yearCost: 100200, capitalCost: 0 },
+        { ...capacitors, yearCost: 99700 },
+      ],
     });
-    expect(verdict.winner).toBeNull();
-    expect(verdict.words).toMatch(/Leave the plant as it stands/);
-    expect(judgePlans({ ...input, alternatives: [] }).winner).toBeNull();
+    expect(verdict.winner).toBe('neither');
+    expect(verdict.words.replaceAll('\u00a0', ' ')).toBe(
+      'Leave the plant as it stands: over 10 years field settings lose 1,342 and capacitors lose 41,342.',
+    );
+    expect(judgePlans({ ...input, alternatives: [] })).toMatchObject({ winner: 'neither', judged: [] });
   });
 
   it('grows the savings with the price', () => {
     // One alternative, 2 years, no discount: 9000 + 9000 x 1.1 - 6000 = 12900.
-    const verdict = judgePlans({ ...input, years: 2, discountRate: 0, escalationRate: 0.1 });
+    const verdict = judgePlans({
+      ...input,
+      alternatives: input.alternatives.slice(1, 2),
+      years: 2,
+      discountRate: 0,
+      escalationRate: 0.1,
+    });
     expect(verdict.judged[0]!.appraisal.npv).toBeCloseTo(12900, 8);
   });
 
-  it('refuses a horizon that is none', () => {
+  it('refuses a horizon that is none and a kind told twice', () => {
     expect(() => judgePlans({ ...input, years: 0 })).toThrow(/years/);
     expect(() => judgePlans({ ...input, escalationRate: -1 })).toThrow(/escalationRate/);
+    const twice = [input.alternatives[0]!, input.alternatives[0]!];
+    expect(() => judgePlans({ ...input, alternatives: twice })).toThrow(/each kind once at most, got capacitors again/);
   });
 });
 

@@ -58,6 +58,32 @@ describe('controls of a motor’s own', () => {
     expect(motor!.extraLossKwh).toBeCloseTo(motor!.spans[0]!.extraLossKwh + motor!.spans[1]!.extraLossKwh, 9);
   });
 
+  it('gives the same year where only the spans that changed are simulated anew', () => {
+    const spans: Spans = { index: Uint8Array.from(load.kwh, (_, i) => Math.floor(i / 31) % 3), count: 3 };
+    const plant = { load, motors: [one, two] };
+    const partly = createSimulator(plant, { spans });
+    const banks = [{ steps: 4, stepKvar: 100, lossWPerKvar: 2, holdsPowerFactor: 0.9 }];
+    const partlySwitched = createSimulator(plant, { spans, banks });
+    const controls = [
+      [...field(100), ...field(110), ...field(120)],
+      [...field(60), ...field(62), ...field(64)],
+    ];
+    partly.apply(controls, new Set());
+    partlySwitched.apply(controls, new Set());
+    for (const [motor, span, amperes] of [
+      [0, 1, 140],
+      [1, 2, 80],
+      [0, 0, 131],
+      [1, 2, 64],
+    ] as const) {
+      controls[motor]![span] = field(amperes)[0]!;
+      expect(partly.apply(controls, new Set([span]))).toEqual(createSimulator(plant, { spans }).apply(controls));
+      expect(partlySwitched.apply(controls, new Set([span]))).toEqual(
+        createSimulator(plant, { spans, banks }).apply(controls),
+      );
+    }
+  });
+
   it('refuses a number of controls that is neither one nor one a span', () => {
     const spans: Spans = { index: new Uint8Array(load.kwh.length), count: 3 };
     const run = () => createSimulator({ load, motors: [one] }, { spans }).apply([[...field(1), ...field(2)]]);

@@ -73,7 +73,7 @@ describe('settings by season', () => {
   const input = { plant: { load, motors: [motor] }, fixed: { spans }, totals };
 
   it('are searched side by side where no bill looks back: one year priced answers for both', () => {
-    const apart = searchSettings({ ...input, billsOfSpan: [[0], [1]] });
+    const apart = searchSettings({ ...input, bills: { ofSpan: [[0], [1]], looksBack: false } });
     expect(ampsOf(apart.controls[0]!)).toEqual([127, 118]);
     expect(apart.cost).toBeLessThan(1e-6);
     expect(apart.exhaustive).toBe(true);
@@ -106,7 +106,7 @@ describe('settings by season', () => {
       plant: { load, motors: [own] },
       fixed: { spans },
       totals: ratchet,
-      billsOfSpan: [[0, 1], [1]],
+      bills: { ofSpan: [[0], [1]], looksBack: true },
       exhaustiveUpTo: 0,
     });
     const simulator = createSimulator({ load, motors: [motor] }, { spans });

@@ -51,10 +51,10 @@ class Pricing implements CompiledPricing {
     private readonly ground: PeriodGround[],
   ) {}
 
-  totals(load: LoadSeries, { isActiveUnchanged = false }: TotalsOptions = {}): Float64Array {
+  totals(load: LoadSeries, { isActiveUnchanged = false, changed }: TotalsOptions = {}): Float64Array {
     this.checkGrid(load);
     const carried = withCarriedChannels(this.schedule, load).load;
-    const source = new IntervalSource(this.ground, carried);
+    const source = new IntervalSource(this.ground, carried, this.hasGathered ? changed : undefined);
     source.gather(isActiveUnchanged && this.hasGathered);
     this.hasGathered = true;
     this.lastRun ??= prepareRun(this.schedule, this.plans, this.options, { source, isUnity: false, wantsNotes: false });

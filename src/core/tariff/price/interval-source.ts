@@ -65,11 +65,14 @@ export class IntervalSource implements QuantitySource {
   constructor(
     private readonly periods: readonly PeriodGround[],
     readonly load: LoadSeries,
+    /** Periods whose intervals may differ from what was gathered last; absent: any may. */
+    private readonly changed?: ReadonlySet<number>,
   ) {}
 
   /** Gathers everything over the intervals; the arrays of the ground are filled anew. */
   gather(isActiveKept: boolean): void {
-    for (const { reductions, first, end } of this.periods) {
+    for (const [index, { reductions, first, end }] of this.periods.entries()) {
+      if (this.changed && !this.changed.has(index)) continue;
       const hasMissing = hasQuality(this.load.quality, 2, first, end);
       for (const { classes, cells } of reductions.values()) {
         if (!isActiveKept && (classes.needs.kwh || classes.needs.kwPeak)) gatherActive(classes, this.load, hasMissing);
@@ -86,6 +89,10 @@ export class IntervalSource implements QuantitySource {
 
   measure(run: Run, bill: BillState, state: PieceState, quantity: QuantityEntry, needs: readonly number[]): void {
     const { definition, slot } = quantity;
+    if (this.changed && !this.changed.has(bill.plan.index) && state.piece.text.steady.has(slot)) {
+      state.known[slot] = 1;
+      return;
+    }
     state.atMs[slot] = NaN;
     state.atCell[slot] = -1;
     if (definition.kind === 'value') setRounded(run, bill, state, quantity, this.valueAt(run, bill, state, definition));

@@ -33,6 +33,8 @@ export interface TextPlan {
   quantityOfSlot: ReadonlyMap<number, QuantityEntry>;
   /** Quantities from top to bottom, each with the places of the values its formulas read. */
   quantities: { quantity: QuantityEntry; needs: number[] }[];
+  /** Places of measures that hang on nothing but the intervals, the rates and the contract. */
+  steady: ReadonlySet<number>;
 }
 
 /** Lays out a text. */
@@ -60,7 +62,22 @@ export function planText(schedule: Schedule, text: ScheduleText): TextPlan {
     quantity,
     needs: [...new Set(expressionsOfQuantity(quantity).flatMap(({ slots }) => slots))],
   }));
-  return { text, chargeOfLine, quantityOfSlot, quantities };
+  return { text, chargeOfLine, quantityOfSlot, quantities, steady: steadyMeasures(text, quantities) };
+}
+
+function steadyMeasures(text: ScheduleText, quantities: TextPlan['quantities']): Set<number> {
+  const steady = quantities.filter(
+    ({ quantity, needs }) => quantity.definition.kind === 'measure' && needs.every((slot) => isAlwaysKnown(text, slot)),
+  );
+  return new Set(steady.map(({ quantity }) => quantity.slot));
+}
+
+/** Whether a place is a contract input or rate that has a value in every period. */
+function isAlwaysKnown(text: ScheduleText, slot: number): boolean {
+  const input = text.contract.find((one) => one.slot === slot);
+  if (input) return input.default !== undefined;
+  const rate = text.rates.find((one) => one.slot === slot);
+  return rate?.place.kind === 'same' && rate.place.expression.slots.every((one) => isAlwaysKnown(text, one));
 }
 
 /** Formulas of a charge that every piece evaluates; a rate by season or month counts with the one in force. */

@@ -1,5 +1,7 @@
 import { planInput } from '../../../src/schemas/plan-input';
 import { planDefaults } from '../../../src/schemas/plan-money';
+import { constantFieldA } from '../../../src/schemas/plan-settings';
+import type { FoundSetting } from '../../../src/schemas/search';
 import { supplyInput } from '../../../src/schemas/supply';
 
 /** How Works 2 is supplied, as the utility's letter and the plant's relay study say. */
@@ -34,10 +36,13 @@ export const kestrelCapacitors = planInput.parse({
 });
 
 /** Half of the way at the motors, the rest by capacitors. */
-export const kestrelBoth = (found: { motorId: number; fieldA: number; todayA: number }[]) =>
+export const kestrelBoth = (found: FoundSetting[]) =>
   planInput.parse({
     name: 'Plan C',
-    fields: found.map(({ motorId, fieldA, todayA }) => ({ motorId, fieldA: Math.round((fieldA + todayA) / 2) })),
+    fields: found.map(({ motorId, todayA, ...setting }) => ({
+      motorId,
+      fieldA: Math.round(((constantFieldA(setting) ?? todayA) + todayA) / 2),
+    })),
     banks: [bankOf(3, 115_000)],
     workCost: 61_500,
     yearlyUpkeep: 5_900,

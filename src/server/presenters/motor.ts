@@ -169,7 +169,11 @@ function mostOf(machine: SynchronousMotor, shaftKw: number, voltageBandPu: Limit
 }
 
 /** The most at both ends of a voltage band. */
-function presentBand(machine: SynchronousMotor, shaftKw: number, band: LimitsBeside['voltageBandPu']): MotorView['band'] {
+function presentBand(
+  machine: SynchronousMotor,
+  shaftKw: number,
+  band: LimitsBeside['voltageBandPu'],
+): MotorView['band'] {
   if (!band) return null;
   const at = (voltagePu: number) => ({ voltagePu, ...capability(machine, { shaftKw, voltagePu }) });
   return { low: at(band.low), high: at(band.high) };

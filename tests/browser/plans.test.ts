@@ -16,6 +16,9 @@ beforeAll(async () => {
 }, 60_000);
 afterAll(() => browser.close());
 
+/** The form of a plan; the search beneath it asks for some of the same. */
+const form = () => page.locator('#form');
+
 /** Cells of a row of the comparison by the words its heading begins with. */
 async function cellsOf(heading: string): Promise<string[]> {
   const table = page.getByRole('table', { name: 'Standing and plans' });
@@ -26,21 +29,21 @@ async function cellsOf(heading: string): Promise<string[]> {
 describe('a plan by season with a switched, detuned bank', () => {
   it('is written in the form, which tells of a limit while it is typed', async () => {
     await page.goto(`${plans}?plan=new#form`, { waitUntil: 'networkidle' });
-    await page.getByLabel('Name', { exact: true }).fill(name);
-    await page.getByLabel('Settings', { exact: true }).selectOption('months');
-    const summer = page.getByLabel('M-1, Summer', { exact: true });
+    await form().getByLabel('Name', { exact: true }).fill(name);
+    await form().getByLabel('Settings', { exact: true }).selectOption('months');
+    const summer = form().getByLabel('M-1, Summer', { exact: true });
     await summer.fill('400');
     await page.getByText(/beyond the field limit of M-1/).waitFor();
     await summer.fill('130');
     await page.getByText(/beyond the field limit of M-1/).waitFor({ state: 'detached' });
-    await page.getByLabel('M-1, Winter', { exact: true }).fill('120');
-    await page.getByRole('button', { name: 'Add a bank' }).click();
-    await page.getByLabel('Steps', { exact: true }).fill('2');
-    await page.getByLabel('Size of a step').fill('300');
-    await page.getByLabel('Controller holds').fill('0.95');
-    await page.getByLabel('Detuning reactors').fill('7');
-    await page.getByLabel('Bank and its fitting, once').fill('80,000');
-    await page.getByLabel('Work at the motors, once').fill('20,000');
+    await form().getByLabel('M-1, Winter', { exact: true }).fill('120');
+    await form().getByRole('button', { name: 'Add a bank' }).click();
+    await form().getByLabel('Steps', { exact: true }).fill('2');
+    await form().getByLabel('Size of a step').fill('300');
+    await form().getByLabel('Controller holds').fill('0.95');
+    await form().getByLabel('Detuning reactors').fill('7');
+    await form().getByLabel('Bank and its fitting, once').fill('80,000');
+    await form().getByLabel('Work at the motors, once').fill('20,000');
     await page.getByRole('button', { name: 'Price this plan' }).click();
     await page.waitForURL((url) => url.pathname === plans && !url.search);
   }, 90_000);
@@ -63,9 +66,9 @@ describe('a plan by season with a switched, detuned bank', () => {
   it('is copied into a form of its own name, and taken back', async () => {
     await page.getByRole('link', { name: `Copy ${name}` }).click();
     await page.waitForLoadState('networkidle');
-    expect(await page.getByLabel('Name', { exact: true }).inputValue()).not.toBe(name);
-    expect(await page.getByLabel('M-1, Summer', { exact: true }).inputValue()).toBe('130');
-    expect(await page.getByLabel('Size of a step').inputValue()).toBe('300');
+    expect(await form().getByLabel('Name', { exact: true }).inputValue()).not.toBe(name);
+    expect(await form().getByLabel('M-1, Summer', { exact: true }).inputValue()).toBe('130');
+    expect(await form().getByLabel('Size of a step').inputValue()).toBe('300');
     await page.goto(plans, { waitUntil: 'networkidle' });
     await page.getByRole('link', { name: `Edit ${name}` }).click();
     await page.waitForLoadState('networkidle');

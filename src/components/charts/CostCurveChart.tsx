@@ -123,7 +123,7 @@ function Bound({ cost, plot, palette, divisor }: Parts & { cost: number }) {
   return (
     <>
       <path d={`M${plot.left} ${y}H${plot.right}`} stroke={palette.ink} strokeDasharray="6 3" />
-      <Words x={plot.left + 8} y={y - 5} palette={palette} bold halo>
+      <Words x={plot.left + 8} y={y + 15} palette={palette} bold halo>
         {`bound, every interval its own best kvar: ${formatNumber(cost)}`}
       </Words>
     </>

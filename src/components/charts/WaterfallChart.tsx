@@ -75,8 +75,7 @@ export function WaterfallChart({ width, height, palette = pagePalette, ...data }
   const room = Math.max(1, most - least);
   const [low, high] = [least - room * 0.35, most + room * 0.05];
   const x = (amount: number) => left + ((amount - low) / (high - low)) * (right - left);
-  const { divisor, word } = moneyScale(most);
-  const scale = Math.min(divisor, 1000);
+  const scale = Math.min(moneyScale(most).divisor, 1000);
   const ticks = ticksWithin(low / scale, high / scale, width < narrowBelow ? 2 : 4);
   const bottom = top + rows.length * rowHeight;
   return (
@@ -126,7 +125,7 @@ export function WaterfallChart({ width, height, palette = pagePalette, ...data }
         </Words>
       ))}
       <Words x={right} y={bottom + 34} palette={palette} anchor="end">
-        {`${scale === 1 ? '' : word}${data.currency} a year, axis cut`}
+        {`${scale === 1 ? '' : 'Thousand '}${data.currency} a year, axis cut`}
       </Words>
     </svg>
   );

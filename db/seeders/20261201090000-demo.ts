@@ -148,11 +148,7 @@ async function writeToUtility(consultant: Actor, opened: OpenEngagement): Promis
 async function proposeToKestrel(consultant: Actor, opened: OpenEngagement): Promise<void> {
   await changeSupply(opened, { version: 0, supply: kestrelSupply });
   const search = await ended(consultant, await startSearch(consultant, opened, { stepA: 2 }));
-  const fields = (searchFound(search)?.fields ?? []).map(({ motorId, fieldA, todayA }) => ({
-    motorId,
-    fieldA: fieldA ?? todayA,
-    todayA,
-  }));
+  const fields = searchFound(search)?.fields ?? [];
   const plan = await createPlan(
     opened,
     planInput.parse({

@@ -37,7 +37,6 @@ export type BillsOnlyView =
       to: string;
       standing: number;
       plans: EstimatedPlanView[];
-      notes: string[];
       refused?: undefined;
     }
   | { refused: string };

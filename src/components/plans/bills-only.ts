@@ -1,6 +1,7 @@
 import type { BillsOnlyView, EstimatedAmount, EstimatedPlanView } from '../../schemas/plan-from-bills';
 import { formatBillName, formatMajor, formatNumber } from '../ui/format';
 import type { LedgerCell, LedgerData } from '../ui/ledger';
+import type { SumRow } from '../ui/ResultSums';
 
 export type EstimatedYear = Exclude<BillsOnlyView, { refused: string }>;
 
@@ -36,6 +37,18 @@ export function estimateVerdict(year: EstimatedYear): { title: string; lead: str
   return { title: `${plan.name}: likely ${money(best)} saved a year, ${least}, at most ${money(high)}.`, lead };
 }
 
+/** How wide each doubt by itself makes a plan's year. */
+export function widthRows({ currency }: EstimatedYear, { widths, total }: EstimatedPlanView): SumRow[] {
+  return [
+    ...widths.map(({ doubt, width }) => ({ label: doubts[doubt], value: formatNumber(width) })),
+    {
+      label: `All together, ${currency} a year`,
+      value: formatNumber(total.high - total.low),
+      kind: 'total' as const,
+    },
+  ];
+}
+
 const signed = (amount: number): LedgerCell => ({
   value: amount < 0 ? `${formatNumber(-amount)} more` : formatNumber(amount),
   tone: amount < 0 ? 'fault' : undefined,
@@ -54,9 +67,8 @@ export function estimatesTable(year: EstimatedYear): LedgerData {
     ],
     rows: year.plans.map((plan, index) => ({
       id: `${plan.id ?? 'raised'}-${index}`,
-      kind: plan === best ? ('total' as const) : undefined,
       cells: {
-        plan: { value: plan.name, note: settingWords(plan) },
+        plan: { value: plan.name, note: settingWords(plan), strong: plan === best },
         low: signed(plan.saving.low),
         best: signed(plan.saving.best),
         high: signed(plan.saving.high),
@@ -84,7 +96,7 @@ export function estimatedBillsTable(year: EstimatedYear, plan: EstimatedPlanView
   return {
     columns: [
       { key: 'bill', head: 'Bill' },
-      { key: 'standing', head: 'As printed', unit: year.currency, align: 'right' },
+      { key: 'standing', head: 'Before', unit: year.currency, align: 'right' },
       { key: 'low', head: 'After, at least', unit: year.currency, align: 'right' },
       { key: 'best', head: 'likely', unit: year.currency, align: 'right', strong: true },
       { key: 'high', head: 'at most', unit: year.currency, align: 'right' },

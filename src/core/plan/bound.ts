@@ -9,8 +9,8 @@ export interface PlanBound {
   /** [currency], float64[periods] */
   perPeriod: Float64Array;
   /**
-   * How loose it is: losses of delivering most, beyond the least losses that the bound charges in every interval, as energy and
-   * priced on the same bills; the cost is null where such bills cannot be priced.
+   * How loose it may be for losses: those of delivering most everywhere beyond the least, as energy and priced on the same bills; the cost is
+   * null where such bills cannot be priced. The bound charges a part of them where what is delivered counts in plain sums, else none.
    */
   freeLossKwh: number;
   freeLossCost: number | null;
@@ -28,7 +28,8 @@ export interface RefusedBound {
  * every step of the capacitors connected or not, the year's bills come to at least `total`.
  *
  * A relaxation: in each interval and each quantity of the bill reactive power and losses are free within what the machines can do, so
- * that no plan need reach it. Losses are charged at the least that each motor can have at its load.
+ * that no plan need reach it. Losses are charged at the least that each motor can have at its load, and at what the reactive energy
+ * delivered in the period costs at least, window by window, where the bill lies under one text and season and nothing is upstream.
  *
  * @param ask.schedule, ask.options  As of `priceBills`
  * @returns The bound, or why there is none

@@ -76,9 +76,6 @@ export async function plansFromBills(opened: OpenEngagement): Promise<BillsOnlyV
         ),
       ),
     ],
-    notes: [...result.acts, ...result.raised.map(({ estimate }) => estimate)]
-      .flatMap(({ notes }) => notes)
-      .filter(once),
   };
 }
 
@@ -98,8 +95,6 @@ function estimated(task: EstimateTask, key: string): Promise<EstimateResult | Re
   if (cache.size > cacheSize && oldest !== undefined) cache.delete(oldest);
   return result;
 }
-
-const once = <Value>(value: Value, index: number, all: Value[]) => all.indexOf(value) === index;
 
 function presentEstimate(
   { id, name }: { id: number | null; name: string },

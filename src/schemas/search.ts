@@ -130,6 +130,17 @@ export const searchedBankInput = z.object({
     .number({ error: 'Write what a kvar costs, fitted.' })
     .min(0, 'Write an amount of 0 or more.')
     .max(1e6, 'This amount is too large.'),
+  /** Reactors of a detuned bank; absent: none. */
+  detuningPercent: z
+    .number({ error: 'Write the reactors in per cent, as 7.' })
+    .min(1, 'Detuning reactors lie between 1 and 25 %.')
+    .max(25, 'Detuning reactors lie between 1 and 25 %.')
+    .optional(),
+  /** Work at the motors, once, that the field settings ask for. Major units. */
+  motorWork: z
+    .number({ error: 'Write what the work at the motors costs, 0 where it costs nothing.' })
+    .min(0, 'Write an amount of 0 or more.')
+    .max(1e10, 'This amount is too large.'),
 });
 export type SearchedBankInput = z.output<typeof searchedBankInput>;
 

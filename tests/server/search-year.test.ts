@@ -81,7 +81,7 @@ describe('a search by shift with capacitors beside', () => {
       asked: {
         stepA: 5,
         spans: { by: 'clock', spans: [shift], rest: 'Night' },
-        bank: { stepKvar: 200, mostSteps: 6, lossWPerKvar: 2, holdsPowerFactor: 1, costPerKvar: 0.2 },
+        bank: { stepKvar: 200, mostSteps: 6, lossWPerKvar: 2, holdsPowerFactor: 1, costPerKvar: 0.2, motorWork: 3 },
       },
       spanRules: { rules: [{ name: 'Night' }, shift], of: [1, 0] },
       fingerprint: 'one',
@@ -104,6 +104,11 @@ describe('a search by shift with capacitors beside', () => {
     expect(found.alternatives!.map(({ npv }) => npv)).toEqual(
       [...found.alternatives!.map(({ npv }) => npv)].sort((a, b) => b - a),
     );
+    // The fields cost their work, a bank 0.2 EUR for each of 200 kvar a step, both together both.
+    const capitalOf = (kind: string) => found.alternatives!.find((one) => one.kind === kind)!.capitalCost;
+    expect(capitalOf('motor')).toBe(3);
+    expect(capitalOf('capacitors')).toBeCloseTo(40 * found.bank!.aloneSteps, 9);
+    expect((capitalOf('both') - 3) % 40).toBeCloseTo(0, 9);
     expect(found.verdict).toMatch(/ gain [\d,.]+ EUR in present value over 10 years; .* and .*\.$/);
     expect(found.bound!.total).toBeLessThanOrEqual(found.yearTotal + 1e-6);
     expect(found.bound!.words).toMatch(/% above it/);

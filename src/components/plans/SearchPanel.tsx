@@ -6,6 +6,7 @@ import { searchFound } from '../../schemas/job';
 import { Notice } from '../ui/Notice';
 import { Progress } from '../ui/Progress';
 import { SearchResult } from './SearchResult';
+import { emptySearch } from './search-draft';
 import { SearchStart, type SearchableMotor } from './SearchStart';
 
 export interface SearchPanelProps {
@@ -27,6 +28,7 @@ const titles: Record<string, string> = {
 
 function Panel({ code, currency, motors, seasons, jobId: firstId, fingerprint }: SearchPanelProps) {
   const [jobId, setJobId] = useState(firstId);
+  const [draft, setDraft] = useState(() => emptySearch(motors.map(({ motorId }) => motorId)));
   const { job, secondsLeft, error } = useJob(jobId);
   const stop = useMutation({ mutationFn: () => cancelJob(jobId ?? 0) });
   const found = searchFound(job);
@@ -44,7 +46,7 @@ function Panel({ code, currency, motors, seasons, jobId: firstId, fingerprint }:
           onStop={() => stop.mutate()}
         />
       ) : (
-        <SearchStart code={code} currency={currency} motors={motors} seasons={seasons} onStarted={setJobId} />
+        <SearchStart {...{ code, currency, motors, seasons, draft, setDraft }} onStarted={setJobId} />
       )}
       {job?.state === 'cancelled' && <Notice title="Stopped. Nothing was changed; the plans stand as they were." />}
       {(job?.state === 'failed' || error) && <Notice kind="fault" title={job?.error ?? error ?? ''} />}

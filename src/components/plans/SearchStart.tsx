@@ -6,7 +6,7 @@ import type { SearchInput } from '../../schemas/search';
 import { Button } from '../ui/Button';
 import { Field, NumberField, SelectField } from '../ui/Field';
 import { Notice } from '../ui/Notice';
-import { emptySearch, searchAsked, type SearchDraft, type SearchFaults } from './search-draft';
+import { searchAsked, type SearchDraft, type SearchFaults } from './search-draft';
 
 /** A motor that may be searched. */
 export interface SearchableMotor {
@@ -19,6 +19,9 @@ interface StartProps {
   currency: string;
   motors: SearchableMotor[];
   seasons: string[];
+  /** What is typed; it stays while a search runs. */
+  draft: SearchDraft;
+  setDraft: (draft: SearchDraft) => void;
   onStarted: (jobId: number) => void;
 }
 
@@ -86,8 +89,11 @@ function PartEntries({ draft, faults, set, seasons }: EntryProps & { seasons: st
   );
 }
 
+type BankEntry =
+  'stepKvar' | 'mostSteps' | 'lossWPerKvar' | 'holdsPowerFactor' | 'costPerKvar' | 'detuningPercent' | 'motorWork';
+
 function BankEntries({ draft, faults, set, currency }: EntryProps & { currency: string }) {
-  const entry = (name: 'stepKvar' | 'mostSteps' | 'lossWPerKvar' | 'holdsPowerFactor' | 'costPerKvar') => ({
+  const entry = (name: BankEntry) => ({
     size: 'small' as const,
     value: draft[name],
     onChange: (event: { target: { value: string } }) => set({ [name]: event.target.value }),
@@ -115,7 +121,19 @@ function BankEntries({ draft, faults, set, currency }: EntryProps & { currency: 
             hint="Power factor; empty: fixed steps only"
             {...entry('holdsPowerFactor')}
           />
+          <NumberField
+            label="Detuning reactors"
+            unit="%"
+            hint="5.67, 7 or 14; empty for none"
+            {...entry('detuningPercent')}
+          />
           <NumberField label="Cost, fitted" unit={`${currency}/kvar`} {...entry('costPerKvar')} />
+          <NumberField
+            label="Work at the motors, once"
+            unit={currency}
+            hint="Visit, tests, protection review; 0 for none"
+            {...entry('motorWork')}
+          />
         </div>
       )}
     </div>
@@ -123,9 +141,8 @@ function BankEntries({ draft, faults, set, currency }: EntryProps & { currency: 
 }
 
 /** What is searched, and the button that begins it. */
-export function SearchStart({ code, currency, motors, seasons, onStarted }: StartProps) {
+export function SearchStart({ code, currency, motors, seasons, draft, setDraft, onStarted }: StartProps) {
   const allMotors = motors.map(({ motorId }) => motorId);
-  const [draft, setDraft] = useState(() => emptySearch(allMotors));
   const [faults, setFaults] = useState<SearchFaults>({});
   const [refused, setRefused] = useState<string | null>(null);
   const start = useMutation({

@@ -16,6 +16,8 @@ export interface SearchDraft {
   lossWPerKvar: string;
   holdsPowerFactor: string;
   costPerKvar: string;
+  detuningPercent: string;
+  motorWork: string;
 }
 
 export const emptySearch = (motors: number[]): SearchDraft => ({
@@ -30,6 +32,8 @@ export const emptySearch = (motors: number[]): SearchDraft => ({
   lossWPerKvar: '2.5',
   holdsPowerFactor: '',
   costPerKvar: '45',
+  detuningPercent: '',
+  motorWork: '',
 });
 
 /** Half-years by months: April to September, and the rest. */
@@ -67,6 +71,9 @@ export function searchAsked(
           lossWPerKvar: typedNumber(draft.lossWPerKvar),
           holdsPowerFactor: draft.holdsPowerFactor.trim() === '' ? undefined : typedNumber(draft.holdsPowerFactor),
           costPerKvar: typedNumber(draft.costPerKvar),
+          detuningPercent: draft.detuningPercent.trim() === '' ? undefined : typedNumber(draft.detuningPercent),
+          // Without the cost of the work no comparison is honest: an empty entry is asked for, not taken for nothing.
+          motorWork: typedNumber(draft.motorWork),
         }
       : undefined,
   });

@@ -23,11 +23,17 @@ interface Weighing {
 export function weighCapacitors(weighing: Weighing): Weighed {
   const { ready, input, found, asked, tell } = weighing;
   const { bank } = asked;
-  const motor: Alternative = { kind: 'motor', name: 'The field settings', yearCost: found.cost, capitalCost: 0 };
+  const motorWork = bank?.motorWork ?? 0;
+  const motor: Alternative = {
+    kind: 'motor',
+    name: 'The field settings',
+    yearCost: found.cost,
+    capitalCost: found.leaveAlone ? 0 : motorWork,
+  };
   if (!bank)
     return { alternatives: [], bank: null, ...verdictOf(ready, found.standingCost, found.leaveAlone ? [] : [motor]) };
   const yearly = yearlyCostPerKvar(bank);
-  const { stepKvar, lossWPerKvar, holdsPowerFactor, mostSteps } = bank;
+  const { stepKvar, lossWPerKvar, holdsPowerFactor, mostSteps, detuningPercent } = bank;
   const alone = sizeCapacitors({
     plant: ready.plant,
     step: { stepKvar, lossWPerKvar },
@@ -36,6 +42,7 @@ export function weighCapacitors(weighing: Weighing): Weighed {
     totals: input.totals,
     yearlyCostPerKvar: yearly,
     shortCircuitKva: ready.plant.supply?.shortCircuitKva,
+    detuningPercent,
     onProgress: ({ priced, planned }) => tell(priced, planned),
   });
   const together = searchSettings({
@@ -52,8 +59,8 @@ export function weighCapacitors(weighing: Weighing): Weighed {
   const sizes = { alone: bestBankAlone(alone), together: bestBankTogether(together, yearly * stepKvar) };
   const alternatives = [
     motor,
-    ofBank('capacitors', 'Capacitors alone', sizes.alone.billCost, sizes.alone.steps, bank),
-    ofBank('both', 'Both together', sizes.together.billCost, sizes.together.steps, bank),
+    ofBank({ kind: 'capacitors', name: 'Capacitors alone' }, sizes.alone, bank, 0),
+    ofBank({ kind: 'both', name: 'Both together' }, sizes.together, bank, motorWork),
   ];
   return {
     alternatives: viewsOf(ready, found, alternatives, sizes),
@@ -78,14 +85,13 @@ function yearlyCostPerKvar({ costPerKvar }: SearchedBankInput): number {
 }
 
 function ofBank(
-  kind: 'capacitors' | 'both',
-  name: string,
-  yearCost: number,
-  steps: number,
-  bank: SearchedBankInput,
+  what: Pick<Alternative, 'kind' | 'name'>,
+  { billCost, steps }: Pick<CapacitorSize, 'billCost' | 'steps'>,
+  { stepKvar, costPerKvar }: SearchedBankInput,
+  motorWork: number,
 ): Alternative {
-  const capitalCost = steps * bank.stepKvar * bank.costPerKvar;
-  return { kind, name, yearCost, capitalCost, yearlyUpkeep: upkeepShare * capitalCost };
+  const bankCost = steps * stepKvar * costPerKvar;
+  return { ...what, yearCost: billCost, capitalCost: bankCost + motorWork, yearlyUpkeep: upkeepShare * bankCost };
 }
 
 const judged = (ready: ReadyYear, standingCost: number, alternatives: Alternative[]) =>

@@ -9,7 +9,8 @@ import type { OperatingPoint } from './operating-point';
 import { checkLeastField, heldRangeStates } from './kvar-range';
 import type { RangeLimit, RangeStates } from './kvar-range';
 import { kvarRatio, reactiveSupply } from './kvar-supply';
-import type { TakenMany } from './kvar-supply';
+import { newTaken } from './taken-many';
+import type { TakenMany } from './taken-many';
 import { brentRoot } from './roots';
 import { inputPu, solveAtKvar } from './solve';
 import type { MachineState } from './solve';
@@ -20,9 +21,10 @@ export interface ControlledField {
    * What the motor takes at each of many loads, within 1e-6 of rated kVA, and the limit a regulator runs at.
    *
    * @param shaftKw  Loads, ascending. [kW], each >= 0
+   * @param into  Arrays to write in; new ones when absent.
    * @throws {PullOutError} when the highest load exceeds what the held field, or a regulator's field limit, can hold
    */
-  takenAt: (shaftKw: Float64Array) => TakenMany;
+  takenAt: (shaftKw: Float64Array, into?: TakenMany) => TakenMany;
   /** The full operating point at a load; `limited`: the limit a regulator runs at. @throws {PullOutError} */
   point: (shaftKw: number) => OperatingPoint & { limited: RangeLimit | null };
 }
@@ -48,7 +50,7 @@ export function controlField(
     const fieldCurrentA = heldFieldA(motor, control);
     const fixed = fixField(motor, { fieldCurrentA, voltagePu: at.voltagePu });
     return {
-      takenAt: (loads) => ({ ...fixed.takenAt(loads), limited: new Uint8Array(loads.length) }),
+      takenAt: fixed.takenAt,
       point: (shaftKw) => ({ ...fixed.point(shaftKw), limited: null }),
     };
   }
@@ -78,11 +80,9 @@ function regulated(
   const leastFieldA = checkLeastField(at.leastFieldA);
   if (control.holds === 'power-factor') kvarRatio(control);
   else requireRange(Number.isFinite(control.kvarDelivered), 'kvarDelivered', 'finite', control.kvarDelivered);
-  const takenAt = (loads: Float64Array) => {
-    const [kvar, inputKw] = [new Float64Array(loads.length), new Float64Array(loads.length)];
-    const taken = { kvar, inputKw, limited: new Uint8Array(loads.length) };
-    reactiveSupply(motor, { loads, ...at }).hold(control, taken);
-    return taken;
+  const takenAt = (loads: Float64Array, into = newTaken(loads.length)) => {
+    reactiveSupply(motor, { loads, ...at }).hold(control, into);
+    return into;
   };
   const point = (shaftKw: number) => {
     checkLoad({ shaftKw });

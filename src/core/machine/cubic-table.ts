@@ -6,14 +6,22 @@ export interface TableSample {
   regime?: number;
 }
 
+/** Both curves, and the regime, at many abscissas. */
+export interface TableValues {
+  a: Float64Array;
+  b: Float64Array;
+  regime: Uint8Array;
+}
+
 /** Piecewise cubics of two curves over ascending abscissas. */
 export interface CubicTable {
   /**
    * Values at many abscissas.
    *
    * @param at  Ascending, within the table's range.
+   * @param into  Arrays to write in; new ones when absent.
    */
-  read: (at: Float64Array) => { a: Float64Array; b: Float64Array; regime: Uint8Array };
+  read: (at: Float64Array, into?: TableValues) => TableValues;
   /** The first curve at one abscissa within the table's range, in any order. */
   firstAt: (x: number) => number;
 }
@@ -67,13 +75,20 @@ export function cubicTable(
     }
   };
   if (to > from) build(from, to);
-  return { read: (at) => readPieces(pieces, at), firstAt: (x) => firstOf(pieces, x) };
+  return {
+    read: (at, into = newValues(at.length)) => readPieces(pieces, at, into),
+    firstAt: (x) => firstOf(pieces, x),
+  };
 }
 
-function readPieces(pieces: Piece[], at: Float64Array) {
-  const a = new Float64Array(at.length);
-  const b = new Float64Array(at.length);
-  const regime = new Uint8Array(at.length);
+const newValues = (count: number): TableValues => ({
+  a: new Float64Array(count),
+  b: new Float64Array(count),
+  regime: new Uint8Array(count),
+});
+
+function readPieces(pieces: Piece[], at: Float64Array, into: TableValues): TableValues {
+  const { a, b, regime } = into;
   let i = 0;
   pieces.forEach((piece, k) => {
     const to = k === pieces.length - 1 ? Infinity : piece.to;
@@ -87,7 +102,7 @@ function readPieces(pieces: Piece[], at: Float64Array) {
       regime[i] = piece.regime;
     }
   });
-  return { a, b, regime };
+  return into;
 }
 
 function firstOf(pieces: Piece[], x: number): number {

@@ -1,4 +1,6 @@
 import { cubicTable } from './cubic-table';
+import { newTaken } from './taken-many';
+import type { TakenMany } from './taken-many';
 import { requireRange } from './errors';
 import { compileMotor } from './motor';
 import type { MotorModel, SynchronousMotor } from './motor';
@@ -30,10 +32,11 @@ export interface FixedField {
    * error below 1e-7 of rated kVA.
    *
    * @param shaftKw  Loads, ascending. [kW], each >= 0
-   * @returns kvar and inputKw, one value per load
+   * @param into  Arrays to write in; new ones when absent.
+   * @returns kvar and inputKw, one value per load; no limit is kept
    * @throws {PullOutError} when the highest load exceeds what the field holds
    */
-  takenAt: (shaftKw: Float64Array) => { kvar: Float64Array; inputKw: Float64Array };
+  takenAt: (shaftKw: Float64Array, into?: TakenMany) => TakenMany;
 }
 
 /** Loads up to this number are solved one by one. */
@@ -66,20 +69,25 @@ export function fixField(motor: SynchronousMotor, at: { fieldCurrentA: number; v
     greatestShaftKw: held.greatest * model.baseKva,
     point: (shaftKw) => describeState(model, stateAt(shaftKw), shaftKw),
     taken,
-    takenAt: (loads) => takenAtMany(model, held, loads, taken),
+    takenAt: (loads, into = newTaken(loads.length)) => takenAtMany(model, held, loads, { taken, into }),
   };
 }
 
-function takenAtMany(model: MotorModel, held: HeldField, loads: Float64Array, taken: (shaftKw: number) => TakenPower) {
-  const kvar = new Float64Array(loads.length);
-  const inputKw = new Float64Array(loads.length);
+function takenAtMany(
+  model: MotorModel,
+  held: HeldField,
+  loads: Float64Array,
+  { taken, into }: { taken: (shaftKw: number) => TakenPower; into: TakenMany },
+): TakenMany {
+  const { kvar, inputKw, limited } = into;
   if (loads.length <= FEW) {
     loads.forEach((shaftKw, i) => {
       const point = taken(shaftKw);
       kvar[i] = point.kvar;
       inputKw[i] = point.inputKw;
     });
-    return { kvar, inputKw };
+    limited.fill(0);
+    return into;
   }
   const from = loads[0]!;
   const to = loads[loads.length - 1]!;
@@ -89,7 +97,8 @@ function takenAtMany(model: MotorModel, held: HeldField, loads: Float64Array, ta
     const point = taken(shaftKw);
     return { a: point.kvar, b: point.inputKw - shaftKw };
   };
-  const table = cubicTable(sample, from, to, TABLE_TOLERANCE * model.baseKva).read(loads);
-  for (let i = 0; i < loads.length; i++) inputKw[i] = table.b[i]! + loads[i]!;
-  return { kvar: table.a, inputKw };
+  const table = cubicTable(sample, from, to, TABLE_TOLERANCE * model.baseKva);
+  table.read(loads, { a: kvar, b: inputKw, regime: limited });
+  for (let i = 0; i < loads.length; i++) inputKw[i]! += loads[i]!;
+  return into;
 }

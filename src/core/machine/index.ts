@@ -41,7 +41,9 @@ export type {
 export { controlField, heldFieldA } from './controlled-field';
 export type { ControlledField } from './controlled-field';
 export { LIMIT_CODE, reactiveSupply } from './kvar-supply';
-export type { ReactiveSupply, TakenMany } from './kvar-supply';
+export type { ReactiveSupply } from './kvar-supply';
+export { newTaken } from './taken-many';
+export type { TakenMany } from './taken-many';
 export { DEFAULT_FIELD_HOT_C, fieldResistanceAtOhm } from './field-temperature';
 export { cubicTable } from './cubic-table';
 export { goldenMinimum } from './roots';

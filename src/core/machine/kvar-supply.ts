@@ -8,17 +8,10 @@ import type { MotorModel, SynchronousMotor } from './motor';
 import { checkLoad } from './operating-point';
 import { checkLeastField, heldRangeStates } from './kvar-range';
 import type { RangeLimit, RangeStates } from './kvar-range';
+import type { TakenMany } from './taken-many';
 
 /** Limits by number: 0 free, 1 field, 2 armature, 3 pull-out or least field. */
 export const LIMIT_CODE: Record<RangeLimit, number> = { field: 1, armature: 2, 'pull-out': 3, 'least-field': 3 };
-
-/** What a motor takes at each of many loads, and the limit a regulator runs at, by `LIMIT_CODE`. */
-export interface TakenMany {
-  /** Absorbed. [kvar] */
-  kvar: Float64Array;
-  inputKw: Float64Array;
-  limited: Uint8Array;
-}
 
 /**
  * What a motor can deliver and what that costs at each of many loads and one voltage. Reactive power is as delivered. Where no

@@ -1,4 +1,12 @@
-import { NotConvergedError, PullOutError, controlField, fixField, ratedKva, reactiveSupply } from '../machine';
+import {
+  NotConvergedError,
+  PullOutError,
+  controlField,
+  fixField,
+  newTaken,
+  ratedKva,
+  reactiveSupply,
+} from '../machine';
 import type { FieldControl, OwnFieldControl, SynchronousMotor } from '../machine';
 import type { LossCurve } from './dispatch';
 import { distinctLoads } from './distinct-loads';
@@ -62,15 +70,15 @@ function place(placed: Placed, intervals: number, name: string, standingAt: Take
   const { motor, behind = 0, voltagePu, leastFieldA } = placed;
   const { loads, index } = distinctLoads(placed.shaftKw, intervals, name);
   const standing = named(name, () => byLoad(standingAt(loads)));
+  const scratch = newTaken(loads.length);
   const cache = new Map<string, TakenByLoad | null>();
   const room = Math.max(8, Math.floor(CACHE_FLOATS / (2 * loads.length + 2)));
   const changeFor = (control: OwnFieldControl) => {
     const key = keyOf(control);
     let change = cache.get(key);
     if (change === undefined) {
-      const taken = named(name, () => byLoad(controlField(motor, control, { voltagePu, leastFieldA }).takenAt(loads)));
-      change = beyond(taken, standing);
-      if (cache.size >= room) cache.delete(cache.keys().next().value!);
+      const taken = named(name, () => controlField(motor, control, { voltagePu, leastFieldA }).takenAt(loads, scratch));
+      change = beyond(taken, standing, cache.size >= room ? oldestOf(cache) : null);
       cache.set(key, change);
     }
     return change;
@@ -103,10 +111,29 @@ function byLoad({ kvar, inputKw }: { kvar: Float64Array; inputKw: Float64Array }
   return taken;
 }
 
-function beyond(taken: TakenByLoad, standing: TakenByLoad): TakenByLoad | null {
-  const kvar = taken.kvar.map((value, k) => value - standing.kvar[k]!);
-  const kw = taken.kw.map((value, k) => value - standing.kw[k]!);
-  return kvar.some((value) => value !== 0) || kw.some((value) => value !== 0) ? { kvar, kw } : null;
+/** Takes the oldest entry out of a cache: its arrays serve again, since a year of new ones costs more than what is written in them. */
+function oldestOf(cache: Map<string, TakenByLoad | null>): TakenByLoad | null {
+  const [[key, oldest]] = cache as Iterable<[string, TakenByLoad | null]> as [[string, TakenByLoad | null]];
+  cache.delete(key);
+  return oldest;
+}
+
+/** What is taken beyond standing; null where that is nothing. One pass: a submeter's year has as many loads as intervals. */
+function beyond(
+  { kvar, inputKw }: { kvar: Float64Array; inputKw: Float64Array },
+  standing: TakenByLoad,
+  spare: TakenByLoad | null,
+): TakenByLoad | null {
+  const change = spare ?? { kvar: new Float64Array(kvar.length + 1), kw: new Float64Array(kvar.length + 1) };
+  let isNothing = true;
+  for (let k = 0; k < kvar.length; k++) {
+    const moreKvar = kvar[k]! - standing.kvar[k + 1]!;
+    const moreKw = inputKw[k]! - standing.kw[k + 1]!;
+    change.kvar[k + 1] = moreKvar;
+    change.kw[k + 1] = moreKw;
+    isNothing &&= moreKvar === 0 && moreKw === 0;
+  }
+  return isNothing ? null : change;
 }
 
 function supplyAt({ motor, voltagePu, leastFieldA }: Placed, loads: Float64Array): MotorSupply {

@@ -94,6 +94,9 @@ function regulated(
   return { takenAt, point };
 }
 
+/** What a regulator holds is met within this. [pu of rated kVA] */
+const MET = 1e-12;
+
 /** State a regulator holds, or the end of the range it is stopped at. */
 function withinRange(
   model: MotorModel,
@@ -106,10 +109,16 @@ function withinRange(
     control.holds === 'kvar'
       ? () => -control.kvarDelivered / model.baseKva
       : (s: MachineState) => kvarRatio(control) * inputPu(model, s);
-  const short = (s: MachineState) => s.q - wanted(s);
-  if (short(range.most) > 0) return { state: range.most, limited: range.mostBinding };
-  if (short(range.least) < 0) return { state: range.least, limited: range.leastBinding };
   const at = (q: number) => solveAtKvar(model, shaft, q, v);
-  const q = brentRoot((x) => short(at(x)), range.most.q, range.least.q, 'reactive power of a regulator');
+  const shortAt = (q: number) => {
+    const s = at(q);
+    return s.q - wanted(s);
+  };
+  // Asked of the solution the root is sought on: an end that is met to rounding is an end, not a bracket.
+  const shortAtMost = shortAt(range.most.q);
+  if (shortAtMost >= 0) return { state: range.most, limited: shortAtMost > MET ? range.mostBinding : null };
+  const shortAtLeast = shortAt(range.least.q);
+  if (shortAtLeast <= 0) return { state: range.least, limited: shortAtLeast < -MET ? range.leastBinding : null };
+  const q = brentRoot(shortAt, range.most.q, range.least.q, 'reactive power of a regulator');
   return { state: at(q), limited: null };
 }

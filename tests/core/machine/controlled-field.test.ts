@@ -159,6 +159,30 @@ describe('controlField, regulators', () => {
     );
   });
 
+  it('holds the very ends of its range, asked as reactive power or as the power factor there', () => {
+    fc.assert(
+      fc.property(
+        randomMotor(),
+        between(0.02, 1.1),
+        fc.constantFrom('least' as const, 'most' as const),
+        (motor, load, end) => {
+          const shaftKw = load * motor.ratedOutputKw;
+          const range = reactiveRange(motor, { shaftKw });
+          fc.pre(range !== null);
+          const kvarDelivered = range![end];
+          const byKvar = controlField(motor, { holds: 'kvar', kvarDelivered }).point(shaftKw);
+          expect(Math.abs(byKvar.kvar + kvarDelivered) / ratedKva(motor)).toBeLessThan(1e-9);
+          const { powerFactor, leading } = byKvar;
+          // Towards nought power factor, and at unity, the power factor no longer fixes the reactive power.
+          fc.pre(powerFactor > 0.2 && powerFactor < 0.9999);
+          const byFactor = controlField(motor, { holds: 'power-factor', powerFactor, leading }).point(shaftKw);
+          expect(Math.abs(byFactor.kvar + kvarDelivered) / ratedKva(motor)).toBeLessThan(1e-7);
+        },
+      ),
+      { numRuns: 3000 },
+    );
+  });
+
   it('runs where the over-excited limiters leave it when nothing is admissible', () => {
     const motor = buildMotor();
     const overloaded = controlField(motor, { holds: 'kvar', kvarDelivered: 300 }).point(2300);

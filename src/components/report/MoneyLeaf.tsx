@@ -11,10 +11,14 @@ import { riseWords, spreadWords } from '../plans/money-words';
 import { Picture } from './Picture';
 import { paybackFinding } from './words';
 
-/** Cumulative cash at the end of each year. */
+/** Years told one by one; of later ones each tenth and the last, so that any horizon fits the leaf. */
+const yearsInFull = 5;
+
+/** Cumulative cash at the end of years. */
 function yearsTable({ cashFlow, currency }: EditionContent): LedgerData {
   const figure = { kind: 'number' as const, unit: currency };
   const years = cashFlow.filter((point) => point.month % 12 === 0);
+  const isTold = (year: number) => year <= yearsInFull || year % 10 === 0 || year === years.length - 1;
   const banded = years.some((point) => point.low !== undefined);
   return {
     columns: [
@@ -28,16 +32,18 @@ function yearsTable({ cashFlow, currency }: EditionContent): LedgerData {
           ]
         : []),
     ],
-    rows: years.map((point, index) => ({
-      id: String(point.month),
-      cells: {
-        year: formatNumber(point.month / 12),
-        flow: index === 0 ? point.cumulative : point.cumulative - (years[index - 1]?.cumulative ?? 0),
-        sum: point.cumulative,
-        low: point.low ?? null,
-        high: point.high ?? null,
-      },
-    })),
+    rows: years
+      .map((point, year) => ({
+        id: String(point.month),
+        cells: {
+          year: formatNumber(year),
+          flow: year === 0 ? point.cumulative : point.cumulative - (years[year - 1]?.cumulative ?? 0),
+          sum: point.cumulative,
+          low: point.low ?? null,
+          high: point.high ?? null,
+        },
+      }))
+      .filter((_, year) => isTold(year)),
   };
 }
 
@@ -92,7 +98,12 @@ export function MoneyLeaf({ content, taps, foot, pictures, page }: MoneyLeafProp
       <LeafRow
         number={`${page}.2`}
         title="Cash flow"
-        reference={<p>Savings arrive evenly through each year</p>}
+        reference={
+          <>
+            <p>Savings arrive evenly through each year</p>
+            {plan.economics.horizonYears > yearsInFull + 1 && <p>After the fifth year each tenth, and the last</p>}
+          </>
+        }
         result={<ResultSums rows={sums(content)} />}
       >
         <LedgerTable label="Cash flow by year" {...yearsTable(content)} />

@@ -207,6 +207,9 @@ describe('the whole job, as the three people', () => {
     await page.getByLabel('Name', { exact: true }).fill('Plan A');
     await page.getByLabel('Work at the motors, once').fill('61,500');
     await page.getByLabel('Upkeep a year').fill('1,800');
+    await page.getByText('What the client may move').click();
+    await page.getByLabel('Operating hours from', { exact: true }).fill('60');
+    await page.getByLabel('Operating hours to', { exact: true }).fill('120');
     await page
       .getByRole('button', { name: /Keep|Price|Save/ })
       .first()
@@ -265,7 +268,8 @@ describe('the whole job, as the three people', () => {
     await page.waitForURL(`**/client/${code}/overview`);
     expect(await heading(page)).toMatch(/motors you already own can cut your power bills by [\d,]+ USD a year/);
     await page.waitForLoadState('networkidle');
-    expect(await page.locator('.chart svg[role=img]').count()).toBe(1);
+    // The payback and what moves it.
+    expect(await page.locator('.chart svg[role=img]').count()).toBe(2);
     await page.getByLabel('The plant runs', { exact: true }).fill('80');
     await page.keyboard.press('Enter');
     await page.getByRole('button', { name: 'Back to edition 1' }).waitFor();

@@ -15,6 +15,7 @@ import { createPlan, openPlan, plansOf, removePlan } from '@/server/services/pla
 import { changeSupply, supplyForTask, supplyOf } from '@/server/services/supplies';
 import { closePool } from '@/server/workers/pool';
 import { buildActor } from '../setup/build';
+import { compressorMotor } from '../setup/motors';
 import { buildPlansStation, type PlansStation } from '../setup/plans';
 
 let station: PlansStation;
@@ -136,6 +137,66 @@ describe('settings by span', () => {
     const wrong = { by: 'schedule', spans: [{ name: 'wet' }, { name: 'dry' }] };
     const other = plan('Wrong', { spans: wrong, fields: [{ motorId, controls }] });
     expect(await refusal(createPlan(station.opened, other))).toMatchObject({ status: 409 });
+  });
+});
+
+describe('a new synchronous motor in place of an induction motor', () => {
+  const everyDay = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'];
+  const fan = {
+    name: 'M-9',
+    induction: {
+      output: 300,
+      outputUnit: 'kW',
+      points: [
+        { loadPercent: 50, efficiencyPercent: 94, powerFactor: 0.75 },
+        { loadPercent: 100, efficiencyPercent: 95, powerFactor: 0.85 },
+      ],
+    },
+    plate: {
+      ...(compressorMotor.plate as object),
+      output: 400,
+      outputUnit: 'kW',
+      currentA: undefined,
+      efficiencyPercent: undefined,
+    },
+    calendar: { rules: [{ days: everyDay, fromHour: 0, toHour: 24, load: 300, unit: 'kW' }], shutdowns: [] },
+    controls: [{ holds: 'kvar', kvarDelivered: 0 }],
+    cost: 90_000,
+  };
+
+  it('takes the lag of the old one off the meter, costs its price and is told beside the others', async () => {
+    const { standing, plans } = await priced(plan('New fan motor', { replacements: [fan] }));
+    const [view] = plans as [PlanView];
+    // 300 kW at 95 % draw 315.7895 kW; at 0.85 that is 315.7895 x 0.6197443 = 195.709 kvar, and the new motor takes none.
+    expect(view.replacements[0]).toMatchObject({ name: 'M-9', hoursLimited: 0, hoursRunning: 365 * 24 });
+    expect(view.replacements[0]!.kvarGained).toBeCloseTo(195.709, 2);
+    // July, 744 h at 0.0012 USD a kvarh: 195.7087 x 744 x 0.0012 = 174.73 USD, within a cent for the rounding of two lines.
+    const july = view.bills.findIndex(({ from }) => from === '2026-07-01');
+    expect(Math.abs(lineOf(standing, july, 'excess') - lineOf(view, july, 'excess') - 174.73)).toBeLessThan(0.011);
+    // What it saves in energy is its own, hour for hour: 8,760 of them.
+    expect(view.extraLossKwh).toBeCloseTo(-view.replacements[0]!.kwSaved * 8760, 0);
+    expect(view.capitalCost).toBe(90_000);
+    expect(view.costParts.map(({ amount }) => amount)).toContain(90_000);
+    expect(view.appraisal.npv).toBeLessThan(view.saving * 10);
+  });
+
+  it('comes back to the form as it was written', async () => {
+    const { opened, actor } = station;
+    const made = await createPlan(opened, plan('Form of a fan', { replacements: [fan] }));
+    const year = await plansOf(opened);
+    const start = await planStart(actor, year, { plan: String(made.id), search: null });
+    expect(start!.start.replacements[0]).toMatchObject({ name: 'M-9', induction: fan.induction, cost: 90_000 });
+    await removePlan(await openPlan(actor, made.id), { version: 0 });
+  });
+
+  it('is refused where its load lies beyond what it can hold', async () => {
+    const heavy = { ...fan, calendar: { ...fan.calendar, rules: [{ ...fan.calendar.rules[0]!, load: 1400 }] } };
+    const error = await refusal(createPlan(station.opened, plan('Too heavy', { replacements: [heavy] })));
+    expect(error).toMatchObject({ status: 422 });
+    expect(error.fields).toEqual({ 'replacements.0.controls.0.kvarDelivered': [expect.stringMatching(/1,400 kW/)] });
+    const odd = { ...fan, plate: { ...fan.plate, currentA: 500, efficiencyPercent: 95 } };
+    const other = await refusal(createPlan(station.opened, plan('Odd plate', { replacements: [odd] })));
+    expect(Object.keys(other.fields ?? {})[0]).toMatch(/^replacements\.0\.plate\./);
   });
 });
 

@@ -5,12 +5,13 @@ import type { Missing, UnpricedPlan, YearView } from '../../schemas/plan';
 import { ServiceError } from '../errors';
 import type { Plan } from '../models/Plan';
 import { limitsOf } from '../presenters/motor';
-import { motorSettings } from '../presenters/plan-row';
+import { motorSettings, replacementsOf } from '../presenters/plan-row';
 import type { TaskSetting } from '../workers/tasks';
 import { notesOfBills } from './bill-notes';
 import type { OpenEngagement } from './engagements';
 import { loadOf } from './motors';
 import { actOf, standingAct } from './plan-acts';
+import { newMotorFaults } from './new-motors';
 import { planBasis, priceSettings, type PlanBasis } from './plan-basis';
 import { storedFault, type LimitYear } from './plan-limits';
 import { listPlans } from './plan-rows';
@@ -130,6 +131,10 @@ function faultOf(row: Plan, motors: LoadedMotor[], basis: PlanBasis, opened: Ope
     const limits = limitsOf(motor.machine, motor.completed);
     const words = storedFault({ name, machine: motor.machine, limits, fieldTodayA, ...motor.source }, setting, year);
     if (words) return words;
+  }
+  for (const one of replacementsOf(row, opened.engagement.currency)) {
+    const [words] = Object.values(newMotorFaults(one, year));
+    if (words) return words.join(' ');
   }
   return null;
 }

@@ -14,6 +14,7 @@ import type { Actor } from '../policies/actor';
 import { actionsOf, presentPlanRow, storedPlan } from '../presenters/plan-row';
 import { openEngagementById, type OpenEngagement } from './engagements';
 import { motorsWithLoads } from './motors';
+import { newMotorFaults } from './new-motors';
 import { settingFaults, type LimitYear } from './plan-limits';
 import { spanRules } from './plan-spans';
 import { pricingInputs } from './pricing';
@@ -133,8 +134,12 @@ async function refuseBeyondLimits(opened: OpenEngagement, input: PlanInput): Pro
     }
     seen.add(motorId);
   });
+  input.replacements.forEach((one, index) => {
+    for (const [path, words] of Object.entries(newMotorFaults(one, year)))
+      fields[`replacements.${index}.${path}`] = words;
+  });
   if (Object.keys(fields).length > 0) {
-    throw invalid('A field current cannot be set as asked. Each is marked with limit and motor.', fields);
+    throw invalid('A motor cannot be set as asked. Each entry is marked with limit and motor.', fields);
   }
 }
 
